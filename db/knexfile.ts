@@ -1,0 +1,3 @@
+import { connectionSettings } from './client';
+
+export default connectionSettings();

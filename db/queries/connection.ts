@@ -1,0 +1,34 @@
+import type { Knex } from 'knex';
+import { db } from '../client';
+
+/** What every query runs on: the pool, or a transaction that the caller has opened. */
+export type Connection = Knex | Knex.Transaction;
+
+/** The pool itself, the default of every query's last parameter. */
+export function pool(): Connection {
+  return db();
+}
+
+const DEADLOCK = 1213;
+const LOCK_WAIT_TIMEOUT = 1205;
+const MOST_ATTEMPTS = 4;
+
+/**
+ * Runs `work` in one transaction: all of it is durable when the promise resolves, none of it when it rejects.
+ * A deadlock or a lock that is not granted in time starts the work again, so `work` must have no other effects.
+ */
+export async function inTransaction<T>(work: (transaction: Knex.Transaction) => Promise<T>): Promise<T> {
+  for (let attempt = 1; ; attempt += 1) {
+    try {
+      return await db().transaction(work);
+    } catch (error) {
+      if (attempt === MOST_ATTEMPTS || !isLockConflict(error)) throw error;
+      await new Promise((resolve) => setTimeout(resolve, 10 * 4 ** attempt * (0.5 + attempt / 8)));
+    }
+  }
+}
+
+function isLockConflict(error: unknown): boolean {
+  const errno = (error as { errno?: number }).errno;
+  return errno === DEADLOCK || errno === LOCK_WAIT_TIMEOUT;
+}

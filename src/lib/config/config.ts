@@ -1,0 +1,78 @@
+import { settingsSchema } from './schema';
+
+/** The settings in typed form, as the rest of the program reads them. */
+export interface Config {
+  host: string;
+  port: number;
+  /** Address that people type, without a trailing slash; links in e-mail begin with it. */
+  origin: string;
+  allowedHosts: string[];
+  trustedProxies: number;
+  logLevel: string;
+  metricsToken: string | null;
+  dataDir: string;
+  database: { host: string; port: number; user: string; password: string; name: string; poolMax: number };
+  smtp: { host: string; port: number; isSecure: boolean; user: string | null; password: string | null; from: string };
+  mapStyleUrls: { light: string; dark: string };
+  /** 32 bytes that wrap the key of each complaint's personal data. Kept outside backups. */
+  personalDataKey: Buffer;
+  session: { idleHours: number; maxDays: number };
+}
+
+/** All settings that are wrong or missing, told together. */
+export class SettingsError extends Error {
+  constructor(readonly problems: string[]) {
+    super(`Bittern cannot start, these settings need attention:\n${problems.map((p) => `  ${p}`).join('\n')}`);
+    this.name = 'SettingsError';
+  }
+}
+
+/**
+ * Reads the settings from an environment.
+ * @throws {SettingsError} listing every bad setting at once.
+ */
+export function parseConfig(environment: Record<string, string | undefined>): Config {
+  const given = Object.fromEntries(Object.entries(environment).filter(([, value]) => value !== ''));
+  const parsed = settingsSchema.safeParse(given);
+  if (!parsed.success) {
+    throw new SettingsError(
+      parsed.error.issues.map((issue) => `${issue.path.join('.')}: ${issue.message}`).sort(),
+    );
+  }
+  const settings = parsed.data;
+  const origin = new URL(settings.BITTERN_ORIGIN ?? `http://${settings.BITTERN_HOST}:${settings.BITTERN_PORT}`);
+  return {
+    host: settings.BITTERN_HOST,
+    port: settings.BITTERN_PORT,
+    origin: origin.origin,
+    allowedHosts: allowedHosts(origin, settings.BITTERN_PORT, settings.BITTERN_ALLOWED_HOSTS),
+    trustedProxies: settings.BITTERN_TRUSTED_PROXIES,
+    logLevel: settings.BITTERN_LOG_LEVEL,
+    metricsToken: settings.BITTERN_METRICS_TOKEN ?? null,
+    dataDir: settings.BITTERN_DATA_DIR,
+    database: {
+      host: settings.BITTERN_DB_HOST,
+      port: settings.BITTERN_DB_PORT,
+      user: settings.BITTERN_DB_USER,
+      password: settings.BITTERN_DB_PASSWORD,
+      name: settings.BITTERN_DB_NAME,
+      poolMax: settings.BITTERN_DB_POOL_MAX,
+    },
+    smtp: {
+      host: settings.BITTERN_SMTP_HOST,
+      port: settings.BITTERN_SMTP_PORT,
+      isSecure: settings.BITTERN_SMTP_SECURE,
+      user: settings.BITTERN_SMTP_USER ?? null,
+      password: settings.BITTERN_SMTP_PASSWORD ?? null,
+      from: settings.BITTERN_MAIL_FROM,
+    },
+    mapStyleUrls: { light: settings.BITTERN_STYLE_LIGHT_URL, dark: settings.BITTERN_STYLE_DARK_URL },
+    personalDataKey: Buffer.from(settings.BITTERN_PERSONAL_DATA_KEY, 'hex'),
+    session: { idleHours: settings.BITTERN_SESSION_IDLE_HOURS, maxDays: settings.BITTERN_SESSION_MAX_DAYS },
+  };
+}
+
+function allowedHosts(origin: URL, port: number, extra: string): string[] {
+  const named = extra.split(',').map((host) => host.trim().toLowerCase());
+  return [origin.host, `127.0.0.1:${port}`, `localhost:${port}`, ...named].filter((host) => host !== '');
+}

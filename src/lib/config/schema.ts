@@ -1,0 +1,47 @@
+import { z } from 'zod';
+
+const port = (fallback: number) => z.coerce.number().int().min(1).max(65535).default(fallback);
+const isTrue = (fallback: 'true' | 'false') =>
+  z
+    .enum(['true', 'false'], { error: 'must be true or false' })
+    .default(fallback)
+    .transform((text) => text === 'true');
+const url = z.url({ protocol: /^https?$/, error: 'must be an http or https address' });
+
+/** Every setting of Bittern. The README's settings table lists the same names. */
+export const settingsSchema = z.object({
+  BITTERN_HOST: z.string().default('127.0.0.1'),
+  BITTERN_PORT: port(4321),
+  BITTERN_ORIGIN: url.optional(),
+  BITTERN_ALLOWED_HOSTS: z.string().default(''),
+  BITTERN_TRUSTED_PROXIES: z.coerce.number().int().min(0).max(8).default(0),
+  BITTERN_LOG_LEVEL: z.enum(['fatal', 'error', 'warn', 'info', 'debug', 'silent']).default('info'),
+  BITTERN_METRICS_TOKEN: z.string().min(16).optional(),
+
+  BITTERN_DATA_DIR: z.string().default('.bittern'),
+  BITTERN_DB_HOST: z.string().default('127.0.0.1'),
+  BITTERN_DB_PORT: port(4330),
+  BITTERN_DB_USER: z.string().default('bittern'),
+  BITTERN_DB_PASSWORD: z.string({ error: 'is required' }).min(1),
+  BITTERN_DB_NAME: z
+    .string()
+    .regex(/^[A-Za-z0-9_]{1,64}$/, 'may hold letters, digits and _ only')
+    .default('bittern'),
+  BITTERN_DB_POOL_MAX: z.coerce.number().int().min(2).max(200).default(12),
+
+  BITTERN_SMTP_HOST: z.string().default('127.0.0.1'),
+  BITTERN_SMTP_PORT: port(4325),
+  BITTERN_SMTP_SECURE: isTrue('false'),
+  BITTERN_SMTP_USER: z.string().optional(),
+  BITTERN_SMTP_PASSWORD: z.string().optional(),
+  BITTERN_MAIL_FROM: z.string().default('Bittern <bittern@merrow.example>'),
+
+  BITTERN_STYLE_LIGHT_URL: url.default('http://127.0.0.1:4331/style/light.json'),
+  BITTERN_STYLE_DARK_URL: url.default('http://127.0.0.1:4331/style/dark.json'),
+
+  BITTERN_PERSONAL_DATA_KEY: z
+    .string({ error: 'is required' })
+    .regex(/^[0-9a-f]{64}$/i, 'must be 64 hexadecimal digits (32 bytes)'),
+  BITTERN_SESSION_IDLE_HOURS: z.coerce.number().int().min(1).max(720).default(72),
+  BITTERN_SESSION_MAX_DAYS: z.coerce.number().int().min(1).max(90).default(30),
+});

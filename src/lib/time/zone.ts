@@ -1,0 +1,75 @@
+import { DateTime, IANAZone } from 'luxon';
+
+/** A civil date as `YYYY-MM-DD`. */
+export type LocalDate = string;
+
+const LOCAL_DATE = /^\d{4}-\d{2}-\d{2}$/;
+
+/** Whether `text` is a date of the calendar, as `YYYY-MM-DD`. */
+export function isLocalDate(text: string): text is LocalDate {
+  return LOCAL_DATE.test(text) && DateTime.fromISO(text, { zone: 'utc' }).isValid;
+}
+
+/** Whether `zone` names a zone of the IANA time-zone database. */
+export function isTimeZone(zone: string): boolean {
+  return IANAZone.isValidZone(zone);
+}
+
+/** Civil date in `zone` at an instant (epoch seconds). */
+export function localDateAt(epochSec: number, zone: string): LocalDate {
+  return DateTime.fromSeconds(epochSec, { zone }).toFormat('yyyy-MM-dd');
+}
+
+/** Minutes since local midnight by the clock on the wall, 0–1439. */
+export function localMinuteAt(epochSec: number, zone: string): number {
+  const local = DateTime.fromSeconds(epochSec, { zone });
+  return local.hour * 60 + local.minute;
+}
+
+/** Weekday of a civil date: 0 Monday … 6 Sunday. */
+export function weekdayOf(date: LocalDate): number {
+  return DateTime.fromISO(date, { zone: 'utc' }).weekday - 1;
+}
+
+/** The civil date `days` later (earlier when negative). */
+export function addDays(date: LocalDate, days: number): LocalDate {
+  return DateTime.fromISO(date, { zone: 'utc' }).plus({ days }).toFormat('yyyy-MM-dd');
+}
+
+/** Every civil date from `from` until before `to`. */
+export function datesBetween(from: LocalDate, to: LocalDate): LocalDate[] {
+  const dates: LocalDate[] = [];
+  for (let date = from; date < to; date = addDays(date, 1)) dates.push(date);
+  return dates;
+}
+
+/**
+ * Instant (epoch seconds) at which the clock on the wall shows `minutes` after midnight of `date` in `zone`.
+ * A time that the spring change skips is taken with the offset before the change, so it falls just after it;
+ * of a time that the autumn change repeats, the first one. `minutes` may be 1440 or more (the next day's).
+ */
+export function instantAtSec(date: LocalDate, minutes: number, zone: string): number {
+  const day = addDays(date, Math.floor(minutes / 1440));
+  const ofDay = ((minutes % 1440) + 1440) % 1440;
+  const [year, month, dayOfMonth] = day.split('-').map(Number);
+  const local = DateTime.fromObject(
+    { year, month, day: dayOfMonth, hour: Math.floor(ofDay / 60), minute: ofDay % 60 },
+    { zone },
+  );
+  return firstOf(local).toUnixInteger();
+}
+
+function firstOf(local: DateTime): DateTime {
+  const possible = local.getPossibleOffsets();
+  return possible.reduce((earliest, candidate) => (candidate < earliest ? candidate : earliest), local);
+}
+
+/** Instant (epoch seconds) at which a civil date begins in `zone`. */
+export function startOfDaySec(date: LocalDate, zone: string): number {
+  return DateTime.fromISO(date, { zone }).startOf('day').toUnixInteger();
+}
+
+/** Hours that a civil date has in `zone`: 24, or other on the days of a clock change. */
+export function hoursOfDay(date: LocalDate, zone: string): number {
+  return (startOfDaySec(addDays(date, 1), zone) - startOfDaySec(date, zone)) / 3600;
+}

@@ -1,0 +1,45 @@
+import { fileURLToPath } from 'node:url';
+import { defineConfig } from 'vitest/config';
+
+const root = fileURLToPath(new URL('..', import.meta.url));
+
+export default defineConfig({
+  root,
+  test: {
+    reporters: ['default'],
+    setupFiles: ['tests/setup.ts'],
+    projects: [
+      {
+        extends: true,
+        test: { name: 'unit', include: ['tests/unit/**/*.test.ts'] },
+      },
+      {
+        extends: true,
+        test: { name: 'reference', include: ['tests/reference/**/*.test.ts'], testTimeout: 60_000 },
+      },
+      {
+        extends: true,
+        test: {
+          name: 'integration',
+          include: ['tests/integration/**/*.test.ts'],
+          globalSetup: ['tests/integration/support/globalSetup.ts'],
+          testTimeout: 60_000,
+          hookTimeout: 60_000,
+          pool: 'forks',
+          maxWorkers: 2,
+        },
+      },
+      {
+        extends: true,
+        test: {
+          name: 'e2e',
+          include: ['tests/e2e/**/*.test.ts'],
+          globalSetup: ['tests/e2e/support/globalSetup.ts'],
+          testTimeout: 120_000,
+          hookTimeout: 240_000,
+          fileParallelism: false,
+        },
+      },
+    ],
+  },
+});
