@@ -46,7 +46,10 @@ interface RawConnection {
   query(sql: string, done: (error: Error | null) => void): void;
 }
 
-function setSessionModes(connection: RawConnection, done: (error: Error | null, connection: RawConnection) => void) {
+function setSessionModes(
+  connection: RawConnection,
+  done: (error: Error | null, connection: RawConnection) => void,
+) {
   connection.query(
     `SET SESSION sql_mode = 'STRICT_ALL_TABLES,ERROR_FOR_DIVISION_BY_ZERO,NO_ENGINE_SUBSTITUTION,ONLY_FULL_GROUP_BY',
        innodb_lock_wait_timeout = 10, time_zone = '+00:00'`,

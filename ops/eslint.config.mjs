@@ -10,23 +10,62 @@ const root = fileURLToPath(new URL('..', import.meta.url));
 
 /** Who may enter which room: every folder outside `allowed` (and the room itself) is closed to `room`. */
 const rooms = {
-  'src/pages/api': ['src/lib/services', 'src/lib/contracts', 'src/lib/auth', 'src/lib/http', 'src/lib/format', 'src/lib/time', 'src/lib/config', 'ingest'],
+  'src/pages/api': [
+    'src/lib/services',
+    'src/lib/contracts',
+    'src/lib/auth',
+    'src/lib/http',
+    'src/lib/format',
+    'src/lib/time',
+    'src/lib/config',
+    'ingest',
+  ],
   'src/pages': ['src/layouts', 'src/components', 'src/lib', 'src/styles', 'ingest/receive', 'ingest/import'],
   'src/layouts': ['src/components', 'src/lib', 'src/styles'],
-  'src/components': ['src/lib/acoustics', 'src/lib/contracts', 'src/lib/format', 'src/lib/time', 'src/styles'],
+  'src/components': [
+    'src/lib/acoustics',
+    'src/lib/contracts',
+    'src/lib/format',
+    'src/lib/time',
+    'src/styles',
+  ],
   'src/lib/acoustics': [],
   'src/lib/time': ['src/lib/acoustics'],
   'src/lib/contracts': ['src/lib/acoustics'],
   'src/lib/format': ['src/lib/acoustics', 'src/lib/time'],
   'src/lib/config': ['src/lib/contracts'],
-  'src/lib/services': ['src/lib/acoustics', 'src/lib/contracts', 'src/lib/format', 'src/lib/time', 'src/lib/config', 'db/queries'],
+  'src/lib/services': [
+    'src/lib/acoustics',
+    'src/lib/contracts',
+    'src/lib/format',
+    'src/lib/time',
+    'src/lib/config',
+    'db/queries',
+  ],
   'src/lib/auth': ['src/lib/services', 'src/lib/contracts', 'src/lib/config', 'src/lib/http', 'db/queries'],
   'src/lib/http': ['src/lib/services', 'src/lib/contracts', 'src/lib/config', 'db/queries'],
-  'db': ['src/lib/acoustics', 'src/lib/contracts', 'src/lib/config', 'src/lib/time'],
-  'ingest': ['src/lib/acoustics', 'src/lib/contracts', 'src/lib/format', 'src/lib/services', 'src/lib/time', 'src/lib/config', 'db'],
+  db: ['src/lib/acoustics', 'src/lib/contracts', 'src/lib/config', 'src/lib/time'],
+  ingest: [
+    'src/lib/acoustics',
+    'src/lib/contracts',
+    'src/lib/format',
+    'src/lib/services',
+    'src/lib/time',
+    'src/lib/config',
+    'db',
+  ],
 };
 
-const topFolders = ['src/pages', 'src/layouts', 'src/components', 'src/styles', 'src/lib', 'db', 'ingest', 'ops'];
+const topFolders = [
+  'src/pages',
+  'src/layouts',
+  'src/components',
+  'src/styles',
+  'src/lib',
+  'db',
+  'ingest',
+  'ops',
+];
 
 function zonesOf(room) {
   const allowed = rooms[room];
@@ -39,17 +78,32 @@ function zonesOf(room) {
       from: `./${folder}`,
       except: allowed
         .filter((name) => name === folder || name.startsWith(`${folder}/`) || folder.startsWith(`${name}/`))
-        .map((name) => (name === folder || folder.startsWith(`${name}/`) ? '.' : name.slice(folder.length + 1)))
+        .map((name) =>
+          name === folder || folder.startsWith(`${name}/`) ? '.' : name.slice(folder.length + 1),
+        )
         .map((name) => `./${name}`),
     }))
     .filter((zone) => !zone.except.includes('./.'))
     .map((zone) => ({ ...zone, message: `${room} may import only: ${allowed.join(', ') || 'nothing'}.` }));
 }
 
-const testsZone = { target: ['./src/**', './db/**', './ingest/**', './ops/**'], from: './tests', message: 'Nothing imports tests.' };
+const testsZone = {
+  target: ['./src/**', './db/**', './ingest/**', './ops/**'],
+  from: './tests',
+  message: 'Nothing imports tests.',
+};
 
 export default tseslint.config(
-  { ignores: ['dist/**', '.astro/**', '.bittern/**', 'node_modules/**', 'tests/.output/**', 'tests/fixtures/**'] },
+  {
+    ignores: [
+      'dist/**',
+      '.astro/**',
+      '.bittern/**',
+      'node_modules/**',
+      'tests/.output/**',
+      'tests/fixtures/**',
+    ],
+  },
   ...tseslint.configs.recommended,
   ...astro.configs['flat/recommended'],
   ...astro.configs['flat/jsx-a11y-strict'],
@@ -62,7 +116,10 @@ export default tseslint.config(
       'import-x/parsers': { '@typescript-eslint/parser': ['.ts', '.tsx'], 'astro-eslint-parser': ['.astro'] },
     },
     rules: {
-      'import-x/no-restricted-paths': ['error', { basePath: root, zones: [...Object.keys(rooms).flatMap(zonesOf), testsZone] }],
+      'import-x/no-restricted-paths': [
+        'error',
+        { basePath: root, zones: [...Object.keys(rooms).flatMap(zonesOf), testsZone] },
+      ],
       'import-x/no-cycle': ['error', { ignoreExternal: true }],
       '@typescript-eslint/no-explicit-any': 'error',
       '@typescript-eslint/consistent-type-imports': ['error', { fixStyle: 'inline-type-imports' }],
@@ -70,6 +127,13 @@ export default tseslint.config(
       eqeqeq: 'error',
     },
   },
-  { files: ['**/*.tsx'], plugins: { 'react-hooks': reactHooks }, rules: reactHooks.configs.recommended.rules },
-  { files: ['ops/**', 'db/migrate.ts', 'db/seeds/**', 'ingest/worker.ts', 'ingest/monitor/**', 'tests/**'], rules: { 'no-console': 'off' } },
+  {
+    files: ['**/*.tsx'],
+    plugins: { 'react-hooks': reactHooks },
+    rules: reactHooks.configs.recommended.rules,
+  },
+  {
+    files: ['ops/**', 'db/migrate.ts', 'db/seeds/**', 'ingest/worker.ts', 'ingest/monitor/**', 'tests/**'],
+    rules: { 'no-console': 'off' },
+  },
 );

@@ -12,7 +12,14 @@ export interface Config {
   metricsToken: string | null;
   dataDir: string;
   database: { host: string; port: number; user: string; password: string; name: string; poolMax: number };
-  smtp: { host: string; port: number; isSecure: boolean; user: string | null; password: string | null; from: string };
+  smtp: {
+    host: string;
+    port: number;
+    isSecure: boolean;
+    user: string | null;
+    password: string | null;
+    from: string;
+  };
   mapStyleUrls: { light: string; dark: string };
   /** 32 bytes that wrap the key of each complaint's personal data. Kept outside backups. */
   personalDataKey: Buffer;
@@ -22,7 +29,9 @@ export interface Config {
 /** All settings that are wrong or missing, told together. */
 export class SettingsError extends Error {
   constructor(readonly problems: string[]) {
-    super(`Bittern cannot start, these settings need attention:\n${problems.map((p) => `  ${p}`).join('\n')}`);
+    super(
+      `Bittern cannot start, these settings need attention:\n${problems.map((p) => `  ${p}`).join('\n')}`,
+    );
     this.name = 'SettingsError';
   }
 }
@@ -40,7 +49,9 @@ export function parseConfig(environment: Record<string, string | undefined>): Co
     );
   }
   const settings = parsed.data;
-  const origin = new URL(settings.BITTERN_ORIGIN ?? `http://${settings.BITTERN_HOST}:${settings.BITTERN_PORT}`);
+  const origin = new URL(
+    settings.BITTERN_ORIGIN ?? `http://${settings.BITTERN_HOST}:${settings.BITTERN_PORT}`,
+  );
   return {
     host: settings.BITTERN_HOST,
     port: settings.BITTERN_PORT,

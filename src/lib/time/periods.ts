@@ -18,7 +18,8 @@ export function periodsOf(date: LocalDate, scheme: PeriodScheme, zone: string): 
   const nightFrom = instantAtSec(date, scheme.nightStartMin, zone);
   const nextDay = instantAtSec(addDays(date, 1), scheme.dayStartMin, zone);
   const night: PeriodInstance = { date, kind: 'night', fromSec: nightFrom, toSec: nextDay };
-  if (scheme.eveningStartMin === null) return [{ date, kind: 'day', fromSec: dayFrom, toSec: nightFrom }, night];
+  if (scheme.eveningStartMin === null)
+    return [{ date, kind: 'day', fromSec: dayFrom, toSec: nightFrom }, night];
   const eveningFrom = instantAtSec(date, scheme.eveningStartMin, zone);
   return [
     { date, kind: 'day', fromSec: dayFrom, toSec: eveningFrom },

@@ -1,0 +1,88 @@
+import type { BandFraction } from '#lib/acoustics/bands';
+import { pool, type Connection } from './connection';
+
+export type Placement = 'free-field' | 'facade';
+
+export interface StationRow {
+  id: number;
+  networkId: number;
+  code: string;
+  name: string;
+  latitude: number;
+  longitude: number;
+  bandFraction: BandFraction;
+  intervalSec: number;
+  firstBandIndex: number;
+  lastBandIndex: number;
+  placement: Placement;
+  mastHeightM: number | null;
+  surroundings: string;
+  /** Epoch seconds; older intervals are refused; null: no bound. */
+  acceptsFromSec: number | null;
+  createdAt: Date;
+  retiredAt: Date | null;
+}
+
+const STATION_COLUMNS = {
+  id: 'id',
+  networkId: 'network_id',
+  code: 'code',
+  name: 'name',
+  latitude: 'latitude',
+  longitude: 'longitude',
+  bandFraction: 'band_fraction',
+  intervalSec: 'interval_sec',
+  firstBandIndex: 'first_band_index',
+  lastBandIndex: 'last_band_index',
+  placement: 'placement',
+  mastHeightM: 'mast_height_m',
+  surroundings: 'surroundings',
+  acceptsFromSec: 'accepts_from',
+  createdAt: 'created_at',
+  retiredAt: 'retired_at',
+} as const;
+
+export async function findStation(
+  networkId: number,
+  code: string,
+  conn: Connection = pool(),
+): Promise<StationRow | undefined> {
+  return conn('stations').where({ network_id: networkId, code }).first(STATION_COLUMNS);
+}
+
+export async function findStationById(
+  id: number,
+  conn: Connection = pool(),
+): Promise<StationRow | undefined> {
+  return conn('stations').where({ id }).first(STATION_COLUMNS);
+}
+
+/** Stations of a network by code; retired ones too. */
+export async function listStations(networkId: number, conn: Connection = pool()): Promise<StationRow[]> {
+  return conn('stations').where({ network_id: networkId }).orderBy('code').select(STATION_COLUMNS);
+}
+
+export type NewStation = Omit<StationRow, 'id' | 'createdAt' | 'retiredAt'>;
+
+/** Adds a station and answers its id. A code that the network has already fails with MariaDB's duplicate-key error. */
+export async function insertStation(station: NewStation, conn: Connection): Promise<number> {
+  const [id] = await conn('stations').insert({ ...columnsOf(station), created_at: new Date() });
+  return Number(id);
+}
+
+export async function updateStation(
+  id: number,
+  changes: Partial<Omit<StationRow, 'id' | 'networkId' | 'createdAt'>>,
+  conn: Connection,
+): Promise<void> {
+  await conn('stations').where({ id }).update(columnsOf(changes));
+}
+
+function columnsOf(values: Partial<StationRow>): Record<string, unknown> {
+  return Object.fromEntries(
+    Object.entries(values).map(([key, value]) => [
+      STATION_COLUMNS[key as keyof typeof STATION_COLUMNS],
+      value,
+    ]),
+  );
+}

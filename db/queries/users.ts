@@ -1,0 +1,104 @@
+import { pool, type Connection } from './connection';
+
+export type Role = 'operator' | 'liaison' | 'regulator';
+
+export interface UserRow {
+  id: string;
+  email: string;
+  name: string;
+  isAdministrator: boolean;
+  createdAt: Date;
+  disabledAt: Date | null;
+}
+
+export interface Membership {
+  userId: string;
+  networkId: number;
+  role: Role;
+}
+
+const USER_COLUMNS = {
+  id: 'id',
+  email: 'email',
+  name: 'name',
+  isAdministrator: 'is_administrator',
+  createdAt: 'created_at',
+  disabledAt: 'disabled_at',
+} as const;
+
+export async function findUserById(id: string, conn: Connection = pool()): Promise<UserRow | undefined> {
+  return userOf(await conn('users').where({ id }).first(USER_COLUMNS));
+}
+
+/** The person and the argon2 hash of the password, for signing in only. */
+export async function findCredentials(
+  email: string,
+  conn: Connection = pool(),
+): Promise<{ user: UserRow; passwordHash: string } | undefined> {
+  const row = await conn('users')
+    .where({ email })
+    .first({ ...USER_COLUMNS, passwordHash: 'password_hash' });
+  const user = userOf(row);
+  return user && { user, passwordHash: row.passwordHash };
+}
+
+export async function listUsers(conn: Connection = pool()): Promise<UserRow[]> {
+  const rows = await conn('users').orderBy('name').select(USER_COLUMNS);
+  return rows.map((row) => ({ ...row, isAdministrator: Boolean(row.isAdministrator) }));
+}
+
+export interface NewUser {
+  id: string;
+  email: string;
+  name: string;
+  passwordHash: string;
+  isAdministrator: boolean;
+}
+
+/** Adds a person. An address that is known already fails with MariaDB's duplicate-key error. */
+export async function insertUser(user: NewUser, conn: Connection): Promise<void> {
+  await conn('users').insert({
+    id: user.id,
+    email: user.email,
+    name: user.name,
+    password_hash: user.passwordHash,
+    is_administrator: user.isAdministrator,
+    created_at: new Date(),
+  });
+}
+
+/** Roles that a person holds, network by network. */
+export async function listMemberships(userId: string, conn: Connection = pool()): Promise<Membership[]> {
+  return conn('memberships')
+    .where({ user_id: userId })
+    .select({ userId: 'user_id', networkId: 'network_id', role: 'role' });
+}
+
+export async function insertMembership(membership: Membership, conn: Connection): Promise<void> {
+  await conn('memberships').insert({
+    user_id: membership.userId,
+    network_id: membership.networkId,
+    role: membership.role,
+    created_at: new Date(),
+  });
+}
+
+export async function deleteMembership(membership: Membership, conn: Connection): Promise<void> {
+  const { userId, networkId, role } = membership;
+  await conn('memberships').where({ user_id: userId, network_id: networkId, role }).delete();
+}
+
+function userOf(
+  row: (Omit<UserRow, 'isAdministrator'> & { isAdministrator: unknown }) | undefined,
+): UserRow | undefined {
+  return (
+    row && {
+      id: row.id,
+      email: row.email,
+      name: row.name,
+      isAdministrator: Boolean(row.isAdministrator),
+      createdAt: row.createdAt,
+      disabledAt: row.disabledAt,
+    }
+  );
+}
