@@ -1,0 +1,143 @@
+import { appendVarint, readVarint, type VarintReader } from './varint';
+import { MAX_SUM_CENTI_DB, MIN_LEVEL_CENTI_DB } from './levelRange';
+import { centiDbToTenths } from './rounding';
+
+export { MAX_LEVEL_CENTI_DB, MIN_LEVEL_CENTI_DB } from './levelRange';
+
+const LOWEST_TENTHS = MIN_LEVEL_CENTI_DB / 10;
+const HIGHEST_TENTHS = MAX_SUM_CENTI_DB / 10;
+const GROWTH_CLASSES = 32;
+
+/** Samples that an exceedance level needs, times min(N, 100 − N): 30 for L10, 300 for L1. Our own rule. */
+const SAMPLES_TIMES_PERCENT = 300;
+
+/**
+ * Seconds spent in each 0.1 dB class of level: the exact distribution of samples that were rounded half up to tenths, which
+ * merges across periods without loss. Holds only the span of classes that occur.
+ */
+export class LevelClassCounts {
+  #firstTenths = 0;
+  #secs = new Float64Array(0);
+  #totalSec = 0;
+
+  /** Seconds counted. */
+  get totalSec(): number {
+    return this.#totalSec;
+  }
+
+  /** Counts `sec` whole seconds at a level in hundredths of a dB, rounded half up to its class. */
+  add(centiDb: number, sec: number): void {
+    this.addTenths(centiDbToTenths(centiDb), sec);
+  }
+
+  /**
+   * Counts `sec` whole seconds in the class of `tenths`.
+   * @throws RangeError for seconds that are no whole number, or a level outside the stored range.
+   */
+  addTenths(tenths: number, sec: number): void {
+    if (!Number.isInteger(sec) || sec < 0) throw new RangeError(`${sec} is not a whole number of seconds.`);
+    if (!Number.isInteger(tenths) || tenths < LOWEST_TENTHS || tenths > HIGHEST_TENTHS) {
+      throw new RangeError(`${tenths} tenths of a dB is outside the stored range of levels.`);
+    }
+    if (sec === 0) return;
+    const offset = tenths - this.#firstTenths;
+    if (offset < 0 || offset >= this.#secs.length) this.#cover(tenths);
+    const at = tenths - this.#firstTenths;
+    this.#secs[at] = (this.#secs[at] ?? 0) + sec;
+    this.#totalSec += sec;
+  }
+
+  /** Adds another distribution's seconds to this one. */
+  merge(other: LevelClassCounts): void {
+    for (const [tenths, sec] of other.entries()) this.addTenths(tenths, sec);
+  }
+
+  /** The classes that occur with their seconds, as [tenths of a dB, seconds], ascending. */
+  *entries(): Generator<[tenths: number, sec: number]> {
+    for (let i = 0; i < this.#secs.length; i += 1) {
+      const sec = this.#secs[i] ?? 0;
+      if (sec > 0) yield [this.#firstTenths + i, sec];
+    }
+  }
+
+  /**
+   * The N % exceedance level in dB: the smallest level that is exceeded for no more than `percent` % of the time counted
+   * (the inverted distribution, no interpolation). `sampleSec` is the length of the base samples; null where lengths are
+   * mixed, and then, or with fewer than 300/min(N, 100−N) samples, there is no such level: null.
+   * @throws RangeError unless 0 < percent < 100.
+   */
+  exceedanceLevelDb(percent: number, sampleSec: number | null): number | null {
+    const tenths = this.exceededTenths(percent);
+    if (sampleSec === null || tenths === null) return null;
+    const enough = this.#totalSec * Math.min(percent, 100 - percent) >= SAMPLES_TIMES_PERCENT * sampleSec;
+    return enough ? tenths / 10 : null;
+  }
+
+  /** The exceedance level in tenths of a dB by its bare definition, however few the samples; null when nothing is counted. */
+  exceededTenths(percent: number): number | null {
+    if (!(percent > 0 && percent < 100)) throw new RangeError(`${percent} % is not between 0 and 100.`);
+    const allowed = percent * this.#totalSec;
+    let aboveSec = 0;
+    let smallest: number | null = null;
+    for (let i = this.#secs.length - 1; i >= 0; i -= 1) {
+      const sec = this.#secs[i] ?? 0;
+      if (sec === 0) continue;
+      if (aboveSec * 100 > allowed) break;
+      smallest = this.#firstTenths + i;
+      aboveSec += sec;
+    }
+    return smallest;
+  }
+
+  /**
+   * Compact bytes for storage: number of classes, then per class the step from the class before (the first from −30.0 dB)
+   * and the seconds, all LEB128 varints. Equal counts give equal bytes.
+   */
+  encode(): Uint8Array {
+    const bytes: number[] = [];
+    const classes = [...this.entries()];
+    appendVarint(bytes, classes.length);
+    let previous = LOWEST_TENTHS;
+    for (const [tenths, sec] of classes) {
+      appendVarint(bytes, tenths - previous);
+      appendVarint(bytes, sec);
+      previous = tenths;
+    }
+    return Uint8Array.from(bytes);
+  }
+
+  /** @throws RangeError for bytes that `encode` did not make. */
+  static decode(bytes: Uint8Array): LevelClassCounts {
+    const counts = new LevelClassCounts();
+    const reader: VarintReader = { bytes, at: 0 };
+    let tenths = LOWEST_TENTHS;
+    for (let left = readVarint(reader); left > 0; left -= 1) {
+      const step = readVarint(reader);
+      const sec = readVarint(reader);
+      tenths += step;
+      if (sec === 0 || (step === 0 && counts.totalSec > 0))
+        throw new RangeError('Level classes are out of order.');
+      counts.addTenths(tenths, sec);
+    }
+    if (reader.at !== bytes.length) throw new RangeError('Bytes follow the last level class.');
+    return counts;
+  }
+
+  #cover(tenths: number): void {
+    const had = this.#secs.length;
+    const first = had === 0 ? tenths : Math.min(this.#firstTenths, tenths);
+    const end = had === 0 ? tenths + 1 : Math.max(this.#firstTenths + had, tenths + 1);
+    const from = Math.max(
+      LOWEST_TENTHS,
+      first === this.#firstTenths && had > 0 ? first : first - GROWTH_CLASSES,
+    );
+    const to = Math.min(
+      HIGHEST_TENTHS + 1,
+      had > 0 && end === this.#firstTenths + had ? end : end + GROWTH_CLASSES,
+    );
+    const grown = new Float64Array(to - from);
+    if (had > 0) grown.set(this.#secs, this.#firstTenths - from);
+    this.#secs = grown;
+    this.#firstTenths = from;
+  }
+}

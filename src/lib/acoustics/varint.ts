@@ -1,0 +1,28 @@
+/** A place in bytes that varints are read from. */
+export interface VarintReader {
+  bytes: Uint8Array;
+  at: number;
+}
+
+/** Appends a whole number from 0 to 2^53 − 1 as an unsigned LEB128 varint: seven bits a byte, low ones first. */
+export function appendVarint(bytes: number[], value: number): void {
+  let rest = value;
+  while (rest >= 0x80) {
+    bytes.push((rest % 0x80) + 0x80);
+    rest = Math.floor(rest / 0x80);
+  }
+  bytes.push(rest);
+}
+
+/** Reads the varint at `reader.at` and steps past it. @throws RangeError when the bytes end within it or it is too long. */
+export function readVarint(reader: VarintReader): number {
+  let value = 0;
+  for (let scale = 1; scale <= Number.MAX_SAFE_INTEGER; scale *= 0x80) {
+    const byte = reader.bytes[reader.at];
+    if (byte === undefined) throw new RangeError('The bytes end within a number.');
+    reader.at += 1;
+    value += (byte & 0x7f) * scale;
+    if (byte < 0x80) return value;
+  }
+  throw new RangeError('A number is longer than any that is written.');
+}
