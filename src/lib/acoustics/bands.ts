@@ -105,6 +105,6 @@ export function parseBandLabel(text: string): number | undefined {
   const match = LABEL.exec(text.replace(/\s+/g, ''));
   if (!match?.[1]) return undefined;
   const kilo = match[2] !== '';
-  // 3.15 · 1000 is not exactly 3150 in every engine's arithmetic; nominal frequencies have one decimal at most.
+  // Nominal frequencies have one decimal at most; rounding there removes the binary remainder of the product.
   return kilo ? Math.round(Number(match[1]) * 10000) / 10 : Number(match[1]);
 }
