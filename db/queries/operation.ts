@@ -1,0 +1,50 @@
+import { readdirSync } from 'node:fs';
+import { pool, type Connection } from './connection';
+
+/** How the work stands: everything that /readyz and /metrics tell. */
+export interface OperationState {
+  lastTick: Date | null;
+  dirtyQuarters: number;
+  outboxOldestSec: number | null;
+  outboxWaiting: number;
+  outboxDead: number;
+  quarantineOpen: number;
+  pendingMigrations: number;
+}
+
+export async function readOperationState(now: Date, conn: Connection = pool()): Promise<OperationState> {
+  const [tick, dirty, outbox, quarantine, applied] = await Promise.all([
+    conn('job_runs').max({ at: 'started_at' }).first(),
+    conn('dirty_marks')
+      .count({ count: conn.raw('DISTINCT station_id, quarter_starts_at') })
+      .first(),
+    conn('outbox')
+      .whereIn('state', ['waiting', 'dead'])
+      .groupBy('state')
+      .select('state')
+      .count({ count: '*' })
+      .min({ oldest: 'created_at' }),
+    conn('quarantine').whereNull('settled_at').count({ count: '*' }).first(),
+    conn('schema_migrations').count({ count: '*' }).first(),
+  ]);
+  const waiting = outbox.find((row) => row.state === 'waiting');
+  const dead = outbox.find((row) => row.state === 'dead');
+  return {
+    lastTick: tick?.at ?? null,
+    dirtyQuarters: Number(dirty?.count ?? 0),
+    outboxOldestSec: waiting
+      ? Math.max(0, (now.getTime() - new Date(waiting.oldest).getTime()) / 1000)
+      : null,
+    outboxWaiting: Number(waiting?.count ?? 0),
+    outboxDead: Number(dead?.count ?? 0),
+    quarantineOpen: Number(quarantine?.count ?? 0),
+    pendingMigrations: migrationFileCount() - Number(applied?.count ?? 0),
+  };
+}
+
+let fileCount: number | undefined;
+
+function migrationFileCount(): number {
+  fileCount ??= readdirSync('db/migrations').filter((name) => name.endsWith('.mjs')).length;
+  return fileCount;
+}

@@ -1,0 +1,58 @@
+import type { APIContext } from 'astro';
+import { findStation, findStationById, type StationRow } from '#db/queries/stations';
+import { findStationToken } from '#db/queries/stationTokens';
+import { notAllowed, notFound, Problem, signInFirst } from '#lib/http/problem';
+import { enterNetwork, type NetworkAccess } from './networkAccess';
+import { bearerToken } from './requestUser';
+import type { Role } from './roles';
+import type { SignedInUser } from './sessions';
+
+/** The signed-in person. @throws {Problem} 401 */
+export function requireUser(context: Pick<APIContext, 'locals'>): SignedInUser {
+  if (!context.locals.user) throw signInFirst();
+  return context.locals.user;
+}
+
+/** The signed-in administrator. @throws {Problem} 401, 403 */
+export function requireAdministrator(context: Pick<APIContext, 'locals'>): SignedInUser {
+  const user = requireUser(context);
+  if (!user.isAdministrator) throw notAllowed('Only an administrator may do this.');
+  return user;
+}
+
+/** The signed-in person inside a network, for what `roles` may do. @throws {Problem} 401, 403, 404 */
+export async function requireNetwork(
+  context: Pick<APIContext, 'locals'>,
+  slug: string | undefined,
+  roles: readonly Role[],
+): Promise<NetworkAccess> {
+  return enterNetwork(requireUser(context), slug ?? '', roles);
+}
+
+/** A station of the network by its code. @throws {Problem} 404 */
+export async function requireStation(networkId: number, code: string | undefined): Promise<StationRow> {
+  const station = await findStation(networkId, code ?? '');
+  if (!station) throw notFound('The network has no station with this code.');
+  return station;
+}
+
+/** The station whose token a monitor sent. @throws {Problem} 401 */
+export async function requireStationToken(
+  request: Request,
+): Promise<{ tokenId: number; station: StationRow }> {
+  const secret = bearerToken(request);
+  const token = secret === null ? undefined : await findStationToken(secret);
+  const station = token && (await findStationById(token.stationId));
+  if (!token || !station || station.retiredAt) {
+    throw new Problem(
+      401,
+      'bad-token',
+      'Unknown station token',
+      'Send the station’s token that is in force.',
+      {
+        headers: { 'WWW-Authenticate': 'Bearer' },
+      },
+    );
+  }
+  return { tokenId: token.tokenId, station };
+}

@@ -1,0 +1,38 @@
+import type { AstroGlobal } from 'astro';
+import { Problem } from '#lib/http/problem';
+import { enterNetwork, type NetworkAccess } from './networkAccess';
+import { ALL_ROLES, type Role } from './roles';
+import type { SignedInUser } from './sessions';
+
+/**
+ * For a page's frontmatter: the person, or the response to return instead (to sign in, and back here afterwards).
+ */
+export function pageUser(astro: AstroGlobal): SignedInUser | Response {
+  return (
+    astro.locals.user ??
+    astro.redirect(`/sign-in?next=${encodeURIComponent(astro.url.pathname + astro.url.search)}`)
+  );
+}
+
+/** For a page's frontmatter: the person inside a network, or the response to return instead. */
+export async function pageNetwork(
+  astro: AstroGlobal,
+  roles: readonly Role[] = ALL_ROLES,
+): Promise<NetworkAccess | Response> {
+  const user = pageUser(astro);
+  if (user instanceof Response) return user;
+  return orRefusal(astro, () => enterNetwork(user, astro.params['network'] ?? '', roles));
+}
+
+/** Runs a step of a page; a refusal becomes the page that tells it. */
+export async function orRefusal<T>(astro: AstroGlobal, step: () => Promise<T>): Promise<T | Response> {
+  try {
+    return await step();
+  } catch (error) {
+    if (!(error instanceof Problem)) throw error;
+    if (error.status === 404) return astro.rewrite('/404');
+    return astro.rewrite(
+      `/refused?status=${error.status}&detail=${encodeURIComponent(error.detail ?? error.title)}`,
+    );
+  }
+}

@@ -1,0 +1,80 @@
+import { Lucia, TimeSpan } from 'lucia';
+import { config } from '#lib/config/index';
+import { sessionStore } from './sessionStore';
+
+/** The person behind a request. */
+export interface SignedInUser {
+  id: string;
+  email: string;
+  name: string;
+  isAdministrator: boolean;
+}
+
+declare module 'lucia' {
+  interface Register {
+    Lucia: Lucia<Record<never, never>, Omit<SignedInUser, 'id'>>;
+    DatabaseUserAttributes: Omit<SignedInUser, 'id'>;
+  }
+}
+
+/** A cookie to set on the answer. */
+export interface SessionCookie {
+  name: string;
+  value: string;
+  attributes: { httpOnly: true; sameSite: 'lax'; path: '/'; secure: boolean; maxAge?: number };
+}
+
+/**
+ * Everything the rest of the program knows of sessions; Lucia stays behind these four functions.
+ */
+export async function startSession(userId: string): Promise<SessionCookie> {
+  const session = await lucia().createSession(userId, {});
+  return cookie(session.id, config().session.maxDays * 86_400);
+}
+
+/** The person whose session this is, or null when it is unknown, over or the person may no longer sign in. */
+export async function userOfSession(sessionId: string): Promise<SignedInUser | null> {
+  const { user } = await lucia().validateSession(sessionId);
+  return user && { id: user.id, email: user.email, name: user.name, isAdministrator: user.isAdministrator };
+}
+
+/** Ends a session and answers the cookie that clears it from the browser. */
+export async function endSession(sessionId: string | undefined): Promise<SessionCookie> {
+  if (sessionId) await lucia().invalidateSession(sessionId);
+  return cookie('', 0);
+}
+
+/** Name of the session cookie; `__Host-` wherever the public address is https. */
+export function sessionCookieName(): string {
+  return isSecure() ? '__Host-bittern-session' : 'bittern-session';
+}
+
+let instance: ReturnType<typeof makeLucia> | undefined;
+
+function lucia() {
+  instance ??= makeLucia();
+  return instance;
+}
+
+function makeLucia() {
+  return new Lucia(sessionStore, {
+    sessionExpiresIn: new TimeSpan(config().session.idleHours, 'h'),
+    sessionCookie: { name: sessionCookieName(), attributes: { secure: isSecure() } },
+    getUserAttributes: ({ email, name, isAdministrator }) => ({ email, name, isAdministrator }),
+  });
+}
+
+function isSecure(): boolean {
+  return config().origin.startsWith('https:');
+}
+
+function cookie(value: string, maxAgeSec: number): SessionCookie {
+  const attributes = {
+    httpOnly: true,
+    sameSite: 'lax',
+    path: '/',
+    secure: isSecure(),
+    maxAge: maxAgeSec,
+  } as const;
+  return { name: sessionCookieName(), value, attributes };
+}

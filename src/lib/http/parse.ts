@@ -1,0 +1,86 @@
+import type { z } from 'zod';
+import { parseInstant } from '#lib/contracts/common';
+import { badRequest, Problem } from './problem';
+
+const MOST_JSON_BYTES = 1024 * 1024;
+const MOST_PERIOD_SEC = 10 * 366 * 86_400;
+const LATEST_SEC = 4_294_967_295;
+
+/** Reads a small JSON body and validates it. @throws {Problem} 413, 415, 400; zod errors become 422. */
+export async function readJson<T extends z.ZodType>(request: Request, schema: T): Promise<z.output<T>> {
+  const type = request.headers.get('content-type') ?? '';
+  if (!/^application\/json\s*(;|$)/i.test(type)) {
+    throw new Problem(
+      415,
+      'wrong-type',
+      'Wrong content type',
+      'Send JSON with Content-Type: application/json.',
+    );
+  }
+  const text = await request.text();
+  if (text.length > MOST_JSON_BYTES) {
+    throw new Problem(413, 'too-large', 'Too large', 'The body may have at most 1 MiB.');
+  }
+  let body: unknown;
+  try {
+    body = JSON.parse(text);
+  } catch {
+    throw badRequest('The body is not JSON.');
+  }
+  return schema.parse(body);
+}
+
+/** A half-open period, epoch seconds. */
+export interface Period {
+  fromSec: number;
+  toSec: number;
+}
+
+/** The period in `from` and `to` (RFC 3339, any offset). @throws {Problem} 400 with what is wrong. */
+export function parsePeriod(url: URL): Period {
+  const fromSec = instantParameter(url, 'from');
+  const toSec = instantParameter(url, 'to');
+  if (fromSec >= toSec) throw badRequest('`from` must be before `to`.');
+  if (toSec - fromSec > MOST_PERIOD_SEC) throw badRequest('The period may span at most ten years.');
+  return { fromSec, toSec };
+}
+
+function instantParameter(url: URL, name: string): number {
+  const text = url.searchParams.get(name);
+  if (text === null)
+    throw badRequest(`\`${name}\` is missing: give an RFC 3339 time such as 2026-03-01T00:00:00Z.`);
+  // A plus sign that was not escaped in the address arrives as a space.
+  const seconds = parseInstant(text.replace(/ (?=\d{2}:\d{2}$)/, '+'));
+  if (seconds === null || seconds < 0 || seconds > LATEST_SEC) {
+    throw badRequest(`\`${name}\` is not an RFC 3339 time such as 2026-03-01T00:00:00Z.`);
+  }
+  return Math.floor(seconds);
+}
+
+/** A whole number in the query between bounds, or its default. */
+export function parseCount(
+  url: URL,
+  name: string,
+  { fallback, most }: { fallback: number; most: number },
+): number {
+  const text = url.searchParams.get(name);
+  if (text === null) return fallback;
+  const value = /^\d{1,9}$/.test(text) ? Number(text) : 0;
+  if (value < 1 || value > most) throw badRequest(`\`${name}\` must be a whole number from 1 to ${most}.`);
+  return value;
+}
+
+/** The place that a list goes on from, as made by `makeCursor`; null at its beginning. */
+export function parseCursor(url: URL): number[] | null {
+  const text = url.searchParams.get('cursor');
+  if (text === null) return null;
+  const parts = Buffer.from(text, 'base64url').toString('utf8').split('.');
+  if (!parts.every((part) => /^\d{1,15}$/.test(part)))
+    throw badRequest('`cursor` is not one that a list has given.');
+  return parts.map(Number);
+}
+
+/** An opaque cursor of the last item's sorting numbers. */
+export function makeCursor(parts: number[]): string {
+  return Buffer.from(parts.join('.')).toString('base64url');
+}

@@ -1,0 +1,33 @@
+interface Options {
+  status?: number;
+  headers?: Record<string, string>;
+}
+
+/** A JSON answer; private to the caller, never cached by a proxy. */
+export function json(body: unknown, { status = 200, headers = {} }: Options = {}): Response {
+  return new Response(JSON.stringify(body), {
+    status,
+    headers: { 'Content-Type': 'application/json; charset=utf-8', 'Cache-Control': 'no-store', ...headers },
+  });
+}
+
+/** An answer without a body. */
+export function noContent(headers: Record<string, string> = {}): Response {
+  return new Response(null, { status: 204, headers: { 'Cache-Control': 'no-store', ...headers } });
+}
+
+/** A file to download. `fileName` holds letters, digits, dot, hyphen and underscore only. */
+export function download(body: BodyInit, contentType: string, fileName: string): Response {
+  return new Response(body, {
+    headers: {
+      'Content-Type': contentType,
+      'Content-Disposition': `attachment; filename="${fileName.replace(/[^\w.-]/g, '_')}"`,
+      'Cache-Control': 'no-store',
+    },
+  });
+}
+
+/** CSV text (RFC 4180, UTF-8) to download. */
+export function csv(text: string, fileName: string): Response {
+  return download(text, 'text/csv; charset=utf-8; header=present', fileName);
+}

@@ -1,0 +1,70 @@
+import type { APIContext, APIRoute } from 'astro';
+import { ZodError } from 'zod';
+import { log } from './log';
+import { invalidFields, Problem, problemResponse } from './problem';
+
+/** Wraps a handler so that every way out is an answer to the contract: whatever it throws becomes problem details. */
+export function route(handler: (context: APIContext) => Promise<Response> | Response): APIRoute {
+  return async (context) => {
+    try {
+      return await handler(context);
+    } catch (error) {
+      return problemResponse(problemOf(error, context.url.pathname));
+    }
+  };
+}
+
+/** What to tell the caller about an error; an unforeseen one is logged and told without its insides. */
+export function problemOf(error: unknown, path: string): Problem {
+  if (error instanceof Problem) return error;
+  if (error instanceof ZodError) return invalidFields(fieldsOf(error));
+  if (isDatabaseAway(error)) {
+    log().warn({ err: error, path }, 'database away');
+    return new Problem(
+      503,
+      'database-away',
+      'Not possible at the moment',
+      'Keep what you have and try again.',
+      {
+        headers: { 'Retry-After': '10' },
+      },
+    );
+  }
+  log().error({ err: error, path }, 'request failed');
+  return new Problem(500, 'failed', 'Something went wrong here', 'Nothing was changed. It has been noted.');
+}
+
+function fieldsOf(error: ZodError): { field: string; message: string }[] {
+  return error.issues.map((issue) => ({ field: issue.path.join('.'), message: issue.message }));
+}
+
+const AWAY_CODES = new Set([
+  'ECONNREFUSED',
+  'ECONNRESET',
+  'ETIMEDOUT',
+  'EPIPE',
+  'PROTOCOL_CONNECTION_LOST',
+  'PROTOCOL_SEQUENCE_TIMEOUT',
+  'ER_CON_COUNT_ERROR',
+  'ER_SERVER_SHUTDOWN',
+  'ER_CONNECTION_KILLED',
+  'ER_RECORD_FILE_FULL',
+  'ER_DISK_FULL',
+  'ER_LOCK_WAIT_TIMEOUT',
+  'ER_LOCK_DEADLOCK',
+  'ER_OPTION_PREVENTS_STATEMENT',
+]);
+
+/** Whether an error says that the database cannot take anything now (away, full, read-only, stuck), not that the request was wrong. */
+export function isDatabaseAway(error: unknown): boolean {
+  if (!(error instanceof Error)) return false;
+  const { code, fatal } = error as Error & { code?: string; fatal?: boolean };
+  return (
+    AWAY_CODES.has(code ?? '') ||
+    fatal === true ||
+    error.name === 'KnexTimeoutError' ||
+    /Connection lost|closed state|Can't add new command|Unable to acquire a connection|aborted/.test(
+      error.message,
+    )
+  );
+}

@@ -1,0 +1,43 @@
+import { randomUUID } from 'node:crypto';
+import { defineMiddleware } from 'astro:middleware';
+import { userOfRequest } from '#lib/auth/requestUser';
+import { problemResponse } from '#lib/http/problem';
+import { problemOf } from '#lib/http/route';
+import { requireSameOrigin } from '#lib/http/sameOrigin';
+
+const HEADERS = {
+  'X-Content-Type-Options': 'nosniff',
+  'Referrer-Policy': 'same-origin',
+  'X-Frame-Options': 'DENY',
+  'Cross-Origin-Opener-Policy': 'same-origin',
+  'Permissions-Policy': 'camera=(), microphone=(), payment=(), usb=()',
+};
+
+/** Every request: own-origin check, who is asking, and the headers that every answer carries. */
+export const onRequest = defineMiddleware(async (context, next) => {
+  context.locals.requestId = randomUUID();
+  try {
+    requireSameOrigin(context.request);
+    context.locals.user = await userOfRequest(context);
+  } catch (error) {
+    return withHeaders(refusal(error, context.url.pathname), context.locals.requestId);
+  }
+  return withHeaders(await next(), context.locals.requestId);
+});
+
+function refusal(error: unknown, path: string): Response {
+  const problem = problemOf(error, path);
+  if (path.startsWith('/api/')) return problemResponse(problem);
+  const text = `${problem.title}. ${problem.detail ?? ''}\n`;
+  return new Response(text, {
+    status: problem.status,
+    headers: { 'Content-Type': 'text/plain; charset=utf-8', ...problem.extra.headers },
+  });
+}
+
+function withHeaders(response: Response, requestId: string): Response {
+  for (const [name, value] of Object.entries(HEADERS)) response.headers.set(name, value);
+  response.headers.set('X-Request-Id', requestId);
+  if (!response.headers.has('Cache-Control')) response.headers.set('Cache-Control', 'private, no-cache');
+  return response;
+}
