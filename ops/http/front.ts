@@ -1,0 +1,64 @@
+import compression from 'compression';
+import express, { type Express, type Request, type RequestHandler } from 'express';
+import type { Config } from '#lib/config/config';
+
+const MOST_BODY_BYTES = 16 * 1024 * 1024;
+const YEAR_SEC = 365 * 86_400;
+
+type FrontSettings = Pick<Config, 'allowedHosts' | 'trustedProxies'>;
+
+/**
+ * The thin HTTP front before Astro: Host allow-list, proxy trust, a bound on bodies, compression, static files.
+ * Handlers count the bytes of what they read themselves; the bound here stops what announces itself as too large.
+ */
+export function makeFront(astro: RequestHandler, settings: FrontSettings): Express {
+  const front = express();
+  front.disable('x-powered-by');
+  front.set('trust proxy', settings.trustedProxies);
+  front.use(requireKnownHost(settings.allowedHosts));
+  front.use(setClientAddress);
+  front.use(refuseLargeBodies);
+  front.use(compression());
+  front.use(
+    '/_astro',
+    express.static('dist/client/_astro', { immutable: true, maxAge: YEAR_SEC * 1000, fallthrough: false }),
+  );
+  front.use(express.static('dist/client', { index: false, maxAge: 3_600_000 }));
+  front.use(astro);
+  return front;
+}
+
+function requireKnownHost(allowedHosts: string[]): RequestHandler {
+  return (request, response, next) => {
+    if (allowedHosts.includes((request.headers.host ?? '').toLowerCase())) return next();
+    response
+      .status(421)
+      .type('text/plain')
+      .send('This server does not answer under that name (BITTERN_ALLOWED_HOSTS).\n');
+  };
+}
+
+/** Astro believes forwarding headers: it gets the one address that the proxy setting vouches for, and no others. */
+const setClientAddress: RequestHandler = (request: Request, _response, next) => {
+  const address = request.ip ?? '';
+  for (const name of [
+    'forwarded',
+    'x-forwarded-host',
+    'x-forwarded-proto',
+    'x-forwarded-port',
+    'x-real-ip',
+  ]) {
+    delete request.headers[name];
+  }
+  request.headers['x-forwarded-for'] = address;
+  next();
+};
+
+const refuseLargeBodies: RequestHandler = (request, response, next) => {
+  if (Number(request.headers['content-length'] ?? 0) <= MOST_BODY_BYTES) return next();
+  response
+    .status(413)
+    .set('Connection', 'close')
+    .type('application/problem+json')
+    .send(JSON.stringify({ type: 'about:blank', status: 413, code: 'too-large', title: 'Too large' }));
+};

@@ -1,0 +1,44 @@
+import { createServer } from 'node:http';
+import { resolve } from 'node:path';
+import { pathToFileURL } from 'node:url';
+import type { RequestHandler } from 'express';
+import { config } from '#lib/config/index';
+import { log } from '#lib/http/log';
+import { closeDb } from '#db/client';
+import { makeFront } from './front';
+
+const DRAIN_MS = 20_000;
+
+const entryUrl = pathToFileURL(resolve('dist/server/entry.mjs')).href;
+const { handler } = (await import(entryUrl)) as { handler: RequestHandler };
+const { host, port } = config();
+
+const server = createServer(makeFront(handler, config()));
+// A client that dribbles its headers or body holds a connection no longer than this.
+server.headersTimeout = 15_000;
+server.requestTimeout = 120_000;
+server.keepAliveTimeout = 10_000;
+
+server.on('error', (error: NodeJS.ErrnoException) => {
+  const reason =
+    error.code === 'EADDRINUSE' ? `port ${port} is taken; choose another by BITTERN_PORT` : error.message;
+  log().fatal(`web cannot listen on ${host}:${port}: ${reason}`);
+  process.exit(1);
+});
+server.listen(port, host, () => log().info({ host, port }, 'web listens'));
+
+let isDraining = false;
+
+/** Finishes the requests under way, then ends. */
+function drain(signal: string): void {
+  if (isDraining) return;
+  isDraining = true;
+  log().info({ signal }, 'web drains');
+  const lastResort = setTimeout(() => process.exit(0), DRAIN_MS);
+  lastResort.unref();
+  server.close(() => void closeDb().finally(() => process.exit(0)));
+  server.closeIdleConnections();
+}
+
+process.on('SIGTERM', () => drain('SIGTERM'));
+process.on('SIGINT', () => drain('SIGINT'));

@@ -1,0 +1,31 @@
+import { randomBytes } from 'node:crypto';
+import mysql from 'mysql2/promise';
+import { afterAll, beforeAll } from 'vitest';
+import { closeDb, db } from '#db/client';
+
+/** Gives the test file a migrated database of its own, dropped when the file is done. */
+export function useFreshSchema(): void {
+  const name = `bittern_test_${randomBytes(6).toString('hex')}`;
+
+  beforeAll(async () => {
+    process.env['BITTERN_DB_NAME'] = name;
+    await asOwner(`CREATE DATABASE ${name} CHARACTER SET utf8mb4 COLLATE utf8mb4_uca1400_ai_ci`);
+    await db().migrate.latest();
+  });
+
+  afterAll(async () => {
+    await closeDb();
+    await asOwner(`DROP DATABASE IF EXISTS ${name}`);
+  });
+}
+
+async function asOwner(statement: string): Promise<void> {
+  const connection = await mysql.createConnection({
+    host: process.env['BITTERN_DB_HOST'] ?? '127.0.0.1',
+    port: Number(process.env['BITTERN_DB_PORT']),
+    user: process.env['BITTERN_DB_USER'],
+    password: process.env['BITTERN_DB_PASSWORD'],
+  });
+  await connection.query(statement);
+  await connection.end();
+}
