@@ -40,6 +40,7 @@ export interface AccumulatedInterval {
 export class PeriodAccumulator {
   readonly sums: PeriodSums;
   readonly #octaveEnergies = octaveEnergyBuffer();
+  #lastBands: { indices: Int8Array; slots: number[] } | null = null;
 
   /** `bandClasses` also counts the distribution of every band and octave; `from` goes on from stored sums. */
   constructor(options: { bandClasses?: boolean; from?: PeriodSums } = {}) {
@@ -135,15 +136,23 @@ export class PeriodAccumulator {
     }
     if (bandIndices.length === 0 || !noteBandFraction(this.sums, bandFraction, false)) return;
     const { bandEnergySec, bandValidSec, bandClasses } = this.sums;
+    const slots = this.#slotsOf(bandIndices);
     for (let i = 0; i < levelsCentiDb.length; i += 1) {
       const centiDb = levelsCentiDb[i] ?? NO_LEVEL_CENTI_DB;
       if (centiDb === NO_LEVEL_CENTI_DB) continue;
-      const slot = slotOf(bandIndices[i] ?? NaN);
+      const slot = slots[i] ?? NaN;
       bandEnergySec[slot] = (bandEnergySec[slot] ?? 0) + energyOfCentiDb(centiDb) * durationSec;
       bandValidSec[slot] = (bandValidSec[slot] ?? 0) + durationSec;
       bandClasses?.bands[slot]?.add(centiDb, durationSec);
     }
     if (bandClasses && bandFraction === 3) this.#countOctaves(interval);
+  }
+
+  /** Slots of some bands; intervals of one band set share one array of indices, so this is worked out once for them. */
+  #slotsOf(indices: Int8Array): number[] {
+    if (this.#lastBands?.indices !== indices)
+      this.#lastBands = { indices, slots: Array.from(indices, slotOf) };
+    return this.#lastBands.slots;
   }
 
   #countOctaves({ levelsCentiDb, bandIndices, durationSec }: AccumulatedInterval): void {
