@@ -45,7 +45,7 @@ export async function appendAudit(entry: AuditEntry, transaction: Connection): P
 
 /** First row whose digest or predecessor does not fit, or null when the whole chain holds. */
 export async function findAuditBreak(conn: Connection = pool()): Promise<number | null> {
-  let previous = Buffer.alloc(32);
+  let previous: Buffer = Buffer.alloc(32);
   let expectedId = 1;
   const rows = conn('audit_log').orderBy('id').select('*').stream() as AsyncIterable<AuditRow>;
   for await (const row of rows) {

@@ -21,9 +21,11 @@ export async function readOperationState(now: Date, conn: Connection = pool()): 
     conn('outbox')
       .whereIn('state', ['waiting', 'dead'])
       .groupBy('state')
-      .select('state')
-      .count({ count: '*' })
-      .min({ oldest: 'created_at' }),
+      .select<{ state: string; count: number; oldest: Date }[]>(
+        'state',
+        conn.raw('COUNT(*) AS count'),
+        conn.raw('MIN(created_at) AS oldest'),
+      ),
     conn('quarantine').whereNull('settled_at').count({ count: '*' }).first(),
     conn('schema_migrations').count({ count: '*' }).first(),
   ]);
@@ -32,9 +34,7 @@ export async function readOperationState(now: Date, conn: Connection = pool()): 
   return {
     lastTick: tick?.at ?? null,
     dirtyQuarters: Number(dirty?.count ?? 0),
-    outboxOldestSec: waiting
-      ? Math.max(0, (now.getTime() - new Date(waiting.oldest).getTime()) / 1000)
-      : null,
+    outboxOldestSec: waiting ? Math.max(0, (now.getTime() - waiting.oldest.getTime()) / 1000) : null,
     outboxWaiting: Number(waiting?.count ?? 0),
     outboxDead: Number(dead?.count ?? 0),
     quarantineOpen: Number(quarantine?.count ?? 0),

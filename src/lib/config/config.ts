@@ -11,7 +11,16 @@ export interface Config {
   logLevel: string;
   metricsToken: string | null;
   dataDir: string;
-  database: { host: string; port: number; user: string; password: string; name: string; poolMax: number };
+  /** `isOwn`: `ops/start.sh` starts a MariaDB of its own in the data directory. */
+  database: {
+    isOwn: boolean;
+    host: string;
+    port: number;
+    user: string;
+    password: string;
+    name: string;
+    poolMax: number;
+  };
   smtp: {
     host: string;
     port: number;
@@ -21,6 +30,10 @@ export interface Config {
     from: string;
   };
   mapStyleUrls: { light: string; dark: string };
+  /** Local stand-ins for the hosted mail and tile services. */
+  standins: { areStarted: boolean; mailWebPort: number; tilesPort: number };
+  demoPassword: string | null;
+  firstAdministrator: { email: string | null; password: string | null };
   /** 32 bytes that wrap the key of each complaint's personal data. Kept outside backups. */
   personalDataKey: Buffer;
   session: { idleHours: number; maxDays: number };
@@ -52,6 +65,7 @@ export function parseConfig(environment: Record<string, string | undefined>): Co
   const origin = new URL(
     settings.BITTERN_ORIGIN ?? `http://${settings.BITTERN_HOST}:${settings.BITTERN_PORT}`,
   );
+  const tilesUrl = `http://127.0.0.1:${settings.BITTERN_TILES_PORT}`;
   return {
     host: settings.BITTERN_HOST,
     port: settings.BITTERN_PORT,
@@ -62,6 +76,7 @@ export function parseConfig(environment: Record<string, string | undefined>): Co
     metricsToken: settings.BITTERN_METRICS_TOKEN ?? null,
     dataDir: settings.BITTERN_DATA_DIR,
     database: {
+      isOwn: settings.BITTERN_DB_OWN,
       host: settings.BITTERN_DB_HOST,
       port: settings.BITTERN_DB_PORT,
       user: settings.BITTERN_DB_USER,
@@ -77,7 +92,20 @@ export function parseConfig(environment: Record<string, string | undefined>): Co
       password: settings.BITTERN_SMTP_PASSWORD ?? null,
       from: settings.BITTERN_MAIL_FROM,
     },
-    mapStyleUrls: { light: settings.BITTERN_STYLE_LIGHT_URL, dark: settings.BITTERN_STYLE_DARK_URL },
+    mapStyleUrls: {
+      light: settings.BITTERN_STYLE_LIGHT_URL ?? `${tilesUrl}/style/light.json`,
+      dark: settings.BITTERN_STYLE_DARK_URL ?? `${tilesUrl}/style/dark.json`,
+    },
+    standins: {
+      areStarted: settings.BITTERN_STANDINS,
+      mailWebPort: settings.BITTERN_MAIL_WEB_PORT,
+      tilesPort: settings.BITTERN_TILES_PORT,
+    },
+    demoPassword: settings.BITTERN_DEMO_PASSWORD ?? null,
+    firstAdministrator: {
+      email: settings.BITTERN_ADMIN_EMAIL ?? null,
+      password: settings.BITTERN_ADMIN_PASSWORD ?? null,
+    },
     personalDataKey: Buffer.from(settings.BITTERN_PERSONAL_DATA_KEY, 'hex'),
     session: { idleHours: settings.BITTERN_SESSION_IDLE_HOURS, maxDays: settings.BITTERN_SESSION_MAX_DAYS },
   };

@@ -19,6 +19,7 @@ export const settingsSchema = z.object({
   BITTERN_METRICS_TOKEN: z.string().min(16).optional(),
 
   BITTERN_DATA_DIR: z.string().default('.bittern'),
+  BITTERN_DB_OWN: isTrue('true'),
   BITTERN_DB_HOST: z.string().default('127.0.0.1'),
   BITTERN_DB_PORT: port(4330),
   BITTERN_DB_USER: z.string().default('bittern'),
@@ -36,8 +37,15 @@ export const settingsSchema = z.object({
   BITTERN_SMTP_PASSWORD: z.string().optional(),
   BITTERN_MAIL_FROM: z.string().default('Bittern <bittern@merrow.example>'),
 
-  BITTERN_STYLE_LIGHT_URL: url.default('http://127.0.0.1:4331/style/light.json'),
-  BITTERN_STYLE_DARK_URL: url.default('http://127.0.0.1:4331/style/dark.json'),
+  BITTERN_STANDINS: isTrue('true'),
+  BITTERN_MAIL_WEB_PORT: port(4326),
+  BITTERN_TILES_PORT: port(4331),
+  BITTERN_STYLE_LIGHT_URL: url.optional(),
+  BITTERN_STYLE_DARK_URL: url.optional(),
+
+  BITTERN_DEMO_PASSWORD: z.string().min(12, 'must have at least 12 characters').optional(),
+  BITTERN_ADMIN_EMAIL: z.email('must be an e-mail address').optional(),
+  BITTERN_ADMIN_PASSWORD: z.string().min(12, 'must have at least 12 characters').optional(),
 
   BITTERN_PERSONAL_DATA_KEY: z
     .string({ error: 'is required' })

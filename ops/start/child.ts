@@ -1,0 +1,67 @@
+import { spawn, type ChildProcess } from 'node:child_process';
+import { createWriteStream, mkdirSync, type WriteStream } from 'node:fs';
+import { join } from 'node:path';
+
+const FIRST_RESTART_MS = 500;
+const LONGEST_RESTART_MS = 15_000;
+const STEADY_AFTER_MS = 60_000;
+const KILL_AFTER_MS = 25_000;
+
+/** One of Bittern's processes: started again when it dies, until it is told to stop. Its output goes to a log file. */
+export class Child {
+  private process: ChildProcess | undefined;
+  private restarts = 0;
+  private isStopping = false;
+  private readonly log: WriteStream;
+
+  constructor(
+    readonly name: string,
+    private readonly commandArguments: string[],
+    private readonly environment: Record<string, string>,
+    logDirectory: string,
+  ) {
+    mkdirSync(logDirectory, { recursive: true });
+    this.log = createWriteStream(join(logDirectory, `${name}.log`), { flags: 'a' });
+  }
+
+  start(): void {
+    const startedMs = Date.now();
+    const child = spawn(process.execPath, this.commandArguments, {
+      env: { ...process.env, ...this.environment },
+      stdio: ['ignore', 'pipe', 'pipe'],
+      // Ctrl-C reaches the terminal's whole process group; the order of stopping is ours to keep.
+      detached: true,
+    });
+    this.process = child;
+    child.stdout?.pipe(this.log, { end: false });
+    child.stderr?.pipe(this.log, { end: false });
+    child.once('exit', (code, signal) => this.afterExit(startedMs, code, signal));
+  }
+
+  private afterExit(startedMs: number, code: number | null, signal: string | null): void {
+    if (this.isStopping) return;
+    if (Date.now() - startedMs > STEADY_AFTER_MS) this.restarts = 0;
+    const waitMs = Math.min(LONGEST_RESTART_MS, FIRST_RESTART_MS * 2 ** this.restarts);
+    this.restarts += 1;
+    console.log(
+      `${this.name} ended (${signal ?? `exit ${code}`}); starting it again. Its log: ${this.log.path}`,
+    );
+    setTimeout(() => this.isStopping || this.start(), waitMs);
+  }
+
+  /** Process id while it runs. */
+  get pid(): number | undefined {
+    return this.process?.pid;
+  }
+
+  async stop(): Promise<void> {
+    this.isStopping = true;
+    const child = this.process;
+    if (!child || child.exitCode !== null || child.signalCode !== null) return;
+    const ended = new Promise((done) => child.once('exit', done));
+    child.kill('SIGTERM');
+    const lastResort = setTimeout(() => child.kill('SIGKILL'), KILL_AFTER_MS);
+    await ended;
+    clearTimeout(lastResort);
+  }
+}
