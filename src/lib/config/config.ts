@@ -32,7 +32,7 @@ export interface Config {
   mapStyleUrls: { light: string; dark: string };
   /** Local stand-ins for the hosted mail and tile services. */
   standins: { areStarted: boolean; mailWebPort: number; tilesPort: number };
-  demoPassword: string | null;
+  demo: { password: string | null; days: number };
   firstAdministrator: { email: string | null; password: string | null };
   /** 32 bytes that wrap the key of each complaint's personal data. Kept outside backups. */
   personalDataKey: Buffer;
@@ -101,7 +101,7 @@ export function parseConfig(environment: Record<string, string | undefined>): Co
       mailWebPort: settings.BITTERN_MAIL_WEB_PORT,
       tilesPort: settings.BITTERN_TILES_PORT,
     },
-    demoPassword: settings.BITTERN_DEMO_PASSWORD ?? null,
+    demo: { password: settings.BITTERN_DEMO_PASSWORD ?? null, days: settings.BITTERN_DEMO_DAYS },
     firstAdministrator: {
       email: settings.BITTERN_ADMIN_EMAIL ?? null,
       password: settings.BITTERN_ADMIN_PASSWORD ?? null,

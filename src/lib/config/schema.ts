@@ -44,6 +44,7 @@ export const settingsSchema = z.object({
   BITTERN_STYLE_DARK_URL: url.optional(),
 
   BITTERN_DEMO_PASSWORD: z.string().min(12, 'must have at least 12 characters').optional(),
+  BITTERN_DEMO_DAYS: z.coerce.number().int().min(2).max(400).default(70),
   BITTERN_ADMIN_EMAIL: z.email('must be an e-mail address').optional(),
   BITTERN_ADMIN_PASSWORD: z.string().min(12, 'must have at least 12 characters').optional(),
 

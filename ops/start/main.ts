@@ -1,0 +1,122 @@
+import { join } from 'node:path';
+import { SettingsError, type Config } from '#lib/config/config';
+import { config } from '#lib/config/index';
+import { closeDb, db } from '#db/client';
+import { DEFAULT_DEMO_PASSWORD, DEMO_ACCOUNTS } from '#ops/demo/accounts';
+import { seedDemo } from '#ops/demo/seed';
+import { Child } from './child';
+import { ensureFirstAdministrator, hasPeople } from './firstAdministrator';
+import { ensureDatabase, OwnDatabase } from './ownDatabase';
+import { takenPorts } from './ports';
+import { ensureSecrets } from './secrets';
+import { untilAnswers } from './untilAnswers';
+
+const isEmpty = process.argv.includes('--empty');
+const stoppers: (() => Promise<void>)[] = [];
+let isStopping = false;
+
+process.on('SIGINT', () => void stopAll(0));
+process.on('SIGTERM', () => void stopAll(0));
+
+try {
+  await start();
+} catch (error) {
+  console.error(
+    error instanceof SettingsError
+      ? error.message
+      : error instanceof Error
+        ? (error.stack ?? error.message)
+        : error,
+  );
+  await stopAll(1);
+}
+
+async function start(): Promise<void> {
+  ensureSecrets(process.env['BITTERN_DATA_DIR'] || '.bittern', process.env);
+  const settings = config();
+  const isDemo = !isEmpty;
+  const taken = await takenPorts(settings);
+  if (taken.length > 0) throw new SettingsError(taken);
+
+  await startDatabase(settings);
+  const people = await hasPeople();
+  if (isEmpty && !people) await ensureFirstAdministrator(settings.firstAdministrator);
+  if (isDemo) requireSafeDemo(settings);
+  await startStandIns(settings);
+  if (isDemo && !people) {
+    console.log('Making the demo: the Merrow estuary, 70 days up to now …');
+    await seedDemo(settings, (line) => console.log(`  ${line}`));
+  }
+  await closeDb();
+
+  run(settings, 'worker', ['--import', 'tsx', 'ingest/worker.ts']);
+  run(settings, 'web', ['--import', 'tsx', 'ops/http/server.ts']);
+  await untilAnswers(`http://${settings.host}:${settings.port}/healthz`, 60_000);
+  if (isDemo) run(settings, 'monitors', ['--import', 'tsx', 'ops/demo/monitors.ts']);
+  tell(settings, isDemo);
+}
+
+async function startDatabase(settings: Config): Promise<void> {
+  if (settings.database.isOwn) {
+    const database = new OwnDatabase(settings);
+    stoppers.push(() => database.stop());
+    await database.start();
+  }
+  await ensureDatabase(settings);
+  await db().migrate.latest();
+}
+
+async function startStandIns(settings: Config): Promise<void> {
+  if (!settings.standins.areStarted) return;
+  const { standins, smtp, dataDir } = settings;
+  run(settings, 'tiles', ['--import', 'tsx', 'ops/standins/tiles/server.ts'], {
+    BITTERN_TILES_PORT: String(standins.tilesPort),
+  });
+  run(settings, 'mail', ['--import', 'tsx', 'ops/standins/mail/server.ts'], {
+    BITTERN_MAIL_SMTP_PORT: String(smtp.port),
+    BITTERN_MAIL_WEB_PORT: String(standins.mailWebPort),
+    BITTERN_MAIL_DIR: join(dataDir, 'mail'),
+  });
+}
+
+function run(
+  settings: Config,
+  name: string,
+  command: string[],
+  environment: Record<string, string> = {},
+): void {
+  const child = new Child(name, command, environment, join(settings.dataDir, 'log'));
+  stoppers.push(() => child.stop());
+  child.start();
+}
+
+/** With the password that is printed for everybody to read, the demo stays on this machine. */
+function requireSafeDemo({ host, demo }: Config): void {
+  const isLoopback = host === 'localhost' || host === '::1' || host.startsWith('127.');
+  if (!isLoopback && (demo.password ?? DEFAULT_DEMO_PASSWORD) === DEFAULT_DEMO_PASSWORD) {
+    throw new SettingsError([
+      'BITTERN_DEMO_PASSWORD: the demo does not listen beyond loopback with its default password; set another, or start with --empty',
+    ]);
+  }
+}
+
+function tell(settings: Config, isDemo: boolean): void {
+  console.log(`\nBittern is at ${settings.origin}`);
+  if (isDemo) {
+    console.log(`Demo accounts, password ${settings.demo.password ?? DEFAULT_DEMO_PASSWORD}:`);
+    for (const { email, does } of DEMO_ACCOUNTS) console.log(`  ${email.padEnd(28)} ${does}`);
+  }
+  if (settings.standins.areStarted) {
+    console.log(`Mail that Bittern sends arrives at http://127.0.0.1:${settings.standins.mailWebPort}`);
+  }
+  console.log(`Logs are in ${join(settings.dataDir, 'log')}. Ctrl-C stops everything.`);
+}
+
+async function stopAll(exitCode: number): Promise<void> {
+  if (isStopping) return;
+  isStopping = true;
+  if (exitCode === 0) console.log('\nStopping …');
+  await closeDb().catch(() => undefined);
+  for (const stop of stoppers.reverse()) await stop().catch((error: Error) => console.error(error.message));
+  process.exit(exitCode);
+}
