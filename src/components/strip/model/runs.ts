@@ -1,0 +1,30 @@
+/** A stretch of time in which something holds, epoch seconds, half-open. */
+export interface Run {
+  fromSec: number;
+  toSec: number;
+}
+
+/** Stretches of consecutive columns for which `holds` is true. */
+export function runsWhere(
+  { fromSec, stepSec, count }: { fromSec: number; stepSec: number; count: number },
+  holds: (index: number) => boolean,
+): Run[] {
+  const runs: Run[] = [];
+  let startedAt: number | null = null;
+  for (let i = 0; i <= count; i += 1) {
+    const inside = i < count && holds(i);
+    if (inside && startedAt === null) startedAt = i;
+    if (!inside && startedAt !== null) {
+      runs.push({ fromSec: fromSec + startedAt * stepSec, toSec: fromSec + i * stepSec });
+      startedAt = null;
+    }
+  }
+  return runs;
+}
+
+/** The part of a run that lies within another stretch, or null. */
+export function clipRun(run: Run, within: Run): Run | null {
+  const fromSec = Math.max(run.fromSec, within.fromSec);
+  const toSec = Math.min(run.toSec, within.toSec);
+  return fromSec < toSec ? { fromSec, toSec } : null;
+}
