@@ -1,5 +1,5 @@
 import { spawn, type ChildProcess } from 'node:child_process';
-import { createWriteStream, mkdirSync, type WriteStream } from 'node:fs';
+import { createWriteStream, mkdirSync, rmSync, writeFileSync, type WriteStream } from 'node:fs';
 import { join } from 'node:path';
 
 const FIRST_RESTART_MS = 500;
@@ -7,21 +7,28 @@ const LONGEST_RESTART_MS = 15_000;
 const STEADY_AFTER_MS = 60_000;
 const KILL_AFTER_MS = 25_000;
 
-/** One of Bittern's processes: started again when it dies, until it is told to stop. Its output goes to a log file. */
+/**
+ * One of Bittern's processes: started again when it dies, until it is told to stop. Its output goes to `log/` and its process
+ * id to `run/` of the data directory.
+ */
 export class Child {
   private process: ChildProcess | undefined;
   private restarts = 0;
   private isStopping = false;
   private readonly log: WriteStream;
+  private readonly pidPath: string;
 
   constructor(
     readonly name: string,
     private readonly commandArguments: string[],
     private readonly environment: Record<string, string>,
-    logDirectory: string,
+    dataDirectory: string,
   ) {
+    const [logDirectory, runDirectory] = [join(dataDirectory, 'log'), join(dataDirectory, 'run')];
     mkdirSync(logDirectory, { recursive: true });
+    mkdirSync(runDirectory, { recursive: true });
     this.log = createWriteStream(join(logDirectory, `${name}.log`), { flags: 'a' });
+    this.pidPath = join(runDirectory, `${name}.pid`);
   }
 
   start(): void {
@@ -33,6 +40,7 @@ export class Child {
       detached: true,
     });
     this.process = child;
+    writeFileSync(this.pidPath, `${child.pid ?? ''}\n`);
     child.stdout?.pipe(this.log, { end: false });
     child.stderr?.pipe(this.log, { end: false });
     child.once('exit', (code, signal) => this.afterExit(startedMs, code, signal));
@@ -49,11 +57,6 @@ export class Child {
     setTimeout(() => this.isStopping || this.start(), waitMs);
   }
 
-  /** Process id while it runs. */
-  get pid(): number | undefined {
-    return this.process?.pid;
-  }
-
   async stop(): Promise<void> {
     this.isStopping = true;
     const child = this.process;
@@ -63,5 +66,6 @@ export class Child {
     const lastResort = setTimeout(() => child.kill('SIGKILL'), KILL_AFTER_MS);
     await ended;
     clearTimeout(lastResort);
+    rmSync(this.pidPath, { force: true });
   }
 }

@@ -85,7 +85,7 @@ function run(
   command: string[],
   environment: Record<string, string> = {},
 ): void {
-  const child = new Child(name, command, environment, join(settings.dataDir, 'log'));
+  const child = new Child(name, command, environment, settings.dataDir);
   stoppers.push(() => child.stop());
   child.start();
 }

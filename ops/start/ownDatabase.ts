@@ -31,11 +31,6 @@ export class OwnDatabase {
     }, RESTART_MS);
   }
 
-  /** Process id while it runs. */
-  get pid(): number | undefined {
-    return this.server?.process.pid;
-  }
-
   async stop(): Promise<void> {
     this.isStopping = true;
     await this.server?.stop();

@@ -1,0 +1,23 @@
+import { inject } from 'vitest';
+
+/** Signs a demo account in through the interface and answers a caller that carries its session. */
+export async function signedInFetch(email: string) {
+  const origin = inject('origin');
+  const session = await fetch(`${origin}/api/v1/session`, {
+    method: 'POST',
+    headers: { 'Content-Type': 'application/json' },
+    body: JSON.stringify({ email, password: inject('demoPassword') }),
+  });
+  if (session.status !== 204) throw new Error(`Sign-in failed: ${session.status} ${await session.text()}`);
+  const cookie = session.headers
+    .getSetCookie()
+    .map((value) => value.split(';')[0])
+    .join('; ');
+
+  return (method: string, path: string, body?: unknown): Promise<Response> =>
+    fetch(`${origin}${path}`, {
+      method,
+      headers: { Cookie: cookie, ...(body === undefined ? {} : { 'Content-Type': 'application/json' }) },
+      body: body === undefined ? null : JSON.stringify(body),
+    });
+}
