@@ -330,6 +330,23 @@ describe('London, 60 days (fixtures/london/expected_london.json)', () => {
     );
   });
 
+  test('exceedances by night and by Lden leave out periods below 75 % coverage', () => {
+    const nights = expected.nights.filter((night) => {
+      const figures = between(sec(night.start_utc), sec(night.end_utc));
+      const coverage = figures.sums.validSec / 60 / night.elapsed_min;
+      return coverage >= 0.75 && toTenths(figures.laeqDb() ?? -Infinity) > 560;
+    });
+    expect(nights.map((night) => night.night_of)).toEqual(expected.exceedances['night_LAeq_gt_56.0']);
+    const days = expected.acoustic_days.filter(({ date }) => {
+      const levels = { day: null, evening: null, night: null, ...levelsOfPeriods(date) };
+      const isCovered = periodsOf(date, DEFAULT_SCHEME, ZONE).every(
+        ({ fromSec, toSec }) => between(fromSec, toSec).sums.validSec >= 0.75 * (toSec - fromSec),
+      );
+      return isCovered && toTenths(ldenDb(DEFAULT_SCHEME, levels) ?? -Infinity) > 660;
+    });
+    expect(days.map((day) => day.date)).toEqual(expected.exceedances['day_Lden_gt_66.0']);
+  });
+
   test('the clock of the wall at both sides of the change', () => {
     expect(localMinuteAt(sec('2026-03-29T00:59Z'), ZONE)).toBe(59);
     expect(localMinuteAt(sec('2026-03-29T01:00Z'), ZONE)).toBe(120);

@@ -60,7 +60,7 @@ export function noiseRating(
   const governing = rest.reduce((highest, band) => (band.nr > highest.nr ? band : highest), first);
   return {
     exact: governing.nr,
-    nr: Math.ceil(governing.nr - ON_CURVE_SLACK),
+    nr: Math.ceil(governing.nr - ON_CURVE_SLACK) + 0, // + 0: never −0
     governingIndex: governing.bandIndex,
     isAtLeast: perBand.length < NR_CURVES.length,
     perBand,

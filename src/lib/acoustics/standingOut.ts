@@ -1,8 +1,7 @@
-import { bandAt, bandSlot, type Band, type BandFraction } from './bands';
-import { levelOfEnergyDb } from './energy';
+import { bandAt, type BandFraction } from './bands';
 import { toTenths } from './rounding';
+import { SpectrumLevels, type LevelsOfBands } from './spectrumLevels';
 import { assessTonality, type TonalAssessment } from './tonality';
-import { aWeightOfBandDb } from './weighting';
 
 /** Why a range stands out: a tone, a tone split over two thirds, louder than both neighbours, louder than usual. */
 export type StandingOutReason = 'tone' | 'tone-on-edge' | 'above-neighbours' | 'above-usual';
@@ -33,12 +32,8 @@ export interface StandingOutBounds {
 
 export const STANDING_OUT_BOUNDS: StandingOutBounds = { neighboursDb: 3, usualDb: 5 };
 
-/** An unweighted mean spectrum, levels in dB beside bands (null = none), with the usual levels of the same bands if known. */
-export interface ExaminedSpectrum {
-  fraction: BandFraction;
-  bands: readonly Pick<Band, 'index'>[];
-  levelsDb: readonly (number | null)[];
-  usualDb?: readonly (number | null)[];
+/** A mean spectrum to be examined. */
+export interface ExaminedSpectrum extends LevelsOfBands {
   /** Seconds of valid data that the spectrum is the mean of. */
   averagedSec: number;
 }
@@ -67,7 +62,9 @@ export function standingOut(
 ): StandingOut {
   const levels = new SpectrumLevels(spectrum);
   const tonality = assessTonality(spectrum.fraction, spectrum.levelsDb, spectrum.bands, spectrum.averagedSec);
-  const ranges = candidatesOf(levels, tonality, bounds).map((candidate) => levels.describe(candidate));
+  const ranges = candidatesOf(levels, tonality, bounds).map((candidate) =>
+    describe(candidate, levels, spectrum.fraction),
+  );
   return { tonality, ranges: ranges.sort(byTelling) };
 }
 
@@ -117,75 +114,22 @@ function byTelling(a: StandingOutRange, b: StandingOutRange): number {
   return rank(a) - rank(b) || excessDb(b) - excessDb(a);
 }
 
-/** Levels of one spectrum by band index, and sums and differences over ranges of them. */
-class SpectrumLevels {
-  /** Distance of adjacent band indices. */
-  readonly step: number;
-  /** Band indices that have a level, ascending. */
-  readonly indices: number[];
-  readonly #fraction: BandFraction;
-  readonly #levelDb = new Map<number, number>();
-  readonly #usualDb = new Map<number, number>();
-
-  constructor({ fraction, bands, levelsDb, usualDb }: ExaminedSpectrum) {
-    this.#fraction = fraction;
-    this.step = fraction === 3 ? 1 : 3;
-    bands.forEach(({ index }, i) => {
-      const levelDb = levelsDb[i] ?? null;
-      const usualLevelDb = usualDb?.[i] ?? null;
-      if (levelDb !== null) this.#levelDb.set(index, levelDb);
-      if (usualLevelDb !== null) this.#usualDb.set(index, usualLevelDb);
-    });
-    this.indices = [...this.#levelDb.keys()].sort((a, b) => bandSlot(a) - bandSlot(b));
-  }
-
-  excessOverNeighboursDb(lowerIndex: number, upperIndex: number): number | null {
-    const below = this.#levelDb.get(lowerIndex - this.step);
-    const above = this.#levelDb.get(upperIndex + this.step);
-    const levelDb = this.#sumDb(this.#levelDb, lowerIndex, upperIndex);
-    return below === undefined || above === undefined || levelDb === null
-      ? null
-      : levelDb - Math.max(below, above);
-  }
-
-  excessOverUsualDb(lowerIndex: number, upperIndex: number): number | null {
-    const levelDb = this.#sumDb(this.#levelDb, lowerIndex, upperIndex);
-    const usualDb = this.#sumDb(this.#usualDb, lowerIndex, upperIndex);
-    return levelDb === null || usualDb === null ? null : levelDb - usualDb;
-  }
-
-  describe({ lowerIndex, upperIndex, reasons }: Candidate): StandingOutRange {
-    const levelDb = this.#sumDb(this.#levelDb, lowerIndex, upperIndex);
-    if (levelDb === null) throw new RangeError(`Bands ${lowerIndex} to ${upperIndex} have no level.`);
-    return {
-      fromHz: bandAt(this.#fraction, lowerIndex).lowerHz,
-      toHz: bandAt(this.#fraction, upperIndex).upperHz,
-      lowerIndex,
-      upperIndex,
-      reasons,
-      levelDb,
-      excessOverNeighboursDb: this.excessOverNeighboursDb(lowerIndex, upperIndex),
-      excessOverUsualDb: this.excessOverUsualDb(lowerIndex, upperIndex),
-      aShare: this.#aEnergy(lowerIndex, upperIndex) / this.#aEnergy(-Infinity, Infinity),
-    };
-  }
-
-  #sumDb(levelsDb: ReadonlyMap<number, number>, lowerIndex: number, upperIndex: number): number | null {
-    let energy = 0;
-    for (let index = lowerIndex; index <= upperIndex; index += this.step) {
-      const levelDb = levelsDb.get(index);
-      if (levelDb === undefined) return null;
-      energy += 10 ** (levelDb / 10);
-    }
-    return levelOfEnergyDb(energy);
-  }
-
-  #aEnergy(lowerIndex: number, upperIndex: number): number {
-    let energy = 0;
-    for (const [index, levelDb] of this.#levelDb) {
-      if (lowerIndex <= index && index <= upperIndex)
-        energy += 10 ** ((levelDb + aWeightOfBandDb(index)) / 10);
-    }
-    return energy;
-  }
+function describe(
+  { lowerIndex, upperIndex, reasons }: Candidate,
+  levels: SpectrumLevels,
+  fraction: BandFraction,
+): StandingOutRange {
+  const levelDb = levels.levelDb(lowerIndex, upperIndex);
+  if (levelDb === null) throw new RangeError(`Bands ${lowerIndex} to ${upperIndex} have no level.`);
+  return {
+    fromHz: bandAt(fraction, lowerIndex).lowerHz,
+    toHz: bandAt(fraction, upperIndex).upperHz,
+    lowerIndex,
+    upperIndex,
+    reasons,
+    levelDb,
+    excessOverNeighboursDb: levels.excessOverNeighboursDb(lowerIndex, upperIndex),
+    excessOverUsualDb: levels.excessOverUsualDb(lowerIndex, upperIndex),
+    aShare: levels.aShare(lowerIndex, upperIndex),
+  };
 }
