@@ -33,6 +33,13 @@ describe('figures of a selection from the screen', () => {
     expect(estimateFigures([columnsOf(levels)], run, 10, LATER)?.la90Db).toBeNull();
   });
 
+  it('go on over the seam of two tiles', () => {
+    const layers = [columnsOf([50, 50]), columnsOf([60, 60], { fromSec: 120 })];
+    const figures = estimateFigures(layers, { fromSec: 60, toSec: 180 }, 60, LATER);
+    expect(figures?.laeqDb).toBeCloseTo(energyMeanDb([50, 60]) ?? 0, 9);
+    expect(figures).toMatchObject({ expectedSec: 120, validSec: 120 });
+  });
+
   it('are not given where the screen does not hold the whole stretch', () => {
     expect(estimateFigures([columnsOf([50])], { fromSec: 0, toSec: 120 }, 60, LATER)).toBeNull();
   });

@@ -31,10 +31,10 @@ describe('the validity strip', () => {
     expect(lane(lanes, 'late')?.runs).toEqual([{ fromSec: 240, toSec: 300 }]);
   });
 
-  it('joins what two layers tell on both sides of a seam, the finer one counting', () => {
+  it('joins what two layers tell on both sides of a seam, the first one counting', () => {
     const coarse = columnsOf([60, 60], { stepSec: 600 });
     const fine = columnsOf([60, null], { fromSec: 600, stepSec: 300 });
-    const [data] = lanesOf([coarse, fine], { fromSec: 0, toSec: 1200 }, 5000);
+    const [data] = lanesOf([fine, coarse], { fromSec: 0, toSec: 1200 }, 5000);
     expect(data?.runs).toEqual([{ fromSec: 0, toSec: 900 }]);
     expect(data?.missing).toEqual([{ fromSec: 900, toSec: 1200 }]);
   });

@@ -26,10 +26,10 @@ describe('columns on pixels', () => {
     expect([...pixels.isKnown]).toEqual([1, 1, 1, 0]);
   });
 
-  it('prefers the finest layer where layers overlap and keeps the coarse one elsewhere', () => {
+  it('prefers the first layer where layers overlap and keeps the other elsewhere', () => {
     const coarse = columnsOf([70, 70], { stepSec: 600 });
     const fine = columnsOf([50, 51], { fromSec: 600, stepSec: 60 });
-    const pixels = pixelColumns([coarse, fine], { fromSec: 0, toSec: 1200 }, 20);
+    const pixels = pixelColumns([fine, coarse], { fromSec: 0, toSec: 1200 }, 20);
     expect(pixels.laeqCentiDb[9]).toBe(7000);
     expect([...pixels.laeqCentiDb.slice(10, 13)]).toEqual([5000, 5100, 7000]);
   });

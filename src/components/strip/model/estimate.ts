@@ -1,8 +1,10 @@
+import { type Band } from '#lib/acoustics/bands';
 import { LevelClassCounts } from '#lib/acoustics/classCounts';
 import { energyOfCentiDb, levelOfEnergyDb } from '#lib/acoustics/energy';
 import { NO_LEVEL_CENTI_DB } from '#lib/acoustics/levelRange';
 import { type Run } from './runs';
-import { endOfColumnsSec, type StripColumns } from './stripColumns';
+import { type StripColumns } from './stripColumns';
+import { visibleParts } from './visibleParts';
 
 /** Figures of a selection. Levels in dB, null where nothing contributes. */
 export interface SelectionFigures {
@@ -13,6 +15,8 @@ export interface SelectionFigures {
   lafmaxDb: number | null;
   la10Db: number | null;
   la90Db: number | null;
+  bands: readonly Band[];
+  /** Beside `bands`, unweighted. */
   bandLeqDb: (number | null)[];
 }
 
@@ -31,17 +35,20 @@ export function estimateFigures(
   intervalSec: number,
   nowSec: number,
 ): SelectionFigures | null {
-  const columns = [...layers]
-    .sort((a, b) => a.stepSec - b.stepSec)
-    .find((l) => l.fromSec <= run.fromSec && endOfColumnsSec(l) >= Math.min(run.toSec, nowSec));
-  if (!columns) return null;
-  const sums = new Sums(columns.bands.length);
-  const first = Math.floor((run.fromSec - columns.fromSec) / columns.stepSec);
-  const end = Math.min(columns.count, Math.ceil((run.toSec - columns.fromSec) / columns.stepSec));
-  for (let at = first; at < end; at += 1) sums.addColumn(columns, at, run);
-  const expectedSec = Math.max(0, Math.min(run.toSec, nowSec) - run.fromSec);
-  const sampleSec = columns.stepSec === intervalSec ? intervalSec : null;
-  return { expectedSec: Math.round(expectedSec), ...sums.figures(sampleSec) };
+  const elapsed = { fromSec: run.fromSec, toSec: Math.min(run.toSec, Math.ceil(nowSec)) };
+  const expectedSec = Math.max(0, elapsed.toSec - elapsed.fromSec);
+  const parts = visibleParts(layers, elapsed);
+  const heldSec = parts.reduce((sum, { within }) => sum + within.toSec - within.fromSec, 0);
+  const bands = parts[0]?.columns.bands;
+  if (heldSec < expectedSec || !bands) return null;
+  const sums = new Sums(bands.length);
+  for (const { columns, within } of parts) {
+    const first = Math.floor((within.fromSec - columns.fromSec) / columns.stepSec);
+    const end = Math.ceil((within.toSec - columns.fromSec) / columns.stepSec);
+    for (let at = first; at < end; at += 1) sums.addColumn(columns, at, within);
+  }
+  const isOfIntervals = parts.every(({ columns }) => columns.stepSec === intervalSec);
+  return { bands, expectedSec, ...sums.figures(isOfIntervals ? intervalSec : null) };
 }
 
 class Sums {
@@ -72,7 +79,7 @@ class Sums {
     this.#addBands(columns, at, sec);
   }
 
-  figures(sampleSec: number | null): Omit<SelectionFigures, 'expectedSec'> {
+  figures(sampleSec: number | null): Omit<SelectionFigures, 'expectedSec' | 'bands'> {
     return {
       validSec: this.#validSec,
       laeqDb: meanDb(this.#energySec, this.#validSec),

@@ -1,7 +1,8 @@
 import { FLAGS, INVALIDITY_REASONS, type InvalidityReason } from '#lib/acoustics/validity';
 import { clipRun, runsWhere, type Run } from './runs';
-import { endOfColumnsSec, type StripColumns } from './stripColumns';
+import { type StripColumns } from './stripColumns';
 import { type TimeView } from './timeView';
+import { visibleParts } from './visibleParts';
 
 export type LaneKey = 'data' | 'left-out' | 'wind' | 'rain' | 'late';
 
@@ -29,7 +30,7 @@ export function reasonsOfMask(mask: number): InvalidityReason[] {
 }
 
 /**
- * The validity strip's rows over the layers' time; where layers overlap the finest counts. `nowSec`: what has not happened yet
+ * The validity strip's rows over the layers' time; where layers overlap the first one counts. `nowSec`: what has not happened yet
  * is no gap.
  */
 export function lanesOf(layers: readonly StripColumns[], view: TimeView, nowSec: number): Lane[] {
@@ -68,26 +69,6 @@ export function lanesOf(layers: readonly StripColumns[], view: TimeView, nowSec:
       missing: [],
     },
   ];
-}
-
-/** For each stretch of the view the finest layer that shows it. */
-function visibleParts(
-  layers: readonly StripColumns[],
-  view: TimeView,
-): { columns: StripColumns; within: Run }[] {
-  const finestFirst = [...layers].sort((a, b) => a.stepSec - b.stepSec);
-  const edges = new Set([view.fromSec, view.toSec]);
-  for (const layer of layers) {
-    for (const edge of [layer.fromSec, endOfColumnsSec(layer)]) {
-      if (edge > view.fromSec && edge < view.toSec) edges.add(edge);
-    }
-  }
-  const ordered = [...edges].sort((a, b) => a - b);
-  return ordered.slice(1).flatMap((toSec, at) => {
-    const fromSec = ordered[at] ?? toSec;
-    const columns = finestFirst.find((l) => l.fromSec <= fromSec && toSec <= endOfColumnsSec(l));
-    return columns ? [{ columns, within: { fromSec, toSec } }] : [];
-  });
 }
 
 /** Runs in order of time, those that touch made one. */

@@ -20,21 +20,20 @@ export interface PixelColumns {
 }
 
 /**
- * Resamples columns to the pixels of an axis. Where layers overlap the one with the shortest step shows, so a coarse picture
- * stays until the fine one is there. A pixel that is shorter than a column shows the column (nearest neighbour); one that
+ * Resamples columns to the pixels of an axis. Where layers overlap the first one of the list shows, so that the
+ * old picture stays until the wanted one is there. A pixel that is shorter than a column shows the column (nearest neighbour); one that
  * spans several shows their energy mean and, for LAeq, their range. Layers must have the same bands.
  */
 export function pixelColumns(layers: readonly StripColumns[], view: TimeView, widthPx: number): PixelColumns {
   const bands = layers[0]?.bands ?? [];
   const pixels = emptyPixels(widthPx, bands);
-  const finestFirst = [...layers].sort((a, b) => a.stepSec - b.stepSec);
   const energies = new Float64Array(bands.length);
   const counts = new Uint32Array(bands.length);
   const pixelSec = spanSec(view) / widthPx;
   for (let px = 0; px < widthPx; px += 1) {
     const fromSec = view.fromSec + px * pixelSec;
     const middleSec = fromSec + pixelSec / 2;
-    const layer = finestFirst.find((l) => l.fromSec <= middleSec && middleSec < endOfColumnsSec(l));
+    const layer = layers.find((l) => l.fromSec <= middleSec && middleSec < endOfColumnsSec(l));
     if (!layer) continue;
     pixels.isKnown[px] = 1;
     const range = columnsOfPixel(layer, fromSec, pixelSec);

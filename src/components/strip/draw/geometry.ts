@@ -1,0 +1,48 @@
+/** A rectangle in CSS pixels from the strip's top left. */
+export interface Rect {
+  x: number;
+  y: number;
+  width: number;
+  height: number;
+}
+
+/** Where the parts of the strip lie. They share `x` and `width`: one time axis. */
+export interface StripGeometry {
+  width: number;
+  height: number;
+  isNarrow: boolean;
+  spectrogram: Rect;
+  marks: Rect;
+  trace: Rect;
+  lanes: Rect;
+  laneHeight: number;
+  axis: Rect;
+}
+
+export const LANES = 5;
+const NARROW_PX = 560;
+
+/** The parts for a strip `width` CSS pixels wide: less tall and with a thinner margin where it is narrow. */
+export function stripGeometry(width: number): StripGeometry {
+  const isNarrow = width < NARROW_PX;
+  const left = isNarrow ? 44 : 56;
+  const plotWidth = Math.max(80, width - left - 1);
+  const laneHeight = 15;
+  const part = (y: number, height: number): Rect => ({ x: left, y, width: plotWidth, height });
+  const spectrogram = part(0, isNarrow ? 232 : 310);
+  const marks = part(spectrogram.height, 18);
+  const trace = part(marks.y + marks.height, isNarrow ? 130 : 158);
+  const lanes = part(trace.y + trace.height + 10, LANES * laneHeight);
+  const axis = part(lanes.y + lanes.height + 4, 24);
+  return {
+    width,
+    height: axis.y + axis.height,
+    isNarrow,
+    spectrogram,
+    marks,
+    trace,
+    lanes,
+    laneHeight,
+    axis,
+  };
+}

@@ -1,0 +1,68 @@
+import { type Palette } from './palette';
+import { type Rect } from './geometry';
+
+/** A canvas being drawn on, with what every part of the drawing needs. Coordinates are CSS pixels unless told otherwise. */
+export interface Surface {
+  context: CanvasRenderingContext2D;
+  /** Device pixels in a CSS pixel. */
+  ratio: number;
+  palette: Palette;
+}
+
+const FONT = "'Noto Sans', sans-serif";
+
+/** Rectangle in device pixels, on whole ones. */
+export function onDevice(rect: Rect, ratio: number): Rect {
+  const x = Math.round(rect.x * ratio);
+  const y = Math.round(rect.y * ratio);
+  return {
+    x,
+    y,
+    width: Math.round((rect.x + rect.width) * ratio) - x,
+    height: Math.round((rect.y + rect.height) * ratio) - y,
+  };
+}
+
+/** Runs `draw` in device pixels, clipped to a rectangle, the origin at its top left. */
+export function within(surface: Surface, rect: Rect, draw: (device: Rect) => void): void {
+  const { context, ratio } = surface;
+  const device = onDevice(rect, ratio);
+  context.save();
+  context.setTransform(1, 0, 0, 1, device.x, device.y);
+  context.beginPath();
+  context.rect(0, 0, device.width, device.height);
+  context.clip();
+  draw(device);
+  context.restore();
+}
+
+interface TextStyle {
+  colour: string;
+  align?: CanvasTextAlign;
+  baseline?: CanvasTextBaseline;
+  sizePx?: number;
+  weight?: number;
+  /** Paints the paper around the letters, so that they are legible over lines. */
+  halo?: string;
+}
+
+export function writeText(surface: Surface, text: string, x: number, y: number, style: TextStyle): void {
+  const { context } = surface;
+  context.font = `${style.weight ?? 400} ${style.sizePx ?? 12}px ${FONT}`;
+  context.textAlign = style.align ?? 'left';
+  context.textBaseline = style.baseline ?? 'middle';
+  if (style.halo) {
+    context.strokeStyle = style.halo;
+    context.lineWidth = 3;
+    context.lineJoin = 'round';
+    context.strokeText(text, x, y);
+  }
+  context.fillStyle = style.colour;
+  context.fillText(text, x, y);
+}
+
+/** Width of a text of 12 px, CSS pixels. */
+export function textWidth(surface: Surface, text: string): number {
+  surface.context.font = `400 12px ${FONT}`;
+  return surface.context.measureText(text).width;
+}
