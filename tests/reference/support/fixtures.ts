@@ -1,6 +1,7 @@
 import { readFileSync } from 'node:fs';
 import { fileURLToPath } from 'node:url';
 import { gunzipSync } from 'node:zlib';
+import { expect } from 'vitest';
 
 const folder = new URL('../../fixtures/', import.meta.url);
 
@@ -24,4 +25,15 @@ export function readCsv(path: string): string[][] {
 export function present<T>(value: T | null | undefined, what = 'value'): T {
   if (value === null || value === undefined) throw new Error(`The fixture has no ${what}.`);
   return value;
+}
+
+/** Expects a level within a tolerance in dB, or null where null is wanted. */
+export function expectNear(
+  actual: number | null,
+  wanted: number | null,
+  toleranceDb: number,
+  what = '',
+): void {
+  if (actual === null || wanted === null) expect(actual, what).toBe(wanted);
+  else expect(Math.abs(actual - wanted), `${what}: ${actual} for ${wanted}`).toBeLessThanOrEqual(toleranceDb);
 }

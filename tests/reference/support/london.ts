@@ -1,5 +1,5 @@
 import { bandByNominalHz } from '#lib/acoustics/bands';
-import { type AccumulatedInterval } from '#lib/acoustics/periodStatistics';
+import { PeriodAccumulator, type AccumulatedInterval } from '#lib/acoustics/periodStatistics';
 import { toCentiDb } from '#lib/acoustics/rounding';
 import { thirdsTenthsOfCentiDb, type ThirdsTenths } from '#lib/acoustics/tonality';
 import { flagMask, isValid, type FlagName } from '#lib/acoustics/validity';
@@ -7,6 +7,7 @@ import { present, readCsv } from './fixtures';
 
 /** One row of the London set as an interval. */
 export interface LondonMinute {
+  flags: number;
   startSec: number;
   interval: AccumulatedInterval;
   isValid: boolean;
@@ -32,6 +33,7 @@ export function readLondonMinutes(): LondonMinute[] {
     const flag = FLAG_OF_LETTER[letter];
     const flags = flag ? flagMask([flag]) : 0;
     return {
+      flags,
       startSec: Date.parse(startUtc) / 1000,
       interval: {
         durationSec: 60,
@@ -50,3 +52,50 @@ export function readLondonMinutes(): LondonMinute[] {
     };
   });
 }
+
+/** The set's minutes gathered into UTC quarter-hours. */
+export class LondonQuarters {
+  readonly byStartSec = new Map<number, PeriodAccumulator>();
+
+  constructor(minutes: readonly LondonMinute[]) {
+    for (const { startSec, interval, isValid: counts } of minutes) {
+      const quarterSec = startSec - (startSec % 900);
+      const quarter = this.byStartSec.get(quarterSec) ?? new PeriodAccumulator();
+      this.byStartSec.set(quarterSec, quarter);
+      quarter.add(interval, counts);
+    }
+  }
+
+  /** Figures of `from <= t < to`, merged from quarter-hours. */
+  between(fromSec: number, toSec: number): PeriodAccumulator {
+    const whole = new PeriodAccumulator();
+    for (let at = fromSec; at < toSec; at += 900) {
+      const quarter = this.byStartSec.get(at);
+      if (quarter) whole.merge(quarter);
+    }
+    return whole;
+  }
+}
+
+/** Epoch seconds of an RFC 3339 instant. */
+export function sec(utc: string): number {
+  return Date.parse(utc) / 1000;
+}
+
+/** Minutes of `from <= t < to`. */
+export function minutesBetween(
+  minutes: readonly LondonMinute[],
+  fromSec: number,
+  toSec: number,
+): LondonMinute[] {
+  return minutes.filter(({ startSec }) => fromSec <= startSec && startSec < toSec);
+}
+
+/** First and end instants of the two months, local time (April: to the end of the set). */
+export const MONTHS = {
+  '2026-03': { fromSec: sec('2026-03-01T00:00Z'), toSec: sec('2026-03-31T23:00Z') },
+  '2026-04': { fromSec: sec('2026-03-31T23:00Z'), toSec: sec('2026-04-29T23:00Z') },
+} as const;
+
+/** The IANA zone of the set. */
+export const ZONE = 'Europe/London';
