@@ -26,7 +26,7 @@ describe('the tiles of a view', () => {
         (lengthSec, widthPx, intervalSec, shift) => {
           const view = { fromSec: from + shift, toSec: from + shift + lengthSec };
           const tiles = tilesFor(view, widthPx, intervalSec, LATEST);
-          expect(tiles.length).toBeLessThanOrEqual(3600 % intervalSec === 0 ? 5 : 15);
+          expect(tiles.length).toBeLessThanOrEqual(3600 % intervalSec === 0 ? 5 : 25);
           expect(tiles[0]?.fromSec).toBeLessThanOrEqual(view.fromSec);
           expect(tiles.at(-1)?.toSec).toBeGreaterThanOrEqual(view.toSec);
           tiles.forEach((tile, n) => {

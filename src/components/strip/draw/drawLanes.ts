@@ -1,4 +1,4 @@
-import { type Lane, type LaneKey } from '../model/lanes';
+import { type Lane, type LaneKey, type LaneRunKind } from '../model/lanes';
 import { type Run } from '../model/runs';
 import { pxAtSec, type TimeView } from '../model/timeView';
 import { type Rect, type StripGeometry } from './geometry';
@@ -22,8 +22,7 @@ export function drawLanes(
     within(surface, bar, (device) => {
       surface.context.fillStyle = surface.palette.track;
       surface.context.fillRect(0, 0, device.width, device.height);
-      for (const run of lane.missing) outlineRun(surface, boxOf(run, view, device));
-      for (const run of lane.runs) fillRun(surface, lane.key, boxOf(run, view, device));
+      for (const run of lane.runs) drawRun(surface, run.kind, lane.key, boxOf(run, view, device));
     });
   });
 }
@@ -34,18 +33,17 @@ function boxOf(run: Run, view: TimeView, { width, height }: Rect): Rect {
   return { x: from, y: 0, width: Math.max(1.5, to - from), height };
 }
 
-function fillRun({ context, palette, ratio }: Surface, lane: LaneKey, box: Rect): void {
+function drawRun(surface: Surface, kind: LaneRunKind, lane: LaneKey, box: Rect): void {
+  const { context, palette, ratio } = surface;
+  if (kind === 'missing') return outlineRun(surface, box);
   context.fillStyle = lane === 'data' ? palette.reed : lane === 'late' ? palette.estuary : palette.ochre;
-  if (lane === 'late') {
-    // Late data count like any other: half the height, so that it does not look like a fault.
-    context.fillRect(box.x, box.height / 2, box.width, box.height / 2);
-    return;
-  }
-  context.fillRect(box.x, box.y, box.width, box.height);
+  // What is only noted counts like any other data: half the height, so that it does not look like a fault.
+  const top = kind === 'noted' ? box.height / 2 : 0;
+  context.fillRect(box.x, top, box.width, box.height - top);
   if (lane !== 'left-out') return;
   context.fillStyle = palette.paper;
   for (let x = box.x + 4 * ratio; x < box.x + box.width - ratio; x += 5 * ratio) {
-    context.fillRect(x, box.y, ratio, box.height);
+    context.fillRect(x, 0, ratio, box.height);
   }
 }
 

@@ -1,7 +1,7 @@
 import { type PeriodKind, type PeriodScheme } from '#lib/acoustics/dayEveningNight';
 import { periodsOverlapping } from '#lib/time/periods';
 import { addDays, datesBetween, instantAtSec, localDateAt, weekdayOf } from '#lib/time/zone';
-import { clipRun, type Run } from './runs';
+import { clipRun, joinRuns, type Run } from './runs';
 import { type TimeView } from './timeView';
 
 /** A limit as the level trace draws it: one version of it, A-weighted level or maximum. */
@@ -36,7 +36,7 @@ export function timesOfValidity(
     toSec: limit.effectiveToSec ?? Infinity,
   });
   if (!inForce) return [];
-  return joinTouching(windowsOf(limit, inForce, scheme, zone)).flatMap((run) => clipRun(run, inForce) ?? []);
+  return joinRuns(windowsOf(limit, inForce, scheme, zone)).flatMap((run) => clipRun(run, inForce) ?? []);
 }
 
 function windowsOf(limit: StripLimit, view: Run, scheme: PeriodScheme, zone: string): Run[] {
@@ -59,14 +59,4 @@ function windowsOf(limit: StripLimit, view: Run, scheme: PeriodScheme, zone: str
 
 function holdsOn(limit: StripLimit, date: string): boolean {
   return (limit.weekdays & (1 << weekdayOf(date))) !== 0;
-}
-
-function joinTouching(runs: Run[]): Run[] {
-  const joined: Run[] = [];
-  for (const { fromSec, toSec } of runs) {
-    const last = joined.at(-1);
-    if (last && fromSec <= last.toSec) last.toSec = Math.max(last.toSec, toSec);
-    else joined.push({ fromSec, toSec });
-  }
-  return joined;
 }

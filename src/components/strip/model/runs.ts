@@ -28,3 +28,14 @@ export function clipRun(run: Run, within: Run): Run | null {
   const toSec = Math.min(run.toSec, within.toSec);
   return fromSec < toSec ? { fromSec, toSec } : null;
 }
+
+/** Runs in order of time, those that touch or overlap made one. */
+export function joinRuns(runs: readonly Run[]): Run[] {
+  const joined: Run[] = [];
+  for (const { fromSec, toSec } of runs) {
+    const last = joined.at(-1);
+    if (last && fromSec <= last.toSec) last.toSec = Math.max(last.toSec, toSec);
+    else joined.push({ fromSec, toSec });
+  }
+  return joined;
+}

@@ -1,0 +1,50 @@
+import { type Lane } from '../model/lanes';
+import { type LevelRange } from '../model/levelAxis';
+import { type PixelColumns } from '../model/pixelColumns';
+import { type Run } from '../model/runs';
+import { pxAtSec, type TimeView } from '../model/timeView';
+import { drawGapWords } from './drawGapWords';
+import { drawLanes } from './drawLanes';
+import { drawLimits, type LimitLine } from './drawLimits';
+import { drawSpectrogram } from './drawSpectrogram';
+import { drawTimeAxis } from './drawTimeAxis';
+import { drawTrace } from './drawTrace';
+import { type StripGeometry } from './geometry';
+import { type Colouring } from './paintSpectrogram';
+import { type Surface } from './surface';
+
+/** Everything that the strip's canvas shows. */
+export interface StripPicture {
+  geometry: StripGeometry;
+  view: TimeView;
+  zone: string;
+  nowSec: number;
+  pixels: PixelColumns;
+  colouring: Colouring | null;
+  traceRange: LevelRange;
+  lanes: readonly Lane[];
+  /** Stretches with data that do not count. */
+  leftOut: readonly Run[];
+  limits: readonly LimitLine[];
+  gapWords: (gap: Run) => string;
+}
+
+/** Draws the strip: spectrogram, level trace with limits, validity rows and the time axis, over what was there. */
+export function drawStrip(surface: Surface, picture: StripPicture): void {
+  const { context, ratio } = surface;
+  const { geometry, view, pixels, lanes, traceRange } = picture;
+  context.setTransform(ratio, 0, 0, ratio, 0, 0);
+  context.clearRect(0, 0, geometry.width, geometry.height);
+  const elapsedPx = pxAtSec(view, pixels.widthPx, picture.nowSec);
+  drawSpectrogram(surface, geometry, pixels, picture.colouring, elapsedPx);
+  drawTrace(surface, geometry, { pixels, view, range: traceRange, leftOut: picture.leftOut, elapsedPx });
+  drawTimeAxis(surface, geometry, view, picture.zone);
+  drawLimits(surface, geometry, view, traceRange, picture.limits);
+  drawGapWords(surface, geometry, view, gapsOf(lanes), picture.gapWords);
+  drawLanes(surface, geometry, view, lanes);
+}
+
+/** Stretches that passed without data. */
+export function gapsOf(lanes: readonly Lane[]): Run[] {
+  return lanes.flatMap(({ runs }) => runs.filter(({ kind }) => kind === 'missing'));
+}

@@ -1,0 +1,33 @@
+import { bandByNominalHz } from '#lib/acoustics/bands';
+import { formatInstantUtc } from '#lib/contracts/common';
+import { decodeSpectrogram, type SpectrogramColumns } from '#lib/contracts/spectrogramBinary';
+import { type StripColumns } from '../model/stripColumns';
+import { type Tile } from '../model/tiles';
+import { fetchAnswer } from './fetchJson';
+
+/** A tile's columns from the server. @throws {ServerRefusal} */
+export async function fetchColumns(
+  stationUrl: string,
+  tile: Tile,
+  columns: number,
+  signal: AbortSignal,
+): Promise<StripColumns> {
+  const query = new URLSearchParams({
+    from: formatInstantUtc(tile.fromSec),
+    to: formatInstantUtc(tile.toSec),
+    columns: String(columns),
+  });
+  const headers = { Accept: 'application/octet-stream' };
+  const answer = await fetchAnswer(`${stationUrl}/spectrogram?${query.toString()}`, { signal, headers });
+  return columnsOf(decodeSpectrogram(await answer.arrayBuffer()));
+}
+
+function columnsOf({ header, startSec: _, lafminCentiDb: __, ...arrays }: SpectrogramColumns): StripColumns {
+  return {
+    fromSec: header.from,
+    stepSec: header.stepSeconds,
+    count: header.columns,
+    bands: header.bands.flatMap((hz) => bandByNominalHz(header.bandFraction, hz) ?? []),
+    ...arrays,
+  };
+}

@@ -1,0 +1,61 @@
+import { useQueries, useQueryClient, type UseQueryOptions } from '@tanstack/react-query';
+import { endOfColumnsSec, type StripColumns } from '../model/stripColumns';
+import { TILE_COLUMNS, tilesFor, type Tile } from '../model/tiles';
+import { spanSec, type TimeView } from '../model/timeView';
+import { fetchColumns } from './fetchColumns';
+
+/** How often what is still being measured is asked for again. */
+export const LIVE_EVERY_MS = 15_000;
+const KEEP_MS = 10 * 60_000;
+const MOST_LAYERS = 12;
+
+export interface Columns {
+  /** What there is to draw, in order of preference: the wanted tiles, then what earlier views left. */
+  layers: StripColumns[];
+  isLoading: boolean;
+  error: Error | null;
+  retry: () => void;
+}
+
+/** A station's columns for a view. While finer or farther tiles are on their way, the layers that were there remain. */
+export function useColumns(
+  stationUrl: string,
+  view: TimeView,
+  widthPx: number,
+  intervalSec: number,
+  nowSec: number,
+): Columns {
+  const client = useQueryClient();
+  const tiles = widthPx > 0 ? tilesFor(view, widthPx, intervalSec, nowSec) : [];
+  const wanted = useQueries({ queries: tiles.map((tile) => tileQuery(stationUrl, tile, nowSec)) });
+  const stepSec = tiles[0]?.stepSec;
+  const fresh = wanted.flatMap(({ data }) => data ?? []);
+  const older = client
+    .getQueriesData<StripColumns>({ queryKey: ['columns', stationUrl] })
+    .flatMap(([, columns]) => columns ?? [])
+    .filter((columns) => columns.stepSec !== stepSec && isNear(columns, view))
+    .sort((a, b) => a.stepSec - b.stepSec);
+  return {
+    layers: [...fresh, ...older].slice(0, MOST_LAYERS),
+    isLoading: wanted.some((query) => query.isLoading),
+    error: wanted.find((query) => query.error)?.error ?? null,
+    retry: () => wanted.filter((query) => query.error).forEach((query) => void query.refetch()),
+  };
+}
+
+function tileQuery(stationUrl: string, tile: Tile, nowSec: number): UseQueryOptions<StripColumns> {
+  // A tile goes on changing while its end lies ahead, and for a while when data come late.
+  const isLive = tile.toSec > nowSec - 3600;
+  return {
+    queryKey: ['columns', stationUrl, tile.stepSec, tile.fromSec],
+    queryFn: ({ signal }) => fetchColumns(stationUrl, tile, TILE_COLUMNS, signal),
+    staleTime: isLive ? LIVE_EVERY_MS : KEEP_MS,
+    gcTime: KEEP_MS,
+    refetchInterval: isLive ? LIVE_EVERY_MS : false,
+  };
+}
+
+function isNear(columns: StripColumns, view: TimeView): boolean {
+  const marginSec = spanSec(view) * 0.2;
+  return columns.fromSec < view.toSec + marginSec && endOfColumnsSec(columns) > view.fromSec - marginSec;
+}
