@@ -1,5 +1,5 @@
 import type { z } from 'zod';
-import { parseInstant } from '#lib/contracts/common';
+import { localDate, parseInstant } from '#lib/contracts/common';
 import { badRequest, Problem } from './problem';
 
 const MOST_JSON_BYTES = 1024 * 1024;
@@ -43,6 +43,42 @@ export function parsePeriod(url: URL): Period {
   if (fromSec >= toSec) throw badRequest('`from` must be before `to`.');
   if (toSec - fromSec > MOST_PERIOD_SEC) throw badRequest('The period may span at most ten years.');
   return { fromSec, toSec };
+}
+
+/** As `parsePeriod`, where either end may be left out: the list is then open there. */
+export function parseOptionalPeriod(url: URL): Period {
+  const fromSec = url.searchParams.has('from') ? instantParameter(url, 'from') : 0;
+  const toSec = url.searchParams.has('to') ? instantParameter(url, 'to') : LATEST_SEC;
+  if (fromSec >= toSec) throw badRequest('`from` must be before `to`.');
+  return { fromSec, toSec };
+}
+
+/** The local dates in `from` and `to` (exclusive). @throws {Problem} 400 with what is wrong. */
+export function parseDates(url: URL): { fromDate: string; toDate: string } {
+  const fromDate = dateParameter(url, 'from');
+  const toDate = dateParameter(url, 'to');
+  if (fromDate >= toDate) throw badRequest('`from` must be before `to`.');
+  const spanSec = (Date.parse(toDate) - Date.parse(fromDate)) / 1000;
+  if (spanSec > MOST_PERIOD_SEC) throw badRequest('The period may span at most ten years.');
+  return { fromDate, toDate };
+}
+
+function dateParameter(url: URL, name: string): string {
+  const parsed = localDate.safeParse(url.searchParams.get(name));
+  // Before 1970 and after the year 2105 there are no stored seconds.
+  if (!parsed.success || parsed.data < '1970-01-02' || parsed.data > '2106-01-01') {
+    throw badRequest(`\`${name}\` must be a date such as 2026-03-01.`);
+  }
+  return parsed.data;
+}
+
+/** One of some words in the query; the first of them when it is left out. */
+export function parseChoice<T extends string>(url: URL, name: string, choices: readonly [T, ...T[]]): T {
+  const text = url.searchParams.get(name);
+  if (text === null) return choices[0];
+  const choice = choices.find((candidate) => candidate === text);
+  if (!choice) throw badRequest(`\`${name}\` must be one of ${choices.join(', ')}.`);
+  return choice;
 }
 
 function instantParameter(url: URL, name: string): number {
