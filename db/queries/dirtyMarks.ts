@@ -1,0 +1,58 @@
+import { pool, type Connection } from './connection';
+
+/** One quarter-hour of a station that must be recomputed; several marks may name the same one. */
+export interface DirtyMark {
+  id: number;
+  stationId: number;
+  quarterStartSec: number;
+}
+
+/** Marks quarter-hours of a station; belongs in the transaction of the change that makes them dirty. */
+export async function insertDirtyMarks(
+  stationId: number,
+  quarterStartsSec: Iterable<number>,
+  conn: Connection,
+): Promise<void> {
+  const markedAt = Math.floor(Date.now() / 1000);
+  const rows = [...quarterStartsSec].map((quarter) => ({
+    station_id: stationId,
+    quarter_starts_at: quarter,
+    marked_at: markedAt,
+  }));
+  for (let first = 0; first < rows.length; first += 1000) {
+    await conn('dirty_marks').insert(rows.slice(first, first + 1000));
+  }
+}
+
+/** The oldest marks, at most `limit`. */
+export async function readDirtyMarks(limit: number, conn: Connection = pool()): Promise<DirtyMark[]> {
+  return conn('dirty_marks')
+    .orderBy('id')
+    .limit(limit)
+    .select({ id: 'id', stationId: 'station_id', quarterStartSec: 'quarter_starts_at' });
+}
+
+/** Deletes exactly these marks: one that came meanwhile stays. */
+export async function deleteDirtyMarks(ids: readonly number[], conn: Connection): Promise<void> {
+  for (let first = 0; first < ids.length; first += 1000) {
+    await conn('dirty_marks')
+      .whereIn('id', ids.slice(first, first + 1000))
+      .delete();
+  }
+}
+
+/** Quarter-hours of a station that begin in `fromSec <= t < toSec` and wait for recomputation. */
+export async function dirtyQuartersIn(
+  stationId: number,
+  fromSec: number,
+  toSec: number,
+  conn: Connection = pool(),
+): Promise<Set<number>> {
+  const quarters: number[] = await conn('dirty_marks')
+    .where({ station_id: stationId })
+    .where('quarter_starts_at', '>=', fromSec)
+    .where('quarter_starts_at', '<', toSec)
+    .distinct()
+    .pluck('quarter_starts_at');
+  return new Set(quarters);
+}

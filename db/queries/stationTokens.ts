@@ -1,0 +1,69 @@
+import { createHash, randomBytes } from 'node:crypto';
+import { pool, type Connection } from './connection';
+
+export interface StationTokenRow {
+  id: number;
+  createdAt: Date;
+  revokedAt: Date | null;
+  lastUsedAt: Date | null;
+}
+
+/** Makes a token and answers it in the clear, the only time that it can be seen. Others of the station stay in force. */
+export async function insertStationToken(
+  stationId: number,
+  createdBy: string | null,
+  conn: Connection,
+): Promise<string> {
+  const secret = `bs_${randomBytes(32).toString('base64url')}`;
+  await conn('station_tokens').insert({
+    station_id: stationId,
+    digest: digestOf(secret),
+    created_by: createdBy,
+    created_at: new Date(),
+  });
+  return secret;
+}
+
+/** The station that a token in force belongs to. */
+export async function findStationToken(
+  secret: string,
+  conn: Connection = pool(),
+): Promise<{ tokenId: number; stationId: number; lastUsedAt: Date | null } | undefined> {
+  return conn('station_tokens')
+    .where({ digest: digestOf(secret), revoked_at: null })
+    .first({ tokenId: 'id', stationId: 'station_id', lastUsedAt: 'last_used_at' });
+}
+
+export async function listStationTokens(
+  stationId: number,
+  conn: Connection = pool(),
+): Promise<StationTokenRow[]> {
+  return conn('station_tokens').where({ station_id: stationId }).orderBy('id', 'desc').select({
+    id: 'id',
+    createdAt: 'created_at',
+    revokedAt: 'revoked_at',
+    lastUsedAt: 'last_used_at',
+  });
+}
+
+/** Notes that a token was used; only when the last note is more than a minute old. */
+export async function noteTokenUse(tokenId: number, now: Date, conn: Connection = pool()): Promise<void> {
+  await conn('station_tokens')
+    .where({ id: tokenId })
+    .where((query) =>
+      query.whereNull('last_used_at').orWhere('last_used_at', '<', new Date(now.getTime() - 60_000)),
+    )
+    .update({ last_used_at: now });
+}
+
+/** Ends a token of the station at once; answers whether there was one to end. */
+export async function revokeStationToken(stationId: number, id: number, conn: Connection): Promise<boolean> {
+  const changed = await conn('station_tokens')
+    .where({ id, station_id: stationId, revoked_at: null })
+    .update({ revoked_at: new Date() });
+  return changed > 0;
+}
+
+function digestOf(secret: string): Buffer {
+  return createHash('sha256').update(secret).digest();
+}
