@@ -40,8 +40,7 @@ export class LevelClassCounts {
       throw new RangeError(`${tenths} tenths of a dB is outside the stored range of levels.`);
     }
     if (sec === 0) return;
-    const offset = tenths - this.#firstTenths;
-    if (offset < 0 || offset >= this.#secs.length) this.#cover(tenths);
+    this.#cover(tenths);
     const at = tenths - this.#firstTenths;
     this.#secs[at] = (this.#secs[at] ?? 0) + sec;
     this.#totalSec += sec;
@@ -49,7 +48,14 @@ export class LevelClassCounts {
 
   /** Adds another distribution's seconds to this one. */
   merge(other: LevelClassCounts): void {
-    for (const [tenths, sec] of other.entries()) this.addTenths(tenths, sec);
+    if (other.#totalSec === 0) return;
+    this.#cover(other.#firstTenths);
+    this.#cover(other.#firstTenths + other.#secs.length - 1);
+    const shift = other.#firstTenths - this.#firstTenths;
+    for (let i = 0; i < other.#secs.length; i += 1) {
+      this.#secs[i + shift] = (this.#secs[i + shift] ?? 0) + (other.#secs[i] ?? 0);
+    }
+    this.#totalSec += other.#totalSec;
   }
 
   /** The classes that occur with their seconds, as [tenths of a dB, seconds], ascending. */
@@ -123,20 +129,16 @@ export class LevelClassCounts {
     return counts;
   }
 
+  /** Makes the span of classes reach `tenths`, with some to spare on the side where it grows. */
   #cover(tenths: number): void {
-    const had = this.#secs.length;
-    const first = had === 0 ? tenths : Math.min(this.#firstTenths, tenths);
-    const end = had === 0 ? tenths + 1 : Math.max(this.#firstTenths + had, tenths + 1);
-    const from = Math.max(
-      LOWEST_TENTHS,
-      first === this.#firstTenths && had > 0 ? first : first - GROWTH_CLASSES,
-    );
-    const to = Math.min(
-      HIGHEST_TENTHS + 1,
-      had > 0 && end === this.#firstTenths + had ? end : end + GROWTH_CLASSES,
-    );
+    const first = this.#firstTenths;
+    const end = first + this.#secs.length;
+    if (first <= tenths && tenths < end) return;
+    const isEmpty = this.#secs.length === 0;
+    const from = isEmpty || tenths < first ? Math.max(LOWEST_TENTHS, tenths - GROWTH_CLASSES) : first;
+    const to = isEmpty || tenths >= end ? Math.min(HIGHEST_TENTHS, tenths + GROWTH_CLASSES) + 1 : end;
     const grown = new Float64Array(to - from);
-    if (had > 0) grown.set(this.#secs, this.#firstTenths - from);
+    grown.set(this.#secs, isEmpty ? 0 : first - from);
     this.#secs = grown;
     this.#firstTenths = from;
   }
