@@ -1,0 +1,112 @@
+import { randomUUID } from 'node:crypto';
+import { config } from '#lib/config/index';
+import type { Evidence } from '#lib/contracts/complaintEvidence';
+import { pool, type Connection } from './connection';
+
+export interface ReplyRow {
+  id: number;
+  createdAt: Date;
+  /** Name of the person who sent it. */
+  sentBy: string;
+  figures: Evidence;
+  /** State of its e-mail; null: a letter to print and post. */
+  mailState: 'waiting' | 'sent' | 'dead' | null;
+}
+
+export interface NewReplyRow {
+  complaintId: number;
+  ciphertext: Buffer;
+  figures: Evidence;
+  sentBy: string;
+  at: Date;
+}
+
+export async function insertReply(reply: NewReplyRow, conn: Connection): Promise<number> {
+  const [id] = await conn('complaint_replies').insert({
+    complaint_id: reply.complaintId,
+    ciphertext: reply.ciphertext,
+    figures: JSON.stringify(reply.figures),
+    sent_by: reply.sentBy,
+    created_at: reply.at,
+  });
+  return Number(id);
+}
+
+export async function countReplies(complaintId: number, conn: Connection = pool()): Promise<number> {
+  const row = await conn('complaint_replies')
+    .where({ complaint_id: complaintId })
+    .count({ count: '*' })
+    .first();
+  return Number(row?.count ?? 0);
+}
+
+/** Replies of a complaint, oldest first. */
+export async function listReplies(complaintId: number, conn: Connection = pool()): Promise<ReplyRow[]> {
+  const rows: (Omit<ReplyRow, 'figures'> & { figures: string | Evidence })[] = await conn(
+    'complaint_replies as r',
+  )
+    .join('users as u', 'u.id', 'r.sent_by')
+    .leftJoin('outbox as o', 'o.dedupe_key', conn.raw(`CONCAT('complaint-reply:', r.id)`))
+    .where({ 'r.complaint_id': complaintId })
+    .orderBy('r.id')
+    .select({
+      id: 'r.id',
+      createdAt: 'r.created_at',
+      sentBy: 'u.name',
+      figures: 'r.figures',
+      mailState: 'o.state',
+    });
+  return rows.map((row) => ({
+    ...row,
+    figures: typeof row.figures === 'string' ? (JSON.parse(row.figures) as Evidence) : row.figures,
+  }));
+}
+
+export interface SealedReply {
+  complaintId: number;
+  wrappedKey: Buffer;
+  ciphertext: Buffer;
+}
+
+/** Undefined for a reply that is not there, or whose personal data have been erased. */
+export async function findSealedReply(
+  replyId: number,
+  conn: Connection = pool(),
+): Promise<SealedReply | undefined> {
+  return conn('complaint_replies as r')
+    .join('complaint_keys as k', 'k.complaint_id', 'r.complaint_id')
+    .where({ 'r.id': replyId })
+    .first({ complaintId: 'r.complaint_id', wrappedKey: 'k.wrapped_key', ciphertext: 'r.ciphertext' });
+}
+
+/** Gives up e-mails of a complaint's replies that have not gone yet: whom they were for is being erased. */
+export async function giveUpReplyMails(complaintId: number, conn: Connection): Promise<void> {
+  await conn('outbox')
+    .where({ state: 'waiting' })
+    .whereIn(
+      'complaint_reply_id',
+      conn('complaint_replies').where({ complaint_id: complaintId }).select('id'),
+    )
+    .update({ state: 'dead', last_error: 'The personal data were erased before it was sent.' });
+}
+
+/**
+ * Puts a reply's e-mail into the outbox, in the transaction of the reply. Recipient and body stay away: the sender resolves
+ * them from the reply. The Message-ID is the same at every attempt.
+ */
+export async function queueReplyMail(
+  mail: { replyId: number; networkId: number; subject: string; at: Date },
+  conn: Connection,
+): Promise<void> {
+  await conn('outbox').insert({
+    message_id: `<complaint-reply-${randomUUID()}@${new URL(config().origin).hostname}>`,
+    dedupe_key: `complaint-reply:${mail.replyId}`,
+    network_id: mail.networkId,
+    kind: 'complaint-reply',
+    recipient: null,
+    subject: mail.subject,
+    complaint_reply_id: mail.replyId,
+    next_attempt_at: mail.at,
+    created_at: mail.at,
+  });
+}

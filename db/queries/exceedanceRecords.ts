@@ -1,0 +1,67 @@
+import type { BandFraction } from '#lib/acoustics/bands';
+import { pool, type Connection } from './connection';
+
+/** An exceedance with the limit version that it was judged by, as letters and summaries list it. */
+export interface ExceedanceRecord {
+  id: number;
+  stationId: number;
+  limitName: string;
+  metric: 'LAeq' | 'LAFmax' | 'bandLeq';
+  averaging: '15min' | '1h' | 'day' | 'evening' | 'night';
+  bandFraction: BandFraction | null;
+  bandIndex: number | null;
+  startsAtSec: number;
+  endsAtSec: number;
+  levelDb: number;
+  thresholdTenths: number;
+  /** 0–1. */
+  coverage: number;
+  state: 'standing' | 'lifted';
+}
+
+/** Exceedances of a station whose window overlaps `fromSec <= t < toSec`, in order of time. */
+export async function listExceedancesOverlapping(
+  stationId: number,
+  fromSec: number,
+  toSec: number,
+  conn: Connection = pool(),
+): Promise<ExceedanceRecord[]> {
+  return selectRecords(conn)
+    .where({ 'e.station_id': stationId })
+    .where('e.starts_at', '<', toSec)
+    .where('e.ends_at', '>', fromSec);
+}
+
+/** Exceedances of a network whose window begins within `fromSec <= t < toSec`, in order of time. */
+export async function listExceedancesBeginning(
+  networkId: number,
+  fromSec: number,
+  toSec: number,
+  conn: Connection = pool(),
+): Promise<ExceedanceRecord[]> {
+  return selectRecords(conn)
+    .where({ 'e.network_id': networkId })
+    .where('e.starts_at', '>=', fromSec)
+    .where('e.starts_at', '<', toSec);
+}
+
+function selectRecords(conn: Connection) {
+  return conn('exceedances as e')
+    .join('limit_versions as v', 'v.id', 'e.limit_version_id')
+    .orderBy(['e.starts_at', 'e.id'])
+    .select({
+      id: 'e.id',
+      stationId: 'e.station_id',
+      limitName: 'v.name',
+      metric: 'v.metric',
+      averaging: 'v.averaging',
+      bandFraction: 'v.band_fraction',
+      bandIndex: 'v.band_index',
+      startsAtSec: 'e.starts_at',
+      endsAtSec: 'e.ends_at',
+      levelDb: 'e.level_db',
+      thresholdTenths: 'e.threshold_tenths',
+      coverage: 'e.coverage',
+      state: 'e.state',
+    });
+}

@@ -1,0 +1,214 @@
+import { z } from 'zod';
+import { emailAddress, instant, localDate } from './common';
+import { evidenceSchema } from './complaintEvidence';
+import { registerRoute } from './registry';
+
+/** What a noise sounds like, from a list; own words are personal data and stand apart. */
+export const COMPLAINT_KINDS = [
+  'hum',
+  'whine',
+  'bang',
+  'rumble',
+  'music',
+  'traffic',
+  'alarm',
+  'other',
+] as const;
+export type ComplaintKind = (typeof COMPLAINT_KINDS)[number];
+
+export const COMPLAINT_STATUSES = ['open', 'answered', 'closed'] as const;
+export type ComplaintStatus = (typeof COMPLAINT_STATUSES)[number];
+
+/** Why a complaint is closed without a reply; a list, because own words could name somebody. */
+export const CLOSING_REASONS = ['no-contact', 'withdrawn', 'repeated', 'not-ours', 'erased'] as const;
+export type ClosingReason = (typeof CLOSING_REASONS)[number];
+
+/** Longest window that a complaint may name, in days: the weeks before are compared with it clock for clock. */
+export const MOST_WINDOW_DAYS = 7;
+
+const personalText = (most: number) =>
+  z
+    .string()
+    .trim()
+    .max(most, `must have at most ${most} characters`)
+    .transform((text) => (text === '' ? null : text))
+    .nullable()
+    .default(null);
+
+export const contactSchema = z.object({
+  name: personalText(160),
+  email: z
+    .union([z.literal('').transform(() => null), emailAddress], { error: 'must be an e-mail address' })
+    .nullable()
+    .default(null),
+  phone: personalText(60),
+  address: personalText(300),
+});
+export type Contact = z.output<typeof contactSchema>;
+
+const latitude = z.number().min(-90, 'must be from −90 to 90').max(90, 'must be from −90 to 90');
+const longitude = z.number().min(-180, 'must be from −180 to 180').max(180, 'must be from −180 to 180');
+const coordinatesSchema = z.object({ latitude, longitude });
+
+/** A complaint as it is logged. The place is the resident's (exact, private) or, where unknown, a station nearby. */
+export const newComplaintSchema = z
+  .object({
+    from: instant,
+    to: instant,
+    kind: z.enum(COMPLAINT_KINDS, { error: 'must be one of the list' }),
+    latitude: latitude.nullable().default(null),
+    longitude: longitude.nullable().default(null),
+    station: z.string().max(32).nullable().default(null),
+    words: z.string().trim().max(4000, 'must have at most 4000 characters').default(''),
+    contact: contactSchema.prefault({}),
+  })
+  .superRefine((complaint, context) => {
+    const issue = (path: string, message: string) =>
+      context.addIssue({ code: 'custom', path: [path], message });
+    if (complaint.to <= complaint.from) issue('to', 'must be after the beginning');
+    if (complaint.to - complaint.from > MOST_WINDOW_DAYS * 86_400) {
+      issue(
+        'to',
+        `must be at most ${MOST_WINDOW_DAYS} days after the beginning; log the noise of each week apart`,
+      );
+    }
+    if ((complaint.latitude === null) !== (complaint.longitude === null)) {
+      issue(
+        complaint.latitude === null ? 'latitude' : 'longitude',
+        'must be given together with the other one',
+      );
+    }
+    if (complaint.latitude === null && complaint.longitude === null && complaint.station === null) {
+      issue('station', 'must be chosen where no coordinates are given');
+    }
+  });
+export type NewComplaint = z.output<typeof newComplaintSchema>;
+
+/** What everybody with a role in the network may read of a complaint. */
+export const complaintSchema = z.object({
+  reference: z.string(),
+  from: z.string(),
+  to: z.string(),
+  kind: z.enum(COMPLAINT_KINDS),
+  status: z.enum(COMPLAINT_STATUSES),
+  dueOn: localDate,
+  isOverdue: z.boolean(),
+  coarsePlace: coordinatesSchema
+    .nullable()
+    .describe('Rounded to 0.01 degree; null where only a station was named'),
+  nearestStation: z.string().nullable(),
+  createdAt: z.string(),
+  answeredAt: z.string().nullable(),
+  closedAt: z.string().nullable(),
+  closingReason: z.enum(CLOSING_REASONS).nullable(),
+});
+export type Complaint = z.output<typeof complaintSchema>;
+
+/** Personal data of a complaint: liaison and administrator only, every look is audited. */
+export const personalDataSchema = z.object({
+  contact: z.object({
+    name: z.string().nullable(),
+    email: z.string().nullable(),
+    phone: z.string().nullable(),
+    address: z.string().nullable(),
+  }),
+  words: z.string(),
+  place: coordinatesSchema.nullable(),
+});
+export type PersonalData = z.output<typeof personalDataSchema>;
+
+/** How a reply leaves: `email` by the outbox, `letter` printed and posted where there is no address. */
+export const REPLY_STATES = ['waiting', 'sent', 'dead', 'letter'] as const;
+
+export const replySchema = z.object({
+  sentAt: z.string(),
+  sentBy: z.string(),
+  delivery: z.enum(REPLY_STATES).describe('State of the e-mail; "letter": printed and posted'),
+  figures: evidenceSchema,
+});
+export type Reply = z.output<typeof replySchema>;
+
+export const complaintDetailSchema = complaintSchema.extend({
+  evidence: evidenceSchema,
+  replies: z.array(replySchema),
+  private: personalDataSchema
+    .nullable()
+    .optional()
+    .describe('Left out for those who may not read it; null once erased'),
+});
+
+export const newReplySchema = z.object({
+  text: z
+    .string()
+    .trim()
+    .min(1, 'must not be empty')
+    .max(20_000, 'must have at most 20,000 characters')
+    .transform((text) => text.replaceAll('\r\n', '\n')),
+  figuresDigest: z
+    .string()
+    .nullable()
+    .default(null)
+    .describe(
+      'Digest of the evidence that the text was written from; refused with 409 when the figures changed since',
+    ),
+  repliesSoFar: z
+    .number()
+    .int()
+    .nullable()
+    .default(null)
+    .describe('How many replies the writer knew of; refused with 409 when another one went out meanwhile'),
+});
+export type NewReply = z.output<typeof newReplySchema>;
+
+const listOf = <T extends z.ZodType>(item: T) =>
+  z.object({ items: z.array(item), next: z.string().nullable() });
+
+const base = '/api/v1/networks/{network}/complaints';
+const network = z.string();
+const answer = (description: string, schema: z.ZodType) => ({
+  description,
+  content: { 'application/json': { schema } },
+});
+const body = (schema: z.ZodType) => ({ content: { 'application/json': { schema } } });
+
+registerRoute({
+  access: 'person',
+  method: 'get',
+  path: base,
+  summary: 'Complaints by due date, never with personal data',
+  request: {
+    params: z.object({ network }),
+    query: z.object({
+      from: z.string().optional(),
+      to: z.string().optional(),
+      status: z.enum(COMPLAINT_STATUSES).optional(),
+      limit: z.string().optional(),
+      cursor: z.string().optional(),
+    }),
+  },
+  responses: { 200: answer('A page of the list', listOf(complaintSchema)) },
+});
+registerRoute({
+  access: 'person',
+  method: 'post',
+  path: base,
+  summary: 'Log a complaint (liaison)',
+  request: { params: z.object({ network }), body: body(newComplaintSchema) },
+  responses: { 201: answer('The complaint as logged', z.object({ complaint: complaintSchema })) },
+});
+registerRoute({
+  access: 'person',
+  method: 'get',
+  path: `${base}/{reference}`,
+  summary: 'A complaint with the evidence of its window; personal data for liaison and administrator only',
+  request: { params: z.object({ network, reference: z.string() }) },
+  responses: { 200: answer('The complaint', complaintDetailSchema) },
+});
+registerRoute({
+  access: 'person',
+  method: 'post',
+  path: `${base}/{reference}/replies`,
+  summary: 'Send the reply (liaison): e-mailed, and kept with the figures it carries',
+  request: { params: z.object({ network, reference: z.string() }), body: body(newReplySchema) },
+  responses: { 201: answer('The reply as kept', z.object({ reply: replySchema })) },
+});

@@ -1,0 +1,81 @@
+import { createCipheriv, createDecipheriv, randomBytes } from 'node:crypto';
+import { config } from '#lib/config/index';
+
+/**
+ * Personal data of a complaint rest under a random key of its own (AES-256-GCM), and that key rests wrapped by the
+ * personal-data key of the settings. Destroying the wrapped key erases the person, in every backup of the data too.
+ *
+ * Sealed bytes: version (1 byte, 1), nonce (12), tag (16), ciphertext. The complaint's id and the purpose are authenticated
+ * with them, so that no row opens in another's place.
+ */
+const VERSION = 1;
+const NONCE_BYTES = 12;
+const TAG_BYTES = 16;
+const HEAD_BYTES = 1 + NONCE_BYTES + TAG_BYTES;
+
+/** What sealed bytes are for. */
+type Purpose = 'key' | 'person' | 'reply';
+
+/** Sealed bytes that do not open: another key in the settings, or changed bytes. */
+export class PersonalDataUnreadable extends Error {
+  constructor(complaintId: number, cause?: unknown) {
+    super(`Personal data of complaint ${complaintId} cannot be opened with the key of the settings.`, {
+      cause,
+    });
+    this.name = 'PersonalDataUnreadable';
+  }
+}
+
+/** A new random key for a complaint, wrapped for `complaint_keys`. */
+export function newWrappedKey(complaintId: number): Buffer {
+  return seal(config().personalDataKey, complaintId, 'key', randomBytes(32));
+}
+
+/** Seals a value (as JSON) under a complaint's wrapped key. @throws {PersonalDataUnreadable} */
+export function sealValue(
+  wrappedKey: Buffer,
+  complaintId: number,
+  purpose: 'person' | 'reply',
+  value: unknown,
+): Buffer {
+  return seal(unwrap(wrappedKey, complaintId), complaintId, purpose, Buffer.from(JSON.stringify(value)));
+}
+
+/** The value that `sealValue` sealed; the caller validates it. @throws {PersonalDataUnreadable} */
+export function openValue(
+  wrappedKey: Buffer,
+  complaintId: number,
+  purpose: 'person' | 'reply',
+  sealed: Buffer,
+): unknown {
+  return JSON.parse(open(unwrap(wrappedKey, complaintId), complaintId, purpose, sealed).toString('utf8'));
+}
+
+function unwrap(wrappedKey: Buffer, complaintId: number): Buffer {
+  return open(config().personalDataKey, complaintId, 'key', wrappedKey);
+}
+
+function seal(key: Buffer, complaintId: number, purpose: Purpose, plain: Buffer): Buffer {
+  const nonce = randomBytes(NONCE_BYTES);
+  const cipher = createCipheriv('aes-256-gcm', key, nonce);
+  cipher.setAAD(authenticated(complaintId, purpose));
+  const ciphertext = Buffer.concat([cipher.update(plain), cipher.final()]);
+  return Buffer.concat([Buffer.of(VERSION), nonce, cipher.getAuthTag(), ciphertext]);
+}
+
+function open(key: Buffer, complaintId: number, purpose: Purpose, sealed: Buffer): Buffer {
+  if (sealed.length < HEAD_BYTES || sealed[0] !== VERSION) throw new PersonalDataUnreadable(complaintId);
+  const nonce = sealed.subarray(1, 1 + NONCE_BYTES);
+  const decipher = createDecipheriv('aes-256-gcm', key, nonce, { authTagLength: TAG_BYTES });
+  decipher.setAAD(authenticated(complaintId, purpose));
+  decipher.setAuthTag(sealed.subarray(1 + NONCE_BYTES, HEAD_BYTES));
+  try {
+    return Buffer.concat([decipher.update(sealed.subarray(HEAD_BYTES)), decipher.final()]);
+  } catch (error) {
+    throw new PersonalDataUnreadable(complaintId, error);
+  }
+}
+
+function authenticated(complaintId: number, purpose: Purpose): Buffer {
+  return Buffer.from(`complaint ${complaintId} ${purpose} ${VERSION}`);
+}

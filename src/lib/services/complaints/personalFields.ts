@@ -1,0 +1,9 @@
+import type { PersonalData } from '#lib/contracts/complaints';
+
+/** Names of the personal fields that hold something: what the audit trail may record, never their values. */
+export function filledFields({ contact, words, place }: PersonalData): string[] {
+  const named = Object.entries(contact)
+    .filter(([, value]) => value !== null)
+    .map(([field]) => field);
+  return [...named, ...(words === '' ? [] : ['words']), ...(place ? ['place'] : [])];
+}

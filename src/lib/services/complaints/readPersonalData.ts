@@ -1,0 +1,39 @@
+import { appendAudit } from '#db/queries/audit';
+import { findSealedPerson } from '#db/queries/complaintPrivate';
+import type { ComplaintRow } from '#db/queries/complaints';
+import { inTransaction, type Connection } from '#db/queries/connection';
+import { personalDataSchema, type PersonalData } from '#lib/contracts/complaints';
+import { openValue } from './personalData';
+import { filledFields } from './personalFields';
+
+/**
+ * Personal data of a complaint for a person who may read them (liaison or administrator: the caller has made sure).
+ * The look is in the audit trail before the data are out. Null once erased.
+ */
+export async function readPersonalData(
+  userId: string,
+  complaint: ComplaintRow,
+): Promise<PersonalData | null> {
+  return inTransaction(async (transaction) => {
+    const person = await openPersonalData(complaint.id, transaction);
+    if (!person) return null;
+    await appendAudit(
+      {
+        userId,
+        networkId: complaint.networkId,
+        action: 'complaint.personal-data-read',
+        subject: `complaint ${complaint.reference}`,
+        detail: { fields: filledFields(person) },
+      },
+      transaction,
+    );
+    return person;
+  });
+}
+
+/** The same without an audit row, for acts that write one of their own. */
+export async function openPersonalData(complaintId: number, conn: Connection): Promise<PersonalData | null> {
+  const sealed = await findSealedPerson(complaintId, conn);
+  if (!sealed) return null;
+  return personalDataSchema.parse(openValue(sealed.wrappedKey, complaintId, 'person', sealed.ciphertext));
+}

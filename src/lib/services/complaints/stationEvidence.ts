@@ -1,0 +1,79 @@
+import { countLimitsOfStation, countUnjudgedWindows } from '#db/queries/complaintLimits';
+import { listExceedancesOverlapping, type ExceedanceRecord } from '#db/queries/exceedanceRecords';
+import type { NetworkSettings } from '#db/queries/networks';
+import type { StationRow } from '#db/queries/stations';
+import { roundHalfUp } from '#lib/acoustics/rounding';
+import { formatInstantUtc } from '#lib/contracts/common';
+import type { EvidenceExceedance, StationEvidence, Usual } from '#lib/contracts/complaintEvidence';
+import { limitMetricText } from '#lib/format/limitMetric';
+import { periodStatistics } from '../levels/statistics';
+import { usualFor } from '../levels/usual';
+
+/** Weeks before, of which the same weekday and clock window is compared. */
+const WEEKS_COMPARED = 4;
+const COVERAGE_DECIMALS = 4;
+
+export interface StationEvidenceQuery {
+  station: StationRow;
+  window: { fromSec: number; toSec: number };
+  timeline: NetworkSettings[];
+  nowSec: number;
+}
+
+/** What one station has to say about a window. Levels are rounded here, once, half up, to 0.1 dB. */
+export async function gatherStationEvidence(query: StationEvidenceQuery): Promise<StationEvidence> {
+  const { station, window, timeline, nowSec } = query;
+  const { fromSec, toSec } = window;
+  const [statistics, usual, exceedances, set, unjudged] = await Promise.all([
+    periodStatistics({ station, fromSec, toSec, timeline, nowSec }),
+    usualFor({ station, window, weeks: WEEKS_COMPARED, timeline }),
+    listExceedancesOverlapping(station.id, fromSec, toSec),
+    countLimitsOfStation(station.networkId, station.id, fromSec, toSec),
+    countUnjudgedWindows(station.id, fromSec, toSec),
+  ]);
+  const { seconds, coverage, meetsMinimum, sampleSeconds, tonality } = statistics;
+  return {
+    station: station.code,
+    name: station.name,
+    sampleSeconds,
+    LAeq: tenths(statistics.LAeq),
+    LAFmax: tenths(statistics.LAFmax),
+    LA10: tenths(statistics.LAN['10'] ?? null),
+    LA90: tenths(statistics.LAN['90'] ?? null),
+    seconds,
+    coverage: roundHalfUp(coverage, COVERAGE_DECIMALS),
+    meetsMinimum,
+    usual: usualOf(usual),
+    limits: { set, unjudged },
+    exceedances: exceedances.map(exceedanceOf),
+    tonality: tonality.state,
+    tones: tonality.tones,
+  };
+}
+
+function usualOf({
+  weeks,
+  validWeeks,
+  medianDb,
+  lowDb,
+  highDb,
+}: Awaited<ReturnType<typeof usualFor>>): Usual {
+  return { weeks, validWeeks, median: tenths(medianDb), low: tenths(lowDb), high: tenths(highDb) };
+}
+
+function exceedanceOf(record: ExceedanceRecord): EvidenceExceedance {
+  return {
+    id: record.id,
+    limit: record.limitName,
+    metric: limitMetricText(record),
+    from: formatInstantUtc(record.startsAtSec),
+    to: formatInstantUtc(record.endsAtSec),
+    level: roundHalfUp(record.levelDb, 1),
+    threshold: record.thresholdTenths / 10,
+    state: record.state,
+  };
+}
+
+function tenths(levelDb: number | null): number | null {
+  return levelDb === null ? null : roundHalfUp(levelDb, 1);
+}

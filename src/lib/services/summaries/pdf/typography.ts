@@ -1,0 +1,56 @@
+import type { Content, ContentText, CustomTableLayout, TableCell } from 'pdfmake/interfaces';
+
+export const INK = '#223029';
+export const SOFT_INK = '#5c675f';
+export const RULE = '#b9beb5';
+export const RUST = '#9c3d1f';
+
+const DESCRIPTOR = /L((?:den|day|evening|night|Aeq|A10|A50|A90|AFmax|eq|10|50|90)\b(?:,\d+ (?:s|min|h))?)/g;
+
+/** pdfmake sets a subscript at 0.58 of its size, which is too small to read in print at 9 pt. */
+const INDEX_SCALE = 1.25;
+export const BODY_SIZE = 9;
+export const SMALL_SIZE = 8;
+
+/** Text in which acoustic descriptors are typeset: an italic L and its index below the line. `size` in points. */
+export function typeset(text: string, size = BODY_SIZE): ContentText {
+  const parts: Content[] = [];
+  let at = 0;
+  for (const match of text.matchAll(DESCRIPTOR)) {
+    parts.push(
+      text.slice(at, match.index),
+      { text: 'L', italics: true },
+      { text: match[1] ?? '', sub: true, fontSize: size * INDEX_SCALE },
+    );
+    at = match.index + match[0].length;
+  }
+  return { text: [...parts, text.slice(at)], fontSize: size };
+}
+
+export function heading(text: string): Content {
+  return { text, bold: true, fontSize: 12, margin: [0, 14, 0, 4], headlineLevel: 1 };
+}
+
+export function paragraph(text: string): Content {
+  return { ...typeset(text), margin: [0, 0, 0, 5], lineHeight: 1.2 };
+}
+
+/** A heading cell; numbers stand right. */
+export function head(text: string, alignment: 'left' | 'right' = 'right'): TableCell {
+  return { ...typeset(text, SMALL_SIZE), alignment, color: SOFT_INK };
+}
+
+export function cell(text: string, alignment: 'left' | 'right' = 'right', size = BODY_SIZE): TableCell {
+  return { ...typeset(text, size), alignment };
+}
+
+/** A table as in a book: rules above, below the heading and at the foot, none between the rows. */
+export const BOOK_TABLE: CustomTableLayout = {
+  hLineWidth: (line, node) => (line === 0 || line === 1 || line === node.table.body.length ? 0.6 : 0),
+  vLineWidth: () => 0,
+  hLineColor: () => RULE,
+  paddingLeft: (column) => (column === 0 ? 0 : 5),
+  paddingRight: (column, node) => (column === (node.table.widths?.length ?? 0) - 1 ? 0 : 5),
+  paddingTop: () => 1.6,
+  paddingBottom: () => 1.6,
+};

@@ -1,0 +1,62 @@
+import { DateTime } from 'luxon';
+import type { Convention, Summary } from '#lib/contracts/summaries';
+import { BELOW_MINIMUM, coverageText } from './figures';
+
+/** `March 2026` of `2026-03`. */
+export function monthName(month: string): string {
+  return DateTime.fromISO(`${month}-01`, { locale: 'en-GB', zone: 'utc' }).toFormat('LLLL yyyy');
+}
+
+/** An instant in the network's zone: `17 Mar 2026, 03:40`. */
+export function instantText(instant: string, zone: string): string {
+  return DateTime.fromISO(instant, { zone, locale: 'en-GB' }).toFormat('d LLL yyyy, HH:mm');
+}
+
+/** An instant with its distance from universal time, where a signature or a clock change is concerned. */
+export function exactInstantText(instant: string, zone: string): string {
+  return DateTime.fromISO(instant, { zone, locale: 'en-GB' }).toFormat(`d LLL yyyy, HH:mm '(UTC'Z')'`);
+}
+
+/** How a month's figures are made: every convention by which another reader could get others. */
+export function methodStatement(summary: Summary): string[] {
+  return [
+    ...summary.conventions.flatMap((convention) => conventionSentences(convention, summary)),
+    'A night belongs to the date on which it begins. Lday, Levening, Lnight and Lden of the month pool the periods that begin in ' +
+      'it, so Lnight includes the first hours of the next month and not those of its own first morning. LAeq, LAFmax, the statistical ' +
+      'levels and the bands pool the calendar month by the clock.',
+    'Levels of a period are energy means over the valid time alone: the energies of all its valid intervals are pooled first, ' +
+      'and Lden is calculated once from the pooled levels, with the nominal hours of day, evening and night even where a clock ' +
+      'change made a night longer or shorter. A date that lacks a whole period has no Lden.',
+    'Statistical levels (LA10, LA50, LA90 and those of the bands) are taken from the base samples, the LAeq of each interval, rounded ' +
+      'half up to 0.1 dB. They are given from 30 samples on (LA10, LA90), and not at all where interval lengths are mixed.',
+    `Coverage is the valid time divided by the time that has elapsed. ${BELOW_MINIMUM} marks a figure whose coverage is below the ` +
+      'minimum: it is given for information and is not compared with a limit. Missing data are not silence.',
+    ...(summary.conventions.length > 1
+      ? [
+          'Where the periods of day changed within the month there is no Lden of the month, because its weights would be mixed.',
+        ]
+      : []),
+    'Exceedances are listed by the calendar month in which their window begins. One that later data or an exclusion took below its ' +
+      'limit is listed as lifted. Levels are rounded once, half up, to 0.1 dB; the CSV and JSON files carry them unrounded.',
+  ];
+}
+
+function conventionSentences(convention: Convention, { timeZone }: Summary): string[] {
+  const { from, day, evening, night, minimumCoverage, maximumWindSpeed, excludeRain } = convention;
+  const since = from === null ? '' : `From ${instantText(from, timeZone)} on: `;
+  const periods =
+    evening === null ? `day ${day}–${night}` : `day ${day}–${evening}, evening ${evening}–${night}`;
+  return [
+    `${since}Times are civil times of the zone ${convention.timeZone}; ${periods}, night ${night}–${day}. ` +
+      `The minimum coverage is ${coverageText(minimumCoverage)}.`,
+    `${since}Intervals are left out when the monitor flags calibration, self-check, overload, tampering, power loss, a set clock ` +
+      `or wind, when the wind is above ${maximumWindSpeed} m/s` +
+      `${excludeRain ? ', when it flags rain' : ''}, and where an operator excluded the period with a reason. They stay on record.`,
+  ];
+}
+
+/** What the figures are not. */
+export const CAUTIONS = [
+  'Levels describe the places of the stations as installed, not the exposure of a person or the level at a dwelling.',
+  'This summary supports a professional judgement and does not replace one: local rules, permits and the competent authority decide.',
+] as const;
