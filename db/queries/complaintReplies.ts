@@ -42,9 +42,7 @@ export async function countReplies(complaintId: number, conn: Connection = pool(
 
 /** Replies of a complaint, oldest first. */
 export async function listReplies(complaintId: number, conn: Connection = pool()): Promise<ReplyRow[]> {
-  const rows: (Omit<ReplyRow, 'figures'> & { figures: string | Evidence })[] = await conn(
-    'complaint_replies as r',
-  )
+  return conn('complaint_replies as r')
     .join('users as u', 'u.id', 'r.sent_by')
     .leftJoin('outbox as o', 'o.dedupe_key', conn.raw(`CONCAT('complaint-reply:', r.id)`))
     .where({ 'r.complaint_id': complaintId })
@@ -56,10 +54,6 @@ export async function listReplies(complaintId: number, conn: Connection = pool()
       figures: 'r.figures',
       mailState: 'o.state',
     });
-  return rows.map((row) => ({
-    ...row,
-    figures: typeof row.figures === 'string' ? (JSON.parse(row.figures) as Evidence) : row.figures,
-  }));
 }
 
 export interface SealedReply {
