@@ -105,4 +105,19 @@ describe('what stands out of a spectrum', () => {
     ]);
     expect(found.ranges[0]?.toHz).toBe(bandAt(1, -6).upperHz);
   });
+
+  test('octaves: adjacent ones above their usual level are one range, others are not', () => {
+    const { ranges } = standingOut({
+      fraction: 1,
+      bands: bandRange(1, 63, 1000),
+      levelsDb: [50, 50, 50, 50, 50],
+      usualDb: [44, 44, 50, 50, 44],
+      averagedSec: 900,
+    });
+    expect(ranges.map((range) => [range.lowerIndex, range.upperIndex])).toEqual([
+      [-12, -9],
+      [0, 0],
+    ]);
+    expect(ranges[0]?.levelDb).toBeCloseTo(53.0103, 4);
+  });
 });
