@@ -23,6 +23,7 @@ export function drawSpectrogram(
     context.drawImage(image, 0, 0, width, height);
   });
   const { x, y, height } = geometry.spectrogram;
+  writeText(surface, 'Hz', x - 8, y + height - 8, { colour: palette.inkSoft, align: 'right' });
   for (const tick of bandTicks(pixels.bands, height, 18)) {
     writeText(surface, tick.label, x - 8, y + tick.yPx, { colour: palette.inkSoft, align: 'right' });
   }

@@ -13,7 +13,10 @@ export function drawTimeAxis(surface: Surface, geometry: StripGeometry, view: Ti
     context.fillStyle = isDay ? palette.inkSoft : palette.line;
     const left = Math.round((x + px) * ratio) / ratio;
     context.fillRect(left, y - 4, 1 / ratio, 6);
-    if (isDay) context.fillRect(left, geometry.trace.y, 1 / ratio, geometry.trace.height);
+    if (isDay) {
+      context.fillStyle = palette.hatch;
+      context.fillRect(left, geometry.trace.y, 1 / ratio, geometry.trace.height);
+    }
     const half = textWidth(surface, tick.label) / 2;
     const middle = Math.min(width - half, Math.max(half - 20, px));
     writeText(surface, tick.label, x + middle, y + height / 2 + 2, {

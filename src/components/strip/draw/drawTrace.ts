@@ -27,6 +27,7 @@ export function drawTrace(surface: Surface, geometry: StripGeometry, picture: Tr
     context.fillRect(x, Math.round(at * ratio) / ratio, width, 1 / ratio);
     writeText(surface, String(db), x - 8, at, { colour: palette.inkSoft, align: 'right' });
   }
+  writeText(surface, 'dB', x - 8, y + 6, { colour: palette.inkSoft, align: 'right' });
   within(surface, geometry.trace, (device) => {
     washRuns(surface, picture, device.width, device.height);
     hatchGaps(surface, pixels, picture.elapsedPx, device.height);

@@ -25,7 +25,7 @@ const SOURCES: Record<keyof Palette, string> = {
   ink: 'var(--color-ink)',
   inkSoft: 'var(--color-ink-soft)',
   line: 'var(--color-line)',
-  track: 'color-mix(in oklab, var(--color-ink) 6%, transparent)',
+  track: 'color-mix(in oklab, var(--color-ink) 7%, transparent)',
   reed: 'var(--color-reed)',
   rust: 'var(--color-rust)',
   ochre: 'var(--color-ochre)',

@@ -18,15 +18,9 @@ export interface Columns {
 }
 
 /** A station's columns for a view. While finer or farther tiles are on their way, the layers that were there remain. */
-export function useColumns(
-  stationUrl: string,
-  view: TimeView,
-  widthPx: number,
-  intervalSec: number,
-  nowSec: number,
-): Columns {
+export function useColumns(stationUrl: string, view: TimeView, intervalSec: number, nowSec: number): Columns {
   const client = useQueryClient();
-  const tiles = widthPx > 0 ? tilesFor(view, widthPx, intervalSec, nowSec) : [];
+  const tiles = tilesFor(view, intervalSec, nowSec);
   const wanted = useQueries({ queries: tiles.map((tile) => tileQuery(stationUrl, tile, nowSec)) });
   const stepSec = tiles[0]?.stepSec;
   const fresh = wanted.flatMap(({ data }) => data ?? []);

@@ -55,7 +55,10 @@ export function usePicture(input: PictureInput): PictureMade {
     [fetched, display.fraction],
   );
   const widthPx = onDevice(geometry.spectrogram, ratio).width;
-  const pixels = useMemo(() => pixelColumns(layers, { fromSec, toSec }, widthPx), [layers, fromSec, toSec, widthPx]);
+  const pixels = useMemo(
+    () => pixelColumns(layers, { fromSec, toSec }, widthPx),
+    [layers, fromSec, toSec, widthPx],
+  );
   const weightsCentiDb = useMemo(
     () => pixels.bands.map((band) => Math.round(weightOfBandDb(band.index, display.weighting) * 100)),
     [pixels.bands, display.weighting],
@@ -87,7 +90,21 @@ export function usePicture(input: PictureInput): PictureMade {
       limits: lines.filter(({ runs }) => runs.length > 0),
       gapWords,
     }),
-    [geometry, fromSec, toSec, zone, nowSec, pixels, range, theme, weightsCentiDb, levels, layers, lines, gapWords],
+    [
+      geometry,
+      fromSec,
+      toSec,
+      zone,
+      nowSec,
+      pixels,
+      range,
+      theme,
+      weightsCentiDb,
+      levels,
+      layers,
+      lines,
+      gapWords,
+    ],
   );
   return { layers, weightsCentiDb, picture };
 }

@@ -1,6 +1,6 @@
 import { useQuery } from '@tanstack/react-query';
 import { formatInstantUtc } from '#lib/contracts/common';
-import { type Statistics } from '#lib/contracts/levels';
+import type { Statistics } from '#lib/contracts/levels';
 import { type Run } from '../model/runs';
 import { fetchJson } from './fetchJson';
 import { LIVE_EVERY_MS } from './useColumns';

@@ -43,8 +43,8 @@ export function pxOfLevel(range: LevelRange, heightPx: number, levelDb: number):
 }
 
 /**
- * The range that the colours of a spectrogram span, in fives of dB: all but the quietest and loudest two in a thousand of
- * the levels, at least 30 dB. `weightsCentiDb` is added per band (A-weighting in the A view).
+ * The range that the colours of a spectrogram span, in fives of dB: all but the quietest five and the loudest two in a
+ * thousand of the levels, at least 30 dB. `weightsCentiDb` is added per band (A-weighting in the A view).
  */
 export function colourRange(levelsCentiDb: Int16Array, weightsCentiDb: readonly number[]): LevelRange | null {
   const CLASSES = 512;
@@ -59,7 +59,7 @@ export function colourRange(levelsCentiDb: Int16Array, weightsCentiDb: readonly 
     total += 1;
   }
   if (total === 0) return null;
-  const lowDb = Math.floor(quantile(counts, total, 0.002) / 5) * 5;
+  const lowDb = Math.floor(quantile(counts, total, 0.005) / 5) * 5;
   const highDb = Math.ceil((quantile(counts, total, 0.998) + 0.5) / 5) * 5;
   return { lowDb, highDb: Math.max(highDb, lowDb + SHORTEST_DB) };
 }

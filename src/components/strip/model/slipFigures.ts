@@ -1,6 +1,6 @@
 import { bandByNominalHz, type Band, type BandFraction } from '#lib/acoustics/bands';
 import { energySumDb } from '#lib/acoustics/energy';
-import { type Statistics } from '#lib/contracts/levels';
+import type { Statistics } from '#lib/contracts/levels';
 import { type SelectionFigures } from './estimate';
 import { selectedBands, type Selection } from './selection';
 

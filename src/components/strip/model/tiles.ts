@@ -20,15 +20,15 @@ const QUARTER_SEC = 900;
 /** Share of the view that is fetched beyond each of its edges, so that a short pan has something to show. */
 const MARGIN = 0.15;
 
-/** More columns than this over a view are not seen. */
-const MOST_PIXELS = 1600;
+/** Columns that a view is resolved into at least, where the intervals are as short: finer than a pixel on most screens. */
+const LEAST_COLUMNS = 1600;
 
 /**
- * The tiles to show a view on `widthPx` device pixels: of the longest step that is no longer than a pixel and a whole
+ * The tiles to show a view: of the longest step that resolves it into `LEAST_COLUMNS` and is a whole
  * multiple of the station's interval. Tiles that begin after `latestSec` are left out.
  */
-export function tilesFor(view: TimeView, widthPx: number, intervalSec: number, latestSec: number): Tile[] {
-  const stepSec = stepFor(spanSec(view) / Math.min(MOST_PIXELS, Math.max(1, widthPx)), intervalSec);
+export function tilesFor(view: TimeView, intervalSec: number, latestSec: number): Tile[] {
+  const stepSec = stepFor(spanSec(view) / LEAST_COLUMNS, intervalSec);
   const lengthSec = stepSec * TILE_COLUMNS;
   const marginSec = spanSec(view) * MARGIN;
   const first = Math.floor(Math.max(0, view.fromSec - marginSec) / lengthSec);
@@ -40,9 +40,9 @@ export function tilesFor(view: TimeView, widthPx: number, intervalSec: number, l
   return tiles;
 }
 
-function stepFor(pixelSec: number, intervalSec: number): number {
+function stepFor(mostSec: number, intervalSec: number): number {
   const steps = ladderOf(intervalSec);
-  return steps.filter((step) => step <= pixelSec).at(-1) ?? steps[0] ?? intervalSec;
+  return steps.filter((step) => step <= mostSec).at(-1) ?? steps[0] ?? intervalSec;
 }
 
 function ladderOf(intervalSec: number): number[] {

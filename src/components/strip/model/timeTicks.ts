@@ -7,6 +7,7 @@ import {
   startOfDaySec,
 } from '#lib/time/zone';
 import { spanSec, type TimeView } from './timeView';
+import { dayWords } from './timeWords';
 
 /** A mark on the time axis. A `day` begins a civil date and carries it; a `time` carries the clock. */
 export interface TimeTick {
@@ -58,7 +59,7 @@ function fillHoles(secs: number[], stepSec: number): number[] {
 
 function clockTick(sec: number, zone: string): TimeTick {
   const minute = localMinuteAt(sec, zone);
-  if (minute === 0) return { sec, kind: 'day', label: dateLabel(sec, zone) };
+  if (minute === 0) return { sec, kind: 'day', label: dayWords(sec, zone) };
   const pad = (value: number) => String(value).padStart(2, '0');
   return { sec, kind: 'time', label: `${pad(Math.floor(minute / 60))}:${pad(minute % 60)}` };
 }
@@ -69,16 +70,5 @@ function dateTicks(view: TimeView, roomSec: number, zone: string): TimeTick[] {
   return dates
     .filter((date) => Math.round(Date.parse(`${date}T00:00:00Z`) / 86_400_000) % stepDays === 0)
     .map((date) => startOfDaySec(date, zone))
-    .map((sec) => ({ sec, kind: 'day', label: dateLabel(sec, zone) }));
-}
-
-function dateLabel(sec: number, zone: string): string {
-  return new Intl.DateTimeFormat('en-GB', {
-    weekday: 'short',
-    day: 'numeric',
-    month: 'short',
-    timeZone: zone,
-  })
-    .format(new Date(sec * 1000))
-    .replace(',', '');
+    .map((sec) => ({ sec, kind: 'day', label: dayWords(sec, zone) }));
 }

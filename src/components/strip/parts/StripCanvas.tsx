@@ -18,7 +18,10 @@ export const StripCanvas = memo(function StripCanvas({ picture, ratio, theme }: 
   useLayoutEffect(() => {
     const context = canvas.current?.getContext('2d');
     if (!canvas.current || !context) return;
-    drawStrip({ context, ratio, palette: readPalette(canvas.current.parentElement ?? document.body) }, picture);
+    drawStrip(
+      { context, ratio, palette: readPalette(canvas.current.parentElement ?? document.body) },
+      picture,
+    );
   }, [picture, ratio, theme, areFontsReady]);
 
   return (

@@ -1,0 +1,39 @@
+import { useMemo } from 'react';
+import { type BandFraction } from '#lib/acoustics/bands';
+import { estimateFigures } from '../model/estimate';
+import { type Selection } from '../model/selection';
+import { figuresOfEstimate, figuresOfStatistics, type SlipFigures } from '../model/slipFigures';
+import { type StripColumns } from '../model/stripColumns';
+import { useDebounced } from './useDebounced';
+import { useStatistics } from './useStatistics';
+
+/** Time that a selection must stand still before the server is asked. */
+const SETTLE_MS = 250;
+
+interface SlipInput {
+  stationUrl: string;
+  selection: Selection;
+  /** Whether the person has let go of it. */
+  isSettled: boolean;
+  layers: readonly StripColumns[];
+  fraction: BandFraction;
+  intervalSec: number;
+  nowSec: number;
+}
+
+/** Figures of a selection: the estimate from the screen in the same frame, then the server's. */
+export function useSlipFigures(input: SlipInput): { figures: SlipFigures | null; error: Error | null } {
+  const { stationUrl, selection, layers, fraction, intervalSec, nowSec } = input;
+  const { fromSec, toSec } = selection;
+  const settled = useDebounced(`${fromSec}/${toSec}`, SETTLE_MS);
+  const isSettled = input.isSettled && settled === `${fromSec}/${toSec}`;
+  const statistics = useStatistics(stationUrl, { fromSec, toSec }, isSettled, nowSec);
+  const estimate = useMemo(
+    () => estimateFigures(layers, { fromSec, toSec }, intervalSec, nowSec),
+    [layers, fromSec, toSec, intervalSec, nowSec],
+  );
+  const figures = statistics.data
+    ? figuresOfStatistics(statistics.data, fraction)
+    : estimate && figuresOfEstimate(estimate);
+  return { figures, error: statistics.error };
+}

@@ -1,0 +1,61 @@
+import { formatInstantUtc } from '#lib/contracts/common';
+import { formatLevelDb } from '#lib/format/levels';
+import { type StripGeometry } from '../draw/geometry';
+import { exceedanceMarks, type ExceedanceMark, type StripExceedance } from '../model/exceedanceMarks';
+import { stretchWords } from '../model/timeWords';
+import { pxAtSec, type TimeView } from '../model/timeView';
+
+interface ExceedanceMarksProps {
+  exceedances: readonly StripExceedance[];
+  view: TimeView;
+  geometry: StripGeometry;
+  zone: string;
+  /** Address of the network's exceedances. */
+  listUrl: string;
+}
+
+/** A triangle at each exceedance that leads to it; several close together share one that leads to the list. */
+export function ExceedanceMarks({ exceedances, view, geometry, zone, listUrl }: ExceedanceMarksProps) {
+  const { x, y, width, height } = geometry.marks;
+  const marks = exceedanceMarks(exceedances, (sec) => pxAtSec(view, width, sec), width, 15);
+  return marks.map((mark) => (
+    <a
+      key={mark.exceedances[0]?.id}
+      href={addressOf(mark, listUrl)}
+      title={wordsOf(mark, zone)}
+      aria-label={wordsOf(mark, zone)}
+      className="absolute flex items-center justify-center text-rust"
+      style={{ left: x + mark.px - 9, top: y, width: 18, height }}
+    >
+      {mark.exceedances.length === 1 ? (
+        <svg viewBox="0 0 12 10" width="11" height="9" aria-hidden="true">
+          <path d="M0 0h12L6 10z" fill="currentColor" />
+        </svg>
+      ) : (
+        <svg viewBox="0 0 18 16" width="18" height="16" aria-hidden="true">
+          <path d="M0 0h18L9 16z" fill="currentColor" />
+          <text x="9" y="8.5" textAnchor="middle" fontSize="9" fontWeight="700" className="fill-paper">
+            {mark.exceedances.length > 9 ? '9+' : mark.exceedances.length}
+          </text>
+        </svg>
+      )}
+    </a>
+  ));
+}
+
+function addressOf({ exceedances }: ExceedanceMark, listUrl: string): string {
+  const [first] = exceedances;
+  if (exceedances.length === 1 && first) return `${listUrl}/${first.id}`;
+  const from = Math.min(...exceedances.map(({ fromSec }) => fromSec));
+  const to = Math.max(...exceedances.map(({ toSec }) => toSec));
+  const query = new URLSearchParams({ from: formatInstantUtc(from), to: formatInstantUtc(to) });
+  return `${listUrl}?${query.toString()}`;
+}
+
+function wordsOf({ exceedances }: ExceedanceMark, zone: string): string {
+  const [first] = exceedances;
+  if (!first) return '';
+  if (exceedances.length > 1) return `${exceedances.length} exceedances from ${stretchWords(first, zone)}`;
+  const { limitName, levelDb, thresholdDb } = first;
+  return `Exceedance, ${stretchWords(first, zone)}: ${formatLevelDb(levelDb)} dB, ${limitName}, limit ${thresholdDb} dB`;
+}

@@ -1,0 +1,80 @@
+import { useId } from 'react';
+import { type BandFraction } from '#lib/acoustics/bands';
+import { type Selection } from '../model/selection';
+import { markedBandsLeqDb, type SlipFigures } from '../model/slipFigures';
+import { stretchWords } from '../model/timeWords';
+import { formatDuration } from '#lib/format/durations';
+import { formatCoverage } from '#lib/format/levels';
+import { bandRangeWords } from '../model/bandWords';
+import { SlipActions, type SlipContext } from './SlipActions';
+import { SlipFigureList } from './SlipFigureList';
+import { SlipSpectrum } from './SlipSpectrum';
+
+interface ReadingSlipProps {
+  selection: Selection;
+  /** Whether it was marked by the person; else it is what the strip shows. */
+  isMarked: boolean;
+  figures: SlipFigures | null;
+  error: Error | null;
+  fraction: BandFraction;
+  context: SlipContext;
+  onClear: () => void;
+}
+
+/** The figures of exactly what is marked on the strip, its spectrum, what stands out, and what can be done next. */
+export function ReadingSlip({
+  selection,
+  isMarked,
+  figures,
+  error,
+  fraction,
+  context,
+  onClear,
+}: ReadingSlipProps) {
+  const headingId = useId();
+  const { bands } = selection;
+  return (
+    <aside aria-labelledby={headingId} className="slip text-table">
+      <div className="flex items-start justify-between gap-2">
+        <h2 id={headingId} className="text-body leading-snug">
+          {stretchWords(selection, context.zone)}
+          {bands && ` · ${bandRangeWords(bands)}`}
+        </h2>
+        {isMarked && (
+          <button
+            type="button"
+            onClick={onClear}
+            aria-label="Clear the selection"
+            title="Clear the selection (Escape)"
+            className="-mt-1 -mr-2 grid size-8 shrink-0 place-items-center rounded text-lg text-ink-soft hover:bg-ink/5"
+          >
+            ×
+          </button>
+        )}
+      </div>
+      <p className="mb-2 min-h-[1.4em] text-ink-soft">
+        {formatDuration(selection.toSec - selection.fromSec)}
+        {figures && <CoverageWords figures={figures} />}
+      </p>
+      {error && <p className="border-l-[3px] border-rust pl-3">{error.message}</p>}
+      <SlipFigureList
+        figures={figures}
+        bandsLeqDb={figures && markedBandsLeqDb(figures, selection)}
+        bands={bands}
+      />
+      {figures && <SlipSpectrum figures={figures} selection={selection} fraction={fraction} />}
+      <SlipActions selection={selection} isMarked={isMarked} context={context} />
+    </aside>
+  );
+}
+
+function CoverageWords({ figures }: { figures: SlipFigures }) {
+  if (figures.expectedSec === 0) return ', still to come';
+  return (
+    <>
+      , {formatCoverage(figures.validSec / figures.expectedSec)} covered
+      {figures.meetsMinimum === false && <span className="text-ochre-text"> — not enough data</span>}
+      {figures.isEstimate && ' · from the screen'}
+    </>
+  );
+}

@@ -1,0 +1,83 @@
+import { useState } from 'react';
+import { formatInstantUtc } from '#lib/contracts/common';
+import { periodQuery } from '../hooks/useStatistics';
+import { formatSelection, type Selection } from '../model/selection';
+import { ExcludeForm } from './ExcludeForm';
+
+/** Where the slip's actions lead and who may do them. */
+export interface SlipContext {
+  slug: string;
+  stationCode: string;
+  zone: string;
+  mayExclude: boolean;
+  mayLogComplaints: boolean;
+}
+
+interface SlipActionsProps {
+  selection: Selection;
+  isMarked: boolean;
+  context: SlipContext;
+}
+
+/** What can be done with a stretch of time: look closer, log a complaint, leave it out, pass it on, take the numbers. */
+export function SlipActions({ selection, isMarked, context }: SlipActionsProps) {
+  const [isExcluding, setExcluding] = useState(false);
+  const { slug, stationCode } = context;
+  const period = periodQuery(selection);
+  const code = encodeURIComponent(stationCode);
+  const complaint = new URLSearchParams({
+    from: formatInstantUtc(selection.fromSec),
+    to: formatInstantUtc(selection.toSec),
+    station: stationCode,
+  });
+  return (
+    <div className="mt-4 flex flex-wrap gap-2">
+      {isMarked && (
+        <a
+          className="button button-primary"
+          href={`/n/${slug}/stations/${code}?${period}#selection=${formatSelection(selection)}`}
+        >
+          Zoom here
+        </a>
+      )}
+      {context.mayLogComplaints && (
+        <a className="button" href={`/n/${slug}/complaints/new?${complaint.toString()}`}>
+          Log complaint
+        </a>
+      )}
+      {context.mayExclude && isMarked && (
+        <button
+          type="button"
+          className="button"
+          aria-expanded={isExcluding}
+          onClick={() => setExcluding(!isExcluding)}
+        >
+          Exclude
+        </button>
+      )}
+      <CopyLink />
+      <a className="button" href={`/api/v1/networks/${slug}/stations/${code}/intervals.csv?${period}`}>
+        CSV
+      </a>
+      {isExcluding && isMarked && (
+        <ExcludeForm selection={selection} context={context} onDone={() => setExcluding(false)} />
+      )}
+    </div>
+  );
+}
+
+function CopyLink() {
+  const [state, setState] = useState<'ready' | 'copied' | 'failed'>('ready');
+  const copy = () =>
+    navigator.clipboard.writeText(location.href).then(
+      () => setState('copied'),
+      () => setState('failed'),
+    );
+  return (
+    <button type="button" className="button" onClick={() => void copy()}>
+      <span aria-live="polite">
+        {{ ready: 'Copy link', copied: 'Link copied', failed: 'Copy the address above' }[state]}
+      </span>
+    </button>
+  );
+}
