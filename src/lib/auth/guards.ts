@@ -1,6 +1,6 @@
 import type { APIContext } from 'astro';
 import { findStation, findStationById, type StationRow } from '#db/queries/stations';
-import { findStationToken } from '#db/queries/stationTokens';
+import { findStationToken, noteTokenUse } from '#db/queries/stationTokens';
 import { notAllowed, notFound, Problem, signInFirst } from '#lib/http/problem';
 import { enterNetwork, type NetworkAccess } from './networkAccess';
 import { bearerToken } from './requestUser';
@@ -36,10 +36,8 @@ export async function requireStation(networkId: number, code: string | undefined
   return station;
 }
 
-/** The station whose token a monitor sent. @throws {Problem} 401 */
-export async function requireStationToken(
-  request: Request,
-): Promise<{ tokenId: number; station: StationRow }> {
+/** The station whose token a monitor sent; notes that it was used. @throws {Problem} 401 */
+export async function requireStationToken(request: Request): Promise<StationRow> {
   const secret = bearerToken(request);
   const token = secret === null ? undefined : await findStationToken(secret);
   const station = token && (await findStationById(token.stationId));
@@ -54,5 +52,8 @@ export async function requireStationToken(
       },
     );
   }
-  return { tokenId: token.tokenId, station };
+  const now = new Date();
+  if (!token.lastUsedAt || now.getTime() - token.lastUsedAt.getTime() > 60_000)
+    await noteTokenUse(token.tokenId, now);
+  return station;
 }

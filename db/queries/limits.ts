@@ -1,0 +1,156 @@
+import type { BandFraction } from '#lib/acoustics/bands';
+import { pool, type Connection } from './connection';
+
+export type LimitMetric = 'LAeq' | 'LAFmax' | 'bandLeq';
+export type LimitAveraging = '15min' | '1h' | 'day' | 'evening' | 'night';
+
+/** One version of a limit. A window is judged by the version in force when it begins. */
+export interface LimitVersion {
+  id: number;
+  limitId: number;
+  networkId: number;
+  version: number;
+  effectiveFromSec: number;
+  name: string;
+  metric: LimitMetric;
+  averaging: LimitAveraging;
+  /** Of a band limit, else null. */
+  bandFraction: BandFraction | null;
+  bandIndex: number | null;
+  /** Exceeded when the level, rounded half up to tenths of a dB, is greater. */
+  thresholdTenths: number;
+  /** Bit 0 Monday … bit 6 Sunday, of the local date on which the window begins. */
+  weekdays: number;
+  /** Local clock, minutes after midnight, between which a window must begin; null: all day. `toMin` before `fromMin`: across midnight. */
+  fromMin: number | null;
+  toMin: number | null;
+  /** Null: the network's minimum. */
+  minimumCoverage: number | null;
+  /** Null: every station of the network. */
+  stationIds: number[] | null;
+  recipients: string[];
+  reason: string;
+  createdBy: string | null;
+  createdAt: Date;
+  /** When the limit itself was withdrawn. */
+  withdrawnAt: Date | null;
+}
+
+export type NewLimitVersion = Omit<
+  LimitVersion,
+  'id' | 'limitId' | 'networkId' | 'version' | 'createdAt' | 'withdrawnAt'
+>;
+
+interface Row extends Omit<LimitVersion, 'stationIds' | 'recipients'> {
+  stationIds: string | number[] | null;
+  recipients: string | string[];
+}
+
+/** Every version of a network's limits, of each limit the oldest first; withdrawn limits too. */
+export async function listLimitVersions(
+  networkId: number,
+  conn: Connection = pool(),
+): Promise<LimitVersion[]> {
+  const rows: Row[] = await selectVersions(conn).where({ 'l.network_id': networkId });
+  return rows.map(versionOf);
+}
+
+/** The versions of one limit of a network, oldest first; empty when the network has no such limit. */
+export async function findLimit(
+  networkId: number,
+  limitId: number,
+  conn: Connection = pool(),
+): Promise<LimitVersion[]> {
+  const rows: Row[] = await selectVersions(conn).where({ 'l.network_id': networkId, 'l.id': limitId });
+  return rows.map(versionOf);
+}
+
+/** Adds a limit with its first version and answers its id. */
+export async function insertLimit(
+  networkId: number,
+  version: NewLimitVersion,
+  conn: Connection,
+): Promise<number> {
+  const [id] = await conn('limits').insert({ network_id: networkId, created_at: new Date() });
+  await insertVersion(Number(id), 1, version, conn);
+  return Number(id);
+}
+
+/** Adds the next version of a limit. */
+export async function insertVersion(
+  limitId: number,
+  version: number,
+  fields: NewLimitVersion,
+  conn: Connection,
+): Promise<void> {
+  await conn('limit_versions').insert({
+    limit_id: limitId,
+    version,
+    effective_from: fields.effectiveFromSec,
+    name: fields.name,
+    metric: fields.metric,
+    averaging: fields.averaging,
+    band_fraction: fields.bandFraction,
+    band_index: fields.bandIndex,
+    threshold_tenths: fields.thresholdTenths,
+    weekdays: fields.weekdays,
+    from_min: fields.fromMin,
+    to_min: fields.toMin,
+    minimum_coverage: fields.minimumCoverage,
+    station_ids: fields.stationIds && JSON.stringify(fields.stationIds),
+    recipients: JSON.stringify(fields.recipients),
+    reason: fields.reason,
+    created_by: fields.createdBy,
+    created_at: new Date(),
+  });
+}
+
+/** Withdraws a limit: windows that begin from now on are not judged by it. Answers whether it stood. */
+export async function withdrawLimit(limitId: number, userId: string, conn: Connection): Promise<boolean> {
+  const changed = await conn('limits')
+    .where({ id: limitId, withdrawn_at: null })
+    .update({ withdrawn_at: new Date(), withdrawn_by: userId });
+  return changed > 0;
+}
+
+function selectVersions(conn: Connection) {
+  return conn('limit_versions as v')
+    .join('limits as l', 'l.id', 'v.limit_id')
+    .orderBy(['v.limit_id', 'v.version'])
+    .select({
+      id: 'v.id',
+      limitId: 'v.limit_id',
+      networkId: 'l.network_id',
+      version: 'v.version',
+      effectiveFromSec: 'v.effective_from',
+      name: 'v.name',
+      metric: 'v.metric',
+      averaging: 'v.averaging',
+      bandFraction: 'v.band_fraction',
+      bandIndex: 'v.band_index',
+      thresholdTenths: 'v.threshold_tenths',
+      weekdays: 'v.weekdays',
+      fromMin: 'v.from_min',
+      toMin: 'v.to_min',
+      minimumCoverage: 'v.minimum_coverage',
+      stationIds: 'v.station_ids',
+      recipients: 'v.recipients',
+      reason: 'v.reason',
+      createdBy: 'v.created_by',
+      createdAt: 'v.created_at',
+      withdrawnAt: 'l.withdrawn_at',
+    });
+}
+
+function versionOf(row: Row): LimitVersion {
+  return {
+    ...row,
+    stationIds: parsed<number[] | null>(row.stationIds),
+    recipients: parsed<string[]>(row.recipients),
+  };
+}
+
+/** The driver gives JSON columns as text or parsed, depending on the server's version. */
+function parsed<T>(value: string | T): T {
+  return typeof value === 'string' ? (JSON.parse(value) as T) : value;
+}

@@ -1,0 +1,72 @@
+import { pool, type Connection } from './connection';
+
+/** The newest interval of a station, and when the station last posted anything new. */
+export interface LatestInterval {
+  stationId: number;
+  startSec: number;
+  durationSec: number;
+  laeqCentiDb: number;
+  lafmaxCentiDb: number | null;
+  flags: number;
+  windSpeedMs: number | null;
+  batteryV: number | null;
+  receivedAt: Date;
+}
+
+/** Notes what a post brought; an interval older than the one noted moves only the time of the last post. */
+export async function noteLatest(latest: LatestInterval, conn: Connection): Promise<void> {
+  const newer = (column: string) =>
+    `${column} = IF(VALUES(starts_at) > starts_at, VALUES(${column}), ${column})`;
+  // starts_at comes last: the other assignments compare with its old value.
+  const columns = [
+    'duration_sec',
+    'laeq_centi_db',
+    'lafmax_centi_db',
+    'flags',
+    'wind_speed_centi_ms',
+    'battery_centi_v',
+  ];
+  await conn.raw(
+    `INSERT INTO station_latest (station_id, starts_at, ${columns.join(', ')}, received_at)
+     VALUES (?, ?, ?, ?, ?, ?, ?, ?, ?)
+     ON DUPLICATE KEY UPDATE ${columns.map(newer).join(', ')}, received_at = GREATEST(received_at, VALUES(received_at)),
+       starts_at = GREATEST(starts_at, VALUES(starts_at))`,
+    [
+      latest.stationId,
+      latest.startSec,
+      latest.durationSec,
+      latest.laeqCentiDb,
+      latest.lafmaxCentiDb,
+      latest.flags,
+      latest.windSpeedMs === null ? null : Math.round(latest.windSpeedMs * 100),
+      latest.batteryV === null ? null : Math.round(latest.batteryV * 100),
+      latest.receivedAt,
+    ],
+  );
+}
+
+/** The newest interval of each station of a network that has posted. */
+export async function listLatest(networkId: number, conn: Connection = pool()): Promise<LatestInterval[]> {
+  const rows: (Omit<LatestInterval, 'windSpeedMs' | 'batteryV'> & {
+    wind: number | null;
+    battery: number | null;
+  })[] = await conn('station_latest')
+    .join('stations', 'stations.id', 'station_latest.station_id')
+    .where({ 'stations.network_id': networkId })
+    .select({
+      stationId: 'station_id',
+      startSec: 'starts_at',
+      durationSec: 'duration_sec',
+      laeqCentiDb: 'laeq_centi_db',
+      lafmaxCentiDb: 'lafmax_centi_db',
+      flags: 'flags',
+      wind: 'wind_speed_centi_ms',
+      battery: 'battery_centi_v',
+      receivedAt: 'received_at',
+    });
+  return rows.map(({ wind, battery, ...row }) => ({
+    ...row,
+    windSpeedMs: wind === null ? null : wind / 100,
+    batteryV: battery === null ? null : battery / 100,
+  }));
+}

@@ -1,0 +1,62 @@
+import { bandByNominalHz, type BandFraction } from '#lib/acoustics/bands';
+import { MOST_INTERVALS } from '#lib/contracts/intervals';
+
+/** A post as far as it concerns all of its records. */
+export interface Envelope {
+  /** As sent, kept beside a refused record. */
+  bands: unknown;
+  /** Absolute indices of the bands, or why no record can be read by them. */
+  bandIndices: { indices: number[] } | { problem: string };
+  intervals: unknown[];
+}
+
+/** No record of a post can be told from another, or there are too many. Nothing of it is kept. */
+export class UnreadablePost extends Error {
+  constructor(
+    readonly kind: 'unreadable' | 'too-large',
+    readonly detail: string,
+  ) {
+    super(detail);
+    this.name = 'UnreadablePost';
+  }
+}
+
+const unreadable = (detail: string) => new UnreadablePost('unreadable', detail);
+
+/** Reads the envelope of a post. @throws {UnreadablePost} */
+export function readEnvelope(text: string, fraction: BandFraction): Envelope {
+  const { bands, intervals } = parse(text);
+  if (!Array.isArray(intervals)) throw unreadable('`intervals` is missing or is not a list.');
+  if (intervals.length === 0) throw unreadable('`intervals` is empty.');
+  if (intervals.length > MOST_INTERVALS) {
+    throw new UnreadablePost('too-large', `A post may have at most ${MOST_INTERVALS} intervals.`);
+  }
+  if (!Array.isArray(bands)) throw unreadable('`bands` is missing or is not a list.');
+  return { bands, intervals, bandIndices: indicesOf(bands, fraction) };
+}
+
+function parse(text: string): { bands?: unknown; intervals?: unknown } {
+  try {
+    const body: unknown = JSON.parse(text);
+    if (typeof body === 'object' && body !== null && !Array.isArray(body)) return body;
+  } catch {
+    throw unreadable('The body is not JSON.');
+  }
+  throw unreadable('The body is not a JSON object.');
+}
+
+function indicesOf(bands: unknown[], fraction: BandFraction): Envelope['bandIndices'] {
+  const kind = fraction === 3 ? 'one-third-octave' : 'octave';
+  const indices: number[] = [];
+  for (const hz of bands) {
+    const band = typeof hz === 'number' ? bandByNominalHz(fraction, hz) : undefined;
+    if (!band) {
+      return {
+        problem: `${JSON.stringify(hz)?.slice(0, 40)} is not a nominal ${kind} frequency, which this station has.`,
+      };
+    }
+    if (band.index <= (indices.at(-1) ?? -Infinity)) return { problem: 'Bands must ascend.' };
+    indices.push(band.index);
+  }
+  return { indices };
+}

@@ -1,0 +1,23 @@
+import { readEnvelope, UnreadablePost } from '#ingest/receive/envelope';
+import { receiveBatch } from '#ingest/receive/receive';
+import { requireStationToken } from '#lib/auth/guards';
+import { Problem } from '#lib/http/problem';
+import { readMonitorBody } from '#lib/http/readMonitorBody';
+import { json } from '#lib/http/respond';
+import { route } from '#lib/http/route';
+
+export const POST = route(async ({ request }) => {
+  const station = await requireStationToken(request);
+  const text = await readMonitorBody(request);
+  try {
+    return json(await receiveBatch(station, readEnvelope(text, station.bandFraction), new Date()));
+  } catch (error) {
+    throw error instanceof UnreadablePost ? problemOf(error) : error;
+  }
+});
+
+function problemOf({ kind, detail }: UnreadablePost): Problem {
+  return kind === 'too-large'
+    ? new Problem(413, 'too-large', 'Too large', detail)
+    : new Problem(422, 'unreadable', 'No intervals could be read', detail);
+}

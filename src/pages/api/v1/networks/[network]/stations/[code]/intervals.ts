@@ -1,0 +1,31 @@
+import { requireNetwork, requireStation } from '#lib/auth/guards';
+import { ALL_ROLES } from '#lib/auth/roles';
+import { MOST_INTERVALS } from '#lib/contracts/intervals';
+import { intervalsCsvResponse, wantsCsv } from '#lib/http/intervalsCsv';
+import { makeCursor, parseCount, parseCursor, parsePeriod } from '#lib/http/parse';
+import { badRequest } from '#lib/http/problem';
+import { json } from '#lib/http/respond';
+import { route } from '#lib/http/route';
+import { listIntervals, MixedBandFractions } from '#lib/services/intervals/list';
+
+const DEFAULT_LIMIT = 1000;
+
+export const GET = route(async (context) => {
+  const { network } = await requireNetwork(context, context.params['network'], ALL_ROLES);
+  const station = await requireStation(network.id, context.params['code']);
+  const period = parsePeriod(context.url);
+  if (wantsCsv(context.request)) return intervalsCsvResponse(station, period);
+  const limit = parseCount(context.url, 'limit', { fallback: DEFAULT_LIMIT, most: MOST_INTERVALS });
+  const [fromSec = period.fromSec] = parseCursor(context.url) ?? [];
+  try {
+    const page = await listIntervals(
+      station,
+      { ...period, fromSec: Math.max(fromSec, period.fromSec) },
+      limit,
+    );
+    const next = page.nextStartSec === null ? null : makeCursor([page.nextStartSec]);
+    return json({ ...page.list, next });
+  } catch (error) {
+    throw error instanceof MixedBandFractions ? badRequest(error.message) : error;
+  }
+});
