@@ -57,6 +57,7 @@ export async function listReplies(complaintId: number, conn: Connection = pool()
 }
 
 export interface SealedReply {
+  id: number;
   complaintId: number;
   wrappedKey: Buffer;
   ciphertext: Buffer;
@@ -67,10 +68,26 @@ export async function findSealedReply(
   replyId: number,
   conn: Connection = pool(),
 ): Promise<SealedReply | undefined> {
+  return selectSealed(conn).where({ 'r.id': replyId }).first();
+}
+
+/** Sealed replies of a complaint; none once its personal data have been erased. */
+export async function listSealedReplies(
+  complaintId: number,
+  conn: Connection = pool(),
+): Promise<SealedReply[]> {
+  return selectSealed(conn).where({ 'r.complaint_id': complaintId }).orderBy('r.id');
+}
+
+function selectSealed(conn: Connection) {
   return conn('complaint_replies as r')
     .join('complaint_keys as k', 'k.complaint_id', 'r.complaint_id')
-    .where({ 'r.id': replyId })
-    .first({ complaintId: 'r.complaint_id', wrappedKey: 'k.wrapped_key', ciphertext: 'r.ciphertext' });
+    .select({
+      id: 'r.id',
+      complaintId: 'r.complaint_id',
+      wrappedKey: 'k.wrapped_key',
+      ciphertext: 'r.ciphertext',
+    });
 }
 
 /** Gives up e-mails of a complaint's replies that have not gone yet: whom they were for is being erased. */

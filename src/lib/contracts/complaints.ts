@@ -124,6 +124,7 @@ export const replySchema = z.object({
   sentAt: z.string(),
   sentBy: z.string(),
   delivery: z.enum(REPLY_STATES).describe('State of the e-mail; "letter": printed and posted'),
+  text: z.string().nullable().optional().describe('Left out for those who may not read it; null once erased'),
   figures: evidenceSchema,
 });
 export type Reply = z.output<typeof replySchema>;

@@ -345,6 +345,9 @@ describe('evidence and reply', () => {
     const seen = JSON.stringify(await get(reference, sessions.regulator));
     expect(seen).toContain('"LAeq":57.4');
     expect(seen).not.toContain('secret text');
+    expect(await get(reference, sessions.liaison)).toMatchObject({
+      replies: [{ text: 'Dear Ada Wren, secret text' }],
+    });
   });
 
   test('figures that changed since the draft stop the reply', async () => {
@@ -402,7 +405,7 @@ describe('evidence and reply', () => {
       });
       const seen = (await get(reference, sessions.liaison)) as Record<string, unknown>;
       expect(seen).toMatchObject({ private: null, status: 'answered', kind: 'hum' });
-      expect(seen['replies']).toMatchObject([{ figures: { stations: [{ LAeq: 57.4 }, {}] } }]);
+      expect(seen['replies']).toMatchObject([{ text: null, figures: { stations: [{ LAeq: 57.4 }, {}] } }]);
       expect((await answer(reference, { text: 'again' })).status).toBe(409);
     });
 

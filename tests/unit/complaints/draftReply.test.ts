@@ -208,6 +208,6 @@ test('without a name or a place the letter invents neither', () => {
 });
 
 test('coverage is never rounded up to all or down to nothing', () => {
-  expect(draft([stationEvidence({ coverage: 0.9994 })])).toContain('measured more than 99 % of that time');
+  expect(draft([stationEvidence({ coverage: 0.9994 })])).toContain('measured 99 % of that time');
   expect(draft([stationEvidence({ coverage: 0.001, meetsMinimum: false })])).toContain('less than 1 %');
 });

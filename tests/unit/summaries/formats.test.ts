@@ -6,7 +6,7 @@ import { parse } from 'csv-parse/sync';
 import { afterAll, beforeAll, describe, expect, test } from 'vitest';
 import { roundHalfUp } from '#lib/acoustics/rounding';
 import { summarySchema } from '#lib/contracts/summaries';
-import { levelText } from '#lib/services/summaries/figures';
+import { formatLevelDb } from '#lib/format/levels';
 import { summaryCsv } from '#lib/services/summaries/summaryCsv';
 import { summaryPdf } from '#lib/services/summaries/summaryPdf';
 import { summaryOf, summaryStation } from './summaryFixture';
@@ -116,7 +116,7 @@ describe('PDF', () => {
     const all = pages.join(' ').replace(/\s+/g, ' ');
     expect(all).toContain('A night belongs to the date on which it begins');
     expect(all).toContain('zone Europe/London');
-    expect(all).toContain('minimum coverage is 75.0 %');
+    expect(all).toContain('minimum coverage is 75 %');
     expect(all).toContain('competent authority decide');
     expect(all).toContain('Complaints about noise that began in this month: 4, of which 3 answered');
   });
@@ -133,21 +133,21 @@ describe('PDF', () => {
     for (const { code, name, figures, days, bands } of summary.stations) {
       expect(line(pages[0], `${code} ${name}`)?.slice(0, 6)).toEqual(
         [figures.Lday, figures.Levening, figures.Lnight, figures.Lden, figures.LAeq, figures.LAFmax].map(
-          levelText,
+          formatLevelDb,
         ),
       );
       const at = pages.findIndex((page) => page.trimStart().startsWith(`${code} `));
       const table = pages[at + 1];
       for (const day of days.filter(({ periods }) => periods.whole.meetsMinimum)) {
         expect(line(table, day.date)?.slice(0, 4), day.date).toEqual(
-          [day.Lday, day.Levening, day.Lnight, day.Lden].map(levelText),
+          [day.Lday, day.Levening, day.Lnight, day.Lden].map(formatLevelDb),
         );
       }
-      expect(line(table, '2026-03-05')?.join(' ')).toContain(`† ${levelText(days[4]?.Lnight ?? null)}`);
+      expect(line(table, '2026-03-05')?.join(' ')).toContain(`† ${formatLevelDb(days[4]?.Lnight ?? null)}`);
       const hundred = bands.find(({ nominalHz }) => nominalHz === 100);
       expect(table).toMatch(
         new RegExp(
-          `100 Hz\\s+${[hundred?.Leq, hundred?.L10, hundred?.L50, hundred?.L90].map((db) => levelText(db ?? null)).join('\\s+')}`,
+          `100 Hz\\s+${[hundred?.Leq, hundred?.L10, hundred?.L50, hundred?.L90].map((db) => formatLevelDb(db ?? null)).join('\\s+')}`,
         ),
       );
     }
@@ -156,7 +156,7 @@ describe('PDF', () => {
   test('lists exceedances with limit, level and state', () => {
     const page = pages.find((text) => text.includes('Exceedances') && text.includes('Bands over the month'));
     expect(line(page, '=Night hours, "quiet"')).toEqual(
-      expect.arrayContaining(['17 Mar 2026, 03:00', '52.3', '50.0', '100.0 %', 'standing']),
+      expect.arrayContaining(['17 Mar 03:00', '52.3', '50.0', '100 %', 'standing']),
     );
     expect(line(page, 'Maximum')).toEqual(expect.arrayContaining(['88.0', '85.0', 'lifted']));
   });

@@ -40,7 +40,8 @@ export async function openCase(
 ): Promise<ComplaintCase | undefined> {
   const row = await findComplaint(network.id, reference);
   if (!row) return undefined;
-  const person = mayReadPersonalData ? await readPersonalData(userId, row) : undefined;
+  const file = mayReadPersonalData ? await readPersonalData(userId, row) : undefined;
+  const person = file === undefined ? undefined : (file?.person ?? null);
   const nowSec = Math.floor(now.getTime() / 1000);
   const [{ evidence, whereabouts }, replies] = await Promise.all([
     gatherEvidence({ network, complaint: row, place: person?.place ?? null, nowSec }),
@@ -50,7 +51,10 @@ export async function openCase(
     row,
     complaint: complaintView(row, localDateAt(nowSec, settings.timeZone)),
     evidence,
-    replies: replies.map(replyView),
+    replies: replies.map((reply) => ({
+      ...replyView(reply),
+      ...(file === undefined ? {} : { text: file?.letters.get(reply.id) ?? null }),
+    })),
     person,
     whereabouts,
   };

@@ -1,10 +1,18 @@
 import { appendAudit } from '#db/queries/audit';
 import { findSealedPerson } from '#db/queries/complaintPrivate';
+import { listSealedReplies } from '#db/queries/complaintReplies';
 import type { ComplaintRow } from '#db/queries/complaints';
 import { inTransaction, type Connection } from '#db/queries/connection';
 import { personalDataSchema, type PersonalData } from '#lib/contracts/complaints';
 import { openValue } from './personalData';
 import { filledFields } from './personalFields';
+import { openReply } from './replyMessage';
+
+/** What a look at personal data shows: the person, and the letters sent to them by reply id. */
+export interface PersonalFile {
+  person: PersonalData;
+  letters: ReadonlyMap<number, string>;
+}
 
 /**
  * Personal data of a complaint for a person who may read them (liaison or administrator: the caller has made sure).
@@ -13,25 +21,27 @@ import { filledFields } from './personalFields';
 export async function readPersonalData(
   userId: string,
   complaint: ComplaintRow,
-): Promise<PersonalData | null> {
+): Promise<PersonalFile | null> {
   return inTransaction(async (transaction) => {
     const person = await openPersonalData(complaint.id, transaction);
     if (!person) return null;
+    const sealed = await listSealedReplies(complaint.id, transaction);
+    const letters = new Map(sealed.map((reply) => [reply.id, openReply(reply).text]));
     await appendAudit(
       {
         userId,
         networkId: complaint.networkId,
         action: 'complaint.personal-data-read',
         subject: `complaint ${complaint.reference}`,
-        detail: { fields: filledFields(person) },
+        detail: { fields: [...filledFields(person), ...(letters.size > 0 ? ['letters'] : [])] },
       },
       transaction,
     );
-    return person;
+    return { person, letters };
   });
 }
 
-/** The same without an audit row, for acts that write one of their own. */
+/** The person without an audit row, for acts that write one of their own. */
 export async function openPersonalData(complaintId: number, conn: Connection): Promise<PersonalData | null> {
   const sealed = await findSealedPerson(complaintId, conn);
   if (!sealed) return null;

@@ -1,20 +1,14 @@
-import { DateTime } from 'luxon';
 import type { Convention, Summary } from '#lib/contracts/summaries';
-import { BELOW_MINIMUM, coverageText } from './figures';
+import { formatCoverage } from '#lib/format/levels';
+import { formatClock, formatDate } from '#lib/format/times';
+import { zoneAbbreviationAt } from '#lib/time/clockChange';
+import { BELOW_MINIMUM } from './figures';
 
-/** `March 2026` of `2026-03`. */
-export function monthName(month: string): string {
-  return DateTime.fromISO(`${month}-01`, { locale: 'en-GB', zone: 'utc' }).toFormat('LLLL yyyy');
-}
-
-/** An instant in the network's zone: `17 Mar 2026, 03:40`. */
+/** An instant in a zone, with the zone's abbreviation: `Tue 17 March 2026, 03:40 GMT`. */
 export function instantText(instant: string, zone: string): string {
-  return DateTime.fromISO(instant, { zone, locale: 'en-GB' }).toFormat('d LLL yyyy, HH:mm');
-}
-
-/** An instant with its distance from universal time, where a signature or a clock change is concerned. */
-export function exactInstantText(instant: string, zone: string): string {
-  return DateTime.fromISO(instant, { zone, locale: 'en-GB' }).toFormat(`d LLL yyyy, HH:mm '(UTC'Z')'`);
+  const sec = Date.parse(instant) / 1000;
+  const minute = sec - (sec % 60);
+  return `${formatDate(minute, zone)}, ${formatClock(minute, zone).slice(0, 5)} ${zoneAbbreviationAt(minute, zone)}`;
 }
 
 /** How a month's figures are made: every convention by which another reader could get others. */
@@ -48,7 +42,7 @@ function conventionSentences(convention: Convention, { timeZone }: Summary): str
     evening === null ? `day ${day}–${night}` : `day ${day}–${evening}, evening ${evening}–${night}`;
   return [
     `${since}Times are civil times of the zone ${convention.timeZone}; ${periods}, night ${night}–${day}. ` +
-      `The minimum coverage is ${coverageText(minimumCoverage)}.`,
+      `The minimum coverage is ${formatCoverage(minimumCoverage)}.`,
     `${since}Intervals are left out when the monitor flags calibration, self-check, overload, tampering, power loss, a set clock ` +
       `or wind, when the wind is above ${maximumWindSpeed} m/s` +
       `${excludeRain ? ', when it flags rain' : ''}, and where an operator excluded the period with a reason. They stay on record.`,

@@ -3,11 +3,11 @@ import { overview } from './pdf/overview';
 import { FONT, printPdf } from './pdf/printer';
 import { stationPages } from './pdf/stationPages';
 import { INK, SOFT_INK } from './pdf/typography';
-import { monthName } from './statement';
+import { formatMonth } from '#lib/format/times';
 
 /** The month as an A4 document to read, print and sign; every page says what it is and that it is a draft. */
 export function summaryPdf(summary: Summary): Promise<Buffer> {
-  const name = `${summary.network.name}, noise summary ${monthName(summary.month)}`;
+  const name = `${summary.network.name}, noise summary ${formatMonth(summary.month)}`;
   return printPdf({
     pageSize: 'A4',
     pageMargins: [57, 57, 57, 62],

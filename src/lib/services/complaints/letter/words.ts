@@ -29,10 +29,8 @@ export function differenceInWords(tenths: number): string {
   return `${(Math.abs(tenths) / 10).toFixed(1)} dB`;
 }
 
-/** A share in whole per cent that never turns "not all" into 100 % or "a little" into 0 %. */
+/** A share in whole per cent, rounded down as on every page, so that "100 %" is said of the whole only. */
 export function shareInWords(share: number): string {
-  const percent = Math.round(share * 100);
-  if (share < 1 && percent === 100) return 'more than 99 %';
-  if (share > 0 && percent === 0) return 'less than 1 %';
-  return `${percent} %`;
+  const percent = Math.floor(share * 100 + 1e-9);
+  return percent === 0 && share > 0 ? 'less than 1 %' : `${percent} %`;
 }

@@ -1,7 +1,9 @@
 import type { Content } from 'pdfmake/interfaces';
 import type { Summary, SummaryStation } from '#lib/contracts/summaries';
-import { BELOW_MINIMUM, coverageText, levelText, markedLevelText } from '../figures';
-import { CAUTIONS, exactInstantText, methodStatement, monthName } from '../statement';
+import { formatCoverage, formatLevelDb } from '#lib/format/levels';
+import { formatMonth } from '#lib/format/times';
+import { BELOW_MINIMUM, markedLevelText } from '../figures';
+import { CAUTIONS, instantText, methodStatement } from '../statement';
 import { BOOK_TABLE, cell, head, heading, paragraph, RUST, SOFT_INK } from './typography';
 
 /** First pages: whose month this is, every station in a line, how the figures are made, room to sign. */
@@ -10,7 +12,7 @@ export function overview(summary: Summary): Content[] {
   return [
     { text: network.name, color: SOFT_INK, fontSize: 11 },
     {
-      text: `Noise summary, ${monthName(month)}${isToDate ? ', to date' : ''}`,
+      text: `Noise summary, ${formatMonth(month)}${isToDate ? ', to date' : ''}`,
       bold: true,
       fontSize: 20,
       margin: [0, 2, 0, 4],
@@ -18,7 +20,7 @@ export function overview(summary: Summary): Content[] {
     {
       text: [
         { text: 'Draft, not issued. ', bold: true, color: RUST },
-        `Generated ${exactInstantText(generatedAt, timeZone)}; figures follow the data as of then.`,
+        `Generated ${instantText(generatedAt, timeZone)}; figures follow the data as of then.`,
         isToDate ? ' The month, or its last night, is not over: every figure is to date.' : '',
       ],
       margin: [0, 0, 0, 10],
@@ -62,8 +64,8 @@ function stationRow({ code, name, figures, exceedances }: SummaryStation) {
     cell(markedLevelText(figures.Lnight, periods.night.meetsMinimum)),
     cell(markedLevelText(figures.Lden, periods.whole.meetsMinimum)),
     cell(markedLevelText(figures.LAeq, figures.meetsMinimum)),
-    cell(levelText(figures.LAFmax)),
-    cell(coverageText(figures.coverage)),
+    cell(formatLevelDb(figures.LAFmax)),
+    cell(formatCoverage(figures.coverage)),
     cell(`${exceedances.standing}${lifted}`),
   ];
 }

@@ -1,8 +1,9 @@
 import { bandLabel } from '#lib/acoustics/bands';
 import type { Content, TableCell } from 'pdfmake/interfaces';
 import type { Coverage, SummaryDay, SummaryExceedance, SummaryStation } from '#lib/contracts/summaries';
-import { coverageText, levelText, markedLevelText } from '../figures';
-import { instantText } from '../statement';
+import { formatCoverage, formatLevelDb } from '#lib/format/levels';
+import { formatInstant, formatInstantShort } from '#lib/format/times';
+import { markedLevelText } from '../figures';
 import { bandChartSvg } from './bandChart';
 import { BOOK_TABLE, cell, head, heading, SOFT_INK, typeset } from './typography';
 
@@ -62,14 +63,14 @@ function figuresTable({ figures }: SummaryStation, timeZone: string): Content {
     { ...typeset(name) },
     cell(over, 'left'),
     cell(markedLevelText(level, meetsMinimum)),
-    cell(coverageText(coverage)),
+    cell(formatCoverage(coverage)),
   ];
   const samples =
     figures.sampleSeconds === null ? 'whole month' : `whole month, of LAeq,${figures.sampleSeconds} s`;
   const at =
     figures.LAFmaxAt === null
       ? 'whole month'
-      : `in the interval from ${instantText(figures.LAFmaxAt, timeZone)}`;
+      : `in the interval from ${formatInstant(Date.parse(figures.LAFmaxAt) / 1000, timeZone)}`;
   return {
     layout: BOOK_TABLE,
     table: {
@@ -115,7 +116,7 @@ function daysTable(days: readonly SummaryDay[]): Content {
           cell(markedLevelText(day.Levening, day.periods.evening?.meetsMinimum ?? true)),
           cell(markedLevelText(day.Lnight, day.periods.night.meetsMinimum)),
           cell(markedLevelText(day.Lden, day.periods.whole.meetsMinimum)),
-          cell(coverageText(day.periods.whole.coverage)),
+          cell(formatCoverage(day.periods.whole.coverage)),
         ]),
       ],
     },
@@ -133,10 +134,10 @@ function bandsTable({ bands }: SummaryStation): Content {
         [head('Band', 'left'), ...['Leq', 'L10', 'L50', 'L90'].map((text) => head(text))],
         ...bands.map((band) => [
           cell(bandLabel(band), 'left'),
-          cell(levelText(band.Leq)),
-          cell(levelText(band.L10)),
-          cell(levelText(band.L50)),
-          cell(levelText(band.L90)),
+          cell(formatLevelDb(band.Leq)),
+          cell(formatLevelDb(band.L10)),
+          cell(formatLevelDb(band.L50)),
+          cell(formatLevelDb(band.L90)),
         ]),
       ],
     },
@@ -184,10 +185,10 @@ function exceedanceRow(
   return [
     cell(limit, 'left'),
     { ...typeset(metric), alignment: 'left' },
-    cell(instantText(from, timeZone), 'left'),
-    cell(levelText(level)),
-    cell(levelText(threshold)),
-    cell(coverageText(coverage)),
+    cell(formatInstantShort(Date.parse(from) / 1000, timeZone), 'left'),
+    cell(formatLevelDb(level)),
+    cell(formatLevelDb(threshold)),
+    cell(formatCoverage(coverage)),
     cell(state, 'left'),
   ];
 }

@@ -1,11 +1,10 @@
+import { typesetRuns } from '#lib/format/descriptors';
 import type { Content, ContentText, CustomTableLayout, TableCell } from 'pdfmake/interfaces';
 
 export const INK = '#223029';
 export const SOFT_INK = '#5c675f';
 export const RULE = '#b9beb5';
 export const RUST = '#9c3d1f';
-
-const DESCRIPTOR = /L((?:den|day|evening|night|Aeq|A10|A50|A90|AFmax|eq|10|50|90)\b(?:,\d+ (?:s|min|h))?)/g;
 
 /** pdfmake sets a subscript at 0.58 of its size, which is too small to read in print at 9 pt. */
 const INDEX_SCALE = 1.25;
@@ -14,17 +13,15 @@ export const SMALL_SIZE = 8;
 
 /** Text in which acoustic descriptors are typeset: an italic L and its index below the line. `size` in points. */
 export function typeset(text: string, size = BODY_SIZE): ContentText {
-  const parts: Content[] = [];
-  let at = 0;
-  for (const match of text.matchAll(DESCRIPTOR)) {
-    parts.push(
-      text.slice(at, match.index),
-      { text: 'L', italics: true },
-      { text: match[1] ?? '', sub: true, fontSize: size * INDEX_SCALE },
-    );
-    at = match.index + match[0].length;
-  }
-  return { text: [...parts, text.slice(at)], fontSize: size };
+  const parts = typesetRuns(text).flatMap((run): Content[] =>
+    typeof run === 'string'
+      ? [run]
+      : [
+          { text: run.symbol, italics: true },
+          { text: run.subscript, sub: true, fontSize: size * INDEX_SCALE },
+        ],
+  );
+  return { text: parts, fontSize: size };
 }
 
 export function heading(text: string): Content {
