@@ -17,10 +17,13 @@ const MOST_ATTEMPTS = 4;
  * Runs `work` in one transaction: all of it is durable when the promise resolves, none of it when it rejects.
  * A deadlock or a lock that is not granted in time starts the work again, so `work` must have no other effects.
  */
-export async function inTransaction<T>(work: (transaction: Knex.Transaction) => Promise<T>): Promise<T> {
+export async function inTransaction<T>(
+  work: (transaction: Knex.Transaction) => Promise<T>,
+  settings: Pick<Knex.TransactionConfig, 'isolationLevel'> = {},
+): Promise<T> {
   for (let attempt = 1; ; attempt += 1) {
     try {
-      return await db().transaction(work);
+      return await db().transaction(work, settings);
     } catch (error) {
       if (attempt === MOST_ATTEMPTS || !isLockConflict(error)) throw error;
       await new Promise((resolve) => setTimeout(resolve, 10 * 4 ** attempt * (0.5 + attempt / 8)));

@@ -57,9 +57,22 @@ export async function findStationById(
   return conn('stations').where({ id }).first(STATION_COLUMNS);
 }
 
+/**
+ * Locks a station until the transaction ends. Whoever changes its intervals, what decides which of them count, or what is
+ * computed from them, holds this lock, so that each sees the other's whole work or nothing of it.
+ */
+export async function lockStation(id: number, transaction: Connection): Promise<void> {
+  await transaction('stations').where({ id }).forUpdate().first('id');
+}
+
 /** Stations of a network by code; retired ones too. */
 export async function listStations(networkId: number, conn: Connection = pool()): Promise<StationRow[]> {
   return conn('stations').where({ network_id: networkId }).orderBy('code').select(STATION_COLUMNS);
+}
+
+/** Ids of every station of every network. */
+export async function listStationIds(conn: Connection = pool()): Promise<number[]> {
+  return conn('stations').orderBy('id').pluck('id');
 }
 
 export type NewStation = Omit<StationRow, 'id' | 'createdAt' | 'retiredAt'>;

@@ -1,0 +1,71 @@
+import { BAND_SLOTS } from '#lib/acoustics/bands';
+import { LevelClassCounts } from '#lib/acoustics/classCounts';
+import { OCTAVE_SLOTS } from '#lib/acoustics/octaves';
+import { type BandClassCounts, type PeriodSums } from '#lib/acoustics/periodSums';
+
+/** Bytes of one band: slot (uint8), its valid seconds (uint32), its energy times seconds (float64), little endian. */
+const BAND_BYTES = 1 + 4 + 8;
+/** In place of bands: octaves and thirds both occurred, so there are no band sums. */
+const MIXED_MARK = 255;
+
+type BandSums = Pick<PeriodSums, 'isBandFractionMixed' | 'bandEnergySec' | 'bandValidSec'>;
+
+/** Band energies for the column `band_energies`: the bands that have valid seconds, ascending. Equal sums give equal bytes. */
+export function packBandEnergies(sums: BandSums): Buffer {
+  if (sums.isBandFractionMixed) return Buffer.of(MIXED_MARK);
+  const bytes = Buffer.alloc(BAND_SLOTS * BAND_BYTES);
+  let at = 0;
+  for (let slot = 0; slot < BAND_SLOTS; slot += 1) {
+    const validSec = sums.bandValidSec[slot] ?? 0;
+    if (validSec === 0) continue;
+    bytes.writeUInt8(slot, at);
+    bytes.writeUInt32LE(validSec, at + 1);
+    bytes.writeDoubleLE(sums.bandEnergySec[slot] ?? 0, at + 5);
+    at += BAND_BYTES;
+  }
+  return bytes.subarray(0, at);
+}
+
+/** Reads what `packBandEnergies` made. @throws RangeError for other bytes. */
+export function unpackBandEnergies(bytes: Buffer): BandSums {
+  const bandEnergySec = new Float64Array(BAND_SLOTS);
+  const bandValidSec = new Float64Array(BAND_SLOTS);
+  if (bytes.length === 1 && bytes[0] === MIXED_MARK) {
+    return { isBandFractionMixed: true, bandEnergySec, bandValidSec };
+  }
+  if (bytes.length % BAND_BYTES !== 0) throw new RangeError('Band energies end within a band.');
+  for (let at = 0; at < bytes.length; at += BAND_BYTES) {
+    const slot = bytes.readUInt8(at);
+    if (slot >= BAND_SLOTS) throw new RangeError(`${slot} is not a slot of a band.`);
+    bandValidSec[slot] = bytes.readUInt32LE(at + 1);
+    bandEnergySec[slot] = bytes.readDoubleLE(at + 5);
+  }
+  return { isBandFractionMixed: false, bandEnergySec, bandValidSec };
+}
+
+/** Distributions of every band, then of every octave, each as its length (uint16, little endian) and its bytes. */
+export function packBandClasses({ bands, octaves }: BandClassCounts): Buffer {
+  const parts: Uint8Array[] = [];
+  for (const counts of [...bands, ...octaves]) {
+    const bytes = counts.encode();
+    const length = Buffer.alloc(2);
+    length.writeUInt16LE(bytes.length);
+    parts.push(length, bytes);
+  }
+  return Buffer.concat(parts);
+}
+
+/** Reads what `packBandClasses` made. @throws RangeError for other bytes. */
+export function unpackBandClasses(bytes: Buffer): BandClassCounts {
+  let at = 0;
+  const next = (): LevelClassCounts => {
+    const length = bytes.readUInt16LE(at);
+    const counts = LevelClassCounts.decode(bytes.subarray(at + 2, at + 2 + length));
+    at += 2 + length;
+    return counts;
+  };
+  const bands = Array.from({ length: BAND_SLOTS }, next);
+  const octaves = Array.from({ length: OCTAVE_SLOTS }, next);
+  if (at !== bytes.length) throw new RangeError('Bytes follow the last distribution.');
+  return { bands, octaves };
+}

@@ -1,0 +1,100 @@
+import { type PeriodSums } from '#lib/acoustics/periodSums';
+import { BAND_COLUMNS, rowOfSums, SUMS_COLUMNS, sumsOfCells, type SumsCells } from './aggregateSums';
+import { pool, type Connection } from './connection';
+
+/** One station's UTC quarter-hour, recomputed wholly from its intervals. A quarter without any interval has no row. */
+export interface QuarterHour {
+  startSec: number;
+  /** Without distributions per band. */
+  sums: PeriodSums;
+  /** Flags seen, on valid intervals or not. */
+  flagBits: number;
+  /** Why seconds were left out: bit n is `INVALIDITY_REASONS[n]`. */
+  reasonBits: number;
+  lateSec: number;
+}
+
+/** Quarter-hours that begin in `fromSec <= t < toSec`, ascending. `bands: false` leaves out band sums, most of a row. */
+export async function selectQuarterHours(
+  stationId: number,
+  fromSec: number,
+  toSec: number,
+  { bands }: { bands: boolean },
+  conn: Connection = pool(),
+): Promise<QuarterHour[]> {
+  const columns = [...SUMS_COLUMNS, ...(bands ? BAND_COLUMNS : [])];
+  const [rows] = await conn
+    .raw(
+      `SELECT starts_at, flags, reason_bits, late_sec, ${columns.join(', ')} FROM quarter_hours
+       WHERE station_id = ? AND starts_at >= ? AND starts_at < ? ORDER BY starts_at`,
+      [stationId, fromSec, toSec],
+    )
+    .options({ rowsAsArray: true });
+  return (rows as [number, number, number, number, ...SumsCells][]).map(
+    ([startSec, flagBits, reasonBits, lateSec, ...cells]) => ({
+      startSec,
+      flagBits,
+      reasonBits,
+      lateSec,
+      sums: sumsOfCells(cells),
+    }),
+  );
+}
+
+/** Replaces the rows of these quarters of a station: `found` are those that have intervals. */
+export async function replaceQuarterHours(
+  stationId: number,
+  quarterStartsSec: readonly number[],
+  found: readonly QuarterHour[],
+  conn: Connection,
+): Promise<void> {
+  await conn('quarter_hours')
+    .where({ station_id: stationId })
+    .whereIn('starts_at', quarterStartsSec)
+    .delete();
+  if (found.length === 0) return;
+  const computedAt = new Date();
+  await conn('quarter_hours').insert(
+    found.map((quarter) => ({
+      station_id: stationId,
+      starts_at: quarter.startSec,
+      ...rowOfSums(quarter.sums),
+      flags: quarter.flagBits,
+      reason_bits: quarter.reasonBits,
+      late_sec: quarter.lateSec,
+      computed_at: computedAt,
+    })),
+  );
+}
+
+/** Drops every quarter-hour of a station. */
+export async function deleteQuarterHours(stationId: number, conn: Connection): Promise<void> {
+  await conn('quarter_hours').where({ station_id: stationId }).delete();
+}
+
+/** Marks for recomputation every computed quarter-hour of a station that begins in `fromSec <= t < toSec`. */
+export async function markQuarterHours(
+  stationId: number,
+  fromSec: number,
+  toSec: number,
+  conn: Connection,
+): Promise<void> {
+  await conn.raw(
+    `INSERT INTO dirty_marks (station_id, quarter_starts_at, marked_at)
+     SELECT station_id, starts_at, ? FROM quarter_hours WHERE station_id = ? AND starts_at >= ? AND starts_at < ?`,
+    [Math.floor(Date.now() / 1000), stationId, fromSec, toSec],
+  );
+}
+
+/** Marks for recomputation every quarter-hour that an interval of a station touches. */
+export async function markMeasuredQuarters(stationId: number, conn: Connection): Promise<void> {
+  // An interval lasts an hour at most, so it touches five quarter-hours at most.
+  await conn.raw(
+    `INSERT INTO dirty_marks (station_id, quarter_starts_at, marked_at)
+     SELECT DISTINCT station_id, (starts_at DIV 900 + steps.n) * 900, ? FROM interval_levels
+     JOIN (SELECT 0 AS n UNION ALL SELECT 1 UNION ALL SELECT 2 UNION ALL SELECT 3 UNION ALL SELECT 4) AS steps
+       ON (starts_at DIV 900 + steps.n) * 900 < starts_at + duration_sec
+     WHERE station_id = ?`,
+    [Math.floor(Date.now() / 1000), stationId],
+  );
+}

@@ -1,0 +1,85 @@
+import { inTransaction, type Connection } from '#db/queries/connection';
+import { deleteDirtyMarks, readDirtyMarks } from '#db/queries/dirtyMarks';
+import { listSettings, type NetworkSettings } from '#db/queries/networks';
+import { findStationById, lockStation, type StationRow } from '#db/queries/stations';
+import { chunksOf, marksByStation, type Chunk } from './chunks';
+import { recompute } from './recompute';
+
+/**
+ * What follows from recomputed quarter-hours of a station, in the same transaction: the windows of limits that they are parts
+ * of must be judged (again).
+ */
+export type OnQuartersRecomputed = (
+  stationId: number,
+  quarterStartsSec: number[],
+  transaction: Connection,
+) => Promise<void>;
+
+export interface AggregationRun {
+  /** Quarter-hours recomputed. */
+  quarters: number;
+  /** Marks that were read; as many as asked for when more may wait. */
+  marks: number;
+}
+
+/** Marks read at once. */
+const MOST_MARKS = 5000;
+
+/**
+ * Recomputes what is marked, oldest marks first, at most `mostMarks` of them: each quarter-hour and the periods of day it is
+ * part of wholly from intervals, in one transaction per station and date. Marks are read before a transaction's reads, and
+ * exactly those are deleted: what changes meanwhile has a mark of its own. Safe to run twice at once, because the second
+ * finds the station locked and then recomputes the same from newer data.
+ */
+export async function aggregateMarks(
+  onQuartersRecomputed: OnQuartersRecomputed,
+  mostMarks: number = MOST_MARKS,
+): Promise<AggregationRun> {
+  const marks = await readDirtyMarks(mostMarks);
+  let quarters = 0;
+  for (const [stationId, ofStation] of marksByStation(marks)) {
+    const station = await findStationById(stationId);
+    if (!station) {
+      await inTransaction((transaction) =>
+        deleteDirtyMarks(
+          ofStation.map(({ id }) => id),
+          transaction,
+        ),
+      );
+      continue;
+    }
+    const timeline = await listSettings(station.networkId);
+    for (const chunk of chunksOf(stationId, ofStation, timeline)) {
+      await recomputeChunk(chunk, station, timeline, onQuartersRecomputed);
+      quarters += chunk.quarterStartsSec.length;
+    }
+  }
+  return { quarters, marks: marks.length };
+}
+
+/** Recomputes until no mark is left that had been made when this began to look. Answers the quarter-hours recomputed. */
+export async function aggregateAll(onQuartersRecomputed: OnQuartersRecomputed): Promise<number> {
+  for (let quarters = 0; ;) {
+    const run = await aggregateMarks(onQuartersRecomputed);
+    quarters += run.quarters;
+    if (run.marks < MOST_MARKS) return quarters;
+  }
+}
+
+/** Read committed: reads after the lock see all that was committed, and deleting marks locks no gap that monitors insert into. */
+async function recomputeChunk(
+  chunk: Chunk,
+  station: StationRow,
+  timeline: NetworkSettings[],
+  onQuartersRecomputed: OnQuartersRecomputed,
+): Promise<void> {
+  await inTransaction(
+    async (transaction) => {
+      await lockStation(station.id, transaction);
+      await recompute(chunk, station, timeline, transaction);
+      await onQuartersRecomputed(station.id, chunk.quarterStartsSec, transaction);
+      await deleteDirtyMarks(chunk.markIds, transaction);
+    },
+    { isolationLevel: 'read committed' },
+  );
+}

@@ -1,0 +1,44 @@
+import { appendAudit } from '#db/queries/audit';
+import { inTransaction } from '#db/queries/connection';
+import { insertExclusion, readExclusion, type Span } from '#db/queries/exclusions';
+import { findStation, lockStation } from '#db/queries/stations';
+import { formatInstantUtc } from '#lib/contracts/common';
+import { type Exclusion } from '#lib/contracts/exclusions';
+import { exclusionJson } from './exclusionJson';
+import { markTouched } from './touched';
+
+export interface ExclusionRequest extends Span {
+  networkId: number;
+  stationCode: string;
+  reason: string;
+  userId: string;
+}
+
+/**
+ * Leaves a period of a station out of statistics from now on; null when the network has no such station. The data stay;
+ * figures follow as quarter-hours are recomputed.
+ */
+export async function addExclusion(request: ExclusionRequest): Promise<Exclusion | null> {
+  const { networkId, stationCode, fromSec, toSec, reason, userId } = request;
+  const station = await findStation(networkId, stationCode);
+  if (!station) return null;
+  return inTransaction(async (transaction) => {
+    await lockStation(station.id, transaction);
+    const id = await insertExclusion(
+      { networkId, stationId: station.id, fromSec, toSec, reason, createdBy: userId },
+      transaction,
+    );
+    await markTouched(station.id, { fromSec, toSec }, transaction);
+    await appendAudit(
+      {
+        userId,
+        networkId,
+        action: 'exclusion.add',
+        subject: `station ${station.code}`,
+        detail: { exclusion: id, from: formatInstantUtc(fromSec), to: formatInstantUtc(toSec), reason },
+      },
+      transaction,
+    );
+    return exclusionJson(await readExclusion(networkId, id, transaction));
+  });
+}

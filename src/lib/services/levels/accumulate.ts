@@ -1,0 +1,82 @@
+import { pickSettings, type NetworkSettings } from '#db/queries/networks';
+import { type StoredInterval } from '#db/queries/intervals';
+import { PeriodAccumulator } from '#lib/acoustics/periodStatistics';
+import { isValid, type ValidityRules } from '#lib/acoustics/validity';
+import { QUARTER_SEC } from '#lib/time/quarters';
+import { overlapsAny, type Span } from './spans';
+
+/** Whether validity rules and exclusions leave intervals out (`rules`), or everything measured counts (`all`). */
+export type Validity = 'rules' | 'all';
+
+/** What decides which intervals count. */
+export interface Judgement {
+  validity: Validity;
+  /** The network's settings in order of their beginning. */
+  timeline: NetworkSettings[];
+  /** Standing exclusions of the station, merged. An interval that one of them overlaps is left out whole. */
+  exclusions: readonly Span[];
+}
+
+/** A stretch in which one set of validity rules holds: each quarter-hour goes by the settings at its start. */
+export interface RulesSpan extends Span {
+  rules: ValidityRules;
+}
+
+/** The stretches of `fromSec <= t < toSec` in which the same rules hold, ascending. */
+export function rulesSpans(fromSec: number, toSec: number, timeline: NetworkSettings[]): RulesSpan[] {
+  const changes = timeline
+    .map(({ effectiveFromSec }) => Math.ceil(effectiveFromSec / QUARTER_SEC) * QUARTER_SEC)
+    .filter((change) => fromSec < change && change < toSec);
+  const edges = [fromSec, ...new Set(changes), toSec];
+  return edges.slice(1).map((end, at) => {
+    const start = edges[at] ?? fromSec;
+    const quarter = Math.floor(start / QUARTER_SEC) * QUARTER_SEC;
+    return { fromSec: start, toSec: end, rules: pickSettings(timeline, quarter).rules };
+  });
+}
+
+/** Whether an interval counts under some rules. */
+export function counts(interval: StoredInterval, rules: ValidityRules, judgement: Judgement): boolean {
+  if (judgement.validity === 'all') return true;
+  const { startSec, durationSec, exclusions } = { ...interval, exclusions: judgement.exclusions };
+  return isValid(interval, rules, overlapsAny(exclusions, startSec, startSec + durationSec));
+}
+
+/** Index of the first of some ascending, disjoint intervals that ends after an instant. */
+export function firstEndingAfter(intervals: readonly StoredInterval[], sec: number): number {
+  let low = 0;
+  let high = intervals.length;
+  while (low < high) {
+    const middle = (low + high) >>> 1;
+    const interval = intervals[middle];
+    if (interval && interval.startSec + interval.durationSec <= sec) low = middle + 1;
+    else high = middle;
+  }
+  return low;
+}
+
+/**
+ * Sums of `fromSec <= t < toSec` from a station's intervals (ascending, disjoint; more than the period's may be given). An
+ * interval that straddles an edge is clipped to the period by duration; its extremes count.
+ */
+export function accumulate(
+  intervals: readonly StoredInterval[],
+  { fromSec, toSec }: Span,
+  judgement: Judgement,
+  options: { bandClasses: boolean },
+): PeriodAccumulator {
+  const accumulator = new PeriodAccumulator(options);
+  for (const span of rulesSpans(fromSec, toSec, judgement.timeline)) {
+    for (let at = firstEndingAfter(intervals, span.fromSec); at < intervals.length; at += 1) {
+      const interval = intervals[at];
+      if (!interval || interval.startSec >= span.toSec) break;
+      const endSec = interval.startSec + interval.durationSec;
+      const durationSec = Math.min(endSec, span.toSec) - Math.max(interval.startSec, span.fromSec);
+      accumulator.add(
+        { ...interval, durationSec, sampleSec: interval.durationSec },
+        counts(interval, span.rules, judgement),
+      );
+    }
+  }
+  return accumulator;
+}

@@ -1,0 +1,60 @@
+import { type Connection } from '#db/queries/connection';
+import { selectDayPeriods, type DayPeriod } from '#db/queries/dayPeriods';
+import { PeriodAccumulator } from '#lib/acoustics/periodStatistics';
+import { QUARTER_SEC, quarterAt } from '#lib/time/quarters';
+import { currentQuarters } from './currentQuarters';
+import { dirtySpans } from './dirtySpans';
+import { sumIntervals, type LevelSource } from './intervalSums';
+import { overlapsAny, withoutSpans, type Span } from './spans';
+
+/**
+ * Sums of `fromSec <= t < toSec`, current and from as few rows as possible: whole days, evenings and nights from their rows;
+ * of the rest whole quarter-hours from theirs, or, where distributions per band are wanted (quarter-hours hold none), its
+ * intervals; ragged ends and quarters that wait for recomputation from intervals. `validity: 'all'` is always from intervals.
+ */
+export async function currentSums(
+  source: LevelSource,
+  period: Span,
+  options: { bandClasses: boolean },
+  conn: Connection,
+): Promise<PeriodAccumulator> {
+  if (source.validity === 'all') return sumIntervals(source, period, options, conn);
+  const whole = new PeriodAccumulator(options);
+  const { id } = source.station;
+  // Marks are read before rows: what is recomputed in between is then counted anew, never missed.
+  const dirty = await dirtySpans(id, period, conn);
+  const rows = disjoint(await selectDayPeriods(id, period.fromSec, period.toSec, options, conn), dirty);
+  for (const row of rows) whole.merge(row);
+  for (const rest of withoutSpans(period, rows)) {
+    const part = options.bandClasses
+      ? await sumIntervals(source, rest, options, conn)
+      : await sumQuarters(source, rest, conn);
+    whole.merge(part);
+  }
+  return whole;
+}
+
+/** Rows that nothing dirty touches and that do not overlap (they may, where a network's zone has changed). */
+function disjoint(rows: readonly DayPeriod[], dirty: readonly Span[]): DayPeriod[] {
+  let endSec = -Infinity;
+  return rows.filter((row) => {
+    if (row.fromSec < endSec || overlapsAny(dirty, row.fromSec, row.toSec)) return false;
+    endSec = row.toSec;
+    return true;
+  });
+}
+
+async function sumQuarters(source: LevelSource, span: Span, conn: Connection): Promise<PeriodAccumulator> {
+  const whole = new PeriodAccumulator();
+  const fromSec = quarterAt(span.fromSec + QUARTER_SEC - 1);
+  const toSec = quarterAt(span.toSec);
+  const isWhole = fromSec < toSec;
+  if (isWhole) {
+    const quarters = await currentQuarters(source, { fromSec, toSec }, { bands: true }, conn);
+    for (const quarter of quarters) whole.merge(quarter);
+  }
+  for (const ragged of withoutSpans(span, isWhole ? [{ fromSec, toSec }] : [])) {
+    whole.merge(await sumIntervals(source, ragged, { bandClasses: false }, conn));
+  }
+  return whole;
+}

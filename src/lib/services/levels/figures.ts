@@ -1,0 +1,75 @@
+import { pool, type Connection } from '#db/queries/connection';
+import { listSettings, pickSettings, type NetworkSettings } from '#db/queries/networks';
+import { type StationRow } from '#db/queries/stations';
+import { type PeriodAccumulator } from '#lib/acoustics/periodStatistics';
+import { type PeriodSums } from '#lib/acoustics/periodSums';
+import { type Seconds } from '#lib/contracts/levels';
+import { type Validity } from './accumulate';
+import { currentSums } from './currentSums';
+import { type Span } from './spans';
+
+export interface FiguresQuery extends Span {
+  station: Pick<StationRow, 'id' | 'networkId' | 'intervalSec'>;
+  /** `rules` (the default) leaves out what validity rules and exclusions say; `all` counts everything measured. */
+  validity?: Validity;
+  /** The network's settings in order of their beginning; read when left out. */
+  timeline?: NetworkSettings[];
+  /** Epoch seconds; a period counts as elapsed up to here. Now when left out. */
+  nowSec?: number;
+}
+
+/** How much of a period has valid data. It travels with every figure of the period. */
+export interface Coverage {
+  seconds: Seconds;
+  /** Valid seconds over the seconds of the period that have elapsed, 0–1; 0 where none have. */
+  coverage: number;
+  minimumCoverage: number;
+  meetsMinimum: boolean;
+}
+
+/** What a period's figures are taken from, and its coverage. */
+export interface PeriodFigures extends Coverage, Span {
+  /** Levels, percentiles and bands in dB; distributions per band only where they were asked for. */
+  levels: PeriodAccumulator;
+}
+
+/** Slack of the comparison with the minimum coverage, for products such as 0.7 × 3600. */
+const SLACK_SEC = 1e-6;
+
+/** Coverage of a period: valid seconds against those elapsed up to `nowSec`, under the settings in force at its start. */
+export function coverageOf(
+  { validSec, excludedSec }: Pick<PeriodSums, 'validSec' | 'excludedSec'>,
+  { fromSec, toSec }: Span,
+  minimumCoverage: number,
+  nowSec: number,
+): Coverage {
+  const expectedSec = Math.max(0, Math.min(toSec, nowSec) - fromSec);
+  return {
+    seconds: { expected: expectedSec, valid: validSec, excluded: excludedSec },
+    coverage: expectedSec === 0 ? 0 : Math.min(1, validSec / expectedSec),
+    minimumCoverage,
+    meetsMinimum: expectedSec > 0 && validSec >= minimumCoverage * expectedSec - SLACK_SEC,
+  };
+}
+
+/**
+ * Levels and coverage of a station's `fromSec <= t < toSec`, current: what still waits for recomputation is counted from its
+ * intervals. `bandPercentiles: true` also counts the distribution of every band (a month costs about ten times as much).
+ */
+export async function periodFigures(
+  query: FiguresQuery,
+  { bandPercentiles = false }: { bandPercentiles?: boolean } = {},
+  conn: Connection = pool(),
+): Promise<PeriodFigures> {
+  const { station, fromSec, toSec, validity = 'rules' } = query;
+  const timeline = query.timeline ?? (await listSettings(station.networkId, conn));
+  const nowSec = query.nowSec ?? Math.floor(Date.now() / 1000);
+  const levels = await currentSums(
+    { station, timeline, validity },
+    { fromSec, toSec },
+    { bandClasses: bandPercentiles },
+    conn,
+  );
+  const { minimumCoverage } = pickSettings(timeline, fromSec);
+  return { fromSec, toSec, levels, ...coverageOf(levels.sums, query, minimumCoverage, nowSec) };
+}

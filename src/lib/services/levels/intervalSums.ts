@@ -1,0 +1,49 @@
+import { type Connection } from '#db/queries/connection';
+import { selectStandingExclusions } from '#db/queries/exclusions';
+import { selectIntervals } from '#db/queries/intervals';
+import { type NetworkSettings } from '#db/queries/networks';
+import { type StationRow } from '#db/queries/stations';
+import { PeriodAccumulator } from '#lib/acoustics/periodStatistics';
+import { accumulate, type Judgement, type Validity } from './accumulate';
+import { mergedSpans, type Span } from './spans';
+
+/** Whose intervals are summed and what decides which count. */
+export interface LevelSource {
+  station: Pick<StationRow, 'id' | 'intervalSec'>;
+  /** The network's settings in order of their beginning. */
+  timeline: NetworkSettings[];
+  validity: Validity;
+}
+
+/** Intervals that are held in memory at once: a month of minutes, half a day of seconds. */
+export const MOST_INTERVALS = 45_000;
+
+/** What decides which intervals of a period count: settings and standing exclusions. */
+export async function judgementOf(
+  { station, timeline, validity }: LevelSource,
+  { fromSec, toSec }: Span,
+  conn: Connection,
+): Promise<Judgement> {
+  // An interval that reaches into the period may begin, or end, up to an hour outside it.
+  const exclusions =
+    validity === 'all' ? [] : await selectStandingExclusions(station.id, fromSec - 3600, toSec + 3600, conn);
+  return { validity, timeline, exclusions: mergedSpans(exclusions) };
+}
+
+/** Sums of a period straight from its intervals. */
+export async function sumIntervals(
+  source: LevelSource,
+  period: Span,
+  options: { bandClasses: boolean },
+  conn: Connection,
+): Promise<PeriodAccumulator> {
+  const whole = new PeriodAccumulator(options);
+  const judgement = await judgementOf(source, period, conn);
+  const stepSec = MOST_INTERVALS * source.station.intervalSec;
+  for (let fromSec = period.fromSec; fromSec < period.toSec; fromSec += stepSec) {
+    const part = { fromSec, toSec: Math.min(fromSec + stepSec, period.toSec) };
+    const intervals = await selectIntervals(source.station.id, part.fromSec, part.toSec, conn);
+    whole.merge(accumulate(intervals, part, judgement, options));
+  }
+  return whole;
+}

@@ -1,0 +1,87 @@
+import { pool, type Connection } from '#db/queries/connection';
+import { selectIntervals } from '#db/queries/intervals';
+import { listSettings, pickSettings, type NetworkSettings } from '#db/queries/networks';
+import { type StationRow } from '#db/queries/stations';
+import { bandSlot, bandsOf, BAND_SLOTS } from '#lib/acoustics/bands';
+import { FLAG_NAMES, INVALIDITY_REASONS } from '#lib/acoustics/validity';
+import { type SpectrogramColumns } from '#lib/contracts/spectrogramBinary';
+import { planColumns } from './columnPlan';
+import { emptyColumns, type Columns } from './columns';
+import { currentQuarters } from './currentQuarters';
+import { fillFromIntervals } from './intervalColumns';
+import { judgementOf, MOST_INTERVALS, type LevelSource } from './intervalSums';
+import { fillFromQuarters } from './quarterColumns';
+import { type Span } from './spans';
+
+export interface SpectrogramQuery extends Span {
+  station: Pick<
+    StationRow,
+    'id' | 'networkId' | 'intervalSec' | 'bandFraction' | 'firstBandIndex' | 'lastBandIndex'
+  >;
+  /** The most columns wanted; the steps are the finest that need no more. */
+  mostColumns: number;
+  /** The network's settings in order of their beginning; read when left out. */
+  timeline?: NetworkSettings[];
+}
+
+/** Quarter-hours that are held in memory at once: a year. */
+const MOST_QUARTERS = 35_136;
+
+/** A station's levels over time in equal steps, of the station's bands. */
+export async function spectrogram(
+  query: SpectrogramQuery,
+  conn: Connection = pool(),
+): Promise<SpectrogramColumns> {
+  const { station, mostColumns } = query;
+  const timeline = query.timeline ?? (await listSettings(station.networkId, conn));
+  const plan = planColumns(query, station.intervalSec, mostColumns);
+  const bands = bandsOf(station.bandFraction).filter(
+    ({ index }) => station.firstBandIndex <= index && index <= station.lastBandIndex,
+  );
+  const placeOfSlot = new Int8Array(BAND_SLOTS).fill(-1);
+  bands.forEach(({ index }, place) => (placeOfSlot[bandSlot(index)] = place));
+  const columns = emptyColumns(plan, bands, placeOfSlot);
+  const source: LevelSource = { station, timeline, validity: 'rules' };
+  if (plan.source === 'intervals') await readIntervals(source, columns, conn);
+  else await readQuarters(source, columns, conn);
+  return {
+    ...columns,
+    header: {
+      from: plan.fromSec,
+      stepSeconds: plan.stepSec,
+      columns: plan.count,
+      bandFraction: station.bandFraction,
+      bands: bands.map(({ nominalHz }) => nominalHz),
+      timeZone: pickSettings(timeline, query.fromSec).timeZone,
+      source: plan.source,
+      reasons: [...INVALIDITY_REASONS],
+      flags: [...FLAG_NAMES],
+    },
+  };
+}
+
+async function readIntervals(source: LevelSource, columns: Columns, conn: Connection): Promise<void> {
+  const { station } = source;
+  for (const part of partsOf(columns, MOST_INTERVALS * station.intervalSec)) {
+    const judgement = await judgementOf(source, part, conn);
+    const intervals = await selectIntervals(station.id, part.fromSec, part.toSec, conn);
+    fillFromIntervals(columns, intervals, part, judgement);
+  }
+}
+
+async function readQuarters(source: LevelSource, columns: Columns, conn: Connection): Promise<void> {
+  for (const part of partsOf(columns, MOST_QUARTERS * 900)) {
+    fillFromQuarters(columns, await currentQuarters(source, part, { bands: true }, conn));
+  }
+}
+
+/** The columns' time in parts of whole columns that last about `mostSec`. */
+function partsOf({ plan }: Columns, mostSec: number): Span[] {
+  const partSec = Math.max(1, Math.floor(mostSec / plan.stepSec)) * plan.stepSec;
+  const endSec = plan.fromSec + plan.count * plan.stepSec;
+  const parts: Span[] = [];
+  for (let fromSec = plan.fromSec; fromSec < endSec; fromSec += partSec) {
+    parts.push({ fromSec, toSec: Math.min(fromSec + partSec, endSec) });
+  }
+  return parts;
+}

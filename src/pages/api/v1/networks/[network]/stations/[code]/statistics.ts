@@ -1,0 +1,14 @@
+import { requireNetwork, requireStation } from '#lib/auth/guards';
+import { ALL_ROLES } from '#lib/auth/roles';
+import { parseChoice, parsePeriod } from '#lib/http/parse';
+import { json } from '#lib/http/respond';
+import { route } from '#lib/http/route';
+import { periodStatistics } from '#lib/services/levels/statistics';
+
+export const GET = route(async (context) => {
+  const { network } = await requireNetwork(context, context.params.network, ALL_ROLES);
+  const station = await requireStation(network.id, context.params.code);
+  const period = parsePeriod(context.url);
+  const validity = parseChoice(context.url, 'validity', ['rules', 'all']);
+  return json(await periodStatistics({ station, ...period, validity }));
+});
