@@ -1,0 +1,19 @@
+import { pool, type Connection } from './connection';
+
+/** Exceedances of a network that stand and that nobody has acknowledged yet. */
+export async function countOpenExceedances(networkId: number, conn: Connection = pool()): Promise<number> {
+  const row = await conn('exceedances')
+    .where({ network_id: networkId, state: 'standing', acknowledged_at: null })
+    .count({ count: '*' })
+    .first();
+  return Number(row?.count ?? 0);
+}
+
+/** Complaints of a network that have not been answered yet. */
+export async function countOpenComplaints(networkId: number, conn: Connection = pool()): Promise<number> {
+  const row = await conn('complaints')
+    .where({ network_id: networkId, status: 'open' })
+    .count({ count: '*' })
+    .first();
+  return Number(row?.count ?? 0);
+}
