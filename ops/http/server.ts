@@ -3,7 +3,7 @@ import { resolve } from 'node:path';
 import { pathToFileURL } from 'node:url';
 import type { RequestHandler } from 'express';
 import { config } from '#lib/config/index';
-import { log } from '#lib/http/log';
+import { log } from '#lib/config/log';
 import { closeDb } from '#db/client';
 import { makeFront } from './front';
 

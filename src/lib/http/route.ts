@@ -1,6 +1,6 @@
 import type { APIContext, APIRoute } from 'astro';
 import { ZodError } from 'zod';
-import { log } from './log';
+import { log } from '#lib/config/log';
 import { invalidFields, Problem, problemResponse } from './problem';
 
 /** Wraps a handler so that every way out is an answer to the contract: whatever it throws becomes problem details. */

@@ -1,10 +1,4 @@
-const ESCAPES: Readonly<Record<string, string>> = {
-  '&': '&amp;',
-  '<': '&lt;',
-  '>': '&gt;',
-  '"': '&quot;',
-  "'": '&#39;',
-};
+import { escapeHtml } from '#lib/format/escapeHtml';
 
 /** A letter's plain text as HTML for e-mail: a paragraph for each blank line, nothing in it taken as markup. */
 export function letterHtml(text: string): string {
@@ -15,8 +9,4 @@ export function letterHtml(text: string): string {
     '<!doctype html><html lang="en"><body style="font-family:\'Noto Sans\',sans-serif;font-size:16px;line-height:1.5;' +
     `max-width:38em">${paragraphs.join('\n')}</body></html>`
   );
-}
-
-function escapeHtml(text: string): string {
-  return text.replace(/[&<>"']/g, (character) => ESCAPES[character] ?? character);
 }

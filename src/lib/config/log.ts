@@ -1,5 +1,5 @@
 import pino from 'pino';
-import { config } from '#lib/config/index';
+import { config } from './index';
 
 let instance: pino.Logger | undefined;
 

@@ -1,0 +1,118 @@
+import { type Connection, inTransaction } from './connection';
+
+/** A message to be put into the outbox, in the transaction of its cause. */
+export interface NewMail {
+  messageId: string;
+  /** One message a cause and recipient: a second one with the same key is not added. */
+  dedupeKey: string;
+  networkId: number;
+  kind: string;
+  recipient: string;
+  subject: string;
+  text: string;
+  html: string;
+}
+
+/** A message that this sender holds until its lease ends. */
+export interface LeasedMail {
+  id: number;
+  messageId: string;
+  kind: string;
+  /** Null: resolved by kind at sending. */
+  recipient: string | null;
+  subject: string;
+  text: string | null;
+  html: string | null;
+  complaintReplyId: number | null;
+  attempts: number;
+  createdAt: Date;
+}
+
+export async function insertMail(mail: NewMail, transaction: Connection): Promise<void> {
+  const now = new Date();
+  try {
+    await transaction('outbox').insert({
+      message_id: mail.messageId,
+      dedupe_key: mail.dedupeKey,
+      network_id: mail.networkId,
+      kind: mail.kind,
+      recipient: mail.recipient,
+      subject: mail.subject.slice(0, 300),
+      text_body: mail.text,
+      html_body: mail.html,
+      next_attempt_at: now,
+      created_at: now,
+    });
+  } catch (error) {
+    if ((error as { code?: string }).code !== 'ER_DUP_ENTRY') throw error;
+  }
+}
+
+/** Takes messages that are due and nobody holds, for `leaseSec` seconds. Two senders never get the same one. */
+export async function leaseDueMail(
+  holder: string,
+  now: Date,
+  { limit, leaseSec }: { limit: number; leaseSec: number },
+): Promise<LeasedMail[]> {
+  return inTransaction(async (transaction) => {
+    const mails: LeasedMail[] = await transaction('outbox')
+      .where({ state: 'waiting' })
+      .where('next_attempt_at', '<=', now)
+      .where((query) => query.whereNull('leased_until').orWhere('leased_until', '<', now))
+      .orderBy(['next_attempt_at', 'id'])
+      .limit(limit)
+      .forUpdate()
+      .skipLocked()
+      .select({
+        id: 'id',
+        messageId: 'message_id',
+        kind: 'kind',
+        recipient: 'recipient',
+        subject: 'subject',
+        text: 'text_body',
+        html: 'html_body',
+        complaintReplyId: 'complaint_reply_id',
+        attempts: 'attempts',
+        createdAt: 'created_at',
+      });
+    if (mails.length === 0) return [];
+    await transaction('outbox')
+      .whereIn(
+        'id',
+        mails.map(({ id }) => id),
+      )
+      .update({ leased_until: new Date(now.getTime() + leaseSec * 1000), lease_holder: holder });
+    return mails;
+  });
+}
+
+/** Notes that a message was handed over. */
+export async function markMailSent(id: number, holder: string, conn: Connection): Promise<void> {
+  await conn('outbox')
+    .where({ id, lease_holder: holder, state: 'waiting' })
+    .update({
+      state: 'sent',
+      sent_at: new Date(),
+      leased_until: null,
+      attempts: conn.raw('attempts + 1'),
+      last_error: null,
+    });
+}
+
+/** Notes a failed attempt: tried again at `nextAttemptAt`, or given up when that is null. */
+export async function markMailFailed(
+  id: number,
+  holder: string,
+  error: string,
+  nextAttemptAt: Date | null,
+  conn: Connection,
+): Promise<void> {
+  await conn('outbox')
+    .where({ id, lease_holder: holder, state: 'waiting' })
+    .update({
+      leased_until: null,
+      attempts: conn.raw('attempts + 1'),
+      last_error: error.slice(0, 500),
+      ...(nextAttemptAt ? { next_attempt_at: nextAttemptAt } : { state: 'dead' }),
+    });
+}

@@ -1,0 +1,63 @@
+import { pool, type Connection } from './connection';
+
+/** A window of a limit at a station that must be judged, once it has closed, or again. */
+export interface NewPendingWindow {
+  limitId: number;
+  stationId: number;
+  startSec: number;
+  endSec: number;
+}
+
+export interface PendingWindow extends NewPendingWindow {
+  id: number;
+}
+
+const COLUMNS = {
+  id: 'id',
+  limitId: 'limit_id',
+  stationId: 'station_id',
+  startSec: 'starts_at',
+  endSec: 'ends_at',
+};
+
+/** Adds windows to judge; the same window may wait several times and is judged once. */
+export async function insertPendingWindows(
+  windows: readonly NewPendingWindow[],
+  conn: Connection,
+): Promise<void> {
+  const rows = windows.map(({ limitId, stationId, startSec, endSec }) => ({
+    limit_id: limitId,
+    station_id: stationId,
+    starts_at: startSec,
+    ends_at: endSec,
+  }));
+  for (let first = 0; first < rows.length; first += 1000) {
+    await conn('pending_windows').insert(rows.slice(first, first + 1000));
+  }
+}
+
+/** Ids of windows that ended at or before `untilSec`, the longest ended first, at most `limit`. */
+export async function findDueWindowIds(
+  untilSec: number,
+  limit: number,
+  conn: Connection = pool(),
+): Promise<number[]> {
+  return conn('pending_windows')
+    .where('ends_at', '<=', untilSec)
+    .orderBy(['ends_at', 'id'])
+    .limit(limit)
+    .pluck('id');
+}
+
+/** Those of the windows that still wait, locked until the transaction ends. */
+export async function lockPendingWindows(
+  ids: readonly number[],
+  transaction: Connection,
+): Promise<PendingWindow[]> {
+  return transaction('pending_windows').whereIn('id', ids).orderBy('id').forUpdate().select(COLUMNS);
+}
+
+/** Deletes exactly these: one that came meanwhile stays. */
+export async function deletePendingWindows(ids: readonly number[], transaction: Connection): Promise<void> {
+  await transaction('pending_windows').whereIn('id', ids).delete();
+}

@@ -1,0 +1,8 @@
+import { aggregateMarks } from '#ingest/aggregate/aggregate';
+import { pendWindowsFor } from '#ingest/detect/pendWindows';
+
+/** Recomputes what is marked, and has the windows judged that it is part of. @returns how many quarter-hours. */
+export async function aggregate(): Promise<number> {
+  const run = await aggregateMarks(pendWindowsFor);
+  return run.quarters;
+}

@@ -1,0 +1,44 @@
+import { schedule } from 'node-cron';
+import { closeDb } from '#db/client';
+import { log } from '#lib/config/log';
+import { aggregate } from './jobs/aggregate';
+import { housekeeping } from './jobs/housekeeping';
+import { judgeLimits } from './jobs/judgeLimits';
+import { runLoop, type LoopSettings } from './jobs/loop';
+import { sendMail } from './jobs/sendMail';
+import { runDueSlots, type SlotJob } from './jobs/slots';
+
+/** Done round by round, as much as there is. Aggregation rests longer: figures that are asked for meanwhile are current anyway. */
+const LOOPS: LoopSettings[] = [
+  { name: 'aggregate', everySec: 15, work: aggregate },
+  { name: 'judge-limits', everySec: 5, work: judgeLimits },
+  { name: 'send-mail', everySec: 2, work: sendMail },
+];
+
+/** Done once a slot. The first is the worker's sign of life, which /readyz reads. */
+const SLOT_JOBS: SlotJob[] = [
+  { name: 'tick', slotMinutes: 1, run: async () => 'alive' },
+  { name: 'housekeeping', slotMinutes: 60, run: housekeeping },
+];
+
+const stop = new AbortController();
+const tick = schedule('* * * * *', () => runDueSlots(SLOT_JOBS, new Date()), {
+  timezone: 'UTC',
+  noOverlap: true,
+});
+const loops = LOOPS.map((loop) => runLoop(loop, stop.signal));
+void runDueSlots(SLOT_JOBS, new Date());
+log().info('worker runs');
+
+for (const signal of ['SIGTERM', 'SIGINT'] as const) process.on(signal, () => void end(signal));
+
+/** Finishes the rounds under way, then ends. */
+async function end(signal: string): Promise<void> {
+  if (stop.signal.aborted) return;
+  log().info({ signal }, 'worker stops');
+  stop.abort();
+  await tick.stop();
+  await Promise.all(loops);
+  await closeDb();
+  process.exit(0);
+}
