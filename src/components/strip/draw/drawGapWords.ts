@@ -20,7 +20,7 @@ export function drawGapWords(
     writeText(surface, words, x + (from + to) / 2, y + height / 2, {
       colour: surface.palette.ochreText,
       align: 'center',
-      halo: surface.palette.paper,
+      plate: surface.palette.plate,
     });
   }
 }

@@ -75,7 +75,7 @@ function labelLimits(
       };
       if (roomPx < labelWidth + 8 || label.y < y || placed.some((other) => overlaps(other, label))) continue;
       placed.push(label);
-      writeText(surface, name, label.x, label.y, { colour: palette.rust, halo: palette.paper });
+      writeText(surface, name, label.x, label.y, { colour: palette.rust, plate: palette.plate });
     }
   }
 }

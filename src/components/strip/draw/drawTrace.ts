@@ -58,7 +58,7 @@ function drawEnvelope(surface: Surface, pixels: PixelColumns, yOf: (levelDb: num
 function drawLine(surface: Surface, pixels: PixelColumns, yOf: (levelDb: number) => number): void {
   const { context, palette, ratio } = surface;
   context.strokeStyle = palette.ink;
-  context.lineWidth = 1.15 * ratio;
+  context.lineWidth = ratio;
   context.lineJoin = 'round';
   context.beginPath();
   let isDrawing = false;

@@ -14,6 +14,8 @@ export interface Palette {
   ochreText: string;
   estuary: string;
   hatch: string;
+  /** Behind letters that stand on lines. */
+  plate: string;
   /** Behind the trace where data do not count. */
   wash: string;
   /** From LAeq up to LAFmax. */
@@ -32,6 +34,7 @@ const SOURCES: Record<keyof Palette, string> = {
   ochreText: 'var(--color-ochre-text)',
   estuary: 'var(--color-estuary)',
   hatch: 'color-mix(in oklab, var(--color-ink) 17%, transparent)',
+  plate: 'color-mix(in oklab, var(--color-paper) 82%, transparent)',
   wash: 'color-mix(in oklab, var(--color-ochre) 16%, transparent)',
   envelope: 'color-mix(in oklab, var(--color-ink) 24%, transparent)',
 };

@@ -42,8 +42,8 @@ interface TextStyle {
   baseline?: CanvasTextBaseline;
   sizePx?: number;
   weight?: number;
-  /** Paints the paper around the letters, so that they are legible over lines. */
-  halo?: string;
+  /** Colour to lay behind the letters, so that they are legible over lines. */
+  plate?: string;
 }
 
 export function writeText(surface: Surface, text: string, x: number, y: number, style: TextStyle): void {
@@ -51,11 +51,10 @@ export function writeText(surface: Surface, text: string, x: number, y: number, 
   context.font = `${style.weight ?? 400} ${style.sizePx ?? 12}px ${FONT}`;
   context.textAlign = style.align ?? 'left';
   context.textBaseline = style.baseline ?? 'middle';
-  if (style.halo) {
-    context.strokeStyle = style.halo;
-    context.lineWidth = 3;
-    context.lineJoin = 'round';
-    context.strokeText(text, x, y);
+  if (style.plate) {
+    const width = context.measureText(text).width + 6;
+    context.fillStyle = style.plate;
+    context.fillRect(style.align === 'center' ? x - width / 2 : x - 3, y - 8, width, 16);
   }
   context.fillStyle = style.colour;
   context.fillText(text, x, y);

@@ -22,12 +22,20 @@ export async function fetchColumns(
   return columnsOf(decodeSpectrogram(await answer.arrayBuffer()));
 }
 
-function columnsOf({ header, startSec: _, lafminCentiDb: __, ...arrays }: SpectrogramColumns): StripColumns {
+function columnsOf(spectrogram: SpectrogramColumns): StripColumns {
+  const { header } = spectrogram;
   return {
     fromSec: header.from,
     stepSec: header.stepSeconds,
     count: header.columns,
     bands: header.bands.flatMap((hz) => bandByNominalHz(header.bandFraction, hz) ?? []),
-    ...arrays,
+    laeqCentiDb: spectrogram.laeqCentiDb,
+    lafmaxCentiDb: spectrogram.lafmaxCentiDb,
+    presentSec: spectrogram.presentSec,
+    validSec: spectrogram.validSec,
+    lateSec: spectrogram.lateSec,
+    reasonBits: spectrogram.reasonBits,
+    flagBits: spectrogram.flagBits,
+    levelsCentiDb: spectrogram.levelsCentiDb,
   };
 }

@@ -34,11 +34,10 @@ export function ReadingSlip({
   const headingId = useId();
   const { bands } = selection;
   return (
-    <aside aria-labelledby={headingId} className="slip text-table">
+    <aside aria-labelledby={headingId} className="slip self-start text-table">
       <div className="flex items-start justify-between gap-2">
         <h2 id={headingId} className="text-body leading-snug">
-          {stretchWords(selection, context.zone)}
-          {bands && ` · ${bandRangeWords(bands)}`}
+          <StretchHeading selection={selection} zone={context.zone} />
         </h2>
         {isMarked && (
           <button
@@ -65,6 +64,21 @@ export function ReadingSlip({
       {figures && <SlipSpectrum figures={figures} selection={selection} fraction={fraction} />}
       <SlipActions selection={selection} isMarked={isMarked} context={context} />
     </aside>
+  );
+}
+
+/** The stretch, broken between its ends and before the bands only. */
+function StretchHeading({ selection, zone }: { selection: Selection; zone: string }) {
+  const [from, ...rest] = stretchWords(selection, zone).split(' – ');
+  return (
+    <>
+      <span className="inline-block">
+        {from}
+        {rest.length > 0 && ' –'}
+      </span>{' '}
+      {rest.length > 0 && <span className="inline-block">{rest[0]}</span>}
+      {selection.bands && <span className="inline-block">&nbsp;· {bandRangeWords(selection.bands)}</span>}
+    </>
   );
 }
 

@@ -1,4 +1,4 @@
-import { bandLabel } from '#lib/acoustics/bands';
+import { bandLabel, type Band } from '#lib/acoustics/bands';
 import { type InvalidityReason } from '#lib/acoustics/validity';
 import { type Weighting } from '#lib/acoustics/weighting';
 import { formatLevelDb } from '#lib/format/levels';
@@ -66,7 +66,7 @@ function ReadingWords({
       {band && (
         <>
           {' · '}
-          {bandLabel(band)} band ({edge(band.lowerHz)}–{edge(band.upperHz)} Hz){' '}
+          {bandLabel(band)} band ({edgesWords(band)}){' '}
           {reading.bandLevelDb === null ? (
             'no level'
           ) : (
@@ -85,6 +85,8 @@ function ReadingWords({
   );
 }
 
-function edge(hz: number): string {
-  return String(Number(hz.toPrecision(3)));
+function edgesWords({ lowerHz, upperHz }: Band): string {
+  const [unit, perUnit] = upperHz < 1000 ? ['Hz', 1] : ['kHz', 1000];
+  const digits = (hz: number) => String(Number((hz / perUnit).toPrecision(3)));
+  return `${digits(lowerHz)}–${digits(upperHz)} ${unit}`;
 }

@@ -33,7 +33,7 @@ export function SlipSpectrum({ figures, selection, fraction }: SlipSpectrumProps
         }))}
       />
       <p className="mt-1 text-small text-ink-soft">
-        Mean level of each band, dB (Z){!figures.isEstimate && '; the line is L10'}
+        Mean of each band, dB (Z){!figures.isEstimate && '; line: L10'}
       </p>
       {assessment.kind === 'not-assessable' && (
         <p className="mt-2 text-small text-ink-soft">{notAssessableWords(assessment.reason)}</p>

@@ -44,9 +44,10 @@ export function StripPlot(props: StripPlotProps) {
   const { spectrogram, trace, lanes } = geometry;
 
   return (
+    // The cursor's keys belong to the strip while it has the focus, as an application's do.
+    // eslint-disable-next-line jsx-a11y/no-noninteractive-element-interactions
     <div
       ref={plot}
-      // The cursor's keys belong to the strip while it has the focus, as an application's do.
       role="application"
       // eslint-disable-next-line jsx-a11y/no-noninteractive-tabindex
       tabIndex={0}

@@ -1,0 +1,62 @@
+import { listExceedancesOverlapping, type ExceedanceRecord } from '#db/queries/exceedanceRecords';
+import { listLimitVersions, type LimitVersion } from '#db/queries/limits';
+import { type PeriodKind } from '#lib/acoustics/dayEveningNight';
+import { type Span } from '#lib/services/levels/spans';
+
+/** A limit of the A-weighted level for the time that one version of it was in force. */
+export interface LimitInForce {
+  id: number;
+  name: string;
+  metric: 'LAeq' | 'LAFmax';
+  averaging: '15min' | '1h' | PeriodKind;
+  thresholdDb: number;
+  /** Bit 0 Monday … bit 6 Sunday. */
+  weekdays: number;
+  /** Local clock, minutes after midnight; null: all day. */
+  fromMin: number | null;
+  toMin: number | null;
+  effectiveFromSec: number;
+  /** Null: still in force. */
+  effectiveToSec: number | null;
+}
+
+/** Limits of LAeq or LAFmax that hold, or held, for a station: every version with its time in force. */
+export async function limitsOfStation(networkId: number, stationId: number): Promise<LimitInForce[]> {
+  const versions = await listLimitVersions(networkId);
+  return versions.flatMap((version, at) => {
+    if (version.metric === 'bandLeq' || !concerns(version, stationId)) return [];
+    const next = versions[at + 1];
+    return [
+      {
+        id: version.id,
+        name: version.name,
+        metric: version.metric,
+        averaging: version.averaging,
+        thresholdDb: version.thresholdTenths / 10,
+        weekdays: version.weekdays,
+        fromMin: version.fromMin,
+        toMin: version.toMin,
+        effectiveFromSec: version.effectiveFromSec,
+        effectiveToSec: endOfForce(version, next?.limitId === version.limitId ? next : undefined),
+      },
+    ];
+  });
+}
+
+function concerns({ stationIds }: LimitVersion, stationId: number): boolean {
+  return stationIds === null || stationIds.includes(stationId);
+}
+
+function endOfForce(version: LimitVersion, next: LimitVersion | undefined): number | null {
+  const withdrawnSec = version.withdrawnAt && Math.floor(version.withdrawnAt.getTime() / 1000);
+  const ends = [next?.effectiveFromSec, withdrawnSec].filter((end) => typeof end === 'number');
+  return ends.length === 0 ? null : Math.min(...ends);
+}
+
+/** Exceedances of a station whose window overlaps a stretch of time, in order of time; lifted ones too. */
+export function exceedancesOfStation(
+  stationId: number,
+  { fromSec, toSec }: Span,
+): Promise<ExceedanceRecord[]> {
+  return listExceedancesOverlapping(stationId, fromSec, toSec);
+}

@@ -1,0 +1,105 @@
+import { pool, type Connection } from '#db/queries/connection';
+import { listSettings, pickSettings, type NetworkSettings } from '#db/queries/networks';
+import { type PeriodKind } from '#lib/acoustics/dayEveningNight';
+import { type PeriodAccumulator } from '#lib/acoustics/periodStatistics';
+import { type Statistics } from '#lib/contracts/levels';
+import { type PeriodLevel } from '#lib/services/levels/days';
+import { coverageOf, type Coverage } from '#lib/services/levels/figures';
+import { poolPeriods, type PooledPeriods } from '#lib/services/levels/pooledPeriods';
+import { QuarterSeries } from '#lib/services/levels/quarterSeries';
+import { type Span } from '#lib/services/levels/spans';
+import { periodStatistics, type StatisticsQuery } from '#lib/services/levels/statistics';
+import { periodsBeginningIn, periodsConcerned, POOLED_FROM_SEC, type NamedPeriod } from './namedPeriods';
+import { stepsOf } from './tableSteps';
+
+export interface OverviewQuery extends Span {
+  station: StatisticsQuery['station'];
+  /** Epoch seconds; a period counts as elapsed up to here. */
+  nowSec: number;
+}
+
+/** A day, evening or night, whole, with its level. */
+export interface NamedLevel extends NamedPeriod, Coverage {
+  laeqDb: number | null;
+}
+
+/** A row of the table that stands beside the picture. */
+export interface TableRow extends Span, Coverage {
+  laeqDb: number | null;
+  lafmaxDb: number | null;
+}
+
+/** What a station's page says in figures about a period. */
+export interface Overview {
+  statistics: Statistics;
+  /** Each day, evening and night concerned, in order of time; empty where `pooled` is given. */
+  periods: NamedLevel[];
+  /** Of a period of more than three days: its days, evenings and nights, each pooled; null where there are none. */
+  pooled: { kind: PeriodKind; figures: PooledPeriods }[] | null;
+  /** Hour by hour, or day by day where that would be more than a week of hours. */
+  rows: TableRow[];
+  rowLength: 'hour' | 'day';
+}
+
+/** Figures of a station's period for its page, from stored quarter-hours where they are up to date. */
+export async function stationOverview(query: OverviewQuery, conn: Connection = pool()): Promise<Overview> {
+  const { station, nowSec } = query;
+  const timeline = await listSettings(station.networkId, conn);
+  const isPooled = query.toSec - query.fromSec >= POOLED_FROM_SEC;
+  const named = isPooled ? periodsBeginningIn(query, timeline) : periodsConcerned(query, timeline);
+  const source = { station, timeline, validity: 'rules' } as const;
+  const series = await QuarterSeries.read(source, spanOver([query, ...named]), conn);
+  const levels: (PeriodLevel & NamedPeriod)[] = [];
+  for (const period of named) levels.push(await levelOf(period, series, timeline, nowSec));
+  const { rowLength, steps } = stepsOf(query, timeline, nowSec);
+  const rows: TableRow[] = [];
+  for (const step of steps) rows.push(rowOf(step, await series.levels(step), timeline, nowSec));
+  return {
+    statistics: await periodStatistics({ ...query, timeline }, conn),
+    periods: isPooled
+      ? []
+      : levels.map(({ levels: held, ...period }) => ({ ...period, laeqDb: held.laeqDb() })),
+    pooled: isPooled ? pooledKinds(levels, pickSettings(timeline, query.fromSec).minimumCoverage) : null,
+    rows,
+    rowLength,
+  };
+}
+
+async function levelOf(
+  period: NamedPeriod,
+  series: QuarterSeries,
+  timeline: NetworkSettings[],
+  nowSec: number,
+): Promise<PeriodLevel & NamedPeriod> {
+  const levels = await series.levels(period);
+  const { minimumCoverage } = pickSettings(timeline, period.fromSec);
+  return { ...period, levels, ...coverageOf(levels.sums, period, minimumCoverage, nowSec) };
+}
+
+function rowOf(step: Span, levels: PeriodAccumulator, timeline: NetworkSettings[], nowSec: number): TableRow {
+  const { lafmaxCentiDb } = levels.sums;
+  return {
+    ...step,
+    ...coverageOf(levels.sums, step, pickSettings(timeline, step.fromSec).minimumCoverage, nowSec),
+    laeqDb: levels.laeqDb(),
+    lafmaxDb: lafmaxCentiDb === null ? null : lafmaxCentiDb / 100,
+  };
+}
+
+function pooledKinds(
+  levels: readonly PeriodLevel[],
+  minimumCoverage: number,
+): NonNullable<Overview['pooled']> {
+  const kinds: readonly PeriodKind[] = ['day', 'evening', 'night'];
+  return kinds.flatMap((kind) => {
+    const held = levels.filter((period) => period.kind === kind);
+    return held.length === 0 ? [] : [{ kind, figures: poolPeriods(held, minimumCoverage) }];
+  });
+}
+
+function spanOver(spans: readonly Span[]): Span {
+  return {
+    fromSec: Math.min(...spans.map(({ fromSec }) => fromSec)),
+    toSec: Math.max(...spans.map(({ toSec }) => toSec)),
+  };
+}
