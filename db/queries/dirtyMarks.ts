@@ -56,3 +56,14 @@ export async function dirtyQuartersIn(
     .pluck('quarter_starts_at');
   return new Set(quarters);
 }
+
+/** Marks every quarter-hour of a network's stations that has been computed and ends after an instant. */
+export async function markNetworkFrom(networkId: number, fromSec: number, conn: Connection): Promise<void> {
+  await conn.raw(
+    `INSERT INTO dirty_marks (station_id, quarter_starts_at, marked_at)
+     SELECT quarter_hours.station_id, quarter_hours.starts_at, ?
+     FROM stations JOIN quarter_hours ON quarter_hours.station_id = stations.id
+     WHERE stations.network_id = ? AND quarter_hours.starts_at > ?`,
+    [Math.floor(Date.now() / 1000), networkId, fromSec - 900],
+  );
+}

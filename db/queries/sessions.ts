@@ -14,7 +14,7 @@ export async function insertSession(
   conn: Connection = pool(),
 ): Promise<void> {
   await conn('sessions').insert({
-    id_digest: digestOf(id),
+    id_digest: sessionDigest(id),
     user_id: session.userId,
     expires_at: session.expiresAt,
     ends_at: session.endsAt,
@@ -24,7 +24,7 @@ export async function insertSession(
 
 export async function findSession(id: string, conn: Connection = pool()): Promise<SessionRow | undefined> {
   return conn('sessions')
-    .where({ id_digest: digestOf(id) })
+    .where({ id_digest: sessionDigest(id) })
     .first({ userId: 'user_id', expiresAt: 'expires_at', endsAt: 'ends_at' });
 }
 
@@ -34,13 +34,13 @@ export async function moveSessionExpiry(
   conn: Connection = pool(),
 ): Promise<void> {
   await conn('sessions')
-    .where({ id_digest: digestOf(id) })
+    .where({ id_digest: sessionDigest(id) })
     .update({ expires_at: conn.raw('LEAST(?, ends_at)', [expiresAt]) });
 }
 
 export async function deleteSession(id: string, conn: Connection = pool()): Promise<void> {
   await conn('sessions')
-    .where({ id_digest: digestOf(id) })
+    .where({ id_digest: sessionDigest(id) })
     .delete();
 }
 
@@ -48,10 +48,35 @@ export async function deleteSessionsOf(userId: string, conn: Connection = pool()
   await conn('sessions').where({ user_id: userId }).delete();
 }
 
+/** A session as its owner sees it; the digest names it without being of use to anybody. */
+export interface SessionEntry {
+  idDigest: string;
+  createdAt: Date;
+  expiresAt: Date;
+}
+
+/** Sessions of a person that have not expired, newest first. */
+export async function listSessions(userId: string, conn: Connection = pool()): Promise<SessionEntry[]> {
+  return conn('sessions')
+    .where({ user_id: userId })
+    .where('expires_at', '>', new Date())
+    .orderBy('created_at', 'desc')
+    .select({ idDigest: 'id_digest', createdAt: 'created_at', expiresAt: 'expires_at' });
+}
+
+/** Ends every session of a person but the one named by its id. */
+export async function deleteOtherSessions(userId: string, keptId: string, conn: Connection): Promise<number> {
+  return conn('sessions')
+    .where({ user_id: userId })
+    .whereNot({ id_digest: sessionDigest(keptId) })
+    .delete();
+}
+
 export async function deleteExpiredSessions(now: Date, conn: Connection = pool()): Promise<number> {
   return conn('sessions').where('expires_at', '<=', now).delete();
 }
 
-function digestOf(id: string): string {
+/** Digest under which a session is stored. */
+export function sessionDigest(id: string): string {
   return createHash('sha256').update(id).digest('hex');
 }

@@ -88,6 +88,36 @@ export async function deleteMembership(membership: Membership, conn: Connection)
   await conn('memberships').where({ user_id: userId, network_id: networkId, role }).delete();
 }
 
+/** Every role of every person. */
+export async function listAllMemberships(conn: Connection = pool()): Promise<Membership[]> {
+  return conn('memberships').select({ userId: 'user_id', networkId: 'network_id', role: 'role' });
+}
+
+/** Changes a person's entry; what is left out stays. */
+export async function updateUser(
+  id: string,
+  changes: { name?: string; isAdministrator?: boolean; passwordHash?: string; disabledAt?: Date | null },
+  conn: Connection,
+): Promise<void> {
+  const columns = {
+    name: changes.name,
+    is_administrator: changes.isAdministrator,
+    password_hash: changes.passwordHash,
+    disabled_at: changes.disabledAt,
+  };
+  const given = Object.fromEntries(Object.entries(columns).filter(([, value]) => value !== undefined));
+  if (Object.keys(given).length > 0) await conn('users').where({ id }).update(given);
+}
+
+/** Administrators who may sign in; their rows are locked until the transaction ends, so that two changes cannot remove the last two. */
+export async function lockAdministrators(transaction: Connection): Promise<string[]> {
+  return transaction('users')
+    .where({ is_administrator: true })
+    .whereNull('disabled_at')
+    .forUpdate()
+    .pluck('id');
+}
+
 function userOf(
   row: (Omit<UserRow, 'isAdministrator'> & { isAdministrator: unknown }) | undefined,
 ): UserRow | undefined {
