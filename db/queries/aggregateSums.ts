@@ -73,8 +73,8 @@ export function sumsOfCells(cells: SumsCells): PeriodSums {
     bandFraction = null,
     bandEnergies,
   ] = cells;
+  const bands = bandEnergies ? unpackBandEnergies(bandEnergies) : NO_BANDS;
   return {
-    ...(bandEnergies ? unpackBandEnergies(bandEnergies) : NO_BANDS),
     validSec,
     excludedSec,
     sampleSec,
@@ -86,6 +86,9 @@ export function sumsOfCells(cells: SumsCells): PeriodSums {
     lafminCentiDb,
     lcpeakCentiDb,
     bandFraction,
+    isBandFractionMixed: bands.isBandFractionMixed,
+    bandEnergySec: bands.bandEnergySec,
+    bandValidSec: bands.bandValidSec,
     aClasses: LevelClassCounts.decode(aClasses),
     bandClasses: null,
   };

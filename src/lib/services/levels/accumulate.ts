@@ -1,6 +1,6 @@
 import { pickSettings, type NetworkSettings } from '#db/queries/networks';
 import { type StoredInterval } from '#db/queries/intervals';
-import { PeriodAccumulator } from '#lib/acoustics/periodStatistics';
+import { PeriodAccumulator, type AccumulatedInterval } from '#lib/acoustics/periodStatistics';
 import { isValid, type ValidityRules } from '#lib/acoustics/validity';
 import { QUARTER_SEC } from '#lib/time/quarters';
 import { overlapsAny, type Span } from './spans';
@@ -24,6 +24,8 @@ export interface RulesSpan extends Span {
 
 /** The stretches of `fromSec <= t < toSec` in which the same rules hold, ascending. */
 export function rulesSpans(fromSec: number, toSec: number, timeline: NetworkSettings[]): RulesSpan[] {
+  const [only] = timeline;
+  if (only && timeline.length === 1) return [{ fromSec, toSec, rules: only.rules }];
   const changes = timeline
     .map(({ effectiveFromSec }) => Math.ceil(effectiveFromSec / QUARTER_SEC) * QUARTER_SEC)
     .filter((change) => fromSec < change && change < toSec);
@@ -38,8 +40,12 @@ export function rulesSpans(fromSec: number, toSec: number, timeline: NetworkSett
 /** Whether an interval counts under some rules. */
 export function counts(interval: StoredInterval, rules: ValidityRules, judgement: Judgement): boolean {
   if (judgement.validity === 'all') return true;
-  const { startSec, durationSec, exclusions } = { ...interval, exclusions: judgement.exclusions };
-  return isValid(interval, rules, overlapsAny(exclusions, startSec, startSec + durationSec));
+  return isValid(interval, rules, isExcluded(interval, judgement));
+}
+
+/** Whether a standing exclusion overlaps an interval. */
+export function isExcluded({ startSec, durationSec }: StoredInterval, { exclusions }: Judgement): boolean {
+  return exclusions.length > 0 && overlapsAny(exclusions, startSec, startSec + durationSec);
 }
 
 /** Index of the first of some ascending, disjoint intervals that ends after an instant. */
@@ -66,17 +72,45 @@ export function accumulate(
   options: { bandClasses: boolean },
 ): PeriodAccumulator {
   const accumulator = new PeriodAccumulator(options);
+  const clipped = emptyClip();
   for (const span of rulesSpans(fromSec, toSec, judgement.timeline)) {
     for (let at = firstEndingAfter(intervals, span.fromSec); at < intervals.length; at += 1) {
       const interval = intervals[at];
       if (!interval || interval.startSec >= span.toSec) break;
       const endSec = interval.startSec + interval.durationSec;
       const durationSec = Math.min(endSec, span.toSec) - Math.max(interval.startSec, span.fromSec);
-      accumulator.add(
-        { ...interval, durationSec, sampleSec: interval.durationSec },
-        counts(interval, span.rules, judgement),
-      );
+      accumulator.add(clip(clipped, interval, durationSec), counts(interval, span.rules, judgement));
     }
   }
   return accumulator;
+}
+
+/** One object is filled again for each interval: a month has tens of thousands, and they are summed at once. */
+function clip(into: AccumulatedInterval, interval: StoredInterval, durationSec: number): AccumulatedInterval {
+  into.durationSec = durationSec;
+  into.sampleSec = interval.durationSec;
+  into.laeqCentiDb = interval.laeqCentiDb;
+  into.lafmaxCentiDb = interval.lafmaxCentiDb;
+  into.lafminCentiDb = interval.lafminCentiDb;
+  into.lceqCentiDb = interval.lceqCentiDb;
+  into.lcpeakCentiDb = interval.lcpeakCentiDb;
+  into.bandFraction = interval.bandFraction;
+  into.levelsCentiDb = interval.levelsCentiDb;
+  into.bandIndices = interval.bandIndices;
+  return into;
+}
+
+function emptyClip(): AccumulatedInterval {
+  return {
+    durationSec: 0,
+    sampleSec: 0,
+    laeqCentiDb: 0,
+    lafmaxCentiDb: null,
+    lafminCentiDb: null,
+    lceqCentiDb: null,
+    lcpeakCentiDb: null,
+    bandFraction: 3,
+    levelsCentiDb: new Int16Array(0),
+    bandIndices: new Int8Array(0),
+  };
 }

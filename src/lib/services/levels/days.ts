@@ -5,8 +5,8 @@ import { LDN_SCHEME, ldenDb, ldnDb, type PeriodKind } from '#lib/acoustics/dayEv
 import { type PeriodAccumulator } from '#lib/acoustics/periodStatistics';
 import { formatInstantUtc } from '#lib/contracts/common';
 import { type DayFigures, type PeriodCoverage } from '#lib/contracts/levels';
-import { addDays, datesBetween, instantAtSec, startOfDaySec, type LocalDate } from '#lib/time/zone';
-import { datePeriods, settingsOfDate } from './datePeriods';
+import { addDays, datesBetween, instantAtSec, type LocalDate } from '#lib/time/zone';
+import { datePeriods, dateSettings, settingsOfDate } from './datePeriods';
 import { coverageOf, type Coverage } from './figures';
 import { QuarterSeries } from './quarterSeries';
 import { type Span } from './spans';
@@ -37,8 +37,8 @@ export async function dayFigures(query: DaysQuery, conn: Connection = pool()): P
   const nowSec = query.nowSec ?? Math.floor(Date.now() / 1000);
   const lastNight = datePeriods(addDays(toDate, -1), timeline).at(-1);
   const span = {
-    fromSec: startOfDaySec(fromDate, settingsOfDate(fromDate, timeline).timeZone),
-    toSec: Math.max(startOfDaySec(toDate, settingsOfDate(toDate, timeline).timeZone), lastNight?.toSec ?? 0),
+    fromSec: dateSettings(fromDate, timeline).midnightSec,
+    toSec: Math.max(dateSettings(toDate, timeline).midnightSec, lastNight?.toSec ?? 0),
   };
   const series = await QuarterSeries.read({ station, timeline, validity: 'rules' }, span, conn);
   const days: DayFigures[] = [];
@@ -70,11 +70,9 @@ async function figuresOfDate(
   series: QuarterSeries,
   nowSec: number,
 ): Promise<DayFigures> {
-  const { scheme, timeZone, minimumCoverage } = settingsOfDate(date, timeline);
-  const civil = {
-    fromSec: startOfDaySec(date, timeZone),
-    toSec: startOfDaySec(addDays(date, 1), timeZone),
-  };
+  const { settings, midnightSec } = dateSettings(date, timeline);
+  const { scheme, timeZone, minimumCoverage } = settings;
+  const civil = { fromSec: midnightSec, toSec: dateSettings(addDays(date, 1), timeline).midnightSec };
   const [periods, levels, Ldn] = await Promise.all([
     periodLevelsOf(date, timeline, series, nowSec),
     series.levels(civil),

@@ -2,8 +2,8 @@ import { pool, type Connection } from '#db/queries/connection';
 import { listSettings, type NetworkSettings } from '#db/queries/networks';
 import { ldenDb, type PeriodKind } from '#lib/acoustics/dayEveningNight';
 import { type Statistics } from '#lib/contracts/levels';
-import { addDays, datesBetween, startOfDaySec, type LocalDate } from '#lib/time/zone';
-import { datePeriods, settingsOfDate } from './datePeriods';
+import { addDays, datesBetween, type LocalDate } from '#lib/time/zone';
+import { datePeriods, dateSettings, settingsOfDate } from './datePeriods';
 import { periodLevelsOf, type PeriodLevel } from './days';
 import { type LevelSource } from './intervalSums';
 import { loudestOf, type Loudest } from './loudest';
@@ -46,11 +46,9 @@ export async function monthFigures(query: MonthQuery, conn: Connection = pool())
   const timeline = query.timeline ?? (await listSettings(station.networkId, conn));
   const nowSec = query.nowSec ?? Math.floor(Date.now() / 1000);
   const { firstDate, nextMonth } = datesOfMonth(month);
-  const { scheme, timeZone, minimumCoverage } = settingsOfDate(firstDate, timeline);
-  const civil = {
-    fromSec: startOfDaySec(firstDate, timeZone),
-    toSec: startOfDaySec(nextMonth, settingsOfDate(nextMonth, timeline).timeZone),
-  };
+  const { settings, midnightSec } = dateSettings(firstDate, timeline);
+  const { scheme, timeZone, minimumCoverage } = settings;
+  const civil = { fromSec: midnightSec, toSec: dateSettings(nextMonth, timeline).midnightSec };
   const source: LevelSource = { station, timeline, validity: 'rules' };
   const lastNightEndSec = datePeriods(addDays(nextMonth, -1), timeline).at(-1)?.toSec ?? civil.toSec;
   const span = { fromSec: civil.fromSec, toSec: Math.max(civil.toSec, lastNightEndSec) };

@@ -1,7 +1,6 @@
 import { type StoredInterval } from '#db/queries/intervals';
 import { INVALIDITY_REASONS, invalidityReasons, type ValidityRules } from '#lib/acoustics/validity';
-import { type Judgement } from './accumulate';
-import { overlapsAny } from './spans';
+import { isExcluded, type Judgement } from './accumulate';
 
 /** An interval that arrives later than this after its end counts as late: it was kept back, not just sent in a batch. */
 export const LATE_AFTER_SEC = 3600;
@@ -13,9 +12,7 @@ export function isLate({ startSec, durationSec, receivedAtSec }: StoredInterval)
 
 /** Why an interval does not count, as bits: bit n is `INVALIDITY_REASONS[n]`. */
 export function reasonBitsOf(interval: StoredInterval, rules: ValidityRules, judgement: Judgement): number {
-  const { startSec, durationSec } = interval;
-  const isExcluded = overlapsAny(judgement.exclusions, startSec, startSec + durationSec);
-  return invalidityReasons(interval, rules, isExcluded).reduce(
+  return invalidityReasons(interval, rules, isExcluded(interval, judgement)).reduce(
     (bits, reason) => bits | (1 << INVALIDITY_REASONS.indexOf(reason)),
     0,
   );
