@@ -1,5 +1,5 @@
 import { inTransaction, type Connection } from '#db/queries/connection';
-import { deleteDirtyMarks, readDirtyMarks } from '#db/queries/dirtyMarks';
+import { deleteDirtyMarks, readDirtyMarks, type DirtyMark } from '#db/queries/dirtyMarks';
 import { listSettings, type NetworkSettings } from '#db/queries/networks';
 import { findStationById, lockStation, type StationRow } from '#db/queries/stations';
 import { chunksOf, marksByStation, type Chunk } from './chunks';
@@ -37,24 +37,41 @@ export async function aggregateMarks(
 ): Promise<AggregationRun> {
   const marks = await readDirtyMarks(mostMarks);
   let quarters = 0;
+  const failures: unknown[] = [];
   for (const [stationId, ofStation] of marksByStation(marks)) {
-    const station = await findStationById(stationId);
-    if (!station) {
-      await inTransaction((transaction) =>
-        deleteDirtyMarks(
-          ofStation.map(({ id }) => id),
-          transaction,
-        ),
-      );
-      continue;
-    }
-    const timeline = await listSettings(station.networkId);
-    for (const chunk of chunksOf(stationId, ofStation, timeline)) {
-      await recomputeChunk(chunk, station, timeline, onQuartersRecomputed);
-      quarters += chunk.quarterStartsSec.length;
+    try {
+      quarters += await aggregateStation(stationId, ofStation, onQuartersRecomputed);
+    } catch (failure) {
+      // One station's trouble must not keep the others from being current; its marks stay.
+      failures.push(failure);
     }
   }
+  if (failures.length > 0) throw new AggregateError(failures, 'Some stations could not be recomputed.');
   return { quarters, marks: marks.length };
+}
+
+async function aggregateStation(
+  stationId: number,
+  marks: readonly DirtyMark[],
+  onQuartersRecomputed: OnQuartersRecomputed,
+): Promise<number> {
+  const station = await findStationById(stationId);
+  if (!station) {
+    await inTransaction((transaction) =>
+      deleteDirtyMarks(
+        marks.map(({ id }) => id),
+        transaction,
+      ),
+    );
+    return 0;
+  }
+  const timeline = await listSettings(station.networkId);
+  let quarters = 0;
+  for (const chunk of chunksOf(stationId, marks, timeline)) {
+    await recomputeChunk(chunk, station, timeline, onQuartersRecomputed);
+    quarters += chunk.quarterStartsSec.length;
+  }
+  return quarters;
 }
 
 /** Recomputes until no mark is left that had been made when this began to look. Answers the quarter-hours recomputed. */
