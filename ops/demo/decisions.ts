@@ -1,0 +1,76 @@
+import { inTransaction } from '#db/queries/connection';
+import { bandByNominalHz } from '#lib/acoustics/bands';
+import { insertLimit } from '#db/queries/limits';
+import { addExclusion } from '#lib/services/exclusions/add';
+import { DEMO_LIMITS } from './limits';
+import type { DemoStation } from './stations';
+
+const HOUR_SEC = 3600;
+
+/** The demo's limits, in force since its history begins. */
+export async function seedLimits(
+  networkId: number,
+  operatorId: string,
+  stations: DemoStation[],
+  effectiveFromSec: number,
+): Promise<void> {
+  const idOf = (code: string) => stations.find(({ site }) => site.code === code)?.station.id;
+  for (const limit of DEMO_LIMITS) {
+    const bandFraction = 'bandFraction' in limit ? limit.bandFraction : null;
+    const band = 'bandHz' in limit && bandFraction ? bandByNominalHz(bandFraction, limit.bandHz) : undefined;
+    await inTransaction((transaction) =>
+      insertLimit(
+        networkId,
+        {
+          effectiveFromSec,
+          name: limit.name,
+          metric: limit.metric,
+          averaging: limit.averaging,
+          bandFraction,
+          bandIndex: band?.index ?? null,
+          thresholdTenths: limit.thresholdDb * 10,
+          weekdays: limit.weekdays.reduce((bits: number, day) => bits | (1 << day), 0),
+          fromMin: 'from' in limit ? minutesOf(limit.from) : null,
+          toMin: 'to' in limit ? minutesOf(limit.to) : null,
+          minimumCoverage: null,
+          stationIds: limit.stations.map(idOf).filter((id) => id !== undefined),
+          recipients: ['operator@merrow.example'],
+          reason: limit.reason,
+          createdBy: operatorId,
+        },
+        transaction,
+      ),
+    );
+  }
+}
+
+function minutesOf(clock: string): number {
+  return Number(clock.slice(0, 2)) * 60 + Number(clock.slice(3));
+}
+
+/** What an operator left out: `hoursAgo` before the demo was made. */
+const EXCLUSIONS = [
+  { code: 'MER-04', fromHoursAgo: 75, toHoursAgo: 71.5, reason: 'Grass mown right under the mast' },
+  { code: 'MER-01', fromHoursAgo: 320, toHoursAgo: 318, reason: 'Painters at the mast, compressor running' },
+  { code: 'MER-06', fromHoursAgo: 830, toHoursAgo: 806, reason: 'Street party' },
+];
+
+export async function seedExclusions(
+  networkId: number,
+  operatorId: string,
+  nowSec: number,
+  historyDays: number,
+): Promise<void> {
+  for (const { code, fromHoursAgo, toHoursAgo, reason } of EXCLUSIONS) {
+    if (fromHoursAgo > historyDays * 24) continue;
+    const at = (hoursAgo: number) => Math.floor((nowSec - hoursAgo * HOUR_SEC) / 60) * 60;
+    await addExclusion({
+      networkId,
+      stationCode: code,
+      fromSec: at(fromHoursAgo),
+      toSec: at(toHoursAgo),
+      reason,
+      userId: operatorId,
+    });
+  }
+}

@@ -1,0 +1,60 @@
+import type { Config } from '#lib/config/config';
+import { findNetworkById, settingsAt } from '#db/queries/networks';
+import { aggregateAll } from '#ingest/aggregate/aggregate';
+import { pendWindowsFor } from '#ingest/detect/pendWindows';
+import { judgeLimits } from '#ingest/jobs/judgeLimits';
+import { DEFAULT_DEMO_PASSWORD } from './accounts';
+import { seedComplaints } from './complaints';
+import { seedExclusions, seedLimits } from './decisions';
+import { seedHistory } from './history';
+import { seedPeople } from './people';
+import { seedStations } from './stations';
+
+const DAY_SEC = 86_400;
+
+/** Makes the demo by the ways that real data take: registration, receiving, exclusions, aggregation, judging, complaints. */
+export async function seedDemo(settings: Config, tell: (line: string) => void): Promise<void> {
+  const { days, password } = settings.demo;
+  const nowSec = Math.floor(Date.now() / 1000);
+  const { networkId, people } = await seedPeople(password ?? DEFAULT_DEMO_PASSWORD);
+  const operatorId = idOf(people, 'operator@merrow.example');
+  const stations = await seedStations(networkId, operatorId, settings.dataDir, days);
+  await seedLimits(networkId, operatorId, stations, nowSec - days * DAY_SEC);
+
+  let intervals = 0;
+  for (const station of stations) {
+    const count = await seedHistory(station, days, nowSec);
+    intervals += count;
+    tell(`${station.site.code} ${station.site.name}: ${count.toLocaleString('en-GB')} intervals`);
+  }
+  await seedExclusions(networkId, operatorId, nowSec, days);
+  const quarters = await aggregateAll(pendWindowsFor);
+  tell(
+    `${quarters.toLocaleString('en-GB')} quarter-hours computed from ${intervals.toLocaleString('en-GB')} intervals`,
+  );
+  tell(`${await judgeAll()} windows of limits judged`);
+
+  const network = await findNetworkById(networkId);
+  if (!network) throw new Error('The network just made is not there.');
+  const desk = {
+    network,
+    settings: await settingsAt(networkId, nowSec),
+    liaisonId: idOf(people, 'liaison@merrow.example'),
+    stations,
+  };
+  tell(`${await seedComplaints(desk, nowSec, days)} complaints`);
+}
+
+async function judgeAll(): Promise<number> {
+  for (let judged = 0; ;) {
+    const round = await judgeLimits(new Date());
+    if (round === 0) return judged;
+    judged += round;
+  }
+}
+
+function idOf(people: Map<string, string>, email: string): string {
+  const id = people.get(email);
+  if (!id) throw new Error(`${email} is not among the demo's people.`);
+  return id;
+}

@@ -1,0 +1,102 @@
+import type { LimitVersion } from '#db/queries/limits';
+import { pickSettings, type NetworkSettings } from '#db/queries/networks';
+import { periodsOf } from '#lib/time/periods';
+import { QUARTER_SEC } from '#lib/time/quarters';
+import {
+  addDays,
+  localDateAt,
+  localMinuteAt,
+  startOfDaySec,
+  weekdayOf,
+  type LocalDate,
+} from '#lib/time/zone';
+
+/** A window that a limit looks at: half-open, epoch seconds. */
+export interface LimitWindow {
+  startSec: number;
+  endSec: number;
+}
+
+type WindowRule = Pick<
+  LimitVersion,
+  'averaging' | 'weekdays' | 'fromMin' | 'toMin' | 'effectiveFromSec' | 'withdrawnAt'
+>;
+
+interface Candidate extends LimitWindow {
+  /** Local clock at its beginning, minutes after midnight. */
+  clockMin: number;
+}
+
+const DAY_SEC = 86_400;
+
+/**
+ * Windows of a limit's version that begin in `fromSec <= t < toSec`, ascending: quarter-hours and hours by the clock on the wall,
+ * or the network's days, evenings and nights; on its weekdays (of the local date on which the window begins), within its clock
+ * times (across midnight where they end before they begin), while the version is in force. A later version of the limit is the
+ * caller's to look out for. `timeline`: the network's settings in order of their beginning.
+ */
+export function windowsOf(
+  rule: WindowRule,
+  fromSec: number,
+  toSec: number,
+  timeline: NetworkSettings[],
+): LimitWindow[] {
+  const { timeZone } = pickSettings(timeline, fromSec);
+  const lastDate = addDays(localDateAt(toSec, timeZone), 1);
+  const windows: LimitWindow[] = [];
+  for (let date = addDays(localDateAt(fromSec, timeZone), -1); date <= lastDate; date = addDays(date, 1)) {
+    if ((rule.weekdays & (1 << weekdayOf(date))) === 0) continue;
+    for (const { startSec, endSec, clockMin } of candidatesOf(date, rule, timeline)) {
+      const isAsked = fromSec <= startSec && startSec < toSec;
+      if (isAsked && isWithinClock(clockMin, rule) && isInForce(startSec, rule))
+        windows.push({ startSec, endSec });
+    }
+  }
+  return windows;
+}
+
+function candidatesOf(date: LocalDate, { averaging }: WindowRule, timeline: NetworkSettings[]): Candidate[] {
+  const { timeZone } = pickSettings(timeline, Date.parse(`${date}T12:00:00Z`) / 1000);
+  const dayFrom = startOfDaySec(date, timeZone);
+  const { timeZone: zone, scheme } = pickSettings(timeline, dayFrom);
+  if (averaging === '15min') return clockWindows(date, zone, 15);
+  if (averaging === '1h') return clockWindows(date, zone, 60);
+  return periodsOf(date, scheme, zone)
+    .filter(({ kind }) => kind === averaging)
+    .map((period) => ({
+      startSec: period.fromSec,
+      endSec: period.toSec,
+      clockMin: localMinuteAt(period.fromSec, zone),
+    }));
+}
+
+/** Windows of a civil date that begin where the clock shows a multiple of `stepMin`. */
+function clockWindows(date: LocalDate, zone: string, stepMin: number): Candidate[] {
+  const dayFrom = startOfDaySec(date, zone);
+  const dayTo = startOfDaySec(addDays(date, 1), zone);
+  const stepSec = stepMin * 60;
+  // Without a clock change the clock is elapsed time; with one it is asked at each quarter-hour.
+  const clockAt =
+    dayTo - dayFrom === DAY_SEC
+      ? (sec: number) => (sec - dayFrom) / 60
+      : (sec: number) => localMinuteAt(sec, zone);
+  const starts: { startSec: number; clockMin: number }[] = [];
+  for (let startSec = dayFrom; startSec < dayTo; startSec += QUARTER_SEC) {
+    const clockMin = clockAt(startSec);
+    if (clockMin % stepMin === 0) starts.push({ startSec, clockMin });
+  }
+  return starts.map(({ startSec, clockMin }, at) => ({
+    startSec,
+    clockMin,
+    endSec: Math.min(starts[at + 1]?.startSec ?? dayTo, startSec + stepSec),
+  }));
+}
+
+function isWithinClock(clockMin: number, { fromMin, toMin }: WindowRule): boolean {
+  if (fromMin === null || toMin === null) return true;
+  return fromMin < toMin ? fromMin <= clockMin && clockMin < toMin : clockMin >= fromMin || clockMin < toMin;
+}
+
+function isInForce(startSec: number, { effectiveFromSec, withdrawnAt }: WindowRule): boolean {
+  return startSec >= effectiveFromSec && (withdrawnAt === null || startSec * 1000 < withdrawnAt.getTime());
+}
