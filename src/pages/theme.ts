@@ -1,4 +1,5 @@
 import type { APIRoute } from 'astro';
+import { ownPath } from '#lib/http/ownPath';
 
 const YEAR_SEC = 365 * 86_400;
 
@@ -13,8 +14,3 @@ export const POST: APIRoute = async ({ request, cookies, redirect }) => {
   }
   return redirect(ownPath(form.get('back')), 303);
 };
-
-/** A path of this site, never another site's address. */
-function ownPath(back: FormDataEntryValue | null): string {
-  return typeof back === 'string' && /^\/(?![/\\])/.test(back) ? back : '/';
-}

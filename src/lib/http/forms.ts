@@ -1,0 +1,61 @@
+import { ZodError } from 'zod';
+import { Problem } from './problem';
+
+/** What a person typed, by field; a field that may hold several values holds the last here and all in `all`. */
+export interface FormValues {
+  text: Readonly<Record<string, string>>;
+  all(name: string): string[];
+}
+
+/** Field → what is wrong, in words. An error of the whole form has the empty name. */
+export type FormErrors = Readonly<Record<string, string>>;
+
+export type Submission<T> =
+  { isDone: true; value: T } | { isDone: false; values: FormValues; errors: FormErrors };
+
+/**
+ * Reads a posted form and acts on it. What the person can put right (a refusal, a field that does not fit) comes back with
+ * everything that was typed; other errors go on.
+ */
+export async function submitForm<T>(
+  request: Request,
+  act: (values: FormValues) => Promise<T>,
+): Promise<Submission<T>> {
+  const values = valuesOf(await request.formData());
+  try {
+    return { isDone: true, value: await act(values) };
+  } catch (error) {
+    const errors = formErrors(error);
+    if (!errors) throw error;
+    return { isDone: false, values, errors };
+  }
+}
+
+function valuesOf(form: FormData): FormValues {
+  const texts = [...form].filter((entry): entry is [string, string] => typeof entry[1] === 'string');
+  return {
+    text: Object.fromEntries(texts.map(([name, value]) => [name, value.trim()])),
+    all: (name) => texts.filter(([other]) => other === name).map(([, value]) => value),
+  };
+}
+
+/** A number typed in a form; undefined for an empty field, NaN for what is no number. A decimal comma is a decimal point. */
+export function typedNumber(text: string | undefined): number | undefined {
+  if (text === undefined || text === '') return undefined;
+  return Number(text.replace(',', '.').replace('\u2212', '-'));
+}
+
+function formErrors(error: unknown): FormErrors | null {
+  if (error instanceof ZodError) {
+    return firstOfEach(
+      error.issues.map((issue) => ({ field: String(issue.path[0] ?? ''), message: issue.message })),
+    );
+  }
+  if (!(error instanceof Problem) || error.status < 400 || error.status >= 500) return null;
+  const fields = error.extra.members?.['fields'] as { field: string; message: string }[] | undefined;
+  return fields ? firstOfEach(fields) : { '': error.detail ?? error.title };
+}
+
+function firstOfEach(fields: { field: string; message: string }[]): FormErrors {
+  return Object.fromEntries(fields.toReversed().map(({ field, message }) => [field, message]));
+}
