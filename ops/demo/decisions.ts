@@ -28,7 +28,7 @@ export async function seedLimits(
           averaging: limit.averaging,
           bandFraction,
           bandIndex: band?.index ?? null,
-          thresholdTenths: limit.thresholdDb * 10,
+          thresholdTenths: Math.round(limit.thresholdDb * 10),
           weekdays: limit.weekdays.reduce((bits: number, day) => bits | (1 << day), 0),
           fromMin: 'from' in limit ? minutesOf(limit.from) : null,
           toMin: 'to' in limit ? minutesOf(limit.to) : null,

@@ -46,7 +46,7 @@ export const DEMO_LIMITS = [
     averaging: '1h',
     bandFraction: 3,
     bandHz: 100,
-    thresholdDb: 68,
+    thresholdDb: 70.5,
     stations: ['MER-02'],
     from: '21:00',
     to: '06:00',
