@@ -72,6 +72,7 @@ export function StripView(props: StripProps) {
   const slip = useSlipFigures({
     stationUrl,
     selection,
+    isMarked: interaction.selection !== null,
     isSettled: interaction.anchor === null,
     layers,
     fraction: display.fraction,
@@ -132,8 +133,7 @@ export function StripView(props: StripProps) {
       <ReadingSlip
         selection={selection}
         isMarked={interaction.selection !== null}
-        figures={slip.figures}
-        error={slip.error}
+        state={slip}
         fraction={display.fraction}
         context={{
           slug,

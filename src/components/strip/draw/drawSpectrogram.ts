@@ -6,6 +6,9 @@ import { hatchPattern } from './hatch';
 import { paintSpectrogram, type Colouring } from './paintSpectrogram';
 import { within, writeText, type Surface } from './surface';
 
+/** Below the lowest label, for the unit to stand apart from it. */
+const UNIT_ROOM_PX = 22;
+
 /** Bands upward over time. `elapsedPx`: device pixels of the axis that have passed; what lies beyond is left blank. */
 export function drawSpectrogram(
   surface: Surface,
@@ -23,8 +26,12 @@ export function drawSpectrogram(
     context.drawImage(image, 0, 0, width, height);
   });
   const { x, y, height } = geometry.spectrogram;
-  writeText(surface, 'Hz', x - 8, y + height - 8, { colour: palette.inkSoft, align: 'right' });
-  for (const tick of bandTicks(pixels.bands, height, 18)) {
+  const ticks = bandTicks(pixels.bands, height, 18);
+  const lowestPx = ticks[0]?.yPx ?? 0;
+  if (height - lowestPx > UNIT_ROOM_PX) {
+    writeText(surface, 'Hz', x - 8, y + height - 8, { colour: palette.inkSoft, align: 'right' });
+  }
+  for (const tick of ticks) {
     writeText(surface, tick.label, x - 8, y + tick.yPx, { colour: palette.inkSoft, align: 'right' });
   }
 }

@@ -25,7 +25,7 @@ const NARROW_PX = 560;
 /** The parts for a strip `width` CSS pixels wide: less tall and with a thinner margin where it is narrow. */
 export function stripGeometry(width: number): StripGeometry {
   const isNarrow = width < NARROW_PX;
-  const left = isNarrow ? 44 : 56;
+  const left = isNarrow ? 50 : 58;
   const plotWidth = Math.max(80, width - left - 1);
   const laneHeight = 15;
   const part = (y: number, height: number): Rect => ({ x: left, y, width: plotWidth, height });

@@ -4,8 +4,10 @@ import { estimateFigures } from '../model/estimate';
 import { type Selection } from '../model/selection';
 import { figuresOfEstimate, figuresOfStatistics, type SlipFigures } from '../model/slipFigures';
 import { type StripColumns } from '../model/stripColumns';
+import type { UsualLevels } from '#lib/contracts/usual';
 import { useDebounced } from './useDebounced';
 import { useStatistics } from './useStatistics';
+import { useUsual } from './useUsual';
 
 /** Time that a selection must stand still before the server is asked. */
 const SETTLE_MS = 250;
@@ -13,6 +15,8 @@ const SETTLE_MS = 250;
 interface SlipInput {
   stationUrl: string;
   selection: Selection;
+  /** Whether a person has marked it: only then is the usual looked up. */
+  isMarked: boolean;
   /** Whether the person has let go of it. */
   isSettled: boolean;
   layers: readonly StripColumns[];
@@ -21,13 +25,20 @@ interface SlipInput {
   nowSec: number;
 }
 
+export interface SlipState {
+  figures: SlipFigures | null;
+  usual: UsualLevels | null;
+  error: Error | null;
+}
+
 /** Figures of a selection: the estimate from the screen in the same frame, then the server's. */
-export function useSlipFigures(input: SlipInput): { figures: SlipFigures | null; error: Error | null } {
+export function useSlipFigures(input: SlipInput): SlipState {
   const { stationUrl, selection, layers, fraction, intervalSec, nowSec } = input;
   const { fromSec, toSec } = selection;
   const settled = useDebounced(`${fromSec}/${toSec}`, SETTLE_MS);
   const isSettled = input.isSettled && settled === `${fromSec}/${toSec}`;
   const statistics = useStatistics(stationUrl, { fromSec, toSec }, isSettled, nowSec);
+  const usual = useUsual(stationUrl, { fromSec, toSec }, isSettled && input.isMarked);
   const estimate = useMemo(
     () => estimateFigures(layers, { fromSec, toSec }, intervalSec, nowSec),
     [layers, fromSec, toSec, intervalSec, nowSec],
@@ -35,5 +46,5 @@ export function useSlipFigures(input: SlipInput): { figures: SlipFigures | null;
   const figures = statistics.data
     ? figuresOfStatistics(statistics.data, fraction)
     : estimate && figuresOfEstimate(estimate);
-  return { figures, error: statistics.error };
+  return { figures, usual, error: statistics.error };
 }

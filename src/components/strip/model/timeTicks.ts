@@ -21,7 +21,7 @@ const STEPS_MIN = [1, 2, 5, 10, 15, 30, 60, 120, 180, 360, 720] as const;
 const STEPS_DAYS = [1, 2, 7, 14, 28, 91] as const;
 
 /** Least room a mark's label takes, in CSS pixels. */
-const LABEL_PX = 58;
+const LABEL_PX = 50;
 
 /** Marks on the hours (or minutes, or dates) of the network's own clock, as many as have room on `widthPx`. */
 export function timeTicks(view: TimeView, widthPx: number, zone: string): TimeTick[] {

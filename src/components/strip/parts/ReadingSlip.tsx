@@ -1,5 +1,6 @@
 import { useId } from 'react';
 import { type BandFraction } from '#lib/acoustics/bands';
+import { type SlipState } from '../hooks/useSlipFigures';
 import { type Selection } from '../model/selection';
 import { markedBandsLeqDb, type SlipFigures } from '../model/slipFigures';
 import { stretchWords } from '../model/timeWords';
@@ -14,24 +15,16 @@ interface ReadingSlipProps {
   selection: Selection;
   /** Whether it was marked by the person; else it is what the strip shows. */
   isMarked: boolean;
-  figures: SlipFigures | null;
-  error: Error | null;
+  state: SlipState;
   fraction: BandFraction;
   context: SlipContext;
   onClear: () => void;
 }
 
 /** The figures of exactly what is marked on the strip, its spectrum, what stands out, and what can be done next. */
-export function ReadingSlip({
-  selection,
-  isMarked,
-  figures,
-  error,
-  fraction,
-  context,
-  onClear,
-}: ReadingSlipProps) {
+export function ReadingSlip({ selection, isMarked, state, fraction, context, onClear }: ReadingSlipProps) {
   const headingId = useId();
+  const { figures, usual, error } = state;
   const { bands } = selection;
   return (
     <aside aria-labelledby={headingId} className="slip self-start text-table">
@@ -60,6 +53,7 @@ export function ReadingSlip({
         figures={figures}
         bandsLeqDb={figures && markedBandsLeqDb(figures, selection)}
         bands={bands}
+        usual={usual}
       />
       {figures && <SlipSpectrum figures={figures} selection={selection} fraction={fraction} />}
       <SlipActions selection={selection} isMarked={isMarked} context={context} />
@@ -77,7 +71,7 @@ function StretchHeading({ selection, zone }: { selection: Selection; zone: strin
         {rest.length > 0 && ' –'}
       </span>{' '}
       {rest.length > 0 && <span className="inline-block">{rest[0]}</span>}
-      {selection.bands && <span className="inline-block">&nbsp;· {bandRangeWords(selection.bands)}</span>}
+      {selection.bands && <span className="block">{bandRangeWords(selection.bands)}</span>}
     </>
   );
 }

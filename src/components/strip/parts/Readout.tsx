@@ -86,7 +86,8 @@ function ReadingWords({
 }
 
 function edgesWords({ lowerHz, upperHz }: Band): string {
-  const [unit, perUnit] = upperHz < 1000 ? ['Hz', 1] : ['kHz', 1000];
-  const digits = (hz: number) => String(Number((hz / perUnit).toPrecision(3)));
-  return `${digits(lowerHz)}–${digits(upperHz)} ${unit}`;
+  const digits = (hz: number) => String(Number(hz.toPrecision(3)));
+  if (upperHz < 1000) return `${digits(lowerHz)}–${digits(upperHz)} Hz`;
+  if (lowerHz < 1000) return `${digits(lowerHz)} Hz–${digits(upperHz / 1000)} kHz`;
+  return `${digits(lowerHz / 1000)}–${digits(upperHz / 1000)} kHz`;
 }

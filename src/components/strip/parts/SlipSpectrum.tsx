@@ -1,5 +1,6 @@
-import { bandLabel, type BandFraction } from '#lib/acoustics/bands';
-import { assessTonality } from '#lib/acoustics/tonality';
+import { bandAt, bandLabel, type BandFraction } from '#lib/acoustics/bands';
+import { standingOut, type StandingOutRange } from '#lib/acoustics/standingOut';
+import { tonalThresholdTenths } from '#lib/acoustics/tonality';
 import { formatLevelDb } from '#lib/format/levels';
 import { notAssessableWords, toneWords } from '#lib/format/tones';
 import { SpectrumBars } from '../../spectrum/SpectrumBars';
@@ -12,15 +13,20 @@ interface SlipSpectrumProps {
   fraction: BandFraction;
 }
 
-/** The mean spectrum of the selection with its standing-out bands, and what can be said about them. */
+/** Ranges that are told in words beside the tones. */
+const MOST_RANGES = 2;
+
+/** The mean spectrum of the selection with the bands that stand out of it, and what can be said about them. */
 export function SlipSpectrum({ figures, selection, fraction }: SlipSpectrumProps) {
   const bands = figures.bands.map(({ band }) => band);
   const levelsDb = figures.bands.map(({ leqDb }) => leqDb);
   if (levelsDb.every((level) => level === null)) return null;
-  const assessment = assessTonality(fraction, levelsDb, bands, figures.validSec);
-  const findings = assessment.kind === 'assessed' ? assessment.findings : [];
+  const { tonality, ranges } = standingOut({ fraction, levelsDb, bands, averagedSec: figures.validSec });
+  const tones = tonality.kind === 'assessed' ? tonality.findings : [];
+  const others = ranges.filter(({ reasons }) => !isTone(reasons)).slice(0, MOST_RANGES);
+  const held = [...ranges.filter(({ reasons }) => isTone(reasons)), ...others];
   const isStandingOut = (index: number) =>
-    findings.some(({ lowerIndex, upperIndex }) => lowerIndex <= index && index <= upperIndex);
+    held.some(({ lowerIndex, upperIndex }) => lowerIndex <= index && index <= upperIndex);
   const marked = new Set(selection.bands ? selectedBands(selection, bands).map(({ index }) => index) : []);
   return (
     <div className="mt-4">
@@ -35,22 +41,42 @@ export function SlipSpectrum({ figures, selection, fraction }: SlipSpectrumProps
       <p className="mt-1 text-small text-ink-soft">
         Mean of each band, dB (Z){!figures.isEstimate && '; line: L10'}
       </p>
-      {assessment.kind === 'not-assessable' && (
-        <p className="mt-2 text-small text-ink-soft">{notAssessableWords(assessment.reason)}</p>
+      {tonality.kind === 'not-assessable' && (
+        <p className="mt-2 text-small text-ink-soft">{notAssessableWords(tonality.reason)}</p>
       )}
-      {assessment.kind === 'assessed' && findings.length === 0 && (
-        <p className="mt-2 text-small text-ink-soft">No band of the mean spectrum stands out as a tone.</p>
-      )}
-      {findings.map((finding) => {
+      {tones.map((finding) => {
         const { band, rest } = toneWords(finding);
         return (
-          <p key={`${finding.method}${finding.lowerIndex}`} className="mt-3 border-l-[3px] border-ochre pl-3">
+          <p key={`${finding.method}${finding.lowerIndex}`} className="mt-3 border-l-3 border-ochre pl-3">
             <b>{band}</b> {rest}.
           </p>
         );
       })}
+      {others.map((range) => (
+        <p key={range.lowerIndex} className="mt-2 text-small">
+          {rangeWords(range, fraction)}
+        </p>
+      ))}
+      {tonality.kind === 'assessed' && held.length === 0 && (
+        <p className="mt-2 text-small text-ink-soft">No band of the mean spectrum stands out.</p>
+      )}
     </div>
   );
+}
+
+function isTone(reasons: StandingOutRange['reasons']): boolean {
+  return reasons.includes('tone') || reasons.includes('tone-on-edge');
+}
+
+/** "100 Hz band is 12.3 dB above both neighbours; 15 dB would make it a tone." */
+function rangeWords(
+  { lowerIndex, excessOverNeighboursDb }: StandingOutRange,
+  fraction: BandFraction,
+): string {
+  const threshold = fraction === 3 ? tonalThresholdTenths(lowerIndex) : null;
+  const band = `${bandLabel(bandAt(fraction, lowerIndex))} ${fraction === 3 ? 'band' : 'octave'}`;
+  const stands = `${band} is ${formatLevelDb(excessOverNeighboursDb)} dB above both neighbours`;
+  return threshold === null ? `${stands}.` : `${stands}; ${threshold / 10} dB would make it a tone.`;
 }
 
 function loudestWords({ bands }: SlipFigures): string {
