@@ -1,0 +1,128 @@
+import { beforeEach, expect, test } from 'vitest';
+import { db } from '#db/client';
+import { inTransaction } from '#db/queries/connection';
+import { insertMail } from '#db/queries/outbox';
+import { messageIdOf } from '#ingest/notify/messageId';
+import { sendDueMail, type SenderSettings } from '#ingest/notify/sendOutbox';
+import { useFreshSchema } from '../support/freshSchema';
+
+useFreshSchema();
+
+const MINUTE_MS = 60_000;
+interface Handed {
+  to: string;
+  messageId: string;
+}
+let handed: Handed[];
+
+beforeEach(async () => {
+  handed = [];
+  await db()('outbox').delete();
+});
+
+function put(key: string): Promise<void> {
+  const mail = {
+    messageId: messageIdOf(key),
+    dedupeKey: key,
+    networkId: 1,
+    kind: 'exceedances',
+    recipient: `${key}@people.example`,
+    subject: 'Quay Head: above the limit',
+    text: 'text',
+    html: '<p>html</p>',
+  };
+  return inTransaction((transaction) => insertMail(mail, transaction));
+}
+
+function sender(holder: string, changes: Partial<SenderSettings> = {}): SenderSettings {
+  const sendMail = async (mail: Handed) => handed.push({ to: mail.to, messageId: mail.messageId });
+  return {
+    transport: { sendMail } as never,
+    from: 'bittern@merrow.example',
+    holder,
+    resolvers: {},
+    ...changes,
+  };
+}
+
+const rows = () => db()('outbox').orderBy('id');
+
+test('a message put twice for one cause is sent once', async () => {
+  await put('a');
+  await put('a');
+  await sendDueMail(sender('one'), new Date());
+  await sendDueMail(sender('one'), new Date());
+  expect(handed).toEqual([{ to: 'a@people.example', messageId: messageIdOf('a') }]);
+  expect(await rows()).toMatchObject([{ state: 'sent', attempts: 1 }]);
+});
+
+test('two senders never hand over the same message', async () => {
+  for (let n = 0; n < 30; n += 1) await put(`m${n}`);
+  const rounds = Array.from({ length: 8 }, (_, n) => sendDueMail(sender(`sender-${n}`), new Date()));
+  await Promise.all(rounds);
+  while ((await sendDueMail(sender('last'), new Date())) > 0);
+  expect(handed).toHaveLength(30);
+  expect(new Set(handed.map(({ to }) => to)).size).toBe(30);
+});
+
+test('a failure waits longer each time, keeps its Message-ID, and is given up after five days', async () => {
+  await put('b');
+  const failing = sender('one', {
+    transport: { sendMail: async () => Promise.reject(new Error('421 busy')) } as never,
+  });
+  let now = new Date();
+  const waits: number[] = [];
+  for (let attempt = 0; attempt < 8; attempt += 1) {
+    await sendDueMail(failing, now);
+    const [row] = await rows();
+    waits.push((row.next_attempt_at.getTime() - now.getTime()) / MINUTE_MS);
+    now = row.next_attempt_at;
+  }
+  expect(waits).toEqual([1, 2, 4, 8, 16, 32, 60, 60]);
+  expect(await rows()).toMatchObject([
+    { state: 'waiting', attempts: 8, last_error: '421 busy', message_id: messageIdOf('b') },
+  ]);
+  await sendDueMail(failing, new Date(Date.now() + 6 * 86_400_000));
+  expect(await rows()).toMatchObject([{ state: 'dead' }]);
+});
+
+test('a sender that dies between handing over and noting it repeats the message once, under the same Message-ID', async () => {
+  await put('c');
+  const dying = sender('dying', {
+    transport: {
+      sendMail: async (mail: Handed) => {
+        handed.push({ to: mail.to, messageId: mail.messageId });
+        // The lease passes to nobody: what this holder notes afterwards finds no row of its own.
+        await db()('outbox').update({ lease_holder: 'gone' });
+      },
+    } as never,
+  });
+  await sendDueMail(dying, new Date());
+  expect(await sendDueMail(sender('next'), new Date())).toBe(0);
+  await sendDueMail(sender('next'), new Date(Date.now() + 3 * MINUTE_MS));
+  expect(handed.map(({ messageId }) => messageId)).toEqual([messageIdOf('c'), messageIdOf('c')]);
+  expect(await rows()).toMatchObject([{ state: 'sent' }]);
+});
+
+test('what the row does not hold is resolved by its kind; nothing to say any more ends it', async () => {
+  const now = new Date();
+  const row = (key: string) => ({
+    message_id: `<${key}@x>`,
+    dedupe_key: key,
+    kind: 'complaint-reply',
+    subject: 'Your noise report',
+    complaint_reply_id: key === 'kept' ? 1 : 2,
+    next_attempt_at: now,
+    created_at: now,
+  });
+  await db()('outbox').insert([row('kept'), row('erased')]);
+  const body = { to: 'resident@homes.example', subject: 's', text: 't', html: 'h' };
+  const resolvers = {
+    'complaint-reply': async (mail: { complaintReplyId: number | null }) =>
+      mail.complaintReplyId === 1 ? body : null,
+  };
+  expect(await sendDueMail(sender('one', { resolvers }), new Date())).toBe(1);
+  expect(handed).toEqual([{ to: 'resident@homes.example', messageId: '<kept@x>' }]);
+  expect((await rows()).map(({ state }) => state)).toEqual(['sent', 'dead']);
+  expect(JSON.stringify(await rows())).not.toContain('resident@homes');
+});
