@@ -19,6 +19,9 @@ export interface ExceedanceRecord {
   state: 'standing' | 'lifted';
 }
 
+/** A day of 24 h in the night of the autumn clock change is 25 h long. */
+const LONGEST_WINDOW_SEC = 25 * 3600;
+
 /** Exceedances of a station whose window overlaps `fromSec <= t < toSec`, in order of time. */
 export async function listExceedancesOverlapping(
   stationId: number,
@@ -43,6 +46,21 @@ export async function listExceedancesBeginning(
     .where({ 'e.network_id': networkId })
     .where('e.starts_at', '>=', fromSec)
     .where('e.starts_at', '<', toSec);
+}
+
+/** Ids of a network's stations with a standing exceedance whose window ended after an instant (epoch seconds). */
+export async function listStationsOverLimit(
+  networkId: number,
+  endedAfterSec: number,
+  conn: Connection = pool(),
+): Promise<Set<number>> {
+  // The longest window is a day's: the key on its beginning bounds what is read.
+  const rows: { stationId: number }[] = await conn('exceedances')
+    .where({ network_id: networkId, state: 'standing' })
+    .where('starts_at', '>', endedAfterSec - LONGEST_WINDOW_SEC)
+    .where('ends_at', '>', endedAfterSec)
+    .distinct({ stationId: 'station_id' });
+  return new Set(rows.map(({ stationId }) => stationId));
 }
 
 function selectRecords(conn: Connection) {

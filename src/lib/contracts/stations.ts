@@ -126,6 +126,7 @@ export const stationSchema = z.object({
   state: z
     .enum(STATION_STATES)
     .describe('`silent`: nothing newer than a quarter-hour or three intervals; `awaiting`: nothing ever'),
+  overLimit: z.boolean().describe('A limit stands exceeded by a window that ended within the last hour'),
   latest: latestSchema.nullable(),
 });
 export type Station = z.output<typeof stationSchema>;

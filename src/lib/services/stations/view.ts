@@ -12,6 +12,7 @@ export function stationView(
   station: StationRow,
   latest: LatestInterval | undefined,
   nowSec: number,
+  isOverLimit: boolean,
 ): Station {
   const { bandFraction } = station;
   return {
@@ -30,6 +31,7 @@ export function stationView(
     createdAt: station.createdAt.toISOString(),
     retiredAt: station.retiredAt?.toISOString() ?? null,
     state: stationState(station, latest, nowSec),
+    overLimit: isOverLimit,
     latest: latest ? latestView(latest) : null,
   };
 }
