@@ -1,5 +1,5 @@
 import compression from 'compression';
-import express, { type Express, type Request, type RequestHandler } from 'express';
+import express, { type Express, type Request, type RequestHandler, type Response } from 'express';
 import type { Config } from '#lib/config/config';
 
 const MOST_BODY_BYTES = 16 * 1024 * 1024;
@@ -7,11 +7,14 @@ const YEAR_SEC = 365 * 86_400;
 
 type FrontSettings = Pick<Config, 'allowedHosts' | 'trustedProxies'>;
 
+/** Astro's handler in middleware mode. */
+export type AstroHandler = (request: Request, response: Response) => Promise<void> | void;
+
 /**
  * The thin HTTP front before Astro: Host allow-list, proxy trust, a bound on bodies, compression, static files.
  * Handlers count the bytes of what they read themselves; the bound here stops what announces itself as too large.
  */
-export function makeFront(astro: RequestHandler, settings: FrontSettings): Express {
+export function makeFront(astro: AstroHandler, settings: FrontSettings): Express {
   const front = express();
   front.disable('x-powered-by');
   front.set('trust proxy', settings.trustedProxies);
@@ -24,7 +27,8 @@ export function makeFront(astro: RequestHandler, settings: FrontSettings): Expre
     express.static('dist/client/_astro', { immutable: true, maxAge: YEAR_SEC * 1000, fallthrough: false }),
   );
   front.use(express.static('dist/client', { index: false, maxAge: 3_600_000 }));
-  front.use(astro);
+  // Without a next handler Astro answers unknown paths itself, with its own page for them.
+  front.use((request, response) => astro(request, response));
   return front;
 }
 

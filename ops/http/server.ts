@@ -1,16 +1,15 @@
 import { createServer } from 'node:http';
 import { resolve } from 'node:path';
 import { pathToFileURL } from 'node:url';
-import type { RequestHandler } from 'express';
 import { config } from '#lib/config/index';
 import { log } from '#lib/config/log';
 import { closeDb } from '#db/client';
-import { makeFront } from './front';
+import { makeFront, type AstroHandler } from './front';
 
 const DRAIN_MS = 20_000;
 
 const entryUrl = pathToFileURL(resolve('dist/server/entry.mjs')).href;
-const { handler } = (await import(entryUrl)) as { handler: RequestHandler };
+const { handler } = (await import(entryUrl)) as { handler: AstroHandler };
 const { host, port } = config();
 
 const server = createServer(makeFront(handler, config()));

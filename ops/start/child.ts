@@ -69,3 +69,15 @@ export class Child {
     rmSync(this.pidPath, { force: true });
   }
 }
+
+/** Runs a script to its end, its output on ours. @throws when it fails. */
+export function runOnce(commandArguments: string[]): Promise<void> {
+  const child = spawn(process.execPath, commandArguments, { stdio: ['ignore', 'inherit', 'inherit'] });
+  return new Promise((done, failed) => {
+    child.once('error', failed);
+    child.once('exit', (code, signal) => {
+      if (code === 0) done();
+      else failed(new Error(`${commandArguments.at(-1)} failed (${signal ?? `exit ${code}`}).`));
+    });
+  });
+}

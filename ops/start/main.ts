@@ -3,8 +3,7 @@ import { SettingsError, type Config } from '#lib/config/config';
 import { config } from '#lib/config/index';
 import { closeDb, db } from '#db/client';
 import { DEFAULT_DEMO_PASSWORD, DEMO_ACCOUNTS } from '#ops/demo/accounts';
-import { seedDemo } from '#ops/demo/seed';
-import { Child } from './child';
+import { Child, runOnce } from './child';
 import { ensureFirstAdministrator, hasPeople } from './firstAdministrator';
 import { ensureDatabase, OwnDatabase } from './ownDatabase';
 import { takenPorts } from './ports';
@@ -44,8 +43,8 @@ async function start(): Promise<void> {
   if (isDemo) requireSafeDemo(settings);
   await startStandIns(settings);
   if (isDemo && !people) {
-    console.log('Making the demo: the Merrow estuary, 70 days up to now …');
-    await seedDemo(settings, (line) => console.log(`  ${line}`));
+    console.log(`Making the demo: the Merrow estuary, ${settings.demo.days} days up to now …`);
+    await runOnce(['--import', 'tsx', 'ops/demo/make.ts']);
   }
   await closeDb();
 
