@@ -49,12 +49,18 @@ async function sendOne(mail: LeasedMail, settings: SenderSettings, now: Date): P
     }
     await transport.sendMail({ ...body, from, messageId: mail.messageId, date: mail.createdAt });
   } catch (error) {
-    const reason = error instanceof Error ? error.message : String(error);
-    await markMailFailed(mail.id, holder, reason, nextAttemptAt(mail, now), pool());
+    await markMailFailed(mail.id, holder, reasonOf(error, mail), nextAttemptAt(mail, now), pool());
     return false;
   }
   await markMailSent(mail.id, holder, pool());
   return true;
+}
+
+/** What went wrong. Where the row names no recipient, neither does this: a mail server's words usually repeat the address. */
+function reasonOf(error: unknown, mail: LeasedMail): string {
+  if (mail.recipient !== null) return error instanceof Error ? error.message : String(error);
+  const { code, responseCode } = error as { code?: string; responseCode?: number };
+  return ['Not delivered', code, responseCode].filter((part) => part !== undefined).join(', ');
 }
 
 async function bodyOf(mail: LeasedMail, { resolvers }: SenderSettings): Promise<MailBody | null> {

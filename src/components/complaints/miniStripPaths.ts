@@ -13,6 +13,10 @@ export const MINI_STRIP = {
 
 const CLASSES = 16;
 
+/** Shortest span of the colours, so that a quiet night does not borrow the ink of a loud one. */
+const SHORTEST_RAMP_DB = 50;
+const SHORTEST_TRACE_DB = 15;
+
 /** A level range of whole fives that holds every level of the drawing. */
 export interface LevelRange {
   lowDb: number;
@@ -36,8 +40,11 @@ export interface MiniStripPaths {
 export function miniStripPaths(strip: WindowStrip): MiniStripPaths | null {
   const levels = strip.laeqDb.filter((level) => level !== null);
   if (levels.length === 0) return null;
-  const bandRange = rangeOf(strip.bandLevelsDb.flat().filter((level) => level !== null));
-  const traceRange = rangeOf(levels);
+  const bandRange = rangeOf(
+    strip.bandLevelsDb.flat().filter((level) => level !== null),
+    SHORTEST_RAMP_DB,
+  );
+  const traceRange = rangeOf(levels, SHORTEST_TRACE_DB);
   return {
     bandRange,
     cells: cellPaths(strip, bandRange),
@@ -68,14 +75,14 @@ function stepWidth(strip: WindowStrip): number {
   return (MINI_STRIP.width - MINI_STRIP.left) / strip.laeqDb.length;
 }
 
-function rangeOf(levels: readonly number[]): LevelRange {
-  if (levels.length === 0) return { lowDb: 0, highDb: 5 };
+function rangeOf(levels: readonly number[], shortestDb: number): LevelRange {
+  if (levels.length === 0) return { lowDb: 0, highDb: shortestDb };
   const [low, high] = levels.reduce(
     ([a, b], level) => [Math.min(a, level), Math.max(b, level)],
     [Infinity, -Infinity],
   );
   const lowDb = Math.floor(low / 5) * 5;
-  return { lowDb, highDb: Math.max(lowDb + 5, Math.ceil(high / 5) * 5) };
+  return { lowDb, highDb: Math.max(lowDb + shortestDb, Math.ceil(high / 5) * 5) };
 }
 
 function cellPaths(strip: WindowStrip, { lowDb, highDb }: LevelRange): { levelDb: number; path: string }[] {

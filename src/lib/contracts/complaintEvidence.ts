@@ -59,6 +59,7 @@ export const stationEvidenceSchema = z.object({
   usual: usualSchema,
   limits: z.object({
     set: z.number().int().describe('Limits set for the station at that time, whatever their days and hours'),
+    applying: z.number().int().describe('Of these, limits with a window that overlaps'),
     unjudged: z.number().int().describe('Windows of limits that overlap and wait to be judged'),
   }),
   exceedances: z.array(evidenceExceedanceSchema),

@@ -46,8 +46,13 @@ export const contactSchema = z.object({
 });
 export type Contact = z.output<typeof contactSchema>;
 
-const latitude = z.number().min(-90, 'must be from −90 to 90').max(90, 'must be from −90 to 90');
-const longitude = z.number().min(-180, 'must be from −180 to 180').max(180, 'must be from −180 to 180');
+const degrees = (most: number) =>
+  z
+    .number({ error: 'must be a number of degrees such as 54.1031' })
+    .min(-most, `must be from −${most} to ${most}`)
+    .max(most, `must be from −${most} to ${most}`);
+const latitude = degrees(90);
+const longitude = degrees(180);
 const coordinatesSchema = z.object({ latitude, longitude });
 
 /** A complaint as it is logged. The place is the resident's (exact, private) or, where unknown, a station nearby. */

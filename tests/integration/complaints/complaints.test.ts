@@ -6,6 +6,7 @@ import { resolveComplaintReply } from '#lib/services/complaints/replyMessage';
 import { findComplaint, type ComplaintRow } from '#db/queries/complaints';
 import { closeComplaint, erasePersonalData } from '#lib/services/complaints/closeComplaint';
 import { correctContact } from '#lib/services/complaints/correctContact';
+import { sendDueMail } from '#ingest/notify/sendOutbox';
 import { callApi } from '../support/callApi';
 import { useFreshSchema } from '../support/freshSchema';
 import { makeNetwork, makePerson, makeStation } from '../support/people';
@@ -296,7 +297,7 @@ describe('evidence and reply', () => {
       coverage: 1,
       meetsMinimum: true,
       usual: { weeks: 4, validWeeks: 2, median: 41, low: 40.2, high: 41.8 },
-      limits: { set: 1, unjudged: 0 },
+      limits: { set: 1, applying: 1, unjudged: 0 },
       exceedances: [
         { limit: 'Night hours', metric: 'LAeq,1 h', level: 57.4, threshold: 50, state: 'standing' },
       ],
@@ -337,6 +338,35 @@ describe('evidence and reply', () => {
     });
     const everything = await wholeDatabase();
     for (const secret of SECRETS) expect(everything.includes(secret), secret).toBe(false);
+  });
+
+  test('an e-mail that a mail server refuses leaves no address in the outbox either', async () => {
+    const { reference } = await log();
+    await answer(reference, { text: 'Dear Ada Wren, …' });
+    const sent: unknown[] = [];
+    await sendDueMail(
+      {
+        from: 'desk@merrow.example',
+        holder: 'test',
+        resolvers: {
+          'complaint-reply': (mail) => resolveComplaintReply(mail.complaintReplyId ?? 0),
+        },
+        transport: {
+          sendMail: (message: unknown) => {
+            sent.push(message);
+            const refusal = new Error('550 <ada@wren.example> unknown');
+            return Promise.reject(Object.assign(refusal, { code: 'EENVELOPE', responseCode: 550 }));
+          },
+        },
+      },
+      new Date(),
+    );
+    expect(sent).toContainEqual(
+      expect.objectContaining({ to: 'ada@wren.example', subject: `Your noise report ${reference}` }),
+    );
+    const errors: string[] = await db()('outbox').whereNotNull('last_error').pluck('last_error');
+    expect(errors.length).toBeGreaterThan(0);
+    for (const error of errors) expect(error).toBe('Not delivered, EENVELOPE, 550');
   });
 
   test('the regulator reads the same figures, and not the text', async () => {

@@ -26,11 +26,11 @@ describe('a quiet night', () => {
 
   test('explains the level by that place at that hour, and does not deny what was heard', () => {
     expect(text).toContain(
-      'On the four Tuesdays before the average level at the same hours and the same place was mostly between 42.5 and 46.1 dB(A)',
+      'On the four Tuesdays before, the average level at the same hours and the same place was mostly between 42.5 and 46.1 dB(A)',
     );
     expect(text).toContain('about as loud as usual there');
     expect(text).toContain(
-      'No exceedance of the limits that are set for this station is on record for that time.',
+      'No exceedance of the limits that apply at this station is on record for that time.',
     );
     expect(text).toContain('does not mean that the sound could not be heard');
     expect(text).toContain('not your home');
@@ -40,12 +40,14 @@ describe('a quiet night', () => {
 
 test('loud within the limits: louder than usual by the difference of tenths, and still within', () => {
   const text = draft([stationEvidence({ LAeq: 49.3 })]);
-  expect(text).toContain('louder than usual there, by 5.3 dB against the middle one');
+  expect(text).toContain('louder than usual there, 5.3 dB above that middle value');
   expect(text).toContain('No exceedance of the limits');
 });
 
 test('quieter than usual says so', () => {
-  expect(draft([stationEvidence({ LAeq: 40 })])).toContain('quieter than usual there, by 4.0 dB');
+  expect(draft([stationEvidence({ LAeq: 40 })])).toContain(
+    'quieter than usual there, 4.0 dB below that middle value',
+  );
 });
 
 describe('over a limit', () => {
@@ -80,11 +82,14 @@ describe('over a limit', () => {
   });
 });
 
-test('no limit set, and windows not judged yet, are told as such', () => {
-  expect(draft([stationEvidence({ limits: { set: 0, unjudged: 0 } })])).toContain(
+test('no limit set, none that applies then, and windows not judged yet, are told as such', () => {
+  const atNight = draft([stationEvidence({ limits: { set: 1, applying: 0, unjudged: 0 } })]);
+  expect(atNight).toContain('None of the limits set for this station applies at that time.');
+  expect(atNight).not.toContain('No exceedance');
+  expect(draft([stationEvidence({ limits: { set: 0, applying: 0, unjudged: 0 } })])).toContain(
     'No limit is set for this station',
   );
-  const unjudged = draft([stationEvidence({ limits: { set: 1, unjudged: 2 } })]);
+  const unjudged = draft([stationEvidence({ limits: { set: 1, applying: 1, unjudged: 2 } })]);
   expect(unjudged).toContain('has been judged yet; so far no exceedance is on record');
   expect(unjudged).not.toContain('No exceedance of the limits');
 });
@@ -136,12 +141,18 @@ describe('no data', () => {
   });
 
   test('another station that did measure is told with its distance', () => {
+    const farthest = stationEvidence({ station: 'MER-01', name: 'Quay Head' });
     const far = stationEvidence({ station: 'MER-02', name: 'Silo Lane', LAeq: 47 });
-    const facts = letterFacts([silent(), far]);
+    const facts = letterFacts([silent(), farthest, far]);
     const text = draftReply({
       ...facts,
-      whereabouts: { ...facts.whereabouts, 'MER-02': { distanceM: 1240, wind: 'south' } },
+      whereabouts: {
+        ...facts.whereabouts,
+        'MER-01': { distanceM: 2000, wind: 'east' },
+        'MER-02': { distanceM: 1240, wind: 'south' },
+      },
     });
+    expect(text).not.toContain('Quay Head');
     expect(text).toContain('A station further away did measure');
     expect(text).toContain('Our station Silo Lane, about 1.2 km to the south of you, measured 100 %');
     expect(text).toContain('47.0 dB(A)');
@@ -170,7 +181,7 @@ test('too few comparable weeks say nothing about what is usual', () => {
   const two = draft([
     stationEvidence({ usual: { weeks: 4, validWeeks: 2, median: 44, low: 43.2, high: 44.8 } }),
   ]);
-  expect(two).toContain('On two of the four Tuesdays before the same hours were measured well enough');
+  expect(two).toContain('On two of the four Tuesdays before, the same hours were measured well enough');
   expect(two).toContain('too little to say what is usual');
   expect(two).not.toMatch(/than usual there|as usual there/);
   const none = draft([

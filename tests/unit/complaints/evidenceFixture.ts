@@ -15,7 +15,7 @@ export function stationEvidence(changes: Partial<StationEvidence> = {}): Station
     coverage: 1,
     meetsMinimum: true,
     usual: { weeks: 4, validWeeks: 4, median: 44.0, low: 42.5, high: 46.1 },
-    limits: { set: 2, unjudged: 0 },
+    limits: { set: 2, applying: 1, unjudged: 0 },
     exceedances: [],
     tonality: 'assessed',
     tones: [],

@@ -1,13 +1,14 @@
-import { countLimitsOfStation, countUnjudgedWindows } from '#db/queries/complaintLimits';
 import { listExceedancesOverlapping, type ExceedanceRecord } from '#db/queries/exceedanceRecords';
 import type { NetworkSettings } from '#db/queries/networks';
 import type { StationRow } from '#db/queries/stations';
+import { countUnjudgedWindows } from '#db/queries/unjudgedWindows';
 import { roundHalfUp } from '#lib/acoustics/rounding';
 import { formatInstantUtc } from '#lib/contracts/common';
 import type { EvidenceExceedance, StationEvidence, Usual } from '#lib/contracts/complaintEvidence';
 import { limitMetricText } from '#lib/format/limitMetric';
 import { periodStatistics } from '../levels/statistics';
 import { usualFor } from '../levels/usual';
+import { applyingLimits } from './applyingLimits';
 
 /** Weeks before, of which the same weekday and clock window is compared. */
 const WEEKS_COMPARED = 4;
@@ -24,11 +25,11 @@ export interface StationEvidenceQuery {
 export async function gatherStationEvidence(query: StationEvidenceQuery): Promise<StationEvidence> {
   const { station, window, timeline, nowSec } = query;
   const { fromSec, toSec } = window;
-  const [statistics, usual, exceedances, set, unjudged] = await Promise.all([
+  const [statistics, usual, exceedances, limits, unjudged] = await Promise.all([
     periodStatistics({ station, fromSec, toSec, timeline, nowSec }),
     usualFor({ station, window, weeks: WEEKS_COMPARED, timeline }),
     listExceedancesOverlapping(station.id, fromSec, toSec),
-    countLimitsOfStation(station.networkId, station.id, fromSec, toSec),
+    applyingLimits(station, fromSec, toSec, timeline),
     countUnjudgedWindows(station.id, fromSec, toSec),
   ]);
   const { seconds, coverage, meetsMinimum, sampleSeconds, tonality } = statistics;
@@ -44,7 +45,7 @@ export async function gatherStationEvidence(query: StationEvidenceQuery): Promis
     coverage: roundHalfUp(coverage, COVERAGE_DECIMALS),
     meetsMinimum,
     usual: usualOf(usual),
-    limits: { set, unjudged },
+    limits: { ...limits, unjudged },
     exceedances: exceedances.map(exceedanceOf),
     tonality: tonality.state,
     tones: tonality.tones,

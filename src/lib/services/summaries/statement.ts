@@ -54,3 +54,10 @@ export const CAUTIONS = [
   'Levels describe the places of the stations as installed, not the exposure of a person or the level at a dwelling.',
   'This summary supports a professional judgement and does not replace one: local rules, permits and the competent authority decide.',
 ] as const;
+
+/** How many complaints the month had; nothing else about them is told. */
+export function complaintsSentence({ complaints: { open, answered, closed } }: Summary): string {
+  const total = open + answered + closed;
+  if (total === 0) return 'No complaint about noise in this month is on record.';
+  return `Complaints about noise that began in this month: ${total}, of which ${answered} answered, ${open} open, ${closed} closed without a reply.`;
+}

@@ -18,12 +18,12 @@ export function comparedParagraph(laeqDb: number, usual: Usual, fromSec: number,
     usual.validWeeks === usual.weeks ? `On ${weeks}` : `On ${numberInWords(usual.validWeeks)} of ${weeks}`;
   if (usual.validWeeks < FEWEST_WEEKS) {
     return (
-      `${among} the same hours were measured well enough: the average level there was ${spreadInWords(low, high)}. ` +
+      `${among}, the same hours were measured well enough: the average level there was ${spreadInWords(low, high)}. ` +
       'That is too little to say what is usual.'
     );
   }
   const range =
-    `${among} the average level at the same hours and the same place was mostly ${spreadInWords(low, high)}, ` +
+    `${among}, the average level at the same hours and the same place was mostly ${spreadInWords(low, high)}, ` +
     `half of them below ${levelInWords(median)}. `;
   return (
     range + verdict(toTenths(laeqDb), { low: toTenths(low), median: toTenths(median), high: toTenths(high) })
@@ -39,8 +39,8 @@ function spreadInWords(low: number, high: number): string {
 function verdict(level: number, usual: { low: number; median: number; high: number }): string {
   const fromMedian = differenceInWords(level - usual.median);
   if (level > usual.high)
-    return `The time that you describe was louder than usual there, by ${fromMedian} against the middle one.`;
+    return `The time reported was louder than usual there, ${fromMedian} above that middle value.`;
   if (level < usual.low)
-    return `The time that you describe was quieter than usual there, by ${fromMedian} against the middle one.`;
-  return 'The time that you describe lies within that range: as a whole it was about as loud as usual there.';
+    return `The time reported was quieter than usual there, ${fromMedian} below that middle value.`;
+  return 'The time reported lies within that range: as a whole it was about as loud as usual there.';
 }

@@ -91,7 +91,10 @@ function stationParagraphs(
 }
 
 function elsewhere(others: StationEvidence[], facts: LetterFacts): string[] {
-  const measuring = others.find((station) => dataState(station) === 'enough');
+  const farness = ({ station }: StationEvidence) => facts.whereabouts[station]?.distanceM ?? Infinity;
+  const [measuring] = others
+    .filter((station) => dataState(station) === 'enough')
+    .toSorted((a, b) => farness(a) - farness(b));
   if (!measuring) return [];
   const lead = 'A station further away did measure; it tells less about where you are.';
   return [lead, ...stationParagraphs(measuring, 'Our station', facts)];

@@ -12,11 +12,12 @@ export function limitsParagraph(station: StationEvidence, zone: string): string 
   if (standing.length > 0) return passed(standing, zone);
   if (dataState(station) !== 'enough') return '';
   if (station.limits.set === 0) return 'No limit is set for this station, so there is none to compare with.';
+  if (station.limits.applying === 0) return 'None of the limits set for this station applies at that time.';
   if (station.limits.unjudged > 0) {
-    return 'Not every period for which a limit is set there has been judged yet; so far no exceedance is on record for that time.';
+    return 'Not every period for which a limit applies there has been judged yet; so far no exceedance is on record for that time.';
   }
   return (
-    'No exceedance of the limits that are set for this station is on record for that time. A level within the limits does ' +
+    'No exceedance of the limits that apply at this station is on record for that time. A level within the limits does ' +
     'not mean that the sound could not be heard, or that it did not disturb you.'
   );
 }

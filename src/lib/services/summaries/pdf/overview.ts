@@ -3,7 +3,7 @@ import type { Summary, SummaryStation } from '#lib/contracts/summaries';
 import { formatCoverage, formatLevelDb } from '#lib/format/levels';
 import { formatMonth } from '#lib/format/times';
 import { BELOW_MINIMUM, markedLevelText } from '../figures';
-import { CAUTIONS, instantText, methodStatement } from '../statement';
+import { CAUTIONS, complaintsSentence, instantText, methodStatement } from '../statement';
 import { BOOK_TABLE, cell, head, heading, paragraph, RUST, SOFT_INK } from './typography';
 
 /** First pages: whose month this is, every station in a line, how the figures are made, room to sign. */
@@ -68,12 +68,6 @@ function stationRow({ code, name, figures, exceedances }: SummaryStation) {
     cell(formatCoverage(figures.coverage)),
     cell(`${exceedances.standing}${lifted}`),
   ];
-}
-
-function complaintsSentence({ complaints: { open, answered, closed } }: Summary): string {
-  const total = open + answered + closed;
-  if (total === 0) return 'No complaint about noise in this month is on record.';
-  return `Complaints about noise that began in this month: ${total}, of which ${answered} answered, ${open} open, ${closed} closed without a reply.`;
 }
 
 function signatures(): Content {

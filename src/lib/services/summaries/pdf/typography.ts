@@ -13,7 +13,10 @@ export const SMALL_SIZE = 8;
 
 /** Text in which acoustic descriptors are typeset: an italic L and its index below the line. `size` in points. */
 export function typeset(text: string, size = BODY_SIZE): ContentText {
-  const parts = typesetRuns(text).flatMap((run): Content[] =>
+  const runs = typesetRuns(text);
+  // A cell of plain text stays one node: a month has thousands, and each node costs layout time.
+  if (runs.every((run) => typeof run === 'string')) return { text, fontSize: size };
+  const parts = runs.flatMap((run): Content[] =>
     typeof run === 'string'
       ? [run]
       : [
