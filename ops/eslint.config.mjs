@@ -107,6 +107,8 @@ export default tseslint.config(
   ...tseslint.configs.recommended,
   ...astro.configs['flat/recommended'],
   ...astro.configs['flat/jsx-a11y-strict'],
+  // A declaration file that imports is a module, and Astro's App namespace must be a global.
+  { files: ['src/env.d.ts'], rules: { '@typescript-eslint/consistent-type-imports': 'off' } },
   { files: ['**/*.tsx'], rules: jsxA11y.flatConfigs.strict.rules },
   {
     files: ['**/*.{ts,tsx,mjs,astro}'],

@@ -1,9 +1,11 @@
 /// <reference types="astro/client" />
 
+type SignedInUser = import('#lib/auth/sessions').SignedInUser;
+
 declare namespace App {
   interface Locals {
     /** The signed-in person, from the session cookie or an access token. */
-    user: import('#lib/auth/sessions').SignedInUser | null;
+    user: SignedInUser | null;
     requestId: string;
   }
 }

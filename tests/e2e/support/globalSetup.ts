@@ -23,10 +23,9 @@ const DEMO_PASSWORD = 'a password for the tests';
 export default async function setUp(project: TestProject): Promise<() => Promise<void>> {
   const dataDirectory = mkdtempSync(join(tmpdir(), 'bittern-e2e-'));
   const [port, databasePort, smtpPort, mailWebPort, tilesPort] = await freePorts(5);
-  const { BITTERN_DB_NAME: _name, BITTERN_DB_PASSWORD: _password, ...environment } = process.env;
   const bittern = spawn(process.execPath, ['--import', 'tsx', 'ops/start/main.ts'], {
     env: {
-      ...environment,
+      ...inherited(),
       BITTERN_DATA_DIR: dataDirectory,
       BITTERN_PORT: String(port),
       BITTERN_DB_PORT: String(databasePort),
@@ -51,6 +50,12 @@ export default async function setUp(project: TestProject): Promise<() => Promise
     await ended;
     rmSync(dataDirectory, { recursive: true, force: true });
   };
+}
+
+/** The environment without settings that name a database of somebody else's. */
+function inherited(): Record<string, string | undefined> {
+  const names = Object.keys(process.env).filter((name) => !name.startsWith('BITTERN_DB_'));
+  return Object.fromEntries(names.map((name) => [name, process.env[name]]));
 }
 
 function untilStarted(bittern: ChildProcess): Promise<void> {

@@ -1,5 +1,5 @@
 import { expect, test } from 'vitest';
-import { parseConfig, SettingsError } from '#lib/config/config';
+import { parseConfig, type SettingsError } from '#lib/config/config';
 
 const REQUIRED = { BITTERN_DB_PASSWORD: 'secret', BITTERN_PERSONAL_DATA_KEY: 'ab'.repeat(32) };
 
