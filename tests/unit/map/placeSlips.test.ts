@@ -53,4 +53,10 @@ describe('slips on the map', () => {
     }));
     expect(placeSlips(moved, SLIP)).toEqual(shift);
   });
+
+  it('keep within the map where they can', () => {
+    const [slip] = placeSlips([point('A', 12, 8)], SLIP, { width: 400, height: 300 });
+    expect(slip?.x).toBeGreaterThanOrEqual(0);
+    expect(slip?.y).toBeGreaterThanOrEqual(0);
+  });
 });

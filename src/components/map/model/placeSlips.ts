@@ -43,13 +43,15 @@ const RINGS = [1, 1.9, 2.9];
 
 /**
  * Places a slip for each station so that none lies on another or on another's dot. A station that finds no room is taken into
- * the slip of the nearest one that did. The same points, moved together, give the same arrangement.
+ * the slip of the nearest one that did. The same points, moved together, give the same arrangement; with a `frame`, slips keep
+ * within it where they can.
  */
-export function placeSlips(points: readonly SlipPoint[], slip: Size): PlacedSlip[] {
+export function placeSlips(points: readonly SlipPoint[], slip: Size, frame?: Size): PlacedSlip[] {
   const placed: PlacedSlip[] = [];
   for (const point of points) {
     const spots = candidates(point, slip);
-    const free = spots.find((spot) => isFree(spot, slip, placed, points, point));
+    const allFree = spots.filter((spot) => isFree(spot, slip, placed, points, point));
+    const free = allFree.find((spot) => frame && isInside(spot, slip, frame)) ?? allFree[0];
     const host = free ? undefined : nearest(placed, point);
     // The very first one is placed even on others' dots: they are taken into its slip.
     const spot = free ?? (host ? undefined : spots[0]);
@@ -57,6 +59,10 @@ export function placeSlips(points: readonly SlipPoint[], slip: Size): PlacedSlip
     else host?.ids.push(point.id);
   }
   return placed;
+}
+
+function isInside({ x, y }: Spot, slip: Size, frame: Size): boolean {
+  return x >= 0 && y >= 0 && x + slip.width <= frame.width && y + slip.height <= frame.height;
 }
 
 interface Spot {

@@ -1,0 +1,40 @@
+import { useQuery } from '@tanstack/react-query';
+import type { Statistics } from '#lib/contracts/levels';
+import { fetchColumns } from '../../strip/hooks/fetchColumns';
+import { fetchJson } from '../../strip/hooks/fetchJson';
+import { periodQuery } from '../../strip/hooks/useStatistics';
+import { type StripColumns } from '../../strip/model/stripColumns';
+
+const DAY_SEC = 86_400;
+const STEP_SEC = 900;
+const EVERY_MS = 60_000;
+
+export interface LastDay {
+  fromSec: number;
+  toSec: number;
+  /** LAeq of quarter-hours. */
+  columns: StripColumns;
+  statistics: Statistics;
+}
+
+/** A station's last 24 hours in quarter-hours with their figures. */
+export function useLastDay(slug: string, code: string) {
+  const url = `/api/v1/networks/${slug}/stations/${encodeURIComponent(code)}`;
+  return useQuery({
+    queryKey: ['last-day', url],
+    queryFn: ({ signal }) => fetchLastDay(url, signal),
+    refetchInterval: EVERY_MS,
+  });
+}
+
+async function fetchLastDay(url: string, signal: AbortSignal): Promise<LastDay> {
+  const toSec = Math.floor(Date.now() / 1000 / 60) * 60;
+  const period = { fromSec: toSec - DAY_SEC, toSec };
+  const gridFromSec = Math.floor(period.fromSec / STEP_SEC) * STEP_SEC;
+  const tile = { fromSec: gridFromSec, toSec: gridFromSec + DAY_SEC + STEP_SEC, stepSec: STEP_SEC };
+  const [columns, statistics] = await Promise.all([
+    fetchColumns(url, tile, (tile.toSec - tile.fromSec) / STEP_SEC, signal),
+    fetchJson<Statistics>(`${url}/statistics?${periodQuery(period)}`, signal),
+  ]);
+  return { ...period, columns, statistics };
+}

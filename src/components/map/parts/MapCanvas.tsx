@@ -1,0 +1,56 @@
+import { useState } from 'react';
+import Map, { NavigationControl, ScaleControl } from 'react-map-gl/maplibre';
+import type { Station } from '#lib/contracts/stations';
+import '../maplibre';
+import { type MapPaneProps } from './MapPane';
+import { ProjectedSlips } from './ProjectedSlips';
+
+/** The map with its slips. Loaded only where it can be drawn. */
+export default function MapCanvas({ styleUrls, ...slips }: MapPaneProps) {
+  const [hasBackground, setHasBackground] = useState(true);
+  return (
+    <>
+      <Map
+        initialViewState={viewOver(slips.stations)}
+        mapStyle={styleUrls[slips.theme]}
+        dragRotate={false}
+        pitchWithRotate={false}
+        touchPitch={false}
+        maxZoom={17.5}
+        attributionControl={{ compact: true }}
+        onError={() => setHasBackground(false)}
+        onStyleData={() => setHasBackground(true)}
+        style={{ position: 'absolute', inset: 0 }}
+      >
+        <NavigationControl showCompass={false} />
+        <ScaleControl />
+        <ProjectedSlips {...slips} />
+      </Map>
+      {!hasBackground && (
+        <p role="status" className="panel absolute bottom-2 left-2 px-3 py-1.5 text-small">
+          The map’s background cannot be fetched at the moment. The stations lie where they should.
+        </p>
+      )}
+    </>
+  );
+}
+
+const MARGIN_PX = 90;
+
+/** The view that holds every station; of a single one, its surroundings. */
+function viewOver(stations: readonly Station[]) {
+  const [first] = stations;
+  if (!first) return { longitude: 0, latitude: 30, zoom: 1.5 };
+  if (stations.length === 1) return { longitude: first.longitude, latitude: first.latitude, zoom: 14 };
+  const longitudes = stations.map(({ longitude }) => longitude);
+  const latitudes = stations.map(({ latitude }) => latitude);
+  return {
+    bounds: [
+      Math.min(...longitudes),
+      Math.min(...latitudes),
+      Math.max(...longitudes),
+      Math.max(...latitudes),
+    ] as [number, number, number, number],
+    fitBoundsOptions: { padding: MARGIN_PX, maxZoom: 15 },
+  };
+}

@@ -1,0 +1,50 @@
+import { useCallback, useSyncExternalStore } from 'react';
+import { useMap } from 'react-map-gl/maplibre';
+import { type MapPaneProps } from './MapPane';
+import { SlipLayer } from './SlipLayer';
+
+const SPREAD_MARGIN_PX = 120;
+
+/** The slips where the map shows their stations, following it as it moves. */
+export function ProjectedSlips({ stations, ...props }: Omit<MapPaneProps, 'styleUrls'>) {
+  const { current: map } = useMap();
+  const subscribe = useCallback(
+    (changed: () => void) => {
+      map?.on('move', changed);
+      map?.on('resize', changed);
+      return () => {
+        map?.off('move', changed);
+        map?.off('resize', changed);
+      };
+    },
+    [map],
+  );
+  const place = useSyncExternalStore(subscribe, () => {
+    if (!map) return '';
+    const { clientWidth, clientHeight } = map.getContainer();
+    const { lng, lat } = map.getCenter();
+    return [lng, lat, map.getZoom(), clientWidth, clientHeight].join(' ');
+  });
+  if (!map || place === '') return null;
+  const { clientWidth, clientHeight } = map.getContainer();
+  const frame = { width: clientWidth, height: clientHeight };
+  const points = stations.map(({ code, longitude, latitude }) => ({
+    id: code,
+    ...map.project([longitude, latitude]),
+  }));
+
+  const spread = (codes: string[]) => {
+    const held = stations.filter(({ code }) => codes.includes(code));
+    const longitudes = held.map(({ longitude }) => longitude);
+    const latitudes = held.map(({ latitude }) => latitude);
+    map.fitBounds(
+      [
+        [Math.min(...longitudes), Math.min(...latitudes)],
+        [Math.max(...longitudes), Math.max(...latitudes)],
+      ],
+      { padding: SPREAD_MARGIN_PX, maxZoom: 17.5 },
+    );
+  };
+
+  return <SlipLayer {...props} stations={stations} points={points} frame={frame} onSpread={spread} />;
+}
