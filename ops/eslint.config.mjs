@@ -107,8 +107,6 @@ export default tseslint.config(
   ...tseslint.configs.recommended,
   ...astro.configs['flat/recommended'],
   ...astro.configs['flat/jsx-a11y-strict'],
-  // A declaration file that imports is a module, and Astro's App namespace must be a global.
-  { files: ['src/env.d.ts'], rules: { '@typescript-eslint/consistent-type-imports': 'off' } },
   { files: ['**/*.tsx'], rules: jsxA11y.flatConfigs.strict.rules },
   {
     files: ['**/*.{ts,tsx,mjs,astro}'],
@@ -138,4 +136,6 @@ export default tseslint.config(
     files: ['ops/**', 'db/migrate.ts', 'db/seeds/**', 'ingest/worker.ts', 'ingest/monitor/**', 'tests/**'],
     rules: { 'no-console': 'off' },
   },
+  // A declaration file that imports is a module, and Astro's App namespace must be a global.
+  { files: ['src/env.d.ts'], rules: { '@typescript-eslint/consistent-type-imports': 'off' } },
 );
