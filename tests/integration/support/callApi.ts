@@ -37,9 +37,16 @@ export async function callApi(method: string, path: string, call: Call = {}): Pr
   return found.handler(context);
 }
 
-/** Every route file's pattern, such as `/api/v1/networks/[network]/stations`. */
-export function apiPatterns(): string[] {
+/** Every route file’s pattern, such as `/api/v1/networks/[network]/stations`. */
+export function routePatterns(): string[] {
   return Object.keys(modules).map(patternOf);
+}
+
+/** Methods that a route file answers. */
+export async function methodsOf(pattern: string): Promise<string[]> {
+  const file = Object.keys(modules).find((name) => patternOf(name) === pattern);
+  const handlers = file && modules[file] ? await modules[file]() : {};
+  return Object.keys(handlers).filter((name) => /^[A-Z]+$/.test(name));
 }
 
 async function findHandler(method: string, pathname: string) {
