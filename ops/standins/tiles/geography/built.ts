@@ -6,7 +6,7 @@ import { railWays } from './railway';
 import { mainRoads, ROAD_MINZOOM, ROAD_WIDTH_M, type Road } from './roads';
 import { box } from './shapes';
 import { townStreets, villageStreets, type FrontageName, type Street } from './townStreets';
-import { woods } from './woods';
+import { parcels } from './fields';
 import { zones } from './zones';
 
 const streets: Street[] = [...townStreets, ...villageStreets];
@@ -29,7 +29,7 @@ function buildings(): Building[] {
   const reserved = [
     ...zones.filter(({ isReserved }) => isReserved).map(({ ring }) => ring),
     MARKET_PLACE,
-    ...woods,
+    ...parcels.filter(({ use }) => use === 'wood').map(({ ring }) => ring),
   ];
   const ground = new BuildingGround(reserved);
   for (const { points, kind } of [...mainRoads, ...streets]) ground.addWay(points, ROAD_WIDTH_M[kind]);

@@ -1,6 +1,6 @@
 import { area, line, spot, type MapFeature } from './feature';
+import { isLand } from './ground';
 import { areasAbove, isolines, type Grid } from './isolines';
-import { gullies } from './marsh';
 import type { Point } from './plane';
 import { estuaryShare, seabed, TIDE_RANGE_M } from './seabed';
 import { ringAreaM2 } from './shapes';
@@ -44,7 +44,8 @@ function soundings(bed: Grid): MapFeature[] {
       const column = bed.eastM.findIndex((east) => east >= at[0]);
       const row = bed.northM.findIndex((north) => north >= at[1]);
       const depthM = (bed.value[row * columns + column] ?? 0) - TIDE_RANGE_M;
-      if (depthM > 1.5) {
+      const isWater = [-40, 0, 40].every((offM) => !isLand([at[0] + offM, at[1] + offM]));
+      if (isWater && depthM > 1.5) {
         features.push(
           spot('contours', { minzoom: 14 }, at, { class: 'sounding', depth: Math.round(depthM) }),
         );
@@ -56,7 +57,7 @@ function soundings(bed: Grid): MapFeature[] {
 
 /** Sea, tinted by depth, with what dries at low water, and depth contours. */
 export function seaFeatures(): MapFeature[] {
-  const bed = seabed(gullies);
+  const bed = seabed();
   const tints = TINT_DEPTHS_M.flatMap((depth) =>
     areasAbove(bed, depth + TIDE_RANGE_M)
       .filter(([outer]) => outer !== undefined && ringAreaM2(outer) > SMALLEST_AREA_M2)

@@ -1,16 +1,21 @@
 import type { Point } from './plane';
 
-/** Grid lines: 25 m apart over the estuary, further and further apart towards the open sea. */
+const FINE_M = 12;
+
+/** Grid lines: 12 m apart over the estuary, further and further apart towards the open sea. */
 export function gridLines(fineFromM: number, fineToM: number, edgeM: number): number[] {
   const outward = (fromM: number, sign: 1 | -1) => {
     const lines: number[] = [];
-    for (let at = fromM, stepM = 28; Math.abs(at) < edgeM; stepM = Math.min(1000, stepM * 1.1)) {
+    for (let at = fromM, stepM = 13; Math.abs(at) < edgeM; stepM = Math.min(800, stepM * 1.06)) {
       at += sign * stepM;
       lines.push(at);
     }
     return lines;
   };
-  const fine = Array.from({ length: (fineToM - fineFromM) / 25 + 1 }, (_, index) => fineFromM + index * 25);
+  const fine = Array.from(
+    { length: Math.ceil((fineToM - fineFromM) / FINE_M) + 1 },
+    (_, index) => fineFromM + index * FINE_M,
+  );
   return [...outward(fineFromM, -1).reverse(), ...fine, ...outward(fineToM, 1)];
 }
 

@@ -1,28 +1,11 @@
 import { segmentsOf } from './curves';
-import { mark } from './grid';
+import { DISTRICT, maskOver } from './mask';
 import type { Point } from './plane';
 import { distanceToSegmentM, isInside } from './shapes';
 import { islands, mainland } from './shore';
 
-const FROM: Point = [-11_500, -7000];
-const STEP_M = 20;
-const axis = (fromM: number, toM: number) =>
-  Array.from({ length: Math.ceil((toM - fromM) / STEP_M) }, (_, index) => fromM + index * STEP_M);
-const eastM = axis(FROM[0], 4800);
-const northM = axis(FROM[1], 7400);
-/** Tells, to the nearest 20 m, which points of the mapped district lie in any of the rings. */
-export function districtMask(ringSets: readonly (readonly Point[][])[]): (point: Point) => boolean {
-  const mask = new Uint8Array(eastM.length * northM.length);
-  for (const rings of ringSets) mark(mask, rings, eastM, northM);
-  return ([x, y]) => {
-    const column = Math.round((x - FROM[0]) / STEP_M);
-    const row = Math.round((y - FROM[1]) / STEP_M);
-    return column >= 0 && row >= 0 && column < eastM.length && mask[row * eastM.length + column] === 1;
-  };
-}
-
 /** Whether a point of the mapped district is land, to the nearest 20 m. */
-export const isLand = districtMask([[mainland, ...islands]]);
+export const isLand = maskOver(DISTRICT, 20, [[mainland, ...islands]]);
 
 const CELL_M = 40;
 const cellKey = (x: number, y: number) => `${Math.floor(x / CELL_M)},${Math.floor(y / CELL_M)}`;

@@ -15,10 +15,10 @@ interface Town {
 const towns: Town[] = [
   { name: 'Varrow', at: [-16000, -3000], radiusM: 1300, minzoom: 8 },
   { name: 'Oxmere', at: [-24000, 8000], radiusM: 1000, minzoom: 8 },
-  { name: 'Tilhythe', at: [-37900, -9500], radiusM: 1500, minzoom: 7 },
-  { name: 'Garsand', at: [-9000, 17200], radiusM: 800, minzoom: 8 },
-  { name: 'Pennock', at: [-12000, -19100], radiusM: 750, minzoom: 8 },
-  { name: 'Kelderhaven', at: [-36500, 14800], radiusM: 700, minzoom: 9 },
+  { name: 'Tilhythe', at: [-36300, -10400], radiusM: 1300, minzoom: 7 },
+  { name: 'Garsand', at: [-9000, 16900], radiusM: 800, minzoom: 8 },
+  { name: 'Pennock', at: [-12000, -18400], radiusM: 750, minzoom: 8 },
+  { name: 'Kelderhaven', at: [-36000, 15000], radiusM: 700, minzoom: 9 },
   { name: 'Stanmoor', at: [-29000, -6000], radiusM: 420, minzoom: 10 },
   { name: 'Thornwick Cross', at: [-3000, -11000], radiusM: 380, minzoom: 10 },
   { name: 'Upper Garth', at: [-4500, 12500], radiusM: 380, minzoom: 10 },
@@ -55,7 +55,7 @@ const rivers: { name: string; points: Point[]; minzoom: number }[] = [
     name: 'Till',
     minzoom: 9,
     points: [
-      [-39400, -8800],
+      [-37000, -9700],
       [-35500, -6000],
       [-32500, -1500],
       [-30500, 2500],
@@ -65,8 +65,8 @@ const rivers: { name: string; points: Point[]; minzoom: number }[] = [
     name: 'Garth Brook',
     minzoom: 10,
     points: [
-      [-8300, 19800],
-      [-8800, 16000],
+      [-9000, 17700],
+      [-9300, 15800],
       [-10500, 12000],
       [-12000, 8500],
     ],
@@ -85,15 +85,8 @@ const rivers: { name: string; points: Point[]; minzoom: number }[] = [
   },
 ];
 
-const moors: Point[][] = [
-  blob([-28500, 1500], 5200, 4600, 1201),
-  blob([-21000, -14500], 3600, 2600, 1203),
-  blob([-31500, 18500], 3200, 2200, 1207),
-];
-
 export function hinterlandFeatures(): MapFeature[] {
   return [
-    ...moors.map((ring) => area('landuse', { minzoom: 7 }, [ring], { class: 'heath' })),
     ...towns.map(({ at, radiusM, minzoom }, index) =>
       area('landuse', { minzoom }, [blob(at, radiusM, radiusM * 0.8, 1301 + index * 5)], {
         class: 'residential',
@@ -104,7 +97,10 @@ export function hinterlandFeatures(): MapFeature[] {
       name: 'Ox Mere',
     }),
     ...rivers.map(({ name, points, minzoom }) =>
-      line('water', { minzoom }, roughen(smooth(points, 90), 170, 900, 1501), { class: 'river', name }),
+      line('water', { minzoom }, roughen(roughen(smooth(points, 30), 260, 900, 1501), 55, 190, 1503), {
+        class: 'river',
+        name,
+      }),
     ),
     ...outerRoads.map(({ kind, name, points }) =>
       line('roads', { minzoom: ROAD_MINZOOM[kind] }, points, { class: kind, name }),

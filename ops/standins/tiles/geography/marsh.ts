@@ -1,10 +1,10 @@
-import { distanceM, lengthM, offset, placeAt, ribbon, segmentsOf, smooth, smoothRing } from './curves';
+import { lerp, offset, ribbon, segmentsOf, smooth, wander } from './curves';
 import { area, line, type MapFeature } from './feature';
 import type { Point } from './plane';
 import { Dice, noiseAt } from './random';
-import { CHANNELS, type Channel } from './seabed';
+import { CREEK_MOUTHS } from './channels';
 import { blob, distanceToSegmentM, isInside } from './shapes';
-import { greatCob, littleCob, marshShoreLine } from './shore';
+import { greatCob, littleCob, marshShoreLine, northBankPoints, southBankPoints } from './shore';
 
 /** The bank that keeps the spring tides off the grazing marsh, from the hythe to the spit. */
 export const seaWall: Point[] = smooth(
@@ -24,49 +24,36 @@ export const seaWall: Point[] = smooth(
 );
 
 /** Saltmarsh between the shore and the sea wall. */
-export const saltmarsh: Point[] = [...marshShoreLine, ...offset(seaWall, -14)];
+export const saltmarsh: Point[] = [...marshShoreLine, ...offset(seaWall, -5)];
+
+/** Reeds along a bank of the river, in a belt of uneven width on its landward side. */
+function reedbed(
+  bankPoints: readonly Point[],
+  from: number,
+  to: number,
+  landward: 1 | -1,
+  seed: number,
+): Point[] {
+  const shore = bankPoints.slice(Math.round(from * bankPoints.length), Math.round(to * bankPoints.length));
+  const inner = offset(shore, (index) => {
+    const ends = Math.min(1, 4 * Math.min(index / shore.length, 1 - index / shore.length));
+    const point = shore[index] ?? [0, 0];
+    return landward * ends * (44 + 34 * noiseAt(point, 150, seed, 2));
+  });
+  return [...shore, ...inner.reverse()];
+}
 
 const reedbeds: Point[][] = [
-  [
-    [-2330, 268],
-    [-2120, 236],
-    [-1900, 226],
-    [-1660, 262],
-    [-1420, 440],
-    [-1480, 520],
-    [-1720, 420],
-    [-2060, 390],
-    [-2300, 370],
-  ],
-  [
-    [-1900, -40],
-    [-1760, -84],
-    [-1600, -150],
-    [-1500, -226],
-    [-1400, -300],
-    [-1440, -330],
-    [-1620, -250],
-    [-1800, -160],
-    [-1920, -120],
-  ],
-  [
-    [-3560, 340],
-    [-3300, 372],
-    [-3060, 430],
-    [-3010, 520],
-    [-3260, 500],
-    [-3540, 430],
-  ],
-].map((ring) =>
-  smoothRing(
-    ring.map(([x = 0, y = 0]): Point => [x, y]),
-    20,
-  ),
-);
+  reedbed(northBankPoints, 0.84, 0.99, 1, 171),
+  reedbed(northBankPoints, 0.66, 0.78, 1, 173),
+  reedbed(southBankPoints, 0.9, 1, -1, 175),
+  reedbed(southBankPoints, 0.71, 0.8, -1, 177),
+  reedbed(northBankPoints, 0.45, 0.56, 1, 179),
+];
 
 /** Land taken from the marsh: flat, wet, cut by straight ditches. */
 export const grazingMarsh: Point[] = [
-  ...offset(seaWall, 14),
+  ...offset(seaWall, 5),
   [2960, 1350],
   [2900, 1640],
   [2440, 1748],
@@ -85,113 +72,171 @@ interface Creek {
   mouthM: number;
 }
 
-/** A creek that winds inland from its mouth and branches; narrower with every branch. */
-function creek(
-  mouth: Point,
-  headingRad: number,
-  lengthOfCreekM: number,
-  mouthM: number,
-  dice: Dice,
-): Creek[] {
-  const points: Point[] = [mouth];
-  const branches: Creek[] = [];
-  let at = mouth;
-  const phase = dice.between(0, 6);
-  const stepM = 9;
-  for (let goneM = 0; goneM < lengthOfCreekM; goneM += stepM) {
-    const swing = 0.95 * Math.sin(phase + goneM / 30) + 0.8 * noiseAt(at, 110, 131);
-    const heading = headingRad + swing;
-    at = [at[0] + stepM * Math.cos(heading), at[1] + stepM * Math.sin(heading)];
-    if (!isClearOfWall(at)) break;
-    points.push(at);
-    if (goneM > 30 && mouthM > 3.2 && dice.chance(0.2)) {
-      const side = dice.chance(0.5) ? 1 : -1;
-      branches.push(
-        ...creek(at, headingRad + side * dice.between(0.7, 1.3), lengthOfCreekM * 0.5, mouthM * 0.5, dice),
-      );
+const STEP_M = 7;
+const CLEAR_M = 11;
+
+/** Keeps creeks from running into each other: remembers which squares of the marsh are taken, and by which creek. */
+class Taken {
+  private readonly squares = new Map<string, number>();
+  private readonly key = (column: number, row: number) => `${column},${row}`;
+
+  isFree([x, y]: Point, owner: number, parent: number): boolean {
+    const [column, row] = [Math.floor(x / CLEAR_M), Math.floor(y / CLEAR_M)];
+    for (let c = column - 1; c <= column + 1; c += 1) {
+      for (let r = row - 1; r <= row + 1; r += 1) {
+        const found = this.squares.get(this.key(c, r));
+        if (found !== undefined && found !== owner && found !== parent) return false;
+      }
     }
+    return true;
   }
-  return points.length > 4 ? [{ points, mouthM }, ...branches] : branches;
+
+  take([x, y]: Point, owner: number): void {
+    this.squares.set(this.key(Math.floor(x / CLEAR_M), Math.floor(y / CLEAR_M)), owner);
+  }
 }
 
-const shoreM = lengthM(marshShoreLine);
+interface Sprout {
+  from: Point;
+  headingRad: number;
+  reachM: number;
+  mouthM: number;
+  parent: number;
+}
 
-/** Where the larger creeks of the marsh reach the shore. */
-const mouths: Point[] = Array.from({ length: 15 }, (_, index) => {
-  const place = placeAt(marshShoreLine, ((index + 0.6) / 15.4) * shoreM);
-  return place?.point ?? [0, 0];
-});
+/** Lets creeks grow inland from their mouths, stems before branches, each narrower than the one it joins. */
+function grow(sprouts: Sprout[], dice: Dice): Creek[] {
+  const taken = new Taken();
+  const creeks: Creek[] = [];
+  for (let owner = 0; owner < sprouts.length; owner += 1) {
+    const sprout = sprouts[owner];
+    if (!sprout) continue;
+    const { points, branches } = growOne(sprout, owner, taken, dice);
+    if (points.length < 5) continue;
+    creeks.push({ points, mouthM: sprout.mouthM });
+    sprouts.push(...branches);
+  }
+  return creeks;
+}
+
+function growOne(
+  { from, headingRad, reachM, mouthM, parent }: Sprout,
+  owner: number,
+  taken: Taken,
+  dice: Dice,
+): { points: Point[]; branches: Sprout[] } {
+  const points: Point[] = [from];
+  const branches: Sprout[] = [];
+  const seed = Math.floor(dice.next() * 1e6);
+  const bendM = 16 + mouthM * 2.2;
+  let at = from;
+  let sinceBranchM = 0;
+  for (let goneM = 0; goneM < reachM; goneM += STEP_M) {
+    const swing = Math.min(1, goneM / 30) * 0.75 * Math.sin(seed + goneM / bendM);
+    const heading = headingRad + swing + 1.1 * noiseAt(at, 80, seed, 2);
+    at = [at[0] + STEP_M * Math.cos(heading), at[1] + STEP_M * Math.sin(heading)];
+    const isNearParent = goneM < 3 * CLEAR_M;
+    if (goneM > 14 && !isClearOfWall(at)) break;
+    if (!taken.isFree(at, owner, isNearParent ? parent : owner)) break;
+    points.push(at);
+    taken.take(at, owner);
+    sinceBranchM += STEP_M;
+    if (mouthM > 1.8 && sinceBranchM > 24 && dice.chance(0.4)) {
+      const turn = (dice.chance(0.5) ? 1 : -1) * dice.between(0.8, 1.4);
+      const left = 1 - goneM / reachM;
+      branches.push({
+        from: at,
+        headingRad: headingRad + turn,
+        reachM: reachM * dice.between(0.25, 0.6),
+        mouthM: mouthM * (0.25 + 0.4 * left),
+        parent: owner,
+      });
+      sinceBranchM = 0;
+    }
+  }
+  return { points, branches };
+}
 
 const creeks: Creek[] = (() => {
   const dice = new Dice(2027);
-  return mouths.flatMap((mouth) =>
-    creek([mouth[0], mouth[1] + 4], Math.PI / 2 + dice.between(-0.3, 0.3), dice.between(260, 430), 15, dice),
-  );
+  const stems = CREEK_MOUTHS.map(([x, y]): Sprout => ({
+    from: [x, y - 14],
+    headingRad: Math.PI / 2 + dice.between(-0.35, 0.35),
+    reachM: dice.between(260, 440),
+    mouthM: dice.between(8, 17),
+    parent: -1,
+  }));
+  return grow(stems, dice);
 })();
 
-const swatch: Point[] = (CHANNELS[1] ?? []).map(([x, y]): Point => [x, y]);
-const southChannel: Point[] = (CHANNELS[0] ?? []).map(([x, y]): Point => [x, y]);
+const LEVEL_ROWS = [0.02, 0.27, 0.5, 0.74, 1];
+const outerEdge: Point[] = smooth(
+  [
+    [-330, 1330],
+    [-60, 1612],
+    [330, 1776],
+    [1000, 1862],
+    [1900, 1820],
+    [2440, 1734],
+    [2880, 1620],
+  ],
+  30,
+);
 
-/** A gully over the flats from a point to the nearest part of a channel, winding on its way. */
-function gully(from: Point, towards: readonly Point[], widthM: number, seed: number): Channel {
-  const line = smooth(towards, 60);
-  const end = line.reduce((best, point) => (distanceM(point, from) < distanceM(best, from) ? point : best));
-  const steps = 7;
-  return Array.from({ length: steps + 1 }, (_, step) => {
-    const share = step / steps;
-    const plain: Point = [from[0] + (end[0] - from[0]) * share, from[1] + (end[1] - from[1]) * share];
-    const sway = 46 * Math.sin(Math.PI * share);
-    return [
-      plain[0] + sway * noiseAt(plain, 150, seed) * 2,
-      plain[1] + sway * noiseAt(plain, 150, seed + 3),
-      widthM * (0.6 + 0.9 * share),
-      4.25 + 0.7 * share,
-    ];
-  });
+/** A place on the grazing marsh by its shares of the way along the sea wall and away from it. */
+function levelPoint(along: number, away: number): Point {
+  const at = (points: readonly Point[]) => points[Math.round(along * (points.length - 1))] ?? [0, 0];
+  return wander(lerp(at(offset(seaWall, 18)), at(outerEdge), away), 16, 260, 521);
 }
 
-const bankHeads: Point[] = [
-  [-300, 60],
-  [100, 240],
-  [420, 120],
-  [900, 420],
-  [1150, 180],
-  [1700, 130],
-  [2150, 160],
-  [2420, 60],
-  [-700, 40],
-  [-1050, 260],
-];
-
-/** Gullies that drain the flats into the channels. */
-export const gullies: Channel[] = [
-  ...mouths.map((mouth, index) => gully(mouth, swatch, 26, 151 + index * 7)),
-  ...bankHeads.map((head, index) => gully(head, southChannel, 24, 401 + index * 7)),
-  ...bankHeads
-    .slice(0, 8)
-    .map((head, index) => gully([head[0] + 70, head[1] + 30], swatch, 22, 601 + index * 7)),
-];
-
-/** Straight ditches that drain the grazing marsh, on a grid that follows the sea wall. */
+/** Straight ditches that part the grazing marsh into long fields, staggered from row to row. */
 function ditches(): Point[][] {
   const dice = new Dice(515);
-  const inside = (points: Point[]) => {
-    const runs: Point[][] = [[]];
-    for (const point of points) {
-      if (isInside(point, grazingMarsh)) runs.at(-1)?.push(point);
-      else runs.push([]);
+  const shares = Array.from({ length: 60 }, (_, index) => index / 59);
+  const rows = LEVEL_ROWS.map((away) => shares.map((along) => levelPoint(along, away)));
+  const crossings = LEVEL_ROWS.slice(1).flatMap((away, index) => {
+    const from = LEVEL_ROWS[index] ?? 0;
+    const lines: Point[][] = [];
+    for (let along = dice.between(0.01, 0.05); along < 0.99; along += dice.between(0.028, 0.07)) {
+      lines.push([levelPoint(along, from), levelPoint(along + dice.between(-0.004, 0.004), away)]);
     }
-    return runs.filter((run) => run.length > 3);
-  };
-  const north = Array.from({ length: 20 }, (_, index) => {
-    const x = -300 + index * 165 + dice.between(-30, 30);
-    const lean = dice.between(-0.12, 0.12);
-    return inside(Array.from({ length: 50 }, (_, step): Point => [x + step * 20 * lean, 950 + step * 20]));
-  }).flat();
-  const east = [70, 190, 320].flatMap((inM) =>
-    inside(smooth(offset(seaWall, inM), 20)).filter(() => dice.chance(0.9)),
-  );
-  return [...north.filter(() => dice.chance(0.85)), ...east];
+    return lines;
+  });
+  return [...rows, ...crossings];
+}
+
+/** Tufts of marsh grass: three short strokes each, as on old maps. */
+function tufts(): MapFeature[] {
+  const dice = new Dice(3141);
+  const meadows: { ring: Point[]; count: number }[] = [
+    { ring: saltmarsh, count: 620 },
+    { ring: grazingMarsh, count: 260 },
+    { ring: greatCob, count: 70 },
+    { ring: littleCob, count: 16 },
+  ];
+  return meadows.flatMap(({ ring, count }) => {
+    const xs = ring.map(([x]) => x);
+    const ys = ring.map(([, y]) => y);
+    const inBox = (): Point => [
+      dice.between(Math.min(...xs), Math.max(...xs)),
+      dice.between(Math.min(...ys), Math.max(...ys)),
+    ];
+    return Array.from({ length: count }, inBox)
+      .filter((at) => isInside(at, ring))
+      .flatMap(([x, y]) =>
+        [-1, 0, 1].map((lean) =>
+          line(
+            'wetland',
+            { minzoom: 14 },
+            [
+              [x + lean * 2.2, y],
+              [x + lean * 4.6, y + (lean === 0 ? 7 : 5)],
+            ],
+            { class: 'tuft' },
+          ),
+        ),
+      );
+  });
 }
 
 export function marshFeatures(): MapFeature[] {
@@ -207,13 +252,14 @@ export function marshFeatures(): MapFeature[] {
     ...creeks.map(({ points, mouthM }) =>
       area(
         'water',
-        { minzoom: mouthM > 10 ? 12 : 14 },
-        [ribbon(points, (share) => mouthM * (1.25 - share) + 1)],
+        { minzoom: mouthM > 7.5 ? 12 : mouthM > 3 ? 13 : 14 },
+        [ribbon(points, (share) => mouthM * (1.12 - share) ** 1.3 + 0.8)],
         { class: 'creek' },
       ),
     ),
     ...pools.map((ring) => area('water', { minzoom: 14 }, [ring], { class: 'pool' })),
     ...ditches().map((points) => line('water', { minzoom: 13 }, points, { class: 'ditch' })),
+    ...tufts(),
     line('structures', { minzoom: 12 }, seaWall, { class: 'sea-wall' }),
   ];
 }

@@ -1,4 +1,5 @@
-import { alongSpline, atKnot } from './curves';
+import { alongSpline, atKnot, wander } from './curves';
+import { CHANNELS, type Channel } from './channels';
 import { distanceTo, firstAtLeast, gridLines, mark } from './grid';
 import type { Grid } from './isolines';
 import type { Point } from './plane';
@@ -8,115 +9,81 @@ import { islands, mainland } from './shore';
 /** Metres between the high-water line of the drawing and chart datum: what lies shallower than this dries. */
 export const TIDE_RANGE_M = 4;
 
-/** A way that the water keeps open: place, half width and depth below high water, all in metres. */
-export type Channel = [eastM: number, northM: number, halfWidthM: number, depthM: number][];
-
-export const CHANNELS: Channel[] = [
-  [
-    [-3250, 320, 30, 4.6],
-    [-2850, 420, 34, 5],
-    [-2480, 270, 40, 5.4],
-    [-2180, 160, 50, 5.8],
-    [-1850, 90, 70, 6.2],
-    [-1500, -40, 95, 6.6],
-    [-1150, -150, 130, 7],
-    [-700, -260, 160, 8.5],
-    [0, -380, 210, 13],
-    [700, -400, 240, 16.5],
-    [1400, -390, 250, 17],
-    [2000, -310, 240, 16],
-    [2700, -150, 260, 15.5],
-    [3400, -40, 330, 16],
-    [4300, 0, 420, 17],
-    [5600, 60, 560, 19],
-    [8000, 100, 800, 22],
-  ],
-  [
-    [-1150, 100, 60, 4.7],
-    [-700, 300, 62, 5],
-    [-250, 520, 60, 5.2],
-    [350, 640, 66, 5.4],
-    [1000, 660, 76, 5.8],
-    [1650, 610, 84, 6.2],
-    [2250, 470, 100, 6.8],
-    [2700, 240, 120, 8],
-    [3000, 40, 150, 10],
-  ],
-  [
-    [-720, 800, 26, 4.6],
-    [-600, 660, 30, 4.9],
-    [-420, 540, 36, 5],
-    [-200, 500, 40, 5.2],
-  ],
-  [
-    [2050, -880, 200, 6],
-    [2250, -700, 230, 7],
-    [2350, -480, 220, 9],
-    [2420, -250, 200, 14],
-  ],
-  [
-    [48, -900, 110, 11],
-    [48, -600, 90, 12],
-    [60, -480, 120, 13],
-  ],
-];
-
 const step01 = (from: number, to: number, value: number) => {
   const t = Math.max(0, Math.min(1, (value - from) / (to - from)));
   return t * t * (3 - 2 * t);
 };
 
 /** 1 within the estuary, falling to 0 on the open coast. */
-export function estuaryShare([x, y]: Point): number {
-  return (1 - step01(2300, 3700, x)) * step01(-1500, -1050, y) * (1 - step01(1300, 2600, y));
+export function estuaryShare(point: Point): number {
+  const [x, y] = wander(point, 420, 900, 47);
+  return (
+    step01(-6000, -4000, x) *
+    (1 - step01(2300, 3700, x)) *
+    step01(-1500, -1050, y) *
+    (1 - step01(1300, 2600, y))
+  );
 }
 
 /** Depth below high water without channels, from the distance to the shore. */
 function plainDepthM(point: Point, shoreM: number): number {
-  const rough = noiseAt(point, 420, 41, 4);
-  const flat = 0.5 + 2.6 * (1 - Math.exp(-shoreM / 90)) + 1.15 * rough;
-  const sea = 1.2 + 7 * (1 - Math.exp(-shoreM / 420)) + shoreM / 260 + rough * (1 + shoreM / 900);
+  const rough = noiseAt(point, 340, 41, 4);
+  const swell = noiseAt(point, 2400, 43, 3);
+  const flat = 0.5 + 2.5 * (1 - Math.exp(-shoreM / 90)) + 1.75 * rough;
+  const sea =
+    1.2 + 7 * (1 - Math.exp(-shoreM / 420)) + (shoreM / 260) * (1 + 0.45 * swell) + 0.9 * rough + 1.4 * swell;
   const share = estuaryShare(point);
   return Math.max(0.2, flat * share + sea * (1 - share));
 }
 
-/** Lets a channel cut into the bed, deepest in its middle. */
-function carve(bed: Grid, channel: Channel): void {
-  const middle = alongSpline(
-    channel.map(([eastM, northM]): Point => [eastM, northM]),
-    15,
-  );
-  for (const { point, knot } of middle) {
-    const halfWidthM = atKnot(
-      channel.map(([, , half]) => half),
-      knot,
-    );
-    const deepestM = atKnot(
-      channel.map(([, , , depth]) => depth),
-      knot,
-    );
-    deepenAround(bed, point, halfWidthM, deepestM);
-  }
+/** The tidal river above the town is too narrow for the grid: it keeps this depth, and its banks hide the rest. */
+const NARROWS = { westM: -11_000, eastM: -3050, southM: -300, northM: 2900, depthM: 4.8 } as const;
+
+function isInNarrows([x, y]: Point): boolean {
+  return x > NARROWS.westM && x < NARROWS.eastM && y > NARROWS.southM && y < NARROWS.northM;
 }
 
-function deepenAround(bed: Grid, [x, y]: Point, halfWidthM: number, deepestM: number): void {
+/** A bed being made, with the place of each crossing moved a little, so that channels have uneven sides. */
+interface Bed extends Grid {
+  moved: Point[];
+}
+
+/** Lets a channel cut into the bed, deepest in its middle. */
+function carve(bed: Bed, channel: Channel): void {
+  const halfWidths = channel.map(([, , half]) => half);
+  const depths = channel.map(([, , , depth]) => depth);
+  const middle = alongSpline(
+    channel.map(([eastM, northM]): Point => [eastM, northM]),
+    12,
+  );
+  for (const { point, knot } of middle) deepen(bed, point, atKnot(halfWidths, knot), atKnot(depths, knot));
+}
+
+const MOST_MOVED_M = 34;
+
+function deepen(bed: Bed, [x, y]: Point, halfWidthM: number, deepestM: number): void {
   const columns = bed.eastM.length;
-  const lastRow = firstAtLeast(bed.northM, y + halfWidthM);
-  const lastColumn = firstAtLeast(bed.eastM, x + halfWidthM);
-  for (let row = firstAtLeast(bed.northM, y - halfWidthM); row < lastRow; row += 1) {
-    for (let column = firstAtLeast(bed.eastM, x - halfWidthM); column < lastColumn; column += 1) {
-      const awayM = Math.hypot((bed.eastM[column] ?? 0) - x, (bed.northM[row] ?? 0) - y);
-      const depthM = deepestM * (1 - (awayM / halfWidthM) ** 2) ** 0.6;
+  const isWide = halfWidthM > 45;
+  const reachM = halfWidthM + (isWide ? MOST_MOVED_M : 0);
+  const lastRow = firstAtLeast(bed.northM, y + reachM);
+  const lastColumn = firstAtLeast(bed.eastM, x + reachM);
+  for (let row = firstAtLeast(bed.northM, y - reachM); row < lastRow; row += 1) {
+    for (let column = firstAtLeast(bed.eastM, x - reachM); column < lastColumn; column += 1) {
       const at = row * columns + column;
-      if (awayM < halfWidthM) bed.value[at] = Math.max(bed.value[at] ?? 0, depthM);
+      const plain: Point = [bed.eastM[column] ?? 0, bed.northM[row] ?? 0];
+      const [placeX, placeY] = isWide ? (bed.moved[at] ?? plain) : plain;
+      const awayM = Math.hypot(placeX - x, placeY - y);
+      if (awayM >= halfWidthM) continue;
+      const depthM = deepestM * (1 - (awayM / halfWidthM) ** 2) ** 0.6;
+      bed.value[at] = Math.max(bed.value[at] ?? 0, depthM);
     }
   }
 }
 
-/** Carries the depth beside a shore two crossings inland, so that deep water reaches a quay wall without a rim of mud. */
+/** Carries the depth beside a shore some crossings inland, so that deep water reaches a quay wall without a rim of mud. */
 function spillOverShore(bed: Grid, land: Uint8Array): void {
   const columns = bed.eastM.length;
-  for (let pass = 0; pass < 2; pass += 1) {
+  for (let pass = 0; pass < 3; pass += 1) {
     const before = bed.value.slice();
     land.forEach((isLand, at) => {
       if (!isLand) return;
@@ -126,21 +93,24 @@ function spillOverShore(bed: Grid, land: Uint8Array): void {
   }
 }
 
-/** Depth below high water in metres, over the estuary and the sea around the island; 0 on land. */
-export function seabed(gullies: readonly Channel[]): Grid {
-  const eastM = gridLines(-3400, 5200, 70_000);
-  const northM = gridLines(-4400, 4400, 70_000);
+/** Depth below high water in metres, over the estuary and the sea around the island; little or nothing on land. */
+export function seabed(): Grid {
+  const eastM = gridLines(-2500, 3400, 70_000);
+  const northM = gridLines(-1100, 1120, 70_000);
   const land = new Uint8Array(eastM.length * northM.length);
   mark(land, [mainland, ...islands], eastM, northM);
   const shoreM = distanceTo(land, eastM, northM);
-  const bed: Grid = { eastM, northM, value: new Float64Array(land.length) };
-  northM.forEach((y, row) =>
-    eastM.forEach((x, column) => {
-      const at = row * eastM.length + column;
-      if (!land[at]) bed.value[at] = plainDepthM([x, y], shoreM[at] ?? 0);
-    }),
-  );
-  for (const channel of [...CHANNELS, ...gullies]) carve(bed, channel);
+  const points = northM.flatMap((y) => eastM.map((x): Point => [x, y]));
+  const bed: Bed = {
+    eastM,
+    northM,
+    value: Float64Array.from(points, (point, at) => (land[at] ? 0 : plainDepthM(point, shoreM[at] ?? 0))),
+    moved: points.map((point) => wander(point, MOST_MOVED_M, 210, 53)),
+  };
+  for (const channel of CHANNELS) carve(bed, channel);
   spillOverShore(bed, land);
-  return bed;
+  points.forEach((point, at) => {
+    if (isInNarrows(point)) bed.value[at] = Math.max(bed.value[at] ?? 0, NARROWS.depthM);
+  });
+  return { eastM, northM, value: bed.value };
 }

@@ -1,5 +1,6 @@
 import { alongSpline, atKnot, offset, roughen, smooth, smoothRing, wander } from './curves';
 import type { Point } from './plane';
+import { blob } from './shapes';
 
 /** A part of the high-water line, in the order in which the shore runs: coast from the north, estuary, coast to the south. */
 interface Stretch {
@@ -12,7 +13,8 @@ interface Stretch {
 
 const natural = (points: Point[]): Stretch => ({ points, stepM: 22, roughM: 16, wavelengthM: 170 });
 const built = (points: Point[]): Stretch => ({ points, stepM: null, roughM: 0, wavelengthM: 1 });
-const far = (points: Point[]): Stretch => ({ points, stepM: 160, roughM: 700, wavelengthM: 4200 });
+const far = (points: Point[]): Stretch => ({ points, stepM: 120, roughM: 1100, wavelengthM: 4300 });
+const marshEdge = (points: Point[]): Stretch => ({ points, stepM: 12, roughM: 34, wavelengthM: 105 });
 
 const northCoast = natural([
   [3300, 7200],
@@ -35,7 +37,7 @@ const northCoast = natural([
 ]);
 
 /** The seaward edge of the saltmarsh, from the spit to the hythe. */
-const marshShore = natural([
+const marshShore = marshEdge([
   [2640, 850],
   [2360, 930],
   [2060, 1030],
@@ -101,8 +103,8 @@ function bank(side: 1 | -1): Point[] {
   );
 }
 
-const northBankPoints = bank(1);
-const southBankPoints = bank(-1);
+export const northBankPoints = bank(1);
+export const southBankPoints = bank(-1);
 const endOf = (points: Point[], fallback: Point): Point => points.at(-1) ?? fallback;
 
 const northBank = natural([[-860, 812], [-1060, 700], [-1290, 500], endOf(northBankPoints, [-1560, 160])]);
@@ -173,29 +175,57 @@ const farCoast = far([
   [3230, -5300],
   [2900, -6800],
   [1800, -8600],
-  [600, -10500],
-  [-1500, -14500],
-  [-5500, -18500],
-  [-11000, -21500],
-  [-18000, -22500],
-  [-25500, -20500],
-  [-31000, -23500],
-  [-37000, -20500],
-  [-41500, -14500],
-  [-39500, -8500],
-  [-44500, -3000],
-  [-46500, 3500],
-  [-42500, 9500],
-  [-44000, 15500],
-  [-38500, 21500],
-  [-31500, 24500],
-  [-25000, 22000],
-  [-19000, 25500],
-  [-12500, 23500],
-  [-7000, 20000],
-  [-3500, 15500],
-  [0, 12500],
-  [2300, 9400],
+  [900, -10200],
+  [-900, -12600],
+  [-1200, -14700],
+  [-3900, -16500],
+  [-5900, -19000],
+  [-8600, -19900],
+  [-10300, -19500],
+  [-11400, -19000],
+  [-12700, -20400],
+  [-13900, -22800],
+  [-18000, -22300],
+  [-21200, -19300],
+  [-23900, -19800],
+  [-26500, -22700],
+  [-31000, -24300],
+  [-35600, -21900],
+  [-37200, -18600],
+  [-41000, -16900],
+  [-44800, -13200],
+  [-42400, -11500],
+  [-39200, -10700],
+  [-36900, -9800],
+  [-37600, -8700],
+  [-40300, -8300],
+  [-43200, -6300],
+  [-43900, -2900],
+  [-41200, -500],
+  [-41900, 2500],
+  [-46200, 4700],
+  [-45400, 7900],
+  [-41500, 9800],
+  [-39300, 12600],
+  [-36900, 15700],
+  [-40600, 16400],
+  [-43600, 19700],
+  [-40200, 23300],
+  [-33900, 23900],
+  [-29600, 21200],
+  [-26700, 20400],
+  [-23400, 23900],
+  [-19400, 26600],
+  [-14300, 24900],
+  [-11900, 21500],
+  [-9700, 17900],
+  [-8200, 17800],
+  [-7400, 20300],
+  [-4500, 19300],
+  [-3800, 15900],
+  [-900, 14700],
+  [300, 11800],
+  [2300, 9500],
   [3300, 7200],
 ]);
 
@@ -204,7 +234,8 @@ function drawn({ points, stepM, roughM, wavelengthM }: Stretch, seed: number): P
 }
 
 export const marshShoreLine: Point[] = drawn(marshShore, 12);
-export const farCoastLine: Point[] = drawn(farCoast, 17);
+/** The far coast, rough at two scales: bays, and the rocks within them. */
+const farCoastLine: Point[] = roughen(drawn(farCoast, 17), 420, 1100, 19);
 
 /** The mainland's high-water line as one ring. */
 export const mainland: Point[] = [
@@ -252,4 +283,13 @@ export const littleCob: Point[] = islet(
   23,
 );
 
-export const islands: Point[][] = [greatCob, littleCob];
+const skerries: Point[][] = [
+  blob([5200, 10_900], 620, 260, 1801),
+  blob([6300, 10_300], 240, 160, 1803),
+  blob([-47_600, 900], 900, 1500, 1805),
+  blob([-48_300, -1400], 320, 420, 1807),
+  blob([-15_900, -25_300], 1100, 480, 1809),
+  blob([-28_200, 25_800], 700, 420, 1811),
+];
+
+export const islands: Point[][] = [greatCob, littleCob, ...skerries];

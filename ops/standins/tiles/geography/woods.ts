@@ -1,11 +1,6 @@
-import { distanceM } from './curves';
-import { area, type MapFeature } from './feature';
-import { districtMask, isLand } from './ground';
-import type { Point } from './plane';
-import { Dice, noiseAt } from './random';
 import { blob, isInside } from './shapes';
-import { mainland } from './shore';
-import { zones } from './zones';
+import type { Point } from './plane';
+import { noiseAt } from './random';
 
 const named: { name: string; at: Point; eastM: number; northM: number }[] = [
   { name: 'Hollow Wood', at: [-650, -2480], eastM: 250, northM: 150 },
@@ -23,50 +18,17 @@ const named: { name: string; at: Point; eastM: number; northM: number }[] = [
   { name: 'Sandrel Wood', at: [2420, 2420], eastM: 180, northM: 220 },
 ];
 
-const namedWoods = named.map(({ at, eastM, northM }, index) => blob(at, eastM, northM, 231 + index * 11));
+const outlines = named.map(({ at, eastM, northM }, index) => blob(at, eastM, northM, 231 + index * 11));
 
-/** Small copses, and larger woods further off. */
-function scattered(): Point[][] {
-  const dice = new Dice(44);
-  const centres = Array.from({ length: 150 }, (): Point => [
-    dice.between(-10_500, 3800),
-    dice.between(-6200, 6700),
-  ]);
-  return centres
-    .filter((at) => noiseAt(at, 2600, 57) > -0.25)
-    .map((at, index) => {
-      const sizeM = dice.between(45, 110) + 0.016 * distanceM(at, [-600, -300]);
-      return blob(at, sizeM * dice.between(0.9, 1.7), sizeM, 911 + index * 13);
-    })
-    .filter((ring) => ring.every(isLand))
-    .filter((ring) => !ring.some(isInZone));
-}
-
-const isInZone = districtMask(zones.map(({ ring }) => [ring]));
-
-const copses = scattered();
-
-/** Woods of the detailed map. */
-export const woods: Point[][] = [...namedWoods, ...copses];
-
-/** Woods of the rest of the island, for the small zooms. */
-function farWoods(): Point[][] {
-  const dice = new Dice(45);
-  return Array.from({ length: 260 }, (): Point => [
-    dice.between(-44_000, 2000),
-    dice.between(-21_000, 23_000),
-  ])
-    .filter((at) => !(at[0] > -11_500 && at[1] > -7200 && at[1] < 7600) && noiseAt(at, 9000, 59) > -0.05)
-    .map((at, index) => blob(at, dice.between(350, 1300), dice.between(300, 900), 3001 + index * 17))
-    .filter((ring) => ring.every((point, corner) => corner % 6 > 0 || isInside(point, mainland)));
+/**
+ * Whether a parcel of land is wooded: inside a named wood always, elsewhere now and then, more often on high ground.
+ * @param draw a random number, 0 ≤ draw < 1
+ */
+export function isWooded(middle: Point, draw: number): boolean {
+  if (outlines.some((ring) => isInside(middle, ring))) return true;
+  const clump = noiseAt(middle, 700, 57, 2);
+  const upland = noiseAt(middle, 3800, 59, 2);
+  return clump + 0.5 * upland > 0.62 || draw < 0.012;
 }
 
 export const woodNames = named.map(({ name, at }) => ({ name, at }));
-
-export function woodFeatures(): MapFeature[] {
-  return [
-    ...farWoods().map((ring) => area('landuse', { minzoom: 8 }, [ring], { class: 'wood' })),
-    ...namedWoods.map((ring) => area('landuse', { minzoom: 10 }, [ring], { class: 'wood' })),
-    ...copses.map((ring) => area('landuse', { minzoom: 11 }, [ring], { class: 'wood' })),
-  ];
-}

@@ -63,7 +63,7 @@ export function structureLayers(ink: Palette): LayerSpecification[] {
       type: 'line',
       ...from('structures'),
       filter: ofClass('sea-wall'),
-      paint: { 'line-color': ink.rubble, 'line-width': byZoom([12, 0.8], [15, 2.2], [18, 7]) },
+      paint: { 'line-color': ink.bank, 'line-width': byZoom([12, 0.8], [14, 1.6], [16, 5.5], [18, 20]) },
     },
     {
       id: 'crane-rails',
@@ -82,7 +82,7 @@ export function railLayers(ink: Palette): LayerSpecification[] {
       id: 'sidings',
       type: 'line',
       ...from('rail'),
-      filter: ofClass('siding'),
+      filter: ofClass('siding', 'branch'),
       minzoom: 13,
       paint: {
         'line-color': ink.rail,
@@ -94,7 +94,7 @@ export function railLayers(ink: Palette): LayerSpecification[] {
       id: 'rail',
       type: 'line',
       ...from('rail'),
-      filter: ofClass('main', 'branch'),
+      filter: ofClass('main'),
       paint: { 'line-color': ink.rail, 'line-width': byZoom([8, 0.6], [12, 1.4], [15, 2.6], [18, 5]) },
     },
     {
