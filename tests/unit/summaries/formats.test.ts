@@ -118,6 +118,8 @@ describe('PDF', () => {
     expect(all).toContain('zone Europe/London');
     expect(all).toContain('minimum coverage is 75 %');
     expect(all).toContain('competent authority decide');
+    expect(all).toContain('Clock change on Sun 29 March 2026: that day has 23 h');
+    expect(all).toContain('Coverage 98 %.');
     expect(all).toContain('Complaints about noise that began in this month: 4, of which 3 answered');
   });
 

@@ -1,5 +1,6 @@
 import type { Convention, Summary } from '#lib/contracts/summaries';
 import { formatCoverage } from '#lib/format/levels';
+import { clockChangeWords } from '#lib/format/periods';
 import { formatClock, formatDate } from '#lib/format/times';
 import { zoneAbbreviationAt } from '#lib/time/clockChange';
 import { BELOW_MINIMUM } from './figures';
@@ -18,6 +19,7 @@ export function methodStatement(summary: Summary): string[] {
     'A night belongs to the date on which it begins. Lday, Levening, Lnight and Lden of the month pool the periods that begin in ' +
       'it, so Lnight includes the first hours of the next month and not those of its own first morning. LAeq, LAFmax, the statistical ' +
       'levels and the bands pool the calendar month by the clock.',
+    ...clockChangeSentences(summary),
     'Levels of a period are energy means over the valid time alone: the energies of all its valid intervals are pooled first, ' +
       'and Lden is calculated once from the pooled levels, with the nominal hours of day, evening and night even where a clock ' +
       'change made a night longer or shorter. A date that lacks a whole period has no Lden.',
@@ -33,6 +35,16 @@ export function methodStatement(summary: Summary): string[] {
     'Exceedances are listed by the calendar month in which their window begins. One that later data or an exclusion took below its ' +
       'limit is listed as lifted. Levels are rounded once, half up, to 0.1 dB; the CSV and JSON files carry them unrounded.',
   ];
+}
+
+function clockChangeSentences({ from, to, timeZone }: Summary): string[] {
+  const change = clockChangeWords(
+    { fromSec: Date.parse(from) / 1000, toSec: Date.parse(to) / 1000 },
+    timeZone,
+  );
+  return change === null
+    ? []
+    : [`${change}, and so has the night in which it falls more or less than its nominal hours.`];
 }
 
 function conventionSentences(convention: Convention, { timeZone }: Summary): string[] {

@@ -3,9 +3,9 @@ import type { Content, TableCell } from 'pdfmake/interfaces';
 import type { Coverage, SummaryDay, SummaryExceedance, SummaryStation } from '#lib/contracts/summaries';
 import { formatCoverage, formatLevelDb } from '#lib/format/levels';
 import { formatInstant, formatInstantShort } from '#lib/format/times';
-import { markedLevelText } from '../figures';
+import { bandCoverageText, markedLevelText } from '../figures';
 import { bandChartSvg } from './bandChart';
-import { BOOK_TABLE, cell, head, heading, SOFT_INK, typeset } from './typography';
+import { BOOK_TABLE, cell, head, heading, SMALL_SIZE, SOFT_INK, typeset } from './typography';
 
 /** Exceedances that a station's list shows in print; the files carry them all. */
 const MOST_PRINTED = 150;
@@ -25,12 +25,40 @@ export function stationPages(station: SummaryStation, timeZone: string): Content
     figuresTable(station, timeZone),
     ...(chart === null
       ? []
-      : [heading('Bands over the month'), chartCaption(), { svg: chart, margin: [0, 4, 0, 0] } as Content]),
+      : [
+          heading('Bands over the month'),
+          chartCaption(station),
+          { svg: chart, margin: [0, 4, 0, 0] } as Content,
+        ]),
     ...exceedanceList(station, timeZone),
     {
       columns: [
-        { width: 292, stack: [heading('Day by day'), daysTable(station.days)] },
-        { width: '*', stack: [heading('Band by band'), bandsTable(station)] },
+        {
+          width: 292,
+          stack: [
+            heading('Day by day'),
+            {
+              text: 'A night goes by the date on which it begins.',
+              color: SOFT_INK,
+              fontSize: SMALL_SIZE,
+              margin: [0, 0, 0, 4],
+            },
+            daysTable(station.days),
+          ],
+        },
+        {
+          width: '*',
+          stack: [
+            heading('Band by band'),
+            {
+              text: bandCoverageText(station.figures),
+              color: SOFT_INK,
+              fontSize: SMALL_SIZE,
+              margin: [0, 0, 0, 4],
+            },
+            bandsTable(station),
+          ],
+        },
       ],
       columnGap: 26,
       pageBreak: 'before',
@@ -92,11 +120,13 @@ function figuresTable({ figures }: SummaryStation, timeZone: string): Content {
   };
 }
 
-function chartCaption(): Content {
+function chartCaption({ figures }: SummaryStation): Content {
   return {
-    ...typeset('Unweighted levels: bar Leq, long tick L10, short tick L90.'),
+    ...typeset(
+      `Unweighted levels: bar Leq, long tick L10, short tick L90. ${bandCoverageText(figures)}`,
+      SMALL_SIZE,
+    ),
     color: SOFT_INK,
-    fontSize: 8,
   };
 }
 
