@@ -31,7 +31,10 @@ export function mailboxApp(store: MailStore, control: MailControl): Express {
   );
   app.get('/messages/:id/html', (request, response) =>
     withMail(store, request.params.id, response, ({ parsed }) => {
-      response.set('Content-Security-Policy', "default-src 'none'; style-src 'unsafe-inline'; sandbox");
+      response.set(
+        'Content-Security-Policy',
+        "default-src 'none'; style-src 'unsafe-inline'; img-src data:; sandbox",
+      );
       response.send(parsed.html || '');
     }),
   );

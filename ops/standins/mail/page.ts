@@ -11,7 +11,7 @@ body { margin: 0 auto; max-width: 60rem; padding: 1.25rem; background: var(--pap
   font: 15px/1.5 'Noto Sans', system-ui, sans-serif; }
 h1 { font-size: 1.4rem; margin: 0.5rem 0 0.25rem; overflow-wrap: anywhere; }
 a { color: var(--link); } p.soft, dt { color: var(--soft); }
-a:focus-visible, input:focus-visible, button:focus-visible { outline: 2px solid var(--link); outline-offset: 2px; }
+a:focus-visible, summary:focus-visible, input:focus-visible, button:focus-visible { outline: 2px solid var(--link); outline-offset: 2px; }
 form { margin: 1rem 0; display: flex; gap: 0.5rem; flex-wrap: wrap; align-items: end; }
 label { display: block; color: var(--soft); font-size: 14px; }
 input, button { font: inherit; padding: 0.3rem 0.6rem; border: 1px solid var(--soft); border-radius: 3px;
@@ -20,6 +20,7 @@ ol { list-style: none; margin: 0; padding: 0; } li { border-top: 1px solid var(-
 li span { color: var(--soft); font-size: 14px; display: block; } time { font-variant-numeric: tabular-nums; }
 dl { display: grid; grid-template-columns: max-content 1fr; gap: 0.15rem 1rem; margin: 0.5rem 0 1rem; }
 dd { margin: 0; overflow-wrap: anywhere; }
+summary { cursor: pointer; color: var(--soft); }
 iframe { width: 100%; height: 32rem; border: 1px solid var(--line); background: white; }
 pre { white-space: pre-wrap; overflow-wrap: anywhere; border-top: 1px solid var(--line); padding-top: 1rem; font: inherit; }
 `;
@@ -65,12 +66,14 @@ export function messagePage(mail: StoredMail): string {
     ({ filename, size }, at) =>
       `<li><a href="/messages/${id}/attachments/${at}">${escapeHtml(filename ?? 'unnamed')}</a> <span>${size} bytes</span></li>`,
   );
+  const everyHeader = parsed.headerLines.map(({ line }) => line).join('\n');
   return page(
     parsed.subject ?? 'No subject',
     `<p><a href="/">Mailbox</a></p><h1>${escapeHtml(parsed.subject || 'No subject')}</h1>` +
       `<dl>${headers.map(([name, value]) => `<dt>${name}</dt><dd>${escapeHtml(value)}</dd>`).join('')}</dl>` +
       (attachments.length > 0 ? `<ol>${attachments.join('')}</ol>` : '') +
       (parsed.html ? `<iframe sandbox title="Message as HTML" src="/messages/${id}/html"></iframe>` : '') +
-      `<pre>${escapeHtml(parsed.text ?? '')}</pre>`,
+      `<pre>${escapeHtml(parsed.text ?? '')}</pre>` +
+      `<details><summary>All headers</summary><pre>${escapeHtml(everyHeader)}</pre></details>`,
   );
 }

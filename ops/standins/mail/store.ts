@@ -6,9 +6,9 @@ import {
   readdirSync,
   readFileSync,
   rmSync,
-  writeSync,
+  writeFileSync,
 } from 'node:fs';
-import { join } from 'node:path';
+import { dirname, join } from 'node:path';
 import { simpleParser, type AddressObject, type Attachment, type ParsedMail } from 'mailparser';
 
 export interface StoredMail {
@@ -86,9 +86,10 @@ export function attachmentsOf({ parsed }: StoredMail): Attachment[] {
   return parsed.attachments.filter(({ related }) => !related);
 }
 
+/** Writes a file and its entry in the directory through to the disk. */
 function writeDurably(path: string, content: Buffer | string): void {
-  const file = openSync(path, 'w', 0o600);
-  writeSync(file, typeof content === 'string' ? Buffer.from(content) : content);
-  fsyncSync(file);
-  closeSync(file);
+  writeFileSync(path, content, { mode: 0o600, flush: true });
+  const directory = openSync(dirname(path), 'r');
+  fsyncSync(directory);
+  closeSync(directory);
 }

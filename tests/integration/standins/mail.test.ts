@@ -1,11 +1,12 @@
-import { mkdtempSync, rmSync } from 'node:fs';
+import { mkdtempSync, readdirSync, rmSync } from 'node:fs';
 import { createServer, type Server } from 'node:http';
 import type { AddressInfo } from 'node:net';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
+import { setTimeout as sleep } from 'node:timers/promises';
 import { createTransport, type SendMailOptions } from 'nodemailer';
 import type { SMTPServer } from 'smtp-server';
-import { afterEach, beforeEach, expect, test } from 'vitest';
+import { afterEach, beforeEach, expect, test, vi } from 'vitest';
 import { mailboxApp, type MailControl } from '#ops/standins/mail/app';
 import { smtpServer } from '#ops/standins/mail/smtp';
 import { MailStore } from '#ops/standins/mail/store';
@@ -83,19 +84,76 @@ test('markup in a subject is shown, not run', async () => {
   expect(page).not.toContain('<img');
 });
 
+test('script in a message cannot run or fetch: its frame is sandboxed and its address allows nothing', async () => {
+  await send({ html: '<script>alert(1)</script><img src="https://spy.example/x.gif">' });
+  const [mail] = store.list();
+  const page = await (await get(`/messages/${mail?.id}`)).text();
+  expect(page).toContain(`<iframe sandbox title="Message as HTML" src="/messages/${mail?.id}/html">`);
+  expect(page).not.toContain('<script');
+  const policy = (await get(`/messages/${mail?.id}/html`)).headers.get('content-security-policy');
+  expect(policy?.split('; ')).toEqual([
+    "default-src 'none'",
+    "style-src 'unsafe-inline'",
+    'img-src data:',
+    'sandbox',
+  ]);
+});
+
+test('an attachment is saved as it was sent, never shown', async () => {
+  await send({ attachments: [{ filename: 'evidence.html', content: '<p>57.3 dB</p>' }] });
+  const [mail] = store.list();
+  const saved = await get(`/messages/${mail?.id}/attachments/0`);
+  expect(saved.headers.get('content-type')).toBe('application/octet-stream');
+  expect(saved.headers.get('content-disposition')).toBe('attachment; filename=evidence.html');
+  expect(await saved.text()).toBe('<p>57.3 dB</p>');
+  expect((await get(`/messages/${mail?.id}/attachments/1`)).status).toBe(404);
+});
+
+test('messages are listed newest first, found by subject, and can all be removed', async () => {
+  await send({ subject: 'Station silent since 03:15' });
+  await send({ subject: 'Station answers again', messageId: '<two@merrow.example>' });
+  const subjects = async (query: string) =>
+    ((await (await get(`/api/messages?${query}`)).json()) as { subject: string }[]).map(
+      ({ subject }) => subject,
+    );
+  expect(await subjects('')).toEqual(['Station answers again', 'Station silent since 03:15']);
+  expect(await subjects('subject=SILENT')).toEqual(['Station silent since 03:15']);
+  const removal = await fetch(`http://127.0.0.1:${portOf(web)}/api/messages`, { method: 'DELETE' });
+  expect(removal.status).toBe(204);
+  expect(await subjects('')).toEqual([]);
+  expect(readdirSync(directory)).toEqual([]);
+});
+
+function behave(mode: string): Promise<Response> {
+  return fetch(`http://127.0.0.1:${portOf(web)}/api/behaviour`, {
+    method: 'POST',
+    headers: { 'content-type': 'application/json' },
+    body: JSON.stringify({ mode }),
+  });
+}
+
+test('slow: the message is kept at once, the answer lets wait', async () => {
+  await behave('slow');
+  let isAnswered = false;
+  const sent = send().then(
+    () => (isAnswered = true),
+    () => undefined,
+  );
+  await vi.waitFor(() => expect(store.list()).toHaveLength(1), { timeout: 5000 });
+  await sleep(500);
+  expect(isAnswered).toBe(false);
+  await new Promise<void>((closed) => smtp.close(closed));
+  await sent;
+  expect(isAnswered).toBe(false);
+});
+
 test('it can refuse, and drop the line after it has taken a message', async () => {
-  const behave = (mode: string) =>
-    fetch(`http://127.0.0.1:${portOf(web)}/api/behaviour`, {
-      method: 'POST',
-      headers: { 'content-type': 'application/json' },
-      body: JSON.stringify({ mode }),
-    });
   expect((await behave('odd')).status).toBe(422);
   await behave('refuse');
   await expect(send()).rejects.toThrow(/451/);
   expect(store.list()).toHaveLength(0);
   await behave('drop-after-data');
-  await expect(send()).rejects.toThrow();
+  await expect(send()).rejects.toThrow(/closed/i);
   expect(store.list()).toHaveLength(1);
   await behave('normal');
   await send();
