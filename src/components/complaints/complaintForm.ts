@@ -45,8 +45,9 @@ export function readComplaint(typed: TypedComplaint, zone: string): ReadComplain
     ...(to === null ? { to: UNREADABLE_TIME } : {}),
   };
   const parsed = newComplaintSchema.safeParse({
-    from: formatInstantUtc(from ?? 0),
-    to: formatInstantUtc(to ?? 1),
+    // A time that cannot be read is told by itself; the other fields are judged beside a stand-in for it.
+    from: formatInstantUtc(from ?? Math.max(0, (to ?? 1) - 1)),
+    to: formatInstantUtc(to ?? (from ?? 0) + 1),
     kind: typed.kind,
     latitude: numberOf(typed.latitude),
     longitude: numberOf(typed.longitude),
