@@ -17,7 +17,7 @@ export interface LimitWindow {
   endSec: number;
 }
 
-type WindowRule = Pick<
+export type WindowRule = Pick<
   LimitVersion,
   'averaging' | 'weekdays' | 'fromMin' | 'toMin' | 'effectiveFromSec' | 'withdrawnAt'
 >;
@@ -70,26 +70,30 @@ function candidatesOf(date: LocalDate, { averaging }: WindowRule, timeline: Netw
     }));
 }
 
-/** Windows of a civil date that begin where the clock shows a multiple of `stepMin`. */
+/**
+ * Quarter-hours, or hours, by the clock of a civil date. They tile it: an hour that a clock change cuts off (in zones that
+ * change by half an hour) is a window of what elapsed of it, and an hour that comes twice is two windows.
+ */
 function clockWindows(date: LocalDate, zone: string, stepMin: number): Candidate[] {
   const dayFrom = startOfDaySec(date, zone);
   const dayTo = startOfDaySec(addDays(date, 1), zone);
-  const stepSec = stepMin * 60;
   // Without a clock change the clock is elapsed time; with one it is asked at each quarter-hour.
   const clockAt =
     dayTo - dayFrom === DAY_SEC
       ? (sec: number) => (sec - dayFrom) / 60
       : (sec: number) => localMinuteAt(sec, zone);
-  const starts: { startSec: number; clockMin: number }[] = [];
+  const windows: Candidate[] = [];
+  let lastHourSec = NaN;
   for (let startSec = dayFrom; startSec < dayTo; startSec += QUARTER_SEC) {
     const clockMin = clockAt(startSec);
-    if (clockMin % stepMin === 0) starts.push({ startSec, clockMin });
+    /** When this quarter-hour's hour would have begun without a change. */
+    const hourSec = startSec - (clockMin % stepMin) * 60;
+    const last = windows.at(-1);
+    if (last && hourSec === lastHourSec) last.endSec += QUARTER_SEC;
+    else windows.push({ startSec, endSec: startSec + QUARTER_SEC, clockMin });
+    lastHourSec = hourSec;
   }
-  return starts.map(({ startSec, clockMin }, at) => ({
-    startSec,
-    clockMin,
-    endSec: Math.min(starts[at + 1]?.startSec ?? dayTo, startSec + stepSec),
-  }));
+  return windows;
 }
 
 function isWithinClock(clockMin: number, { fromMin, toMin }: WindowRule): boolean {

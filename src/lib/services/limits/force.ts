@@ -1,0 +1,58 @@
+import type { LimitVersion } from '#db/queries/limits';
+import type { NetworkSettings } from '#db/queries/networks';
+import { windowsOf, type LimitWindow } from './windows';
+
+/** A window of a limit with the version that judges it. */
+export interface JudgedWindow extends LimitWindow {
+  version: LimitVersion;
+}
+
+/** The longest window, a period of day of a clock change, with room. */
+export const LONGEST_WINDOW_SEC = 26 * 3600;
+
+/** The versions of each limit, by its id, in their order. */
+export function byLimit(versions: readonly LimitVersion[]): Map<number, LimitVersion[]> {
+  const groups = new Map<number, LimitVersion[]>();
+  for (const version of versions) {
+    const others = groups.get(version.limitId);
+    if (others) others.push(version);
+    else groups.set(version.limitId, [version]);
+  }
+  return groups;
+}
+
+/** When a later version of the same limit takes the place of a version, epoch seconds; Infinity where none does. */
+export function replacedFromSec(version: LimitVersion, ofLimit: readonly LimitVersion[]): number {
+  const later = ofLimit.filter((other) => other.version > version.version);
+  return Math.min(Infinity, ...later.map(({ effectiveFromSec }) => effectiveFromSec));
+}
+
+/** The version of one limit that judges what begins at an instant: of those in force by then the newest. */
+export function versionAt(ofLimit: readonly LimitVersion[], atSec: number): LimitVersion | undefined {
+  return ofLimit.findLast(({ effectiveFromSec }) => effectiveFromSec <= atSec);
+}
+
+/** Whether a version holds for a station. */
+export function coversStation({ stationIds }: LimitVersion, stationId: number): boolean {
+  return stationIds === null || stationIds.includes(stationId);
+}
+
+/**
+ * Windows of one limit at a station that begin in `fromSec <= t < toSec`, each with the version that judges it.
+ * `ofLimit`: the limit's versions in their order; `timeline`: the network's settings in order of their beginning.
+ */
+export function judgedWindows(
+  ofLimit: readonly LimitVersion[],
+  stationId: number,
+  { fromSec, toSec }: { fromSec: number; toSec: number },
+  timeline: NetworkSettings[],
+): JudgedWindow[] {
+  return ofLimit
+    .filter((version) => coversStation(version, stationId))
+    .flatMap((version) => {
+      const first = Math.max(fromSec, version.effectiveFromSec);
+      const end = Math.min(toSec, replacedFromSec(version, ofLimit));
+      if (first >= end) return [];
+      return windowsOf(version, first, end, timeline).map((window) => ({ ...window, version }));
+    });
+}
