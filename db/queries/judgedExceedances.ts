@@ -1,13 +1,16 @@
 import type { Connection } from './connection';
 
-/** An exceedance as the judge keeps it: one row a limit, station and window. */
+/** An exceedance as the judge keeps it: one row a limit, station and beginning of a window. */
 export interface JudgedExceedance {
   id: number;
   limitVersionId: number;
+  endSec: number;
   levelDb: number;
   thresholdTenths: number;
   coverage: number;
   state: 'standing' | 'lifted';
+  /** How often what was found has changed since. */
+  revision: number;
   detectedAt: Date;
 }
 
@@ -26,10 +29,12 @@ export async function findJudged(
     .first({
       id: 'id',
       limitVersionId: 'limit_version_id',
+      endSec: 'ends_at',
       levelDb: 'level_db',
       thresholdTenths: 'threshold_tenths',
       coverage: 'coverage',
       state: 'state',
+      revision: 'revision',
       detectedAt: 'detected_at',
     });
 }
@@ -63,18 +68,37 @@ export async function insertExceedance(
   return Number(id);
 }
 
-export async function reviseExceedance(
+/** Brings an exceedance up to date. `revisedAt` is given with a new revision only: a change that people are told of. */
+export async function updateExceedance(
   id: number,
-  change: Pick<JudgedExceedance, 'limitVersionId' | 'levelDb' | 'thresholdTenths' | 'coverage' | 'state'>,
-  now: Date,
+  judged: Omit<JudgedExceedance, 'id' | 'detectedAt'>,
+  revisedAt: Date | null,
   transaction: Connection,
 ): Promise<void> {
-  await transaction('exceedances').where({ id }).update({
-    limit_version_id: change.limitVersionId,
-    level_db: change.levelDb,
-    threshold_tenths: change.thresholdTenths,
-    coverage: change.coverage,
-    state: change.state,
-    revised_at: now,
-  });
+  await transaction('exceedances')
+    .where({ id })
+    .update({
+      limit_version_id: judged.limitVersionId,
+      ends_at: judged.endSec,
+      level_db: judged.levelDb,
+      threshold_tenths: judged.thresholdTenths,
+      coverage: judged.coverage,
+      state: judged.state,
+      revision: judged.revision,
+      ...(revisedAt && { revised_at: revisedAt }),
+    });
+}
+
+/** Windows of standing exceedances of a station that overlap `fromSec <= t < toSec`; none is longer than `longestSec`. */
+export async function selectStandingWindows(
+  stationId: number,
+  { fromSec, toSec, longestSec }: { fromSec: number; toSec: number; longestSec: number },
+  conn: Connection,
+): Promise<(JudgedWindow & { endSec: number })[]> {
+  return conn('exceedances')
+    .where({ station_id: stationId, state: 'standing' })
+    .where('starts_at', '>', fromSec - longestSec)
+    .where('starts_at', '<', toSec)
+    .where('ends_at', '>', fromSec)
+    .select({ limitId: 'limit_id', stationId: 'station_id', startSec: 'starts_at', endSec: 'ends_at' });
 }

@@ -65,6 +65,18 @@ export async function findLimit(
   return rows.map(versionOf);
 }
 
+/**
+ * Locks limits until the transaction ends: who judges by them and who changes them take turns. Afterwards reads of a
+ * read-committed transaction see what the other one did.
+ */
+export async function lockLimits(limitIds: Iterable<number>, transaction: Connection): Promise<void> {
+  await transaction('limits')
+    .whereIn('id', [...limitIds])
+    .orderBy('id')
+    .forUpdate()
+    .select('id');
+}
+
 /** Adds a limit with its first version and answers its id. */
 export async function insertLimit(
   networkId: number,

@@ -28,10 +28,11 @@ export interface LeasedMail {
   createdAt: Date;
 }
 
-export async function insertMail(mail: NewMail, transaction: Connection): Promise<void> {
+/** Puts a message into the outbox and answers its id; null when one with the same key is there already. */
+export async function insertMail(mail: NewMail, transaction: Connection): Promise<number | null> {
   const now = new Date();
   try {
-    await transaction('outbox').insert({
+    const [id] = await transaction('outbox').insert({
       message_id: mail.messageId,
       dedupe_key: mail.dedupeKey,
       network_id: mail.networkId,
@@ -43,47 +44,49 @@ export async function insertMail(mail: NewMail, transaction: Connection): Promis
       next_attempt_at: now,
       created_at: now,
     });
+    return Number(id);
   } catch (error) {
     if ((error as { code?: string }).code !== 'ER_DUP_ENTRY') throw error;
+    return null;
   }
 }
 
-/** Takes messages that are due and nobody holds, for `leaseSec` seconds. Two senders never get the same one. */
+/** Takes the message that is due longest and that nobody holds, for `leaseSec` seconds. Two senders never get the same one. */
 export async function leaseDueMail(
   holder: string,
   now: Date,
-  { limit, leaseSec }: { limit: number; leaseSec: number },
-): Promise<LeasedMail[]> {
-  return inTransaction(async (transaction) => {
-    const mails: LeasedMail[] = await transaction('outbox')
-      .where({ state: 'waiting' })
-      .where('next_attempt_at', '<=', now)
-      .where((query) => query.whereNull('leased_until').orWhere('leased_until', '<', now))
-      .orderBy(['next_attempt_at', 'id'])
-      .limit(limit)
-      .forUpdate()
-      .skipLocked()
-      .select({
-        id: 'id',
-        messageId: 'message_id',
-        kind: 'kind',
-        recipient: 'recipient',
-        subject: 'subject',
-        text: 'text_body',
-        html: 'html_body',
-        complaintReplyId: 'complaint_reply_id',
-        attempts: 'attempts',
-        createdAt: 'created_at',
-      });
-    if (mails.length === 0) return [];
-    await transaction('outbox')
-      .whereIn(
-        'id',
-        mails.map(({ id }) => id),
-      )
-      .update({ leased_until: new Date(now.getTime() + leaseSec * 1000), lease_holder: holder });
-    return mails;
-  });
+  leaseSec: number,
+): Promise<LeasedMail | undefined> {
+  return inTransaction(
+    async (transaction) => {
+      const mail: LeasedMail | undefined = await transaction('outbox')
+        .where({ state: 'waiting' })
+        .where('next_attempt_at', '<=', now)
+        .where((query) => query.whereNull('leased_until').orWhere('leased_until', '<', now))
+        .orderBy(['next_attempt_at', 'id'])
+        .forUpdate()
+        .skipLocked()
+        .first({
+          id: 'id',
+          messageId: 'message_id',
+          kind: 'kind',
+          recipient: 'recipient',
+          subject: 'subject',
+          text: 'text_body',
+          html: 'html_body',
+          complaintReplyId: 'complaint_reply_id',
+          attempts: 'attempts',
+          createdAt: 'created_at',
+        });
+      if (!mail) return undefined;
+      await transaction('outbox')
+        .where({ id: mail.id })
+        .update({ leased_until: new Date(now.getTime() + leaseSec * 1000), lease_holder: holder });
+      return mail;
+    },
+    // Locks no gap that new messages are put into.
+    { isolationLevel: 'read committed' },
+  );
 }
 
 /** Notes that a message was handed over. */

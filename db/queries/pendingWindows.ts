@@ -36,6 +36,18 @@ export async function insertPendingWindows(
   }
 }
 
+/** Windows of a station that wait and end after an instant (epoch seconds), each once. */
+export async function selectOpenWindows(
+  stationId: number,
+  endsAfterSec: number,
+  conn: Connection,
+): Promise<NewPendingWindow[]> {
+  return conn('pending_windows')
+    .where({ station_id: stationId })
+    .where('ends_at', '>', endsAfterSec)
+    .distinct({ limitId: 'limit_id', stationId: 'station_id', startSec: 'starts_at', endSec: 'ends_at' });
+}
+
 /** Ids of windows that ended at or before `untilSec`, the longest ended first, at most `limit`. */
 export async function findDueWindowIds(
   untilSec: number,

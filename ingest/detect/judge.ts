@@ -1,6 +1,6 @@
 import type { Connection } from '#db/queries/connection';
 import { inTransaction } from '#db/queries/connection';
-import { listLimitVersions, type LimitVersion } from '#db/queries/limits';
+import { listLimitVersions, lockLimits } from '#db/queries/limits';
 import { listSettings, pickSettings, type NetworkSettings } from '#db/queries/networks';
 import {
   deletePendingWindows,
@@ -9,8 +9,11 @@ import {
   type PendingWindow,
 } from '#db/queries/pendingWindows';
 import { findStationById, type StationRow } from '#db/queries/stations';
-import { windowsOf } from '#lib/services/limits/windows';
-import { isExceeded, measure } from './measure';
+import type { StandingOutRange } from '#lib/acoustics/standingOut';
+import { groupBy } from '#lib/services/groupBy';
+import { byLimit } from '#lib/services/limits/force';
+import { standingOutOf } from './standingOutOf';
+import { verdictOn } from './verdictOn';
 import { recordVerdict, type JudgedChange, type Verdict } from './verdicts';
 import { WindowLevels } from './windowLevels';
 
@@ -23,6 +26,8 @@ export interface TellingChange extends JudgedChange {
   verdict: Verdict;
   station: StationRow;
   settings: NetworkSettings;
+  /** What stands out of the window's mean spectrum, most telling first. */
+  standingOut: StandingOutRange[];
 }
 
 /** Puts the e-mails about some changes into the outbox, in the transaction of the changes. */
@@ -30,22 +35,32 @@ export type TellChanges = (changes: TellingChange[], now: Date, transaction: Con
 
 /**
  * Judges windows that have closed, a bounded number in one transaction: exceedances, e-mails and the deletion of exactly the
- * windows read are durable together or not at all. Safe to run twice at once.
+ * windows read are durable together or not at all. Safe to run twice at once: the locks on windows and limits let one judge a
+ * window at a time, and read committed lets the next see what the one before found.
  * @returns how many windows were settled; 0 when none is due.
  */
 export async function judgeDueWindows(now: Date, tell: TellChanges): Promise<number> {
-  const ids = await findDueWindowIds(Math.floor(now.getTime() / 1000) - SETTLE_SEC, WINDOWS_A_TRANSACTION);
+  const ids = await findDueWindowIds(closedBy(now), WINDOWS_A_TRANSACTION);
   if (ids.length === 0) return 0;
-  return inTransaction(async (transaction) => {
-    const windows = await lockPendingWindows(ids, transaction);
-    const changes = await judgeAll(windows, now, transaction);
-    if (changes.length > 0) await tell(changes, now, transaction);
-    await deletePendingWindows(
-      windows.map(({ id }) => id),
-      transaction,
-    );
-    return windows.length;
-  });
+  return inTransaction(
+    async (transaction) => {
+      const windows = await lockPendingWindows(ids, transaction);
+      await lockLimits(new Set(windows.map(({ limitId }) => limitId)), transaction);
+      const changes = await judgeAll(windows, now, transaction);
+      if (changes.length > 0) await tell(changes, now, transaction);
+      await deletePendingWindows(
+        windows.map(({ id }) => id),
+        transaction,
+      );
+      return windows.length;
+    },
+    { isolationLevel: 'read committed' },
+  );
+}
+
+/** Windows that end by this instant (epoch seconds) have closed and settled. */
+function closedBy(now: Date): number {
+  return Math.floor(now.getTime() / 1000) - SETTLE_SEC;
 }
 
 async function judgeAll(
@@ -54,61 +69,24 @@ async function judgeAll(
   transaction: Connection,
 ): Promise<TellingChange[]> {
   const changes: TellingChange[] = [];
+  const closedBySec = closedBy(now);
   for (const [stationId, ofStation] of groupBy(distinct(windows), ({ stationId }) => stationId)) {
     const station = await findStationById(stationId, transaction);
     if (!station) continue;
     const timeline = await listSettings(station.networkId, transaction);
-    const versions = await listLimitVersions(station.networkId, transaction);
+    const limits = byLimit(await listLimitVersions(station.networkId, transaction));
     const levels = new WindowLevels({ station, timeline, validity: 'rules' }, transaction);
     for (const window of ofStation.sort((a, b) => a.startSec - b.startSec)) {
-      const version = versionInForce(versions, window, timeline);
-      if (!version) continue;
       const settings = pickSettings(timeline, window.startSec);
-      const verdict = await verdictOf(window, version, settings, levels);
-      const change = await recordVerdict(verdict, now, transaction);
-      if (change) changes.push({ ...change, verdict, station, settings });
+      const ofLimit = limits.get(window.limitId) ?? [];
+      const verdict = await verdictOn(window, { ofLimit, timeline, levels, closedBySec }, transaction);
+      const change = verdict && (await recordVerdict(verdict, now, transaction));
+      if (!change) continue;
+      const spectrum = await levels.of({ fromSec: verdict.startSec, toSec: verdict.endSec });
+      changes.push({ ...change, verdict, station, settings, standingOut: standingOutOf(spectrum) });
     }
   }
   return changes;
-}
-
-/** The version that a window is judged by: the latest that was in force when it began, if the window is one of its own. */
-function versionInForce(
-  versions: readonly LimitVersion[],
-  window: PendingWindow,
-  timeline: NetworkSettings[],
-): LimitVersion | undefined {
-  const version = versions
-    .filter(
-      (candidate) => candidate.limitId === window.limitId && candidate.effectiveFromSec <= window.startSec,
-    )
-    .at(-1);
-  if (!version || (version.stationIds !== null && !version.stationIds.includes(window.stationId)))
-    return undefined;
-  const own = windowsOf(version, window.startSec, window.startSec + 1, timeline);
-  return own.some(({ startSec, endSec }) => startSec === window.startSec && endSec === window.endSec)
-    ? version
-    : undefined;
-}
-
-async function verdictOf(
-  { stationId, startSec, endSec }: PendingWindow,
-  version: LimitVersion,
-  settings: NetworkSettings,
-  levels: WindowLevels,
-): Promise<Verdict> {
-  const { levelDb, validSec } = measure(version, await levels.of({ fromSec: startSec, toSec: endSec }));
-  const coverage = validSec / (endSec - startSec);
-  const hasCoverage = coverage >= (version.minimumCoverage ?? settings.minimumCoverage) - 1e-9;
-  return {
-    version,
-    stationId,
-    startSec,
-    endSec,
-    levelDb,
-    coverage,
-    isExceeded: isExceeded(version, levelDb, hasCoverage),
-  };
 }
 
 function distinct(windows: PendingWindow[]): PendingWindow[] {
@@ -117,10 +95,4 @@ function distinct(windows: PendingWindow[]): PendingWindow[] {
       windows.map((window) => [`${window.limitId}:${window.stationId}:${window.startSec}`, window]),
     ).values(),
   ];
-}
-
-function groupBy<T, K>(items: T[], keyOf: (item: T) => K): Map<K, T[]> {
-  const groups = new Map<K, T[]>();
-  for (const item of items) groups.set(keyOf(item), [...(groups.get(keyOf(item)) ?? []), item]);
-  return groups;
 }

@@ -1,4 +1,5 @@
 import type { LimitVersion } from '#db/queries/limits';
+import type { NetworkSettings } from '#db/queries/networks';
 import { thirdsOfOctave } from '#lib/acoustics/octaves';
 import { bandSlot } from '#lib/acoustics/bands';
 import type { PeriodAccumulator } from '#lib/acoustics/periodStatistics';
@@ -35,14 +36,23 @@ export function measure({ metric, bandFraction, bandIndex }: Metric, levels: Per
 }
 
 /**
- * Whether a level exceeds a limit: strictly greater, both in whole tenths of a dB, the level rounded half up once. A mean level
- * counts only with enough coverage; a maximum that was measured is a maximum, however little else was.
+ * Whether a level is above a limit: strictly greater, both in whole tenths of a dB, the level rounded half up once. No level is
+ * above nothing.
  */
-export function isExceeded(
-  { metric, thresholdTenths }: Pick<LimitVersion, 'metric' | 'thresholdTenths'>,
+export function isAbove(
+  { thresholdTenths }: Pick<LimitVersion, 'thresholdTenths'>,
   levelDb: number | null,
-  hasCoverage: boolean,
 ): boolean {
-  if (levelDb === null || (metric !== 'LAFmax' && !hasCoverage)) return false;
-  return toTenths(levelDb) > thresholdTenths;
+  return levelDb !== null && toTenths(levelDb) > thresholdTenths;
+}
+
+/**
+ * Coverage that a window needs to be compared with a limit: the limit's own, else the network's. Null for a maximum: one that
+ * was measured is one, however little else was.
+ */
+export function minimumFor(
+  { metric, minimumCoverage }: Pick<LimitVersion, 'metric' | 'minimumCoverage'>,
+  settings: Pick<NetworkSettings, 'minimumCoverage'>,
+): number | null {
+  return metric === 'LAFmax' ? null : (minimumCoverage ?? settings.minimumCoverage);
 }

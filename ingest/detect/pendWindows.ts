@@ -1,17 +1,21 @@
 import type { Connection } from '#db/queries/connection';
+import { selectStandingWindows } from '#db/queries/judgedExceedances';
 import { listLimitVersions } from '#db/queries/limits';
 import { listSettings } from '#db/queries/networks';
-import { insertPendingWindows, type NewPendingWindow } from '#db/queries/pendingWindows';
+import { insertPendingWindows, selectOpenWindows, type NewPendingWindow } from '#db/queries/pendingWindows';
 import { findStationById } from '#db/queries/stations';
+import { byLimit, judgedWindows, LONGEST_WINDOW_SEC } from '#lib/services/limits/force';
 import { QUARTER_SEC } from '#lib/time/quarters';
-import { windowsOf } from '#lib/services/limits/windows';
 
-/** Longest window: a night of a clock change, with room. */
-const LONGEST_WINDOW_SEC = 26 * 3600;
+interface Run {
+  fromSec: number;
+  toSec: number;
+}
 
 /**
  * Has every window judged, once it has closed, that holds one of these quarter-hours of a station: of every limit in force
- * there. Belongs in the transaction that rewrote the quarter-hours.
+ * there, and of every exceedance found before, which may have lost its window. Belongs in the transaction that rewrote the
+ * quarter-hours.
  */
 export async function pendWindowsFor(
   stationId: number,
@@ -20,29 +24,49 @@ export async function pendWindowsFor(
 ): Promise<void> {
   const station = await findStationById(stationId, transaction);
   if (!station || quarterStartsSec.length === 0) return;
-  const versions = await listLimitVersions(station.networkId, transaction);
-  const covering = versions.filter(({ stationIds }) => stationIds === null || stationIds.includes(stationId));
-  if (covering.length === 0) return;
+  const limits = byLimit(await listLimitVersions(station.networkId, transaction));
+  if (limits.size === 0) return;
   const timeline = await listSettings(station.networkId, transaction);
   const pending = new Map<string, NewPendingWindow>();
+  const add = (window: NewPendingWindow) => pending.set(keyOf(window), window);
   for (const run of runsOf(quarterStartsSec)) {
-    for (const version of covering) {
-      for (const window of windowsOf(version, run.fromSec - LONGEST_WINDOW_SEC, run.toSec, timeline)) {
-        if (window.endSec <= run.fromSec || window.startSec >= run.toSec) continue;
-        pending.set(`${version.limitId}:${window.startSec}`, {
-          limitId: version.limitId,
-          stationId,
-          ...window,
-        });
+    const begun = { fromSec: run.fromSec - LONGEST_WINDOW_SEC, toSec: run.toSec };
+    for (const [limitId, ofLimit] of limits) {
+      for (const { startSec, endSec } of judgedWindows(ofLimit, stationId, begun, timeline)) {
+        if (endSec > run.fromSec) add({ limitId, stationId, startSec, endSec });
       }
     }
+    const longestSec = LONGEST_WINDOW_SEC;
+    (await selectStandingWindows(stationId, { ...run, longestSec }, transaction)).forEach(add);
   }
-  await insertPendingWindows([...pending.values()], transaction);
+  await insertPendingWindows([...(await withoutWaiting(pending, stationId, transaction))], transaction);
+}
+
+/**
+ * A window that is still open and waits already need not wait twice: nobody takes it before it has closed. A long window would
+ * otherwise gather a row with each post.
+ */
+async function withoutWaiting(
+  pending: Map<string, NewPendingWindow>,
+  stationId: number,
+  transaction: Connection,
+): Promise<Iterable<NewPendingWindow>> {
+  const nowSec = Math.floor(Date.now() / 1000);
+  if ([...pending.values()].every(({ endSec }) => endSec <= nowSec)) return pending.values();
+  for (const waiting of await selectOpenWindows(stationId, nowSec, transaction)) {
+    pending.delete(keyOf(waiting));
+  }
+  return pending.values();
+}
+
+/** A window whose end has moved is another one. */
+function keyOf({ limitId, startSec, endSec }: NewPendingWindow): string {
+  return `${limitId}:${startSec}:${endSec}`;
 }
 
 /** Runs of quarter-hours that follow one another. */
-function runsOf(quarterStartsSec: readonly number[]): { fromSec: number; toSec: number }[] {
-  const runs: { fromSec: number; toSec: number }[] = [];
+function runsOf(quarterStartsSec: readonly number[]): Run[] {
+  const runs: Run[] = [];
   for (const startSec of [...new Set(quarterStartsSec)].sort((a, b) => a - b)) {
     const last = runs.at(-1);
     if (last?.toSec === startSec) last.toSec += QUARTER_SEC;

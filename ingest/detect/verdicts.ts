@@ -1,17 +1,26 @@
-import { findJudged, insertExceedance, reviseExceedance } from '#db/queries/judgedExceedances';
 import type { Connection } from '#db/queries/connection';
+import {
+  findJudged,
+  insertExceedance,
+  updateExceedance,
+  type JudgedExceedance,
+} from '#db/queries/judgedExceedances';
 import type { LimitVersion } from '#db/queries/limits';
 import { toTenths } from '#lib/acoustics/rounding';
 
-/** What became of a window that is or was above a limit. `unchanged` needs no telling. */
+/** What became of a window that is or was above a limit. `lifted`: it no longer stands. `again`: it stands once more. */
 export type ChangeKind = 'found' | 'changed' | 'lifted' | 'again';
 
 export interface JudgedChange {
   kind: ChangeKind;
   exceedanceId: number;
+  /** 0 when it is found, one more with each change. */
+  revision: number;
   /** When it was first found. */
   detectedAt: Date;
   previousLevelDb: number | null;
+  /** The limit or its windows are others than before: not the data made the change, or not they alone. */
+  isLimitChanged: boolean;
 }
 
 export interface Verdict {
@@ -21,58 +30,84 @@ export interface Verdict {
   endSec: number;
   levelDb: number | null;
   coverage: number;
+  /** What coverage it took to be compared; null: any, or the window is lost. */
+  minimumCoverage: number | null;
   isExceeded: boolean;
+  /** The limit, or the network's periods, were changed so that there is no such window any more. */
+  isWindowLost: boolean;
 }
 
-/** Brings the window's exceedance in line with its verdict; answers what changed, or null. */
+/** Brings the window's exceedance in line with its verdict; answers what people must be told of, or null. */
 export async function recordVerdict(
   verdict: Verdict,
   now: Date,
   transaction: Connection,
 ): Promise<JudgedChange | null> {
-  const { version, levelDb, coverage, isExceeded } = verdict;
-  const window = { limitId: version.limitId, stationId: verdict.stationId, startSec: verdict.startSec };
-  const standing = await findJudged(window, transaction);
-  if (!standing) {
-    if (!isExceeded || levelDb === null) return null;
-    const { networkId, id: limitVersionId, thresholdTenths } = version;
-    const row = {
-      ...window,
-      networkId,
-      limitVersionId,
-      endSec: verdict.endSec,
-      levelDb,
-      thresholdTenths,
-      coverage,
-    };
-    const exceedanceId = await insertExceedance(row, now, transaction);
-    return { kind: 'found', exceedanceId, detectedAt: now, previousLevelDb: null };
-  }
-  const kind = changeOf(standing, verdict);
-  if (kind === null) return null;
-  const change = {
-    limitVersionId: version.id,
-    // A lifted exceedance whose data are gone keeps the level that it was found with.
-    levelDb: levelDb ?? standing.levelDb,
-    thresholdTenths: version.thresholdTenths,
-    coverage,
-    state: isExceeded ? ('standing' as const) : ('lifted' as const),
-  };
-  await reviseExceedance(standing.id, change, now, transaction);
+  const { version, stationId, startSec } = verdict;
+  const held = await findJudged({ limitId: version.limitId, stationId, startSec }, transaction);
+  return held ? revise(held, verdict, now, transaction) : find(verdict, now, transaction);
+}
+
+async function find(
+  { version, stationId, startSec, endSec, levelDb, coverage, isExceeded }: Verdict,
+  now: Date,
+  transaction: Connection,
+): Promise<JudgedChange | null> {
+  if (!isExceeded || levelDb === null) return null;
+  const { networkId, limitId, id: limitVersionId, thresholdTenths } = version;
+  const window = { limitId, stationId, startSec, endSec };
+  const exceedanceId = await insertExceedance(
+    { ...window, networkId, limitVersionId, levelDb, thresholdTenths, coverage },
+    now,
+    transaction,
+  );
   return {
-    kind,
-    exceedanceId: standing.id,
-    detectedAt: standing.detectedAt,
-    previousLevelDb: standing.levelDb,
+    kind: 'found',
+    exceedanceId,
+    revision: 0,
+    detectedAt: now,
+    previousLevelDb: null,
+    isLimitChanged: false,
   };
 }
 
-function changeOf(
-  standing: { state: 'standing' | 'lifted'; levelDb: number; thresholdTenths: number },
-  { isExceeded, levelDb, version }: Verdict,
-): ChangeKind | null {
-  if (!isExceeded) return standing.state === 'standing' ? 'lifted' : null;
-  if (standing.state === 'lifted') return 'again';
-  const isSameLevel = toTenths(levelDb ?? 0) === toTenths(standing.levelDb);
-  return isSameLevel && version.thresholdTenths === standing.thresholdTenths ? null : 'changed';
+async function revise(
+  held: JudgedExceedance,
+  verdict: Verdict,
+  now: Date,
+  transaction: Connection,
+): Promise<JudgedChange | null> {
+  const { version, levelDb, coverage, endSec, isExceeded } = verdict;
+  // What no longer stands keeps the figures that it was lifted with.
+  if (!isExceeded && held.state === 'lifted') return null;
+  const kind = changeOf(held, verdict);
+  const revision = held.revision + (kind === null ? 0 : 1);
+  const judged = {
+    limitVersionId: version.id,
+    endSec,
+    // A lifted exceedance whose data are gone keeps the level that it was found with.
+    levelDb: levelDb ?? held.levelDb,
+    thresholdTenths: version.thresholdTenths,
+    coverage,
+    state: isExceeded ? ('standing' as const) : ('lifted' as const),
+    revision,
+  };
+  await updateExceedance(held.id, judged, kind && now, transaction);
+  if (kind === null) return null;
+  return {
+    kind,
+    exceedanceId: held.id,
+    revision,
+    detectedAt: held.detectedAt,
+    previousLevelDb: held.levelDb,
+    isLimitChanged: verdict.isWindowLost || version.id !== held.limitVersionId,
+  };
+}
+
+/** Null: nothing to tell, the level is the same to a tenth of a dB. */
+function changeOf(held: JudgedExceedance, { isExceeded, levelDb, version }: Verdict): ChangeKind | null {
+  if (!isExceeded) return 'lifted';
+  if (held.state === 'lifted') return 'again';
+  const isSameLevel = toTenths(levelDb ?? 0) === toTenths(held.levelDb);
+  return isSameLevel && version.thresholdTenths === held.thresholdTenths ? null : 'changed';
 }

@@ -1,62 +1,88 @@
 import type { ChangeKind } from '#ingest/detect/verdicts';
 import type { TellingChange } from '#ingest/detect/judge';
-import { config } from '#lib/config/index';
-import { formatCoverage, formatDifferenceDb, formatLevelDb } from '#lib/format/levels';
-import { limitMetricText } from '#lib/format/limitMetric';
-import { formatPeriod, formatZone } from '#lib/format/times';
 import { toTenths } from '#lib/acoustics/rounding';
+import { config } from '#lib/config/index';
+import { formatInstantUtc } from '#lib/contracts/common';
+import { formatCoverage, formatLevelDb } from '#lib/format/levels';
+import { limitMetricText } from '#lib/format/limitMetric';
+import { standingOutWords } from '#lib/format/standingOut';
+import { formatPeriod, formatZone } from '#lib/format/times';
 
 /** What an e-mail says of one change, in words. */
 export interface ChangeWords {
   station: string;
   /** "above the limit by 2.3 dB". */
   headline: string;
+  /** Why an earlier message no longer holds: "later data changed the level"; null for what is new. */
+  because: string | null;
   /** Pairs of a name and what it is. */
   facts: [name: string, value: string][];
   exceedanceUrl: string;
   stripUrl: string;
 }
 
+/** What is shown of the station around the window. */
 const MARGIN_SEC = 3600;
+const MOST_RANGES = 2;
 
 /** Puts a change into words; times in the network's zone, which is named. */
 export function describeChange(change: TellingChange, networkSlug: string): ChangeWords {
-  const { verdict, station, settings } = change;
-  const { version, startSec, endSec, levelDb, coverage } = verdict;
-  const window = { fromSec: startSec, toSec: endSec };
-  const limitDb = formatLevelDb(version.thresholdTenths / 10);
-  const facts: [string, string][] = [
-    ['Limit', `${version.name}: ${limitMetricText(version)} above ${limitDb} dB`],
-    ['Level', levelDb === null ? 'no level' : `${formatLevelDb(levelDb)} dB`],
-    ['Period', `${formatPeriod(window, settings.timeZone)}, ${formatZone(settings.timeZone, window)}`],
-    ['Coverage', formatCoverage(coverage)],
-  ];
-  if (change.previousLevelDb !== null)
-    facts.splice(2, 0, ['Told before', `${formatLevelDb(change.previousLevelDb)} dB`]);
+  const { verdict, station, settings, kind } = change;
+  const { startSec, endSec, levelDb, version } = verdict;
   const base = `${config().origin}/n/${networkSlug}`;
-  const iso = (sec: number) => new Date(sec * 1000).toISOString().replace('.000Z', 'Z');
+  const [from, to] = [formatInstantUtc(startSec - MARGIN_SEC), formatInstantUtc(endSec + MARGIN_SEC)];
+  const window = { fromSec: startSec, toSec: endSec };
   return {
     station: `${station.code} ${station.name}`,
-    headline: headlineOf(change.kind, levelDb, version.thresholdTenths),
-    facts,
+    headline: headlineOf(kind, levelDb, version.thresholdTenths),
+    because: kind === 'found' ? null : becauseOf(change),
+    facts: [
+      [
+        'Limit',
+        `${version.name}: ${limitMetricText(version)} above ${formatLevelDb(version.thresholdTenths / 10)} dB`,
+      ],
+      ['Level', levelDb === null ? 'no level' : `${formatLevelDb(levelDb)} dB`],
+      ...toldBefore(change),
+      ['Period', `${formatPeriod(window, settings.timeZone)}, ${formatZone(settings.timeZone, window)}`],
+      ['Coverage', coverageWords(change)],
+      ...change.standingOut
+        .slice(0, MOST_RANGES)
+        .map((range): [string, string] => ['Stands out', standingOutWords(range, station.bandFraction)]),
+    ],
     exceedanceUrl: `${base}/exceedances/${change.exceedanceId}`,
-    stripUrl: `${base}/stations/${station.code}?from=${iso(startSec - MARGIN_SEC)}&to=${iso(endSec + MARGIN_SEC)}`,
+    stripUrl: `${base}/stations/${station.code}?from=${from}&to=${to}`,
   };
 }
 
 function headlineOf(kind: ChangeKind, levelDb: number | null, thresholdTenths: number): string {
-  const excess =
-    levelDb === null
-      ? ''
-      : ` by ${formatDifferenceDb((toTenths(levelDb) - thresholdTenths) / 10).replace('+', '')} dB`;
+  const excessDb = ((levelDb === null ? 0 : toTenths(levelDb)) - thresholdTenths) / 10;
+  const by = `by ${formatLevelDb(excessDb)} dB`;
   switch (kind) {
     case 'found':
-      return `above the limit${excess}`;
+      return `above the limit ${by}`;
     case 'changed':
-      return `still above the limit, now${excess}: later data changed the level`;
+      return `still above the limit, now ${by}`;
     case 'again':
-      return `above the limit again${excess}: later data or a withdrawn exclusion changed the level`;
+      return `above the limit again, ${by}`;
     case 'lifted':
-      return 'no longer above the limit: later data or an exclusion changed the level or its coverage';
+      return 'no longer above the limit';
   }
+}
+
+function becauseOf({ kind, isLimitChanged, verdict }: TellingChange): string {
+  if (verdict.isWindowLost)
+    return 'The limit, or the periods of the network, were changed: it has no such window now.';
+  if (isLimitChanged) return 'The limit was changed.';
+  if (kind === 'lifted') return 'Later data or an exclusion changed the level or its coverage.';
+  return 'Later data or an exclusion changed the level.';
+}
+
+function toldBefore({ previousLevelDb }: TellingChange): [string, string][] {
+  return previousLevelDb === null ? [] : [['Told before', `${formatLevelDb(previousLevelDb)} dB`]];
+}
+
+function coverageWords({ verdict: { coverage, minimumCoverage } }: TellingChange): string {
+  const words = formatCoverage(coverage);
+  if (minimumCoverage === null || coverage >= minimumCoverage - 1e-9) return words;
+  return `${words}, less than the ${formatCoverage(minimumCoverage)} that it takes`;
 }

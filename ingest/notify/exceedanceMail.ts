@@ -17,7 +17,7 @@ export function exceedanceMail(
   if (!first) throw new RangeError('There is nothing to tell.');
   const subject =
     changes.length === 1
-      ? `${first.station}: ${first.headline.split(':')[0]}`
+      ? `${first.station}: ${first.headline}`
       : `${networkName}: ${changes.length} windows above or no longer above a limit`;
   const closing = `You get this because your address is named in the limit: ${settingsUrl}`;
   return {
@@ -27,10 +27,11 @@ export function exceedanceMail(
   };
 }
 
-function textOf({ station, headline, facts, exceedanceUrl, stripUrl }: ChangeWords): string {
+function textOf({ station, headline, because, facts, exceedanceUrl, stripUrl }: ChangeWords): string {
   const lines = facts.map(([name, value]) => `  ${`${name}:`.padEnd(13)}${value}`);
   return [
     `${station}: ${headline}`,
+    ...(because === null ? [] : [`  ${because}`]),
     ...lines,
     `  Cause and acknowledgement: ${exceedanceUrl}`,
     `  Spectrogram: ${stripUrl}`,
@@ -38,7 +39,7 @@ function textOf({ station, headline, facts, exceedanceUrl, stripUrl }: ChangeWor
 }
 
 function htmlOf(changes: readonly ChangeWords[], closing: string): string {
-  const sections = changes.map(({ station, headline, facts, exceedanceUrl, stripUrl }) => {
+  const sections = changes.map(({ station, headline, because, facts, exceedanceUrl, stripUrl }) => {
     const rows = facts
       .map(
         ([name, value]) =>
@@ -46,7 +47,9 @@ function htmlOf(changes: readonly ChangeWords[], closing: string): string {
       )
       .join('');
     return (
-      `<h2 style="font-size:17px;margin:24px 0 6px">${escapeHtml(station)}: ${escapeHtml(headline)}</h2><table>${rows}</table>` +
+      `<h2 style="font-size:17px;margin:24px 0 6px">${escapeHtml(station)}: ${escapeHtml(headline)}</h2>` +
+      (because === null ? '' : `<p style="margin:0 0 6px">${escapeHtml(because)}</p>`) +
+      `<table>${rows}</table>` +
       `<p><a href="${escapeHtml(exceedanceUrl)}">Cause and acknowledgement</a> · <a href="${escapeHtml(stripUrl)}">Spectrogram</a></p>`
     );
   });

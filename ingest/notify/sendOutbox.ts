@@ -20,40 +20,49 @@ export interface SenderSettings {
   resolvers: Record<string, MailResolver>;
 }
 
-const MAILS_A_ROUND = 10;
-/** Longer than one attempt can take, so that no other sender takes a message that is on its way. */
-const LEASE_SEC = 120;
+/** An attempt that takes longer is broken off. */
+const ATTEMPT_SEC = 90;
+/** Longer than an attempt can take, so that no other sender takes a message that is on its way. */
+const LEASE_SEC = 150;
 const FIRST_WAIT_SEC = 60;
 const LONGEST_WAIT_SEC = 3600;
 const GIVE_UP_AFTER_SEC = 5 * 86_400;
 
 /**
- * Sends messages that are due: at least once, under a fixed Message-ID. A failure is tried again after a wait that doubles up
- * to an hour, for five days; then the message is dead and stays visible.
- * @returns how many were handed over.
+ * Sends the message that is due longest: at least once, under a fixed Message-ID. A failure is tried again after a wait that
+ * doubles up to an hour, for five days; then the message is dead and stays visible.
+ * @returns how many were tried: 1, or 0 when none is due.
  */
 export async function sendDueMail(settings: SenderSettings, now: Date): Promise<number> {
-  const mails = await leaseDueMail(settings.holder, now, { limit: MAILS_A_ROUND, leaseSec: LEASE_SEC });
-  let sent = 0;
-  for (const mail of mails) if (await sendOne(mail, settings, now)) sent += 1;
-  return sent;
+  const mail = await leaseDueMail(settings.holder, now, LEASE_SEC);
+  if (!mail) return 0;
+  await sendOne(mail, settings, now);
+  return 1;
 }
 
-async function sendOne(mail: LeasedMail, settings: SenderSettings, now: Date): Promise<boolean> {
+async function sendOne(mail: LeasedMail, settings: SenderSettings, now: Date): Promise<void> {
   const { transport, from, holder } = settings;
   try {
     const body = await bodyOf(mail, settings);
     if (!body) {
       await markMailFailed(mail.id, holder, 'There is nothing to send any more.', null, pool());
-      return false;
+      return;
     }
-    await transport.sendMail({ ...body, from, messageId: mail.messageId, date: mail.createdAt });
+    const { to, ...content } = body;
+    await transport.sendMail({
+      ...content,
+      from,
+      // One address, whatever characters it holds: never a list.
+      to: { name: '', address: to },
+      messageId: mail.messageId,
+      date: mail.createdAt,
+      signal: AbortSignal.timeout(ATTEMPT_SEC * 1000),
+    });
   } catch (error) {
     await markMailFailed(mail.id, holder, reasonOf(error, mail), nextAttemptAt(mail, now), pool());
-    return false;
+    return;
   }
   await markMailSent(mail.id, holder, pool());
-  return true;
 }
 
 /** What went wrong. Where the row names no recipient, neither does this: a mail server's words usually repeat the address. */

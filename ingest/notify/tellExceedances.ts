@@ -1,7 +1,10 @@
-import type { TellChanges, TellingChange } from '#ingest/detect/judge';
-import { findNetworkById } from '#db/queries/networks';
+import type { Connection } from '#db/queries/connection';
+import { insertExceedanceMails } from '#db/queries/exceedanceMails';
+import { findNetworkById, type NetworkRow } from '#db/queries/networks';
 import { insertMail } from '#db/queries/outbox';
+import type { TellChanges, TellingChange } from '#ingest/detect/judge';
 import { config } from '#lib/config/index';
+import { groupBy } from '#lib/services/groupBy';
 import { describeChange } from './describeChange';
 import { exceedanceMail } from './exceedanceMail';
 import { messageIdOf } from './messageId';
@@ -21,37 +24,46 @@ export const tellExceedances: TellChanges = async (changes, now, transaction) =>
     const recipients = new Set(ofNetwork.flatMap(({ verdict }) => verdict.version.recipients));
     for (const recipient of recipients) {
       const concerning = ofNetwork.filter(({ verdict }) => verdict.version.recipients.includes(recipient));
-      const words = concerning.map((change) => describeChange(change, network.slug));
-      const limitsUrl = `${config().origin}/n/${network.slug}/limits`;
-      const dedupeKey = `exceedances:${recipient}:${concerning.map(keyOf).join(',')}`;
-      const messageId = messageIdOf(dedupeKey);
-      await insertMail(
-        {
-          ...exceedanceMail(network.name, words, limitsUrl),
-          messageId,
-          dedupeKey: `exceedances:${messageId}`,
-          networkId,
-          kind: 'exceedances',
-          recipient,
-        },
-        transaction,
-      );
+      await putMail(network, recipient, concerning, transaction);
     }
   }
 };
+
+async function putMail(
+  network: NetworkRow,
+  recipient: string,
+  changes: readonly TellingChange[],
+  transaction: Connection,
+): Promise<void> {
+  const words = changes.map((change) => describeChange(change, network.slug));
+  const limitsUrl = `${config().origin}/n/${network.slug}/limits`;
+  const messageId = messageIdOf(`exceedances:${recipient}:${changes.map(keyOf).join(',')}`);
+  const mailId = await insertMail(
+    {
+      ...exceedanceMail(network.name, words, limitsUrl),
+      messageId,
+      dedupeKey: `exceedances:${messageId}`,
+      networkId: network.id,
+      kind: 'exceedances',
+      recipient,
+    },
+    transaction,
+  );
+  if (mailId !== null) {
+    await insertExceedanceMails(
+      mailId,
+      changes.map(({ exceedanceId }) => exceedanceId),
+      transaction,
+    );
+  }
+}
 
 function isWorthTelling({ kind, verdict, detectedAt }: TellingChange, now: Date): boolean {
   const toldAtSec = (kind === 'found' ? now : detectedAt).getTime() / 1000;
   return toldAtSec - verdict.endSec <= TELL_WITHIN_SEC;
 }
 
-/** Names a change and its level, so that each revision is told once. */
-function keyOf({ kind, exceedanceId, verdict }: TellingChange): string {
-  return `${exceedanceId}/${kind}/${verdict.levelDb?.toFixed(2) ?? '-'}/${verdict.coverage.toFixed(4)}`;
-}
-
-function groupBy<T, K>(items: readonly T[], key: (item: T) => K): Map<K, T[]> {
-  const groups = new Map<K, T[]>();
-  for (const item of items) groups.set(key(item), [...(groups.get(key(item)) ?? []), item]);
-  return groups;
+/** Names a revision of an exceedance, so that each is told once. */
+function keyOf({ exceedanceId, revision, detectedAt }: TellingChange): string {
+  return `${exceedanceId}/${revision}/${detectedAt.getTime()}`;
 }

@@ -11,7 +11,9 @@ export interface ToneWords {
  * "100 Hz band stands out" · "by 15.8 dB: a tone between 89 and 112 Hz". A band tells a range of frequencies (its edges), never
  * a frequency.
  */
-export function toneWords(finding: TonalFinding): ToneWords {
+export function toneWords(
+  finding: Pick<TonalFinding, 'lowerIndex' | 'upperIndex' | 'excessTenths'>,
+): ToneWords {
   const lower = bandAt(3, finding.lowerIndex);
   const upper = bandAt(3, finding.upperIndex);
   const by = `by ${(finding.excessTenths / 10).toFixed(1)} dB`;

@@ -10,17 +10,17 @@ useFreshSchema();
 
 const MINUTE_MS = 60_000;
 interface Handed {
-  to: string;
+  to: { address: string };
   messageId: string;
 }
-let handed: Handed[];
+let handed: { to: string; messageId: string }[];
 
 beforeEach(async () => {
   handed = [];
   await db()('outbox').delete();
 });
 
-function put(key: string): Promise<void> {
+async function put(key: string): Promise<void> {
   const mail = {
     messageId: messageIdOf(key),
     dedupeKey: key,
@@ -31,11 +31,11 @@ function put(key: string): Promise<void> {
     text: 'text',
     html: '<p>html</p>',
   };
-  return inTransaction((transaction) => insertMail(mail, transaction));
+  await inTransaction((transaction) => insertMail(mail, transaction));
 }
 
 function sender(holder: string, changes: Partial<SenderSettings> = {}): SenderSettings {
-  const sendMail = async (mail: Handed) => handed.push({ to: mail.to, messageId: mail.messageId });
+  const sendMail = async (mail: Handed) => handed.push({ to: mail.to.address, messageId: mail.messageId });
   return {
     transport: { sendMail } as never,
     from: 'bittern@merrow.example',
@@ -58,9 +58,10 @@ test('a message put twice for one cause is sent once', async () => {
 
 test('two senders never hand over the same message', async () => {
   for (let n = 0; n < 30; n += 1) await put(`m${n}`);
-  const rounds = Array.from({ length: 8 }, (_, n) => sendDueMail(sender(`sender-${n}`), new Date()));
-  await Promise.all(rounds);
-  while ((await sendDueMail(sender('last'), new Date())) > 0);
+  const untilNoneIsDue = async (holder: string) => {
+    while ((await sendDueMail(sender(holder), new Date())) > 0);
+  };
+  await Promise.all(['a', 'b', 'c', 'd', 'e', 'f'].map(untilNoneIsDue));
   expect(handed).toHaveLength(30);
   expect(new Set(handed.map(({ to }) => to)).size).toBe(30);
 });
@@ -91,7 +92,7 @@ test('a sender that dies between handing over and noting it repeats the message 
   const dying = sender('dying', {
     transport: {
       sendMail: async (mail: Handed) => {
-        handed.push({ to: mail.to, messageId: mail.messageId });
+        handed.push({ to: mail.to.address, messageId: mail.messageId });
         // The lease passes to nobody: what this holder notes afterwards finds no row of its own.
         await db()('outbox').update({ lease_holder: 'gone' });
       },
@@ -121,7 +122,7 @@ test('what the row does not hold is resolved by its kind; nothing to say any mor
     'complaint-reply': async (mail: { complaintReplyId: number | null }) =>
       mail.complaintReplyId === 1 ? body : null,
   };
-  expect(await sendDueMail(sender('one', { resolvers }), new Date())).toBe(1);
+  for (let round = 0; round < 2; round += 1) await sendDueMail(sender('one', { resolvers }), new Date());
   expect(handed).toEqual([{ to: 'resident@homes.example', messageId: '<kept@x>' }]);
   expect((await rows()).map(({ state }) => state)).toEqual(['sent', 'dead']);
   expect(JSON.stringify(await rows())).not.toContain('resident@homes');

@@ -1,7 +1,7 @@
-import { bandAt, bandLabel, type BandFraction } from '#lib/acoustics/bands';
-import { standingOut, type StandingOutRange } from '#lib/acoustics/standingOut';
-import { tonalThresholdTenths } from '#lib/acoustics/tonality';
+import { bandLabel, type BandFraction } from '#lib/acoustics/bands';
+import { standingOut } from '#lib/acoustics/standingOut';
 import { formatLevelDb } from '#lib/format/levels';
+import { isTone, standingOutWords } from '#lib/format/standingOut';
 import { notAssessableWords, toneWords } from '#lib/format/tones';
 import { SpectrumBars } from '../../spectrum/SpectrumBars';
 import { selectedBands, type Selection } from '../model/selection';
@@ -23,8 +23,8 @@ export function SlipSpectrum({ figures, selection, fraction }: SlipSpectrumProps
   if (levelsDb.every((level) => level === null)) return null;
   const { tonality, ranges } = standingOut({ fraction, levelsDb, bands, averagedSec: figures.validSec });
   const tones = tonality.kind === 'assessed' ? tonality.findings : [];
-  const others = ranges.filter(({ reasons }) => !isTone(reasons)).slice(0, MOST_RANGES);
-  const held = [...ranges.filter(({ reasons }) => isTone(reasons)), ...others];
+  const others = ranges.filter((range) => !isTone(range)).slice(0, MOST_RANGES);
+  const held = [...ranges.filter(isTone), ...others];
   const isStandingOut = (index: number) =>
     held.some(({ lowerIndex, upperIndex }) => lowerIndex <= index && index <= upperIndex);
   const marked = new Set(selection.bands ? selectedBands(selection, bands).map(({ index }) => index) : []);
@@ -54,7 +54,7 @@ export function SlipSpectrum({ figures, selection, fraction }: SlipSpectrumProps
       })}
       {others.map((range) => (
         <p key={range.lowerIndex} className="mt-2 text-small">
-          {rangeWords(range, fraction)}
+          {standingOutWords(range, fraction)}.
         </p>
       ))}
       {tonality.kind === 'assessed' && held.length === 0 && (
@@ -62,21 +62,6 @@ export function SlipSpectrum({ figures, selection, fraction }: SlipSpectrumProps
       )}
     </div>
   );
-}
-
-function isTone(reasons: StandingOutRange['reasons']): boolean {
-  return reasons.includes('tone') || reasons.includes('tone-on-edge');
-}
-
-/** "100 Hz band is 12.3 dB above both neighbours; 15 dB would make it a tone." */
-function rangeWords(
-  { lowerIndex, excessOverNeighboursDb }: StandingOutRange,
-  fraction: BandFraction,
-): string {
-  const threshold = fraction === 3 ? tonalThresholdTenths(lowerIndex) : null;
-  const band = `${bandLabel(bandAt(fraction, lowerIndex))} ${fraction === 3 ? 'band' : 'octave'}`;
-  const stands = `${band} is ${formatLevelDb(excessOverNeighboursDb)} dB above both neighbours`;
-  return threshold === null ? `${stands}.` : `${stands}; ${threshold / 10} dB would make it a tone.`;
 }
 
 function loudestWords({ bands }: SlipFigures): string {

@@ -1,5 +1,6 @@
 import type { LimitVersion } from '#db/queries/limits';
 import type { NetworkSettings } from '#db/queries/networks';
+import { groupBy } from '../groupBy';
 import { windowsOf, type LimitWindow } from './windows';
 
 /** A window of a limit with the version that judges it. */
@@ -11,14 +12,8 @@ export interface JudgedWindow extends LimitWindow {
 export const LONGEST_WINDOW_SEC = 26 * 3600;
 
 /** The versions of each limit, by its id, in their order. */
-export function byLimit(versions: readonly LimitVersion[]): Map<number, LimitVersion[]> {
-  const groups = new Map<number, LimitVersion[]>();
-  for (const version of versions) {
-    const others = groups.get(version.limitId);
-    if (others) others.push(version);
-    else groups.set(version.limitId, [version]);
-  }
-  return groups;
+export function byLimit(versions: Iterable<LimitVersion>): Map<number, LimitVersion[]> {
+  return groupBy(versions, ({ limitId }) => limitId);
 }
 
 /** When a later version of the same limit takes the place of a version, epoch seconds; Infinity where none does. */
