@@ -8,8 +8,7 @@ export interface BandSet {
   indices: Int8Array;
 }
 
-// Rows of band_sets never change, so a process may remember them; a test's fresh schema empties nothing it remembers of
-// another process.
+// Rows of band_sets never change, so a process may remember them.
 const byId = new Map<number, BandSet>();
 const byBands = new Map<string, BandSet>();
 
@@ -33,6 +32,33 @@ export async function bandSetOf(fraction: BandFraction, indices: readonly number
       .first('id', 'fraction', 'band_indices');
   const found = (await find()) ?? (await add(fraction, bandIndices).then(find));
   return remember(found);
+}
+
+/**
+ * Band sets of a station's intervals that begin in `fromSec <= t < toSec`, and how many of the first `limit` intervals have
+ * each.
+ */
+export async function countBandSets(
+  stationId: number,
+  { fromSec, toSec }: { fromSec: number; toSec: number },
+  limit: number,
+  conn: Connection = pool(),
+): Promise<{ set: BandSet; count: number }[]> {
+  const first = conn('interval_levels')
+    .where({ station_id: stationId })
+    .where('starts_at', '>=', fromSec)
+    .where('starts_at', '<', toSec)
+    .orderBy('starts_at')
+    .limit(limit)
+    .select('band_set_id')
+    .as('first');
+  const rows: { id: number; count: number }[] = await conn
+    .from(first)
+    .groupBy('band_set_id')
+    .select({ id: 'band_set_id', count: conn.raw('COUNT(*)') });
+  const sets: { set: BandSet; count: number }[] = [];
+  for (const { id, count } of rows) sets.push({ set: await bandSetById(id, conn), count });
+  return sets;
 }
 
 async function add(fraction: BandFraction, bandIndices: string): Promise<void> {

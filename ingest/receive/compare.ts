@@ -1,23 +1,10 @@
 import { NO_LEVEL_CENTI_DB } from '#lib/acoustics/levelRange';
 import { FLAGS } from '#lib/acoustics/validity';
-import type { ParsedInterval } from './parseRecord';
+import type { StoredInterval } from '#db/queries/intervals';
+import type { BandLayout, ParsedInterval } from './parseRecord';
 
 /** An interval of the same start, stored or accepted earlier in the same post. */
-export interface KnownInterval {
-  durationSec: number;
-  laeqCentiDb: number;
-  lafmaxCentiDb: number | null;
-  lafminCentiDb: number | null;
-  lceqCentiDb: number | null;
-  lcpeakCentiDb: number | null;
-  bandIndices: Int8Array;
-  levelsCentiDb: Int16Array;
-  flags: number;
-  windSpeedMs: number | null;
-  windDirectionDeg: number | null;
-  temperatureC: number | null;
-  batteryV: number | null;
-}
+export type KnownInterval = Omit<StoredInterval, 'startSec' | 'bandSetId' | 'receivedAtSec'>;
 
 const OPTIONAL_FIELDS = [
   ['lafmaxCentiDb', 'LAFmax'],
@@ -36,7 +23,7 @@ const OPTIONAL_FIELDS = [
  */
 export function findDifference(
   record: ParsedInterval,
-  bandIndices: Int8Array,
+  bands: BandLayout,
   known: KnownInterval,
 ): string | null {
   if (record.durationSec !== known.durationSec) return 'seconds';
@@ -45,18 +32,15 @@ export function findDifference(
   for (const [field, name] of OPTIONAL_FIELDS) {
     if (record[field] !== null && record[field] !== known[field]) return name;
   }
-  return isSameSpectrum(record.levelsCentiDb, bandIndices, known) ? null : 'levels';
+  return isSameSpectrum(record.levelsCentiDb, bands, known) ? null : 'levels';
 }
 
-function isSameSpectrum(levelsCentiDb: Int16Array, bandIndices: Int8Array, known: KnownInterval): boolean {
-  if (bandIndices === known.bandIndices) {
-    return levelsCentiDb.every(
-      (level, at) => level === NO_LEVEL_CENTI_DB || level === known.levelsCentiDb[at],
-    );
-  }
-  return levelsCentiDb.every(
-    (level, at) =>
-      level === NO_LEVEL_CENTI_DB ||
-      level === known.levelsCentiDb[known.bandIndices.indexOf(bandIndices[at] ?? NaN)],
-  );
+function isSameSpectrum(levelsCentiDb: Int16Array, bands: BandLayout, known: KnownInterval): boolean {
+  const isSameSet = bands.indices === known.bandIndices;
+  return levelsCentiDb.every((level, at) => {
+    if (level === NO_LEVEL_CENTI_DB) return true;
+    if (bands.fraction !== known.bandFraction) return false;
+    const place = isSameSet ? at : known.bandIndices.indexOf(bands.indices[at] ?? NaN);
+    return level === known.levelsCentiDb[place];
+  });
 }

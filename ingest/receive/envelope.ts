@@ -1,10 +1,10 @@
 import { bandByNominalHz, type BandFraction } from '#lib/acoustics/bands';
-import { MOST_INTERVALS } from '#lib/contracts/intervals';
+import { intervalBatchSchema, MOST_INTERVALS } from '#lib/contracts/intervals';
 
 /** A post as far as it concerns all of its records. */
 export interface Envelope {
   /** As sent, kept beside a refused record. */
-  bands: unknown;
+  bands: number[];
   /** Absolute indices of the bands, or why no record can be read by them. */
   bandIndices: { indices: number[] } | { problem: string };
   intervals: unknown[];
@@ -23,19 +23,22 @@ export class UnreadablePost extends Error {
 
 const unreadable = (detail: string) => new UnreadablePost('unreadable', detail);
 
-/** Reads the envelope of a post. @throws {UnreadablePost} */
+/** Reads the envelope of a post for a station whose bands are of `fraction`. @throws {UnreadablePost} */
 export function readEnvelope(text: string, fraction: BandFraction): Envelope {
-  const { bands, intervals } = parse(text);
-  if (!Array.isArray(intervals)) throw unreadable('`intervals` is missing or is not a list.');
-  if (intervals.length === 0) throw unreadable('`intervals` is empty.');
-  if (intervals.length > MOST_INTERVALS) {
+  const body = parse(text);
+  if (Array.isArray(body.intervals) && body.intervals.length > MOST_INTERVALS) {
     throw new UnreadablePost('too-large', `A post may have at most ${MOST_INTERVALS} intervals.`);
   }
-  if (!Array.isArray(bands)) throw unreadable('`bands` is missing or is not a list.');
+  const envelope = intervalBatchSchema.safeParse(body);
+  if (!envelope.success) {
+    const problems = envelope.error.issues.map(({ path, message }) => `\`${path.join('.')}\` ${message}`);
+    throw unreadable(`${problems.slice(0, 3).join('; ')}.`);
+  }
+  const { bands, intervals } = envelope.data;
   return { bands, intervals, bandIndices: indicesOf(bands, fraction) };
 }
 
-function parse(text: string): { bands?: unknown; intervals?: unknown } {
+function parse(text: string): { intervals?: unknown } {
   try {
     const body: unknown = JSON.parse(text);
     if (typeof body === 'object' && body !== null && !Array.isArray(body)) return body;
@@ -45,16 +48,12 @@ function parse(text: string): { bands?: unknown; intervals?: unknown } {
   throw unreadable('The body is not a JSON object.');
 }
 
-function indicesOf(bands: unknown[], fraction: BandFraction): Envelope['bandIndices'] {
+function indicesOf(bands: number[], fraction: BandFraction): Envelope['bandIndices'] {
   const kind = fraction === 3 ? 'one-third-octave' : 'octave';
   const indices: number[] = [];
   for (const hz of bands) {
-    const band = typeof hz === 'number' ? bandByNominalHz(fraction, hz) : undefined;
-    if (!band) {
-      return {
-        problem: `${JSON.stringify(hz)?.slice(0, 40)} is not a nominal ${kind} frequency, which this station has.`,
-      };
-    }
+    const band = bandByNominalHz(fraction, hz);
+    if (!band) return { problem: `${hz} is not a nominal ${kind} frequency, which this station has.` };
     if (band.index <= (indices.at(-1) ?? -Infinity)) return { problem: 'Bands must ascend.' };
     indices.push(band.index);
   }

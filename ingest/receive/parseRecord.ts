@@ -76,16 +76,15 @@ function startOf(fields: Fields): number {
   const startSec = typeof start === 'string' ? parseInstant(start) : null;
   if (startSec === null) throw new Refusal('malformed', '`start` is missing or is not an RFC 3339 time.');
   if (!Number.isInteger(startSec)) throw new Refusal('malformed', '`start` must be a whole second.');
-  if (startSec < 0 || startSec > 4_294_967_295)
-    throw new Refusal('out-of-range', '`start` is before 1970 or after 2106.');
+  if (startSec < 0) throw new Refusal('out-of-range', '`start` is before 1970.');
   return startSec;
 }
 
 function durationOf({ seconds }: Fields): number {
-  if (typeof seconds !== 'number' || !Number.isInteger(seconds)) {
-    throw new Refusal('malformed', '`seconds` is missing or is not a whole number.');
+  const [shortest, longest] = BOUNDS.seconds;
+  if (typeof seconds !== 'number' || !Number.isInteger(seconds) || seconds < shortest || seconds > longest) {
+    throw new Refusal('malformed', `\`seconds\` must be a whole number from ${shortest} to ${longest}.`);
   }
-  requireWithin('seconds', seconds, BOUNDS.seconds);
   return seconds;
 }
 
@@ -123,6 +122,7 @@ function computedLaeq(levelsCentiDb: Int16Array, bands: BandLayout): number {
       '`LAeq` is missing, and the bands do not cover the range that it could be computed from.',
     );
   }
+  requireWithin('LAeq computed from the bands', laeqDb, BOUNDS.level);
   return toCentiDb(laeqDb);
 }
 
@@ -131,12 +131,13 @@ function flagsOf({ flags }: Fields): number | null {
   if (!Array.isArray(flags)) throw new Refusal('malformed', '`flags` is not a list.');
   const unknown = flags.find((flag) => typeof flag !== 'string' || !isFlagName(flag));
   if (unknown !== undefined) {
-    throw new Refusal(
-      'malformed',
-      `${JSON.stringify(unknown).slice(0, 40)} is not a flag that Bittern knows.`,
-    );
+    throw new Refusal('malformed', `${shown(unknown)} is not a flag that Bittern knows.`);
   }
   return flagMask(flags as FlagName[]);
+}
+
+function shown(value: unknown): string {
+  return typeof value === 'string' ? JSON.stringify(value.slice(0, 40)) : 'What is not text';
 }
 
 function directionOf(fields: Fields): number | null {
@@ -163,7 +164,7 @@ function numberOf(fields: Fields, name: string): number | null {
 
 function requireWithin(name: string, value: number, [lowest, highest]: readonly [number, number]): void {
   if (value < lowest || value > highest) {
-    throw new Refusal('out-of-range', `\`${name}\` is ${value}, outside ${lowest} to ${highest}.`);
+    throw new Refusal('out-of-range', `${name} is ${value}, outside ${lowest} to ${highest}.`);
   }
 }
 

@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { FLAG_NAMES, INVALIDITY_REASONS } from '#lib/acoustics/validity';
+import { parseInstant } from './common';
 import { registerRoute } from './registry';
 
 export const MOST_INTERVALS = 10_000;
@@ -22,32 +23,44 @@ const optional = (bounds: readonly [number, number]) => number(bounds).nullable(
 export const postedIntervalSchema = z.object({
   start: z.string().describe('RFC 3339, whole seconds, any offset'),
   seconds: z.number().int().min(BOUNDS.seconds[0]).max(BOUNDS.seconds[1]),
-  LAeq: number(BOUNDS.level)
-    .optional()
-    .describe('May be left out only where thirds cover 50 Hz–8 kHz or octaves 63 Hz–8 kHz, none null'),
+  LAeq: optional(BOUNDS.level).describe(
+    'May be left out only where thirds cover 50 Hz–8 kHz or octaves 63 Hz–8 kHz, none null',
+  ),
   LAFmax: optional(BOUNDS.level),
   LAFmin: optional(BOUNDS.level),
   LCeq: optional(BOUNDS.level),
   LCpeak: optional(BOUNDS.level),
   levels: z
     .array(number(BOUNDS.level).nullable())
+    .nullable()
     .optional()
     .describe('Unweighted band Leq in the order of `bands`; null where the monitor has none'),
-  flags: z.array(z.enum(FLAG_NAMES)).optional(),
+  flags: z.array(z.enum(FLAG_NAMES)).nullable().optional(),
   windSpeed: optional(BOUNDS.windSpeed).describe('m/s'),
   windDirection: optional(BOUNDS.windDirection).describe('degrees from'),
   temperature: optional(BOUNDS.temperature).describe('°C'),
   battery: optional(BOUNDS.battery).describe('V'),
 });
 
-/** What a monitor posts. */
+const MOST_BANDS = 33;
+
+/** What a monitor posts, as far as it concerns all of its records: each of those is checked by itself. */
 export const intervalBatchSchema = z.object({
   bands: z
-    .array(z.number())
-    .max(33)
+    .array(z.number('must be a number'), 'must be a list of frequencies')
+    .max(MOST_BANDS, `must have at most ${MOST_BANDS} frequencies`)
+    .default([])
     .describe('Nominal mid-band frequencies, Hz, ascending, all octave or all one-third-octave'),
-  sentAt: z.string().optional().describe('The monitor’s clock when it sends'),
-  intervals: z.array(z.unknown()).min(1).max(MOST_INTERVALS),
+  sentAt: z
+    .string('must be an RFC 3339 time')
+    .refine((text) => parseInstant(text) !== null, 'must be an RFC 3339 time')
+    .nullable()
+    .optional()
+    .describe('The monitor’s clock when it sends'),
+  intervals: z
+    .array(z.unknown(), 'must be a list')
+    .min(1, 'must not be empty')
+    .max(MOST_INTERVALS, `must have at most ${MOST_INTERVALS} records`),
 });
 
 /** Why a record was refused. */
@@ -70,7 +83,7 @@ export const receiptSchema = z.object({
       index: z.number().int().describe('Place in `intervals`'),
       code: z.enum(REFUSAL_CODES),
       detail: z.string(),
-      quarantined: z.boolean().describe('Kept for the operator'),
+      quarantined: z.boolean().describe('Kept for the operator; only one of unheard-of length is not'),
     }),
   ),
   serverTime: z.string(),
@@ -102,13 +115,13 @@ export const storedIntervalSchema = z.object({
   windDirection: level,
   temperature: level,
   battery: level,
-  leftOut: z
+  validity: z
     .array(z.enum(INVALIDITY_REASONS))
-    .describe('Why it does not count in statistics; empty when it does'),
+    .describe('Reasons for which it does not count in statistics; empty when it counts'),
 });
 
 export const intervalListSchema = z.object({
-  bands: z.array(z.number()),
+  bands: z.array(z.number()).describe('Nominal frequencies, Hz, of the page’s levels'),
   items: z.array(storedIntervalSchema),
   next: z.string().nullable(),
 });
@@ -131,7 +144,9 @@ registerRoute({
     body: {
       content: {
         'application/json': {
-          schema: intervalBatchSchema.extend({ intervals: z.array(postedIntervalSchema) }),
+          schema: intervalBatchSchema.extend({
+            intervals: z.array(postedIntervalSchema).min(1).max(MOST_INTERVALS),
+          }),
         },
       },
     },

@@ -1,7 +1,6 @@
 import type { StationRow } from '#db/queries/stations';
 import { formatInstantUtc } from '#lib/contracts/common';
-import { intervalsCsv, TooManyIntervals } from '#lib/services/intervals/csv';
-import { MixedBandFractions } from '#lib/services/intervals/list';
+import { intervalsCsv, NotOneFile } from '#lib/services/intervals/csv';
 import type { Period } from './parse';
 import { badRequest } from './problem';
 import { csv } from './respond';
@@ -20,7 +19,6 @@ export async function intervalsCsvResponse(station: StationRow, period: Period):
       `${station.code}_${day(period.fromSec)}_${day(period.toSec)}.csv`,
     );
   } catch (error) {
-    const isTooMuch = error instanceof TooManyIntervals || error instanceof MixedBandFractions;
-    throw isTooMuch ? badRequest(error.message) : error;
+    throw error instanceof NotOneFile ? badRequest(error.message) : error;
   }
 }

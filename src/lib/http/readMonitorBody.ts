@@ -1,4 +1,5 @@
 import { Readable } from 'node:stream';
+import { pipeline } from 'node:stream/promises';
 import type { ReadableStream } from 'node:stream/web';
 import { createGunzip } from 'node:zlib';
 import { MOST_BODY_BYTES } from '#lib/contracts/intervals';
@@ -13,29 +14,25 @@ export async function readMonitorBody(request: Request): Promise<string> {
   requireJson(request);
   const isGzip = requireKnownEncoding(request) === 'gzip';
   if (!request.body) return '';
-  const packed = Readable.fromWeb(request.body as ReadableStream);
-  const plain = isGzip ? packed.pipe(createGunzip()) : packed;
-  packed.once('error', (error) => plain.destroy(error));
+  const sent = Readable.fromWeb(request.body as ReadableStream<Uint8Array>);
+  const chunks: Uint8Array[] = [];
+  const collect = async (source: AsyncIterable<Uint8Array>) => {
+    for await (const chunk of source) chunks.push(chunk);
+  };
   try {
-    return await readUpToLimit(plain);
+    if (isGzip) await pipeline(sent, upToLimit, createGunzip(), upToLimit, collect);
+    else await pipeline(sent, upToLimit, collect);
   } catch (error) {
-    if (error instanceof Problem || !isGzip) throw error;
-    throw new Problem(
-      422,
-      'unreadable',
-      'No intervals could be read',
-      'The gzip data are broken or cut short.',
-    );
-  } finally {
-    packed.destroy();
-    plain.destroy();
+    throw isBrokenGzip(error)
+      ? new Problem(422, 'unreadable', 'No intervals could be read', 'The gzip data are broken or cut short.')
+      : error;
   }
+  return Buffer.concat(chunks).toString('utf8');
 }
 
-async function readUpToLimit(stream: AsyncIterable<Buffer>): Promise<string> {
-  const chunks: Buffer[] = [];
+async function* upToLimit(source: AsyncIterable<Uint8Array>): AsyncGenerator<Uint8Array> {
   let bytes = 0;
-  for await (const chunk of stream) {
+  for await (const chunk of source) {
     bytes += chunk.length;
     if (bytes > MOST_BODY_BYTES) {
       throw new Problem(
@@ -45,9 +42,12 @@ async function readUpToLimit(stream: AsyncIterable<Buffer>): Promise<string> {
         'A post may have at most 8 MiB unpacked; send smaller batches.',
       );
     }
-    chunks.push(chunk);
+    yield chunk;
   }
-  return Buffer.concat(chunks, bytes).toString('utf8');
+}
+
+function isBrokenGzip(error: unknown): boolean {
+  return /^Z_/.test((error as { code?: string }).code ?? '');
 }
 
 function requireJson(request: Request): void {

@@ -37,7 +37,7 @@ async function tablesAfter(posts: unknown[][]) {
     .distinct()
     .orderBy('quarter_starts_at')
     .pluck('quarter_starts_at');
-  return { rows: rows.map(({ station_id: _, ...row }) => row), quarters };
+  return { rows: rows.map((row) => ({ ...row, station_id: 0 })), quarters };
 }
 
 test('any order, split or repetition of posts gives identical tables', async () => {

@@ -192,7 +192,10 @@ test.each([
   ['a list', '[]', 422],
   ['no intervals', '{"bands":[25]}', 422],
   ['empty intervals', '{"bands":[25],"intervals":[]}', 422],
-  ['no bands', '{"intervals":[{}]}', 422],
+  ['bands that are no list', '{"bands":"25","intervals":[{}]}', 422],
+  ['bands that are no numbers', '{"bands":["25"],"intervals":[{}]}', 422],
+  ['more bands than there are', JSON.stringify({ bands: Array(34).fill(25), intervals: [{}] }), 422],
+  ['a time of sending that is none', '{"bands":[25],"sentAt":"noon","intervals":[{}]}', 422],
   ['an empty body', '', 422],
   ['too many', JSON.stringify({ bands: [25], intervals: Array.from({ length: 10_001 }, () => 0) }), 413],
 ])('%s is answered with a clear problem', async (_, body, status) => {

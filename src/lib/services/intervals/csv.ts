@@ -1,51 +1,72 @@
-import { pool } from '#db/queries/connection';
+import { countBandSets } from '#db/queries/bandSets';
+import { inTransaction, type Connection } from '#db/queries/connection';
 import { selectIntervals, type StoredInterval } from '#db/queries/intervals';
 import type { StationRow } from '#db/queries/stations';
 import { flagNames } from '#lib/acoustics/validity';
 import { formatInstantUtc } from '#lib/contracts/common';
-import { bandIndicesOf, hasMixedFractions, inDb, levelsIn, nominalHzOf } from './columns';
-import { MixedBandFractions } from './list';
+import { bandColumns, inDb, type BandColumns } from './columns';
 
-/** Most intervals in one file: a month of minutes and more, a day of seconds. */
+/** Most intervals in one file: two months of minutes, a day of seconds. */
 export const MOST_CSV_INTERVALS = 100_000;
+/** Rows written between two turns of the event loop. */
+const PAGE = 5000;
 
-/** The period holds more intervals than one file may have. */
-export class TooManyIntervals extends Error {
-  constructor() {
-    super(`The period holds more than ${MOST_CSV_INTERVALS} intervals; ask for a shorter one.`);
-    this.name = 'TooManyIntervals';
-  }
+/** A period cannot be one file; the message says why. */
+export class NotOneFile extends Error {
+  override readonly name = 'NotOneFile';
 }
 
 const LEADING = ['start', 'seconds', 'LAeq', 'LAFmax', 'LAFmin', 'LCeq', 'LCpeak'];
 const TRAILING = ['flags', 'windSpeed', 'windDirection', 'temperature', 'battery'];
 
-/**
- * Intervals that begin in `fromSec <= t < toSec` as CSV (RFC 4180) in the contract's columns. The same file uploaded again is
- * all known.
- * @throws {MixedBandFractions | TooManyIntervals}
- */
-export async function intervalsCsv(
-  station: StationRow,
-  period: { fromSec: number; toSec: number },
-): Promise<string> {
-  const overlapping = await selectIntervals(
-    station.id,
-    period.fromSec,
-    period.toSec,
-    pool(),
-    MOST_CSV_INTERVALS + 2,
-  );
-  const intervals = overlapping.filter(({ startSec }) => startSec >= period.fromSec);
-  if (intervals.length > MOST_CSV_INTERVALS) throw new TooManyIntervals();
-  if (hasMixedFractions(intervals)) throw new MixedBandFractions();
-  const indices = bandIndicesOf(intervals);
-  const header = [...LEADING, ...nominalHzOf(intervals, indices), ...TRAILING].join(',');
-  const lines = intervals.map((interval) => lineOf(interval, indices));
-  return [header, ...lines, ''].join('\r\n');
+interface Period {
+  fromSec: number;
+  toSec: number;
 }
 
-function lineOf(interval: StoredInterval, indices: readonly number[]): string {
+/**
+ * Intervals that begin in `fromSec <= t < toSec` as CSV (RFC 4180) in the contract's columns, as of one moment. The same file
+ * uploaded again is all known.
+ * @throws {NotOneFile}
+ */
+export async function intervalsCsv(station: StationRow, period: Period): Promise<string> {
+  return inTransaction(async (snapshot) => {
+    const columns = await columnsOf(station, period, snapshot);
+    const lines = [[...LEADING, ...columns.nominalHz, ...TRAILING].join(',')];
+    for (let fromSec = period.fromSec; ;) {
+      const page = await selectIntervals(station.id, fromSec, period.toSec, snapshot, PAGE);
+      for (const interval of page) {
+        if (interval.startSec >= period.fromSec) lines.push(lineOf(interval, columns));
+      }
+      const last = page.at(-1);
+      if (!last || page.length < PAGE) break;
+      fromSec = last.startSec + last.durationSec;
+    }
+    return [...lines, ''].join('\r\n');
+  });
+}
+
+async function columnsOf(station: StationRow, period: Period, conn: Connection): Promise<BandColumns> {
+  const counted = await countBandSets(station.id, period, MOST_CSV_INTERVALS + 1, conn);
+  if (counted.reduce((sum, { count }) => sum + count, 0) > MOST_CSV_INTERVALS) {
+    throw new NotOneFile(
+      `The period holds more than ${MOST_CSV_INTERVALS} intervals; ask for a shorter one.`,
+    );
+  }
+  const fractions = new Set(counted.map(({ set }) => set.fraction));
+  if (fractions.size > 1) {
+    throw new NotOneFile(
+      'The period holds octave and one-third-octave intervals; ask for the two stretches apart.',
+    );
+  }
+  const [fraction = station.bandFraction] = fractions;
+  return bandColumns(
+    fraction,
+    counted.map(({ set }) => set.indices),
+  );
+}
+
+function lineOf(interval: StoredInterval, columns: BandColumns): string {
   const cells = [
     formatInstantUtc(interval.startSec),
     interval.durationSec,
@@ -54,7 +75,7 @@ function lineOf(interval: StoredInterval, indices: readonly number[]): string {
     inDb(interval.lafminCentiDb),
     inDb(interval.lceqCentiDb),
     inDb(interval.lcpeakCentiDb),
-    ...levelsIn(interval, indices),
+    ...columns.levelsOf(interval),
     flagNames(interval.flags).join(' '),
     interval.windSpeedMs,
     interval.windDirectionDeg,

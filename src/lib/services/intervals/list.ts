@@ -8,7 +8,7 @@ import type { IntervalList } from '#lib/contracts/intervals';
 import { rulesSpans, type Judgement } from '../levels/accumulate';
 import { judgementOf } from '../levels/intervalSums';
 import { reasonBitsOf } from '../levels/seen';
-import { bandIndicesOf, hasMixedFractions, inDb, levelsIn, nominalHzOf } from './columns';
+import { bandColumns, inDb, type BandColumns } from './columns';
 
 export interface IntervalPage {
   list: Omit<IntervalList, 'next'>;
@@ -16,43 +16,35 @@ export interface IntervalPage {
   nextStartSec: number | null;
 }
 
-/** A period mixes octaves and thirds. */
-export class MixedBandFractions extends Error {
-  constructor() {
-    super('The period holds octave and one-third-octave intervals; ask for the two stretches apart.');
-    this.name = 'MixedBandFractions';
-  }
-}
-
 /**
- * Intervals of a station that begin in `fromSec <= t < toSec`, as stored, at most `limit`, with why each does not count.
- * @throws {MixedBandFractions}
+ * Intervals of a station that begin in `fromSec <= t < toSec`, as stored, at most `limit`, with why each does not count. A page
+ * ends where octaves follow on thirds, so that one list of bands names the levels of all its intervals.
  */
 export async function listIntervals(
   station: StationRow,
   period: { fromSec: number; toSec: number },
   limit: number,
 ): Promise<IntervalPage> {
+  // One more than the page for where the next begins, one for an interval that begins before the period.
   const overlapping = await selectIntervals(station.id, period.fromSec, period.toSec, pool(), limit + 2);
   const beginning = overlapping.filter(({ startSec }) => startSec >= period.fromSec);
-  const page = beginning.slice(0, limit);
-  if (hasMixedFractions(page)) throw new MixedBandFractions();
+  const fraction = beginning[0]?.bandFraction ?? station.bandFraction;
+  const otherAt = beginning.findIndex(({ bandFraction }) => bandFraction !== fraction);
+  const page = beginning.slice(0, otherAt < 0 ? limit : Math.min(otherAt, limit));
+  const columns = bandColumns(
+    fraction,
+    page.map(({ bandIndices }) => bandIndices),
+  );
   const timeline = await listSettings(station.networkId);
   const judgement = await judgementOf({ station, timeline, validity: 'rules' }, period, pool());
-  const indices = bandIndicesOf(page);
   return {
-    list: {
-      bands: nominalHzOf(page, indices),
-      items: page.map((interval) => itemOf(interval, indices, judgement)),
-    },
-    nextStartSec: beginning[limit]?.startSec ?? null,
+    list: { bands: columns.nominalHz, items: page.map((interval) => itemOf(interval, columns, judgement)) },
+    nextStartSec: beginning[page.length]?.startSec ?? null,
   };
 }
 
-function itemOf(interval: StoredInterval, indices: readonly number[], judgement: Judgement) {
+function itemOf(interval: StoredInterval, columns: BandColumns, judgement: Judgement) {
   const { startSec, durationSec, flags } = interval;
-  const [span] = rulesSpans(startSec, startSec + durationSec, judgement.timeline);
-  const reasonBits = span ? reasonBitsOf(interval, span.rules, judgement) : 0;
   return {
     start: formatInstantUtc(startSec),
     seconds: durationSec,
@@ -62,12 +54,20 @@ function itemOf(interval: StoredInterval, indices: readonly number[], judgement:
     LAFmin: inDb(interval.lafminCentiDb),
     LCeq: inDb(interval.lceqCentiDb),
     LCpeak: inDb(interval.lcpeakCentiDb),
-    levels: levelsIn(interval, indices),
+    levels: columns.levelsOf(interval),
     flags: flagNames(flags),
     windSpeed: interval.windSpeedMs,
     windDirection: interval.windDirectionDeg,
     temperature: interval.temperatureC,
     battery: interval.batteryV,
-    leftOut: INVALIDITY_REASONS.filter((_, bit) => (reasonBits & (1 << bit)) !== 0),
+    validity: reasonsOf(interval, judgement),
   };
+}
+
+/** Why an interval does not count under the rules at its start. */
+function reasonsOf(interval: StoredInterval, judgement: Judgement) {
+  const { startSec, durationSec } = interval;
+  const [span] = rulesSpans(startSec, startSec + durationSec, judgement.timeline);
+  const reasonBits = span ? reasonBitsOf(interval, span.rules, judgement) : 0;
+  return INVALIDITY_REASONS.filter((_, bit) => (reasonBits & (1 << bit)) !== 0);
 }

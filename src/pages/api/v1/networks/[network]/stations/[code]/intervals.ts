@@ -3,10 +3,9 @@ import { ALL_ROLES } from '#lib/auth/roles';
 import { MOST_INTERVALS } from '#lib/contracts/intervals';
 import { intervalsCsvResponse, wantsCsv } from '#lib/http/intervalsCsv';
 import { makeCursor, parseCount, parseCursor, parsePeriod } from '#lib/http/parse';
-import { badRequest } from '#lib/http/problem';
 import { json } from '#lib/http/respond';
 import { route } from '#lib/http/route';
-import { listIntervals, MixedBandFractions } from '#lib/services/intervals/list';
+import { listIntervals } from '#lib/services/intervals/list';
 
 const DEFAULT_LIMIT = 1000;
 
@@ -17,15 +16,8 @@ export const GET = route(async (context) => {
   if (wantsCsv(context.request)) return intervalsCsvResponse(station, period);
   const limit = parseCount(context.url, 'limit', { fallback: DEFAULT_LIMIT, most: MOST_INTERVALS });
   const [fromSec = period.fromSec] = parseCursor(context.url) ?? [];
-  try {
-    const page = await listIntervals(
-      station,
-      { ...period, fromSec: Math.max(fromSec, period.fromSec) },
-      limit,
-    );
-    const next = page.nextStartSec === null ? null : makeCursor([page.nextStartSec]);
-    return json({ ...page.list, next });
-  } catch (error) {
-    throw error instanceof MixedBandFractions ? badRequest(error.message) : error;
-  }
+  const rest = { ...period, fromSec: Math.max(fromSec, period.fromSec) };
+  const page = await listIntervals(station, rest, limit);
+  const next = page.nextStartSec === null ? null : makeCursor([page.nextStartSec]);
+  return json({ ...page.list, next });
 });

@@ -1,0 +1,34 @@
+import type { Knex } from 'knex';
+import { selectIntervals, type StoredInterval } from '#db/queries/intervals';
+import type { ParsedInterval } from './parseRecord';
+
+/** A wider gap between two records begins another look-up, so that a post that strays over years reads little. */
+const WIDEST_GAP_SEC = 3600;
+
+/** Stored intervals of a station that any of some records may touch, ascending. */
+export async function storedAround(
+  stationId: number,
+  intervals: readonly ParsedInterval[],
+  transaction: Knex.Transaction,
+): Promise<StoredInterval[]> {
+  const stored: StoredInterval[] = [];
+  for (const { fromSec, toSec } of stretchesOf(intervals)) {
+    const found = await selectIntervals(stationId, fromSec, toSec, transaction);
+    // The last of one stretch may reach into the next.
+    const lastStartSec = stored.at(-1)?.startSec ?? -1;
+    for (const interval of found) if (interval.startSec > lastStartSec) stored.push(interval);
+  }
+  return stored;
+}
+
+function stretchesOf(intervals: readonly ParsedInterval[]): { fromSec: number; toSec: number }[] {
+  const ascending = [...intervals].sort((a, b) => a.startSec - b.startSec);
+  const stretches: { fromSec: number; toSec: number }[] = [];
+  for (const { startSec, durationSec } of ascending) {
+    const last = stretches.at(-1);
+    const endSec = startSec + durationSec;
+    if (last && startSec - last.toSec <= WIDEST_GAP_SEC) last.toSec = Math.max(last.toSec, endSec);
+    else stretches.push({ fromSec: startSec, toSec: endSec });
+  }
+  return stretches;
+}
