@@ -1,4 +1,4 @@
-import { buildAlong, type Building } from './frontages';
+import { buildAlong, buildBehind, type Building } from './frontages';
 import { area, line, type MapFeature } from './feature';
 import { BuildingGround } from './ground';
 import { landmarks } from './landmarks';
@@ -7,6 +7,7 @@ import { mainRoads, ROAD_MINZOOM, ROAD_WIDTH_M, type Road } from './roads';
 import { box } from './shapes';
 import { townStreets, villageStreets, type FrontageName, type Street } from './townStreets';
 import { parcels } from './fields';
+import { treeFeatures } from './trees';
 import { zones } from './zones';
 
 const streets: Street[] = [...townStreets, ...villageStreets];
@@ -25,25 +26,34 @@ function frontageOf({ name, kind }: Road): FrontageName {
   return FRONTAGE_OF_ROAD[name] ?? (isCountry ? 'farms' : 'none');
 }
 
-function buildings(): Building[] {
-  const reserved = [
+function openGround(): BuildingGround {
+  const ground = new BuildingGround([
     ...zones.filter(({ isReserved }) => isReserved).map(({ ring }) => ring),
+    ...landmarks.map(({ ring }) => ring),
     MARKET_PLACE,
     ...parcels.filter(({ use }) => use === 'wood').map(({ ring }) => ring),
-  ];
-  const ground = new BuildingGround(reserved);
+  ]);
   for (const { points, kind } of [...mainRoads, ...streets]) ground.addWay(points, ROAD_WIDTH_M[kind]);
   for (const points of railWays) ground.addWay(points, 26);
+  return ground;
+}
+
+/** Houses along the town's streets first, then what stands behind them, farms where room is left, trees last. */
+function grown(): { buildings: Building[]; trees: MapFeature[] } {
+  const ground = openGround();
   const alongRoads = mainRoads.map((road): Street => ({ ...road, frontage: frontageOf(road) }));
-  return [
-    ...alongRoads.filter(({ frontage }) => frontage !== 'farms'),
-    ...streets,
-    ...alongRoads.filter(({ frontage }) => frontage === 'farms'),
-  ].flatMap((street, index) => buildAlong(street, ground, 5000 + index * 37));
+  const inTown = [...alongRoads.filter(({ frontage }) => frontage !== 'farms'), ...streets];
+  const farms = alongRoads.filter(({ frontage }) => frontage === 'farms');
+  const buildings = [
+    ...[...inTown, ...farms].flatMap((street, index) => buildAlong(street, ground, 5000 + index * 37)),
+    ...inTown.flatMap((street, index) => buildBehind(street, ground, 9000 + index * 37)),
+  ];
+  return { buildings, trees: treeFeatures(ground) };
 }
 
 /** Roads, streets, and what stands along them. */
 export function builtFeatures(): MapFeature[] {
+  const { buildings, trees } = grown();
   return [
     ...zones.map(({ kind, name, ring }) =>
       area('landuse', { minzoom: kind === 'residential' || kind === 'port' ? 8 : 11 }, [ring], {
@@ -55,7 +65,10 @@ export function builtFeatures(): MapFeature[] {
     ...[...streets, ...mainRoads].map(({ kind, name, points }) =>
       line('roads', { minzoom: ROAD_MINZOOM[kind] }, points, { class: kind, name }),
     ),
-    ...buildings().map(({ ring, kind }) => area('buildings', { minzoom: 14 }, [ring], { class: kind })),
+    ...trees,
+    ...buildings.map(({ ring, kind }) =>
+      area('buildings', { minzoom: kind === 'outhouse' ? 16 : 14 }, [ring], { class: kind }),
+    ),
     ...landmarks.map(({ ring, kind, name }) =>
       area('buildings', { minzoom: 13 }, [ring], { class: kind, ...(name === undefined ? {} : { name }) }),
     ),

@@ -88,11 +88,57 @@ const FRONTAGES: Record<Exclude<FrontageName, 'none'>, Frontage> = {
 
 export interface Building {
   ring: Point[];
-  kind: Frontage['kind'];
+  kind: Frontage['kind'] | 'outhouse';
 }
 
 function corner({ point, along, left }: Station, alongM: number, leftM: number): Point {
   return [point[0] + along[0] * alongM + left[0] * leftM, point[1] + along[1] * alongM + left[1] * leftM];
+}
+
+interface Yard {
+  /** From the edge of the street to the front of what stands behind. */
+  setbackM: Range;
+  widthM: Range;
+  depthM: Range;
+  everyM: Range;
+  kind: 'house' | 'outhouse';
+}
+
+const courts: Yard = { setbackM: [19, 34], widthM: [6, 17], depthM: [5, 12], everyM: [3, 24], kind: 'house' };
+const gardens: Yard = {
+  setbackM: [18, 27],
+  widthM: [1.8, 3.4],
+  depthM: [2, 4],
+  everyM: [7, 34],
+  kind: 'outhouse',
+};
+
+const YARDS: Partial<Record<FrontageName, Yard>> = {
+  shops: courts,
+  oldTown: courts,
+  terrace: gardens,
+  pairs: gardens,
+};
+
+/** Puts what stands behind the houses of a street: courts in the old town, garden sheds elsewhere. */
+export function buildBehind(street: Street, ground: BuildingGround, seed: number): Building[] {
+  const yard = YARDS[street.frontage];
+  if (!yard) return [];
+  const dice = new Dice(seed);
+  const buildings: Building[] = [];
+  const endM = lengthM(street.points);
+  for (const side of [1, -1] as const) {
+    for (let atM = dice.between(6, 14); atM < endM; atM += dice.between(...yard.everyM)) {
+      const place = placeAt(street.points, atM);
+      const frontM = ROAD_WIDTH_M[street.kind] / 2 + dice.between(...yard.setbackM);
+      const widthM = dice.between(...yard.widthM);
+      const depthM = dice.between(...yard.depthM);
+      const ring = place && rowHouse(place, side, { widthM, frontM, depthM });
+      if (ring && ground.claim(ring)) buildings.push({ ring, kind: yard.kind });
+      atM += widthM;
+    }
+  }
+  return buildings;
 }
 
 /** Builds up both sides of a street, house by house, wherever the ground allows. */

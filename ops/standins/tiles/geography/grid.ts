@@ -6,7 +6,11 @@ const FINE_M = 12;
 export function gridLines(fineFromM: number, fineToM: number, edgeM: number): number[] {
   const outward = (fromM: number, sign: 1 | -1) => {
     const lines: number[] = [];
-    for (let at = fromM, stepM = 13; Math.abs(at) < edgeM; stepM = Math.min(800, stepM * 1.06)) {
+    for (
+      let at = fromM, stepM = 13;
+      Math.abs(at) < edgeM;
+      stepM = Math.min(Math.max(800, Math.abs(at) / 8), stepM * 1.06)
+    ) {
       at += sign * stepM;
       lines.push(at);
     }

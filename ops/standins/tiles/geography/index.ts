@@ -1,3 +1,4 @@
+import { bridgeFeatures } from './bridges';
 import { builtFeatures } from './built';
 import { countryFeatures } from './country';
 import { seaFeatures } from './depths';
@@ -26,6 +27,7 @@ export function merrowEstuary(): MapFeature[] {
     ...quarryFeatures(),
     ...portFeatures(),
     ...railwayFeatures(),
+    ...bridgeFeatures(),
     ...nameFeatures(),
   ];
 }

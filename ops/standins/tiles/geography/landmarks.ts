@@ -72,6 +72,14 @@ const town: Landmark[] = [
   { kind: 'civic', name: 'Coastguard lookout', ring: box(3318, -1822, 3330, -1812) },
 ];
 
+/** Three long malting floors and a kiln. */
+const maltings: Landmark[] = [
+  { kind: 'industrial', name: 'The Maltings', ring: rectangle([-318, -724], 84, 15, [0.98, -0.2]) },
+  { kind: 'industrial', ring: rectangle([-316, -752], 88, 15, [0.98, -0.2]) },
+  { kind: 'industrial', ring: rectangle([-304, -780], 60, 14, [0.98, -0.2]) },
+  { kind: 'industrial', ring: rectangle([-292, -812], 18, 18, [0.98, -0.2]) },
+];
+
 const tanks: Landmark[] = [
   [-2590, -360],
   [-2555, -345],
@@ -91,6 +99,7 @@ const caravans: Landmark[] = Array.from({ length: 84 }, (_, index) => {
 export const landmarks: Landmark[] = [
   ...school,
   ...town,
+  ...maltings,
   ...tanks,
   ...caravans,
   ...portBuildings,

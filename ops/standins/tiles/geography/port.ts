@@ -50,23 +50,37 @@ interface Stack {
   kind: 'container' | 'reefer';
 }
 
-const stackColumns = [372, 568, 764, 960];
+const STACK_COLUMNS_EAST_M = [366, 560, 754, 948];
+const STACK_ROWS_NORTH_M = [-684, -722, -760, -798, -836, -874];
+
 const stacks: Stack[] = [
-  ...stackColumns
-    .flatMap((westM) =>
-      [-690, -735, -780, -825, -870].map((southM): Stack => ({
-        westM,
-        southM,
-        columns: 13,
-        rows: 11,
-        kind: 'container',
-      })),
-    )
-    .filter(({ westM, southM }) => !(westM === 960 && southM < -870)),
-  { westM: 1150, southM: -846, columns: 6, rows: 9, kind: 'reefer' },
-  { westM: 1150, southM: -800, columns: 6, rows: 9, kind: 'reefer' },
-  { westM: 1150, southM: -706, columns: 8, rows: 8, kind: 'container' },
+  ...STACK_COLUMNS_EAST_M.flatMap((westM) =>
+    STACK_ROWS_NORTH_M.map((southM): Stack => ({ westM, southM, columns: 14, rows: 9, kind: 'container' })),
+  ),
+  { westM: 1146, southM: -852, columns: 6, rows: 8, kind: 'reefer' },
+  { westM: 1146, southM: -816, columns: 6, rows: 8, kind: 'reefer' },
+  { westM: 1146, southM: -780, columns: 6, rows: 8, kind: 'reefer' },
+  { westM: 1146, southM: -722, columns: 9, rows: 9, kind: 'container' },
+  { westM: 1146, southM: -684, columns: 9, rows: 9, kind: 'container' },
 ];
+
+/** Cranes that straddle a stack, by column and row of the yard and the share of the way along it. */
+const YARD_CRANES: [column: number, row: number, share: number][] = [
+  [0, 0, 0.3],
+  [0, 3, 0.72],
+  [1, 1, 0.5],
+  [1, 4, 0.16],
+  [2, 0, 0.82],
+  [2, 2, 0.36],
+  [3, 1, 0.2],
+  [3, 5, 0.64],
+];
+
+const yardCranes: Point[][] = YARD_CRANES.map(([column, row, share]) => {
+  const x = (STACK_COLUMNS_EAST_M[column] ?? 0) + share * 14 * 12.8;
+  const y = STACK_ROWS_NORTH_M[row] ?? 0;
+  return box(x - 5, y - 3, x + 5, y + 28);
+});
 
 /** A stack seen from above: containers end to end in rows, some places empty. */
 function containersOf({ westM, southM, columns, rows, kind }: Stack, dice: Dice): MapFeature[] {
@@ -89,12 +103,25 @@ const stackOutline = ({ westM, southM, columns, rows }: Stack) =>
 
 const CRANES_EAST_M = [500, 640, 760, 905, 1080];
 
-/** A quay crane from above: its legs on the rails, its boom over the water. */
-function crane(eastM: number): MapFeature[] {
+/** A quay crane from above: its legs on the rails, the two girders of its boom over the water, its trolley and house. */
+function crane(eastM: number, trolleyNorthM: number): MapFeature[] {
   return [
     area('structures', { minzoom: 14 }, [box(eastM - 13, -613, eastM + 13, -578)], { class: 'crane-legs' }),
-    area('structures', { minzoom: 14 }, [box(eastM - 3.2, -640, eastM + 3.2, -525)], { class: 'crane' }),
-    area('structures', { minzoom: 15 }, [box(eastM - 7, -620, eastM + 7, -606)], { class: 'crane' }),
+    ...[-4, 2.6].map((sideM) =>
+      area('structures', { minzoom: 14 }, [box(eastM + sideM, -634, eastM + sideM + 1.6, -528)], {
+        class: 'crane',
+      }),
+    ),
+    ...[-634, -595, -560, -529.5].map((northM) =>
+      area('structures', { minzoom: 15 }, [box(eastM - 4, northM, eastM + 4.2, northM + 1.5)], {
+        class: 'crane',
+      }),
+    ),
+    ...[trolleyNorthM, -624].map((northM) =>
+      area('structures', { minzoom: 15 }, [box(eastM - 5, northM, eastM + 5, northM + 8)], {
+        class: 'crane',
+      }),
+    ),
   ];
 }
 
@@ -149,6 +176,11 @@ const landings: Point[][] = [
   box(-860, -442, -852, -414),
 ];
 
+/** Lighting masts of the container yard. */
+const lamps: Point[][] = [552, 746, 940, 1138].flatMap((x) =>
+  [-654, -730, -806, -882].map((y) => circle([x, y], 1.6, 8)),
+);
+
 const aprons: Point[][] = [
   box(-30, -640, 1450, -570),
   box(-190, -640, -6, -570),
@@ -160,6 +192,60 @@ const aprons: Point[][] = [
     [1450, -862],
     [1430, -862],
   ],
+];
+
+/** Roads inside the fence. */
+const yardRoads: { name: string; points: Point[] }[] = [
+  {
+    name: 'Long Quay Road',
+    points: [
+      [-150, -958],
+      [-20, -954],
+      [140, -952],
+      [340, -944],
+      [700, -936],
+      [1142, -936],
+      [1300, -920],
+      [1388, -880],
+      [1388, -720],
+      [1400, -650],
+    ],
+  },
+  {
+    name: 'Shed Road',
+    points: [
+      [236, -948],
+      [236, -650],
+      [300, -634],
+      [1340, -634],
+    ],
+  },
+  {
+    name: 'Silo Wharf',
+    points: [
+      [-160, -956],
+      [-146, -900],
+      [-146, -820],
+      [-44, -800],
+      [-44, -640],
+    ],
+  },
+  {
+    name: 'Depot Road',
+    points: [
+      [1150, -1085],
+      [980, -1100],
+      [760, -1100],
+      [480, -1098],
+      [200, -1092],
+      [140, -1130],
+      [150, -1230],
+      [480, -1230],
+      [780, -1232],
+      [1060, -1230],
+      [1186, -1236],
+    ],
+  },
 ];
 
 export function portFeatures(): MapFeature[] {
@@ -176,7 +262,7 @@ export function portFeatures(): MapFeature[] {
     ...[...pontoons, ...landings].map((ring) =>
       area('structures', { minzoom: 14 }, [ring], { class: 'pier' }),
     ),
-    ...[-582, -609].map((y) =>
+    ...[-581, -610].map((y) =>
       line(
         'structures',
         { minzoom: 14 },
@@ -187,7 +273,12 @@ export function portFeatures(): MapFeature[] {
         { class: 'crane-rail' },
       ),
     ),
-    ...CRANES_EAST_M.flatMap(crane),
+    ...CRANES_EAST_M.flatMap((eastM, index) => crane(eastM, -545 - 17 * index)),
+    ...yardCranes.map((ring) => area('structures', { minzoom: 15 }, [ring], { class: 'crane-legs' })),
+    ...lamps.map((ring) => area('structures', { minzoom: 16 }, [ring], { class: 'pier' })),
+    ...yardRoads.map(({ name, points }) =>
+      line('roads', { minzoom: 14 }, points, { class: 'service', name }),
+    ),
     ...bins.map((ring) => area('buildings', { minzoom: 14 }, [ring], { class: 'silo' })),
     line(
       'structures',

@@ -95,8 +95,8 @@ function spillOverShore(bed: Grid, land: Uint8Array): void {
 
 /** Depth below high water in metres, over the estuary and the sea around the island; little or nothing on land. */
 export function seabed(): Grid {
-  const eastM = gridLines(-2500, 3400, 70_000);
-  const northM = gridLines(-1100, 1120, 70_000);
+  const eastM = gridLines(-2500, 3400, 300_000);
+  const northM = gridLines(-1100, 1120, 300_000);
   const land = new Uint8Array(eastM.length * northM.length);
   mark(land, [mainland, ...islands], eastM, northM);
   const shoreM = distanceTo(land, eastM, northM);

@@ -17,7 +17,9 @@ export interface Zone {
     | 'pitch'
     | 'heath'
     | 'holiday'
-    | 'works';
+    | 'works'
+    | 'playground'
+    | 'scrub';
   name?: string;
   ring: Point[];
   isReserved: boolean;
@@ -238,6 +240,47 @@ const work: Zone[] = [
 
 const green: Zone[] = [
   {
+    kind: 'scrub',
+    isReserved: true,
+    ring: [
+      [-244, -1000],
+      [-205, -1000],
+      [-90, -1130],
+      [60, -1180],
+      [120, -1400],
+      [-200, -1424],
+      [-300, -1410],
+      [-318, -1180],
+    ],
+  },
+  {
+    kind: 'scrub',
+    isReserved: true,
+    ring: [
+      [1190, -1424],
+      [1500, -1330],
+      [1600, -1200],
+      [1560, -1060],
+      [1640, -1050],
+      [1820, -1080],
+      [1820, -1330],
+      [1560, -1462],
+      [1190, -1540],
+    ],
+  },
+  {
+    kind: 'industrial',
+    name: 'The Maltings',
+    isReserved: true,
+    ring: [
+      [-372, -690],
+      [-262, -712],
+      [-268, -840],
+      [-318, -852],
+      [-398, -742],
+    ],
+  },
+  {
     kind: 'school',
     name: 'Ropewalk School',
     isReserved: true,
@@ -310,6 +353,8 @@ const green: Zone[] = [
       [-2090, -1600],
     ],
   },
+  { kind: 'playground', isReserved: true, ring: box(-1360, -1000, -1262, -912) },
+  { kind: 'pitch', isReserved: true, ring: box(-1254, -1034, -1152, -960) },
   { kind: 'pitch', isReserved: true, ring: box(-2080, -580, -1975, -515) },
   { kind: 'pitch', isReserved: true, ring: box(-1945, -560, -1840, -495) },
   {

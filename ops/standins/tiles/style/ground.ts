@@ -150,6 +150,17 @@ export function landLayers(ink: Palette): LayerSpecification[] {
       paint: { 'fill-color': landuseColours(ink) },
     },
     {
+      id: 'trees',
+      type: 'fill',
+      ...from('landuse'),
+      filter: ofClass('tree', 'canopy'),
+      minzoom: 15,
+      paint: {
+        'fill-color': ink.tree,
+        'fill-opacity': ['interpolate', ['linear'], ['zoom'], 15, 0.25, 16, 0.75],
+      },
+    },
+    {
       id: 'pitches',
       type: 'fill',
       ...from('landuse'),
