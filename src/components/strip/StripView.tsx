@@ -1,4 +1,4 @@
-import { useCallback, useRef, useState } from 'react';
+import { useCallback, useMemo, useRef, useState } from 'react';
 import { type BandFraction } from '#lib/acoustics/bands';
 import { type PeriodScheme } from '#lib/acoustics/dayEveningNight';
 import { stripGeometry } from './draw/geometry';
@@ -68,7 +68,9 @@ export function StripView(props: StripProps) {
   const stepSec = layers[0]?.stepSec ?? station.intervalSec;
   const grid = { gridSec: Math.max(station.intervalSec, stepSec), bands: picture.pixels.bands };
   const [interaction, dispatch] = useInteraction(grid);
-  const selection = interaction.selection ?? wholeView(control.view);
+  const { fromSec, toSec } = control.view;
+  const whole = useMemo(() => wholeView({ fromSec, toSec }), [fromSec, toSec]);
+  const selection = interaction.selection ?? whole;
   const slip = useSlipFigures({
     stationUrl,
     selection,
@@ -79,6 +81,14 @@ export function StripView(props: StripProps) {
     intervalSec: station.intervalSec,
     nowSec,
   });
+  const summary = useMemo(() => stripSummary(station.name, picture), [station.name, picture]);
+  const { code } = station;
+  const { mayExclude, mayLogComplaints } = props;
+  const context = useMemo(
+    () => ({ slug, stationCode: code, zone, mayExclude, mayLogComplaints }),
+    [slug, code, zone, mayExclude, mayLogComplaints],
+  );
+  const clear = useCallback(() => dispatch({ type: 'select', selection: null }), [dispatch]);
   const reading = interaction.cursor && readingAt(layers, interaction.cursor, weightsCentiDb);
 
   return (
@@ -120,7 +130,7 @@ export function StripView(props: StripProps) {
             stepSec={stepSec}
             exceedances={exceedances}
             exceedancesUrl={`/n/${slug}/exceedances`}
-            summary={stripSummary(station.name, picture)}
+            summary={summary}
           />
         )}
         <Legend
@@ -135,14 +145,8 @@ export function StripView(props: StripProps) {
         isMarked={interaction.selection !== null}
         state={slip}
         fraction={display.fraction}
-        context={{
-          slug,
-          stationCode: station.code,
-          zone,
-          mayExclude: props.mayExclude,
-          mayLogComplaints: props.mayLogComplaints,
-        }}
-        onClear={() => dispatch({ type: 'select', selection: null })}
+        context={context}
+        onClear={clear}
       />
     </div>
   );

@@ -39,7 +39,7 @@ const DIRECTIONS = [
   [1, 1],
   [-1, 1],
 ] as const;
-const RINGS = [1, 1.9, 2.9];
+const RINGS = [1, 1.5, 2, 2.6, 3.3];
 
 /**
  * Places a slip for each station so that none lies on another or on another's dot. A station that finds no room is taken into

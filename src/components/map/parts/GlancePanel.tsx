@@ -21,7 +21,10 @@ interface GlancePanelProps {
 export function GlancePanel({ slug, station, zone, nowSec, onClose }: GlancePanelProps) {
   const { data, error } = useLastDay(slug, station.code);
   const panel = useRef<HTMLElement>(null);
-  useEffect(() => panel.current?.scrollIntoView({ block: 'nearest' }), []);
+  useEffect(() => {
+    // Below the map on a phone; beside it nothing moves.
+    void panel.current?.scrollIntoView({ block: 'nearest' });
+  }, []);
   const page = `/n/${slug}/stations/${encodeURIComponent(station.code)}`;
   return (
     <section ref={panel} className="slip text-table" aria-label={`${station.name} at a glance`}>

@@ -66,6 +66,7 @@ function labelLimits(
     const name = `${limit.thresholdDb} dB${limit.metric === 'LAFmax' ? ' max' : ''}, ${AVERAGING_WORDS[limit.averaging]}`;
     const labelWidth = textWidth(surface, name);
     for (const run of runs) {
+      if (run.toSec <= view.fromSec || run.fromSec >= view.toSec) continue;
       const from = Math.max(0, pxAtSec(view, width, run.fromSec));
       const roomPx = Math.min(width, pxAtSec(view, width, run.toSec)) - from;
       const label = {

@@ -27,11 +27,11 @@ export function stripGeometry(width: number): StripGeometry {
   const isNarrow = width < NARROW_PX;
   const left = isNarrow ? 50 : 58;
   const plotWidth = Math.max(80, width - left - 1);
-  const laneHeight = 15;
+  const laneHeight = 13;
   const part = (y: number, height: number): Rect => ({ x: left, y, width: plotWidth, height });
-  const spectrogram = part(0, isNarrow ? 232 : 310);
-  const marks = part(spectrogram.height, 18);
-  const trace = part(marks.y + marks.height, isNarrow ? 130 : 158);
+  const spectrogram = part(0, isNarrow ? 217 : 279);
+  const marks = part(spectrogram.height, 20);
+  const trace = part(marks.y + marks.height, isNarrow ? 130 : 140);
   const lanes = part(trace.y + trace.height + 10, LANES * laneHeight);
   const axis = part(lanes.y + lanes.height + 4, 24);
   return {

@@ -5,6 +5,7 @@ import { weightOfBandDb, type Weighting } from '#lib/acoustics/weighting';
 import { levelRampRgb } from '#lib/format/levelRamp';
 import { type StripPicture } from '../draw/drawStrip';
 import { onDevice } from '../draw/surface';
+import { type LimitLine } from '../draw/drawLimits';
 import { type StripGeometry } from '../draw/geometry';
 import { lanesOf, leftOutRuns } from '../model/lanes';
 import { colourRange, traceRange, type LevelRange } from '../model/levelAxis';
@@ -47,7 +48,7 @@ export interface PictureMade {
 
 /** What the canvas is to show, made anew only where what it is made of has changed. */
 export function usePicture(input: PictureInput): PictureMade {
-  const { view, geometry, ratio, theme, display, zone, scheme, limits, nowSec, gapWords } = input;
+  const { view, geometry, ratio, theme, display, zone, limits, nowSec, gapWords } = input;
   const { fromSec, toSec } = view;
   const fetched = useStable(input.layers);
   const layers = useMemo(
@@ -64,10 +65,7 @@ export function usePicture(input: PictureInput): PictureMade {
     [pixels.bands, display.weighting],
   );
   const range = useColourRange(layers, weightsCentiDb, display);
-  const lines = useMemo(
-    () => limits.map((limit) => ({ limit, runs: timesOfValidity(limit, { fromSec, toSec }, scheme, zone) })),
-    [limits, fromSec, toSec, scheme, zone],
-  );
+  const lines = useLimitLines(input);
   const levels = useMemo(
     () =>
       traceRange(
@@ -87,7 +85,7 @@ export function usePicture(input: PictureInput): PictureMade {
       traceRange: levels,
       lanes: lanesOf(layers, { fromSec, toSec }, nowSec),
       leftOut: leftOutRuns(layers, { fromSec, toSec }),
-      limits: lines.filter(({ runs }) => runs.length > 0),
+      limits: lines,
       gapWords,
     }),
     [
@@ -107,6 +105,21 @@ export function usePicture(input: PictureInput): PictureMade {
     ],
   );
   return { layers, weightsCentiDb, picture };
+}
+
+/** Times of validity are worked out for whole weeks about the view, so that moving it a little costs nothing. */
+const WEEK_SEC = 7 * 86_400;
+
+function useLimitLines({ limits, view, scheme, zone }: PictureInput): LimitLine[] {
+  const fromSec = Math.floor(view.fromSec / WEEK_SEC) * WEEK_SEC;
+  const toSec = Math.ceil(view.toSec / WEEK_SEC) * WEEK_SEC;
+  return useMemo(
+    () =>
+      limits
+        .map((limit) => ({ limit, runs: timesOfValidity(limit, { fromSec, toSec }, scheme, zone) }))
+        .filter(({ runs }) => runs.length > 0),
+    [limits, fromSec, toSec, scheme, zone],
+  );
 }
 
 const octavesOfColumns = new WeakMap<StripColumns, StripColumns>();

@@ -43,8 +43,9 @@ export function useSlipFigures(input: SlipInput): SlipState {
     () => estimateFigures(layers, { fromSec, toSec }, intervalSec, nowSec),
     [layers, fromSec, toSec, intervalSec, nowSec],
   );
-  const figures = statistics.data
-    ? figuresOfStatistics(statistics.data, fraction)
-    : estimate && figuresOfEstimate(estimate);
-  return { figures, usual, error: statistics.error };
+  const { data, error } = statistics;
+  return useMemo(() => {
+    const figures = data ? figuresOfStatistics(data, fraction) : estimate && figuresOfEstimate(estimate);
+    return { figures, usual, error };
+  }, [data, fraction, estimate, usual, error]);
 }

@@ -20,14 +20,16 @@ export interface TimeTick {
 const STEPS_MIN = [1, 2, 5, 10, 15, 30, 60, 120, 180, 360, 720] as const;
 const STEPS_DAYS = [1, 2, 7, 14, 28, 91] as const;
 
-/** Least room a mark's label takes, in CSS pixels. */
-const LABEL_PX = 50;
+/** Least room of a mark among marks of the clock, in CSS pixels; a date among them has the room of its neighbours. */
+const CLOCK_PX = 50;
+/** Least room of a date among dates. */
+const DATE_PX = 66;
 
 /** Marks on the hours (or minutes, or dates) of the network's own clock, as many as have room on `widthPx`. */
 export function timeTicks(view: TimeView, widthPx: number, zone: string): TimeTick[] {
-  const roomSec = (spanSec(view) * LABEL_PX) / Math.max(LABEL_PX, widthPx);
-  const stepMin = STEPS_MIN.find((minutes) => minutes * 60 >= roomSec);
-  const ticks = stepMin ? clockTicks(view, stepMin, zone) : dateTicks(view, roomSec, zone);
+  const roomSec = (labelPx: number) => (spanSec(view) * labelPx) / Math.max(labelPx, widthPx);
+  const stepMin = STEPS_MIN.find((minutes) => minutes * 60 >= roomSec(CLOCK_PX));
+  const ticks = stepMin ? clockTicks(view, stepMin, zone) : dateTicks(view, roomSec(DATE_PX), zone);
   return ticks.filter((tick) => tick.sec >= view.fromSec && tick.sec < view.toSec);
 }
 

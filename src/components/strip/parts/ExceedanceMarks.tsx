@@ -1,3 +1,4 @@
+import { memo } from 'react';
 import { formatInstantUtc } from '#lib/contracts/common';
 import { formatLevelDb } from '#lib/format/levels';
 import { type StripGeometry } from '../draw/geometry';
@@ -14,10 +15,19 @@ interface ExceedanceMarksProps {
   listUrl: string;
 }
 
+/** What a finger needs (WCAG 2.2, 2.5.8). */
+const TARGET_PX = 24;
+
 /** A triangle at each exceedance that leads to it; several close together share one that leads to the list. */
-export function ExceedanceMarks({ exceedances, view, geometry, zone, listUrl }: ExceedanceMarksProps) {
+export const ExceedanceMarks = memo(function ExceedanceMarks({
+  exceedances,
+  view,
+  geometry,
+  zone,
+  listUrl,
+}: ExceedanceMarksProps) {
   const { x, y, width, height } = geometry.marks;
-  const marks = exceedanceMarks(exceedances, (sec) => pxAtSec(view, width, sec), width, 15);
+  const marks = exceedanceMarks(exceedances, (sec) => pxAtSec(view, width, sec), width, TARGET_PX + 1);
   return marks.map((mark) => (
     <a
       key={mark.exceedances[0]?.id}
@@ -25,7 +35,12 @@ export function ExceedanceMarks({ exceedances, view, geometry, zone, listUrl }: 
       title={wordsOf(mark, zone)}
       aria-label={wordsOf(mark, zone)}
       className="absolute flex items-center justify-center text-rust"
-      style={{ left: x + mark.px - 9, top: y, width: 18, height }}
+      style={{
+        left: x + mark.px - TARGET_PX / 2,
+        top: y + (height - TARGET_PX) / 2,
+        width: TARGET_PX,
+        height: TARGET_PX,
+      }}
     >
       {mark.exceedances.length === 1 ? (
         <svg viewBox="0 0 12 10" width="11" height="9" aria-hidden="true">
@@ -41,7 +56,7 @@ export function ExceedanceMarks({ exceedances, view, geometry, zone, listUrl }: 
       )}
     </a>
   ));
-}
+});
 
 function addressOf({ exceedances }: ExceedanceMark, listUrl: string): string {
   const [first] = exceedances;

@@ -1,3 +1,4 @@
+import { memo } from 'react';
 import { levelRampRgb } from '#lib/format/levelRamp';
 import { type Weighting } from '#lib/acoustics/weighting';
 import { type Theme } from '../hooks/useTheme';
@@ -15,7 +16,7 @@ interface LegendProps {
 const STOPS = 24;
 
 /** What the colours and the lines mean. */
-export function Legend({ range, weighting, theme, stepSec }: LegendProps) {
+export const Legend = memo(function Legend({ range, weighting, theme, stepSec }: LegendProps) {
   return (
     <div className="mt-1 flex flex-wrap items-center gap-x-5 gap-y-1 text-small text-ink-soft">
       {range && (
@@ -46,7 +47,7 @@ export function Legend({ range, weighting, theme, stepSec }: LegendProps) {
       </span>
     </div>
   );
-}
+});
 
 function gradient(theme: Theme): string {
   const ramp = levelRampRgb(theme);

@@ -1,4 +1,4 @@
-import { useId } from 'react';
+import { memo, useId } from 'react';
 import { type BandFraction } from '#lib/acoustics/bands';
 import { type SlipState } from '../hooks/useSlipFigures';
 import { type Selection } from '../model/selection';
@@ -22,7 +22,14 @@ interface ReadingSlipProps {
 }
 
 /** The figures of exactly what is marked on the strip, its spectrum, what stands out, and what can be done next. */
-export function ReadingSlip({ selection, isMarked, state, fraction, context, onClear }: ReadingSlipProps) {
+export const ReadingSlip = memo(function ReadingSlip({
+  selection,
+  isMarked,
+  state,
+  fraction,
+  context,
+  onClear,
+}: ReadingSlipProps) {
   const headingId = useId();
   const { figures, usual, error } = state;
   const { bands } = selection;
@@ -59,7 +66,7 @@ export function ReadingSlip({ selection, isMarked, state, fraction, context, onC
       <SlipActions selection={selection} isMarked={isMarked} context={context} />
     </aside>
   );
-}
+});
 
 /** The stretch, broken between its ends and before the bands only. */
 function StretchHeading({ selection, zone }: { selection: Selection; zone: string }) {

@@ -1,6 +1,6 @@
 import { memo, useEffect, useLayoutEffect, useRef, useState } from 'react';
 import { drawStrip, type StripPicture } from '../draw/drawStrip';
-import { readPalette } from '../draw/palette';
+import { readPalette, type Palette } from '../draw/palette';
 import { type Theme } from '../hooks/useTheme';
 
 interface StripCanvasProps {
@@ -18,10 +18,7 @@ export const StripCanvas = memo(function StripCanvas({ picture, ratio, theme }: 
   useLayoutEffect(() => {
     const context = canvas.current?.getContext('2d');
     if (!canvas.current || !context) return;
-    drawStrip(
-      { context, ratio, palette: readPalette(canvas.current.parentElement ?? document.body) },
-      picture,
-    );
+    drawStrip({ context, ratio, palette: paletteOf(theme) }, picture);
   }, [picture, ratio, theme, areFontsReady]);
 
   return (
@@ -35,6 +32,15 @@ export const StripCanvas = memo(function StripCanvas({ picture, ratio, theme }: 
     />
   );
 });
+
+const palettes = new Map<Theme, Palette>();
+
+/** The theme's colours, read from the page once each. */
+function paletteOf(theme: Theme): Palette {
+  const palette = palettes.get(theme) ?? readPalette(document.body);
+  palettes.set(theme, palette);
+  return palette;
+}
 
 function useFonts(): boolean {
   const [areReady, setReady] = useState(false);
