@@ -44,20 +44,23 @@ test.each([
     ['/n/elsewhere/summaries', 404],
   ];
   for (const [path, status] of expected) {
-    expect((await page.goto(path))?.status(), path).toBe(status);
+    const answer = await page.goto(path);
+    expect(answer?.status(), path).toBe(status);
     const isPersonal = PERSONAL.test(await page.content());
     expect(isPersonal, path).toBe(mayReadPersonalData && path === `${base}/complaints/${reference}`);
+    if (isPersonal) expect(answer?.headers()['cache-control']).toBe('private, no-store');
   }
   const post = (form: Record<string, string>) =>
     context.request.post(`${base}/complaints/${reference}`, { form });
   const refusedStatus = mayReadPersonalData ? 409 : 403;
-  for (const form of [
+  const wrong: Record<string, string>[] = [
     { action: 'erase', confirmation: 'something else' },
     { action: 'reply', text: '', figuresDigest: '', repliesSoFar: '0' },
     { action: 'contact', email: 'no address' },
     { action: 'close', reason: 'erased' },
     { action: 'nothing' },
-  ]) {
+  ];
+  for (const form of wrong) {
     const answer = await post(form);
     expect(answer.status(), form.action).toBe(refusedStatus);
     if (!mayReadPersonalData) expect(PERSONAL.test(await answer.text()), form.action).toBe(false);

@@ -118,7 +118,7 @@ describe.each(routePatterns().filter((pattern) => pattern.startsWith('/api/')))(
         if (isChange && (method === 'DELETE' || pattern.endsWith('/session'))) continue;
         for (const query of isChange ? [''] : QUERIES) {
           for (const [what, body, contentType] of isChange ? BODIES : BODIES.slice(0, 1)) {
-            const headers = isChange ? { 'content-type': contentType } : {};
+            const headers: Record<string, string> = isChange ? { 'content-type': contentType } : {};
             const response = await callApi(method, `${path}${query}`, {
               ...call,
               headers,

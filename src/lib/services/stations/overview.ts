@@ -1,9 +1,8 @@
-import { listLatest } from '#db/queries/stationLatest';
 import { listStations, type StationRow } from '#db/queries/stations';
 import { centiDbToDb } from '#lib/acoustics/rounding';
 import { type Station } from '#lib/contracts/stations';
 import { periodFigures } from '../levels/figures';
-import { stationView } from './view';
+import { stationsOf } from './list';
 
 /** What a period gave at a station. */
 export interface StationFigures {
@@ -25,15 +24,13 @@ export async function stationsOverview(
   fromSec: number,
   toSec: number,
 ): Promise<StationOverview[]> {
-  const [stations, latest] = await Promise.all([listStations(networkId), listLatest(networkId)]);
-  const byStation = new Map(latest.map((one) => [one.stationId, one]));
-  const nowSec = Math.floor(Date.now() / 1000);
-  return Promise.all(
-    stations.map(async (station) => ({
-      station: stationView(station, byStation.get(station.id), nowSec),
-      figures: await figuresOf(station, fromSec, toSec),
-    })),
-  );
+  const [rows, stations] = await Promise.all([listStations(networkId), stationsOf(networkId)]);
+  const byCode = new Map(rows.map((row) => [row.code, row]));
+  const overviews = stations.map(async (station) => {
+    const row = byCode.get(station.code);
+    return row ? [{ station, figures: await figuresOf(row, fromSec, toSec) }] : [];
+  });
+  return (await Promise.all(overviews)).flat();
 }
 
 async function figuresOf(station: StationRow, fromSec: number, toSec: number): Promise<StationFigures> {
