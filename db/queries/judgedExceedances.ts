@@ -102,3 +102,15 @@ export async function selectStandingWindows(
     .where('ends_at', '>', fromSec)
     .select({ limitId: 'limit_id', stationId: 'station_id', startSec: 'starts_at', endSec: 'ends_at' });
 }
+
+/** Windows of standing exceedances of a limit that begin at or after an instant (epoch seconds). */
+export async function selectStandingOfLimit(
+  limitId: number,
+  fromSec: number,
+  conn: Connection,
+): Promise<(JudgedWindow & { endSec: number })[]> {
+  return conn('exceedances')
+    .where({ limit_id: limitId, state: 'standing' })
+    .where('starts_at', '>=', fromSec)
+    .select({ limitId: 'limit_id', stationId: 'station_id', startSec: 'starts_at', endSec: 'ends_at' });
+}

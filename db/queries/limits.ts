@@ -77,6 +77,36 @@ export async function lockLimits(limitIds: Iterable<number>, transaction: Connec
     .select('id');
 }
 
+/** A version with who made it, and with who withdrew the limit and why. */
+export interface LimitRecord extends LimitVersion {
+  createdByName: string | null;
+  withdrawnByName: string | null;
+  withdrawalReason: string | null;
+}
+
+/** As `listLimitVersions`, or of one limit of the network only, with names and reasons for people. */
+export async function listLimitRecords(
+  networkId: number,
+  limitId: number | null = null,
+  conn: Connection = pool(),
+): Promise<LimitRecord[]> {
+  const rows: (Row & Omit<LimitRecord, keyof LimitVersion>)[] = await selectVersions(conn)
+    .leftJoin({ creator: 'users' }, 'creator.id', 'v.created_by')
+    .leftJoin({ withdrawer: 'users' }, 'withdrawer.id', 'l.withdrawn_by')
+    .where({ 'l.network_id': networkId, ...(limitId === null ? {} : { 'l.id': limitId }) })
+    .select({
+      createdByName: 'creator.name',
+      withdrawnByName: 'withdrawer.name',
+      withdrawalReason: 'l.withdrawal_reason',
+    });
+  return rows.map(({ createdByName, withdrawnByName, withdrawalReason, ...row }) => ({
+    ...versionOf(row),
+    createdByName,
+    withdrawnByName,
+    withdrawalReason,
+  }));
+}
+
 /** Adds a limit with its first version and answers its id. */
 export async function insertLimit(
   networkId: number,
@@ -118,10 +148,14 @@ export async function insertVersion(
 }
 
 /** Withdraws a limit: windows that begin from now on are not judged by it. Answers whether it stood. */
-export async function withdrawLimit(limitId: number, userId: string, conn: Connection): Promise<boolean> {
+export async function withdrawLimit(
+  limitId: number,
+  { by, reason }: { by: string; reason: string },
+  conn: Connection,
+): Promise<boolean> {
   const changed = await conn('limits')
     .where({ id: limitId, withdrawn_at: null })
-    .update({ withdrawn_at: new Date(), withdrawn_by: userId });
+    .update({ withdrawn_at: new Date(), withdrawn_by: by, withdrawal_reason: reason });
   return changed > 0;
 }
 

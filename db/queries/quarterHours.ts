@@ -41,6 +41,21 @@ export async function selectQuarterHours(
   );
 }
 
+/** Beginnings of the computed quarter-hours of a station in `fromSec <= t < toSec`, ascending. */
+export async function selectQuarterStarts(
+  stationId: number,
+  fromSec: number,
+  toSec: number,
+  conn: Connection = pool(),
+): Promise<number[]> {
+  return conn('quarter_hours')
+    .where({ station_id: stationId })
+    .where('starts_at', '>=', fromSec)
+    .where('starts_at', '<', toSec)
+    .orderBy('starts_at')
+    .pluck('starts_at');
+}
+
 /** Replaces the rows of these quarters of a station: `found` are those that have intervals. */
 export async function replaceQuarterHours(
   stationId: number,

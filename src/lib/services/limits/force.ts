@@ -12,7 +12,7 @@ export interface JudgedWindow extends LimitWindow {
 export const LONGEST_WINDOW_SEC = 26 * 3600;
 
 /** The versions of each limit, by its id, in their order. */
-export function byLimit(versions: Iterable<LimitVersion>): Map<number, LimitVersion[]> {
+export function byLimit<V extends LimitVersion>(versions: Iterable<V>): Map<number, V[]> {
   return groupBy(versions, ({ limitId }) => limitId);
 }
 
@@ -23,7 +23,7 @@ export function replacedFromSec(version: LimitVersion, ofLimit: readonly LimitVe
 }
 
 /** The version of one limit that judges what begins at an instant: of those in force by then the newest. */
-export function versionAt(ofLimit: readonly LimitVersion[], atSec: number): LimitVersion | undefined {
+export function versionAt<V extends LimitVersion>(ofLimit: readonly V[], atSec: number): V | undefined {
   return ofLimit.findLast(({ effectiveFromSec }) => effectiveFromSec <= atSec);
 }
 

@@ -1,0 +1,97 @@
+import { appendAudit } from '#db/queries/audit';
+import { inTransaction, type Connection } from '#db/queries/connection';
+import { findLimit, insertLimit, insertVersion, lockLimits, withdrawLimit } from '#db/queries/limits';
+import { listStations } from '#db/queries/stations';
+import { formatInstantUtc } from '#lib/contracts/common';
+import type { Limit, NewLimit } from '#lib/contracts/limits';
+import { readLimit } from './list';
+import { pendLimit } from './pendLimit';
+import { readRule, type FieldProblem, type LimitRule } from './rule';
+
+/** Who sets limits where. */
+export interface LimitSetter {
+  userId: string;
+  networkId: number;
+}
+
+export type SetOutcome =
+  | { kind: 'set'; limit: Limit }
+  | { kind: 'invalid'; problems: FieldProblem[] }
+  | { kind: 'unknown' }
+  | { kind: 'withdrawn-before' };
+
+/** So that each transaction sees what those before it committed, once it holds the locks. */
+const ISOLATION = { isolationLevel: 'read committed' } as const;
+
+/** Sets a limit. Windows that begin from its beginning on are judged by it, those of the past too. */
+export async function addLimit(setter: LimitSetter, limit: NewLimit): Promise<SetOutcome> {
+  const read = await ruleOf(setter, limit);
+  if (!read.isValid) return { kind: 'invalid', problems: read.problems };
+  return inTransaction<SetOutcome>(async (transaction) => {
+    const version = { ...read.version, createdBy: setter.userId };
+    const limitId = await insertLimit(setter.networkId, version, transaction);
+    await pendLimit(setter.networkId, limitId, version.effectiveFromSec, transaction);
+    return audited('limit.add', setter, limitId, { version: 1, ...detailOf(read.version) }, transaction);
+  }, ISOLATION);
+}
+
+/** Changes a limit by a new version. Past exceedances keep theirs, unless the new one begins before them. */
+export async function reviseLimit(
+  setter: LimitSetter,
+  limitId: number,
+  limit: NewLimit,
+): Promise<SetOutcome> {
+  const read = await ruleOf(setter, limit);
+  if (!read.isValid) return { kind: 'invalid', problems: read.problems };
+  return inTransaction<SetOutcome>(async (transaction) => {
+    await lockLimits([limitId], transaction);
+    const last = (await findLimit(setter.networkId, limitId, transaction)).at(-1);
+    if (!last) return { kind: 'unknown' };
+    if (last.withdrawnAt) return { kind: 'withdrawn-before' };
+    const number = last.version + 1;
+    const version = { ...read.version, createdBy: setter.userId };
+    await insertVersion(limitId, number, version, transaction);
+    await pendLimit(setter.networkId, limitId, version.effectiveFromSec, transaction);
+    return audited(
+      'limit.revise',
+      setter,
+      limitId,
+      { version: number, ...detailOf(read.version) },
+      transaction,
+    );
+  }, ISOLATION);
+}
+
+/** Withdraws a limit: windows that begin from now on are not judged by it. Nothing is deleted. */
+export async function endLimit(setter: LimitSetter, limitId: number, reason: string): Promise<SetOutcome> {
+  return inTransaction<SetOutcome>(async (transaction) => {
+    await lockLimits([limitId], transaction);
+    const versions = await findLimit(setter.networkId, limitId, transaction);
+    if (versions.length === 0) return { kind: 'unknown' };
+    const isWithdrawn = await withdrawLimit(limitId, { by: setter.userId, reason }, transaction);
+    if (!isWithdrawn) return { kind: 'withdrawn-before' };
+    return audited('limit.withdraw', setter, limitId, { reason }, transaction);
+  }, ISOLATION);
+}
+
+async function ruleOf({ networkId }: LimitSetter, limit: NewLimit) {
+  return readRule(limit, await listStations(networkId), Math.floor(Date.now() / 1000));
+}
+
+async function audited(
+  action: string,
+  { userId, networkId }: LimitSetter,
+  limitId: number,
+  detail: Record<string, unknown>,
+  transaction: Connection,
+): Promise<SetOutcome> {
+  await appendAudit({ userId, networkId, action, subject: `limit ${limitId}`, detail }, transaction);
+  const found = await readLimit(networkId, limitId, true, transaction);
+  if (!found) throw new Error(`There is no limit ${limitId} in network ${networkId}.`);
+  return { kind: 'set', limit: found.limit };
+}
+
+/** What the audit trail keeps of a version: of addresses only how many there are. */
+function detailOf({ recipients, effectiveFromSec, ...rule }: LimitRule) {
+  return { ...rule, effectiveFrom: formatInstantUtc(effectiveFromSec), recipients: recipients.length };
+}

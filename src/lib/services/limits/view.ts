@@ -1,0 +1,87 @@
+import type { LimitRecord } from '#db/queries/limits';
+import { bandAt } from '#lib/acoustics/bands';
+import { formatClockTime, formatInstantUtc } from '#lib/contracts/common';
+import { WEEKDAYS, type Limit, type LimitDetail, type LimitVersionView } from '#lib/contracts/limits';
+import { limitMetricText } from '#lib/format/limitMetric';
+import { replacedFromSec, versionAt } from './force';
+
+/** Who looks at limits. */
+export interface LimitReader {
+  /** Addresses are personal data: operators only. */
+  seesRecipients: boolean;
+  /** Codes of the network's stations by their ids. */
+  codes: ReadonlyMap<number, string>;
+  nowSec: number;
+}
+
+/** A limit as it is now, with its versions; `ofLimit` in their order, at least one. */
+export function limitView(ofLimit: readonly LimitRecord[], reader: LimitReader): LimitDetail {
+  const versions = ofLimit.map((version) => versionView(version, ofLimit, reader));
+  return { limit: currentView(ofLimit, versions, reader), versions };
+}
+
+function currentView(
+  ofLimit: readonly LimitRecord[],
+  versions: readonly LimitVersionView[],
+  { nowSec }: LimitReader,
+): Limit {
+  const inForce = versionAt(ofLimit, nowSec);
+  const shown = inForce ?? firstToCome(ofLimit);
+  const view = versions.find(({ version }) => version === shown.version);
+  if (!view) throw new Error(`Limit ${shown.limitId} has no version ${shown.version}.`);
+  const nextSec = inForce ? replacedFromSec(inForce, ofLimit) : Infinity;
+  const { withdrawnAt, withdrawnByName, withdrawalReason } = shown;
+  return {
+    ...view,
+    id: shown.limitId,
+    state: withdrawnAt ? 'withdrawn' : inForce ? 'in-force' : 'upcoming',
+    nextVersionFrom: withdrawnAt || nextSec === Infinity ? null : formatInstantUtc(nextSec),
+    withdrawal: withdrawnAt && {
+      at: withdrawnAt.toISOString(),
+      by: withdrawnByName,
+      reason: withdrawalReason ?? '',
+    },
+  };
+}
+
+/** Of versions that all lie in the future, the one that begins first and is not replaced before. */
+function firstToCome(ofLimit: readonly LimitRecord[]): LimitRecord {
+  const [first] = ofLimit
+    .filter((version) => replacedFromSec(version, ofLimit) > version.effectiveFromSec)
+    .sort((a, b) => a.effectiveFromSec - b.effectiveFromSec);
+  if (!first) throw new Error('A limit has no version.');
+  return first;
+}
+
+function versionView(
+  version: LimitRecord,
+  ofLimit: readonly LimitRecord[],
+  { seesRecipients, codes }: LimitReader,
+): LimitVersionView {
+  const { bandFraction, bandIndex, fromMin, toMin, stationIds, withdrawnAt } = version;
+  const endSec = Math.min(
+    replacedFromSec(version, ofLimit),
+    withdrawnAt ? Math.floor(withdrawnAt.getTime() / 1000) : Infinity,
+  );
+  return {
+    version: version.version,
+    name: version.name,
+    metric: version.metric,
+    window: version.averaging,
+    bandHz: bandFraction && bandIndex !== null ? bandAt(bandFraction, bandIndex).nominalHz : null,
+    bandFraction,
+    descriptor: limitMetricText(version),
+    threshold: version.thresholdTenths / 10,
+    weekdays: WEEKDAYS.filter((_, bit) => (version.weekdays & (1 << bit)) !== 0),
+    from: fromMin === null ? null : formatClockTime(fromMin),
+    to: toMin === null ? null : formatClockTime(toMin),
+    minimumCoverage: version.minimumCoverage,
+    stations: stationIds && stationIds.map((id) => codes.get(id) ?? String(id)).sort(),
+    ...(seesRecipients && { recipients: version.recipients }),
+    reason: version.reason,
+    effectiveFrom: formatInstantUtc(version.effectiveFromSec),
+    effectiveTo: endSec === Infinity ? null : formatInstantUtc(endSec),
+    createdAt: version.createdAt.toISOString(),
+    createdBy: version.createdByName,
+  };
+}
