@@ -1,0 +1,431 @@
+-- Generated from db/migrations by `npm run schema`; not edited by hand.
+
+CREATE TABLE `access_tokens` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `user_id` char(36) NOT NULL,
+  `name` varchar(160) NOT NULL,
+  `digest` binary(32) NOT NULL COMMENT 'SHA-256 of the token',
+  `created_at` datetime(3) NOT NULL,
+  `expires_at` datetime(3) NOT NULL,
+  `revoked_at` datetime(3) DEFAULT NULL,
+  `last_used_at` datetime(3) DEFAULT NULL,
+  PRIMARY KEY (`id`),
+  UNIQUE KEY `access_tokens_digest` (`digest`),
+  KEY `access_tokens_user` (`user_id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `audit_head` (
+  `only_row` tinyint(3) unsigned NOT NULL,
+  `last_id` bigint(20) unsigned NOT NULL,
+  `last_digest` binary(32) NOT NULL,
+  PRIMARY KEY (`only_row`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `audit_log` (
+  `id` bigint(20) unsigned NOT NULL COMMENT 'gapless: the place in the chain',
+  `at` datetime(3) NOT NULL,
+  `user_id` char(36) DEFAULT NULL,
+  `network_id` int(10) unsigned DEFAULT NULL,
+  `action` varchar(60) NOT NULL,
+  `subject` varchar(160) NOT NULL,
+  `detail` longtext CHARACTER SET utf8mb4 COLLATE utf8mb4_bin NOT NULL COMMENT 'before and after; for personal tables field names only' CHECK (json_valid(`detail`)),
+  `previous_digest` binary(32) NOT NULL,
+  `digest` binary(32) NOT NULL COMMENT 'SHA-256 over the previous digest and this row',
+  PRIMARY KEY (`id`),
+  KEY `audit_log_network` (`network_id`,`at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `band_sets` (
+  `id` smallint(5) unsigned NOT NULL AUTO_INCREMENT,
+  `fraction` tinyint(3) unsigned NOT NULL,
+  `band_indices` varchar(160) NOT NULL COMMENT 'ascending, comma separated',
+  PRIMARY KEY (`id`),
+  UNIQUE KEY `band_sets_bands` (`fraction`,`band_indices`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `complaint_keys` (
+  `complaint_id` int(10) unsigned NOT NULL,
+  `wrapped_key` varbinary(80) NOT NULL COMMENT 'AES-256-GCM key wrapped by the personal-data key of the settings; destroying it erases the person',
+  `created_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`complaint_id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `complaint_numbers` (
+  `prefix` varchar(8) NOT NULL,
+  `year` smallint(5) unsigned NOT NULL,
+  `last_number` int(10) unsigned NOT NULL COMMENT 'the last one given out; a number is never given twice, even after an erasure',
+  PRIMARY KEY (`prefix`,`year`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `complaint_private` (
+  `complaint_id` int(10) unsigned NOT NULL,
+  `ciphertext` blob NOT NULL COMMENT 'AES-256-GCM of the JSON: name, e-mail, phone, address, exact place, own words',
+  `updated_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`complaint_id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `complaint_replies` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `complaint_id` int(10) unsigned NOT NULL,
+  `ciphertext` mediumblob NOT NULL COMMENT 'AES-256-GCM of the JSON: recipient, subject, body',
+  `figures` longtext CHARACTER SET utf8mb4 COLLATE utf8mb4_bin NOT NULL COMMENT 'the figures the letter carries, as sent' CHECK (json_valid(`figures`)),
+  `sent_by` char(36) NOT NULL,
+  `created_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`id`),
+  KEY `complaint_replies_complaint` (`complaint_id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `complaints` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `network_id` int(10) unsigned NOT NULL,
+  `reference` varchar(32) NOT NULL,
+  `starts_at` int(10) unsigned NOT NULL,
+  `ends_at` int(10) unsigned NOT NULL,
+  `kind` varchar(40) NOT NULL COMMENT 'what it sounds like, from a list; own words are personal and stand apart',
+  `coarse_latitude` double DEFAULT NULL COMMENT 'rounded to 0.01 degree; the exact place stands apart',
+  `coarse_longitude` double DEFAULT NULL,
+  `nearest_station_id` int(10) unsigned DEFAULT NULL,
+  `status` enum('open','answered','closed') NOT NULL DEFAULT 'open',
+  `due_on` date NOT NULL,
+  `created_by` char(36) DEFAULT NULL,
+  `created_at` datetime(3) NOT NULL,
+  `answered_at` datetime(3) DEFAULT NULL,
+  `closed_at` datetime(3) DEFAULT NULL,
+  `closing_reason` varchar(40) DEFAULT NULL COMMENT 'from a list: a reason in own words could name somebody',
+  PRIMARY KEY (`id`),
+  UNIQUE KEY `complaints_reference` (`reference`),
+  KEY `complaints_network` (`network_id`,`created_at`),
+  KEY `complaints_due` (`network_id`,`status`,`due_on`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `day_periods` (
+  `station_id` int(10) unsigned NOT NULL,
+  `local_date` date NOT NULL COMMENT 'the date on which the period begins',
+  `period` enum('day','evening','night') NOT NULL,
+  `starts_at` int(10) unsigned NOT NULL,
+  `ends_at` int(10) unsigned NOT NULL,
+  `valid_sec` int(10) unsigned NOT NULL,
+  `excluded_sec` int(10) unsigned NOT NULL,
+  `sample_sec` smallint(5) unsigned DEFAULT NULL,
+  `is_sample_mixed` tinyint(1) NOT NULL,
+  `a_energy_sec` double NOT NULL,
+  `c_energy_sec` double NOT NULL,
+  `c_valid_sec` int(10) unsigned NOT NULL,
+  `lafmax_centi_db` smallint(6) DEFAULT NULL,
+  `lafmin_centi_db` smallint(6) DEFAULT NULL,
+  `lcpeak_centi_db` smallint(6) DEFAULT NULL,
+  `band_fraction` tinyint(3) unsigned DEFAULT NULL,
+  `band_energies` varbinary(600) NOT NULL,
+  `a_classes` blob NOT NULL,
+  `band_classes` mediumblob NOT NULL COMMENT 'class counts of every third and every octave',
+  `flags` smallint(5) unsigned NOT NULL,
+  `computed_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`station_id`,`local_date`,`period`),
+  KEY `day_periods_start` (`station_id`,`starts_at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `dirty_marks` (
+  `id` bigint(20) unsigned NOT NULL AUTO_INCREMENT,
+  `station_id` int(10) unsigned NOT NULL,
+  `quarter_starts_at` int(10) unsigned NOT NULL COMMENT 'epoch seconds UTC, a multiple of 900',
+  `marked_at` int(10) unsigned NOT NULL COMMENT 'epoch seconds UTC',
+  PRIMARY KEY (`id`),
+  KEY `dirty_marks_quarter` (`station_id`,`quarter_starts_at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `exceedance_mails` (
+  `exceedance_id` int(10) unsigned NOT NULL,
+  `outbox_id` bigint(20) unsigned NOT NULL COMMENT 'a message that tells of it, perhaps among others',
+  PRIMARY KEY (`exceedance_id`,`outbox_id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `exceedances` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `network_id` int(10) unsigned NOT NULL,
+  `station_id` int(10) unsigned NOT NULL,
+  `limit_id` int(10) unsigned NOT NULL,
+  `limit_version_id` int(10) unsigned NOT NULL,
+  `starts_at` int(10) unsigned NOT NULL,
+  `ends_at` int(10) unsigned NOT NULL,
+  `level_db` double NOT NULL,
+  `threshold_tenths` smallint(6) NOT NULL,
+  `coverage` double NOT NULL,
+  `state` enum('standing','lifted') NOT NULL DEFAULT 'standing' COMMENT 'lifted: later data or an exclusion took it below the limit or its coverage',
+  `revision` int(10) unsigned NOT NULL DEFAULT 0 COMMENT 'how often later data or a changed limit changed what was found; each revision is told once',
+  `detected_at` datetime(3) NOT NULL,
+  `revised_at` datetime(3) DEFAULT NULL,
+  `cause` varchar(160) DEFAULT NULL,
+  `note` text DEFAULT NULL,
+  `acknowledged_by` char(36) DEFAULT NULL,
+  `acknowledged_at` datetime(3) DEFAULT NULL,
+  PRIMARY KEY (`id`),
+  UNIQUE KEY `exceedances_window` (`limit_id`,`station_id`,`starts_at`),
+  KEY `exceedances_network` (`network_id`,`starts_at`),
+  KEY `exceedances_station` (`station_id`,`starts_at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `exclusions` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `network_id` int(10) unsigned NOT NULL,
+  `station_id` int(10) unsigned NOT NULL,
+  `starts_at` int(10) unsigned NOT NULL,
+  `ends_at` int(10) unsigned NOT NULL,
+  `reason` varchar(500) NOT NULL,
+  `created_by` char(36) NOT NULL,
+  `created_at` datetime(3) NOT NULL,
+  `withdrawn_by` char(36) DEFAULT NULL,
+  `withdrawn_at` datetime(3) DEFAULT NULL,
+  `withdrawal_reason` varchar(500) DEFAULT NULL,
+  PRIMARY KEY (`id`),
+  KEY `exclusions_period` (`station_id`,`starts_at`,`ends_at`),
+  KEY `exclusions_network` (`network_id`,`starts_at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `interval_levels` (
+  `station_id` int(10) unsigned NOT NULL,
+  `starts_at` int(10) unsigned NOT NULL COMMENT 'epoch seconds UTC',
+  `duration_sec` smallint(5) unsigned NOT NULL,
+  `laeq_centi_db` smallint(6) NOT NULL,
+  `lafmax_centi_db` smallint(6) DEFAULT NULL,
+  `lafmin_centi_db` smallint(6) DEFAULT NULL,
+  `lceq_centi_db` smallint(6) DEFAULT NULL,
+  `lcpeak_centi_db` smallint(6) DEFAULT NULL,
+  `band_set_id` smallint(5) unsigned NOT NULL,
+  `band_levels_centi_db` varbinary(66) NOT NULL COMMENT 'int16 little endian a band of the set; -32768 = none',
+  `flags` smallint(5) unsigned NOT NULL,
+  `wind_speed_centi_ms` smallint(5) unsigned DEFAULT NULL,
+  `wind_direction_deg` smallint(5) unsigned DEFAULT NULL,
+  `temperature_centi_c` smallint(6) DEFAULT NULL,
+  `battery_centi_v` smallint(5) unsigned DEFAULT NULL,
+  `import_id` int(10) unsigned DEFAULT NULL,
+  `received_at` int(10) unsigned NOT NULL COMMENT 'epoch seconds UTC',
+  PRIMARY KEY (`station_id`,`starts_at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `job_runs` (
+  `job` varchar(60) NOT NULL,
+  `slot` datetime(3) NOT NULL,
+  `started_at` datetime(3) NOT NULL,
+  `finished_at` datetime(3) DEFAULT NULL,
+  `outcome` varchar(500) DEFAULT NULL,
+  PRIMARY KEY (`job`,`slot`),
+  KEY `job_runs_started` (`started_at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `limit_versions` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `limit_id` int(10) unsigned NOT NULL,
+  `version` smallint(5) unsigned NOT NULL,
+  `effective_from` int(10) unsigned NOT NULL COMMENT 'epoch seconds; windows that begin from here on are judged by it',
+  `name` varchar(160) NOT NULL,
+  `metric` enum('LAeq','LAFmax','bandLeq') NOT NULL,
+  `averaging` enum('15min','1h','day','evening','night') NOT NULL,
+  `band_fraction` tinyint(3) unsigned DEFAULT NULL,
+  `band_index` tinyint(4) DEFAULT NULL,
+  `threshold_tenths` smallint(6) NOT NULL COMMENT 'exceeded when the level, rounded half up to tenths, is greater',
+  `weekdays` tinyint(3) unsigned NOT NULL DEFAULT 127 COMMENT 'bit 0 Monday … bit 6 Sunday, of the local date on which the window begins',
+  `from_min` smallint(5) unsigned DEFAULT NULL COMMENT 'local clock, minutes after midnight; null: all day',
+  `to_min` smallint(5) unsigned DEFAULT NULL COMMENT 'before from_min: across midnight',
+  `minimum_coverage` double DEFAULT NULL COMMENT 'null: the network minimum',
+  `station_ids` longtext CHARACTER SET utf8mb4 COLLATE utf8mb4_bin DEFAULT NULL COMMENT 'null: every station of the network' CHECK (json_valid(`station_ids`)),
+  `recipients` longtext CHARACTER SET utf8mb4 COLLATE utf8mb4_bin NOT NULL COMMENT 'e-mail addresses' CHECK (json_valid(`recipients`)),
+  `reason` varchar(500) NOT NULL DEFAULT '',
+  `created_by` char(36) DEFAULT NULL,
+  `created_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`id`),
+  UNIQUE KEY `limit_versions_version` (`limit_id`,`version`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `limits` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `network_id` int(10) unsigned NOT NULL,
+  `created_at` datetime(3) NOT NULL,
+  `withdrawn_at` datetime(3) DEFAULT NULL,
+  `withdrawn_by` char(36) DEFAULT NULL,
+  `withdrawal_reason` varchar(500) DEFAULT NULL,
+  PRIMARY KEY (`id`),
+  KEY `limits_network` (`network_id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `memberships` (
+  `user_id` char(36) NOT NULL,
+  `network_id` int(10) unsigned NOT NULL,
+  `role` enum('operator','liaison','regulator') NOT NULL,
+  `created_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`user_id`,`network_id`,`role`),
+  KEY `memberships_network` (`network_id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `network_settings` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `network_id` int(10) unsigned NOT NULL,
+  `effective_from` int(10) unsigned NOT NULL COMMENT 'epoch seconds UTC; the latest row at or before an instant holds there',
+  `time_zone` varchar(64) NOT NULL,
+  `day_start_min` smallint(5) unsigned NOT NULL COMMENT 'minutes after local midnight',
+  `evening_start_min` smallint(5) unsigned DEFAULT NULL COMMENT 'null: a network without an evening',
+  `night_start_min` smallint(5) unsigned NOT NULL,
+  `minimum_coverage` double NOT NULL,
+  `maximum_wind_speed_ms` double NOT NULL,
+  `exclude_rain` tinyint(1) NOT NULL,
+  `created_by` char(36) DEFAULT NULL,
+  `created_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`id`),
+  UNIQUE KEY `network_settings_effective` (`network_id`,`effective_from`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `networks` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `slug` varchar(64) NOT NULL,
+  `name` varchar(160) NOT NULL,
+  `created_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`id`),
+  UNIQUE KEY `networks_slug` (`slug`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `outbox` (
+  `id` bigint(20) unsigned NOT NULL AUTO_INCREMENT,
+  `message_id` varchar(200) NOT NULL COMMENT 'fixed Message-ID, the same at every attempt',
+  `dedupe_key` varchar(200) NOT NULL COMMENT 'one message a cause and recipient',
+  `network_id` int(10) unsigned DEFAULT NULL,
+  `kind` varchar(40) NOT NULL,
+  `recipient` varchar(254) DEFAULT NULL COMMENT 'null: resolved at sending from complaint_reply_id, so that no resident stands here',
+  `subject` varchar(300) NOT NULL,
+  `text_body` mediumtext DEFAULT NULL,
+  `html_body` mediumtext DEFAULT NULL,
+  `complaint_reply_id` int(10) unsigned DEFAULT NULL,
+  `state` enum('waiting','sent','dead') NOT NULL DEFAULT 'waiting',
+  `attempts` smallint(5) unsigned NOT NULL DEFAULT 0,
+  `next_attempt_at` datetime(3) NOT NULL,
+  `leased_until` datetime(3) DEFAULT NULL,
+  `lease_holder` varchar(80) DEFAULT NULL,
+  `last_error` varchar(500) DEFAULT NULL,
+  `created_at` datetime(3) NOT NULL,
+  `sent_at` datetime(3) DEFAULT NULL,
+  PRIMARY KEY (`id`),
+  UNIQUE KEY `outbox_message_id` (`message_id`),
+  UNIQUE KEY `outbox_dedupe` (`dedupe_key`),
+  KEY `outbox_due` (`state`,`next_attempt_at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `pending_windows` (
+  `id` bigint(20) unsigned NOT NULL AUTO_INCREMENT,
+  `limit_id` int(10) unsigned NOT NULL,
+  `station_id` int(10) unsigned NOT NULL,
+  `starts_at` int(10) unsigned NOT NULL,
+  `ends_at` int(10) unsigned NOT NULL COMMENT 'judged once the window has closed; again when its data change',
+  PRIMARY KEY (`id`),
+  KEY `pending_windows_due` (`ends_at`,`id`),
+  KEY `pending_windows_window` (`limit_id`,`station_id`,`starts_at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `quarantine` (
+  `id` bigint(20) unsigned NOT NULL AUTO_INCREMENT,
+  `station_id` int(10) unsigned NOT NULL,
+  `code` varchar(32) NOT NULL,
+  `detail` varchar(500) NOT NULL,
+  `record` mediumtext NOT NULL COMMENT 'JSON as received, with its bands',
+  `record_digest` binary(32) NOT NULL COMMENT 'the same refused record sent again is kept once',
+  `starts_at` int(10) unsigned DEFAULT NULL,
+  `received_at` datetime(3) NOT NULL,
+  `times_received` int(10) unsigned NOT NULL DEFAULT 1,
+  `settled_at` datetime(3) DEFAULT NULL,
+  `settled_by` char(36) DEFAULT NULL,
+  `settlement` enum('released','dismissed') DEFAULT NULL,
+  PRIMARY KEY (`id`),
+  UNIQUE KEY `quarantine_record` (`station_id`,`code`,`record_digest`),
+  KEY `quarantine_open` (`station_id`,`settled_at`,`id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `quarter_hours` (
+  `station_id` int(10) unsigned NOT NULL,
+  `starts_at` int(10) unsigned NOT NULL COMMENT 'epoch seconds UTC, a multiple of 900',
+  `valid_sec` smallint(5) unsigned NOT NULL,
+  `excluded_sec` smallint(5) unsigned NOT NULL,
+  `sample_sec` smallint(5) unsigned DEFAULT NULL COMMENT 'length of the valid intervals; null when mixed or none',
+  `is_sample_mixed` tinyint(1) NOT NULL,
+  `a_energy_sec` double NOT NULL COMMENT 'sum over valid seconds of 10^(LAeq/10)',
+  `c_energy_sec` double NOT NULL,
+  `c_valid_sec` smallint(5) unsigned NOT NULL,
+  `lafmax_centi_db` smallint(6) DEFAULT NULL,
+  `lafmin_centi_db` smallint(6) DEFAULT NULL,
+  `lcpeak_centi_db` smallint(6) DEFAULT NULL,
+  `band_fraction` tinyint(3) unsigned DEFAULT NULL COMMENT 'null when no bands or mixed',
+  `band_energies` varbinary(600) NOT NULL COMMENT 'see db/queries/packing',
+  `a_classes` blob NOT NULL COMMENT 'LevelClassCounts of LAeq',
+  `flags` smallint(5) unsigned NOT NULL COMMENT 'flags seen in the quarter, valid or not',
+  `reason_bits` smallint(5) unsigned NOT NULL DEFAULT 0 COMMENT 'why seconds were left out: bit n is INVALIDITY_REASONS[n]',
+  `late_sec` smallint(5) unsigned NOT NULL DEFAULT 0 COMMENT 'seconds whose intervals arrived more than an hour after they ended',
+  `computed_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`station_id`,`starts_at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `sessions` (
+  `id_digest` char(64) NOT NULL COMMENT 'SHA-256 of the session id in the cookie',
+  `user_id` char(36) NOT NULL,
+  `expires_at` datetime(3) NOT NULL COMMENT 'moves on while the session is used',
+  `ends_at` datetime(3) NOT NULL COMMENT 'absolute lifetime',
+  `created_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`id_digest`),
+  KEY `sessions_user` (`user_id`),
+  KEY `sessions_expiry` (`expires_at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `station_latest` (
+  `station_id` int(10) unsigned NOT NULL,
+  `starts_at` int(10) unsigned NOT NULL,
+  `duration_sec` smallint(5) unsigned NOT NULL,
+  `laeq_centi_db` smallint(6) NOT NULL,
+  `lafmax_centi_db` smallint(6) DEFAULT NULL,
+  `flags` smallint(5) unsigned NOT NULL,
+  `wind_speed_centi_ms` smallint(5) unsigned DEFAULT NULL,
+  `battery_centi_v` smallint(5) unsigned DEFAULT NULL,
+  `received_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`station_id`),
+  KEY `station_latest_received` (`received_at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `station_tokens` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `station_id` int(10) unsigned NOT NULL,
+  `digest` binary(32) NOT NULL COMMENT 'SHA-256 of the token',
+  `created_by` char(36) DEFAULT NULL,
+  `created_at` datetime(3) NOT NULL,
+  `revoked_at` datetime(3) DEFAULT NULL,
+  `last_used_at` datetime(3) DEFAULT NULL,
+  PRIMARY KEY (`id`),
+  UNIQUE KEY `station_tokens_digest` (`digest`),
+  KEY `station_tokens_station` (`station_id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `stations` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `network_id` int(10) unsigned NOT NULL,
+  `code` varchar(32) NOT NULL,
+  `name` varchar(160) NOT NULL,
+  `latitude` double NOT NULL,
+  `longitude` double NOT NULL,
+  `band_fraction` tinyint(3) unsigned NOT NULL COMMENT '1 octave, 3 one-third octave',
+  `interval_sec` smallint(5) unsigned NOT NULL,
+  `first_band_index` tinyint(4) NOT NULL COMMENT 'n of 1000 Hz times 10^(n/10)',
+  `last_band_index` tinyint(4) NOT NULL,
+  `placement` enum('free-field','facade') NOT NULL DEFAULT 'free-field',
+  `mast_height_m` double DEFAULT NULL,
+  `surroundings` varchar(500) NOT NULL DEFAULT '',
+  `accepts_from` int(10) unsigned DEFAULT NULL COMMENT 'epoch seconds; older intervals are refused as too-old; null: no bound',
+  `created_at` datetime(3) NOT NULL,
+  `retired_at` datetime(3) DEFAULT NULL,
+  PRIMARY KEY (`id`),
+  UNIQUE KEY `stations_code` (`network_id`,`code`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `users` (
+  `id` char(36) NOT NULL,
+  `email` varchar(254) NOT NULL,
+  `name` varchar(160) NOT NULL,
+  `password_hash` varchar(255) NOT NULL,
+  `is_administrator` tinyint(1) NOT NULL DEFAULT 0,
+  `created_at` datetime(3) NOT NULL,
+  `disabled_at` datetime(3) DEFAULT NULL,
+  PRIMARY KEY (`id`),
+  UNIQUE KEY `users_email` (`email`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;

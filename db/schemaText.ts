@@ -1,0 +1,17 @@
+import type { Knex } from 'knex';
+
+/** Knex's own tables say nothing about the product. */
+const BOOKKEEPING = /^schema_migrations/;
+
+/** The statements that would make the tables of a migrated database as they are now, by name. */
+export async function schemaText(conn: Knex): Promise<string> {
+  const [tables] = (await conn.raw('SHOW FULL TABLES')) as [Record<string, string>[]];
+  const names = tables.map((row) => Object.values(row)[0] ?? '').filter((name) => !BOOKKEEPING.test(name));
+  const statements: string[] = [];
+  for (const name of names.sort()) {
+    const [[row]] = (await conn.raw('SHOW CREATE TABLE ??', [name])) as [Record<string, string>[]];
+    const statement = row?.['Create Table'] ?? row?.['Create View'] ?? '';
+    statements.push(`${statement.replace(/ AUTO_INCREMENT=\d+/, '')};\n`);
+  }
+  return statements.join('\n');
+}
