@@ -1,6 +1,6 @@
 import { z } from 'zod';
 import { bandByNominalHz } from '#lib/acoustics/bands';
-import { clockTime, emailAddress, instant, reasonText, shortText } from './common';
+import { clockTime, instant, reasonText, shortText } from './common';
 import { registerRoute } from './registry';
 
 export const LIMIT_METRICS = ['LAeq', 'LAFmax', 'bandLeq'] as const;
@@ -32,6 +32,11 @@ const minimumCoverage = z
     'Coverage that a window needs to be compared; null: the minimum of the network. A maximum needs none',
   );
 
+/** Says which of several addresses it is about. */
+const recipient = z
+  .email(({ input }) => `${String(input).slice(0, 60)}: must be an e-mail address`)
+  .max(254, 'must have at most 254 characters each');
+
 const fields = {
   name: shortText,
   metric,
@@ -55,7 +60,7 @@ const fields = {
     .default(null)
     .describe('Codes; null: every station of the network, later ones too'),
   recipients: z
-    .array(emailAddress)
+    .array(recipient)
     .max(MOST_RECIPIENTS, `must be at most ${MOST_RECIPIENTS} addresses`)
     .default([])
     .describe('Who gets e-mail'),

@@ -18,7 +18,8 @@ export type SetOutcome =
   | { kind: 'set'; limit: Limit }
   | { kind: 'invalid'; problems: FieldProblem[] }
   | { kind: 'unknown' }
-  | { kind: 'withdrawn-before' };
+  | { kind: 'withdrawn-before' }
+  | { kind: 'changed-before' };
 
 /** So that each transaction sees what those before it committed, once it holds the locks. */
 const ISOLATION = { isolationLevel: 'read committed' } as const;
@@ -35,11 +36,15 @@ export async function addLimit(setter: LimitSetter, limit: NewLimit): Promise<Se
   }, ISOLATION);
 }
 
-/** Changes a limit by a new version. Past exceedances keep theirs, unless the new one begins before them. */
+/**
+ * Changes a limit by a new version. Past exceedances keep theirs, unless the new one begins before them. `basedOn`: the newest
+ * version that the person saw; where there is a newer one by now, nothing is changed.
+ */
 export async function reviseLimit(
   setter: LimitSetter,
   limitId: number,
   limit: NewLimit,
+  basedOn: number | null = null,
 ): Promise<SetOutcome> {
   const read = await ruleOf(setter, limit);
   if (!read.isValid) return { kind: 'invalid', problems: read.problems };
@@ -48,6 +53,7 @@ export async function reviseLimit(
     const last = (await findLimit(setter.networkId, limitId, transaction)).at(-1);
     if (!last) return { kind: 'unknown' };
     if (last.withdrawnAt) return { kind: 'withdrawn-before' };
+    if (basedOn !== null && basedOn !== last.version) return { kind: 'changed-before' };
     const number = last.version + 1;
     const version = { ...read.version, createdBy: setter.userId };
     await insertVersion(limitId, number, version, transaction);
