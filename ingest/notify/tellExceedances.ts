@@ -4,16 +4,14 @@ import { findNetworkById, type NetworkRow } from '#db/queries/networks';
 import { insertMail } from '#db/queries/outbox';
 import type { TellChanges, TellingChange } from '#ingest/detect/judge';
 import { config } from '#lib/config/index';
+import { TELL_WITHIN_HOURS } from '#lib/contracts/limits';
 import { groupBy } from '#lib/services/groupBy';
 import { describeChange } from './describeChange';
 import { exceedanceMail } from './exceedanceMail';
 import { messageIdOf } from './messageId';
 
-/**
- * Windows that ended longer ago make exceedances but no e-mail: a backfill or a limit tried on last year must not send hundreds.
- * A change to an exceedance that was mailed is always told.
- */
-export const TELL_WITHIN_SEC = 48 * 3600;
+/** A change to an exceedance that was mailed is told however long ago its window ended. */
+const TELL_WITHIN_SEC = TELL_WITHIN_HOURS * 3600;
 
 /** Puts e-mails about changed exceedances into the outbox: one a network and recipient for the whole run. */
 export const tellExceedances: TellChanges = async (changes, now, transaction) => {

@@ -10,6 +10,12 @@ export const WEEKDAYS = ['mon', 'tue', 'wed', 'thu', 'fri', 'sat', 'sun'] as con
 export type Weekday = (typeof WEEKDAYS)[number];
 
 export const MOST_RECIPIENTS = 20;
+/** How far back a limit may begin, in days: windows since then are judged anew. */
+export const MOST_DAYS_BACK = 366;
+/**
+ * Windows that ended longer ago make exceedances but no e-mail: a backfill or a limit tried on last year must not send hundreds.
+ */
+export const TELL_WITHIN_HOURS = 48;
 
 const metric = z
   .enum(LIMIT_METRICS, 'must be one of the list')
@@ -26,15 +32,15 @@ const threshold = z
   .describe('dB; exceeded when the level, rounded half up to tenths, is greater');
 const minimumCoverage = z
   .number('must be a number')
-  .min(0, 'must be 0 to 1')
-  .max(1, 'must be 0 to 1')
+  .min(0, 'must be 0 to 1, that is 0 to 100 %')
+  .max(1, 'must be 0 to 1, that is 0 to 100 %')
   .describe(
     'Coverage that a window needs to be compared; null: the minimum of the network. A maximum needs none',
   );
 
 /** Says which of several addresses it is about. */
 const recipient = z
-  .email(({ input }) => `${String(input).slice(0, 60)}: must be an e-mail address`)
+  .email({ error: ({ input }) => `${String(input).slice(0, 60)}: must be an e-mail address` })
   .max(254, 'must have at most 254 characters each');
 
 const fields = {
@@ -66,7 +72,10 @@ const fields = {
     .describe('Who gets e-mail'),
   effectiveFrom: instant
     .optional()
-    .describe('Windows that begin from here on are judged by it; now, if left out'),
+    .describe(
+      `Windows that begin from here on are judged by it; now, if left out. At most ${MOST_DAYS_BACK} days ago; ` +
+        `no e-mail tells of windows that ended more than ${TELL_WITHIN_HOURS} h ago`,
+    ),
 };
 
 type Checked = Pick<

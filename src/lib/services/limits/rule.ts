@@ -2,10 +2,7 @@ import type { NewLimitVersion } from '#db/queries/limits';
 import type { StationRow } from '#db/queries/stations';
 import { bandByNominalHz, bandLabel, type Band } from '#lib/acoustics/bands';
 import { thirdsOfOctave } from '#lib/acoustics/octaves';
-import { WEEKDAYS, type NewLimit } from '#lib/contracts/limits';
-
-/** How far back a limit may begin, in days: windows since then are judged anew. */
-export const MOST_DAYS_BACK = 366;
+import { MOST_DAYS_BACK, WEEKDAYS, type NewLimit } from '#lib/contracts/limits';
 
 /** What is wrong with a limit, by field. */
 export interface FieldProblem {
