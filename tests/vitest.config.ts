@@ -15,7 +15,13 @@ export default defineConfig({
       },
       {
         extends: true,
-        test: { name: 'reference', include: ['tests/reference/**/*.test.ts'], testTimeout: 60_000 },
+        test: {
+          name: 'reference',
+          include: ['tests/reference/**/*.test.ts'],
+          globalSetup: ['tests/integration/support/globalSetup.ts'],
+          testTimeout: 60_000,
+          hookTimeout: 120_000,
+        },
       },
       {
         extends: true,

@@ -7,10 +7,12 @@ import { present, readCsv } from './fixtures';
 
 /** One row of the London set as an interval. */
 export interface LondonMinute {
-  flags: number;
   startSec: number;
   interval: AccumulatedInterval;
   isValid: boolean;
+  /** As `FLAGS` masks. */
+  flags: number;
+  windSpeedMs: number;
   thirdsTenths: ThirdsTenths;
 }
 
@@ -33,7 +35,6 @@ export function readLondonMinutes(): LondonMinute[] {
     const flag = FLAG_OF_LETTER[letter];
     const flags = flag ? flagMask([flag]) : 0;
     return {
-      flags,
       startSec: Date.parse(startUtc) / 1000,
       interval: {
         durationSec: 60,
@@ -47,6 +48,8 @@ export function readLondonMinutes(): LondonMinute[] {
         levelsCentiDb,
         bandIndices,
       },
+      flags,
+      windSpeedMs: Number(windMs),
       isValid: isValid({ flags, windSpeedMs: Number(windMs) }, RULES, false),
       thirdsTenths: thirdsTenthsOfCentiDb(levelsCentiDb, bandIndices),
     };

@@ -30,6 +30,8 @@ export interface ExpectedMonth extends ExpectedPeriod {
     string,
     { Leq: number; L10_inv: number; L90_inv: number; wrong_L90_from_summing_third_L90: number }
   >;
+  /** Levels that mistakes of the field give. */
+  wrong_ways: Record<string, number>;
   from_bands: { LAeq_analytic: number; LCeq_table: number; LZeq_20_20k: number; wrong_A_twice: number };
   tonal: {
     minutes_iso: number;
