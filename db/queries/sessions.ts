@@ -8,9 +8,18 @@ export interface SessionRow {
   endsAt: Date;
 }
 
+/** Where a session was begun, for its owner to recognise. It goes with the session. */
+export interface SessionOrigin {
+  address: string | null;
+  agent: string | null;
+}
+
+const LONGEST_ADDRESS = 45;
+const LONGEST_AGENT = 255;
+
 export async function insertSession(
   id: string,
-  session: SessionRow,
+  session: SessionRow & Partial<SessionOrigin>,
   conn: Connection = pool(),
 ): Promise<void> {
   await conn('sessions').insert({
@@ -18,6 +27,8 @@ export async function insertSession(
     user_id: session.userId,
     expires_at: session.expiresAt,
     ends_at: session.endsAt,
+    from_address: session.address?.slice(0, LONGEST_ADDRESS) ?? null,
+    agent: session.agent?.slice(0, LONGEST_AGENT) ?? null,
     created_at: new Date(),
   });
 }
@@ -49,7 +60,7 @@ export async function deleteSessionsOf(userId: string, conn: Connection = pool()
 }
 
 /** A session as its owner sees it; the digest names it without being of use to anybody. */
-export interface SessionEntry {
+export interface SessionEntry extends SessionOrigin {
   idDigest: string;
   createdAt: Date;
   expiresAt: Date;
@@ -61,7 +72,18 @@ export async function listSessions(userId: string, conn: Connection = pool()): P
     .where({ user_id: userId })
     .where('expires_at', '>', new Date())
     .orderBy('created_at', 'desc')
-    .select({ idDigest: 'id_digest', createdAt: 'created_at', expiresAt: 'expires_at' });
+    .select({
+      idDigest: 'id_digest',
+      address: 'from_address',
+      agent: 'agent',
+      createdAt: 'created_at',
+      expiresAt: 'expires_at',
+    });
+}
+
+/** Ends a session of that person, named by its digest; answers whether there was one to end. */
+export async function deleteSessionOf(userId: string, idDigest: string, conn: Connection): Promise<boolean> {
+  return (await conn('sessions').where({ user_id: userId, id_digest: idDigest }).delete()) > 0;
 }
 
 /** Ends every session of a person but the one named by its id. */

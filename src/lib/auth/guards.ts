@@ -5,7 +5,7 @@ import { notAllowed, notFound, Problem, signInFirst } from '#lib/http/problem';
 import { enterNetwork, type NetworkAccess } from './networkAccess';
 import { bearerToken } from './requestUser';
 import type { Role } from './roles';
-import type { SignedInUser } from './sessions';
+import { sessionCookieName, type SignedInUser } from './sessions';
 
 /** The signed-in person. @throws {Problem} 401 */
 export function requireUser(context: Pick<APIContext, 'locals'>): SignedInUser {
@@ -18,6 +18,29 @@ export function requireAdministrator(context: Pick<APIContext, 'locals'>): Signe
   const user = requireUser(context);
   if (!user.isAdministrator) throw notAllowed('Only an administrator may do this.');
   return user;
+}
+
+/**
+ * The person signed in in a browser, with the session's id: for what an access token must not do, such as making another
+ * one that outlives it.
+ * @throws {Problem} 401, 403
+ */
+export function requireSession(context: Pick<APIContext, 'locals' | 'cookies' | 'request'>): {
+  user: SignedInUser;
+  sessionId: string;
+} {
+  const user = requireUser(context);
+  const sessionId = context.cookies.get(sessionCookieName())?.value;
+  if (!sessionId || bearerToken(context.request) !== null) {
+    throw notAllowed('An access token may not do this: sign in.');
+  }
+  return { user, sessionId };
+}
+
+/** The administrator signed in in a browser. @throws {Problem} 401, 403 */
+export function requireAdministratorSession(context: Parameters<typeof requireSession>[0]): SignedInUser {
+  requireAdministrator(context);
+  return requireSession(context).user;
 }
 
 /** The signed-in person inside a network, for what `roles` may do. @throws {Problem} 401, 403, 404 */

@@ -1,5 +1,6 @@
 import type { AstroGlobal } from 'astro';
 import { Problem } from '#lib/http/problem';
+import { requireSession } from './guards';
 import { enterNetwork, type NetworkAccess } from './networkAccess';
 import { ALL_ROLES, type Role } from './roles';
 import type { SignedInUser } from './sessions';
@@ -12,6 +13,22 @@ export function pageUser(astro: AstroGlobal): SignedInUser | Response {
     astro.locals.user ??
     astro.redirect(`/sign-in?next=${encodeURIComponent(astro.url.pathname + astro.url.search)}`)
   );
+}
+
+/** For a page's frontmatter: the person signed in in a browser, or the response to return instead. */
+export async function pageSession(
+  astro: AstroGlobal,
+): Promise<{ user: SignedInUser; sessionId: string } | Response> {
+  const user = pageUser(astro);
+  if (user instanceof Response) return user;
+  return orRefusal(astro, async () => requireSession(astro));
+}
+
+/** For a page's frontmatter: the administrator signed in in a browser; for anybody else the page is not there. */
+export async function pageAdministrator(astro: AstroGlobal): Promise<SignedInUser | Response> {
+  const session = await pageSession(astro);
+  if (session instanceof Response) return session;
+  return session.user.isAdministrator ? session.user : astro.rewrite('/404');
 }
 
 /** For a page's frontmatter: the person inside a network, or the response to return instead. */

@@ -31,7 +31,8 @@ export const sessionStore: Adapter = {
   },
   async setSession(session) {
     const endsAt = new Date(Date.now() + config().session.maxDays * DAY_MS);
-    await insertSession(session.id, { userId: session.userId, expiresAt: session.expiresAt, endsAt });
+    const { userId, expiresAt, attributes } = session;
+    await insertSession(session.id, { userId, expiresAt, endsAt, ...attributes });
   },
   updateSessionExpiration: (id, expiresAt) => moveSessionExpiry(id, expiresAt),
   deleteSession: (id) => deleteSession(id),

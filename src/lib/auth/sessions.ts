@@ -1,5 +1,6 @@
 import { Lucia, TimeSpan } from 'lucia';
 import { config } from '#lib/config/index';
+import { type SessionOrigin } from '#db/queries/sessions';
 import { sessionStore } from './sessionStore';
 
 /** The person behind a request. */
@@ -14,6 +15,7 @@ declare module 'lucia' {
   interface Register {
     Lucia: Lucia<Record<never, never>, Omit<SignedInUser, 'id'>>;
     DatabaseUserAttributes: Omit<SignedInUser, 'id'>;
+    DatabaseSessionAttributes: Partial<SessionOrigin>;
   }
 }
 
@@ -27,8 +29,11 @@ export interface SessionCookie {
 /**
  * Everything the rest of the program knows of sessions; Lucia stays behind these four functions.
  */
-export async function startSession(userId: string): Promise<SessionCookie> {
-  const session = await lucia().createSession(userId, {});
+export async function startSession(
+  userId: string,
+  origin: Partial<SessionOrigin> = {},
+): Promise<SessionCookie> {
+  const session = await lucia().createSession(userId, origin);
   return cookie(session.id, config().session.maxDays * 86_400);
 }
 

@@ -14,8 +14,12 @@ let decoyHash: Promise<string> | undefined;
  * Signs a person in by e-mail and password. An unknown address takes as long as a wrong password and answers the same.
  * Attempts are counted per address of origin and e-mail together, so nobody can lock somebody else out.
  */
-export async function signIn(email: string, password: string, clientAddress: string): Promise<SignInResult> {
-  const attemptKey = `${clientAddress} ${email.toLowerCase()}`;
+export async function signIn(
+  email: string,
+  password: string,
+  from: { address: string; agent: string | null },
+): Promise<SignInResult> {
+  const attemptKey = `${from.address} ${email.toLowerCase()}`;
   const retryAfterSec = allowAttempt(attemptKey, Date.now());
   if (retryAfterSec > 0) return { outcome: 'too-many', retryAfterSec };
   const found = await findCredentials(email);
@@ -23,5 +27,5 @@ export async function signIn(email: string, password: string, clientAddress: str
   const fits = await verifyPassword(found?.passwordHash ?? (await decoyHash), password);
   if (!found || !fits || found.user.disabledAt) return { outcome: 'wrong' };
   forgetAttempts(attemptKey);
-  return { outcome: 'signed-in', cookie: await startSession(found.user.id) };
+  return { outcome: 'signed-in', cookie: await startSession(found.user.id, from) };
 }

@@ -6,31 +6,58 @@ export const ROLES = ['operator', 'liaison', 'regulator'] as const;
 
 export const signInSchema = z.object({
   email: z.string().trim().min(1, 'must not be empty').max(254),
-  password: z.string().min(1, 'must not be empty').max(1000),
+  password: z.string().trim().min(1, 'must not be empty').max(1000),
 });
 
+/** Spaces around a password are left out here as when signing in: they come from copying. */
 export const newPasswordSchema = z
   .string()
+  .trim()
   .min(12, 'must have at least 12 characters')
   .max(1000, 'must have at most 1,000 characters');
 
 /** A role in a network, by its slug. */
 export const membershipSchema = z.object({ network: z.string(), role: z.enum(ROLES) });
+export type RoleGiven = z.output<typeof membershipSchema>;
+
+const MOST_ROLES = 3000;
 
 export const newPersonSchema = z.object({
   name: shortText,
   email: emailAddress,
   isAdministrator: z.boolean().default(false),
-  roles: z.array(membershipSchema).default([]),
+  roles: z.array(membershipSchema).max(MOST_ROLES).default([]),
+  password: newPasswordSchema.optional().describe('Left out, one is made and answered once'),
 });
 export type NewPerson = z.output<typeof newPersonSchema>;
 
 export const personChangesSchema = z.object({
   name: shortText,
   isAdministrator: z.boolean(),
-  roles: z.array(membershipSchema),
+  roles: z.array(membershipSchema).max(MOST_ROLES),
 });
 export type PersonChanges = z.output<typeof personChangesSchema>;
+
+/** What is left out stays. */
+export const personPatchSchema = personChangesSchema
+  .partial()
+  .extend({ disabled: z.boolean().optional().describe('True: no sign-in, no token, every session over') })
+  .strict()
+  .refine(
+    (patch) => patch.disabled === undefined || Object.keys(patch).length === 1,
+    'disabled must be sent alone',
+  );
+export type PersonPatch = z.output<typeof personPatchSchema>;
+
+export const ownPasswordChangeSchema = z.object({
+  currentPassword: z.string().trim().min(1, 'must not be empty').max(1000),
+  newPassword: newPasswordSchema,
+});
+export type OwnPasswordChange = z.output<typeof ownPasswordChangeSchema>;
+
+export const passwordResetSchema = z.object({
+  password: newPasswordSchema.optional().describe('Left out, one is made and answered once'),
+});
 
 /** How long an access token may hold, in days. */
 export const ACCESS_TOKEN_DAYS = [7, 30, 90, 365] as const;
@@ -72,4 +99,64 @@ registerRoute({
   path: '/api/v1/session',
   summary: 'Sign out',
   responses: { 204: { description: 'Signed out, or was not signed in' } },
+});
+
+export const personSchema = z.object({
+  id: z.string(),
+  name: z.string(),
+  email: z.string(),
+  isAdministrator: z.boolean(),
+  createdAt: z.string(),
+  disabledAt: z.string().nullable(),
+  roles: z.array(membershipSchema),
+});
+export type PersonEntry = z.output<typeof personSchema>;
+
+const onePerson = z.object({ person: personSchema });
+const madePassword = z.string().nullable().describe('Told this once; null where the caller chose it');
+const params = z.object({ id: z.string() });
+
+registerRoute({
+  access: 'person',
+  method: 'get',
+  path: '/api/v1/people',
+  summary: 'Everybody by name, disabled people too (administrator)',
+  responses: {
+    200: { description: 'All', ...jsonOf(z.object({ items: z.array(personSchema), next: z.null() })) },
+  },
+});
+registerRoute({
+  access: 'person',
+  method: 'post',
+  path: '/api/v1/people',
+  summary: 'Add a person with roles (administrator, not with an access token)',
+  request: { body: jsonOf(newPersonSchema) },
+  responses: {
+    201: { description: 'The person', ...jsonOf(onePerson.extend({ password: madePassword })) },
+  },
+});
+registerRoute({
+  access: 'person',
+  method: 'get',
+  path: '/api/v1/people/{id}',
+  summary: 'A person with the roles held in each network (administrator)',
+  request: { params },
+  responses: { 200: { description: 'The person', ...jsonOf(onePerson) } },
+});
+registerRoute({
+  access: 'person',
+  method: 'patch',
+  path: '/api/v1/people/{id}',
+  summary: 'Change name, roles, administration, or disable (administrator, not with an access token)',
+  request: { params, body: jsonOf(personPatchSchema) },
+  responses: { 200: { description: 'The person as it is now', ...jsonOf(onePerson) } },
+});
+registerRoute({
+  access: 'person',
+  method: 'post',
+  path: '/api/v1/people/{id}/password',
+  summary:
+    'Give a person a new password; every session of theirs ends (administrator, not with an access token)',
+  request: { params, body: jsonOf(passwordResetSchema) },
+  responses: { 200: { description: 'Done', ...jsonOf(z.object({ password: madePassword })) } },
 });

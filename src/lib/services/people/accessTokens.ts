@@ -1,8 +1,18 @@
-import { insertAccessToken, revokeAccessToken } from '#db/queries/accessTokens';
+import {
+  insertAccessToken,
+  listAccessTokens,
+  revokeAccessToken,
+  type AccessTokenRow,
+} from '#db/queries/accessTokens';
 import { appendAudit } from '#db/queries/audit';
 import { inTransaction } from '#db/queries/connection';
 
 const DAY_MS = 86_400_000;
+
+/** A person's tokens, newest first, ended ones too; the secrets themselves are kept nowhere. */
+export function accessTokensOf(userId: string): Promise<AccessTokenRow[]> {
+  return listAccessTokens(userId);
+}
 
 /** Makes a token for a person's scripts, told this once. */
 export function makeAccessToken(userId: string, name: string, days: number): Promise<string> {

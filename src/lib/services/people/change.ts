@@ -6,8 +6,11 @@ import { type PersonChanges } from '#lib/contracts/people';
 import { type Person } from './list';
 import { setRoles } from './memberships';
 
-/** `last-administrator`: refused, because nobody could administer afterwards. */
-export type PersonChange = 'changed' | 'last-administrator';
+/**
+ * Refused are `last-administrator`, because nobody could administer afterwards, and `yourself`: who takes their own access
+ * away cannot give it back, so somebody else has to do it.
+ */
+export type PersonChange = 'changed' | 'last-administrator' | 'yourself';
 
 /** Changes a person's name, roles and whether he or she administers. */
 export function changePerson(
@@ -18,7 +21,8 @@ export function changePerson(
   const { id } = person.user;
   const { name, isAdministrator, roles } = changes;
   return inTransaction(async (transaction) => {
-    if (!isAdministrator && (await isLastAdministrator(id, transaction))) return 'last-administrator';
+    const refusal = isAdministrator ? null : await whyNot(person, byUserId, transaction);
+    if (refusal) return refusal;
     await updateUser(id, { name, isAdministrator }, transaction);
     await setRoles(id, roles, transaction);
     const before = {
@@ -36,7 +40,8 @@ export function changePerson(
 export function disablePerson(person: Person, byUserId: string): Promise<PersonChange> {
   const { id } = person.user;
   return inTransaction(async (transaction) => {
-    if (await isLastAdministrator(id, transaction)) return 'last-administrator';
+    const refusal = await whyNot(person, byUserId, transaction);
+    if (refusal) return refusal;
     await updateUser(id, { disabledAt: new Date() }, transaction);
     await deleteSessionsOf(id, transaction);
     await audit(byUserId, 'person.disable', id, {}, transaction);
@@ -53,9 +58,16 @@ export function enablePerson(person: Person, byUserId: string): Promise<void> {
   });
 }
 
-async function isLastAdministrator(id: string, transaction: Connection): Promise<boolean> {
+/** Why a person may not be taken out of the administrators, or null. */
+async function whyNot(
+  { user }: Person,
+  byUserId: string,
+  transaction: Connection,
+): Promise<'last-administrator' | 'yourself' | null> {
   const administrators = await lockAdministrators(transaction);
-  return administrators.length === 1 && administrators[0] === id;
+  if (!administrators.includes(user.id)) return null;
+  if (administrators.length === 1) return 'last-administrator';
+  return user.id === byUserId ? 'yourself' : null;
 }
 
 function audit(

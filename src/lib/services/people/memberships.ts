@@ -1,17 +1,12 @@
 import { type Connection } from '#db/queries/connection';
 import { listNetworks } from '#db/queries/networks';
-import {
-  deleteMembership,
-  insertMembership,
-  listMemberships,
-  type Membership,
-  type Role,
-} from '#db/queries/users';
+import { deleteMembership, insertMembership, listMemberships, type Membership } from '#db/queries/users';
+import { type RoleGiven } from '#lib/contracts/people';
 
-/** A role in a network, by the network's slug. */
-export interface RoleGiven {
-  network: string;
-  role: Role;
+/** Slugs among the roles that name no network. */
+export async function unknownNetworks(roles: readonly RoleGiven[]): Promise<string[]> {
+  const known = new Set((await listNetworks()).map(({ slug }) => slug));
+  return [...new Set(roles.map(({ network }) => network))].filter((slug) => !known.has(slug));
 }
 
 /** Makes a person's roles exactly these. A network that does not exist gives nothing. */

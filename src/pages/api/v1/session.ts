@@ -8,7 +8,8 @@ import { route } from '#lib/http/route';
 
 export const POST = route(async (context) => {
   const { email, password } = await readJson(context.request, signInSchema);
-  const result = await signIn(email, password, context.clientAddress);
+  const agent = context.request.headers.get('user-agent');
+  const result = await signIn(email, password, { address: context.clientAddress, agent });
   if (result.outcome === 'too-many') {
     throw new Problem(429, 'too-many-attempts', 'Too many attempts', 'Wait before you try again.', {
       headers: { 'Retry-After': String(result.retryAfterSec) },

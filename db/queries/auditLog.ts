@@ -1,0 +1,62 @@
+import { pool, type Connection } from './connection';
+
+/** An act as the trail shows it. */
+export interface AuditRecord {
+  id: number;
+  at: Date;
+  userId: string | null;
+  networkId: number | null;
+  action: string;
+  subject: string;
+  detail: Record<string, unknown>;
+}
+
+/** Which acts are asked for; what is left out does not matter. */
+export interface AuditFilter {
+  userId?: string | undefined;
+  networkId?: number | undefined;
+  action?: string | undefined;
+  /** Only acts before this one. */
+  beforeId?: number | undefined;
+}
+
+/** Acts that fit, newest first, at most `limit`. */
+export async function listAudit(
+  { userId, networkId, action, beforeId }: AuditFilter,
+  limit: number,
+  conn: Connection = pool(),
+): Promise<AuditRecord[]> {
+  const query = conn('audit_log').orderBy('id', 'desc').limit(limit);
+  if (userId !== undefined) void query.where({ user_id: userId });
+  if (networkId !== undefined) void query.where({ network_id: networkId });
+  if (action !== undefined) void query.where({ action });
+  if (beforeId !== undefined) void query.where('id', '<', beforeId);
+  const rows: AuditLogRow[] = await query.select({
+    id: 'id',
+    at: 'at',
+    userId: 'user_id',
+    networkId: 'network_id',
+    action: 'action',
+    subject: 'subject',
+    detail: 'detail',
+  });
+  return rows.map((row) => ({ ...row, id: Number(row.id), detail: detailOf(row.detail) }));
+}
+
+/** Every kind of act that has happened, by name. */
+export async function listAuditActions(conn: Connection = pool()): Promise<string[]> {
+  return conn('audit_log').distinct('action').orderBy('action').pluck('action');
+}
+
+/** How many acts the chain holds. */
+export async function countAudit(conn: Connection = pool()): Promise<number> {
+  const head = await conn('audit_head').where({ only_row: 1 }).first('last_id');
+  return Number(head.last_id);
+}
+
+type AuditLogRow = Omit<AuditRecord, 'id' | 'detail'> & { id: number | string; detail: unknown };
+
+/** The driver answers JSON columns as text or parsed, as the server tells their type. */
+function detailOf(detail: unknown): Record<string, unknown> {
+  return (typeof detail === 'string' ? JSON.parse(detail) : detail) as Record<string, unknown>;
+}

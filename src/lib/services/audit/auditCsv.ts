@@ -1,0 +1,26 @@
+import { type AuditFilter } from '#db/queries/auditLog';
+import { csvText } from '../summaries/csvText';
+import { auditTrail, type Act } from './trail';
+
+/** Acts in one file at most; the newest of those asked for. */
+export const MOST_CSV_ACTS = 20_000;
+
+const HEADER = ['id', 'at', 'person', 'network', 'action', 'subject', 'details'];
+
+/** The acts that fit as CSV, newest first; times in UTC. */
+export async function auditCsv(filter: AuditFilter): Promise<string> {
+  const { acts } = await auditTrail(filter, MOST_CSV_ACTS);
+  return csvText([HEADER, ...acts.map(rowOf)]);
+}
+
+function rowOf({ id, at, person, network, action, subject, details }: Act) {
+  return [
+    id,
+    at.toISOString(),
+    person?.name ?? null,
+    network?.slug ?? null,
+    action,
+    subject,
+    details.join('; '),
+  ];
+}

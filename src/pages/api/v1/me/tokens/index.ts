@@ -1,0 +1,18 @@
+import { requireSession, requireUser } from '#lib/auth/guards';
+import { newAccessTokenSchema } from '#lib/contracts/people';
+import { readJson } from '#lib/http/parse';
+import { json } from '#lib/http/respond';
+import { route } from '#lib/http/route';
+import { accessTokensOf, makeAccessToken } from '#lib/services/people/accessTokens';
+import { accessTokenView } from '#lib/services/people/view';
+
+export const GET = route(async (context) => {
+  const tokens = await accessTokensOf(requireUser(context).id);
+  return json({ items: tokens.map(accessTokenView), next: null });
+});
+
+export const POST = route(async (context) => {
+  const { user } = requireSession(context);
+  const { name, days } = await readJson(context.request, newAccessTokenSchema);
+  return json({ token: await makeAccessToken(user.id, name, days) }, { status: 201 });
+});
