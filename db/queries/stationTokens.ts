@@ -3,6 +3,8 @@ import { pool, type Connection } from './connection';
 
 export interface StationTokenRow {
   id: number;
+  /** What people call it; empty when they did not say. */
+  label: string;
   createdAt: Date;
   revokedAt: Date | null;
   lastUsedAt: Date | null;
@@ -40,10 +42,21 @@ export async function listStationTokens(
 ): Promise<StationTokenRow[]> {
   return conn('station_tokens').where({ station_id: stationId }).orderBy('id', 'desc').select({
     id: 'id',
+    label: 'label',
     createdAt: 'created_at',
     revokedAt: 'revoked_at',
     lastUsedAt: 'last_used_at',
   });
+}
+
+/** Gives a token of the station the name that people tell it by. */
+export async function labelStationToken(
+  stationId: number,
+  id: number,
+  label: string,
+  conn: Connection,
+): Promise<void> {
+  await conn('station_tokens').where({ id, station_id: stationId }).update({ label });
 }
 
 /** Notes that a token was used; only when the last note is more than a minute old. */

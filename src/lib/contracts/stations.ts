@@ -1,7 +1,7 @@
 import { z } from 'zod';
 import { bandByNominalHz } from '#lib/acoustics/bands';
 import { FLAG_NAMES } from '#lib/acoustics/validity';
-import { instant, shortText } from './common';
+import { instant, reasonText, shortText } from './common';
 import { registerRoute } from './registry';
 
 const code = z
@@ -88,6 +88,7 @@ export const stationChangesSchema = z
     lastBandHz: bandHz,
     ...optional,
     retired: z.boolean().describe('A retired station takes no more posts; its data stay'),
+    reason: reasonText.describe('Why, for the audit trail'),
   })
   .partial()
   .strict();
@@ -182,25 +183,4 @@ registerRoute({
   summary: 'Change, retire or bring back a station (operator)',
   request: { ...ofStation, body: jsonOf(stationChangesSchema) },
   responses: { 200: { description: 'The station as it is now', ...jsonOf(one) } },
-});
-registerRoute({
-  access: 'person',
-  method: 'post',
-  path: `${path}/{code}/tokens`,
-  summary: 'Make a further token for a station (operator); others stay in force',
-  request: ofStation,
-  responses: {
-    201: {
-      description: 'The token, shown this once',
-      ...jsonOf(z.object({ id: z.number().int(), token: z.string() })),
-    },
-  },
-});
-registerRoute({
-  access: 'person',
-  method: 'delete',
-  path: `${path}/{code}/tokens/{id}`,
-  summary: 'Revoke a token of a station at once (operator)',
-  request: { params: z.object({ network, code: z.string(), id: z.string() }) },
-  responses: { 204: { description: 'Revoked' } },
 });

@@ -21,13 +21,25 @@ export async function submitForm<T>(
   request: Request,
   act: (values: FormValues) => Promise<T>,
 ): Promise<Submission<T>> {
-  const values = valuesOf(await request.formData());
+  const form = await readForm(request);
+  const values = valuesOf(form ?? new FormData());
+  if (!form)
+    return { isDone: false, values, errors: { '': 'What was sent is no form. Nothing was changed.' } };
   try {
     return { isDone: true, value: await act(values) };
   } catch (error) {
     const errors = formErrors(error);
     if (!errors) throw error;
     return { isDone: false, values, errors };
+  }
+}
+
+/** The posted form, or null when the body is something else. */
+async function readForm(request: Request): Promise<FormData | null> {
+  try {
+    return await request.formData();
+  } catch {
+    return null;
   }
 }
 
@@ -57,5 +69,7 @@ function formErrors(error: unknown): FormErrors | null {
 }
 
 function firstOfEach(fields: { field: string; message: string }[]): FormErrors {
-  return Object.fromEntries(fields.toReversed().map(({ field, message }) => [field, message]));
+  const errors: Record<string, string> = {};
+  for (const { field, message } of fields) errors[field] ??= message;
+  return errors;
 }

@@ -32,7 +32,8 @@ export async function changeStation(
     const { networkId } = station;
     const action = changes.retired === undefined ? 'station.change' : retirement(changes.retired);
     const subject = `station ${station.code}`;
-    await appendAudit({ userId, networkId, action, subject, detail: { before, after } }, transaction);
+    const detail = { before, after, ...(changes.reason !== undefined && { reason: changes.reason }) };
+    await appendAudit({ userId, networkId, action, subject, detail }, transaction);
     const changed = await findStationById(station.id, transaction);
     return { outcome: 'changed', station: changed ?? station };
   });

@@ -1,0 +1,15 @@
+/** Labels of the station form's fields, by name. */
+export const STATION_LABELS = {
+  name: 'Name',
+  code: 'Code',
+  latitude: 'Latitude',
+  longitude: 'Longitude',
+  placement: 'Microphone',
+  mastHeight: 'Height',
+  surroundings: 'Surroundings',
+  bandFraction: 'Bands',
+  firstBandHz: 'Lowest band',
+  lastBandHz: 'Highest band',
+  intervalSeconds: 'Interval',
+  acceptsFrom: 'Refuse intervals before',
+} as const;
