@@ -1,5 +1,6 @@
-import { listLimitRecords } from '#db/queries/limits';
 import { pool, type Connection } from '#db/queries/connection';
+import { countClosedWindows, countStandingByLimit } from '#db/queries/limitActivity';
+import { listLimitRecords } from '#db/queries/limits';
 import { listStations } from '#db/queries/stations';
 import type { Limit, LimitDetail } from '#lib/contracts/limits';
 import { byLimit } from './force';
@@ -29,6 +30,20 @@ export async function readLimit(
   const ofLimit = await listLimitRecords(networkId, limitId, conn);
   if (ofLimit.length === 0) return null;
   return limitView(ofLimit, await readerOf(networkId, seesRecipients, conn));
+}
+
+/** How many exceedances of each limit stand whose window begins in `fromSec <= t < toSec`; limits without any are left out. */
+export async function exceedancesByLimit(
+  networkId: number,
+  fromSec: number,
+  toSec: number,
+): Promise<Map<number, number>> {
+  return countStandingByLimit(networkId, fromSec, toSec);
+}
+
+/** How many windows of a limit have closed and wait to be judged. */
+export async function countWaitingWindows(limitId: number): Promise<number> {
+  return countClosedWindows(limitId, Math.floor(Date.now() / 1000));
 }
 
 async function readerOf(

@@ -1,12 +1,13 @@
 import { appendAudit } from '#db/queries/audit';
 import { inTransaction, type Connection } from '#db/queries/connection';
 import { findLimit, insertLimit, insertVersion, lockLimits, withdrawLimit } from '#db/queries/limits';
+import { settingsAt } from '#db/queries/networks';
 import { listStations } from '#db/queries/stations';
 import { formatInstantUtc } from '#lib/contracts/common';
 import type { Limit, NewLimit } from '#lib/contracts/limits';
 import { readLimit } from './list';
 import { pendLimit } from './pendLimit';
-import { readRule, type FieldProblem, type LimitRule } from './rule';
+import { readRule, type FieldProblem, type LimitRule, type ReadRule } from './rule';
 
 /** Who sets limits where. */
 export interface LimitSetter {
@@ -80,8 +81,14 @@ export async function endLimit(setter: LimitSetter, limitId: number, reason: str
   }, ISOLATION);
 }
 
-async function ruleOf({ networkId }: LimitSetter, limit: NewLimit) {
-  return readRule(limit, await listStations(networkId), Math.floor(Date.now() / 1000));
+async function ruleOf({ networkId }: LimitSetter, limit: NewLimit): Promise<ReadRule> {
+  const nowSec = Math.floor(Date.now() / 1000);
+  const { scheme } = await settingsAt(networkId, nowSec);
+  if (limit.window === 'evening' && scheme.eveningStartMin === null) {
+    const message = 'must be another one: this network has no evening';
+    return { isValid: false, problems: [{ field: 'window', message }] };
+  }
+  return readRule(limit, await listStations(networkId), nowSec);
 }
 
 async function audited(

@@ -1,0 +1,98 @@
+import type { PeriodScheme } from '#lib/acoustics/dayEveningNight';
+import { formatClockTime } from '#lib/contracts/common';
+import { WEEKDAYS, type Limit, type LimitVersionView, type Weekday } from '#lib/contracts/limits';
+import { formatCoverage } from '#lib/format/levels';
+
+export const STATE_WORDS: Readonly<Record<Limit['state'], string>> = {
+  'in-force': 'In force',
+  upcoming: 'To come',
+  withdrawn: 'Withdrawn',
+};
+
+export const WEEKDAY_WORDS: Readonly<Record<Weekday, string>> = {
+  mon: 'Mon',
+  tue: 'Tue',
+  wed: 'Wed',
+  thu: 'Thu',
+  fri: 'Fri',
+  sat: 'Sat',
+  sun: 'Sun',
+};
+
+/** "every day", "Mon–Fri", "Mon, Wed–Fri" of weekdays in their order. */
+export function weekdaysWords(days: readonly Weekday[]): string {
+  if (days.length === WEEKDAYS.length) return 'every day';
+  const runs: Weekday[][] = [];
+  for (const day of days) {
+    const run = runs.at(-1);
+    const last = run?.at(-1);
+    if (run && last && WEEKDAYS.indexOf(day) === WEEKDAYS.indexOf(last) + 1) run.push(day);
+    else runs.push([day]);
+  }
+  return runs.map(runWords).join(', ');
+}
+
+function runWords(run: readonly Weekday[]): string {
+  const words = run.map((day) => WEEKDAY_WORDS[day]);
+  return words.length > 2 ? `${words[0]}–${words.at(-1)}` : words.join(', ');
+}
+
+/** "23:00–07:00" of a period of day of a network; null where the network has no such period. */
+export function hoursOf(period: 'day' | 'evening' | 'night', scheme: PeriodScheme): string | null {
+  const { dayStartMin, eveningStartMin, nightStartMin } = scheme;
+  const edges = {
+    day: [dayStartMin, eveningStartMin ?? nightStartMin],
+    evening: [eveningStartMin, nightStartMin],
+    night: [nightStartMin, dayStartMin],
+  } as const;
+  const [from, to] = edges[period];
+  return from === null ? null : `${formatClockTime(from)}–${formatClockTime(to)}`;
+}
+
+/** When a limit's windows begin: "every day, 22:00–06:00", "Mon–Fri, night (23:00–07:00)". */
+export function whenWords(
+  { weekdays, window, from, to }: Pick<LimitVersionView, 'weekdays' | 'window' | 'from' | 'to'>,
+  scheme: PeriodScheme,
+): string {
+  const days = weekdaysWords(weekdays);
+  if (window === '15min' || window === '1h') {
+    return from === null || to === null ? `${days}, all day` : `${days}, ${from}–${to}`;
+  }
+  const hours = hoursOf(window, scheme);
+  return hours === null ? `${days}, ${window}` : `${days}, ${window} (${hours})`;
+}
+
+/** "every station", or their codes. */
+export function stationsWords(stations: readonly string[] | null): string {
+  return stations === null ? 'every station' : stations.join(', ');
+}
+
+/** Coverage that a window needs to be compared. */
+export function coverageWords(
+  { metric, minimumCoverage }: Pick<LimitVersionView, 'metric' | 'minimumCoverage'>,
+  networkMinimum: number,
+): string {
+  if (metric === 'LAFmax') return 'any: a maximum that was measured is one';
+  if (minimumCoverage === null) return `${formatCoverage(networkMinimum)} (the network’s minimum)`;
+  return formatCoverage(minimumCoverage);
+}
+
+/** Labels of the form's fields, by name. */
+export const LIMIT_LABELS = {
+  name: 'Name',
+  metric: 'What is compared',
+  band: 'Band',
+  bandHz: 'Band',
+  bandFraction: 'Band',
+  window: 'Window',
+  threshold: 'Limit',
+  weekdays: 'Days of the week',
+  from: 'Windows begin from',
+  to: 'and before',
+  minimumCoverage: 'Minimum coverage',
+  scope: 'Where it holds',
+  stations: 'Stations',
+  recipients: 'Who gets e-mail',
+  effectiveFrom: 'In force from',
+  reason: 'Reason',
+} as const;

@@ -1,0 +1,96 @@
+import { bandLabel, type Band, type BandFraction } from '#lib/acoustics/bands';
+import { formatInstantUtc, parseInstant } from '#lib/contracts/common';
+import { WEEKDAYS, type Limit } from '#lib/contracts/limits';
+import { typedNumber, type FormValues } from '#lib/http/forms';
+import { parseUrlInstant, urlInstant } from '#lib/time/urlPeriod';
+
+/**
+ * What was typed into the form of a limit, as the interface's JSON has it; its schema judges the values. A band, stations and a
+ * minimum coverage count only where they go with the other choices: without scripts their fields are always there.
+ */
+export function limitOfForm({ text, all }: FormValues, zone: string) {
+  return {
+    name: text['name'] ?? '',
+    metric: text['metric'],
+    window: text['window'],
+    ...(text['metric'] === 'bandLeq' ? bandOf(text['band'] ?? '') : {}),
+    threshold: typedNumber(text['threshold']),
+    weekdays: all('weekdays'),
+    from: text['from'] || null,
+    to: text['to'] || null,
+    minimumCoverage: text['metric'] === 'LAFmax' ? null : fractionOf(text['minimumCoverage']),
+    stations: text['scope'] === 'chosen' ? all('stations') : null,
+    recipients: (text['recipients'] ?? '').split(/[\s,;]+/).filter((address) => address !== ''),
+    effectiveFrom: instantOf(text['effectiveFrom'] ?? '', zone),
+    reason: text['reason'] ?? '',
+  };
+}
+
+/** What the form of a new limit shows at first. */
+export const NEW_LIMIT_VALUES: FormValues = valuesOf(
+  { metric: 'LAeq', window: '15min', scope: 'all' },
+  { weekdays: WEEKDAYS },
+);
+
+/**
+ * What the form shows of a limit that is to be changed: all but the reason. A change holds from now on unless told otherwise; one
+ * of a limit that is to come, from when that would.
+ */
+export function limitValues(limit: Limit, zone: string): FormValues {
+  const { bandFraction, bandHz, minimumCoverage, stations, recipients = [] } = limit;
+  const upcomingSec = limit.state === 'upcoming' ? parseInstant(limit.effectiveFrom) : null;
+  const isAllDay = limit.from === '00:00' && limit.to === '24:00';
+  return valuesOf(
+    {
+      name: limit.name,
+      metric: limit.metric,
+      window: limit.window,
+      band: bandFraction === null || bandHz === null ? '' : bandValue(bandFraction, bandHz),
+      threshold: String(limit.threshold),
+      from: isAllDay ? '' : (limit.from ?? ''),
+      // A time control has no 24:00; for windows that begin before it, 00:00 is the same.
+      to: isAllDay ? '' : (limit.to?.replace('24:00', '00:00') ?? ''),
+      minimumCoverage: minimumCoverage === null ? '' : String(Math.round(minimumCoverage * 10_000) / 100),
+      scope: stations === null ? 'all' : 'chosen',
+      recipients: recipients.join('\n'),
+      effectiveFrom: upcomingSec === null ? '' : urlInstant(upcomingSec, zone),
+    },
+    { weekdays: limit.weekdays, stations: stations ?? [] },
+  );
+}
+
+/** Bands as choices of the form, by their nominal labels. */
+export function bandChoices(bands: readonly Band[]): { value: string; label: string }[] {
+  return bands.map((band) => ({
+    value: bandValue(band.fraction, band.nominalHz),
+    label: `${bandLabel(band)} ${band.fraction === 3 ? 'third' : 'octave'}`,
+  }));
+}
+
+function bandValue(fraction: BandFraction, nominalHz: number): string {
+  return `${fraction}:${nominalHz}`;
+}
+
+function bandOf(value: string) {
+  const [fraction, hz] = value.split(':').map(Number);
+  return { bandFraction: fraction, bandHz: hz };
+}
+
+function fractionOf(percent: string | undefined): number | null {
+  const typed = typedNumber(percent?.replace('%', '').trim());
+  return typed === undefined ? null : typed / 100;
+}
+
+/** What cannot be read is left for the schema to refuse. */
+function instantOf(text: string, zone: string): string | undefined {
+  if (text === '') return undefined;
+  const sec = parseUrlInstant(text, zone);
+  return sec === null ? text : formatInstantUtc(sec);
+}
+
+function valuesOf(
+  text: Record<string, string>,
+  lists: Readonly<Record<string, readonly string[]>>,
+): FormValues {
+  return { text, all: (name) => [...(lists[name] ?? [])] };
+}
