@@ -1,0 +1,126 @@
+import { pool, type Connection } from '#db/queries/connection';
+import { listSettings, pickSettings } from '#db/queries/networks';
+import { type StationRow } from '#db/queries/stations';
+import { type FigureSheet } from '#lib/contracts/figureSheet';
+import { exclusionPage } from '../exclusions/list';
+import { dateSettings, datePeriods } from '../levels/datePeriods';
+import { periodFigures } from '../levels/figures';
+import { QuarterSeries } from '../levels/quarterSeries';
+import { type Span } from '../levels/spans';
+import { statisticsOf } from '../levels/statistics';
+import { addDays } from '#lib/time/zone';
+import { assessmentRows } from './assessmentRows';
+import { bandRows, octaveRows } from './bandRows';
+import { cautionsOf } from './cautions';
+import { compareWithRaw } from './comparison';
+import { dateRows, datesTouched, usesCnel } from './dates';
+import { distributionOf } from './distribution';
+import { headOf } from './head';
+import { heatMapOf, measuredHours } from './heatMap';
+import { isReadable, MOST_READ, readIntervals } from './intervalPass';
+import { levelRows } from './levelRows';
+import { periodsByClock, periodsByDate } from './periodsOfDay';
+import { byHourOfDay, byWeekday } from './pooled';
+import { type RatingEntry } from './ratingForm';
+import { type SheetSource } from './source';
+import { fractionOf } from './stationBands';
+import { tonalityOf } from './tonality';
+
+/** Longest period that has figures here: a year, whose dates and hours are told one by one. */
+const LONGEST_SEC = 370 * 86_400;
+const MOST_EXCLUSIONS = 200;
+
+export interface SheetQuery extends Span {
+  networkSlug: string;
+  station: StationRow;
+  /** Adjustments and background that a person entered. */
+  rating: RatingEntry;
+  /** Epoch seconds; a period counts as elapsed up to here. */
+  nowSec: number;
+}
+
+/** Whether a period is longer than the page can tell. */
+export function isTooLong({ fromSec, toSec }: Span): boolean {
+  return toSec - fromSec > LONGEST_SEC;
+}
+
+/** Every figure of one station and period. @throws RangeError for a period that is too long. */
+export async function figureSheet(query: SheetQuery, conn: Connection = pool()): Promise<FigureSheet> {
+  if (isTooLong(query)) throw new RangeError('Figures are told of a year at most.');
+  const source = await sourceOf(query, conn);
+  const { station, period, timeline, timeZone, nowSec } = source;
+  const figures = await periodFigures(
+    { station, ...period, timeline, nowSec },
+    { bandPercentiles: true },
+    conn,
+  );
+  const { levels } = figures;
+  const statistics = statisticsOf(figures, { station });
+  const pass = isReadable(source) ? await readIntervals(source) : null;
+  const hours = await measuredHours(source);
+  const dates = await dateRows(source);
+  const tooLong = `Given for periods of up to ${MOST_READ} intervals: every one of them has to be read.`;
+  return {
+    network: query.networkSlug,
+    station: { code: station.code, name: station.name },
+    bandFraction: fractionOf(station, levels),
+    from: statistics.from,
+    to: statistics.to,
+    timeZone,
+    seconds: figures.seconds,
+    coverage: figures.coverage,
+    meetsMinimum: figures.meetsMinimum,
+    minimumCoverage: figures.minimumCoverage,
+    sampleSeconds: statistics.sampleSeconds,
+    head: headOf(source, figures, pass?.facts ?? null),
+    intervals: pass?.facts ?? null,
+    intervalsMissing: pass ? null : tooLong,
+    exclusions: await standingExclusions(source),
+    levels: levelRows(source, figures, statistics),
+    assessments: assessmentRows(source, figures, statistics, hours, query.rating),
+    tonality: tonalityOf(source, levels, pass?.tones.result() ?? null),
+    comparison: pass && compareWithRaw(levels, pass.raw),
+    comparisonMissing: pass ? null : tooLong,
+    dates,
+    hasCnel: usesCnel(source, dates),
+    byClock: await periodsByClock(source),
+    byDate: await periodsByDate(source),
+    bands: bandRows(source, levels),
+    octaves: octaveRows(source, levels),
+    distribution: distributionOf(levels.sums.aClasses, levels.sums.sampleSec),
+    heatMap: heatMapOf(source, hours),
+    byHour: byHourOfDay(hours, source.minimumCoverage),
+    byWeekday: byWeekday(hours, source.minimumCoverage),
+    cautions: cautionsOf(statistics, pass?.facts ?? null),
+  };
+}
+
+async function sourceOf(
+  { station, fromSec, toSec, nowSec }: SheetQuery,
+  conn: Connection,
+): Promise<SheetSource> {
+  const timeline = await listSettings(station.networkId, conn);
+  const { timeZone, minimumCoverage } = pickSettings(timeline, fromSec);
+  const period = { fromSec, toSec };
+  const { fromDate, toDate } = datesTouched({ period, timeZone });
+  const lastNightEndSec = datePeriods(addDays(toDate, -1), timeline).at(-1)?.toSec ?? toSec;
+  const span = {
+    fromSec: Math.min(fromSec, dateSettings(fromDate, timeline).midnightSec),
+    toSec: Math.max(toSec, dateSettings(toDate, timeline).midnightSec, lastNightEndSec),
+  };
+  const series = await QuarterSeries.read({ station, timeline, validity: 'rules' }, span, conn);
+  return { station, period, timeline, timeZone, minimumCoverage, nowSec, series, conn };
+}
+
+async function standingExclusions({ station, period }: SheetSource): Promise<FigureSheet['exclusions']> {
+  const { items } = await exclusionPage({
+    networkId: station.networkId,
+    stationId: station.id,
+    ...period,
+    limit: MOST_EXCLUSIONS,
+    cursor: null,
+  });
+  return items
+    .filter(({ withdrawal }) => withdrawal === null)
+    .map(({ from, to, reason }) => ({ from, to, reason }));
+}

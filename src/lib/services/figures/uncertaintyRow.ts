@@ -1,0 +1,35 @@
+import { CLASS_1_UNCERTAINTY_DB, coverageUncertaintyDb, periodUncertainty } from '#lib/acoustics/uncertainty';
+import { type FigureRow } from '#lib/contracts/figureSheet';
+import { type PeriodFigures } from '../levels/figures';
+import { type MeasuredHour } from './heatMap';
+import { figureRow } from './levelRows';
+
+/** Expanded uncertainty of the period's LAeq: class 1 instrument assumed, drift unknown, gaps by hourly energies. */
+export function uncertaintyRow(figures: PeriodFigures, hours: readonly MeasuredHour[]): FigureRow {
+  const energies = hours
+    .filter(({ levels }) => levels.sums.validSec > 0)
+    .map(({ levels }) => levels.sums.aEnergySec / levels.sums.validSec);
+  const coverageDb =
+    figures.levels.sums.validSec === 0 ? null : coverageUncertaintyDb(energies, figures.coverage);
+  const uncertainty = periodUncertainty({ instrumentDb: CLASS_1_UNCERTAINTY_DB, driftDb: 0, coverageDb });
+  const gaps = coverageDb === null ? '' : coverageDb.toFixed(2);
+  return figureRow(
+    {
+      key: 'U',
+      name: 'Expanded uncertainty U of LAeq',
+      value: uncertainty?.expandedDb ?? null,
+      convention:
+        'U = 2u, coverage factor 2, about 95 % (ISO 1996-2). The term for gaps is Bittern’s own, 4.34·s/(Ē·√n)·√(1 − c) over the ' +
+        'hourly energies, and assumes that gaps fall at random.',
+      note: uncertainty
+        ? `u = ${uncertainty.uDb.toFixed(2)} dB, of instrument ${CLASS_1_UNCERTAINTY_DB} dB (class 1 assumed) and gaps ${gaps} dB. ` +
+          'Calibration drift is not known here and not in it; nor are site, weather and source.'
+        : null,
+      ifMissing:
+        figures.levels.sums.validSec === 0
+          ? 'No valid data in this period.'
+          : 'With gaps it takes at least two hours with data to tell their part.',
+    },
+    figures,
+  );
+}
