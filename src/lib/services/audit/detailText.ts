@@ -20,8 +20,7 @@ function lineOf(path: string, was: string | undefined, is: string | undefined): 
 /** The leaves of a value by their path. Lists are one leaf. */
 function flat(value: unknown, path = '', depth = 0): Map<string, string> {
   if (value === undefined) return new Map();
-  const isBranch =
-    typeof value === 'object' && value !== null && !Array.isArray(value) && depth < MOST_DEPTH;
+  const isBranch = typeof value === 'object' && value !== null && !Array.isArray(value) && depth < MOST_DEPTH;
   if (!isBranch) return new Map([[path, leafText(value)]]);
   const entries = Object.entries(value).flatMap(([name, member]) => [
     ...flat(member, path === '' ? name : `${path}.${name}`, depth + 1),
