@@ -1,4 +1,5 @@
 import type { Connection } from './connection';
+import { keepRevision } from './exceedanceRevisions';
 
 /** An exceedance as the judge keeps it: one row a limit, station and beginning of a window. */
 export interface JudgedExceedance {
@@ -65,6 +66,7 @@ export async function insertExceedance(
     coverage: exceedance.coverage,
     detected_at: now,
   });
+  await keepRevision(Number(id), transaction);
   return Number(id);
 }
 
@@ -87,6 +89,7 @@ export async function updateExceedance(
       revision: judged.revision,
       ...(revisedAt && { revised_at: revisedAt }),
     });
+  if (revisedAt) await keepRevision(id, transaction);
 }
 
 /** Windows of standing exceedances of a station that overlap `fromSec <= t < toSec`; none is longer than `longestSec`. */

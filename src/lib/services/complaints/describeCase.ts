@@ -11,7 +11,7 @@ import { dataState, type Whereabouts } from './letter/measured';
 import { tonesParagraph } from './letter/tones';
 import type { ComplaintCase } from './openCase';
 import { distanceInWords } from './whereabouts';
-import { windowStrip } from './windowStrip';
+import { windowStrip } from '../strip/windowStrip';
 
 /** A case in words and as a drawing, for its page. */
 export interface DescribedCase {

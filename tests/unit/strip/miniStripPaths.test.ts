@@ -1,5 +1,5 @@
 import { expect, test } from 'vitest';
-import { miniStripPaths, traceY, xOf } from '#components/complaints/miniStripPaths.ts';
+import { miniStripPaths, traceY, xOf } from '#components/strip/mini/miniStripPaths.ts';
 import type { WindowStrip } from '#lib/contracts/windowStrip';
 
 const strip: WindowStrip = {

@@ -1,0 +1,57 @@
+import { appendAudit } from '#db/queries/audit';
+import { inTransaction } from '#db/queries/connection';
+import { lockExceedance, updateAcknowledgement, type ExceedanceRow } from '#db/queries/exceedances';
+import type { Exceedance, NewAcknowledgement } from '#lib/contracts/exceedances';
+import { exceedanceView, versionOf } from './view';
+
+export type AcknowledgementOutcome =
+  { kind: 'acknowledged'; exceedance: Exceedance } | { kind: 'unknown' } | { kind: 'changed-meanwhile' };
+
+export interface AcknowledgementRequest {
+  networkId: number;
+  id: number;
+  userId: string;
+  given: NewAcknowledgement;
+}
+
+/** Acknowledges an exceedance, or changes what was said of it; the audit trail keeps what stood before. */
+export async function acknowledge(request: AcknowledgementRequest): Promise<AcknowledgementOutcome> {
+  const { networkId, id, userId, given } = request;
+  return inTransaction<AcknowledgementOutcome>(
+    async (transaction) => {
+      const held = await lockExceedance(networkId, id, transaction);
+      if (!held) return { kind: 'unknown' };
+      if (given.version !== null && given.version !== versionOf(held)) return { kind: 'changed-meanwhile' };
+      const { cause, causeDetail, note } = given;
+      const fields = { cause, causeDetail, note, acknowledgedBy: userId, acknowledgedAt: new Date() };
+      await updateAcknowledgement(id, fields, transaction);
+      await appendAudit(
+        {
+          userId,
+          networkId,
+          action: held.acknowledgedAt ? 'exceedance.acknowledge-again' : 'exceedance.acknowledge',
+          subject: `exceedance ${id}`,
+          detail: {
+            station: held.stationCode,
+            revision: held.revision,
+            before: saidBefore(held),
+            after: { cause, causeDetail, note },
+          },
+        },
+        transaction,
+      );
+      const acknowledged = await lockExceedance(networkId, id, transaction);
+      if (!acknowledged) throw new Error(`Exceedance ${id} is not there although it was acknowledged.`);
+      return { kind: 'acknowledged', exceedance: exceedanceView(acknowledged) };
+    },
+    { isolationLevel: 'read committed' },
+  );
+}
+
+function saidBefore({ acknowledgedAt, cause, causeDetail, note }: ExceedanceRow) {
+  return acknowledgedAt && { at: acknowledgedAt.toISOString(), cause, causeDetail, note };
+}
+
+/** Why an acknowledgement was not kept, and what to do. */
+export const CHANGED_MEANWHILE =
+  'The exceedance was revised, or somebody else acknowledged it, after you opened it. Nothing was saved: read it as it is now, then save again.';
