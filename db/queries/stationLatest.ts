@@ -45,6 +45,25 @@ export async function noteLatest(latest: LatestInterval, conn: Connection): Prom
   );
 }
 
+/** Notes the newest stored interval anew, after stored ones went; the time of the last post stays. Without any, the row goes. */
+export async function rederiveLatest(stationId: number, conn: Connection): Promise<void> {
+  const [changed] = await conn.raw(
+    `UPDATE station_latest AS latest JOIN (
+       SELECT * FROM interval_levels WHERE station_id = ? ORDER BY starts_at DESC LIMIT 1
+     ) AS newest ON newest.station_id = latest.station_id
+     SET latest.starts_at = newest.starts_at, latest.duration_sec = newest.duration_sec,
+       latest.laeq_centi_db = newest.laeq_centi_db, latest.lafmax_centi_db = newest.lafmax_centi_db,
+       latest.flags = newest.flags, latest.wind_speed_centi_ms = newest.wind_speed_centi_ms,
+       latest.battery_centi_v = newest.battery_centi_v`,
+    [stationId],
+  );
+  if (changed.affectedRows > 0) return;
+  await conn('station_latest')
+    .where({ station_id: stationId })
+    .whereNotExists(conn('interval_levels').where({ station_id: stationId }).select(conn.raw('1')).limit(1))
+    .delete();
+}
+
 /** The newest interval of each station of a network that has posted. */
 export async function listLatest(networkId: number, conn: Connection = pool()): Promise<LatestInterval[]> {
   const rows: (Omit<LatestInterval, 'windSpeedMs' | 'batteryV'> & {
