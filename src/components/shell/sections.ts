@@ -1,5 +1,6 @@
 /** The pages of a network, as the rail lists them. */
-export type Section = 'map' | 'stations' | 'exceedances' | 'complaints' | 'summaries' | 'limits' | 'settings';
+export type Section =
+  'map' | 'stations' | 'instruments' | 'exceedances' | 'complaints' | 'summaries' | 'limits' | 'settings';
 
 export interface SectionLink {
   section: Section;
@@ -15,6 +16,7 @@ export const SECTION_LINKS: readonly SectionLink[] = [
   { section: 'complaints', label: 'Complaints', keepsPeriod: false },
   { section: 'summaries', label: 'Summaries', keepsPeriod: false },
   { section: 'limits', label: 'Limits', keepsPeriod: false },
+  { section: 'instruments', label: 'Instruments', keepsPeriod: false },
 ];
 
 /** Address of a section; `period` is the query that carries the period, or empty. */
