@@ -20,7 +20,15 @@ const rooms = {
     'src/lib/config',
     'ingest',
   ],
-  'src/pages': ['src/layouts', 'src/components', 'src/lib', 'src/styles', 'ingest/receive', 'ingest/import'],
+  'src/pages': [
+    'src/layouts',
+    'src/components',
+    'src/lib',
+    'src/styles',
+    'ingest/receive',
+    'ingest/quarantine',
+    'ingest/imports',
+  ],
   'src/layouts': ['src/components', 'src/lib', 'src/styles'],
   'src/components': [
     'src/lib/acoustics',

@@ -1,6 +1,15 @@
 /** The pages of a network, as the rail lists them. */
 export type Section =
-  'map' | 'stations' | 'instruments' | 'exceedances' | 'complaints' | 'summaries' | 'limits' | 'settings';
+  | 'map'
+  | 'stations'
+  | 'instruments'
+  | 'exceedances'
+  | 'complaints'
+  | 'summaries'
+  | 'limits'
+  | 'imports'
+  | 'quarantine'
+  | 'settings';
 
 export interface SectionLink {
   section: Section;
@@ -17,6 +26,8 @@ export const SECTION_LINKS: readonly SectionLink[] = [
   { section: 'summaries', label: 'Summaries', keepsPeriod: false },
   { section: 'limits', label: 'Limits', keepsPeriod: false },
   { section: 'instruments', label: 'Instruments', keepsPeriod: false },
+  { section: 'imports', label: 'Imports', keepsPeriod: false },
+  { section: 'quarantine', label: 'Quarantine', keepsPeriod: false },
 ];
 
 /** Address of a section; `period` is the query that carries the period, or empty. */
