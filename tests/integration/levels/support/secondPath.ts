@@ -17,7 +17,10 @@ export interface Asked {
 /** Calibration, selfcheck, overload, tamper, powerloss, clockset and wind, as bits of the stored flags. */
 const LEFT_OUT_FLAGS = 4 | 8 | 1 | 64 | 128 | 256 | 32;
 
-/** Intervals that touch the period, with the seconds of them that lie within it, and whether they count. */
+/**
+ * Intervals that touch the period, with the seconds of them that lie within it, and whether they count. None lasts longer than
+ * an hour: without that bound every question would read the station from its beginning.
+ */
 const TOUCHING = `
   SELECT i.*, s.fraction, s.band_indices,
     LEAST(i.starts_at + i.duration_sec, :toSec) - GREATEST(i.starts_at, :fromSec) AS sec,
@@ -26,7 +29,7 @@ const TOUCHING = `
       AND NOT EXISTS (SELECT 1 FROM exclusions e WHERE e.station_id = i.station_id AND e.withdrawn_at IS NULL
         AND e.starts_at < i.starts_at + i.duration_sec AND e.ends_at > i.starts_at)) AS counts
   FROM interval_levels i JOIN band_sets s ON s.id = i.band_set_id
-  WHERE i.station_id = :stationId AND i.starts_at < :toSec AND i.starts_at + i.duration_sec > :fromSec`;
+  WHERE i.station_id = :stationId AND i.starts_at > :fromSec - 3601 AND i.starts_at < :toSec AND i.starts_at + i.duration_sec > :fromSec`;
 
 async function rowsOf<Row>(select: string, asked: Asked, more: Record<string, number> = {}): Promise<Row[]> {
   const [rows] = await pool().raw(`WITH touching AS (${TOUCHING}) ${select}`, {
