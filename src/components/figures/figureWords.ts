@@ -12,7 +12,8 @@ export function figureWords({
   return value !== null && decimals === 0 ? String(roundHalfUp(value, 0)) : formatLevelDb(value);
 }
 
-/** A share of time or energy in per cent, to 0.1. */
+/** A share of time or energy in per cent, to 0.1; a trace is "<0.1 %", not 0. */
 export function percentWords(share: number): string {
-  return `${roundHalfUp(share * 100, 1).toFixed(1)} %`;
+  if (share > 0 && share < 0.0005) return '<0.1\u00a0%';
+  return `${roundHalfUp(share * 100, 1).toFixed(1)}\u00a0%`;
 }

@@ -4,7 +4,7 @@ import { round, type ChartRange } from './chartScale';
 const CLASSES = 20;
 
 /** Sizes of the drawing in its own units; rows are the lower the more there are. */
-export const HEAT_MAP = { left: 78, width: 720, top: 20 } as const;
+export const HEAT_MAP = { left: 92, width: 720, top: 20 } as const;
 
 /** What is drawn, as SVG path data. */
 export interface HeatMapPaths {

@@ -171,6 +171,8 @@ export interface FigureSheet extends Covered {
   intervalsMissing: string | null;
   exclusions: { from: string; to: string; reason: string }[];
   levels: FigureRow[];
+  /** How levels exceeded N % of the time are made. */
+  exceedanceConvention: string;
   assessments: FigureRow[];
   tonality: Tonality;
   comparison: Comparison | null;

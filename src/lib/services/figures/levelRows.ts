@@ -31,6 +31,12 @@ export function figureRow(
   };
 }
 
+/** How levels exceeded N % of the time are made, told once for all of them. */
+export const EXCEEDANCE_CONVENTION =
+  'LA1 to LA99: the smallest 0.1 dB class of the base samples, rounded half up, that is exceeded for no more than N % of the valid ' +
+  'time, by duration and without interpolation (the inverted distribution). A level needs at least 300/min(N, 100 − N) samples, ' +
+  'Bittern’s own rule.';
+
 /** The levels of the period, A, C and Z. */
 export function levelRows(source: SheetSource, figures: PeriodFigures, statistics: Statistics): FigureRow[] {
   const { sums } = figures.levels;
@@ -90,9 +96,7 @@ function exceedanceRow(percent: number, figures: PeriodFigures, statistics: Stat
       key: `LA${percent}`,
       name: `LA${percent}`,
       value: statistics.LAN[String(percent)] ?? null,
-      convention:
-        `Smallest 0.1 dB class of ${of} exceeded for no more than ${percent} % of the valid time, no interpolation; ` +
-        `from ${samplesNeeded(percent)} samples on.`,
+      convention: `Exceeded ${percent} % of the valid time, of ${of}; from ${samplesNeeded(percent)} samples on.`,
       ifMissing: missingExceedance(percent, figures.levels.sums),
     },
     figures,

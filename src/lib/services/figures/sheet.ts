@@ -18,7 +18,7 @@ import { distributionOf } from './distribution';
 import { headOf } from './head';
 import { heatMapOf, measuredHours } from './heatMap';
 import { isReadable, MOST_READ, readIntervals } from './intervalPass';
-import { levelRows } from './levelRows';
+import { EXCEEDANCE_CONVENTION, levelRows } from './levelRows';
 import { periodsByClock, periodsByDate } from './periodsOfDay';
 import { byHourOfDay, byWeekday } from './pooled';
 import { type RatingEntry } from './ratingForm';
@@ -77,6 +77,7 @@ export async function figureSheet(query: SheetQuery, conn: Connection = pool()):
     intervalsMissing: pass ? null : tooLong,
     exclusions: await standingExclusions(source),
     levels: levelRows(source, figures, statistics),
+    exceedanceConvention: EXCEEDANCE_CONVENTION,
     assessments: assessmentRows(source, figures, statistics, hours, query.rating),
     tonality: tonalityOf(source, levels, pass?.tones.result() ?? null),
     comparison: pass && compareWithRaw(levels, pass.raw),
