@@ -3,6 +3,7 @@ import { newNetworkSchema } from '#lib/contracts/networks';
 import { ROLES } from '#lib/contracts/people';
 import { typedNumber, type FormValues } from '#lib/http/forms';
 import { badRequest, invalidFields } from '#lib/http/problem';
+import { PERIOD_PRESETS } from '#lib/services/networks/formValues';
 import { makeNetwork } from '#lib/services/networks/make';
 
 /** What a new network's form starts with. */
@@ -24,14 +25,14 @@ export const NETWORK_DONE = {
 /** Makes the network that the form describes. @throws {Problem} 422, and zod errors, with what is wrong by field. */
 export async function makeFromForm({ text }: FormValues, userId: string): Promise<string> {
   const coveragePercent = typedNumber(text['minimumCoverage']) ?? NaN;
+  const hours = PERIOD_PRESETS.find(({ key }) => key === text['preset']) ?? text;
   const input = newNetworkSchema.parse({
     slug: text['slug'] ?? '',
     name: text['name'] ?? '',
     timeZone: text['timeZone'] ?? '',
-    periods: { day: text['day'] ?? '', evening: text['evening'] || null, night: text['night'] ?? '' },
-    // What is out of range stays out of range, and the schema tells it.
+    periods: { day: hours['day'] ?? '', evening: hours['evening'] || null, night: hours['night'] ?? '' },
     minimumCoverage: coveragePercent / 100,
-    maximumWindSpeed: typedNumber(text['maximumWindSpeed']),
+    maximumWindSpeed: typedNumber(text['maximumWindSpeed']) ?? NaN,
     excludeRain: text['excludeRain'] === 'yes',
   });
   const made = await makeNetwork(input, userId);
