@@ -5,6 +5,7 @@ import { aggregate } from './jobs/aggregate';
 import { housekeeping } from './jobs/housekeeping';
 import { judgeLimits } from './jobs/judgeLimits';
 import { runLoop, type LoopSettings } from './jobs/loop';
+import { remindOfCalibrations } from './jobs/remindCalibrations';
 import { sendMail } from './jobs/sendMail';
 import { runDueSlots, type SlotJob } from './jobs/slots';
 
@@ -19,6 +20,7 @@ const LOOPS: LoopSettings[] = [
 const SLOT_JOBS: SlotJob[] = [
   { name: 'tick', slotMinutes: 1, run: async () => 'alive' },
   { name: 'housekeeping', slotMinutes: 60, run: housekeeping },
+  { name: 'remind-calibrations', slotMinutes: 60, run: remindOfCalibrations },
 ];
 
 const stop = new AbortController();

@@ -7,6 +7,12 @@ export interface FormValues {
   all(name: string): string[];
 }
 
+/** A posted form with the files that were chosen in it. */
+export interface PostedForm extends FormValues {
+  /** The file chosen in a field, or null where none was. */
+  file(name: string): File | null;
+}
+
 /** Field → what is wrong, in words. An error of the whole form has the empty name. */
 export type FormErrors = Readonly<Record<string, string>>;
 
@@ -19,7 +25,7 @@ export type Submission<T> =
  */
 export async function submitForm<T>(
   request: Request,
-  act: (values: FormValues) => Promise<T>,
+  act: (values: PostedForm) => Promise<T>,
 ): Promise<Submission<T>> {
   const form = await readForm(request);
   const values = valuesOf(form ?? new FormData());
@@ -43,11 +49,15 @@ async function readForm(request: Request): Promise<FormData | null> {
   }
 }
 
-function valuesOf(form: FormData): FormValues {
+function valuesOf(form: FormData): PostedForm {
   const texts = [...form].filter((entry): entry is [string, string] => typeof entry[1] === 'string');
   return {
     text: Object.fromEntries(texts.map(([name, value]) => [name, value.trim()])),
     all: (name) => texts.filter(([other]) => other === name).map(([, value]) => value),
+    file: (name) => {
+      const given = form.get(name);
+      return given instanceof File && given.size > 0 ? given : null;
+    },
   };
 }
 

@@ -1,7 +1,7 @@
 import { appendAudit } from '#db/queries/audit';
-import { inTransaction } from '#db/queries/connection';
+import { inTransaction, type Connection } from '#db/queries/connection';
 import { insertExclusion, readExclusion, type Span } from '#db/queries/exclusions';
-import { findStation, lockStation } from '#db/queries/stations';
+import { findStation, lockStation, type StationRow } from '#db/queries/stations';
 import { formatInstantUtc } from '#lib/contracts/common';
 import { type Exclusion } from '#lib/contracts/exclusions';
 import { exclusionJson } from './exclusionJson';
@@ -19,26 +19,32 @@ export interface ExclusionRequest extends Span {
  * figures follow as quarter-hours are recomputed.
  */
 export async function addExclusion(request: ExclusionRequest): Promise<Exclusion | null> {
-  const { networkId, stationCode, fromSec, toSec, reason, userId } = request;
-  const station = await findStation(networkId, stationCode);
+  const station = await findStation(request.networkId, request.stationCode);
   if (!station) return null;
-  return inTransaction(async (transaction) => {
-    await lockStation(station.id, transaction);
-    const id = await insertExclusion(
-      { networkId, stationId: station.id, fromSec, toSec, reason, createdBy: userId },
-      transaction,
-    );
-    await markTouched(station.id, { fromSec, toSec }, transaction);
-    await appendAudit(
-      {
-        userId,
-        networkId,
-        action: 'exclusion.add',
-        subject: `station ${station.code}`,
-        detail: { exclusion: id, from: formatInstantUtc(fromSec), to: formatInstantUtc(toSec), reason },
-      },
-      transaction,
-    );
-    return exclusionJson(await readExclusion(networkId, id, transaction));
-  });
+  return inTransaction((transaction) => exclude(station, request, transaction));
+}
+
+/** The same in a transaction of the caller's, where something else belongs to it. */
+export async function exclude(
+  station: Pick<StationRow, 'id' | 'code'>,
+  { networkId, fromSec, toSec, reason, userId }: Omit<ExclusionRequest, 'stationCode'>,
+  transaction: Connection,
+): Promise<Exclusion> {
+  await lockStation(station.id, transaction);
+  const id = await insertExclusion(
+    { networkId, stationId: station.id, fromSec, toSec, reason, createdBy: userId },
+    transaction,
+  );
+  await markTouched(station.id, { fromSec, toSec }, transaction);
+  await appendAudit(
+    {
+      userId,
+      networkId,
+      action: 'exclusion.add',
+      subject: `station ${station.code}`,
+      detail: { exclusion: id, from: formatInstantUtc(fromSec), to: formatInstantUtc(toSec), reason },
+    },
+    transaction,
+  );
+  return exclusionJson(await readExclusion(networkId, id, transaction));
 }
