@@ -6,7 +6,10 @@ import { insertLimit } from '#db/queries/limits';
 export const RECIPIENT = 'duty@quay.example';
 
 /** Adds a limit of LAeq,1 h at 55 dB to a network. */
-export async function makeLimit(network: number, name: string): Promise<{ limitId: number; versionId: number }> {
+export async function makeLimit(
+  network: number,
+  name: string,
+): Promise<{ limitId: number; versionId: number }> {
   const id = await inTransaction((transaction) =>
     insertLimit(
       network,
