@@ -51,7 +51,7 @@ const rooms = {
     'db/queries',
   ],
   'src/lib/auth': ['src/lib/services', 'src/lib/contracts', 'src/lib/config', 'src/lib/http', 'db/queries'],
-  'src/lib/http': ['src/lib/services', 'src/lib/contracts', 'src/lib/config', 'db/queries'],
+  'src/lib/http': ['src/lib/services', 'src/lib/contracts', 'src/lib/time', 'src/lib/config', 'db/queries'],
   db: ['src/lib/acoustics', 'src/lib/contracts', 'src/lib/config', 'src/lib/time'],
   ingest: [
     'src/lib/acoustics',
