@@ -80,7 +80,7 @@ export function coverageWords(
 /** Labels of the form's fields, by name. */
 export const LIMIT_LABELS = {
   name: 'Name',
-  metric: 'What is compared',
+  metric: 'Quantity',
   band: 'Band',
   bandHz: 'Band',
   bandFraction: 'Band',
@@ -90,8 +90,8 @@ export const LIMIT_LABELS = {
   from: 'Windows begin from',
   to: 'and before',
   minimumCoverage: 'Minimum coverage',
-  scope: 'Where it holds',
-  stations: 'Stations',
+  scope: 'Stations',
+  stations: 'Chosen stations',
   recipients: 'Who gets e-mail',
   effectiveFrom: 'In force from',
   reason: 'Reason',

@@ -95,14 +95,15 @@ function checkTogether(limit: Checked, context: z.RefinementCtx): void {
   } else if (bandHz !== null || fraction !== null) {
     issue('bandHz', 'goes with the level of a band only');
   }
-  if ((from === null) !== (to === null)) {
+  const isByClock = averaging === '15min' || averaging === '1h';
+  if (!isByClock && (from !== null || to !== null)) {
+    issue('from', `goes with windows of 15 min or 1 h; the ${averaging} has its own hours: leave both out`);
+  } else if ((from === null) !== (to === null)) {
     issue(from === null ? 'from' : 'to', 'must be given together with the other one');
   } else if (from !== null && from === to) {
     issue('to', 'must differ from the beginning; leave both out for all day');
   } else if (from === 1440) {
     issue('from', 'must be from 00:00 to 23:59');
-  } else if (from !== null && averaging !== '15min' && averaging !== '1h') {
-    issue('from', `goes with windows of 15 min or 1 h; the ${averaging} has its own hours`);
   }
 }
 

@@ -26,6 +26,10 @@ describe('descriptors', () => {
       ' and ',
       { symbol: 'L', subscript: 'A10' },
     ]);
+    expect(typesetRuns('Leq,night of the 100 Hz third')).toEqual([
+      { symbol: 'L', subscript: 'eq,night' },
+      ' of the 100 Hz third',
+    ]);
     expect(typesetRuns('Level 90 at London Lane, L100')).toEqual(['Level 90 at London Lane, L100']);
   });
 });

@@ -4,11 +4,14 @@ import { WEEKDAYS, type Limit } from '#lib/contracts/limits';
 import { typedNumber, type FormValues } from '#lib/http/forms';
 import { parseUrlInstant, urlInstant } from '#lib/time/urlPeriod';
 
+/** What stands in the fields of the form. */
+export type LimitValues = Pick<FormValues, 'text' | 'all'>;
+
 /**
  * What was typed into the form of a limit, as the interface's JSON has it; its schema judges the values. A band, stations and a
  * minimum coverage count only where they go with the other choices: without scripts their fields are always there.
  */
-export function limitOfForm({ text, all }: FormValues, zone: string) {
+export function limitOfForm({ text, all }: LimitValues, zone: string) {
   return {
     name: text['name'] ?? '',
     metric: text['metric'],
@@ -27,7 +30,7 @@ export function limitOfForm({ text, all }: FormValues, zone: string) {
 }
 
 /** What the form of a new limit shows at first. */
-export const NEW_LIMIT_VALUES: FormValues = valuesOf(
+export const NEW_LIMIT_VALUES: LimitValues = valuesOf(
   { metric: 'LAeq', window: '15min', scope: 'all' },
   { weekdays: WEEKDAYS },
 );
@@ -36,7 +39,7 @@ export const NEW_LIMIT_VALUES: FormValues = valuesOf(
  * What the form shows of a limit that is to be changed: all but the reason. A change holds from now on unless told otherwise; one
  * of a limit that is to come, from when that would.
  */
-export function limitValues(limit: Limit, zone: string): FormValues {
+export function limitValues(limit: Limit, zone: string): LimitValues {
   const { bandFraction, bandHz, minimumCoverage, stations, recipients = [] } = limit;
   const upcomingSec = limit.state === 'upcoming' ? parseInstant(limit.effectiveFrom) : null;
   const isAllDay = limit.from === '00:00' && limit.to === '24:00';
@@ -71,7 +74,9 @@ function bandValue(fraction: BandFraction, nominalHz: number): string {
   return `${fraction}:${nominalHz}`;
 }
 
+/** Where none is chosen the width does not matter: what is missing is the band. */
 function bandOf(value: string) {
+  if (value === '') return { bandFraction: 3, bandHz: null };
   const [fraction, hz] = value.split(':').map(Number);
   return { bandFraction: fraction, bandHz: hz };
 }
@@ -91,6 +96,6 @@ function instantOf(text: string, zone: string): string | undefined {
 function valuesOf(
   text: Record<string, string>,
   lists: Readonly<Record<string, readonly string[]>>,
-): FormValues {
+): LimitValues {
   return { text, all: (name) => [...(lists[name] ?? [])] };
 }

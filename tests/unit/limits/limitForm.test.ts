@@ -1,0 +1,98 @@
+import fc from 'fast-check';
+import { expect, test } from 'vitest';
+import { bandsOf } from '#lib/acoustics/bands';
+import { formatClockTime } from '#lib/contracts/common';
+import { newLimitSchema, WEEKDAYS, type Limit } from '#lib/contracts/limits';
+import { limitOfForm, limitValues } from '../../../src/pages/n/[network]/limits/_limitForm';
+
+const ZONE = 'Europe/London';
+
+const band = fc
+  .constantFrom(1 as const, 3 as const)
+  .chain((fraction) =>
+    fc
+      .constantFrom(...bandsOf(fraction))
+      .map(({ nominalHz }) => ({ bandFraction: fraction, bandHz: nominalHz })),
+  );
+const quantity = fc.oneof(
+  fc.constantFrom({ metric: 'LAeq' } as const, { metric: 'LAFmax' } as const),
+  band.map((one) => ({ metric: 'bandLeq' as const, ...one })),
+);
+const hours = fc
+  .tuple(fc.integer({ min: 0, max: 1439 }), fc.integer({ min: 0, max: 1439 }))
+  .filter(([from, to]) => from !== to)
+  .map(([from, to]) => ({ from: formatClockTime(from), to: formatClockTime(to) }));
+const windows = fc.oneof(
+  fc.constantFrom('day', 'evening', 'night').map((window) => ({ window })),
+  fc
+    .tuple(fc.constantFrom('15min', '1h'), fc.option(hours, { nil: { from: null, to: null } }))
+    .map(([window, times]) => ({ window, ...times })),
+);
+
+/** A limit as the interface shows it. */
+const limits = fc
+  .record({
+    threshold: fc.integer({ min: -200, max: 2000 }).map((tenths) => tenths / 10),
+    weekdays: fc
+      .subarray([...WEEKDAYS], { minLength: 1 })
+      .map((days) => WEEKDAYS.filter((day) => days.includes(day))),
+    percent: fc.option(fc.integer({ min: 0, max: 100 })),
+    stations: fc.option(fc.subarray(['A-1', 'B-2', 'C-3'], { minLength: 1 })),
+    recipients: fc.subarray(['a@x.example', 'b+c@y.example']),
+    quantity,
+    windows,
+  })
+  .map(
+    ({ quantity: what, windows: when, percent, ...rest }) =>
+      ({
+        name: 'Any',
+        reason: 'Said before',
+        bandHz: null,
+        bandFraction: null,
+        from: null,
+        to: null,
+        ...what,
+        ...when,
+        ...rest,
+        minimumCoverage: percent === null || what.metric === 'LAFmax' ? null : percent / 100,
+      }) as unknown as Limit,
+  );
+
+test('a limit shown in the form and sent back unchanged is the same limit', () => {
+  fc.assert(
+    fc.property(limits, (limit) => {
+      const sent = newLimitSchema.parse(limitOfForm(limitValues(limit, ZONE), ZONE));
+      expect(sent).toEqual({ ...newLimitSchema.parse(limit), reason: '' });
+    }),
+  );
+});
+
+test('hours to midnight are kept, and from midnight to midnight is all day', () => {
+  const limit = { weekdays: WEEKDAYS, window: '1h', metric: 'LAeq', stations: null } as unknown as Limit;
+  const evening = limitValues({ ...limit, from: '18:00', to: '24:00' }, ZONE);
+  expect(evening.text).toMatchObject({ from: '18:00', to: '00:00' });
+  const allDay = limitValues({ ...limit, from: '00:00', to: '24:00' }, ZONE);
+  expect(allDay.text).toMatchObject({ from: '', to: '' });
+});
+
+test('fields that do not go with the other choices do not count; a decimal comma does', () => {
+  const typed = {
+    metric: 'LAFmax',
+    window: '1h',
+    band: '3:100',
+    threshold: '80,5',
+    minimumCoverage: '90',
+    scope: 'all',
+    recipients: 'a@x.example,\n b@x.example;',
+    effectiveFrom: '2026-07-01T12:00',
+  };
+  const limit = limitOfForm({ text: typed, all: () => ['mon'] }, ZONE);
+  expect(limit).toMatchObject({
+    threshold: 80.5,
+    minimumCoverage: null,
+    stations: null,
+    recipients: ['a@x.example', 'b@x.example'],
+    effectiveFrom: '2026-07-01T11:00:00Z',
+  });
+  expect(limit).not.toHaveProperty('bandHz');
+});
