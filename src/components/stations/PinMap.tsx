@@ -44,8 +44,13 @@ export default function PinMap({ place, onPlace, styleUrls, others }: Props) {
       >
         <NavigationControl showCompass={false} />
         {others.map((other) => (
-          <Marker key={other.code} latitude={other.latitude} longitude={other.longitude}>
-            <span className="pointer-events-none flex items-center gap-1 text-small text-ink-soft">
+          <Marker
+            key={other.code}
+            latitude={other.latitude}
+            longitude={other.longitude}
+            style={{ pointerEvents: 'none' }}
+          >
+            <span className="flex items-center gap-1 text-small text-ink-soft">
               <span className="size-2 border border-ink-soft bg-paper" />
               {other.code}
             </span>
