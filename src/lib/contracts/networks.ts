@@ -29,8 +29,8 @@ const periods = z
 
 const minimumCoverage = z
   .number('must be a number')
-  .min(0, 'must be 0 to 1')
-  .max(1, 'must be 0 to 1')
+  .min(0, 'must be 0 to 1, that is 0 to 100 %')
+  .max(1, 'must be 0 to 1, that is 0 to 100 %')
   .describe('Share of a period that must be valid for its level to count');
 const maximumWindSpeed = z
   .number('must be a number of m/s')

@@ -24,14 +24,13 @@ export const NETWORK_DONE = {
 
 /** Makes the network that the form describes. @throws {Problem} 422, and zod errors, with what is wrong by field. */
 export async function makeFromForm({ text }: FormValues, userId: string): Promise<string> {
-  const coveragePercent = typedNumber(text['minimumCoverage']) ?? NaN;
   const hours = PERIOD_PRESETS.find(({ key }) => key === text['preset']) ?? text;
   const input = newNetworkSchema.parse({
     slug: text['slug'] ?? '',
     name: text['name'] ?? '',
     timeZone: text['timeZone'] ?? '',
     periods: { day: hours['day'] ?? '', evening: hours['evening'] || null, night: hours['night'] ?? '' },
-    minimumCoverage: coveragePercent / 100,
+    minimumCoverage: (typedNumber(text['minimumCoverage']) ?? NaN) / 100,
     maximumWindSpeed: typedNumber(text['maximumWindSpeed']) ?? NaN,
     excludeRain: text['excludeRain'] === 'yes',
   });
