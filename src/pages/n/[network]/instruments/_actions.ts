@@ -4,13 +4,14 @@ import {
   newDeploymentSchema,
 } from '#lib/contracts/instruments';
 import { formatInstantUtc } from '#lib/contracts/common';
-import { typedNumber, type FormValues } from '#lib/http/forms';
+import { typedNumber, type FormValues, type PostedForm } from '#lib/http/forms';
 import { idOf, valueOf } from '#lib/http/outcome';
-import { badRequest, invalidFields } from '#lib/http/problem';
+import { badRequest } from '#lib/http/problem';
 import { changeInstrument } from '#lib/services/instruments/change';
 import { endStay, withdrawStay } from '#lib/services/instruments/changeStay';
 import { deploy } from '#lib/services/instruments/deploy';
-import { parseUrlInstant } from '#lib/time/urlPeriod';
+import { certificateFromForm, checkFromForm, decideFromForm, withdrawCheckFromForm } from './_checkActions';
+import { typedSec } from './_typed';
 
 interface Setting {
   networkId: number;
@@ -23,7 +24,8 @@ interface Setting {
  * Does what a form of an instrument's page asks. The caller has made sure that the person is an operator.
  * @throws {Problem} and zod errors, with what is wrong by field.
  */
-export async function actOnInstrument({ text }: FormValues, setting: Setting): Promise<void> {
+export async function actOnInstrument(form: PostedForm, setting: Setting): Promise<void> {
+  const { text } = form;
   const { networkId, instrumentId, userId, zone } = setting;
   const nowSec = Math.floor(Date.now() / 1000);
   const act = { networkId, instrumentId, userId, nowSec };
@@ -47,6 +49,14 @@ export async function actOnInstrument({ text }: FormValues, setting: Setting): P
       valueOf(await changeInstrument({ networkId, id: instrumentId, userId, nowSec }, changes));
       return;
     }
+    case 'check':
+      return checkFromForm(form, setting);
+    case 'certificate':
+      return certificateFromForm(form, { networkId, userId });
+    case 'withdraw-check':
+      return withdrawCheckFromForm(form, { networkId, userId });
+    case 'decide':
+      return decideFromForm(form, { networkId, userId });
     default:
       throw badRequest('The form did not say what to do. Nothing was changed.');
   }
@@ -64,13 +74,4 @@ function deploymentOf(text: FormValues['text'], zone: string) {
 function changesOf(text: FormValues['text']) {
   if (text['act'] === 'change') return { ...text, class: typedNumber(text['class']) };
   return { retired: text['act'] === 'retire', reason: text['reason'] ?? '' };
-}
-
-/** Epoch seconds of a time as typed, local to `zone` unless it carries an offset. @throws {Problem} 422 */
-function typedSec(text: string | undefined, zone: string, field: string): number {
-  const sec = parseUrlInstant(text ?? '', zone);
-  if (sec === null) {
-    throw invalidFields([{ field, message: 'must be a date and time such as 2026-03-17T14:30' }]);
-  }
-  return sec;
 }
