@@ -1,0 +1,88 @@
+import { createServer, request as httpRequest, type IncomingHttpHeaders, type Server } from 'node:http';
+import type { AddressInfo } from 'node:net';
+import { afterEach, describe, expect, test } from 'vitest';
+import { makeFront } from '#ops/http/front';
+
+let server: Server;
+let seen: IncomingHttpHeaders | null;
+
+afterEach(() => new Promise((closed) => server.close(closed)));
+
+async function ask(
+  headers: Record<string, string>,
+  settings = { allowedHosts: ['bittern.example'], trustedProxies: 0, origin: 'http://bittern.example' },
+): Promise<{ status: number; headers: IncomingHttpHeaders }> {
+  seen = null;
+  const astro = (request: { headers: IncomingHttpHeaders }, response: { end(text: string): void }) => {
+    seen = request.headers;
+    response.end('page');
+  };
+  server = createServer(makeFront(astro as never, settings));
+  await new Promise<void>((listening) => server.listen(0, '127.0.0.1', listening));
+  const { port } = server.address() as AddressInfo;
+  return new Promise((answered, failed) => {
+    const asked = httpRequest({ host: '127.0.0.1', port, path: '/n/merrow/map', headers, agent: false });
+    asked.on('error', failed);
+    asked.on('response', (response) => {
+      response.resume();
+      answered({ status: response.statusCode ?? 0, headers: response.headers });
+    });
+    asked.end();
+  });
+}
+
+const known = { host: 'bittern.example' };
+
+describe('the front before the pages', () => {
+  test('answers only under its own names', async () => {
+    expect((await ask({ host: 'elsewhere.example' })).status).toBe(421);
+    expect(seen).toBeNull();
+  });
+
+  test('forbids framing, plug-ins, type guessing, and telling addresses to other sites', async () => {
+    const { status, headers } = await ask(known);
+    expect(status).toBe(200);
+    expect(headers['content-security-policy']).toContain("frame-ancestors 'none'");
+    expect(headers['content-security-policy']).toContain("object-src 'none'");
+    expect(headers['x-content-type-options']).toBe('nosniff');
+    expect(headers['referrer-policy']).toBe('same-origin');
+    expect(headers['x-powered-by']).toBeUndefined();
+    expect(headers['strict-transport-security']).toBeUndefined();
+  });
+
+  test('asks to stay with https once its address is https', async () => {
+    const settings = {
+      allowedHosts: ['bittern.example'],
+      trustedProxies: 0,
+      origin: 'https://bittern.example',
+    };
+    expect((await ask(known, settings)).headers['strict-transport-security']).toContain('max-age=');
+  });
+
+  test('believes no forwarding header of a stranger', async () => {
+    await ask({
+      ...known,
+      'x-forwarded-for': '203.0.113.9',
+      'x-forwarded-host': 'evil.example',
+      forwarded: 'for=1',
+    });
+    expect(seen?.['x-forwarded-for']).toBe('127.0.0.1');
+    expect(seen?.['x-forwarded-host']).toBeUndefined();
+    expect(seen?.['forwarded']).toBeUndefined();
+  });
+
+  test('believes as many proxies as it is told of', async () => {
+    const settings = {
+      allowedHosts: ['bittern.example'],
+      trustedProxies: 1,
+      origin: 'https://bittern.example',
+    };
+    await ask({ ...known, 'x-forwarded-for': '198.51.100.1, 203.0.113.9' }, settings);
+    expect(seen?.['x-forwarded-for']).toBe('203.0.113.9');
+  });
+
+  test('stops what announces itself as too large', async () => {
+    expect((await ask({ ...known, 'content-length': String(17 * 1024 * 1024) })).status).toBe(413);
+    expect(seen).toBeNull();
+  });
+});
