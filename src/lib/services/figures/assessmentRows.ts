@@ -4,6 +4,7 @@ import { LOW_FREQUENCY_BOUND_DB } from '#lib/acoustics/lowFrequency';
 import { type FigureRow } from '#lib/contracts/figureSheet';
 import { type Statistics } from '#lib/contracts/levels';
 import { type PeriodFigures } from '../levels/figures';
+import { type PeriodInstruments } from './instruments';
 import { figureRow } from './levelRows';
 import { ratingRows } from './ratingRows';
 import { type RatingEntry } from './ratingForm';
@@ -22,13 +23,14 @@ export function assessmentRows(
   statistics: Statistics,
   hours: readonly MeasuredHour[],
   entry: RatingEntry,
+  instruments: PeriodInstruments,
 ): FigureRow[] {
   return [
     lowFrequencyRow(figures, statistics),
     noiseRatingRow(figures, statistics),
     ...NC_EDITIONS.map((edition) => noiseCriterionRow(edition, source, figures)),
     ...ratingRows(figures, statistics, entry),
-    uncertaintyRow(figures, hours),
+    uncertaintyRow(figures, hours, instruments),
   ];
 }
 

@@ -4,10 +4,16 @@ import { formatDuration } from '#lib/format/durations';
 import { formatCoverage } from '#lib/format/levels';
 import { formatPeriod, formatZone } from '#lib/format/times';
 import { type PeriodFigures } from '../levels/figures';
+import { type PeriodInstruments } from './instruments';
 import { type SheetSource } from './source';
 
 /** What the figures are of, fact by fact. */
-export function headOf(source: SheetSource, figures: PeriodFigures, intervals: IntervalFacts | null): Fact[] {
+export function headOf(
+  source: SheetSource,
+  figures: PeriodFigures,
+  intervals: IntervalFacts | null,
+  instruments: PeriodInstruments,
+): Fact[] {
   const { station, period, timeZone, nowSec } = source;
   const { seconds, coverage, minimumCoverage, meetsMinimum } = figures;
   const edges = [station.firstBandIndex, station.lastBandIndex].map((index) =>
@@ -24,7 +30,7 @@ export function headOf(source: SheetSource, figures: PeriodFigures, intervals: I
     },
     {
       name: 'Instrument',
-      words: 'make, serial number, class and calibration are not on record here',
+      words: instruments.words,
     },
     {
       name: 'Period',

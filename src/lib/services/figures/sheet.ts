@@ -17,6 +17,7 @@ import { dateRows, datesTouched, usesCnel } from './dates';
 import { distributionOf } from './distribution';
 import { headOf } from './head';
 import { heatMapOf, measuredHours } from './heatMap';
+import { instrumentsOf } from './instruments';
 import { isReadable, MOST_READ, readIntervals } from './intervalPass';
 import { EXCEEDANCE_CONVENTION, levelRows } from './levelRows';
 import { periodsByClock, periodsByDate } from './periodsOfDay';
@@ -58,6 +59,7 @@ export async function figureSheet(query: SheetQuery, conn: Connection = pool()):
   const statistics = statisticsOf(figures, { station });
   const pass = isReadable(source) ? await readIntervals(source) : null;
   const hours = await measuredHours(source);
+  const instruments = await instrumentsOf(source);
   const dates = await dateRows(source);
   const tooLong = `Given for periods of up to ${MOST_READ} intervals: every one of them has to be read.`;
   return {
@@ -72,13 +74,13 @@ export async function figureSheet(query: SheetQuery, conn: Connection = pool()):
     meetsMinimum: figures.meetsMinimum,
     minimumCoverage: figures.minimumCoverage,
     sampleSeconds: statistics.sampleSeconds,
-    head: headOf(source, figures, pass?.facts ?? null),
+    head: headOf(source, figures, pass?.facts ?? null, instruments),
     intervals: pass?.facts ?? null,
     intervalsMissing: pass ? null : tooLong,
     exclusions: await standingExclusions(source),
     levels: levelRows(source, figures, statistics),
     exceedanceConvention: EXCEEDANCE_CONVENTION,
-    assessments: assessmentRows(source, figures, statistics, hours, query.rating),
+    assessments: assessmentRows(source, figures, statistics, hours, query.rating, instruments),
     tonality: tonalityOf(source, levels, pass?.tones.result() ?? null),
     comparison: pass && compareWithRaw(levels, pass.raw),
     comparisonMissing: pass ? null : tooLong,

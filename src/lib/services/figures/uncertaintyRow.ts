@@ -1,17 +1,22 @@
-import { CLASS_1_UNCERTAINTY_DB, coverageUncertaintyDb, periodUncertainty } from '#lib/acoustics/uncertainty';
+import { coverageUncertaintyDb, periodUncertainty } from '#lib/acoustics/uncertainty';
 import { type FigureRow } from '#lib/contracts/figureSheet';
 import { type PeriodFigures } from '../levels/figures';
 import { type MeasuredHour } from './heatMap';
+import { type PeriodInstruments } from './instruments';
 import { figureRow } from './levelRows';
 
-/** Expanded uncertainty of the period's LAeq: class 1 instrument assumed, drift unknown, gaps by hourly energies. */
-export function uncertaintyRow(figures: PeriodFigures, hours: readonly MeasuredHour[]): FigureRow {
+/** Expanded uncertainty of the period's LAeq: drift left out, gaps by hourly energies. */
+export function uncertaintyRow(
+  figures: PeriodFigures,
+  hours: readonly MeasuredHour[],
+  instruments: PeriodInstruments,
+): FigureRow {
   const energies = hours
     .filter(({ levels }) => levels.sums.validSec > 0)
     .map(({ levels }) => levels.sums.aEnergySec / levels.sums.validSec);
   const coverageDb =
     figures.levels.sums.validSec === 0 ? null : coverageUncertaintyDb(energies, figures.coverage);
-  const uncertainty = periodUncertainty({ instrumentDb: CLASS_1_UNCERTAINTY_DB, driftDb: 0, coverageDb });
+  const uncertainty = periodUncertainty({ instrumentDb: instruments.uncertaintyDb, driftDb: 0, coverageDb });
   const gaps = coverageDb === null ? '' : coverageDb.toFixed(2);
   return figureRow(
     {
@@ -22,8 +27,8 @@ export function uncertaintyRow(figures: PeriodFigures, hours: readonly MeasuredH
         'U = 2u, coverage factor 2, about 95 % (ISO 1996-2). The term for gaps is Bittern’s own, 4.34·s/(Ē·√n)·√(1 − c) over the ' +
         'hourly energies, and assumes that gaps fall at random.',
       note: uncertainty
-        ? `u = ${uncertainty.uDb.toFixed(2)} dB, of instrument ${CLASS_1_UNCERTAINTY_DB} dB (class 1 assumed) and gaps ${gaps} dB. ` +
-          'Calibration drift is not known here and not in it; nor are site, weather and source.'
+        ? `u = ${uncertainty.uDb.toFixed(2)} dB, of instrument ${instruments.uncertaintyDb} dB (${instruments.basis}) and gaps ${gaps} dB. ` +
+          'Calibration drift is not in it; nor are site, weather and source.'
         : null,
       ifMissing:
         figures.levels.sums.validSec === 0
