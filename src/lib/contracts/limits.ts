@@ -74,7 +74,7 @@ const fields = {
     .optional()
     .describe(
       `Windows that begin from here on are judged by it; now, if left out. At most ${MOST_DAYS_BACK} days ago; ` +
-        `no e-mail tells of windows that ended more than ${TELL_WITHIN_HOURS} h ago`,
+        `no e-mail tells of new exceedances in windows that ended more than ${TELL_WITHIN_HOURS} h ago`,
     ),
 };
 
