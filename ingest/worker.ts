@@ -8,12 +8,14 @@ import { runLoop, type LoopSettings } from './jobs/loop';
 import { remindOfCalibrations } from './jobs/remindCalibrations';
 import { sendMail } from './jobs/sendMail';
 import { runDueSlots, type SlotJob } from './jobs/slots';
+import { watchHealth } from './jobs/watchHealth';
 
 /** Done round by round, as much as there is. Aggregation rests longer: figures that are asked for meanwhile are current anyway. */
 const LOOPS: LoopSettings[] = [
   { name: 'aggregate', everySec: 15, work: aggregate },
   { name: 'judge-limits', everySec: 5, work: judgeLimits },
   { name: 'send-mail', everySec: 2, work: sendMail },
+  { name: 'watch-health', everySec: 60, work: watchHealth },
 ];
 
 /** Done once a slot. The first is the worker's sign of life, which /readyz reads. */

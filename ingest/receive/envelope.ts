@@ -1,4 +1,5 @@
 import { bandByNominalHz, type BandFraction } from '#lib/acoustics/bands';
+import { parseInstant } from '#lib/contracts/common';
 import { intervalBatchSchema, MOST_INTERVALS } from '#lib/contracts/intervals';
 
 /** A post as far as it concerns all of its records. */
@@ -8,6 +9,8 @@ export interface Envelope {
   /** Absolute indices of the bands, or why no record can be read by them. */
   bandIndices: { indices: number[] } | { problem: string };
   intervals: unknown[];
+  /** The monitor's clock when it sent, epoch seconds; null or left out where it did not say. */
+  sentAtSec?: number | null;
 }
 
 /** No record of a post can be told from another, or there are too many. Nothing of it is kept. */
@@ -34,8 +37,9 @@ export function readEnvelope(text: string, fraction: BandFraction): Envelope {
     const problems = envelope.error.issues.map(({ path, message }) => `\`${path.join('.')}\` ${message}`);
     throw unreadable(`${problems.slice(0, 3).join('; ')}.`);
   }
-  const { bands, intervals } = envelope.data;
-  return { bands, intervals, bandIndices: indicesOf(bands, fraction) };
+  const { bands, intervals, sentAt } = envelope.data;
+  const sentAtSec = sentAt ? parseInstant(sentAt) : null;
+  return { bands, intervals, sentAtSec, bandIndices: indicesOf(bands, fraction) };
 }
 
 function parse(text: string): { intervals?: unknown } {

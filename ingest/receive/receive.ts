@@ -1,6 +1,7 @@
 import type { Knex } from 'knex';
 import { bandSetOf, type BandSet } from '#db/queries/bandSets';
 import { inTransaction } from '#db/queries/connection';
+import { noteClock } from '#db/queries/stationClocks';
 import { lockStation, type StationRow } from '#db/queries/stations';
 import type { Receipt } from '#lib/contracts/intervals';
 import { decide, type Decision } from './decide';
@@ -21,7 +22,7 @@ export async function receiveBatch(
   envelope: Envelope,
   now: Date,
 ): Promise<Receipt> {
-  const { bandIndices, bands, intervals } = envelope;
+  const { bandIndices, bands, intervals, sentAtSec = null } = envelope;
   const bandSet =
     'problem' in bandIndices ? bandIndices : await bandSetOf(station.bandFraction, bandIndices.indices);
   const read = readRecords(intervals, bandSet, now.getTime() / 1000);
@@ -33,6 +34,9 @@ export async function receiveBatch(
     }));
     const kept = refused.flatMap((one) => one.kept ?? []);
     await store(station.id, decision.accepted, kept, now, transaction);
+    if (sentAtSec !== null) {
+      await noteClock(station.id, sentAtSec - now.getTime() / 1000, now, transaction);
+    }
     return {
       accepted: decision.accepted.length,
       known: decision.knownCount,

@@ -1,0 +1,30 @@
+import { type TroubleKind } from '#lib/contracts/health';
+import { clockRule, coverageRule, lateRule, silentRule } from './arrivalRules';
+import { bandsRule, batteryRule, floorRule, frozenRule, windRule } from './contentRules';
+import { UNKNOWN, type Finding, type Rule, type StationEvidence } from './evidence';
+
+const RULES: Record<TroubleKind, Rule> = {
+  silent: silentRule,
+  clock: clockRule,
+  frozen: frozenRule,
+  bands: bandsRule,
+  floor: floorRule,
+  battery: batteryRule,
+  late: lateRule,
+  coverage: coverageRule,
+  wind: windRule,
+};
+
+/**
+ * What every rule finds at a station. Of a silent one nothing else can be said: its other troubles stay as they were, and none
+ * is added. `openSince` holds when those began that are not over.
+ */
+export function judgeStation(
+  evidence: StationEvidence,
+  openSince: ReadonlyMap<string, number>,
+): Map<TroubleKind, Finding> {
+  const find = (kind: TroubleKind) => RULES[kind](evidence, openSince.get(kind) ?? null);
+  const isSilent = find('silent').state === 'bad';
+  const kinds = Object.keys(RULES) as TroubleKind[];
+  return new Map(kinds.map((kind) => [kind, isSilent && kind !== 'silent' ? UNKNOWN : find(kind)]));
+}
