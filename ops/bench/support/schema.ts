@@ -1,0 +1,47 @@
+import { randomBytes } from 'node:crypto';
+import { cpus, loadavg } from 'node:os';
+import mysql from 'mysql2/promise';
+import { closeDb, db } from '#db/client';
+
+/**
+ * Runs `work` with a migrated database of its own as the process's, and drops it whatever happens. Prints on what machine, and
+ * how busy it was before and after.
+ */
+export async function withOwnSchema(work: () => Promise<void>): Promise<void> {
+  const name = `bittern_bench_${randomBytes(6).toString('hex')}`;
+  process.env['BITTERN_DB_NAME'] = name;
+  process.env['BITTERN_LOG_LEVEL'] ??= 'silent';
+  await asOwner(`CREATE DATABASE ${name} CHARACTER SET utf8mb4 COLLATE utf8mb4_uca1400_ai_ci`);
+  try {
+    await db().migrate.latest();
+    printMachine();
+    await work();
+    printLoad();
+  } finally {
+    await closeDb();
+    await asOwner(`DROP DATABASE IF EXISTS ${name}`);
+  }
+}
+
+async function asOwner(statement: string): Promise<void> {
+  const connection = await mysql.createConnection({
+    host: process.env['BITTERN_DB_HOST'] ?? '127.0.0.1',
+    port: Number(process.env['BITTERN_DB_PORT']),
+    user: process.env['BITTERN_DB_USER'],
+    password: process.env['BITTERN_DB_PASSWORD'],
+  });
+  await connection.query(statement);
+  await connection.end();
+}
+
+function printMachine(): void {
+  const [cpu] = cpus();
+  console.log(
+    `${new Date().toISOString().slice(0, 10)}, ${cpus().length} × ${cpu?.model}, Node ${process.version}`,
+  );
+  printLoad();
+}
+
+function printLoad(): void {
+  console.log(`Load average of the last minute: ${loadavg()[0]?.toFixed(1)}\n`);
+}
