@@ -1,8 +1,9 @@
 import type { Conditions } from '#lib/contracts/exceedanceDetail';
-import type { Acknowledgement, Cause, Exceedance } from '#lib/contracts/exceedances';
+import type { Acknowledgement, Cause, Exceedance, ExceedanceDetail } from '#lib/contracts/exceedances';
 import { WEEKDAYS, type LimitVersionView } from '#lib/contracts/limits';
 import { formatDuration } from '#lib/format/durations';
 import { formatCoverage, formatLevelDb } from '#lib/format/levels';
+import { formatInstantShort } from '#lib/format/times';
 
 export const CAUSE_WORDS: Readonly<Record<Cause, string>> = {
   plant: 'Fixed plant: fans, pumps, engines',
@@ -34,14 +35,33 @@ export function causeWords({
   return [words, causeDetail].filter(Boolean).join(': ') || null;
 }
 
-/** What was found, in a sentence that holds a descriptor to be typeset. */
-export function findingWords(exceedance: Exceedance): string {
-  const { descriptor, level, threshold, excess, coverage, state } = exceedance;
+/** What was found, in sentences that hold descriptors to be typeset; of a lifted one, what it was and what is left. */
+export function findingWords(exceedance: ExceedanceDetail): string {
+  if (exceedance.state === 'standing') return `${aboveWords(exceedance, exceedance)}.`;
+  const stood = exceedance.revisions.findLast(({ state }) => state === 'standing');
+  const before = stood ? ` Before that, ${aboveWords(exceedance, stood)}.` : '';
+  return `This exceedance no longer stands: later data, an exclusion or a change of the limit took it away.${before}${leftWords(exceedance)}`;
+}
+
+interface Compared {
+  level: number;
+  threshold: number;
+  coverage: number;
+}
+
+function aboveWords({ descriptor }: Exceedance, { level, threshold, coverage }: Compared): string {
   const measured = `${descriptor} was ${formatLevelDb(level)} dB with ${formatCoverage(coverage)} of the window covered`;
-  const limit = `the limit of ${formatLevelDb(threshold)} dB`;
-  if (state === 'standing') return `${measured}: ${formatLevelDb(excess)} dB above ${limit}.`;
-  const against = excess > 0 ? `${formatLevelDb(excess)} dB above ${limit}` : `not above ${limit}`;
-  return `This exceedance no longer stands. When it was lifted, ${measured}, ${against}; later data, an exclusion or a change of the limit took it away.`;
+  return `${measured}: ${formatLevelDb(level - threshold)} dB above the limit of ${formatLevelDb(threshold)} dB`;
+}
+
+function leftWords({ level, threshold, coverage }: Compared): string {
+  if (coverage === 0) return ' When it was lifted, no valid data were left of the window.';
+  return ` When it was lifted, the level was ${formatLevelDb(level)} dB against a limit of ${formatLevelDb(threshold)} dB, with ${formatCoverage(coverage)} covered.`;
+}
+
+/** Whether an exceedance was lifted because its data are gone: its level is the one that it was found with. */
+export function isWithoutData({ state, coverage }: Exceedance): boolean {
+  return state === 'lifted' && coverage === 0;
 }
 
 /** When a limit applies: "every day", "Mon, Tue, 23:00–07:00". */
@@ -76,4 +96,9 @@ export function flagsWords({ flags }: Conditions): string | null {
 /** A distance between stations: "350 m", "1.2 km". */
 export function distanceWords(metres: number): string {
   return metres < 1000 ? `${Math.round(metres / 10) * 10} m` : `${(metres / 1000).toFixed(1)} km`;
+}
+
+/** "17 Mar 12:00": an instant to the minute. */
+export function minuteWords(sec: number, zone: string): string {
+  return formatInstantShort(Math.floor(sec / 60) * 60, zone);
 }

@@ -13,7 +13,7 @@ const bandSchema = z.object({
   usual: level('Median of the weeks before'),
   usualLow: level('10 % point'),
   usualHigh: level('90 % point'),
-  isStandingOut: z.boolean(),
+  isStandingOut: z.boolean().describe('Among its neighbours; above usual alone does not count'),
 });
 export type ComparedBand = z.output<typeof bandSchema>;
 

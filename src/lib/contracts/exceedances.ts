@@ -47,7 +47,9 @@ export const exceedanceSchema = z.object({
   descriptor: z.string().describe('What is compared, in words: "LAeq,15 min"'),
   from: z.string(),
   to: z.string(),
-  level: tenths('Level of the window, rounded half up as it was compared'),
+  level: tenths(
+    'Level of the window, rounded half up as it was compared; of a lifted one without coverage, as it was found',
+  ),
   threshold: tenths('The limit'),
   excess: tenths('Level above the limit; not above 0: it was lifted'),
   coverage: z.number().describe('Valid seconds over the seconds of the window'),

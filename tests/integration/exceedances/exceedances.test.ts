@@ -2,16 +2,12 @@ import { parse } from 'csv-parse/sync';
 import { beforeAll, describe, expect, test } from 'vitest';
 import { db } from '#db/client';
 import { findAuditBreak } from '#db/queries/audit';
-import { inTransaction } from '#db/queries/connection';
-import { insertExceedanceMails } from '#db/queries/exceedanceMails';
-import { insertExceedance, updateExceedance } from '#db/queries/judgedExceedances';
-import { insertMail } from '#db/queries/outbox';
 import type { Exceedance, ExceedanceDetail } from '#lib/contracts/exceedances';
 import { at, storeMinutes } from '../complaints/support';
 import { callApi } from '../support/callApi';
 import { useFreshSchema } from '../support/freshSchema';
 import { makeNetwork, makePerson, makeStation } from '../support/people';
-import { makeLimit, RECIPIENT } from './support';
+import { lift, mailAbout, makeExceedance, makeLimit, RECIPIENT } from './support';
 
 useFreshSchema();
 
@@ -22,62 +18,17 @@ const userIds: Record<string, string> = {};
 const stationIds: Record<string, number> = {};
 let networkId: number;
 let limitId: number;
-let versionId: number;
 let loudId: number;
 let liftedId: number;
 let elsewhereId: number;
-
-interface Found {
-  station: string;
-  startSec: number;
-  levelDb: number;
-}
-
-async function found({ station, startSec, levelDb }: Found): Promise<number> {
-  return inTransaction((transaction) =>
-    insertExceedance(
-      {
-        networkId,
-        stationId: stationIds[station] ?? 0,
-        limitId,
-        limitVersionId: versionId,
-        startSec,
-        endSec: startSec + 3600,
-        levelDb,
-        thresholdTenths: 550,
-        coverage: 0.98,
-      },
-      new Date((startSec + 3700) * 1000),
-      transaction,
-    ),
-  );
-}
-
-async function lift(id: number): Promise<void> {
-  const judged = {
-    limitVersionId: versionId,
-    endSec: NIGHT,
-    levelDb: 54.2,
-    thresholdTenths: 550,
-    coverage: 0.9,
-  };
-  const row = await db()('exceedances').where({ id }).first('ends_at');
-  await inTransaction((transaction) =>
-    updateExceedance(
-      id,
-      { ...judged, endSec: row.ends_at, state: 'lifted', revision: 1 },
-      new Date(),
-      transaction,
-    ),
-  );
-}
 
 beforeAll(async () => {
   networkId = await makeNetwork('merrow');
   const elsewhere = await makeNetwork('farther');
   stationIds['MER-01'] = await makeStation(networkId, 'MER-01');
   stationIds['MER-02'] = await makeStation(networkId, 'MER-02', { latitude: 54.11 });
-  ({ limitId, versionId } = await makeLimit(networkId, '=Night, "quay"'));
+  const limit = await makeLimit(networkId, '=Night, "quay"');
+  limitId = limit.limitId;
   for (const role of ['operator', 'liaison', 'regulator'] as const) {
     const person = await makePerson(networkId, [role]);
     sessions[role] = person.session;
@@ -97,43 +48,20 @@ beforeAll(async () => {
     const start = NIGHT - week * 7 * 86_400;
     await storeMinutes(stationIds['MER-01'] ?? 0, start, start + 3600, minute(4000 + week * 100));
   }
-  loudId = await found({ station: 'MER-01', startSec: NIGHT, levelDb: 57.4049 });
-  liftedId = await found({ station: 'MER-01', startSec: NIGHT + 3600, levelDb: 55.1 });
-  await lift(liftedId);
-  await found({ station: 'MER-02', startSec: NIGHT + 7200, levelDb: 60 });
-  await inTransaction(async (transaction) => {
-    const mail = {
-      messageId: '<one@merrow.example>',
-      dedupeKey: 'one',
-      networkId,
-      kind: 'exceedances',
-      recipient: RECIPIENT,
-      subject: 'Above the limit',
-      text: '',
-      html: '',
-    };
-    const mailId = await insertMail(mail, transaction);
-    await insertExceedanceMails(mailId ?? 0, [loudId], transaction);
+  const shared = { networkId, stationId: stationIds['MER-01'] ?? 0, limit };
+  loudId = await makeExceedance({ ...shared, startSec: NIGHT, levelDb: 57.4049 });
+  liftedId = await makeExceedance({ ...shared, startSec: NIGHT + 3600, levelDb: 55.1 });
+  await lift(liftedId, { levelDb: 54.2, coverage: 0.9 });
+  const stationId = stationIds['MER-02'] ?? 0;
+  await makeExceedance({ ...shared, stationId, startSec: NIGHT + 7200, levelDb: 60 });
+  await mailAbout(networkId, loudId);
+  elsewhereId = await makeExceedance({
+    networkId: elsewhere,
+    stationId: await makeStation(elsewhere, 'FAR-01'),
+    limit: await makeLimit(elsewhere, 'Foreign'),
+    startSec: NIGHT,
+    levelDb: 70,
   });
-  const foreignStation = await makeStation(elsewhere, 'FAR-01');
-  const foreign = await makeLimit(elsewhere, 'Foreign');
-  elsewhereId = await inTransaction((transaction) =>
-    insertExceedance(
-      {
-        networkId: elsewhere,
-        stationId: foreignStation,
-        limitId: foreign.limitId,
-        limitVersionId: foreign.versionId,
-        startSec: NIGHT,
-        endSec: NIGHT + 3600,
-        levelDb: 70,
-        thresholdTenths: 550,
-        coverage: 1,
-      },
-      new Date(),
-      transaction,
-    ),
-  );
 });
 
 const call = (path: string, who = 'regulator') =>

@@ -1,6 +1,6 @@
 import type { NetworkSettings } from '#db/queries/networks';
 import type { StationRow } from '#db/queries/stations';
-import { bandByNominalHz, type BandFraction } from '#lib/acoustics/bands';
+import { bandByNominalHz, type Band, type BandFraction } from '#lib/acoustics/bands';
 import { standingOut, type StandingOutRange } from '#lib/acoustics/standingOut';
 import type { ExceedanceDetailPart } from '#lib/contracts/exceedanceDetail';
 import type { Statistics } from '#lib/contracts/levels';
@@ -51,13 +51,20 @@ export async function comparedSpectrum(
       usual: usual.bands[at]?.medianDb ?? null,
       usualLow: usual.bands[at]?.lowDb ?? null,
       usualHigh: usual.bands[at]?.highDb ?? null,
-      isStandingOut: ranges.some(
-        ({ lowerIndex, upperIndex }) => lowerIndex <= band.index && band.index <= upperIndex,
-      ),
+      isStandingOut: ranges.some((range) => standsAmongNeighbours(range) && holds(range, band)),
     })),
     standingOut: ranges.map((range) => rangeView(range, fraction)),
     tonality: statistics.tonality.state,
   };
+}
+
+/** A loud window may be above usual in every band: that is told, but marks none of them. */
+function standsAmongNeighbours({ reasons }: StandingOutRange): boolean {
+  return reasons.some((reason) => reason !== 'above-usual');
+}
+
+function holds({ lowerIndex, upperIndex }: StandingOutRange, { index }: Band): boolean {
+  return lowerIndex <= index && index <= upperIndex;
 }
 
 function rangeView(range: StandingOutRange, fraction: BandFraction) {
