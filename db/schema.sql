@@ -32,7 +32,9 @@ CREATE TABLE `audit_log` (
   `previous_digest` binary(32) NOT NULL,
   `digest` binary(32) NOT NULL COMMENT 'SHA-256 over the previous digest and this row',
   PRIMARY KEY (`id`),
-  KEY `audit_log_network` (`network_id`,`at`)
+  KEY `audit_log_network` (`network_id`,`at`),
+  KEY `audit_log_user` (`user_id`,`id`),
+  KEY `audit_log_action` (`action`,`id`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
 CREATE TABLE `band_sets` (
@@ -41,6 +43,63 @@ CREATE TABLE `band_sets` (
   `band_indices` varchar(160) NOT NULL COMMENT 'ascending, comma separated',
   PRIMARY KEY (`id`),
   UNIQUE KEY `band_sets_bands` (`fraction`,`band_indices`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `calendar_feeds` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `network_id` int(10) unsigned NOT NULL,
+  `user_id` char(36) NOT NULL COMMENT 'the feed shows what this person may still see',
+  `digest` binary(32) NOT NULL COMMENT 'SHA-256 of the token in the address',
+  `created_at` datetime(3) NOT NULL,
+  `revoked_at` datetime(3) DEFAULT NULL,
+  `last_used_at` datetime(3) DEFAULT NULL,
+  PRIMARY KEY (`id`),
+  UNIQUE KEY `calendar_feeds_digest` (`digest`),
+  KEY `calendar_feeds_person` (`user_id`,`network_id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `calibration_certificates` (
+  `calibration_id` int(10) unsigned NOT NULL,
+  `media_type` varchar(40) NOT NULL COMMENT 'as the bytes say, not as the sender said',
+  `byte_count` int(10) unsigned NOT NULL,
+  `sha256` binary(32) NOT NULL COMMENT 'names the file under the data directory',
+  `uploaded_by` char(36) NOT NULL,
+  `uploaded_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`calibration_id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `calibration_settings` (
+  `network_id` int(10) unsigned NOT NULL,
+  `drift_bound_centi_db` smallint(5) unsigned NOT NULL,
+  `check_every_days` smallint(5) unsigned NOT NULL,
+  `remind_before_days` smallint(5) unsigned NOT NULL,
+  `recipients` longtext CHARACTER SET utf8mb4 COLLATE utf8mb4_bin NOT NULL COMMENT 'e-mail addresses; empty: the operators of the network' CHECK (json_valid(`recipients`)),
+  `changed_by` char(36) NOT NULL,
+  `changed_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`network_id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `calibrations` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `network_id` int(10) unsigned NOT NULL,
+  `instrument_id` int(10) unsigned NOT NULL,
+  `station_id` int(10) unsigned DEFAULT NULL COMMENT 'where it stood then; null: in no station',
+  `checked_at` int(10) unsigned NOT NULL COMMENT 'epoch seconds UTC',
+  `calibrator` varchar(160) NOT NULL DEFAULT '' COMMENT 'kind and serial number in own words',
+  `calibrator_centi_db` smallint(6) NOT NULL COMMENT 'level of the calibrator at 1 kHz',
+  `before_centi_db` smallint(6) NOT NULL COMMENT 'shown before any adjustment',
+  `after_centi_db` smallint(6) DEFAULT NULL COMMENT 'shown after adjustment; null: not adjusted',
+  `drift_bound_centi_db` smallint(5) unsigned NOT NULL COMMENT 'of the network when the check was noted',
+  `checked_by` varchar(160) NOT NULL,
+  `note` varchar(500) NOT NULL DEFAULT '',
+  `created_by` char(36) NOT NULL,
+  `created_at` datetime(3) NOT NULL,
+  `withdrawn_by` char(36) DEFAULT NULL,
+  `withdrawn_at` datetime(3) DEFAULT NULL,
+  `withdrawal_reason` varchar(500) DEFAULT NULL,
+  PRIMARY KEY (`id`),
+  KEY `calibrations_instrument` (`instrument_id`,`checked_at`),
+  KEY `calibrations_network` (`network_id`,`checked_at`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
 CREATE TABLE `complaint_keys` (
@@ -124,6 +183,25 @@ CREATE TABLE `day_periods` (
   KEY `day_periods_start` (`station_id`,`starts_at`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
+CREATE TABLE `deployments` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `network_id` int(10) unsigned NOT NULL,
+  `instrument_id` int(10) unsigned NOT NULL,
+  `station_id` int(10) unsigned NOT NULL,
+  `starts_at` int(10) unsigned NOT NULL COMMENT 'epoch seconds UTC',
+  `ends_at` int(10) unsigned DEFAULT NULL COMMENT 'half-open; null: still there',
+  `note` varchar(500) NOT NULL DEFAULT '',
+  `created_by` char(36) NOT NULL,
+  `created_at` datetime(3) NOT NULL,
+  `withdrawn_by` char(36) DEFAULT NULL,
+  `withdrawn_at` datetime(3) DEFAULT NULL COMMENT 'set: it was noted by mistake and never was',
+  `withdrawal_reason` varchar(500) DEFAULT NULL,
+  PRIMARY KEY (`id`),
+  KEY `deployments_station` (`station_id`,`starts_at`),
+  KEY `deployments_instrument` (`instrument_id`,`starts_at`),
+  KEY `deployments_network` (`network_id`,`starts_at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
 CREATE TABLE `dirty_marks` (
   `id` bigint(20) unsigned NOT NULL AUTO_INCREMENT,
   `station_id` int(10) unsigned NOT NULL,
@@ -133,11 +211,37 @@ CREATE TABLE `dirty_marks` (
   KEY `dirty_marks_quarter` (`station_id`,`quarter_starts_at`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
+CREATE TABLE `doubt_decisions` (
+  `calibration_id` int(10) unsigned NOT NULL COMMENT 'the check that made the data doubtful',
+  `station_id` int(10) unsigned NOT NULL,
+  `starts_at` int(10) unsigned NOT NULL COMMENT 'of the doubtful stretch; another beginning is another decision',
+  `ends_at` int(10) unsigned NOT NULL,
+  `decision` enum('keep','exclude') NOT NULL,
+  `exclusion_id` int(10) unsigned DEFAULT NULL,
+  `reason` varchar(500) NOT NULL,
+  `decided_by` char(36) NOT NULL,
+  `decided_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`calibration_id`,`station_id`,`starts_at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
 CREATE TABLE `exceedance_mails` (
   `exceedance_id` int(10) unsigned NOT NULL,
   `outbox_id` bigint(20) unsigned NOT NULL COMMENT 'a message that tells of it, perhaps among others',
   PRIMARY KEY (`exceedance_id`,`outbox_id`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `exceedance_revisions` (
+  `exceedance_id` int(10) unsigned NOT NULL,
+  `revision` int(10) unsigned NOT NULL,
+  `at` datetime(3) NOT NULL,
+  `state` enum('standing','lifted') NOT NULL,
+  `limit_version_id` int(10) unsigned NOT NULL,
+  `ends_at` int(10) unsigned NOT NULL,
+  `level_db` double NOT NULL,
+  `threshold_tenths` smallint(6) NOT NULL,
+  `coverage` double NOT NULL,
+  PRIMARY KEY (`exceedance_id`,`revision`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci COMMENT='what was found each time; never updated';
 
 CREATE TABLE `exceedances` (
   `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
@@ -155,6 +259,7 @@ CREATE TABLE `exceedances` (
   `detected_at` datetime(3) NOT NULL,
   `revised_at` datetime(3) DEFAULT NULL,
   `cause` varchar(160) DEFAULT NULL,
+  `cause_detail` varchar(160) DEFAULT NULL COMMENT 'the cause in own words; cause holds a word of the list',
   `note` text DEFAULT NULL,
   `acknowledged_by` char(36) DEFAULT NULL,
   `acknowledged_at` datetime(3) DEFAULT NULL,
@@ -179,6 +284,107 @@ CREATE TABLE `exclusions` (
   PRIMARY KEY (`id`),
   KEY `exclusions_period` (`station_id`,`starts_at`,`ends_at`),
   KEY `exclusions_network` (`network_id`,`starts_at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `health_settings` (
+  `network_id` int(10) unsigned NOT NULL,
+  `station_id` int(10) unsigned NOT NULL COMMENT '0: of the whole network',
+  `thresholds` longtext CHARACTER SET utf8mb4 COLLATE utf8mb4_bin NOT NULL COMMENT 'those that differ from what holds otherwise' CHECK (json_valid(`thresholds`)),
+  `recipients` longtext CHARACTER SET utf8mb4 COLLATE utf8mb4_bin NOT NULL COMMENT 'e-mail addresses; empty: the operators of the network; of the network only' CHECK (json_valid(`recipients`)),
+  `changed_by` char(36) NOT NULL,
+  `changed_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`network_id`,`station_id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `health_troubles` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `network_id` int(10) unsigned NOT NULL,
+  `station_id` int(10) unsigned NOT NULL,
+  `kind` varchar(24) NOT NULL,
+  `begins_at` int(10) unsigned NOT NULL COMMENT 'epoch seconds UTC',
+  `noticed_at` datetime(3) NOT NULL,
+  `measured` double DEFAULT NULL COMMENT 'what was found last, in the unit of the kind',
+  `bound` double DEFAULT NULL COMMENT 'what it was held against, in the same unit',
+  `fine_since` int(10) unsigned DEFAULT NULL COMMENT 'seems over since then; told when it has stayed so',
+  `ends_at` int(10) unsigned DEFAULT NULL COMMENT 'null: not over',
+  `is_open` tinyint(3) unsigned DEFAULT 1 COMMENT '1, or null when over: one open trouble a station and kind',
+  PRIMARY KEY (`id`),
+  UNIQUE KEY `health_troubles_open` (`station_id`,`kind`,`is_open`),
+  KEY `health_troubles_network` (`network_id`,`begins_at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `import_intervals` (
+  `import_id` int(10) unsigned NOT NULL,
+  `starts_at` int(10) unsigned NOT NULL COMMENT 'epoch seconds UTC',
+  `duration_sec` smallint(5) unsigned NOT NULL,
+  `laeq_centi_db` smallint(6) NOT NULL,
+  `lafmax_centi_db` smallint(6) DEFAULT NULL,
+  `lafmin_centi_db` smallint(6) DEFAULT NULL,
+  `lceq_centi_db` smallint(6) DEFAULT NULL,
+  `lcpeak_centi_db` smallint(6) DEFAULT NULL,
+  `band_set_id` smallint(5) unsigned NOT NULL,
+  `band_levels_centi_db` varbinary(66) NOT NULL COMMENT 'int16 little endian a band of the set; -32768 = none',
+  `flags` smallint(5) unsigned NOT NULL,
+  `wind_speed_centi_ms` smallint(5) unsigned DEFAULT NULL,
+  `wind_direction_deg` smallint(5) unsigned DEFAULT NULL,
+  `temperature_centi_c` smallint(6) DEFAULT NULL,
+  `battery_centi_v` smallint(5) unsigned DEFAULT NULL,
+  `received_at` int(10) unsigned NOT NULL COMMENT 'epoch seconds UTC',
+  PRIMARY KEY (`import_id`,`starts_at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci COMMENT='what an import would store, or has stored until it was undone';
+
+CREATE TABLE `import_refusals` (
+  `id` bigint(20) unsigned NOT NULL AUTO_INCREMENT,
+  `import_id` int(10) unsigned NOT NULL,
+  `code` varchar(32) NOT NULL,
+  `detail` varchar(500) NOT NULL,
+  `record` mediumtext NOT NULL COMMENT 'JSON as in the quarantine, where it goes when the import is stored',
+  `starts_at` int(10) unsigned DEFAULT NULL,
+  PRIMARY KEY (`id`),
+  KEY `import_refusals_import` (`import_id`,`id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `imports` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `network_id` int(10) unsigned NOT NULL,
+  `station_id` int(10) unsigned NOT NULL,
+  `state` enum('mapping','checking','checked','storing','stored','undoing','undone','redoing','discarding','discarded','failed') NOT NULL,
+  `problem` varchar(500) DEFAULT NULL COMMENT 'why it failed, or why a redo was refused',
+  `file_key` char(36) NOT NULL COMMENT 'name of the file in the data directory',
+  `file_name` varchar(160) NOT NULL COMMENT 'as the person called it',
+  `file_bytes` bigint(20) unsigned NOT NULL,
+  `file_digest` binary(32) NOT NULL,
+  `mapping` longtext DEFAULT NULL COMMENT 'JSON: what each column is',
+  `created_by` char(36) NOT NULL,
+  `created_at` datetime(3) NOT NULL,
+  `bytes_done` bigint(20) unsigned NOT NULL DEFAULT 0 COMMENT 'of the file, up to the last chunk that was committed',
+  `lines_done` int(10) unsigned NOT NULL DEFAULT 0,
+  `start_done` int(10) unsigned NOT NULL DEFAULT 0 COMMENT 'how far an undo or the check before a redo has come, epoch seconds',
+  `report` longtext NOT NULL COMMENT 'JSON: counts and first examples of the check',
+  `stored_count` int(10) unsigned NOT NULL DEFAULT 0,
+  `late_known_count` int(10) unsigned NOT NULL DEFAULT 0 COMMENT 'accepted by the check, stored by somebody else before the import came to it',
+  `late_refused_count` int(10) unsigned NOT NULL DEFAULT 0,
+  `acted_by` char(36) DEFAULT NULL COMMENT 'who stored, undid, redid or discarded it last',
+  `acted_at` datetime(3) DEFAULT NULL,
+  `act_reason` varchar(500) DEFAULT NULL,
+  `finished_at` datetime(3) DEFAULT NULL,
+  PRIMARY KEY (`id`),
+  KEY `imports_network` (`network_id`,`id`),
+  KEY `imports_state` (`state`,`id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `instruments` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `network_id` int(10) unsigned NOT NULL,
+  `serial_number` varchar(60) NOT NULL,
+  `class` tinyint(3) unsigned NOT NULL COMMENT '1 or 2 of IEC 61672-1',
+  `description` varchar(160) NOT NULL DEFAULT '',
+  `microphone` varchar(160) NOT NULL DEFAULT '' COMMENT 'type and serial number in own words',
+  `created_by` char(36) DEFAULT NULL,
+  `created_at` datetime(3) NOT NULL,
+  `retired_at` datetime(3) DEFAULT NULL,
+  PRIMARY KEY (`id`),
+  UNIQUE KEY `instruments_serial` (`network_id`,`serial_number`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
 CREATE TABLE `interval_levels` (
@@ -330,10 +536,13 @@ CREATE TABLE `quarantine` (
   `times_received` int(10) unsigned NOT NULL DEFAULT 1,
   `settled_at` datetime(3) DEFAULT NULL,
   `settled_by` char(36) DEFAULT NULL,
-  `settlement` enum('released','dismissed') DEFAULT NULL,
+  `settlement` enum('released','dismissed','superseded') DEFAULT NULL COMMENT 'superseded: was stored until a released conflict replaced it',
+  `settlement_reason` varchar(500) DEFAULT NULL,
+  `import_id` int(10) unsigned DEFAULT NULL COMMENT 'the import that brought it; null: a post',
   PRIMARY KEY (`id`),
   UNIQUE KEY `quarantine_record` (`station_id`,`code`,`record_digest`),
-  KEY `quarantine_open` (`station_id`,`settled_at`,`id`)
+  KEY `quarantine_open` (`station_id`,`settled_at`,`id`),
+  KEY `quarantine_import` (`import_id`,`id`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
 CREATE TABLE `quarter_hours` (
@@ -365,9 +574,19 @@ CREATE TABLE `sessions` (
   `expires_at` datetime(3) NOT NULL COMMENT 'moves on while the session is used',
   `ends_at` datetime(3) NOT NULL COMMENT 'absolute lifetime',
   `created_at` datetime(3) NOT NULL,
+  `from_address` varchar(45) DEFAULT NULL COMMENT 'network address that signed in, for its owner to recognise',
+  `agent` varchar(255) DEFAULT NULL COMMENT 'what the browser said it is',
   PRIMARY KEY (`id_digest`),
   KEY `sessions_user` (`user_id`),
   KEY `sessions_expiry` (`expires_at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `station_clocks` (
+  `station_id` int(10) unsigned NOT NULL,
+  `ahead_sec` double NOT NULL COMMENT 'sentAt of the newest post less our time; negative: the clock is slow, or the way was long',
+  `ahead_before_sec` double NOT NULL COMMENT 'the same of the post before',
+  `noted_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`station_id`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
 CREATE TABLE `station_latest` (
@@ -388,6 +607,7 @@ CREATE TABLE `station_tokens` (
   `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
   `station_id` int(10) unsigned NOT NULL,
   `digest` binary(32) NOT NULL COMMENT 'SHA-256 of the token',
+  `label` varchar(60) NOT NULL DEFAULT '',
   `created_by` char(36) DEFAULT NULL,
   `created_at` datetime(3) NOT NULL,
   `revoked_at` datetime(3) DEFAULT NULL,

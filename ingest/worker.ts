@@ -3,6 +3,7 @@ import { closeDb } from '#db/client';
 import { log } from '#lib/config/log';
 import { aggregate } from './jobs/aggregate';
 import { housekeeping } from './jobs/housekeeping';
+import { importFiles } from './jobs/importFiles';
 import { judgeLimits } from './jobs/judgeLimits';
 import { runLoop, type LoopSettings } from './jobs/loop';
 import { remindOfCalibrations } from './jobs/remindCalibrations';
@@ -14,6 +15,7 @@ import { watchHealth } from './jobs/watchHealth';
 const LOOPS: LoopSettings[] = [
   { name: 'aggregate', everySec: 15, work: aggregate },
   { name: 'judge-limits', everySec: 5, work: judgeLimits },
+  { name: 'import-files', everySec: 2, work: importFiles },
   { name: 'send-mail', everySec: 2, work: sendMail },
   { name: 'watch-health', everySec: 60, work: watchHealth },
 ];

@@ -13,8 +13,11 @@ export interface LatestInterval {
   receivedAt: Date;
 }
 
-/** Notes what a post brought; an interval older than the one noted moves only the time of the last post. */
-export async function noteLatest(latest: LatestInterval, conn: Connection): Promise<void> {
+/**
+ * Notes what a post brought; an interval older than the one noted moves only the time of the last post. What is no post
+ * (`isPost: false`, a file that somebody brought) leaves that time as it is.
+ */
+export async function noteLatest(latest: LatestInterval, conn: Connection, isPost = true): Promise<void> {
   const newer = (column: string) =>
     `${column} = IF(VALUES(starts_at) > starts_at, VALUES(${column}), ${column})`;
   // starts_at comes last: the other assignments compare with its old value.
@@ -29,7 +32,8 @@ export async function noteLatest(latest: LatestInterval, conn: Connection): Prom
   await conn.raw(
     `INSERT INTO station_latest (station_id, starts_at, ${columns.join(', ')}, received_at)
      VALUES (?, ?, ?, ?, ?, ?, ?, ?, ?)
-     ON DUPLICATE KEY UPDATE ${columns.map(newer).join(', ')}, received_at = GREATEST(received_at, VALUES(received_at)),
+     ON DUPLICATE KEY UPDATE ${columns.map(newer).join(', ')}, 
+       received_at = ${isPost ? 'GREATEST(received_at, VALUES(received_at))' : 'received_at'},
        starts_at = GREATEST(starts_at, VALUES(starts_at))`,
     [
       latest.stationId,

@@ -1,11 +1,13 @@
+import { removeUnclaimedFiles } from '#ingest/imports/files';
 import { deleteJobRunsBefore } from '#db/queries/jobRuns';
 import { deleteExpiredSessions } from '#db/queries/sessions';
 
 const KEEP_JOB_RUNS_MS = 14 * 86_400_000;
 
-/** Removes what has run out: sessions, and the record of jobs older than two weeks. */
+/** Removes what has run out: sessions, the record of jobs older than two weeks, and uploads that broke off. */
 export async function housekeeping(now: Date): Promise<string> {
   const sessions = await deleteExpiredSessions(now);
   const runs = await deleteJobRunsBefore(new Date(now.getTime() - KEEP_JOB_RUNS_MS));
-  return `${sessions} sessions, ${runs} job runs`;
+  const files = await removeUnclaimedFiles(now);
+  return `${sessions} sessions, ${runs} job runs, ${files} files`;
 }

@@ -1,25 +1,32 @@
 import type { Knex } from 'knex';
 import { insertDirtyMarks } from '#db/queries/dirtyMarks';
 import { insertIntervals, type StoredInterval } from '#db/queries/intervals';
-import { insertQuarantined } from '#db/queries/quarantine';
+import { insertQuarantined, insertQuarantinedOfImport } from '#db/queries/quarantine';
 import { noteLatest } from '#db/queries/stationLatest';
 import { quartersTouching } from '#lib/time/quarters';
 import type { KeptRecord } from './keptRecord';
 
-/** Writes accepted intervals with what must be recomputed for them, and refused records. */
+/**
+ * Writes accepted intervals with what must be recomputed for them, and refused records: of a post, or of an import, which
+ * says nothing about when the station last posted.
+ */
 export async function store(
   stationId: number,
   accepted: readonly StoredInterval[],
   refused: readonly KeptRecord[],
   receivedAt: Date,
   transaction: Knex.Transaction,
+  importId: number | null = null,
 ): Promise<void> {
-  await insertQuarantined(stationId, refused, receivedAt, transaction);
+  if (importId === null) await insertQuarantined(stationId, refused, receivedAt, transaction);
+  else await insertQuarantinedOfImport(importId, stationId, refused, receivedAt, transaction);
   const newest = newestOf(accepted);
   if (!newest) return;
-  await insertIntervals(stationId, accepted, transaction);
+  await insertIntervals(stationId, accepted, transaction, importId);
   await insertDirtyMarks(stationId, touchedQuarters(accepted), transaction);
-  await noteLatest({ ...newest, stationId, receivedAt }, transaction);
+  const isPost = importId === null;
+  const notedAt = isPost ? receivedAt : new Date((newest.startSec + newest.durationSec) * 1000);
+  await noteLatest({ ...newest, stationId, receivedAt: notedAt }, transaction, isPost);
 }
 
 function newestOf(intervals: readonly StoredInterval[]): StoredInterval | undefined {

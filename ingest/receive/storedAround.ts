@@ -5,15 +5,16 @@ import type { ParsedInterval } from './parseRecord';
 /** A wider gap between two records begins another look-up, so that a post that strays over years reads little. */
 const WIDEST_GAP_SEC = 3600;
 
-/** Stored intervals of a station that any of some records may touch, ascending. */
+/** Stored intervals of a station (or what else `select` finds by an id) that any of some records may touch, ascending. */
 export async function storedAround(
   stationId: number,
-  intervals: readonly ParsedInterval[],
+  intervals: readonly Pick<ParsedInterval, 'startSec' | 'durationSec'>[],
   transaction: Knex.Transaction,
+  select: typeof selectIntervals = selectIntervals,
 ): Promise<StoredInterval[]> {
   const stored: StoredInterval[] = [];
   for (const { fromSec, toSec } of stretchesOf(intervals)) {
-    const found = await selectIntervals(stationId, fromSec, toSec, transaction);
+    const found = await select(stationId, fromSec, toSec, transaction);
     // The last of one stretch may reach into the next.
     const lastStartSec = stored.at(-1)?.startSec ?? -1;
     for (const interval of found) if (interval.startSec > lastStartSec) stored.push(interval);
@@ -21,7 +22,9 @@ export async function storedAround(
   return stored;
 }
 
-function stretchesOf(intervals: readonly ParsedInterval[]): { fromSec: number; toSec: number }[] {
+function stretchesOf(
+  intervals: readonly Pick<ParsedInterval, 'startSec' | 'durationSec'>[],
+): { fromSec: number; toSec: number }[] {
   const ascending = [...intervals].sort((a, b) => a.startSec - b.startSec);
   const stretches: { fromSec: number; toSec: number }[] = [];
   for (const { startSec, durationSec } of ascending) {

@@ -6,7 +6,12 @@ import type { Config } from '#lib/config/config';
 const MOST_BODY_BYTES = 16 * 1024 * 1024;
 const YEAR_SEC = 365 * 86_400;
 
-type FrontSettings = Pick<Config, 'allowedHosts' | 'trustedProxies' | 'origin'>;
+/** Where files of intervals are uploaded; they are streamed to disk. */
+const UPLOADS = /^\/(api\/v1\/networks\/[^/]+\/imports|n\/[^/]+\/imports\/new)\/?$/;
+/** What a form adds around a file. */
+const FORM_BYTES = 64 * 1024;
+
+type FrontSettings = Pick<Config, 'allowedHosts' | 'trustedProxies' | 'origin' | 'importMostBytes'>;
 
 /** Astro's handler in middleware mode. */
 export type AstroHandler = (request: Request, response: Response) => Promise<void> | void;
@@ -22,7 +27,7 @@ export function makeFront(astro: AstroHandler, settings: FrontSettings): Express
   front.use(safeHeaders(settings.origin));
   front.use(requireKnownHost(settings.allowedHosts));
   front.use(setClientAddress);
-  front.use(refuseLargeBodies);
+  front.use(refuseLargeBodies(settings.importMostBytes + FORM_BYTES));
   front.use(compression());
   front.use(
     '/_astro',
@@ -79,11 +84,14 @@ const setClientAddress: RequestHandler = (request: Request, _response, next) => 
   next();
 };
 
-const refuseLargeBodies: RequestHandler = (request, response, next) => {
-  if (Number(request.headers['content-length'] ?? 0) <= MOST_BODY_BYTES) return next();
-  response
-    .status(413)
-    .set('Connection', 'close')
-    .type('application/problem+json')
-    .send(JSON.stringify({ type: 'about:blank', status: 413, code: 'too-large', title: 'Too large' }));
-};
+function refuseLargeBodies(mostUploadBytes: number): RequestHandler {
+  return (request, response, next) => {
+    const mostBytes = UPLOADS.test(request.path) ? mostUploadBytes : MOST_BODY_BYTES;
+    if (Number(request.headers['content-length'] ?? 0) <= mostBytes) return next();
+    response
+      .status(413)
+      .set('Connection', 'close')
+      .type('application/problem+json')
+      .send(JSON.stringify({ type: 'about:blank', status: 413, code: 'too-large', title: 'Too large' }));
+  };
+}

@@ -15,7 +15,7 @@ const { host, port } = config();
 const server = createServer(makeFront(handler, config()));
 // A client that dribbles its headers or body holds a connection no longer than this.
 server.headersTimeout = 15_000;
-server.requestTimeout = 120_000;
+server.requestTimeout = 600_000;
 server.keepAliveTimeout = 10_000;
 
 server.on('error', (error: NodeJS.ErrnoException) => {

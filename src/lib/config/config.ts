@@ -11,6 +11,8 @@ export interface Config {
   logLevel: string;
   metricsToken: string | null;
   dataDir: string;
+  /** Largest file of intervals that may be uploaded. */
+  importMostBytes: number;
   /** `isOwn`: `ops/start.sh` starts a MariaDB of its own in the data directory. */
   database: {
     isOwn: boolean;
@@ -75,6 +77,7 @@ export function parseConfig(environment: Record<string, string | undefined>): Co
     logLevel: settings.BITTERN_LOG_LEVEL,
     metricsToken: settings.BITTERN_METRICS_TOKEN ?? null,
     dataDir: settings.BITTERN_DATA_DIR,
+    importMostBytes: settings.BITTERN_IMPORT_MAX_MIB * 1024 * 1024,
     database: {
       isOwn: settings.BITTERN_DB_OWN,
       host: settings.BITTERN_DB_HOST,

@@ -19,6 +19,7 @@ export const settingsSchema = z.object({
   BITTERN_METRICS_TOKEN: z.string().min(16).optional(),
 
   BITTERN_DATA_DIR: z.string().default('.bittern'),
+  BITTERN_IMPORT_MAX_MIB: z.coerce.number().int().min(1).max(65_536).default(1024),
   BITTERN_DB_OWN: isTrue('true'),
   BITTERN_DB_HOST: z.string().default('127.0.0.1'),
   BITTERN_DB_PORT: port(4330),

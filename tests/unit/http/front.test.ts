@@ -17,7 +17,7 @@ async function ask(
     seen = request.headers;
     response.end('page');
   };
-  server = createServer(makeFront(astro as never, settings));
+  server = createServer(makeFront(astro as never, { ...settings, importMostBytes: 1024 * 1024 }));
   await new Promise<void>((listening) => server.listen(0, '127.0.0.1', listening));
   const { port } = server.address() as AddressInfo;
   return new Promise((answered, failed) => {

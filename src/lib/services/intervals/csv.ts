@@ -16,8 +16,9 @@ export class NotOneFile extends Error {
   override readonly name = 'NotOneFile';
 }
 
-const LEADING = ['start', 'seconds', 'LAeq', 'LAFmax', 'LAFmin', 'LCeq', 'LCpeak'];
-const TRAILING = ['flags', 'windSpeed', 'windDirection', 'temperature', 'battery'];
+/** Columns before and after those of the bands. */
+export const CSV_LEADING = ['start', 'seconds', 'LAeq', 'LAFmax', 'LAFmin', 'LCeq', 'LCpeak'];
+export const CSV_TRAILING = ['flags', 'windSpeed', 'windDirection', 'temperature', 'battery'];
 
 interface Period {
   fromSec: number;
@@ -32,7 +33,7 @@ interface Period {
 export async function intervalsCsv(station: StationRow, period: Period): Promise<string> {
   return inTransaction(async (snapshot) => {
     const columns = await columnsOf(station, period, snapshot);
-    const lines = [[...LEADING, ...columns.nominalHz, ...TRAILING].join(',')];
+    const lines = [[...CSV_LEADING, ...columns.nominalHz, ...CSV_TRAILING].join(',')];
     for (let fromSec = period.fromSec; ;) {
       const page = await selectIntervals(station.id, fromSec, period.toSec, snapshot, PAGE);
       for (const interval of page) {

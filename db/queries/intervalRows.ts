@@ -1,0 +1,112 @@
+import type { BandFraction } from '#lib/acoustics/bands';
+import { bandSetById } from './bandSets';
+import { type Connection } from './connection';
+import { packLevels, unpackLevels } from './intervalPacking';
+
+/** One interval as stored: levels in hundredths of a dB, times in epoch seconds UTC. */
+export interface StoredInterval {
+  startSec: number;
+  durationSec: number;
+  laeqCentiDb: number;
+  lafmaxCentiDb: number | null;
+  lafminCentiDb: number | null;
+  lceqCentiDb: number | null;
+  lcpeakCentiDb: number | null;
+  bandSetId: number;
+  bandFraction: BandFraction;
+  /** Absolute band indices; intervals of one band set share the array. */
+  bandIndices: Int8Array;
+  /** Unweighted band levels beside `bandIndices`; −32768 = none. */
+  levelsCentiDb: Int16Array;
+  flags: number;
+  windSpeedMs: number | null;
+  windDirectionDeg: number | null;
+  temperatureC: number | null;
+  batteryV: number | null;
+  receivedAtSec: number;
+}
+
+/** Columns of an interval's row, in the order of `IntervalCells`. */
+export const INTERVAL_COLUMNS = `starts_at, duration_sec, laeq_centi_db, lafmax_centi_db, lafmin_centi_db, lceq_centi_db, lcpeak_centi_db,
+  band_set_id, band_levels_centi_db, flags, wind_speed_centi_ms, wind_direction_deg, temperature_centi_c,
+  battery_centi_v, received_at`;
+
+/** A row of `INTERVAL_COLUMNS` as the driver gives it. */
+export type IntervalCells = [
+  number,
+  number,
+  number,
+  number | null,
+  number | null,
+  number | null,
+  number | null,
+  number,
+  Buffer,
+  number,
+  number | null,
+  number | null,
+  number | null,
+  number | null,
+  number,
+];
+
+/** Intervals of rows. */
+export async function intervalsOfCells(rows: IntervalCells[], conn: Connection): Promise<StoredInterval[]> {
+  const intervals: StoredInterval[] = [];
+  let set = rows[0] && (await bandSetById(rows[0][7], conn));
+  for (const row of rows) {
+    if (set?.id !== row[7]) set = await bandSetById(row[7], conn);
+    intervals.push({
+      startSec: row[0],
+      durationSec: row[1],
+      laeqCentiDb: row[2],
+      lafmaxCentiDb: row[3],
+      lafminCentiDb: row[4],
+      lceqCentiDb: row[5],
+      lcpeakCentiDb: row[6],
+      bandSetId: set.id,
+      bandFraction: set.fraction,
+      bandIndices: set.indices,
+      levelsCentiDb: unpackLevels(row[8]),
+      flags: row[9],
+      windSpeedMs: row[10] === null ? null : row[10] / 100,
+      windDirectionDeg: row[11],
+      temperatureC: row[12] === null ? null : row[12] / 100,
+      batteryV: row[13] === null ? null : row[13] / 100,
+      receivedAtSec: row[14],
+    });
+  }
+  return intervals;
+}
+
+/** What a new row holds: an interval without what its band set tells. */
+export type NewInterval = Omit<StoredInterval, 'bandFraction' | 'bandIndices'>;
+
+/**
+ * The cells of a row as SQL, in the order of `INTERVAL_COLUMNS`. Bindings, nearly ten thousand a statement, would cost more time than everything else that receiving does;
+ * every cell is a number or hexadecimal digits, so there is nothing to escape.
+ */
+export function intervalCellsText(interval: NewInterval): string {
+  const cells: (number | string | null)[] = [
+    interval.startSec,
+    interval.durationSec,
+    interval.laeqCentiDb,
+    interval.lafmaxCentiDb,
+    interval.lafminCentiDb,
+    interval.lceqCentiDb,
+    interval.lcpeakCentiDb,
+    interval.bandSetId,
+    `x'${packLevels(interval.levelsCentiDb).toString('hex')}'`,
+    interval.flags,
+    hundredths(interval.windSpeedMs),
+    interval.windDirectionDeg,
+    hundredths(interval.temperatureC),
+    hundredths(interval.batteryV),
+    interval.receivedAtSec,
+  ];
+  return cells.map((cell) => cell ?? 'NULL').join(', ');
+}
+
+function hundredths(value: number | null): number | null {
+  return value === null ? null : Math.round(value * 100);
+}

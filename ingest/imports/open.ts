@@ -1,0 +1,91 @@
+import { appendAudit } from '#db/queries/audit';
+import { inTransaction } from '#db/queries/connection';
+import { findImport, insertImport, lockImport } from '#db/queries/imports';
+import { findStationById, type StationRow } from '#db/queries/stations';
+import { type Import, type ImportMapping } from '#lib/contracts/imports';
+import { importJson } from '#lib/services/imports/importJson';
+import { EMPTY_REPORT } from '#lib/services/imports/report';
+import { keepFile, readHead, removeFile } from './files';
+import { layoutOf } from './layout';
+import { sniff, type Head } from './sniff';
+
+const HEAD_BYTES = 64 * 1024;
+
+export interface Upload {
+  networkId: number;
+  station: StationRow;
+  userId: string;
+  fileName: string;
+  /** Zone of the network, for times without an offset. */
+  zone: string;
+}
+
+/**
+ * Keeps a file for a station as a new import. The contract's own format is checked at once; any other waits until somebody has
+ * said what its columns are.
+ * @throws {UnusableFile}
+ */
+export async function openImport(upload: Upload, source: AsyncIterable<Uint8Array>): Promise<Import> {
+  const file = await keepFile(source);
+  try {
+    const { station, networkId, userId } = upload;
+    const fileName = nameOf(upload.fileName);
+    const mapping = await ownMappingOf(file.key, upload);
+    return await inTransaction(async (transaction) => {
+      const id = await insertImport(
+        {
+          networkId,
+          stationId: station.id,
+          state: mapping ? 'checking' : 'mapping',
+          fileKey: file.key,
+          fileName,
+          fileBytes: file.bytes,
+          fileDigest: file.digest,
+          mapping: mapping && JSON.stringify(mapping),
+          report: EMPTY_REPORT,
+          createdBy: userId,
+        },
+        transaction,
+      );
+      await appendAudit(
+        {
+          userId,
+          networkId,
+          action: 'import.upload',
+          subject: `station ${station.code}`,
+          detail: { import: id, file: fileName, bytes: file.bytes, sha256: file.digest.toString('hex') },
+        },
+        transaction,
+      );
+      return importJson(await lockImport(id, transaction));
+    });
+  } catch (error) {
+    await removeFile(file.key);
+    throw error;
+  }
+}
+
+/** The mapping of a file in the contract's own format that fits the station; null for any other file. */
+async function ownMappingOf(key: string, { station, zone }: Upload): Promise<ImportMapping | null> {
+  const head = sniff(await readHead(key, HEAD_BYTES), { zone, intervalSec: station.intervalSec });
+  if (!head.isOwn) return null;
+  const layout = await layoutOf(head.guess, station.bandFraction);
+  return 'problems' in layout ? null : head.guess;
+}
+
+/** What the beginning of an import's file shows, for saying what its columns are; null when there is no such import. */
+export async function importHead(networkId: number, id: number, zone: string): Promise<Head | null> {
+  const row = await findImport(networkId, id);
+  const station = row && (await findStationById(row.stationId));
+  if (!row || !station) return null;
+  return sniff(await readHead(row.fileKey, HEAD_BYTES), { zone, intervalSec: station.intervalSec });
+}
+
+/** A file's name as it is shown: without a path, not too long. */
+function nameOf(given: string): string {
+  const name = given
+    .replace(/^.*[\\/]/, '')
+    .replace(/\p{Cc}/gu, '')
+    .trim();
+  return name === '' ? 'intervals.csv' : name.slice(0, 160);
+}

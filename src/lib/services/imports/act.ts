@@ -1,0 +1,97 @@
+import { appendAudit } from '#db/queries/audit';
+import { inTransaction } from '#db/queries/connection';
+import { findImport, lockImport, updateImport, type ImportRow, type ImportState } from '#db/queries/imports';
+import { type Import, type ImportAct, type ImportMapping } from '#lib/contracts/imports';
+import { importJson } from './importJson';
+import { EMPTY_REPORT } from './report';
+
+export type ActOutcome =
+  { kind: 'done'; import: Import } | { kind: 'unknown' } | { kind: 'not-now'; message: string };
+
+interface Asked {
+  networkId: number;
+  id: number;
+  userId: string;
+}
+
+interface Act {
+  action: string;
+  from: readonly ImportState[];
+  changes: Parameters<typeof updateImport>[1];
+  /** Said when the import is in another state. */
+  otherwise: string;
+}
+
+const ACTS: Record<ImportAct, Act> = {
+  store: {
+    action: 'import.store',
+    from: ['checked'],
+    changes: { state: 'storing', startDone: 0 },
+    otherwise: 'Only an import whose check is done can be stored.',
+  },
+  undo: {
+    action: 'import.undo',
+    from: ['stored'],
+    changes: { state: 'undoing', startDone: 0 },
+    otherwise: 'Only an import that is stored can be undone.',
+  },
+  redo: {
+    action: 'import.redo',
+    from: ['undone'],
+    changes: { state: 'redoing', startDone: 0 },
+    otherwise: 'Only an import that was undone can be redone.',
+  },
+  discard: {
+    action: 'import.discard',
+    from: ['mapping', 'checking', 'checked', 'failed', 'undone'],
+    changes: { state: 'discarding' },
+    otherwise: 'What an import has stored must be undone before its file can be discarded.',
+  },
+};
+
+/** Asks the worker to store, undo, redo or discard an import. */
+export function actOnImport(asked: Asked & { act: ImportAct; reason: string | null }): Promise<ActOutcome> {
+  const { act, reason } = asked;
+  return change(asked, {
+    ...ACTS[act],
+    changes: { ...ACTS[act].changes, problem: null, actReason: reason, finishedAt: null },
+  });
+}
+
+/** Says what the columns of an import's file are, and has it checked from its beginning. */
+export function mapImport(asked: Asked & { mapping: ImportMapping }): Promise<ActOutcome> {
+  return change(asked, {
+    action: 'import.map',
+    from: ['mapping', 'checked', 'failed'],
+    changes: {
+      state: 'checking',
+      problem: null,
+      mapping: JSON.stringify(asked.mapping),
+      bytesDone: 0,
+      linesDone: 0,
+      report: EMPTY_REPORT,
+    },
+    otherwise: 'The columns can be said anew only before the import is stored, and not while it is checked.',
+  });
+}
+
+async function change({ networkId, id, userId }: Asked, act: Act): Promise<ActOutcome> {
+  if (!(await findImport(networkId, id))) return { kind: 'unknown' };
+  return inTransaction<ActOutcome>(async (transaction) => {
+    const row: ImportRow = await lockImport(id, transaction);
+    if (!act.from.includes(row.state)) return { kind: 'not-now', message: act.otherwise };
+    const changes = { ...act.changes, actedBy: userId, actedAt: new Date() };
+    await updateImport(id, changes, transaction);
+    await appendAudit(
+      {
+        userId,
+        networkId,
+        action: act.action,
+        subject: `station ${row.stationCode}`,
+        detail: { import: id, file: row.fileName, reason: act.changes.actReason ?? null },
+      },
+      transaction,
+    );
+    return { kind: 'done', import: importJson(await lockImport(id, transaction)) };
+  });
+}
