@@ -2,6 +2,7 @@
 export type Section =
   | 'map'
   | 'stations'
+  | 'health'
   | 'instruments'
   | 'exceedances'
   | 'complaints'
@@ -21,6 +22,7 @@ export interface SectionLink {
 export const SECTION_LINKS: readonly SectionLink[] = [
   { section: 'map', label: 'Map', keepsPeriod: true },
   { section: 'stations', label: 'Stations', keepsPeriod: true },
+  { section: 'health', label: 'Health', keepsPeriod: false },
   { section: 'exceedances', label: 'Exceedances', keepsPeriod: true },
   { section: 'complaints', label: 'Complaints', keepsPeriod: false },
   { section: 'summaries', label: 'Summaries', keepsPeriod: false },
