@@ -57,7 +57,7 @@ test('the operator registers a station by a pin, connects it, limits it, and fol
   const lastQuarterSec = Math.floor(Date.now() / 1000 / QUARTER_SEC - 1) * QUARTER_SEC;
   const answer = await post(token, minutes(lastQuarterSec - QUARTER_SEC, 15, 45));
   expect(answer.status).toBe(200);
-  await page.getByText('First post arrived:').waitFor({ timeout: 40_000 });
+  await page.getByText('First post arrived:', { exact: true }).waitFor({ timeout: 40_000 });
   await page.reload();
   expect(await page.content()).not.toContain(token);
 

@@ -1,0 +1,166 @@
+import { AxeBuilder } from '@axe-core/playwright';
+import { beforeAll, describe, expect, inject, test } from 'vitest';
+import { signIn, useBrowser } from './support/browser';
+import { pagePatterns } from './support/pagePatterns';
+import { signedInFetch } from './support/signedInFetch';
+import { someSubjects, type Subjects } from './support/subjects';
+
+const { open } = useBrowser();
+
+/**
+ * Who may open which page; the page leads everybody else to the sign-in, says 403 to a member without the role, and is not
+ * there (404) for anybody else. `members`: every role of the network.
+ */
+type Access = 'public' | 'signed-in' | 'members' | 'operator' | 'liaison' | 'administrator';
+
+const ACCESS: Record<string, Access> = {
+  '/account': 'signed-in',
+  '/admin': 'administrator',
+  '/admin/audit': 'administrator',
+  '/admin/networks': 'administrator',
+  '/admin/networks/[network]': 'administrator',
+  '/admin/networks/new': 'administrator',
+  '/admin/people': 'administrator',
+  '/admin/people/new': 'administrator',
+  '/n/[network]/complaints': 'members',
+  '/n/[network]/complaints/[reference]': 'members',
+  '/n/[network]/complaints/new': 'liaison',
+  '/n/[network]/exceedances': 'members',
+  '/n/[network]/exceedances/[id]': 'members',
+  '/n/[network]/health': 'members',
+  '/n/[network]/health/[code]': 'members',
+  '/n/[network]/health/settings': 'members',
+  '/n/[network]/instruments': 'members',
+  '/n/[network]/instruments/[id]': 'members',
+  '/n/[network]/instruments/new': 'operator',
+  '/n/[network]/instruments/settings': 'members',
+  '/n/[network]/limits': 'members',
+  '/n/[network]/limits/[id]': 'members',
+  '/n/[network]/limits/[id]/edit': 'operator',
+  '/n/[network]/limits/new': 'operator',
+  '/n/[network]/map': 'members',
+  '/n/[network]/quarantine': 'members',
+  '/n/[network]/quarantine/[id]': 'members',
+  '/n/[network]/settings': 'members',
+  '/n/[network]/stations': 'members',
+  '/n/[network]/stations/[code]': 'members',
+  '/n/[network]/stations/[code]/connect': 'operator',
+  '/n/[network]/stations/[code]/edit': 'operator',
+  '/n/[network]/stations/[code]/figures': 'members',
+  '/n/[network]/stations/new': 'operator',
+  '/n/[network]/summaries': 'members',
+  '/n/[network]/summaries/[month]': 'members',
+  '/sign-in': 'public',
+};
+
+/** Not pages of their own: redirects, errors, what machines ask, and what only a form reaches. */
+const APART = new Set([
+  '/',
+  '/404',
+  '/500',
+  '/admin/audit.csv',
+  '/admin/people/[id]',
+  '/healthz',
+  '/metrics',
+  '/n/[network]',
+  '/readyz',
+  '/refused',
+  '/sign-out',
+  '/theme',
+]);
+
+const ROLES = ['operator', 'liaison', 'regulator', 'admin'] as const;
+let subjects: Subjects;
+
+beforeAll(async () => {
+  subjects = await someSubjects();
+}, 60_000);
+
+function addressOf(pattern: string, network = 'merrow'): string {
+  const named = Object.entries(subjects).reduce(
+    (address, [parameter, value]) =>
+      address.replace(parameter, parameter.replace(/\[\w+\]/, encodeURIComponent(value))),
+    pattern.replace('[network]', network),
+  );
+  if (named.includes('[')) throw new Error(`What stands in ${pattern}?`);
+  return named;
+}
+
+function expectedStatus(access: Access, role: (typeof ROLES)[number]): number {
+  if (access === 'administrator') return role === 'admin' ? 200 : 404;
+  const isOpen = ['public', 'signed-in', 'members', role].includes(access) || role === 'admin';
+  return isOpen ? 200 : 403;
+}
+
+describe('who may open which page', () => {
+  test('every page is listed here', () => {
+    expect(pagePatterns().filter((pattern) => !APART.has(pattern))).toEqual(Object.keys(ACCESS).sort());
+  });
+
+  test.each(ROLES)(
+    '%s',
+    async (role) => {
+      const ask = await signedInFetch(`${role}@merrow.example`);
+      for (const [pattern, access] of Object.entries(ACCESS)) {
+        if (access === 'public') continue;
+        expect((await ask('GET', addressOf(pattern))).status, pattern).toBe(expectedStatus(access, role));
+        if (pattern.startsWith('/n/')) {
+          expect((await ask('GET', addressOf(pattern, 'elsewhere'))).status, `foreign ${pattern}`).toBe(404);
+        }
+      }
+    },
+    120_000,
+  );
+
+  test('nobody: every page leads to the sign-in and back, whether it exists or not', async () => {
+    for (const [pattern, access] of Object.entries(ACCESS)) {
+      const answer = await fetch(`${inject('origin')}${addressOf(pattern)}`, { redirect: 'manual' });
+      expect(answer.status, pattern).toBe(access === 'public' ? 200 : 302);
+      if (access !== 'public') {
+        expect(answer.headers.get('location'), pattern).toBe(
+          `/sign-in?next=${encodeURIComponent(addressOf(pattern))}`,
+        );
+      }
+    }
+  });
+
+  test('a form sent by somebody without its role changes nothing', async () => {
+    const ask = await signedInFetch('regulator@merrow.example');
+    for (const [pattern, access] of Object.entries(ACCESS)) {
+      if (access === 'public' || access === 'signed-in') continue;
+      const status = (await ask('POST', addressOf(pattern), {})).status;
+      expect([403, 404, 405, 415], `${pattern}: ${status}`).toContain(status);
+    }
+  });
+});
+
+test.each([
+  ['light', 1280],
+  ['dark', 390],
+] as const)(
+  'no accessibility violation and nothing sideways: %s, %i px',
+  async (theme, width) => {
+    for (const [email, who] of [
+      ['operator@merrow.example', (access: Access) => access !== 'administrator' && access !== 'liaison'],
+      ['admin@merrow.example', (access: Access) => access === 'administrator'],
+    ] as const) {
+      const { page, context } = await open({ theme, width });
+      await signIn(page, email);
+      for (const pattern of Object.keys(ACCESS).filter((one) => who(ACCESS[one] ?? 'public'))) {
+        await page.goto(addressOf(pattern), { waitUntil: 'load' });
+        await page.waitForTimeout(400);
+        const { violations } = await new AxeBuilder({ page })
+          .withTags(['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa'])
+          .analyze();
+        expect(
+          violations.map(({ id, nodes }) => `${id}: ${nodes[0]?.html}`),
+          pattern,
+        ).toEqual([]);
+        const overflowPx = await page.evaluate(() => document.documentElement.scrollWidth - innerWidth);
+        expect(overflowPx, pattern).toBeLessThanOrEqual(0);
+      }
+      await context.close();
+    }
+  },
+  400_000,
+);

@@ -1,0 +1,9 @@
+import { readdirSync } from 'node:fs';
+
+/** Every page's address pattern, such as `/n/[network]/map`, read from the folder that makes them. */
+export function pagePatterns(): string[] {
+  return readdirSync('src/pages', { recursive: true, encoding: 'utf8' })
+    .filter((file) => /\.(astro|ts)$/.test(file) && !file.startsWith('api/') && !/(^|\/)_/.test(file))
+    .map((file) => `/${file.replace(/\.(astro|ts)$/, '').replace(/(^|\/)index$/, '')}`)
+    .sort();
+}

@@ -1,0 +1,44 @@
+import { minutes, post } from './posts';
+import { signedInFetch } from './signedInFetch';
+
+/** What stands in the place of each parameter of a page's address. */
+export type Subjects = Record<string, string>;
+
+const base = '/api/v1/networks/merrow';
+
+/** One of each thing that pages are about, found in the demo or made through the interface. */
+export async function someSubjects(): Promise<Subjects> {
+  const api = await signedInFetch('operator@merrow.example');
+  const read = async (path: string) => (await api('GET', `${base}/${path}`)).json() as Promise<unknown>;
+  const firstOf = async (path: string, key: string) => {
+    const { items } = (await read(path)) as { items: Record<string, unknown>[] };
+    const value = items[0]?.[key];
+    if (value === undefined) throw new Error(`There is nothing in ${path}.`);
+    return String(value);
+  };
+  await quarantineOne(api);
+  const made = await api('POST', `${base}/instruments`, {
+    serialNumber: `T-${Date.now()}`,
+    class: 1,
+    description: 'For the tests of pages',
+  });
+  if (made.status !== 201) throw new Error(`The instrument was refused: ${await made.text()}`);
+  const stations = (await read('stations')) as { items: { code: string }[] };
+  return {
+    'limits/[id]': await firstOf('limits', 'id'),
+    'exceedances/[id]': await firstOf('exceedances', 'id'),
+    'quarantine/[id]': await firstOf('quarantine', 'id'),
+    'instruments/[id]': await firstOf('instruments', 'id'),
+    '[reference]': await firstOf('complaints', 'reference'),
+    '[month]': await firstOf('summaries', 'month'),
+    '[code]': stations.items[0]?.code ?? '',
+  };
+}
+
+/** A record that receiving refuses and keeps. */
+async function quarantineOne(api: Awaited<ReturnType<typeof signedInFetch>>): Promise<void> {
+  const issued = await api('POST', `${base}/stations/MER-07/tokens`, { label: 'for the tests of pages' });
+  const { token } = (await issued.json()) as { token: string };
+  const answer = await post(token, minutes(Math.floor(Date.now() / 60_000 - 5) * 60, 1, 999));
+  if (answer.status !== 200) throw new Error(`The post was refused: ${await answer.text()}`);
+}
