@@ -168,6 +168,7 @@ export interface FigureSheet extends Covered {
   head: Fact[];
   /** Null where the period holds more intervals than are read one by one. */
   intervals: IntervalFacts | null;
+  /** Why there are no such facts, no raw figures and no tones block by block; null where there are. */
   intervalsMissing: string | null;
   exclusions: { from: string; to: string; reason: string }[];
   levels: FigureRow[];
@@ -176,7 +177,6 @@ export interface FigureSheet extends Covered {
   assessments: FigureRow[];
   tonality: Tonality;
   comparison: Comparison | null;
-  comparisonMissing: string | null;
   dates: DateRow[];
   hasCnel: boolean;
   byClock: PooledPeriodsOfDay;

@@ -2,14 +2,15 @@ import { selectIntervals, type StoredInterval } from '#db/queries/intervals';
 import { PeriodAccumulator } from '#lib/acoustics/periodStatistics';
 import { FLAGS, INVALIDITY_REASONS, invalidityReasons, type InvalidityReason } from '#lib/acoustics/validity';
 import { type IntervalFacts } from '#lib/contracts/figureSheet';
+import { formatDuration } from '#lib/format/durations';
 import { accumulate, firstEndingAfter, isExcluded, rulesSpans, type Judgement } from '../levels/accumulate';
 import { judgementOf, MOST_INTERVALS } from '../levels/intervalSums';
 import { type Span } from '../levels/spans';
 import { BlockTones } from './blockTones';
 import { type SheetSource } from './source';
 
-/** Periods of up to this many intervals are read one by one: ten weeks of minutes, 28 hours of seconds. */
-export const MOST_READ = 101_000;
+/** Periods of up to this many intervals are read one by one: 125 days of minutes, 50 hours of seconds. */
+const MOST_READ = 180_000;
 
 /** What every interval of a period tells. */
 export interface IntervalPass {
@@ -22,6 +23,15 @@ export interface IntervalPass {
 /** Whether a period is short enough to be read interval by interval. */
 export function isReadable({ station, period }: Pick<SheetSource, 'station' | 'period'>): boolean {
   return (period.toSec - period.fromSec) / station.intervalSec <= MOST_READ;
+}
+
+/** Why a period that is too long for it is not read, in words. */
+export function notReadWords({ station }: Pick<SheetSource, 'station'>): string {
+  const longest = formatDuration(MOST_READ * station.intervalSec);
+  return (
+    `Counts by reason, raw figures and tones block by block are given of periods of up to ${longest} at this station, because ` +
+    'every interval has to be read for them.'
+  );
 }
 
 /** Reads every interval of the period once. */

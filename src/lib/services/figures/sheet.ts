@@ -18,7 +18,7 @@ import { distributionOf } from './distribution';
 import { headOf } from './head';
 import { heatMapOf, measuredHours } from './heatMap';
 import { instrumentsOf } from './instruments';
-import { isReadable, MOST_READ, readIntervals } from './intervalPass';
+import { isReadable, notReadWords, readIntervals } from './intervalPass';
 import { EXCEEDANCE_CONVENTION, levelRows } from './levelRows';
 import { periodsByClock, periodsByDate } from './periodsOfDay';
 import { byHourOfDay, byWeekday } from './pooled';
@@ -61,7 +61,7 @@ export async function figureSheet(query: SheetQuery, conn: Connection = pool()):
   const hours = await measuredHours(source);
   const instruments = await instrumentsOf(source);
   const dates = await dateRows(source);
-  const tooLong = `Given for periods of up to ${MOST_READ} intervals: every one of them has to be read.`;
+  const notRead = pass ? null : notReadWords(source);
   return {
     network: query.networkSlug,
     station: { code: station.code, name: station.name },
@@ -76,14 +76,13 @@ export async function figureSheet(query: SheetQuery, conn: Connection = pool()):
     sampleSeconds: statistics.sampleSeconds,
     head: headOf(source, figures, pass?.facts ?? null, instruments),
     intervals: pass?.facts ?? null,
-    intervalsMissing: pass ? null : tooLong,
+    intervalsMissing: notRead,
     exclusions: await standingExclusions(source),
     levels: levelRows(source, figures, statistics),
     exceedanceConvention: EXCEEDANCE_CONVENTION,
     assessments: assessmentRows(source, figures, statistics, hours, query.rating, instruments),
     tonality: tonalityOf(source, levels, pass?.tones.result() ?? null),
     comparison: pass && compareWithRaw(levels, pass.raw),
-    comparisonMissing: pass ? null : tooLong,
     dates,
     hasCnel: usesCnel(source, dates),
     byClock: await periodsByClock(source),
