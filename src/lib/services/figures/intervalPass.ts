@@ -9,8 +9,8 @@ import { type Span } from '../levels/spans';
 import { BlockTones } from './blockTones';
 import { type SheetSource } from './source';
 
-/** Periods of up to this many intervals are read one by one: 125 days of minutes, 50 hours of seconds. */
-const MOST_READ = 180_000;
+/** Periods of up to this many intervals are read one by one: 70 days of minutes, 28 hours of seconds. */
+const MOST_READ = 100_800;
 
 /** What every interval of a period tells. */
 export interface IntervalPass {
