@@ -163,3 +163,18 @@ export async function withdrawDeployment(
   });
   return changed === 1;
 }
+
+/** Standing deployments at a station that overlap `fromSec <= t < toSec`, ascending. */
+export async function selectStaysAt(
+  stationId: number,
+  fromSec: number,
+  toSec: number,
+  conn: Connection = pool(),
+): Promise<DeploymentRow[]> {
+  return selectDeployments(conn)
+    .where('deployments.station_id', stationId)
+    .whereNull('deployments.withdrawn_at')
+    .where('deployments.starts_at', '<', toSec)
+    .where((query) => query.whereNull('deployments.ends_at').orWhere('deployments.ends_at', '>', fromSec))
+    .orderBy('deployments.starts_at');
+}

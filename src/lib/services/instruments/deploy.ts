@@ -9,7 +9,9 @@ import {
 } from '#db/queries/deployments';
 import { findInstrument, lockInstrument } from '#db/queries/instruments';
 import { findStation, lockStation } from '#db/queries/stations';
+import { settingsAt } from '#db/queries/networks';
 import { formatInstantUtc } from '#lib/contracts/common';
+import { formatInstant } from '#lib/format/times';
 import { MOST_DEPLOYMENT_AHEAD_SEC, type Deployment, type NewDeployment } from '#lib/contracts/instruments';
 import { done, invalid, type Outcome } from '../outcome';
 import { NO_INSTRUMENT } from './add';
@@ -66,7 +68,7 @@ export function aheadOf({ startSec, endSec }: Stay, nowSec: number): Outcome<nev
   return null;
 }
 
-/** Refuses a stay that another one overlaps, and says which. */
+/** Refuses a stay that another one overlaps, and says which, in the network's time. */
 export async function overlapOf(
   stay: Stay,
   exceptId: number | null,
@@ -74,8 +76,10 @@ export async function overlapOf(
 ): Promise<Outcome<never> | null> {
   const [other] = await selectOverlapping(stay, exceptId, transaction);
   if (!other) return null;
-  const since = `from ${formatInstantUtc(other.startSec)}`;
-  const until = other.endSec === null ? 'and is still there' : `to ${formatInstantUtc(other.endSec)}`;
+  const { timeZone } = await settingsAt(other.networkId, other.startSec, transaction);
+  const words = (sec: number) => formatInstant(sec, timeZone);
+  const since = `from ${words(other.startSec)}`;
+  const until = other.endSec === null ? 'and is still there' : `to ${words(other.endSec)}`;
   return other.stationId === stay.stationId
     ? invalid(
         'from',
