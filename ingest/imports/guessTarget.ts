@@ -32,7 +32,11 @@ const BAND = /^(?:l(?:z|l|p)?(?:f|eq)?[\s_-]*)?(\d+(?:[.,]\d+)?)\s*(k?)\s*(?:hz)
 
 /** What a column probably is by its heading; null where nothing speaks for anything. */
 export function guessTarget(heading: string): string | null {
-  const bare = heading.replace(/\[[^\]]*\]|\([^)]*\)/g, '').trim();
+  // `Leq(A)` names its weighting, other brackets a unit.
+  const bare = heading
+    .replace(/\(([ac])\)/i, '$1')
+    .replace(/\[[^\]]*\]|\([^)]*\)/g, '')
+    .trim();
   const band = BAND.exec(bare);
   if (band) {
     const hz = parseBandLabel(`${(band[1] ?? '').replace(',', '.')}${band[2] ?? ''}`);

@@ -2,12 +2,13 @@ import { appendAudit } from '#db/queries/audit';
 import { inTransaction } from '#db/queries/connection';
 import { findImport, insertImport, lockImport } from '#db/queries/imports';
 import { findStationById, type StationRow } from '#db/queries/stations';
+import { type BandFraction } from '#lib/acoustics/bands';
 import { type Import, type ImportMapping } from '#lib/contracts/imports';
 import { importJson } from '#lib/services/imports/importJson';
 import { EMPTY_REPORT } from '#lib/services/imports/report';
 import { keepFile, readHead, removeFile } from './files';
 import { layoutOf } from './layout';
-import { sniff, type Head } from './sniff';
+import { sniff, type Head, type Shape } from './sniff';
 
 const HEAD_BYTES = 64 * 1024;
 
@@ -73,12 +74,20 @@ async function ownMappingOf(key: string, { station, zone }: Upload): Promise<Imp
   return 'problems' in layout ? null : head.guess;
 }
 
-/** What the beginning of an import's file shows, for saying what its columns are; null when there is no such import. */
-export async function importHead(networkId: number, id: number, zone: string): Promise<Head | null> {
+/** What the beginning of an import's file shows, for saying what its columns are; null when there is no such import, or its file is gone. */
+export async function importHead(
+  { networkId, id, zone }: { networkId: number; id: number; zone: string },
+  shape: Partial<Shape>,
+): Promise<(Head & { bandFraction: BandFraction }) | null> {
   const row = await findImport(networkId, id);
   const station = row && (await findStationById(row.stationId));
   if (!row || !station) return null;
-  return sniff(await readHead(row.fileKey, HEAD_BYTES), { zone, intervalSec: station.intervalSec });
+  const { intervalSec, bandFraction } = station;
+  const bytes = await readHead(row.fileKey, HEAD_BYTES).catch((error: { code?: string }) => {
+    if (error.code === 'ENOENT') return null;
+    throw error;
+  });
+  return bytes && { ...sniff(bytes, { zone, intervalSec, shape }), bandFraction };
 }
 
 /** A file's name as it is shown: without a path, not too long. */

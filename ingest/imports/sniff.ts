@@ -22,19 +22,26 @@ const DELIMITERS = [',', ';', '\t'] as const;
 const MOST_HEADER_LINES = 50;
 const SHOWN_ROWS = 5;
 
-/** What is known of the station that a file is for. */
+/** What is known of the station that a file is for, and what a person has said of the file's shape. */
 interface Circumstances {
   zone: string;
   intervalSec: number;
+  shape?: Partial<Shape>;
+}
+
+/** What separates the columns, and the line of the headings. */
+export interface Shape {
+  delimiter: ImportMapping['delimiter'];
+  headerLine: number;
 }
 
 /** Reads the first bytes of a file. @throws {UnusableFile} */
-export function sniff(head: Buffer, { zone, intervalSec }: Circumstances): Head {
+export function sniff(head: Buffer, { zone, intervalSec, shape = {} }: Circumstances): Head {
   if (head.length === 0) throw notCsv('The file is empty.');
   if (head[0] === 0x1f && head[1] === 0x8b) throw notCsv('The file is packed; unpack it first.');
   if (head.includes(0)) throw notCsv('The file is not UTF-8 text; save it as CSV (UTF-8) first.');
   const lines = wholeLines(head);
-  const { delimiter, headerLine } = shapeOf(lines);
+  const { delimiter, headerLine } = { ...shapeOf(lines), ...shape };
   const [headings = [], ...below] = cellsOf(lines.slice(headerLine - 1), delimiter);
   const rows = below.slice(0, SHOWN_ROWS);
   if (delimiter === ',' && isOwnFormat(headings)) {
@@ -63,26 +70,34 @@ function wholeLines(head: Buffer): string[] {
   return lines.length > 1 ? lines.slice(0, -1) : lines;
 }
 
-/** What separates the columns, and the line of the headings: the first one with as many cells as most lines have. */
-function shapeOf(lines: readonly string[]): { delimiter: (typeof DELIMITERS)[number]; headerLine: number } {
-  const first = lines.slice(0, MOST_HEADER_LINES + 50);
-  let best = { delimiter: DELIMITERS[0] as (typeof DELIMITERS)[number], headerLine: 1, cells: 1 };
-  for (const delimiter of DELIMITERS) {
-    const counts = first.map((line) => line.split(delimiter).length);
-    const usual = usualOf(counts.filter((count) => count > 1));
-    const headerLine = counts.indexOf(usual) + 1;
-    if (usual > best.cells && headerLine > 0 && headerLine <= MOST_HEADER_LINES) {
-      best = { delimiter, headerLine, cells: usual };
-    }
-  }
-  if (best.cells === 1) throw notCsv('No columns could be told apart: the file is not CSV.');
-  return best;
+/** The headings are the first line with as many cells as most lines have, and they read as headings do. */
+function shapeOf(lines: readonly string[]): Shape {
+  const first = lines.slice(0, 2 * MOST_HEADER_LINES);
+  const shapes = DELIMITERS.flatMap((delimiter) => {
+    const rows = first.map((line) => line.split(delimiter));
+    const cells = usualOf(rows.map(({ length }) => length).filter((count) => count > 1));
+    const at = rows.findIndex(({ length }) => length === cells);
+    const headings = rows[at];
+    if (!headings || at >= MOST_HEADER_LINES) return [];
+    return [{ delimiter, headerLine: at + 1, cells, areHeadings: looksLikeHeadings(headings) }];
+  });
+  shapes.sort((a, b) => Number(b.areHeadings) - Number(a.areHeadings) || b.cells - a.cells);
+  const [best] = shapes;
+  if (!best) throw notCsv('No columns could be told apart: the file is not CSV.');
+  return { delimiter: best.delimiter, headerLine: best.headerLine };
 }
 
+/** The count that most lines have; of several the largest. */
 function usualOf(counts: readonly number[]): number {
   const times = new Map<number, number>();
   for (const count of counts) times.set(count, (times.get(count) ?? 0) + 1);
-  return [...times].sort((a, b) => b[1] - a[1])[0]?.[0] ?? 0;
+  return [...times].sort((a, b) => b[1] - a[1] || b[0] - a[0])[0]?.[0] ?? 0;
+}
+
+/** Half of the cells are words or frequencies. Rows with decimal commas, split at the commas, are neither. */
+function looksLikeHeadings(cells: readonly string[]): boolean {
+  const fitting = cells.filter((cell) => /[a-z]/i.test(cell) || /^\s*"?\d+(\.\d)?"?\s*$/.test(cell));
+  return fitting.length * 2 >= cells.length;
 }
 
 function cellsOf(lines: readonly string[], delimiter: string): string[][] {
