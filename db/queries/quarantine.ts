@@ -84,13 +84,12 @@ export interface QuarantineRow {
   settlementReason: string | null;
 }
 
-const COLUMNS = {
+const LISTED_COLUMNS = {
   id: 'quarantine.id',
   stationId: 'quarantine.station_id',
   stationCode: 'stations.code',
   code: 'quarantine.code',
   detail: 'quarantine.detail',
-  record: 'quarantine.record',
   startSec: 'quarantine.starts_at',
   receivedAt: 'quarantine.received_at',
   timesReceived: 'quarantine.times_received',
@@ -100,6 +99,10 @@ const COLUMNS = {
   settledByName: 'users.name',
   settlementReason: 'quarantine.settlement_reason',
 } as const;
+const COLUMNS = { ...LISTED_COLUMNS, record: 'quarantine.record' } as const;
+
+/** A record as a list has it: without what was received. */
+export type ListedQuarantined = Omit<QuarantineRow, 'record'>;
 
 /** Which records of a network; null: any. A record whose start could not be read is in no period. */
 export interface QuarantineFilter {
@@ -130,12 +133,12 @@ export async function listQuarantined(
   filter: QuarantineFilter,
   { limit, beforeId }: { limit: number; beforeId: number | null },
   conn: Connection = pool(),
-): Promise<QuarantineRow[]> {
+): Promise<ListedQuarantined[]> {
   const rows = matching(filter, conn)
     .leftJoin('users', 'users.id', 'quarantine.settled_by')
     .orderBy('quarantine.id', 'desc')
     .limit(limit)
-    .select(COLUMNS);
+    .select(LISTED_COLUMNS);
   if (beforeId !== null) rows.where('quarantine.id', '<', beforeId);
   return rows;
 }

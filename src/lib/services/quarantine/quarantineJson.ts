@@ -1,9 +1,9 @@
-import { type QuarantineRow } from '#db/queries/quarantine';
+import { type ListedQuarantined, type QuarantineRow } from '#db/queries/quarantine';
 import { formatInstantUtc } from '#lib/contracts/common';
 import { type Quarantined, type QuarantineCode, type QuarantinedRecord } from '#lib/contracts/quarantine';
 
 /** A record in quarantine as the interface lists it. */
-export function quarantineJson(row: QuarantineRow): Quarantined {
+export function quarantineJson(row: ListedQuarantined): Quarantined {
   return {
     id: Number(row.id),
     station: row.stationCode,
