@@ -65,7 +65,7 @@ test('the operator registers a station by a pin, connects it, limits it, and fol
   await page.getByRole('link', { name: 'Set a limit' }).click();
   await page.getByLabel('Name', { exact: true }).fill('Quiet at the lock');
   await page.getByLabel('Limit', { exact: true }).fill('52.5');
-  await page.getByLabel('Chosen stations').check();
+  await page.getByLabel('Only those chosen here').check();
   await page.getByLabel(/MER-21/).check();
   await page.getByLabel(/Who gets e-mail/).fill('operator@merrow.example');
   await page.getByLabel(/In force from/).fill(localText(lastQuarterSec - QUARTER_SEC));

@@ -1,4 +1,4 @@
-import { readdirSync } from 'node:fs';
+import { existsSync, readdirSync, readFileSync } from 'node:fs';
 
 /** Every page's address pattern, such as `/n/[network]/map`, read from the folder that makes them. */
 export function pagePatterns(): string[] {
@@ -6,4 +6,12 @@ export function pagePatterns(): string[] {
     .filter((file) => /\.(astro|ts)$/.test(file) && !file.startsWith('api/') && !/(^|\/)_/.test(file))
     .map((file) => `/${file.replace(/\.(astro|ts)$/, '').replace(/(^|\/)index$/, '')}`)
     .sort();
+}
+
+/** Whether a page takes forms. */
+export function takesForms(pattern: string): boolean {
+  const file = [`src/pages${pattern}.astro`, `src/pages${pattern}/index.astro`].find((name) =>
+    existsSync(name),
+  );
+  return file !== undefined && readFileSync(file, 'utf8').includes("'POST'");
 }

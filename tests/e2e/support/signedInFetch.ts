@@ -14,10 +14,11 @@ export async function signedInFetch(email: string) {
     .map((value) => value.split(';')[0])
     .join('; ');
 
-  return (method: string, path: string, body?: unknown): Promise<Response> =>
+  /** A body goes as JSON; text with a type of its own goes as it is. */
+  return (method: string, path: string, body?: unknown, type = 'application/json'): Promise<Response> =>
     fetch(`${origin}${path}`, {
       method,
-      headers: { Cookie: cookie, ...(body === undefined ? {} : { 'Content-Type': 'application/json' }) },
-      body: body === undefined ? null : JSON.stringify(body),
+      headers: { Cookie: cookie, ...(body === undefined ? {} : { 'Content-Type': type }) },
+      body: typeof body === 'string' || body === undefined ? (body ?? null) : JSON.stringify(body),
     });
 }

@@ -23,11 +23,19 @@ export async function someSubjects(): Promise<Subjects> {
     description: 'For the tests of pages',
   });
   if (made.status !== 201) throw new Error(`The instrument was refused: ${await made.text()}`);
+  const brought = await api(
+    'POST',
+    `${base}/imports?station=MER-07&name=empty.csv`,
+    'start,seconds,LAeq\r\n2026-01-01T00:00:00Z,60,40.0\r\n',
+    'text/csv',
+  );
+  if (brought.status !== 201) throw new Error(`The file was refused: ${await brought.text()}`);
   const stations = (await read('stations')) as { items: { code: string }[] };
   return {
     'limits/[id]': await firstOf('limits', 'id'),
     'exceedances/[id]': await firstOf('exceedances', 'id'),
     'quarantine/[id]': await firstOf('quarantine', 'id'),
+    'imports/[id]': await firstOf('imports', 'id'),
     'instruments/[id]': await firstOf('instruments', 'id'),
     '[reference]': await firstOf('complaints', 'reference'),
     '[month]': await firstOf('summaries', 'month'),
