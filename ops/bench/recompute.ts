@@ -1,7 +1,5 @@
-import { readFileSync } from 'node:fs';
 import { spawn } from 'node:child_process';
 import { once } from 'node:events';
-import { setTimeout as sleep } from 'node:timers/promises';
 import { db } from '#db/client';
 import { inTransaction } from '#db/queries/connection';
 import { selectIntervals } from '#db/queries/intervals';
@@ -9,6 +7,7 @@ import { markMeasuredQuarters } from '#db/queries/quarterHours';
 import { type StationRow } from '#db/queries/stations';
 import { aggregateAll } from '#ingest/aggregate/aggregate';
 import { compare, digits, median, printTable } from './support/measure';
+import { residentMib, untilNothingWaits } from './support/memory';
 import { withOwnSchema } from './support/schema';
 import { fill, makeNetwork, makeStation } from './support/station';
 
@@ -64,7 +63,8 @@ async function watchWorker(): Promise<void> {
   try {
     for (let round = 1; round <= 3; round += 1) {
       await untilNothingWaits();
-      rows.push([String(round), ...memoryMiB(worker.pid ?? NaN)]);
+      const { now, highest } = residentMib(worker.pid ?? NaN);
+      rows.push([String(round), digits(now), digits(highest)]);
       if (round < 3)
         await db().raw(
           'INSERT INTO dirty_marks (station_id, quarter_starts_at, marked_at) SELECT station_id, starts_at, 0 FROM quarter_hours',
@@ -75,21 +75,4 @@ async function watchWorker(): Promise<void> {
     await once(worker, 'exit');
   }
   printTable(['worker, after day', 'resident MiB', 'highest resident MiB'], rows);
-}
-
-async function untilNothingWaits(): Promise<void> {
-  const deadlineMs = Date.now() + 60_000;
-  while (Date.now() < deadlineMs) {
-    if (!(await db()('dirty_marks').first('id'))) return;
-    await sleep(200);
-  }
-  throw new Error('The worker has not recomputed the day within a minute.');
-}
-
-function memoryMiB(processId: number): string[] {
-  const status = readFileSync(`/proc/${processId}/status`, 'utf8');
-  return ['VmRSS', 'VmHWM'].map((name) => {
-    const kiB = new RegExp(`^${name}:\\s+(\\d+) kB$`, 'm').exec(status)?.[1];
-    return digits(Number(kiB) / 1024);
-  });
 }

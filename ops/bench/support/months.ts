@@ -19,11 +19,11 @@ export async function fillMonth(station: StationRow): Promise<void> {
 }
 
 /**
- * Repeats the first month to make twelve, rows and what was computed from them alike: by UTC a shift changes neither. The nights
+ * Repeats the first month to make `months`, rows and what was computed from them alike: by UTC a shift changes neither. The nights
  * between two months are computed anew.
  */
-export async function repeatMonth(station: StationRow): Promise<void> {
-  for (let month = 1; month < 12; month += 1) {
+export async function repeatMonth(station: StationRow, months = 12): Promise<void> {
+  for (let month = 1; month < months; month += 1) {
     const shiftSec = month * MONTH_SEC;
     await repeat('interval_levels', station.id, { starts_at: `starts_at + ${shiftSec}` });
     await repeat('quarter_hours', station.id, { starts_at: `starts_at + ${shiftSec}` });
@@ -33,7 +33,7 @@ export async function repeatMonth(station: StationRow): Promise<void> {
       ends_at: `ends_at + ${shiftSec}`,
     });
   }
-  const midnights = Array.from({ length: 12 }, (_, month) => FIRST_SEC + month * MONTH_SEC);
+  const midnights = Array.from({ length: months }, (_, month) => FIRST_SEC + month * MONTH_SEC);
   await insertDirtyMarks(station.id, midnights, pool());
   await aggregateAll(async () => undefined);
 }

@@ -6,16 +6,16 @@ import { findStationById, insertStation, type StationRow } from '#db/queries/sta
 import { normalNoise, smoothNoise } from '#ingest/monitor/soundscape/noise';
 import { bandRange } from '#lib/acoustics/bands';
 
-/** The bands of every bench station: the thirds 25 Hz–8 kHz. */
-export const BANDS = bandRange(3, 25, 8000);
+/** The bands of every bench station: the 31 thirds 20 Hz–20 kHz. */
+export const BANDS = bandRange(3, 20, 20_000);
 
-/** Adds a network by UTC, so that every day has 24 hours. */
-export function makeNetwork(): Promise<number> {
+/** Adds a network, by UTC unless another zone is named: every day has 24 hours. */
+export function makeNetwork(slug = 'bench', timeZone = 'UTC'): Promise<number> {
   return inTransaction(async (transaction) => {
-    const id = await insertNetwork({ slug: 'bench', name: 'Bench' }, transaction);
+    const id = await insertNetwork({ slug, name: 'Bench' }, transaction);
     const settings = {
       effectiveFromSec: 0,
-      timeZone: 'UTC',
+      timeZone,
       scheme: { dayStartMin: 7 * 60, eveningStartMin: 19 * 60, nightStartMin: 23 * 60 },
       minimumCoverage: 0.75,
       rules: { maximumWindSpeedMs: 5, excludeRain: false },
@@ -25,7 +25,7 @@ export function makeNetwork(): Promise<number> {
   });
 }
 
-/** Adds a station of thirds 25 Hz–8 kHz. */
+/** Adds a station of thirds 20 Hz–20 kHz. */
 export async function makeStation(networkId: number, code: string, intervalSec: number): Promise<StationRow> {
   const id = await inTransaction((transaction) =>
     insertStation(
