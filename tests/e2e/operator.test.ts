@@ -75,7 +75,8 @@ test('the operator registers a station by a pin, connects it, limits it, and fol
 
   expect((await post(token, minutes(lastQuarterSec, 15, 61.4))).status).toBe(200);
   const mail = await mailTo('operator@merrow.example', ({ text }) => text.includes('Quiet at the lock'));
-  expect(mail.subject).toContain('61.4');
+  expect(mail.subject).toContain('above the limit by 8.9 dB');
+  expect(mail.text).toContain('61.4');
   const link = /\/n\/merrow\/exceedances\/\d+/.exec(mail.text)?.[0] ?? '';
   await page.goto(link);
   expect(await page.getByRole('heading', { level: 1 }).innerText()).toMatch(/Lock Cottage|Quiet at the lock/);
