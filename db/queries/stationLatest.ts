@@ -70,12 +70,47 @@ export async function rederiveLatest(stationId: number, conn: Connection): Promi
 
 /** The newest interval of each station of a network that has posted. */
 export async function listLatest(networkId: number, conn: Connection = pool()): Promise<LatestInterval[]> {
-  const rows: (Omit<LatestInterval, 'windSpeedMs' | 'batteryV'> & {
-    wind: number | null;
-    battery: number | null;
-  })[] = await conn('station_latest')
+  const rows: Row[] = await selectLatest([networkId], conn);
+  return rows.map(latestOf);
+}
+
+/** A newest interval with what its station is called and how often it measures. */
+export interface StationLatest extends LatestInterval {
+  networkId: number;
+  code: string;
+  intervalSec: number;
+  retiredAt: Date | null;
+}
+
+/** As `listLatest`, of several networks, each with its station. */
+export async function listLatestOfNetworks(
+  networkIds: readonly number[],
+  conn: Connection = pool(),
+): Promise<StationLatest[]> {
+  const rows: (Row & Omit<StationLatest, keyof LatestInterval>)[] = await selectLatest(
+    networkIds,
+    conn,
+  ).select({
+    networkId: 'stations.network_id',
+    code: 'stations.code',
+    intervalSec: 'stations.interval_sec',
+    retiredAt: 'stations.retired_at',
+  });
+  return rows.map(({ networkId, code, intervalSec, retiredAt, ...row }) => ({
+    ...latestOf(row),
+    networkId,
+    code,
+    intervalSec,
+    retiredAt,
+  }));
+}
+
+type Row = Omit<LatestInterval, 'windSpeedMs' | 'batteryV'> & { wind: number | null; battery: number | null };
+
+function selectLatest(networkIds: readonly number[], conn: Connection) {
+  return conn('station_latest')
     .join('stations', 'stations.id', 'station_latest.station_id')
-    .where({ 'stations.network_id': networkId })
+    .whereIn('stations.network_id', [...networkIds])
     .select({
       stationId: 'station_id',
       startSec: 'starts_at',
@@ -87,9 +122,12 @@ export async function listLatest(networkId: number, conn: Connection = pool()): 
       battery: 'battery_centi_v',
       receivedAt: 'received_at',
     });
-  return rows.map(({ wind, battery, ...row }) => ({
+}
+
+function latestOf({ wind, battery, ...row }: Row): LatestInterval {
+  return {
     ...row,
     windSpeedMs: wind === null ? null : wind / 100,
     batteryV: battery === null ? null : battery / 100,
-  }));
+  };
 }

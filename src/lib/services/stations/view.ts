@@ -36,7 +36,8 @@ export function stationView(
   };
 }
 
-function latestView(latest: LatestInterval): Latest {
+/** A station’s newest interval as the interface answers it. */
+export function latestView(latest: LatestInterval): Latest {
   return {
     start: formatInstantUtc(latest.startSec),
     seconds: latest.durationSec,
