@@ -14,6 +14,24 @@ CREATE TABLE `access_tokens` (
   KEY `access_tokens_user` (`user_id`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
+CREATE TABLE `activities` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `network_id` int(10) unsigned NOT NULL,
+  `kind` varchar(60) NOT NULL COMMENT 'in own words: ship at berth',
+  `place` varchar(80) NOT NULL DEFAULT '',
+  `starts_at` int(10) unsigned NOT NULL,
+  `ends_at` int(10) unsigned NOT NULL,
+  `note` varchar(500) NOT NULL DEFAULT '',
+  `created_by` char(36) NOT NULL,
+  `created_at` datetime(3) NOT NULL,
+  `withdrawn_by` char(36) DEFAULT NULL,
+  `withdrawn_at` datetime(3) DEFAULT NULL,
+  `withdrawal_reason` varchar(500) DEFAULT NULL,
+  PRIMARY KEY (`id`),
+  KEY `activities_time` (`network_id`,`starts_at`),
+  KEY `activities_kind` (`network_id`,`kind`,`starts_at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
 CREATE TABLE `audit_head` (
   `only_row` tinyint(3) unsigned NOT NULL,
   `last_id` bigint(20) unsigned NOT NULL,
@@ -102,6 +120,24 @@ CREATE TABLE `calibrations` (
   KEY `calibrations_network` (`network_id`,`checked_at`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
+CREATE TABLE `complaint_additions` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `complaint_id` int(10) unsigned NOT NULL,
+  `ciphertext` blob NOT NULL COMMENT 'AES-256-GCM of what the resident wrote later',
+  `created_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`id`),
+  KEY `complaint_additions_complaint` (`complaint_id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `complaint_attachments` (
+  `complaint_id` int(10) unsigned NOT NULL,
+  `media_type` varchar(40) NOT NULL COMMENT 'by its first bytes; the name that the resident gave it is not kept',
+  `byte_count` int(10) unsigned NOT NULL,
+  `ciphertext` mediumblob NOT NULL COMMENT 'AES-256-GCM of the file',
+  `created_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`complaint_id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
 CREATE TABLE `complaint_keys` (
   `complaint_id` int(10) unsigned NOT NULL,
   `wrapped_key` varbinary(80) NOT NULL COMMENT 'AES-256-GCM key wrapped by the personal-data key of the settings; destroying it erases the person',
@@ -134,6 +170,16 @@ CREATE TABLE `complaint_replies` (
   KEY `complaint_replies_complaint` (`complaint_id`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
+CREATE TABLE `complaint_reports` (
+  `complaint_id` int(10) unsigned NOT NULL,
+  `key_digest` binary(32) NOT NULL COMMENT 'SHA-256 of the key in the address of the private page; the key itself is with the resident only',
+  `area` varchar(80) DEFAULT NULL COMMENT 'of the list of the network; coarse, so it may stand open',
+  `language` char(2) NOT NULL,
+  `created_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`complaint_id`),
+  UNIQUE KEY `complaint_reports_key` (`key_digest`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
 CREATE TABLE `complaints` (
   `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
   `network_id` int(10) unsigned NOT NULL,
@@ -151,6 +197,7 @@ CREATE TABLE `complaints` (
   `answered_at` datetime(3) DEFAULT NULL,
   `closed_at` datetime(3) DEFAULT NULL,
   `closing_reason` varchar(40) DEFAULT NULL COMMENT 'from a list: a reason in own words could name somebody',
+  `source` enum('desk','resident') NOT NULL DEFAULT 'desk' COMMENT 'who wrote it down: the liaison, or the resident on the public form',
   PRIMARY KEY (`id`),
   UNIQUE KEY `complaints_reference` (`reference`),
   KEY `complaints_network` (`network_id`,`created_at`),
@@ -281,9 +328,11 @@ CREATE TABLE `exclusions` (
   `withdrawn_by` char(36) DEFAULT NULL,
   `withdrawn_at` datetime(3) DEFAULT NULL,
   `withdrawal_reason` varchar(500) DEFAULT NULL,
+  `act_id` int(10) unsigned DEFAULT NULL COMMENT 'first exclusion of those that one act made at several stations; null: made alone',
   PRIMARY KEY (`id`),
   KEY `exclusions_period` (`station_id`,`starts_at`,`ends_at`),
-  KEY `exclusions_network` (`network_id`,`starts_at`)
+  KEY `exclusions_network` (`network_id`,`starts_at`),
+  KEY `exclusions_act` (`network_id`,`act_id`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
 CREATE TABLE `health_settings` (
@@ -524,6 +573,61 @@ CREATE TABLE `pending_windows` (
   KEY `pending_windows_window` (`limit_id`,`station_id`,`starts_at`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
+CREATE TABLE `plant_findings` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `network_id` int(10) unsigned NOT NULL,
+  `station_id` int(10) unsigned NOT NULL,
+  `starts_at` int(10) unsigned NOT NULL,
+  `ends_at` int(10) unsigned NOT NULL,
+  `plant_id` int(10) unsigned NOT NULL,
+  `plant_version` int(10) unsigned NOT NULL COMMENT 'as the plant was noted then',
+  `verdict` enum('confirmed','rejected') NOT NULL,
+  `named_because` varchar(1000) NOT NULL DEFAULT '' COMMENT 'the words that named it; empty: nothing did',
+  `note` varchar(500) NOT NULL DEFAULT '',
+  `decided_by` char(36) NOT NULL,
+  `decided_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`id`),
+  KEY `plant_findings_station` (`station_id`,`starts_at`),
+  KEY `plant_findings_plant` (`plant_id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `plant_versions` (
+  `plant_id` int(10) unsigned NOT NULL,
+  `version` int(10) unsigned NOT NULL,
+  `name` varchar(80) NOT NULL,
+  `kind` enum('fan','pump','compressor','engine','transformer','alarm','other') NOT NULL,
+  `latitude` double DEFAULT NULL,
+  `longitude` double DEFAULT NULL,
+  `minimum_rpm` double DEFAULT NULL,
+  `maximum_rpm` double DEFAULT NULL COMMENT 'equal to the minimum where the speed is fixed',
+  `blades` smallint(5) unsigned DEFAULT NULL,
+  `poles` smallint(5) unsigned DEFAULT NULL COMMENT 'of the motor; an even number',
+  `cylinders` smallint(5) unsigned DEFAULT NULL,
+  `strokes` tinyint(3) unsigned DEFAULT NULL COMMENT '2 or 4',
+  `mains_hz` double DEFAULT NULL,
+  `tone_hz` double DEFAULT NULL COMMENT 'a frequency known for itself, as of an alarm',
+  `weekdays` tinyint(3) unsigned NOT NULL COMMENT 'bit 0 Monday; of the date on which a run begins',
+  `from_min` smallint(5) unsigned DEFAULT NULL COMMENT 'local minutes after midnight; null: all day',
+  `to_min` smallint(5) unsigned DEFAULT NULL,
+  `notes` varchar(1000) NOT NULL DEFAULT '',
+  `reason` varchar(500) NOT NULL DEFAULT '',
+  `created_by` char(36) DEFAULT NULL,
+  `created_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`plant_id`,`version`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `plants` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `network_id` int(10) unsigned NOT NULL,
+  `name` varchar(80) NOT NULL,
+  `version` int(10) unsigned NOT NULL COMMENT 'the version that holds now',
+  `created_at` datetime(3) NOT NULL,
+  `retired_at` datetime(3) DEFAULT NULL,
+  `retirement_reason` varchar(500) DEFAULT NULL,
+  PRIMARY KEY (`id`),
+  UNIQUE KEY `plants_name` (`network_id`,`name`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
 CREATE TABLE `quarantine` (
   `id` bigint(20) unsigned NOT NULL AUTO_INCREMENT,
   `station_id` int(10) unsigned NOT NULL,
@@ -566,6 +670,25 @@ CREATE TABLE `quarter_hours` (
   `late_sec` smallint(5) unsigned NOT NULL DEFAULT 0 COMMENT 'seconds whose intervals arrived more than an hour after they ended',
   `computed_at` datetime(3) NOT NULL,
   PRIMARY KEY (`station_id`,`starts_at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `report_attempts` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `network_id` int(10) unsigned NOT NULL,
+  `address_digest` binary(16) NOT NULL COMMENT 'keyed digest of the address and the day: it tells nobody where a report came from',
+  `at` datetime(3) NOT NULL,
+  PRIMARY KEY (`id`),
+  KEY `report_attempts_network` (`network_id`,`at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `report_forms` (
+  `network_id` int(10) unsigned NOT NULL,
+  `is_open` tinyint(1) NOT NULL,
+  `areas` longtext CHARACTER SET utf8mb4 COLLATE utf8mb4_bin NOT NULL COMMENT 'names that residents choose from, each with the code of its station' CHECK (json_valid(`areas`)),
+  `keeper` varchar(300) NOT NULL COMMENT 'who keeps what residents send, and how to reach them; stands in the consent text',
+  `changed_by` char(36) NOT NULL,
+  `changed_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`network_id`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
 CREATE TABLE `sessions` (

@@ -12,6 +12,8 @@ export interface ExclusionRow {
   createdBy: string;
   createdByName: string | null;
   createdAt: Date;
+  /** Number of the first exclusion of the act that made it at several stations; null: made alone. */
+  actId: number | null;
   /** Null while it stands. */
   withdrawnAt: Date | null;
   withdrawnByName: string | null;
@@ -29,6 +31,7 @@ const COLUMNS = {
   createdBy: 'exclusions.created_by',
   createdByName: 'creator.name',
   createdAt: 'exclusions.created_at',
+  actId: 'exclusions.act_id',
   withdrawnAt: 'exclusions.withdrawn_at',
   withdrawnByName: 'withdrawer.name',
   withdrawalReason: 'exclusions.withdrawal_reason',
@@ -131,6 +134,25 @@ export async function insertExclusion(exclusion: NewExclusion, conn: Connection)
     created_at: new Date(),
   });
   return Number(id);
+}
+
+/** Notes that one act made some exclusions; it is named by the first of them, whose number is answered. */
+export async function joinInAct(ids: readonly number[], conn: Connection): Promise<number> {
+  const [actId] = ids;
+  if (actId === undefined) throw new Error('An act makes at least one exclusion.');
+  await conn('exclusions').whereIn('id', ids).update({ act_id: actId });
+  return actId;
+}
+
+/** Exclusions that an act made, withdrawn ones too, in the order in which their stations are locked. */
+export async function listExclusionsOfAct(
+  networkId: number,
+  actId: number,
+  conn: Connection = pool(),
+): Promise<ExclusionRow[]> {
+  return selectExclusions(conn)
+    .where({ 'exclusions.network_id': networkId, 'exclusions.act_id': actId })
+    .orderBy('exclusions.station_id');
 }
 
 /** Withdraws an exclusion that stands; false when it was withdrawn before. */

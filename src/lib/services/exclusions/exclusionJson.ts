@@ -6,6 +6,7 @@ import { type Exclusion } from '#lib/contracts/exclusions';
 export function exclusionJson(row: ExclusionRow): Exclusion {
   return {
     id: row.id,
+    act: row.actId,
     station: row.stationCode,
     from: formatInstantUtc(row.fromSec),
     to: formatInstantUtc(row.toSec),

@@ -9,14 +9,21 @@ import { quarterAt } from '#lib/time/quarters';
  * because such an interval is left out whole. Quarter-hours that have not been computed yet are marked already. Call it with
  * the station locked, in the transaction that changes the exclusion.
  */
-export async function markTouched(
+export async function markTouched(stationId: number, span: Span, conn: Connection): Promise<void> {
+  const { fromSec, toSec } = await touchedSpan(stationId, span, conn);
+  await markQuarterHours(stationId, quarterAt(fromSec), toSec, conn);
+}
+
+/** An exclusion's period with the whole of the intervals that straddle its ends. */
+export async function touchedSpan(
   stationId: number,
   { fromSec, toSec }: Span,
   conn: Connection,
-): Promise<void> {
+): Promise<Span> {
   const [first] = await selectIntervals(stationId, fromSec, fromSec + 1, conn);
   const [last] = await selectIntervals(stationId, toSec - 1, toSec, conn);
-  const startSec = Math.min(fromSec, first?.startSec ?? fromSec);
-  const endSec = Math.max(toSec, last ? last.startSec + last.durationSec : toSec);
-  await markQuarterHours(stationId, quarterAt(startSec), endSec, conn);
+  return {
+    fromSec: Math.min(fromSec, first?.startSec ?? fromSec),
+    toSec: Math.max(toSec, last ? last.startSec + last.durationSec : toSec),
+  };
 }

@@ -26,7 +26,8 @@ export async function currentQuarters(
   return quarters.sort((a, b) => a.startSec - b.startSec);
 }
 
-async function quartersOfIntervals(
+/** Quarter-hours of a span straight from its intervals. */
+export async function quartersOfIntervals(
   source: LevelSource,
   span: Span,
   conn: Connection,

@@ -21,6 +21,8 @@ export interface DaysQuery {
   timeline?: NetworkSettings[];
   /** Epoch seconds; a period counts as elapsed up to here. Now when left out. */
   nowSec?: number;
+  /** Figures as if these were excluded, too. */
+  alsoExcluded?: readonly Span[];
 }
 
 /** A day, evening or night with its level. */
@@ -31,7 +33,7 @@ export interface PeriodLevel extends Coverage, Span {
 
 /** Figures of each local date; the night is the one that begins on it, Ldn and the civil day's figures go by the calendar. */
 export async function dayFigures(query: DaysQuery, conn: Connection = pool()): Promise<DayFigures[]> {
-  const { station, fromDate, toDate } = query;
+  const { station, fromDate, toDate, alsoExcluded } = query;
   if (fromDate >= toDate) return [];
   const timeline = query.timeline ?? (await listSettings(station.networkId, conn));
   const nowSec = query.nowSec ?? Math.floor(Date.now() / 1000);
@@ -40,7 +42,8 @@ export async function dayFigures(query: DaysQuery, conn: Connection = pool()): P
     fromSec: dateSettings(fromDate, timeline).midnightSec,
     toSec: Math.max(dateSettings(toDate, timeline).midnightSec, lastNight?.toSec ?? 0),
   };
-  const series = await QuarterSeries.read({ station, timeline, validity: 'rules' }, span, conn);
+  const source = { station, timeline, validity: 'rules', alsoExcluded } as const;
+  const series = await QuarterSeries.read(source, span, conn);
   const days: DayFigures[] = [];
   for (const date of datesBetween(fromDate, toDate)) {
     days.push(await figuresOfDate(date, timeline, series, nowSec));

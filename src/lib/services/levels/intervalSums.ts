@@ -13,6 +13,8 @@ export interface LevelSource {
   /** The network's settings in order of their beginning. */
   timeline: NetworkSettings[];
   validity: Validity;
+  /** Counted as if these were excluded, too: what figures would become. Nothing is stored of them. */
+  alsoExcluded?: readonly Span[];
 }
 
 /** Intervals that are held in memory at once: a month of minutes, half a day of seconds. */
@@ -20,14 +22,14 @@ export const MOST_INTERVALS = 45_000;
 
 /** What decides which intervals of a period count: settings and standing exclusions. */
 export async function judgementOf(
-  { station, timeline, validity }: LevelSource,
+  { station, timeline, validity, alsoExcluded = [] }: LevelSource,
   { fromSec, toSec }: Span,
   conn: Connection,
 ): Promise<Judgement> {
   // An interval that reaches into the period may begin, or end, up to an hour outside it.
   const exclusions =
     validity === 'all' ? [] : await selectStandingExclusions(station.id, fromSec - 3600, toSec + 3600, conn);
-  return { validity, timeline, exclusions: mergedSpans(exclusions) };
+  return { validity, timeline, exclusions: mergedSpans([...exclusions, ...alsoExcluded]) };
 }
 
 /** Sums of a period straight from its intervals. */

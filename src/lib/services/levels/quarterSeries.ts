@@ -2,6 +2,7 @@ import { type Connection } from '#db/queries/connection';
 import { PeriodAccumulator } from '#lib/acoustics/periodStatistics';
 import { type PeriodSums } from '#lib/acoustics/periodSums';
 import { QUARTER_SEC, quarterAt } from '#lib/time/quarters';
+import { assumedQuarters } from './assumedQuarters';
 import { currentQuarters } from './currentQuarters';
 import { sumIntervals, type LevelSource } from './intervalSums';
 import { type Span } from './spans';
@@ -24,7 +25,9 @@ export class QuarterSeries {
   /** Reads the quarter-hours that `span` touches. */
   static async read(source: LevelSource, span: Span, conn: Connection): Promise<QuarterSeries> {
     const whole = { fromSec: quarterAt(span.fromSec), toSec: quarterAt(span.toSec + QUARTER_SEC - 1) };
-    const rows = await currentQuarters(source, whole, { bands: false }, conn);
+    const rows = source.alsoExcluded
+      ? await assumedQuarters(source, whole, source.alsoExcluded, conn)
+      : await currentQuarters(source, whole, { bands: false }, conn);
     const quarters = new Map(rows.map(({ startSec, sums }) => [startSec, sums]));
     return new QuarterSeries(source, quarters, conn);
   }
