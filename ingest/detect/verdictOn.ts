@@ -4,7 +4,7 @@ import type { LimitVersion } from '#db/queries/limits';
 import { pickSettings, type NetworkSettings } from '#db/queries/networks';
 import type { PendingWindow } from '#db/queries/pendingWindows';
 import { judgedWindows } from '#lib/services/limits/force';
-import { isAbove, measure, minimumFor } from './measure';
+import { judgeWindow, minimumFor } from '#lib/services/limits/measure';
 import type { Verdict } from './verdicts';
 import type { WindowLevels } from './windowLevels';
 
@@ -31,18 +31,18 @@ export async function verdictOn(
   // Changed settings may have moved its end: then it waits anew.
   if (own.endSec > closedBySec) return null;
   const { version, endSec } = own;
-  const { levelDb, validSec } = measure(version, await levels.of({ fromSec: startSec, toSec: endSec }));
-  const coverage = validSec / (endSec - startSec);
   const minimumCoverage = minimumFor(version, pickSettings(timeline, startSec));
+  const { sums } = await levels.of({ fromSec: startSec, toSec: endSec });
+  const judged = judgeWindow(version, { lengthSec: endSec - startSec, minimumCoverage }, sums);
   return {
     version,
     stationId,
     startSec,
     endSec,
-    levelDb,
-    coverage,
+    levelDb: judged.levelDb,
+    coverage: judged.coverage,
     minimumCoverage,
-    isExceeded: coverage >= (minimumCoverage ?? 0) - 1e-9 && isAbove(version, levelDb),
+    isExceeded: judged.isExceeded,
     isWindowLost: false,
   };
 }

@@ -1,6 +1,7 @@
 import { useEffect, useRef } from 'react';
 import type { Station } from '#lib/contracts/stations';
 import { formatLevelDb } from '#lib/format/levels';
+import { HeadroomLines } from '../../headroom/HeadroomLines';
 import { Descriptor } from '../../ui/Descriptor';
 import { Level } from '../../ui/Level';
 import { stateWords } from '../../stations/stateWords';
@@ -53,6 +54,7 @@ export function GlancePanel({ slug, station, zone, nowSec, onClose }: GlancePane
         {error && <p className="border-l-3 border-rust pl-3">{error.message}</p>}
         {data && <DayAtAGlance day={data} zone={zone} name={station.name} />}
       </div>
+      <HeadroomLines slug={slug} code={station.code} zone={zone} />
       <a className="button button-primary mt-3" href={page}>
         Open the station
       </a>
