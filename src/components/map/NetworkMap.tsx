@@ -19,7 +19,7 @@ export interface NetworkMapProps {
   styleUrls: Record<Theme, string>;
 }
 
-/** The network now: its stations on the map and in a list beside it, the levels renewed every five seconds. */
+/** The network now: its stations on the map and in a list beside it, the levels renewed as they arrive. */
 export function NetworkMap(props: NetworkMapProps) {
   const [client] = useState(() => new QueryClient());
   return (

@@ -5,6 +5,7 @@ import { stripGeometry } from './draw/geometry';
 import { useColumns } from './hooks/useColumns';
 import { useElementWidth } from './hooks/useElementWidth';
 import { useInteraction } from './hooks/useInteraction';
+import { useLiveColumns } from './hooks/useLiveColumns';
 import { useNow } from './hooks/useNow';
 import { usePicture, type Display } from './hooks/usePicture';
 import { useSlipFigures } from './hooks/useSlipFigures';
@@ -50,7 +51,14 @@ export function StripView(props: StripProps) {
   const control = useTimeView(period, station.intervalSec, nowSec);
   const [display, setDisplay] = useState<Display>({ weighting: 'Z', fraction: station.bandFraction });
   const geometry = useGeometry(width);
-  const columns = useColumns(stationUrl, control.view, station.intervalSec, nowSec);
+  const isTold = useLiveColumns(slug, station.code, stationUrl);
+  const columns = useColumns({
+    stationUrl,
+    view: control.view,
+    intervalSec: station.intervalSec,
+    nowSec,
+    isTold,
+  });
   const gapWords = useCallback((gap: Run) => `no data ${clockStretchWords(gap, zone)}`, [zone]);
   const { layers, weightsCentiDb, picture } = usePicture({
     layers: columns.layers,

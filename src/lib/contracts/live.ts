@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { LIVE_EVENT, LIVE_OVER_EVENT } from './liveEvents';
 import { registerRoute } from './registry';
 import { latestSchema, STATION_STATES } from './stations';
 
@@ -8,11 +9,6 @@ export const liveIntervalSchema = latestSchema.extend({
   state: z.enum(STATION_STATES),
 });
 export type LiveInterval = z.output<typeof liveIntervalSchema>;
-
-/** Name of the event that carries a `LiveInterval` as JSON. */
-export const LIVE_EVENT = 'interval';
-/** Name of the event after which the server ends the stream because the listener may not hear it any longer. */
-export const LIVE_OVER_EVENT = 'over';
 
 registerRoute({
   access: 'person',

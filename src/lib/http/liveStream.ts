@@ -1,4 +1,4 @@
-import { LIVE_EVENT, LIVE_OVER_EVENT } from '#lib/contracts/live';
+import { LIVE_EVENT, LIVE_OVER_EVENT } from '#lib/contracts/liveEvents';
 import { listen, type NoRoom } from '#lib/services/live/listeners';
 import { Problem } from './problem';
 

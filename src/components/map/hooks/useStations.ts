@@ -1,8 +1,16 @@
-import { useQuery } from '@tanstack/react-query';
+import { useQuery, useQueryClient } from '@tanstack/react-query';
 import type { Station } from '#lib/contracts/stations';
 import { fetchJson } from '../../strip/hooks/fetchJson';
+import { useLive } from '../../strip/hooks/useLive';
+import { withLive } from '../model/withLive';
 
 const EVERY_MS = 5000;
+/** While levels are told as they arrive, only what else may have changed is asked for. */
+const EVERY_WHILE_LIVE_MS = 30_000;
+
+interface Answer {
+  items: Station[];
+}
 
 export interface Stations {
   stations: Station[];
@@ -12,14 +20,21 @@ export interface Stations {
   error: Error | null;
 }
 
-/** A network's stations in use, renewed every five seconds; what the page brought along until then. */
+/** A network's stations in use, renewed as they measure, or else every five seconds; what the page brought along until then. */
 export function useStations(slug: string, initial: Station[], initialAtSec: number): Stations {
+  const client = useQueryClient();
+  const isLive = useLive(slug, (interval) =>
+    client.setQueryData<Answer>(
+      ['stations', slug],
+      (known) => known && { items: withLive(known.items, interval) },
+    ),
+  );
   const { data, dataUpdatedAt, error } = useQuery({
     queryKey: ['stations', slug],
-    queryFn: ({ signal }) => fetchJson<{ items: Station[] }>(`/api/v1/networks/${slug}/stations`, signal),
+    queryFn: ({ signal }) => fetchJson<Answer>(`/api/v1/networks/${slug}/stations`, signal),
     initialData: { items: initial },
     initialDataUpdatedAt: initialAtSec * 1000,
-    refetchInterval: EVERY_MS,
+    refetchInterval: isLive ? EVERY_WHILE_LIVE_MS : EVERY_MS,
   });
   return { stations: data.items.filter(isInUse), atSec: dataUpdatedAt / 1000, error };
 }

@@ -4,8 +4,10 @@ import { TILE_COLUMNS, tilesFor, type Tile } from '../model/tiles';
 import { spanSec, type TimeView } from '../model/timeView';
 import { fetchColumns } from './fetchColumns';
 
-/** How often what is still being measured is asked for again. */
+/** How often what is still being measured is asked for again, where nothing tells that there is more. */
 export const LIVE_EVERY_MS = 15_000;
+/** How often where something does: what came late shows by this. */
+const TOLD_EVERY_MS = 60_000;
 const KEEP_MS = 10 * 60_000;
 const MOST_LAYERS = 12;
 
@@ -17,11 +19,21 @@ export interface Columns {
   retry: () => void;
 }
 
+export interface ColumnsWanted {
+  stationUrl: string;
+  view: TimeView;
+  intervalSec: number;
+  nowSec: number;
+  /** Whether new columns are told of as they arrive. */
+  isTold: boolean;
+}
+
 /** A station's columns for a view. While finer or farther tiles are on their way, the layers that were there remain. */
-export function useColumns(stationUrl: string, view: TimeView, intervalSec: number, nowSec: number): Columns {
+export function useColumns({ stationUrl, view, intervalSec, nowSec, isTold }: ColumnsWanted): Columns {
   const client = useQueryClient();
+  const everyMs = isTold ? TOLD_EVERY_MS : LIVE_EVERY_MS;
   const tiles = tilesFor(view, intervalSec, nowSec);
-  const wanted = useQueries({ queries: tiles.map((tile) => tileQuery(stationUrl, tile, nowSec)) });
+  const wanted = useQueries({ queries: tiles.map((tile) => tileQuery(stationUrl, tile, nowSec, everyMs)) });
   const stepSec = tiles[0]?.stepSec;
   const fresh = wanted.flatMap(({ data }) => data ?? []);
   const older = client
@@ -37,7 +49,12 @@ export function useColumns(stationUrl: string, view: TimeView, intervalSec: numb
   };
 }
 
-function tileQuery(stationUrl: string, tile: Tile, nowSec: number): UseQueryOptions<StripColumns> {
+function tileQuery(
+  stationUrl: string,
+  tile: Tile,
+  nowSec: number,
+  everyMs: number,
+): UseQueryOptions<StripColumns> {
   // A tile goes on changing while its end lies ahead, and for a while when data come late.
   const isLive = tile.toSec > nowSec - 3600;
   return {
@@ -45,7 +62,7 @@ function tileQuery(stationUrl: string, tile: Tile, nowSec: number): UseQueryOpti
     queryFn: ({ signal }) => fetchColumns(stationUrl, tile, TILE_COLUMNS, signal),
     staleTime: isLive ? LIVE_EVERY_MS : KEEP_MS,
     gcTime: KEEP_MS,
-    refetchInterval: isLive ? LIVE_EVERY_MS : false,
+    refetchInterval: isLive ? everyMs : false,
   };
 }
 
