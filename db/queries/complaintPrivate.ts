@@ -41,10 +41,15 @@ export async function findSealedPerson(
     .first({ wrappedKey: 'k.wrapped_key', ciphertext: 'p.ciphertext' });
 }
 
-/** Destroys the key and every ciphertext of a complaint's personal data, its replies' included. Not to be undone. */
+/**
+ * Destroys the key and every ciphertext of a complaint's personal data: of its replies, of what the resident added and of the
+ * attached file too. Not to be undone.
+ */
 export async function destroyPersonalData(complaintId: number, conn: Connection): Promise<void> {
   await conn('complaint_keys').where({ complaint_id: complaintId }).delete();
   await conn('complaint_private').where({ complaint_id: complaintId }).delete();
+  await conn('complaint_additions').where({ complaint_id: complaintId }).delete();
+  await conn('complaint_attachments').where({ complaint_id: complaintId }).delete();
   await conn('complaint_replies')
     .where({ complaint_id: complaintId })
     .update({ ciphertext: Buffer.alloc(0) });

@@ -1,4 +1,9 @@
-import type { ClosingReason, ComplaintKind, ComplaintStatus } from '#lib/contracts/complaints';
+import type {
+  ClosingReason,
+  ComplaintKind,
+  ComplaintSource,
+  ComplaintStatus,
+} from '#lib/contracts/complaints';
 import type { LocalDate } from '#lib/time/zone';
 import { pool, type Connection } from './connection';
 
@@ -17,6 +22,7 @@ export interface ComplaintRow {
   nearestStationId: number | null;
   nearestStationCode: string | null;
   status: ComplaintStatus;
+  source: ComplaintSource;
   dueOn: LocalDate;
   createdAt: Date;
   answeredAt: Date | null;
@@ -34,8 +40,9 @@ export type NewComplaintRow = Pick<
   | 'coarseLatitude'
   | 'coarseLongitude'
   | 'nearestStationId'
+  | 'source'
   | 'dueOn'
-> & { createdBy: string };
+> & { createdBy: string | null };
 
 /** The next number of a prefix and year. Locks that counter until the transaction ends; a number is never given twice. */
 export async function nextComplaintNumber(prefix: string, year: number, conn: Connection): Promise<number> {
@@ -58,6 +65,7 @@ export async function insertComplaint(complaint: NewComplaintRow, conn: Connecti
     coarse_latitude: complaint.coarseLatitude,
     coarse_longitude: complaint.coarseLongitude,
     nearest_station_id: complaint.nearestStationId,
+    source: complaint.source,
     due_on: complaint.dueOn,
     created_by: complaint.createdBy,
     created_at: new Date(),
@@ -108,6 +116,18 @@ export async function listComplaints(
     void query.whereRaw('(c.due_on, c.id) > (?, ?)', [dueOn, id]);
   }
   return query.orderBy(['c.due_on', 'c.id']).limit(filter.limit);
+}
+
+/** References that hold every one of some words, latest first; nothing else of a complaint is looked at. */
+export async function listComplaintReferences(
+  networkId: number,
+  words: readonly string[],
+  limit: number,
+  conn: Connection = pool(),
+): Promise<Pick<ComplaintRow, 'reference' | 'status'>[]> {
+  const query = conn('complaints').where({ network_id: networkId });
+  for (const word of words) void query.whereRaw('LOCATE(?, reference) > 0', [word]);
+  return query.orderBy('id', 'desc').limit(limit).select('reference', 'status');
 }
 
 export interface ComplaintCounts {
@@ -191,6 +211,7 @@ function selectComplaints(conn: Connection) {
       nearestStationId: 'c.nearest_station_id',
       nearestStationCode: 's.code',
       status: 'c.status',
+      source: 'c.source',
       // A DATE would come out as an instant.
       dueOn: conn.raw(`DATE_FORMAT(c.due_on, '%Y-%m-%d')`),
       createdAt: 'c.created_at',

@@ -16,6 +16,14 @@ export const COMPLAINT_KINDS = [
 ] as const;
 export type ComplaintKind = (typeof COMPLAINT_KINDS)[number];
 
+/** What a noise did to the person who reports it: health, so it is personal. */
+export const COMPLAINT_EFFECTS = ['woken', 'no-sleep', 'windows-shut', 'no-rest', 'unwell', 'other'] as const;
+export type ComplaintEffect = (typeof COMPLAINT_EFFECTS)[number];
+
+/** Who wrote a complaint down: the liaison at the desk, or the resident on the public form. */
+export const COMPLAINT_SOURCES = ['desk', 'resident'] as const;
+export type ComplaintSource = (typeof COMPLAINT_SOURCES)[number];
+
 export const COMPLAINT_STATUSES = ['open', 'answered', 'closed'] as const;
 export type ComplaintStatus = (typeof COMPLAINT_STATUSES)[number];
 
@@ -96,6 +104,7 @@ export const complaintSchema = z.object({
   to: z.string(),
   kind: z.enum(COMPLAINT_KINDS),
   status: z.enum(COMPLAINT_STATUSES),
+  source: z.enum(COMPLAINT_SOURCES),
   dueOn: localDate,
   isOverdue: z.boolean(),
   coarsePlace: coordinatesSchema
@@ -119,6 +128,7 @@ export const personalDataSchema = z.object({
   }),
   words: z.string(),
   place: coordinatesSchema.nullable(),
+  effects: z.array(z.enum(COMPLAINT_EFFECTS)).optional(),
 });
 export type PersonalData = z.output<typeof personalDataSchema>;
 

@@ -23,19 +23,27 @@ export async function closeComplaint(
 /**
  * Erases who complained, their words and exact place: the key and every ciphertext are destroyed, so no copy of the data
  * opens any more. What stays is the coarse record and the figures that replies carried. An open complaint is closed, since
- * nobody is left to answer; e-mails still waiting are given up.
+ * nobody is left to answer; e-mails still waiting are given up. Without a user it is the resident who erases.
  */
-export async function erasePersonalData(userId: string, complaint: ComplaintRow): Promise<void> {
+export async function erasePersonalData(userId: string | null, complaint: ComplaintRow): Promise<void> {
   await inTransaction(async (transaction) => {
     const current = await lockComplaint(complaint.networkId, complaint.reference, transaction);
     await giveUpReplyMails(complaint.id, transaction);
     await destroyPersonalData(complaint.id, transaction);
     if (current?.status === 'open') await markClosed(complaint.id, 'erased', new Date(), transaction);
-    await appendAudit(entryOf(userId, complaint, 'complaint.personal-data-erase', {}), transaction);
+    await appendAudit(
+      entryOf(userId, complaint, 'complaint.personal-data-erase', userId === null ? { by: 'resident' } : {}),
+      transaction,
+    );
   });
 }
 
-function entryOf(userId: string, complaint: ComplaintRow, action: string, detail: Record<string, unknown>) {
+function entryOf(
+  userId: string | null,
+  complaint: ComplaintRow,
+  action: string,
+  detail: Record<string, unknown>,
+) {
   return {
     userId,
     networkId: complaint.networkId,

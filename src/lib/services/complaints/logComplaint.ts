@@ -1,10 +1,10 @@
 import { appendAudit } from '#db/queries/audit';
 import { insertComplaintKey, writeComplaintPrivate } from '#db/queries/complaintPrivate';
 import { insertComplaint } from '#db/queries/complaints';
-import { inTransaction } from '#db/queries/connection';
+import { inTransaction, type Connection } from '#db/queries/connection';
 import type { NetworkRow, NetworkSettings } from '#db/queries/networks';
 import { listStations, type StationRow } from '#db/queries/stations';
-import type { NewComplaint, PersonalData } from '#lib/contracts/complaints';
+import type { ComplaintEffect, NewComplaint, PersonalData } from '#lib/contracts/complaints';
 import { localDateAt } from '#lib/time/zone';
 import { addWorkingDays, WORKING_DAYS_TO_ANSWER } from './dueDate';
 import { newWrappedKey, sealValue } from './personalData';
@@ -16,9 +16,17 @@ import { coarsePlace, distanceM, type Place } from './whereabouts';
 const CLOCK_TOLERANCE_SEC = 300;
 
 export interface LoggingPerson {
-  userId: string;
+  /** Null: the resident on the public form. */
+  userId: string | null;
   network: NetworkRow;
   settings: NetworkSettings;
+}
+
+/** What comes with a complaint that a resident reports. */
+export interface ResidentPart {
+  effects: ComplaintEffect[];
+  /** Writes what is kept beside the complaint, in its transaction. */
+  writeBeside(complaintId: number, wrappedKey: Buffer, transaction: Connection): Promise<void>;
 }
 
 export type LogOutcome =
@@ -32,6 +40,7 @@ export async function logComplaint(
   { userId, network, settings }: LoggingPerson,
   complaint: NewComplaint,
   now: Date,
+  resident: ResidentPart | null = null,
 ): Promise<LogOutcome> {
   const nowSec = Math.floor(now.getTime() / 1000);
   if (complaint.to > nowSec + CLOCK_TOLERANCE_SEC) {
@@ -47,7 +56,12 @@ export async function logComplaint(
   if (complaint.station !== null && !nearest) {
     return { kind: 'invalid', field: 'station', message: 'must be a station of this network' };
   }
-  const person: PersonalData = { contact: complaint.contact, words: complaint.words, place };
+  const person: PersonalData = {
+    contact: complaint.contact,
+    words: complaint.words,
+    place,
+    ...(resident ? { effects: resident.effects } : {}),
+  };
   const today = localDateAt(nowSec, settings.timeZone);
   const coarse = place && coarsePlace(place);
 
@@ -63,6 +77,7 @@ export async function logComplaint(
         coarseLatitude: coarse?.latitude ?? null,
         coarseLongitude: coarse?.longitude ?? null,
         nearestStationId: nearest?.id ?? null,
+        source: resident ? 'resident' : 'desk',
         dueOn: addWorkingDays(today, WORKING_DAYS_TO_ANSWER),
         createdBy: userId,
       },
@@ -71,11 +86,12 @@ export async function logComplaint(
     const wrappedKey = newWrappedKey(id);
     await insertComplaintKey(id, wrappedKey, transaction);
     await writeComplaintPrivate(id, sealValue(wrappedKey, id, 'person', person), transaction);
+    await resident?.writeBeside(id, wrappedKey, transaction);
     await appendAudit(
       {
         userId,
         networkId: network.id,
-        action: 'complaint.log',
+        action: resident ? 'complaint.report' : 'complaint.log',
         subject: `complaint ${made}`,
         detail: {
           kind: complaint.kind,

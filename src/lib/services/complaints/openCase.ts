@@ -4,6 +4,7 @@ import type { NetworkRow, NetworkSettings } from '#db/queries/networks';
 import type { Evidence } from '#lib/contracts/complaintEvidence';
 import type { Complaint, PersonalData, Reply } from '#lib/contracts/complaints';
 import { localDateAt } from '#lib/time/zone';
+import type { Addition } from '../reports/additions';
 import { gatherEvidence } from './evidence';
 import type { Whereabouts } from './letter/measured';
 import { readPersonalData } from './readPersonalData';
@@ -24,6 +25,8 @@ export interface ComplaintCase {
   replies: Reply[];
   /** Undefined for a reader who may not see them; null once erased. */
   person: PersonalData | null | undefined;
+  /** What the resident wrote after the report; empty for a reader who may not see it. */
+  additions: Addition[];
   /** Stations seen from the resident, by code; empty where the exact place is unknown or not the reader's to see. */
   whereabouts: Record<string, Whereabouts>;
 }
@@ -56,6 +59,7 @@ export async function openCase(
       ...(file === undefined ? {} : { text: file?.letters.get(reply.id) ?? null }),
     })),
     person,
+    additions: file?.additions ?? [],
     whereabouts,
   };
 }

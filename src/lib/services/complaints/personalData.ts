@@ -14,7 +14,9 @@ const TAG_BYTES = 16;
 const HEAD_BYTES = 1 + NONCE_BYTES + TAG_BYTES;
 
 /** What sealed bytes are for. */
-type Purpose = 'key' | 'person' | 'reply';
+type Purpose = 'key' | 'person' | 'reply' | 'addition' | 'attachment';
+/** What is sealed as JSON. */
+type ValuePurpose = 'person' | 'reply' | 'addition';
 
 /** Sealed bytes that do not open: another key in the settings, or changed bytes. */
 export class PersonalDataUnreadable extends Error {
@@ -35,7 +37,7 @@ export function newWrappedKey(complaintId: number): Buffer {
 export function sealValue(
   wrappedKey: Buffer,
   complaintId: number,
-  purpose: 'person' | 'reply',
+  purpose: ValuePurpose,
   value: unknown,
 ): Buffer {
   return seal(unwrap(wrappedKey, complaintId), complaintId, purpose, Buffer.from(JSON.stringify(value)));
@@ -45,10 +47,20 @@ export function sealValue(
 export function openValue(
   wrappedKey: Buffer,
   complaintId: number,
-  purpose: 'person' | 'reply',
+  purpose: ValuePurpose,
   sealed: Buffer,
 ): unknown {
   return JSON.parse(open(unwrap(wrappedKey, complaintId), complaintId, purpose, sealed).toString('utf8'));
+}
+
+/** Seals an attached file under a complaint's wrapped key. @throws {PersonalDataUnreadable} */
+export function sealFile(wrappedKey: Buffer, complaintId: number, bytes: Buffer): Buffer {
+  return seal(unwrap(wrappedKey, complaintId), complaintId, 'attachment', bytes);
+}
+
+/** The file that `sealFile` sealed. @throws {PersonalDataUnreadable} */
+export function openFile(wrappedKey: Buffer, complaintId: number, sealed: Buffer): Buffer {
+  return open(unwrap(wrappedKey, complaintId), complaintId, 'attachment', sealed);
 }
 
 function unwrap(wrappedKey: Buffer, complaintId: number): Buffer {

@@ -4,6 +4,7 @@ import { listSealedReplies } from '#db/queries/complaintReplies';
 import type { ComplaintRow } from '#db/queries/complaints';
 import { inTransaction, type Connection } from '#db/queries/connection';
 import { personalDataSchema, type PersonalData } from '#lib/contracts/complaints';
+import { listAdditions, type Addition } from '../reports/additions';
 import { openValue } from './personalData';
 import { filledFields } from './personalFields';
 import { openReply } from './replyMessage';
@@ -12,6 +13,8 @@ import { openReply } from './replyMessage';
 export interface PersonalFile {
   person: PersonalData;
   letters: ReadonlyMap<number, string>;
+  /** What the resident wrote after the report. */
+  additions: Addition[];
 }
 
 /**
@@ -27,17 +30,24 @@ export async function readPersonalData(
     if (!person) return null;
     const sealed = await listSealedReplies(complaint.id, transaction);
     const letters = new Map(sealed.map((reply) => [reply.id, openReply(reply).text]));
+    const additions = await listAdditions(complaint.id, transaction);
     await appendAudit(
       {
         userId,
         networkId: complaint.networkId,
         action: 'complaint.personal-data-read',
         subject: `complaint ${complaint.reference}`,
-        detail: { fields: [...filledFields(person), ...(letters.size > 0 ? ['letters'] : [])] },
+        detail: {
+          fields: [
+            ...filledFields(person),
+            ...(letters.size > 0 ? ['letters'] : []),
+            ...(additions.length > 0 ? ['additions'] : []),
+          ],
+        },
       },
       transaction,
     );
-    return { person, letters };
+    return { person, letters, additions };
   });
 }
 

@@ -13,6 +13,7 @@ export function complaintView(row: ComplaintRow, today: LocalDate): Complaint {
     to: formatInstantUtc(row.endsAtSec),
     kind: row.kind,
     status: row.status,
+    source: row.source,
     dueOn: row.dueOn,
     isOverdue: row.status === 'open' && row.dueOn < today,
     coarsePlace: latitude === null || longitude === null ? null : { latitude, longitude },
