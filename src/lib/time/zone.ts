@@ -3,6 +3,7 @@ import { DateTime, IANAZone } from 'luxon';
 /** A civil date as `YYYY-MM-DD`. */
 export type LocalDate = string;
 
+const DAY_SEC = 86_400;
 const LOCAL_DATE = /^\d{4}-\d{2}-\d{2}$/;
 
 /** Whether `text` is a date of the calendar, as `YYYY-MM-DD`. */
@@ -49,19 +50,20 @@ export function datesBetween(from: LocalDate, to: LocalDate): LocalDate[] {
  * of a time that the autumn change repeats, the first one. `minutes` may be 1440 or more (the next day's).
  */
 export function instantAtSec(date: LocalDate, minutes: number, zone: string): number {
-  const day = addDays(date, Math.floor(minutes / 1440));
-  const ofDay = ((minutes % 1440) + 1440) % 1440;
-  const [year, month, dayOfMonth] = day.split('-').map(Number);
-  const local = DateTime.fromObject(
-    { year, month, day: dayOfMonth, hour: Math.floor(ofDay / 60), minute: ofDay % 60 },
-    { zone },
-  );
-  return firstOf(local).toUnixInteger();
+  const shownSec = Date.parse(`${date}T00:00:00Z`) / 1000 + minutes * 60;
+  const offsets = [offsetSec(shownSec - DAY_SEC, zone), offsetSec(shownSec + DAY_SEC, zone)] as const;
+  const possible = offsets
+    .map((offset) => ({ sec: shownSec - offset, offset }))
+    .filter(({ sec, offset }) => offsetSec(sec, zone) === offset);
+  return possible.length > 0 ? Math.min(...possible.map(({ sec }) => sec)) : shownSec - offsets[0];
 }
 
-function firstOf(local: DateTime): DateTime {
-  const possible = local.getPossibleOffsets();
-  return possible.reduce((earliest, candidate) => (candidate < earliest ? candidate : earliest), local);
+/**
+ * East of UTC at an instant. Asked at instants only: Luxon's own way from a clock to an instant begins with today's offset and
+ * misses the hour after a change where that is far from the offsets of the time (Apia before 2011).
+ */
+function offsetSec(epochSec: number, zone: string): number {
+  return IANAZone.create(zone).offset(epochSec * 1000) * 60;
 }
 
 /** Instant (epoch seconds) at which a civil date begins in `zone`. */
