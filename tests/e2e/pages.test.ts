@@ -27,6 +27,8 @@ const ACCESS: Record<string, Access> = {
   '/n/[network]/complaints/new': 'liaison',
   '/n/[network]/exceedances': 'members',
   '/n/[network]/exceedances/[id]': 'members',
+  '/n/[network]/exclusions': 'members',
+  '/n/[network]/exclusions/new': 'operator',
   '/n/[network]/health': 'members',
   '/n/[network]/health/[code]': 'members',
   '/n/[network]/health/settings': 'members',

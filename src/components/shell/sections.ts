@@ -10,6 +10,7 @@ export type Section =
   | 'limits'
   | 'imports'
   | 'quarantine'
+  | 'exclusions'
   | 'settings';
 
 export interface SectionLink {
@@ -30,6 +31,7 @@ export const SECTION_LINKS: readonly SectionLink[] = [
   { section: 'instruments', label: 'Instruments', keepsPeriod: false },
   { section: 'imports', label: 'Imports', keepsPeriod: false },
   { section: 'quarantine', label: 'Quarantine', keepsPeriod: false },
+  { section: 'exclusions', label: 'Exclusions', keepsPeriod: false },
 ];
 
 /** Address of a section; `period` is the query that carries the period, or empty. */

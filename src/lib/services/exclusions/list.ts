@@ -1,4 +1,5 @@
 import { listExclusions, type ExclusionListQuery } from '#db/queries/exclusions';
+import { listStations } from '#db/queries/stations';
 import { type Exclusion } from '#lib/contracts/exclusions';
 import { exclusionJson } from './exclusionJson';
 
@@ -19,4 +20,11 @@ export async function exclusionPage({
   const last = items.at(-1);
   const next = rows.length > query.limit && last ? [last.fromSec, last.id] : null;
   return { items: items.map(exclusionJson), next };
+}
+
+/** Stations that the list can be narrowed to, retired ones too. */
+export async function exclusionStations(
+  networkId: number,
+): Promise<{ id: number; code: string; name: string }[]> {
+  return (await listStations(networkId)).map(({ id, code, name }) => ({ id, code, name }));
 }
