@@ -118,18 +118,6 @@ export async function listComplaints(
   return query.orderBy(['c.due_on', 'c.id']).limit(filter.limit);
 }
 
-/** References that hold every one of some words, latest first; nothing else of a complaint is looked at. */
-export async function listComplaintReferences(
-  networkId: number,
-  words: readonly string[],
-  limit: number,
-  conn: Connection = pool(),
-): Promise<Pick<ComplaintRow, 'reference' | 'status'>[]> {
-  const query = conn('complaints').where({ network_id: networkId });
-  for (const word of words) void query.whereRaw('LOCATE(?, reference) > 0', [word]);
-  return query.orderBy('id', 'desc').limit(limit).select('reference', 'status');
-}
-
 export interface ComplaintCounts {
   open: number;
   overdue: number;

@@ -24,6 +24,7 @@ const ACCESS: Record<string, Access> = {
   '/admin/people/new': 'administrator',
   '/n/[network]/complaints': 'members',
   '/n/[network]/complaints/[reference]': 'members',
+  '/n/[network]/complaints/form': 'liaison',
   '/n/[network]/complaints/new': 'liaison',
   '/n/[network]/exceedances': 'members',
   '/n/[network]/exceedances/[id]': 'members',
@@ -43,9 +44,11 @@ const ACCESS: Record<string, Access> = {
   '/n/[network]/limits/[id]': 'members',
   '/n/[network]/limits/[id]/edit': 'operator',
   '/n/[network]/limits/new': 'operator',
+  '/n/[network]/limits/trial': 'operator',
   '/n/[network]/map': 'members',
   '/n/[network]/quarantine': 'members',
   '/n/[network]/quarantine/[id]': 'members',
+  '/n/[network]/search': 'members',
   '/n/[network]/settings': 'members',
   '/n/[network]/stations': 'members',
   '/n/[network]/stations/[code]': 'members',
@@ -55,6 +58,8 @@ const ACCESS: Record<string, Access> = {
   '/n/[network]/stations/new': 'operator',
   '/n/[network]/summaries': 'members',
   '/n/[network]/summaries/[month]': 'members',
+  '/report/[network]': 'public',
+  '/report/[network]/[key]': 'public',
   '/sign-in': 'public',
 };
 

@@ -1,0 +1,43 @@
+import { type Role } from '#db/queries/users';
+
+/** A page that can be found by its name or by other words for it. */
+export interface FindablePage {
+  label: string;
+  /** Other words that people may look for. */
+  terms: string;
+  /** Path within the network, or from the root where it begins with `/`. */
+  path: string;
+  /** Who may open it: anybody of the network where left out. */
+  roles?: readonly Role[];
+  isForAdministrators?: boolean;
+}
+
+const OPERATOR: readonly Role[] = ['operator'];
+const LIAISON: readonly Role[] = ['liaison'];
+
+export const FINDABLE_PAGES: readonly FindablePage[] = [
+  { label: 'Map', terms: 'now overview place', path: 'map' },
+  { label: 'Stations', terms: 'monitors', path: 'stations' },
+  { label: 'Register a station', terms: 'new add monitor', path: 'stations/new', roles: OPERATOR },
+  { label: 'Health', terms: 'silent battery clock trouble coverage', path: 'health' },
+  { label: 'Health settings', terms: 'thresholds alerts', path: 'health/settings' },
+  { label: 'Exceedances', terms: 'alerts over limit loud', path: 'exceedances' },
+  { label: 'Complaints', terms: 'residents cases reply', path: 'complaints' },
+  { label: 'Log a complaint', terms: 'new add resident', path: 'complaints/new', roles: LIAISON },
+  { label: 'Summaries', terms: 'monthly report months pdf', path: 'summaries' },
+  { label: 'Limits', terms: 'thresholds', path: 'limits' },
+  { label: 'Set a limit', terms: 'new add threshold', path: 'limits/new', roles: OPERATOR },
+  { label: 'Instruments', terms: 'meters microphones calibration deployments', path: 'instruments' },
+  { label: 'Add an instrument', terms: 'new meter', path: 'instruments/new', roles: OPERATOR },
+  { label: 'Calibration settings', terms: 'instruments checks due', path: 'instruments/settings' },
+  { label: 'Imports', terms: 'upload file backfill outage', path: 'imports' },
+  { label: 'Bring a file', terms: 'import upload new backfill', path: 'imports/new', roles: OPERATOR },
+  { label: 'Quarantine', terms: 'refused records conflict', path: 'quarantine' },
+  { label: 'Network settings', terms: 'periods zone wind rain coverage', path: 'settings' },
+  { label: 'Your account', terms: 'password sessions access tokens sign out', path: '/account' },
+  { label: 'Administration', terms: 'admin', path: '/admin', isForAdministrators: true },
+  { label: 'People', terms: 'users roles members', path: '/admin/people', isForAdministrators: true },
+  { label: 'Networks', terms: 'all', path: '/admin/networks', isForAdministrators: true },
+  { label: 'Audit trail', terms: 'log changes who', path: '/admin/audit', isForAdministrators: true },
+  { label: 'Design', terms: 'colours type components', path: '/design', isForAdministrators: true },
+];
