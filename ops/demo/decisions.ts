@@ -2,7 +2,10 @@ import { inTransaction } from '#db/queries/connection';
 import { bandByNominalHz } from '#lib/acoustics/bands';
 import { insertLimit } from '#db/queries/limits';
 import { addExclusion } from '#lib/services/exclusions/add';
+import { excludeAtStations } from '#lib/services/exclusions/bulk';
+import { withdraw } from '#lib/services/exclusions/withdraw';
 import { DEMO_LIMITS } from './limits';
+import { must } from './must';
 import type { DemoStation } from './stations';
 
 const HOUR_SEC = 3600;
@@ -48,23 +51,38 @@ function minutesOf(clock: string): number {
   return Number(clock.slice(0, 2)) * 60 + Number(clock.slice(3));
 }
 
-/** What an operator left out: `hoursAgo` before the demo was made. */
+/** What an operator left out: `hoursAgo` before the demo was made; `withdrawnBecause`: and thought better of it. */
 const EXCLUSIONS = [
   { code: 'MER-04', fromHoursAgo: 75, toHoursAgo: 71.5, reason: 'Grass mown right under the mast' },
   { code: 'MER-01', fromHoursAgo: 320, toHoursAgo: 318, reason: 'Painters at the mast, compressor running' },
+  {
+    code: 'MER-07',
+    fromHoursAgo: 500,
+    toHoursAgo: 497,
+    reason: 'Animals at the microphone: geese on the sea wall',
+    withdrawnBecause: 'Geese belong to the marsh: the station is there to hear them, too.',
+  },
   { code: 'MER-06', fromHoursAgo: 830, toHoursAgo: 806, reason: 'Street party' },
 ];
+
+/** A storm that no wind gauge of the network saw in full, left out everywhere by one act. */
+const STORM = {
+  fromHoursAgo: 634,
+  toHoursAgo: 628,
+  reason: 'Storm or heavy rain: gusts, warning of the harbour office',
+};
 
 export async function seedExclusions(
   networkId: number,
   operatorId: string,
+  stations: DemoStation[],
   nowSec: number,
   historyDays: number,
 ): Promise<void> {
-  for (const { code, fromHoursAgo, toHoursAgo, reason } of EXCLUSIONS) {
+  const at = (hoursAgo: number) => Math.floor((nowSec - hoursAgo * HOUR_SEC) / 60) * 60;
+  for (const { code, fromHoursAgo, toHoursAgo, reason, withdrawnBecause } of EXCLUSIONS) {
     if (fromHoursAgo > historyDays * 24) continue;
-    const at = (hoursAgo: number) => Math.floor((nowSec - hoursAgo * HOUR_SEC) / 60) * 60;
-    await addExclusion({
+    const exclusion = await addExclusion({
       networkId,
       stationCode: code,
       fromSec: at(fromHoursAgo),
@@ -72,5 +90,12 @@ export async function seedExclusions(
       reason,
       userId: operatorId,
     });
+    if (!exclusion || !withdrawnBecause) continue;
+    await withdraw({ networkId, id: exclusion.id, reason: withdrawnBecause, userId: operatorId });
   }
+  const { fromHoursAgo, toHoursAgo, reason } = STORM;
+  if (fromHoursAgo > historyDays * 24) return;
+  const codes = stations.filter(({ site }) => site.joinedDaysAgo === null).map(({ site }) => site.code);
+  const storm = { stations: codes, from: at(fromHoursAgo), to: at(toHoursAgo), reason };
+  must(await excludeAtStations({ networkId, userId: operatorId }, storm));
 }

@@ -4,10 +4,14 @@ import { aggregateAll } from '#ingest/aggregate/aggregate';
 import { pendWindowsFor } from '#ingest/detect/pendWindows';
 import { judgeLimits } from '#ingest/jobs/judgeLimits';
 import { DEFAULT_DEMO_PASSWORD } from './accounts';
+import { seedAcknowledgements } from './acknowledgements';
 import { seedComplaints } from './complaints';
 import { seedExclusions, seedLimits } from './decisions';
 import { seedHistory } from './history';
+import { seedInstruments } from './instruments';
 import { seedPeople } from './people';
+import { seedReportForm } from './reportForm';
+import { seedQuarantine } from './quarantine';
 import { seedStations } from './stations';
 
 const DAY_SEC = 86_400;
@@ -33,12 +37,22 @@ export async function seedDemo(settings: Config, tell: (line: string) => void): 
   };
   // Several at once: while one's post is being made durable, another's is being computed.
   await Promise.all(Array.from({ length: STATIONS_AT_ONCE }, seedWaiting));
-  await seedExclusions(networkId, operatorId, nowSec, days);
+  tell(`${await seedQuarantine(stations, nowSec, days)} records refused and kept`);
+  const instruments = await seedInstruments({
+    networkId,
+    userId: operatorId,
+    nowSec,
+    historyDays: days,
+    stations,
+  });
+  tell(`${instruments} instruments`);
+  await seedExclusions(networkId, operatorId, stations, nowSec, days);
   const quarters = await aggregateAll(pendWindowsFor);
   tell(
     `${quarters.toLocaleString('en-GB')} quarter-hours computed from ${intervals.toLocaleString('en-GB')} intervals`,
   );
   tell(`${await judgeAll()} windows of limits judged`);
+  tell(`${await seedAcknowledgements(networkId, operatorId, nowSec)} exceedances acknowledged`);
 
   const network = await findNetworkById(networkId);
   if (!network) throw new Error('The network just made is not there.');
@@ -49,6 +63,7 @@ export async function seedDemo(settings: Config, tell: (line: string) => void): 
     stations,
   };
   tell(`${await seedComplaints(desk, nowSec, days)} complaints`);
+  await seedReportForm(network, desk.liaisonId, stations);
 }
 
 async function judgeAll(): Promise<number> {
