@@ -36,7 +36,10 @@ function refusal(error: unknown, path: string): Response {
 }
 
 function withHeaders(response: Response, requestId: string): Response {
-  for (const [name, value] of Object.entries(HEADERS)) response.headers.set(name, value);
+  // A page may be stricter than all of them.
+  for (const [name, value] of Object.entries(HEADERS)) {
+    if (!response.headers.has(name)) response.headers.set(name, value);
+  }
   response.headers.set('X-Request-Id', requestId);
   if (!response.headers.has('Cache-Control')) response.headers.set('Cache-Control', 'private, no-cache');
   return response;

@@ -83,9 +83,11 @@ export type AttachmentType = (typeof ATTACHMENT_TYPES)[number];
 const MOST_AREAS = 60;
 const AREA = /^(.{1,80}?)\s*=\s*(\S{1,32})$/;
 
-const areaSchema = z.object({ name: z.string().min(1).max(80), station: z.string().min(1).max(32) });
 /** An area that residents may choose, with the code of the station that speaks for it. */
-export type ReportArea = z.output<typeof areaSchema>;
+export interface ReportArea {
+  name: string;
+  station: string;
+}
 
 /** The residents' form as the liaison sets it up; areas are lines such as `Harbour quarter = MER-04`. */
 export const reportFormSchema = z.object({
@@ -100,7 +102,7 @@ export const reportFormSchema = z.object({
       .split('\n')
       .map((line) => line.trim())
       .filter((line) => line !== '');
-    const areas = lines.map((line) => {
+    const areas = lines.map((line): ReportArea => {
       const [, name = '', station = ''] = AREA.exec(line) ?? [];
       return { name: name.trim(), station };
     });

@@ -19,7 +19,7 @@ export function problemOf(error: unknown, path: string): Problem {
   if (error instanceof Problem) return error;
   if (error instanceof ZodError) return invalidFields(fieldsOf(error));
   if (isDatabaseAway(error)) {
-    log().warn({ err: error, path }, 'database away');
+    log().warn({ err: error, path: loggedPath(path) }, 'database away');
     return new Problem(
       503,
       'database-away',
@@ -30,8 +30,13 @@ export function problemOf(error: unknown, path: string): Problem {
       },
     );
   }
-  log().error({ err: error, path }, 'request failed');
+  log().error({ err: error, path: loggedPath(path) }, 'request failed');
   return new Problem(500, 'failed', 'Something went wrong here', 'Nothing was changed. It has been noted.');
+}
+
+/** A path without what is secret in it: the key of a resident's private page. */
+function loggedPath(path: string): string {
+  return path.replace(/^(\/report\/[^/]+\/).+/, '$1…');
 }
 
 function fieldsOf(error: ZodError): { field: string; message: string }[] {

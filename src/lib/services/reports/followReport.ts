@@ -7,7 +7,6 @@ import {
   type AttachmentInfo,
   type ReportRow,
 } from '#db/queries/reports';
-import type { PersonalData } from '#lib/contracts/complaints';
 import { openPersonalData } from '../complaints/readPersonalData';
 import { openReply } from '../complaints/replyMessage';
 import { listAdditions, type Addition } from './additions';
@@ -26,7 +25,6 @@ export interface FoundReport {
 export interface FollowedReport extends FoundReport {
   isErased: boolean;
   words: string;
-  hasContact: boolean;
   canBeWrittenTo: boolean;
   file: AttachmentInfo | null;
   additions: Addition[];
@@ -57,18 +55,10 @@ export async function followReport(network: PublicNetwork, key: string): Promise
     ...found,
     isErased: person === null,
     words: person?.words ?? '',
-    ...reachable(person),
+    canBeWrittenTo: person !== null && person.contact.email !== null,
     file: file ?? null,
     additions,
     letters,
-  };
-}
-
-function reachable(person: PersonalData | null): Pick<FollowedReport, 'hasContact' | 'canBeWrittenTo'> {
-  const { name = null, email = null, phone = null, address = null } = person?.contact ?? {};
-  return {
-    hasContact: [name, email, phone, address].some((value) => value !== null),
-    canBeWrittenTo: email !== null,
   };
 }
 

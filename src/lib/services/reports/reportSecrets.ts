@@ -10,9 +10,14 @@ const STAMP = /^(\d{1,12})\.([A-Za-z0-9_-]{22})\.([A-Za-z0-9_-]{43})$/;
 export type StampState = { kind: 'good'; nonce: string } | { kind: 'too-fast' } | { kind: 'expired' };
 
 /** A signed mark of when a network's form was handed out: it holds off programs without keeping anything here. */
-export function newStamp(networkId: number, nowSec: number): string {
+function newStamp(networkId: number, nowSec: number): string {
   const nonce = randomBytes(16).toString('base64url');
   return `${nowSec}.${nonce}.${signature(networkId, String(nowSec), nonce)}`;
+}
+
+/** The stamp of a form that is shown again: the one that came, as long as it holds, else a new one. */
+export function renewedStamp(stamp: string, networkId: number, nowSec: number): string {
+  return checkStamp(stamp, networkId, nowSec).kind === 'expired' ? newStamp(networkId, nowSec) : stamp;
 }
 
 /** Judges the stamp that came back; one that is none, or of another network, counts as expired. */
