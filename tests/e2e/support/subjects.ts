@@ -1,3 +1,5 @@
+import { setTimeout } from 'node:timers/promises';
+import { inject } from 'vitest';
 import { minutes, post } from './posts';
 import { signedInFetch } from './signedInFetch';
 
@@ -36,11 +38,36 @@ export async function someSubjects(): Promise<Subjects> {
     'exceedances/[id]': await firstOf('exceedances', 'id'),
     'quarantine/[id]': await firstOf('quarantine', 'id'),
     'imports/[id]': await firstOf('imports', 'id'),
+    'plants/[id]': await plantOne(api),
+    'activities/[id]': await activityOne(api),
     'instruments/[id]': await firstOf('instruments', 'id'),
+    '[key]': await reportOne(),
     '[reference]': await firstOf('complaints', 'reference'),
     '[month]': await firstOf('summaries', 'month'),
     '[code]': stations.items[0]?.code ?? '',
   };
+}
+
+/** A resident's report by the public form; answers the key of its private page. */
+async function reportOne(): Promise<string> {
+  const address = `${inject('origin')}/report/merrow`;
+  const page = await (await fetch(address)).text();
+  const body = new FormData();
+  const fields = {
+    when: 'now',
+    lasting: '30',
+    kind: 'hum',
+    area: 'elsewhere',
+    address: 'Tern Row',
+    consent: 'yes',
+  };
+  for (const [name, value] of Object.entries(fields)) body.set(name, value);
+  body.set('stamp', /name="stamp" value="([^"]+)"/.exec(page)?.[1] ?? '');
+  await setTimeout(4500);
+  const answer = await fetch(address, { method: 'POST', body, redirect: 'manual' });
+  const key = answer.headers.get('location')?.split('/').at(-1);
+  if (!key) throw new Error(`The report was refused: ${answer.status}`);
+  return key;
 }
 
 /** A record that receiving refuses and keeps. */
@@ -49,4 +76,20 @@ async function quarantineOne(api: Awaited<ReturnType<typeof signedInFetch>>): Pr
   const { token } = (await issued.json()) as { token: string };
   const answer = await post(token, minutes(Math.floor(Date.now() / 60_000 - 5) * 60, 1, 999));
   if (answer.status !== 200) throw new Error(`The post was refused: ${await answer.text()}`);
+}
+
+/** A plant of the site. */
+async function plantOne(api: Awaited<ReturnType<typeof signedInFetch>>): Promise<string> {
+  const body = { name: `Fan ${Date.now()}`, kind: 'fan', minRpm: 1480, blades: 8 };
+  const answer = await api('POST', `${base}/plants`, body);
+  if (answer.status !== 201) throw new Error(`The plant was refused: ${await answer.text()}`);
+  return String(((await answer.json()) as { plant: { id: number } }).plant.id);
+}
+
+/** An entry of the operations log. */
+async function activityOne(api: Awaited<ReturnType<typeof signedInFetch>>): Promise<string> {
+  const body = { kind: 'shift', from: '2026-01-05T06:00:00Z', to: '2026-01-05T14:00:00Z' };
+  const answer = await api('POST', `${base}/activities`, body);
+  if (answer.status !== 201) throw new Error(`The entry was refused: ${await answer.text()}`);
+  return String(((await answer.json()) as { activity: { id: number } }).activity.id);
 }
