@@ -4,6 +4,8 @@ export type Section =
   | 'stations'
   | 'health'
   | 'instruments'
+  | 'plants'
+  | 'activities'
   | 'exceedances'
   | 'complaints'
   | 'summaries'
@@ -29,6 +31,8 @@ export const SECTION_LINKS: readonly SectionLink[] = [
   { section: 'summaries', label: 'Summaries', keepsPeriod: false },
   { section: 'limits', label: 'Limits', keepsPeriod: false },
   { section: 'instruments', label: 'Instruments', keepsPeriod: false },
+  { section: 'plants', label: 'Plant', keepsPeriod: false },
+  { section: 'activities', label: 'Operations', keepsPeriod: true },
   { section: 'imports', label: 'Imports', keepsPeriod: false },
   { section: 'quarantine', label: 'Quarantine', keepsPeriod: false },
   { section: 'exclusions', label: 'Exclusions', keepsPeriod: false },
