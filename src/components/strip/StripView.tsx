@@ -22,6 +22,7 @@ import { type TimeView } from './model/timeView';
 import { Legend } from './parts/Legend';
 import { ReadingSlip } from './parts/ReadingSlip';
 import { Readout } from './parts/Readout';
+import { SavePicture } from './parts/SavePicture';
 import { StripPlot } from './parts/StripPlot';
 import { Toolbar } from './parts/Toolbar';
 
@@ -74,6 +75,7 @@ export function StripView(props: StripProps) {
     gapWords,
   });
   const stepSec = layers[0]?.stepSec ?? station.intervalSec;
+  const columnSec = layers[0] ? stepSec : null;
   const grid = { gridSec: Math.max(station.intervalSec, stepSec), bands: picture.pixels.bands };
   const [interaction, dispatch] = useInteraction(grid);
   const { fromSec, toSec } = control.view;
@@ -141,12 +143,26 @@ export function StripView(props: StripProps) {
             summary={summary}
           />
         )}
-        <Legend
-          range={picture.colouring?.range ?? null}
-          weighting={display.weighting}
-          theme={theme}
-          stepSec={layers[0] ? stepSec : null}
-        />
+        <div className="flex flex-wrap items-center justify-between gap-x-5 gap-y-2">
+          <Legend
+            range={picture.colouring?.range ?? null}
+            weighting={display.weighting}
+            theme={theme}
+            stepSec={columnSec}
+          />
+          <SavePicture
+            stationCode={code}
+            sheet={{
+              picture,
+              title: `${station.name} (${code})`,
+              weighting: display.weighting,
+              stepSec: columnSec,
+              exceedances,
+            }}
+            ratio={ratio}
+            summary={summary}
+          />
+        </div>
       </div>
       <ReadingSlip
         selection={selection}

@@ -1,7 +1,8 @@
 import { type Surface } from './surface';
 
 /** Diagonal lines for "no data": a pattern in device pixels that stands still when the picture moves. */
-export function hatchPattern({ context, ratio, palette }: Surface): CanvasPattern | string {
+export function hatchPattern({ context, ratio, palette, hatchFill }: Surface): CanvasPattern | string {
+  if (hatchFill !== undefined) return hatchFill;
   const size = Math.round(7 * ratio);
   const tile = document.createElement('canvas');
   tile.width = size;

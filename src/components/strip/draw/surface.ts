@@ -1,12 +1,45 @@
 import { type Palette } from './palette';
 import { type Rect } from './geometry';
 
+/** What the drawing needs of a canvas, so that a drawing of another kind can take its place. */
+export interface DrawContext {
+  fillStyle: string | CanvasGradient | CanvasPattern;
+  strokeStyle: string | CanvasGradient | CanvasPattern;
+  lineWidth: number;
+  lineJoin: CanvasLineJoin;
+  font: string;
+  textAlign: CanvasTextAlign;
+  textBaseline: CanvasTextBaseline;
+  imageSmoothingEnabled: boolean;
+  setTransform(a: number, b: number, c: number, d: number, e: number, f: number): void;
+  save(): void;
+  restore(): void;
+  beginPath(): void;
+  closePath(): void;
+  rect(x: number, y: number, width: number, height: number): void;
+  moveTo(x: number, y: number): void;
+  lineTo(x: number, y: number): void;
+  clip(): void;
+  stroke(): void;
+  fill(): void;
+  setLineDash(segments: number[]): void;
+  clearRect(x: number, y: number, width: number, height: number): void;
+  fillRect(x: number, y: number, width: number, height: number): void;
+  strokeRect(x: number, y: number, width: number, height: number): void;
+  fillText(text: string, x: number, y: number): void;
+  measureText(text: string): { width: number };
+  drawImage(image: HTMLCanvasElement, x: number, y: number, width: number, height: number): void;
+  createPattern(image: HTMLCanvasElement, repetition: string | null): CanvasPattern | null;
+}
+
 /** A canvas being drawn on, with what every part of the drawing needs. Coordinates are CSS pixels unless told otherwise. */
 export interface Surface {
-  context: CanvasRenderingContext2D;
+  context: DrawContext;
   /** Device pixels in a CSS pixel. */
   ratio: number;
   palette: Palette;
+  /** What to fill with where nothing was measured; a pattern of diagonal lines is made where left out. */
+  hatchFill?: string;
 }
 
 const FONT = "'Noto Sans', sans-serif";
