@@ -31,6 +31,28 @@ export async function submitForm<T>(
   const values = valuesOf(form ?? new FormData());
   if (!form)
     return { isDone: false, values, errors: { '': 'What was sent is no form. Nothing was changed.' } };
+  return actOn(values, act);
+}
+
+/** The same of a form that asks only, whose fields stand in the address. */
+export function submitQuery<T>(
+  query: URLSearchParams,
+  act: (values: FormValues) => Promise<T>,
+): Promise<Submission<T>> {
+  return actOn(queryValues(query), act);
+}
+
+/** What stands in an address as the values of a form's fields. */
+export function queryValues(query: URLSearchParams): FormValues {
+  const form = new FormData();
+  for (const [name, value] of query) form.append(name, value);
+  return valuesOf(form);
+}
+
+async function actOn<V extends FormValues, T>(
+  values: V,
+  act: (values: V) => Promise<T>,
+): Promise<Submission<T>> {
   try {
     return { isDone: true, value: await act(values) };
   } catch (error) {

@@ -28,7 +28,7 @@ export function versionAt<V extends LimitVersion>(ofLimit: readonly V[], atSec: 
 }
 
 /** Whether a version holds for a station. */
-export function coversStation({ stationIds }: LimitVersion, stationId: number): boolean {
+export function coversStation({ stationIds }: Pick<LimitVersion, 'stationIds'>, stationId: number): boolean {
   return stationIds === null || stationIds.includes(stationId);
 }
 

@@ -16,7 +16,13 @@ export interface Measured {
 /** The sums that some limit may be about. */
 export type MeasurableSums = Pick<
   PeriodSums,
-  'validSec' | 'aEnergySec' | 'lafmaxCentiDb' | 'bandFraction' | 'bandEnergySec' | 'bandValidSec'
+  | 'validSec'
+  | 'aEnergySec'
+  | 'lafmaxCentiDb'
+  | 'bandFraction'
+  | 'isBandFractionMixed'
+  | 'bandEnergySec'
+  | 'bandValidSec'
 >;
 
 type Metric = Pick<LimitVersion, 'metric' | 'bandFraction' | 'bandIndex'>;

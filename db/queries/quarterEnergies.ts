@@ -1,0 +1,29 @@
+import { pool, type Connection } from './connection';
+
+/** What A-weighted limits look at of a quarter-hour. */
+export interface QuarterEnergy {
+  startSec: number;
+  validSec: number;
+  /** Sum over the valid seconds of 10^(LAeq/10). */
+  aEnergySec: number;
+  lafmaxCentiDb: number | null;
+}
+
+/** Of the computed quarter-hours of a station that begin in `fromSec <= t < toSec`, ascending: a year is read at once. */
+export async function selectQuarterEnergies(
+  stationId: number,
+  fromSec: number,
+  toSec: number,
+  conn: Connection = pool(),
+): Promise<QuarterEnergy[]> {
+  const [rows] = await conn
+    .raw(
+      `SELECT starts_at, valid_sec, a_energy_sec, lafmax_centi_db FROM quarter_hours
+       WHERE station_id = ? AND starts_at >= ? AND starts_at < ? ORDER BY starts_at`,
+      [stationId, fromSec, toSec],
+    )
+    .options({ rowsAsArray: true });
+  return (rows as [number, number, number, number | null][]).map(
+    ([startSec, validSec, aEnergySec, lafmaxCentiDb]) => ({ startSec, validSec, aEnergySec, lafmaxCentiDb }),
+  );
+}

@@ -1,0 +1,119 @@
+import { pool, type Connection } from '#db/queries/connection';
+import { findLimit, type LimitVersion } from '#db/queries/limits';
+import { listSettings, pickSettings } from '#db/queries/networks';
+import { listStations } from '#db/queries/stations';
+import { toTenths } from '#lib/acoustics/rounding';
+import { formatInstantUtc } from '#lib/contracts/common';
+import {
+  MOST_TRIAL_WINDOWS,
+  type LimitTrialAnswer,
+  type LimitTrialQuery,
+  type TrialSummary,
+  type TrialWindow,
+} from '#lib/contracts/limitTrial';
+import { versionAt } from '#lib/services/limits/force';
+import { readRule } from '#lib/services/limits/rule';
+import { done, unknown, type Outcome } from '#lib/services/outcome';
+import { startOfDaySec } from '#lib/time/zone';
+import { caughtInOrder, summaryOf } from './summary';
+import { tryRule, type CaughtWindow, type TrialGround, type TrialRule } from './tryRule';
+
+/** A rule with what it caught, in order of time. */
+interface Tried {
+  rule: TrialRule;
+  caught: CaughtWindow[];
+  summary: TrialSummary;
+}
+
+type Codes = ReadonlyMap<number, string>;
+
+/**
+ * Tries a limit on past data, and beside it today's version of the limit that it is to replace. Nothing is stored. `nowSec`:
+ * windows that end later have not closed.
+ */
+export async function tryLimit(
+  networkId: number,
+  query: LimitTrialQuery,
+  nowSec: number,
+  conn: Connection = pool(),
+): Promise<Outcome<LimitTrialAnswer>> {
+  const stations = await listStations(networkId, conn);
+  const read = readRule({ ...query.limit, effectiveFrom: undefined }, stations, nowSec);
+  if (!read.isValid) return { kind: 'invalid', problems: read.problems };
+  const today = query.basedOn === null ? null : await versionOfToday(networkId, query.basedOn, nowSec, conn);
+  if (query.basedOn !== null && !today) return unknown('The network has no limit with this number.');
+  const timeline = await listSettings(networkId, conn);
+  const zone = pickSettings(timeline, nowSec).timeZone;
+  const period = { fromSec: startOfDaySec(query.from, zone), toSec: startOfDaySec(query.to, zone) };
+  const ground: TrialGround = { stations, timeline, period, nowSec };
+  const own = await tried(read.version, ground, zone, conn);
+  const other = today && { ...(await tried(today, ground, zone, conn)), version: today };
+  const codes = new Map(stations.map(({ id, code }) => [id, code]));
+  return done({
+    from: formatInstantUtc(period.fromSec),
+    to: formatInstantUtc(period.toSec),
+    trial: own.summary,
+    windows: ownWindows(own, other, codes),
+    ...besides(own, other, codes),
+  });
+}
+
+/** The version in force of a limit, or the one to come; null without such a limit. */
+async function versionOfToday(
+  networkId: number,
+  limitId: number,
+  nowSec: number,
+  conn: Connection,
+): Promise<LimitVersion | null> {
+  const ofLimit = await findLimit(networkId, limitId, conn);
+  return versionAt(ofLimit, nowSec) ?? ofLimit[0] ?? null;
+}
+
+async function tried(rule: TrialRule, ground: TrialGround, zone: string, conn: Connection): Promise<Tried> {
+  const stations = await tryRule(rule, ground, conn);
+  const summary = summaryOf(rule, stations, ground.period, zone);
+  return { rule, caught: caughtInOrder(stations), summary };
+}
+
+function ownWindows({ rule, caught }: Tried, other: Tried | null, codes: Codes): LimitTrialAnswer['windows'] {
+  const otherKeys = other && new Set(other.caught.map(keyOf));
+  return caught.slice(0, MOST_TRIAL_WINDOWS).map((window) => ({
+    ...windowView(window, rule, codes),
+    isCaughtToday: otherKeys && otherKeys.has(keyOf(window)),
+  }));
+}
+
+/** Today's version beside the trial, and what it alone catches. */
+function besides(
+  own: Tried,
+  other: (Tried & { version: LimitVersion }) | null,
+  codes: Codes,
+): Pick<LimitTrialAnswer, 'today' | 'onlyToday'> {
+  if (!other) return { today: null, onlyToday: [] };
+  const ownKeys = new Set(own.caught.map(keyOf));
+  const alone = other.caught.filter((window) => !ownKeys.has(keyOf(window)));
+  const { limitId, version } = other.version;
+  return {
+    today: { ...other.summary, limitId, version, caughtAlone: alone.length },
+    onlyToday: alone.slice(0, MOST_TRIAL_WINDOWS).map((window) => windowView(window, other.rule, codes)),
+  };
+}
+
+function windowView(
+  { stationId, startSec, endSec, levelDb, coverage }: CaughtWindow,
+  { thresholdTenths }: TrialRule,
+  codes: Codes,
+): TrialWindow {
+  return {
+    station: codes.get(stationId) ?? String(stationId),
+    from: formatInstantUtc(startSec),
+    to: formatInstantUtc(endSec),
+    level: levelDb,
+    above: (toTenths(levelDb) - thresholdTenths) / 10,
+    coverage,
+  };
+}
+
+function keyOf({ stationId, startSec, endSec }: CaughtWindow): string {
+  return `${stationId}:${startSec}:${endSec}`;
+}
