@@ -2,6 +2,7 @@ import { schedule } from 'node-cron';
 import { closeDb } from '#db/client';
 import { log } from '#lib/config/log';
 import { aggregate } from './jobs/aggregate';
+import { completeEndedPeriods } from './jobs/completePeriods';
 import { housekeeping } from './jobs/housekeeping';
 import { importFiles } from './jobs/importFiles';
 import { judgeLimits } from './jobs/judgeLimits';
@@ -23,6 +24,7 @@ const LOOPS: LoopSettings[] = [
 /** Done once a slot. The first is the worker's sign of life, which /readyz reads. */
 const SLOT_JOBS: SlotJob[] = [
   { name: 'tick', slotMinutes: 1, run: async () => 'alive' },
+  { name: 'complete-periods', slotMinutes: 15, run: completeEndedPeriods },
   { name: 'housekeeping', slotMinutes: 60, run: housekeeping },
   { name: 'remind-calibrations', slotMinutes: 60, run: remindOfCalibrations },
 ];

@@ -55,14 +55,13 @@ export function packBandClasses({ bands, octaves }: BandClassCounts): Buffer {
   return Buffer.concat(parts);
 }
 
-/** Reads what `packBandClasses` made. @throws RangeError for other bytes. */
+/** What `packBandClasses` made; each distribution is read when it is looked at. @throws RangeError for other bytes. */
 export function unpackBandClasses(bytes: Buffer): BandClassCounts {
   let at = 0;
   const next = (): LevelClassCounts => {
-    const length = bytes.readUInt16LE(at);
-    const counts = LevelClassCounts.decode(bytes.subarray(at + 2, at + 2 + length));
-    at += 2 + length;
-    return counts;
+    const from = at + 2;
+    at = from + bytes.readUInt16LE(at);
+    return LevelClassCounts.encoded(bytes, from, at);
   };
   const bands = Array.from({ length: BAND_SLOTS }, next);
   const octaves = Array.from({ length: OCTAVE_SLOTS }, next);

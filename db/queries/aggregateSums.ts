@@ -37,23 +37,37 @@ export type SumsCells = [
   bandEnergies?: Buffer,
 ];
 
-/** Sums as the columns of a row to insert; distributions per band are not among them. */
-export function rowOfSums(sums: PeriodSums) {
-  return {
-    valid_sec: sums.validSec,
-    excluded_sec: sums.excludedSec,
-    sample_sec: sums.sampleSec,
-    is_sample_mixed: sums.isSampleMixed,
-    a_energy_sec: sums.aEnergySec,
-    c_energy_sec: sums.cEnergySec,
-    c_valid_sec: sums.cValidSec,
-    lafmax_centi_db: sums.lafmaxCentiDb,
-    lafmin_centi_db: sums.lafminCentiDb,
-    lcpeak_centi_db: sums.lcpeakCentiDb,
-    a_classes: Buffer.from(sums.aClasses.encode()),
-    band_fraction: sums.bandFraction,
-    band_energies: packBandEnergies(sums),
-  };
+/**
+ * Values of `SUMS_COLUMNS` and then `BAND_COLUMNS` as SQL; distributions per band are not among them. Bindings would cost more than
+ * the sums did; every cell is a number or hexadecimal digits, so there is nothing to escape.
+ */
+export function sumsCellsText(sums: PeriodSums): string {
+  const cells: (number | string | null)[] = [
+    sums.validSec,
+    sums.excludedSec,
+    sums.sampleSec,
+    sums.isSampleMixed ? 1 : 0,
+    sums.aEnergySec,
+    sums.cEnergySec,
+    sums.cValidSec,
+    sums.lafmaxCentiDb,
+    sums.lafminCentiDb,
+    sums.lcpeakCentiDb,
+    bytesText(Buffer.from(sums.aClasses.encode())),
+    sums.bandFraction,
+    bytesText(packBandEnergies(sums)),
+  ];
+  return cells.map((cell) => cell ?? 'NULL').join(', ');
+}
+
+/** Bytes as SQL. */
+export function bytesText(bytes: Buffer): string {
+  return `x'${bytes.toString('hex')}'`;
+}
+
+/** An instant as SQL, for a DATETIME(3) in UTC. */
+export function instantText(instant: Date): string {
+  return `'${instant.toISOString().slice(0, -1).replace('T', ' ')}'`;
 }
 
 /** Sums of the cells of a row; without the band columns they have no band figures. */
@@ -89,7 +103,7 @@ export function sumsOfCells(cells: SumsCells): PeriodSums {
     isBandFractionMixed: bands.isBandFractionMixed,
     bandEnergySec: bands.bandEnergySec,
     bandValidSec: bands.bandValidSec,
-    aClasses: LevelClassCounts.decode(aClasses),
+    aClasses: LevelClassCounts.encoded(aClasses),
     bandClasses: null,
   };
 }

@@ -1,12 +1,33 @@
 import { type PeriodKind } from '#lib/acoustics/dayEveningNight';
 import { type PeriodSums } from '#lib/acoustics/periodSums';
 import { packBandClasses, unpackBandClasses } from './aggregatePacking';
-import { BAND_COLUMNS, rowOfSums, SUMS_COLUMNS, sumsOfCells, type SumsCells } from './aggregateSums';
+import {
+  BAND_COLUMNS,
+  bytesText,
+  instantText,
+  SUMS_COLUMNS,
+  sumsCellsText,
+  sumsOfCells,
+  type SumsCells,
+} from './aggregateSums';
 import { pool, type Connection } from './connection';
 import { type Span } from './exclusions';
 
 /** A period never lasts longer: a day with a clock change, and an hour to spare. */
 const LONGEST_PERIOD_SEC = 26 * 3600;
+
+const INSERTED_COLUMNS = [
+  'station_id',
+  'local_date',
+  'period',
+  'starts_at',
+  'ends_at',
+  'flags',
+  'computed_at',
+  'band_classes',
+  ...SUMS_COLUMNS,
+  ...BAND_COLUMNS,
+];
 
 /** Names a day, evening or night of a station by the local date on which it begins. */
 export interface DayPeriodKey {
@@ -24,23 +45,42 @@ export interface DayPeriod extends DayPeriodKey {
   flagBits: number;
 }
 
+/** Rows held at once: about a hundred days, 5 MB with distributions per band. */
+const ROWS_A_READ = 300;
+
 /**
- * Periods that lie whole within `fromSec <= t < toSec`, in order of time. `bandClasses: true` also reads the distributions of
- * every band and octave, nearly all of a row.
+ * Periods that lie whole within `fromSec <= t < toSec`, in order of time, read part by part: years never lie in memory at once.
+ * `bandClasses: true` also reads the distributions of every band and octave, nearly all of a row.
  */
-export async function selectDayPeriods(
+export async function* eachDayPeriod(
   stationId: number,
-  fromSec: number,
-  toSec: number,
-  { bandClasses }: { bandClasses: boolean },
+  { fromSec, toSec }: Span,
+  options: { bandClasses: boolean },
   conn: Connection = pool(),
+): AsyncGenerator<DayPeriod[]> {
+  for (let nextSec = fromSec; ;) {
+    const part = await selectDayPeriods(stationId, { fromSec: nextSec, toSec }, options, conn);
+    yield part;
+    const last = part.at(-1);
+    if (!last || part.length < ROWS_A_READ) return;
+    // Where a zone has changed two may begin together; of those only the first would be counted anyway.
+    nextSec = last.fromSec + 1;
+  }
+}
+
+async function selectDayPeriods(
+  stationId: number,
+  { fromSec, toSec }: Span,
+  { bandClasses }: { bandClasses: boolean },
+  conn: Connection,
 ): Promise<DayPeriod[]> {
   const classes = bandClasses ? 'band_classes' : 'NULL';
   const [rows] = await conn
     .raw(
       `SELECT CAST(local_date AS CHAR), period, starts_at, ends_at, flags, ${classes},
          ${[...SUMS_COLUMNS, ...BAND_COLUMNS].join(', ')}
-       FROM day_periods WHERE station_id = ? AND starts_at >= ? AND starts_at < ? AND ends_at <= ? ORDER BY starts_at`,
+       FROM day_periods WHERE station_id = ? AND starts_at >= ? AND starts_at < ? AND ends_at <= ?
+       ORDER BY starts_at LIMIT ${ROWS_A_READ}`,
       [stationId, fromSec, toSec, toSec],
     )
     .options({ rowsAsArray: true });
@@ -75,29 +115,45 @@ export async function replaceDayPeriods(
       .delete();
   }
   if (found.length === 0) return;
-  const computedAt = new Date();
-  await conn('day_periods')
-    .insert(
-      found.map((period) => ({
-        station_id: stationId,
-        local_date: period.date,
-        period: period.kind,
-        starts_at: period.fromSec,
-        ends_at: period.toSec,
-        ...rowOfSums(period.sums),
-        band_classes: packedClasses(period),
-        flags: period.flagBits,
-        computed_at: computedAt,
-      })),
-    )
-    // A changed zone can leave a row of the same date and kind elsewhere in time.
-    .onConflict(['station_id', 'local_date', 'period'])
-    .merge();
+  const computedAt = instantText(new Date());
+  const rows = found.map((period) => {
+    const { date, kind, fromSec, toSec, flagBits, sums } = period;
+    const classes = bytesText(packedClasses(period));
+    return `(${stationId}, '${date}', '${kind}', ${fromSec}, ${toSec}, ${flagBits}, ${computedAt}, ${classes}, ${sumsCellsText(sums)})`;
+  });
+  // A changed zone can leave a row of the same date and kind elsewhere in time.
+  await conn.raw(
+    `INSERT INTO day_periods (${INSERTED_COLUMNS.join(', ')}) VALUES ${rows.join(', ')}
+     ON DUPLICATE KEY UPDATE ${INSERTED_COLUMNS.map((name) => `${name} = VALUES(${name})`).join(', ')}`,
+  );
 }
 
 function packedClasses({ sums, date, kind }: DayPeriod): Buffer {
   if (!sums.bandClasses) throw new Error(`The ${kind} of ${date} has no distributions per band.`);
   return packBandClasses(sums.bandClasses);
+}
+
+/**
+ * Marks for recomputation the last computed quarter-hour within a period of every station of a network that has one and no row of
+ * that period. @returns how many.
+ */
+export async function markUncomputedPeriod(
+  networkId: number,
+  { date, kind, fromSec, toSec }: DayPeriodKey & Span,
+  conn: Connection = pool(),
+): Promise<number> {
+  // Not one INSERT … SELECT: that would hold the stations that it reads against their monitors.
+  const [rows] = await conn.raw(
+    `SELECT q.station_id, MAX(q.starts_at) AS quarter_starts_at, ? AS marked_at FROM stations s
+     JOIN quarter_hours q ON q.station_id = s.id AND q.starts_at >= ? AND q.starts_at < ?
+     WHERE s.network_id = ? AND NOT EXISTS
+       (SELECT 1 FROM day_periods d WHERE d.station_id = s.id AND d.local_date = ? AND d.period = ?)
+     GROUP BY q.station_id`,
+    [Math.floor(Date.now() / 1000), fromSec, toSec, networkId, date, kind],
+  );
+  const marks = rows as Record<string, number>[];
+  if (marks.length > 0) await conn('dirty_marks').insert(marks);
+  return marks.length;
 }
 
 /** Drops every day period of a station. */

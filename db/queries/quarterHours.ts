@@ -1,5 +1,12 @@
 import { type PeriodSums } from '#lib/acoustics/periodSums';
-import { BAND_COLUMNS, rowOfSums, SUMS_COLUMNS, sumsOfCells, type SumsCells } from './aggregateSums';
+import {
+  BAND_COLUMNS,
+  instantText,
+  SUMS_COLUMNS,
+  sumsCellsText,
+  sumsOfCells,
+  type SumsCells,
+} from './aggregateSums';
 import { pool, type Connection } from './connection';
 
 /** One station's UTC quarter-hour, recomputed wholly from its intervals. A quarter without any interval has no row. */
@@ -68,17 +75,14 @@ export async function replaceQuarterHours(
     .whereIn('starts_at', quarterStartsSec)
     .delete();
   if (found.length === 0) return;
-  const computedAt = new Date();
-  await conn('quarter_hours').insert(
-    found.map((quarter) => ({
-      station_id: stationId,
-      starts_at: quarter.startSec,
-      ...rowOfSums(quarter.sums),
-      flags: quarter.flagBits,
-      reason_bits: quarter.reasonBits,
-      late_sec: quarter.lateSec,
-      computed_at: computedAt,
-    })),
+  const computedAt = instantText(new Date());
+  const rows = found.map(
+    ({ startSec, flagBits, reasonBits, lateSec, sums }) =>
+      `(${stationId}, ${startSec}, ${flagBits}, ${reasonBits}, ${lateSec}, ${computedAt}, ${sumsCellsText(sums)})`,
+  );
+  await conn.raw(
+    `INSERT INTO quarter_hours (station_id, starts_at, flags, reason_bits, late_sec, computed_at,
+       ${[...SUMS_COLUMNS, ...BAND_COLUMNS].join(', ')}) VALUES ${rows.join(', ')}`,
   );
 }
 

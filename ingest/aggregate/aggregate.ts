@@ -24,10 +24,12 @@ export interface AggregationRun {
 
 /** Marks read at once. */
 const MOST_MARKS = 5000;
+/** Intervals that are recomputed in one transaction, unless a date has more: a week of minutes, some tenths of a second. */
+const INTERVALS_A_CHUNK = 7 * 1440;
 
 /**
  * Recomputes what is marked, oldest marks first, at most `mostMarks` of them: each quarter-hour and the periods of day it is
- * part of wholly from intervals, in one transaction per station and date. Marks are read before a transaction's reads, and
+ * part of wholly from intervals, in transactions of a station's date or a few. Marks are read before a transaction's reads, and
  * exactly those are deleted: what changes meanwhile has a mark of its own. Safe to run twice at once, because the second
  * finds the station locked and then recomputes the same from newer data.
  */
@@ -67,7 +69,7 @@ async function aggregateStation(
   }
   const timeline = await listSettings(station.networkId);
   let quarters = 0;
-  for (const chunk of chunksOf(stationId, marks, timeline)) {
+  for (const chunk of chunksOf(stationId, marks, timeline, INTERVALS_A_CHUNK * station.intervalSec)) {
     await recomputeChunk(chunk, station, timeline, onQuartersRecomputed);
     quarters += chunk.quarterStartsSec.length;
   }

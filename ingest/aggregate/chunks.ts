@@ -29,13 +29,15 @@ export function marksByStation(marks: readonly DirtyMark[]): Map<number, DirtyMa
 }
 
 /**
- * Parts the marks of one station by the local date that their periods begin on, so that a transaction holds the station for
- * a day's work at most and no period is computed twice.
+ * Parts the marks of one station between the local dates that their periods begin on, so that no period is computed twice.
+ * Dates that follow each other stay together while they last no more than about `mostSec`: a transaction costs as much as a day of
+ * minutes, but holds the station while it works.
  */
 export function chunksOf(
   stationId: number,
   marks: readonly DirtyMark[],
   timeline: NetworkSettings[],
+  mostSec: number,
 ): Chunk[] {
   const chunks: Chunk[] = [];
   let periods: PeriodInstance[] = [];
@@ -48,11 +50,11 @@ export function chunksOf(
     }
     const touched = periods.filter((p) => p.fromSec < endSec && quarterStartSec < p.toSec);
     const ofDate = touched[0]?.date ?? '';
-    if (!chunk || ofDate !== date) {
+    if (!chunk || (ofDate !== date && !continues(chunk, touched, mostSec))) {
       chunk = { stationId, markIds: [], quarterStartsSec: [], periods: [] };
       chunks.push(chunk);
-      date = ofDate;
     }
+    date = ofDate;
     chunk.markIds.push(id);
     if (chunk.quarterStartsSec.at(-1) !== quarterStartSec) chunk.quarterStartsSec.push(quarterStartSec);
     for (const period of touched) {
@@ -62,4 +64,12 @@ export function chunksOf(
     }
   }
   return chunks;
+}
+
+/** Whether some periods follow a chunk's at once and last no longer than `mostSec` together with them. */
+function continues({ periods }: Chunk, touched: readonly PeriodInstance[], mostSec: number): boolean {
+  const [first, last] = [periods[0], periods.at(-1)];
+  const [next, end] = [touched[0], touched.at(-1)];
+  if (!first || !last || !next || !end) return false;
+  return next.fromSec <= last.toSec && end.toSec - first.fromSec <= mostSec;
 }

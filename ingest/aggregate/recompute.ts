@@ -13,8 +13,9 @@ import { QUARTER_SEC } from '#lib/time/quarters';
 import { type Chunk } from './chunks';
 
 /**
- * Recomputes a chunk's quarter-hours and periods wholly from intervals and replaces their rows. Call it with the station
- * locked, in a transaction whose reads see everything that was committed before the chunk's marks were read.
+ * Recomputes a chunk's quarter-hours and ended periods wholly from intervals and replaces their rows. Call it with the station
+ * locked, in a transaction whose reads see everything that was committed before the chunk's marks were read. A period that still
+ * runs gets no row, because it would be computed again, from all its intervals, at every post: `completePeriods` sees to it later.
  */
 export async function recompute(
   chunk: Chunk,
@@ -22,7 +23,9 @@ export async function recompute(
   timeline: NetworkSettings[],
   conn: Connection,
 ): Promise<void> {
-  const span = spanOf(chunk);
+  const ended = chunk.periods.filter(({ toSec }) => toSec <= Date.now() / 1000);
+  const spans = [...ended, ...quarterSpans(chunk)];
+  const span = wholeOf(spans);
   const intervals = await selectIntervals(station.id, span.fromSec, span.toSec, conn);
   const judgement = await judgementOf({ station, timeline, validity: 'rules' }, span, conn);
   const quarters = chunk.quarterStartsSec.map((startSec) => quarterOf(intervals, startSec, judgement));
@@ -32,10 +35,10 @@ export async function recompute(
     quarters.filter((quarter) => quarter !== null),
     conn,
   );
-  const periods = chunk.periods.map((period) => periodOf(intervals, period, judgement));
+  const periods = ended.map((period) => periodOf(intervals, period, judgement));
   await replaceDayPeriods(
     station.id,
-    mergedSpans([...chunk.periods, ...quarterSpans(chunk)]),
+    mergedSpans(spans),
     periods.filter((period) => period !== null),
     conn,
   );
@@ -45,8 +48,7 @@ function quarterSpans({ quarterStartsSec }: Chunk): Span[] {
   return quarterStartsSec.map((fromSec) => ({ fromSec, toSec: fromSec + QUARTER_SEC }));
 }
 
-function spanOf(chunk: Chunk): Span {
-  const spans = [...chunk.periods, ...quarterSpans(chunk)];
+function wholeOf(spans: readonly Span[]): Span {
   return {
     fromSec: Math.min(...spans.map(({ fromSec }) => fromSec)),
     toSec: Math.max(...spans.map(({ toSec }) => toSec)),

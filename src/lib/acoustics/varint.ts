@@ -16,6 +16,12 @@ export function appendVarint(bytes: number[], value: number): void {
 
 /** Reads the varint at `reader.at` and steps past it. @throws RangeError when the bytes end within it or it is too long. */
 export function readVarint(reader: VarintReader): number {
+  const only = reader.bytes[reader.at];
+  // Nearly all take one byte.
+  if (only !== undefined && only < 0x80) {
+    reader.at += 1;
+    return only;
+  }
   let value = 0;
   for (let scale = 1; scale <= Number.MAX_SAFE_INTEGER; scale *= 0x80) {
     const byte = reader.bytes[reader.at];

@@ -1,5 +1,5 @@
 import { type Connection } from '#db/queries/connection';
-import { selectDayPeriods, type DayPeriod } from '#db/queries/dayPeriods';
+import { eachDayPeriod } from '#db/queries/dayPeriods';
 import { PeriodAccumulator } from '#lib/acoustics/periodStatistics';
 import { QUARTER_SEC, quarterAt } from '#lib/time/quarters';
 import { currentQuarters } from './currentQuarters';
@@ -23,25 +23,24 @@ export async function currentSums(
   const { id } = source.station;
   // Marks are read before rows: what is recomputed in between is then counted anew, never missed.
   const dirty = await dirtySpans(id, period, conn);
-  const rows = disjoint(await selectDayPeriods(id, period.fromSec, period.toSec, options, conn), dirty);
-  for (const row of rows) whole.merge(row);
-  for (const rest of withoutSpans(period, rows)) {
+  const counted: Span[] = [];
+  let countedToSec = -Infinity;
+  for await (const rows of eachDayPeriod(id, period, options, conn)) {
+    for (const { fromSec, toSec, sums } of rows) {
+      // Rows may overlap where a network's zone has changed.
+      if (fromSec < countedToSec || overlapsAny(dirty, fromSec, toSec)) continue;
+      whole.merge({ sums });
+      counted.push({ fromSec, toSec });
+      countedToSec = toSec;
+    }
+  }
+  for (const rest of withoutSpans(period, counted)) {
     const part = options.bandClasses
       ? await sumIntervals(source, rest, options, conn)
       : await sumQuarters(source, rest, conn);
     whole.merge(part);
   }
   return whole;
-}
-
-/** Rows that nothing dirty touches and that do not overlap (they may, where a network's zone has changed). */
-function disjoint(rows: readonly DayPeriod[], dirty: readonly Span[]): DayPeriod[] {
-  let endSec = -Infinity;
-  return rows.filter((row) => {
-    if (row.fromSec < endSec || overlapsAny(dirty, row.fromSec, row.toSec)) return false;
-    endSec = row.toSec;
-    return true;
-  });
 }
 
 async function sumQuarters(source: LevelSource, span: Span, conn: Connection): Promise<PeriodAccumulator> {

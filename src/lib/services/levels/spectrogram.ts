@@ -9,7 +9,7 @@ import { planColumns } from './columnPlan';
 import { emptyColumns, type Columns } from './columns';
 import { currentQuarters } from './currentQuarters';
 import { fillFromIntervals } from './intervalColumns';
-import { judgementOf, MOST_INTERVALS, type LevelSource } from './intervalSums';
+import { judgementOf, type LevelSource } from './intervalSums';
 import { fillFromQuarters } from './quarterColumns';
 import { type Span } from './spans';
 
@@ -24,8 +24,10 @@ export interface SpectrogramQuery extends Span {
   timeline?: NetworkSettings[];
 }
 
-/** Quarter-hours that are held in memory at once: a year. */
-const MOST_QUARTERS = 35_136;
+/** Intervals that are held in memory at once: more of them outlive a young generation, and collecting them takes most of the time. */
+const MOST_INTERVALS = 6000;
+/** Quarter-hours that are held in memory at once: two months. */
+const MOST_QUARTERS = 6000;
 
 /** A station's levels over time in equal steps, of the station's bands. */
 export async function spectrogram(
@@ -62,8 +64,8 @@ export async function spectrogram(
 
 async function readIntervals(source: LevelSource, columns: Columns, conn: Connection): Promise<void> {
   const { station } = source;
+  const judgement = await judgementOf(source, spanOf(columns), conn);
   for (const part of partsOf(columns, MOST_INTERVALS * station.intervalSec)) {
-    const judgement = await judgementOf(source, part, conn);
     const intervals = await selectIntervals(station.id, part.fromSec, part.toSec, conn);
     fillFromIntervals(columns, intervals, part, judgement);
   }
@@ -75,13 +77,18 @@ async function readQuarters(source: LevelSource, columns: Columns, conn: Connect
   }
 }
 
+function spanOf({ plan }: Columns): Span {
+  return { fromSec: plan.fromSec, toSec: plan.fromSec + plan.count * plan.stepSec };
+}
+
 /** The columns' time in parts of whole columns that last about `mostSec`. */
-function partsOf({ plan }: Columns, mostSec: number): Span[] {
-  const partSec = Math.max(1, Math.floor(mostSec / plan.stepSec)) * plan.stepSec;
-  const endSec = plan.fromSec + plan.count * plan.stepSec;
+function partsOf(columns: Columns, mostSec: number): Span[] {
+  const { stepSec } = columns.plan;
+  const partSec = Math.max(1, Math.floor(mostSec / stepSec)) * stepSec;
+  const whole = spanOf(columns);
   const parts: Span[] = [];
-  for (let fromSec = plan.fromSec; fromSec < endSec; fromSec += partSec) {
-    parts.push({ fromSec, toSec: Math.min(fromSec + partSec, endSec) });
+  for (let { fromSec } = whole; fromSec < whole.toSec; fromSec += partSec) {
+    parts.push({ fromSec, toSec: Math.min(fromSec + partSec, whole.toSec) });
   }
   return parts;
 }
