@@ -16,11 +16,13 @@ export function groupsOf(exclusions: readonly Exclusion[]): ExclusionGroup[] {
     const known = exclusion.act === null ? undefined : ofAct.get(exclusion.act);
     const group = known ?? { first: exclusion, members: [], standing: [] };
     group.members.push(exclusion);
-    if (exclusion.withdrawal === null) group.standing.push(exclusion);
     if (known) continue;
     groups.push(group);
     if (exclusion.act !== null) ofAct.set(exclusion.act, group);
   }
-  for (const { members } of groups) members.sort((a, b) => a.station.localeCompare(b.station, 'en'));
+  for (const group of groups) {
+    group.members.sort((a, b) => a.station.localeCompare(b.station, 'en'));
+    group.standing = group.members.filter(({ withdrawal }) => withdrawal === null);
+  }
   return groups;
 }

@@ -3,34 +3,39 @@ import { formatInstantUtc } from '#lib/contracts/common';
 import { bulkExclusionSchema, type BulkExclusion } from '#lib/contracts/exclusions';
 import { type FormValues } from '#lib/http/forms';
 import { invalidFields } from '#lib/http/problem';
+import { type FieldProblem } from '#lib/services/outcome';
 import { parseUrlInstant } from '#lib/time/urlPeriod';
 
 /** What was typed into the form of an exclusion. @throws {Problem} with the fields to put right. */
 export function typedExclusion({ text, all }: FormValues, zone: string): BulkExclusion {
+  const stations = text['scope'] === 'all' ? null : all('stations');
+  const from = parseUrlInstant(text['from'] ?? '', zone);
+  const to = parseUrlInstant(text['to'] ?? '', zone);
+  const reason = reasonOf(text);
+  const problems = [
+    stations?.length === 0 && { field: 'stations', message: 'choose at least one' },
+    from === null && { field: 'from', message: 'give the beginning as date and time of day' },
+    to === null && { field: 'to', message: 'give the end as date and time of day' },
+    'message' in reason && reason,
+  ].filter((problem) => problem !== false && problem !== undefined);
+  if (problems.length > 0 || from === null || to === null || 'message' in reason) {
+    throw invalidFields(problems);
+  }
   return bulkExclusionSchema.parse({
-    stations: text['scope'] === 'all' ? null : all('stations'),
-    from: instantOf(text, 'from', 'the beginning', zone),
-    to: instantOf(text, 'to', 'the end', zone),
-    reason: reasonOf(text),
+    stations,
+    from: formatInstantUtc(from),
+    to: formatInstantUtc(to),
+    reason: reason.words,
   });
 }
 
-function instantOf(text: FormValues['text'], field: 'from' | 'to', what: string, zone: string): string {
-  const sec = parseUrlInstant(text[field] ?? '', zone);
-  if (sec === null) throw invalidFields([{ field, message: `give ${what} as date and time of day` }]);
-  return formatInstantUtc(sec);
-}
-
-function reasonOf(text: FormValues['text']): string {
-  const kind = text['kind'] ?? '';
-  if (!isExclusionReason(kind)) throw invalidFields([{ field: 'kind', message: 'choose one of the list' }]);
-  const detail = text['detail'] ?? '';
+/** The reason as it is kept, or what is wrong with it. */
+function reasonOf(text: FormValues['text']): { words: string } | FieldProblem {
+  const [kind, detail] = [text['kind'] ?? '', text['detail'] ?? ''];
+  if (!isExclusionReason(kind)) return { field: 'kind', message: 'choose one of the list' };
   if (detail.length > MOST_DETAIL_CHARACTERS) {
-    const message = `must have at most ${MOST_DETAIL_CHARACTERS} characters`;
-    throw invalidFields([{ field: 'detail', message }]);
+    return { field: 'detail', message: `must have at most ${MOST_DETAIL_CHARACTERS} characters` };
   }
-  if (kind === 'other' && detail === '') {
-    throw invalidFields([{ field: 'detail', message: 'say what it was' }]);
-  }
-  return reasonWords(kind, detail);
+  if (kind === 'other' && detail === '') return { field: 'detail', message: 'say what it was' };
+  return { words: reasonWords(kind, detail) };
 }
