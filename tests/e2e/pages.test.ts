@@ -26,6 +26,7 @@ const ACCESS: Record<string, Access> = {
   '/n/[network]/activities/[id]': 'members',
   '/n/[network]/activities/compare': 'members',
   '/n/[network]/activities/new': 'operator',
+  '/design': 'administrator',
   '/n/[network]/complaints': 'members',
   '/n/[network]/complaints/[reference]': 'members',
   '/n/[network]/complaints/form': 'liaison',
