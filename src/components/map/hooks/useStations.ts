@@ -6,7 +6,7 @@ import { withLive } from '../model/withLive';
 
 const EVERY_MS = 5000;
 /** While levels are told as they arrive, only what else may have changed is asked for. */
-const EVERY_WHILE_LIVE_MS = 30_000;
+const EVERY_WHILE_LIVE_MS = 15_000;
 
 interface Answer {
   items: Station[];

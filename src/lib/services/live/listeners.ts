@@ -13,7 +13,7 @@ export interface Listener {
   end: () => void;
 }
 
-export const MOST_LISTENERS = 200;
+const MOST_LISTENERS = 200;
 export const MOST_LISTENERS_OF_ONE = 10;
 const EVERY_MS = 1000;
 
