@@ -1,6 +1,6 @@
-import { inTransaction, pool } from '#db/queries/connection';
+import { pool } from '#db/queries/connection';
 import { INTERVAL_COLUMNS } from '#db/queries/intervalRows';
-import { markMeasuredQuarters } from '#db/queries/quarterHours';
+import { markQuarterHours } from '#db/queries/quarterHours';
 import { type StationRow } from '#db/queries/stations';
 import { aggregateAll } from '#ingest/aggregate/aggregate';
 import { spectrogram } from '#lib/services/levels/spectrogram';
@@ -53,7 +53,7 @@ await withOwnSchema(async () => {
   await addCopies(station, 92, 'FURTHER');
   const many = await measure(station, { month });
   note('statistics of a month, 100 stations', many['month'], '');
-  printTable(['what', '÷ R', 'ms', 'R ms', 'target'], rows);
+  printTable(['what', '÷ R', 'CPU ÷ CPU of R', 'ms', 'R ms', 'target'], rows);
   const growth = (of?: Ratio) => digits((of?.ratio ?? NaN) / (few['month']?.ratio ?? NaN));
   printTable(
     ['what', 'measured', 'target'],
@@ -67,10 +67,18 @@ await withOwnSchema(async () => {
   );
 });
 
+/** Medians of one work, by the clock and by processor time of this process alone. */
 interface Ratio {
   ratio: number;
+  cpuRatio: number;
   ms: number;
   againstMs: number;
+}
+
+/** What every round of one work took. */
+interface Taken {
+  ms: number[];
+  cpuMs: number[];
 }
 
 /** Every work and R, turn by turn, after once for warmth. */
@@ -79,25 +87,36 @@ async function measure(
   works: Record<string, Work>,
   rounds = ROUNDS,
 ): Promise<Record<string, Ratio>> {
-  const fetchMs: number[] = [];
-  const times = Object.entries(works).map(([name, work]) => ({ name, work, ms: [] as number[] }));
+  const fetching: Taken = { ms: [], cpuMs: [] };
+  const times = Object.entries(works).map(([name, work]) => ({ name, work, ms: [], cpuMs: [] }));
   for (let round = -1; round < rounds; round += 1) {
-    const tookMs = await msOf(() => fetchMonth(station));
-    if (round >= 0) fetchMs.push(tookMs);
-    for (const { work, ms } of times) {
-      const workMs = await msOf(work);
-      if (round >= 0) ms.push(workMs);
-    }
+    await take(() => fetchMonth(station), fetching, round);
+    for (const taken of times) await take(taken.work, taken, round);
   }
-  const againstMs = median(fetchMs);
-  return Object.fromEntries(
-    times.map(({ name, ms }) => [name, { ratio: median(ms) / againstMs, ms: median(ms), againstMs }]),
-  );
+  return Object.fromEntries(times.map(({ name, ...taken }) => [name, ratioOf(taken, fetching)]));
+}
+
+async function take(work: Work, into: Taken, round: number): Promise<void> {
+  const before = process.cpuUsage();
+  const tookMs = await msOf(work);
+  const { user, system } = process.cpuUsage(before);
+  if (round < 0) return;
+  into.ms.push(tookMs);
+  into.cpuMs.push((user + system) / 1000);
+}
+
+function ratioOf({ ms, cpuMs }: Taken, against: Taken): Ratio {
+  return {
+    ratio: median(ms) / median(against.ms),
+    cpuRatio: median(cpuMs) / median(against.cpuMs),
+    ms: median(ms),
+    againstMs: median(against.ms),
+  };
 }
 
 function note(what: string, measured: Ratio | undefined, target: string): void {
-  const { ratio = NaN, ms = NaN, againstMs = NaN } = measured ?? {};
-  rows.push([what, digits(ratio), digits(ms), digits(againstMs), target]);
+  const { ratio = NaN, cpuRatio = NaN, ms = NaN, againstMs = NaN } = measured ?? {};
+  rows.push([what, ...[ratio, cpuRatio, ms, againstMs].map(digits), target]);
 }
 
 /** R. */
@@ -111,6 +130,6 @@ async function fetchMonth({ id }: StationRow): Promise<void> {
 }
 
 async function recompute({ id }: StationRow): Promise<void> {
-  await inTransaction((transaction) => markMeasuredQuarters(id, transaction));
+  await markQuarterHours(id, MONTH.fromSec, MONTH.toSec, pool());
   await aggregateAll(async () => undefined);
 }

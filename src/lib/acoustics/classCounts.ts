@@ -48,7 +48,7 @@ export class LevelClassCounts {
     }
     if (sec === 0) return;
     this.#read();
-    this.#cover(tenths);
+    if (tenths < this.#firstTenths || tenths >= this.#firstTenths + this.#secs.length) this.#cover(tenths);
     const at = tenths - this.#firstTenths;
     this.#secs[at] = (this.#secs[at] ?? 0) + sec;
     this.#totalSec += sec;
@@ -188,8 +188,10 @@ export class LevelClassCounts {
     const end = first + this.#secs.length;
     if (first <= tenths && tenths < end) return;
     const isEmpty = this.#secs.length === 0;
-    const from = isEmpty || tenths < first ? Math.max(LOWEST_TENTHS, tenths - GROWTH_CLASSES) : first;
-    const to = isEmpty || tenths >= end ? Math.min(HIGHEST_TENTHS, tenths + GROWTH_CLASSES) + 1 : end;
+    // Twice as long at least, because every new array costs more than a day's samples in it.
+    const growth = Math.max(GROWTH_CLASSES, this.#secs.length);
+    const from = isEmpty || tenths < first ? Math.max(LOWEST_TENTHS, tenths - growth) : first;
+    const to = isEmpty || tenths >= end ? Math.min(HIGHEST_TENTHS, tenths + growth) + 1 : end;
     const grown = new Float64Array(to - from);
     grown.set(this.#secs, isEmpty ? 0 : first - from);
     this.#secs = grown;

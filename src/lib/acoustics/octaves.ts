@@ -61,6 +61,9 @@ function sumOfThirdsDb(levelsDb: readonly (number | null)[]): number | null {
 /** Energies of octaves by `octaveSlot`; NaN where a third is missing. A buffer that is filled again for each interval. */
 export type OctaveEnergies = Float64Array;
 
+/** Filled again for each interval, as `into` is. */
+const thirdsSeen = new Uint8Array(OCTAVE_SLOTS);
+
 /** An empty buffer for `octaveEnergiesOfThirds`. */
 export function octaveEnergyBuffer(): OctaveEnergies {
   return new Float64Array(OCTAVE_SLOTS);
@@ -75,7 +78,7 @@ export function octaveEnergiesOfThirds(
   thirdIndices: Int8Array,
   into: OctaveEnergies,
 ): void {
-  const thirdsSeen = new Uint8Array(OCTAVE_SLOTS);
+  thirdsSeen.fill(0);
   into.fill(0);
   for (let i = 0; i < levelsCentiDb.length; i += 1) {
     const centiDb = levelsCentiDb[i] ?? NO_LEVEL_CENTI_DB;
