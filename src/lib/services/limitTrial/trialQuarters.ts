@@ -1,5 +1,5 @@
 import type { Connection } from '#db/queries/connection';
-import { selectQuarterEnergies } from '#db/queries/quarterEnergies';
+import { selectQuarterEnergies, type QuarterEnergy } from '#db/queries/quarterEnergies';
 import { emptySums } from '#lib/acoustics/periodSums';
 import { currentQuarters } from '#lib/services/levels/currentQuarters';
 import { dirtySpans } from '#lib/services/levels/dirtySpans';
@@ -18,7 +18,6 @@ export interface TrialQuarter {
 const BANDS_AT_ONCE_SEC = 31 * 86_400;
 /** Shared by every quarter-hour that was read without bands; nobody writes to them. */
 const { bandFraction, isBandFractionMixed, bandEnergySec, bandValidSec } = emptySums({ bandClasses: false });
-const NO_BANDS = { bandFraction, isBandFractionMixed, bandEnergySec, bandValidSec };
 
 /**
  * Quarter-hours of a station in `fromSec <= t < toSec` (whole quarter-hours), ascending and current. Without bands a year takes
@@ -46,9 +45,8 @@ async function energiesOf(source: LevelSource, span: Span, conn: Connection): Pr
   // Marks are read before rows: what is recomputed in between is then made from its intervals, never missed.
   const dirty = await dirtySpans(id, span, conn);
   const rows = await selectQuarterEnergies(id, span.fromSec, span.toSec, conn);
-  const found = rows
-    .filter(({ startSec }) => !overlapsAny(dirty, startSec, startSec + QUARTER_SEC))
-    .map<TrialQuarter>(({ startSec, ...sums }) => ({ startSec, sums: { ...sums, ...NO_BANDS } }));
+  const isCurrent = ({ startSec }: QuarterEnergy) => !overlapsAny(dirty, startSec, startSec + QUARTER_SEC);
+  const found = (dirty.length === 0 ? rows : rows.filter(isCurrent)).map(quarterOfEnergy);
   if (dirty.length === 0) return found;
   for (const part of dirty) {
     for (const { startSec, sums } of await currentQuarters(source, part, { bands: false }, conn)) {
@@ -56,4 +54,18 @@ async function energiesOf(source: LevelSource, span: Span, conn: Connection): Pr
     }
   }
   return found.sort((a, b) => a.startSec - b.startSec);
+}
+
+/** Field by field: a year of stations makes hundreds of thousands of them. */
+function quarterOfEnergy({ startSec, validSec, aEnergySec, lafmaxCentiDb }: QuarterEnergy): TrialQuarter {
+  const sums = {
+    validSec,
+    aEnergySec,
+    lafmaxCentiDb,
+    bandFraction,
+    isBandFractionMixed,
+    bandEnergySec,
+    bandValidSec,
+  };
+  return { startSec, sums };
 }

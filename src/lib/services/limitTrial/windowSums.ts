@@ -17,9 +17,9 @@ export class WindowSums {
     while ((this.quarters[this.#next]?.startSec ?? Infinity) < startSec) this.#next += 1;
     let end = this.#next;
     while ((this.quarters[end]?.startSec ?? Infinity) + QUARTER_SEC <= endSec) end += 1;
-    const [first, second] = this.quarters.slice(this.#next, Math.min(end, this.#next + 2));
-    if (!first) return NOTHING;
-    return second ? sumOf(this.quarters.slice(this.#next, end)) : first.sums;
+    // Most windows of a year are single quarter-hours: these are taken as they are.
+    if (end - this.#next > 1) return sumOf(this.quarters.slice(this.#next, end));
+    return (end > this.#next && this.quarters[this.#next]?.sums) || NOTHING;
   }
 }
 
