@@ -2,7 +2,7 @@ import { z } from 'zod';
 import { localDate } from '#lib/contracts/common';
 import { newLimitSchema, type Limit } from '#lib/contracts/limits';
 import { MOST_TRIAL_DAYS, type LimitTrialQuery } from '#lib/contracts/limitTrial';
-import { addDays, localDateAt } from '#lib/time/zone';
+import { addDays, isLocalDate, localDateAt } from '#lib/time/zone';
 import { limitOfForm, limitValues, NEW_LIMIT_VALUES, type LimitValues } from './_limitForm';
 
 const DAYS_AT_FIRST = 30;
