@@ -11,6 +11,7 @@ const DAYS_AT_FIRST = 30;
 const datesSchema = z
   .object({ since: localDate, until: localDate })
   .superRefine(({ since, until }, context) => {
+    if (!isLocalDate(since) || !isLocalDate(until)) return;
     const message =
       until < since
         ? 'must not be before the first date'
