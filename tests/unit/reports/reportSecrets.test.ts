@@ -1,8 +1,13 @@
-import { expect, test } from 'vitest';
+import { beforeAll, expect, test } from 'vitest';
 import { attachmentTypeOf } from '#lib/services/reports/attachment';
 import { addressDigestOf, checkStamp, privateKeyOf, renewedStamp } from '#lib/services/reports/reportSecrets';
 
 const NOW = 1_800_000_000;
+
+beforeAll(() => {
+  process.env['BITTERN_DB_PASSWORD'] ??= 'unused';
+  process.env['BITTERN_PERSONAL_DATA_KEY'] ??= 'ab'.repeat(32);
+});
 
 test('a stamp holds for its network, after a person’s time and for half a day', () => {
   const stamp = renewedStamp('', 7, NOW);
