@@ -1,9 +1,10 @@
 import fc from 'fast-check';
-import { afterAll, expect, test } from 'vitest';
-import { closeDb, db } from '#db/client';
+import { expect, test } from 'vitest';
+import { db } from '#db/client';
 import { LevelClassCounts } from '#lib/acoustics/classCounts';
+import { useFreshSchema } from '../integration/support/freshSchema';
 
-afterAll(closeDb);
+useFreshSchema();
 
 const PERCENTS = [1, 5, 10, 50, 90, 95, 99];
 
