@@ -164,6 +164,7 @@ test.each([
 ] as const)(
   'no accessibility violation and nothing sideways: %s, %i px',
   async (theme, width) => {
+    const found: string[] = [];
     for (const [email, who] of [
       ['operator@merrow.example', (access: Access) => access !== 'administrator' && access !== 'liaison'],
       ['admin@merrow.example', (access: Access) => access === 'administrator'],
@@ -176,15 +177,13 @@ test.each([
         const { violations } = await new AxeBuilder({ page })
           .withTags(['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa'])
           .analyze();
-        expect(
-          violations.map(({ id, nodes }) => `${id}: ${nodes[0]?.html}`),
-          pattern,
-        ).toEqual([]);
+        found.push(...violations.map(({ id, nodes }) => `${pattern} ${id}: ${nodes[0]?.html}`));
         const overflowPx = await page.evaluate(() => document.documentElement.scrollWidth - innerWidth);
-        expect(overflowPx, pattern).toBeLessThanOrEqual(0);
+        if (overflowPx > 0) found.push(`${pattern} is ${overflowPx} px too wide`);
       }
       await context.close();
     }
+    expect(found).toEqual([]);
   },
-  400_000,
+  900_000,
 );
