@@ -108,6 +108,7 @@ test('without WebGL the map is a plan with the same stations', async () => {
 
 test.each([
   '/n/merrow/stations?from=yesterday&to=never',
+  '/n/merrow/exceedances?from=yesterday&to=never',
   '/n/merrow/stations/MER-02?from=2026-03-01T00:00&to=2020-01-01T00:00',
   '/n/merrow/stations/NO-SUCH',
   '/n/merrow/nothing',
