@@ -1,29 +1,15 @@
-import type { BandFraction } from '#lib/acoustics/bands';
 import type { Cause } from '#lib/contracts/exceedances';
 import { pool, type Connection } from './connection';
+import type { ExceedanceRecord } from './exceedanceRecords';
 
 /** An exceedance with its station, the limit version that it is judged by, and who acknowledged it. */
-export interface ExceedanceRow {
-  id: number;
-  stationId: number;
+export interface ExceedanceRow extends ExceedanceRecord {
   stationCode: string;
   stationName: string;
   limitId: number;
   limitVersionId: number;
   /** Number of that version within its limit. */
   limitVersion: number;
-  limitName: string;
-  metric: 'LAeq' | 'LAFmax' | 'bandLeq';
-  averaging: '15min' | '1h' | 'day' | 'evening' | 'night';
-  bandFraction: BandFraction | null;
-  bandIndex: number | null;
-  startsAtSec: number;
-  endsAtSec: number;
-  levelDb: number;
-  thresholdTenths: number;
-  /** 0–1. */
-  coverage: number;
-  state: 'standing' | 'lifted';
   /** How often what was found has changed since. */
   revision: number;
   detectedAt: Date;
