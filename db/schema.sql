@@ -393,6 +393,25 @@ CREATE TABLE `import_refusals` (
   KEY `import_refusals_import` (`import_id`,`id`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
+CREATE TABLE `import_uploads` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `network_id` int(10) unsigned NOT NULL,
+  `station_id` int(10) unsigned NOT NULL,
+  `file_key` char(36) NOT NULL COMMENT 'name of the file of its parts in the data directory',
+  `file_name` varchar(160) NOT NULL COMMENT 'as the person called it',
+  `file_bytes` bigint(20) unsigned NOT NULL COMMENT 'as announced',
+  `received_bytes` bigint(20) unsigned NOT NULL DEFAULT 0 COMMENT 'durable on disk, from the beginning',
+  `file_digest` binary(32) DEFAULT NULL COMMENT 'SHA-256 of the unpacked file, where the sender announced it',
+  `mark` varchar(200) DEFAULT NULL COMMENT 'by which the sender finds the upload again',
+  `created_by` char(36) NOT NULL,
+  `created_at` datetime(3) NOT NULL,
+  `touched_at` datetime(3) NOT NULL,
+  `import_id` int(10) unsigned DEFAULT NULL COMMENT 'what it became; null: not finished',
+  PRIMARY KEY (`id`),
+  KEY `import_uploads_network` (`network_id`,`import_id`,`id`),
+  KEY `import_uploads_touched` (`touched_at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
 CREATE TABLE `imports` (
   `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
   `network_id` int(10) unsigned NOT NULL,

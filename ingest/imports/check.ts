@@ -26,7 +26,9 @@ const MOST_KEPT = 10_000;
  * @returns how many rows it did.
  */
 export async function checkImport(row: ImportRow, isOver: () => boolean): Promise<number> {
-  if (row.bytesDone === 0) await clearStaged(row.id);
+  // Another worker may have lost the lock of this job without knowing, and have put the first chunk aside meanwhile.
+  const isAtBeginning = ({ state, bytesDone }: ImportRow) => state === 'checking' && bytesDone === 0;
+  if (isAtBeginning(row)) await clearStaged(row.id, isAtBeginning);
   const layout = await layoutFor(row);
   const format = layout.mapping;
   let done = 0;

@@ -1,3 +1,4 @@
+import type { Knex } from 'knex';
 import { appendAudit } from '#db/queries/audit';
 import { inTransaction } from '#db/queries/connection';
 import { findImport, insertImport, lockImport } from '#db/queries/imports';
@@ -6,6 +7,7 @@ import { type BandFraction } from '#lib/acoustics/bands';
 import { type Import, type ImportMapping } from '#lib/contracts/imports';
 import { importJson } from '#lib/services/imports/importJson';
 import { EMPTY_REPORT } from '#lib/services/imports/report';
+import { UnusableFile } from '#lib/services/imports/unusable';
 import { keepFile, readHead, removeFile } from './files';
 import { layoutOf } from './layout';
 import { sniff, type Head, type Shape } from './sniff';
@@ -19,6 +21,10 @@ export interface Upload {
   fileName: string;
   /** Zone of the network, for times without an offset. */
   zone: string;
+  /** SHA-256 that the unpacked file must have; left out or null: any. */
+  digest?: Buffer | null;
+  /** Done in the transaction that adds the import. */
+  alsoDo?: (importId: number, transaction: Knex.Transaction) => Promise<void>;
 }
 
 /**
@@ -29,8 +35,9 @@ export interface Upload {
 export async function openImport(upload: Upload, source: AsyncIterable<Uint8Array>): Promise<Import> {
   const file = await keepFile(source);
   try {
-    const { station, networkId, userId } = upload;
-    const fileName = nameOf(upload.fileName);
+    const { station, networkId, userId, digest, alsoDo } = upload;
+    if (digest && !digest.equals(file.digest)) throw differs();
+    const fileName = shownName(upload.fileName);
     const mapping = await ownMappingOf(file.key, upload);
     return await inTransaction(async (transaction) => {
       const id = await insertImport(
@@ -58,12 +65,20 @@ export async function openImport(upload: Upload, source: AsyncIterable<Uint8Arra
         },
         transaction,
       );
+      await alsoDo?.(id, transaction);
       return importJson(await lockImport(id, transaction));
     });
   } catch (error) {
     await removeFile(file.key);
     throw error;
   }
+}
+
+function differs(): UnusableFile {
+  return new UnusableFile(
+    'unreadable',
+    'The file that arrived has another SHA-256 than was announced. Nothing of it was kept; send it anew.',
+  );
 }
 
 /** The mapping of a file in the contract's own format that fits the station; null for any other file. */
@@ -91,7 +106,7 @@ export async function importHead(
 }
 
 /** A file's name as it is shown: without a path, not too long. */
-function nameOf(given: string): string {
+export function shownName(given: string): string {
   const name = given
     .replace(/^.*[\\/]/, '')
     .replace(/\p{Cc}/gu, '')

@@ -182,7 +182,8 @@ registerRoute({
   summary: 'Upload a CSV file of intervals for a station (operator); nothing is stored before you say so',
   description:
     'A file in the columns that `…/intervals.csv` writes is checked at once; any other waits for its mapping. The check says ' +
-    'what would be accepted, known, conflicting or refused.',
+    'what would be accepted, known, conflicting or refused. Gzip is recognised by its first bytes; the limit of size holds for ' +
+    'what it unpacks to. For a large file or a poor line see `…/imports/uploads`.',
   request: {
     params: z.object({ network }),
     query: z.object({ station: z.string(), name: z.string().optional().describe('What the file is called') }),

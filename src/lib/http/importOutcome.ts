@@ -22,13 +22,23 @@ export function importFrom(
 /** 404 for an import that the network does not have. */
 export const unknownImport = () => notFound('The network has no import with this number.');
 
+/** 404 for an upload in parts that the network does not have. */
+export const unknownUpload = () =>
+  notFound('The network has no such upload; what nobody finishes is removed after three days.');
+
 /** The number of an import in an address; 0, which no import has, for anything else. */
 export function importIdOf(text: string | undefined): number {
   return /^\d{1,9}$/.test(text ?? '') ? Number(text) : 0;
 }
 
+const NO_ROOM = new Set(['ENOSPC', 'EDQUOT']);
+
 /** A file that is not kept, as a refusal; any other error as it is. */
 export function uploadProblem(error: unknown): unknown {
+  if (NO_ROOM.has((error as { code?: string }).code ?? '')) {
+    const detail = 'The disk is full here. Nothing was kept; tell whoever runs this server.';
+    return new Problem(503, 'no-room', 'No room for the file', detail, { headers: { 'Retry-After': '300' } });
+  }
   if (!(error instanceof UnusableFile)) return error;
   return error.kind === 'too-large'
     ? new Problem(413, 'too-large', 'Too large', error.message)
