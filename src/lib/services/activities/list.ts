@@ -8,7 +8,7 @@ import {
 import { SUGGESTED_ACTIVITIES, type Activity } from '#lib/contracts/activities';
 import { formatInstantUtc } from '#lib/contracts/common';
 import { type Span } from '../levels/spans';
-import { csvText } from '../summaries/csvText';
+import { csvText } from '#lib/format/csvText';
 import { activityJson } from './activityJson';
 
 export interface ActivityPageQuery extends Omit<ActivityListQuery, 'after'> {

@@ -1,5 +1,5 @@
 import { type AuditFilter } from '#db/queries/auditLog';
-import { csvText } from '../summaries/csvText';
+import { csvText } from '#lib/format/csvText';
 import { auditTrail, type Act } from './trail';
 
 /** Acts in one file at most; the newest of those asked for. */

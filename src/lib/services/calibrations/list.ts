@@ -1,6 +1,6 @@
 import { findCalibration, listCalibrations } from '#db/queries/calibrations';
 import { type Calibration } from '#lib/contracts/calibrations';
-import { csvText } from '../summaries/csvText';
+import { csvText } from '#lib/format/csvText';
 import { calibrationJson } from './calibrationJson';
 import { readCertificate } from './certificate';
 

@@ -1,6 +1,6 @@
 import { listExceedances, type ExceedanceFilter } from '#db/queries/exceedances';
 import type { Exceedance } from '#lib/contracts/exceedances';
-import { csvText, type Cell } from '../summaries/csvText';
+import { csvText, type Cell } from '#lib/format/csvText';
 import { exceedanceView } from './view';
 
 /** Most rows of one file. */

@@ -1,6 +1,6 @@
 import { listExclusions, type ExclusionListQuery } from '#db/queries/exclusions';
 import { type Exclusion } from '#lib/contracts/exclusions';
-import { csvText, type Cell } from '../summaries/csvText';
+import { csvText, type Cell } from '#lib/format/csvText';
 import { exclusionJson } from './exclusionJson';
 
 /** Most rows of one file. */

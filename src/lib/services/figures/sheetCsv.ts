@@ -1,5 +1,5 @@
 import { type BandRow, type FigureSheet, type PooledRow } from '#lib/contracts/figureSheet';
-import { csvText, type Cell } from '../summaries/csvText';
+import { csvText, type Cell } from '#lib/format/csvText';
 
 const HEADER = ['section', 'of', 'figure', 'value', 'unit', 'coverage', 'remark'] as const;
 

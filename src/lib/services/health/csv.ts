@@ -1,5 +1,5 @@
 import { type CoverageDay } from '#lib/contracts/health';
-import { csvText } from '../summaries/csvText';
+import { csvText } from '#lib/format/csvText';
 import { type NetworkHealth } from './now';
 
 /** How the stations are now, one line a station. */

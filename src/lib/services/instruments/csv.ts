@@ -2,7 +2,7 @@ import { listDeployments } from '#db/queries/deployments';
 import { listInstruments } from '#db/queries/instruments';
 import { formatInstantUtc } from '#lib/contracts/common';
 import { groupBy } from '../groupBy';
-import { csvText, type Cell } from '../summaries/csvText';
+import { csvText, type Cell } from '#lib/format/csvText';
 
 const HEADER = [
   'serialNumber',

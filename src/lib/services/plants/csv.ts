@@ -1,4 +1,4 @@
-import { csvText } from '../summaries/csvText';
+import { csvText } from '#lib/format/csvText';
 import { plantsOf } from './list';
 
 const COLUMNS = [

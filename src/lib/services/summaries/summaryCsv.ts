@@ -6,7 +6,7 @@ import type {
   SummaryExceedance,
   SummaryStation,
 } from '#lib/contracts/summaries';
-import { csvText, type Cell } from './csvText';
+import { csvText, type Cell } from '#lib/format/csvText';
 
 /** Columns of the long form: one figure a row. A column that a kind of record does not have is empty there. */
 export const CSV_COLUMNS = [
