@@ -8,6 +8,7 @@ import { importFiles } from './jobs/importFiles';
 import { judgeLimits } from './jobs/judgeLimits';
 import { runLoop, type LoopSettings } from './jobs/loop';
 import { remindOfCalibrations } from './jobs/remindCalibrations';
+import { shiftClocks } from './jobs/shiftClocks';
 import { sendMail } from './jobs/sendMail';
 import { runDueSlots, type SlotJob } from './jobs/slots';
 import { watchHealth } from './jobs/watchHealth';
@@ -17,6 +18,7 @@ const LOOPS: LoopSettings[] = [
   { name: 'aggregate', everySec: 15, work: aggregate },
   { name: 'judge-limits', everySec: 5, work: judgeLimits },
   { name: 'import-files', everySec: 2, work: importFiles },
+  { name: 'shift-clocks', everySec: 2, work: shiftClocks },
   { name: 'send-mail', everySec: 2, work: sendMail },
   { name: 'watch-health', everySec: 60, work: watchHealth },
 ];

@@ -191,3 +191,12 @@ export async function neededFileKeys(
     .pluck('file_key');
   return new Set(needed);
 }
+
+/** Whether an import of a station is storing intervals or taking them out. */
+export async function isImportWorking(stationId: number, conn: Connection): Promise<boolean> {
+  const row = await conn('imports')
+    .where({ station_id: stationId })
+    .whereIn('state', ['storing', 'undoing', 'redoing'])
+    .first('id');
+  return row !== undefined;
+}

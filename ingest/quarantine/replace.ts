@@ -10,10 +10,13 @@ import {
   settleQuarantined,
   stationsOfQuarantined,
 } from '#db/queries/quarantine';
+import { forgetShifted } from '#db/queries/shiftedStarts';
 import { rederiveLatest } from '#db/queries/stationLatest';
 import { parseInstant } from '#lib/contracts/common';
 import { type ReleaseOutcome } from '#lib/contracts/quarantine';
 import { quartersTouching } from '#lib/time/quarters';
+import { clockRulesFor, placesOf } from '../receive/clockRules';
+import { asSent } from '../shiftClock/asSent';
 import { keptInterval } from './keptInterval';
 import { readKept, type KeptGroup } from './readKept';
 import { lockedStation } from './releasePart';
@@ -76,29 +79,35 @@ async function displace(
 ): Promise<number | null> {
   const start: unknown = (record as { start?: unknown } | null)?.start;
   const startSec = typeof start === 'string' ? parseInstant(start) : null;
-  const stored = startSec === null ? undefined : await storedAt(stationId, startSec, transaction);
+  const stored = startSec === null ? undefined : await storedFor(stationId, startSec, transaction);
   if (!stored) return null;
+  const sent = await asSent(stationId, stored, transaction);
   const displaced = await insertSuperseded(
     stationId,
     {
       detail: `Stored until record ${byRecord} of the quarantine replaced it.`,
-      record: keptInterval(stored),
-      startSec: stored.startSec,
+      record: keptInterval(sent),
+      startSec: sent.startSec,
     },
     { by: userId, reason, receivedAt: new Date(stored.receivedAtSec * 1000) },
     transaction,
   );
   await deleteInterval(stationId, stored.startSec, transaction);
+  await forgetShifted(stationId, [stored.startSec], transaction);
   const quarters = quartersTouching(stored.startSec, stored.startSec + stored.durationSec);
   await insertDirtyMarks(stationId, quarters, transaction);
   return displaced;
 }
 
-async function storedAt(
+/** The stored interval where a record that a monitor sent with `sentSec` belongs. */
+async function storedFor(
   stationId: number,
-  startSec: number,
+  sentSec: number,
   transaction: Knex.Transaction,
 ): Promise<StoredInterval | undefined> {
+  const sent = { startSec: sentSec, durationSec: 1 };
+  const [place] = placesOf(sent, await clockRulesFor(stationId, [sent], transaction));
+  const startSec = place?.startSec ?? sentSec;
   const around = await selectIntervals(stationId, startSec, startSec + 1, transaction);
   return around.find((interval) => interval.startSec === startSec);
 }

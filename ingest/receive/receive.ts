@@ -1,9 +1,13 @@
 import type { Knex } from 'knex';
 import { bandSetOf, type BandSet } from '#db/queries/bandSets';
 import { inTransaction } from '#db/queries/connection';
+import { noteOffset } from '#db/queries/clockOffsets';
+import { noteShifted } from '#db/queries/shiftedStarts';
 import { noteClock } from '#db/queries/stationClocks';
 import { lockStation, type StationRow } from '#db/queries/stations';
 import type { Receipt } from '#lib/contracts/intervals';
+import { quarterAt } from '#lib/time/quarters';
+import { clockRulesFor, possibleStretches } from './clockRules';
 import { decide, type Decision } from './decide';
 import type { Envelope } from './envelope';
 import { keptRecord } from './keptRecord';
@@ -34,9 +38,8 @@ export async function receiveBatch(
     }));
     const kept = refused.flatMap((one) => one.kept ?? []);
     await store(station.id, decision.accepted, kept, now, transaction);
-    if (sentAtSec !== null) {
-      await noteClock(station.id, sentAtSec - now.getTime() / 1000, now, transaction);
-    }
+    await noteShifted(station.id, decision.shifted, true, transaction);
+    if (sentAtSec !== null) await noteTime(station.id, sentAtSec, now, transaction);
     return {
       accepted: decision.accepted.length,
       known: decision.knownCount,
@@ -58,15 +61,27 @@ async function decideUnderLock(
   now: Date,
   transaction: Knex.Transaction,
 ): Promise<Decision> {
-  if ('problem' in bandSet || candidates.length === 0) return { accepted: [], knownCount: 0, refused: [] };
+  if ('problem' in bandSet || candidates.length === 0) {
+    return { accepted: [], acceptedIndices: [], shifted: [], knownCount: 0, refused: [] };
+  }
   await lockStation(id, transaction);
-  const stored = await storedAround(
-    id,
-    candidates.map(({ interval }) => interval),
-    transaction,
-  );
+  const records = candidates.map(({ interval }) => interval);
+  const clock = await clockRulesFor(id, records, transaction);
+  const stored = await storedAround(id, possibleStretches(records, clock), transaction);
   const receivedAtSec = Math.floor(now.getTime() / 1000);
-  return decide(candidates, { stored, bandSet, acceptsFromSec, receivedAtSec });
+  return decide(candidates, { stored, bandSet, acceptsFromSec, receivedAtSec, clock });
+}
+
+async function noteTime(
+  stationId: number,
+  sentAtSec: number,
+  now: Date,
+  transaction: Knex.Transaction,
+): Promise<void> {
+  const nowSec = now.getTime() / 1000;
+  const aheadSec = sentAtSec - nowSec;
+  await noteClock(stationId, aheadSec, now, transaction);
+  await noteOffset(stationId, { quarterStartSec: quarterAt(nowSec), aheadSec }, transaction);
 }
 
 function inOrder(refused: Refused[]): Refused[] {

@@ -62,7 +62,7 @@ async function previewAt(
 }
 
 /** Local dates whose civil day, or whose day, evening or night, overlaps a span, ascending and without gaps. */
-function datesTouched({ fromSec, toSec }: Span, timeline: NetworkSettings[]): LocalDate[] {
+export function datesTouched({ fromSec, toSec }: Span, timeline: NetworkSettings[]): LocalDate[] {
   const dateAt = (sec: number) => localDateAt(sec, pickSettings(timeline, sec).timeZone);
   const overlaps = (other: Span) => other.fromSec < toSec && fromSec < other.toSec;
   // Where a network's zone changes, a date may lie up to a day elsewhere in time.
@@ -75,7 +75,8 @@ function datesTouched({ fromSec, toSec }: Span, timeline: NetworkSettings[]): Lo
   });
 }
 
-function figuresOf(day: DayFigures): DateFigures {
+/** Figures of a date as a preview shows them. */
+export function figuresOf(day: DayFigures): DateFigures {
   const { LAeq24h, Lday, Levening, Lnight, Lden, coverage, meetsMinimum, periods, seconds } = day;
   const ofDate = [periods.day, periods.evening, periods.night];
   return {

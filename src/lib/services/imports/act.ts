@@ -1,6 +1,8 @@
 import { appendAudit } from '#db/queries/audit';
-import { inTransaction } from '#db/queries/connection';
+import { selectStandingShifts } from '#db/queries/clockShifts';
+import { inTransaction, type Connection } from '#db/queries/connection';
 import { findImport, lockImport, updateImport, type ImportRow, type ImportState } from '#db/queries/imports';
+import { hasShiftedOfImport } from '#db/queries/shiftedStarts';
 import { type Import, type ImportAct, type ImportMapping } from '#lib/contracts/imports';
 import { importJson } from './importJson';
 import { EMPTY_REPORT } from './report';
@@ -80,6 +82,8 @@ async function change({ networkId, id, userId }: Asked, act: Act): Promise<ActOu
   return inTransaction<ActOutcome>(async (transaction) => {
     const row: ImportRow = await lockImport(id, transaction);
     if (!act.from.includes(row.state)) return { kind: 'not-now', message: act.otherwise };
+    const hindrance = await clockHindrance(row, act, transaction);
+    if (hindrance !== null) return { kind: 'not-now', message: hindrance };
     const changes = { ...act.changes, actedBy: userId, actedAt: new Date() };
     await updateImport(id, changes, transaction);
     await appendAudit(
@@ -94,4 +98,19 @@ async function change({ networkId, id, userId }: Asked, act: Act): Promise<ActOu
     );
     return { kind: 'done', import: importJson(await lockImport(id, transaction)) };
   });
+}
+
+/** Why a shift of the station's clock forbids to store or take out intervals now; null when none does. */
+async function clockHindrance(
+  { id, stationId }: ImportRow,
+  { changes: { state } }: Act,
+  transaction: Connection,
+): Promise<string | null> {
+  if (state !== 'storing' && state !== 'undoing' && state !== 'redoing') return null;
+  const shifts = await selectStandingShifts(stationId, transaction);
+  if (shifts.some((shift) => shift.state !== 'moved')) {
+    return 'Intervals of this station are being moved, because its clock was wrong. Wait until that is done.';
+  }
+  if (state !== 'undoing' || !(await hasShiftedOfImport(stationId, id, transaction))) return null;
+  return 'A shift of the station’s clock has moved intervals of this import. Reverse that shift first.';
 }

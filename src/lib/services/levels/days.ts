@@ -1,3 +1,4 @@
+import { type ClockEpisode } from '#db/queries/clockShifts';
 import { pool, type Connection } from '#db/queries/connection';
 import { listSettings, type NetworkSettings } from '#db/queries/networks';
 import { type StationRow } from '#db/queries/stations';
@@ -23,6 +24,8 @@ export interface DaysQuery {
   nowSec?: number;
   /** Figures as if these were excluded, too. */
   alsoExcluded?: readonly Span[];
+  /** Figures as if this episode of a wrong clock were moved. */
+  moved?: ClockEpisode;
 }
 
 /** A day, evening or night with its level. */
@@ -33,7 +36,7 @@ export interface PeriodLevel extends Coverage, Span {
 
 /** Figures of each local date; the night is the one that begins on it, Ldn and the civil day's figures go by the calendar. */
 export async function dayFigures(query: DaysQuery, conn: Connection = pool()): Promise<DayFigures[]> {
-  const { station, fromDate, toDate, alsoExcluded } = query;
+  const { station, fromDate, toDate, alsoExcluded, moved } = query;
   if (fromDate >= toDate) return [];
   const timeline = query.timeline ?? (await listSettings(station.networkId, conn));
   const nowSec = query.nowSec ?? Math.floor(Date.now() / 1000);
@@ -42,7 +45,7 @@ export async function dayFigures(query: DaysQuery, conn: Connection = pool()): P
     fromSec: dateSettings(fromDate, timeline).midnightSec,
     toSec: Math.max(dateSettings(toDate, timeline).midnightSec, lastNight?.toSec ?? 0),
   };
-  const source = { station, timeline, validity: 'rules', alsoExcluded } as const;
+  const source = { station, timeline, validity: 'rules', alsoExcluded, moved } as const;
   const series = await QuarterSeries.read(source, span, conn);
   const days: DayFigures[] = [];
   for (const date of datesBetween(fromDate, toDate)) {

@@ -1,3 +1,4 @@
+import { type ClockEpisode } from '#db/queries/clockShifts';
 import { type Connection } from '#db/queries/connection';
 import { selectStandingExclusions } from '#db/queries/exclusions';
 import { selectIntervals } from '#db/queries/intervals';
@@ -15,6 +16,8 @@ export interface LevelSource {
   validity: Validity;
   /** Counted as if these were excluded, too: what figures would become. Nothing is stored of them. */
   alsoExcluded?: readonly Span[];
+  /** Counted as if this episode of a wrong clock were moved. Nothing is stored of it. */
+  moved?: ClockEpisode;
 }
 
 /** Intervals that are held in memory at once: a month of minutes, half a day of seconds. */

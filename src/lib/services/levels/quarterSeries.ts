@@ -1,10 +1,12 @@
 import { type Connection } from '#db/queries/connection';
+import { type QuarterHour } from '#db/queries/quarterHours';
 import { PeriodAccumulator } from '#lib/acoustics/periodStatistics';
 import { type PeriodSums } from '#lib/acoustics/periodSums';
 import { QUARTER_SEC, quarterAt } from '#lib/time/quarters';
 import { assumedQuarters } from './assumedQuarters';
 import { currentQuarters } from './currentQuarters';
 import { sumIntervals, type LevelSource } from './intervalSums';
+import { movedQuarters } from './movedQuarters';
 import { type Span } from './spans';
 
 /**
@@ -25,11 +27,16 @@ export class QuarterSeries {
   /** Reads the quarter-hours that `span` touches. */
   static async read(source: LevelSource, span: Span, conn: Connection): Promise<QuarterSeries> {
     const whole = { fromSec: quarterAt(span.fromSec), toSec: quarterAt(span.toSec + QUARTER_SEC - 1) };
-    const rows = source.alsoExcluded
-      ? await assumedQuarters(source, whole, source.alsoExcluded, conn)
-      : await currentQuarters(source, whole, { bands: false }, conn);
+    const rows = await QuarterSeries.#rows(source, whole, conn);
     const quarters = new Map(rows.map(({ startSec, sums }) => [startSec, sums]));
     return new QuarterSeries(source, quarters, conn);
+  }
+
+  static #rows(source: LevelSource, whole: Span, conn: Connection): Promise<QuarterHour[]> {
+    const { alsoExcluded, moved } = source;
+    if (alsoExcluded) return assumedQuarters(source, whole, alsoExcluded, conn);
+    if (moved) return movedQuarters(source, whole, moved, conn);
+    return currentQuarters(source, whole, { bands: false }, conn);
   }
 
   /** Levels of a period within the series; ends within a quarter-hour are counted from intervals. */

@@ -1,3 +1,4 @@
+import { ShiftUnderWay } from '#ingest/receive/clockRules';
 import { readEnvelope, UnreadablePost } from '#ingest/receive/envelope';
 import { receiveBatch } from '#ingest/receive/receive';
 import { requireStationToken } from '#lib/auth/guards';
@@ -12,9 +13,16 @@ export const POST = route(async ({ request }) => {
   try {
     return json(await receiveBatch(station, readEnvelope(text, station.bandFraction), new Date()));
   } catch (error) {
-    throw error instanceof UnreadablePost ? problemOf(error) : error;
+    throw refusalOf(error);
   }
 });
+
+function refusalOf(error: unknown): unknown {
+  if (error instanceof UnreadablePost) return problemOf(error);
+  if (!(error instanceof ShiftUnderWay)) return error;
+  const headers = { 'Retry-After': '20' };
+  return new Problem(503, 'clock-shift-under-way', 'Not possible at the moment', error.message, { headers });
+}
 
 function problemOf({ kind, detail }: UnreadablePost): Problem {
   return kind === 'too-large'
