@@ -120,6 +120,46 @@ CREATE TABLE `calibrations` (
   KEY `calibrations_network` (`network_id`,`checked_at`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
+CREATE TABLE `clock_offsets` (
+  `station_id` int(10) unsigned NOT NULL,
+  `quarter_starts_at` int(10) unsigned NOT NULL COMMENT 'epoch seconds UTC by our clock',
+  `ahead_sec` double NOT NULL COMMENT 'greatest sentAt less our time of the quarter-hour: the post with the shortest way',
+  PRIMARY KEY (`station_id`,`quarter_starts_at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `clock_shift_starts` (
+  `station_id` int(10) unsigned NOT NULL,
+  `starts_at` int(10) unsigned NOT NULL COMMENT 'of the stored interval, as shifted',
+  `shift_id` int(10) unsigned NOT NULL,
+  `is_late` tinyint(3) unsigned NOT NULL COMMENT '1: came after the shift was made',
+  PRIMARY KEY (`station_id`,`starts_at`),
+  KEY `clock_shift_starts_shift` (`shift_id`,`starts_at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `clock_shifts` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `network_id` int(10) unsigned NOT NULL,
+  `station_id` int(10) unsigned NOT NULL,
+  `from_sec` int(10) unsigned NOT NULL COMMENT 'first start of the episode by the clock of the monitor, epoch seconds',
+  `to_sec` int(10) unsigned NOT NULL COMMENT 'exclusive',
+  `shift_sec` int(11) NOT NULL COMMENT 'added to starts of the episode',
+  `received_from_sec` int(10) unsigned NOT NULL DEFAULT 0 COMMENT 'what came before is not of the episode',
+  `reason` varchar(500) NOT NULL,
+  `state` enum('moving','moved','reversing','reversed') NOT NULL,
+  `planned_count` int(10) unsigned NOT NULL,
+  `moved_count` int(10) unsigned NOT NULL DEFAULT 0,
+  `aside_count` int(10) unsigned NOT NULL DEFAULT 0 COMMENT 'put into quarantine by the reversal',
+  `problem` varchar(300) DEFAULT NULL COMMENT 'why it was put back by itself',
+  `created_by` char(36) NOT NULL,
+  `created_at` datetime(3) NOT NULL,
+  `reversed_by` char(36) DEFAULT NULL,
+  `reversal_reason` varchar(500) DEFAULT NULL,
+  `finished_at` datetime(3) DEFAULT NULL COMMENT 'of the move, then of the reversal',
+  PRIMARY KEY (`id`),
+  KEY `clock_shifts_station` (`station_id`,`state`),
+  KEY `clock_shifts_state` (`state`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
 CREATE TABLE `complaint_additions` (
   `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
   `complaint_id` int(10) unsigned NOT NULL,
@@ -708,6 +748,15 @@ CREATE TABLE `report_forms` (
   `changed_by` char(36) NOT NULL,
   `changed_at` datetime(3) NOT NULL,
   PRIMARY KEY (`network_id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `self_checks` (
+  `station_id` int(10) unsigned NOT NULL,
+  `checked_at` int(10) unsigned NOT NULL COMMENT 'epoch seconds UTC',
+  `level_centi_db` smallint(6) NOT NULL COMMENT 'what the monitor measured of its own source',
+  `nominal_centi_db` smallint(6) NOT NULL COMMENT 'what it should have measured',
+  `received_at` int(10) unsigned NOT NULL,
+  PRIMARY KEY (`station_id`,`checked_at`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
 CREATE TABLE `sessions` (
