@@ -2,11 +2,15 @@ import { BAND_SLOTS } from '#lib/acoustics/bands';
 import { LevelClassCounts } from '#lib/acoustics/classCounts';
 import { OCTAVE_SLOTS } from '#lib/acoustics/octaves';
 import { type BandClassCounts, type PeriodSums } from '#lib/acoustics/periodSums';
+import { ByteWriter } from '#lib/acoustics/varint';
 
 /** Bytes of one band: slot (uint8), its valid seconds (uint32), its energy times seconds (float64), little endian. */
 const BAND_BYTES = 1 + 4 + 8;
 /** In place of bands: octaves and thirds both occurred, so there are no band sums. */
 const MIXED_MARK = 255;
+
+/** Distributions of 31 thirds over half a day of minutes. */
+const TYPICAL_CLASSES_BYTES = 32_768;
 
 type BandSums = Pick<PeriodSums, 'isBandFractionMixed' | 'bandEnergySec' | 'bandValidSec'>;
 
@@ -45,14 +49,18 @@ export function unpackBandEnergies(bytes: Buffer): BandSums {
 
 /** Distributions of every band, then of every octave, each as its length (uint16, little endian) and its bytes. */
 export function packBandClasses({ bands, octaves }: BandClassCounts): Buffer {
-  const parts: Uint8Array[] = [];
+  const writer = new ByteWriter();
+  writer.reserve(TYPICAL_CLASSES_BYTES);
   for (const counts of [...bands, ...octaves]) {
-    const bytes = counts.encode();
-    const length = Buffer.alloc(2);
-    length.writeUInt16LE(bytes.length);
-    parts.push(length, bytes);
+    writer.reserve(2);
+    const lengthAt = writer.length;
+    writer.length += 2;
+    counts.encodeInto(writer);
+    const length = writer.length - lengthAt - 2;
+    writer.bytes[lengthAt] = length & 0xff;
+    writer.bytes[lengthAt + 1] = length >>> 8;
   }
-  return Buffer.concat(parts);
+  return Buffer.from(writer.bytes.buffer, 0, writer.length);
 }
 
 /** What `packBandClasses` made; each distribution is read when it is looked at. @throws RangeError for other bytes. */

@@ -1,6 +1,7 @@
 import { type BandFraction } from '#lib/acoustics/bands';
 import { LevelClassCounts } from '#lib/acoustics/classCounts';
 import { emptySums, type PeriodSums } from '#lib/acoustics/periodSums';
+import { ByteWriter } from '#lib/acoustics/varint';
 import { packBandEnergies, unpackBandEnergies } from './aggregatePacking';
 
 /** The columns that quarter-hours and day periods share, except `band_energies`, in the order that `sumsOfCells` reads. */
@@ -53,11 +54,20 @@ export function sumsCellsText(sums: PeriodSums): string {
     sums.lafmaxCentiDb,
     sums.lafminCentiDb,
     sums.lcpeakCentiDb,
-    bytesText(Buffer.from(sums.aClasses.encode())),
+    classesText(sums.aClasses),
     sums.bandFraction,
     bytesText(packBandEnergies(sums)),
   ];
   return cells.map((cell) => cell ?? 'NULL').join(', ');
+}
+
+/** Emptied before each use: a buffer of its own for every row costs more than what is written into it. */
+const writer = new ByteWriter();
+
+function classesText(counts: LevelClassCounts): string {
+  writer.length = 0;
+  counts.encodeInto(writer);
+  return bytesText(Buffer.from(writer.bytes.buffer, 0, writer.length));
 }
 
 /** Bytes as SQL. */

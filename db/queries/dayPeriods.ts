@@ -10,7 +10,7 @@ import {
   sumsOfCells,
   type SumsCells,
 } from './aggregateSums';
-import { pool, type Connection } from './connection';
+import { pool, runText, type Connection } from './connection';
 import { type Span } from './exclusions';
 
 /** A period never lasts longer: a day with a clock change, and an hour to spare. */
@@ -96,14 +96,10 @@ async function selectDayPeriods(
   );
 }
 
-/**
- * Replaces the rows that touch any of some spans of time: whatever they were, they are no longer right. `found`: the periods
- * there that have intervals, with distributions per band.
- */
-export async function replaceDayPeriods(
+/** Drops a station's rows that touch any of some spans of time: whatever they were, they are no longer right. */
+export async function deletePeriodsTouching(
   stationId: number,
   spans: readonly Span[],
-  found: readonly DayPeriod[],
   conn: Connection,
 ): Promise<void> {
   for (const { fromSec, toSec } of spans) {
@@ -114,15 +110,24 @@ export async function replaceDayPeriods(
       .where('ends_at', '>', fromSec)
       .delete();
   }
-  if (found.length === 0) return;
+}
+
+/** Adds periods of a station that have intervals, with distributions per band. */
+export async function insertDayPeriods(
+  stationId: number,
+  periods: readonly DayPeriod[],
+  conn: Connection,
+): Promise<void> {
+  if (periods.length === 0) return;
   const computedAt = instantText(new Date());
-  const rows = found.map((period) => {
+  const rows = periods.map((period) => {
     const { date, kind, fromSec, toSec, flagBits, sums } = period;
     const classes = bytesText(packedClasses(period));
     return `(${stationId}, '${date}', '${kind}', ${fromSec}, ${toSec}, ${flagBits}, ${computedAt}, ${classes}, ${sumsCellsText(sums)})`;
   });
   // A changed zone can leave a row of the same date and kind elsewhere in time.
-  await conn.raw(
+  await runText(
+    conn,
     `INSERT INTO day_periods (${INSERTED_COLUMNS.join(', ')}) VALUES ${rows.join(', ')}
      ON DUPLICATE KEY UPDATE ${INSERTED_COLUMNS.map((name) => `${name} = VALUES(${name})`).join(', ')}`,
   );

@@ -7,7 +7,7 @@ import {
   sumsOfCells,
   type SumsCells,
 } from './aggregateSums';
-import { pool, type Connection } from './connection';
+import { pool, runText, type Connection } from './connection';
 
 /** One station's UTC quarter-hour, recomputed wholly from its intervals. A quarter without any interval has no row. */
 export interface QuarterHour {
@@ -63,24 +63,32 @@ export async function selectQuarterStarts(
     .pluck('starts_at');
 }
 
-/** Replaces the rows of these quarters of a station: `found` are those that have intervals. */
-export async function replaceQuarterHours(
+/** Drops a station's rows of these quarters. */
+export async function deleteQuartersAt(
   stationId: number,
   quarterStartsSec: readonly number[],
-  found: readonly QuarterHour[],
   conn: Connection,
 ): Promise<void> {
   await conn('quarter_hours')
     .where({ station_id: stationId })
     .whereIn('starts_at', quarterStartsSec)
     .delete();
-  if (found.length === 0) return;
+}
+
+/** Adds quarter-hours of a station that have no rows. */
+export async function insertQuarterHours(
+  stationId: number,
+  quarters: readonly QuarterHour[],
+  conn: Connection,
+): Promise<void> {
+  if (quarters.length === 0) return;
   const computedAt = instantText(new Date());
-  const rows = found.map(
+  const rows = quarters.map(
     ({ startSec, flagBits, reasonBits, lateSec, sums }) =>
       `(${stationId}, ${startSec}, ${flagBits}, ${reasonBits}, ${lateSec}, ${computedAt}, ${sumsCellsText(sums)})`,
   );
-  await conn.raw(
+  await runText(
+    conn,
     `INSERT INTO quarter_hours (station_id, starts_at, flags, reason_bits, late_sec, computed_at,
        ${[...SUMS_COLUMNS, ...BAND_COLUMNS].join(', ')}) VALUES ${rows.join(', ')}`,
   );

@@ -1,16 +1,16 @@
+import { setImmediate as nextTurn } from 'node:timers/promises';
 import { type Connection } from '#db/queries/connection';
-import { replaceDayPeriods, type DayPeriod } from '#db/queries/dayPeriods';
-import { selectIntervals, type StoredInterval } from '#db/queries/intervals';
+import { deletePeriodsTouching, insertDayPeriods, type DayPeriod } from '#db/queries/dayPeriods';
+import { selectIntervals } from '#db/queries/intervals';
 import { type NetworkSettings } from '#db/queries/networks';
-import { replaceQuarterHours } from '#db/queries/quarterHours';
+import { deleteQuartersAt, insertQuarterHours } from '#db/queries/quarterHours';
 import { type StationRow } from '#db/queries/stations';
-import { accumulate, firstEndingAfter, type Judgement } from '#lib/services/levels/accumulate';
 import { judgementOf } from '#lib/services/levels/intervalSums';
-import { quarterOf } from '#lib/services/levels/quarterOf';
-import { mergedSpans, type Span } from '#lib/services/levels/spans';
-import { type PeriodInstance } from '#lib/time/periods';
+import { mergedSpans, wholeOf, type Span } from '#lib/services/levels/spans';
 import { QUARTER_SEC } from '#lib/time/quarters';
 import { type Chunk } from './chunks';
+import { partsOf } from './parts';
+import { PartRows } from './rows';
 
 /**
  * Recomputes a chunk's quarter-hours and ended periods wholly from intervals and replaces their rows. Call it with the station
@@ -23,49 +23,41 @@ export async function recompute(
   timeline: NetworkSettings[],
   conn: Connection,
 ): Promise<void> {
-  const ended = chunk.periods.filter(({ toSec }) => toSec <= Date.now() / 1000);
-  const spans = [...ended, ...quarterSpans(chunk)];
-  const span = wholeOf(spans);
-  const intervals = await selectIntervals(station.id, span.fromSec, span.toSec, conn);
-  const judgement = await judgementOf({ station, timeline, validity: 'rules' }, span, conn);
-  const quarters = chunk.quarterStartsSec.map((startSec) => quarterOf(intervals, startSec, judgement));
-  await replaceQuarterHours(
-    station.id,
-    chunk.quarterStartsSec,
-    quarters.filter((quarter) => quarter !== null),
+  const parts = partsOf(chunk, Date.now() / 1000);
+  const judgement = await judgementOf(
+    { station, timeline, validity: 'rules' },
+    wholeOf(parts.map(({ span }) => span)),
     conn,
   );
-  const periods = ended.map((period) => periodOf(intervals, period, judgement));
-  await replaceDayPeriods(
-    station.id,
-    mergedSpans(spans),
-    periods.filter((period) => period !== null),
-    conn,
-  );
-}
-
-function quarterSpans({ quarterStartsSec }: Chunk): Span[] {
-  return quarterStartsSec.map((fromSec) => ({ fromSec, toSec: fromSec + QUARTER_SEC }));
-}
-
-function wholeOf(spans: readonly Span[]): Span {
-  return {
-    fromSec: Math.min(...spans.map(({ fromSec }) => fromSec)),
-    toSec: Math.max(...spans.map(({ toSec }) => toSec)),
+  await deleteQuartersAt(station.id, chunk.quarterStartsSec, conn);
+  await deletePeriodsTouching(station.id, replacedSpans(chunk, parts), conn);
+  const read = (part: number) => {
+    const span = parts[part]?.span;
+    return span && selectIntervals(station.id, span.fromSec, span.toSec, conn);
   };
+  // The database reads the parts after this one and writes those before it while this process computes, so that neither waits.
+  const reading = [read(0), read(1)];
+  const writing: Promise<void>[] = [];
+  for (const [at, part] of parts.entries()) {
+    const intervals = (await reading[at]) ?? [];
+    const rows = new PartRows(part, intervals, judgement);
+    writing.push(insertQuarterHours(station.id, rows.quarters(), conn));
+    const periods: DayPeriod[] = [];
+    for (const period of part.periods) {
+      await nextTurn();
+      const found = rows.period(period);
+      if (found) periods.push(found);
+    }
+    writing.push(insertDayPeriods(station.id, periods, conn));
+    reading.push(read(at + 2));
+    await nextTurn();
+  }
+  await Promise.all(writing);
 }
 
-/** A day, evening or night wholly from intervals; null when it has none. */
-function periodOf(
-  intervals: readonly StoredInterval[],
-  period: PeriodInstance,
-  judgement: Judgement,
-): DayPeriod | null {
-  let flagBits = 0;
-  const first = firstEndingAfter(intervals, period.fromSec);
-  let end = first;
-  for (; (intervals[end]?.startSec ?? Infinity) < period.toSec; end += 1)
-    flagBits |= intervals[end]?.flags ?? 0;
-  if (end === first) return null;
-  return { ...period, flagBits, sums: accumulate(intervals, period, judgement, { bandClasses: true }).sums };
+function replacedSpans({ quarterStartsSec }: Chunk, parts: readonly { periods: Span[] }[]): Span[] {
+  return mergedSpans([
+    ...parts.flatMap(({ periods }) => periods),
+    ...quarterStartsSec.map((fromSec) => ({ fromSec, toSec: fromSec + QUARTER_SEC })),
+  ]);
 }

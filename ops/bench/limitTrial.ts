@@ -1,7 +1,7 @@
 import { db } from '#db/client';
 import { inTransaction, pool } from '#db/queries/connection';
 import { listSettings } from '#db/queries/networks';
-import { replaceQuarterHours } from '#db/queries/quarterHours';
+import { insertQuarterHours } from '#db/queries/quarterHours';
 import type { StationRow } from '#db/queries/stations';
 import { PeriodAccumulator } from '#lib/acoustics/periodStatistics';
 import { tryRule, type TrialRule } from '#lib/services/limitTrial/tryRule';
@@ -78,7 +78,7 @@ async function fillYear(stationId: number): Promise<void> {
     reasonBits: 0,
     lateSec: 0,
   }));
-  await inTransaction((transaction) => replaceQuarterHours(stationId, starts, day, transaction));
+  await inTransaction((transaction) => insertQuarterHours(stationId, day, transaction));
   const [columns] = await db().raw('SHOW COLUMNS FROM quarter_hours');
   const names = (columns as { Field: string }[]).map(({ Field }) => Field);
   const cells = names.map((name) => (name === 'starts_at' ? 'starts_at + 86400 * seq' : name));

@@ -1,4 +1,4 @@
-import { appendVarint, readVarint, type VarintReader } from './varint';
+import { ByteWriter, MOST_VARINT_BYTES, readVarint, type VarintReader } from './varint';
 import { MAX_SUM_CENTI_DB, MIN_LEVEL_CENTI_DB } from './levelRange';
 import { centiDbToTenths } from './rounding';
 
@@ -52,6 +52,37 @@ export class LevelClassCounts {
     const at = tenths - this.#firstTenths;
     this.#secs[at] = (this.#secs[at] ?? 0) + sec;
     this.#totalSec += sec;
+  }
+
+  /**
+   * Counts many levels in tenths of a dB with their whole seconds, the first `count` of both arrays.
+   * @throws RangeError as `addTenths` does; then nothing is counted.
+   */
+  addEach(tenths: Int16Array, secs: Float64Array, count: number): void {
+    let lowest = HIGHEST_TENTHS + 1;
+    let highest = LOWEST_TENTHS - 1;
+    for (let i = 0; i < count; i += 1) {
+      const sec = secs[i] ?? NaN;
+      const level = tenths[i] ?? NaN;
+      if (!Number.isInteger(sec) || sec < 0) throw new RangeError(`${sec} is not a whole number of seconds.`);
+      if (level < lowest) lowest = level;
+      if (level > highest) highest = level;
+    }
+    if (highest < lowest) return;
+    if (lowest < LOWEST_TENTHS || highest > HIGHEST_TENTHS) {
+      throw new RangeError(`${lowest} to ${highest} tenths of a dB leave the stored range of levels.`);
+    }
+    this.#read();
+    this.#cover(lowest);
+    this.#cover(highest);
+    const own = this.#secs;
+    const first = this.#firstTenths;
+    for (let i = 0; i < count; i += 1) {
+      const at = (tenths[i] ?? NaN) - first;
+      const sec = secs[i] ?? NaN;
+      own[at] = (own[at] ?? 0) + sec;
+      this.#totalSec += sec;
+    }
   }
 
   /** Adds another distribution's seconds to this one. */
@@ -115,21 +146,27 @@ export class LevelClassCounts {
    * and the seconds, all LEB128 varints. Equal counts give equal bytes.
    */
   encode(): Uint8Array {
+    const writer = new ByteWriter();
+    this.encodeInto(writer);
+    return writer.bytes.slice(0, writer.length);
+  }
+
+  /** Appends what `encode` gives. */
+  encodeInto(writer: ByteWriter): void {
     this.#read();
-    const bytes: number[] = [];
     let classCount = 0;
     for (let i = 0; i < this.#secs.length; i += 1) if ((this.#secs[i] ?? 0) > 0) classCount += 1;
-    appendVarint(bytes, classCount);
+    writer.reserve(MOST_VARINT_BYTES * (1 + 2 * classCount));
+    writer.varint(classCount);
     let previous = LOWEST_TENTHS;
     // Not through `entries`: a month's rows hold half a million classes, and a generator takes most of the time.
     for (let i = 0; i < this.#secs.length; i += 1) {
       const sec = this.#secs[i] ?? 0;
       if (sec === 0) continue;
-      appendVarint(bytes, this.#firstTenths + i - previous);
-      appendVarint(bytes, sec);
+      writer.varint(this.#firstTenths + i - previous);
+      writer.varint(sec);
       previous = this.#firstTenths + i;
     }
-    return new Uint8Array(bytes);
   }
 
   /** @throws RangeError for bytes that `encode` did not make. */
@@ -188,8 +225,8 @@ export class LevelClassCounts {
     const end = first + this.#secs.length;
     if (first <= tenths && tenths < end) return;
     const isEmpty = this.#secs.length === 0;
-    // Twice as long at least, because every new array costs more than a day's samples in it.
-    const growth = Math.max(GROWTH_CLASSES, this.#secs.length);
+    // Three times as long at least, because every new array costs more than a day's samples in it.
+    const growth = Math.max(GROWTH_CLASSES, 2 * this.#secs.length);
     const from = isEmpty || tenths < first ? Math.max(LOWEST_TENTHS, tenths - growth) : first;
     const to = isEmpty || tenths >= end ? Math.min(HIGHEST_TENTHS, tenths + growth) + 1 : end;
     const grown = new Float64Array(to - from);

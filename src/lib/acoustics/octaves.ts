@@ -1,4 +1,4 @@
-import { bandAt, bandsOf, type Band } from './bands';
+import { bandAt, bandsOf, bandSlot, BAND_SLOTS, FIRST_BAND_INDEX, type Band } from './bands';
 import { energyOfCentiDb, energyOfDb, levelOfEnergyDb } from './energy';
 import { NO_LEVEL_CENTI_DB } from './levelRange';
 import { toCentiDb } from './rounding';
@@ -58,6 +58,11 @@ function sumOfThirdsDb(levelsDb: readonly (number | null)[]): number | null {
   return levelOfEnergyDb(energy);
 }
 
+/** Octave's slot by the slot of each of its thirds: worked out once, because every third of every interval is looked up. */
+const OCTAVE_SLOT_OF_BAND = Uint8Array.from({ length: BAND_SLOTS }, (_, slot) =>
+  octaveSlot(octaveIndexOf(FIRST_BAND_INDEX + slot)),
+);
+
 /** Energies of octaves by `octaveSlot`; NaN where a third is missing. A buffer that is filled again for each interval. */
 export type OctaveEnergies = Float64Array;
 
@@ -83,7 +88,7 @@ export function octaveEnergiesOfThirds(
   for (let i = 0; i < levelsCentiDb.length; i += 1) {
     const centiDb = levelsCentiDb[i] ?? NO_LEVEL_CENTI_DB;
     if (centiDb === NO_LEVEL_CENTI_DB) continue;
-    const slot = octaveSlot(octaveIndexOf(thirdIndices[i] ?? 0));
+    const slot = OCTAVE_SLOT_OF_BAND[bandSlot(thirdIndices[i] ?? 0)] ?? 0;
     into[slot] = (into[slot] ?? 0) + energyOfCentiDb(centiDb);
     thirdsSeen[slot] = (thirdsSeen[slot] ?? 0) + 1;
   }

@@ -1,15 +1,11 @@
-import { bandSlot, BAND_SLOTS, FIRST_BAND_INDEX, LAST_BAND_INDEX, type BandFraction } from './bands';
+import { countBandClasses, type BandInterval } from './bandClassCounting';
+import { bandSlot, BAND_SLOTS, FIRST_BAND_INDEX, LAST_BAND_INDEX } from './bands';
 import { energyOfCentiDb, levelOfEnergyDb } from './energy';
 import { laeDb } from './exposure';
 import { NO_LEVEL_CENTI_DB } from './levelRange';
+import { octaveSlot, thirdsOfOctave } from './octaves';
 import {
-  octaveEnergiesOfThirds,
-  octaveEnergyBuffer,
-  octaveSlot,
-  OCTAVE_SLOTS,
-  thirdsOfOctave,
-} from './octaves';
-import {
+  emptyBandClasses,
   emptySums,
   mergeSums,
   noteBandFraction,
@@ -17,12 +13,9 @@ import {
   noteSampleSec,
   type PeriodSums,
 } from './periodSums';
-import { toTenths } from './rounding';
 
 /** One interval as stored, clipped to the period by duration. Levels in hundredths of a dB. */
-export interface AccumulatedInterval {
-  /** Whole seconds of the interval that lie within the period. */
-  durationSec: number;
+export interface AccumulatedInterval extends BandInterval {
   /** Whole seconds of the interval as the monitor made it, before clipping. */
   sampleSec: number;
   laeqCentiDb: number;
@@ -30,17 +23,13 @@ export interface AccumulatedInterval {
   lafminCentiDb: number | null;
   lceqCentiDb: number | null;
   lcpeakCentiDb: number | null;
-  bandFraction: BandFraction;
-  /** Unweighted band levels beside `bandIndices`; −32768 = none. */
-  levelsCentiDb: Int16Array;
-  bandIndices: Int8Array;
 }
+
+let lastBands: { indices: Int8Array; slots: number[] } = { indices: new Int8Array(0), slots: [] };
 
 /** Gathers a period's intervals into sums that figures are taken from, and that merge with those of other periods. */
 export class PeriodAccumulator {
   readonly sums: PeriodSums;
-  readonly #octaveEnergies = octaveEnergyBuffer();
-  #lastBands: { indices: Int8Array; slots: number[] } | null = null;
 
   /** `bandClasses` also counts the distribution of every band and octave; `from` goes on from stored sums. */
   constructor(options: { bandClasses?: boolean; from?: PeriodSums } = {}) {
@@ -75,6 +64,12 @@ export class PeriodAccumulator {
   /** Adds another period's sums: in any order and grouping the result is that of the whole. */
   merge(other: { readonly sums: PeriodSums }): void {
     mergeSums(this.sums, other.sums);
+  }
+
+  /** Counts the distributions of every band and octave of the valid intervals whose energies are in the sums, all of them at once. */
+  countBandClasses(intervals: readonly BandInterval[]): void {
+    this.sums.bandClasses = emptyBandClasses();
+    if (!this.sums.isBandFractionMixed) countBandClasses(intervals, this.sums.bandClasses);
   }
 
   /** LAeq in dB over the valid seconds; null when there are none. */
@@ -135,34 +130,23 @@ export class PeriodAccumulator {
       throw new RangeError(`${levelsCentiDb.length} levels for ${bandIndices.length} bands.`);
     }
     if (bandIndices.length === 0 || !noteBandFraction(this.sums, bandFraction, false)) return;
-    const { bandEnergySec, bandValidSec, bandClasses } = this.sums;
-    const slots = this.#slotsOf(bandIndices);
+    const { bandEnergySec, bandValidSec } = this.sums;
+    const slots = slotsOf(bandIndices);
     for (let i = 0; i < levelsCentiDb.length; i += 1) {
       const centiDb = levelsCentiDb[i] ?? NO_LEVEL_CENTI_DB;
       if (centiDb === NO_LEVEL_CENTI_DB) continue;
       const slot = slots[i] ?? NaN;
       bandEnergySec[slot] = (bandEnergySec[slot] ?? 0) + energyOfCentiDb(centiDb) * durationSec;
       bandValidSec[slot] = (bandValidSec[slot] ?? 0) + durationSec;
-      bandClasses?.bands[slot]?.add(centiDb, durationSec);
     }
-    if (bandClasses && bandFraction === 3) this.#countOctaves(interval);
+    if (this.sums.bandClasses) countBandClasses([interval], this.sums.bandClasses);
   }
+}
 
-  /** Slots of some bands; intervals of one band set share one array of indices, so this is worked out once for them. */
-  #slotsOf(indices: Int8Array): number[] {
-    if (this.#lastBands?.indices !== indices)
-      this.#lastBands = { indices, slots: Array.from(indices, slotOf) };
-    return this.#lastBands.slots;
-  }
-
-  #countOctaves({ levelsCentiDb, bandIndices, durationSec }: AccumulatedInterval): void {
-    octaveEnergiesOfThirds(levelsCentiDb, bandIndices, this.#octaveEnergies);
-    for (let slot = 0; slot < OCTAVE_SLOTS; slot += 1) {
-      const energy = this.#octaveEnergies[slot] ?? NaN;
-      if (Number.isNaN(energy)) continue;
-      this.sums.bandClasses?.octaves[slot]?.addTenths(toTenths(10 * Math.log10(energy)), durationSec);
-    }
-  }
+/** Slots of some bands; intervals of one band set share one array of indices, so this is worked out once for them. */
+function slotsOf(indices: Int8Array): number[] {
+  if (lastBands.indices !== indices) lastBands = { indices, slots: Array.from(indices, slotOf) };
+  return lastBands.slots;
 }
 
 function slotOf(bandIndex: number): number {

@@ -4,15 +4,35 @@ export interface VarintReader {
   at: number;
 }
 
-/** Appends a whole number from 0 to 2^53 − 1 as an unsigned LEB128 varint: seven bits a byte, low ones first. */
-export function appendVarint(bytes: number[], value: number): void {
-  let rest = value;
-  while (rest >= 0x80) {
-    bytes.push((rest % 0x80) + 0x80);
-    rest = Math.floor(rest / 0x80);
+/** Bytes one after another in a buffer that grows; used again once its bytes are taken. */
+export class ByteWriter {
+  bytes = new Uint8Array(1024);
+  /** Bytes written. */
+  length = 0;
+
+  /** Makes room for so many more bytes. */
+  reserve(more: number): void {
+    if (this.length + more <= this.bytes.length) return;
+    const grown = new Uint8Array(Math.max(this.length + more, 2 * this.bytes.length));
+    grown.set(this.bytes.subarray(0, this.length));
+    this.bytes = grown;
   }
-  bytes.push(rest);
+
+  /** Appends a whole number from 0 to 2^53 − 1 as an unsigned LEB128 varint, seven bits a byte, low ones first, for which room is reserved. */
+  varint(value: number): void {
+    let rest = value;
+    while (rest >= 0x80) {
+      this.bytes[this.length] = (rest % 0x80) + 0x80;
+      this.length += 1;
+      rest = Math.floor(rest / 0x80);
+    }
+    this.bytes[this.length] = rest;
+    this.length += 1;
+  }
 }
+
+/** The most bytes that a varint takes. */
+export const MOST_VARINT_BYTES = 8;
 
 /** Reads the varint at `reader.at` and steps past it. @throws RangeError when the bytes end within it or it is too long. */
 export function readVarint(reader: VarintReader): number {

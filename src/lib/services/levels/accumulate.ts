@@ -1,5 +1,6 @@
 import { pickSettings, type NetworkSettings } from '#db/queries/networks';
 import { type StoredInterval } from '#db/queries/intervals';
+import { type BandInterval } from '#lib/acoustics/bandClassCounting';
 import { PeriodAccumulator, type AccumulatedInterval } from '#lib/acoustics/periodStatistics';
 import { isValid, type ValidityRules } from '#lib/acoustics/validity';
 import { QUARTER_SEC } from '#lib/time/quarters';
@@ -67,22 +68,49 @@ export function firstEndingAfter(intervals: readonly StoredInterval[], sec: numb
  */
 export function accumulate(
   intervals: readonly StoredInterval[],
-  { fromSec, toSec }: Span,
+  period: Span,
   judgement: Judgement,
   options: { bandClasses: boolean },
 ): PeriodAccumulator {
-  const accumulator = new PeriodAccumulator(options);
-  const clipped = emptyClip();
+  const accumulator = new PeriodAccumulator();
+  eachClipped(intervals, period, judgement, (interval, isCounted) => accumulator.add(interval, isCounted));
+  if (options.bandClasses) countBandClasses(accumulator, intervals, period, judgement);
+  return accumulator;
+}
+
+/** Counts the distributions of every band and octave of a period into sums that have all else of it. */
+export function countBandClasses(
+  accumulator: PeriodAccumulator,
+  intervals: readonly StoredInterval[],
+  period: Span,
+  judgement: Judgement,
+): void {
+  const counted: BandInterval[] = [];
+  eachClipped(intervals, period, judgement, (interval, isCounted) => {
+    if (!isCounted) return;
+    const { durationSec, bandFraction, bandIndices, levelsCentiDb } = interval;
+    counted.push({ durationSec, bandFraction, bandIndices, levelsCentiDb });
+  });
+  accumulator.countBandClasses(counted);
+}
+
+/** Every interval of a period clipped to it, and whether it counts. The object is filled again for the next. */
+function eachClipped(
+  intervals: readonly StoredInterval[],
+  { fromSec, toSec }: Span,
+  judgement: Judgement,
+  use: (interval: AccumulatedInterval, isCounted: boolean) => void,
+): void {
+  const clipped = { ...NO_CLIP };
   for (const span of rulesSpans(fromSec, toSec, judgement.timeline)) {
     for (let at = firstEndingAfter(intervals, span.fromSec); at < intervals.length; at += 1) {
       const interval = intervals[at];
       if (!interval || interval.startSec >= span.toSec) break;
       const endSec = interval.startSec + interval.durationSec;
       const durationSec = Math.min(endSec, span.toSec) - Math.max(interval.startSec, span.fromSec);
-      accumulator.add(clip(clipped, interval, durationSec), counts(interval, span.rules, judgement));
+      use(clip(clipped, interval, durationSec), counts(interval, span.rules, judgement));
     }
   }
-  return accumulator;
 }
 
 /** One object is filled again for each interval: a month has tens of thousands, and they are summed at once. */
@@ -100,17 +128,15 @@ function clip(into: AccumulatedInterval, interval: StoredInterval, durationSec: 
   return into;
 }
 
-function emptyClip(): AccumulatedInterval {
-  return {
-    durationSec: 0,
-    sampleSec: 0,
-    laeqCentiDb: 0,
-    lafmaxCentiDb: null,
-    lafminCentiDb: null,
-    lceqCentiDb: null,
-    lcpeakCentiDb: null,
-    bandFraction: 3,
-    levelsCentiDb: new Int16Array(0),
-    bandIndices: new Int8Array(0),
-  };
-}
+const NO_CLIP: AccumulatedInterval = {
+  durationSec: 0,
+  sampleSec: 0,
+  laeqCentiDb: 0,
+  lafmaxCentiDb: null,
+  lafminCentiDb: null,
+  lceqCentiDb: null,
+  lcpeakCentiDb: null,
+  bandFraction: 3,
+  levelsCentiDb: new Int16Array(0),
+  bandIndices: new Int8Array(0),
+};

@@ -7,6 +7,9 @@ import { dirtySpans } from './dirtySpans';
 import { sumIntervals, type LevelSource } from './intervalSums';
 import { overlapsAny, withoutSpans, type Span } from './spans';
 
+/** The ragged nights at both ends of a month. */
+const RESTS_AT_ONCE = 2;
+
 /**
  * Sums of `fromSec <= t < toSec`, current and from as few rows as possible: whole days, evenings and nights from their rows;
  * of the rest whole quarter-hours from theirs, or, where distributions per band are wanted (quarter-hours hold none), its
@@ -34,11 +37,12 @@ export async function currentSums(
       countedToSec = toSec;
     }
   }
-  for (const rest of withoutSpans(period, counted)) {
-    const part = options.bandClasses
-      ? await sumIntervals(source, rest, options, conn)
-      : await sumQuarters(source, rest, conn);
-    whole.merge(part);
+  const rests = withoutSpans(period, counted);
+  const sumRest = (rest: Span) =>
+    options.bandClasses ? sumIntervals(source, rest, options, conn) : sumQuarters(source, rest, conn);
+  for (let first = 0; first < rests.length; first += RESTS_AT_ONCE) {
+    const sums = await Promise.all(rests.slice(first, first + RESTS_AT_ONCE).map(sumRest));
+    for (const part of sums) whole.merge(part);
   }
   return whole;
 }

@@ -9,6 +9,8 @@ import { overlapSec } from './quarterOf';
 import { isLate, reasonBitsOf } from './seen';
 import { type Span } from './spans';
 
+const NONE: readonly StoredInterval[] = [];
+
 /**
  * Fills the columns that begin in `part` from intervals (ascending, disjoint): energy means by duration of everything measured,
  * counted or not. A column that is one interval's alone takes its levels as they are.
@@ -28,7 +30,7 @@ export function fillFromIntervals(
     const toSec = fromSec + plan.stepSec;
     let end = first;
     while ((intervals[end]?.startSec ?? Infinity) < toSec) end += 1;
-    const within = intervals.slice(first, end);
+    const within = end === first ? NONE : intervals.slice(first, end);
     for (const interval of within) noteInterval(columns, at, interval, { fromSec, toSec }, rules, judgement);
     fillLevels(columns, at, within, { fromSec, toSec });
     const last = within.at(-1);
@@ -67,10 +69,11 @@ function fillLevels(columns: Columns, at: number, within: readonly StoredInterva
   if (within.length === 1) {
     laeqCentiDb[at] = only.laeqCentiDb;
     if (only.bandFraction !== bands[0]?.fraction) return;
-    only.bandIndices.forEach((bandIndex, i) => {
-      const place = placeOfSlot[bandSlot(bandIndex)] ?? -1;
-      if (place >= 0) levelsCentiDb[offset + place] = only.levelsCentiDb[i] ?? NO_LEVEL_CENTI_DB;
-    });
+    const { bandIndices, levelsCentiDb: ofBands } = only;
+    for (let i = 0; i < bandIndices.length; i += 1) {
+      const place = placeOfSlot[bandSlot(bandIndices[i] ?? NaN)] ?? -1;
+      if (place >= 0) levelsCentiDb[offset + place] = ofBands[i] ?? NO_LEVEL_CENTI_DB;
+    }
     return;
   }
   const energies = new Float64Array(bands.length + 1);

@@ -37,3 +37,11 @@ export function withoutSpans(whole: Span, spans: readonly Span[]): Span[] {
   rest.push({ fromSec, toSec: whole.toSec });
   return rest;
 }
+
+/** From the earliest beginning of some spans to their latest end. */
+export function wholeOf(spans: readonly Span[]): Span {
+  return {
+    fromSec: Math.min(...spans.map(({ fromSec }) => fromSec)),
+    toSec: Math.max(...spans.map(({ toSec }) => toSec)),
+  };
+}

@@ -1,3 +1,4 @@
+import { setImmediate as nextTurn } from 'node:timers/promises';
 import { pool, type Connection } from '#db/queries/connection';
 import { selectIntervals } from '#db/queries/intervals';
 import { listSettings, pickSettings, type NetworkSettings } from '#db/queries/networks';
@@ -25,7 +26,7 @@ export interface SpectrogramQuery extends Span {
 }
 
 /** Intervals that are held in memory at once: more of them outlive a young generation, and collecting them takes most of the time. */
-const MOST_INTERVALS = 6000;
+const MOST_INTERVALS = 3000;
 /** Quarter-hours that are held in memory at once: two months. */
 const MOST_QUARTERS = 6000;
 
@@ -65,8 +66,17 @@ export async function spectrogram(
 async function readIntervals(source: LevelSource, columns: Columns, conn: Connection): Promise<void> {
   const { station } = source;
   const judgement = await judgementOf(source, spanOf(columns), conn);
-  for (const part of partsOf(columns, MOST_INTERVALS * station.intervalSec)) {
-    const intervals = await selectIntervals(station.id, part.fromSec, part.toSec, conn);
+  const parts = partsOf(columns, MOST_INTERVALS * station.intervalSec);
+  const read = (at: number) => {
+    const part = parts[at];
+    return part && selectIntervals(station.id, part.fromSec, part.toSec, conn);
+  };
+  // The database reads the next part while this process fills columns from the one before.
+  let reading = read(0);
+  for (const [at, part] of parts.entries()) {
+    const intervals = (await reading) ?? [];
+    reading = read(at + 1);
+    await nextTurn();
     fillFromIntervals(columns, intervals, part, judgement);
   }
 }
