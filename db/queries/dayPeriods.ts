@@ -45,8 +45,8 @@ export interface DayPeriod extends DayPeriodKey {
   flagBits: number;
 }
 
-/** Rows held at once: about a hundred days, 5 MB with distributions per band. */
-const ROWS_A_READ = 300;
+/** Rows of a part, of which two are held at once: fifty days, 2.5 MB with distributions per band. */
+const ROWS_A_READ = 150;
 
 /**
  * Periods that lie whole within `fromSec <= t < toSec`, in order of time, read part by part: years never lie in memory at once.
@@ -58,13 +58,19 @@ export async function* eachDayPeriod(
   options: { bandClasses: boolean },
   conn: Connection = pool(),
 ): AsyncGenerator<DayPeriod[]> {
-  for (let nextSec = fromSec; ;) {
-    const part = await selectDayPeriods(stationId, { fromSec: nextSec, toSec }, options, conn);
+  let reading = selectDayPeriods(stationId, { fromSec, toSec }, options, conn);
+  for (;;) {
+    const part = await reading;
+    const last = part.length < ROWS_A_READ ? undefined : part.at(-1);
+    // Read while the caller sums this part. Where a zone has changed two may begin together; of those only the first would be
+    // counted anyway.
+    if (last) {
+      reading = selectDayPeriods(stationId, { fromSec: last.fromSec + 1, toSec }, options, conn);
+      // Told when it is awaited, which it is not once the caller has failed itself.
+      reading.catch(() => undefined);
+    }
     yield part;
-    const last = part.at(-1);
-    if (!last || part.length < ROWS_A_READ) return;
-    // Where a zone has changed two may begin together; of those only the first would be counted anyway.
-    nextSec = last.fromSec + 1;
+    if (!last) return;
   }
 }
 
