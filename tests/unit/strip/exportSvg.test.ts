@@ -1,7 +1,12 @@
 import { beforeEach, describe, expect, it } from 'vitest';
 import { stripGeometry } from '../../../src/components/strip/draw/geometry';
 import { onDevice, type Surface } from '../../../src/components/strip/draw/surface';
-import { drawSheet, sheetHeight, type Sheet } from '../../../src/components/strip/export/drawSheet';
+import {
+  drawSheet,
+  sheetSize,
+  type Sheet,
+  type SheetPart,
+} from '../../../src/components/strip/export/drawSheet';
 import { SvgContext } from '../../../src/components/strip/export/svgContext';
 import { lanesOf } from '../../../src/components/strip/model/lanes';
 import { type StripLimit } from '../../../src/components/strip/model/limitLines';
@@ -68,7 +73,7 @@ describe('the sheet', () => {
   };
   const columns = columnsOf([50, null, 52, 58], { fromSec: view.fromSec, stepSec: 900 });
   const geometry = stripGeometry(800);
-  const sheet: Sheet = {
+  const part: SheetPart = {
     picture: {
       geometry,
       view,
@@ -86,8 +91,7 @@ describe('the sheet', () => {
       gapWords: () => 'no data',
     },
     title: 'Ropewalk School (MER-01)',
-    weighting: 'Z',
-    stepSec: 900,
+    selection: null,
     exceedances: [
       {
         id: 1,
@@ -100,6 +104,7 @@ describe('the sheet', () => {
       },
     ],
   };
+  const sheet: Sheet = { parts: [part], weighting: 'Z', stepSec: 900 };
 
   it('says by itself which station, period and zone it shows, what its signs mean, and the limits that hold in it', () => {
     const context = svg();
@@ -117,6 +122,19 @@ describe('the sheet', () => {
   });
 
   it('is as tall as what stands on it', () => {
-    expect(sheetHeight(sheet)).toBeGreaterThan(geometry.height + 54);
+    const one = sheetSize(sheet).height;
+    expect(one).toBeGreaterThan(geometry.height + 54);
+    expect(sheetSize({ ...sheet, parts: [part, part] }).height).toBeGreaterThan(one + geometry.height + 54);
+  });
+
+  it('draws what is marked and says it', () => {
+    const context = svg();
+    const bands = { fraction: 3, lowestIndex: -8, highestIndex: -6 } as const;
+    const selection = { fromSec: view.fromSec + 900, toSec: view.fromSec + 1800, bands };
+    const surface = { context, ratio: 1, palette, hatchFill: 'url(#hatch)' };
+    drawSheet(surface, { ...sheet, parts: [{ ...part, selection }] });
+    const elements = context.elements();
+    expect(elements).toContain('stroke="var(estuary)"');
+    expect(elements).toContain('>Marked: Sun 1 Mar 00:15–00:30, 160–250 Hz</text>');
   });
 });

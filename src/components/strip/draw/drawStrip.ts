@@ -29,12 +29,11 @@ export interface StripPicture {
   gapWords: (gap: Run) => string;
 }
 
-/** Draws the strip: spectrogram, level trace with limits, validity rows and the time axis, over what was there. */
+/** Draws the strip: spectrogram, level trace with limits, validity rows and the time axis. */
 export function drawStrip(surface: Surface, picture: StripPicture): void {
   const { context, ratio } = surface;
   const { geometry, view, pixels, lanes, traceRange } = picture;
   context.setTransform(ratio, 0, 0, ratio, 0, 0);
-  context.clearRect(0, 0, geometry.width, geometry.height);
   const elapsedPx = pxAtSec(view, pixels.widthPx, picture.nowSec);
   drawSpectrogram(surface, geometry, pixels, picture.colouring, elapsedPx);
   drawTrace(surface, geometry, { pixels, view, range: traceRange, leftOut: picture.leftOut, elapsedPx });

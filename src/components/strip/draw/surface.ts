@@ -23,7 +23,6 @@ export interface DrawContext {
   stroke(): void;
   fill(): void;
   setLineDash(segments: number[]): void;
-  clearRect(x: number, y: number, width: number, height: number): void;
   fillRect(x: number, y: number, width: number, height: number): void;
   strokeRect(x: number, y: number, width: number, height: number): void;
   fillText(text: string, x: number, y: number): void;

@@ -2,66 +2,99 @@ import { formatDuration } from '#lib/format/durations';
 import { limitMetricText } from '#lib/format/limitMetric';
 import { formatPeriod, formatZone } from '#lib/format/times';
 import { type Weighting } from '#lib/acoustics/weighting';
+import { drawSelection } from '../draw/drawSelection';
 import { drawStrip, type StripPicture } from '../draw/drawStrip';
 import { type StripGeometry, type Rect } from '../draw/geometry';
 import { textWidth, writeText, type Surface } from '../draw/surface';
 import { exceedanceMarks, type StripExceedance } from '../model/exceedanceMarks';
 import { pxAtSec } from '../model/timeView';
-import { type LimitLine } from '../draw/drawLimits';
+import { bandRangeWords } from '../model/bandWords';
+import { type Selection } from '../model/selection';
+import { stretchWords } from '../model/timeWords';
 import { writeTypeset } from './writeTypeset';
 
-/** What is shown, with what it needs to be understood away from its page. */
-export interface Sheet {
+/** One strip of the sheet. */
+export interface SheetPart {
   picture: StripPicture;
   /** "Ropewalk School (MER-01)". */
   title: string;
+  exceedances: readonly StripExceedance[];
+  selection: Selection | null;
+}
+
+/** What is shown, with what it needs to be understood away from its page. */
+export interface Sheet {
+  /** From the top down, all of one width. */
+  parts: readonly SheetPart[];
   weighting: Weighting;
   /** Length of the columns, s; null where there are none. */
   stepSec: number | null;
-  exceedances: readonly StripExceedance[];
 }
 
 const HEAD_PX = 54;
 const ROW_PX = 18;
 const MARGIN_PX = 10;
 
-/** Height of the sheet, CSS pixels. */
-export function sheetHeight(sheet: Sheet): number {
-  return HEAD_PX + sheet.picture.geometry.height + (1 + limitsShown(sheet).length) * ROW_PX + 2 * MARGIN_PX;
+/** Width and height of the sheet, CSS pixels. */
+export function sheetSize(sheet: Sheet): { width: number; height: number } {
+  const rows = 1 + sheet.parts.reduce((sum, part) => sum + footLines(part).length, 0);
+  return {
+    width: Math.max(...sheet.parts.map(({ picture }) => picture.geometry.width)),
+    height: partsHeight(sheet.parts) + rows * ROW_PX + 2 * MARGIN_PX,
+  };
 }
 
-/** Draws the strip under its station, period and zone, over its legend and the limits that hold in it. */
+/** Draws the strips, each under its station, period and zone, over their legend, the limits that hold in them, and what is marked. */
 export function drawSheet(surface: Surface, sheet: Sheet): void {
-  const { picture, title } = sheet;
-  const { view, zone } = picture;
-  const { palette } = surface;
-  const period = { fromSec: Math.floor(view.fromSec), toSec: Math.ceil(view.toSec) };
-  const geometry = movedDown(picture.geometry, HEAD_PX, sheetHeight(sheet));
-  drawStrip(surface, { ...picture, geometry });
-  writeText(surface, title, MARGIN_PX, 18, { colour: palette.ink, sizePx: 16, weight: 700 });
-  const words = `${formatPeriod(period, zone)}, times in ${formatZone(zone, period)}`;
-  writeText(surface, words, MARGIN_PX, 38, { colour: palette.inkSoft });
-  drawMarks(surface, geometry, sheet);
-  const legendY = HEAD_PX + picture.geometry.height + MARGIN_PX + ROW_PX / 2;
+  sheet.parts.forEach((part, at) => drawPart(surface, part, partsHeight(sheet.parts.slice(0, at))));
+  const legendY = partsHeight(sheet.parts) + MARGIN_PX + ROW_PX / 2;
   drawLegend(surface, sheet, legendY);
-  limitsShown(sheet).forEach(({ limit }, row) => {
-    const metric = limitMetricText({ ...limit, bandFraction: null, bandIndex: null });
-    const text = `Limit “${limit.name}”: ${metric} above ${limit.thresholdDb} dB`;
-    writeTypeset(surface, text, MARGIN_PX, legendY + (row + 1) * ROW_PX, palette.inkSoft);
+  const lines = sheet.parts.flatMap((part) =>
+    footLines(part).map((line) => (sheet.parts.length > 1 ? `${part.title}: ${line}` : line)),
+  );
+  lines.forEach((text, row) => {
+    writeTypeset(surface, text, MARGIN_PX, legendY + (row + 1) * ROW_PX, surface.palette.inkSoft);
   });
 }
 
-function limitsShown({ picture: { limits, view } }: Sheet): LimitLine[] {
-  return limits.filter(({ runs }) =>
-    runs.some(({ fromSec, toSec }) => fromSec < view.toSec && toSec > view.fromSec),
-  );
+function partsHeight(parts: readonly SheetPart[]): number {
+  return parts.reduce((sum, { picture }) => sum + HEAD_PX + picture.geometry.height, 0);
 }
 
-function movedDown(geometry: StripGeometry, byPx: number, height: number): StripGeometry {
+function drawPart(
+  surface: Surface,
+  { picture, title, exceedances, selection }: SheetPart,
+  topPx: number,
+): void {
+  const { view, zone } = picture;
+  const { palette } = surface;
+  const period = { fromSec: Math.floor(view.fromSec), toSec: Math.ceil(view.toSec) };
+  const moved = { ...picture, geometry: movedDown(picture.geometry, topPx + HEAD_PX) };
+  drawStrip(surface, moved);
+  writeText(surface, title, MARGIN_PX, topPx + 18, { colour: palette.ink, sizePx: 16, weight: 700 });
+  const words = `${formatPeriod(period, zone)}, times in ${formatZone(zone, period)}`;
+  writeText(surface, words, MARGIN_PX, topPx + 38, { colour: palette.inkSoft });
+  drawMarks(surface, moved, exceedances);
+  if (selection) drawSelection(surface, moved, selection);
+}
+
+/** What is told below the legend of one strip: its limits, and what is marked on it. */
+function footLines({ picture, selection }: SheetPart): string[] {
+  const { view, zone } = picture;
+  const limits = picture.limits
+    .filter(({ runs }) => runs.some(({ fromSec, toSec }) => fromSec < view.toSec && toSec > view.fromSec))
+    .map(({ limit }) => {
+      const metric = limitMetricText({ ...limit, bandFraction: null, bandIndex: null });
+      return `Limit “${limit.name}”: ${metric} above ${limit.thresholdDb} dB`;
+    });
+  const bands = selection?.bands ? `, ${bandRangeWords(selection.bands)}` : '';
+  return selection ? [...limits, `Marked: ${stretchWords(selection, zone)}${bands}`] : limits;
+}
+
+function movedDown(geometry: StripGeometry, byPx: number): StripGeometry {
   const moved = (rect: Rect): Rect => ({ ...rect, y: rect.y + byPx });
   return {
     ...geometry,
-    height,
     spectrogram: moved(geometry.spectrogram),
     marks: moved(geometry.marks),
     trace: moved(geometry.trace),
@@ -71,10 +104,13 @@ function movedDown(geometry: StripGeometry, byPx: number, height: number): Strip
 }
 
 /** A triangle at each exceedance; several close together share one with their number. */
-function drawMarks({ context, palette, ...rest }: Surface, geometry: StripGeometry, sheet: Sheet): void {
+function drawMarks(
+  { context, palette, ...rest }: Surface,
+  { view, geometry }: StripPicture,
+  all: readonly StripExceedance[],
+): void {
   const { x, y, width, height } = geometry.marks;
-  const pxOf = (sec: number) => pxAtSec(sheet.picture.view, width, sec);
-  for (const { px, exceedances } of exceedanceMarks(sheet.exceedances, pxOf, width, 25)) {
+  for (const { px, exceedances } of exceedanceMarks(all, (sec) => pxAtSec(view, width, sec), width, 25)) {
     const [halfPx, tallPx] = exceedances.length === 1 ? [5.5, 9] : [9, 16];
     const top = y + (height - tallPx) / 2;
     context.fillStyle = palette.rust;
@@ -95,15 +131,17 @@ const RAMP_PX = 112;
 const RAMP_STEPS = 56;
 const GAP_PX = 18;
 
-function drawLegend(surface: Surface, { picture, weighting, stepSec }: Sheet, y: number): void {
+function drawLegend(surface: Surface, sheet: Sheet, y: number): void {
+  const { weighting, stepSec } = sheet;
+  const colouring = sheet.parts.find(({ picture }) => picture.colouring)?.picture.colouring;
   const { context, palette } = surface;
   const colour = palette.inkSoft;
   let x = MARGIN_PX;
   const write = (text: string, gapPx: number) => {
     x += writeTypeset(surface, text, x, y, colour) + gapPx;
   };
-  if (picture.colouring) {
-    const { ramp, range } = picture.colouring;
+  if (colouring) {
+    const { ramp, range } = colouring;
     write(String(range.lowDb), 6);
     for (let step = 0; step < RAMP_STEPS; step += 1) {
       const at = Math.round((step * 255) / (RAMP_STEPS - 1)) * 4;
@@ -121,5 +159,5 @@ function drawLegend(surface: Surface, { picture, weighting, stepSec }: Sheet, y:
   context.fillRect(x, y - 5, 16, 10);
   x += 22;
   write('up to LAFmax', GAP_PX);
-  if (x + textWidth(surface, 'hatched: no data') < picture.geometry.width) write('hatched: no data', 0);
+  if (x + textWidth(surface, 'hatched: no data') < sheetSize(sheet).width) write('hatched: no data', 0);
 }

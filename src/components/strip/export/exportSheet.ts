@@ -1,7 +1,7 @@
 import { escapeHtml } from '#lib/format/escapeHtml';
 import { type Palette } from '../draw/palette';
 import { type Surface } from '../draw/surface';
-import { drawSheet, sheetHeight, type Sheet } from './drawSheet';
+import { drawSheet, sheetSize, type Sheet } from './drawSheet';
 import { plainPalette } from './plainPalette';
 import { SvgContext } from './svgContext';
 
@@ -17,8 +17,9 @@ export interface SheetOrder {
 /** The sheet as a PNG picture. */
 export function pngOfSheet({ sheet, palette, ratio }: SheetOrder): Promise<Blob> {
   const canvas = document.createElement('canvas');
-  canvas.width = Math.round(sheet.picture.geometry.width * ratio);
-  canvas.height = Math.round(sheetHeight(sheet) * ratio);
+  const { width, height } = sheetSize(sheet);
+  canvas.width = Math.round(width * ratio);
+  canvas.height = Math.round(height * ratio);
   const context = canvas.getContext('2d');
   if (!context) throw new Error('This browser cannot draw the picture.');
   drawSheet({ context, ratio, palette }, sheet);
@@ -48,12 +49,12 @@ export function svgOfSheet(order: SheetOrder): Blob {
   });
   const surface: Surface = { context, ratio, palette, hatchFill: `url(#${HATCH})` };
   drawSheet(surface, sheet);
-  const [width, height] = [sheet.picture.geometry.width, sheetHeight(sheet)];
+  const { width, height } = sheetSize(sheet);
   const [across, down] = [Math.round(width * ratio), Math.round(height * ratio)];
   const text = [
     `<svg xmlns="http://www.w3.org/2000/svg" xml:space="preserve" role="img"`,
     `  width="${width}" height="${height}" viewBox="0 0 ${across} ${down}">`,
-    `<title>${escapeHtml(sheet.title)}</title>`,
+    `<title>${escapeHtml(sheet.parts.map(({ title }) => title).join(', '))}</title>`,
     `<desc>${escapeHtml(summary)}</desc>`,
     `<defs>${hatchDefinition(palette, ratio)}</defs>`,
     `<rect width="${across}" height="${down}" fill="${palette.paper}"/>`,

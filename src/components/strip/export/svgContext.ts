@@ -107,11 +107,6 @@ export class SvgContext implements DrawContext {
     this.state = { ...this.state, dash };
   }
 
-  /** Nothing was there before. */
-  clearRect(): void {
-    this.path = '';
-  }
-
   fillRect(x: number, y: number, width: number, height: number): void {
     const fill = String(this.fillStyle);
     if (this.rectsFill !== fill) this.endRects();

@@ -3,7 +3,8 @@ import { panView, spanSec, zoomView, type TimeView, type ViewBounds } from '../m
 
 /** A period that ends this close to now is followed. */
 const FOLLOWED_WITHIN_SEC = 600;
-const LONGEST_SEC = 100 * 86_400;
+/** A leap year. */
+const LONGEST_SEC = 366 * 86_400;
 /** Intervals that the closest view shows. */
 const FEWEST_INTERVALS = 10;
 

@@ -1,6 +1,7 @@
 import { type Band } from '#lib/acoustics/bands';
 import { selectionBetween, type Corner } from './dragSelection';
 import { type Selection } from './selection';
+import { type StripColumns } from './stripColumns';
 
 /** Where the cursor is, what is selected, and what is being selected. */
 export interface Interaction {
@@ -27,6 +28,15 @@ export interface InteractionGrid {
   /** Selections take whole multiples of this. */
   gridSec: number;
   bands: readonly Band[];
+}
+
+/** The grid of strips whose intervals and layers these are; bands are the first one's. */
+export function gridOf(
+  intervalsSec: readonly number[],
+  layers: readonly (readonly StripColumns[])[],
+): InteractionGrid {
+  const stepsSec = layers.map(([first]) => first?.stepSec ?? 0);
+  return { gridSec: Math.max(...intervalsSec, ...stepsSec), bands: layers[0]?.[0]?.bands ?? [] };
 }
 
 export const NOTHING_MARKED: Interaction = {

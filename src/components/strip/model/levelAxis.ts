@@ -8,6 +8,12 @@ export interface LevelRange {
 
 const SHORTEST_DB = 30;
 
+/** The range that spans two, so that what is drawn in it can be compared; of one where the other is not known. */
+export function spanningRange<A extends LevelRange | null>(a: A, b: A): A {
+  if (a === null || b === null) return a ?? b;
+  return { ...a, lowDb: Math.min(a.lowDb, b.lowDb), highDb: Math.max(a.highDb, b.highDb) };
+}
+
 /** The range, in tens of dB, that holds the given levels (hundredths of a dB; none skipped) and further ones in dB. */
 export function traceRange(seriesCentiDb: readonly Int16Array[], alsoDb: readonly number[]): LevelRange {
   let low = Infinity;

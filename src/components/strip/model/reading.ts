@@ -46,6 +46,11 @@ export function readingAt(
   return null;
 }
 
+/** How far one level lies above another, dB; null where one of them is missing. */
+export function differenceDb(levelDb: number | null, fromDb: number | null): number | null {
+  return levelDb === null || fromDb === null ? null : levelDb - fromDb;
+}
+
 function dbOf(centiDb: number | undefined): number | null {
   return centiDb === undefined || centiDb === NO_LEVEL_CENTI_DB ? null : centiDb / 100;
 }

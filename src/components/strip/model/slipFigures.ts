@@ -1,5 +1,5 @@
 import { bandByNominalHz, type Band, type BandFraction } from '#lib/acoustics/bands';
-import { energySumDb } from '#lib/acoustics/energy';
+import { levelFromBandsDb, type Weighting } from '#lib/acoustics/weighting';
 import type { Statistics } from '#lib/contracts/levels';
 import { type SelectionFigures } from './estimate';
 import { selectedBands, type Selection } from './selection';
@@ -60,14 +60,43 @@ export function figuresOfStatistics(statistics: Statistics, fraction: BandFracti
   };
 }
 
-/** Leq over the bands that a selection marks: the energy sum of theirs; null when one of them has none. */
-export function markedBandsLeqDb(figures: SlipFigures, selection: Selection): number | null {
-  const marked = new Set(
-    selectedBands(
-      selection,
-      figures.bands.map(({ band }) => band),
-    ).map((band) => band.index),
+/** What a selection's bands amount to. Null where one of the bands concerned has no level. */
+export interface MarkedBands {
+  /** Leq over the bands, unweighted: the energy sum of theirs. */
+  leqDb: number | null;
+  /** Their part of the energy of all bands, 0–1, unweighted and A-weighted. */
+  shareZ: number | null;
+  shareA: number | null;
+}
+
+/** Leq and share of energy of the bands that a selection marks. */
+export function markedBands({ bands }: SlipFigures, selection: Selection): MarkedBands {
+  const all = bands.map(({ band }) => band);
+  const marked = new Set(selectedBands(selection, all).map(({ index }) => index));
+  const within = bands.filter(({ band }) => marked.has(band.index));
+  const leqDb = levelOf(within, 'Z');
+  return { leqDb, shareZ: shareOf(within, bands, 'Z'), shareA: shareOf(within, bands, 'A') };
+}
+
+function shareOf(
+  within: readonly BandFigure[],
+  all: readonly BandFigure[],
+  weighting: Weighting,
+): number | null {
+  // A band of the whole that has no level is left out of it, as the monitor gave none; one of the part's own is not.
+  const part = levelOf(within, weighting);
+  const whole = levelOf(
+    all.filter(({ leqDb }) => leqDb !== null),
+    weighting,
   );
-  const levels = figures.bands.filter(({ band }) => marked.has(band.index)).map(({ leqDb }) => leqDb);
-  return levels.length > 0 && levels.every((level) => level !== null) ? energySumDb(levels) : null;
+  return part === null || whole === null ? null : 10 ** ((part - whole) / 10);
+}
+
+function levelOf(figures: readonly BandFigure[], weighting: Weighting): number | null {
+  if (figures.some(({ leqDb }) => leqDb === null)) return null;
+  return levelFromBandsDb(
+    figures.map(({ leqDb }) => leqDb),
+    figures.map(({ band }) => band),
+    weighting,
+  );
 }

@@ -13,6 +13,11 @@ export function dayWords(sec: number, zone: string): string {
   return made.format(new Date(sec * 1000)).replace(',', '');
 }
 
+/** "2026" in the zone. */
+export function yearOf(sec: number, zone: string): string {
+  return localDateAt(sec, zone).slice(0, 4);
+}
+
 /** "20:58" by the clock of the zone, to the second. */
 export function clockWords(sec: number, zone: string): string {
   return formatClock(Math.round(sec), zone);

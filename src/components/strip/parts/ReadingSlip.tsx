@@ -2,7 +2,7 @@ import { memo, useId } from 'react';
 import { type BandFraction } from '#lib/acoustics/bands';
 import { type SlipState } from '../hooks/useSlipFigures';
 import { type Selection } from '../model/selection';
-import { markedBandsLeqDb, type SlipFigures } from '../model/slipFigures';
+import { markedBands, type SlipFigures } from '../model/slipFigures';
 import { stretchWords } from '../model/timeWords';
 import { formatDuration } from '#lib/format/durations';
 import { formatCoverage } from '#lib/format/levels';
@@ -18,6 +18,11 @@ interface ReadingSlipProps {
   state: SlipState;
   fraction: BandFraction;
   context: SlipContext;
+  /** Whose figures they are, where there are several. */
+  title: string | null;
+  /** Figures that these are compared with, if any. */
+  reference: SlipFigures | null;
+  className: string;
   onClear: () => void;
 }
 
@@ -28,15 +33,19 @@ export const ReadingSlip = memo(function ReadingSlip({
   state,
   fraction,
   context,
+  title,
+  reference,
+  className,
   onClear,
 }: ReadingSlipProps) {
   const headingId = useId();
   const { figures, usual, error } = state;
   const { bands } = selection;
   return (
-    <aside aria-labelledby={headingId} className="slip self-start text-table">
+    <aside aria-labelledby={headingId} className={`slip self-start text-table ${className}`}>
       <div className="flex items-start justify-between gap-2">
         <h2 id={headingId} className="text-body leading-snug">
+          {title && <span className="block">{title}</span>}
           <StretchHeading selection={selection} zone={context.zone} />
         </h2>
         {isMarked && (
@@ -58,8 +67,10 @@ export const ReadingSlip = memo(function ReadingSlip({
       {error && <p className="border-l-[3px] border-rust pl-3">{error.message}</p>}
       <SlipFigureList
         figures={figures}
-        bandsLeqDb={figures && markedBandsLeqDb(figures, selection)}
+        marked={figures && bands && markedBands(figures, selection)}
         bands={bands}
+        reference={reference}
+        referenceBandsDb={reference && bands && markedBands(reference, { ...selection, bands }).leqDb}
         usual={usual}
       />
       {figures && <SlipSpectrum figures={figures} selection={selection} fraction={fraction} />}

@@ -1,9 +1,10 @@
 import { bandLabel, type Band } from '#lib/acoustics/bands';
 import { type InvalidityReason } from '#lib/acoustics/validity';
 import { type Weighting } from '#lib/acoustics/weighting';
-import { formatLevelDb } from '#lib/format/levels';
-import { type Reading } from '../model/reading';
+import { formatDifferenceDb, formatLevelDb } from '#lib/format/levels';
+import { differenceDb, type Reading } from '../model/reading';
 import { stretchWords } from '../model/timeWords';
+import { type Track } from '../model/track';
 
 const REASON_WORDS: Record<InvalidityReason, string> = {
   calibration: 'calibration',
@@ -19,26 +20,54 @@ const REASON_WORDS: Record<InvalidityReason, string> = {
 };
 
 interface ReadoutProps {
-  reading: Reading | null;
+  /** One of each strip, from the top down. */
+  readings: readonly { track: Track; reading: Reading | null }[];
   weighting: Weighting;
   zone: string;
   /** Whether it is read out: when the cursor moves by keyboard. */
   isAnnounced: boolean;
 }
 
-/** What the strip holds under the cursor, in one line that keeps its place. */
-export function Readout({ reading, weighting, zone, isAnnounced }: ReadoutProps) {
+/** What the strips hold under the cursor, in a line each that keeps its place; the second one's with its difference from the first. */
+export function Readout({ readings, weighting, zone, isAnnounced }: ReadoutProps) {
+  const [first] = readings;
   return (
-    <p
-      className="mb-1.5 min-h-[2.9em] text-small text-ink-soft tabular-nums pad:min-h-[1.45em]"
-      aria-live={isAnnounced ? 'polite' : 'off'}
-    >
-      {reading ? (
-        <ReadingWords reading={reading} weighting={weighting} zone={zone} />
-      ) : (
-        'Drag across the strip to read a stretch of it, or a rectangle of time and bands.'
+    <div className="mb-1.5 text-small text-ink-soft tabular-nums" aria-live={isAnnounced ? 'polite' : 'off'}>
+      {readings.map(({ track, reading }, at) => (
+        <p key={at} className="min-h-[2.9em] pad:min-h-[1.45em]">
+          {reading && readings.length > 1 && <span className="text-ink">{track.station.code} </span>}
+          {reading && <ReadingWords reading={reading} weighting={weighting} zone={zone} />}
+          {reading && at > 0 && first?.reading && (
+            <DifferenceWords reading={reading} first={first.reading} name={first.track.station.code} />
+          )}
+          {!reading &&
+            at === 0 &&
+            'Drag across the strip to read a stretch of it, or a rectangle of time and bands.'}
+        </p>
+      ))}
+    </div>
+  );
+}
+
+/** How far levels lie above those of the strip above. */
+function DifferenceWords({ reading, first, name }: { reading: Reading; first: Reading; name: string }) {
+  const laeqDb = differenceDb(reading.laeqDb, first.laeqDb);
+  const bandDb = differenceDb(reading.bandLevelDb, first.bandLevelDb);
+  if (laeqDb === null && bandDb === null) return null;
+  return (
+    <>
+      {' · against the strip above'} ({name}):{' '}
+      {laeqDb !== null && (
+        <>
+          L<sub>Aeq</sub> <b className="font-medium text-ink">{formatDifferenceDb(laeqDb)}</b> dB
+        </>
       )}
-    </p>
+      {bandDb !== null && (
+        <>
+          , band <b className="font-medium text-ink">{formatDifferenceDb(bandDb)}</b> dB
+        </>
+      )}
+    </>
   );
 }
 
@@ -46,7 +75,7 @@ function ReadingWords({
   reading,
   weighting,
   zone,
-}: Omit<ReadoutProps, 'isAnnounced' | 'reading'> & { reading: Reading }) {
+}: Pick<ReadoutProps, 'weighting' | 'zone'> & { reading: Reading }) {
   const { band } = reading;
   return (
     <>

@@ -3,23 +3,30 @@ import { formatInstantUtc } from '#lib/contracts/common';
 import { readPalette } from '../draw/palette';
 import { type Sheet } from '../export/drawSheet';
 import { pngOfSheet, svgOfSheet, type SheetOrder } from '../export/exportSheet';
+import { stripCsv, type ShownLevels } from '../model/stripCsv';
 
 interface SavePictureProps {
-  stationCode: string;
   sheet: Sheet;
+  /** The same as numbers, in the order of the sheet's parts. */
+  levels: readonly ShownLevels[];
   ratio: number;
   summary: string;
 }
 
-const KINDS = ['png', 'svg'] as const;
+const KINDS = ['png', 'svg', 'csv'] as const;
 
-/** Saves what the strip shows as a picture that explains itself: with station, period, zone, legend and limits. */
-export function SavePicture({ stationCode, sheet, ratio, summary }: SavePictureProps) {
+/** Saves what is shown: as a picture that explains itself, with station, period, zone, legend and limits, or as its numbers. */
+export function SavePicture({ sheet, levels, ratio, summary }: SavePictureProps) {
   const [problem, setProblem] = useState<string | null>(null);
   const save = async (kind: (typeof KINDS)[number]) => {
     const order: SheetOrder = { sheet, ratio, summary, palette: readPalette(document.body) };
     try {
-      offer(kind === 'png' ? await pngOfSheet(order) : svgOfSheet(order), fileName(stationCode, sheet, kind));
+      const file = {
+        png: () => pngOfSheet(order),
+        svg: () => svgOfSheet(order),
+        csv: () => new Blob([stripCsv(levels, sheet.weighting)], { type: 'text/csv;charset=utf-8' }),
+      }[kind];
+      offer(await file(), fileName(levels, kind));
       setProblem(null);
     } catch (error) {
       setProblem(error instanceof Error ? error.message : 'The picture cannot be made.');
@@ -27,13 +34,13 @@ export function SavePicture({ stationCode, sheet, ratio, summary }: SavePictureP
   };
   return (
     <div className="flex flex-wrap items-center gap-1.5 text-small" data-screen-only="">
-      <span className="text-ink-soft">Save picture</span>
+      <span className="text-ink-soft">Save what is shown</span>
       {KINDS.map((kind) => (
         <button
           key={kind}
           type="button"
           className="button button-small"
-          aria-label={`Save picture as ${kind.toUpperCase()}`}
+          aria-label={`Save what is shown as ${kind.toUpperCase()}`}
           onClick={() => void save(kind)}
         >
           {kind.toUpperCase()}
@@ -48,9 +55,12 @@ export function SavePicture({ stationCode, sheet, ratio, summary }: SavePictureP
   );
 }
 
-function fileName(code: string, { picture: { view } }: Sheet, kind: string): string {
+function fileName(levels: readonly ShownLevels[], kind: string): string {
   const instant = (sec: number) => formatInstantUtc(Math.round(sec)).replaceAll(':', '');
-  return `${code}_${instant(view.fromSec)}_${instant(view.toSec)}.${kind}`;
+  const strips = levels.map(
+    ({ stationCode, view }) => `${stationCode}_${instant(view.fromSec)}_${instant(view.toSec)}`,
+  );
+  return `${strips.join('_beside_')}.${kind}`;
 }
 
 function offer(blob: Blob, name: string): void {

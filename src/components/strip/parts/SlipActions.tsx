@@ -11,6 +11,8 @@ export interface SlipContext {
   zone: string;
   mayExclude: boolean;
   mayLogComplaints: boolean;
+  /** The strip that this one is shown over: closer looks keep it there. */
+  beside: { stationCode: string; shiftSec: number } | null;
 }
 
 interface SlipActionsProps {
@@ -35,7 +37,7 @@ export function SlipActions({ selection, isMarked, context }: SlipActionsProps) 
       {isMarked && (
         <a
           className="button button-primary"
-          href={`/n/${slug}/stations/${code}?${period}#selection=${formatSelection(selection)}`}
+          href={`/n/${slug}/stations/${code}?${period}${besideQuery(selection, context)}#selection=${formatSelection(selection)}`}
         >
           Zoom here
         </a>
@@ -64,6 +66,14 @@ export function SlipActions({ selection, isMarked, context }: SlipActionsProps) 
       )}
     </div>
   );
+}
+
+function besideQuery({ fromSec }: Selection, { stationCode, beside }: SlipContext): string {
+  if (!beside) return '';
+  const query = new URLSearchParams();
+  if (beside.stationCode !== stationCode) query.set('with', beside.stationCode);
+  if (beside.shiftSec !== 0) query.set('against', formatInstantUtc(fromSec + beside.shiftSec));
+  return `&${query.toString()}`;
 }
 
 function CopyLink() {

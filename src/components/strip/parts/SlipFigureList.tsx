@@ -1,27 +1,45 @@
 import { type ReactNode } from 'react';
 import type { UsualLevels } from '#lib/contracts/usual';
-import { formatDifferenceDb, formatLevelDb } from '#lib/format/levels';
+import { formatDifferenceDb, formatLevelDb, NO_FIGURE } from '#lib/format/levels';
 import { Descriptor } from '../../ui/Descriptor';
+import { percentWords } from '../../figures/figureWords';
 import { bandRangeWords } from '../model/bandWords';
+import { differenceDb } from '../model/reading';
 import { type BandSelection } from '../model/selection';
-import { type SlipFigures } from '../model/slipFigures';
+import { type MarkedBands, type SlipFigures } from '../model/slipFigures';
 
 interface SlipFigureListProps {
   /** Null while nothing is known. */
   figures: SlipFigures | null;
-  bandsLeqDb: number | null;
+  /** Null where no bands are marked, or nothing is known. */
+  marked: MarkedBands | null;
   bands: BandSelection | null;
   /** Null where it is not known, or not asked. */
   usual: UsualLevels | null;
+  /** Figures that these are compared with, if any, and theirs over the marked bands. */
+  reference: SlipFigures | null;
+  referenceBandsDb: number | null;
 }
 
 /** The figures as a list; rows keep their place while figures are on their way. */
-export function SlipFigureList({ figures, bandsLeqDb, bands, usual }: SlipFigureListProps) {
+export function SlipFigureList({ figures, marked, bands, usual, ...props }: SlipFigureListProps) {
+  const { reference, referenceBandsDb } = props;
+  const against = (levelDb: number | null | undefined, fromDb: number | null | undefined) =>
+    reference && <Difference ofDb={differenceDb(levelDb ?? null, fromDb ?? null)} />;
   return (
     <>
+      {reference && <p className="text-right text-small text-ink-soft">against the strip above</p>}
       <dl className="tabular-nums">
-        <Row term={<Descriptor name="LAeq" />} value={formatLevelDb(figures?.laeqDb)} />
-        <Row term={<Descriptor name="LAFmax" />} value={formatLevelDb(figures?.lafmaxDb)} />
+        <Row
+          term={<Descriptor name="LAeq" />}
+          value={formatLevelDb(figures?.laeqDb)}
+          difference={against(figures?.laeqDb, reference?.laeqDb)}
+        />
+        <Row
+          term={<Descriptor name="LAFmax" />}
+          value={formatLevelDb(figures?.lafmaxDb)}
+          difference={against(figures?.lafmaxDb, reference?.lafmaxDb)}
+        />
         <Row
           term={
             <>
@@ -38,13 +56,31 @@ export function SlipFigureList({ figures, bandsLeqDb, bands, usual }: SlipFigure
                 <Descriptor name="Leq" /> {bandRangeWords(bands)}
               </>
             }
-            value={formatLevelDb(bandsLeqDb)}
+            value={formatLevelDb(marked?.leqDb)}
             unit="dB (Z)"
+            difference={against(marked?.leqDb, referenceBandsDb)}
+          />
+        )}
+        {bands && (
+          <Row
+            term="of all energy, Z / A"
+            value={`${shareWords(marked?.shareZ)} / ${shareWords(marked?.shareA)}`}
+            unit=""
           />
         )}
       </dl>
       {usual && <UsualWords usual={usual} laeqDb={figures?.laeqDb ?? null} />}
     </>
+  );
+}
+
+function shareWords(share: number | null | undefined): string {
+  return share === null || share === undefined ? NO_FIGURE : percentWords(share);
+}
+
+function Difference({ ofDb }: { ofDb: number | null }) {
+  return (
+    <dd className="w-14 text-right font-medium">{ofDb === null ? NO_FIGURE : formatDifferenceDb(ofDb)}</dd>
   );
 }
 
@@ -87,12 +123,20 @@ function UsualWords({ usual, laeqDb }: { usual: UsualLevels; laeqDb: number | nu
   );
 }
 
-function Row({ term, value, unit = 'dB' }: { term: ReactNode; value: string; unit?: string }) {
+interface RowProps {
+  term: ReactNode;
+  value: string;
+  unit?: string;
+  difference?: ReactNode;
+}
+
+function Row({ term, value, unit = 'dB', difference = null }: RowProps) {
   return (
     <div className="flex items-baseline border-b border-line py-1">
       <dt className="grow">{term}</dt>
       <dd>{value}</dd>
-      <dd className="w-13 pl-1.5 text-ink-soft">{unit}</dd>
+      <dd className={unit ? 'w-13 pl-1.5 text-ink-soft' : 'w-0'}>{unit}</dd>
+      {difference}
     </div>
   );
 }

@@ -18,6 +18,8 @@ export const StripCanvas = memo(function StripCanvas({ picture, ratio, theme }: 
   useLayoutEffect(() => {
     const context = canvas.current?.getContext('2d');
     if (!canvas.current || !context) return;
+    context.setTransform(1, 0, 0, 1, 0, 0);
+    context.clearRect(0, 0, canvas.current.width, canvas.current.height);
     drawStrip({ context, ratio, palette: paletteOf(theme) }, picture);
   }, [picture, ratio, theme, areFontsReady]);
 

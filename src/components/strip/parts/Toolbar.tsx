@@ -1,22 +1,26 @@
 import { type ReactNode } from 'react';
-import { type BandFraction } from '#lib/acoustics/bands';
-import { type Display } from '../hooks/usePicture';
+import { type Display } from '../hooks/useLevels';
 import { type TimeViewControl } from '../hooks/useTimeView';
 import { spanSec } from '../model/timeView';
 
 interface ToolbarProps {
   control: TimeViewControl;
   display: Display;
-  stationFraction: BandFraction;
+  /** Whether every strip has thirds: else only octaves can be compared. */
+  mayShowThirds: boolean;
   onDisplay: (display: Display) => void;
 }
 
 /** Zoom, pan, and how levels are shown. */
-export function Toolbar({ control, display, stationFraction, onDisplay }: ToolbarProps) {
+export function Toolbar({ control, display, mayShowThirds, onDisplay }: ToolbarProps) {
   const { view, zoom, pan } = control;
   const { weighting, fraction } = display;
   return (
-    <div className="flex flex-wrap items-center gap-x-4 gap-y-2 text-small" role="toolbar" aria-label="Strip">
+    <div
+      className="mb-2 flex flex-wrap items-center gap-x-4 gap-y-2 text-small"
+      role="toolbar"
+      aria-label="Strip"
+    >
       <div className="flex items-center">
         <IconButton label="Earlier" onPress={() => pan(-spanSec(view) / 2)}>
           <path d="M10 3 5 8l5 5" />
@@ -40,7 +44,7 @@ export function Toolbar({ control, display, stationFraction, onDisplay }: Toolba
         label="Bands"
         chosen={String(fraction)}
         options={
-          stationFraction === 3
+          mayShowThirds
             ? [
                 ['3', 'thirds'],
                 ['1', 'octaves'],

@@ -21,6 +21,11 @@ export async function stationsOf(networkId: number): Promise<Station[]> {
   );
 }
 
+/** Codes and names of a network's stations, by code. */
+export async function stationNames(networkId: number): Promise<{ code: string; name: string }[]> {
+  return (await listStations(networkId)).map(({ code, name }) => ({ code, name }));
+}
+
 /** One station with its newest interval and state. */
 export async function stationNow(station: StationRow): Promise<Station> {
   const nowSec = Math.floor(Date.now() / 1000);

@@ -3,7 +3,7 @@ import { listLimitVersions, type LimitVersion } from '#db/queries/limits';
 import { type PeriodKind } from '#lib/acoustics/dayEveningNight';
 import { type Span } from '#lib/services/levels/spans';
 
-/** A limit of the A-weighted level for the time that one version of it was in force. */
+/** A limit of the A-weighted level, in windows that are drawn, for the time that one version of it was in force. */
 export interface LimitInForce {
   id: number;
   name: string;
@@ -20,18 +20,21 @@ export interface LimitInForce {
   effectiveToSec: number | null;
 }
 
-/** Limits of LAeq or LAFmax that hold, or held, for a station: every version with its time in force. */
+/** Limits of LAeq or LAFmax in fixed windows of 15 min, 1 h or a period of day, the ones that are drawn, that hold, or held, for a station: every version with its time in force. */
 export async function limitsOfStation(networkId: number, stationId: number): Promise<LimitInForce[]> {
   const versions = await listLimitVersions(networkId);
   return versions.flatMap((version, at) => {
-    if (version.metric === 'bandLeq' || !concerns(version, stationId)) return [];
+    const { metric, averaging } = version;
+    if (metric === 'bandLeq' || averaging === 'length' || averaging === 'hours' || version.stepMin !== null)
+      return [];
+    if (!concerns(version, stationId)) return [];
     const next = versions[at + 1];
     return [
       {
         id: version.id,
         name: version.name,
-        metric: version.metric,
-        averaging: version.averaging,
+        metric,
+        averaging,
         thresholdDb: version.thresholdTenths / 10,
         weekdays: version.weekdays,
         fromMin: version.fromMin,
