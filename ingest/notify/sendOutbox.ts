@@ -18,6 +18,8 @@ export interface SenderSettings {
   /** Names this process; a lease is its own only. */
   holder: string;
   resolvers: Record<string, MailResolver>;
+  /** 0 to 1, by which waits are scattered. */
+  random?: () => number;
 }
 
 /** An attempt that takes longer is broken off. */
@@ -26,11 +28,15 @@ const ATTEMPT_SEC = 90;
 const LEASE_SEC = 150;
 const FIRST_WAIT_SEC = 60;
 const LONGEST_WAIT_SEC = 3600;
+/** Share of a wait by which it is longer or shorter, so that what failed together does not come back together. */
+const SCATTER = 0.2;
 const GIVE_UP_AFTER_SEC = 5 * 86_400;
+/** What was tried less often is not given up: it waited for a sender, or a person has it tried again. */
+const LEAST_ATTEMPTS = 8;
 
 /**
  * Sends the message that is due longest: at least once, under a fixed Message-ID. A failure is tried again after a wait that
- * doubles up to an hour, for five days; then the message is dead and stays visible.
+ * doubles up to about an hour, for five days; then the message is dead and stays visible until a person has it tried again.
  * @returns how many were tried: 1, or 0 when none is due.
  */
 export async function sendDueMail(settings: SenderSettings, now: Date): Promise<number> {
@@ -59,7 +65,13 @@ async function sendOne(mail: LeasedMail, settings: SenderSettings, now: Date): P
       signal: AbortSignal.timeout(ATTEMPT_SEC * 1000),
     });
   } catch (error) {
-    await markMailFailed(mail.id, holder, reasonOf(error, mail), nextAttemptAt(mail, now), pool());
+    await markMailFailed(
+      mail.id,
+      holder,
+      reasonOf(error, mail),
+      nextAttemptAt(mail, now, settings.random ?? Math.random),
+      pool(),
+    );
     return;
   }
   await markMailSent(mail.id, holder, pool());
@@ -81,8 +93,10 @@ async function bodyOf(mail: LeasedMail, { resolvers }: SenderSettings): Promise<
   return resolve(mail);
 }
 
-function nextAttemptAt({ attempts, createdAt }: LeasedMail, now: Date): Date | null {
-  if (now.getTime() - createdAt.getTime() > GIVE_UP_AFTER_SEC * 1000) return null;
+function nextAttemptAt({ attempts, createdAt }: LeasedMail, now: Date, random: () => number): Date | null {
+  const isOld = now.getTime() - createdAt.getTime() > GIVE_UP_AFTER_SEC * 1000;
+  if (isOld && attempts + 1 >= LEAST_ATTEMPTS) return null;
   const waitSec = Math.min(LONGEST_WAIT_SEC, FIRST_WAIT_SEC * 2 ** Math.min(attempts, 10));
-  return new Date(now.getTime() + waitSec * 1000);
+  const scattered = waitSec * (1 + SCATTER * (2 * random() - 1));
+  return new Date(now.getTime() + scattered * 1000);
 }

@@ -41,6 +41,7 @@ function sender(holder: string, changes: Partial<SenderSettings> = {}): SenderSe
     from: 'bittern@merrow.example',
     holder,
     resolvers: {},
+    random: () => 0.5,
     ...changes,
   };
 }
@@ -85,6 +86,27 @@ test('a failure waits longer each time, keeps its Message-ID, and is given up af
   ]);
   await sendDueMail(failing, new Date(Date.now() + 6 * 86_400_000));
   expect(await rows()).toMatchObject([{ state: 'dead' }]);
+  await put('old');
+  await db()('outbox')
+    .where({ dedupe_key: 'old' })
+    .update({ created_at: new Date(Date.now() - 6 * 86_400_000) });
+  await sendDueMail(failing, new Date());
+  expect((await rows())[1]).toMatchObject({ state: 'waiting', attempts: 1 });
+});
+
+test('waits are scattered by a fifth at most, so that a thousand messages do not come back in one second', async () => {
+  const failing = { transport: { sendMail: async () => Promise.reject(new Error('421 busy')) } as never };
+  const now = new Date();
+  for (const [key, random] of [
+    ['low', 0],
+    ['high', 1],
+  ] as const) {
+    await put(key);
+    await sendDueMail(sender('one', { ...failing, random: () => random }), new Date());
+  }
+  const waits = (await rows()).map((row) => Math.round((row.next_attempt_at - now.getTime()) / 1000));
+  expect(Math.abs((waits[0] ?? 0) - 48)).toBeLessThan(3);
+  expect(Math.abs((waits[1] ?? 0) - 72)).toBeLessThan(3);
 });
 
 test('a sender that dies between handing over and noting it repeats the message once, under the same Message-ID', async () => {
