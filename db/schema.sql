@@ -794,6 +794,16 @@ CREATE TABLE `station_latest` (
   KEY `station_latest_received` (`received_at`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
+CREATE TABLE `station_placements` (
+  `station_id` int(10) unsigned NOT NULL,
+  `effective_from` int(10) unsigned NOT NULL COMMENT 'epoch seconds UTC',
+  `placement` enum('free-field','facade') NOT NULL,
+  `facade_correction_db` double NOT NULL COMMENT 'taken off levels measured at a facade, when reporting incident sound',
+  `created_by` char(36) DEFAULT NULL,
+  `created_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`station_id`,`effective_from`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci COMMENT='a station without a row has stood as its own row says ever since';
+
 CREATE TABLE `station_tokens` (
   `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
   `station_id` int(10) unsigned NOT NULL,
@@ -820,6 +830,7 @@ CREATE TABLE `stations` (
   `first_band_index` tinyint(4) NOT NULL COMMENT 'n of 1000 Hz times 10^(n/10)',
   `last_band_index` tinyint(4) NOT NULL,
   `placement` enum('free-field','facade') NOT NULL DEFAULT 'free-field',
+  `facade_correction_db` double NOT NULL DEFAULT 3 COMMENT 'as of the newest placement',
   `mast_height_m` double DEFAULT NULL,
   `surroundings` varchar(500) NOT NULL DEFAULT '',
   `accepts_from` int(10) unsigned DEFAULT NULL COMMENT 'epoch seconds; older intervals are refused as too-old; null: no bound',

@@ -15,6 +15,8 @@ export interface StationRow {
   firstBandIndex: number;
   lastBandIndex: number;
   placement: Placement;
+  /** Taken off a level measured at a façade when incident sound is reported, dB. */
+  facadeCorrectionDb: number;
   mastHeightM: number | null;
   surroundings: string;
   /** Epoch seconds; older intervals are refused; null: no bound. */
@@ -35,6 +37,7 @@ const STATION_COLUMNS = {
   firstBandIndex: 'first_band_index',
   lastBandIndex: 'last_band_index',
   placement: 'placement',
+  facadeCorrectionDb: 'facade_correction_db',
   mastHeightM: 'mast_height_m',
   surroundings: 'surroundings',
   acceptsFromSec: 'accepts_from',
@@ -75,7 +78,10 @@ export async function listStationIds(conn: Connection = pool()): Promise<number[
   return conn('stations').orderBy('id').pluck('id');
 }
 
-export type NewStation = Omit<StationRow, 'id' | 'createdAt' | 'retiredAt'>;
+/** What is left out holds as the table says. */
+type Defaulted = 'facadeCorrectionDb';
+export type NewStation = Omit<StationRow, 'id' | 'createdAt' | 'retiredAt' | Defaulted> &
+  Partial<Pick<StationRow, Defaulted>>;
 
 /** Adds a station and answers its id. A code that the network has already fails with MariaDB's duplicate-key error. */
 export async function insertStation(station: NewStation, conn: Connection): Promise<number> {

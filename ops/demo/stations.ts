@@ -2,6 +2,7 @@ import { mkdirSync, readFileSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { db } from '#db/client';
 import type { StationRow } from '#db/queries/stations';
+import { FACADE_CORRECTION_DB } from '#lib/acoustics/facade';
 import { registerStation } from '#lib/services/stations/register';
 import type { MonitorSetup } from '#ingest/monitor/soundscape/record';
 import { STATION_SITES, type StationSite } from '#ops/standins/tiles/sites';
@@ -43,6 +44,7 @@ export async function seedStations(
         firstBandHz,
         lastBandHz,
         placement: site.placement,
+        facadeCorrection: FACADE_CORRECTION_DB,
         mastHeight: site.mastHeightM,
         surroundings: site.surroundings,
         acceptsFrom: null,

@@ -5,6 +5,8 @@ export const STATION_LABELS = {
   latitude: 'Latitude',
   longitude: 'Longitude',
   placement: 'Microphone',
+  facadeCorrection: 'Façade correction',
+  placementFrom: 'Holds from',
   mastHeight: 'Height',
   surroundings: 'Surroundings',
   bandFraction: 'Bands',

@@ -81,6 +81,28 @@ export const statisticsSchema = z.object({
 });
 export type Statistics = z.output<typeof statisticsSchema>;
 
+const placementSpanSchema = z.object({
+  from: z.string(),
+  to: z.string(),
+  placement: z.enum(['free-field', 'facade']),
+  correction: z
+    .number()
+    .describe('Added to what was measured, dB: −3 at a façade by default, 0 in the free field'),
+});
+export type PlacementSpan = z.output<typeof placementSpanSchema>;
+
+/** Level of the sound without a façade's reflection, and how the microphone stood, stretch by stretch. */
+export const incidentSchema = z.object({
+  LAeq: level('A-weighted equivalent level of the incident sound'),
+  placements: z.array(placementSpanSchema),
+});
+export type Incident = z.output<typeof incidentSchema>;
+
+/** What the interface answers of a period: its figures, and what made them. */
+export const statisticsAnswerSchema = statisticsSchema.extend({
+  incident: incidentSchema.describe('Every other figure is as measured'),
+});
+
 const periodSchema = z.object({
   from: z.string(),
   to: z.string(),
@@ -135,7 +157,7 @@ registerRoute({
     params,
     query: z.object({ from: z.string(), to: z.string(), validity: z.enum(['rules', 'all']).optional() }),
   },
-  responses: { 200: answer('The figures, unrounded', statisticsSchema) },
+  responses: { 200: answer('The figures, unrounded', statisticsAnswerSchema) },
 });
 registerRoute({
   access: 'person',

@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { bandByNominalHz } from '#lib/acoustics/bands';
+import { FACADE_CORRECTION_DB } from '#lib/acoustics/facade';
 import { FLAG_NAMES } from '#lib/acoustics/validity';
 import { instant, reasonText, shortText } from './common';
 import { registerRoute } from './registry';
@@ -26,6 +27,11 @@ const bandFraction = z.union([z.literal(1), z.literal(3)], 'must be 1 (octaves) 
 
 const optional = {
   placement: z.enum(['free-field', 'facade']).describe('Free field, or in front of a façade'),
+  facadeCorrection: z
+    .number('must be a number of dB')
+    .min(0, 'must be 0 to 6 dB')
+    .max(6, 'must be 0 to 6 dB')
+    .describe('Taken off levels measured at a façade when incident sound is reported, dB; 3 by default'),
   mastHeight: z
     .number('must be a number of metres')
     .min(0, 'must be 0 to 200 m')
@@ -68,6 +74,7 @@ export const newStationSchema = z
     firstBandHz: bandHz,
     lastBandHz: bandHz,
     placement: optional.placement.default('free-field'),
+    facadeCorrection: optional.facadeCorrection.default(FACADE_CORRECTION_DB),
     mastHeight: optional.mastHeight.default(null),
     surroundings: optional.surroundings.default(''),
     acceptsFrom: optional.acceptsFrom.default(null),
@@ -87,6 +94,9 @@ export const stationChangesSchema = z
     firstBandHz: bandHz,
     lastBandHz: bandHz,
     ...optional,
+    placementFrom: instant
+      .nullable()
+      .describe('From when on a new placement or façade correction holds; null or left out: from now on'),
     retired: z.boolean().describe('A retired station takes no more posts; its data stay'),
     reason: reasonText.describe('Why, for the audit trail'),
   })
@@ -118,7 +128,8 @@ export const stationSchema = z.object({
   intervalSeconds: z.number().int(),
   firstBandHz: z.number(),
   lastBandHz: z.number(),
-  placement: z.enum(['free-field', 'facade']),
+  placement: z.enum(['free-field', 'facade']).describe('As of now; dated in `placements` of the statistics'),
+  facadeCorrection: z.number().describe('dB taken off at a façade when incident sound is reported'),
   mastHeight: z.number().nullable().describe('m'),
   surroundings: z.string(),
   acceptsFrom: z.string().nullable(),

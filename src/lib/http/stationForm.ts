@@ -32,7 +32,10 @@ export async function changeFromForm(
 ): Promise<void> {
   const change = await changeStation(
     station,
-    stationChangesSchema.parse(stationOfForm(values, zone)),
+    stationChangesSchema.parse({
+      ...stationOfForm(values, zone),
+      placementFrom: typedInstant(values.text['placementFrom'] ?? '', zone),
+    }),
     userId,
   );
   if (change.outcome === 'refused') throw invalidFields(change.fields);
@@ -66,6 +69,7 @@ function stationOfForm({ text }: FormValues, zone: string) {
     latitude: typedNumber(text['latitude']) ?? NaN,
     longitude: typedNumber(text['longitude']) ?? NaN,
     placement: text['placement'],
+    facadeCorrection: typedNumber(text['facadeCorrection']) ?? NaN,
     mastHeight: typedNumber(text['mastHeight']) ?? null,
     surroundings: text['surroundings'] ?? '',
     firstBandHz: typedNumber(text['firstBandHz']) ?? NaN,

@@ -24,6 +24,7 @@ export const STATION_FORM = {
   latitude: '54,1032',
   longitude: '\u22121.5907',
   placement: 'facade',
+  facadeCorrection: '3',
   mastHeight: '4.5',
   surroundings: '',
   bandFraction: '3',

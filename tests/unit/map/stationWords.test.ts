@@ -13,6 +13,7 @@ const station: Station = {
   firstBandHz: 20,
   lastBandHz: 20000,
   placement: 'free-field',
+  facadeCorrection: 3,
   mastHeight: 4,
   surroundings: '',
   acceptsFrom: null,

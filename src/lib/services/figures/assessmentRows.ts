@@ -5,7 +5,7 @@ import { type FigureRow } from '#lib/contracts/figureSheet';
 import { type Statistics } from '#lib/contracts/levels';
 import { type PeriodFigures } from '../levels/figures';
 import { type PeriodInstruments } from './instruments';
-import { figureRow } from './levelRows';
+import { figureRow } from './figureRow';
 import { ratingRows } from './ratingRows';
 import { type RatingEntry } from './ratingForm';
 import { type MeasuredHour } from './heatMap';

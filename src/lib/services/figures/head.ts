@@ -1,18 +1,25 @@
 import { bandAt, bandLabel } from '#lib/acoustics/bands';
 import { type Fact, type IntervalFacts } from '#lib/contracts/figureSheet';
+import { type Incident } from '#lib/contracts/levels';
 import { formatDuration } from '#lib/format/durations';
 import { formatCoverage } from '#lib/format/levels';
 import { formatPeriod, formatZone } from '#lib/format/times';
+import { placementWords } from './facadeRows';
 import { type PeriodFigures } from '../levels/figures';
 import { type PeriodInstruments } from './instruments';
 import { type SheetSource } from './source';
+
+export interface HeadFacts {
+  intervals: IntervalFacts | null;
+  instruments: PeriodInstruments;
+  incident: Incident;
+}
 
 /** What the figures are of, fact by fact. */
 export function headOf(
   source: SheetSource,
   figures: PeriodFigures,
-  intervals: IntervalFacts | null,
-  instruments: PeriodInstruments,
+  { intervals, instruments, incident }: HeadFacts,
 ): Fact[] {
   const { station, period, timeZone, nowSec } = source;
   const { seconds, coverage, minimumCoverage, meetsMinimum } = figures;
@@ -23,7 +30,7 @@ export function headOf(
   const toCome = period.toSec > nowSec ? ` of which ${formatDuration(seconds.expected)} have elapsed` : '';
   return [
     { name: 'Station', words: `${station.name} (${station.code})` },
-    { name: 'Place', words: `${station.placement === 'facade' ? 'at a façade' : 'free field'}${height}` },
+    { name: 'Place', words: `${placementWords(incident, timeZone)}${height}` },
     {
       name: 'Measures',
       words: `${station.bandFraction === 3 ? 'one-third octaves' : 'octaves'} ${edges.join('–')}, intervals of ${formatDuration(station.intervalSec)}`,

@@ -1,35 +1,15 @@
-import { incidentLevel } from '#lib/acoustics/facade';
 import { levelFromBandsDb } from '#lib/acoustics/weighting';
 import { type FigureRow } from '#lib/contracts/figureSheet';
-import { EXCEEDANCE_PERCENTS, type Statistics } from '#lib/contracts/levels';
+import { EXCEEDANCE_PERCENTS, type Incident, type Statistics } from '#lib/contracts/levels';
 import { bandLabel } from '#lib/acoustics/bands';
 import { formatDuration } from '#lib/format/durations';
 import { formatCoverage } from '#lib/format/levels';
 import { type PeriodFigures } from '../levels/figures';
+import { facadeRows } from './facadeRows';
+import { figureRow, type RowWords } from './figureRow';
 import { missingExceedance, samplesNeeded } from './samples';
 import { coveredOf, type SheetSource } from './source';
 import { stationBands } from './stationBands';
-
-/** What a row has of its own; the rest is the same for most. */
-export type RowWords = Pick<FigureRow, 'key' | 'name' | 'value' | 'convention'> &
-  Partial<Pick<FigureRow, 'unit' | 'decimals' | 'isDifference' | 'note'>> & { ifMissing: string };
-
-/** A row of a table of figures; `ifMissing` says why there is no value, where there is none. */
-export function figureRow(
-  { ifMissing, ...words }: RowWords,
-  { coverage, meetsMinimum }: Pick<FigureRow, 'coverage' | 'meetsMinimum'>,
-): FigureRow {
-  return {
-    unit: 'dB',
-    decimals: 1,
-    isDifference: false,
-    note: null,
-    ...words,
-    coverage,
-    meetsMinimum,
-    missing: words.value === null ? ifMissing : null,
-  };
-}
 
 /** How levels exceeded N % of the time are made, told once for all of them. */
 export const EXCEEDANCE_CONVENTION =
@@ -38,7 +18,12 @@ export const EXCEEDANCE_CONVENTION =
   'Bittern’s own rule.';
 
 /** The levels of the period, A, C and Z. */
-export function levelRows(source: SheetSource, figures: PeriodFigures, statistics: Statistics): FigureRow[] {
+export function levelRows(
+  source: SheetSource,
+  figures: PeriodFigures,
+  statistics: Statistics,
+  incident: Incident,
+): FigureRow[] {
   const { sums } = figures.levels;
   const none = sums.validSec === 0;
   const empty = 'No valid data in this period.';
@@ -53,7 +38,7 @@ export function levelRows(source: SheetSource, figures: PeriodFigures, statistic
       convention: 'Energy mean of the valid intervals by duration; missing time is not silence (ISO 1996-1).',
       ifMissing: empty,
     }),
-    ...facadeRows(source, figures, statistics),
+    ...facadeRows(incident, figures, source.timeZone),
     lceqRow(source, figures, statistics),
     zeqRow(source, figures),
     row({
@@ -101,24 +86,6 @@ function exceedanceRow(percent: number, figures: PeriodFigures, statistics: Stat
     },
     figures,
   );
-}
-
-function facadeRows({ station }: SheetSource, figures: PeriodFigures, { LAeq }: Statistics): FigureRow[] {
-  const { levelDb, correctionDb } = incidentLevel(LAeq, station.placement);
-  if (correctionDb === 0) return [];
-  return [
-    figureRow(
-      {
-        key: 'LAeqIncident',
-        name: 'LAeq of the incident sound',
-        value: levelDb,
-        convention: `The microphone stands at a façade: measured level less ${-correctionDb} dB (Directive 2002/49/EC Annex I).`,
-        note: 'Every other figure is as measured.',
-        ifMissing: 'No valid data in this period.',
-      },
-      figures,
-    ),
-  ];
 }
 
 function lceqRow(source: SheetSource, figures: PeriodFigures, { LCeq }: Statistics): FigureRow {

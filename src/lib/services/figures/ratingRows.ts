@@ -3,7 +3,7 @@ import { type FigureRow } from '#lib/contracts/figureSheet';
 import { type Statistics } from '#lib/contracts/levels';
 import { formatLevelDb } from '#lib/format/levels';
 import { type PeriodFigures } from '../levels/figures';
-import { figureRow } from './levelRows';
+import { figureRow } from './figureRow';
 import { type RatingEntry } from './ratingForm';
 import { missingExceedance } from './samples';
 

@@ -5,6 +5,7 @@ import { type FigureSheet } from '#lib/contracts/figureSheet';
 import { exclusionPage } from '../exclusions/list';
 import { dateSettings, datePeriods } from '../levels/datePeriods';
 import { periodFigures } from '../levels/figures';
+import { incidentOf } from '../levels/incident';
 import { QuarterSeries } from '../levels/quarterSeries';
 import { type Span } from '../levels/spans';
 import { statisticsOf } from '../levels/statistics';
@@ -60,6 +61,7 @@ export async function figureSheet(query: SheetQuery, conn: Connection = pool()):
   const pass = isReadable(source) ? await readIntervals(source) : null;
   const hours = await measuredHours(source);
   const instruments = await instrumentsOf(source);
+  const incident = await incidentOf({ station, ...period, timeline, nowSec }, statistics.LAeq, conn);
   const dates = await dateRows(source);
   const notRead = pass ? null : notReadWords(source);
   return {
@@ -74,11 +76,11 @@ export async function figureSheet(query: SheetQuery, conn: Connection = pool()):
     meetsMinimum: figures.meetsMinimum,
     minimumCoverage: figures.minimumCoverage,
     sampleSeconds: statistics.sampleSeconds,
-    head: headOf(source, figures, pass?.facts ?? null, instruments),
+    head: headOf(source, figures, { intervals: pass?.facts ?? null, instruments, incident }),
     intervals: pass?.facts ?? null,
     intervalsMissing: notRead,
     exclusions: await standingExclusions(source),
-    levels: levelRows(source, figures, statistics),
+    levels: levelRows(source, figures, statistics, incident),
     exceedanceConvention: EXCEEDANCE_CONVENTION,
     assessments: assessmentRows(source, figures, statistics, hours, query.rating, instruments),
     tonality: tonalityOf(source, levels, pass?.tones.result() ?? null),

@@ -3,7 +3,7 @@ import { type FigureRow } from '#lib/contracts/figureSheet';
 import { type PeriodFigures } from '../levels/figures';
 import { type MeasuredHour } from './heatMap';
 import { type PeriodInstruments } from './instruments';
-import { figureRow } from './levelRows';
+import { figureRow } from './figureRow';
 
 /** Expanded uncertainty of the period's LAeq: drift left out, gaps by hourly energies. */
 export function uncertaintyRow(

@@ -1,8 +1,11 @@
 import { appendAudit } from '#db/queries/audit';
 import { inTransaction } from '#db/queries/connection';
+import { insertPlacement } from '#db/queries/stationPlacements';
 import { findStationById, updateStation, type StationRow } from '#db/queries/stations';
 import { bandAt, bandByNominalHz } from '#lib/acoustics/bands';
+import { formatInstantUtc } from '#lib/contracts/common';
 import { bandRangeIssues, type StationChanges } from '#lib/contracts/stations';
+import { placementChange } from './placementChange';
 
 export type StationChange =
   | { outcome: 'changed'; station: StationRow }
@@ -26,13 +29,22 @@ export async function changeStation(
   }
   const after = differing(station, rowOf(station, changes));
   if (Object.keys(after).length === 0) return { outcome: 'changed', station };
+  const placement = await placementChange(station, after, changes.placementFrom ?? null);
+  if (placement.outcome === 'refused') return placement;
   const before = Object.fromEntries(Object.keys(after).map((key) => [key, station[key as keyof Row]]));
   return inTransaction(async (transaction) => {
     await updateStation(station.id, after, transaction);
+    for (const row of placement.rows) await insertPlacement(station.id, row, userId, transaction);
     const { networkId } = station;
     const action = changes.retired === undefined ? 'station.change' : retirement(changes.retired);
     const subject = `station ${station.code}`;
-    const detail = { before, after, ...(changes.reason !== undefined && { reason: changes.reason }) };
+    const from = placement.rows.at(-1)?.effectiveFromSec;
+    const detail = {
+      before,
+      after,
+      ...(from !== undefined && { placementFrom: formatInstantUtc(from) }),
+      ...(changes.reason !== undefined && { reason: changes.reason }),
+    };
     await appendAudit({ userId, networkId, action, subject, detail }, transaction);
     const changed = await findStationById(station.id, transaction);
     return { outcome: 'changed', station: changed ?? station };
@@ -53,6 +65,7 @@ function rowOf(station: StationRow, changes: StationChanges): Row {
     firstBandIndex: indexOf(changes.firstBandHz),
     lastBandIndex: indexOf(changes.lastBandHz),
     placement: changes.placement,
+    facadeCorrectionDb: changes.facadeCorrection,
     mastHeightM: changes.mastHeight,
     surroundings: changes.surroundings,
     acceptsFromSec: changes.acceptsFrom,

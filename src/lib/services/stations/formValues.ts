@@ -11,6 +11,8 @@ export function stationFormText(station: StationRow, zone: string): Record<strin
     latitude: String(station.latitude),
     longitude: String(station.longitude),
     placement: station.placement,
+    facadeCorrection: String(station.facadeCorrectionDb),
+    placementFrom: '',
     mastHeight: station.mastHeightM === null ? '' : String(station.mastHeightM),
     surroundings: station.surroundings,
     bandFraction: String(station.bandFraction),
@@ -24,6 +26,7 @@ export function stationFormText(station: StationRow, zone: string): Record<strin
 /** What a form for a station that is new shows at first: a one-minute monitor of one-third octaves. */
 export const NEW_STATION_TEXT: Readonly<Record<string, string>> = {
   placement: 'free-field',
+  facadeCorrection: '3',
   bandFraction: '3',
   firstBandHz: '25',
   lastBandHz: '10000',

@@ -27,6 +27,7 @@ export async function registerStation(
     firstBandIndex: bands[0]?.index ?? 0,
     lastBandIndex: bands.at(-1)?.index ?? 0,
     placement: input.placement,
+    facadeCorrectionDb: input.facadeCorrection,
     mastHeightM: input.mastHeight,
     surroundings: input.surroundings,
     acceptsFromSec: input.acceptsFrom,

@@ -25,6 +25,7 @@ export function stationView(
     firstBandHz: bandAt(bandFraction, station.firstBandIndex).nominalHz,
     lastBandHz: bandAt(bandFraction, station.lastBandIndex).nominalHz,
     placement: station.placement,
+    facadeCorrection: station.facadeCorrectionDb,
     mastHeight: station.mastHeightM,
     surroundings: station.surroundings,
     acceptsFrom: station.acceptsFromSec === null ? null : formatInstantUtc(station.acceptsFromSec),

@@ -3,6 +3,7 @@ import { ALL_ROLES } from '#lib/auth/roles';
 import { parseChoice, parsePeriod } from '#lib/http/parse';
 import { json } from '#lib/http/respond';
 import { route } from '#lib/http/route';
+import { incidentOf } from '#lib/services/levels/incident';
 import { periodStatistics } from '#lib/services/levels/statistics';
 
 export const GET = route(async (context) => {
@@ -10,5 +11,7 @@ export const GET = route(async (context) => {
   const station = await requireStation(network.id, context.params.code);
   const period = parsePeriod(context.url);
   const validity = parseChoice(context.url, 'validity', ['rules', 'all']);
-  return json(await periodStatistics({ station, ...period, validity }));
+  const query = { station, ...period, validity };
+  const statistics = await periodStatistics(query);
+  return json({ ...statistics, incident: await incidentOf(query, statistics.LAeq) });
 });
