@@ -2,6 +2,7 @@ import { schedule } from 'node-cron';
 import { closeDb } from '#db/client';
 import { log } from '#lib/config/log';
 import { aggregate } from './jobs/aggregate';
+import { composeAlerts } from './jobs/composeAlerts';
 import { completeEndedPeriods } from './jobs/completePeriods';
 import { housekeeping } from './jobs/housekeeping';
 import { importFiles } from './jobs/importFiles';
@@ -11,6 +12,7 @@ import { remindOfCalibrations } from './jobs/remindCalibrations';
 import { shiftClocks } from './jobs/shiftClocks';
 import { sendMail } from './jobs/sendMail';
 import { runDueSlots, type SlotJob } from './jobs/slots';
+import { watchDrifts } from './jobs/watchDrifts';
 import { watchHealth } from './jobs/watchHealth';
 
 /** Done round by round, as much as there is. Aggregation rests longer: figures that are asked for meanwhile are current anyway. */
@@ -19,6 +21,7 @@ const LOOPS: LoopSettings[] = [
   { name: 'judge-limits', everySec: 5, work: judgeLimits },
   { name: 'import-files', everySec: 2, work: importFiles },
   { name: 'shift-clocks', everySec: 2, work: shiftClocks },
+  { name: 'compose-alerts', everySec: 10, work: composeAlerts },
   { name: 'send-mail', everySec: 2, work: sendMail },
   { name: 'watch-health', everySec: 60, work: watchHealth },
 ];
@@ -28,6 +31,7 @@ const SLOT_JOBS: SlotJob[] = [
   { name: 'tick', slotMinutes: 1, run: async () => 'alive' },
   { name: 'complete-periods', slotMinutes: 15, run: completeEndedPeriods },
   { name: 'housekeeping', slotMinutes: 60, run: housekeeping },
+  { name: 'watch-drifts', slotMinutes: 24 * 60, run: watchDrifts },
   { name: 'remind-calibrations', slotMinutes: 60, run: remindOfCalibrations },
 ];
 

@@ -14,6 +14,8 @@ export const KIND_WORDS: Record<TroubleKind, string> = {
   late: 'data late',
   coverage: 'coverage low',
   wind: 'wind stuck',
+  drift: 'drifting',
+  selfcheck: 'self-check off',
 };
 
 interface ThresholdField {
@@ -57,6 +59,18 @@ export const THRESHOLD_FIELDS: readonly ThresholdField[] = [
     label: 'Wind stuck for',
     hint: 'The very same wind speed; a calm has to last four times as long',
     unit: 'h',
+  },
+  {
+    name: 'driftShift',
+    label: 'Drift of',
+    hint: 'The nightly background against the neighbours’, in ten days against eight weeks before',
+    unit: 'dB',
+  },
+  {
+    name: 'selfCheckShift',
+    label: 'Self-checks moved by',
+    hint: 'In ten days against eight weeks before',
+    unit: 'dB',
   },
 ];
 

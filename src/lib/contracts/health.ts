@@ -12,6 +12,8 @@ export const TROUBLE_KINDS = [
   'late',
   'coverage',
   'wind',
+  'drift',
+  'selfcheck',
 ] as const;
 export type TroubleKind = (typeof TROUBLE_KINDS)[number];
 
@@ -32,6 +34,14 @@ export const thresholdsSchema = z.object({
   frozenForMinutes: amount(1, 60).describe('The very same levels, band by band').optional(),
   floorShift: amount(1, 60).describe('dB between the quiet of the last day and the usual').optional(),
   windStuckForHours: amount(0.5, 168).describe('The very same wind speed').optional(),
+  driftShift: amount(0.5, 20)
+    .describe(
+      'dB between the nightly background, against the neighbours’, and what it was eight weeks before',
+    )
+    .optional(),
+  selfCheckShift: amount(0.1, 10)
+    .describe('dB between the self-checks and what they were eight weeks before')
+    .optional(),
 });
 export type Thresholds = z.output<typeof thresholdsSchema>;
 export type FullThresholds = Required<Thresholds>;
@@ -46,6 +56,8 @@ export const DEFAULT_THRESHOLDS: FullThresholds = {
   frozenForMinutes: 15,
   floorShift: 10,
   windStuckForHours: 6,
+  driftShift: 1.5,
+  selfCheckShift: 0.5,
 };
 
 export const healthSettingsSchema = z.object({

@@ -3,7 +3,10 @@ import { clockRule, coverageRule, lateRule, silentRule } from './arrivalRules';
 import { bandsRule, batteryRule, floorRule, frozenRule, windRule } from './contentRules';
 import { UNKNOWN, type Finding, type Rule, type StationEvidence } from './evidence';
 
-const RULES: Record<TroubleKind, Rule> = {
+/** Troubles that the newest data tell of; the others are judged night by night. */
+export type PresentKind = Exclude<TroubleKind, 'drift' | 'selfcheck'>;
+
+const RULES: Record<PresentKind, Rule> = {
   silent: silentRule,
   clock: clockRule,
   frozen: frozenRule,
@@ -22,9 +25,9 @@ const RULES: Record<TroubleKind, Rule> = {
 export function judgeStation(
   evidence: StationEvidence,
   openSince: ReadonlyMap<string, number>,
-): Map<TroubleKind, Finding> {
-  const find = (kind: TroubleKind) => RULES[kind](evidence, openSince.get(kind) ?? null);
+): Map<PresentKind, Finding> {
+  const find = (kind: PresentKind) => RULES[kind](evidence, openSince.get(kind) ?? null);
   const isSilent = find('silent').state === 'bad';
-  const kinds = Object.keys(RULES) as TroubleKind[];
+  const kinds = Object.keys(RULES) as PresentKind[];
   return new Map(kinds.map((kind) => [kind, isSilent && kind !== 'silent' ? UNKNOWN : find(kind)]));
 }

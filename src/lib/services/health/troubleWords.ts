@@ -33,6 +33,10 @@ export function troubleWhat({ kind, measured, bound }: Found): string {
       return `Only ${formatCoverage(measured ?? 0)} of the last 24 hours received, less than ${formatCoverage(bound ?? 0)}`;
     case 'wind':
       return `Wind speed has stayed at exactly ${decimal(measured)} m/s for ${formatDuration(bound ?? 0)}`;
+    case 'drift':
+      return `Nightly background has moved by ${formatDifferenceDb(measured ?? 0)} dB against the neighbouring stations, beyond the bound of ${decimal(bound)} dB`;
+    case 'selfcheck':
+      return `Self-checks have moved by ${formatDifferenceDb(measured ?? 0)} dB, beyond the bound of ${decimal(bound)} dB`;
   }
 }
 
@@ -48,6 +52,10 @@ const ADVICE: Record<TroubleKind, string> = {
   late: 'The monitor is catching up or the link is poor. Wait; if it lasts, look at the link.',
   coverage:
     'See in the coverage calendar what is missing, and fetch it from the instrument’s card if it is there.',
+  drift:
+    'Look whether something new sounds, or has fallen silent, at this place at night. If not, check with the calibrator before the next check is due. Nothing is corrected by it.',
+  selfcheck:
+    'Check with the calibrator before the next check is due: the microphone may be going off. Nothing is corrected by it.',
   wind: 'The wind sensor is stuck or iced: until it is free, wind cannot leave intervals out by itself.',
 };
 

@@ -1,0 +1,54 @@
+import { listOpenTroubles } from '#db/queries/health';
+import { listHealthSettings } from '#db/queries/healthSettings';
+import { listNetworks, type NetworkRow } from '#db/queries/networks';
+import { log } from '#lib/config/log';
+import type { Drift, DriftVerdictJson } from '#lib/contracts/drift';
+import { driftSource, stationDrift } from '#lib/services/drift/stationDrift';
+import { FINE, UNKNOWN, type Finding } from '#lib/services/health/evidence';
+import { follow, watchOf } from './follow';
+
+/**
+ * Judges the nightly background and the self-checks of every station in use, and tells of drift as of any other trouble; nothing is
+ * corrected by it. Safe to run twice and on two machines. @returns how many began or were over.
+ */
+export async function watchDrift(now: Date): Promise<number> {
+  let changes = 0;
+  for (const network of await listNetworks()) changes += await watchNetwork(network, now);
+  return changes;
+}
+
+async function watchNetwork(network: NetworkRow, now: Date): Promise<number> {
+  const nowSec = Math.floor(now.getTime() / 1000);
+  const [source, settings, open] = await Promise.all([
+    driftSource(network.id, nowSec),
+    listHealthSettings(network.id),
+    listOpenTroubles(network.id),
+  ]);
+  const watch = await watchOf(network, settings, nowSec);
+  let changes = 0;
+  for (const station of source.stations) {
+    try {
+      const drift = await stationDrift(station, source);
+      for (const [kind, finding] of findingsOf(drift, nowSec)) {
+        const trouble = open.find((one) => one.stationId === station.id && one.kind === kind);
+        if (await follow(watch, station, kind, finding, trouble)) changes += 1;
+      }
+    } catch (error) {
+      // One station's trouble must not hide another's.
+      log().error({ err: error, station: station.code }, 'drift of a station could not be judged');
+    }
+  }
+  return changes;
+}
+
+function findingsOf({ background, selfCheck }: Drift, nowSec: number) {
+  return [
+    ['drift', findingOf(background, nowSec)],
+    ['selfcheck', findingOf(selfCheck, nowSec)],
+  ] as const;
+}
+
+function findingOf({ state, change, bound }: DriftVerdictJson, nowSec: number): Finding {
+  if (state === 'drifting') return { state: 'bad', sinceSec: nowSec, measured: change, bound };
+  return state === 'fine' ? FINE : UNKNOWN;
+}
