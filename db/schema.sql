@@ -369,6 +369,8 @@ CREATE TABLE `exclusions` (
   `withdrawn_at` datetime(3) DEFAULT NULL,
   `withdrawal_reason` varchar(500) DEFAULT NULL,
   `act_id` int(10) unsigned DEFAULT NULL COMMENT 'first exclusion of those that one act made at several stations; null: made alone',
+  `loudest_starts_at` int(10) unsigned DEFAULT NULL COMMENT 'of a rolling limit: the loudest of the windows that make it; level and coverage are its',
+  `loudest_ends_at` int(10) unsigned DEFAULT NULL,
   PRIMARY KEY (`id`),
   KEY `exclusions_period` (`station_id`,`starts_at`,`ends_at`),
   KEY `exclusions_network` (`network_id`,`starts_at`),
@@ -533,7 +535,9 @@ CREATE TABLE `limit_versions` (
   `effective_from` int(10) unsigned NOT NULL COMMENT 'epoch seconds; windows that begin from here on are judged by it',
   `name` varchar(160) NOT NULL,
   `metric` enum('LAeq','LAFmax','bandLeq') NOT NULL,
-  `averaging` enum('15min','1h','day','evening','night') NOT NULL,
+  `averaging` enum('15min','1h','day','evening','night','length','hours') NOT NULL COMMENT 'length: window_min; hours: from_min to to_min of each date, one window',
+  `window_min` smallint(5) unsigned DEFAULT NULL COMMENT 'of averaging length, minutes',
+  `step_min` tinyint(3) unsigned DEFAULT NULL COMMENT 'rolling windows begin so often; null: fixed',
   `band_fraction` tinyint(3) unsigned DEFAULT NULL,
   `band_index` tinyint(4) DEFAULT NULL,
   `threshold_tenths` smallint(6) NOT NULL COMMENT 'exceeded when the level, rounded half up to tenths, is greater',
@@ -569,6 +573,7 @@ CREATE TABLE `memberships` (
   PRIMARY KEY (`user_id`,`network_id`,`role`),
   KEY `memberships_network` (`network_id`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+  `holidays` enum('as-weekday','as-sunday','never','only') NOT NULL DEFAULT 'as-weekday' COMMENT 'what the dates of network_holidays are to it',
 
 CREATE TABLE `network_settings` (
   `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
@@ -601,6 +606,15 @@ CREATE TABLE `outbox` (
   `message_id` varchar(200) NOT NULL COMMENT 'fixed Message-ID, the same at every attempt',
   `dedupe_key` varchar(200) NOT NULL COMMENT 'one message a cause and recipient',
   `network_id` int(10) unsigned DEFAULT NULL,
+CREATE TABLE `network_holidays` (
+  `network_id` int(10) unsigned NOT NULL,
+  `date` char(10) CHARACTER SET ascii COLLATE ascii_general_ci NOT NULL COMMENT 'civil date in the zone of the network',
+  `name` varchar(160) NOT NULL,
+  `created_by` char(36) DEFAULT NULL,
+  `created_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`network_id`,`date`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
   `kind` varchar(40) NOT NULL,
   `recipient` varchar(254) DEFAULT NULL COMMENT 'null: resolved at sending from complaint_reply_id, so that no resident stands here',
   `subject` varchar(300) NOT NULL,

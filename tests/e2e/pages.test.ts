@@ -27,6 +27,8 @@ const ACCESS: Record<string, Access> = {
   '/n/[network]/activities/compare': 'members',
   '/n/[network]/activities/new': 'operator',
   '/design': 'administrator',
+  '/n/[network]/alerts': 'members',
+  '/n/[network]/alerts/mails': 'operator',
   '/n/[network]/complaints': 'members',
   '/n/[network]/complaints/[reference]': 'members',
   '/n/[network]/complaints/form': 'liaison',
@@ -64,6 +66,7 @@ const ACCESS: Record<string, Access> = {
   '/n/[network]/stations/[code]/connect': 'operator',
   '/n/[network]/stations/[code]/edit': 'operator',
   '/n/[network]/stations/[code]/figures': 'members',
+  '/n/[network]/stations/[code]/photos': 'members',
   '/n/[network]/stations/new': 'operator',
   '/n/[network]/summaries': 'members',
   '/n/[network]/summaries/[month]': 'members',
@@ -88,8 +91,8 @@ const APART = new Set([
   '/theme',
 ]);
 
-/** Everybody's own: a calendar to subscribe to. */
-const OWN_FORMS = new Set(['/n/[network]/instruments/settings']);
+/** Everybody's own: what to be sent, a calendar to subscribe to. */
+const OWN_FORMS = new Set(['/n/[network]/alerts', '/n/[network]/instruments/settings']);
 const FORM = 'application/x-www-form-urlencoded';
 const ROLES = ['operator', 'liaison', 'regulator', 'admin'] as const;
 let subjects: Subjects;

@@ -10,6 +10,7 @@ export type Section =
   | 'complaints'
   | 'summaries'
   | 'limits'
+  | 'alerts'
   | 'imports'
   | 'quarantine'
   | 'exclusions'
@@ -30,6 +31,7 @@ export const SECTION_LINKS: readonly SectionLink[] = [
   { section: 'complaints', label: 'Complaints', keepsPeriod: false },
   { section: 'summaries', label: 'Summaries', keepsPeriod: false },
   { section: 'limits', label: 'Limits', keepsPeriod: false },
+  { section: 'alerts', label: 'Alerts', keepsPeriod: false },
   { section: 'instruments', label: 'Instruments', keepsPeriod: false },
   { section: 'plants', label: 'Plant', keepsPeriod: false },
   { section: 'activities', label: 'Operations', keepsPeriod: true },

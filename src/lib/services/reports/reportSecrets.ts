@@ -1,5 +1,5 @@
-import { createHash, createHmac, randomBytes, timingSafeEqual } from 'node:crypto';
-import { config } from '#lib/config/index';
+import { createHash, randomBytes } from 'node:crypto';
+import { isSameSignature, purposeMac } from '../purposeMac';
 
 /** A person needs at least this long to fill in the form; a program does not. */
 const LEAST_FILL_SEC = 4;
@@ -23,7 +23,8 @@ export function renewedStamp(stamp: string, networkId: number, nowSec: number): 
 /** Judges the stamp that came back; one that is none, or of another network, counts as expired. */
 export function checkStamp(stamp: string, networkId: number, nowSec: number): StampState {
   const [, issuedAtSec = '', nonce = '', signed = ''] = STAMP.exec(stamp) ?? [];
-  if (!issuedAtSec || !isEqual(signed, signature(networkId, issuedAtSec, nonce))) return { kind: 'expired' };
+  if (!issuedAtSec || !isSameSignature(signed, signature(networkId, issuedAtSec, nonce)))
+    return { kind: 'expired' };
   const tookSec = nowSec - Number(issuedAtSec);
   if (tookSec > LONGEST_FILL_SEC) return { kind: 'expired' };
   return tookSec < LEAST_FILL_SEC ? { kind: 'too-fast' } : { kind: 'good', nonce };
@@ -34,7 +35,7 @@ export function checkStamp(stamp: string, networkId: number, nowSec: number): St
  * can work a key out without the settings' secret.
  */
 export function privateKeyOf(nonce: string, content: unknown): string {
-  return mac('report key', `${nonce}\n${JSON.stringify(content)}`).toString('base64url');
+  return purposeMac('report key', `${nonce}\n${JSON.stringify(content)}`).toString('base64url');
 }
 
 /** What is kept of a private key. */
@@ -44,20 +45,9 @@ export function keyDigestOf(key: string): Buffer {
 
 /** What is kept of a sender's address: it changes by the day and cannot be turned back. */
 export function addressDigestOf(address: string, now: Date): Buffer {
-  return mac('report address', `${now.toISOString().slice(0, 10)} ${address}`).subarray(0, 16);
+  return purposeMac('report address', `${now.toISOString().slice(0, 10)} ${address}`).subarray(0, 16);
 }
 
 function signature(networkId: number, issuedAtSec: string, nonce: string): string {
-  return mac('report stamp', `${networkId}.${issuedAtSec}.${nonce}`).toString('base64url');
-}
-
-/** The settings' key signs nothing itself: each purpose has a key of its own, derived from it. */
-function mac(purpose: string, text: string): Buffer {
-  const key = createHmac('sha256', config().personalDataKey).update(purpose).digest();
-  return createHmac('sha256', key).update(text).digest();
-}
-
-function isEqual(a: string, b: string): boolean {
-  const [left, right] = [Buffer.from(a), Buffer.from(b)];
-  return left.length === right.length && timingSafeEqual(left, right);
+  return purposeMac('report stamp', `${networkId}.${issuedAtSec}.${nonce}`).toString('base64url');
 }

@@ -29,6 +29,8 @@ export const FINDABLE_PAGES: readonly FindablePage[] = [
   { label: 'Limits', terms: 'thresholds', path: 'limits' },
   { label: 'Set a limit', terms: 'new add threshold', path: 'limits/new', roles: OPERATOR },
   { label: 'Try a limit', terms: 'trial past threshold', path: 'limits/trial', roles: OPERATOR },
+  { label: 'Alerts', terms: 'e-mail digest quiet hours notifications', path: 'alerts' },
+  { label: 'E-mails', terms: 'outbox sent failed resend', path: 'alerts/mails', roles: OPERATOR },
   { label: 'Exclusions', terms: 'invalid left out periods', path: 'exclusions' },
   { label: 'Leave a period out', terms: 'exclude exclusion new', path: 'exclusions/new', roles: OPERATOR },
   { label: 'Plant', terms: 'fans pumps engines machines sources', path: 'plants' },
