@@ -1,58 +1,18 @@
 import knex, { type Knex } from 'knex';
-import { config } from '#lib/config/index';
+import { closeReceiving } from './receiving';
+import { connectionSettings } from './settings';
 
 let pool: Knex | undefined;
 
-/** The process's only connection pool; made at the first call. */
+/** The connection pool of everything but receiving; made at the first call. */
 export function db(): Knex {
   pool ??= knex(connectionSettings());
   return pool;
 }
 
-/** Ends the pool, so that the process can stop. */
+/** Ends every connection, so that the process can stop. */
 export async function closeDb(): Promise<void> {
   const closing = pool;
   pool = undefined;
-  await closing?.destroy();
-}
-
-/**
- * Knex settings for MariaDB: UTC both ways, strict mode (a value out of range is an error, never clamped), affected
- * rows counted as changed rows.
- */
-export function connectionSettings(): Knex.Config {
-  const { database } = config();
-  return {
-    client: 'mysql2',
-    connection: {
-      host: database.host,
-      port: database.port,
-      user: database.user,
-      password: database.password,
-      database: database.name,
-      charset: 'utf8mb4',
-      timezone: 'Z',
-      supportBigNumbers: true,
-      connectTimeout: 5_000,
-      flags: ['-FOUND_ROWS'],
-    },
-    pool: { min: 0, max: database.poolMax, afterCreate: setSessionModes },
-    acquireConnectionTimeout: 5_000,
-    migrations: { directory: 'db/migrations', loadExtensions: ['.mjs'], tableName: 'schema_migrations' },
-  };
-}
-
-interface RawConnection {
-  query(sql: string, done: (error: Error | null) => void): void;
-}
-
-function setSessionModes(
-  connection: RawConnection,
-  done: (error: Error | null, connection: RawConnection) => void,
-) {
-  connection.query(
-    `SET SESSION sql_mode = 'STRICT_ALL_TABLES,ERROR_FOR_DIVISION_BY_ZERO,NO_ENGINE_SUBSTITUTION,ONLY_FULL_GROUP_BY',
-       innodb_lock_wait_timeout = 10, time_zone = '+00:00'`,
-    (error) => done(error, connection),
-  );
+  await Promise.all([closing?.destroy(), closeReceiving()]);
 }

@@ -1,3 +1,3 @@
-import { connectionSettings } from './client';
+import { connectionSettings } from './settings';
 
 export default connectionSettings();

@@ -1,7 +1,7 @@
 import { writeFile } from 'node:fs/promises';
 import { randomBytes } from 'node:crypto';
 import knex from 'knex';
-import { connectionSettings } from './client';
+import { connectionSettings } from './settings';
 import { schemaText } from './schemaText';
 
 /** Writes `db/schema.sql` from the migrations, applied to a database of their own that is dropped afterwards. */

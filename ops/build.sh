@@ -4,7 +4,7 @@ set -euo pipefail
 cd "$(dirname "$0")/.."
 
 sources_digest=$(
-  find src public db/queries db/client.ts ingest astro.config.mjs package-lock.json tsconfig.json -type f -print0 |
+  find src public db/queries db/client.ts db/settings.ts db/receiving.ts ingest astro.config.mjs package-lock.json tsconfig.json -type f -print0 |
     sort --zero-terminated | xargs --null sha256sum | sha256sum | cut -d' ' -f1
 )
 if [ "$(cat dist/.sources 2>/dev/null || true)" != "$sources_digest" ]; then

@@ -1,4 +1,4 @@
-import { pool, type Connection } from './connection';
+import { pool, type Connection, type Writes } from './connection';
 
 /** How far a monitor's clock was ahead of ours in a quarter-hour of ours, by the post with the shortest way. */
 export interface ClockOffset {
@@ -10,7 +10,7 @@ export interface ClockOffset {
 export async function noteOffset(
   stationId: number,
   { quarterStartSec, aheadSec }: ClockOffset,
-  conn: Connection,
+  conn: Writes,
 ): Promise<void> {
   await conn.raw(
     `INSERT INTO clock_offsets (station_id, quarter_starts_at, ahead_sec) VALUES (?, ?, ?)

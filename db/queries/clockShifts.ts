@@ -84,6 +84,14 @@ export interface StandingShift extends ClockEpisode {
   state: Exclude<ClockShiftState, 'reversed'>;
 }
 
+const STANDING = ['moving', 'moved', 'reversing'] as const;
+
+/** The statement that answers a row where any shift of a station stands, or is being made or reversed. */
+export function hasStandingShiftsText(stationId: number): string {
+  const states = STANDING.map((state) => `'${state}'`).join(', ');
+  return `SELECT 1 FROM clock_shifts WHERE station_id = ${stationId} AND state IN (${states}) LIMIT 1`;
+}
+
 /** Shifts of a station that stand, or are being made or reversed, by their beginning. */
 export async function selectStandingShifts(
   stationId: number,
@@ -91,7 +99,7 @@ export async function selectStandingShifts(
 ): Promise<StandingShift[]> {
   return conn('clock_shifts')
     .where({ station_id: stationId })
-    .whereIn('state', ['moving', 'moved', 'reversing'])
+    .whereIn('state', STANDING)
     .orderBy('from_sec')
     .select({
       id: 'id',

@@ -4,6 +4,15 @@ import { db } from '../client';
 /** What every query runs on: the pool, or a transaction that the caller has opened. */
 export type Connection = Knex | Knex.Transaction;
 
+/**
+ * What a write runs on whose answer nobody needs: any connection, or `inReceivingTransaction`, which sends all of them at once.
+ */
+export interface Writes {
+  raw(sql: string, bindings?: readonly Binding[]): PromiseLike<unknown>;
+}
+
+export type Binding = string | number | Date | Buffer | null;
+
 /** The pool itself, the default of every query's last parameter. */
 export function pool(): Connection {
   return db();
@@ -11,7 +20,7 @@ export function pool(): Connection {
 
 const DEADLOCK = 1213;
 const LOCK_WAIT_TIMEOUT = 1205;
-const MOST_ATTEMPTS = 4;
+export const MOST_ATTEMPTS = 4;
 
 /**
  * Runs `work` in one transaction: all of it is durable when the promise resolves, none of it when it rejects.
@@ -26,14 +35,20 @@ export async function inTransaction<T>(
       return await db().transaction(work, settings);
     } catch (error) {
       if (attempt === MOST_ATTEMPTS || !isLockConflict(error)) throw error;
-      await new Promise((resolve) => setTimeout(resolve, 10 * 4 ** attempt * (0.5 + attempt / 8)));
+      await pauseBefore(attempt);
     }
   }
 }
 
-function isLockConflict(error: unknown): boolean {
+/** Whether an error says that a lock stood in the way, so that doing all of it again may succeed. */
+export function isLockConflict(error: unknown): boolean {
   const errno = (error as { errno?: number }).errno;
   return errno === DEADLOCK || errno === LOCK_WAIT_TIMEOUT;
+}
+
+/** Waits longer from attempt to attempt. */
+export function pauseBefore(attempt: number): Promise<void> {
+  return new Promise((resolve) => setTimeout(resolve, 10 * 4 ** attempt * (0.5 + attempt / 8)));
 }
 
 /** What the driver's connections are used for here. */

@@ -1,7 +1,7 @@
 import type { BandFraction } from '#lib/acoustics/bands';
 import { bandSetById } from './bandSets';
 import { type Connection } from './connection';
-import { packLevels, unpackLevels } from './intervalPacking';
+import { packLevelsHex, unpackLevels } from './intervalPacking';
 
 /** One interval as stored: levels in hundredths of a dB, times in epoch seconds UTC. */
 export interface StoredInterval {
@@ -87,26 +87,17 @@ export type NewInterval = Omit<StoredInterval, 'bandFraction' | 'bandIndices'>;
  * every cell is a number or hexadecimal digits, so there is nothing to escape.
  */
 export function intervalCellsText(interval: NewInterval): string {
-  const cells: (number | string | null)[] = [
-    interval.startSec,
-    interval.durationSec,
-    interval.laeqCentiDb,
-    interval.lafmaxCentiDb,
-    interval.lafminCentiDb,
-    interval.lceqCentiDb,
-    interval.lcpeakCentiDb,
-    interval.bandSetId,
-    `x'${packLevels(interval.levelsCentiDb).toString('hex')}'`,
-    interval.flags,
-    hundredths(interval.windSpeedMs),
-    interval.windDirectionDeg,
-    hundredths(interval.temperatureC),
-    hundredths(interval.batteryV),
-    interval.receivedAtSec,
-  ];
-  return cells.map((cell) => cell ?? 'NULL').join(', ');
+  const { startSec, durationSec, laeqCentiDb, lafmaxCentiDb, lafminCentiDb, lceqCentiDb, lcpeakCentiDb } =
+    interval;
+  const { windSpeedMs, windDirectionDeg, temperatureC, batteryV, bandSetId, flags, receivedAtSec } = interval;
+  const levels = `${cell(lafmaxCentiDb)},${cell(lafminCentiDb)},${cell(lceqCentiDb)},${cell(lcpeakCentiDb)}`;
+  const weather = `${hundredths(windSpeedMs)},${cell(windDirectionDeg)},${hundredths(temperatureC)}`;
+  const bands = `${bandSetId},x'${packLevelsHex(interval.levelsCentiDb)}'`;
+  return `${startSec},${durationSec},${laeqCentiDb},${levels},${bands},${flags},${weather},${hundredths(batteryV)},${receivedAtSec}`;
 }
 
-function hundredths(value: number | null): number | null {
-  return value === null ? null : Math.round(value * 100);
+const cell = (value: number | null): number | 'NULL' => value ?? 'NULL';
+
+function hundredths(value: number | null): number | 'NULL' {
+  return value === null ? 'NULL' : Math.round(value * 100);
 }

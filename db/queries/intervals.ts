@@ -1,4 +1,4 @@
-import { pool, type Connection } from './connection';
+import { pool, type Connection, type Writes } from './connection';
 import {
   INTERVAL_COLUMNS,
   intervalCellsText,
@@ -25,14 +25,17 @@ export async function selectIntervals(
   limit?: number,
 ): Promise<StoredInterval[]> {
   const [rows] = await conn
-    .raw(
-      `SELECT ${INTERVAL_COLUMNS} FROM interval_levels
-       WHERE station_id = ? AND starts_at > ? AND starts_at < ? AND starts_at + duration_sec > ?
-       ORDER BY starts_at ${limit === undefined ? '' : 'LIMIT ?'}`,
-      [stationId, fromSec - LONGEST_INTERVAL_SEC, toSec, fromSec, ...(limit === undefined ? [] : [limit])],
-    )
+    .raw(selectIntervalsText(stationId, fromSec, toSec) + (limit === undefined ? '' : ` LIMIT ${limit}`))
     .options({ rowsAsArray: true });
   return intervalsOfCells(rows as IntervalCells[], conn);
+}
+
+/** The statement that reads them, as rows of `IntervalCells`. */
+export function selectIntervalsText(stationId: number, fromSec: number, toSec: number): string {
+  return `SELECT ${INTERVAL_COLUMNS} FROM interval_levels
+    WHERE station_id = ${stationId} AND starts_at > ${fromSec - LONGEST_INTERVAL_SEC} AND starts_at < ${toSec}
+      AND starts_at + duration_sec > ${fromSec}
+    ORDER BY starts_at`;
 }
 
 const ROWS_A_STATEMENT = 600;
@@ -44,7 +47,7 @@ const ROWS_A_STATEMENT = 600;
 export async function insertIntervals(
   stationId: number,
   intervals: readonly NewInterval[],
-  conn: Connection,
+  conn: Writes,
   importId: number | null = null,
 ): Promise<void> {
   const leading = `${stationId}, ${importId ?? 'NULL'}`;

@@ -1,5 +1,5 @@
 import { createHash } from 'node:crypto';
-import { pool, type Connection } from './connection';
+import { pool, type Connection, type Writes } from './connection';
 
 /** A refused record, kept for the operator with its reason. */
 export interface NewQuarantined {
@@ -17,7 +17,7 @@ export async function insertQuarantined(
   stationId: number,
   records: readonly NewQuarantined[],
   receivedAt: Date,
-  conn: Connection,
+  conn: Writes,
 ): Promise<void> {
   await insertRecords(stationId, records, receivedAt, null, conn);
 }
@@ -28,7 +28,7 @@ export async function insertQuarantinedOfImport(
   stationId: number,
   records: readonly NewQuarantined[],
   receivedAt: Date,
-  conn: Connection,
+  conn: Writes,
 ): Promise<void> {
   await insertRecords(stationId, records, receivedAt, importId, conn);
 }
@@ -38,7 +38,7 @@ async function insertRecords(
   records: readonly NewQuarantined[],
   receivedAt: Date,
   importId: number | null,
-  conn: Connection,
+  conn: Writes,
 ): Promise<void> {
   for (let first = 0; first < records.length; first += ROWS_A_STATEMENT) {
     const part = records.slice(first, first + ROWS_A_STATEMENT);

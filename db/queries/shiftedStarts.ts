@@ -1,4 +1,4 @@
-import { pool, type Connection } from './connection';
+import { pool, type Connection, type Writes } from './connection';
 import type { ClockEpisode } from './clockShifts';
 
 /** Where an interval is stored and for how long, and whether a shift of the clock has moved it. */
@@ -98,16 +98,15 @@ export async function noteShifted(
   stationId: number,
   starts: readonly { startSec: number; shiftId: number }[],
   isLate: boolean,
-  conn: Connection,
+  conn: Writes,
 ): Promise<void> {
   for (let first = 0; first < starts.length; first += ROWS_A_STATEMENT) {
-    const rows = starts.slice(first, first + ROWS_A_STATEMENT).map(({ startSec, shiftId }) => ({
-      station_id: stationId,
-      starts_at: startSec,
-      shift_id: shiftId,
-      is_late: isLate ? 1 : 0,
-    }));
-    await conn('clock_shift_starts').insert(rows);
+    const rows = starts
+      .slice(first, first + ROWS_A_STATEMENT)
+      .map(({ startSec, shiftId }) => `(${stationId}, ${startSec}, ${shiftId}, ${isLate ? 1 : 0})`);
+    await conn.raw(
+      `INSERT INTO clock_shift_starts (station_id, starts_at, shift_id, is_late) VALUES ${rows.join(', ')}`,
+    );
   }
 }
 

@@ -1,4 +1,4 @@
-import { pool, type Connection } from './connection';
+import { pool, type Connection, type Writes } from './connection';
 
 /** How far a monitor's clock was ahead of ours, in seconds, at its last two posts. */
 export interface StationClock {
@@ -13,7 +13,7 @@ export async function noteClock(
   stationId: number,
   aheadSec: number,
   notedAt: Date,
-  conn: Connection,
+  conn: Writes,
 ): Promise<void> {
   // The value before comes first: it is what the row holds so far.
   await conn.raw(

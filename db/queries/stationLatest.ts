@@ -1,4 +1,4 @@
-import { pool, type Connection } from './connection';
+import { pool, type Connection, type Writes } from './connection';
 
 /** The newest interval of a station, and when the station last posted anything new. */
 export interface LatestInterval {
@@ -17,7 +17,7 @@ export interface LatestInterval {
  * Notes what a post brought; an interval older than the one noted moves only the time of the last post. What is no post
  * (`isPost: false`, a file that somebody brought) leaves that time as it is.
  */
-export async function noteLatest(latest: LatestInterval, conn: Connection, isPost = true): Promise<void> {
+export async function noteLatest(latest: LatestInterval, conn: Writes, isPost = true): Promise<void> {
   const newer = (column: string) =>
     `${column} = IF(VALUES(starts_at) > starts_at, VALUES(${column}), ${column})`;
   // starts_at comes last: the other assignments compare with its old value.

@@ -1,4 +1,5 @@
 import { createHash, randomBytes } from 'node:crypto';
+import type { BandFraction } from '#lib/acoustics/bands';
 import { pool, type Connection } from './connection';
 
 export interface StationTokenRow {
@@ -26,14 +27,29 @@ export async function insertStationToken(
   return secret;
 }
 
-/** The station that a token in force belongs to. */
-export async function findStationToken(
+/** What receiving must know of the station whose token it was given. */
+export interface TokenStation {
+  tokenId: number;
+  lastUsedAt: Date | null;
+  id: number;
+  bandFraction: BandFraction;
+  /** Epoch seconds; older intervals are refused; null: no bound. */
+  acceptsFromSec: number | null;
+}
+
+/** The station that a token in force belongs to; none for a retired one. */
+export async function findStationByToken(
   secret: string,
   conn: Connection = pool(),
-): Promise<{ tokenId: number; stationId: number; lastUsedAt: Date | null } | undefined> {
-  return conn('station_tokens')
-    .where({ digest: digestOf(secret), revoked_at: null })
-    .first({ tokenId: 'id', stationId: 'station_id', lastUsedAt: 'last_used_at' });
+): Promise<TokenStation | undefined> {
+  const [rows] = await conn.raw(
+    `SELECT station_tokens.id AS tokenId, station_tokens.last_used_at AS lastUsedAt, stations.id AS id,
+       stations.band_fraction AS bandFraction, stations.accepts_from AS acceptsFromSec
+     FROM station_tokens JOIN stations ON stations.id = station_tokens.station_id
+     WHERE station_tokens.digest = ? AND station_tokens.revoked_at IS NULL AND stations.retired_at IS NULL`,
+    [digestOf(secret)],
+  );
+  return (rows as TokenStation[])[0];
 }
 
 export async function listStationTokens(

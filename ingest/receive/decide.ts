@@ -43,7 +43,12 @@ export function decide(candidates: readonly Candidate[], circumstances: Circumst
   const refusalAt = (interval: ParsedInterval, { startSec }: Place) => {
     const same = known.get(startSec);
     const difference = same ? findDifference(interval, bandSet, same) : null;
-    return refusalOf({ ...interval, startSec }, difference, occupied, circumstances.acceptsFromSec);
+    return refusalOf(
+      { startSec, durationSec: interval.durationSec },
+      difference,
+      occupied,
+      circumstances.acceptsFromSec,
+    );
   };
   const isKnownAt = (interval: ParsedInterval, place: Place) => {
     const same = known.get(place.startSec);
@@ -64,7 +69,7 @@ export function decide(candidates: readonly Candidate[], circumstances: Circumst
       if (refusal) decision.refused.push({ index, refusal });
       continue;
     }
-    const accepted = asStored({ ...interval, startSec: place.startSec }, bandSet, receivedAtSec);
+    const accepted = asStored(interval, place.startSec, bandSet, receivedAtSec);
     note(accepted);
     decision.accepted.push(accepted);
     decision.acceptedIndices.push(index);
@@ -76,7 +81,7 @@ export function decide(candidates: readonly Candidate[], circumstances: Circumst
 }
 
 function refusalOf(
-  { startSec, durationSec }: ParsedInterval,
+  { startSec, durationSec }: Pick<ParsedInterval, 'startSec' | 'durationSec'>,
   difference: string | null,
   occupied: Occupied,
   acceptsFromSec: number | null,
@@ -95,9 +100,26 @@ function refusalOf(
     : null;
 }
 
-function asStored(interval: ParsedInterval, bandSet: BandSet, receivedAtSec: number): StoredInterval {
+function asStored(
+  interval: ParsedInterval,
+  startSec: number,
+  bandSet: BandSet,
+  receivedAtSec: number,
+): StoredInterval {
+  // Field by field: copying all of an object's fields at once costs ten times as much.
   return {
-    ...interval,
+    startSec,
+    durationSec: interval.durationSec,
+    laeqCentiDb: interval.laeqCentiDb,
+    lafmaxCentiDb: interval.lafmaxCentiDb,
+    lafminCentiDb: interval.lafminCentiDb,
+    lceqCentiDb: interval.lceqCentiDb,
+    lcpeakCentiDb: interval.lcpeakCentiDb,
+    levelsCentiDb: interval.levelsCentiDb,
+    windSpeedMs: interval.windSpeedMs,
+    windDirectionDeg: interval.windDirectionDeg,
+    temperatureC: interval.temperatureC,
+    batteryV: interval.batteryV,
     flags: storedFlags(interval),
     bandSetId: bandSet.id,
     bandFraction: bandSet.fraction,

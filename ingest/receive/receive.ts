@@ -1,21 +1,17 @@
-import type { Knex } from 'knex';
-import { bandSetOf, type BandSet } from '#db/queries/bandSets';
-import { inTransaction } from '#db/queries/connection';
-import { noteOffset } from '#db/queries/clockOffsets';
-import { noteShifted } from '#db/queries/shiftedStarts';
-import { noteClock } from '#db/queries/stationClocks';
-import { lockStation, type StationRow } from '#db/queries/stations';
+import { bandSetOf } from '#db/queries/bandSets';
+import { hasStandingShiftsText } from '#db/queries/clockShifts';
+import { inTransaction, pool } from '#db/queries/connection';
+import { intervalsOfCells, type IntervalCells } from '#db/queries/intervalRows';
+import { selectIntervalsText, type StoredInterval } from '#db/queries/intervals';
+import { inReceivingTransaction, type Cells } from '#db/queries/receivingTransaction';
+import { lockStation, lockStationText } from '#db/queries/stations';
 import type { Receipt } from '#lib/contracts/intervals';
-import { quarterAt } from '#lib/time/quarters';
 import { clockRulesFor, possibleStretches } from './clockRules';
-import { decide, type Decision } from './decide';
+import { decide } from './decide';
 import type { Envelope } from './envelope';
-import { keptRecord } from './keptRecord';
-import { readRecords, type Candidate, type Refused } from './readRecords';
-import { store } from './store';
-import { storedAround } from './storedAround';
-
-type ReceivingStation = Pick<StationRow, 'id' | 'bandFraction' | 'acceptsFromSec'>;
+import { finishPost, type Post, type ReceivingStation } from './finishPost';
+import { readRecords } from './readRecords';
+import { addStretch, storedAround, stretchesOf } from './storedAround';
 
 /**
  * Takes a post of a station: each record is accepted, known already, or refused with a reason and kept in quarantine. When the
@@ -26,64 +22,53 @@ export async function receiveBatch(
   envelope: Envelope,
   now: Date,
 ): Promise<Receipt> {
-  const { bandIndices, bands, intervals, sentAtSec = null } = envelope;
+  const { bandIndices, intervals } = envelope;
   const bandSet =
     'problem' in bandIndices ? bandIndices : await bandSetOf(station.bandFraction, bandIndices.indices);
   const read = readRecords(intervals, bandSet, now.getTime() / 1000);
-  return inTransaction(async (transaction) => {
-    const decision = await decideUnderLock(station, read.candidates, bandSet, now, transaction);
-    const refused = inOrder([...read.refused, ...decision.refused]).map((one) => ({
-      ...one,
-      kept: keptRecord(one, intervals[one.index], bands),
-    }));
-    const kept = refused.flatMap((one) => one.kept ?? []);
-    await store(station.id, decision.accepted, kept, now, transaction);
-    await noteShifted(station.id, decision.shifted, true, transaction);
-    if (sentAtSec !== null) await noteTime(station.id, sentAtSec, now, transaction);
-    return {
-      accepted: decision.accepted.length,
-      known: decision.knownCount,
-      refused: refused.map(({ index, refusal, kept }) => ({
-        index,
-        code: refusal.code,
-        detail: refusal.detail,
-        quarantined: kept !== null,
-      })),
-      serverTime: now.toISOString(),
-    };
+  const post = { station, envelope, now, bandSet, ...read };
+  return (await receiveAtOnce(post)) ?? (await receiveThroughShifts(post));
+}
+
+/** Takes a post in two journeys to the database; null, with nothing done, where a shift of the clock stands for the station. */
+async function receiveAtOnce(post: Post): Promise<Receipt | null> {
+  const { station, candidates, bandSet } = post;
+  if ('problem' in bandSet || candidates.length === 0) {
+    return inReceivingTransaction([], (_, writes) => finishPost(post, null, writes));
+  }
+  const stretches = stretchesOf(candidates.map(({ interval }) => interval));
+  const reads = [
+    lockStationText(station.id),
+    hasStandingShiftsText(station.id),
+    ...stretches.map(({ fromSec, toSec }) => selectIntervalsText(station.id, fromSec, toSec)),
+  ];
+  return inReceivingTransaction(reads, async ([, shifts, ...rows], writes) => {
+    if (shifts?.length !== 0) return null;
+    const stored = await intervalsOf(rows);
+    return finishPost(post, decide(candidates, { ...circumstancesOf(post), stored, bandSet }), writes);
   });
 }
 
-async function decideUnderLock(
-  { id, acceptsFromSec }: ReceivingStation,
-  candidates: readonly Candidate[],
-  bandSet: BandSet | { problem: string },
-  now: Date,
-  transaction: Knex.Transaction,
-): Promise<Decision> {
-  if ('problem' in bandSet || candidates.length === 0) {
-    return { accepted: [], acceptedIndices: [], shifted: [], knownCount: 0, refused: [] };
-  }
-  await lockStation(id, transaction);
-  const records = candidates.map(({ interval }) => interval);
-  const clock = await clockRulesFor(id, records, transaction);
-  const stored = await storedAround(id, possibleStretches(records, clock), transaction);
-  const receivedAtSec = Math.floor(now.getTime() / 1000);
-  return decide(candidates, { stored, bandSet, acceptsFromSec, receivedAtSec, clock });
+/** Takes a post of a station some of whose intervals a shift of the clock puts elsewhere than their monitor says. */
+async function receiveThroughShifts(post: Post): Promise<Receipt> {
+  const { station, candidates, bandSet } = post;
+  return inTransaction(async (transaction) => {
+    if ('problem' in bandSet) return finishPost(post, null, transaction);
+    await lockStation(station.id, transaction);
+    const records = candidates.map(({ interval }) => interval);
+    const clock = await clockRulesFor(station.id, records, transaction);
+    const stored = await storedAround(station.id, possibleStretches(records, clock), transaction);
+    const decision = decide(candidates, { ...circumstancesOf(post), stored, bandSet, clock });
+    return finishPost(post, decision, transaction);
+  });
 }
 
-async function noteTime(
-  stationId: number,
-  sentAtSec: number,
-  now: Date,
-  transaction: Knex.Transaction,
-): Promise<void> {
-  const nowSec = now.getTime() / 1000;
-  const aheadSec = sentAtSec - nowSec;
-  await noteClock(stationId, aheadSec, now, transaction);
-  await noteOffset(stationId, { quarterStartSec: quarterAt(nowSec), aheadSec }, transaction);
+async function intervalsOf(rows: readonly Cells[]): Promise<StoredInterval[]> {
+  const stored: StoredInterval[] = [];
+  for (const stretch of rows) addStretch(stored, await intervalsOfCells(stretch as IntervalCells[], pool()));
+  return stored;
 }
 
-function inOrder(refused: Refused[]): Refused[] {
-  return refused.sort((a, b) => a.index - b.index);
+function circumstancesOf({ station, now }: Post) {
+  return { acceptsFromSec: station.acceptsFromSec, receivedAtSec: Math.floor(now.getTime() / 1000) };
 }

@@ -1,9 +1,9 @@
-import type { Knex } from 'knex';
+import type { Writes } from '#db/queries/connection';
 import { insertDirtyMarks } from '#db/queries/dirtyMarks';
 import { insertIntervals, type StoredInterval } from '#db/queries/intervals';
 import { insertQuarantined, insertQuarantinedOfImport } from '#db/queries/quarantine';
 import { noteLatest } from '#db/queries/stationLatest';
-import { quartersTouching } from '#lib/time/quarters';
+import { QUARTER_SEC, quartersTouching } from '#lib/time/quarters';
 import type { KeptRecord } from './keptRecord';
 
 /**
@@ -15,7 +15,7 @@ export async function store(
   accepted: readonly StoredInterval[],
   refused: readonly KeptRecord[],
   receivedAt: Date,
-  transaction: Knex.Transaction,
+  transaction: Writes,
   importId: number | null = null,
 ): Promise<void> {
   if (importId === null) await insertQuarantined(stationId, refused, receivedAt, transaction);
@@ -38,8 +38,17 @@ function newestOf(intervals: readonly StoredInterval[]): StoredInterval | undefi
 
 function touchedQuarters(intervals: readonly StoredInterval[]): Set<number> {
   const quarters = new Set<number>();
+  let lastEndSec = -Infinity;
+  let lastQuarterSec = Infinity;
   for (const { startSec, durationSec } of intervals) {
-    for (const quarter of quartersTouching(startSec, startSec + durationSec)) quarters.add(quarter);
+    const endSec = startSec + durationSec;
+    // Most lie in the quarter that the one before has marked.
+    if (startSec >= lastQuarterSec && endSec <= lastEndSec) continue;
+    for (const quarter of quartersTouching(startSec, endSec)) {
+      quarters.add(quarter);
+      lastQuarterSec = quarter;
+      lastEndSec = quarter + QUARTER_SEC;
+    }
   }
   return quarters;
 }

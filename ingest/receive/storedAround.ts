@@ -14,15 +14,19 @@ export async function storedAround(
 ): Promise<StoredInterval[]> {
   const stored: StoredInterval[] = [];
   for (const { fromSec, toSec } of stretchesOf(intervals)) {
-    const found = await select(stationId, fromSec, toSec, transaction);
-    // The last of one stretch may reach into the next.
-    const lastStartSec = stored.at(-1)?.startSec ?? -1;
-    for (const interval of found) if (interval.startSec > lastStartSec) stored.push(interval);
+    addStretch(stored, await select(stationId, fromSec, toSec, transaction));
   }
   return stored;
 }
 
-function stretchesOf(
+/** Adds what is stored in the next stretch: the last of one stretch may reach into the next. */
+export function addStretch(stored: StoredInterval[], found: readonly StoredInterval[]): void {
+  const lastStartSec = stored.at(-1)?.startSec ?? -1;
+  for (const interval of found) if (interval.startSec > lastStartSec) stored.push(interval);
+}
+
+/** Stretches of time that some records lie in, ascending: what is stored there is what any of them may touch. */
+export function stretchesOf(
   intervals: readonly Pick<ParsedInterval, 'startSec' | 'durationSec'>[],
 ): { fromSec: number; toSec: number }[] {
   const ascending = [...intervals].sort((a, b) => a.startSec - b.startSec);

@@ -2,10 +2,13 @@ import compression from 'compression';
 import express, { type Express, type Request, type RequestHandler, type Response } from 'express';
 import helmet from 'helmet';
 import type { Config } from '#lib/config/config';
+import { receivePost } from './receive';
 
 const MOST_BODY_BYTES = 16 * 1024 * 1024;
 const YEAR_SEC = 365 * 86_400;
 
+/** Where monitors post; what arrives there needs neither the pages' server nor what protects browsers. */
+const POSTS = '/api/v1/intervals';
 /** Where files of intervals are uploaded; they are streamed to disk. */
 const UPLOADS = /^\/(api\/v1\/networks\/[^/]+\/imports|n\/[^/]+\/imports\/new)\/?$/;
 /** What a form adds around a file. */
@@ -24,6 +27,7 @@ export function makeFront(astro: AstroHandler, settings: FrontSettings): Express
   const front = express();
   front.disable('x-powered-by');
   front.set('trust proxy', settings.trustedProxies);
+  front.post(POSTS, requireKnownHost(settings.allowedHosts), receivePost);
   front.use(safeHeaders(settings.origin));
   front.use(requireKnownHost(settings.allowedHosts));
   front.use(setClientAddress);

@@ -42,6 +42,12 @@ export function median(values: readonly number[]): number {
   return ((sorted[Math.floor(middle)] ?? NaN) + (sorted[Math.ceil(middle)] ?? NaN)) / 2;
 }
 
+/** The value that a share of some numbers does not exceed. */
+export function percentile(values: readonly number[], share: number): number {
+  const sorted = [...values].sort((a, b) => a - b);
+  return sorted[Math.max(0, Math.ceil(share * sorted.length) - 1)] ?? NaN;
+}
+
 /** A number with three digits that matter. */
 export function digits(value: number): string {
   return Number(value.toPrecision(3)).toLocaleString('en-GB', { maximumFractionDigits: 3 });

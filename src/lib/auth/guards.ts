@@ -1,6 +1,6 @@
 import type { APIContext } from 'astro';
-import { findStation, findStationById, type StationRow } from '#db/queries/stations';
-import { findStationToken, noteTokenUse } from '#db/queries/stationTokens';
+import { findStation, type StationRow } from '#db/queries/stations';
+import { findStationByToken, noteTokenUse, type TokenStation } from '#db/queries/stationTokens';
 import { notAllowed, notFound, Problem, signInFirst } from '#lib/http/problem';
 import { enterNetwork, type NetworkAccess } from './networkAccess';
 import { bearerToken } from './requestUser';
@@ -59,24 +59,29 @@ export async function requireStation(networkId: number, code: string | undefined
   return station;
 }
 
-/** The station whose token a monitor sent; notes that it was used. @throws {Problem} 401 */
-export async function requireStationToken(request: Request): Promise<StationRow> {
+/** The station token that a monitor sent, whether it is in force or not. @throws {Problem} 401 */
+export function sentStationToken(request: Parameters<typeof bearerToken>[0]): string {
   const secret = bearerToken(request);
-  const token = secret === null ? undefined : await findStationToken(secret);
-  const station = token && (await findStationById(token.stationId));
-  if (!token || !station || station.retiredAt) {
-    throw new Problem(
-      401,
-      'bad-token',
-      'Unknown station token',
-      'Send the station’s token that is in force.',
-      {
-        headers: { 'WWW-Authenticate': 'Bearer' },
-      },
-    );
-  }
+  if (secret === null) throw badStationToken();
+  return secret;
+}
+
+/** The station of a token that a monitor sent; notes that it was used. @throws {Problem} 401 */
+export async function requireStationToken(request: Parameters<typeof bearerToken>[0]): Promise<TokenStation> {
+  const found = await findStationByToken(sentStationToken(request));
+  if (!found) throw badStationToken();
   const now = new Date();
-  if (!token.lastUsedAt || now.getTime() - token.lastUsedAt.getTime() > 60_000)
-    await noteTokenUse(token.tokenId, now);
-  return station;
+  if (!found.lastUsedAt || now.getTime() - found.lastUsedAt.getTime() > 60_000)
+    await noteTokenUse(found.tokenId, now);
+  return found;
+}
+
+function badStationToken(): Problem {
+  return new Problem(
+    401,
+    'bad-token',
+    'Unknown station token',
+    'Send the station’s token that is in force.',
+    { headers: { 'WWW-Authenticate': 'Bearer' } },
+  );
 }

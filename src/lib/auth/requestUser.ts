@@ -15,7 +15,7 @@ export async function userOfRequest({
 }
 
 /** The token of an `Authorization: Bearer` header, or null. */
-export function bearerToken(request: Request): string | null {
+export function bearerToken(request: { headers: Pick<Headers, 'get'> }): string | null {
   return /^Bearer +([\w-]{1,200})$/i.exec(request.headers.get('authorization') ?? '')?.[1] ?? null;
 }
 

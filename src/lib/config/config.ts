@@ -13,6 +13,8 @@ export interface Config {
   dataDir: string;
   /** Largest file of intervals that may be uploaded. */
   importMostBytes: number;
+  /** What each web process takes from monitors in a minute. */
+  receiving: { postsPerMinuteOfToken: number; postsPerMinuteOfAddress: number };
   /** `isOwn`: `ops/start.sh` starts a MariaDB of its own in the data directory. */
   database: {
     isOwn: boolean;
@@ -78,6 +80,10 @@ export function parseConfig(environment: Record<string, string | undefined>): Co
     metricsToken: settings.BITTERN_METRICS_TOKEN ?? null,
     dataDir: settings.BITTERN_DATA_DIR,
     importMostBytes: settings.BITTERN_IMPORT_MAX_MIB * 1024 * 1024,
+    receiving: {
+      postsPerMinuteOfToken: settings.BITTERN_POSTS_PER_MINUTE_TOKEN,
+      postsPerMinuteOfAddress: settings.BITTERN_POSTS_PER_MINUTE_ADDRESS,
+    },
     database: {
       isOwn: settings.BITTERN_DB_OWN,
       host: settings.BITTERN_DB_HOST,

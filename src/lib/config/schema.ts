@@ -20,6 +20,8 @@ export const settingsSchema = z.object({
 
   BITTERN_DATA_DIR: z.string().default('.bittern'),
   BITTERN_IMPORT_MAX_MIB: z.coerce.number().int().min(1).max(65_536).default(1024),
+  BITTERN_POSTS_PER_MINUTE_TOKEN: z.coerce.number().int().min(1).max(10_000_000).default(30_000),
+  BITTERN_POSTS_PER_MINUTE_ADDRESS: z.coerce.number().int().min(1).max(10_000_000).default(120_000),
   BITTERN_DB_OWN: isTrue('true'),
   BITTERN_DB_HOST: z.string().default('127.0.0.1'),
   BITTERN_DB_PORT: port(4330),

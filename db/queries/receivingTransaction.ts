@@ -1,0 +1,69 @@
+import mysql from 'mysql2';
+import { receivingPool } from '../receiving';
+import { isLockConflict, MOST_ATTEMPTS, pauseBefore, type Binding, type Writes } from './connection';
+
+/** Rows of one SELECT, each an array of cells. */
+export type Cells = unknown[][];
+
+/**
+ * A transaction in two journeys: what it reads in one (begin, locks, rows), and all that it writes, with its commit, in the other.
+ * Everything is durable when the promise resolves, nothing when it rejects. A lock that stands in the way starts it again.
+ * `decide` gets the rows of each of `reads` and may only write.
+ */
+export async function inReceivingTransaction<T>(
+  reads: readonly string[],
+  decide: (rows: Cells[], writes: Writes) => Promise<T>,
+): Promise<T> {
+  for (let attempt = 1; ; attempt += 1) {
+    try {
+      return await attemptOnce(reads, decide);
+    } catch (error) {
+      if (attempt === MOST_ATTEMPTS || !isLockConflict(error)) throw error;
+      await pauseBefore(attempt);
+    }
+  }
+}
+
+async function attemptOnce<T>(
+  reads: readonly string[],
+  decide: (rows: Cells[], writes: Writes) => Promise<T>,
+): Promise<T> {
+  const connection = await acquire();
+  try {
+    const rows = await run(connection, ['START TRANSACTION', ...reads]);
+    const writes = new Collected();
+    const decided = await decide(rows.slice(1) as Cells[], writes);
+    await run(connection, [...writes.statements, 'COMMIT']);
+    connection.release();
+    return decided;
+  } catch (error) {
+    // Whatever state it is in, the server rolls back what a connection that ends has not committed.
+    connection.destroy();
+    throw error;
+  }
+}
+
+class Collected implements Writes {
+  readonly statements: string[] = [];
+
+  raw(sql: string, bindings?: readonly Binding[]): PromiseLike<void> {
+    this.statements.push(bindings ? mysql.format(sql, [...bindings], false, 'Z') : sql);
+    return Promise.resolve();
+  }
+}
+
+function acquire(): Promise<mysql.PoolConnection> {
+  return new Promise((resolve, reject) => {
+    receivingPool().getConnection((error, connection) => (error ? reject(error) : resolve(connection)));
+  });
+}
+
+/** What each of some statements answers; the first that fails ends them all. */
+function run(connection: mysql.PoolConnection, statements: readonly string[]): Promise<unknown[]> {
+  return new Promise((resolve, reject) => {
+    connection.query({ sql: statements.join(';\n'), rowsAsArray: true }, (error, results) => {
+      if (error) reject(error);
+      else resolve(statements.length === 1 ? [results] : (results as unknown[]));
+    });
+  });
+}
