@@ -67,6 +67,7 @@ const ACCESS: Record<string, Access> = {
   '/n/[network]/stations/[code]/edit': 'operator',
   '/n/[network]/stations/[code]/figures': 'members',
   '/n/[network]/stations/[code]/photos': 'members',
+  '/n/[network]/stations/[code]/photos': 'members',
   '/n/[network]/stations/new': 'operator',
   '/n/[network]/summaries': 'members',
   '/n/[network]/summaries/[month]': 'members',
