@@ -1,26 +1,32 @@
 import type { BandFraction } from '#lib/acoustics/bands';
 import { pool, type Connection } from './connection';
+import { LONGEST_EXCEEDANCE_SEC } from './judgedExceedances';
+import type { LimitAveraging, LimitMetric } from './limits';
 
 /** An exceedance with the limit version that it was judged by, as letters and summaries list it. */
 export interface ExceedanceRecord {
   id: number;
   stationId: number;
   limitName: string;
-  metric: 'LAeq' | 'LAFmax' | 'bandLeq';
-  averaging: '15min' | '1h' | 'day' | 'evening' | 'night';
+  metric: LimitMetric;
+  averaging: LimitAveraging;
+  windowMin: number | null;
+  stepMin: number | null;
+  fromMin: number | null;
+  toMin: number | null;
   bandFraction: BandFraction | null;
   bandIndex: number | null;
   startsAtSec: number;
   endsAtSec: number;
+  /** Of a rolling limit the loudest of the windows that make it: level and coverage are its. Else null. */
+  loudestStartSec: number | null;
+  loudestEndSec: number | null;
   levelDb: number;
   thresholdTenths: number;
   /** 0–1. */
   coverage: number;
   state: 'standing' | 'lifted';
 }
-
-/** A day of 24 h in the night of the autumn clock change is 25 h long. */
-const LONGEST_WINDOW_SEC = 25 * 3600;
 
 /** Exceedances of a station whose window overlaps `fromSec <= t < toSec`, in order of time. */
 export async function listExceedancesOverlapping(
@@ -54,10 +60,10 @@ export async function listStationsOverLimit(
   endedAfterSec: number,
   conn: Connection = pool(),
 ): Promise<Set<number>> {
-  // The longest window is a day's: the key on its beginning bounds what is read.
+  // The key on its beginning bounds what is read.
   const rows: { stationId: number }[] = await conn('exceedances')
     .where({ network_id: networkId, state: 'standing' })
-    .where('starts_at', '>', endedAfterSec - LONGEST_WINDOW_SEC)
+    .where('starts_at', '>', endedAfterSec - LONGEST_EXCEEDANCE_SEC)
     .where('ends_at', '>', endedAfterSec)
     .distinct({ stationId: 'station_id' });
   return new Set(rows.map(({ stationId }) => stationId));
@@ -73,10 +79,16 @@ function selectRecords(conn: Connection) {
       limitName: 'v.name',
       metric: 'v.metric',
       averaging: 'v.averaging',
+      windowMin: 'v.window_min',
+      stepMin: 'v.step_min',
+      fromMin: 'v.from_min',
+      toMin: 'v.to_min',
       bandFraction: 'v.band_fraction',
       bandIndex: 'v.band_index',
       startsAtSec: 'e.starts_at',
       endsAtSec: 'e.ends_at',
+      loudestStartSec: 'e.loudest_starts_at',
+      loudestEndSec: 'e.loudest_ends_at',
       levelDb: 'e.level_db',
       thresholdTenths: 'e.threshold_tenths',
       coverage: 'e.coverage',

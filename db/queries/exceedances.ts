@@ -1,5 +1,6 @@
 import type { Cause } from '#lib/contracts/exceedances';
 import { pool, type Connection } from './connection';
+import { LONGEST_EXCEEDANCE_SEC } from './judgedExceedances';
 import type { ExceedanceRecord } from './exceedanceRecords';
 
 /** An exceedance with its station, the limit version that it is judged by, and who acknowledged it. */
@@ -38,9 +39,6 @@ export interface ExceedancePlace {
   startsAtSec: number;
   id: number;
 }
-
-/** A day of 24 h in the night of the autumn clock change is 25 h long. */
-const LONGEST_WINDOW_SEC = 25 * 3600;
 
 /** Exceedances of a network, latest window first. `after` is the last one of the page before. */
 export async function listExceedances(
@@ -157,7 +155,7 @@ function narrow(query: ReturnType<Connection>, filter: ExceedanceFilter): void {
   if (toSec !== undefined) void query.where('e.starts_at', '<', toSec);
   if (fromSec !== undefined) {
     // The key on the beginning bounds what is read.
-    void query.where('e.starts_at', '>', fromSec - LONGEST_WINDOW_SEC).where('e.ends_at', '>', fromSec);
+    void query.where('e.starts_at', '>', fromSec - LONGEST_EXCEEDANCE_SEC).where('e.ends_at', '>', fromSec);
   }
   if (stationId !== undefined) void query.where('e.station_id', stationId);
   if (limitId !== undefined) void query.where('e.limit_id', limitId);
@@ -182,10 +180,16 @@ function selectExceedances(conn: Connection) {
       limitName: 'v.name',
       metric: 'v.metric',
       averaging: 'v.averaging',
+      windowMin: 'v.window_min',
+      stepMin: 'v.step_min',
+      fromMin: 'v.from_min',
+      toMin: 'v.to_min',
       bandFraction: 'v.band_fraction',
       bandIndex: 'v.band_index',
       startsAtSec: 'e.starts_at',
       endsAtSec: 'e.ends_at',
+      loudestStartSec: 'e.loudest_starts_at',
+      loudestEndSec: 'e.loudest_ends_at',
       levelDb: 'e.level_db',
       thresholdTenths: 'e.threshold_tenths',
       coverage: 'e.coverage',

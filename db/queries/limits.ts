@@ -1,8 +1,12 @@
 import type { BandFraction } from '#lib/acoustics/bands';
 import { pool, type Connection } from './connection';
+import { listHolidays } from './holidays';
 
 export type LimitMetric = 'LAeq' | 'LAFmax' | 'bandLeq';
-export type LimitAveraging = '15min' | '1h' | 'day' | 'evening' | 'night';
+/** `length`: `windowMin`; `hours`: `fromMin` to `toMin` of each date, one window. */
+export type LimitAveraging = '15min' | '1h' | 'day' | 'evening' | 'night' | 'length' | 'hours';
+/** What the named dates of the network are to a limit: nothing, Sundays, left out, or the only dates. */
+export type HolidayRule = 'as-weekday' | 'as-sunday' | 'never' | 'only';
 
 /** One version of a limit. A window is judged by the version in force when it begins. */
 export interface LimitVersion {
@@ -14,6 +18,10 @@ export interface LimitVersion {
   name: string;
   metric: LimitMetric;
   averaging: LimitAveraging;
+  /** Minutes of a window of averaging `length`, else null. */
+  windowMin: number | null;
+  /** Rolling windows begin every so many minutes of the clock; null: fixed windows. */
+  stepMin: number | null;
   /** Of a band limit, else null. */
   bandFraction: BandFraction | null;
   bandIndex: number | null;
@@ -21,7 +29,13 @@ export interface LimitVersion {
   thresholdTenths: number;
   /** Bit 0 Monday … bit 6 Sunday, of the local date on which the window begins. */
   weekdays: number;
-  /** Local clock, minutes after midnight, between which a window must begin; null: all day. `toMin` before `fromMin`: across midnight. */
+  holidays: HolidayRule;
+  /** The named dates of the network as they are now. */
+  holidayDates: ReadonlySet<string>;
+  /**
+   * Local clock, minutes after midnight, between which a window must begin, or which are the window; null: all day. `toMin` before
+   * `fromMin`: across midnight.
+   */
   fromMin: number | null;
   toMin: number | null;
   /** Null: the network's minimum. */
@@ -36,12 +50,12 @@ export interface LimitVersion {
   withdrawnAt: Date | null;
 }
 
-export type NewLimitVersion = Omit<
-  LimitVersion,
-  'id' | 'limitId' | 'networkId' | 'version' | 'createdAt' | 'withdrawnAt'
->;
+type Assigned = 'id' | 'limitId' | 'networkId' | 'version' | 'createdAt' | 'withdrawnAt' | 'holidayDates';
+/** What is left out of these is as it is without: fixed windows, named dates like any other. */
+type Optional = 'windowMin' | 'stepMin' | 'holidays';
+export type NewLimitVersion = Omit<LimitVersion, Assigned | Optional> & Partial<Pick<LimitVersion, Optional>>;
 
-interface Row extends Omit<LimitVersion, 'stationIds' | 'recipients'> {
+interface Row extends Omit<LimitVersion, 'stationIds' | 'recipients' | 'holidayDates'> {
   stationIds: string | number[] | null;
   recipients: string | string[];
 }
@@ -52,7 +66,7 @@ export async function listLimitVersions(
   conn: Connection = pool(),
 ): Promise<LimitVersion[]> {
   const rows: Row[] = await selectVersions(conn).where({ 'l.network_id': networkId });
-  return rows.map(versionOf);
+  return versionsOf(rows, networkId, conn);
 }
 
 /** The versions of one limit of a network, oldest first; empty when the network has no such limit. */
@@ -62,7 +76,7 @@ export async function findLimit(
   conn: Connection = pool(),
 ): Promise<LimitVersion[]> {
   const rows: Row[] = await selectVersions(conn).where({ 'l.network_id': networkId, 'l.id': limitId });
-  return rows.map(versionOf);
+  return versionsOf(rows, networkId, conn);
 }
 
 /**
@@ -99,12 +113,7 @@ export async function listLimitRecords(
       withdrawnByName: 'withdrawer.name',
       withdrawalReason: 'l.withdrawal_reason',
     });
-  return rows.map(({ createdByName, withdrawnByName, withdrawalReason, ...row }) => ({
-    ...versionOf(row),
-    createdByName,
-    withdrawnByName,
-    withdrawalReason,
-  }));
+  return versionsOf(rows, networkId, conn);
 }
 
 /** Adds a limit with its first version and answers its id. */
@@ -132,10 +141,13 @@ export async function insertVersion(
     name: fields.name,
     metric: fields.metric,
     averaging: fields.averaging,
+    window_min: fields.windowMin ?? null,
+    step_min: fields.stepMin ?? null,
     band_fraction: fields.bandFraction,
     band_index: fields.bandIndex,
     threshold_tenths: fields.thresholdTenths,
     weekdays: fields.weekdays,
+    holidays: fields.holidays ?? 'as-weekday',
     from_min: fields.fromMin,
     to_min: fields.toMin,
     minimum_coverage: fields.minimumCoverage,
@@ -172,10 +184,13 @@ function selectVersions(conn: Connection) {
       name: 'v.name',
       metric: 'v.metric',
       averaging: 'v.averaging',
+      windowMin: 'v.window_min',
+      stepMin: 'v.step_min',
       bandFraction: 'v.band_fraction',
       bandIndex: 'v.band_index',
       thresholdTenths: 'v.threshold_tenths',
       weekdays: 'v.weekdays',
+      holidays: 'v.holidays',
       fromMin: 'v.from_min',
       toMin: 'v.to_min',
       minimumCoverage: 'v.minimum_coverage',
@@ -188,12 +203,16 @@ function selectVersions(conn: Connection) {
     });
 }
 
-function versionOf(row: Row): LimitVersion {
-  return {
+async function versionsOf<R extends Row>(rows: readonly R[], networkId: number, conn: Connection) {
+  const holidayDates: ReadonlySet<string> = new Set(
+    (await listHolidays(networkId, conn)).map(({ date }) => date),
+  );
+  return rows.map((row) => ({
     ...row,
     stationIds: parsed<number[] | null>(row.stationIds),
     recipients: parsed<string[]>(row.recipients),
-  };
+    holidayDates,
+  }));
 }
 
 /** The driver gives JSON columns as text or parsed, depending on the server's version. */

@@ -13,7 +13,7 @@ import type { StandingOutRange } from '#lib/acoustics/standingOut';
 import { groupBy } from '#lib/services/groupBy';
 import { byLimit } from '#lib/services/limits/force';
 import { standingOutOf } from './standingOutOf';
-import { verdictOn } from './verdictOn';
+import { verdictsOn } from './verdictOn';
 import { recordVerdict, type JudgedChange, type Verdict } from './verdicts';
 import { WindowLevels } from './windowLevels';
 
@@ -76,14 +76,18 @@ async function judgeAll(
     const timeline = await listSettings(station.networkId, transaction);
     const limits = byLimit(await listLimitVersions(station.networkId, transaction));
     const levels = new WindowLevels({ station, timeline, validity: 'rules' }, transaction);
+    const settledDates = new Set<string>();
     for (const window of ofStation.sort((a, b) => a.startSec - b.startSec)) {
       const settings = pickSettings(timeline, window.startSec);
       const ofLimit = limits.get(window.limitId) ?? [];
-      const verdict = await verdictOn(window, { ofLimit, timeline, levels, closedBySec }, transaction);
-      const change = verdict && (await recordVerdict(verdict, now, transaction));
-      if (!change) continue;
-      const spectrum = await levels.of({ fromSec: verdict.startSec, toSec: verdict.endSec });
-      changes.push({ ...change, verdict, station, settings, standingOut: standingOutOf(spectrum) });
+      const evidence = { ofLimit, timeline, levels, closedBySec, settledDates };
+      for (const verdict of await verdictsOn(window, evidence, transaction)) {
+        const change = await recordVerdict(verdict, now, transaction);
+        if (!change) continue;
+        const { startSec, endSec } = verdict.loudest ?? verdict;
+        const spectrum = await levels.of({ fromSec: startSec, toSec: endSec });
+        changes.push({ ...change, verdict, station, settings, standingOut: standingOutOf(spectrum) });
+      }
     }
   }
   return changes;

@@ -1,10 +1,10 @@
 import type { Connection } from '#db/queries/connection';
-import { selectStandingWindows } from '#db/queries/judgedExceedances';
+import { LONGEST_EXCEEDANCE_SEC, selectStandingWindows } from '#db/queries/judgedExceedances';
 import { listLimitVersions } from '#db/queries/limits';
 import { listSettings } from '#db/queries/networks';
 import { insertPendingWindows, selectOpenWindows, type NewPendingWindow } from '#db/queries/pendingWindows';
 import { findStationById } from '#db/queries/stations';
-import { byLimit, judgedWindows, LONGEST_WINDOW_SEC } from '#lib/services/limits/force';
+import { byLimit, enoughToJudge, judgedWindows, LONGEST_WINDOW_SEC } from '#lib/services/limits/force';
 import { QUARTER_SEC } from '#lib/time/quarters';
 
 interface Run {
@@ -29,14 +29,17 @@ export async function pendWindowsFor(
   const timeline = await listSettings(station.networkId, transaction);
   const pending = new Map<string, NewPendingWindow>();
   const add = (window: NewPendingWindow) => pending.set(keyOf(window), window);
+  const nowSec = Math.floor(Date.now() / 1000);
   for (const run of runsOf(quarterStartsSec)) {
     const begun = { fromSec: run.fromSec - LONGEST_WINDOW_SEC, toSec: run.toSec };
     for (const [limitId, ofLimit] of limits) {
-      for (const { startSec, endSec } of judgedWindows(ofLimit, stationId, begun, timeline)) {
-        if (endSec > run.fromSec) add({ limitId, stationId, startSec, endSec });
-      }
+      const windows = judgedWindows(ofLimit, stationId, begun, timeline).filter(
+        ({ endSec }) => endSec > run.fromSec,
+      );
+      for (const { startSec, endSec } of enoughToJudge(windows, nowSec, timeline))
+        add({ limitId, stationId, startSec, endSec });
     }
-    const longestSec = LONGEST_WINDOW_SEC;
+    const longestSec = LONGEST_EXCEEDANCE_SEC;
     (await selectStandingWindows(stationId, { ...run, longestSec }, transaction)).forEach(add);
   }
   await insertPendingWindows([...(await withoutWaiting(pending, stationId, transaction))], transaction);

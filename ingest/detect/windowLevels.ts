@@ -1,35 +1,65 @@
 import type { Connection } from '#db/queries/connection';
-import type { QuarterHour } from '#db/queries/quarterHours';
 import { PeriodAccumulator } from '#lib/acoustics/periodStatistics';
+import type { PeriodSums } from '#lib/acoustics/periodSums';
 import { QUARTER_SEC } from '#lib/time/quarters';
 import { currentQuarters } from '#lib/services/levels/currentQuarters';
 import type { LevelSource } from '#lib/services/levels/intervalSums';
 import type { Span } from '#lib/services/levels/spans';
+import { sumsByGrain } from '#lib/services/limits/grains';
 
 const READ_AHEAD_SEC = 2 * 86_400;
 
-/** Sums of a station's windows, asked for in order of time: quarter-hours are read two days at once, each about once. */
+/** A stretch of time and what was measured in it, in order of time. */
+interface Part {
+  startSec: number;
+  sums: PeriodSums;
+}
+
+interface Read extends Span {
+  parts: Part[];
+}
+
+const NOTHING_READ: Read = { fromSec: 0, toSec: 0, parts: [] };
+
+/**
+ * Sums of a station's windows, asked for in order of time: parts are read two days at once, each about once. Windows of whole
+ * quarter-hours are made of these, others of fives of minutes from the intervals.
+ */
 export class WindowLevels {
-  private quarters: QuarterHour[] = [];
-  private read: Span = { fromSec: 0, toSec: 0 };
+  #quarters = NOTHING_READ;
+  #grains = NOTHING_READ;
 
   constructor(
     private readonly source: LevelSource,
     private readonly conn: Connection,
   ) {}
 
-  /** Sums of a window of whole quarter-hours, current. */
+  /** Sums of a window of whole fives of minutes, current. */
   async of(window: Span): Promise<PeriodAccumulator> {
-    if (window.fromSec < this.read.fromSec || window.toSec > this.read.toSec) await this.readFrom(window);
     const levels = new PeriodAccumulator();
-    for (const { startSec, sums } of this.quarters) {
-      if (startSec >= window.fromSec && startSec + QUARTER_SEC <= window.toSec) levels.merge({ sums });
+    for (const { startSec, sums } of await this.partsOf(window)) {
+      if (startSec >= window.toSec) break;
+      if (startSec >= window.fromSec) levels.merge({ sums });
     }
     return levels;
   }
 
-  private async readFrom({ fromSec, toSec }: Span): Promise<void> {
-    this.read = { fromSec, toSec: Math.max(toSec, fromSec + READ_AHEAD_SEC) };
-    this.quarters = await currentQuarters(this.source, this.read, { bands: true }, this.conn);
+  private async partsOf(window: Span): Promise<Part[]> {
+    const span = { fromSec: window.fromSec, toSec: Math.max(window.toSec, window.fromSec + READ_AHEAD_SEC) };
+    const isOfQuarters = window.fromSec % QUARTER_SEC === 0 && window.toSec % QUARTER_SEC === 0;
+    if (isOfQuarters) {
+      if (!isWithin(window, this.#quarters)) {
+        const parts = await currentQuarters(this.source, span, { bands: true }, this.conn);
+        this.#quarters = { ...span, parts };
+      }
+      return this.#quarters.parts;
+    }
+    if (!isWithin(window, this.#grains))
+      this.#grains = { ...span, parts: await sumsByGrain(this.source, span, this.conn) };
+    return this.#grains.parts;
   }
+}
+
+function isWithin(window: Span, read: Span): boolean {
+  return read.fromSec <= window.fromSec && window.toSec <= read.toSec;
 }

@@ -44,6 +44,7 @@ export function describeChange(change: TellingChange, networkSlug: string): Chan
       ['Level', levelDb === null ? 'no level' : `${formatLevelDb(levelDb)} dB`],
       ...toldBefore(change),
       ['Period', `${formatPeriod(window, settings.timeZone)}, ${formatZone(settings.timeZone, window)}`],
+      ...rollingFacts(change),
       ['Coverage', coverageWords(change)],
       ...change.standingOut
         .slice(0, MOST_RANGES)
@@ -79,6 +80,23 @@ function becauseOf({ kind, isLimitChanged, verdict }: TellingChange): string {
 
 function toldBefore({ previousLevelDb }: TellingChange): [string, string][] {
   return previousLevelDb === null ? [] : [['Told before', `${formatLevelDb(previousLevelDb)} dB`]];
+}
+
+/** Of rolling windows, which one the level is of, and that there may be more to come. */
+function rollingFacts({ verdict: { loudest, isOngoing }, settings }: TellingChange): [string, string][] {
+  if (loudest === null) return [];
+  const window = { fromSec: loudest.startSec, toSec: loudest.endSec };
+  return [
+    ['Loudest', `the window ${formatPeriod(window, settings.timeZone)}`],
+    ...(isOngoing
+      ? [
+          [
+            'So far',
+            'later windows may go on with it; told once more when it is over, if it was louder',
+          ] satisfies [string, string],
+        ]
+      : []),
+  ];
 }
 
 function coverageWords({ verdict: { coverage, minimumCoverage } }: TellingChange): string {

@@ -1,9 +1,11 @@
+import { parseInstant } from '#lib/contracts/common';
 import type { Conditions } from '#lib/contracts/exceedanceDetail';
 import type { Acknowledgement, Cause, Exceedance, ExceedanceDetail } from '#lib/contracts/exceedances';
-import { WEEKDAYS, type LimitVersionView } from '#lib/contracts/limits';
+import type { LimitVersionView } from '#lib/contracts/limits';
 import { formatDuration } from '#lib/format/durations';
 import { formatCoverage, formatLevelDb } from '#lib/format/levels';
-import { formatInstantShort } from '#lib/format/times';
+import { formatInstantShort, formatPeriod } from '#lib/format/times';
+import { datesWords } from '../limits/words';
 
 export const CAUSE_WORDS: Readonly<Record<Cause, string>> = {
   plant: 'Fixed plant: fans, pumps, engines',
@@ -49,8 +51,9 @@ interface Compared {
   coverage: number;
 }
 
-function aboveWords({ descriptor }: Exceedance, { level, threshold, coverage }: Compared): string {
-  const measured = `${descriptor} was ${formatLevelDb(level)} dB with ${formatCoverage(coverage)} of the window covered`;
+function aboveWords({ descriptor, loudest }: Exceedance, { level, threshold, coverage }: Compared): string {
+  const of = loudest ? 'the loudest window' : 'the window';
+  const measured = `${descriptor} was ${formatLevelDb(level)} dB with ${formatCoverage(coverage)} of ${of} covered`;
   return `${measured}: ${formatLevelDb(level - threshold)} dB above the limit of ${formatLevelDb(threshold)} dB`;
 }
 
@@ -59,18 +62,21 @@ function leftWords({ level, threshold, coverage }: Compared): string {
   return ` When it was lifted, the level was ${formatLevelDb(level)} dB against a limit of ${formatLevelDb(threshold)} dB, with ${formatCoverage(coverage)} covered.`;
 }
 
+/** "Tue 17 March 2026, 22:05 to 23:05" of the loudest rolling window. */
+export function loudestWords({ from, to }: NonNullable<Exceedance['loudest']>, zone: string): string {
+  return formatPeriod({ fromSec: parseInstant(from) ?? 0, toSec: parseInstant(to) ?? 0 }, zone);
+}
+
 /** Whether an exceedance was lifted because its data are gone: its level is the one that it was found with. */
 export function isWithoutData({ state, coverage }: Exceedance): boolean {
   return state === 'lifted' && coverage === 0;
 }
 
-/** When a limit applies: "every day", "Mon, Tue, 23:00–07:00". */
-export function whenWords({ weekdays, from, to }: LimitVersionView): string {
-  const days =
-    weekdays.length === WEEKDAYS.length
-      ? 'every day'
-      : weekdays.map((day) => day.charAt(0).toUpperCase() + day.slice(1)).join(', ');
-  return from && to ? `${days}, windows that begin ${from}–${to}` : days;
+/** When a limit applies: "every day", "Mon–Fri, not on holidays, windows that begin 23:00–07:00". */
+export function whenWords({ weekdays, holidays, window, from, to }: LimitVersionView): string {
+  const days = datesWords(weekdays, holidays);
+  if (!from || !to) return days;
+  return window === 'hours' ? `${days}, ${from}–${to}` : `${days}, windows that begin ${from}–${to}`;
 }
 
 const FLAG_WORDS: Readonly<Record<string, string>> = {

@@ -51,15 +51,36 @@ export function hoursOf(period: 'day' | 'evening' | 'night', scheme: PeriodSchem
 
 /** When a limit's windows begin: "every day, 22:00–06:00", "Mon–Fri, night (23:00–07:00)". */
 export function whenWords(
-  { weekdays, window, from, to }: Pick<LimitVersionView, 'weekdays' | 'window' | 'from' | 'to'>,
+  {
+    weekdays,
+    holidays,
+    window,
+    from,
+    to,
+  }: Pick<LimitVersionView, 'weekdays' | 'holidays' | 'window' | 'from' | 'to'>,
   scheme: PeriodScheme,
 ): string {
-  const days = weekdaysWords(weekdays);
-  if (window === '15min' || window === '1h') {
+  const days = datesWords(weekdays, holidays);
+  if (window === '15min' || window === '1h' || window === 'length' || window === 'hours') {
     return from === null || to === null ? `${days}, all day` : `${days}, ${from}–${to}`;
   }
   const hours = hoursOf(window, scheme);
   return hours === null ? `${days}, ${window}` : `${days}, ${window} (${hours})`;
+}
+
+/** "every day", "Mon–Fri, not on holidays", "holidays only". */
+export function datesWords(weekdays: readonly Weekday[], holidays: LimitVersionView['holidays']): string {
+  const days = weekdaysWords(weekdays);
+  switch (holidays) {
+    case 'as-weekday':
+      return days;
+    case 'as-sunday':
+      return `${days} (a holiday counts as a Sunday)`;
+    case 'never':
+      return `${days}, not on holidays`;
+    case 'only':
+      return 'holidays only';
+  }
 }
 
 /** "every station", or their codes. */
@@ -85,8 +106,11 @@ export const LIMIT_LABELS = {
   bandHz: 'Band',
   bandFraction: 'Band',
   window: 'Window',
+  windowMinutes: 'Length of the window',
+  stepMinutes: 'Rolling windows',
   threshold: 'Limit',
   weekdays: 'Days of the week',
+  holidays: 'Holidays of the network',
   from: 'Windows begin from',
   to: 'and before',
   minimumCoverage: 'Minimum coverage',

@@ -47,6 +47,12 @@ export const exceedanceSchema = z.object({
   descriptor: z.string().describe('What is compared, in words: "LAeq,15 min"'),
   from: z.string(),
   to: z.string(),
+  loudest: z
+    .object({ from: z.string(), to: z.string() })
+    .nullable()
+    .describe(
+      'Of rolling windows, which make one exceedance where they follow one another: the loudest, whose the level is',
+    ),
   level: tenths(
     'Level of the window, rounded half up as it was compared; of a lifted one without coverage, as it was found',
   ),

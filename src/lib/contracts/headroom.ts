@@ -2,7 +2,14 @@ import { z } from 'zod';
 import { LIMIT_METRICS } from './limits';
 import { registerRoute } from './registry';
 
-export const HEADROOM_STATES = ['open', 'no-data', 'certain', 'passed', 'not-compared'] as const;
+export const HEADROOM_STATES = [
+  'open',
+  'no-data',
+  'certain',
+  'passed',
+  'not-compared',
+  'not-foretold',
+] as const;
 export const HEADING_SOURCES = ['last-15-min', 'so-far'] as const;
 
 const level = (description: string) => z.number().nullable().describe(`${description}, dB`);
@@ -23,7 +30,7 @@ export const limitHeadroomSchema = z.object({
     .enum(HEADROOM_STATES)
     .describe(
       'certain: above the limit even if the rest is silent, once coverage suffices; passed: a maximum was above; ' +
-        'not-compared: the coverage that it takes cannot be reached any more',
+        'not-compared: the coverage that it takes cannot be reached any more; not-foretold: rolling windows, of which many are open at once',
     ),
   level: level('Mean, or maximum, of the valid data so far'),
   seconds: z.object({

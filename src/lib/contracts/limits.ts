@@ -1,10 +1,10 @@
 import { z } from 'zod';
 import { bandByNominalHz } from '#lib/acoustics/bands';
 import { clockTime, instant, reasonText, shortText } from './common';
+import { holidayRule, windowFields, windowIssues } from './limitWindows';
 import { registerRoute } from './registry';
 
 export const LIMIT_METRICS = ['LAeq', 'LAFmax', 'bandLeq'] as const;
-export const LIMIT_WINDOWS = ['15min', '1h', 'day', 'evening', 'night'] as const;
 /** In the order of the bits that store them. */
 export const WEEKDAYS = ['mon', 'tue', 'wed', 'thu', 'fri', 'sat', 'sun'] as const;
 export type Weekday = (typeof WEEKDAYS)[number];
@@ -20,9 +20,6 @@ export const TELL_WITHIN_HOURS = 48;
 const metric = z
   .enum(LIMIT_METRICS, 'must be one of the list')
   .describe('bandLeq: the unweighted level of one band');
-const window = z
-  .enum(LIMIT_WINDOWS, 'must be one of the list')
-  .describe('15min and 1h by the clock of the network; day, evening and night as the network has them');
 const bandFraction = z.union([z.literal(1), z.literal(3)], 'must be 1 (octaves) or 3 (thirds)');
 const threshold = z
   .number('must be a level in dB')
@@ -46,7 +43,7 @@ const recipient = z
 const fields = {
   name: shortText,
   metric,
-  window,
+  ...windowFields,
   bandHz: z.number('must be a nominal frequency in Hz').nullable().default(null),
   bandFraction: bandFraction.nullable().default(null),
   threshold,
@@ -55,7 +52,11 @@ const fields = {
     .min(1, 'must name at least one day')
     .default([...WEEKDAYS])
     .describe('Of the local date on which the window begins'),
-  from: clockTime.nullable().default(null).describe('Local time from which on windows begin; null: all day'),
+  holidays: holidayRule.default('as-weekday'),
+  from: clockTime
+    .nullable()
+    .default(null)
+    .describe('Local time from which on windows begin, of own hours the beginning; null: all day'),
   to: clockTime.nullable().default(null).describe('Before `from`: across midnight'),
   minimumCoverage: minimumCoverage.nullable().default(null),
   stations: z
@@ -78,15 +79,12 @@ const fields = {
     ),
 };
 
-type Checked = Pick<
-  z.output<z.ZodObject<typeof fields>>,
-  'metric' | 'window' | 'bandHz' | 'bandFraction' | 'from' | 'to'
->;
+type Checked = Omit<z.output<z.ZodObject<typeof fields>>, 'reason'>;
 
 function checkTogether(limit: Checked, context: z.RefinementCtx): void {
   const issue = (path: keyof Checked, message: string) =>
     context.addIssue({ code: 'custom', path: [path], message });
-  const { metric: of, window: averaging, bandHz, bandFraction: fraction, from, to } = limit;
+  const { metric: of, bandHz, bandFraction: fraction } = limit;
   if (of === 'bandLeq') {
     if (fraction === null) issue('bandFraction', 'must be given for a band: 1 (octaves) or 3 (thirds)');
     if (bandHz === null) issue('bandHz', 'must be given for a band');
@@ -95,16 +93,7 @@ function checkTogether(limit: Checked, context: z.RefinementCtx): void {
   } else if (bandHz !== null || fraction !== null) {
     issue('bandHz', 'goes with the level of a band only');
   }
-  const isByClock = averaging === '15min' || averaging === '1h';
-  if (!isByClock && (from !== null || to !== null)) {
-    issue('from', `goes with windows of 15 min or 1 h; the ${averaging} has its own hours: leave both out`);
-  } else if ((from === null) !== (to === null)) {
-    issue(from === null ? 'from' : 'to', 'must be given together with the other one');
-  } else if (from !== null && from === to) {
-    issue('to', 'must differ from the beginning; leave both out for all day');
-  } else if (from === 1440) {
-    issue('from', 'must be from 00:00 to 23:59');
-  }
+  for (const [field, message] of windowIssues(limit)) issue(field, message);
 }
 
 export const newLimitSchema = z
@@ -121,12 +110,15 @@ export const limitVersionSchema = z.object({
   version: z.number().int(),
   name: z.string(),
   metric,
-  window,
+  window: windowFields.window,
+  windowMinutes: z.number().int().nullable(),
+  stepMinutes: z.number().int().nullable(),
   bandHz: z.number().nullable(),
   bandFraction: bandFraction.nullable(),
   descriptor: z.string().describe('What is compared, in words: "LAeq,15 min"'),
   threshold,
   weekdays: z.array(z.enum(WEEKDAYS)),
+  holidays: holidayRule,
   from: z.string().nullable(),
   to: z.string().nullable(),
   minimumCoverage: minimumCoverage.nullable(),

@@ -8,7 +8,7 @@ export interface DescriptorParts {
 export type TextRun = string | DescriptorParts;
 
 const DESCRIPTOR =
-  /\bL(?:Aeq|Ceq|Zeq|eq|AFmax|AFmin|Fmax|Cpeak|AE|den|dn|day|evening|night|A?(?:1|5|10|50|90|95|99)(?!\d))(?:24h|,(?:[\d.]+ (?:s|min|h)|day|evening|night))?(?![A-Za-z])/g;
+  /\bL(?:Aeq|Ceq|Zeq|eq|AFmax|AFmin|Fmax|Cpeak|AE|den|dn|day|evening|night|A?(?:1|5|10|50|90|95|99)(?!\d))(?:24h|,(?:[\d.]+ (?:s|min|h)(?: \d+ min)?|\d\d:\d\d–\d\d:\d\d|day|evening|night))?(?![A-Za-z])/g;
 
 /**
  * Takes a descriptor's plain name apart for typesetting. `name` is as the interface writes it: LAeq, LAFmax, Lden, LA10, L90,

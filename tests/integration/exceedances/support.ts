@@ -60,6 +60,7 @@ export function makeExceedance(made: {
         limitVersionId: limit.versionId,
         startSec,
         endSec: startSec + 3600,
+        loudest: null,
         levelDb,
         thresholdTenths: 550,
         coverage: 0.98,
@@ -72,13 +73,22 @@ export function makeExceedance(made: {
 
 /** Lifts an exceedance as the judge does when later data take it below the limit. */
 export async function lift(id: number, found: { levelDb: number; coverage: number }): Promise<void> {
-  const { limitVersionId, endSec } = await db()('exceedances')
+  const { limitVersionId, startSec, endSec } = await db()('exceedances')
     .where({ id })
-    .first({ limitVersionId: 'limit_version_id', endSec: 'ends_at' });
+    .first({ limitVersionId: 'limit_version_id', startSec: 'starts_at', endSec: 'ends_at' });
   await inTransaction((transaction) =>
     updateExceedance(
       id,
-      { ...found, limitVersionId, endSec, thresholdTenths: 550, state: 'lifted', revision: 1 },
+      {
+        ...found,
+        limitVersionId,
+        startSec,
+        endSec,
+        loudest: null,
+        thresholdTenths: 550,
+        state: 'lifted',
+        revision: 1,
+      },
       new Date(),
       transaction,
     ),

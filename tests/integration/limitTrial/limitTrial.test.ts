@@ -123,6 +123,28 @@ const LIMITS = [
   { metric: 'LAFmax', window: '15min', threshold: 84 },
   { metric: 'bandLeq', window: '15min', bandFraction: 3, bandHz: 100, threshold: 64 },
   { metric: 'bandLeq', window: '1h', bandFraction: 1, bandHz: 125, threshold: 62 },
+  { metric: 'LAeq', window: 'length', windowMinutes: 5, threshold: 72 },
+  { metric: 'LAFmax', window: 'length', windowMinutes: 240, threshold: 84 },
+  { metric: 'LAeq', window: 'hours', from: '22:00', to: '06:00', threshold: 55 },
+  { metric: 'LAeq', window: '1h', stepMinutes: 15, threshold: 63 },
+  {
+    metric: 'LAeq',
+    window: '1h',
+    stepMinutes: 5,
+    threshold: 62,
+    from: '20:00',
+    to: '04:00',
+    weekdays: ['sat', 'sun'],
+  },
+  {
+    metric: 'bandLeq',
+    window: 'length',
+    windowMinutes: 30,
+    stepMinutes: 5,
+    bandFraction: 3,
+    bandHz: 100,
+    threshold: 64,
+  },
 ] as const;
 
 test.sequential('before anything is computed and after, a trial finds the same', async () => {

@@ -3,6 +3,7 @@ import { expect, test } from 'vitest';
 import { bandsOf } from '#lib/acoustics/bands';
 import { formatClockTime } from '#lib/contracts/common';
 import { newLimitSchema, WEEKDAYS, type Limit } from '#lib/contracts/limits';
+import { HOLIDAY_RULES } from '#lib/contracts/limitWindows';
 import { limitOfForm, limitValues } from '../../../src/pages/n/[network]/limits/_limitForm';
 
 const ZONE = 'Europe/London';
@@ -22,8 +23,15 @@ const hours = fc
   .tuple(fc.integer({ min: 0, max: 1439 }), fc.integer({ min: 0, max: 1439 }))
   .filter(([from, to]) => from !== to)
   .map(([from, to]) => ({ from: formatClockTime(from), to: formatClockTime(to) }));
+const fives = hours.filter(({ from, to }) => /[05]$/.test(from) && /[05]$/.test(to));
 const windows = fc.oneof(
   fc.constantFrom('day', 'evening', 'night').map((window) => ({ window })),
+  fives.map((times) => ({ window: 'hours', ...times })),
+  fc.tuple(fc.constantFrom(5, 20, 120, 1440), fc.constantFrom(5, 15, null)).map(([windowMinutes, step]) => ({
+    window: 'length',
+    windowMinutes,
+    stepMinutes: step !== null && step < windowMinutes ? step : null,
+  })),
   fc
     .tuple(fc.constantFrom('15min', '1h'), fc.option(hours, { nil: { from: null, to: null } }))
     .map(([window, times]) => ({ window, ...times })),
@@ -37,6 +45,7 @@ const limits = fc
       .subarray([...WEEKDAYS], { minLength: 1 })
       .map((days) => WEEKDAYS.filter((day) => days.includes(day))),
     percent: fc.option(fc.integer({ min: 0, max: 100 })),
+    holidays: fc.constantFrom(...HOLIDAY_RULES),
     stations: fc.option(fc.subarray(['A-1', 'B-2', 'C-3'], { minLength: 1 })),
     recipients: fc.subarray(['a@x.example', 'b+c@y.example']),
     quantity,
@@ -51,6 +60,8 @@ const limits = fc
         bandFraction: null,
         from: null,
         to: null,
+        windowMinutes: null,
+        stepMinutes: null,
         ...what,
         ...when,
         ...rest,

@@ -22,7 +22,11 @@ function timelineOf(timeZone: string): NetworkSettings[] {
 function rule(changes: Partial<WindowRule> = {}): WindowRule {
   return {
     averaging: '1h',
+    windowMin: null,
+    stepMin: null,
     weekdays: 127,
+    holidays: 'as-weekday',
+    holidayDates: new Set(),
     fromMin: null,
     toMin: null,
     effectiveFromSec: 0,

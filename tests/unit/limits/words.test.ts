@@ -18,11 +18,16 @@ test('hours of a period are the network’s; without an evening the day goes on 
 
 test('when a limit holds', () => {
   const weekdays = ['sat', 'sun'] as ('sat' | 'sun')[];
-  expect(whenWords({ weekdays, window: '1h', from: null, to: null }, SCHEME)).toBe('Sat, Sun, all day');
-  expect(whenWords({ weekdays, window: '15min', from: '22:00', to: '06:00' }, SCHEME)).toBe(
-    'Sat, Sun, 22:00–06:00',
+  expect(whenWords({ weekdays, holidays: 'as-weekday', window: '1h', from: null, to: null }, SCHEME)).toBe(
+    'Sat, Sun, all day',
   );
-  expect(whenWords({ weekdays, window: 'night', from: null, to: null }, SCHEME)).toBe(
+  expect(
+    whenWords({ weekdays, holidays: 'as-weekday', window: '15min', from: '22:00', to: '06:00' }, SCHEME),
+  ).toBe('Sat, Sun, 22:00–06:00');
+  expect(
+    whenWords({ weekdays, holidays: 'never', window: 'hours', from: '22:00', to: '06:00' }, SCHEME),
+  ).toBe('Sat, Sun, not on holidays, 22:00–06:00');
+  expect(whenWords({ weekdays, holidays: 'as-weekday', window: 'night', from: null, to: null }, SCHEME)).toBe(
     'Sat, Sun, night (23:00–07:00)',
   );
 });

@@ -1,10 +1,8 @@
 import { listLimitVersions, type LimitVersion } from '#db/queries/limits';
 import type { NetworkSettings } from '#db/queries/networks';
 import type { StationRow } from '#db/queries/stations';
+import { LONGEST_WINDOW_SEC } from '../limits/force';
 import { windowsOf } from '../limits/windows';
-
-/** Longest window of a limit: a night of a clock change, with room. */
-const LONGEST_WINDOW_SEC = 26 * 3600;
 
 /** How many limits are set for a station, and how many of them have a window that overlaps `fromSec <= t < toSec`. */
 export async function applyingLimits(

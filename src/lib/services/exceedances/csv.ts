@@ -16,6 +16,8 @@ const COLUMNS: [heading: string, cell: (exceedance: Exceedance) => Cell][] = [
   ['descriptor', ({ descriptor }) => descriptor],
   ['from', ({ from }) => from],
   ['to', ({ to }) => to],
+  ['loudestFrom', ({ loudest }) => loudest?.from ?? null],
+  ['loudestTo', ({ loudest }) => loudest?.to ?? null],
   ['level', ({ level }) => level],
   ['threshold', ({ threshold }) => threshold],
   ['excess', ({ excess }) => excess],

@@ -15,6 +15,7 @@ export function exceedanceView(row: ExceedanceRow): Exceedance {
     descriptor: limitMetricText(row),
     from: formatInstantUtc(row.startsAtSec),
     to: formatInstantUtc(row.endsAtSec),
+    loudest: loudestOf(row),
     level: levelTenths / 10,
     threshold: row.thresholdTenths / 10,
     excess: (levelTenths - row.thresholdTenths) / 10,
@@ -26,6 +27,11 @@ export function exceedanceView(row: ExceedanceRow): Exceedance {
     acknowledgement: acknowledgementOf(row),
     version: versionOf(row),
   };
+}
+
+function loudestOf({ loudestStartSec, loudestEndSec }: ExceedanceRow): Exceedance['loudest'] {
+  if (loudestStartSec === null || loudestEndSec === null) return null;
+  return { from: formatInstantUtc(loudestStartSec), to: formatInstantUtc(loudestEndSec) };
 }
 
 /** Names what somebody read of an exceedance: another one when it was revised or acknowledged since. */

@@ -60,6 +60,7 @@ async function headroomOf(window: JudgedWindow, evidence: HeadroomEvidence): Pro
     level: levelDb,
     seconds: seconds.told,
   };
+  if (version.stepMin !== null) return { ...told, ...NO_FINDINGS, state: 'not-foretold' };
   if (version.metric === 'LAFmax') return { ...told, ...ofMaximum(window, levelDb) };
   return { ...told, ...(await ofMean(window, levelDb, seconds, evidence)) };
 }

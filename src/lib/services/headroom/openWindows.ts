@@ -14,7 +14,12 @@ export function openWindows(
 ): JudgedWindow[] {
   const begun = { fromSec: nowSec - LONGEST_WINDOW_SEC, toSec: nowSec + 1 };
   return [...byLimit(versions).values()]
-    .flatMap((ofLimit) => judgedWindows(ofLimit, stationId, begun, timeline))
-    .filter(({ startSec, endSec }) => startSec <= nowSec && nowSec < endSec)
+    .flatMap((ofLimit) => {
+      const open = judgedWindows(ofLimit, stationId, begun, timeline).filter(
+        ({ startSec, endSec }) => startSec <= nowSec && nowSec < endSec,
+      );
+      // Of rolling windows many are open: the first that ends stands for them.
+      return open.filter(({ version }, at) => version.stepMin === null || at === 0);
+    })
     .sort((a, b) => a.endSec - b.endSec || a.version.name.localeCompare(b.version.name, 'en'));
 }

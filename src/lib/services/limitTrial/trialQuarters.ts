@@ -5,10 +5,11 @@ import { currentQuarters } from '#lib/services/levels/currentQuarters';
 import { dirtySpans } from '#lib/services/levels/dirtySpans';
 import type { LevelSource } from '#lib/services/levels/intervalSums';
 import { overlapsAny, type Span } from '#lib/services/levels/spans';
+import { sumsByGrain } from '#lib/services/limits/grains';
 import type { MeasurableSums } from '#lib/services/limits/measure';
 import { QUARTER_SEC } from '#lib/time/quarters';
 
-/** A quarter-hour as far as limits look at it. */
+/** A quarter-hour, or five minutes, as far as limits look at it. */
 export interface TrialQuarter {
   startSec: number;
   sums: MeasurableSums;
@@ -20,15 +21,16 @@ const BANDS_AT_ONCE_SEC = 31 * 86_400;
 const { bandFraction, isBandFractionMixed, bandEnergySec, bandValidSec } = emptySums({ bandClasses: false });
 
 /**
- * Quarter-hours of a station in `fromSec <= t < toSec` (whole quarter-hours), ascending and current. Without bands a year takes
- * a fraction of a second.
+ * Quarter-hours of a station in `fromSec <= t < toSec` (whole quarter-hours), ascending and current; or, as `partSec` says, fives
+ * of minutes from the intervals. Quarter-hours without bands take a fraction of a second a year.
  */
 export async function trialQuarters(
   source: LevelSource,
   { fromSec, toSec }: Span,
-  { bands }: { bands: boolean },
+  { bands, partSec }: { bands: boolean; partSec: number },
   conn: Connection,
 ): Promise<TrialQuarter[]> {
+  if (partSec !== QUARTER_SEC) return sumsByGrain(source, { fromSec, toSec }, conn);
   if (!bands) return energiesOf(source, { fromSec, toSec }, conn);
   const found: TrialQuarter[] = [];
   for (let from = fromSec; from < toSec; from += BANDS_AT_ONCE_SEC) {

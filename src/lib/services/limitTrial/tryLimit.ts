@@ -1,4 +1,5 @@
 import { pool, type Connection } from '#db/queries/connection';
+import { listHolidays } from '#db/queries/holidays';
 import { findLimit, type LimitVersion } from '#db/queries/limits';
 import { listSettings, pickSettings } from '#db/queries/networks';
 import { listStations } from '#db/queries/stations';
@@ -16,6 +17,7 @@ import { readRule } from '#lib/services/limits/rule';
 import { done, unknown, type Outcome } from '#lib/services/outcome';
 import { startOfDaySec } from '#lib/time/zone';
 import { caughtInOrder, summaryOf } from './summary';
+import { sizeProblem } from './size';
 import { tryRule, type CaughtWindow, type TrialGround, type TrialRule } from './tryRule';
 
 /** A rule with what it caught, in order of time. */
@@ -42,10 +44,13 @@ export async function tryLimit(
   if (!read.isValid) return { kind: 'invalid', problems: read.problems };
   const today = query.basedOn === null ? null : await versionOfToday(networkId, query.basedOn, nowSec, conn);
   if (query.basedOn !== null && !today) return unknown('The network has no limit with this number.');
+  const problem = sizeProblem(query, stations.length);
+  if (problem) return { kind: 'invalid', problems: [problem] };
   const timeline = await listSettings(networkId, conn);
+  const holidayDates = new Set((await listHolidays(networkId, conn)).map(({ date }) => date));
   const zone = pickSettings(timeline, nowSec).timeZone;
   const period = { fromSec: startOfDaySec(query.from, zone), toSec: startOfDaySec(query.to, zone) };
-  const ground: TrialGround = { stations, timeline, period, nowSec };
+  const ground: TrialGround = { stations, timeline, holidayDates, period, nowSec };
   const own = await tried(read.version, ground, zone, conn);
   const other = today && { ...(await tried(today, ground, zone, conn)), version: today };
   const codes = new Map(stations.map(({ id, code }) => [id, code]));

@@ -1,20 +1,27 @@
 import type { Connection } from '#db/queries/connection';
-import type { LimitVersion } from '#db/queries/limits';
+import type { NewLimitVersion } from '#db/queries/limits';
 import { pickSettings, type NetworkSettings } from '#db/queries/networks';
 import type { StationRow } from '#db/queries/stations';
 import type { TrialCounts } from '#lib/contracts/limitTrial';
 import type { Span } from '#lib/services/levels/spans';
 import { coversStation } from '#lib/services/limits/force';
 import { judgeWindow, minimumFor } from '#lib/services/limits/measure';
+import { GRAIN_SEC } from '#lib/services/limits/grains';
+import { runDateOf, runsOf, type WindowAbove } from '#lib/services/limits/runs';
 import { windowsOf, type LimitWindow } from '#lib/services/limits/windows';
-import { trialQuarters, type TrialQuarter } from './trialQuarters';
+import { QUARTER_SEC } from '#lib/time/quarters';
+import { groupBy } from '../groupBy';
+import { trialQuarters } from './trialQuarters';
 import { WindowSums } from './windowSums';
 
 /** What a limit compares, whoever set it and whenever it holds. */
 export type TrialRule = Pick<
-  LimitVersion,
+  NewLimitVersion,
   | 'metric'
   | 'averaging'
+  | 'windowMin'
+  | 'stepMin'
+  | 'holidays'
   | 'bandFraction'
   | 'bandIndex'
   | 'thresholdTenths'
@@ -25,7 +32,7 @@ export type TrialRule = Pick<
   | 'stationIds'
 >;
 
-/** A window above the limit. */
+/** A window above the limit, or rolling ones that follow one another: with the level and coverage of the loudest. */
 export interface CaughtWindow extends LimitWindow {
   stationId: number;
   levelDb: number;
@@ -44,10 +51,14 @@ export interface TrialGround {
   stations: readonly StationRow[];
   /** The network's settings in order of their beginning. */
   timeline: NetworkSettings[];
+  /** Named dates of the network. */
+  holidayDates?: ReadonlySet<string>;
   /** Windows that begin in it are tried. */
   period: Span;
   nowSec: number;
 }
+
+const NO_DATES: ReadonlySet<string> = new Set();
 
 interface TriedWindow extends LimitWindow {
   lengthSec: number;
@@ -63,6 +74,7 @@ export async function tryRule(
   const { timeline } = ground;
   const windows = closedWindows(rule, ground);
   const [first, last] = [windows[0], windows.at(-1)];
+  const partSec = partSecOf(windows);
   const tried: StationTrial[] = [];
   for (const station of ground.stations.filter(({ id }) => coversStation(rule, id))) {
     const source = { station, timeline, validity: 'rules' as const };
@@ -71,17 +83,28 @@ export async function tryRule(
         ? await trialQuarters(
             source,
             { fromSec: first.startSec, toSec: last.endSec },
-            { bands: rule.metric === 'bandLeq' },
+            { bands: rule.metric === 'bandLeq', partSec },
             conn,
           )
         : [];
-    tried.push(tryStation(rule, station, windows, quarters));
+    tried.push(tryStation(rule, station, windows, { timeline, sums: new WindowSums(quarters, partSec) }));
   }
   return tried;
 }
 
-function closedWindows(rule: TrialRule, { timeline, period, nowSec }: TrialGround): TriedWindow[] {
-  const always = { ...rule, effectiveFromSec: 0, withdrawnAt: null };
+function closedWindows(
+  rule: TrialRule,
+  { timeline, period, nowSec, holidayDates = NO_DATES }: TrialGround,
+): TriedWindow[] {
+  const always = {
+    ...rule,
+    windowMin: rule.windowMin ?? null,
+    stepMin: rule.stepMin ?? null,
+    holidays: rule.holidays ?? 'as-weekday',
+    holidayDates,
+    effectiveFromSec: 0,
+    withdrawnAt: null,
+  };
   return windowsOf(always, period.fromSec, period.toSec, timeline)
     .filter(({ endSec }) => endSec <= nowSec)
     .map((window) => ({
@@ -91,24 +114,45 @@ function closedWindows(rule: TrialRule, { timeline, period, nowSec }: TrialGroun
     }));
 }
 
+/** What windows are made of: quarter-hours where all of them are whole numbers of these, else fives of minutes. */
+function partSecOf(windows: readonly LimitWindow[]): number {
+  const isOfQuarters = windows.every(
+    ({ startSec, endSec }) => startSec % QUARTER_SEC === 0 && endSec % QUARTER_SEC === 0,
+  );
+  return isOfQuarters ? QUARTER_SEC : GRAIN_SEC;
+}
+
 function tryStation(
   rule: TrialRule,
   station: StationRow,
   windows: readonly TriedWindow[],
-  quarters: readonly TrialQuarter[],
+  { sums, timeline }: { sums: WindowSums; timeline: NetworkSettings[] },
 ): StationTrial {
-  const sums = new WindowSums(quarters);
   const counts: TrialCounts = { windows: windows.length, compared: 0, uncovered: 0, empty: 0, caught: 0 };
-  const caught: CaughtWindow[] = [];
+  const above: WindowAbove[] = [];
   for (const window of windows) {
-    const { levelDb, coverage, isCovered, isExceeded } = judgeWindow(rule, window, sums.of(window));
+    const { levelDb, coverage, isCovered, isExceeded } = judgeWindow(rule, window, sums.of(window, rule));
     if (levelDb === null) counts.empty += 1;
     else if (isCovered) counts.compared += 1;
     else counts.uncovered += 1;
     if (!isExceeded || levelDb === null) continue;
     const { startSec, endSec } = window;
-    caught.push({ stationId: station.id, startSec, endSec, levelDb, coverage });
+    above.push({ startSec, endSec, levelDb, coverage });
   }
+  const caught = caughtOf(rule, above, timeline).map((one) => ({ ...one, stationId: station.id }));
   counts.caught = caught.length;
   return { station, counts, caught };
+}
+
+/** Windows above the limit as the judge would list them: rolling ones that follow one another on a date as one. */
+function caughtOf(
+  { stepMin = null, fromMin, toMin }: TrialRule,
+  above: readonly WindowAbove[],
+  timeline: NetworkSettings[],
+): WindowAbove[] {
+  if (stepMin === null) return [...above];
+  const byDate = groupBy(above, ({ startSec }) => runDateOf({ fromMin, toMin }, startSec, timeline));
+  return [...byDate.values()].flatMap((ofDate) =>
+    runsOf(ofDate, stepMin * 60).map(({ startSec, endSec, loudest }) => ({ ...loudest, startSec, endSec })),
+  );
 }

@@ -1,33 +1,50 @@
 import { emptySums, mergeSums } from '#lib/acoustics/periodSums';
+import type { LimitMetric } from '#db/queries/limits';
 import type { LimitWindow } from '#lib/services/limits/windows';
 import type { MeasurableSums } from '#lib/services/limits/measure';
-import { QUARTER_SEC } from '#lib/time/quarters';
 import type { TrialQuarter } from './trialQuarters';
 
 const NOTHING: MeasurableSums = emptySums({ bandClasses: false });
 
-/** Sums of windows from quarter-hours, both ascending; asked for in order of time. */
+/** Sums of windows from parts of equal length, both ascending; asked for in order of time. */
 export class WindowSums {
   #next = 0;
 
-  constructor(private readonly quarters: readonly TrialQuarter[]) {}
+  constructor(
+    private readonly parts: readonly TrialQuarter[],
+    private readonly partSec: number,
+  ) {}
 
-  /** Sums of one window, that begins no earlier than the one before. */
-  of({ startSec, endSec }: LimitWindow): MeasurableSums {
-    while ((this.quarters[this.#next]?.startSec ?? Infinity) < startSec) this.#next += 1;
+  /** Sums of one window, that begins no earlier than the one before, as far as a metric looks at them. */
+  of({ startSec, endSec }: LimitWindow, { metric }: { metric: LimitMetric }): MeasurableSums {
+    while ((this.parts[this.#next]?.startSec ?? Infinity) < startSec) this.#next += 1;
     let end = this.#next;
-    while ((this.quarters[end]?.startSec ?? Infinity) + QUARTER_SEC <= endSec) end += 1;
+    while ((this.parts[end]?.startSec ?? Infinity) + this.partSec <= endSec) end += 1;
     // Most windows of a year are single quarter-hours: these are taken as they are.
-    if (end - this.#next > 1) return sumOf(this.quarters.slice(this.#next, end));
-    return (end > this.#next && this.quarters[this.#next]?.sums) || NOTHING;
+    if (end - this.#next <= 1) return (end > this.#next && this.parts[this.#next]?.sums) || NOTHING;
+    return metric === 'bandLeq' ? this.merged(this.#next, end) : this.added(this.#next, end);
   }
-}
 
-/** As `mergeSums` has it, without what limits do not look at. */
-function sumOf(quarters: readonly TrialQuarter[]): MeasurableSums {
-  const whole = emptySums({ bandClasses: false });
-  for (const { sums } of quarters) mergeSums(whole, { ...REST, ...sums });
-  return whole;
+  /** What A-weighted limits look at, without merging the rest: rolling windows of a year are millions of parts. */
+  private added(from: number, to: number): MeasurableSums {
+    const whole = { ...NOTHING };
+    for (let at = from; at < to; at += 1) {
+      const sums = this.parts[at]?.sums;
+      if (!sums) continue;
+      whole.validSec += sums.validSec;
+      whole.aEnergySec += sums.aEnergySec;
+      if (sums.lafmaxCentiDb !== null && sums.lafmaxCentiDb > (whole.lafmaxCentiDb ?? -Infinity))
+        whole.lafmaxCentiDb = sums.lafmaxCentiDb;
+    }
+    return whole;
+  }
+
+  /** As `mergeSums` has it, without what limits do not look at. */
+  private merged(from: number, to: number): MeasurableSums {
+    const whole = emptySums({ bandClasses: false });
+    for (const { sums } of this.parts.slice(from, to)) mergeSums(whole, { ...REST, ...sums });
+    return whole;
+  }
 }
 
 /** Distributions and C-weighted sums of nothing: merging them changes nothing. */

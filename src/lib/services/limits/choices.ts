@@ -1,3 +1,4 @@
+import { listHolidays } from '#db/queries/holidays';
 import { listStations, type StationRow } from '#db/queries/stations';
 import { bandsOf, type Band } from '#lib/acoustics/bands';
 import { measures } from './rule';
@@ -7,6 +8,8 @@ export interface LimitChoices {
   stations: { code: string; name: string }[];
   /** Bands that some station measures, thirds before octaves, each in ascending order; without stations every band. */
   bands: Band[];
+  /** How many named dates the network has. */
+  holidayCount: number;
 }
 
 /** Stations in use and their bands, and those that a limit names already (by code). */
@@ -15,6 +18,7 @@ export async function limitChoices(networkId: number, named: readonly string[] =
     ({ code, retiredAt }) => retiredAt === null || named.includes(code),
   );
   return {
+    holidayCount: (await listHolidays(networkId)).length,
     stations: stations.map(({ code, name }) => ({ code, name })),
     bands: ([3, 1] as const).flatMap((fraction) =>
       bandsOf(fraction).filter((band) => stations.length === 0 || isMeasured(band, stations)),

@@ -1,6 +1,7 @@
 import type { LimitVersion } from '#db/queries/limits';
 import type { NetworkSettings } from '#db/queries/networks';
 import { groupBy } from '../groupBy';
+import { runDateOf } from './runs';
 import { windowsOf, type LimitWindow } from './windows';
 
 /** A window of a limit with the version that judges it. */
@@ -8,7 +9,7 @@ export interface JudgedWindow extends LimitWindow {
   version: LimitVersion;
 }
 
-/** The longest window, a period of day of a clock change, with room. */
+/** The longest window, a day of 25 h where the clock is put back, with room. */
 export const LONGEST_WINDOW_SEC = 26 * 3600;
 
 /** The versions of each limit, by its id, in their order. */
@@ -25,6 +26,27 @@ export function replacedFromSec(version: LimitVersion, ofLimit: readonly LimitVe
 /** The version of one limit that judges what begins at an instant: of those in force by then the newest. */
 export function versionAt<V extends LimitVersion>(ofLimit: readonly V[], atSec: number): V | undefined {
   return ofLimit.findLast(({ effectiveFromSec }) => effectiveFromSec <= atSec);
+}
+
+/**
+ * Windows that are enough to have all of them judged: rolling ones of a date are judged together, so of those that have ended the last
+ * one stands for its date.
+ */
+export function enoughToJudge(
+  windows: readonly JudgedWindow[],
+  nowSec: number,
+  timeline: NetworkSettings[],
+): JudgedWindow[] {
+  const enough = new Map<string, JudgedWindow>();
+  for (const window of windows) {
+    const { version, startSec, endSec } = window;
+    const isOne = version.stepMin !== null && endSec <= nowSec;
+    const key = isOne
+      ? `${version.id} ${runDateOf(version, startSec, timeline)}`
+      : `${version.id}:${startSec}`;
+    enough.set(key, window);
+  }
+  return [...enough.values()];
 }
 
 /** Whether a version holds for a station. */

@@ -5,8 +5,8 @@ import { listSettings } from '#db/queries/networks';
 import { insertPendingWindows, type NewPendingWindow } from '#db/queries/pendingWindows';
 import { selectQuarterStarts } from '#db/queries/quarterHours';
 import { listStations, lockStation } from '#db/queries/stations';
-import { QUARTER_SEC } from '#lib/time/quarters';
-import { judgedWindows, LONGEST_WINDOW_SEC } from './force';
+import { QUARTER_SEC, quarterAt } from '#lib/time/quarters';
+import { enoughToJudge, judgedWindows, LONGEST_WINDOW_SEC } from './force';
 
 /**
  * Has the windows of a limit judged that begin from an instant (epoch seconds) on and have data already, and those in which it
@@ -31,21 +31,18 @@ export async function pendLimit(
     await lockStation(stationId, transaction);
     const quarters = await selectQuarterStarts(stationId, fromSec, nowSec + LONGEST_WINDOW_SEC, transaction);
     const measured = new Set(quarters);
-    for (const { startSec, endSec } of judgedWindows(
-      ofLimit,
-      stationId,
-      { fromSec, toSec: nowSec },
-      timeline,
-    )) {
-      if (holdsAny(measured, startSec, endSec)) add({ limitId, stationId, startSec, endSec });
-    }
+    const windows = judgedWindows(ofLimit, stationId, { fromSec, toSec: nowSec }, timeline).filter(
+      ({ startSec, endSec }) => holdsAny(measured, startSec, endSec),
+    );
+    for (const { startSec, endSec } of enoughToJudge(windows, nowSec, timeline))
+      add({ limitId, stationId, startSec, endSec });
   }
   (await selectStandingOfLimit(limitId, fromSec, transaction)).forEach(add);
   await insertPendingWindows([...pending.values()], transaction);
 }
 
 function holdsAny(quarters: ReadonlySet<number>, startSec: number, endSec: number): boolean {
-  for (let quarter = startSec; quarter < endSec; quarter += QUARTER_SEC) {
+  for (let quarter = quarterAt(startSec); quarter < endSec; quarter += QUARTER_SEC) {
     if (quarters.has(quarter)) return true;
   }
   return false;

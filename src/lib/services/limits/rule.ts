@@ -11,7 +11,7 @@ export interface FieldProblem {
 }
 
 /** A version of a limit without who made it. */
-export type LimitRule = Omit<NewLimitVersion, 'createdBy'>;
+export type LimitRule = Required<Omit<NewLimitVersion, 'createdBy'>>;
 
 export type ReadRule = { isValid: true; version: LimitRule } | { isValid: false; problems: FieldProblem[] };
 
@@ -43,10 +43,13 @@ export function readRule(limit: NewLimit, stations: readonly StationRow[], nowSe
       name: limit.name,
       metric: limit.metric,
       averaging: limit.window,
+      windowMin: limit.windowMinutes,
+      stepMin: limit.stepMinutes,
       bandFraction: limit.bandFraction,
       bandIndex: band?.index ?? null,
       thresholdTenths: Math.round(limit.threshold * 10),
       weekdays: limit.weekdays.reduce((bits, day) => bits | (1 << WEEKDAYS.indexOf(day)), 0),
+      holidays: limit.holidays,
       fromMin: limit.from,
       toMin: limit.to,
       minimumCoverage: limit.minimumCoverage,

@@ -1,39 +1,32 @@
 import type { LimitVersion } from '#db/queries/limits';
 import { pickSettings, type NetworkSettings } from '#db/queries/networks';
 import { periodsOf } from '#lib/time/periods';
-import { QUARTER_SEC } from '#lib/time/quarters';
-import {
-  addDays,
-  localDateAt,
-  localMinuteAt,
-  startOfDaySec,
-  weekdayOf,
-  type LocalDate,
-} from '#lib/time/zone';
+import { addDays, instantAtSec, localDateAt, localMinuteAt, type LocalDate } from '#lib/time/zone';
+import { clockOf, clockWindows, rollingWindows, type ClockWindow, type LimitWindow } from './clockWindows';
+import { isDateOf } from './dates';
 
-/** A window that a limit looks at: half-open, epoch seconds. */
-export interface LimitWindow {
-  startSec: number;
-  endSec: number;
-}
+export type { LimitWindow } from './clockWindows';
 
 export type WindowRule = Pick<
   LimitVersion,
-  'averaging' | 'weekdays' | 'fromMin' | 'toMin' | 'effectiveFromSec' | 'withdrawnAt'
+  | 'averaging'
+  | 'windowMin'
+  | 'stepMin'
+  | 'weekdays'
+  | 'holidays'
+  | 'holidayDates'
+  | 'fromMin'
+  | 'toMin'
+  | 'effectiveFromSec'
+  | 'withdrawnAt'
 >;
 
-interface Candidate extends LimitWindow {
-  /** Local clock at its beginning, minutes after midnight. */
-  clockMin: number;
-}
-
-const DAY_SEC = 86_400;
-
 /**
- * Windows of a limit's version that begin in `fromSec <= t < toSec`, ascending: quarter-hours and hours by the clock on the wall,
- * or the network's days, evenings and nights; on its weekdays (of the local date on which the window begins), within its clock
- * times (across midnight where they end before they begin), while the version is in force. A later version of the limit is the
- * caller's to look out for. `timeline`: the network's settings in order of their beginning.
+ * Windows of a limit's version that begin in `fromSec <= t < toSec`, ascending: of a length by the clock on the wall, fixed or
+ * rolling, or the network's days, evenings and nights, or one of its own hours each date; on its weekdays and holidays (of the
+ * local date on which the window begins), within its clock times (across midnight where they end before they begin), while the
+ * version is in force. A later version of the limit is the caller's to look out for. `timeline`: the network's settings in order
+ * of their beginning.
  */
 export function windowsOf(
   rule: WindowRule,
@@ -45,7 +38,7 @@ export function windowsOf(
   const lastDate = addDays(localDateAt(toSec, timeZone), 1);
   const windows: LimitWindow[] = [];
   for (let date = addDays(localDateAt(fromSec, timeZone), -1); date <= lastDate; date = addDays(date, 1)) {
-    if ((rule.weekdays & (1 << weekdayOf(date))) === 0) continue;
+    if (!isDateOf(rule, date)) continue;
     for (const { startSec, endSec, clockMin } of candidatesOf(date, rule, timeline)) {
       const isAsked = fromSec <= startSec && startSec < toSec;
       if (isAsked && isWithinClock(clockMin, rule) && isInForce(startSec, rule))
@@ -55,14 +48,28 @@ export function windowsOf(
   return windows;
 }
 
-function candidatesOf(date: LocalDate, { averaging }: WindowRule, timeline: NetworkSettings[]): Candidate[] {
+/** Minutes of a window by the clock; null for a period of day and for hours of its own. */
+export function lengthMinOf({
+  averaging,
+  windowMin,
+}: Pick<WindowRule, 'averaging' | 'windowMin'>): number | null {
+  if (averaging === '15min') return 15;
+  if (averaging === '1h') return 60;
+  return averaging === 'length' ? windowMin : null;
+}
+
+function candidatesOf(date: LocalDate, rule: WindowRule, timeline: NetworkSettings[]): ClockWindow[] {
   const { timeZone } = pickSettings(timeline, Date.parse(`${date}T12:00:00Z`) / 1000);
-  const dayFrom = startOfDaySec(date, timeZone);
-  const { timeZone: zone, scheme } = pickSettings(timeline, dayFrom);
-  if (averaging === '15min') return clockWindows(date, zone, 15);
-  if (averaging === '1h') return clockWindows(date, zone, 60);
+  const { timeZone: zone, scheme } = pickSettings(timeline, instantAtSec(date, 0, timeZone));
+  const lengthMin = lengthMinOf(rule);
+  if (lengthMin !== null) {
+    const { stepMin } = rule;
+    const clock = clockOf(date, zone);
+    return stepMin === null ? clockWindows(clock, lengthMin) : rollingWindows(clock, lengthMin, stepMin);
+  }
+  if (rule.averaging === 'hours') return hoursWindow(date, rule, zone);
   return periodsOf(date, scheme, zone)
-    .filter(({ kind }) => kind === averaging)
+    .filter(({ kind }) => kind === rule.averaging)
     .map((period) => ({
       startSec: period.fromSec,
       endSec: period.toSec,
@@ -70,34 +77,16 @@ function candidatesOf(date: LocalDate, { averaging }: WindowRule, timeline: Netw
     }));
 }
 
-/**
- * Quarter-hours, or hours, by the clock of a civil date. They tile it: an hour that a clock change cuts off (in zones that
- * change by half an hour) is a window of what elapsed of it, and an hour that comes twice is two windows.
- */
-function clockWindows(date: LocalDate, zone: string, stepMin: number): Candidate[] {
-  const dayFrom = startOfDaySec(date, zone);
-  const dayTo = startOfDaySec(addDays(date, 1), zone);
-  // Without a clock change the clock is elapsed time; with one it is asked at each quarter-hour.
-  const clockAt =
-    dayTo - dayFrom === DAY_SEC
-      ? (sec: number) => (sec - dayFrom) / 60
-      : (sec: number) => localMinuteAt(sec, zone);
-  const windows: Candidate[] = [];
-  let lastHourSec = NaN;
-  for (let startSec = dayFrom; startSec < dayTo; startSec += QUARTER_SEC) {
-    const clockMin = clockAt(startSec);
-    /** When this quarter-hour's hour would have begun without a change. */
-    const hourSec = startSec - (clockMin % stepMin) * 60;
-    const last = windows.at(-1);
-    if (last && hourSec === lastHourSec) last.endSec += QUARTER_SEC;
-    else windows.push({ startSec, endSec: startSec + QUARTER_SEC, clockMin });
-    lastHourSec = hourSec;
-  }
-  return windows;
+/** The hours of a date, to the next one where they end before they begin; none where the clock was put forward over them. */
+function hoursWindow(date: LocalDate, { fromMin, toMin }: WindowRule, zone: string): ClockWindow[] {
+  if (fromMin === null || toMin === null) throw new RangeError('A window of its own hours has none.');
+  const startSec = instantAtSec(date, fromMin, zone);
+  const endSec = instantAtSec(date, toMin > fromMin ? toMin : toMin + 1440, zone);
+  return endSec > startSec ? [{ startSec, endSec, clockMin: fromMin }] : [];
 }
 
-function isWithinClock(clockMin: number, { fromMin, toMin }: WindowRule): boolean {
-  if (fromMin === null || toMin === null) return true;
+function isWithinClock(clockMin: number, { averaging, fromMin, toMin }: WindowRule): boolean {
+  if (averaging === 'hours' || fromMin === null || toMin === null) return true;
   return fromMin < toMin ? fromMin <= clockMin && clockMin < toMin : clockMin >= fromMin || clockMin < toMin;
 }
 

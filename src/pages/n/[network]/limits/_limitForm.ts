@@ -16,9 +16,12 @@ export function limitOfForm({ text, all }: LimitValues, zone: string) {
     name: text['name'] ?? '',
     metric: text['metric'],
     window: text['window'],
+    windowMinutes: text['window'] === 'length' ? (typedNumber(text['windowMinutes']) ?? null) : null,
+    stepMinutes: hasSteps(text['window']) ? stepOf(text['stepMinutes']) : null,
     ...(text['metric'] === 'bandLeq' ? bandOf(text['band'] ?? '') : {}),
     threshold: typedNumber(text['threshold']),
     weekdays: all('weekdays'),
+    holidays: text['holidays'] || 'as-weekday',
     from: text['from'] || null,
     to: text['to'] || null,
     minimumCoverage: text['metric'] === 'LAFmax' ? null : fractionOf(text['minimumCoverage']),
@@ -48,6 +51,9 @@ export function limitValues(limit: Limit, zone: string): LimitValues {
       name: limit.name,
       metric: limit.metric,
       window: limit.window,
+      windowMinutes: limit.windowMinutes === null ? '' : String(limit.windowMinutes),
+      stepMinutes: limit.stepMinutes === null ? '' : String(limit.stepMinutes),
+      holidays: limit.holidays,
       band: bandFraction === null || bandHz === null ? '' : bandValue(bandFraction, bandHz),
       threshold: String(limit.threshold),
       from: isAllDay ? '' : (limit.from ?? ''),
@@ -72,6 +78,14 @@ export function bandChoices(bands: readonly Band[]): { value: string; label: str
 
 function bandValue(fraction: BandFraction, nominalHz: number): string {
   return `${fraction}:${nominalHz}`;
+}
+
+function hasSteps(window: string | undefined): boolean {
+  return window === '15min' || window === '1h' || window === 'length';
+}
+
+function stepOf(text: string | undefined): number | null {
+  return text ? Number(text) : null;
 }
 
 /** Where none is chosen the width does not matter: what is missing is the band. */

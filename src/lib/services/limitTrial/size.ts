@@ -1,0 +1,28 @@
+import { lengthMinutesOf } from '#lib/contracts/limitWindows';
+import type { LimitTrialQuery } from '#lib/contracts/limitTrial';
+import type { FieldProblem } from '#lib/services/limits/rule';
+
+/** Windows that are not whole quarter-hours are tried on so many days: every interval is read for them. */
+export const MOST_FINE_DAYS = 92;
+/** Parts that rolling windows of bands are added up from: some seconds of work. */
+const MOST_BAND_PARTS = 4e6;
+const DAY_MS = 86_400_000;
+
+/** Why a trial is too large to be answered at once, at the field that makes it so; null where it is not. */
+export function sizeProblem({ limit, from, to }: LimitTrialQuery, stationCount: number): FieldProblem | null {
+  const days = (Date.parse(to) - Date.parse(from)) / DAY_MS;
+  const lengthMin = lengthMinutesOf(limit) ?? 0;
+  const { stepMinutes, window, metric } = limit;
+  const isRagged = window === 'hours' && [limit.from, limit.to].some((minute) => (minute ?? 0) % 15 !== 0);
+  const isFine = lengthMin % 15 !== 0 || stepMinutes === 5 || isRagged;
+  if (isFine && days > MOST_FINE_DAYS) {
+    const field = isRagged ? 'from' : stepMinutes === 5 ? 'stepMinutes' : 'windowMinutes';
+    const message = `is tried on at most ${MOST_FINE_DAYS} days, because every interval is read for it; whole quarter-hours on a year`;
+    return { field, message };
+  }
+  if (stepMinutes === null || metric !== 'bandLeq') return null;
+  const stations = limit.stations?.length ?? stationCount;
+  const parts = stations * days * (1440 / stepMinutes) * (lengthMin / (isFine ? 5 : 15));
+  const message = 'makes too many windows to try at once: take fewer days or stations, or a shorter window';
+  return parts > MOST_BAND_PARTS ? { field: 'stepMinutes', message } : null;
+}

@@ -1,0 +1,40 @@
+import type { Connection } from '#db/queries/connection';
+import { selectIntervals } from '#db/queries/intervals';
+import type { PeriodSums } from '#lib/acoustics/periodSums';
+import { accumulate } from '../levels/accumulate';
+import { judgementOf, MOST_INTERVALS, type LevelSource } from '../levels/intervalSums';
+import type { Span } from '../levels/spans';
+import { WINDOW_GRAIN_MIN } from './clockWindows';
+
+/** What every window of a limit is whole numbers of. */
+export const GRAIN_SEC = WINDOW_GRAIN_MIN * 60;
+
+/** What was measured in five minutes. */
+export interface GrainSums {
+  startSec: number;
+  sums: PeriodSums;
+}
+
+/**
+ * Sums of every five minutes of `fromSec <= t < toSec` (whole fives of minutes), ascending, straight from the intervals; those
+ * without any interval are left out. An interval longer than that counts in each by its share.
+ */
+export async function sumsByGrain(source: LevelSource, span: Span, conn: Connection): Promise<GrainSums[]> {
+  const found: GrainSums[] = [];
+  const stepSec = Math.max(
+    GRAIN_SEC,
+    Math.floor((MOST_INTERVALS * source.station.intervalSec) / GRAIN_SEC) * GRAIN_SEC,
+  );
+  for (let fromSec = span.fromSec; fromSec < span.toSec; fromSec += stepSec) {
+    const part = { fromSec, toSec: Math.min(fromSec + stepSec, span.toSec) };
+    const judgement = await judgementOf(source, part, conn);
+    const intervals = await selectIntervals(source.station.id, part.fromSec, part.toSec, conn);
+    if (intervals.length === 0) continue;
+    for (let startSec = part.fromSec; startSec < part.toSec; startSec += GRAIN_SEC) {
+      const grain = { fromSec: startSec, toSec: startSec + GRAIN_SEC };
+      const { sums } = accumulate(intervals, grain, judgement, { bandClasses: false });
+      if (sums.validSec > 0 || sums.excludedSec > 0) found.push({ startSec, sums });
+    }
+  }
+  return found;
+}
