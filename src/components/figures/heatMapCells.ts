@@ -1,7 +1,8 @@
 import type { HourCell, HourRow } from '#lib/contracts/figureSheet';
 import { round, type ChartRange } from './chartScale';
 
-const CLASSES = 20;
+/** Classes of level that cells are drawn in. */
+export const CLASSES = 20;
 
 /** Sizes of the drawing in its own units; rows are the lower the more there are. */
 export const HEAT_MAP = { left: 92, width: 720, top: 20 } as const;
@@ -62,11 +63,13 @@ export function heatMapPaths(rows: readonly HourRow[], { lowDb, highDb }: ChartR
   return { ...paths, classes: classes.filter(({ path }) => path !== '') };
 }
 
-function classOf(levelDb: number | null, lowDb: number, classDb: number): number {
+/** Place of a level's class; −1 of no level. */
+export function classOf(levelDb: number | null, lowDb: number, classDb: number): number {
   if (levelDb === null) return -1;
   return Math.min(CLASSES - 1, Math.max(0, Math.floor((levelDb - lowDb) / classDb)));
 }
 
-function rectangle(x: number, y: number, width: number, height: number): string {
+/** A rectangle as SVG path data. */
+export function rectangle(x: number, y: number, width: number, height: number): string {
   return `M${round(x)} ${round(y)}h${round(width)}v${round(height)}h${round(-width)}z`;
 }

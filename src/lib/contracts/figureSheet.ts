@@ -116,6 +116,16 @@ export interface HourRow {
   skippedHours: number[];
 }
 
+/** Leq of each band in each hour of the clock on the wall, all dates of the period together; unweighted, dB. */
+export interface BandHours {
+  bandFraction: BandFraction;
+  /** Nominal mid-bands, ascending; of the levels beside them. */
+  bandsHz: number[];
+  octavesHz: number[];
+  /** 24, from midnight. */
+  hours: (Covered & { hour: number; bandsLeq: (number | null)[]; octavesLeq: (number | null)[] })[];
+}
+
 /** A local date's figures, whole, and those that are only worked out here. */
 export interface DateRow extends DayFigures {
   /** Arithmetic mean of 18 hourly LA10, 06–24; null where one is missing. */
@@ -185,6 +195,7 @@ export interface FigureSheet extends Covered {
   octaves: BandRow[];
   distribution: Distribution | null;
   heatMap: HourRow[];
+  bandHours: BandHours;
   byHour: PooledRow[];
   byWeekday: PooledRow[];
   cautions: string[];

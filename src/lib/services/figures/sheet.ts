@@ -11,6 +11,7 @@ import { type Span } from '../levels/spans';
 import { statisticsOf } from '../levels/statistics';
 import { addDays } from '#lib/time/zone';
 import { assessmentRows } from './assessmentRows';
+import { bandHoursOf } from './bandHours';
 import { bandRows, octaveRows } from './bandRows';
 import { cautionsOf } from './cautions';
 import { compareWithRaw } from './comparison';
@@ -93,6 +94,7 @@ export async function figureSheet(query: SheetQuery, conn: Connection = pool()):
     octaves: octaveRows(source, levels),
     distribution: distributionOf(levels.sums.aClasses, levels.sums.sampleSec),
     heatMap: heatMapOf(source, hours),
+    bandHours: await bandHoursOf(source, levels),
     byHour: byHourOfDay(hours, source.minimumCoverage),
     byWeekday: byWeekday(hours, source.minimumCoverage),
     cautions: cautionsOf(statistics, pass?.facts ?? null),

@@ -1,4 +1,5 @@
-import { type BandRow, type FigureSheet, type PooledRow } from '#lib/contracts/figureSheet';
+import { bandLabel } from '#lib/acoustics/bands';
+import { type BandHours, type BandRow, type FigureSheet, type PooledRow } from '#lib/contracts/figureSheet';
 import { csvText, type Cell } from '#lib/format/csvText';
 
 const HEADER = ['section', 'of', 'figure', 'value', 'unit', 'coverage', 'remark'] as const;
@@ -48,6 +49,7 @@ export function sheetCsv(sheet: FigureSheet): string {
     ...sheet.heatMap.flatMap(({ cells }) =>
       cells.map(({ from, LAeq, coverage }): Cell[] => ['hours', from, 'LAeq', LAeq, 'dB', coverage, '']),
     ),
+    ...bandHourLines(sheet.bandHours),
     ...sheet.byHour.flatMap((row) => pooledLines('hour of the day', row)),
     ...sheet.byWeekday.flatMap((row) => pooledLines('weekday', row)),
     ...sheet.cautions.map((caution): Cell[] => ['caution', '', '', '', '', null, caution]),
@@ -89,6 +91,29 @@ function periodLines(of: string, { rows, Lden, missing }: FigureSheet['byClock']
 function pooledLines(section: string, row: PooledRow): Cell[][] {
   const names = ['LAeq', 'LA10', 'LA50', 'LA90', 'LAFmax'] as const;
   return names.map((name) => [section, row.label, name, row[name], 'dB', row.coverage, '']);
+}
+
+function bandHourLines({ bandFraction, bandsHz, octavesHz, hours }: BandHours): Cell[][] {
+  const line = (
+    section: string,
+    hour: BandHours['hours'][number],
+    hz: number | undefined,
+    levelDb: number | null,
+  ) => [
+    section,
+    `${String(hour.hour).padStart(2, '0')}–${String(hour.hour + 1).padStart(2, '0')}`,
+    `Leq ${bandLabel({ nominalHz: hz ?? NaN })}`,
+    levelDb,
+    'dB',
+    hour.coverage,
+    '',
+  ];
+  return hours.flatMap((hour) => [
+    ...(bandFraction === 3
+      ? hour.bandsLeq.map((levelDb, at) => line('bands by hour of the day', hour, bandsHz[at], levelDb))
+      : []),
+    ...hour.octavesLeq.map((levelDb, at) => line('octaves by hour of the day', hour, octavesHz[at], levelDb)),
+  ]);
 }
 
 function bandLines(section: string, row: BandRow): Cell[][] {
