@@ -1,7 +1,9 @@
 import { openImport, type Upload } from '#ingest/imports/open';
+import { giveUpUpload } from '#ingest/imports/uploads/giveUp';
 import { requireStation } from '#lib/auth/guards';
 import { type Import } from '#lib/contracts/imports';
-import { uploadProblem } from '#lib/http/importOutcome';
+import { submitForm } from '#lib/http/forms';
+import { importIdOf, uploadProblem } from '#lib/http/importOutcome';
 import { formParts, textOf } from '#lib/http/multipart';
 import { invalidFields, Problem } from '#lib/http/problem';
 
@@ -30,6 +32,21 @@ export async function takeUpload(
     if (!(problem instanceof Problem)) throw error;
     return { isDone: false, errors: errorsOf(problem), station };
   }
+}
+
+/** Whether a post is the small form that gives an upload up, not the one with a file. */
+export function isGivingUp(request: Request): boolean {
+  return /^application\/x-www-form-urlencoded\s*(;|$)/i.test(request.headers.get('content-type') ?? '');
+}
+
+/** Gives an unfinished upload up; one that is gone already is as well. */
+export async function takeGivingUp(
+  request: Request,
+  { networkId, userId }: Pick<Upload, 'networkId' | 'userId'>,
+): Promise<void> {
+  await submitForm(request, ({ text }) =>
+    giveUpUpload({ networkId, id: importIdOf(text['giveUp']), userId }),
+  );
 }
 
 async function stationOf(networkId: number, code: string) {
