@@ -32,6 +32,37 @@ CREATE TABLE `activities` (
   KEY `activities_kind` (`network_id`,`kind`,`starts_at`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
+CREATE TABLE `alert_items` (
+  `id` bigint(20) unsigned NOT NULL AUTO_INCREMENT,
+  `network_id` int(10) unsigned NOT NULL,
+  `recipient` varchar(254) NOT NULL,
+  `exceedance_id` int(10) unsigned NOT NULL,
+  `item_key` varchar(120) NOT NULL COMMENT 'a revision of an exceedance, told once a recipient',
+  `words` longtext CHARACTER SET utf8mb4 COLLATE utf8mb4_bin NOT NULL COMMENT 'what is told, as it stood then' CHECK (json_valid(`words`)),
+  `due_at` datetime(3) NOT NULL COMMENT 'when a message takes it up',
+  `told_at` datetime(3) DEFAULT NULL COMMENT 'null: no message has taken it up yet',
+  `created_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`id`),
+  UNIQUE KEY `alert_items_once` (`recipient`,`item_key`),
+  KEY `alert_items_due` (`told_at`,`due_at`),
+  KEY `alert_items_recipient` (`network_id`,`recipient`,`told_at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `alert_preferences` (
+  `network_id` int(10) unsigned NOT NULL,
+  `user_id` char(36) NOT NULL,
+  `delivery` enum('at-once','hourly','daily') NOT NULL,
+  `daily_at_min` smallint(5) unsigned NOT NULL COMMENT 'minutes after midnight, civil time of the network',
+  `group_min` smallint(5) unsigned NOT NULL COMMENT 'least minutes between two messages',
+  `quiet_from_min` smallint(5) unsigned DEFAULT NULL COMMENT 'minutes after midnight, civil time; null: no quiet hours',
+  `quiet_to_min` smallint(5) unsigned DEFAULT NULL,
+  `override_tenths` smallint(5) unsigned DEFAULT NULL COMMENT 'tenths of a dB above the limit from which it is told at once; null: never',
+  `station_ids` longtext CHARACTER SET utf8mb4 COLLATE utf8mb4_bin DEFAULT NULL COMMENT 'null: every station' CHECK (json_valid(`station_ids`)),
+  `warns_early` tinyint(1) NOT NULL DEFAULT 0,
+  `changed_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`network_id`,`user_id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
 CREATE TABLE `audit_head` (
   `only_row` tinyint(3) unsigned NOT NULL,
   `last_id` bigint(20) unsigned NOT NULL,
@@ -338,6 +369,8 @@ CREATE TABLE `exceedances` (
   `limit_version_id` int(10) unsigned NOT NULL,
   `starts_at` int(10) unsigned NOT NULL,
   `ends_at` int(10) unsigned NOT NULL,
+  `loudest_starts_at` int(10) unsigned DEFAULT NULL COMMENT 'of a rolling limit: the loudest of the windows that make it; level and coverage are its',
+  `loudest_ends_at` int(10) unsigned DEFAULT NULL,
   `level_db` double NOT NULL,
   `threshold_tenths` smallint(6) NOT NULL,
   `coverage` double NOT NULL,
@@ -369,8 +402,6 @@ CREATE TABLE `exclusions` (
   `withdrawn_at` datetime(3) DEFAULT NULL,
   `withdrawal_reason` varchar(500) DEFAULT NULL,
   `act_id` int(10) unsigned DEFAULT NULL COMMENT 'first exclusion of those that one act made at several stations; null: made alone',
-  `loudest_starts_at` int(10) unsigned DEFAULT NULL COMMENT 'of a rolling limit: the loudest of the windows that make it; level and coverage are its',
-  `loudest_ends_at` int(10) unsigned DEFAULT NULL,
   PRIMARY KEY (`id`),
   KEY `exclusions_period` (`station_id`,`starts_at`,`ends_at`),
   KEY `exclusions_network` (`network_id`,`starts_at`),
@@ -542,6 +573,7 @@ CREATE TABLE `limit_versions` (
   `band_index` tinyint(4) DEFAULT NULL,
   `threshold_tenths` smallint(6) NOT NULL COMMENT 'exceeded when the level, rounded half up to tenths, is greater',
   `weekdays` tinyint(3) unsigned NOT NULL DEFAULT 127 COMMENT 'bit 0 Monday … bit 6 Sunday, of the local date on which the window begins',
+  `holidays` enum('as-weekday','as-sunday','never','only') NOT NULL DEFAULT 'as-weekday' COMMENT 'what the dates of network_holidays are to it',
   `from_min` smallint(5) unsigned DEFAULT NULL COMMENT 'local clock, minutes after midnight; null: all day',
   `to_min` smallint(5) unsigned DEFAULT NULL COMMENT 'before from_min: across midnight',
   `minimum_coverage` double DEFAULT NULL COMMENT 'null: the network minimum',
@@ -573,7 +605,15 @@ CREATE TABLE `memberships` (
   PRIMARY KEY (`user_id`,`network_id`,`role`),
   KEY `memberships_network` (`network_id`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
-  `holidays` enum('as-weekday','as-sunday','never','only') NOT NULL DEFAULT 'as-weekday' COMMENT 'what the dates of network_holidays are to it',
+
+CREATE TABLE `network_holidays` (
+  `network_id` int(10) unsigned NOT NULL,
+  `date` char(10) CHARACTER SET ascii COLLATE ascii_general_ci NOT NULL COMMENT 'civil date in the zone of the network',
+  `name` varchar(160) NOT NULL,
+  `created_by` char(36) DEFAULT NULL,
+  `created_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`network_id`,`date`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
 CREATE TABLE `network_settings` (
   `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
@@ -606,15 +646,6 @@ CREATE TABLE `outbox` (
   `message_id` varchar(200) NOT NULL COMMENT 'fixed Message-ID, the same at every attempt',
   `dedupe_key` varchar(200) NOT NULL COMMENT 'one message a cause and recipient',
   `network_id` int(10) unsigned DEFAULT NULL,
-CREATE TABLE `network_holidays` (
-  `network_id` int(10) unsigned NOT NULL,
-  `date` char(10) CHARACTER SET ascii COLLATE ascii_general_ci NOT NULL COMMENT 'civil date in the zone of the network',
-  `name` varchar(160) NOT NULL,
-  `created_by` char(36) DEFAULT NULL,
-  `created_at` datetime(3) NOT NULL,
-  PRIMARY KEY (`network_id`,`date`)
-) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
-
   `kind` varchar(40) NOT NULL,
   `recipient` varchar(254) DEFAULT NULL COMMENT 'null: resolved at sending from complaint_reply_id, so that no resident stands here',
   `subject` varchar(300) NOT NULL,
@@ -806,6 +837,21 @@ CREATE TABLE `station_latest` (
   `received_at` datetime(3) NOT NULL,
   PRIMARY KEY (`station_id`),
   KEY `station_latest_received` (`received_at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `station_photos` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `station_id` int(10) unsigned NOT NULL,
+  `taken_on` char(10) CHARACTER SET ascii COLLATE ascii_general_ci NOT NULL COMMENT 'civil date',
+  `caption` varchar(300) NOT NULL,
+  `media_type` varchar(40) NOT NULL COMMENT 'as the bytes say, not as the sender said',
+  `byte_count` int(10) unsigned NOT NULL,
+  `sha256` binary(32) NOT NULL COMMENT 'of the file as kept, without its metadata; names it under the data directory',
+  `uploaded_by` char(36) NOT NULL,
+  `uploaded_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`id`),
+  KEY `station_photos_station` (`station_id`,`taken_on`),
+  KEY `station_photos_file` (`sha256`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
 CREATE TABLE `station_placements` (
