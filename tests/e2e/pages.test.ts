@@ -67,7 +67,6 @@ const ACCESS: Record<string, Access> = {
   '/n/[network]/stations/[code]/edit': 'operator',
   '/n/[network]/stations/[code]/figures': 'members',
   '/n/[network]/stations/[code]/photos': 'members',
-  '/n/[network]/stations/[code]/photos': 'members',
   '/n/[network]/stations/new': 'operator',
   '/n/[network]/summaries': 'members',
   '/n/[network]/summaries/[month]': 'members',
@@ -76,11 +75,13 @@ const ACCESS: Record<string, Access> = {
   '/sign-in': 'public',
 };
 
-/** Not pages of their own: redirects, errors, what machines ask, and what only a form reaches. */
+/** Not pages of their own: redirects, errors, what machines ask, what only a form reaches, and what only
+ * an e-mail leads to. */
 const APART = new Set([
   '/',
   '/404',
   '/500',
+  '/acknowledge/[token]',
   '/admin/audit.csv',
   '/admin/people/[id]',
   '/healthz',

@@ -12,16 +12,19 @@ export interface AcknowledgementRequest {
   id: number;
   userId: string;
   given: NewAcknowledgement;
+  /** By the link of an e-mail, which acknowledges what nobody has yet and changes nothing that was said. */
+  isByMailLink?: boolean;
 }
 
 /** Acknowledges an exceedance, or changes what was said of it; the audit trail keeps what stood before. */
 export async function acknowledge(request: AcknowledgementRequest): Promise<AcknowledgementOutcome> {
-  const { networkId, id, userId, given } = request;
+  const { networkId, id, userId, given, isByMailLink = false } = request;
   return inTransaction<AcknowledgementOutcome>(
     async (transaction) => {
       const held = await lockExceedance(networkId, id, transaction);
       if (!held) return { kind: 'unknown' };
       if (given.version !== null && given.version !== versionOf(held)) return { kind: 'changed-meanwhile' };
+      if (isByMailLink && held.acknowledgedAt) return { kind: 'changed-meanwhile' };
       const { cause, causeDetail, note } = given;
       const fields = { cause, causeDetail, note, acknowledgedBy: userId, acknowledgedAt: new Date() };
       await updateAcknowledgement(id, fields, transaction);
@@ -36,6 +39,7 @@ export async function acknowledge(request: AcknowledgementRequest): Promise<Ackn
             revision: held.revision,
             before: saidBefore(held),
             after: { cause, causeDetail, note },
+            ...(isByMailLink ? { by: 'mail link' } : {}),
           },
         },
         transaction,
