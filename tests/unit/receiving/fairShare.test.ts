@@ -1,0 +1,67 @@
+import { setTimeout as sleep } from 'node:timers/promises';
+import { expect, test } from 'vitest';
+import { FairShare, NoRoom } from '#lib/http/fairShare';
+
+const BOUNDS = { turnsAtOnce: 2, turnsOfKey: 1, mostOfKey: 4, mostOfAll: 6, longestWaitMs: 60_000 };
+
+/** Work that takes its turn and stays in it until it is let go. */
+function stay(share: FairShare, key: string, order: string[]) {
+  let letGo: () => void = () => undefined;
+  const gone = new Promise<void>((resolve) => (letGo = resolve));
+  const done = share.enter(key, (takeTurn) =>
+    takeTurn(async () => {
+      order.push(key);
+      await gone;
+    }),
+  );
+  return { done, letGo };
+}
+
+test('turns go round from key to key, however many one key has waiting', async () => {
+  const share = new FairShare({ ...BOUNDS, turnsAtOnce: 1 });
+  const order: string[] = [];
+  const all = ['a', 'a', 'a', 'b', 'c'].map((key) => stay(share, key, order));
+  for (const one of all) one.letGo();
+  await Promise.all(all.map(({ done }) => done));
+  expect(order).toEqual(['a', 'a', 'b', 'c', 'a']);
+});
+
+test('one key has no more turns at once than are its own', async () => {
+  const share = new FairShare(BOUNDS);
+  const order: string[] = [];
+  const [first, second] = [stay(share, 'a', order), stay(share, 'a', order)];
+  await sleep(1);
+  expect(order).toEqual(['a']);
+  const other = stay(share, 'b', order);
+  await sleep(1);
+  expect(order).toEqual(['a', 'b']);
+  first.letGo();
+  await sleep(1);
+  expect(order).toEqual(['a', 'b', 'a']);
+  second.letGo();
+  other.letGo();
+  await Promise.all([first.done, second.done, other.done]);
+});
+
+test('beyond its own bound a key is refused, beyond all of them everybody; what leaves makes room', async () => {
+  const share = new FairShare(BOUNDS);
+  const inside = ['a', 'a', 'a', 'a', 'b', 'c'].map((key) => stay(share, key, []));
+  await expect(share.enter('a', async () => undefined)).rejects.toMatchObject({ reason: 'own' });
+  await expect(share.enter('d', async () => undefined)).rejects.toMatchObject({ reason: 'all' });
+  for (const one of inside) one.letGo();
+  await Promise.all(inside.map(({ done }) => done));
+  await expect(share.enter('d', async () => 'in')).resolves.toBe('in');
+});
+
+test('whoever waits too long is told so and forgotten; what fails hands its turn on', async () => {
+  const share = new FairShare({ ...BOUNDS, turnsAtOnce: 1, longestWaitMs: 20 });
+  const order: string[] = [];
+  const first = stay(share, 'a', order);
+  await expect(share.enter('b', (takeTurn) => takeTurn(async () => 'late'))).rejects.toThrow(NoRoom);
+  first.letGo();
+  await first.done;
+  const failing = share.enter('b', (takeTurn) => takeTurn(() => Promise.reject(new Error('no'))));
+  await expect(failing).rejects.toThrow('no');
+  await expect(share.enter('c', (takeTurn) => takeTurn(async () => 'in'))).resolves.toBe('in');
+  expect(order).toEqual(['a']);
+});
