@@ -9,7 +9,7 @@ import { useDebounced } from './useDebounced';
 import { useStatistics } from './useStatistics';
 import { useUsual } from './useUsual';
 
-/** Time that a selection must stand still before the server is asked. */
+/** Time that a view must stand still before the server is asked for its figures. What a person marked is asked for when let go. */
 const SETTLE_MS = 250;
 
 interface SlipInput {
@@ -36,7 +36,7 @@ export function useSlipFigures(input: SlipInput): SlipState {
   const { stationUrl, selection, layers, fraction, intervalSec, nowSec } = input;
   const { fromSec, toSec } = selection;
   const settled = useDebounced(`${fromSec}/${toSec}`, SETTLE_MS);
-  const isSettled = input.isSettled && settled === `${fromSec}/${toSec}`;
+  const isSettled = input.isSettled && (input.isMarked || settled === `${fromSec}/${toSec}`);
   const statistics = useStatistics(stationUrl, { fromSec, toSec }, isSettled, nowSec);
   const usual = useUsual(stationUrl, { fromSec, toSec }, isSettled && input.isMarked);
   const estimate = useMemo(
