@@ -4,6 +4,7 @@ import { log } from '#lib/config/log';
 import { aggregate } from './jobs/aggregate';
 import { composeAlerts } from './jobs/composeAlerts';
 import { completeEndedPeriods } from './jobs/completePeriods';
+import { escalateUnacknowledged } from './jobs/escalate';
 import { housekeeping } from './jobs/housekeeping';
 import { importFiles } from './jobs/importFiles';
 import { judgeLimits } from './jobs/judgeLimits';
@@ -22,6 +23,7 @@ const LOOPS: LoopSettings[] = [
   { name: 'import-files', everySec: 2, work: importFiles },
   { name: 'shift-clocks', everySec: 2, work: shiftClocks },
   { name: 'compose-alerts', everySec: 10, work: composeAlerts },
+  { name: 'escalate', everySec: 20, work: escalateUnacknowledged },
   { name: 'send-mail', everySec: 2, work: sendMail },
   { name: 'watch-health', everySec: 60, work: watchHealth },
 ];

@@ -32,9 +32,16 @@ export async function composeAlerts(
   const base = `${config().origin}/n/${network.slug}`;
   const mailId = await insertMail(
     {
-      ...exceedanceMail(network.name, words, {
-        limitsUrl: `${base}/limits`,
-        alertsUrl: person ? `${base}/alerts` : null,
+      ...exceedanceMail(words, {
+        subject: {
+          before: '',
+          several: `${network.name}: ${words.length} windows above or no longer above a limit`,
+        },
+        opening: null,
+        closing: [
+          `You get this because your address is named in the limit: ${base}/limits`,
+          ...(person ? [`What you are sent, and when, you choose here: ${base}/alerts`] : []),
+        ],
         listUrl: `${base}/exceedances`,
       }),
       messageId,

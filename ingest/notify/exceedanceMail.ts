@@ -13,10 +13,14 @@ export interface ToldChange extends ChangeWords {
   acknowledgeUrl: string | null;
 }
 
-export interface MailPlaces {
-  limitsUrl: string;
-  /** Where the recipient chooses what is sent; null for an address without an account. */
-  alertsUrl: string | null;
+export interface MailFrame {
+  /** What several changes are called together in the subject; a single one says it itself. */
+  subject: { before: string; several: string };
+  /** Said before the changes; null: they say it all. */
+  opening: string | null;
+  /** Why the recipient gets it, and where that is changed. */
+  closing: readonly string[];
+  /** Where those are that the message has no room for. */
   listUrl: string;
 }
 
@@ -24,33 +28,23 @@ export interface MailPlaces {
 const MOST_TOLD = 50;
 
 /** One message for the exceedances that one recipient is told of together. */
-export function exceedanceMail(
-  networkName: string,
-  changes: readonly ToldChange[],
-  places: MailPlaces,
-): MailContent {
+export function exceedanceMail(changes: readonly ToldChange[], frame: MailFrame): MailContent {
   const [first] = changes;
   if (!first) throw new RangeError('There is nothing to tell.');
-  const subject =
-    changes.length === 1
-      ? `${first.station}: ${first.headline}`
-      : `${networkName}: ${changes.length} windows above or no longer above a limit`;
+  const { before, several } = frame.subject;
+  const subject = before + (changes.length === 1 ? `${first.station}: ${first.headline}` : several);
   const shown = changes.slice(0, MOST_TOLD);
-  const closing = [...omitted(changes.length - shown.length, places), ...whySent(places)];
+  const opening = frame.opening === null ? [] : [frame.opening];
+  const closing = [...omitted(changes.length - shown.length, frame), ...frame.closing];
   return {
     subject: singleLine(subject),
-    text: [...shown.map(textOf), ...closing, ''].join('\n\n'),
-    html: htmlOf(shown, closing),
+    text: [...opening, ...shown.map(textOf), ...closing, ''].join('\n\n'),
+    html: htmlOf(opening, shown, closing),
   };
 }
 
-function omitted(count: number, { listUrl }: MailPlaces): string[] {
+function omitted(count: number, { listUrl }: MailFrame): string[] {
   return count > 0 ? [`${count} more are in the list: ${listUrl}`] : [];
-}
-
-function whySent({ limitsUrl, alertsUrl }: MailPlaces): string[] {
-  const why = `You get this because your address is named in the limit: ${limitsUrl}`;
-  return alertsUrl === null ? [why] : [why, `What you are sent, and when, you choose here: ${alertsUrl}`];
 }
 
 function textOf(change: ToldChange): string {
@@ -68,11 +62,16 @@ function textOf(change: ToldChange): string {
   ].join('\n');
 }
 
-function htmlOf(changes: readonly ToldChange[], closing: readonly string[]): string {
+function htmlOf(
+  opening: readonly string[],
+  changes: readonly ToldChange[],
+  closing: readonly string[],
+): string {
+  const paragraphs = opening.map((line) => `<p>${escapeHtml(line)}</p>`);
   const ending = closing.map((line) => `<p style="color:#5a6660;font-size:13px">${escapeHtml(line)}</p>`);
   return (
     `<!doctype html><html lang="en"><body style="font:15px/1.5 'Noto Sans',sans-serif;color:#22302a">` +
-    `${changes.map(sectionOf).join('')}${ending.join('')}</body></html>`
+    `${paragraphs.join('')}${changes.map(sectionOf).join('')}${ending.join('')}</body></html>`
   );
 }
 

@@ -43,3 +43,16 @@ export const alertPreferencesSchema = z
     error: 'must differ from the beginning',
   });
 export type AlertPreferencesInput = z.output<typeof alertPreferencesSchema>;
+
+/** A network has at most so many steps. */
+export const MOST_STEPS = 3;
+
+export const escalationStepSchema = z.object({
+  afterMinutes: z
+    .number('must be a whole number of minutes')
+    .int('must be a whole number of minutes')
+    .min(5, 'must be at least 5')
+    .max(2880, 'must be at most 2880'),
+  people: z.array(z.string()).min(1, 'must name at least one person').max(100),
+});
+export type EscalationStepInput = z.output<typeof escalationStepSchema>;
