@@ -33,6 +33,8 @@ export function suggestedShiftSec(offsets: readonly ClockOffset[], { fromSec, to
 /** A stretch of quarter-hours whose clock was further off than a bound, in the monitor's time. */
 export interface SuggestedEpisode extends Span {
   shiftSec: number;
+  /** What came before had the right time. */
+  receivedFromSec: number;
 }
 
 const QUARTER_SEC = 900;
@@ -56,9 +58,13 @@ export function suggestedEpisodes(offsets: readonly ClockOffset[], boundSec: num
   return episodes.map(({ first, last, aheadSec }) => {
     const middle = [...aheadSec].sort((a, b) => a - b)[Math.floor(aheadSec.length / 2)] ?? 0;
     return {
-      fromSec: first.quarterStartSec + Math.round(first.aheadSec),
-      toSec: last.quarterStartSec + QUARTER_SEC + Math.round(last.aheadSec),
+      fromSec: wholeMinute(first.quarterStartSec + first.aheadSec),
+      toSec: wholeMinute(last.quarterStartSec + QUARTER_SEC + last.aheadSec),
       shiftSec: -Math.round(middle),
+      receivedFromSec: first.quarterStartSec,
     };
   });
 }
+
+/** Forms ask for minutes. */
+const wholeMinute = (sec: number) => Math.round(sec / 60) * 60;
