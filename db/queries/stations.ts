@@ -21,6 +21,8 @@ export interface StationRow {
   surroundings: string;
   /** Epoch seconds; older intervals are refused; null: no bound. */
   acceptsFromSec: number | null;
+  /** Flags that are ordinary here, as bits; any other that comes often is a trouble. They decide nothing about validity. */
+  expectedFlags: number;
   createdAt: Date;
   retiredAt: Date | null;
 }
@@ -41,6 +43,7 @@ const STATION_COLUMNS = {
   mastHeightM: 'mast_height_m',
   surroundings: 'surroundings',
   acceptsFromSec: 'accepts_from',
+  expectedFlags: 'expected_flags',
   createdAt: 'created_at',
   retiredAt: 'retired_at',
 } as const;
@@ -84,7 +87,7 @@ export async function listStationIds(conn: Connection = pool()): Promise<number[
 }
 
 /** What is left out holds as the table says. */
-type Defaulted = 'facadeCorrectionDb';
+type Defaulted = 'facadeCorrectionDb' | 'expectedFlags';
 export type NewStation = Omit<StationRow, 'id' | 'createdAt' | 'retiredAt' | Defaulted> &
   Partial<Pick<StationRow, Defaulted>>;
 

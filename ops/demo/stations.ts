@@ -3,6 +3,7 @@ import { join } from 'node:path';
 import { db } from '#db/client';
 import type { StationRow } from '#db/queries/stations';
 import { FACADE_CORRECTION_DB } from '#lib/acoustics/facade';
+import { EXPECTED_FLAGS } from '#lib/contracts/stations';
 import { registerStation } from '#lib/services/stations/register';
 import type { MonitorSetup } from '#ingest/monitor/soundscape/record';
 import { STATION_SITES, type StationSite } from '#ops/standins/tiles/sites';
@@ -48,6 +49,7 @@ export async function seedStations(
         mastHeight: site.mastHeightM,
         surroundings: site.surroundings,
         acceptsFrom: null,
+        expectedFlags: [...EXPECTED_FLAGS],
       },
       operatorId,
     );

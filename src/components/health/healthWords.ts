@@ -10,6 +10,7 @@ export const KIND_WORDS: Record<TroubleKind, string> = {
   frozen: 'levels frozen',
   bands: 'bands against LAeq',
   floor: 'quiet shifted',
+  flags: 'unexpected flags',
   battery: 'battery low',
   late: 'data late',
   coverage: 'coverage low',

@@ -13,5 +13,6 @@ export const STATION_LABELS = {
   firstBandHz: 'Lowest band',
   lastBandHz: 'Highest band',
   intervalSeconds: 'Interval',
+  expectedFlags: 'Flags that are ordinary here',
   acceptsFrom: 'Refuse intervals before',
 } as const;

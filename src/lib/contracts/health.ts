@@ -8,6 +8,7 @@ export const TROUBLE_KINDS = [
   'frozen',
   'bands',
   'floor',
+  'flags',
   'battery',
   'late',
   'coverage',

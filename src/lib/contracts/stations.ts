@@ -1,7 +1,7 @@
 import { z } from 'zod';
 import { bandByNominalHz } from '#lib/acoustics/bands';
 import { FACADE_CORRECTION_DB } from '#lib/acoustics/facade';
-import { FLAG_NAMES } from '#lib/acoustics/validity';
+import { FLAG_NAMES, type FlagName } from '#lib/acoustics/validity';
 import { instant, reasonText, shortText } from './common';
 import { registerRoute } from './registry';
 
@@ -25,6 +25,9 @@ const intervalSeconds = z
 const bandHz = z.number('must be a nominal frequency in Hz').positive();
 const bandFraction = z.union([z.literal(1), z.literal(3)], 'must be 1 (octaves) or 3 (one-third octaves)');
 
+/** What a station is expected to flag where nobody has said otherwise: its own checks and the weather. */
+export const EXPECTED_FLAGS: readonly FlagName[] = ['calibration', 'selfcheck', 'rain', 'wind'];
+
 const optional = {
   placement: z.enum(['free-field', 'facade']).describe('Free field, or in front of a façade'),
   facadeCorrection: z
@@ -39,6 +42,10 @@ const optional = {
     .nullable()
     .describe('Microphone above ground, m'),
   surroundings: z.string().trim().max(500, 'must have at most 500 characters'),
+  expectedFlags: z
+    .array(z.enum(FLAG_NAMES as [FlagName, ...FlagName[]], `must be of ${FLAG_NAMES.join(', ')}`))
+    .max(FLAG_NAMES.length)
+    .describe('Flags that are ordinary here; another that comes often is a trouble. Validity does not ask'),
   acceptsFrom: instant.nullable().describe('Older intervals are refused as too-old; null: no bound'),
 };
 
@@ -78,6 +85,7 @@ export const newStationSchema = z
     mastHeight: optional.mastHeight.default(null),
     surroundings: optional.surroundings.default(''),
     acceptsFrom: optional.acceptsFrom.default(null),
+    expectedFlags: optional.expectedFlags.default([...EXPECTED_FLAGS]),
   })
   .superRefine((station, context) => {
     for (const issue of bandRangeIssues(station)) context.addIssue({ code: 'custom', ...issue });
@@ -133,6 +141,7 @@ export const stationSchema = z.object({
   mastHeight: z.number().nullable().describe('m'),
   surroundings: z.string(),
   acceptsFrom: z.string().nullable(),
+  expectedFlags: z.array(z.string()).describe('Any other flag that comes often is a trouble'),
   createdAt: z.string(),
   retiredAt: z.string().nullable(),
   state: z

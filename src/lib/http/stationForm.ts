@@ -63,7 +63,7 @@ export async function retireFromForm(
 const ACTS = ['retire', 'bring-back'] as const;
 
 /** What was typed into the station form, as the interface's JSON has it; its schema judges the values. An emptied field is no number. */
-function stationOfForm({ text }: FormValues, zone: string) {
+function stationOfForm({ text, all }: FormValues, zone: string) {
   return {
     name: text['name'] ?? '',
     latitude: typedNumber(text['latitude']) ?? NaN,
@@ -76,5 +76,6 @@ function stationOfForm({ text }: FormValues, zone: string) {
     lastBandHz: typedNumber(text['lastBandHz']) ?? NaN,
     intervalSeconds: typedNumber(text['intervalSeconds']) ?? NaN,
     acceptsFrom: typedInstant(text['acceptsFrom'] ?? '', zone),
+    expectedFlags: all('expectedFlags'),
   };
 }

@@ -1,6 +1,7 @@
 import { beforeAll, describe, expect, test } from 'vitest';
 import { db } from '#db/client';
 import { findStation, type StationRow } from '#db/queries/stations';
+import { FLAGS } from '#lib/acoustics/validity';
 import { submitForm } from '#lib/http/forms';
 import { changeFromForm, registerFromForm, retireFromForm } from '#lib/http/stationForm';
 import { examplePost } from '#lib/services/stations/examplePost';
@@ -109,6 +110,19 @@ describe('changing', () => {
     const { station } = await registered('MER-21');
     const outcome = await change(station, { ...stationFormText(station, zone), latitude: '', name: ' ' });
     expect(!outcome.isDone && Object.keys(outcome.errors).sort()).toEqual(['latitude', 'name']);
+  });
+});
+
+describe('expected flags', () => {
+  test('are what is ticked, also nothing; an unknown one is refused', async () => {
+    const { station } = await registered('MER-25');
+    const text = { ...stationFormText(station, zone), expectedFlags: 'underrange' };
+    expect((await change(station, text)).isDone).toBe(true);
+    expect((await stationOf('MER-25')).expectedFlags).toBe(FLAGS.underrange);
+    const refused = await change(await stationOf('MER-25'), { ...text, expectedFlags: 'odd' });
+    expect(!refused.isDone && Object.keys(refused.errors)).toEqual(['expectedFlags']);
+    expect((await change(await stationOf('MER-25'), stationFormText(station, zone))).isDone).toBe(true);
+    expect((await stationOf('MER-25')).expectedFlags).toBe(0);
   });
 });
 

@@ -1,8 +1,10 @@
 import fc from 'fast-check';
 import { describe, expect, test } from 'vitest';
+import { FLAGS } from '#lib/acoustics/validity';
 import { DEFAULT_THRESHOLDS } from '#lib/contracts/health';
 import { clockRule, coverageRule, lateRule, silentRule } from '#lib/services/health/arrivalRules';
 import { bandsRule, batteryRule, frozenRule, windRule } from '#lib/services/health/contentRules';
+import { flagsRule } from '#lib/services/health/flagsRule';
 import { type IntervalEvidence, type StationEvidence } from '#lib/services/health/evidence';
 import { judgeStation } from '#lib/services/health/judge';
 import { receivedShare } from '#lib/services/health/readEvidence';
@@ -23,6 +25,7 @@ function minutes(
       isInconsistent: false,
       batteryV: 12.4,
       isCheck: false,
+      flags: 0,
       receivedAtSec: startSec + 65,
       ...change(at),
     };
@@ -33,6 +36,7 @@ const station = (changes: Partial<StationEvidence> = {}): StationEvidence => ({
   nowSec: NOW_SEC,
   intervalSec: 60,
   thresholds: DEFAULT_THRESHOLDS,
+  expectedFlags: FLAGS.rain,
   newestEndSec: NOW_SEC,
   lastPostSec: NOW_SEC,
   intervals: minutes(60),
@@ -186,4 +190,41 @@ test('of a station that has just begun, coverage counts since its first data', (
   expect(receivedShare(quarters, NOW_SEC, NOW_SEC - 10 * 86_400)).toBeCloseTo(1 / 12);
   expect(receivedShare([], NOW_SEC, null)).toBeNull();
   expect(receivedShare([], NOW_SEC, NOW_SEC - 1800)).toBeNull();
+});
+
+describe('flags', () => {
+  const flagged = (flag: number, isOften: (at: number) => boolean) =>
+    station({ intervals: minutes(60, (at) => ({ flags: isOften(at) ? flag : 0 })) });
+
+  test('that are expected, or pass, are no trouble; others that come often are, and are named', () => {
+    expect(
+      flagsRule(
+        flagged(FLAGS.rain, () => true),
+        null,
+      ).state,
+    ).toBe('fine');
+    expect(
+      flagsRule(
+        flagged(FLAGS.tamper, (at) => at === 7),
+        null,
+      ).state,
+    ).toBe('fine');
+    const both = FLAGS.tamper | FLAGS.rain;
+    const finding = flagsRule(
+      flagged(both, (at) => at >= 50),
+      null,
+    );
+    expect(finding).toEqual({
+      state: 'bad',
+      sinceSec: NOW_SEC - 600,
+      measured: FLAGS.tamper,
+      bound: 0.1,
+    });
+  });
+
+  test('once found, they are over only when they have become rare', () => {
+    const fewer = flagged(FLAGS.overload, (at) => at >= 56);
+    expect(flagsRule(fewer, null).state).toBe('fine');
+    expect(flagsRule(fewer, NOW_SEC - 7200).state).toBe('bad');
+  });
 });

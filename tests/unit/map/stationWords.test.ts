@@ -14,6 +14,7 @@ const station: Station = {
   lastBandHz: 20000,
   placement: 'free-field',
   facadeCorrection: 3,
+  expectedFlags: [],
   mastHeight: 4,
   surroundings: '',
   acceptsFrom: null,

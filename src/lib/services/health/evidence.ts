@@ -11,6 +11,8 @@ export interface IntervalEvidence {
   batteryV: number | null;
   /** Calibrator, self-check: steady by intent, and no noise of the place. */
   isCheck: boolean;
+  /** As bits. */
+  flags: number;
   receivedAtSec: number;
 }
 
@@ -22,6 +24,8 @@ export interface StationEvidence {
   nowSec: number;
   intervalSec: number;
   thresholds: FullThresholds;
+  /** Flags that are ordinary at the station, as bits. */
+  expectedFlags: number;
   /** The newest interval's end, and when anything new came last; null before the first. */
   newestEndSec: number | null;
   lastPostSec: number | null;

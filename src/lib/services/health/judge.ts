@@ -1,6 +1,7 @@
 import { type TroubleKind } from '#lib/contracts/health';
 import { clockRule, coverageRule, lateRule, silentRule } from './arrivalRules';
 import { bandsRule, batteryRule, floorRule, frozenRule, windRule } from './contentRules';
+import { flagsRule } from './flagsRule';
 import { UNKNOWN, type Finding, type Rule, type StationEvidence } from './evidence';
 
 /** Troubles that the newest data tell of; the others are judged night by night. */
@@ -12,6 +13,7 @@ const RULES: Record<PresentKind, Rule> = {
   frozen: frozenRule,
   bands: bandsRule,
   floor: floorRule,
+  flags: flagsRule,
   battery: batteryRule,
   late: lateRule,
   coverage: coverageRule,

@@ -19,7 +19,7 @@ const LEAST_INTERVALS = 10;
 const SETTLING_SEC = 3600;
 
 interface Known {
-  station: Pick<StationRow, 'id' | 'intervalSec' | 'createdAt'>;
+  station: Pick<StationRow, 'id' | 'intervalSec' | 'createdAt' | 'expectedFlags'>;
   latest: LatestInterval | undefined;
   clock: StationClock | undefined;
   thresholds: FullThresholds;
@@ -50,6 +50,7 @@ export async function readEvidence(
     nowSec,
     intervalSec: station.intervalSec,
     thresholds,
+    expectedFlags: station.expectedFlags,
     newestEndSec,
     lastPostSec: latest ? Math.floor(latest.receivedAt.getTime() / 1000) : null,
     intervals: intervals.map(evidenceOf),
@@ -92,6 +93,7 @@ function evidenceOf(interval: StoredInterval): IntervalEvidence {
       isComputed || consistency.kind === 'not-comparable' ? null : consistency.kind === 'inconsistent',
     batteryV: interval.batteryV,
     isCheck: (interval.flags & (FLAGS.calibration | FLAGS.selfcheck)) !== 0,
+    flags: interval.flags,
     receivedAtSec: interval.receivedAtSec,
   };
 }

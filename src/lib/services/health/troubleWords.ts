@@ -1,3 +1,4 @@
+import { flagNames } from '#lib/acoustics/validity';
 import { type TroubleKind } from '#lib/contracts/health';
 import { formatDuration } from '#lib/format/durations';
 import { formatCoverage, formatDifferenceDb } from '#lib/format/levels';
@@ -25,6 +26,8 @@ export function troubleWhat({ kind, measured, bound }: Found): string {
       return `LAeq and bands differ by more than 1 dB in ${formatCoverage(measured ?? 0)} of the intervals`;
     case 'floor':
       return `The quiet of the last day is ${formatDifferenceDb(measured ?? 0)} dB against the usual`;
+    case 'flags':
+      return `Flags that are not expected here, in a tenth of the newest hour or more: ${flagNames(measured ?? 0).join(', ')}`;
     case 'battery':
       return `Battery at ${decimal(measured)} V, less than ${decimal(bound)} V`;
     case 'late':
@@ -48,6 +51,8 @@ const ADVICE: Record<TroubleKind, string> = {
   frozen: 'Restart the monitor, then check it with the calibrator. Exclude the frozen time.',
   bands: 'Look whether the monitor sends unweighted (Z) band levels and all of its bands.',
   floor: 'Look at microphone, windscreen and cable, and check with the calibrator.',
+  flags:
+    'Look on site at what the flag tells of. If it is ordinary at this place, tick it as expected in the station’s settings; intervals count as the validity rules say, whatever is ticked.',
   battery: 'Look at the charger or the solar panel; change the battery before the monitor stops.',
   late: 'The monitor is catching up or the link is poor. Wait; if it lasts, look at the link.',
   coverage:

@@ -3,6 +3,7 @@ import { inTransaction } from '#db/queries/connection';
 import { insertPlacement } from '#db/queries/stationPlacements';
 import { findStationById, updateStation, type StationRow } from '#db/queries/stations';
 import { bandAt, bandByNominalHz } from '#lib/acoustics/bands';
+import { flagMask } from '#lib/acoustics/validity';
 import { formatInstantUtc } from '#lib/contracts/common';
 import { bandRangeIssues, type StationChanges } from '#lib/contracts/stations';
 import { placementChange } from './placementChange';
@@ -69,6 +70,7 @@ function rowOf(station: StationRow, changes: StationChanges): Row {
     mastHeightM: changes.mastHeight,
     surroundings: changes.surroundings,
     acceptsFromSec: changes.acceptsFrom,
+    expectedFlags: changes.expectedFlags && flagMask(changes.expectedFlags),
     retiredAt: retired === undefined ? undefined : retired ? (station.retiredAt ?? new Date()) : null,
   };
 }

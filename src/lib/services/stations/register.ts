@@ -3,6 +3,7 @@ import { inTransaction } from '#db/queries/connection';
 import { findStationById, insertStation, type StationRow } from '#db/queries/stations';
 import { insertStationToken } from '#db/queries/stationTokens';
 import { bandRange } from '#lib/acoustics/bands';
+import { flagMask } from '#lib/acoustics/validity';
 import { type NewStation } from '#lib/contracts/stations';
 import { isDuplicateKey } from '../duplicateKey';
 
@@ -31,6 +32,7 @@ export async function registerStation(
     mastHeightM: input.mastHeight,
     surroundings: input.surroundings,
     acceptsFromSec: input.acceptsFrom,
+    expectedFlags: flagMask(input.expectedFlags),
   };
   try {
     return await inTransaction(async (transaction) => {

@@ -29,6 +29,7 @@ export function stationView(
     mastHeight: station.mastHeightM,
     surroundings: station.surroundings,
     acceptsFrom: station.acceptsFromSec === null ? null : formatInstantUtc(station.acceptsFromSec),
+    expectedFlags: flagNames(station.expectedFlags),
     createdAt: station.createdAt.toISOString(),
     retiredAt: station.retiredAt?.toISOString() ?? null,
     state: stationState(station, latest, nowSec),
