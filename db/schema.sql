@@ -615,6 +615,50 @@ CREATE TABLE `limits` (
   KEY `limits_network` (`network_id`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
+CREATE TABLE `mast_assignments` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `network_id` int(10) unsigned NOT NULL,
+  `station_id` int(10) unsigned NOT NULL,
+  `mast_id` int(10) unsigned NOT NULL,
+  `starts_at` int(10) unsigned NOT NULL,
+  `ends_at` int(10) unsigned DEFAULT NULL COMMENT 'NULL: goes on',
+  `created_by` char(36) NOT NULL,
+  `created_at` datetime(3) NOT NULL,
+  `ended_by` char(36) DEFAULT NULL,
+  PRIMARY KEY (`id`),
+  KEY `mast_assignments_station` (`station_id`,`starts_at`),
+  KEY `mast_assignments_mast` (`mast_id`,`starts_at`),
+  KEY `mast_assignments_network` (`network_id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `mast_tokens` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `mast_id` int(10) unsigned NOT NULL,
+  `digest` binary(32) NOT NULL COMMENT 'SHA-256 of the token',
+  `created_by` char(36) DEFAULT NULL,
+  `created_at` datetime(3) NOT NULL,
+  `revoked_at` datetime(3) DEFAULT NULL,
+  `last_used_at` datetime(3) DEFAULT NULL,
+  PRIMARY KEY (`id`),
+  UNIQUE KEY `mast_tokens_digest` (`digest`),
+  KEY `mast_tokens_mast` (`mast_id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `masts` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `network_id` int(10) unsigned NOT NULL,
+  `code` varchar(20) NOT NULL,
+  `name` varchar(160) NOT NULL,
+  `latitude` double NOT NULL,
+  `longitude` double NOT NULL,
+  `height_m` double NOT NULL COMMENT 'of the anemometer above ground',
+  `maximum_age_sec` int(10) unsigned NOT NULL DEFAULT 900 COMMENT 'how far from an interval a record may lie and still tell of it',
+  `created_at` datetime(3) NOT NULL,
+  `retired_at` datetime(3) DEFAULT NULL,
+  PRIMARY KEY (`id`),
+  UNIQUE KEY `masts_code` (`network_id`,`code`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
 CREATE TABLE `memberships` (
   `user_id` char(36) NOT NULL,
   `network_id` int(10) unsigned NOT NULL,
@@ -929,4 +973,16 @@ CREATE TABLE `users` (
   `disabled_at` datetime(3) DEFAULT NULL,
   PRIMARY KEY (`id`),
   UNIQUE KEY `users_email` (`email`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `weather_records` (
+  `mast_id` int(10) unsigned NOT NULL,
+  `starts_at` int(10) unsigned NOT NULL,
+  `duration_sec` smallint(5) unsigned NOT NULL,
+  `wind_speed_centi_ms` smallint(5) unsigned NOT NULL COMMENT 'mean of the record',
+  `wind_direction_deg` smallint(5) unsigned DEFAULT NULL COMMENT 'from',
+  `rain_centi_mm` smallint(5) unsigned DEFAULT NULL COMMENT 'fallen in the record; NULL: no gauge',
+  `temperature_centi_c` smallint(6) DEFAULT NULL,
+  `received_at` int(10) unsigned NOT NULL,
+  PRIMARY KEY (`mast_id`,`starts_at`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;

@@ -15,6 +15,7 @@ const OPEN_ROUTES = [
   '/api/v1/session',
   '/api/v1/intervals',
   '/api/v1/intervals/last',
+  '/api/v1/weather',
 ];
 
 const NAMES: Record<string, string> = {

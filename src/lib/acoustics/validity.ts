@@ -20,7 +20,10 @@ export type FlagName = keyof typeof CONTRACT_FLAGS;
 /** The contract's nine flags in fixed order. */
 export const FLAG_NAMES = Object.keys(CONTRACT_FLAGS) as FlagName[];
 
-/** Why an interval is left out of statistics, in the order in which reasons are told. */
+/**
+ * Why an interval is left out of statistics, in the order in which reasons are told. Stored as bits by their places: add new ones at
+ * the end.
+ */
 export const INVALIDITY_REASONS = [
   'calibration',
   'selfcheck',
@@ -32,6 +35,8 @@ export const INVALIDITY_REASONS = [
   'wind-speed',
   'rain',
   'exclusion',
+  'mast-wind',
+  'mast-rain',
 ] as const;
 export type InvalidityReason = (typeof INVALIDITY_REASONS)[number];
 
@@ -43,10 +48,19 @@ export interface ValidityRules {
   excludeRain: boolean;
 }
 
+/** Weather that a shared mast tells of an interval. */
+export interface MastWeather {
+  windSpeedMs: number;
+  isRaining: boolean;
+}
+
 /** What validity is judged by. */
 export interface JudgedInterval {
   flags: number;
+  /** The station's own sensor's. */
   windSpeedMs: number | null;
+  /** Of the mast assigned to the station, where it has no wind speed of its own: its own sensor is believed before any other. */
+  mast?: MastWeather | null;
 }
 
 const ALWAYS_INVALID =
@@ -83,6 +97,8 @@ function holds(
   if (reason === 'wind-speed') {
     return interval.windSpeedMs !== null && interval.windSpeedMs > rules.maximumWindSpeedMs;
   }
+  if (reason === 'mast-wind') return isMastWindy(interval, rules);
+  if (reason === 'mast-rain') return isMastRainy(interval, rules);
   if (reason === 'rain' && !rules.excludeRain) return false;
   return (interval.flags & CONTRACT_FLAGS[reason]) !== 0;
 }
@@ -105,6 +121,16 @@ export function isValid(interval: JudgedInterval, rules: ValidityRules, excluded
     !excluded &&
     (interval.flags & ALWAYS_INVALID) === 0 &&
     !(rules.excludeRain && (interval.flags & FLAGS.rain) !== 0) &&
-    !(interval.windSpeedMs !== null && interval.windSpeedMs > rules.maximumWindSpeedMs)
+    !(interval.windSpeedMs !== null && interval.windSpeedMs > rules.maximumWindSpeedMs) &&
+    !isMastWindy(interval, rules) &&
+    !isMastRainy(interval, rules)
   );
+}
+
+function isMastWindy({ windSpeedMs, mast }: JudgedInterval, { maximumWindSpeedMs }: ValidityRules): boolean {
+  return windSpeedMs === null && !!mast && mast.windSpeedMs > maximumWindSpeedMs;
+}
+
+function isMastRainy({ windSpeedMs, mast }: JudgedInterval, { excludeRain }: ValidityRules): boolean {
+  return excludeRain && windSpeedMs === null && !!mast && mast.isRaining;
 }

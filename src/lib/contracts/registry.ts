@@ -14,17 +14,23 @@ registry.registerComponent('securitySchemes', 'stationToken', {
   scheme: 'bearer',
   description: "A station's token, shown once when it is made.",
 });
+registry.registerComponent('securitySchemes', 'mastToken', {
+  type: 'http',
+  scheme: 'bearer',
+  description: "A weather mast's token, shown once when it is made.",
+});
 registry.registerComponent('securitySchemes', 'session', {
   type: 'apiKey',
   in: 'cookie',
   name: 'bittern-session',
 });
 
-export type Access = 'person' | 'station' | 'anyone';
+export type Access = 'person' | 'station' | 'mast' | 'anyone';
 
 const SECURITY: Record<Access, RouteConfig['security']> = {
   person: [{ session: [] }, { accessToken: [] }],
   station: [{ stationToken: [] }],
+  mast: [{ mastToken: [] }],
   anyone: [],
 };
 

@@ -32,8 +32,8 @@ export function reasonsOfMask(mask: number): InvalidityReason[] {
   return INVALIDITY_REASONS.filter((_, bit) => (mask & (1 << bit)) !== 0);
 }
 
-const WIND = reasonMask(['wind', 'wind-speed']);
-const RAIN = reasonMask(['rain']);
+const WIND = reasonMask(['wind', 'wind-speed', 'mast-wind']);
+const RAIN = reasonMask(['rain', 'mast-rain']);
 const OTHERWISE = reasonMask([...INVALIDITY_REASONS]) & ~WIND & ~RAIN;
 
 const leftOutBy =

@@ -17,6 +17,8 @@ const REASON_WORDS: Record<InvalidityReason, string> = {
   'wind-speed': 'wind speed',
   rain: 'rain',
   exclusion: 'excluded by the operator',
+  'mast-wind': 'wind at the mast',
+  'mast-rain': 'rain at the mast',
 };
 
 interface ReadoutProps {
@@ -34,11 +36,18 @@ export function Readout({ readings, weighting, zone, isAnnounced }: ReadoutProps
   return (
     <div className="mb-1.5 text-small text-ink-soft tabular-nums" aria-live={isAnnounced ? 'polite' : 'off'}>
       {readings.map(({ track, reading }, at) => (
-        <p key={at} className="min-h-[2.9em] pad:min-h-[1.45em]">
+        <p
+          key={at}
+          className={at === 0 ? 'min-h-[2.9em] pad:min-h-[1.45em]' : 'min-h-[4.4em] pad:min-h-[2.9em]'}
+        >
           {reading && readings.length > 1 && <span className="text-ink">{track.station.code} </span>}
           {reading && <ReadingWords reading={reading} weighting={weighting} zone={zone} />}
           {reading && at > 0 && first?.reading && (
-            <DifferenceWords reading={reading} first={first.reading} name={first.track.station.code} />
+            <DifferenceWords
+              reading={reading}
+              first={first.reading}
+              name={first.track.station.code === track.station.code ? 'above' : first.track.station.code}
+            />
           )}
           {!reading &&
             at === 0 &&
@@ -56,7 +65,8 @@ function DifferenceWords({ reading, first, name }: { reading: Reading; first: Re
   if (laeqDb === null && bandDb === null) return null;
   return (
     <>
-      {' · against the strip above'} ({name}):{' '}
+      {' · against '}
+      {name}:{' '}
       {laeqDb !== null && (
         <>
           L<sub>Aeq</sub> <b className="font-medium text-ink">{formatDifferenceDb(laeqDb)}</b> dB

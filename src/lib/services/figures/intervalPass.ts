@@ -3,7 +3,14 @@ import { PeriodAccumulator } from '#lib/acoustics/periodStatistics';
 import { FLAGS, INVALIDITY_REASONS, invalidityReasons, type InvalidityReason } from '#lib/acoustics/validity';
 import { type IntervalFacts } from '#lib/contracts/figureSheet';
 import { formatDuration } from '#lib/format/durations';
-import { accumulate, firstEndingAfter, isExcluded, rulesSpans, type Judgement } from '../levels/accumulate';
+import {
+  accumulate,
+  firstEndingAfter,
+  isExcluded,
+  rulesSpans,
+  withWeather,
+  type Judgement,
+} from '../levels/accumulate';
 import { judgementOf, MOST_INTERVALS } from '../levels/intervalSums';
 import { type Span } from '../levels/spans';
 import { BlockTones } from './blockTones';
@@ -75,7 +82,8 @@ class Tally {
         const sec = Math.min(endSec, span.toSec) - Math.max(interval.startSec, span.fromSec);
         // One that straddles two parts or two rules is counted once, where it begins.
         const one = interval.startSec >= span.fromSec || (isFirst && span.fromSec === part.fromSec) ? 1 : 0;
-        const reasons = invalidityReasons(interval, span.rules, isExcluded(interval, judgement));
+        const judged = withWeather(interval, judgement);
+        const reasons = invalidityReasons(judged, span.rules, isExcluded(interval, judgement));
         if (reasons.length === 0) {
           this.#noteCounted(interval, one, sec);
           if (one === 1) counted.push(interval);
@@ -125,7 +133,9 @@ const REASON_WORDS: Record<InvalidityReason, string> = {
   powerloss: 'power loss',
   clockset: 'clock was set',
   wind: 'flagged wind',
-  'wind-speed': 'wind above the bound',
-  rain: 'rain',
+  'wind-speed': 'wind above the bound by the station’s own sensor',
+  rain: 'rain flagged by the station',
   exclusion: 'excluded by an operator',
+  'mast-wind': 'wind above the bound at the mast',
+  'mast-rain': 'rain at the mast',
 };

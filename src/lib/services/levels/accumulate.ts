@@ -2,8 +2,9 @@ import { pickSettings, type NetworkSettings } from '#db/queries/networks';
 import { type StoredInterval } from '#db/queries/intervals';
 import { type BandInterval } from '#lib/acoustics/bandClassCounting';
 import { PeriodAccumulator, type AccumulatedInterval } from '#lib/acoustics/periodStatistics';
-import { isValid, type ValidityRules } from '#lib/acoustics/validity';
+import { isValid, type JudgedInterval, type ValidityRules } from '#lib/acoustics/validity';
 import { QUARTER_SEC } from '#lib/time/quarters';
+import { type StationWeather } from '../weather/stationWeather';
 import { overlapsAny, type Span } from './spans';
 
 /** Whether validity rules and exclusions leave intervals out (`rules`), or everything measured counts (`all`). */
@@ -16,6 +17,8 @@ export interface Judgement {
   timeline: NetworkSettings[];
   /** Standing exclusions of the station, merged. An interval that one of them overlaps is left out whole. */
   exclusions: readonly Span[];
+  /** What masts tell of the weather at the station; left out or null: no mast is assigned. */
+  weather?: StationWeather | null;
 }
 
 /** A stretch in which one set of validity rules holds: each quarter-hour goes by the settings at its start. */
@@ -41,7 +44,14 @@ export function rulesSpans(fromSec: number, toSec: number, timeline: NetworkSett
 /** Whether an interval counts under some rules. */
 export function counts(interval: StoredInterval, rules: ValidityRules, judgement: Judgement): boolean {
   if (judgement.validity === 'all') return true;
-  return isValid(interval, rules, isExcluded(interval, judgement));
+  return isValid(withWeather(interval, judgement), rules, isExcluded(interval, judgement));
+}
+
+/** An interval with what its station's mast tells of it, where its own sensor tells no wind. */
+export function withWeather(interval: StoredInterval, { weather }: Judgement): JudgedInterval {
+  if (!weather || interval.windSpeedMs !== null) return interval;
+  const mast = weather.during(interval.startSec, interval.durationSec);
+  return { flags: interval.flags, windSpeedMs: null, mast };
 }
 
 /** Whether a standing exclusion overlaps an interval. */

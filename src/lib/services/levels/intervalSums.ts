@@ -5,6 +5,7 @@ import { selectIntervals } from '#db/queries/intervals';
 import { type NetworkSettings } from '#db/queries/networks';
 import { type StationRow } from '#db/queries/stations';
 import { PeriodAccumulator } from '#lib/acoustics/periodStatistics';
+import { weatherAtStation } from '../weather/stationWeather';
 import { accumulate, type Judgement, type Validity } from './accumulate';
 import { mergedSpans, type Span } from './spans';
 
@@ -32,7 +33,11 @@ export async function judgementOf(
   // An interval that reaches into the period may begin, or end, up to an hour outside it.
   const exclusions =
     validity === 'all' ? [] : await selectStandingExclusions(station.id, fromSec - 3600, toSec + 3600, conn);
-  return { validity, timeline, exclusions: mergedSpans([...exclusions, ...alsoExcluded]) };
+  const weather =
+    validity === 'all'
+      ? null
+      : await weatherAtStation(station.id, { fromSec: fromSec - 3600, toSec: toSec + 3600 }, conn);
+  return { validity, timeline, exclusions: mergedSpans([...exclusions, ...alsoExcluded]), weather };
 }
 
 /** Sums of a period straight from its intervals. */

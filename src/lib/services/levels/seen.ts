@@ -1,6 +1,6 @@
 import { type StoredInterval } from '#db/queries/intervals';
 import { INVALIDITY_REASONS, invalidityReasons, type ValidityRules } from '#lib/acoustics/validity';
-import { isExcluded, type Judgement } from './accumulate';
+import { isExcluded, withWeather, type Judgement } from './accumulate';
 
 /** An interval that arrives later than this after its end counts as late: it was kept back, not just sent in a batch. */
 export const LATE_AFTER_SEC = 3600;
@@ -12,7 +12,7 @@ export function isLate({ startSec, durationSec, receivedAtSec }: StoredInterval)
 
 /** Why an interval does not count, as bits: bit n is `INVALIDITY_REASONS[n]`. */
 export function reasonBitsOf(interval: StoredInterval, rules: ValidityRules, judgement: Judgement): number {
-  return invalidityReasons(interval, rules, isExcluded(interval, judgement)).reduce(
+  return invalidityReasons(withWeather(interval, judgement), rules, isExcluded(interval, judgement)).reduce(
     (bits, reason) => bits | (1 << INVALIDITY_REASONS.indexOf(reason)),
     0,
   );

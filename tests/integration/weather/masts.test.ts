@@ -1,0 +1,105 @@
+import { gzipSync } from 'node:zlib';
+import { beforeAll, describe, expect, test } from 'vitest';
+import { db } from '#db/client';
+import { callApi } from '../support/callApi';
+import { useFreshSchema } from '../support/freshSchema';
+import { makeNetwork, makePerson, makeStation } from '../support/people';
+
+useFreshSchema();
+
+const base = '/api/v1/networks/windy';
+let operator: { session: string };
+let regulator: { session: string };
+let token: string;
+const MAST = { code: 'WI-W1', name: 'Pier head', latitude: 54, longitude: -1.5, height: 10 };
+
+beforeAll(async () => {
+  const home = await makeNetwork('windy');
+  operator = await makePerson(home, ['operator']);
+  regulator = await makePerson(home, ['regulator']);
+  await makeStation(home, 'WI-1');
+  const answer = await callApi('POST', `${base}/masts`, { ...operator, body: MAST });
+  expect(answer.status).toBe(201);
+  ({ token } = await answer.json());
+});
+
+const record = (minute: number, more: object = {}) => ({
+  start: `2026-03-01T00:${String(minute).padStart(2, '0')}:00Z`,
+  seconds: 60,
+  windSpeed: 3.2,
+  windDirection: 240,
+  ...more,
+});
+const post = (records: unknown[]) => callApi('POST', '/api/v1/weather', { token, body: { records } });
+
+describe('a mast posts', () => {
+  test('accepted, known, refused with a reason; one bad record never costs a good one', async () => {
+    expect(await (await post([record(0), record(1)])).json()).toMatchObject({ accepted: 2, known: 0 });
+    const bad = [
+      record(1, { windSpeed: 9 }),
+      record(0),
+      { start: 'x' },
+      record(2, { windSpeed: 300 }),
+      record(3),
+    ];
+    const answer = await (
+      await post([...bad, { ...record(3), seconds: 3600, start: '2026-02-28T23:30:00Z' }])
+    ).json();
+    expect(answer).toMatchObject({ accepted: 1, known: 1 });
+    expect(answer.refused.map(({ index, code }: { index: number; code: string }) => [index, code])).toEqual([
+      [0, 'conflict'],
+      [2, 'malformed'],
+      [3, 'out-of-range'],
+      [5, 'overlap'],
+    ]);
+    const ahead = new Date(Date.now() + 3_600_000).toISOString().replace(/\.\d+/, '');
+    expect((await (await post([record(0, { start: ahead })])).json()).refused[0].code).toBe('clock-ahead');
+  });
+
+  test('a wrong token, another’s token and what is no list are told', async () => {
+    expect((await callApi('POST', '/api/v1/weather', { token: 'bm_x', body: {} })).status).toBe(401);
+    expect((await callApi('POST', '/api/v1/intervals', { token, body: {} })).status).toBe(401);
+    expect((await post([])).status).toBe(422);
+    const headers = { 'content-type': 'application/json', 'content-encoding': 'gzip' };
+    const body = gzipSync(JSON.stringify({ records: [record(4)] }));
+    expect((await callApi('POST', '/api/v1/weather', { token, headers, body })).status).toBe(200);
+  });
+});
+
+describe('people', () => {
+  test('operators add, assign and end; a station has one mast at a time; every role sees', async () => {
+    expect((await callApi('POST', `${base}/masts`, { ...regulator, body: MAST })).status).toBe(403);
+    expect((await callApi('POST', `${base}/masts`, { ...operator, body: MAST })).status).toBe(422);
+    const path = `${base}/masts/WI-W1/assignments`;
+    const from = '2026-03-01T00:00:00Z';
+    const assign = (body: object) => callApi('POST', path, { ...operator, body });
+    const { assignment } = await (await assign({ station: 'WI-1', from })).json();
+    expect((await assign({ station: 'WI-1', from: '2026-04-01T00:00:00Z' })).status).toBe(422);
+    expect((await assign({ station: 'none', from })).status).toBe(422);
+    const end = `${base}/mast-assignments/${assignment.id}/end`;
+    const to = '2026-03-05T00:00:00Z';
+    expect((await callApi('POST', end, { ...operator, body: { to } })).status).toBe(200);
+    expect((await callApi('POST', end, { ...operator, body: { to: '2026-03-09T00:00:00Z' } })).status).toBe(
+      422,
+    );
+    expect((await assign({ station: 'WI-1', from: to })).status).toBe(201);
+    const { items } = await (await callApi('GET', `${base}/masts`, regulator)).json();
+    expect(items).toMatchObject([{ code: 'WI-W1', last: { windSpeed: 3.2 }, assignments: [{}, { to }] }]);
+    expect(await db()('audit_log').where('action', 'like', 'mast.%')).toHaveLength(4);
+  });
+
+  test('records as a file, for every role', async () => {
+    const period = '?from=2026-03-01T00:01:00Z&to=2026-03-01T00:02:00Z';
+    const file = await callApi('GET', `${base}/masts/WI-W1/records.csv${period}`, regulator);
+    expect(await file.text()).toBe(
+      'start,seconds,windSpeed,windDirection,rain,temperature\r\n2026-03-01T00:01:00Z,60,3.2,240,,\r\n',
+    );
+  });
+
+  test('a retired mast’s posts are refused', async () => {
+    const { code, ...facts } = MAST;
+    const retired = { ...operator, body: { ...facts, maximumAge: 15, isRetired: true } };
+    expect((await callApi('PATCH', `${base}/masts/${code}`, retired)).status).toBe(200);
+    expect((await post([record(9)])).status).toBe(401);
+  });
+});
