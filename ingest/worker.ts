@@ -14,6 +14,7 @@ import { shiftClocks } from './jobs/shiftClocks';
 import { sendMail } from './jobs/sendMail';
 import { runDueSlots, type SlotJob } from './jobs/slots';
 import { watchDrifts } from './jobs/watchDrifts';
+import { warnOfHeadings } from './jobs/warnEarly';
 import { watchHealth } from './jobs/watchHealth';
 
 /** Done round by round, as much as there is. Aggregation rests longer: figures that are asked for meanwhile are current anyway. */
@@ -25,6 +26,7 @@ const LOOPS: LoopSettings[] = [
   { name: 'compose-alerts', everySec: 10, work: composeAlerts },
   { name: 'escalate', everySec: 20, work: escalateUnacknowledged },
   { name: 'send-mail', everySec: 2, work: sendMail },
+  { name: 'warn-early', everySec: 60, work: warnOfHeadings },
   { name: 'watch-health', everySec: 60, work: watchHealth },
 ];
 

@@ -88,6 +88,11 @@ export async function listAlertPeople(networkId: number, conn: Connection = pool
   }));
 }
 
+/** Networks where somebody wants early warnings. */
+export async function listWarnedNetworks(conn: Connection = pool()): Promise<number[]> {
+  return conn('alert_preferences').where({ warns_early: true }).distinct('network_id').pluck('network_id');
+}
+
 export async function findAlertPreferences(
   networkId: number,
   userId: string,

@@ -64,6 +64,16 @@ function endOfQuietSec(sec: number, { quietFromMin, quietToMin }: Times, zone: s
   return atSec;
 }
 
+/** Whether the clock shows one of a person's quiet hours. */
+export function isQuiet(
+  { quietFromMin, quietToMin }: Pick<Times, 'quietFromMin' | 'quietToMin'>,
+  nowSec: number,
+  zone: string,
+): boolean {
+  if (quietFromMin === null || quietToMin === null) return false;
+  return isWithin(localMinuteAt(nowSec, zone), quietFromMin, quietToMin);
+}
+
 /** Whether a minute of the day lies in `from <= m < to`, which may go over midnight. */
 function isWithin(minute: number, from: number, to: number): boolean {
   return from < to ? from <= minute && minute < to : minute >= from || minute < to;
