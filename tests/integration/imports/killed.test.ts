@@ -65,4 +65,16 @@ test('an import whose worker is killed again and again holds every row once', as
   await work();
   expect(await storedRows(stationId)).toEqual([]);
   expect(await imports.read(id)).toMatchObject({ state: 'undone', stored: 0 });
+  await imports.act(id, 'redo');
+  await killedAfter(60);
+  await work();
+  expect(await imports.read(id)).toMatchObject({ state: 'stored', stored: ROWS });
+  expect(await storedRows(stationId)).toHaveLength(ROWS);
+  await imports.act(id, 'undo', 'A trial.');
+  await work();
+  await imports.act(id, 'discard');
+  await killedAfter(30);
+  await work();
+  expect(await imports.read(id)).toMatchObject({ state: 'discarded' });
+  expect(await db()('import_intervals').where({ import_id: id })).toEqual([]);
 });

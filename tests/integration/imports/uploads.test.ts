@@ -120,6 +120,16 @@ describe('a file that comes in parts', () => {
     expect((await put(id, 0, bytes)).status).toBe(200);
   });
 
+  test('overwrites what a killed server wrote and had not noted', async () => {
+    const { id } = await begin();
+    await put(id, 0, bytes.subarray(0, 3000));
+    await db()('import_uploads').where({ id }).update({ received_bytes: 1000 });
+    expect((await put(id, 1000, bytes.subarray(1000))).status).toBe(200);
+    const { id: importId } = await finished(id);
+    await work();
+    expect((await imports.read(importId)).report).toMatchObject({ rows: 900, accepted: 900 });
+  });
+
   test('is refused before its first byte when it is too large, and in clear words when the part is wrong', async () => {
     const large = await call('POST', '', { station: code, bytes: 1024 * 1024 + 1 });
     expect(await large.json()).toMatchObject({ status: 413, code: 'too-large' });
