@@ -71,8 +71,16 @@ function useColourRange(
   const key = `${weighting}${fraction}`;
   const known = ranges[key];
   if (known) return known;
-  const [first] = layers;
-  const range = first ? colourRange(first.levelsCentiDb, weightsCentiDb) : null;
+  const range = firstRange(layers, weightsCentiDb);
   if (range) setRanges({ ...ranges, [key]: range });
   return range;
+}
+
+/** The range of the first layer that holds anything: of a long view the first ones may lie before the station was there. */
+function firstRange(layers: readonly StripColumns[], weightsCentiDb: readonly number[]): LevelRange | null {
+  for (const { levelsCentiDb } of layers) {
+    const range = colourRange(levelsCentiDb, weightsCentiDb);
+    if (range) return range;
+  }
+  return null;
 }

@@ -33,7 +33,10 @@ export function stretchWords({ fromSec, toSec }: Run, zone: string): string {
   return `${from} – ${dayWords(toSec - 1, zone)} ${end}`;
 }
 
-/** "22:40–07:10": the clock times of a stretch without its dates. */
+const LONG_SEC = 36 * 3600;
+
+/** "22:40–07:10": the clock times of a stretch without its dates; the dates alone, "Thu 1 Jan – Wed 16 Sep", of a long one. */
 export function clockStretchWords({ fromSec, toSec }: Run, zone: string): string {
+  if (toSec - fromSec > LONG_SEC) return `${dayWords(fromSec, zone)} – ${dayWords(toSec - 1, zone)}`;
   return `${clockWords(fromSec, zone)}–${clockWords(toSec, zone)}`;
 }
