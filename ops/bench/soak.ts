@@ -29,6 +29,8 @@ const stop = new AbortController();
 // Every monitor that waits listens to it.
 setMaxListeners(0, stop.signal);
 for (const signal of ['SIGINT', 'SIGTERM'] as const) process.on(signal, () => stop.abort());
+// Nobody reads any more: end in order all the same.
+process.stdout.on('error', () => stop.abort());
 
 const directory = mkdtempSync(join(tmpdir(), 'bittern-soak-'));
 let instance: Instance | undefined;
@@ -114,7 +116,8 @@ function placeOf(
   dueInMs: (minute: number) => number,
 ) {
   const given = givenBy(options.seed, station, firstSec, dataMinutes);
-  return { origin: on.origin, token, given, answers, dueInMs };
+  const address = `10.0.${Math.floor(station / 250)}.${(station % 250) + 1}`;
+  return { origin: on.origin, token, address, given, answers, dueInMs };
 }
 
 /** Makes a database with its stations. @returns their tokens. */

@@ -52,6 +52,8 @@ export class Instance {
       BITTERN_DATA_DIR: this.#directory,
       BITTERN_PORT: String(this.#ports.web),
       BITTERN_ORIGIN: this.origin,
+      // Monitors that all post from one address would share what an address may do.
+      BITTERN_TRUSTED_PROXIES: '1',
       BITTERN_DB_HOST: '127.0.0.1',
       BITTERN_DB_PORT: String(this.#ports.database),
       BITTERN_DB_USER: 'bittern',

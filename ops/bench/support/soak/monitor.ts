@@ -8,6 +8,8 @@ const MOST_RECORDS_A_POST = 60;
 const FIRST_WAIT_MS = 250;
 const LONGEST_WAIT_MS = 8_000;
 const ANSWER_TIMEOUT_MS = 30_000;
+/** Answers that ask a monitor to come again. */
+const LATER = new Set([429, 503]);
 
 /** How often each answer came, and answers that no monitor should get. */
 export class Answers {
@@ -27,6 +29,8 @@ export class Answers {
 export interface MonitorPlace {
   origin: string;
   token: string;
+  /** From where it seems to post, as a proxy before Bittern would say. */
+  address: string;
   given: readonly Given[];
   answers: Answers;
   /** Milliseconds from now at which a minute of the data is due. */
@@ -74,7 +78,7 @@ async function send(
     const response = await post(place, body, signal);
     const text = await response.text();
     if (response.status === 200) return accountFor(text, batch.length, place.answers);
-    if (response.status !== 429 && response.status !== 503) {
+    if (!LATER.has(response.status)) {
       place.answers.note(`${response.status} ${text.slice(0, 300)}`);
       return backOffMs;
     }
@@ -111,11 +115,11 @@ async function sendGarbled(place: MonitorPlace, signal: AbortSignal): Promise<vo
     () => null,
   );
   if (status === 422) place.answers.count('422');
-  else if (status !== null && status !== 503) place.answers.note(`${status} for a garbled post`);
+  else if (status !== null && !LATER.has(status)) place.answers.note(`${status} for a garbled post`);
 }
 
 function post(
-  { origin, token }: MonitorPlace,
+  { origin, token, address }: MonitorPlace,
   body: Uint8Array<ArrayBuffer>,
   signal: AbortSignal,
 ): Promise<Response> {
@@ -123,6 +127,7 @@ function post(
     method: 'POST',
     headers: {
       authorization: `Bearer ${token}`,
+      'x-forwarded-for': address,
       'content-type': 'application/json',
       'content-encoding': 'gzip',
     },
