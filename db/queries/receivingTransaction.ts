@@ -29,18 +29,20 @@ async function attemptOnce<T>(
   decide: (rows: Cells[], writes: Writes) => Promise<T>,
 ): Promise<T> {
   const connection = await acquire();
+  let decided: PromiseSettledResult<T>;
   try {
     const rows = await run(connection, ['START TRANSACTION', ...reads]);
     const writes = new Collected();
-    const decided = await decide(rows.slice(1) as Cells[], writes);
-    await run(connection, [...writes.statements, 'COMMIT']);
-    connection.release();
-    return decided;
+    [decided] = await Promise.allSettled([decide(rows.slice(1) as Cells[], writes)]);
+    await run(connection, decided.status === 'fulfilled' ? [...writes.statements, 'COMMIT'] : ['ROLLBACK']);
   } catch (error) {
     // Whatever state it is in, the server rolls back what a connection that ends has not committed.
     connection.destroy();
     throw error;
   }
+  connection.release();
+  if (decided.status === 'rejected') throw decided.reason;
+  return decided.value;
 }
 
 class Collected implements Writes {

@@ -4,6 +4,7 @@ import type { Writes } from '#db/queries/connection';
 import { noteShifted } from '#db/queries/shiftedStarts';
 import { noteClock } from '#db/queries/stationClocks';
 import type { StationRow } from '#db/queries/stations';
+import type { TokenStation } from '#db/queries/stationTokens';
 import type { Receipt } from '#lib/contracts/intervals';
 import { quarterAt } from '#lib/time/quarters';
 import type { Decision } from './decide';
@@ -17,6 +18,8 @@ export type ReceivingStation = Pick<StationRow, 'id' | 'bandFraction' | 'accepts
 /** A post whose records have been read, each by itself. */
 export interface Post {
   station: ReceivingStation;
+  /** The station as it was remembered from an earlier post; null: it has just been asked for. */
+  remembered: TokenStation | null;
   envelope: Envelope;
   now: Date;
   bandSet: BandSet | { problem: string };

@@ -49,9 +49,15 @@ async function printRatios(web: Web, raw: RawInsert, networkId: number): Promise
     const statements = batches.map((turn) =>
       rawStations.map(({ stationId }) => turn.map((batch) => insertStatement(stationId, batch))),
     );
+    let cpuMs = 0;
     const { ms, againstMs } = await compare(
       TURNS,
-      (turn) => sendAll(web.origin, monitors, Array(SENDERS).fill(bodies[turn + 1])),
+      async (turn) => {
+        const beforeMs = web.cpuMs;
+        await sendAll(web.origin, monitors, Array(SENDERS).fill(bodies[turn + 1]));
+        // The first, which warms up, does not count.
+        if (turn >= 0) cpuMs += web.cpuMs - beforeMs;
+      },
       (turn) => raw.run(statements[turn + 1] ?? []),
     );
     const count = SENDERS * posts * perPost * 1000;
@@ -63,9 +69,13 @@ async function printRatios(web: Web, raw: RawInsert, networkId: number): Promise
       target,
       digits(count / median(ms)),
       digits(count / median(againstMs)),
+      digits(cpuMs / (TURNS * SENDERS * posts)),
     ]);
   }
-  printTable(['intervals a post', '÷ D', 'over turns', 'target', 'acknowledged/s', 'D, rows/s'], rows);
+  printTable(
+    ['intervals a post', '÷ D', 'over turns', 'target', 'acknowledged/s', 'D, rows/s', 'web CPU ms a post'],
+    rows,
+  );
 }
 
 async function printSingles(web: Web, networkId: number): Promise<void> {
@@ -80,14 +90,26 @@ async function printSingles(web: Web, networkId: number): Promise<void> {
     Array(SINGLES.monitors).fill(posts.slice(perMonitor, perMonitor + 5)),
     200,
   );
+  const beforeMs = web.cpuMs;
   const ms = await sendAtPace(
     web.origin,
     monitors,
     Array(SINGLES.monitors).fill(posts.slice(0, perMonitor)),
     postsPerSec,
   );
-  const row = [postsPerSec, ...[0.5, 0.95, 0.99, 1].map((share) => percentile(ms, share))].map(digits);
-  printTable(['single intervals: posts/s', 'p50 ms', 'p95 ms', 'p99 ms (target < 50)', 'highest ms'], [row]);
+  const cpuMs = (web.cpuMs - beforeMs) / (seconds * postsPerSec);
+  const row = [postsPerSec, ...[0.5, 0.95, 0.99, 1].map((share) => percentile(ms, share)), cpuMs].map(digits);
+  printTable(
+    [
+      'single intervals: posts/s',
+      'p50 ms',
+      'p95 ms',
+      'p99 ms (target < 50)',
+      'highest ms',
+      'web CPU ms a post',
+    ],
+    [row],
+  );
 }
 
 async function batchesOf(perPost: number, posts: number, turns: number): Promise<NewInterval[][][]> {

@@ -1,5 +1,5 @@
 import { spawn, type ChildProcess } from 'node:child_process';
-import { existsSync } from 'node:fs';
+import { existsSync, readFileSync } from 'node:fs';
 import { once } from 'node:events';
 import { createServer, type AddressInfo } from 'node:net';
 import { setTimeout as sleep } from 'node:timers/promises';
@@ -26,6 +26,14 @@ export class Web {
     const started = new Web(web, `http://127.0.0.1:${port}`);
     await started.untilAnswers();
     return started;
+  }
+
+  /** Processor time that all its threads have had so far, in milliseconds. */
+  get cpuMs(): number {
+    const cells = readFileSync(`/proc/${this.process.pid}/stat`, 'utf8')
+      .replace(/^.*\) /, '')
+      .split(' ');
+    return (Number(cells[11]) + Number(cells[12])) * 10;
   }
 
   /** Its highest resident memory so far, in MiB. */

@@ -59,6 +59,8 @@ export async function requireStation(networkId: number, code: string | undefined
   return station;
 }
 
+export type { TokenStation };
+
 /** The station token that a monitor sent, whether it is in force or not. @throws {Problem} 401 */
 export function sentStationToken(request: Parameters<typeof bearerToken>[0]): string {
   const secret = bearerToken(request);

@@ -1,3 +1,4 @@
+import type { TokenStation } from '#db/queries/stationTokens';
 import { config } from '#lib/config/index';
 import { FairShare, NoRoom, type TakeTurn } from './fairShare';
 import { Problem } from './problem';
@@ -12,6 +13,8 @@ const CONNECTIONS_LEFT = 4;
 const MOST_TURNS = 6;
 const TURNS_OF_TOKEN = 2;
 const MOST_KNOWN = 20_000;
+/** A token's use is noted once a minute, when it is asked for anew. */
+const REMEMBERED_MS = 60_000;
 
 /**
  * What every post of a monitor passes before it costs anything: the pace of its address and of its token, and a fair share of the
@@ -21,8 +24,8 @@ export class ReceivingGate {
   private readonly share: FairShare;
   private readonly paceOfAddress: RateLimit;
   private readonly paceOfToken: RateLimit;
-  /** Tokens that were in force when they last came. Others share as their address does: inventing tokens gains nothing. */
-  private readonly known = new Set<string>();
+  /** Stations of tokens that were in force when they last came. Other tokens share as their address does: inventing some gains nothing. */
+  private readonly known = new Map<string, { station: TokenStation; atMs: number }>();
 
   constructor(settings = config()) {
     this.paceOfAddress = new RateLimit(settings.receiving.postsPerMinuteOfAddress);
@@ -53,12 +56,22 @@ export class ReceivingGate {
     }
   }
 
-  /** Notes that a token is in force: its posts share by themselves from now on. */
-  noteKnown(secret: string): void {
-    if (this.known.has(secret)) return;
-    this.known.add(secret);
-    const [first] = this.known;
+  /** What was found by a token within the last minute; whether it is still so is to be asked. */
+  recall(secret: string): TokenStation | null {
+    const known = this.known.get(secret);
+    return known && Date.now() - known.atMs < REMEMBERED_MS ? known.station : null;
+  }
+
+  /** Notes what was found by a token: its posts share by themselves from now on. */
+  remember(secret: string, station: TokenStation): void {
+    this.known.delete(secret);
+    this.known.set(secret, { station, atMs: Date.now() });
+    const [first] = this.known.keys();
     if (this.known.size > MOST_KNOWN && first !== undefined) this.known.delete(first);
+  }
+
+  forget(secret: string): void {
+    this.known.delete(secret);
   }
 }
 

@@ -223,6 +223,23 @@ test('token and content type are required', async () => {
   expect((await callApi('POST', '/api/v1/intervals', { token, body })).status).toBe(401);
 });
 
+test('what changes about a station counts at its next post, although the station is remembered', async () => {
+  await post([interval('2026-03-01T00:00:00Z')]);
+  const bound = Date.parse('2026-03-01T00:10:00Z') / 1000;
+  await db()('stations').where({ id: stationId }).update({ accepts_from: bound });
+  expect((await post([interval('2026-03-01T00:01:00Z')])).refused).toMatchObject([{ code: 'too-old' }]);
+  expect(await post([interval('2026-03-01T00:10:00Z')])).toMatchObject({ accepted: 1 });
+  const send = () => callApi('POST', '/api/v1/intervals', { token, body: { bands: [], intervals: [1] } });
+  expect((await send()).status).toBe(200);
+  await db()('stations').where({ id: stationId }).update({ retired_at: new Date() });
+  expect((await send()).status).toBe(401);
+  await db()('stations').where({ id: stationId }).update({ retired_at: null });
+  expect((await send()).status).toBe(200);
+  await db()('station_tokens').where({ station_id: stationId }).update({ revoked_at: new Date() });
+  expect((await send()).status).toBe(401);
+  expect(await stored()).toHaveLength(2);
+});
+
 test('the monitor learns where to go on and what is missing', async () => {
   const last = async () => (await callApi('GET', '/api/v1/intervals/last', { token })).json();
   expect(await last()).toEqual({ lastStart: null, gaps: [] });

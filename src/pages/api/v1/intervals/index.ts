@@ -1,7 +1,7 @@
 import { ShiftUnderWay } from '#ingest/receive/clockRules';
 import { readEnvelope, UnreadablePost } from '#ingest/receive/envelope';
-import { receiveBatch } from '#ingest/receive/receive';
-import { requireStationToken, sentStationToken } from '#lib/auth/guards';
+import { receiveBatch, StaleStation } from '#ingest/receive/receive';
+import { requireStationToken, sentStationToken, type TokenStation } from '#lib/auth/guards';
 import { HeldBytes } from '#lib/http/heldBytes';
 import { inTime } from '#lib/http/inTime';
 import { monitorRequestOf, type MonitorRequest } from '#lib/http/monitorRequest';
@@ -19,24 +19,44 @@ export const POST = route(({ request, clientAddress }) => takePost(monitorReques
  */
 export async function takePost(request: MonitorRequest, address: string): Promise<Response> {
   const secret = sentStationToken(request);
-  const gate = receivingGate();
-  return gate.enter({ address, secret }, async (takeTurn) => {
-    const station = await inTime(requireStationToken(request));
-    gate.noteKnown(secret);
+  return receivingGate().enter({ address, secret }, async (takeTurn) => {
+    const remembered = receivingGate().recall(secret);
+    const station = remembered ?? (await askForStation(request, secret));
     const held = new HeldBytes();
     try {
       const body = await readMonitorBody(request, held);
-      return await inTime(takeTurn(() => receive(station, body)));
+      return await inTime(
+        takeTurn(() => receive(body, station, remembered).catch(onceMore(request, secret, body))),
+      );
     } finally {
       held.release();
     }
   });
 }
 
-async function receive(station: Parameters<typeof receiveBatch>[0], body: MonitorBody): Promise<Response> {
+async function askForStation(request: MonitorRequest, secret: string): Promise<TokenStation> {
+  const station = await inTime(requireStationToken(request));
+  receivingGate().remember(secret, station);
+  return station;
+}
+
+/** Where what was remembered is no longer so, asks anew: the token may have ended. */
+function onceMore(request: MonitorRequest, secret: string, body: MonitorBody) {
+  return async (error: unknown): Promise<Response> => {
+    if (!(error instanceof StaleStation)) throw error;
+    receivingGate().forget(secret);
+    return receive(body, await askForStation(request, secret), null);
+  };
+}
+
+async function receive(
+  body: MonitorBody,
+  station: TokenStation,
+  remembered: TokenStation | null,
+): Promise<Response> {
   try {
     const envelope = readEnvelope(await textOfBody(body), station.bandFraction);
-    return json(await receiveBatch(station, envelope, new Date()));
+    return json(await receiveBatch(station, envelope, new Date(), remembered));
   } catch (error) {
     throw refusalOf(error);
   }
