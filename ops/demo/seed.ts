@@ -12,6 +12,7 @@ import { seedInstruments } from './instruments';
 import { seedPeople } from './people';
 import { seedReportForm } from './reportForm';
 import { seedQuarantine } from './quarantine';
+import { seedSelfChecks } from './selfChecks';
 import { seedStations } from './stations';
 
 const DAY_SEC = 86_400;
@@ -46,6 +47,7 @@ export async function seedDemo(settings: Config, tell: (line: string) => void): 
     stations,
   });
   tell(`${instruments} instruments`);
+  tell(`${await seedSelfChecks(stations, nowSec, days)} self-checks`);
   await seedExclusions(networkId, operatorId, stations, nowSec, days);
   const quarters = await aggregateAll(pendWindowsFor);
   tell(
