@@ -113,21 +113,11 @@ test('a server that is read-only: 503, and taken when it is not', async () => {
 
 test('a server full of connections: 503, and taken when there is room', async () => {
   await closeDb();
-<<<<<<< HEAD
-=======
-  const [[{ most }]] = (await owner.query('SELECT @@max_connections AS most')) as unknown as [
-    { most: number }[],
-  ];
->>>>>>> origin/main
   await owner.query('SET GLOBAL max_connections = 10');
   const others = await Promise.all(Array.from({ length: 9 }, connect));
   await expectRefusedUntil(async () => {
     await Promise.all(others.map((other) => other.end()));
-<<<<<<< HEAD
     await owner.query('SET GLOBAL max_connections = DEFAULT');
-=======
-    await owner.query('SET GLOBAL max_connections = ?', [most]);
->>>>>>> origin/main
   });
 });
 
