@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { secondsSchema } from './levels';
+import { periodInstrumentsSchema } from './periodInstruments';
 import { limitVersionSchema } from './limits';
 
 const level = (description: string) =>
@@ -110,6 +111,7 @@ export const exceedanceDetailPartSchema = z.object({
     .enum(['assessed', 'octave-bands', 'no-neighbours', 'averaged-too-short', 'no-data'])
     .describe('Whether the mean spectrum could be examined for tones'),
   conditions: conditionsSchema,
+  instruments: periodInstrumentsSchema,
   neighbours: z.array(neighbourSchema).describe('Nearest first'),
   mails: z.array(mailSchema),
   revisions: z.array(revisionSchema).describe('Oldest first'),

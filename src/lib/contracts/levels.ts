@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { localDate } from './common';
+import { periodInstrumentsSchema } from './periodInstruments';
 import { registerRoute } from './registry';
 
 const level = (description: string) =>
@@ -81,7 +82,7 @@ export const statisticsSchema = z.object({
 });
 export type Statistics = z.output<typeof statisticsSchema>;
 
-const placementSpanSchema = z.object({
+export const placementSpanSchema = z.object({
   from: z.string(),
   to: z.string(),
   placement: z.enum(['free-field', 'facade']),
@@ -101,6 +102,7 @@ export type Incident = z.output<typeof incidentSchema>;
 /** What the interface answers of a period: its figures, and what made them. */
 export const statisticsAnswerSchema = statisticsSchema.extend({
   incident: incidentSchema.describe('Every other figure is as measured'),
+  instruments: periodInstrumentsSchema,
 });
 
 const periodSchema = z.object({

@@ -1,5 +1,7 @@
 import { z } from 'zod';
 import { localDate } from './common';
+import { placementSpanSchema } from './levels';
+import { periodInstrumentsSchema } from './periodInstruments';
 import { registerRoute } from './registry';
 
 /** A calendar month, `2026-03`. */
@@ -86,6 +88,8 @@ export const summaryStationSchema = z.object({
   mastHeightMetres: z.number().nullable(),
   bandFraction: z.union([z.literal(1), z.literal(3)]),
   intervalSeconds: z.number().int(),
+  placements: z.array(placementSpanSchema).describe('How the microphone stood; levels are as measured'),
+  instruments: periodInstrumentsSchema,
   figures: monthFiguresSchema,
   bands: z.array(summaryBandSchema),
   days: z.array(summaryDaySchema),

@@ -27,6 +27,15 @@ export function summaryStation(code: string, offsetDb = 0): SummaryStation {
     mastHeightMetres: 4,
     bandFraction: 3,
     intervalSeconds: 60,
+    placements: [
+      {
+        from: '2026-03-01T00:00:00Z',
+        to: '2026-04-01T00:00:00Z',
+        placement: 'free-field',
+        correction: 0,
+      },
+    ],
+    instruments: [],
     figures: {
       Lday: level(56.1),
       Levening: level(52.2),

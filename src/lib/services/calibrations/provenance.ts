@@ -1,11 +1,12 @@
-import { selectStaysAt } from '#db/queries/deployments';
 import { type StationRow } from '#db/queries/stations';
 import { type Doubt } from '#lib/contracts/calibrations';
+import { type PeriodInstrument } from '#lib/contracts/periodInstruments';
 import { doubtJson, doubtsOf } from './doubts';
+import { madeBy } from './madeBy';
 
 /** What measured a station's period, and what is doubtful about it. */
 export interface Provenance {
-  instruments: { id: number; serialNumber: string }[];
+  instruments: PeriodInstrument[];
   doubts: Doubt[];
 }
 
@@ -15,13 +16,12 @@ export async function provenanceOf(
   fromSec: number,
   toSec: number,
 ): Promise<Provenance> {
-  const [stays, doubts] = await Promise.all([
-    selectStaysAt(station.id, fromSec, toSec),
+  const [instruments, doubts] = await Promise.all([
+    madeBy(station, { fromSec, toSec }),
     doubtsOf(station.networkId),
   ]);
-  const byId = new Map(stays.map(({ instrumentId, serialNumber }) => [instrumentId, serialNumber]));
   return {
-    instruments: [...byId].map(([id, serialNumber]) => ({ id, serialNumber })),
+    instruments,
     doubts: doubts
       .filter(
         (one) =>

@@ -7,6 +7,7 @@ import { toTenths } from '#lib/acoustics/rounding';
 import type { ExceedanceMail, ExceedanceRevision } from '#lib/contracts/exceedanceDetail';
 import type { ExceedanceDetail } from '#lib/contracts/exceedances';
 import type { WindowStrip } from '#lib/contracts/windowStrip';
+import { madeBy } from '../calibrations/madeBy';
 import { periodFigures } from '../levels/figures';
 import { statisticsOf } from '../levels/statistics';
 import { readLimit } from '../limits/list';
@@ -69,10 +70,11 @@ async function windowOf(row: ExceedanceRow, station: StationRow, nowSec: number)
   const periodOfStation = await periodFigures({ station, timeline, nowSec, ...window });
   const statistics = statisticsOf(periodOfStation, { station });
   const fraction = periodOfStation.levels.sums.bandFraction ?? station.bandFraction;
-  const [spectrum, conditions, neighbours] = await Promise.all([
+  const [spectrum, conditions, neighbours, instruments] = await Promise.all([
     comparedSpectrum(station, window, { statistics, fraction }, timeline),
     windowConditions(station, window, settings),
     neighboursOf(station, window, timeline, nowSec),
+    madeBy(station, window),
   ]);
   const { seconds, coverage, meetsMinimum, sampleSeconds, LAeq, LAFmax, LAN } = statistics;
   return {
@@ -90,6 +92,7 @@ async function windowOf(row: ExceedanceRow, station: StationRow, nowSec: number)
     ...spectrum,
     conditions,
     neighbours,
+    instruments,
   };
 }
 

@@ -1,7 +1,7 @@
 import { type FigureRow } from '#lib/contracts/figureSheet';
-import { type Incident, type PlacementSpan } from '#lib/contracts/levels';
+import { type Incident } from '#lib/contracts/levels';
 import { formatDifferenceDb } from '#lib/format/levels';
-import { formatInstantShort } from '#lib/format/times';
+import { stretchWords } from '#lib/format/placements';
 import { type PeriodFigures } from '../levels/figures';
 import { figureRow } from './figureRow';
 
@@ -25,25 +25,11 @@ export function facadeRows(incident: Incident, figures: PeriodFigures, timeZone:
 
 /** How the microphone stood in the period: "at a façade", "free field until 3 Mar 10:00, then at a façade". */
 export function placementWords({ placements }: Incident, timeZone: string): string {
-  return stretches(placements, timeZone, ({ placement }) =>
+  return stretchWords(placements, timeZone, ({ placement }) =>
     placement === 'facade' ? 'at a façade' : 'free field',
   );
 }
 
 function correctionWords({ placements }: Incident, timeZone: string): string {
-  return stretches(placements, timeZone, ({ correction }) => `${formatDifferenceDb(correction)} dB`);
-}
-
-function stretches(
-  spans: readonly PlacementSpan[],
-  timeZone: string,
-  wordsOf: (span: PlacementSpan) => string,
-): string {
-  return spans
-    .map((span, at) =>
-      at === spans.length - 1
-        ? wordsOf(span)
-        : `${wordsOf(span)} until ${formatInstantShort(Date.parse(span.to) / 1000, timeZone)}`,
-    )
-    .join(', then ');
+  return stretchWords(placements, timeZone, ({ correction }) => `${formatDifferenceDb(correction)} dB`);
 }

@@ -1,6 +1,11 @@
-import { listDeployments } from '#db/queries/deployments';
-import { findInstrument, type InstrumentRow } from '#db/queries/instruments';
+import { listCalibrations } from '#db/queries/calibrations';
+import { type Connection } from '#db/queries/connection';
+import { selectStaysAt } from '#db/queries/deployments';
 import { CLASS_1_UNCERTAINTY_DB } from '#lib/acoustics/uncertainty';
+import { type PeriodInstrument } from '#lib/contracts/periodInstruments';
+import { instrumentsWords } from '#lib/format/instruments';
+import { madeBy } from '../calibrations/madeBy';
+import { periodDrift, type PeriodDrift } from '../calibrations/periodDrift';
 import { withoutSpans, type Span } from '../levels/spans';
 import { type SheetSource } from './source';
 
@@ -14,54 +19,54 @@ export interface PeriodInstruments {
   uncertaintyDb: number;
   /** What that rests on: "class 2", "class 1 assumed". */
   basis: string;
+  /** How far they may have been off, by their checks. */
+  drift: PeriodDrift;
 }
 
 /** Instruments that stood at the station in the period, in order of time. */
 export async function instrumentsOf({
   station,
   period,
+  timeZone,
   conn,
-}: Pick<SheetSource, 'station' | 'period' | 'conn'>): Promise<PeriodInstruments> {
-  const stays = (await listDeployments(station.networkId, conn))
-    .filter(({ stationId, withdrawnAt }) => stationId === station.id && withdrawnAt === null)
-    .map((stay) => ({ ...stay, fromSec: stay.startSec, toSec: stay.endSec ?? Infinity }))
-    .filter(({ fromSec, toSec }) => fromSec < period.toSec && toSec > period.fromSec)
-    .sort((a, b) => a.fromSec - b.fromSec);
-  const instruments: InstrumentRow[] = [];
-  for (const id of new Set(stays.map(({ instrumentId }) => instrumentId))) {
-    const instrument = await findInstrument(station.networkId, id, conn);
-    if (instrument) instruments.push(instrument);
-  }
-  return describe(instruments, isWhole(period, stays));
-}
-
-function describe(instruments: readonly InstrumentRow[], isWholePeriod: boolean): PeriodInstruments {
+}: Pick<SheetSource, 'station' | 'period' | 'timeZone' | 'conn'>): Promise<PeriodInstruments> {
+  const instruments = await madeBy(station, period, conn);
+  const words = instrumentsWords(instruments, timeZone);
+  const drift = await driftOf(station, period, conn);
   if (instruments.length === 0) {
     return {
-      words: 'none is on record for this period',
+      words,
       uncertaintyDb: CLASS_1_UNCERTAINTY_DB,
       basis: 'class 1 assumed, none is on record',
+      drift,
     };
   }
   const isClass2 = instruments.some((instrument) => instrument.class === 2);
-  const named = instruments.map(wordsOf).join('; then ');
   return {
-    words: isWholePeriod ? named : `${named}; for a part of the period none is on record`,
+    words: isWhole(period, instruments) ? words : `${words}; for a part of the period none is on record`,
     uncertaintyDb: isClass2 ? CLASS_2_UNCERTAINTY_DB : CLASS_1_UNCERTAINTY_DB,
     basis: isClass2 ? 'class 2' : 'class 1',
+    drift,
   };
 }
 
-function wordsOf({ serialNumber, description, microphone, ...instrument }: InstrumentRow): string {
-  const parts = [
-    description,
-    `class ${instrument.class}`,
-    `serial number ${serialNumber}`,
-    microphone && `microphone ${microphone}`,
-  ];
-  return parts.filter((part) => part !== '').join(', ');
+async function driftOf(
+  station: SheetSource['station'],
+  period: Span,
+  conn: Connection,
+): Promise<PeriodDrift> {
+  const [stays, checks] = await Promise.all([
+    selectStaysAt(station.id, period.fromSec, period.toSec, conn),
+    listCalibrations(station.networkId, null, conn),
+  ]);
+  const standing = checks.filter(({ withdrawnAt }) => withdrawnAt === null);
+  return periodDrift(period, stays, standing);
 }
 
-function isWhole(period: Span, stays: readonly Span[]): boolean {
-  return withoutSpans(period, stays).every(({ fromSec, toSec }) => fromSec >= toSec);
+function isWhole(period: Span, instruments: readonly PeriodInstrument[]): boolean {
+  const parts = instruments.map(({ from, to }) => ({
+    fromSec: Date.parse(from) / 1000,
+    toSec: Date.parse(to) / 1000,
+  }));
+  return withoutSpans(period, parts).every(({ fromSec, toSec }) => fromSec >= toSec);
 }

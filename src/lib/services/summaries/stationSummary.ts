@@ -11,7 +11,9 @@ import type {
   SummaryStation,
 } from '#lib/contracts/summaries';
 import { limitMetricText } from '#lib/format/limitMetric';
+import { madeBy } from '../calibrations/madeBy';
 import { dayFigures } from '../levels/days';
+import { placementsIn } from '../levels/incident';
 import { monthFigures, type MonthFigures } from '../levels/month';
 import type { MonthSpan } from './monthSpan';
 
@@ -35,6 +37,7 @@ export async function stationSummary(query: StationMonthQuery): Promise<SummaryS
     timeline,
     nowSec,
   });
+  const measured = { fromSec: span.fromSec, toSec: span.lastNightEndSec };
   return {
     code: station.code,
     name: station.name,
@@ -44,6 +47,8 @@ export async function stationSummary(query: StationMonthQuery): Promise<SummaryS
     mastHeightMetres: station.mastHeightM,
     bandFraction: station.bandFraction,
     intervalSeconds: station.intervalSec,
+    placements: await placementsIn(station, measured),
+    instruments: await madeBy(station, measured),
     figures: levelsOf(month),
     bands: month.statistics.bands,
     days: days.filter((day) => day.periods.day.seconds.expected > 0).map(dayOf),

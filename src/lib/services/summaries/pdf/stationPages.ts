@@ -3,6 +3,8 @@ import type { Content, TableCell } from 'pdfmake/interfaces';
 import type { Coverage, SummaryDay, SummaryExceedance, SummaryStation } from '#lib/contracts/summaries';
 import { formatCoverage, formatLevelDb } from '#lib/format/levels';
 import { formatInstant, formatInstantShort } from '#lib/format/times';
+import { instrumentsWords } from '#lib/format/instruments';
+import { placementsText } from '#lib/format/placements';
 import { bandCoverageText, markedLevelText } from '../figures';
 import { bandChartSvg } from './bandChart';
 import { BOOK_TABLE, cell, head, heading, SMALL_SIZE, SOFT_INK, typeset } from './typography';
@@ -21,7 +23,12 @@ export function stationPages(station: SummaryStation, timeZone: string): Content
       pageBreak: 'before',
       margin: [0, 0, 0, 2],
     },
-    { text: descriptionOf(station), color: SOFT_INK, margin: [0, 0, 0, 10] },
+    { text: descriptionOf(station, timeZone), color: SOFT_INK, margin: [0, 0, 0, 2] },
+    {
+      text: `Measured by: ${instrumentsWords(station.instruments, timeZone)}`,
+      color: SOFT_INK,
+      margin: [0, 0, 0, 10],
+    },
     figuresTable(station, timeZone),
     ...(chart === null
       ? []
@@ -66,18 +73,14 @@ export function stationPages(station: SummaryStation, timeZone: string): Content
   ];
 }
 
-function descriptionOf({
-  bandFraction,
-  intervalSeconds,
-  placement,
-  mastHeightMetres,
-  latitude,
-  longitude,
-}: SummaryStation): string {
+function descriptionOf(
+  { bandFraction, intervalSeconds, placements, mastHeightMetres, latitude, longitude }: SummaryStation,
+  timeZone: string,
+): string {
   const bands = bandFraction === 3 ? 'one-third-octave bands' : 'octave bands';
   const mast = mastHeightMetres === null ? '' : `, microphone at ${mastHeightMetres} m`;
   const where = `${latitude.toFixed(5)}, ${longitude.toFixed(5)}`;
-  return `${placement === 'facade' ? 'Façade' : 'Free field'}${mast} · ${bands}, every ${intervalSeconds} s · ${where}`;
+  return `${placementsText(placements, timeZone)}${mast} · ${bands}, every ${intervalSeconds} s · ${where}`;
 }
 
 function figuresTable({ figures }: SummaryStation, timeZone: string): Content {

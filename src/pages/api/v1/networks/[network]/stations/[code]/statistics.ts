@@ -3,6 +3,7 @@ import { ALL_ROLES } from '#lib/auth/roles';
 import { parseChoice, parsePeriod } from '#lib/http/parse';
 import { json } from '#lib/http/respond';
 import { route } from '#lib/http/route';
+import { madeBy } from '#lib/services/calibrations/madeBy';
 import { incidentOf } from '#lib/services/levels/incident';
 import { periodStatistics } from '#lib/services/levels/statistics';
 
@@ -13,5 +14,9 @@ export const GET = route(async (context) => {
   const validity = parseChoice(context.url, 'validity', ['rules', 'all']);
   const query = { station, ...period, validity };
   const statistics = await periodStatistics(query);
-  return json({ ...statistics, incident: await incidentOf(query, statistics.LAeq) });
+  const [incident, instruments] = await Promise.all([
+    incidentOf(query, statistics.LAeq),
+    madeBy(station, period),
+  ]);
+  return json({ ...statistics, incident, instruments });
 });
