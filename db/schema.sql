@@ -110,6 +110,7 @@ CREATE TABLE `calendar_feeds` (
   `created_at` datetime(3) NOT NULL,
   `revoked_at` datetime(3) DEFAULT NULL,
   `last_used_at` datetime(3) DEFAULT NULL,
+  `purpose` enum('calendar','exceedances') NOT NULL DEFAULT 'calendar' COMMENT 'what the address reads, and nothing else',
   PRIMARY KEY (`id`),
   UNIQUE KEY `calendar_feeds_digest` (`digest`),
   KEY `calendar_feeds_person` (`user_id`,`network_id`)
@@ -583,12 +584,16 @@ CREATE TABLE `limit_versions` (
   `version` smallint(5) unsigned NOT NULL,
   `effective_from` int(10) unsigned NOT NULL COMMENT 'epoch seconds; windows that begin from here on are judged by it',
   `name` varchar(160) NOT NULL,
-  `metric` enum('LAeq','LAFmax','bandLeq') NOT NULL,
-  `averaging` enum('15min','1h','day','evening','night','length','hours') NOT NULL COMMENT 'length: window_min; hours: from_min to to_min of each date, one window',
+  `metric` enum('LAeq','LAFmax','bandLeq','LAN','LAE','Lden','bandGroupLeq','LCeqLessLAeq','LAeqLessLA90','LAeqLessUsual','tonalShare','eventCount') NOT NULL,
+  `averaging` enum('15min','1h','day','evening','night','length','hours','den') NOT NULL COMMENT 'length: window_min; hours: from_min to to_min of each date, one window; den: all periods of a date',
   `window_min` smallint(5) unsigned DEFAULT NULL COMMENT 'of averaging length, minutes',
   `step_min` tinyint(3) unsigned DEFAULT NULL COMMENT 'rolling windows begin so often; null: fixed',
   `band_fraction` tinyint(3) unsigned DEFAULT NULL,
   `band_index` tinyint(4) DEFAULT NULL,
+  `percent` tinyint(3) unsigned DEFAULT NULL COMMENT 'of LAN',
+  `band_to_index` tinyint(4) DEFAULT NULL COMMENT 'of bandGroupLeq the last band',
+  `event_tenths` smallint(6) DEFAULT NULL COMMENT 'of eventCount: what an event is above',
+  `event_minimum_sec` smallint(5) unsigned DEFAULT NULL COMMENT 'of eventCount',
   `threshold_tenths` smallint(6) NOT NULL COMMENT 'exceeded when the level, rounded half up to tenths, is greater',
   `weekdays` tinyint(3) unsigned NOT NULL DEFAULT 127 COMMENT 'bit 0 Monday … bit 6 Sunday, of the local date on which the window begins',
   `holidays` enum('as-weekday','as-sunday','never','only') NOT NULL DEFAULT 'as-weekday' COMMENT 'what the dates of network_holidays are to it',
@@ -985,4 +990,40 @@ CREATE TABLE `weather_records` (
   `temperature_centi_c` smallint(6) DEFAULT NULL,
   `received_at` int(10) unsigned NOT NULL,
   PRIMARY KEY (`mast_id`,`starts_at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `webhook_deliveries` (
+  `id` bigint(20) unsigned NOT NULL AUTO_INCREMENT,
+  `webhook_id` int(10) unsigned NOT NULL,
+  `event_id` char(36) NOT NULL COMMENT 'the same at every attempt',
+  `event` varchar(40) NOT NULL,
+  `event_key` varchar(120) NOT NULL COMMENT 'one delivery a webhook and cause',
+  `body` mediumtext NOT NULL,
+  `state` enum('waiting','delivered','dead') NOT NULL DEFAULT 'waiting',
+  `attempts` smallint(5) unsigned NOT NULL DEFAULT 0,
+  `leased_until` datetime(3) DEFAULT NULL,
+  `lease_holder` varchar(80) DEFAULT NULL,
+  `last_outcome` varchar(300) DEFAULT NULL,
+  `created_at` datetime(3) NOT NULL,
+  `last_attempt_at` datetime(3) DEFAULT NULL,
+  PRIMARY KEY (`id`),
+  UNIQUE KEY `webhook_deliveries_once` (`webhook_id`,`event_key`),
+  KEY `webhook_deliveries_state` (`state`,`id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `webhooks` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `network_id` int(10) unsigned NOT NULL,
+  `url` varchar(500) NOT NULL,
+  `salt` binary(16) NOT NULL COMMENT 'the secret is derived from it and the settings key, and stored nowhere',
+  `created_by` char(36) NOT NULL,
+  `created_at` datetime(3) NOT NULL,
+  `ended_at` datetime(3) DEFAULT NULL,
+  `failures` int(10) unsigned NOT NULL DEFAULT 0 COMMENT 'attempts that failed one after another',
+  `failing_since` datetime(3) DEFAULT NULL,
+  `next_attempt_at` datetime(3) NOT NULL,
+  `disabled_at` datetime(3) DEFAULT NULL COMMENT 'failed too long, or was told to be gone',
+  `disabled_reason` varchar(300) DEFAULT NULL,
+  PRIMARY KEY (`id`),
+  KEY `webhooks_network` (`network_id`,`ended_at`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;

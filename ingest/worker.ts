@@ -12,6 +12,7 @@ import { runLoop, type LoopSettings } from './jobs/loop';
 import { remindOfCalibrations } from './jobs/remindCalibrations';
 import { shiftClocks } from './jobs/shiftClocks';
 import { sendMail } from './jobs/sendMail';
+import { sendWebhooks } from './jobs/sendWebhooks';
 import { runDueSlots, type SlotJob } from './jobs/slots';
 import { watchDrifts } from './jobs/watchDrifts';
 import { warnOfHeadings } from './jobs/warnEarly';
@@ -26,6 +27,7 @@ const LOOPS: LoopSettings[] = [
   { name: 'compose-alerts', everySec: 10, work: composeAlerts },
   { name: 'escalate', everySec: 20, work: escalateUnacknowledged },
   { name: 'send-mail', everySec: 2, work: sendMail },
+  { name: 'send-webhooks', everySec: 3, work: sendWebhooks },
   { name: 'warn-early', everySec: 60, work: warnOfHeadings },
   { name: 'watch-health', everySec: 60, work: watchHealth },
 ];

@@ -1,7 +1,10 @@
 import { createHash, randomBytes } from 'node:crypto';
 import { pool, type Connection } from './connection';
 
-/** An address by which a person's calendar reads a network's due dates. */
+/** What an address reads, and nothing else: a calendar of due dates, or the exceedances. */
+export type FeedPurpose = 'calendar' | 'exceedances';
+
+/** An address by which a person's program reads something of a network. */
 export interface CalendarFeedRow {
   id: number;
   createdAt: Date;
@@ -10,26 +13,27 @@ export interface CalendarFeedRow {
 
 /** Makes a token for a feed and answers it in the clear, the only time that it can be seen. */
 export async function insertCalendarFeed(
-  feed: { networkId: number; userId: string },
+  feed: { networkId: number; userId: string; purpose: FeedPurpose },
   conn: Connection,
 ): Promise<string> {
   const secret = `bc_${randomBytes(32).toString('base64url')}`;
   await conn('calendar_feeds').insert({
     network_id: feed.networkId,
     user_id: feed.userId,
+    purpose: feed.purpose,
     digest: digestOf(secret),
     created_at: new Date(),
   });
   return secret;
 }
 
-/** A person's feeds of a network that are in force, newest first. */
+/** A person's feeds of a network and purpose that are in force, newest first. */
 export async function listCalendarFeeds(
-  { networkId, userId }: { networkId: number; userId: string },
+  { networkId, userId, purpose }: { networkId: number; userId: string; purpose: FeedPurpose },
   conn: Connection = pool(),
 ): Promise<CalendarFeedRow[]> {
   return conn('calendar_feeds')
-    .where({ network_id: networkId, user_id: userId, revoked_at: null })
+    .where({ network_id: networkId, user_id: userId, purpose, revoked_at: null })
     .orderBy('id', 'desc')
     .select({ id: 'id', createdAt: 'created_at', lastUsedAt: 'last_used_at' });
 }
@@ -37,12 +41,13 @@ export async function listCalendarFeeds(
 /** Person whose feed a token in force names, and the network that it is for; notes its use, at most once a minute. */
 export async function findCalendarFeed(
   secret: string,
+  purpose: FeedPurpose,
   now: Date,
   conn: Connection = pool(),
 ): Promise<{ userId: string; networkId: number } | undefined> {
   const row: { id: number; userId: string; networkId: number; lastUsedAt: Date | null } | undefined =
     await conn('calendar_feeds')
-      .where({ digest: digestOf(secret), revoked_at: null })
+      .where({ digest: digestOf(secret), purpose, revoked_at: null })
       .first({ id: 'id', userId: 'user_id', networkId: 'network_id', lastUsedAt: 'last_used_at' });
   if (!row) return undefined;
   if (!row.lastUsedAt || now.getTime() - row.lastUsedAt.getTime() > 60_000) {
@@ -53,11 +58,11 @@ export async function findCalendarFeed(
 
 /** Ends a feed of that person; answers whether there was one to end. */
 export async function revokeCalendarFeed(
-  { networkId, userId, id }: { networkId: number; userId: string; id: number },
+  { networkId, userId, purpose, id }: { networkId: number; userId: string; purpose: FeedPurpose; id: number },
   conn: Connection,
 ): Promise<boolean> {
   const changed = await conn('calendar_feeds')
-    .where({ id, network_id: networkId, user_id: userId, revoked_at: null })
+    .where({ id, network_id: networkId, user_id: userId, purpose, revoked_at: null })
     .update({ revoked_at: new Date() });
   return changed > 0;
 }

@@ -5,6 +5,7 @@ import { deleteUploadsBefore } from '#db/queries/importUploads';
 import { deleteOffsetsBefore } from '#db/queries/clockOffsets';
 import { deleteJobRunsBefore } from '#db/queries/jobRuns';
 import { deleteExpiredSessions } from '#db/queries/sessions';
+import { deleteDeliveriesBefore } from '#db/queries/webhookDeliveries';
 
 const KEEP_JOB_RUNS_MS = 14 * 86_400_000;
 /** An upload in parts can be taken up again for as long after its last part. */
@@ -23,6 +24,7 @@ export async function housekeeping(now: Date): Promise<string> {
   const runs = await deleteJobRunsBefore(new Date(now.getTime() - KEEP_JOB_RUNS_MS));
   await deleteOffsetsBefore(Math.floor(now.getTime() / 1000) - KEEP_OFFSETS_SEC);
   await deleteItemsToldBefore(new Date(now.getTime() - KEEP_ALERTS_MS));
+  await deleteDeliveriesBefore(new Date(now.getTime() - KEEP_ALERTS_MS));
   await deleteTellingsBefore(new Date(now.getTime() - KEEP_ALERTS_MS));
   await deleteUploadsBefore(new Date(now.getTime() - KEEP_UPLOADS_MS));
   const files = await removeUnclaimedFiles(now);

@@ -1,7 +1,14 @@
-import { judgeDueWindows } from '#ingest/detect/judge';
+import { judgeDueWindows, type TellChanges } from '#ingest/detect/judge';
+import { queueWebhooks } from '#ingest/notify/queueWebhooks';
 import { tellExceedances } from '#ingest/notify/tellExceedances';
+
+/** People by e-mail, machines by webhook. */
+const tellEverybody: TellChanges = async (changes, now, transaction) => {
+  await tellExceedances(changes, now, transaction);
+  await queueWebhooks(changes, now, transaction);
+};
 
 /** Judges windows that have closed. @returns how many. */
 export function judgeLimits(now: Date): Promise<number> {
-  return judgeDueWindows(now, tellExceedances);
+  return judgeDueWindows(now, tellEverybody);
 }

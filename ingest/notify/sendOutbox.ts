@@ -1,6 +1,7 @@
 import type { Transporter } from 'nodemailer';
 import { pool } from '#db/queries/connection';
 import { leaseDueMail, markMailFailed, markMailSent, type LeasedMail } from '#db/queries/outbox';
+import { waitMs } from './backOff';
 
 /** What a message says and to whom, where the outbox row does not hold it itself; null: there is nothing to send any more. */
 export type MailResolver = (mail: LeasedMail) => Promise<MailBody | null>;
@@ -26,10 +27,6 @@ export interface SenderSettings {
 const ATTEMPT_SEC = 90;
 /** Longer than an attempt can take, so that no other sender takes a message that is on its way. */
 const LEASE_SEC = 150;
-const FIRST_WAIT_SEC = 60;
-const LONGEST_WAIT_SEC = 3600;
-/** Share of a wait by which it is longer or shorter, so that what failed together does not come back together. */
-const SCATTER = 0.2;
 const GIVE_UP_AFTER_SEC = 5 * 86_400;
 /** What was tried less often is not given up: it waited for a sender, or a person has it tried again. */
 const LEAST_ATTEMPTS = 8;
@@ -96,7 +93,5 @@ async function bodyOf(mail: LeasedMail, { resolvers }: SenderSettings): Promise<
 function nextAttemptAt({ attempts, createdAt }: LeasedMail, now: Date, random: () => number): Date | null {
   const isOld = now.getTime() - createdAt.getTime() > GIVE_UP_AFTER_SEC * 1000;
   if (isOld && attempts + 1 >= LEAST_ATTEMPTS) return null;
-  const waitSec = Math.min(LONGEST_WAIT_SEC, FIRST_WAIT_SEC * 2 ** Math.min(attempts, 10));
-  const scattered = waitSec * (1 + SCATTER * (2 * random() - 1));
-  return new Date(now.getTime() + scattered * 1000);
+  return new Date(now.getTime() + waitMs(attempts, random));
 }

@@ -83,12 +83,13 @@ function excessTenthsOf({ kind, verdict }: TellingChange): number | null {
 
 const secOf = (date: Date | null) => date && date.getTime() / 1000;
 
-function isWorthTelling({ kind, verdict, detectedAt }: TellingChange, now: Date): boolean {
+/** Whether a change is still news: its window ended within two days, or it was told then. */
+export function isWorthTelling({ kind, verdict, detectedAt }: TellingChange, now: Date): boolean {
   const toldAtSec = (kind === 'found' ? now : detectedAt).getTime() / 1000;
   return toldAtSec - verdict.endSec <= TELL_WITHIN_SEC;
 }
 
 /** Names a revision of an exceedance, so that each is told once. */
-function keyOf({ exceedanceId, revision, detectedAt }: TellingChange): string {
+export function keyOf({ exceedanceId, revision, detectedAt }: TellingChange): string {
   return `${exceedanceId}/${revision}/${detectedAt.getTime()}`;
 }

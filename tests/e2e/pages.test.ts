@@ -22,6 +22,9 @@ const ACCESS: Record<string, Access> = {
   '/admin/networks/new': 'administrator',
   '/admin/people': 'administrator',
   '/admin/people/new': 'administrator',
+  '/n/[network]/weather': 'members',
+  '/n/[network]/weather/[mast]': 'members',
+  '/n/[network]/weather/new': 'operator',
   '/n/[network]/activities': 'members',
   '/n/[network]/activities/[id]': 'members',
   '/n/[network]/activities/compare': 'members',
@@ -29,7 +32,9 @@ const ACCESS: Record<string, Access> = {
   '/design': 'administrator',
   '/n/[network]/alerts': 'members',
   '/n/[network]/alerts/escalation': 'operator',
+  '/n/[network]/alerts/feed': 'members',
   '/n/[network]/alerts/mails': 'operator',
+  '/n/[network]/alerts/webhooks': 'operator',
   '/n/[network]/complaints': 'members',
   '/n/[network]/complaints/[reference]': 'members',
   '/n/[network]/complaints/form': 'liaison',
@@ -98,7 +103,11 @@ const APART = new Set([
 ]);
 
 /** Everybody's own: what to be sent, a calendar to subscribe to. */
-const OWN_FORMS = new Set(['/n/[network]/alerts', '/n/[network]/instruments/settings']);
+const OWN_FORMS = new Set([
+  '/n/[network]/alerts',
+  '/n/[network]/alerts/feed',
+  '/n/[network]/instruments/settings',
+]);
 const FORM = 'application/x-www-form-urlencoded';
 const ROLES = ['operator', 'liaison', 'regulator', 'admin'] as const;
 let subjects: Subjects;

@@ -33,6 +33,8 @@ export interface Config {
     password: string | null;
     from: string;
   };
+  /** Whether webhooks may lead to this machine itself, by http too; else https to public addresses only. */
+  webhooksMayLoopBack: boolean;
   mapStyleUrls: { light: string; dark: string };
   /** Local stand-ins for the hosted mail and tile services. */
   standins: { areStarted: boolean; mailWebPort: number; tilesPort: number };
@@ -115,6 +117,7 @@ export function parseConfig(environment: Record<string, string | undefined>): Co
       email: settings.BITTERN_ADMIN_EMAIL ?? null,
       password: settings.BITTERN_ADMIN_PASSWORD ?? null,
     },
+    webhooksMayLoopBack: settings.BITTERN_WEBHOOKS_LOOPBACK,
     personalDataKey: Buffer.from(settings.BITTERN_PERSONAL_DATA_KEY, 'hex'),
     session: { idleHours: settings.BITTERN_SESSION_IDLE_HOURS, maxDays: settings.BITTERN_SESSION_MAX_DAYS },
   };

@@ -40,6 +40,8 @@ export const settingsSchema = z.object({
   BITTERN_SMTP_PASSWORD: z.string().optional(),
   BITTERN_MAIL_FROM: z.string().default('Bittern <bittern@merrow.example>'),
 
+  BITTERN_WEBHOOKS_LOOPBACK: isTrue('false'),
+
   BITTERN_STANDINS: isTrue('true'),
   BITTERN_MAIL_WEB_PORT: port(4326),
   BITTERN_TILES_PORT: port(4331),

@@ -3,7 +3,7 @@ import { inTransaction } from '#db/queries/connection';
 import { findLimit } from '#db/queries/limits';
 import { settingsAt } from '#db/queries/networks';
 import { findStationById } from '#db/queries/stations';
-import type { TellingChange } from '#ingest/detect/judge';
+import type { TellChanges, TellingChange } from '#ingest/detect/judge';
 import { tellExceedances } from '#ingest/notify/tellExceedances';
 import { makeExceedance } from '../exceedances/support';
 
@@ -29,12 +29,12 @@ export async function setRecipients(versionId: number, recipients: string[]): Pr
 }
 
 /** Finds an exceedance and tells of it, as the judge does. Answers its number. */
-export async function findAndTell(found: Found): Promise<number> {
+export async function findAndTell(found: Found, tell: TellChanges = tellExceedances): Promise<number> {
   const startSec = Math.floor(found.now.getTime() / 1000) - 3660;
   const exceedanceId = await makeExceedance({ ...found, startSec });
   await db()('exceedances').where({ id: exceedanceId }).update({ detected_at: found.now });
   const change = await changeOf(found, exceedanceId, startSec);
-  await inTransaction((transaction) => tellExceedances([change], found.now, transaction));
+  await inTransaction((transaction) => tell([change], found.now, transaction));
   return exceedanceId;
 }
 

@@ -4,7 +4,7 @@ import { join } from 'node:path';
 import { afterAll, beforeAll, describe, expect, test } from 'vitest';
 import { db } from '#db/client';
 import { remindCalibrations } from '#ingest/health/remindCalibrations';
-import { makeCalendarFeed } from '#lib/services/calibrations/feeds';
+import { makeFeed } from '#lib/services/people/feeds';
 import { callApi } from '../support/callApi';
 import { useFreshSchema } from '../support/freshSchema';
 import { makeNetwork, makePerson, makeStation } from '../support/people';
@@ -203,7 +203,7 @@ describe('due dates', () => {
 
   test('the calendar is read by its own token, for as long as the person may see the network', async () => {
     const person = await makePerson(networkId, ['liaison']);
-    const token = await makeCalendarFeed({ networkId, userId: person.userId });
+    const token = await makeFeed({ networkId, userId: person.userId }, 'calendar');
     const path = `${network}/calibrations.ics`;
     const calendar = await callApi('GET', `${path}?token=${token}`);
     expect(calendar.status).toBe(200);

@@ -49,6 +49,8 @@ export const FINDABLE_PAGES: readonly FindablePage[] = [
   { label: 'Instruments', terms: 'meters microphones calibration deployments', path: 'instruments' },
   { label: 'Add an instrument', terms: 'new meter', path: 'instruments/new', roles: OPERATOR },
   { label: 'Calibration settings', terms: 'instruments checks due', path: 'instruments/settings' },
+  { label: 'Weather', terms: 'wind masts rain direction anemometer', path: 'weather' },
+  { label: 'Add a mast', terms: 'new weather wind anemometer', path: 'weather/new', roles: OPERATOR },
   { label: 'Imports', terms: 'upload file backfill outage', path: 'imports' },
   { label: 'Bring a file', terms: 'import upload new backfill', path: 'imports/new', roles: OPERATOR },
   { label: 'Quarantine', terms: 'refused records conflict', path: 'quarantine' },

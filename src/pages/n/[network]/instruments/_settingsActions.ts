@@ -2,8 +2,8 @@ import { calibrationSettingsSchema } from '#lib/contracts/calibrations';
 import { typedNumber, type FormValues } from '#lib/http/forms';
 import { idOf } from '#lib/http/outcome';
 import { badRequest, notAllowed, notFound } from '#lib/http/problem';
-import { endCalendarFeed, makeCalendarFeed } from '#lib/services/calibrations/feeds';
 import { changeCalibrationSettings } from '#lib/services/calibrations/settings';
+import { endFeed, makeFeed } from '#lib/services/people/feeds';
 
 interface Owner {
   networkId: number;
@@ -28,9 +28,9 @@ export async function settingsFromForm(
       return null;
     }
     case 'make-feed':
-      return makeCalendarFeed(owner);
+      return makeFeed(owner, 'calendar');
     case 'end-feed':
-      if (await endCalendarFeed(owner, idOf(text['feed']))) return null;
+      if (await endFeed(owner, 'calendar', idOf(text['feed']))) return null;
       throw notFound('This address has been ended already.');
     default:
       throw badRequest('The form did not say what to do. Nothing was changed.');

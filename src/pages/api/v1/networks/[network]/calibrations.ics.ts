@@ -1,4 +1,4 @@
-import { requireCalendarFeed } from '#lib/auth/calendarFeed';
+import { requireFeed } from '#lib/auth/feed';
 import { requireNetwork } from '#lib/auth/guards';
 import { ALL_ROLES } from '#lib/auth/roles';
 import { config } from '#lib/config/index';
@@ -10,7 +10,7 @@ import { dueChecks } from '#lib/services/calibrations/due';
 export const GET = route(async (context) => {
   const { network, settings } = context.locals.user
     ? await requireNetwork(context, context.params.network, ALL_ROLES)
-    : await requireCalendarFeed(context.url, context.params.network);
+    : await requireFeed(context.url, context.params.network, 'calendar');
   const now = new Date();
   const due = await dueChecks(network.id, settings.timeZone, Math.floor(now.getTime() / 1000));
   const { origin } = config();
