@@ -1,6 +1,7 @@
 import { inTransaction } from '#db/queries/connection';
 import { bandByNominalHz } from '#lib/acoustics/bands';
 import { insertLimit } from '#db/queries/limits';
+import { changeEscalation } from '#lib/services/alerts/escalation';
 import { addExclusion } from '#lib/services/exclusions/add';
 import { excludeAtStations } from '#lib/services/exclusions/bulk';
 import { withdraw } from '#lib/services/exclusions/withdraw';
@@ -10,7 +11,7 @@ import type { DemoStation } from './stations';
 
 const HOUR_SEC = 3600;
 
-/** The demo's limits, in force since its history begins. */
+/** The demo's limits, in force since its history begins, and who is told when nobody acknowledges what passes them. */
 export async function seedLimits(
   networkId: number,
   operatorId: string,
@@ -45,6 +46,8 @@ export async function seedLimits(
       ),
     );
   }
+  const who = { networkId, userId: operatorId };
+  must(await changeEscalation(who, [{ afterMinutes: 60, people: [operatorId] }]));
 }
 
 function minutesOf(clock: string): number {
