@@ -6,6 +6,7 @@ import { runMonitor } from '#ingest/monitor/monitor';
 import { makeRecorder } from '#ingest/monitor/soundscape/record';
 import { SOUNDSCAPES } from '#ingest/monitor/soundscape/places';
 import { STATION_SITES } from '#ops/standins/tiles/sites';
+import { runMast } from './mast';
 import { readTokens, setupOf } from './stations';
 
 /** A monitor that was off fills in at most this much. */
@@ -17,8 +18,10 @@ for (const signal of ['SIGTERM', 'SIGINT'] as const) process.on(signal, () => st
 
 const { host, port, dataDir } = config();
 const tokens = readTokens(dataDir);
-await Promise.all(
-  STATION_SITES.map((site) => {
+const mast = runMast(`http://${host}:${port}`, dataDir, stop.signal);
+await Promise.all([
+  mast,
+  ...STATION_SITES.map((site) => {
     const soundscape = SOUNDSCAPES.find(({ code }) => code === site.code);
     const token = tokens[site.code];
     if (!soundscape || !token) throw new Error(`${site.code} has no soundscape or token.`);
@@ -46,4 +49,4 @@ await Promise.all(
       if (!stop.signal.aborted) throw error;
     });
   }),
-);
+]);

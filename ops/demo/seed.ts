@@ -9,6 +9,7 @@ import { seedComplaints } from './complaints';
 import { seedExclusions, seedLimits } from './decisions';
 import { seedHistory } from './history';
 import { seedInstruments } from './instruments';
+import { seedMast } from './mast';
 import { seedPeople } from './people';
 import { seedReportForm } from './reportForm';
 import { seedQuarantine } from './quarantine';
@@ -25,6 +26,8 @@ export async function seedDemo(settings: Config, tell: (line: string) => void): 
   const { networkId, people } = await seedPeople(password ?? DEFAULT_DEMO_PASSWORD);
   const operatorId = idOf(people, 'operator@merrow.example');
   const stations = await seedStations(networkId, operatorId, settings.dataDir, days);
+  const span = { fromSec: nowSec - days * DAY_SEC, nowSec };
+  tell(`${await seedMast(networkId, operatorId, settings.dataDir, span)} records of the weather mast`);
   await seedLimits(networkId, operatorId, stations, nowSec - days * DAY_SEC);
 
   let intervals = 0;

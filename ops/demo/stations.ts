@@ -10,11 +10,15 @@ import { STATION_SITES, type StationSite } from '#ops/standins/tiles/sites';
 
 const DAY_MS = 86_400_000;
 
+/** Stations without a weather sensor: they go by the port's mast. */
+export const STATIONS_WITHOUT_SENSOR: readonly string[] = ['MER-02', 'MER-03'];
+
 /** What a station's monitor measures. */
-export function setupOf({ bandFraction, intervalSec }: StationSite): MonitorSetup {
+export function setupOf({ code, bandFraction, intervalSec }: StationSite): MonitorSetup {
   const range =
     bandFraction === 3 ? { firstBandHz: 20, lastBandHz: 20_000 } : { firstBandHz: 31.5, lastBandHz: 16_000 };
-  return { bandFraction, intervalSec, ...range };
+  const hasWeatherSensor = !STATIONS_WITHOUT_SENSOR.includes(code);
+  return { bandFraction, intervalSec, hasWeatherSensor, ...range };
 }
 
 export interface DemoStation {

@@ -17,8 +17,8 @@ export interface IntervalRecord {
   LCpeak: number;
   levels: number[];
   flags: string[];
-  windSpeed: number;
-  windDirection: number;
+  windSpeed: number | null;
+  windDirection: number | null;
   temperature: number;
   battery: number;
 }
@@ -28,6 +28,8 @@ export interface MonitorSetup {
   intervalSec: number;
   firstBandHz: number;
   lastBandHz: number;
+  /** False: no wind and no rain is told; left out: it has one. */
+  hasWeatherSensor?: boolean;
 }
 
 const THIRDS = bandsOf(3);
@@ -38,6 +40,7 @@ export function makeRecorder(
   setup: MonitorSetup,
 ): (startSec: number) => IntervalRecord {
   const synthesise = makeSynthesiser(soundscape);
+  const { hasWeatherSensor = true } = setup;
   const bands = bandRange(setup.bandFraction, setup.firstBandHz, setup.lastBandHz);
   return (startSec) => {
     const heard = synthesise(startSec, setup.intervalSec);
@@ -52,9 +55,12 @@ export function makeRecorder(
       LCeq: oneDecimal(isCheck ? 94 : heard.lceqDb),
       LCpeak: oneDecimal(isCheck ? 97.1 : heard.lcpeakDb),
       levels: bands.map((band) => oneDecimal(isCheck && band.nominalHz === 1000 ? 94 : levelOf(band, heard))),
-      flags: [...(isCheck ? ['calibration'] : []), ...(weather.isRaining ? ['rain'] : [])],
-      windSpeed: oneDecimal(weather.windSpeedMs),
-      windDirection: Math.floor(weather.windDirectionDeg),
+      flags: [
+        ...(isCheck ? ['calibration'] : []),
+        ...(hasWeatherSensor && weather.isRaining ? ['rain'] : []),
+      ],
+      windSpeed: hasWeatherSensor ? oneDecimal(weather.windSpeedMs) : null,
+      windDirection: hasWeatherSensor ? Math.floor(weather.windDirectionDeg) : null,
       temperature: oneDecimal(weather.temperatureC),
       battery: oneDecimal(
         12.3 + 0.5 * Math.max(0, Math.sin(((localClockAt(startSec).hour - 7) / 12) * Math.PI)),

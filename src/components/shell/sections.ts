@@ -4,6 +4,7 @@ export type Section =
   | 'stations'
   | 'health'
   | 'instruments'
+  | 'weather'
   | 'plants'
   | 'activities'
   | 'exceedances'
@@ -33,6 +34,7 @@ export const SECTION_LINKS: readonly SectionLink[] = [
   { section: 'limits', label: 'Limits', keepsPeriod: false },
   { section: 'alerts', label: 'Alerts', keepsPeriod: false },
   { section: 'instruments', label: 'Instruments', keepsPeriod: false },
+  { section: 'weather', label: 'Weather', keepsPeriod: true },
   { section: 'plants', label: 'Plant', keepsPeriod: false },
   { section: 'activities', label: 'Operations', keepsPeriod: true },
   { section: 'imports', label: 'Imports', keepsPeriod: false },

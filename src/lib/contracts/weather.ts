@@ -1,6 +1,7 @@
 import { z } from 'zod';
+import type { MeanWind } from '../acoustics/mastWeather';
 import { instant, parseInstant, shortText } from './common';
-import { BOUNDS, receiptSchema } from './intervals';
+import { BOUNDS, receiptSchema, type Receipt } from './intervals';
 import { registerRoute } from './registry';
 
 /** Records in one post or one file. */
@@ -108,6 +109,23 @@ export const mastSchema = mastFactsSchema.extend({
   assignments: z.array(assignmentSchema).describe('Latest first'),
 });
 export type Mast = z.output<typeof mastSchema>;
+
+/** What became of a file's lines; refused ones by their line, its heading being 1. */
+export interface WeatherFileReport extends Pick<Receipt, 'accepted' | 'known'> {
+  /** Nothing was stored. */
+  isTrial: boolean;
+  refused: { line: number; message: string }[];
+}
+
+/** A mast's wind of a stretch of time: half-open, epoch seconds. */
+export interface WindStep {
+  fromSec: number;
+  toSec: number;
+  /** Null: nothing was recorded. */
+  wind: MeanWind | null;
+  /** Null: no gauge told. */
+  rainMm: number | null;
+}
 
 const base = '/api/v1/networks/{network}/masts';
 const answer = (description: string, schema: z.ZodType) => ({

@@ -41,6 +41,7 @@ export async function someSubjects(): Promise<Subjects> {
     'plants/[id]': await plantOne(api),
     'activities/[id]': await activityOne(api),
     'instruments/[id]': await firstOf('instruments', 'id'),
+    '[mast]': await firstOf('masts', 'code'),
     '[key]': await reportOne(),
     '[reference]': await firstOf('complaints', 'reference'),
     '[month]': await firstOf('summaries', 'month'),

@@ -1,6 +1,9 @@
 import { gzipSync } from 'node:zlib';
 import { beforeAll, describe, expect, test } from 'vitest';
 import { db } from '#db/client';
+import { takeWeatherFile } from '#lib/services/weather/file';
+import { networkWind } from '#lib/services/weather/networkWind';
+import { stationWindWords } from '#lib/services/weather/periodWind';
 import { callApi } from '../support/callApi';
 import { useFreshSchema } from '../support/freshSchema';
 import { makeNetwork, makePerson, makeStation } from '../support/people';
@@ -94,6 +97,27 @@ describe('people', () => {
     expect(await file.text()).toBe(
       'start,seconds,windSpeed,windDirection,rain,temperature\r\n2026-03-01T00:01:00Z,60,3.2,240,,\r\n',
     );
+  });
+
+  test('wind for maps and figures, with its source and age; a file is tried before it is taken', async () => {
+    const { id: networkId } = await db()('networks').where({ slug: 'windy' }).first('id');
+    const atSec = Date.parse('2026-03-01T00:07:00Z') / 1000;
+    expect(await networkWind(networkId, atSec)).toMatchObject([
+      { source: 'mast', code: 'WI-W1', speedMs: 3.2, fromDeg: 240, ageSec: 120 },
+    ]);
+    expect(await networkWind(networkId, atSec + 7200)).toEqual([]);
+    const period = { fromSec: atSec - 420, toSec: atSec - 300 };
+    const words = await stationWindWords(networkId, 'WI-1', period);
+    expect(words).toBe(
+      'mean 3.2 m/s from WSW (240°), highest 3.2 m/s, by mast WI-W1 (Pier head), 2 min of 2 min',
+    );
+    const { id, maximum_age_sec: maximumAgeSec } = await db()('masts').first('id', 'maximum_age_sec');
+    const text = 'start;seconds;windSpeed\n2026-03-01T01:00:00Z;600;4,5\n2026-03-01T01:05:00Z;600;4\nx;1;1';
+    const take = (isTrial: boolean) => takeWeatherFile({ id, maximumAgeSec }, text, isTrial);
+    const told = { accepted: 1, known: 0, refused: [{ line: 3 }, { line: 4 }] };
+    expect(await take(true)).toMatchObject({ kind: 'done', value: told });
+    expect(await take(false)).toMatchObject({ kind: 'done', value: told });
+    expect(await take(true)).toMatchObject({ value: { accepted: 0, known: 1 } });
   });
 
   test('a retired mast’s posts are refused', async () => {

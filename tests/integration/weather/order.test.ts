@@ -100,7 +100,7 @@ test('any order of weather, intervals, assignment and recomputation gives identi
       await aggregateAll(nothing);
       expect(await rowsOf(stationId)).toEqual(expected);
     }),
-    { numRuns: 10 },
+    { numRuns: 6 },
   );
 });
 

@@ -13,13 +13,15 @@ export interface HeadFacts {
   intervals: IntervalFacts | null;
   instruments: PeriodInstruments;
   incident: Incident;
+  /** Wind of the period by its sources, in words; null where it was not read. */
+  wind: string | null;
 }
 
 /** What the figures are of, fact by fact. */
 export function headOf(
   source: SheetSource,
   figures: PeriodFigures,
-  { intervals, instruments, incident }: HeadFacts,
+  { intervals, instruments, incident, wind }: HeadFacts,
 ): Fact[] {
   const { station, period, timeZone, nowSec } = source;
   const { seconds, coverage, minimumCoverage, meetsMinimum } = figures;
@@ -50,6 +52,7 @@ export function headOf(
     },
     { name: 'Intervals', words: intervalWords(figures, intervals) },
     { name: 'Left out', words: leftOutWords(figures, intervals) },
+    ...(wind === null ? [] : [{ name: 'Wind', words: wind }]),
   ];
 }
 

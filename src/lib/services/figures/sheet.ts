@@ -8,6 +8,7 @@ import { periodFigures } from '../levels/figures';
 import { incidentOf } from '../levels/incident';
 import { QuarterSeries } from '../levels/quarterSeries';
 import { type Span } from '../levels/spans';
+import { periodWind, periodWindWords } from '../weather/periodWind';
 import { statisticsOf } from '../levels/statistics';
 import { addDays } from '#lib/time/zone';
 import { assessmentRows } from './assessmentRows';
@@ -63,6 +64,7 @@ export async function figureSheet(query: SheetQuery, conn: Connection = pool()):
   const hours = await measuredHours(source);
   const instruments = await instrumentsOf(source);
   const incident = await incidentOf({ station, ...period, timeline, nowSec }, statistics.LAeq, conn);
+  const wind = pass ? periodWindWords(await periodWind(station.id, period, conn)) : null;
   const dates = await dateRows(source);
   const notRead = pass ? null : notReadWords(source);
   return {
@@ -77,7 +79,7 @@ export async function figureSheet(query: SheetQuery, conn: Connection = pool()):
     meetsMinimum: figures.meetsMinimum,
     minimumCoverage: figures.minimumCoverage,
     sampleSeconds: statistics.sampleSeconds,
-    head: headOf(source, figures, { intervals: pass?.facts ?? null, instruments, incident }),
+    head: headOf(source, figures, { intervals: pass?.facts ?? null, instruments, incident, wind }),
     intervals: pass?.facts ?? null,
     intervalsMissing: notRead,
     exclusions: await standingExclusions(source),

@@ -1,8 +1,7 @@
 import { parse } from 'csv-parse/sync';
 import { selectWeather } from '#db/queries/weatherRecords';
 import { formatInstantUtc } from '#lib/contracts/common';
-import { type Receipt } from '#lib/contracts/intervals';
-import { MOST_WEATHER_RECORDS } from '#lib/contracts/weather';
+import { MOST_WEATHER_RECORDS, type WeatherFileReport } from '#lib/contracts/weather';
 import { csvText } from '#lib/format/csvText';
 import { type Span } from '../levels/spans';
 import { done, invalid, type Outcome } from '../outcome';
@@ -10,12 +9,6 @@ import { receiveWeather, type ReceivingMast } from './receive';
 
 const COLUMNS = ['start', 'seconds', 'windSpeed', 'windDirection', 'rain', 'temperature'] as const;
 const NEEDED = COLUMNS.slice(0, 3);
-
-/** What became of a file's lines; refused ones by their line, its heading being 1. */
-export interface WeatherFileReport extends Pick<Receipt, 'accepted' | 'known'> {
-  isTrial: boolean;
-  refused: { line: number; message: string }[];
-}
 
 /**
  * Takes a CSV file of a mast's records: columns start, seconds, windSpeed and perhaps windDirection, rain, temperature, in any order,

@@ -102,14 +102,15 @@ function readAll(
 
 function storedOf(record: ReturnType<typeof weatherRecordSchema.parse>): StoredWeather {
   const { start, seconds, windSpeed, windDirection, rain, temperature } = record;
-  const hundredths = (value: number) => Math.round(value * 100) / 100;
+  const hundredths = (value: number | null | undefined) =>
+    typeof value === 'number' ? Math.round(value * 100) / 100 : null;
   return {
     startSec: parseInstant(start) ?? 0,
     durationSec: seconds,
-    windSpeedMs: hundredths(windSpeed),
-    windDirectionDeg: windDirection == null ? null : Math.round(windDirection) % 360,
-    rainMm: rain == null ? null : hundredths(rain),
-    temperatureC: temperature == null ? null : hundredths(temperature),
+    windSpeedMs: Math.round(windSpeed * 100) / 100,
+    windDirectionDeg: typeof windDirection === 'number' ? Math.round(windDirection) % 360 : null,
+    rainMm: hundredths(rain),
+    temperatureC: hundredths(temperature),
   };
 }
 
