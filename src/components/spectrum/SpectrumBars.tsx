@@ -7,6 +7,8 @@ export interface SpectrumBar {
   leqDb: number | null;
   /** Drawn as a stepped line above the bars. */
   l10Db?: number | null;
+  /** What is usual: drawn as a dash of estuary blue across the bar. */
+  usualDb?: number | null;
   /** Stands out: drawn in rust. */
   isStandingOut?: boolean;
   /** Marked by a selection: underlined. */
@@ -28,7 +30,9 @@ const isLabelled = (band: Band) => band.index % 6 === 0;
 
 /** A spectrum as bars on the nominal frequencies, unweighted levels. */
 export function SpectrumBars({ bars, summary, heightPx = 124 }: SpectrumBarsProps) {
-  const range = barRange(bars.flatMap(({ leqDb, l10Db }) => [leqDb, l10Db ?? null]));
+  const range = barRange(
+    bars.flatMap(({ leqDb, l10Db, usualDb }) => [leqDb, l10Db ?? null, usualDb ?? null]),
+  );
   const plotHeight = heightPx - FOOT_PX;
   const step = (WIDTH - SCALE_PX) / Math.max(1, bars.length);
   const yOf = (levelDb: number) => plotHeight * (1 - barShare(range, levelDb));
@@ -47,7 +51,7 @@ export function SpectrumBars({ bars, summary, heightPx = 124 }: SpectrumBarsProp
         </text>
       ))}
       <path d={`M${SCALE_PX} ${plotHeight + 0.5}H${WIDTH}`} className="stroke-line" />
-      {bars.map(({ band, leqDb, isStandingOut, isMarked }, at) => (
+      {bars.map(({ band, leqDb, usualDb, isStandingOut, isMarked }, at) => (
         <g key={band.index}>
           {leqDb !== null && (
             <rect
@@ -56,6 +60,13 @@ export function SpectrumBars({ bars, summary, heightPx = 124 }: SpectrumBarsProp
               y={yOf(leqDb)}
               height={Math.max(0.5, plotHeight - yOf(leqDb))}
               className={isStandingOut ? 'fill-rust' : 'fill-ink-soft/55'}
+            />
+          )}
+          {usualDb !== null && usualDb !== undefined && (
+            <path
+              d={`M${left(at)} ${yOf(usualDb).toFixed(1)}h${step}`}
+              className="stroke-estuary"
+              strokeWidth="2.2"
             />
           )}
           {isMarked && (

@@ -3,6 +3,8 @@ import { registerRoute } from './registry';
 
 const level = (description: string) => z.number().nullable().describe(`${description}, dB`);
 
+const bandMedians = z.array(z.object({ nominalHz: z.number(), median: z.number() }));
+
 /** What is usual at a station for a clock window. */
 export const usualSchema = z.object({
   from: z.string(),
@@ -14,6 +16,10 @@ export const usualSchema = z.object({
     low: level('10 % point'),
     high: level('90 % point'),
   }),
+  bands: bandMedians.describe(
+    'Median over the same weeks of the Leq of each band that had one, dB unweighted; thirds, or octaves of an octave station',
+  ),
+  octaves: bandMedians.describe('The same of octaves'),
 });
 export type UsualLevels = z.output<typeof usualSchema>;
 

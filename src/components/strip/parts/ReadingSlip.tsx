@@ -73,7 +73,7 @@ export const ReadingSlip = memo(function ReadingSlip({
         referenceBandsDb={reference && bands && markedBands(reference, { ...selection, bands }).leqDb}
         usual={usual}
       />
-      {figures && <SlipSpectrum figures={figures} selection={selection} fraction={fraction} />}
+      {figures && <SlipSpectrum figures={figures} selection={selection} fraction={fraction} usual={usual} />}
       <SlipActions selection={selection} isMarked={isMarked} context={context} />
     </aside>
   );

@@ -1,7 +1,8 @@
 import { bandLabel, type BandFraction } from '#lib/acoustics/bands';
 import { standingOut } from '#lib/acoustics/standingOut';
-import { formatLevelDb } from '#lib/format/levels';
+import { formatDifferenceDb, formatLevelDb } from '#lib/format/levels';
 import { isTone, standingOutWords } from '#lib/format/standingOut';
+import type { UsualLevels } from '#lib/contracts/usual';
 import { notAssessableWords, toneWords } from '#lib/format/tones';
 import { SpectrumBars } from '../../spectrum/SpectrumBars';
 import { selectedBands, type Selection } from '../model/selection';
@@ -11,13 +12,15 @@ interface SlipSpectrumProps {
   figures: SlipFigures;
   selection: Selection;
   fraction: BandFraction;
+  /** Null where it is not known, or not asked. */
+  usual: UsualLevels | null;
 }
 
 /** Ranges that are told in words beside the tones. */
 const MOST_RANGES = 2;
 
 /** The mean spectrum of the selection with the bands that stand out of it, and what can be said about them. */
-export function SlipSpectrum({ figures, selection, fraction }: SlipSpectrumProps) {
+export function SlipSpectrum({ figures, selection, fraction, usual }: SlipSpectrumProps) {
   const bands = figures.bands.map(({ band }) => band);
   const levelsDb = figures.bands.map(({ leqDb }) => leqDb);
   if (levelsDb.every((level) => level === null)) return null;
@@ -28,18 +31,26 @@ export function SlipSpectrum({ figures, selection, fraction }: SlipSpectrumProps
   const isStandingOut = (index: number) =>
     held.some(({ lowerIndex, upperIndex }) => lowerIndex <= index && index <= upperIndex);
   const marked = new Set(selection.bands ? selectedBands(selection, bands).map(({ index }) => index) : []);
+  const usualBands = (fraction === 1 ? usual?.octaves : usual?.bands) ?? [];
+  const usualOf = new Map(usualBands.map(({ nominalHz, median }) => [nominalHz, median]));
   return (
     <div className="mt-4">
       <SpectrumBars
-        summary={`Mean spectrum, unweighted: ${loudestWords(figures)}.`}
+        summary={`Mean spectrum, unweighted: ${loudestWords(figures)}${againstUsualWords(figures, usualOf)}.`}
         bars={figures.bands.map((figure) => ({
           ...figure,
+          usualDb: usualOf.get(figure.band.nominalHz) ?? null,
           isStandingOut: isStandingOut(figure.band.index),
           isMarked: marked.has(figure.band.index),
         }))}
       />
       <p className="mt-1 text-small text-ink-soft">
         Mean of each band, dB (Z){!figures.isEstimate && '; line: L10'}
+        {usualOf.size > 0 && (
+          <>
+            ; <span className="text-estuary">blue dash</span>: usual, median of {usual?.validWeeks} weeks
+          </>
+        )}
       </p>
       {tonality.kind === 'not-assessable' && (
         <p className="mt-2 text-small text-ink-soft">{notAssessableWords(tonality.reason)}</p>
@@ -62,6 +73,18 @@ export function SlipSpectrum({ figures, selection, fraction }: SlipSpectrumProps
       )}
     </div>
   );
+}
+
+/** The band that lies farthest above what is usual, for the summary. */
+function againstUsualWords({ bands }: SlipFigures, usualOf: ReadonlyMap<number, number>): string {
+  const above = bands.flatMap(({ band, leqDb }) => {
+    const usualDb = usualOf.get(band.nominalHz);
+    return leqDb === null || usualDb === undefined ? [] : [{ band, byDb: leqDb - usualDb }];
+  });
+  const most = above.toSorted((a, b) => b.byDb - a.byDb)[0];
+  return most
+    ? `; against the usual most at ${bandLabel(most.band)}, ${formatDifferenceDb(most.byDb)} dB`
+    : '';
 }
 
 function loudestWords({ bands }: SlipFigures): string {

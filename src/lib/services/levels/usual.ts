@@ -1,6 +1,8 @@
 import { pool, type Connection } from '#db/queries/connection';
 import { listSettings, pickSettings, type NetworkSettings } from '#db/queries/networks';
 import { type StationRow } from '#db/queries/stations';
+import { bandsOf, type BandFraction } from '#lib/acoustics/bands';
+import { type PeriodAccumulator } from '#lib/acoustics/periodStatistics';
 import { addDays, instantAtSec, localDateAt, localMinuteAt } from '#lib/time/zone';
 import { periodFigures } from './figures';
 import { quantile } from './quantile';
@@ -15,6 +17,15 @@ export interface Usual {
   /** 10 % and 90 % points (linear interpolation between order statistics, "type 7"). */
   lowDb: number | null;
   highDb: number | null;
+  /** Median of each band's Leq over the weeks that count, where it had a level in any; thirds, or octaves of an octave station. */
+  bands: UsualBand[];
+  /** The same of octaves. */
+  octaves: UsualBand[];
+}
+
+export interface UsualBand {
+  nominalHz: number;
+  medianDb: number;
 }
 
 export interface UsualQuery {
@@ -31,20 +42,40 @@ export async function usualFor(query: UsualQuery, conn: Connection = pool()): Pr
   const { station, window, weeks = 8 } = query;
   const timeline = query.timeline ?? (await listSettings(station.networkId, conn));
   const { timeZone } = pickSettings(timeline, window.fromSec);
-  const levelsDb: number[] = [];
+  const counted: PeriodAccumulator[] = [];
   for (let week = 1; week <= weeks; week += 1) {
     const span = weeksBefore(window, week, timeZone);
     const { levels, meetsMinimum } = await periodFigures({ station, timeline, ...span }, {}, conn);
-    const laeqDb = levels.laeqDb();
-    if (meetsMinimum && laeqDb !== null) levelsDb.push(laeqDb);
+    if (meetsMinimum && levels.laeqDb() !== null) counted.push(levels);
   }
+  const levelsDb = counted.flatMap((levels) => levels.laeqDb() ?? []);
   return {
     weeks,
     validWeeks: levelsDb.length,
     medianDb: quantile(levelsDb, 0.5),
     lowDb: quantile(levelsDb, 0.1),
     highDb: quantile(levelsDb, 0.9),
+    bands: bandMedians(counted, fractionOf(counted), (levels, index) => levels.bandLeqDb(index)),
+    octaves: bandMedians(counted, 1, (levels, index) => levels.octaveLeqDb(index)),
   };
+}
+
+function fractionOf(counted: readonly PeriodAccumulator[]): BandFraction {
+  return counted[0]?.sums.bandFraction ?? 3;
+}
+
+function bandMedians(
+  counted: readonly PeriodAccumulator[],
+  fraction: BandFraction,
+  leqDb: (levels: PeriodAccumulator, index: number) => number | null,
+): UsualBand[] {
+  return bandsOf(fraction).flatMap(({ index, nominalHz }) => {
+    const medianDb = quantile(
+      counted.flatMap((levels) => leqDb(levels, index) ?? []),
+      0.5,
+    );
+    return medianDb === null ? [] : [{ nominalHz, medianDb }];
+  });
 }
 
 /** The window some weeks earlier by the clock on the wall, whatever clock change lies between. */

@@ -23,6 +23,8 @@ export const GET = route(async (context) => {
     weeks: usual.weeks,
     validWeeks: usual.validWeeks,
     LAeq: { median: usual.medianDb, low: usual.lowDb, high: usual.highDb },
+    bands: usual.bands.map(({ nominalHz, medianDb }) => ({ nominalHz, median: medianDb })),
+    octaves: usual.octaves.map(({ nominalHz, medianDb }) => ({ nominalHz, median: medianDb })),
   };
   return json(answer);
 });
