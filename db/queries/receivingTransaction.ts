@@ -60,8 +60,26 @@ function acquire(): Promise<mysql.PoolConnection> {
   });
 }
 
-/** What each of some statements answers; the first that fails ends them all. */
-function run(connection: mysql.PoolConnection, statements: readonly string[]): Promise<unknown[]> {
+/** Far below what a server takes at once (`max_allowed_packet`, 16 MiB by default). */
+const MOST_PACKET_CHARS = 2 * 1024 * 1024;
+
+/** What each of some statements answers; the first that fails ends them all. Only very many need more than one journey. */
+async function run(connection: mysql.PoolConnection, statements: readonly string[]): Promise<unknown[]> {
+  const answers: unknown[] = [];
+  let packet: string[] = [];
+  let chars = 0;
+  for (const statement of statements) {
+    if (chars + statement.length > MOST_PACKET_CHARS && packet.length > 0) {
+      answers.push(...(await send(connection, packet)));
+      [packet, chars] = [[], 0];
+    }
+    packet.push(statement);
+    chars += statement.length;
+  }
+  return [...answers, ...(await send(connection, packet))];
+}
+
+function send(connection: mysql.PoolConnection, statements: readonly string[]): Promise<unknown[]> {
   return new Promise((resolve, reject) => {
     connection.query({ sql: statements.join(';\n'), rowsAsArray: true }, (error, results) => {
       if (error) reject(error);

@@ -3,6 +3,7 @@ import { beforeAll, beforeEach, expect, test } from 'vitest';
 import { db } from '#db/client';
 import { inTransaction } from '#db/queries/connection';
 import { insertStationToken } from '#db/queries/stationTokens';
+import { MOST_INTERVALS } from '#lib/contracts/intervals';
 import { callApi } from '../support/callApi';
 import { useFreshSchema } from '../support/freshSchema';
 import { makeNetwork, makeStation } from '../support/people';
@@ -127,6 +128,21 @@ test('a refused record sent again is kept once and counted', async () => {
   await post([bad]);
   await post([bad]);
   expect(await db()('quarantine').where({ station_id: stationId })).toMatchObject([{ times_received: 2 }]);
+});
+
+test('a post as large as any, with every record refused, is kept whole', async () => {
+  const records = Array.from({ length: MOST_INTERVALS }, (_, at) => ({
+    start: new Date(Date.UTC(2026, 2, 1, 0, at)).toISOString(),
+    seconds: 60,
+    LAeq: 290,
+    note: "'\\".repeat(200),
+  }));
+  const { accepted, refused } = await post(records);
+  expect(accepted).toBe(0);
+  expect(refused).toHaveLength(MOST_INTERVALS);
+  expect(await db()('quarantine').where({ station_id: stationId }).count({ count: '*' }).first()).toEqual({
+    count: MOST_INTERVALS,
+  });
 });
 
 test('bands that are not the station’s refuse every record', async () => {
