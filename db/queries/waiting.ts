@@ -17,3 +17,17 @@ export async function countOpenComplaints(networkId: number, conn: Connection = 
     .first();
   return Number(row?.count ?? 0);
 }
+
+/** Refused records of a network that nobody has settled, counted up to `most`. */
+export async function countOpenQuarantine(
+  networkId: number,
+  most: number,
+  conn: Connection = pool(),
+): Promise<number> {
+  const rows = await conn('stations')
+    .join('quarantine', 'quarantine.station_id', 'stations.id')
+    .where({ 'stations.network_id': networkId, 'quarantine.settled_at': null })
+    .limit(most)
+    .select(conn.raw('1'));
+  return rows.length;
+}
