@@ -12,6 +12,7 @@ const FIGURES: PeriodFigures = {
   seconds: { expected: 3600, valid: 3600, excluded: 0 },
   coverage: 1,
   meetsMinimum: true,
+  minimumCoverage: 0.75,
   levels,
 };
 const rowWith = (drift: PeriodDrift) =>
