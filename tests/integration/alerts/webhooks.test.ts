@@ -7,6 +7,7 @@ import { db } from '#db/client';
 import { queueWebhooks } from '#ingest/notify/queueWebhooks';
 import { sendDueWebhook } from '#ingest/notify/sendWebhooks';
 import { config } from '#lib/config/index';
+import { acknowledge } from '#lib/services/exceedances/acknowledge';
 import {
   addWebhook,
   removeWebhook,
@@ -103,6 +104,20 @@ test('an exceedance is posted once, signed, to the webhooks of its network only'
     { state: 'delivered' },
   ]);
   expect(JSON.stringify(await db()('webhooks'))).not.toContain(secret);
+});
+
+test('the first acknowledgement is posted, without who it was and what was noted', async () => {
+  await add();
+  const id = await found();
+  for (const note of ['Rang the quay.', 'Rang again.']) {
+    const given = { note, cause: null, causeDetail: null, version: null };
+    await acknowledge({ networkId, id, userId, given });
+  }
+  await sendAll();
+  const events = got.map(({ body }) => JSON.parse(body) as { event: string; exceedance: object });
+  expect(events.map(({ event }) => event)).toEqual(['exceedance.found', 'exceedance.acknowledged']);
+  expect(events[1]).toMatchObject({ exceedance: { id, isAcknowledged: true } });
+  expect(got[1]?.body).not.toContain('Rang');
 });
 
 test('a receiver that fails is left in peace ever longer and gets everything once when it is back', async () => {

@@ -2,6 +2,7 @@ import { appendAudit } from '#db/queries/audit';
 import { inTransaction } from '#db/queries/connection';
 import { lockExceedance, updateAcknowledgement, type ExceedanceRow } from '#db/queries/exceedances';
 import type { Exceedance, NewAcknowledgement } from '#lib/contracts/exceedances';
+import { queueEvents } from '../webhooks/queueEvents';
 import { exceedanceView, versionOf } from './view';
 
 export type AcknowledgementOutcome =
@@ -26,8 +27,13 @@ export async function acknowledge(request: AcknowledgementRequest): Promise<Ackn
       if (given.version !== null && given.version !== versionOf(held)) return { kind: 'changed-meanwhile' };
       if (isByMailLink && held.acknowledgedAt) return { kind: 'changed-meanwhile' };
       const { cause, causeDetail, note } = given;
-      const fields = { cause, causeDetail, note, acknowledgedBy: userId, acknowledgedAt: new Date() };
+      const now = new Date();
+      const fields = { cause, causeDetail, note, acknowledgedBy: userId, acknowledgedAt: now };
       await updateAcknowledgement(id, fields, transaction);
+      if (!held.acknowledgedAt) {
+        const event = { exceedanceId: id, kind: 'acknowledged' as const, key: `acknowledged/${id}` };
+        await queueEvents(networkId, [event], now, transaction);
+      }
       await appendAudit(
         {
           userId,
