@@ -73,7 +73,12 @@ export const ReadingSlip = memo(function ReadingSlip({
         referenceBandsDb={reference && bands && markedBands(reference, { ...selection, bands }).leqDb}
         usual={usual}
       />
-      {figures && <SlipSpectrum figures={figures} selection={selection} fraction={fraction} usual={usual} />}
+      {/* The spectrum's place is kept while it is on its way. */}
+      <div className="min-h-52">
+        {figures && (
+          <SlipSpectrum figures={figures} selection={selection} fraction={fraction} usual={usual} />
+        )}
+      </div>
       <SlipActions selection={selection} isMarked={isMarked} context={context} />
     </aside>
   );
