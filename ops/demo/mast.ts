@@ -1,5 +1,6 @@
-import { mkdirSync, readFileSync, writeFileSync } from 'node:fs';
+import { existsSync, mkdirSync, readFileSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
+import { setTimeout } from 'node:timers/promises';
 import { findMast } from '#db/queries/masts';
 import { addMast } from '#lib/services/weather/masts';
 import { assignMast } from '#lib/services/weather/assign';
@@ -51,8 +52,12 @@ export async function seedMast(
   return (await receiveWeather(mast, records, new Date(span.nowSec * 1000))).accepted;
 }
 
-/** Posts the mast's records as they end, again and again until `signal` aborts: those stored before are known. */
+/**
+ * Posts the mast's records as they end, again and again until `signal` aborts: those stored before are known. A demo made before it
+ * had a mast has none to post for.
+ */
 export async function runMast(serverUrl: string, dataDirectory: string, signal: AbortSignal): Promise<void> {
+  if (!existsSync(tokenPath(dataDirectory))) return;
   const token = readFileSync(tokenPath(dataDirectory), 'utf8');
   for (let memorySec = 3 * DAY_SEC; !signal.aborted;) {
     const nowSec = Math.floor(Date.now() / 1000);
@@ -65,7 +70,7 @@ export async function runMast(serverUrl: string, dataDirectory: string, signal: 
       signal,
     }).catch(() => null);
     if (answer?.ok) memorySec = 6 * 3600;
-    await new Promise((resolve) => setTimeout(resolve, 60_000).unref());
+    await setTimeout(60_000, null, { signal }).catch(() => null);
   }
 }
 
