@@ -22,6 +22,8 @@ const QUARTER_SEC = 900;
 const DRAIN_TIMEOUT_MS = 1_200_000;
 /** Monitors that post at once in the undisturbed run, which waits for no clock. */
 const CALM_AT_ONCE = 12;
+/** Minutes in each file that is brought. */
+const CARD_ROWS = 6000;
 
 const dataMinutes = Math.max(30, Math.round(options.minutes * options.speed));
 const firstSec = firstSecond();
@@ -37,7 +39,7 @@ let instance: Instance | undefined;
 try {
   process.exitCode = (await soak()) ? 0 : 1;
 } catch (error) {
-  console.error(error);
+  console.error(stop.signal.aborted ? 'Stopped before it was done.' : error);
   process.exitCode = 1;
 } finally {
   await instance?.stop();
@@ -54,10 +56,7 @@ async function soak(): Promise<boolean> {
   instance = await Instance.start(directory);
   const disturbed = await disturbedRun(instance);
   const calm = await calmRun(instance);
-  if (stop.signal.aborted) {
-    console.log('Stopped before it was done.');
-    return false;
-  }
+  stop.signal.throwIfAborted();
   const results = await compareDatabases(instance, 'soak_disturbed', 'soak_calm');
   printResults(results);
   const odd = [...disturbed.odd, ...calm.odd];
@@ -75,22 +74,26 @@ async function disturbedRun(on: Instance): Promise<Answers> {
   const killing = new AbortController();
   const kills = killAtRandom(on, options.seed, AbortSignal.any([killing.signal, stop.signal]));
   const answers = new Answers();
-  await Promise.all(
-    tokens.map((token, station) => {
-      const phaseMs = (station / tokens.length) * msOfMinute;
-      const dueInMs = (minute: number) => startMs + phaseMs + minute * msOfMinute - Date.now();
-      return runSoakMonitor(placeOf(on, token, station, answers, dueInMs), stop.signal);
-    }),
-  );
-  killing.abort();
-  console.log(`Killed: ${wordsOf(Object.entries(await kills))}; ended by themselves: ${on.ownEnds}`);
+  try {
+    await Promise.all([
+      bringFiles(on, 'soak_disturbed'),
+      ...tokens.map((token, station) => {
+        const phaseMs = (station / tokens.length) * msOfMinute;
+        const dueInMs = (minute: number) => startMs + phaseMs + minute * msOfMinute - Date.now();
+        return runSoakMonitor(placeOf(on, token, station, answers, dueInMs), stop.signal);
+      }),
+    ]);
+  } finally {
+    killing.abort();
+    console.log(`Killed: ${wordsOf(Object.entries(await kills))}; ended by themselves: ${on.ownEnds}`);
+  }
   await settle(on, 'soak_disturbed', startMs, answers);
   return answers;
 }
 
 async function calmRun(on: Instance): Promise<Answers> {
+  stop.signal.throwIfAborted();
   const answers = new Answers();
-  if (stop.signal.aborted) return answers;
   const tokens = await prepare(on, 'soak_calm');
   await on.startBittern('soak_calm');
   const startMs = Date.now();
@@ -103,7 +106,7 @@ async function calmRun(on: Instance): Promise<Answers> {
       );
     }
   };
-  await Promise.all(Array.from({ length: CALM_AT_ONCE }, sendWaiting));
+  await Promise.all([bringFiles(on, 'soak_calm'), ...Array.from({ length: CALM_AT_ONCE }, sendWaiting)]);
   await settle(on, 'soak_calm', startMs, answers);
   return answers;
 }
@@ -124,8 +127,14 @@ function placeOf(
 async function prepare(on: Instance, databaseName: string): Promise<string[]> {
   const tokensPath = join(directory, `${databaseName}.json`);
   const given = [String(options.stations), String(firstSec), tokensPath];
-  await runScript('ops/bench/support/soak/prepare.ts', given, on.environment(databaseName));
+  await runScript('ops/bench/support/soak/prepare.ts', given, on.environment(databaseName), stop.signal);
   return JSON.parse(readFileSync(tokensPath, 'utf8')) as string[];
+}
+
+/** Files of the month before, brought, undone and redone while monitors post. */
+function bringFiles(on: Instance, databaseName: string): Promise<void> {
+  const given = [String(firstSec - (CARD_ROWS + 60) * 60), String(CARD_ROWS)];
+  return runScript('ops/bench/support/soak/bring.ts', given, on.environment(databaseName), stop.signal);
 }
 
 /** Waits until the worker has nothing left, then stops web and worker. */

@@ -74,8 +74,8 @@ export interface DragTimes {
   serverMs: number;
 }
 
-/** Drags over the middle of the strip and waits for the figures. */
-export async function dragOver(): Promise<DragTimes> {
+/** Drags over the strip to a place (a share of its width) that no drag ended at before, whose figures are not known yet. */
+export async function dragOver(endShare: number): Promise<DragTimes> {
   const target = document.querySelector<HTMLElement>('[role="application"] .cursor-crosshair');
   if (!target) throw new Error('There is no strip.');
   target.setPointerCapture = () => undefined;
@@ -97,7 +97,7 @@ export async function dragOver(): Promise<DragTimes> {
   await frame();
   const before = slip();
   const movedMs = performance.now();
-  point('pointermove', 0.5, 130);
+  point('pointermove', endShare, 130);
   let localFrames = 0;
   while (slip() === before || !slip().includes('from the screen')) {
     await frame();
@@ -105,7 +105,7 @@ export async function dragOver(): Promise<DragTimes> {
   }
   const localMs = performance.now() - movedMs;
   const releasedMs = performance.now();
-  point('pointerup', 0.5, 130);
+  point('pointerup', endShare, 130);
   while (slip().includes('from the screen')) await frame();
   return { localMs, localFrames: Math.max(1, localFrames), serverMs: performance.now() - releasedMs };
 }

@@ -18,6 +18,16 @@ const CHROMIUM_FLAGS = [
   '--enable-unsafe-swiftshader',
 ];
 
+const SHOWN_WITHIN_MS = 60_000;
+
+/** A page whose scripts are weighed. */
+export interface ScriptsOf {
+  path: string;
+  /** Selector of what it shows when its scripts are there. */
+  until: string;
+  isSignedIn?: boolean;
+}
+
 /** An operator of a network in a browser, signed in, who visits pages with nothing cached. */
 export class Visitor {
   private constructor(
@@ -61,8 +71,8 @@ export class Visitor {
     }
   }
 
-  /** Bytes, gzipped, of all scripts that a page fetches until it is idle, its workers' too. */
-  async scriptBytes(path: string, isSignedIn = true): Promise<number> {
+  /** Bytes, gzipped, of all scripts that a page fetches until it shows `until` and is idle, its workers' too. */
+  async scriptBytes({ path, until, isSignedIn = true }: ScriptsOf): Promise<number> {
     return this.visit(
       async (page) => {
         const sizes: Promise<number>[] = [];
@@ -70,8 +80,10 @@ export class Visitor {
           if (!/\.m?js(\?|$)/.test(response.url()) || !response.ok()) return;
           sizes.push(response.body().then((body) => gzipSync(body).length));
         });
-        const response = await page.goto(path, { waitUntil: 'networkidle' });
+        const response = await page.goto(path);
         if (!response?.ok()) throw new Error(`${path} answered ${response?.status()}.`);
+        await page.waitForSelector(until, { timeout: SHOWN_WITHIN_MS });
+        await page.waitForLoadState('networkidle');
         return (await Promise.all(sizes)).reduce((sum, size) => sum + size, 0);
       },
       { isSignedIn },

@@ -17,13 +17,13 @@ interface Compared {
  */
 const COMPARED: readonly Compared[] = [
   { table: 'stations', without: ['created_at'] },
-  { table: 'interval_levels', without: ['received_at', 'band_set_id'] },
+  { table: 'interval_levels', without: ['received_at', 'band_set_id', 'import_id'] },
   { table: 'quarter_hours', without: ['computed_at'] },
   { table: 'day_periods', without: ['computed_at'] },
   { table: 'station_latest', without: ['received_at'] },
   {
     table: 'quarantine',
-    without: ['id', 'received_at', 'times_received'],
+    without: ['id', 'received_at', 'times_received', 'import_id'],
     instead: { detail: "IF(t.code = 'clock-ahead', '', SHA2(t.detail, 256))" },
   },
   {

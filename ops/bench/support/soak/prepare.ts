@@ -10,6 +10,7 @@ import { newLimitSchema } from '#lib/contracts/limits';
 import { addLimit } from '#lib/services/limits/set';
 import { ensureDatabase } from '#ops/start/ownDatabase';
 import { makeNetwork, makeStation } from '../station';
+import { CARD_STATIONS, SOAK_NETWORK, SOAK_PERSON } from './names';
 
 /**
  * Makes the database that the environment names, with a network, stations and limits in force since the first second of the data.
@@ -19,11 +20,11 @@ const [stations, firstSec, tokensPath = ''] = process.argv.slice(2);
 
 await ensureDatabase(config());
 await db().migrate.latest();
-const networkId = await makeNetwork('soak');
+const networkId = await makeNetwork(SOAK_NETWORK);
 const userId = randomUUID();
 await inTransaction((transaction) =>
   insertUser(
-    { id: userId, email: 'soak@bench.example', name: 'Soak', passwordHash: '-', isAdministrator: true },
+    { id: userId, email: SOAK_PERSON, name: 'Soak', passwordHash: '-', isAdministrator: true },
     transaction,
   ),
 );
@@ -46,5 +47,6 @@ for (let at = 0; at < Number(stations); at += 1) {
   const { id } = await makeStation(networkId, `SOAK-${at}`, 60);
   tokens.push(await inTransaction((transaction) => insertStationToken(id, null, transaction)));
 }
+for (const code of CARD_STATIONS) await makeStation(networkId, code, 60);
 writeFileSync(tokensPath, JSON.stringify(tokens), { mode: 0o600 });
 await closeDb();
