@@ -16,6 +16,9 @@ export interface ExceedanceRecord {
   toMin: number | null;
   bandFraction: BandFraction | null;
   bandIndex: number | null;
+  percent: number | null;
+  bandToIndex: number | null;
+  eventTenths: number | null;
   startsAtSec: number;
   endsAtSec: number;
   /** Of a rolling limit the loudest of the windows that make it: level and coverage are its. Else null. */
@@ -85,6 +88,9 @@ function selectRecords(conn: Connection) {
       toMin: 'v.to_min',
       bandFraction: 'v.band_fraction',
       bandIndex: 'v.band_index',
+      percent: 'v.percent',
+      bandToIndex: 'v.band_to_index',
+      eventTenths: 'v.event_tenths',
       startsAtSec: 'e.starts_at',
       endsAtSec: 'e.ends_at',
       loudestStartSec: 'e.loudest_starts_at',

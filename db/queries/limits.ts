@@ -2,9 +2,21 @@ import type { BandFraction } from '#lib/acoustics/bands';
 import { pool, type Connection } from './connection';
 import { listHolidays } from './holidays';
 
-export type LimitMetric = 'LAeq' | 'LAFmax' | 'bandLeq';
-/** `length`: `windowMin`; `hours`: `fromMin` to `toMin` of each date, one window. */
-export type LimitAveraging = '15min' | '1h' | 'day' | 'evening' | 'night' | 'length' | 'hours';
+export type LimitMetric =
+  | 'LAeq'
+  | 'LAFmax'
+  | 'bandLeq'
+  | 'LAN'
+  | 'LAE'
+  | 'Lden'
+  | 'bandGroupLeq'
+  | 'LCeqLessLAeq'
+  | 'LAeqLessLA90'
+  | 'LAeqLessUsual'
+  | 'tonalShare'
+  | 'eventCount';
+/** `length`: `windowMin`; `hours`: `fromMin` to `toMin` of each date, one window; `den`: all periods of a date together. */
+export type LimitAveraging = '15min' | '1h' | 'day' | 'evening' | 'night' | 'length' | 'hours' | 'den';
 /** What the named dates of the network are to a limit: nothing, Sundays, left out, or the only dates. */
 export type HolidayRule = 'as-weekday' | 'as-sunday' | 'never' | 'only';
 
@@ -25,6 +37,13 @@ export interface LimitVersion {
   /** Of a band limit, else null. */
   bandFraction: BandFraction | null;
   bandIndex: number | null;
+  /** N of an L_N limit, else null. */
+  percent: number | null;
+  /** Of a group of bands, which begins with `bandIndex`, the last one; else null. */
+  bandToIndex: number | null;
+  /** Of a limit on events: what an event is above, and how long it is at least; else null. */
+  eventTenths: number | null;
+  eventMinimumSec: number | null;
   /** Exceeded when the level, rounded half up to tenths of a dB, is greater. */
   thresholdTenths: number;
   /** Bit 0 Monday … bit 6 Sunday, of the local date on which the window begins. */
@@ -51,8 +70,9 @@ export interface LimitVersion {
 }
 
 type Assigned = 'id' | 'limitId' | 'networkId' | 'version' | 'createdAt' | 'withdrawnAt' | 'holidayDates';
-/** What is left out of these is as it is without: fixed windows, named dates like any other. */
-type Optional = 'windowMin' | 'stepMin' | 'holidays';
+/** What is left out of these is as it is without: fixed windows, named dates like any other, no parameter of its quantity. */
+type Optional =
+  'windowMin' | 'stepMin' | 'holidays' | 'percent' | 'bandToIndex' | 'eventTenths' | 'eventMinimumSec';
 export type NewLimitVersion = Omit<LimitVersion, Assigned | Optional> & Partial<Pick<LimitVersion, Optional>>;
 
 interface Row extends Omit<LimitVersion, 'stationIds' | 'recipients' | 'holidayDates'> {
@@ -145,6 +165,10 @@ export async function insertVersion(
     step_min: fields.stepMin ?? null,
     band_fraction: fields.bandFraction,
     band_index: fields.bandIndex,
+    percent: fields.percent ?? null,
+    band_to_index: fields.bandToIndex ?? null,
+    event_tenths: fields.eventTenths ?? null,
+    event_minimum_sec: fields.eventMinimumSec ?? null,
     threshold_tenths: fields.thresholdTenths,
     weekdays: fields.weekdays,
     holidays: fields.holidays ?? 'as-weekday',
@@ -188,6 +212,10 @@ function selectVersions(conn: Connection) {
       stepMin: 'v.step_min',
       bandFraction: 'v.band_fraction',
       bandIndex: 'v.band_index',
+      percent: 'v.percent',
+      bandToIndex: 'v.band_to_index',
+      eventTenths: 'v.event_tenths',
+      eventMinimumSec: 'v.event_minimum_sec',
       thresholdTenths: 'v.threshold_tenths',
       weekdays: 'v.weekdays',
       holidays: 'v.holidays',

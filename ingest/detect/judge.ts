@@ -15,7 +15,7 @@ import { byLimit } from '#lib/services/limits/force';
 import { standingOutOf } from './standingOutOf';
 import { verdictsOn } from './verdictOn';
 import { recordVerdict, type JudgedChange, type Verdict } from './verdicts';
-import { WindowLevels } from './windowLevels';
+import { WindowEvidence } from '#lib/services/limits/windowEvidence';
 
 /** A window is judged this long after its end, so that the last post of a punctual monitor is in. */
 export const SETTLE_SEC = 60;
@@ -75,17 +75,17 @@ async function judgeAll(
     if (!station) continue;
     const timeline = await listSettings(station.networkId, transaction);
     const limits = byLimit(await listLimitVersions(station.networkId, transaction));
-    const levels = new WindowLevels({ station, timeline, validity: 'rules' }, transaction);
+    const measured = new WindowEvidence({ station, timeline, validity: 'rules' }, transaction);
     const settledDates = new Set<string>();
     for (const window of ofStation.sort((a, b) => a.startSec - b.startSec)) {
       const settings = pickSettings(timeline, window.startSec);
       const ofLimit = limits.get(window.limitId) ?? [];
-      const evidence = { ofLimit, timeline, levels, closedBySec, settledDates };
+      const evidence = { ofLimit, timeline, measured, closedBySec, settledDates };
       for (const verdict of await verdictsOn(window, evidence, transaction)) {
         const change = await recordVerdict(verdict, now, transaction);
         if (!change) continue;
         const { startSec, endSec } = verdict.loudest ?? verdict;
-        const spectrum = await levels.of({ fromSec: startSec, toSec: endSec });
+        const spectrum = await measured.levels.of({ fromSec: startSec, toSec: endSec });
         changes.push({ ...change, verdict, station, settings, standingOut: standingOutOf(spectrum) });
       }
     }

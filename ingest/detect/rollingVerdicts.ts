@@ -2,7 +2,7 @@ import type { Connection } from '#db/queries/connection';
 import { listJudged, type JudgedExceedance } from '#db/queries/judgedExceedances';
 import { pickSettings } from '#db/queries/networks';
 import { judgedWindows, LONGEST_WINDOW_SEC, type JudgedWindow } from '#lib/services/limits/force';
-import { judgeWindow, minimumFor, type Judged } from '#lib/services/limits/measure';
+import { judgeMeasured, minimumFor, type Judged } from '#lib/services/limits/measure';
 import { runDateOf, runsOf, type Run, type WindowAbove } from '#lib/services/limits/runs';
 import type { LimitWindow } from '#lib/services/limits/windows';
 import type { Evidence } from './verdictOn';
@@ -75,15 +75,15 @@ function windowsOfDate(
   );
 }
 
-async function tryAll(windows: readonly JudgedWindow[], { timeline, levels }: Evidence): Promise<Tried[]> {
+async function tryAll(windows: readonly JudgedWindow[], { timeline, measured }: Evidence): Promise<Tried[]> {
   const tried: Tried[] = [];
   for (const window of windows) {
     const { version, startSec, endSec } = window;
     const minimumCoverage = minimumFor(version, pickSettings(timeline, startSec));
-    const { sums } = await levels.of({ fromSec: startSec, toSec: endSec });
+    const came = await measured.measure(version, { fromSec: startSec, toSec: endSec });
     tried.push({
       ...window,
-      judged: judgeWindow(version, { lengthSec: endSec - startSec, minimumCoverage }, sums),
+      judged: judgeMeasured(version, { lengthSec: endSec - startSec, minimumCoverage }, came),
     });
   }
   return tried;

@@ -4,11 +4,11 @@ import type { LimitVersion } from '#db/queries/limits';
 import { pickSettings, type NetworkSettings } from '#db/queries/networks';
 import type { PendingWindow } from '#db/queries/pendingWindows';
 import { judgedWindows, type JudgedWindow } from '#lib/services/limits/force';
-import { judgeWindow, minimumFor } from '#lib/services/limits/measure';
+import { judgeMeasured, minimumFor } from '#lib/services/limits/measure';
 import { rollingVerdicts } from './rollingVerdicts';
 import type { Verdict } from './verdicts';
 import { runDateOf } from '#lib/services/limits/runs';
-import type { WindowLevels } from './windowLevels';
+import type { WindowEvidence } from '#lib/services/limits/windowEvidence';
 
 /** What a window is judged from. */
 export interface Evidence {
@@ -16,7 +16,7 @@ export interface Evidence {
   ofLimit: readonly LimitVersion[];
   /** The network's settings in order of their beginning. */
   timeline: NetworkSettings[];
-  levels: WindowLevels;
+  measured: WindowEvidence;
   /** Windows that end later have not closed yet, epoch seconds. */
   closedBySec: number;
   /** Dates of rolling limits that were judged in this run already: the judge's own notes. */
@@ -50,11 +50,11 @@ export async function verdictsOn(
 async function fixedVerdict(
   { version, startSec, endSec }: JudgedWindow,
   stationId: number,
-  { timeline, levels }: Evidence,
+  { timeline, measured }: Evidence,
 ): Promise<Verdict> {
   const minimumCoverage = minimumFor(version, pickSettings(timeline, startSec));
-  const { sums } = await levels.of({ fromSec: startSec, toSec: endSec });
-  const judged = judgeWindow(version, { lengthSec: endSec - startSec, minimumCoverage }, sums);
+  const came = await measured.measure(version, { fromSec: startSec, toSec: endSec });
+  const judged = judgeMeasured(version, { lengthSec: endSec - startSec, minimumCoverage }, came);
   return {
     version,
     stationId,

@@ -1,10 +1,11 @@
+import type { LimitVersion } from '#db/queries/limits';
 import type { ChangeKind } from '#ingest/detect/verdicts';
 import type { TellingChange } from '#ingest/detect/judge';
-import { toTenths } from '#lib/acoustics/rounding';
+import { roundHalfUp, toTenths } from '#lib/acoustics/rounding';
 import { config } from '#lib/config/index';
 import { formatInstantUtc } from '#lib/contracts/common';
-import { formatCoverage, formatLevelDb } from '#lib/format/levels';
-import { limitMetricText } from '#lib/format/limitMetric';
+import { formatCoverage } from '#lib/format/levels';
+import { limitMetricText, limitUnit, limitValueText } from '#lib/format/limitMetric';
 import { standingOutWords } from '#lib/format/standingOut';
 import { formatPeriod, formatZone } from '#lib/format/times';
 
@@ -32,16 +33,17 @@ export function describeChange(change: TellingChange, networkSlug: string): Chan
   const base = `${config().origin}/n/${networkSlug}`;
   const [from, to] = [formatInstantUtc(startSec - MARGIN_SEC), formatInstantUtc(endSec + MARGIN_SEC)];
   const window = { fromSec: startSec, toSec: endSec };
+  const unit = limitUnit(version.metric);
   return {
     station: `${station.code} ${station.name}`,
-    headline: headlineOf(kind, levelDb, version.thresholdTenths),
+    headline: headlineOf(kind, levelDb, version),
     because: kind === 'found' ? null : becauseOf(change),
     facts: [
       [
         'Limit',
-        `${version.name}: ${limitMetricText(version)} above ${formatLevelDb(version.thresholdTenths / 10)} dB`,
+        `${version.name}: ${limitMetricText(version)} above ${limitValueText(version.thresholdTenths / 10, unit)}`,
       ],
-      ['Level', levelDb === null ? 'no level' : `${formatLevelDb(levelDb)} dB`],
+      ['Level', levelDb === null ? 'no level' : limitValueText(roundHalfUp(levelDb, 1), unit)],
       ...toldBefore(change),
       ['Period', `${formatPeriod(window, settings.timeZone)}, ${formatZone(settings.timeZone, window)}`],
       ...rollingFacts(change),
@@ -55,9 +57,13 @@ export function describeChange(change: TellingChange, networkSlug: string): Chan
   };
 }
 
-function headlineOf(kind: ChangeKind, levelDb: number | null, thresholdTenths: number): string {
+function headlineOf(
+  kind: ChangeKind,
+  levelDb: number | null,
+  { thresholdTenths, metric }: Pick<LimitVersion, 'thresholdTenths' | 'metric'>,
+): string {
   const excessDb = ((levelDb === null ? 0 : toTenths(levelDb)) - thresholdTenths) / 10;
-  const by = `by ${formatLevelDb(excessDb)} dB`;
+  const by = `by ${limitValueText(excessDb, limitUnit(metric))}`;
   switch (kind) {
     case 'found':
       return `above the limit ${by}`;
@@ -78,8 +84,10 @@ function becauseOf({ kind, isLimitChanged, verdict }: TellingChange): string {
   return 'Later data or an exclusion changed the level.';
 }
 
-function toldBefore({ previousLevelDb }: TellingChange): [string, string][] {
-  return previousLevelDb === null ? [] : [['Told before', `${formatLevelDb(previousLevelDb)} dB`]];
+function toldBefore({ previousLevelDb, verdict }: TellingChange): [string, string][] {
+  return previousLevelDb === null
+    ? []
+    : [['Told before', limitValueText(roundHalfUp(previousLevelDb, 1), limitUnit(verdict.version.metric))]];
 }
 
 /** Of rolling windows, which one the level is of, and that there may be more to come. */

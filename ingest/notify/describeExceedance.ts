@@ -3,7 +3,8 @@ import type { ExceedanceRow } from '#db/queries/exceedances';
 import { settingsAt, type NetworkRow } from '#db/queries/networks';
 import { config } from '#lib/config/index';
 import { formatInstantUtc } from '#lib/contracts/common';
-import { formatCoverage, formatLevelDb } from '#lib/format/levels';
+import { formatCoverage } from '#lib/format/levels';
+import { limitValueText } from '#lib/format/limitMetric';
 import { formatPeriod, formatZone } from '#lib/format/times';
 import { exceedanceView } from '#lib/services/exceedances/view';
 import type { ChangeWords } from './describeChange';
@@ -18,18 +19,18 @@ export async function describeExceedance(
   conn: Connection,
 ): Promise<ChangeWords> {
   const { startsAtSec, endsAtSec, stationCode } = row;
-  const { limit, descriptor, threshold, level, excess, coverage, stationName } = exceedanceView(row);
+  const { limit, descriptor, unit, threshold, level, excess, coverage, stationName } = exceedanceView(row);
   const { timeZone } = await settingsAt(network.id, startsAtSec, conn);
   const window = { fromSec: startsAtSec, toSec: endsAtSec };
   const base = `${config().origin}/n/${network.slug}`;
   const [from, to] = [formatInstantUtc(startsAtSec - MARGIN_SEC), formatInstantUtc(endsAtSec + MARGIN_SEC)];
   return {
     station: `${stationCode} ${stationName}`,
-    headline: `above the limit by ${formatLevelDb(excess)} dB`,
+    headline: `above the limit by ${limitValueText(excess, unit)}`,
     because: null,
     facts: [
-      ['Limit', `${limit.name}: ${descriptor} above ${formatLevelDb(threshold)} dB`],
-      ['Level', `${formatLevelDb(level)} dB`],
+      ['Limit', `${limit.name}: ${descriptor} above ${limitValueText(threshold, unit)}`],
+      ['Level', limitValueText(level, unit)],
       ['Period', `${formatPeriod(window, timeZone)}, ${formatZone(timeZone, window)}`],
       ['Coverage', formatCoverage(coverage)],
     ],

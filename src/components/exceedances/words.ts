@@ -3,7 +3,8 @@ import type { Conditions } from '#lib/contracts/exceedanceDetail';
 import type { Acknowledgement, Cause, Exceedance, ExceedanceDetail } from '#lib/contracts/exceedances';
 import type { LimitVersionView } from '#lib/contracts/limits';
 import { formatDuration } from '#lib/format/durations';
-import { formatCoverage, formatLevelDb } from '#lib/format/levels';
+import { formatCoverage } from '#lib/format/levels';
+import { limitValueText } from '#lib/format/limitMetric';
 import { formatInstantShort, formatPeriod } from '#lib/format/times';
 import { datesWords } from '../limits/words';
 
@@ -51,15 +52,18 @@ interface Compared {
   coverage: number;
 }
 
-function aboveWords({ descriptor, loudest }: Exceedance, { level, threshold, coverage }: Compared): string {
+function aboveWords(
+  { descriptor, loudest, unit }: Exceedance,
+  { level, threshold, coverage }: Compared,
+): string {
   const of = loudest ? 'the loudest window' : 'the window';
-  const measured = `${descriptor} was ${formatLevelDb(level)} dB with ${formatCoverage(coverage)} of ${of} covered`;
-  return `${measured}: ${formatLevelDb(level - threshold)} dB above the limit of ${formatLevelDb(threshold)} dB`;
+  const measured = `${descriptor} was ${limitValueText(level, unit)} with ${formatCoverage(coverage)} of ${of} covered`;
+  return `${measured}: ${limitValueText(level - threshold, unit)} above the limit of ${limitValueText(threshold, unit)}`;
 }
 
-function leftWords({ level, threshold, coverage }: Compared): string {
+function leftWords({ level, threshold, coverage, unit }: Exceedance): string {
   if (coverage === 0) return ' When it was lifted, no valid data were left of the window.';
-  return ` When it was lifted, the level was ${formatLevelDb(level)} dB against a limit of ${formatLevelDb(threshold)} dB, with ${formatCoverage(coverage)} covered.`;
+  return ` When it was lifted, the level was ${limitValueText(level, unit)} against a limit of ${limitValueText(threshold, unit)}, with ${formatCoverage(coverage)} covered.`;
 }
 
 /** "Tue 17 March 2026, 22:05 to 23:05" of the loudest rolling window. */

@@ -18,7 +18,7 @@ export function restWords({ seconds }: LimitHeadroom): string {
 export function verdictWords(item: LimitHeadroom): string {
   const { state, headroom, limit } = item;
   if (state === 'passed') return 'Passed: a moment was above the limit';
-  if (state === 'not-foretold') return 'Not foretold for rolling windows: each is judged as it ends';
+  if (state === 'not-foretold') return 'Not foretold for this limit: its windows are judged as they end';
   if (state === 'not-compared') return 'Not compared: its coverage cannot become enough';
   if (limit.metric === 'LAFmax' && headroom !== null) return `No moment above ${formatLevelDb(headroom)} dB`;
   if (state === 'certain') {

@@ -64,6 +64,8 @@ export function whenWords(
   if (window === '15min' || window === '1h' || window === 'length' || window === 'hours') {
     return from === null || to === null ? `${days}, all day` : `${days}, ${from}–${to}`;
   }
+  if (window === 'den')
+    return `${days}, from ${formatClockTime(scheme.dayStartMin)} to the same time of the next date`;
   const hours = hoursOf(window, scheme);
   return hours === null ? `${days}, ${window}` : `${days}, ${window} (${hours})`;
 }
@@ -94,6 +96,7 @@ export function coverageWords(
   networkMinimum: number,
 ): string {
   if (metric === 'LAFmax') return 'any: a maximum that was measured is one';
+  if (metric === 'eventCount') return 'any: events that were measured are some';
   if (minimumCoverage === null) return `${formatCoverage(networkMinimum)} (the network’s minimum)`;
   return formatCoverage(minimumCoverage);
 }
@@ -105,6 +108,11 @@ export const LIMIT_LABELS = {
   band: 'Band',
   bandHz: 'Band',
   bandFraction: 'Band',
+  bandTo: 'Last band',
+  bandToHz: 'Last band',
+  percent: 'Exceeded for',
+  eventThreshold: 'An event is above',
+  eventSeconds: 'for at least',
   window: 'Window',
   windowMinutes: 'Length of the window',
   stepMinutes: 'Rolling windows',

@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { LIMIT_UNITS } from './limitMetrics';
 
 const level = z
   .number()
@@ -23,6 +24,7 @@ export const evidenceExceedanceSchema = z.object({
   to: z.string(),
   level: z.number(),
   threshold: z.number(),
+  unit: z.enum(LIMIT_UNITS).optional().describe('Of level and threshold; left out: dB'),
   state: z.enum(['standing', 'lifted']),
 });
 export type EvidenceExceedance = z.output<typeof evidenceExceedanceSchema>;

@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { exceedanceDetailPartSchema } from './exceedanceDetail';
+import { LIMIT_UNITS } from './limitMetrics';
 import { registerRoute } from './registry';
 
 /** What made the noise, from a list; own words go beside it. */
@@ -44,6 +45,7 @@ export const exceedanceSchema = z.object({
     version: z.number().int().describe('The version that it is judged by'),
     name: z.string(),
   }),
+  unit: z.enum(LIMIT_UNITS).describe('Of level, threshold and excess'),
   descriptor: z.string().describe('What is compared, in words: "LAeq,15 min"'),
   from: z.string(),
   to: z.string(),

@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import { LIMIT_METRICS } from './limits';
+import { LIMIT_METRICS } from './limitMetrics';
 import { registerRoute } from './registry';
 
 export const HEADROOM_STATES = [
@@ -22,7 +22,7 @@ export const limitHeadroomSchema = z.object({
     name: z.string(),
     metric: z.enum(LIMIT_METRICS),
     descriptor: z.string().describe('What is compared, in words: "LAeq,15 min"'),
-    threshold: z.number().describe('dB'),
+    threshold: z.number().describe('dB; of limits on a share of time per cent, on events their number'),
   }),
   from: z.string(),
   to: z.string(),
@@ -30,7 +30,7 @@ export const limitHeadroomSchema = z.object({
     .enum(HEADROOM_STATES)
     .describe(
       'certain: above the limit even if the rest is silent, once coverage suffices; passed: a maximum was above; ' +
-        'not-compared: the coverage that it takes cannot be reached any more; not-foretold: rolling windows, of which many are open at once',
+        'not-compared: the coverage that it takes cannot be reached any more; not-foretold: rolling windows, of which many are open at once, and quantities other than LAeq, LAFmax and the level of bands',
     ),
   level: level('Mean, or maximum, of the valid data so far'),
   seconds: z.object({

@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { localDate } from './common';
+import { LIMIT_UNITS } from './limitMetrics';
 import { newLimitSchema } from './limits';
 import { registerRoute } from './registry';
 
@@ -42,7 +43,8 @@ export type TrialCounts = z.output<typeof countsSchema>;
 
 const trialSchema = z.object({
   descriptor: z.string(),
-  threshold: z.number().describe('dB'),
+  threshold: z.number(),
+  unit: z.enum(LIMIT_UNITS).describe('Of the threshold and of levels'),
   counts: countsSchema,
   stations: z.array(countsSchema.extend({ code: z.string(), name: z.string() })),
   weeks: z

@@ -1,6 +1,6 @@
 import { z } from 'zod';
 
-export const LIMIT_WINDOWS = ['15min', '1h', 'day', 'evening', 'night', 'length', 'hours'] as const;
+export const LIMIT_WINDOWS = ['15min', '1h', 'day', 'evening', 'night', 'length', 'hours', 'den'] as const;
 export const HOLIDAY_RULES = ['as-weekday', 'as-sunday', 'never', 'only'] as const;
 /** Every how many minutes rolling windows may begin. */
 export const WINDOW_STEPS_MIN = [5, 15] as const;
@@ -21,7 +21,7 @@ export const windowFields = {
   window: z
     .enum(LIMIT_WINDOWS, 'must be one of the list')
     .describe(
-      '15min, 1h and length by the clock of the network; day, evening and night as the network has them; hours: one window a date, `from` to `to`',
+      '15min, 1h and length by the clock of the network; day, evening and night as the network has them; hours: one window a date, `from` to `to`; den: the day, evening and night of a date together',
     ),
   windowMinutes: z
     .number(lengthText)
@@ -96,11 +96,11 @@ function stepIssue(limit: CheckedWindow): WindowIssue | null {
 }
 
 function clockIssue({ window, from, to }: CheckedWindow): WindowIssue | null {
-  if (window === 'day' || window === 'evening' || window === 'night') {
+  if (window === 'day' || window === 'evening' || window === 'night' || window === 'den') {
     if (from === null && to === null) return null;
     return [
       'from',
-      `goes with windows of a length or with own hours; the ${window} has its own hours: leave both out`,
+      `goes with windows of a length or with own hours; ${window === 'den' ? 'the date' : `the ${window}`} has its own hours: leave both out`,
     ];
   }
   if ((from === null) !== (to === null))

@@ -1,10 +1,9 @@
 import { z } from 'zod';
-import { bandByNominalHz } from '#lib/acoustics/bands';
 import { clockTime, instant, reasonText, shortText } from './common';
+import { limitBandFraction, LIMIT_UNITS, limitMetric, metricFields, metricIssues } from './limitMetrics';
 import { holidayRule, windowFields, windowIssues } from './limitWindows';
 import { registerRoute } from './registry';
 
-export const LIMIT_METRICS = ['LAeq', 'LAFmax', 'bandLeq'] as const;
 /** In the order of the bits that store them. */
 export const WEEKDAYS = ['mon', 'tue', 'wed', 'thu', 'fri', 'sat', 'sun'] as const;
 export type Weekday = (typeof WEEKDAYS)[number];
@@ -17,16 +16,6 @@ export const MOST_DAYS_BACK = 366;
  */
 export const TELL_WITHIN_HOURS = 48;
 
-const metric = z
-  .enum(LIMIT_METRICS, 'must be one of the list')
-  .describe('bandLeq: the unweighted level of one band');
-const bandFraction = z.union([z.literal(1), z.literal(3)], 'must be 1 (octaves) or 3 (thirds)');
-const threshold = z
-  .number('must be a level in dB')
-  .min(-20, 'must be −20 to 200 dB')
-  .max(200, 'must be −20 to 200 dB')
-  .refine((dB) => Math.abs(dB * 10 - Math.round(dB * 10)) < 1e-6, 'must have at most one decimal')
-  .describe('dB; exceeded when the level, rounded half up to tenths, is greater');
 const minimumCoverage = z
   .number('must be a number')
   .min(0, 'must be 0 to 1, that is 0 to 100 %')
@@ -42,11 +31,8 @@ const recipient = z
 
 const fields = {
   name: shortText,
-  metric,
+  ...metricFields,
   ...windowFields,
-  bandHz: z.number('must be a nominal frequency in Hz').nullable().default(null),
-  bandFraction: bandFraction.nullable().default(null),
-  threshold,
   weekdays: z
     .array(z.enum(WEEKDAYS, `must be from ${WEEKDAYS.join(', ')}`))
     .min(1, 'must name at least one day')
@@ -84,16 +70,7 @@ type Checked = Omit<z.output<z.ZodObject<typeof fields>>, 'reason'>;
 function checkTogether(limit: Checked, context: z.RefinementCtx): void {
   const issue = (path: keyof Checked, message: string) =>
     context.addIssue({ code: 'custom', path: [path], message });
-  const { metric: of, bandHz, bandFraction: fraction } = limit;
-  if (of === 'bandLeq') {
-    if (fraction === null) issue('bandFraction', 'must be given for a band: 1 (octaves) or 3 (thirds)');
-    if (bandHz === null) issue('bandHz', 'must be given for a band');
-    else if (fraction !== null && !bandByNominalHz(fraction, bandHz))
-      issue('bandHz', `must be the nominal frequency of ${fraction === 3 ? 'a third' : 'an octave'}`);
-  } else if (bandHz !== null || fraction !== null) {
-    issue('bandHz', 'goes with the level of a band only');
-  }
-  for (const [field, message] of windowIssues(limit)) issue(field, message);
+  for (const [field, message] of [...metricIssues(limit), ...windowIssues(limit)]) issue(field, message);
 }
 
 export const newLimitSchema = z
@@ -109,14 +86,19 @@ export const limitWithdrawalSchema = z.object({ reason: reasonText });
 export const limitVersionSchema = z.object({
   version: z.number().int(),
   name: z.string(),
-  metric,
+  metric: limitMetric,
   window: windowFields.window,
   windowMinutes: z.number().int().nullable(),
   stepMinutes: z.number().int().nullable(),
   bandHz: z.number().nullable(),
-  bandFraction: bandFraction.nullable(),
+  bandFraction: limitBandFraction.nullable(),
+  bandToHz: z.number().nullable(),
+  percent: z.number().int().nullable(),
+  eventThreshold: z.number().nullable(),
+  eventSeconds: z.number().int().nullable(),
   descriptor: z.string().describe('What is compared, in words: "LAeq,15 min"'),
-  threshold,
+  threshold: z.number(),
+  unit: z.enum(LIMIT_UNITS).describe('Of the threshold, and of what is measured against it'),
   weekdays: z.array(z.enum(WEEKDAYS)),
   holidays: holidayRule,
   from: z.string().nullable(),

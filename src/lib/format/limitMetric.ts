@@ -1,11 +1,27 @@
 import { bandAt, bandLabel, type BandFraction } from '#lib/acoustics/bands';
 import { clockTimeText } from './clockTime';
 import { formatDuration } from './durations';
+import { formatDifferenceDb, formatLevelDb } from './levels';
+
+/** Which quantity a limit is about. */
+export type LimitMetricName =
+  | 'LAeq'
+  | 'LAFmax'
+  | 'bandLeq'
+  | 'LAN'
+  | 'LAE'
+  | 'Lden'
+  | 'bandGroupLeq'
+  | 'LCeqLessLAeq'
+  | 'LAeqLessLA90'
+  | 'LAeqLessUsual'
+  | 'tonalShare'
+  | 'eventCount';
 
 /** What a limit is about. */
 export interface LimitMetric {
-  metric: 'LAeq' | 'LAFmax' | 'bandLeq';
-  averaging: '15min' | '1h' | 'day' | 'evening' | 'night' | 'length' | 'hours';
+  metric: LimitMetricName;
+  averaging: '15min' | '1h' | 'day' | 'evening' | 'night' | 'length' | 'hours' | 'den';
   /** Of averaging `length`. */
   windowMin?: number | null;
   /** Of rolling windows. */
@@ -16,10 +32,41 @@ export interface LimitMetric {
   /** Of a band limit, else null. */
   bandFraction: BandFraction | null;
   bandIndex: number | null;
+  /** Of a group of bands the last one. */
+  bandToIndex?: number | null;
+  /** Of an L_N. */
+  percent?: number | null;
+  /** What events are above, in tenths of a dB. */
+  eventTenths?: number | null;
+}
+
+/** What a limit's values are given in. */
+export type LimitUnit = 'dB' | '%' | 'events';
+
+/** The unit of a limit's values. */
+export function limitUnit(metric: LimitMetricName): LimitUnit {
+  if (metric === 'tonalShare') return '%';
+  return metric === 'eventCount' ? 'events' : 'dB';
+}
+
+/** "61.3 dB", "12.5 %", "14 events" of a limit or of what was measured against it. */
+export function limitValueText(value: number | null, unit: LimitUnit): string {
+  return unit === 'events' && value !== null ? `${value} events` : `${formatLevelDb(value)} ${unit}`;
+}
+
+/** The same for a cell of a column of levels, whose heading says dB: "61.3", "12.5 %", "14 events". */
+export function limitCellText(value: number | null, unit: LimitUnit = 'dB'): string {
+  return unit === 'dB' ? formatLevelDb(value) : limitValueText(value, unit);
+}
+
+/** By how much a value is above a limit, with its sign: "+2.3", "+4.0 %", "+3 events"; dB is said beside it. */
+export function limitDifferenceText(value: number, unit: LimitUnit): string {
+  if (unit === 'dB') return formatDifferenceDb(value);
+  return value > 0 ? `+${limitValueText(value, unit)}` : limitValueText(value, unit);
 }
 
 /**
- * A limit's metric in plain text: `LAeq,1 h`, `Lnight`, `LAFmax within 15 min`, `Leq,1 h of the 100 Hz third`, `LAeq,30 min rolling
+ * A limit's metric in plain text: `LAeq,1 h`, `Lnight`, `LAFmax within 15 min`, `Leq,1 h of the 100 Hz third`, `LAeq,30 min, rolling
  * by 5 min`. A descriptor in it can be typeset by whoever shows it.
  */
 export function limitMetricText(limit: LimitMetric): string {
@@ -30,9 +77,30 @@ function fixedText(limit: LimitMetric): string {
   const { metric, averaging } = limit;
   const isPeriod = averaging === 'day' || averaging === 'evening' || averaging === 'night';
   const window = windowText(limit);
-  if (metric === 'LAFmax') return `LAFmax within ${isPeriod ? `the ${window}` : window}`;
-  if (metric === 'LAeq') return isPeriod ? `L${window}` : `LAeq,${window}`;
-  return `Leq,${window} of the ${bandText(limit)}`;
+  const within = isPeriod ? `the ${window}` : window;
+  switch (metric) {
+    case 'LAFmax':
+    case 'LAE':
+      return `${metric} within ${within}`;
+    case 'LAeq':
+      return isPeriod ? `L${window}` : `LAeq,${window}`;
+    case 'LAN':
+      return `LA${limit.percent ?? ''},${window}`;
+    case 'Lden':
+      return 'Lden of the date';
+    case 'LCeqLessLAeq':
+      return `LCeq − LAeq over ${within}`;
+    case 'LAeqLessLA90':
+      return `LAeq − LA90 over ${within}`;
+    case 'LAeqLessUsual':
+      return `LAeq,${window} above the usual`;
+    case 'tonalShare':
+      return `tonal share of ${within}, in per cent`;
+    case 'eventCount':
+      return `number of events above LAeq ${formatLevelDb((limit.eventTenths ?? 0) / 10)} dB within ${within}`;
+    default:
+      return `Leq,${window} of the ${bandsText(limit)}`;
+  }
 }
 
 function windowText({ averaging, windowMin, fromMin, toMin }: LimitMetric): string {
@@ -45,12 +113,19 @@ function windowText({ averaging, windowMin, fromMin, toMin }: LimitMetric): stri
       return formatDuration((windowMin ?? 0) * 60);
     case 'hours':
       return `${clockTimeText(fromMin ?? 0)}–${clockTimeText(toMin ?? 0)}`;
+    case 'den':
+      return 'the date';
     default:
       return averaging;
   }
 }
 
-function bandText({ bandFraction, bandIndex }: LimitMetric): string {
+/** "100 Hz third", "50 Hz to 200 Hz thirds". */
+function bandsText({ metric, bandFraction, bandIndex, bandToIndex }: LimitMetric): string {
   if (bandFraction === null || bandIndex === null) throw new RangeError('A band limit names no band.');
-  return `${bandLabel(bandAt(bandFraction, bandIndex))} ${bandFraction === 3 ? 'third' : 'octave'}`;
+  const kind = bandFraction === 3 ? 'third' : 'octave';
+  const label = (index: number) => bandLabel(bandAt(bandFraction, index));
+  if (metric !== 'bandGroupLeq' || bandToIndex === null || bandToIndex === undefined)
+    return `${label(bandIndex)} ${kind}`;
+  return `${label(bandIndex)} to ${label(bandToIndex)} ${kind}s`;
 }

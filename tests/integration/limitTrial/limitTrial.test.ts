@@ -127,6 +127,10 @@ const LIMITS = [
   { metric: 'LAFmax', window: 'length', windowMinutes: 240, threshold: 84 },
   { metric: 'LAeq', window: 'hours', from: '22:00', to: '06:00', threshold: 55 },
   { metric: 'LAeq', window: '1h', stepMinutes: 15, threshold: 63 },
+  { metric: 'LAN', percent: 10, window: '1h', threshold: 68 },
+  { metric: 'LAeqLessLA90', window: 'length', windowMinutes: 120, threshold: 9 },
+  { metric: 'bandGroupLeq', bandFraction: 3, bandHz: 80, bandToHz: 125, window: '1h', threshold: 65 },
+  { metric: 'Lden', window: 'den', threshold: 60 },
   {
     metric: 'LAeq',
     window: '1h',

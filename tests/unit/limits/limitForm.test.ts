@@ -18,6 +18,11 @@ const band = fc
 const quantity = fc.oneof(
   fc.constantFrom({ metric: 'LAeq' } as const, { metric: 'LAFmax' } as const),
   band.map((one) => ({ metric: 'bandLeq' as const, ...one })),
+  fc.constantFrom(
+    { metric: 'LAE' },
+    { metric: 'LAN', percent: 90 },
+    { metric: 'bandGroupLeq', bandFraction: 3, bandHz: 50, bandToHz: 200 },
+  ),
 );
 const hours = fc
   .tuple(fc.integer({ min: 0, max: 1439 }), fc.integer({ min: 0, max: 1439 }))
@@ -44,7 +49,7 @@ const limits = fc
     weekdays: fc
       .subarray([...WEEKDAYS], { minLength: 1 })
       .map((days) => WEEKDAYS.filter((day) => days.includes(day))),
-    percent: fc.option(fc.integer({ min: 0, max: 100 })),
+    coverage: fc.option(fc.integer({ min: 0, max: 100 })),
     holidays: fc.constantFrom(...HOLIDAY_RULES),
     stations: fc.option(fc.subarray(['A-1', 'B-2', 'C-3'], { minLength: 1 })),
     recipients: fc.subarray(['a@x.example', 'b+c@y.example']),
@@ -52,12 +57,16 @@ const limits = fc
     windows,
   })
   .map(
-    ({ quantity: what, windows: when, percent, ...rest }) =>
+    ({ quantity: what, windows: when, coverage, ...rest }) =>
       ({
         name: 'Any',
         reason: 'Said before',
         bandHz: null,
+        bandToHz: null,
         bandFraction: null,
+        eventThreshold: null,
+        eventSeconds: null,
+        percent: null,
         from: null,
         to: null,
         windowMinutes: null,
@@ -65,7 +74,7 @@ const limits = fc
         ...what,
         ...when,
         ...rest,
-        minimumCoverage: percent === null || what.metric === 'LAFmax' ? null : percent / 100,
+        minimumCoverage: coverage === null || what.metric === 'LAFmax' ? null : coverage / 100,
       }) as unknown as Limit,
   );
 

@@ -5,7 +5,7 @@ import { countUnjudgedWindows } from '#db/queries/unjudgedWindows';
 import { roundHalfUp } from '#lib/acoustics/rounding';
 import { formatInstantUtc } from '#lib/contracts/common';
 import type { EvidenceExceedance, StationEvidence, Usual } from '#lib/contracts/complaintEvidence';
-import { limitMetricText } from '#lib/format/limitMetric';
+import { limitMetricText, limitUnit } from '#lib/format/limitMetric';
 import { periodStatistics } from '../levels/statistics';
 import { usualFor } from '../levels/usual';
 import { applyingLimits } from './applyingLimits';
@@ -67,6 +67,7 @@ function exceedanceOf(record: ExceedanceRecord): EvidenceExceedance {
     id: record.id,
     limit: record.limitName,
     metric: limitMetricText(record),
+    unit: limitUnit(record.metric),
     from: formatInstantUtc(record.startsAtSec),
     to: formatInstantUtc(record.endsAtSec),
     level: roundHalfUp(record.levelDb, 1),

@@ -18,6 +18,7 @@ const COLUMNS: [heading: string, cell: (exceedance: Exceedance) => Cell][] = [
   ['to', ({ to }) => to],
   ['loudestFrom', ({ loudest }) => loudest?.from ?? null],
   ['loudestTo', ({ loudest }) => loudest?.to ?? null],
+  ['unit', ({ unit }) => unit],
   ['level', ({ level }) => level],
   ['threshold', ({ threshold }) => threshold],
   ['excess', ({ excess }) => excess],

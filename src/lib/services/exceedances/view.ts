@@ -2,7 +2,7 @@ import type { ExceedanceRow } from '#db/queries/exceedances';
 import { toTenths } from '#lib/acoustics/rounding';
 import { formatInstantUtc } from '#lib/contracts/common';
 import type { Acknowledgement, Exceedance } from '#lib/contracts/exceedances';
-import { limitMetricText } from '#lib/format/limitMetric';
+import { limitMetricText, limitUnit } from '#lib/format/limitMetric';
 
 /** An exceedance as the interface gives it: levels in the tenths in which they are compared. */
 export function exceedanceView(row: ExceedanceRow): Exceedance {
@@ -12,6 +12,7 @@ export function exceedanceView(row: ExceedanceRow): Exceedance {
     station: row.stationCode,
     stationName: row.stationName,
     limit: { id: row.limitId, version: row.limitVersion, name: row.limitName },
+    unit: limitUnit(row.metric),
     descriptor: limitMetricText(row),
     from: formatInstantUtc(row.startsAtSec),
     to: formatInstantUtc(row.endsAtSec),

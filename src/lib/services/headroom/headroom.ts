@@ -1,5 +1,5 @@
 import { pool, type Connection } from '#db/queries/connection';
-import { listLimitVersions } from '#db/queries/limits';
+import { listLimitVersions, type LimitMetric } from '#db/queries/limits';
 import { listSettings, pickSettings } from '#db/queries/networks';
 import type { StationRow } from '#db/queries/stations';
 import { energyOfDb } from '#lib/acoustics/energy';
@@ -19,6 +19,8 @@ import { HeadroomEvidence } from './evidence';
 import { openWindows } from './openWindows';
 import { secondsOf, type WindowSeconds } from './windowSeconds';
 
+/** Quantities that a rest of the window adds to in a way that can be foretold. */
+const FORETOLD: readonly LimitMetric[] = ['LAeq', 'LAFmax', 'bandLeq', 'bandGroupLeq'];
 /** A level of the last 15 minutes stands on at least so much of them. */
 const LEAST_RECENT_SEC = 300;
 
@@ -43,7 +45,9 @@ async function headroomOf(window: JudgedWindow, evidence: HeadroomEvidence): Pro
   const { version, startSec, endSec } = window;
   const { nowSec, newestSec } = evidence;
   const sums = await evidence.sums({ fromSec: startSec, toSec: nowSec });
-  const { levelDb, validSec } = measure(version, sums);
+  const { levelDb, validSec } = FORETOLD.includes(version.metric)
+    ? measure(version, sums)
+    : { levelDb: null, validSec: sums.validSec };
   const minimumCoverage = minimumFor(version, pickSettings(evidence.timeline, startSec));
   const seconds = secondsOf(window, { nowSec, newestSec, validSec, minimumCoverage });
   const told = {
@@ -60,7 +64,8 @@ async function headroomOf(window: JudgedWindow, evidence: HeadroomEvidence): Pro
     level: levelDb,
     seconds: seconds.told,
   };
-  if (version.stepMin !== null) return { ...told, ...NO_FINDINGS, state: 'not-foretold' };
+  if (version.stepMin !== null || !FORETOLD.includes(version.metric))
+    return { ...told, ...NO_FINDINGS, state: 'not-foretold' };
   if (version.metric === 'LAFmax') return { ...told, ...ofMaximum(window, levelDb) };
   return { ...told, ...(await ofMean(window, levelDb, seconds, evidence)) };
 }

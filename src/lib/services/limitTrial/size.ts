@@ -1,11 +1,15 @@
+import type { LimitMetric } from '#db/queries/limits';
 import { lengthMinutesOf } from '#lib/contracts/limitWindows';
 import type { LimitTrialQuery } from '#lib/contracts/limitTrial';
+import { PARTS_OF } from './parts';
 import type { FieldProblem } from '#lib/services/limits/rule';
 
 /** Windows that are not whole quarter-hours are tried on so many days: every interval is read for them. */
 export const MOST_FINE_DAYS = 92;
-/** Parts that rolling windows of bands are added up from: some seconds of work. */
-const MOST_BAND_PARTS = 4e6;
+/** Quantities that read intervals, or weeks before, window by window. */
+const SLOW: readonly LimitMetric[] = ['LAeqLessUsual', 'tonalShare', 'eventCount'];
+/** Parts that rolling windows of more than energies are added up from: some seconds of work. */
+const MOST_MERGED_PARTS = 4e6;
 const DAY_MS = 86_400_000;
 
 /** Why a trial is too large to be answered at once, at the field that makes it so; null where it is not. */
@@ -20,9 +24,14 @@ export function sizeProblem({ limit, from, to }: LimitTrialQuery, stationCount: 
     const message = `is tried on at most ${MOST_FINE_DAYS} days, because every interval is read for it; whole quarter-hours on a year`;
     return { field, message };
   }
-  if (stepMinutes === null || metric !== 'bandLeq') return null;
+  if (SLOW.includes(metric) && days > MOST_FINE_DAYS)
+    return {
+      field: 'metric',
+      message: `is tried on at most ${MOST_FINE_DAYS} days, because it reads much for each window`,
+    };
+  if (stepMinutes === null || PARTS_OF[metric] === 'energies') return null;
   const stations = limit.stations?.length ?? stationCount;
   const parts = stations * days * (1440 / stepMinutes) * (lengthMin / (isFine ? 5 : 15));
   const message = 'makes too many windows to try at once: take fewer days or stations, or a shorter window';
-  return parts > MOST_BAND_PARTS ? { field: 'stepMinutes', message } : null;
+  return parts > MOST_MERGED_PARTS ? { field: 'stepMinutes', message } : null;
 }

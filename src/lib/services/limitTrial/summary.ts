@@ -1,5 +1,5 @@
 import type { TrialCounts, TrialSummary } from '#lib/contracts/limitTrial';
-import { limitMetricText } from '#lib/format/limitMetric';
+import { limitMetricText, limitUnit } from '#lib/format/limitMetric';
 import type { Span } from '#lib/services/levels/spans';
 import { addDays, localDateAt, startOfDaySec, weekdayOf } from '#lib/time/zone';
 import type { CaughtWindow, StationTrial, TrialRule } from './tryRule';
@@ -17,6 +17,7 @@ export function summaryOf(
   return {
     descriptor: limitMetricText(rule),
     threshold: rule.thresholdTenths / 10,
+    unit: limitUnit(rule.metric),
     counts: tried.reduce((sum, { counts }) => added(sum, counts), NONE),
     stations: tried.map(({ station, counts }) => ({ code: station.code, name: station.name, ...counts })),
     weeks: weeksOf(caught, period, zone),

@@ -1,5 +1,6 @@
 import type { Connection } from '#db/queries/connection';
 import { selectQuarterEnergies, type QuarterEnergy } from '#db/queries/quarterEnergies';
+import type { TrialParts } from './parts';
 import { emptySums } from '#lib/acoustics/periodSums';
 import { currentQuarters } from '#lib/services/levels/currentQuarters';
 import { dirtySpans } from '#lib/services/levels/dirtySpans';
@@ -18,7 +19,7 @@ export interface TrialQuarter {
 /** Quarter-hours with bands that are read at once, seconds of them: a month. */
 const BANDS_AT_ONCE_SEC = 31 * 86_400;
 /** Shared by every quarter-hour that was read without bands; nobody writes to them. */
-const { bandFraction, isBandFractionMixed, bandEnergySec, bandValidSec } = emptySums({ bandClasses: false });
+const NOTHING = emptySums({ bandClasses: false });
 
 /**
  * Quarter-hours of a station in `fromSec <= t < toSec` (whole quarter-hours), ascending and current; or, as `partSec` says, fives
@@ -27,15 +28,20 @@ const { bandFraction, isBandFractionMixed, bandEnergySec, bandValidSec } = empty
 export async function trialQuarters(
   source: LevelSource,
   { fromSec, toSec }: Span,
-  { bands, partSec }: { bands: boolean; partSec: number },
+  { parts, partSec }: { parts: TrialParts; partSec: number },
   conn: Connection,
 ): Promise<TrialQuarter[]> {
   if (partSec !== QUARTER_SEC) return sumsByGrain(source, { fromSec, toSec }, conn);
-  if (!bands) return energiesOf(source, { fromSec, toSec }, conn);
+  if (parts === 'energies') return energiesOf(source, { fromSec, toSec }, conn);
   const found: TrialQuarter[] = [];
   for (let from = fromSec; from < toSec; from += BANDS_AT_ONCE_SEC) {
     const part = { fromSec: from, toSec: Math.min(toSec, from + BANDS_AT_ONCE_SEC) };
-    for (const { startSec, sums } of await currentQuarters(source, part, { bands }, conn)) {
+    for (const { startSec, sums } of await currentQuarters(
+      source,
+      part,
+      { bands: parts === 'bands' },
+      conn,
+    )) {
       found.push({ startSec, sums });
     }
   }
@@ -63,11 +69,15 @@ function quarterOfEnergy({ startSec, validSec, aEnergySec, lafmaxCentiDb }: Quar
   const sums = {
     validSec,
     aEnergySec,
+    cEnergySec: 0,
+    cValidSec: 0,
     lafmaxCentiDb,
-    bandFraction,
-    isBandFractionMixed,
-    bandEnergySec,
-    bandValidSec,
+    sampleSec: null,
+    aClasses: NOTHING.aClasses,
+    bandFraction: null,
+    isBandFractionMixed: false,
+    bandEnergySec: NOTHING.bandEnergySec,
+    bandValidSec: NOTHING.bandValidSec,
   };
   return { startSec, sums };
 }

@@ -3,14 +3,17 @@ import type { NewLimitVersion } from '#db/queries/limits';
 import { pickSettings, type NetworkSettings } from '#db/queries/networks';
 import type { StationRow } from '#db/queries/stations';
 import type { TrialCounts } from '#lib/contracts/limitTrial';
+import type { LevelSource } from '#lib/services/levels/intervalSums';
 import type { Span } from '#lib/services/levels/spans';
 import { coversStation } from '#lib/services/limits/force';
-import { judgeWindow, minimumFor } from '#lib/services/limits/measure';
+import { judgeMeasured, measure, minimumFor, type Measured } from '#lib/services/limits/measure';
+import { WindowEvidence } from '#lib/services/limits/windowEvidence';
 import { GRAIN_SEC } from '#lib/services/limits/grains';
 import { runDateOf, runsOf, type WindowAbove } from '#lib/services/limits/runs';
 import { windowsOf, type LimitWindow } from '#lib/services/limits/windows';
 import { QUARTER_SEC } from '#lib/time/quarters';
 import { groupBy } from '../groupBy';
+import { PARTS_OF } from './parts';
 import { trialQuarters } from './trialQuarters';
 import { WindowSums } from './windowSums';
 
@@ -24,6 +27,10 @@ export type TrialRule = Pick<
   | 'holidays'
   | 'bandFraction'
   | 'bandIndex'
+  | 'percent'
+  | 'bandToIndex'
+  | 'eventTenths'
+  | 'eventMinimumSec'
   | 'thresholdTenths'
   | 'weekdays'
   | 'fromMin'
@@ -73,23 +80,38 @@ export async function tryRule(
 ): Promise<StationTrial[]> {
   const { timeline } = ground;
   const windows = closedWindows(rule, ground);
-  const [first, last] = [windows[0], windows.at(-1)];
-  const partSec = partSecOf(windows);
   const tried: StationTrial[] = [];
   for (const station of ground.stations.filter(({ id }) => coversStation(rule, id))) {
     const source = { station, timeline, validity: 'rules' as const };
-    const quarters =
-      first && last
-        ? await trialQuarters(
-            source,
-            { fromSec: first.startSec, toSec: last.endSec },
-            { bands: rule.metric === 'bandLeq', partSec },
-            conn,
-          )
-        : [];
-    tried.push(tryStation(rule, station, windows, { timeline, sums: new WindowSums(quarters, partSec) }));
+    tried.push(tryStation(rule, station, windows, await measuredAll(rule, source, windows, conn), timeline));
   }
   return tried;
+}
+
+/** What every window came to, beside the windows: from parts read at once, where these tell it. */
+async function measuredAll(
+  rule: TrialRule,
+  source: LevelSource,
+  windows: readonly TriedWindow[],
+  conn: Connection,
+): Promise<Measured[]> {
+  const [first, last] = [windows[0], windows.at(-1)];
+  if (!first || !last) return [];
+  const parts = PARTS_OF[rule.metric];
+  if (parts === null) {
+    const evidence = new WindowEvidence(source, conn);
+    const measured: Measured[] = [];
+    for (const { startSec, endSec } of windows)
+      measured.push(await evidence.measure(rule, { fromSec: startSec, toSec: endSec }));
+    return measured;
+  }
+  const partSec = partSecOf(windows);
+  const span = { fromSec: first.startSec, toSec: last.endSec };
+  const sums = new WindowSums(await trialQuarters(source, span, { parts, partSec }, conn), {
+    parts,
+    partSec,
+  });
+  return windows.map((window) => measure(rule, sums.of(window)));
 }
 
 function closedWindows(
@@ -126,12 +148,14 @@ function tryStation(
   rule: TrialRule,
   station: StationRow,
   windows: readonly TriedWindow[],
-  { sums, timeline }: { sums: WindowSums; timeline: NetworkSettings[] },
+  measured: readonly Measured[],
+  timeline: NetworkSettings[],
 ): StationTrial {
   const counts: TrialCounts = { windows: windows.length, compared: 0, uncovered: 0, empty: 0, caught: 0 };
   const above: WindowAbove[] = [];
-  for (const window of windows) {
-    const { levelDb, coverage, isCovered, isExceeded } = judgeWindow(rule, window, sums.of(window, rule));
+  for (const [at, window] of windows.entries()) {
+    const came = measured[at] ?? { levelDb: null, validSec: 0 };
+    const { levelDb, coverage, isCovered, isExceeded } = judgeMeasured(rule, window, came);
     if (levelDb === null) counts.empty += 1;
     else if (isCovered) counts.compared += 1;
     else counts.uncovered += 1;

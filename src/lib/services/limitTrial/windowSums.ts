@@ -1,7 +1,7 @@
 import { emptySums, mergeSums } from '#lib/acoustics/periodSums';
-import type { LimitMetric } from '#db/queries/limits';
 import type { LimitWindow } from '#lib/services/limits/windows';
 import type { MeasurableSums } from '#lib/services/limits/measure';
+import type { TrialParts } from './parts';
 import type { TrialQuarter } from './trialQuarters';
 
 const NOTHING: MeasurableSums = emptySums({ bandClasses: false });
@@ -12,17 +12,17 @@ export class WindowSums {
 
   constructor(
     private readonly parts: readonly TrialQuarter[],
-    private readonly partSec: number,
+    private readonly what: { parts: TrialParts; partSec: number },
   ) {}
 
-  /** Sums of one window, that begins no earlier than the one before, as far as a metric looks at them. */
-  of({ startSec, endSec }: LimitWindow, { metric }: { metric: LimitMetric }): MeasurableSums {
+  /** Sums of one window, that begins no earlier than the one before, as far as they were read. */
+  of({ startSec, endSec }: LimitWindow): MeasurableSums {
     while ((this.parts[this.#next]?.startSec ?? Infinity) < startSec) this.#next += 1;
     let end = this.#next;
-    while ((this.parts[end]?.startSec ?? Infinity) + this.partSec <= endSec) end += 1;
+    while ((this.parts[end]?.startSec ?? Infinity) + this.what.partSec <= endSec) end += 1;
     // Most windows of a year are single quarter-hours: these are taken as they are.
     if (end - this.#next <= 1) return (end > this.#next && this.parts[this.#next]?.sums) || NOTHING;
-    return metric === 'bandLeq' ? this.merged(this.#next, end) : this.added(this.#next, end);
+    return this.what.parts === 'energies' ? this.added(this.#next, end) : this.merged(this.#next, end);
   }
 
   /** What A-weighted limits look at, without merging the rest: rolling windows of a year are millions of parts. */

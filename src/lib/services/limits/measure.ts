@@ -1,13 +1,15 @@
-import type { LimitVersion } from '#db/queries/limits';
+import type { LimitVersion, NewLimitVersion } from '#db/queries/limits';
 import type { NetworkSettings } from '#db/queries/networks';
-import { bandSlot } from '#lib/acoustics/bands';
+import { bandsOf, bandSlot } from '#lib/acoustics/bands';
 import { levelOfEnergyDb } from '#lib/acoustics/energy';
+import { laeDb } from '#lib/acoustics/exposure';
 import { thirdsOfOctave } from '#lib/acoustics/octaves';
 import type { PeriodSums } from '#lib/acoustics/periodSums';
 import { toTenths } from '#lib/acoustics/rounding';
 
 /** What a limit's window came to. */
 export interface Measured {
+  /** In dB; of a share of time in per cent, of events their number. */
   levelDb: number | null;
   /** Seconds that the level stands on. */
   validSec: number;
@@ -18,26 +20,61 @@ export type MeasurableSums = Pick<
   PeriodSums,
   | 'validSec'
   | 'aEnergySec'
+  | 'cEnergySec'
+  | 'cValidSec'
   | 'lafmaxCentiDb'
+  | 'sampleSec'
+  | 'aClasses'
   | 'bandFraction'
   | 'isBandFractionMixed'
   | 'bandEnergySec'
   | 'bandValidSec'
 >;
 
-type Metric = Pick<LimitVersion, 'metric' | 'bandFraction' | 'bandIndex'>;
+export type MetricRule = Pick<
+  NewLimitVersion,
+  'metric' | 'bandFraction' | 'bandIndex' | 'percent' | 'bandToIndex' | 'eventTenths' | 'eventMinimumSec'
+>;
 
-/** The level that a limit is about, from a window's sums. An octave of a one-third-octave station is the sum of its thirds. */
-export function measure(metric: Metric, sums: MeasurableSums): Measured {
-  if (metric.metric === 'LAFmax') {
-    const { lafmaxCentiDb, validSec } = sums;
-    return { levelDb: lafmaxCentiDb === null ? null : lafmaxCentiDb / 100, validSec };
+/**
+ * The level that a limit is about, from a window's sums. An octave of a one-third-octave station is the sum of its thirds.
+ * @throws RangeError for quantities that a window's own sums do not tell: see `WindowEvidence`.
+ */
+export function measure(rule: MetricRule, sums: MeasurableSums): Measured {
+  const { validSec } = sums;
+  switch (rule.metric) {
+    case 'LAFmax':
+      return { levelDb: sums.lafmaxCentiDb === null ? null : sums.lafmaxCentiDb / 100, validSec };
+    case 'LAeq':
+      return meanOf([{ energySec: sums.aEnergySec, validSec }]);
+    case 'LAE':
+      return { levelDb: laeDb(laeqDb(sums), validSec), validSec };
+    case 'LAN':
+      return { levelDb: sums.aClasses.exceedanceLevelDb(rule.percent ?? NaN, sums.sampleSec), validSec };
+    case 'LAeqLessLA90':
+      return {
+        levelDb: difference(laeqDb(sums), sums.aClasses.exceedanceLevelDb(90, sums.sampleSec)),
+        validSec,
+      };
+    case 'LCeqLessLAeq': {
+      const lceq = meanOf([{ energySec: sums.cEnergySec, validSec: sums.cValidSec }]);
+      return { levelDb: difference(lceq.levelDb, laeqDb(sums)), validSec: sums.cValidSec };
+    }
+    case 'bandLeq':
+    case 'bandGroupLeq':
+      return meanOf(bandParts(rule, sums));
+    default:
+      throw new RangeError(`${rule.metric} is not told by a window’s sums alone.`);
   }
-  const parts = partsOf(metric, sums);
-  const validSec = parts.length === 0 ? 0 : Math.min(...parts.map((part) => part.validSec));
-  if (validSec === 0) return { levelDb: null, validSec };
-  const meanEnergy = parts.reduce((sum, part) => sum + part.energySec / part.validSec, 0);
-  return { levelDb: levelOfEnergyDb(meanEnergy), validSec };
+}
+
+/** How much one level is above another, dB; null where one is missing. */
+export function difference(levelDb: number | null, fromDb: number | null): number | null {
+  return levelDb === null || fromDb === null ? null : levelDb - fromDb;
+}
+
+function laeqDb({ aEnergySec, validSec }: MeasurableSums): number | null {
+  return meanOf([{ energySec: aEnergySec, validSec }]).levelDb;
 }
 
 interface Part {
@@ -45,16 +82,30 @@ interface Part {
   validSec: number;
 }
 
-/** What is summed to the mean level: one quantity, or the three thirds of an octave; nothing where the sums have none of it. */
-function partsOf({ metric, bandFraction, bandIndex }: Metric, sums: MeasurableSums): Part[] {
-  if (metric === 'LAeq') return [{ energySec: sums.aEnergySec, validSec: sums.validSec }];
-  if (bandIndex === null) throw new RangeError('A band limit names no band.');
+/** The level of quantities together, each over its own valid seconds. */
+function meanOf(parts: readonly Part[]): Measured {
+  const validSec = parts.length === 0 ? 0 : Math.min(...parts.map((part) => part.validSec));
+  if (validSec === 0) return { levelDb: null, validSec };
+  const meanEnergy = parts.reduce((sum, part) => sum + part.energySec / part.validSec, 0);
+  return { levelDb: levelOfEnergyDb(meanEnergy), validSec };
+}
+
+/** The bands that are summed: one, a group, or the three thirds of each octave; nothing where the sums have none of them. */
+function bandParts(
+  { metric, bandFraction, bandIndex, bandToIndex }: MetricRule,
+  sums: MeasurableSums,
+): Part[] {
+  if (bandIndex === null || bandFraction === null) throw new RangeError('A band limit names no band.');
   if (bandFraction === 3 && sums.bandFraction !== 3) return [];
-  const bands = bandFraction === sums.bandFraction ? [bandIndex] : thirdsOfOctave(bandIndex);
-  return bands.map(bandSlot).map((slot) => ({
-    energySec: sums.bandEnergySec[slot] ?? 0,
-    validSec: sums.bandValidSec[slot] ?? 0,
-  }));
+  const last = metric === 'bandGroupLeq' ? (bandToIndex ?? bandIndex) : bandIndex;
+  return bandsOf(bandFraction)
+    .filter(({ index }) => bandIndex <= index && index <= last)
+    .flatMap(({ index }) => (bandFraction === sums.bandFraction ? [index] : thirdsOfOctave(index)))
+    .map(bandSlot)
+    .map((slot) => ({
+      energySec: sums.bandEnergySec[slot] ?? 0,
+      validSec: sums.bandValidSec[slot] ?? 0,
+    }));
 }
 
 /** A window as a version of a limit judges it. */
@@ -66,13 +117,18 @@ export interface Judged extends Measured {
   isExceeded: boolean;
 }
 
-/** Judges a closed window; `minimumCoverage` as `minimumFor` has it. The worker and trials judge by this alone. */
-export function judgeWindow(
-  version: Metric & Pick<LimitVersion, 'thresholdTenths'>,
-  { lengthSec, minimumCoverage }: { lengthSec: number; minimumCoverage: number | null },
-  sums: MeasurableSums,
+interface JudgedLength {
+  lengthSec: number;
+  /** As `minimumFor` has it. */
+  minimumCoverage: number | null;
+}
+
+/** Judges a closed window by what was measured of it. The worker and trials judge by this alone. */
+export function judgeMeasured(
+  version: Pick<LimitVersion, 'thresholdTenths'>,
+  { lengthSec, minimumCoverage }: JudgedLength,
+  { levelDb, validSec }: Measured,
 ): Judged {
-  const { levelDb, validSec } = measure(version, sums);
   const coverage = validSec / lengthSec;
   const isCovered = coverage >= (minimumCoverage ?? 0) - 1e-9;
   const isExceeded = isCovered && isAbove(version, levelDb);
@@ -91,12 +147,14 @@ export function isAbove(
 }
 
 /**
- * Coverage that a window needs to be compared with a limit: the limit's own, else the network's. Null for a maximum: one that
- * was measured is one, however little else was.
+ * Coverage that a window needs to be compared with a limit: the limit's own, else the network's. Null for a maximum and for events:
+ * what was measured of these did occur, however little else was.
  */
 export function minimumFor(
   { metric, minimumCoverage }: Pick<LimitVersion, 'metric' | 'minimumCoverage'>,
   settings: Pick<NetworkSettings, 'minimumCoverage'>,
 ): number | null {
-  return metric === 'LAFmax' ? null : (minimumCoverage ?? settings.minimumCoverage);
+  return metric === 'LAFmax' || metric === 'eventCount'
+    ? null
+    : (minimumCoverage ?? settings.minimumCoverage);
 }

@@ -21,18 +21,20 @@ export function readRule(limit: NewLimit, stations: readonly StationRow[], nowSe
   const effectiveFromSec = limit.effectiveFrom ?? nowSec;
   if (effectiveFromSec < nowSec - MOST_DAYS_BACK * 86_400)
     problems.push({ field: 'effectiveFrom', message: `must be at most ${MOST_DAYS_BACK} days ago` });
-  const { bandFraction, bandHz } = limit;
-  const band = bandFraction && bandHz ? bandByNominalHz(bandFraction, bandHz) : undefined;
+  const [band, bandTo] = bandsOfLimit(limit);
   const named = limit.stations === null ? null : [...new Set(limit.stations)].sort();
   const chosen = named?.map((code) => stations.find((station) => station.code === code));
   const unknown = named?.filter((_, at) => !chosen?.[at]) ?? [];
   if (unknown.length > 0)
     problems.push({ field: 'stations', message: `${unknown.join(', ')}: no station of this network` });
   const known = chosen?.filter((station) => station !== undefined) ?? null;
-  const without = band ? (known ?? []).filter((station) => !measures(station, band)) : [];
+  const without = band
+    ? (known ?? []).filter((station) => !measures(station, band) || !measures(station, bandTo ?? band))
+    : [];
   if (band && without.length > 0) {
     const codes = without.map(({ code }) => code).join(', ');
-    const what = `${bandLabel(band)} ${band.fraction === 3 ? 'third' : 'octave'}`;
+    const upTo = bandTo ? ` to ${bandLabel(bandTo)}` : '';
+    const what = `${bandLabel(band)}${upTo} ${band.fraction === 3 ? 'third' : 'octave'}${bandTo ? 's' : ''}`;
     problems.push({ field: 'stations', message: `${codes}: not measured there, the ${what}` });
   }
   if (problems.length > 0) return { isValid: false, problems };
@@ -47,6 +49,10 @@ export function readRule(limit: NewLimit, stations: readonly StationRow[], nowSe
       stepMin: limit.stepMinutes,
       bandFraction: limit.bandFraction,
       bandIndex: band?.index ?? null,
+      bandToIndex: bandTo?.index ?? null,
+      percent: limit.percent,
+      eventTenths: limit.eventThreshold === null ? null : Math.round(limit.eventThreshold * 10),
+      eventMinimumSec: limit.eventSeconds,
       thresholdTenths: Math.round(limit.threshold * 10),
       weekdays: limit.weekdays.reduce((bits, day) => bits | (1 << WEEKDAYS.indexOf(day)), 0),
       holidays: limit.holidays,
@@ -58,6 +64,11 @@ export function readRule(limit: NewLimit, stations: readonly StationRow[], nowSe
       reason: limit.reason,
     },
   };
+}
+
+/** The band of a limit, and of several the last one. */
+function bandsOfLimit({ bandFraction, bandHz, bandToHz }: NewLimit): (Band | undefined)[] {
+  return [bandHz, bandToHz].map((hz) => (bandFraction && hz ? bandByNominalHz(bandFraction, hz) : undefined));
 }
 
 /** Whether a station has a band: its own, or an octave whose three thirds it has. */

@@ -1,8 +1,8 @@
 import type { LimitRecord } from '#db/queries/limits';
-import { bandAt } from '#lib/acoustics/bands';
+import { bandAt, type BandFraction } from '#lib/acoustics/bands';
 import { formatClockTime, formatInstantUtc } from '#lib/contracts/common';
 import { WEEKDAYS, type Limit, type LimitDetail, type LimitVersionView } from '#lib/contracts/limits';
-import { limitMetricText } from '#lib/format/limitMetric';
+import { limitMetricText, limitUnit } from '#lib/format/limitMetric';
 import { replacedFromSec, versionAt } from './force';
 
 /** Who looks at limits. */
@@ -53,6 +53,10 @@ function firstToCome(ofLimit: readonly LimitRecord[]): LimitRecord {
   return first;
 }
 
+function nominalHz(fraction: BandFraction | null, index: number | null): number | null {
+  return fraction === null || index === null ? null : bandAt(fraction, index).nominalHz;
+}
+
 function versionView(
   version: LimitRecord,
   ofLimit: readonly LimitRecord[],
@@ -70,10 +74,15 @@ function versionView(
     window: version.averaging,
     windowMinutes: version.windowMin,
     stepMinutes: version.stepMin,
-    bandHz: bandFraction && bandIndex !== null ? bandAt(bandFraction, bandIndex).nominalHz : null,
+    bandHz: nominalHz(bandFraction, bandIndex),
     bandFraction,
+    bandToHz: nominalHz(bandFraction, version.bandToIndex),
+    percent: version.percent,
+    eventThreshold: version.eventTenths === null ? null : version.eventTenths / 10,
+    eventSeconds: version.eventMinimumSec,
     descriptor: limitMetricText(version),
     threshold: version.thresholdTenths / 10,
+    unit: limitUnit(version.metric),
     weekdays: WEEKDAYS.filter((_, bit) => (version.weekdays & (1 << bit)) !== 0),
     holidays: version.holidays,
     from: fromMin === null ? null : formatClockTime(fromMin),

@@ -1,5 +1,6 @@
 import type { LimitVersion } from '#db/queries/limits';
 import { pickSettings, type NetworkSettings } from '#db/queries/networks';
+import type { PeriodScheme } from '#lib/acoustics/dayEveningNight';
 import { periodsOf } from '#lib/time/periods';
 import { addDays, instantAtSec, localDateAt, localMinuteAt, type LocalDate } from '#lib/time/zone';
 import { clockOf, clockWindows, rollingWindows, type ClockWindow, type LimitWindow } from './clockWindows';
@@ -68,6 +69,7 @@ function candidatesOf(date: LocalDate, rule: WindowRule, timeline: NetworkSettin
     return stepMin === null ? clockWindows(clock, lengthMin) : rollingWindows(clock, lengthMin, stepMin);
   }
   if (rule.averaging === 'hours') return hoursWindow(date, rule, zone);
+  if (rule.averaging === 'den') return periodsWindow(date, scheme, zone);
   return periodsOf(date, scheme, zone)
     .filter(({ kind }) => kind === rule.averaging)
     .map((period) => ({
@@ -75,6 +77,14 @@ function candidatesOf(date: LocalDate, rule: WindowRule, timeline: NetworkSettin
       endSec: period.toSec,
       clockMin: localMinuteAt(period.fromSec, zone),
     }));
+}
+
+/** All periods of a date together, from the beginning of its day to the end of its night. */
+function periodsWindow(date: LocalDate, scheme: PeriodScheme, zone: string): ClockWindow[] {
+  const periods = periodsOf(date, scheme, zone);
+  const [first, last] = [periods[0], periods.at(-1)];
+  if (!first || !last) return [];
+  return [{ startSec: first.fromSec, endSec: last.toSec, clockMin: localMinuteAt(first.fromSec, zone) }];
 }
 
 /** The hours of a date, to the next one where they end before they begin; none where the clock was put forward over them. */

@@ -4,7 +4,7 @@ import { listStations } from '#db/queries/stations';
 import { listStationMonths } from '#db/queries/summaries';
 import { type Role } from '#db/queries/users';
 import { type Hit, type HitKind } from '#lib/contracts/search';
-import { limitMetricText } from '#lib/format/limitMetric';
+import { limitMetricText, limitUnit, limitValueText } from '#lib/format/limitMetric';
 import { formatMonth } from '#lib/format/times';
 import { matchScore, wordsOf } from './match';
 import { FINDABLE_PAGES } from './pages';
@@ -85,7 +85,7 @@ async function stations(networkId: number, base: string, words: readonly string[
 async function limits(networkId: number, base: string, words: readonly string[]): Promise<Candidate[]> {
   const newest = new Map((await listLimitRecords(networkId)).map((record) => [record.limitId, record]));
   return [...newest.values()].map((record) => {
-    const what = `${limitMetricText(record)} above ${record.thresholdTenths / 10} dB`;
+    const what = `${limitMetricText(record)} above ${limitValueText(record.thresholdTenths / 10, limitUnit(record.metric))}`;
     const detail = record.withdrawnAt ? `${what}, withdrawn` : what;
     return candidate(
       'limit',

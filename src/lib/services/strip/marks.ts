@@ -25,7 +25,8 @@ export async function limitsOfStation(networkId: number, stationId: number): Pro
   const versions = await listLimitVersions(networkId);
   return versions.flatMap((version, at) => {
     const { metric, averaging } = version;
-    if (metric === 'bandLeq' || averaging === 'length' || averaging === 'hours' || version.stepMin !== null)
+    if (metric !== 'LAeq' && metric !== 'LAFmax') return [];
+    if (averaging === 'length' || averaging === 'hours' || averaging === 'den' || version.stepMin !== null)
       return [];
     if (!concerns(version, stationId)) return [];
     const next = versions[at + 1];

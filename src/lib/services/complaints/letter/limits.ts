@@ -1,4 +1,5 @@
 import type { EvidenceExceedance, StationEvidence } from '#lib/contracts/complaintEvidence';
+import { limitValueText } from '#lib/format/limitMetric';
 import { instantSec } from './instants';
 import { dataState } from './measured';
 import { windowInWords } from './times';
@@ -36,9 +37,9 @@ function passed(standing: EvidenceExceedance[], zone: string): string {
 }
 
 function passedInWords(
-  { limit, metric, from, to, level, threshold }: EvidenceExceedance,
+  { limit, metric, from, to, level, threshold, unit = 'dB' }: EvidenceExceedance,
   zone: string,
 ): string {
   const window = windowInWords(instantSec(from), instantSec(to), zone);
-  return `“${limit}” (${metric}), ${window}: measured ${level.toFixed(1)} dB, limit ${threshold.toFixed(1)} dB.`;
+  return `“${limit}” (${metric}), ${window}: measured ${limitValueText(level, unit)}, limit ${limitValueText(threshold, unit)}.`;
 }

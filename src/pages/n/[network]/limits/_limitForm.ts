@@ -18,13 +18,16 @@ export function limitOfForm({ text, all }: LimitValues, zone: string) {
     window: text['window'],
     windowMinutes: text['window'] === 'length' ? (typedNumber(text['windowMinutes']) ?? null) : null,
     stepMinutes: hasSteps(text['window']) ? stepOf(text['stepMinutes']) : null,
-    ...(text['metric'] === 'bandLeq' ? bandOf(text['band'] ?? '') : {}),
+    ...parametersOf(text),
     threshold: typedNumber(text['threshold']),
     weekdays: all('weekdays'),
     holidays: text['holidays'] || 'as-weekday',
     from: text['from'] || null,
     to: text['to'] || null,
-    minimumCoverage: text['metric'] === 'LAFmax' ? null : fractionOf(text['minimumCoverage']),
+    minimumCoverage:
+      text['metric'] === 'LAFmax' || text['metric'] === 'eventCount'
+        ? null
+        : fractionOf(text['minimumCoverage']),
     stations: text['scope'] === 'chosen' ? all('stations') : null,
     recipients: (text['recipients'] ?? '').split(/[\s,;]+/).filter((address) => address !== ''),
     effectiveFrom: instantOf(text['effectiveFrom'] ?? '', zone),
@@ -55,6 +58,10 @@ export function limitValues(limit: Limit, zone: string): LimitValues {
       stepMinutes: limit.stepMinutes === null ? '' : String(limit.stepMinutes),
       holidays: limit.holidays,
       band: bandFraction === null || bandHz === null ? '' : bandValue(bandFraction, bandHz),
+      bandTo: bandFraction === null || limit.bandToHz === null ? '' : bandValue(bandFraction, limit.bandToHz),
+      percent: limit.percent === null ? '10' : String(limit.percent),
+      eventThreshold: limit.eventThreshold === null ? '' : String(limit.eventThreshold),
+      eventSeconds: limit.eventSeconds === null ? '' : String(limit.eventSeconds),
       threshold: String(limit.threshold),
       from: isAllDay ? '' : (limit.from ?? ''),
       // A time control has no 24:00; for windows that begin before it, 00:00 is the same.
@@ -78,6 +85,25 @@ export function bandChoices(bands: readonly Band[]): { value: string; label: str
 
 function bandValue(fraction: BandFraction, nominalHz: number): string {
   return `${fraction}:${nominalHz}`;
+}
+
+/** What the quantity takes besides: bands, N, or what makes an event. */
+function parametersOf(text: LimitValues['text']) {
+  switch (text['metric']) {
+    case 'bandLeq':
+      return bandOf(text['band'] ?? '');
+    case 'bandGroupLeq':
+      return { ...bandOf(text['band'] ?? ''), bandToHz: bandOf(text['bandTo'] ?? '').bandHz };
+    case 'LAN':
+      return { percent: typedNumber(text['percent']) ?? null };
+    case 'eventCount':
+      return {
+        eventThreshold: typedNumber(text['eventThreshold']) ?? null,
+        eventSeconds: typedNumber(text['eventSeconds']) ?? null,
+      };
+    default:
+      return {};
+  }
 }
 
 function hasSteps(window: string | undefined): boolean {

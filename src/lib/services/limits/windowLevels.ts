@@ -2,10 +2,10 @@ import type { Connection } from '#db/queries/connection';
 import { PeriodAccumulator } from '#lib/acoustics/periodStatistics';
 import type { PeriodSums } from '#lib/acoustics/periodSums';
 import { QUARTER_SEC } from '#lib/time/quarters';
-import { currentQuarters } from '#lib/services/levels/currentQuarters';
-import type { LevelSource } from '#lib/services/levels/intervalSums';
-import type { Span } from '#lib/services/levels/spans';
-import { sumsByGrain } from '#lib/services/limits/grains';
+import { currentQuarters } from '../levels/currentQuarters';
+import type { LevelSource } from '../levels/intervalSums';
+import type { Span } from '../levels/spans';
+import { sumsByGrain } from './grains';
 
 const READ_AHEAD_SEC = 2 * 86_400;
 

@@ -1,0 +1,23 @@
+import type { LimitMetric } from '#db/queries/limits';
+
+/**
+ * What a trial reads of a quarter-hour: A-weighted energies and maxima, the distribution of levels and C-weighted energies too, or
+ * bands.
+ */
+export type TrialParts = 'energies' | 'distributions' | 'bands';
+
+/** What the windows of a quantity are added up from; null where the worker's way has to be gone, window by window. */
+export const PARTS_OF: Readonly<Record<LimitMetric, TrialParts | null>> = {
+  LAeq: 'energies',
+  LAFmax: 'energies',
+  LAE: 'energies',
+  LAN: 'distributions',
+  LAeqLessLA90: 'distributions',
+  LCeqLessLAeq: 'distributions',
+  bandLeq: 'bands',
+  bandGroupLeq: 'bands',
+  Lden: null,
+  LAeqLessUsual: null,
+  tonalShare: null,
+  eventCount: null,
+};
