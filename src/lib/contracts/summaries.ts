@@ -90,6 +90,9 @@ export const summaryStationSchema = z.object({
   intervalSeconds: z.number().int(),
   placements: z.array(placementSpanSchema).describe('How the microphone stood; levels are as measured'),
   instruments: periodInstrumentsSchema,
+  masts: z
+    .array(z.object({ code: z.string(), name: z.string(), from: z.string(), to: z.string() }))
+    .describe('Weather masts that it went by where its own sensor told no wind'),
   figures: monthFiguresSchema,
   bands: z.array(summaryBandSchema),
   days: z.array(summaryDaySchema),

@@ -36,6 +36,7 @@ export function summaryStation(code: string, offsetDb = 0): SummaryStation {
       },
     ],
     instruments: [],
+    masts: [],
     figures: {
       Lday: level(56.1),
       Levening: level(52.2),

@@ -15,6 +15,7 @@ import { madeBy } from '../calibrations/madeBy';
 import { dayFigures } from '../levels/days';
 import { placementsIn } from '../levels/incident';
 import { monthFigures, type MonthFigures } from '../levels/month';
+import { mastsOf } from '../weather/mastsOf';
 import type { MonthSpan } from './monthSpan';
 
 export interface StationMonthQuery {
@@ -49,6 +50,7 @@ export async function stationSummary(query: StationMonthQuery): Promise<SummaryS
     intervalSeconds: station.intervalSec,
     placements: await placementsIn(station, measured),
     instruments: await madeBy(station, measured),
+    masts: await mastsOf(station.id, measured),
     figures: levelsOf(month),
     bands: month.statistics.bands,
     days: days.filter((day) => day.periods.day.seconds.expected > 0).map(dayOf),

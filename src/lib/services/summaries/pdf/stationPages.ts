@@ -1,8 +1,9 @@
 import { bandLabel } from '#lib/acoustics/bands';
 import type { Content, TableCell } from 'pdfmake/interfaces';
+import { parseInstant } from '#lib/contracts/common';
 import type { Coverage, SummaryDay, SummaryExceedance, SummaryStation } from '#lib/contracts/summaries';
 import { formatCoverage, formatLevelDb } from '#lib/format/levels';
-import { formatInstant, formatInstantShort } from '#lib/format/times';
+import { formatInstant, formatInstantShort, formatPeriod } from '#lib/format/times';
 import { instrumentsWords } from '#lib/format/instruments';
 import { placementsText } from '#lib/format/placements';
 import { bandCoverageText, markedLevelText } from '../figures';
@@ -27,8 +28,9 @@ export function stationPages(station: SummaryStation, timeZone: string): Content
     {
       text: `Measured by: ${instrumentsWords(station.instruments, timeZone)}`,
       color: SOFT_INK,
-      margin: [0, 0, 0, 10],
+      margin: [0, 0, 0, 2],
     },
+    { text: weatherWords(station, timeZone), color: SOFT_INK, margin: [0, 0, 0, 8] },
     figuresTable(station, timeZone),
     ...(chart === null
       ? []
@@ -224,4 +226,14 @@ function exceedanceRow(
     cell(formatCoverage(coverage)),
     cell(state, 'left'),
   ];
+}
+
+/** Who told the weather that decided which data count. */
+function weatherWords({ masts }: SummaryStation, zone: string): string {
+  if (masts.length === 0) return 'Wind and rain: by the station’s own sensor, where it has one.';
+  const words = masts.map(({ code, name, from, to }) => {
+    const span = { fromSec: parseInstant(from) ?? 0, toSec: parseInstant(to) ?? 0 };
+    return `mast ${code} (${name}), ${formatPeriod(span, zone)}`;
+  });
+  return `Wind and rain: by the station’s own sensor, where it tells them; else by ${words.join('; ')}.`;
 }
