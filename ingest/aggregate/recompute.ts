@@ -36,23 +36,29 @@ export async function recompute(
     return span && selectIntervals(station.id, span.fromSec, span.toSec, conn);
   };
   // The database reads the parts after this one and writes those before it while this process computes, so that neither waits.
-  const reading = [read(0), read(1)];
+  const reading = [heard(read(0)), heard(read(1))];
   const writing: Promise<void>[] = [];
   for (const [at, part] of parts.entries()) {
     const intervals = (await reading[at]) ?? [];
     const rows = new PartRows(part, intervals, judgement);
-    writing.push(insertQuarterHours(station.id, rows.quarters(), conn));
+    writing.push(heard(insertQuarterHours(station.id, rows.quarters(), conn)));
     const periods: DayPeriod[] = [];
     for (const period of part.periods) {
       await nextTurn();
       const found = rows.period(period);
       if (found) periods.push(found);
     }
-    writing.push(insertDayPeriods(station.id, periods, conn));
-    reading.push(read(at + 2));
+    writing.push(heard(insertDayPeriods(station.id, periods, conn)));
+    reading.push(heard(read(at + 2)));
     await nextTurn();
   }
   await Promise.all(writing);
+}
+
+/** Work under way whose failure is told when it is awaited; until then, unheard, it would end the process. */
+function heard<T extends Promise<unknown> | undefined>(work: T): T {
+  work?.catch(() => undefined);
+  return work;
 }
 
 function replacedSpans({ quarterStartsSec }: Chunk, parts: readonly { periods: Span[] }[]): Span[] {
