@@ -30,6 +30,7 @@ export async function seedLimits(
           name: limit.name,
           metric: limit.metric,
           averaging: limit.averaging,
+          stepMin: 'stepMin' in limit ? limit.stepMin : null,
           bandFraction,
           bandIndex: band?.index ?? null,
           thresholdTenths: Math.round(limit.thresholdDb * 10),

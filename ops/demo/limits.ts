@@ -32,6 +32,18 @@ export const DEMO_LIMITS = [
     reason: 'Quarry consent, condition 14',
   },
   {
+    name: 'Quarry: rolling hour of a working day',
+    metric: 'LAeq',
+    averaging: '1h',
+    stepMin: 15,
+    thresholdDb: 70,
+    stations: ['MER-05'],
+    from: '07:00',
+    to: '18:00',
+    weekdays: [0, 1, 2, 3, 4, 5],
+    reason: 'Quarry consent, condition 15',
+  },
+  {
     name: 'Night maximum at Chapel Row',
     metric: 'LAFmax',
     averaging: 'night',
