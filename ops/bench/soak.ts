@@ -63,7 +63,9 @@ async function soak(): Promise<boolean> {
   for (const what of odd) console.log(`An answer that no monitor should get: ${what}`);
   const isSame = results.every(({ onlyHere, onlyThere }) => onlyHere.length + onlyThere.length === 0);
   console.log(isSame ? 'The tables are equal.' : 'The tables DIFFER.');
-  return isSame && odd.length === 0;
+  if (instance.ownEnds > 0)
+    console.log('A process ended though nobody had killed it: its log says why (--keep).');
+  return isSame && odd.length === 0 && instance.ownEnds === 0;
 }
 
 async function disturbedRun(on: Instance): Promise<Answers> {

@@ -76,6 +76,8 @@ async function readIntervals(source: LevelSource, columns: Columns, conn: Connec
   for (const [at, part] of parts.entries()) {
     const intervals = (await reading) ?? [];
     reading = read(at + 1);
+    // Told when it is awaited; until then a failure that nobody hears would end the process.
+    reading?.catch(() => undefined);
     await nextTurn();
     fillFromIntervals(columns, intervals, part, judgement);
   }
