@@ -17,8 +17,8 @@ export async function seedSelfChecks(
   let count = 0;
   const days = Math.min(historyDays, MOST_SELF_CHECKS);
   const firstSec = Math.floor(nowSec / DAY_SEC) * DAY_SEC + 2 * 3600 - days * DAY_SEC;
-  for (const station of stations) {
-    const driftDb = DRIFTS_DB[station.site.code];
+  for (const { site, station } of stations) {
+    const driftDb = DRIFTS_DB[site.code];
     if (driftDb === undefined) continue;
     const checks = Array.from({ length: days }, (_, day) => ({
       at: formatInstantUtc(firstSec + day * DAY_SEC),
