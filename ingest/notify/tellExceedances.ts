@@ -5,6 +5,7 @@ import { findNetworkById, type NetworkRow } from '#db/queries/networks';
 import type { TellChanges, TellingChange } from '#ingest/detect/judge';
 import { toTenths } from '#lib/acoustics/rounding';
 import { TELL_WITHIN_HOURS } from '#lib/contracts/limits';
+import { limitUnit } from '#lib/format/limitMetric';
 import { alertDueSec } from '#lib/services/alerts/dueAt';
 import { groupBy } from '#lib/services/groupBy';
 import { composeAlerts } from './composeAlerts';
@@ -76,8 +77,10 @@ function wants(person: AlertPerson | undefined, stationId: number): boolean {
   return stationIds === null || stationIds.includes(stationId);
 }
 
+/** Tenths of a dB above the limit; null for what is no longer above, or is not told in dB. */
 function excessTenthsOf({ kind, verdict }: TellingChange): number | null {
-  if (kind === 'lifted' || verdict.levelDb === null) return null;
+  if (kind === 'lifted' || verdict.levelDb === null || limitUnit(verdict.version.metric) !== 'dB')
+    return null;
   return toTenths(verdict.levelDb) - verdict.version.thresholdTenths;
 }
 

@@ -13,6 +13,7 @@ const KIND_WORDS: Readonly<Record<string, string>> = {
   escalation: 'Escalation',
   'early-warning': 'Early warning',
   health: 'Health',
+  webhook: 'Webhook given up',
   'calibration-due': 'Calibration due',
   'complaint-reply': 'Reply to a complaint',
 };

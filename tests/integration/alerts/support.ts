@@ -38,6 +38,15 @@ export async function findAndTell(found: Found, tell: TellChanges = tellExceedan
   return exceedanceId;
 }
 
+/** Lifts what `findAndTell` found, at `now`, and tells of it, as the judge does. */
+export async function liftAndTell(found: Found, exceedanceId: number, now: Date): Promise<void> {
+  const startSec = Math.floor(found.now.getTime() / 1000) - 3660;
+  const change = await changeOf(found, exceedanceId, startSec);
+  const verdict = { ...change.verdict, levelDb: 54, isExceeded: false };
+  const lifted = { ...change, kind: 'lifted' as const, revision: 1, previousLevelDb: found.levelDb, verdict };
+  await inTransaction((transaction) => tellExceedances([lifted], now, transaction));
+}
+
 async function changeOf(
   { networkId, stationId, limit, levelDb, now }: Found,
   exceedanceId: number,

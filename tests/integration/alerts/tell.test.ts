@@ -12,7 +12,7 @@ import { acknowledge } from '#lib/services/exceedances/acknowledge';
 import { makeLimit } from '../exceedances/support';
 import { useFreshSchema } from '../support/freshSchema';
 import { makeNetwork, makePerson, makeStation } from '../support/people';
-import { emailOf, findAndTell, outbox, setRecipients } from './support';
+import { emailOf, findAndTell, liftAndTell, outbox, setRecipients } from './support';
 
 useFreshSchema();
 
@@ -72,6 +72,20 @@ describe('when a person is told', () => {
     expect(await toPerson()).toHaveLength(0);
     await Promise.all([composeAll('18:00:00'), composeAll('18:00:00'), composeAll('18:00:00')]);
     expect(await toPerson()).toMatchObject([{ kind: 'exceedances' }]);
+  });
+
+  test('what changed before the digest is told as it is by then, once', async () => {
+    await prefer({ delivery: 'daily', dailyAtMin: 18 * 60 });
+    const finding = { networkId, stationId, limit, now: at('09:00:00'), levelDb: 57.4 };
+    const id = await findAndTell(finding);
+    await liftAndTell(finding, id, at('12:00:00'));
+    await liftAndTell(finding, id, at('12:00:05'));
+    await composeAll('18:00:00');
+    const [mail, ...more] = await toPerson();
+    expect(more).toEqual([]);
+    expect(mail.subject).toBe('AL-1 Station AL-1: no longer above the limit');
+    expect(mail.text_body).not.toContain('/acknowledge/');
+    expect(await toPlain()).toHaveLength(2);
   });
 
   test('quiet hours hold back what is less than the override above the limit', async () => {

@@ -1,6 +1,7 @@
 import { listExceedances, type ExceedanceFilter, type ExceedanceRow } from '#db/queries/exceedances';
 import { escapeHtml } from '#lib/format/escapeHtml';
-import { formatCoverage, formatLevelDb } from '#lib/format/levels';
+import { formatCoverage } from '#lib/format/levels';
+import { limitValueText } from '#lib/format/limitMetric';
 import { formatPeriod, formatZone } from '#lib/format/times';
 import { exceedanceView } from './view';
 
@@ -36,14 +37,18 @@ export async function exceedancesAtom(place: FeedPlace, filter: ExceedanceFilter
 }
 
 function entryOf(row: ExceedanceRow, { listUrl, timeZone }: FeedPlace): string {
-  const { station, stationName, descriptor, level, threshold, excess, coverage, limit } = exceedanceView(row);
+  const exceedance = exceedanceView(row);
+  const { station, stationName, unit } = exceedance;
   const url = `${listUrl}/${row.id}`;
   const window = { fromSec: row.startsAtSec, toSec: row.endsAtSec };
   const isLifted = row.state === 'lifted';
-  const finding = isLifted ? 'no longer above the limit' : `above the limit by ${formatLevelDb(excess)} dB`;
+  const finding = isLifted
+    ? 'no longer above the limit'
+    : `above the limit by ${limitValueText(exceedance.excess, unit)}`;
   const summary =
-    `${limit.name}: ${descriptor} ${formatLevelDb(level)} dB against ${formatLevelDb(threshold)} dB, ` +
-    `${formatPeriod(window, timeZone)}, ${formatZone(timeZone, window)}; ${formatCoverage(coverage)} covered.`;
+    `${exceedance.limit.name}: ${exceedance.descriptor} ${limitValueText(exceedance.level, unit)} against ` +
+    `${limitValueText(exceedance.threshold, unit)}, ${formatPeriod(window, timeZone)}, ` +
+    `${formatZone(timeZone, window)}; ${formatCoverage(exceedance.coverage)} covered.`;
   return [
     '<entry>',
     `<id>${xml(url)}</id>`,
