@@ -5,7 +5,7 @@ import { type BandClassCounts, type PeriodSums } from '#lib/acoustics/periodSums
 import { ByteWriter } from '#lib/acoustics/varint';
 
 /** Bytes of one band: slot (uint8), its valid seconds (uint32), its energy times seconds (float64), little endian. */
-const BAND_BYTES = 1 + 4 + 8;
+export const BAND_BYTES = 1 + 4 + 8;
 /** In place of bands: octaves and thirds both occurred, so there are no band sums. */
 const MIXED_MARK = 255;
 

@@ -1,6 +1,9 @@
 import type { Connection } from '#db/queries/connection';
+import type { NewLimitVersion } from '#db/queries/limits';
+import { selectQuarterBands, type QuarterBands } from '#db/queries/quarterBands';
 import { selectQuarterEnergies, type QuarterEnergy } from '#db/queries/quarterEnergies';
-import type { TrialParts } from './parts';
+import { bandSlot, FIRST_BAND_INDEX, LAST_BAND_INDEX } from '#lib/acoustics/bands';
+import { thirdsOfOctave } from '#lib/acoustics/octaves';
 import { emptySums } from '#lib/acoustics/periodSums';
 import { currentQuarters } from '#lib/services/levels/currentQuarters';
 import { dirtySpans } from '#lib/services/levels/dirtySpans';
@@ -9,6 +12,7 @@ import { overlapsAny, type Span } from '#lib/services/levels/spans';
 import { sumsByGrain } from '#lib/services/limits/grains';
 import type { MeasurableSums } from '#lib/services/limits/measure';
 import { QUARTER_SEC } from '#lib/time/quarters';
+import type { TrialParts } from './parts';
 
 /** A quarter-hour, or five minutes, as far as limits look at it. */
 export interface TrialQuarter {
@@ -16,57 +20,83 @@ export interface TrialQuarter {
   sums: MeasurableSums;
 }
 
-/** Quarter-hours with bands that are read at once, seconds of them: a month. */
-const BANDS_AT_ONCE_SEC = 31 * 86_400;
-/** Shared by every quarter-hour that was read without bands; nobody writes to them. */
-const NOTHING = emptySums({ bandClasses: false });
+/** What is read of each part. */
+export interface Wanted {
+  parts: TrialParts;
+  partSec: number;
+  bands: Pick<NewLimitVersion, 'bandFraction' | 'bandIndex' | 'bandToIndex'>;
+}
+
+/** Whole quarter-hours that are read at once, seconds of them: a month. */
+const AT_ONCE_SEC = 31 * 86_400;
+/** Shared by every quarter-hour that was read without what stands in it; nobody writes to it. */
+const NOTHING: MeasurableSums = emptySums({ bandClasses: false });
 
 /**
  * Quarter-hours of a station in `fromSec <= t < toSec` (whole quarter-hours), ascending and current; or, as `partSec` says, fives
- * of minutes from the intervals. Quarter-hours without bands take a fraction of a second a year.
+ * of minutes from the intervals. A year of energies, or of some bands, takes a fraction of a second.
  */
 export async function trialQuarters(
   source: LevelSource,
-  { fromSec, toSec }: Span,
-  { parts, partSec }: { parts: TrialParts; partSec: number },
+  span: Span,
+  { parts, partSec, bands }: Wanted,
   conn: Connection,
 ): Promise<TrialQuarter[]> {
-  if (partSec !== QUARTER_SEC) return sumsByGrain(source, { fromSec, toSec }, conn);
-  if (parts === 'energies') return energiesOf(source, { fromSec, toSec }, conn);
-  const found: TrialQuarter[] = [];
-  for (let from = fromSec; from < toSec; from += BANDS_AT_ONCE_SEC) {
-    const part = { fromSec: from, toSec: Math.min(toSec, from + BANDS_AT_ONCE_SEC) };
-    for (const { startSec, sums } of await currentQuarters(
-      source,
-      part,
-      { bands: parts === 'bands' },
-      conn,
-    )) {
-      found.push({ startSec, sums });
-    }
-  }
-  return found;
-}
-
-async function energiesOf(source: LevelSource, span: Span, conn: Connection): Promise<TrialQuarter[]> {
-  const { id } = source.station;
+  if (partSec !== QUARTER_SEC) return sumsByGrain(source, span, conn);
+  if (parts === 'distributions') return wholeQuarters(source, span, conn);
   // Marks are read before rows: what is recomputed in between is then made from its intervals, never missed.
+  const { id } = source.station;
   const dirty = await dirtySpans(id, span, conn);
-  const rows = await selectQuarterEnergies(id, span.fromSec, span.toSec, conn);
-  const isCurrent = ({ startSec }: QuarterEnergy) => !overlapsAny(dirty, startSec, startSec + QUARTER_SEC);
-  const found = (dirty.length === 0 ? rows : rows.filter(isCurrent)).map(quarterOfEnergy);
-  if (dirty.length === 0) return found;
+  const rows =
+    parts === 'energies'
+      ? (await selectQuarterEnergies(id, span.fromSec, span.toSec, conn)).map(quarterOfEnergy)
+      : (await selectQuarterBands(id, span, slotsOf(bands), conn)).map(quarterOfBands);
+  if (dirty.length === 0) return rows;
+  const found = rows.filter(({ startSec }) => !overlapsAny(dirty, startSec, startSec + QUARTER_SEC));
   for (const part of dirty) {
-    for (const { startSec, sums } of await currentQuarters(source, part, { bands: false }, conn)) {
+    for (const { startSec, sums } of await currentQuarters(source, part, { bands: parts === 'bands' }, conn))
       found.push({ startSec, sums });
-    }
   }
   return found.sort((a, b) => a.startSec - b.startSec);
 }
 
-/** Field by field: a year of stations makes hundreds of thousands of them. */
+async function wholeQuarters(source: LevelSource, span: Span, conn: Connection): Promise<TrialQuarter[]> {
+  const found: TrialQuarter[] = [];
+  for (let fromSec = span.fromSec; fromSec < span.toSec; fromSec += AT_ONCE_SEC) {
+    const part = { fromSec, toSec: Math.min(span.toSec, fromSec + AT_ONCE_SEC) };
+    for (const { startSec, sums } of await currentQuarters(source, part, { bands: false }, conn))
+      found.push({ startSec, sums });
+  }
+  return found;
+}
+
+/** Slots of the bands that a limit is about, of stations with thirds and with octaves. */
+function slotsOf({ bandFraction, bandIndex, bandToIndex }: Wanted['bands']) {
+  if (bandIndex === null) throw new RangeError('A band limit names no band.');
+  const ends = [bandIndex, bandToIndex ?? bandIndex];
+  const indices = (
+    bandFraction === 1 ? [...ends, ...ends.flatMap((index) => thirdsOfOctave(index))] : ends
+  ).filter((index) => FIRST_BAND_INDEX <= index && index <= LAST_BAND_INDEX);
+  const slots = indices.map(bandSlot);
+  return { firstSlot: Math.min(...slots), lastSlot: Math.max(...slots) };
+}
+
+/** Field by field, as below: a year of stations makes hundreds of thousands of them. */
 function quarterOfEnergy({ startSec, validSec, aEnergySec, lafmaxCentiDb }: QuarterEnergy): TrialQuarter {
-  const sums = {
+  return { startSec, sums: sumsWith(validSec, aEnergySec, lafmaxCentiDb, NOTHING) };
+}
+
+function quarterOfBands(quarter: QuarterBands): TrialQuarter {
+  return { startSec: quarter.startSec, sums: sumsWith(quarter.validSec, 0, null, quarter) };
+}
+
+function sumsWith(
+  validSec: number,
+  aEnergySec: number,
+  lafmaxCentiDb: number | null,
+  bands: Pick<MeasurableSums, 'bandFraction' | 'isBandFractionMixed' | 'bandEnergySec' | 'bandValidSec'>,
+): MeasurableSums {
+  return {
     validSec,
     aEnergySec,
     cEnergySec: 0,
@@ -74,10 +104,9 @@ function quarterOfEnergy({ startSec, validSec, aEnergySec, lafmaxCentiDb }: Quar
     lafmaxCentiDb,
     sampleSec: null,
     aClasses: NOTHING.aClasses,
-    bandFraction: null,
-    isBandFractionMixed: false,
-    bandEnergySec: NOTHING.bandEnergySec,
-    bandValidSec: NOTHING.bandValidSec,
+    bandFraction: bands.bandFraction,
+    isBandFractionMixed: bands.isBandFractionMixed,
+    bandEnergySec: bands.bandEnergySec,
+    bandValidSec: bands.bandValidSec,
   };
-  return { startSec, sums };
 }

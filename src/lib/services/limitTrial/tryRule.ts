@@ -107,7 +107,7 @@ async function measuredAll(
   }
   const partSec = partSecOf(windows);
   const span = { fromSec: first.startSec, toSec: last.endSec };
-  const sums = new WindowSums(await trialQuarters(source, span, { parts, partSec }, conn), {
+  const sums = new WindowSums(await trialQuarters(source, span, { parts, partSec, bands: rule }, conn), {
     parts,
     partSec,
   });
