@@ -93,6 +93,11 @@ function instantParameter(url: URL, name: string): number {
   return Math.floor(seconds);
 }
 
+/** An instant in the query, epoch seconds; now where it is left out. @throws {Problem} 400 with what is wrong. */
+export function parseInstantOrNow(url: URL, name: string): number {
+  return url.searchParams.has(name) ? instantParameter(url, name) : Math.floor(Date.now() / 1000);
+}
+
 /** A whole number in the query between bounds, or its default. */
 export function parseCount(
   url: URL,

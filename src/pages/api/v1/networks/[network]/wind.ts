@@ -1,0 +1,11 @@
+import { requireNetwork } from '#lib/auth/guards';
+import { ALL_ROLES } from '#lib/auth/roles';
+import { parseInstantOrNow } from '#lib/http/parse';
+import { json } from '#lib/http/respond';
+import { route } from '#lib/http/route';
+import { windLayer } from '#lib/services/map/layers';
+
+export const GET = route(async (context) => {
+  const { network } = await requireNetwork(context, context.params.network, ALL_ROLES);
+  return json(await windLayer(network.id, parseInstantOrNow(context.url, 'at')));
+});
