@@ -1,4 +1,4 @@
-import { parseInstant } from '#lib/contracts/common';
+import { parseInstant } from '#lib/contracts/instants';
 import type { LimitHeadroom } from '#lib/contracts/headroom';
 import { formatDuration } from '#lib/format/durations';
 import { formatLevelDb } from '#lib/format/levels';

@@ -1,5 +1,5 @@
 import { bandByNominalHz } from '#lib/acoustics/bands';
-import { formatInstantUtc } from '#lib/contracts/common';
+import { formatInstantUtc } from '#lib/contracts/instants';
 import { decodeSpectrogram, type SpectrogramColumns } from '#lib/contracts/spectrogramBinary';
 import { type StripColumns } from '../model/stripColumns';
 import { type Tile } from '../model/tiles';

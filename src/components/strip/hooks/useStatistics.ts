@@ -1,5 +1,5 @@
 import { useQuery } from '@tanstack/react-query';
-import { formatInstantUtc } from '#lib/contracts/common';
+import { formatInstantUtc } from '#lib/contracts/instants';
 import type { Statistics } from '#lib/contracts/levels';
 import { type Run } from '../model/runs';
 import { fetchJson } from './fetchJson';

@@ -1,5 +1,5 @@
 import { bandAt, bandByNominalHz, type Band, type BandFraction } from '#lib/acoustics/bands';
-import { formatInstantUtc, parseInstant } from '#lib/contracts/common';
+import { formatInstantUtc, parseInstant } from '#lib/contracts/instants';
 
 /** What a person has marked: a stretch of time, whole seconds, and a range of bands or (null) all of them. */
 export interface Selection {

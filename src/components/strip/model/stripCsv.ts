@@ -2,7 +2,7 @@ import { bandLabel, type Band } from '#lib/acoustics/bands';
 import { NO_LEVEL_CENTI_DB } from '#lib/acoustics/levelRange';
 import { roundHalfUp } from '#lib/acoustics/rounding';
 import { type Weighting } from '#lib/acoustics/weighting';
-import { formatInstantUtc } from '#lib/contracts/common';
+import { formatInstantUtc } from '#lib/contracts/instants';
 import { csvText, type Cell } from '#lib/format/csvText';
 import { reasonsOfMask } from './lanes';
 import { type StripColumns } from './stripColumns';

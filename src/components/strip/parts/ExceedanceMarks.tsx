@@ -1,5 +1,5 @@
 import { memo } from 'react';
-import { formatInstantUtc } from '#lib/contracts/common';
+import { formatInstantUtc } from '#lib/contracts/instants';
 import { formatLevelDb } from '#lib/format/levels';
 import { type StripGeometry } from '../draw/geometry';
 import { exceedanceMarks, type ExceedanceMark, type StripExceedance } from '../model/exceedanceMarks';

@@ -1,6 +1,6 @@
 import { useMutation, useQueryClient } from '@tanstack/react-query';
 import { useId, useState, type FormEvent } from 'react';
-import { formatInstantUtc } from '#lib/contracts/common';
+import { formatInstantUtc } from '#lib/contracts/instants';
 import { postJson } from '../hooks/fetchJson';
 import { type Selection } from '../model/selection';
 import { stretchWords } from '../model/timeWords';

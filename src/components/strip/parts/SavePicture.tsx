@@ -1,5 +1,5 @@
 import { useState } from 'react';
-import { formatInstantUtc } from '#lib/contracts/common';
+import { formatInstantUtc } from '#lib/contracts/instants';
 import { readPalette } from '../draw/palette';
 import { type Sheet } from '../export/drawSheet';
 import { pngOfSheet, svgOfSheet, type SheetOrder } from '../export/exportSheet';

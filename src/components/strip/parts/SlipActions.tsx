@@ -1,5 +1,5 @@
 import { useState } from 'react';
-import { formatInstantUtc } from '#lib/contracts/common';
+import { formatInstantUtc } from '#lib/contracts/instants';
 import { periodQuery } from '../hooks/useStatistics';
 import { formatSelection, type Selection } from '../model/selection';
 import { ExcludeForm } from './ExcludeForm';
