@@ -1,4 +1,4 @@
-import { type Station } from '#lib/contracts/stations';
+import type { Station } from '#lib/contracts/stations';
 import { formatClock, formatDate, formatInstantShort } from '#lib/format/times';
 import { localDateAt } from '#lib/time/zone';
 

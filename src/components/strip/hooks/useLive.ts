@@ -1,5 +1,5 @@
 import { useEffect, useRef, useState } from 'react';
-import { type LiveInterval } from '#lib/contracts/live';
+import type { LiveInterval } from '#lib/contracts/live';
 import { LIVE_EVENT, LIVE_OVER_EVENT } from '#lib/contracts/liveEvents';
 
 /**
