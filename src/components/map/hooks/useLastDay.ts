@@ -1,4 +1,4 @@
-import { useQuery } from '@tanstack/react-query';
+import { keepPreviousData, useQuery } from '@tanstack/react-query';
 import type { Statistics } from '#lib/contracts/levels';
 import { fetchColumns } from '../../strip/hooks/fetchColumns';
 import { fetchJson } from '../../strip/hooks/fetchJson';
@@ -17,18 +17,18 @@ export interface LastDay {
   statistics: Statistics;
 }
 
-/** A station's last 24 hours in quarter-hours with their figures. */
-export function useLastDay(slug: string, code: string) {
+/** A station's 24 hours up to an instant (epoch seconds), or up to now, in quarter-hours with their figures. */
+export function useLastDay(slug: string, code: string, untilSec: number | null) {
   const url = `/api/v1/networks/${slug}/stations/${encodeURIComponent(code)}`;
   return useQuery({
-    queryKey: ['last-day', url],
-    queryFn: ({ signal }) => fetchLastDay(url, signal),
-    refetchInterval: EVERY_MS,
+    queryKey: ['last-day', url, untilSec],
+    queryFn: ({ signal }) => fetchLastDay(url, untilSec ?? Math.floor(Date.now() / 60_000) * 60, signal),
+    placeholderData: keepPreviousData,
+    refetchInterval: untilSec === null ? EVERY_MS : false,
   });
 }
 
-async function fetchLastDay(url: string, signal: AbortSignal): Promise<LastDay> {
-  const toSec = Math.floor(Date.now() / 1000 / 60) * 60;
+async function fetchLastDay(url: string, toSec: number, signal: AbortSignal): Promise<LastDay> {
   const period = { fromSec: toSec - DAY_SEC, toSec };
   const gridFromSec = Math.floor(period.fromSec / STEP_SEC) * STEP_SEC;
   const tile = { fromSec: gridFromSec, toSec: gridFromSec + DAY_SEC + STEP_SEC, stepSec: STEP_SEC };

@@ -44,13 +44,19 @@ const RINGS = [1, 1.5, 2, 2.6, 3.3];
 /**
  * Places a slip for each station so that none lies on another or on another's dot. A station that finds no room is taken into
  * the slip of the nearest one that did. The same points, moved together, give the same arrangement; with a `frame`, slips keep
- * within it where they can.
+ * within it where they can. They also keep off the points to `avoid`.
  */
-export function placeSlips(points: readonly SlipPoint[], slip: Size, frame?: Size): PlacedSlip[] {
+export function placeSlips(
+  points: readonly SlipPoint[],
+  slip: Size,
+  frame?: Size,
+  avoid: readonly SlipPoint[] = [],
+): PlacedSlip[] {
   const placed: PlacedSlip[] = [];
+  const dots = [...points, ...avoid];
   for (const point of points) {
     const spots = candidates(point, slip);
-    const allFree = spots.filter((spot) => isFree(spot, slip, placed, points, point));
+    const allFree = spots.filter((spot) => isFree(spot, slip, placed, dots, point));
     const free = allFree.find((spot) => frame && isInside(spot, slip, frame)) ?? allFree[0];
     const host = free ? undefined : nearest(placed, point);
     // The very first one is placed even on others' dots: they are taken into its slip.

@@ -2,7 +2,6 @@ import { type Size, type SlipPoint } from './placeSlips';
 
 /** A place on the earth. */
 export interface Place {
-  code: string;
   latitude: number;
   longitude: number;
 }
@@ -14,7 +13,11 @@ const LEAST_HALF_DEG = 0.0045;
  * Where places lie on a plan of some size, north up, all within a margin: the map's stand-in where there is no WebGL. Degrees
  * of longitude are shortened by the cosine of the middle latitude, which is exact enough over a network.
  */
-export function planPoints(places: readonly Place[], size: Size, marginPx: number): SlipPoint[] {
+export function planPoints(
+  places: readonly (Place & { code: string })[],
+  size: Size,
+  marginPx: number,
+): SlipPoint[] {
   const middle = {
     latitude: middleOf(places.map(({ latitude }) => latitude)),
     longitude: middleOf(places.map(({ longitude }) => longitude)),

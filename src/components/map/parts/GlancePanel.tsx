@@ -1,18 +1,22 @@
 import { useEffect, useRef } from 'react';
-import type { Station } from '#lib/contracts/stations';
 import { formatLevelDb } from '#lib/format/levels';
+import { formatInstant } from '#lib/format/times';
+import { urlInstant } from '#lib/time/urlPeriod';
 import { HeadroomLines } from '../../headroom/HeadroomLines';
 import { Descriptor } from '../../ui/Descriptor';
 import { Level } from '../../ui/Level';
-import { stateWords } from '../../stations/stateWords';
 import { useLastDay, type LastDay } from '../hooks/useLastDay';
-import { markStateOf, stationSentence } from '../model/stationWords';
+import { type ShownStation } from '../model/shownStation';
+import { exceedanceWords, markStateOf, stateLine, stationSentence } from '../model/stationWords';
+import { HealthLines } from './HealthLines';
 import { Sparkline } from './Sparkline';
 import { StateShape } from './StateShape';
 
+const DAY_SEC = 86_400;
+
 interface GlancePanelProps {
   slug: string;
-  station: Station;
+  station: ShownStation;
   zone: string;
   nowSec: number;
   onClose: () => void;
@@ -20,13 +24,13 @@ interface GlancePanelProps {
 
 /** A station at a glance: its last 24 hours, how it is doing, and the way to its page. */
 export function GlancePanel({ slug, station, zone, nowSec, onClose }: GlancePanelProps) {
-  const { data, error } = useLastDay(slug, station.code);
+  const { data, error } = useLastDay(slug, station.code, station.past?.toSec ?? null);
   const panel = useRef<HTMLElement>(null);
   useEffect(() => {
     // Below the map on a phone; beside it nothing moves.
     void panel.current?.scrollIntoView({ block: 'nearest' });
   }, []);
-  const page = `/n/${slug}/stations/${encodeURIComponent(station.code)}`;
+  const page = `/n/${slug}/stations/${encodeURIComponent(station.code)}${dayQuery(station, zone)}`;
   return (
     <section ref={panel} className="slip text-table" aria-label={`${station.name} at a glance`}>
       <p role="status" className="sr-only">
@@ -47,14 +51,20 @@ export function GlancePanel({ slug, station, zone, nowSec, onClose }: GlancePane
       </div>
       <p className="flex items-center gap-1.5">
         <StateShape state={markStateOf(station)} />
-        {stateWords(station, zone, nowSec)}
+        {stateLine(station, zone, nowSec)}
         {station.overLimit && <span className="text-rust">· over a limit</span>}
       </p>
+      {station.exceedances ? <p>{exceedanceWords(station)}</p> : null}
       <div className="mt-3 min-h-[10.75rem]">
         {error && <p className="border-l-3 border-rust pl-3">{error.message}</p>}
-        {data && <DayAtAGlance day={data} zone={zone} name={station.name} />}
+        {data && <DayAtAGlance day={data} zone={zone} name={station.name} when={whenWords(station, zone)} />}
       </div>
-      <HeadroomLines slug={slug} code={station.code} zone={zone} />
+      {!station.past && (
+        <>
+          <HeadroomLines slug={slug} code={station.code} zone={zone} />
+          <HealthLines slug={slug} station={station} />
+        </>
+      )}
       <a className="button button-primary mt-3" href={page}>
         Open the station
       </a>
@@ -62,7 +72,25 @@ export function GlancePanel({ slug, station, zone, nowSec, onClose }: GlancePane
   );
 }
 
-function DayAtAGlance({ day, zone, name }: { day: LastDay; zone: string; name: string }) {
+function whenWords({ past }: ShownStation, zone: string): string {
+  return past ? `the 24 h to ${formatInstant(past.toSec, zone)}` : 'the last 24 h';
+}
+
+/** The period of the station's page: the 24 hours up to the moment shown; as usual where that is now. */
+function dayQuery({ past }: ShownStation, zone: string): string {
+  if (!past) return '';
+  return `?from=${urlInstant(past.toSec - DAY_SEC, zone)}&to=${urlInstant(past.toSec, zone)}`;
+}
+
+interface DayAtAGlanceProps {
+  day: LastDay;
+  zone: string;
+  name: string;
+  /** "the last 24 h" */
+  when: string;
+}
+
+function DayAtAGlance({ day, zone, name, when }: DayAtAGlanceProps) {
   const { LAeq, LAFmax, coverage, meetsMinimum } = day.statistics;
   return (
     <>
@@ -85,12 +113,12 @@ function DayAtAGlance({ day, zone, name }: { day: LastDay; zone: string; name: s
         </div>
       </dl>
       <p className="text-small text-ink-soft">
-        <Descriptor name="LAeq" window="15 min" /> of the last 24 h, dB
+        <Descriptor name="LAeq" window="15 min" /> of {when}, dB
       </p>
       <Sparkline
         day={day}
         zone={zone}
-        summary={`${name}, last 24 hours: LAeq of quarter-hours, ${formatLevelDb(LAeq)} dB over all.`}
+        summary={`${name}, ${when}: LAeq of quarter-hours, ${formatLevelDb(LAeq)} dB over all.`}
       />
     </>
   );

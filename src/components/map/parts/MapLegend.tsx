@@ -3,6 +3,11 @@ import { MAP_LEVEL_RANGE } from '../model/levelRange';
 import { type MarkState } from '../model/stationWords';
 import { StateShape } from './StateShape';
 
+const PAST_STATES: readonly (readonly [MarkState, string])[] = [
+  ['live', 'measured'],
+  ['over-limit', 'in a window over a limit'],
+  ['silent', 'no valid data'],
+];
 const STATES: readonly (readonly [MarkState, string])[] = [
   ['live', 'live'],
   ['over-limit', 'over a limit in the last hour'],
@@ -11,12 +16,12 @@ const STATES: readonly (readonly [MarkState, string])[] = [
 ];
 
 /** What the marks' shapes and the slips' colours mean. */
-export function MapLegend({ theme }: { theme: Theme }) {
+export function MapLegend({ theme, isPast }: { theme: Theme; isPast: boolean }) {
   const { lowDb, highDb } = MAP_LEVEL_RANGE;
   const steps = Array.from({ length: 12 }, (_, n) => lowDb + (n * (highDb - lowDb)) / 11);
   return (
     <div className="mt-2 flex flex-wrap items-center gap-x-4 gap-y-1 text-small text-ink-soft">
-      {STATES.map(([state, words]) => (
+      {(isPast ? PAST_STATES : STATES).map(([state, words]) => (
         <span key={state} className="flex items-center gap-1.5">
           <StateShape state={state} /> {words}
         </span>

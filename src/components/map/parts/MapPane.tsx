@@ -1,6 +1,7 @@
 import { lazy, Suspense, useState } from 'react';
-import type { Station } from '#lib/contracts/stations';
 import { type Theme } from '#lib/format/levelRamp';
+import { type LayerMark } from '../model/layerMarks';
+import { type ShownStation } from '../model/shownStation';
 import { hasWebGl } from '../webgl';
 import { StaticPlan } from './StaticPlan';
 import { type StationChoice } from './StationList';
@@ -9,7 +10,9 @@ const MapCanvas = lazy(() => import('./MapCanvas'));
 
 export interface MapPaneProps {
   styleUrls: Record<Theme, string>;
-  stations: readonly Station[];
+  slug: string;
+  stations: readonly ShownStation[];
+  marks: readonly LayerMark[];
   choice: StationChoice;
   theme: Theme;
   zone: string;

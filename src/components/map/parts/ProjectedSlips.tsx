@@ -1,5 +1,6 @@
 import { useCallback, useSyncExternalStore } from 'react';
 import { useMap } from 'react-map-gl/maplibre';
+import { type Place } from '../model/planProjection';
 import { type MapPaneProps } from './MapPane';
 import { SlipLayer } from './SlipLayer';
 
@@ -28,10 +29,12 @@ export function ProjectedSlips({ stations, ...props }: Omit<MapPaneProps, 'style
   if (!map || place === '') return null;
   const { clientWidth, clientHeight } = map.getContainer();
   const frame = { width: clientWidth, height: clientHeight };
-  const points = stations.map(({ code, longitude, latitude }) => ({
-    id: code,
-    ...map.project([longitude, latitude]),
-  }));
+  const pointOf = ({ longitude, latitude }: Place) => {
+    const { x, y } = map.project([longitude, latitude]);
+    return { x, y };
+  };
+  const points = stations.map((station) => ({ id: station.code, ...pointOf(station) }));
+  const markPoints = props.marks.map((mark) => ({ id: mark.id, ...pointOf(mark) }));
 
   const spread = (codes: string[]) => {
     const held = stations.filter(({ code }) => codes.includes(code));
@@ -46,5 +49,5 @@ export function ProjectedSlips({ stations, ...props }: Omit<MapPaneProps, 'style
     );
   };
 
-  return <SlipLayer {...props} stations={stations} points={points} frame={frame} onSpread={spread} />;
+  return <SlipLayer {...props} {...{ stations, points, markPoints, frame }} onSpread={spread} />;
 }

@@ -1,21 +1,34 @@
-import type { Station } from '#lib/contracts/stations';
 import { formatLevelDb } from '#lib/format/levels';
 import { levelColour, type Theme } from '#lib/format/levelRamp';
 import { MAP_LEVEL_RANGE } from '../model/levelRange';
 import { placeSlips, type PlacedSlip, type Size, type SlipPoint } from '../model/placeSlips';
-import { averagingOf, markStateOf, stationSentence, type MarkState } from '../model/stationWords';
+import { type LayerMark } from '../model/layerMarks';
+import { type ShownStation } from '../model/shownStation';
+import {
+  absenceWords,
+  exceedanceWords,
+  markStateOf,
+  slipNote,
+  stationSentence,
+  type MarkState,
+} from '../model/stationWords';
+import { dotsOfMarks, LayerMarks } from './LayerMarks';
+import { SLIP_SIZE } from '../model/slipSize';
 import { StateShape } from './StateShape';
 import { type StationChoice } from './StationList';
 
-export const SLIP_SIZE = { width: 108, height: 38 };
 const DOT_PX = 14;
 
 interface SlipLayerProps {
-  stations: readonly Station[];
+  stations: readonly ShownStation[];
   /** Size of the map, CSS pixels. */
   frame: Size;
   /** Where each station lies on it. */
   points: readonly SlipPoint[];
+  marks: readonly LayerMark[];
+  /** Where each mark lies on it. */
+  markPoints: readonly SlipPoint[];
+  slug: string;
   choice: StationChoice;
   theme: Theme;
   zone: string;
@@ -28,7 +41,7 @@ interface SlipLayerProps {
 export function SlipLayer(props: SlipLayerProps) {
   const { stations, points, choice } = props;
   const byCode = new Map(stations.map((station) => [station.code, station]));
-  const slips = placeSlips(points, SLIP_SIZE, props.frame);
+  const slips = placeSlips(points, SLIP_SIZE, props.frame, dotsOfMarks(props.marks, props.markPoints));
   return (
     <div className="pointer-events-none absolute inset-0 overflow-hidden">
       <svg className="absolute inset-0 size-full" aria-hidden="true">
@@ -36,6 +49,7 @@ export function SlipLayer(props: SlipLayerProps) {
           <path key={slip.ids[0]} d={leaderPath(slip)} className="stroke-ink/60" fill="none" />
         ))}
       </svg>
+      <LayerMarks slug={props.slug} marks={props.marks} points={props.markPoints} slips={slips} />
       {points.map(({ id, x, y }) => {
         const station = byCode.get(id);
         return (
@@ -67,7 +81,7 @@ export function SlipLayer(props: SlipLayerProps) {
 
 interface SlipProps extends SlipLayerProps {
   slip: PlacedSlip;
-  station: Station;
+  station: ShownStation;
   isActive: boolean;
 }
 
@@ -94,19 +108,29 @@ function Slip({ slip, station, choice, theme, zone, nowSec, isActive }: SlipProp
       <span className="min-w-0 grow px-1.5 text-left leading-tight">
         {isLive ? (
           <>
-            <span className="text-body font-medium">{formatLevelDb(latest.LAeq)}</span>
+            <span
+              className={`text-body font-medium ${station.past?.meetsMinimum === false ? 'text-ochre-text' : ''}`}
+            >
+              {formatLevelDb(latest.LAeq)}
+            </span>
             <span className="ml-1 text-[12px] text-ink-soft">dB</span>
           </>
         ) : (
-          <span className="font-medium text-ochre-text">
-            {station.state === 'silent' ? 'silent' : 'no post yet'}
-          </span>
+          <span className="font-medium text-ochre-text">{absenceWords(station)}</span>
         )}
         <span className="block truncate text-[12px] text-ink-soft">
           {code}
-          {isLive && ` · ${averagingOf(station)}`}
+          {isLive && ` · ${slipNote(station)}`}
         </span>
       </span>
+      {station.exceedances ? (
+        <span
+          title={exceedanceWords(station) ?? undefined}
+          className="mr-1 self-start rounded-slight bg-rust px-1 text-[12px] leading-4 font-medium text-paper"
+        >
+          {station.exceedances}
+        </span>
+      ) : null}
     </button>
   );
 }
@@ -116,7 +140,7 @@ const SLIP =
 
 interface GroupSlipProps {
   slip: PlacedSlip;
-  stations: readonly Station[];
+  stations: readonly ShownStation[];
   onSpread: (codes: string[]) => void;
 }
 

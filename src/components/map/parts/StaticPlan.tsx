@@ -10,6 +10,9 @@ const MARGIN_PX = 80;
 export function StaticPlan(props: Omit<MapPaneProps, 'styleUrls'>) {
   const host = useRef<HTMLDivElement>(null);
   const size = useElementSize(host);
+  const { stations, marks } = props;
+  const places = [...stations, ...marks.map(({ id, ...place }) => ({ ...place, code: id }))];
+  const points = planPoints(places, size, MARGIN_PX);
   return (
     <div ref={host} className="absolute inset-0 bg-sunk">
       <p className="absolute top-2 left-3 text-small text-ink-soft">
@@ -19,7 +22,8 @@ export function StaticPlan(props: Omit<MapPaneProps, 'styleUrls'>) {
         <SlipLayer
           {...props}
           frame={size}
-          points={planPoints(props.stations, size, MARGIN_PX)}
+          points={points.slice(0, stations.length)}
+          markPoints={points.slice(stations.length)}
           onSpread={([first = '']) => props.choice.onChoose(first)}
         />
       )}

@@ -1,7 +1,6 @@
-import type { Station } from '#lib/contracts/stations';
 import { formatLevelDb } from '#lib/format/levels';
-import { stateWords } from '../../stations/stateWords';
-import { averagingOf, markStateOf } from '../model/stationWords';
+import { type ShownStation } from '../model/shownStation';
+import { averagingOf, exceedanceWords, markStateOf, stateLine } from '../model/stationWords';
 import { StateShape } from './StateShape';
 
 /** What slips on the map and rows of the list share. */
@@ -15,14 +14,17 @@ export interface StationChoice {
 }
 
 interface StationListProps {
-  stations: readonly Station[];
+  slug: string;
+  stations: readonly ShownStation[];
+  /** Query of the period that exceedances are counted in, with its question mark; empty: the last 24 hours. */
+  periodQuery: string;
   choice: StationChoice;
   zone: string;
   nowSec: number;
 }
 
 /** The same stations as on the map, for the keyboard and for those who do not see the map. */
-export function StationList({ stations, choice, zone, nowSec }: StationListProps) {
+export function StationList({ slug, stations, periodQuery, choice, zone, nowSec }: StationListProps) {
   return (
     <ul className="border-t border-line text-table">
       {stations.map((station) => (
@@ -44,17 +46,30 @@ export function StationList({ stations, choice, zone, nowSec }: StationListProps
             </span>
             <CurrentLevel station={station} />
             <span className="col-start-2 col-end-4 text-small text-ink-soft">
-              {stateWords(station, zone, nowSec)}
+              {stateLine(station, zone, nowSec)}
               {station.overLimit && <span className="text-rust"> · over a limit</span>}
             </span>
           </button>
+          {station.exceedances ? (
+            <a
+              className="mb-1.5 ml-[1.6rem] inline-block text-small"
+              href={exceedancesHref(slug, station.code, periodQuery)}
+            >
+              {exceedanceWords(station)}
+            </a>
+          ) : null}
         </li>
       ))}
     </ul>
   );
 }
 
-function CurrentLevel({ station }: { station: Station }) {
+function exceedancesHref(slug: string, code: string, periodQuery: string): string {
+  const station = `station=${encodeURIComponent(code)}`;
+  return `/n/${slug}/exceedances${periodQuery === '' ? '?' : `${periodQuery}&`}${station}`;
+}
+
+function CurrentLevel({ station }: { station: ShownStation }) {
   if (station.state !== 'live' || !station.latest) return <span className="text-ink-soft">—</span>;
   return (
     <span className="tabular-nums">
