@@ -892,6 +892,16 @@ CREATE TABLE `station_clocks` (
   PRIMARY KEY (`station_id`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
+CREATE TABLE `station_day_traces` (
+  `station_id` int(10) unsigned NOT NULL,
+  `starts_at` int(10) unsigned NOT NULL COMMENT 'beginning of a day of UTC',
+  `outline` blob DEFAULT NULL COMMENT 'per minute the means of groups of thirds; NULL: waits to be made',
+  `shapes` mediumblob DEFAULT NULL COMMENT 'per minute level, mean and thirds about it; NULL: waits to be made',
+  `is_waiting` tinyint(3) unsigned GENERATED ALWAYS AS (`shapes` is null) STORED,
+  PRIMARY KEY (`station_id`,`starts_at`),
+  KEY `waiting` (`is_waiting`,`starts_at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
 CREATE TABLE `station_latest` (
   `station_id` int(10) unsigned NOT NULL,
   `starts_at` int(10) unsigned NOT NULL,

@@ -14,6 +14,7 @@ import { shiftClocks } from './jobs/shiftClocks';
 import { sendMail } from './jobs/sendMail';
 import { sendWebhooks } from './jobs/sendWebhooks';
 import { runDueSlots, type SlotJob } from './jobs/slots';
+import { traceDays } from './jobs/traceDays';
 import { watchDrifts } from './jobs/watchDrifts';
 import { warnOfHeadings } from './jobs/warnEarly';
 import { watchHealth } from './jobs/watchHealth';
@@ -24,6 +25,7 @@ const LOOPS: LoopSettings[] = [
   { name: 'judge-limits', everySec: 5, work: judgeLimits },
   { name: 'import-files', everySec: 2, work: importFiles },
   { name: 'shift-clocks', everySec: 2, work: shiftClocks },
+  { name: 'trace-days', everySec: 60, work: traceDays },
   { name: 'compose-alerts', everySec: 10, work: composeAlerts },
   { name: 'escalate', everySec: 20, work: escalateUnacknowledged },
   { name: 'send-mail', everySec: 2, work: sendMail },

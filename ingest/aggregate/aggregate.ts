@@ -1,4 +1,5 @@
 import { inTransaction, type Connection } from '#db/queries/connection';
+import { dropDayTraces } from '#db/queries/dayTraces';
 import { deleteDirtyMarks, readDirtyMarks, type DirtyMark } from '#db/queries/dirtyMarks';
 import { listSettings, type NetworkSettings } from '#db/queries/networks';
 import { findStationById, lockStation, type StationRow } from '#db/queries/stations';
@@ -22,6 +23,7 @@ export interface AggregationRun {
   marks: number;
 }
 
+const DAY_SEC = 86_400;
 /** Marks read at once. */
 const MOST_MARKS = 5000;
 /** Intervals that are recomputed in one transaction, unless a date has more: a week of minutes, some tenths of a second. */
@@ -96,9 +98,15 @@ async function recomputeChunk(
     async (transaction) => {
       await lockStation(station.id, transaction);
       await recompute(chunk, station, timeline, transaction);
+      await dropDayTraces(station.id, daysOf(chunk), transaction);
       await onQuartersRecomputed(station.id, chunk.quarterStartsSec, transaction);
       await deleteDirtyMarks(chunk.markIds, transaction);
     },
     { isolationLevel: 'read committed' },
   );
+}
+
+/** Days of UTC that a chunk's marked quarter-hours are in, by their beginnings. */
+function daysOf({ quarterStartsSec }: Chunk): number[] {
+  return [...new Set(quarterStartsSec.map((startSec) => startSec - (startSec % DAY_SEC)))];
 }

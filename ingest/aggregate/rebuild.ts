@@ -1,5 +1,6 @@
 import { inTransaction } from '#db/queries/connection';
 import { deleteDayPeriods } from '#db/queries/dayPeriods';
+import { deleteDayTraces } from '#db/queries/dayTraces';
 import { deleteQuarterHours, markMeasuredQuarters } from '#db/queries/quarterHours';
 import { listStationIds, lockStation } from '#db/queries/stations';
 import { aggregateAll, type OnQuartersRecomputed } from './aggregate';
@@ -14,6 +15,7 @@ export async function rebuildAll(onQuartersRecomputed: OnQuartersRecomputed): Pr
       await lockStation(stationId, transaction);
       await deleteQuarterHours(stationId, transaction);
       await deleteDayPeriods(stationId, transaction);
+      await deleteDayTraces(stationId, transaction);
       await markMeasuredQuarters(stationId, transaction);
     });
   }

@@ -81,7 +81,8 @@ export function parseChoice<T extends string>(url: URL, name: string, choices: r
   return choice;
 }
 
-function instantParameter(url: URL, name: string): number {
+/** The instant in a parameter (RFC 3339, any offset). @throws {Problem} 400 where it is missing or none. */
+export function instantParameter(url: URL, name: string): number {
   const text = url.searchParams.get(name);
   if (text === null)
     throw badRequest(`\`${name}\` is missing: give an RFC 3339 time such as 2026-03-01T00:00:00Z.`);

@@ -1,0 +1,41 @@
+import { inTransaction } from '#db/queries/connection';
+import { deleteDayTraces, listWaitingDays, storeDayTrace } from '#db/queries/dayTraces';
+import { listSettings } from '#db/queries/networks';
+import { findStationById, lockStation } from '#db/queries/stations';
+import { packShapes } from '#lib/acoustics/dayTrace';
+import { makeTrace } from '#lib/services/spectra/makeTrace';
+
+/** Days made in one round. */
+const MOST_DAYS = 40;
+/** A day that ended this recently is still being filled by monitors that were late: it is made when it is asked for. */
+const REST_SEC = 1800;
+
+/**
+ * Makes traces of ended days that wait, latest first, at most `mostDays`. Each is made with its station locked, from everything that
+ * was committed before; what changes afterwards marks quarter-hours, whose recomputation has the day wait again.
+ * @returns how many days.
+ */
+export async function makeTraces(now: Date, mostDays: number = MOST_DAYS): Promise<number> {
+  const nowSec = Math.floor(now.getTime() / 1000);
+  const days = await listWaitingDays(nowSec - REST_SEC, mostDays);
+  for (const { stationId, dayStartSec } of days) await makeDay(stationId, dayStartSec);
+  return days.length;
+}
+
+async function makeDay(stationId: number, dayStartSec: number): Promise<void> {
+  await inTransaction(
+    async (transaction) => {
+      const station = await findStationById(stationId, transaction);
+      if (!station) return deleteDayTraces(stationId, transaction);
+      await lockStation(stationId, transaction);
+      const timeline = await listSettings(station.networkId, transaction);
+      const trace = await makeTrace(station, timeline, dayStartSec, transaction);
+      const packed = trace && {
+        outline: Buffer.from(trace.outline),
+        shapes: Buffer.from(packShapes(trace)),
+      };
+      await storeDayTrace(stationId, dayStartSec, packed, transaction);
+    },
+    { isolationLevel: 'read committed' },
+  );
+}

@@ -1,0 +1,135 @@
+import { BAND_SLOTS } from './bands';
+import {
+  DAY_MINUTES,
+  FIRST_GROUP_SLOT,
+  GROUP_THIRDS,
+  NO_GROUP,
+  NO_LEVEL_CENTI_DB,
+  OUTLINE_GROUPS,
+  STEPS_A_DB,
+  type DayTrace,
+} from './dayTrace';
+import { MINIMUM_SHARED_THIRDS } from './likeness';
+
+/** The spectrum that is looked for and how alike a minute must be. */
+export interface ShapeQuery {
+  /** By `bandSlot`, dB; null = not compared. */
+  levelsDb: readonly (number | null)[];
+  /** LAeq of the spectrum. */
+  laeqDb: number | null;
+  /** Largest RMS difference that is alike, dB. */
+  mostRmsDb: number;
+  /** Largest difference of LAeq; null: however loud. */
+  withinDb: number | null;
+}
+
+/** A minute that is alike. */
+export interface ShapeMatch {
+  minute: number;
+  rmsDb: number;
+  laeqDb: number;
+}
+
+/** Rounding an outline's group to whole steps moves its mean by at most half of one. */
+const GROUP_ERROR_DB = 0.5 / STEPS_A_DB;
+
+/** Compares the minutes of day traces with one spectrum. */
+export class ShapeSearch {
+  readonly #slots: number[];
+  readonly #query: Float64Array;
+  readonly #groups: { group: number; steps: number }[];
+
+  constructor(private readonly asked: ShapeQuery) {
+    this.#query = Float64Array.from(
+      { length: BAND_SLOTS },
+      (_, slot) => (asked.levelsDb[slot] ?? 0) * STEPS_A_DB,
+    );
+    this.#slots = [...this.#query.keys()].filter((slot) => (asked.levelsDb[slot] ?? null) !== null);
+    this.#groups = groupsOf(asked.levelsDb);
+  }
+
+  /**
+   * Whether any minute of an outline may be alike. The spread between groups alone is part of the whole spread, so that no minute
+   * that `matches` finds is ever ruled out.
+   */
+  mayMatch(outline: Uint8Array): boolean {
+    const mostSpread = this.#mostGroupSpread();
+    for (let at = 0; at < outline.length; at += OUTLINE_GROUPS) {
+      if (outline[at] !== 0 && this.#groupSpread(outline, at) <= mostSpread) return true;
+    }
+    return false;
+  }
+
+  /** Squared steps between the groups that a minute and the query have whole, about their mean. */
+  #groupSpread(outline: Uint8Array, at: number): number {
+    let sum = 0;
+    let squares = 0;
+    let count = 0;
+    for (const { group, steps } of this.#groups) {
+      const step = outline[at + group] ?? NO_GROUP;
+      if (step === NO_GROUP) continue;
+      const difference = step - steps;
+      sum += difference;
+      squares += difference * difference;
+      count += 1;
+    }
+    return count === 0 ? 0 : squares - (sum * sum) / count;
+  }
+
+  /** Squared steps between groups beyond which the whole spectrum cannot be alike. */
+  #mostGroupSpread(): number {
+    const spread = this.asked.mostRmsDb * Math.sqrt(this.#slots.length / GROUP_THIRDS);
+    return ((spread + GROUP_ERROR_DB * Math.sqrt(OUTLINE_GROUPS)) * STEPS_A_DB) ** 2;
+  }
+
+  /** Minutes of a day that are alike, ascending; `isWanted` leaves out minutes that are not asked for. */
+  matches(trace: DayTrace, isWanted: (minute: number) => boolean): ShapeMatch[] {
+    const { firstSlot, slots } = trace;
+    const compared = this.#slots.filter((slot) => firstSlot <= slot && slot < firstSlot + slots);
+    if (compared.length < MINIMUM_SHARED_THIRDS) return [];
+    const offsets = Int32Array.from(compared, (slot) => slot - firstSlot);
+    const querySteps = Float64Array.from(compared, (slot) => this.#query[slot] ?? 0);
+    const found: ShapeMatch[] = [];
+    for (let minute = 0; minute < DAY_MINUTES; minute += 1) {
+      const laeqCentiDb = trace.laeqCentiDb[minute] ?? NO_LEVEL_CENTI_DB;
+      if (!this.#isLevel(laeqCentiDb) || !isWanted(minute)) continue;
+      const rmsDb = rmsOf(trace.steps, minute * slots, offsets, querySteps);
+      if (rmsDb <= this.asked.mostRmsDb) found.push({ minute, rmsDb, laeqDb: laeqCentiDb / 100 });
+    }
+    return found;
+  }
+
+  #isLevel(laeqCentiDb: number): boolean {
+    if (laeqCentiDb === NO_LEVEL_CENTI_DB) return false;
+    const { withinDb, laeqDb } = this.asked;
+    return withinDb === null || laeqDb === null || Math.abs(laeqCentiDb / 100 - laeqDb) <= withinDb;
+  }
+}
+
+/** RMS difference in dB about its mean; Infinity where too few thirds are shared. */
+function rmsOf(steps: Uint8Array, from: number, offsets: Int32Array, querySteps: Float64Array): number {
+  let sum = 0;
+  let squares = 0;
+  let count = 0;
+  for (let at = 0; at < offsets.length; at += 1) {
+    const step = steps[from + (offsets[at] ?? 0)] ?? 0;
+    if (step === 0) continue;
+    const difference = step - (querySteps[at] ?? 0);
+    sum += difference;
+    squares += difference * difference;
+    count += 1;
+  }
+  if (count < MINIMUM_SHARED_THIRDS) return Infinity;
+  const mean = sum / count;
+  return Math.sqrt(Math.max(0, squares / count - mean * mean)) / STEPS_A_DB;
+}
+
+/** Groups of the outline of which the query has every third, with their means in steps. */
+function groupsOf(levelsDb: readonly (number | null)[]): { group: number; steps: number }[] {
+  return Array.from({ length: OUTLINE_GROUPS }, (_, group) => group).flatMap((group) => {
+    const first = FIRST_GROUP_SLOT + group * GROUP_THIRDS;
+    const known = levelsDb.slice(first, first + GROUP_THIRDS).filter((levelDb) => levelDb !== null);
+    if (known.length < GROUP_THIRDS) return [];
+    return [{ group, steps: (known.reduce((sum, levelDb) => sum + levelDb, 0) / GROUP_THIRDS) * STEPS_A_DB }];
+  });
+}

@@ -1,0 +1,18 @@
+import { requireNetwork } from '#lib/auth/guards';
+import { ALL_ROLES } from '#lib/auth/roles';
+import { csv } from '#lib/http/respond';
+import { route } from '#lib/http/route';
+import { parseSpectrumSearch, searchProblem } from '#lib/http/spectrumSearchQuery';
+import { spellsCsv } from '#lib/services/spectra/spellsCsv';
+import { searchSpectrum } from '#lib/services/spectra/search';
+
+export const GET = route(async (context) => {
+  const { network } = await requireNetwork(context, context.params.network, ALL_ROLES);
+  const search = await parseSpectrumSearch(context.url, network.id, Math.floor(Date.now() / 1000));
+  try {
+    const answer = await searchSpectrum(search, { signal: context.request.signal });
+    return csv(spellsCsv(answer), `${network.slug}-spectrum-search.csv`);
+  } catch (error) {
+    throw searchProblem(error);
+  }
+});
