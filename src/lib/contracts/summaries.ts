@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { localDate } from './common';
+import { LIMIT_UNITS } from './limitMetrics';
 import { placementSpanSchema } from './levels';
 import { periodInstrumentsSchema } from './periodInstruments';
 import { registerRoute } from './registry';
@@ -74,6 +75,7 @@ export const summaryExceedanceSchema = z.object({
   to: z.string(),
   level: z.number(),
   threshold: z.number(),
+  unit: z.enum(LIMIT_UNITS).describe('Of level and threshold'),
   coverage: z.number(),
   state: z.enum(['standing', 'lifted']).describe('lifted: later data or an exclusion took it below'),
 });

@@ -78,6 +78,7 @@ describe('marks of exceedances', () => {
     fromSec,
     toSec: fromSec,
     limitName: 'Day',
+    unit: 'dB',
     levelDb: 70,
     thresholdDb: 68,
     isStanding,

@@ -100,6 +100,7 @@ describe('the sheet', () => {
         limitName: 'Night limit',
         levelDb: 58,
         thresholdDb: 55,
+        unit: 'dB',
         isStanding: true,
       },
     ],

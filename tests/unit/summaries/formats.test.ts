@@ -85,6 +85,15 @@ describe('CSV', () => {
     expect(escaped.find((row) => row['record'] === 'exceedance')?.['limit']).toBe(`'=Night hours, "quiet"`);
     expect(escaped.find((row) => row['quantity'] === 'LA90')?.['value']).toBe('-1.25');
   });
+
+  test('an exceedance is in the unit of its limit', () => {
+    const rows: Row[] = parse(summaryCsv(summaryOf([summaryStation('MER-01')])), { columns: true });
+    const exceedances = rows.filter((row) => row['record'] === 'exceedance');
+    expect(exceedances.map((row) => [row['value'], row['unit'], row['threshold']])).toEqual([
+      ['52.34', 'dB', '50'],
+      ['26.04', '%', '20'],
+    ]);
+  });
 });
 
 describe('PDF', () => {
@@ -158,9 +167,9 @@ describe('PDF', () => {
   test('lists exceedances with limit, level and state', () => {
     const page = pages.find((text) => text.includes('Exceedances') && text.includes('Bands over the month'));
     expect(line(page, '=Night hours, "quiet"')).toEqual(
-      expect.arrayContaining(['17 Mar 03:00', '52.3', '50.0', '100 %', 'standing']),
+      expect.arrayContaining(['17 Mar 03:00', '52.3 dB', '50.0 dB', '100 %', 'standing']),
     );
-    expect(line(page, 'Maximum')).toEqual(expect.arrayContaining(['88.0', '85.0', 'lifted']));
+    expect(line(page, 'Tones')).toEqual(expect.arrayContaining(['26.0 %', '20.0 %', 'lifted']));
   });
 });
 

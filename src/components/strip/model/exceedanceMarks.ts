@@ -1,3 +1,5 @@
+import type { LimitUnit } from '#lib/format/limitMetric';
+
 /** An exceedance as the strip marks it. */
 export interface StripExceedance {
   id: number;
@@ -6,6 +8,8 @@ export interface StripExceedance {
   limitName: string;
   levelDb: number;
   thresholdDb: number;
+  /** Of its level and limit. */
+  unit: LimitUnit;
   isStanding: boolean;
 }
 

@@ -1,6 +1,6 @@
 import { memo } from 'react';
 import { formatInstantUtc } from '#lib/contracts/instants';
-import { formatLevelDb } from '#lib/format/levels';
+import { limitValueText } from '#lib/format/limitMetric';
 import { type StripGeometry } from '../draw/geometry';
 import { exceedanceMarks, type ExceedanceMark, type StripExceedance } from '../model/exceedanceMarks';
 import { stretchWords } from '../model/timeWords';
@@ -71,6 +71,6 @@ function wordsOf({ exceedances }: ExceedanceMark, zone: string): string {
   const [first] = exceedances;
   if (!first) return '';
   if (exceedances.length > 1) return `${exceedances.length} exceedances from ${stretchWords(first, zone)}`;
-  const { limitName, levelDb, thresholdDb } = first;
-  return `Exceedance, ${stretchWords(first, zone)}: ${formatLevelDb(levelDb)} dB, ${limitName}, limit ${thresholdDb} dB`;
+  const { limitName, levelDb, thresholdDb, unit } = first;
+  return `Exceedance, ${stretchWords(first, zone)}: ${limitValueText(levelDb, unit)}, ${limitName}, limit ${limitValueText(thresholdDb, unit)}`;
 }

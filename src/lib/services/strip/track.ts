@@ -1,5 +1,6 @@
 import { type StationRow } from '#db/queries/stations';
 import { type BandFraction } from '#lib/acoustics/bands';
+import { limitUnit, type LimitUnit } from '#lib/format/limitMetric';
 import { type Span } from '#lib/services/levels/spans';
 import { exceedancesOfStation, limitsOfStation, type LimitInForce } from './marks';
 
@@ -16,6 +17,7 @@ export interface StripTrack {
     limitName: string;
     levelDb: number;
     thresholdDb: number;
+    unit: LimitUnit;
     isStanding: boolean;
   }[];
 }
@@ -44,6 +46,7 @@ export async function stripTrack(station: StationRow, period: Span, shiftSec = 0
       limitName: one.limitName,
       levelDb: one.levelDb,
       thresholdDb: one.thresholdTenths / 10,
+      unit: limitUnit(one.metric),
       isStanding: one.state === 'standing',
     })),
   };

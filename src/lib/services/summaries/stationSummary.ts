@@ -10,7 +10,7 @@ import type {
   SummaryExceedance,
   SummaryStation,
 } from '#lib/contracts/summaries';
-import { limitMetricText } from '#lib/format/limitMetric';
+import { limitMetricText, limitUnit } from '#lib/format/limitMetric';
 import { madeBy } from '../calibrations/madeBy';
 import { dayFigures } from '../levels/days';
 import { placementsIn } from '../levels/incident';
@@ -125,6 +125,7 @@ function exceedanceOf(record: ExceedanceRecord): SummaryExceedance {
     to: formatInstantUtc(record.endsAtSec),
     level: record.levelDb,
     threshold: record.thresholdTenths / 10,
+    unit: limitUnit(record.metric),
     coverage: record.coverage,
     state: record.state,
   };

@@ -126,12 +126,13 @@ function periodRows(record: 'month' | 'day', figures: PeriodFigures): Row[] {
 }
 
 function exceedanceRow(exceedance: SummaryExceedance): Row {
-  const { limit, metric, from, to, level, threshold, coverage, state } = exceedance;
+  const { limit, metric, from, to, level, threshold, unit, coverage, state } = exceedance;
   return {
     record: 'exceedance',
     from,
     to,
     ...levelCells(metric, level),
+    unit,
     coverage: rounded(coverage),
     limit,
     threshold,

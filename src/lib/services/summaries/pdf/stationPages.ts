@@ -3,6 +3,7 @@ import type { Content, TableCell } from 'pdfmake/interfaces';
 import { parseInstant } from '#lib/contracts/common';
 import type { Coverage, SummaryDay, SummaryExceedance, SummaryStation } from '#lib/contracts/summaries';
 import { formatCoverage, formatLevelDb } from '#lib/format/levels';
+import { limitValueText } from '#lib/format/limitMetric';
 import { formatInstant, formatInstantShort, formatPeriod } from '#lib/format/times';
 import { instrumentsWords } from '#lib/format/instruments';
 import { placementsText } from '#lib/format/placements';
@@ -199,7 +200,7 @@ function exceedanceList({ exceedances: { items } }: SummaryStation, timeZone: st
             head('Metric', 'left'),
             head('From', 'left'),
             head('Level'),
-            head('Limit, dB'),
+            head('Limit'),
             head('Coverage'),
             head('State', 'left'),
           ],
@@ -214,15 +215,15 @@ function exceedanceList({ exceedances: { items } }: SummaryStation, timeZone: st
 }
 
 function exceedanceRow(
-  { limit, metric, from, level, threshold, coverage, state }: SummaryExceedance,
+  { limit, metric, from, level, threshold, unit, coverage, state }: SummaryExceedance,
   timeZone: string,
 ): TableCell[] {
   return [
     cell(limit, 'left'),
     { ...typeset(metric), alignment: 'left' },
     cell(formatInstantShort(Date.parse(from) / 1000, timeZone), 'left'),
-    cell(formatLevelDb(level)),
-    cell(formatLevelDb(threshold)),
+    cell(limitValueText(level, unit)),
+    cell(limitValueText(threshold, unit)),
     cell(formatCoverage(coverage)),
     cell(state, 'left'),
   ];
