@@ -1,9 +1,14 @@
 import { AxeBuilder } from '@axe-core/playwright';
 import { beforeAll, describe, expect, inject, test } from 'vitest';
+import {
+  addressOf as addressWith,
+  pagePatterns,
+  takesForms,
+  type Subjects,
+} from '#ops/pictures/pagePatterns';
 import { signIn, useBrowser } from './support/browser';
-import { pagePatterns, takesForms } from './support/pagePatterns';
 import { signedInFetch } from './support/signedInFetch';
-import { someSubjects, type Subjects } from './support/subjects';
+import { someSubjects } from './support/subjects';
 
 const { open } = useBrowser();
 
@@ -117,12 +122,8 @@ beforeAll(async () => {
 }, 60_000);
 
 function addressOf(pattern: string, network = 'merrow'): string {
-  const named = Object.entries(subjects).reduce(
-    (address, [parameter, value]) =>
-      address.replace(parameter, parameter.replace(/\[\w+\]/, encodeURIComponent(value))),
-    pattern.replace('[network]', network),
-  );
-  if (named.includes('[')) throw new Error(`What stands in ${pattern}?`);
+  const named = addressWith(pattern, network, subjects);
+  if (named === null) throw new Error(`What stands in ${pattern}?`);
   return named;
 }
 

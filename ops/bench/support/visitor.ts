@@ -1,22 +1,10 @@
 import { randomUUID } from 'node:crypto';
 import { gzipSync } from 'node:zlib';
-import { chromium, type Browser, type Page } from 'playwright-core';
+import { type Browser, type Page } from 'playwright-core';
 import { inTransaction } from '#db/queries/connection';
 import { insertMembership, insertUser } from '#db/queries/users';
+import { launchChromium } from '#ops/chromium';
 import { sessionCookieName, startSession } from '#lib/auth/sessions';
-
-const CHROMIUM_FLAGS = [
-  '--headless=new',
-  '--no-sandbox',
-  '--disable-quic',
-  '--no-first-run',
-  '--disable-background-networking',
-  '--disable-component-update',
-  '--disable-sync',
-  '--use-gl=angle',
-  '--use-angle=swiftshader',
-  '--enable-unsafe-swiftshader',
-];
 
 const SHOWN_WITHIN_MS = 60_000;
 
@@ -45,7 +33,7 @@ export class Visitor {
       await insertUser(person, transaction);
       await insertMembership({ userId: id, networkId, role: 'operator' }, transaction);
     });
-    const browser = await chromium.launch({ executablePath: '/usr/bin/chromium', args: CHROMIUM_FLAGS });
+    const browser = await launchChromium();
     return new Visitor(browser, origin, (await startSession(id)).value, id);
   }
 

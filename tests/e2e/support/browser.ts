@@ -1,19 +1,7 @@
 import { mkdirSync } from 'node:fs';
-import { chromium, type Browser, type BrowserContext, type Page } from 'playwright-core';
+import { type Browser, type BrowserContext, type Page } from 'playwright-core';
 import { afterAll, beforeAll, inject } from 'vitest';
-
-const CHROMIUM_FLAGS = [
-  '--headless=new',
-  '--no-sandbox',
-  '--disable-quic',
-  '--no-first-run',
-  '--disable-background-networking',
-  '--disable-component-update',
-  '--disable-sync',
-  '--use-gl=angle',
-  '--use-angle=swiftshader',
-  '--enable-unsafe-swiftshader',
-];
+import { launchChromium } from '#ops/chromium';
 
 export interface Visit {
   width?: number;
@@ -26,7 +14,7 @@ export function useBrowser() {
   let browser: Browser | undefined;
 
   beforeAll(async () => {
-    browser = await chromium.launch({ executablePath: '/usr/bin/chromium', args: CHROMIUM_FLAGS });
+    browser = await launchChromium();
   });
 
   afterAll(async () => browser?.close());

@@ -1,10 +1,8 @@
 import { setTimeout } from 'node:timers/promises';
 import { inject } from 'vitest';
+import { type Subjects } from '#ops/pictures/pagePatterns';
 import { minutes, post } from './posts';
 import { signedInFetch } from './signedInFetch';
-
-/** What stands in the place of each parameter of a page's address. */
-export type Subjects = Record<string, string>;
 
 const base = '/api/v1/networks/merrow';
 

@@ -15,3 +15,16 @@ export function takesForms(pattern: string): boolean {
   );
   return file !== undefined && readFileSync(file, 'utf8').includes("'POST'");
 }
+
+/** What stands in the place of each parameter of a page's address. */
+export type Subjects = Record<string, string>;
+
+/** The address of a page of a network; null where a parameter has no subject. */
+export function addressOf(pattern: string, network: string, subjects: Subjects): string | null {
+  const named = Object.entries(subjects).reduce(
+    (address, [parameter, value]) =>
+      address.replace(parameter, parameter.replace(/\[\w+\]/, encodeURIComponent(value))),
+    pattern.replace('[network]', network),
+  );
+  return named.includes('[') ? null : named;
+}
