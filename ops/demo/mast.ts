@@ -40,7 +40,7 @@ export async function seedMast(
   span: { fromSec: number; nowSec: number },
 ): Promise<number> {
   const facts = { code: CODE, name: 'Port signal mast', height: 10, maximumAge: 15 };
-  const place = { latitude: 54.1068, longitude: -1.5821 };
+  const place = { latitude: 54.0915, longitude: 1.6105 };
   const { token } = must(await addMast(networkId, { ...facts, ...place }, userId));
   mkdirSync(join(dataDirectory, 'demo'), { recursive: true, mode: 0o700 });
   writeFileSync(tokenPath(dataDirectory), token, { mode: 0o600 });

@@ -35,7 +35,7 @@ export function layerMarks(
 
 /** "3.2 m/s from SW (225°), 2 min old" */
 export function windWords({ speed, direction, ageSeconds }: Wind): string {
-  return `${formatSpeed(speed)} ${formatDirection(direction)}, ${formatDuration(wholeMinutes(ageSeconds))} old`;
+  return `${formatSpeed(speed)} ${formatDirection(direction)}, ${ageWords(ageSeconds)}`;
 }
 
 /** "2 complaints, place rounded to about 1 km" */
@@ -43,8 +43,8 @@ export function complaintsWords(count: number): string {
   return `${count} ${count === 1 ? 'complaint' : 'complaints'}, place rounded to about 1 km`;
 }
 
-function wholeMinutes(sec: number): number {
-  return sec < 60 ? sec : Math.floor(sec / 60) * 60;
+function ageWords(sec: number): string {
+  return sec < 60 ? 'less than 1 min old' : `${formatDuration(Math.floor(sec / 60) * 60)} old`;
 }
 
 function placeOf({ latitude, longitude }: { latitude: number; longitude: number }) {

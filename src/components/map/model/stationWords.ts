@@ -33,9 +33,9 @@ export function absenceWords({ past, state }: ShownStation): string {
   return state === 'silent' ? 'silent' : 'no post yet';
 }
 
-/** The small line of a slip after the station's code: what the level is of, or how much of it there is. */
+/** The small line of a slip after the station's code: what the level is of or, of a past quarter-hour, its coverage. */
 export function slipNote(station: ShownStation): string {
-  return station.past ? `${formatCoverage(station.past.coverage)} valid` : averagingOf(station);
+  return station.past ? formatCoverage(station.past.coverage) : averagingOf(station);
 }
 
 /** "3 exceedances in the period", or nothing where these are not shown or there are none. */

@@ -5,6 +5,9 @@ import '../maplibre';
 import { type MapPaneProps } from './MapPane';
 import { ProjectedSlips } from './ProjectedSlips';
 
+/** Name of the mark on the browser's timeline at which the map had drawn all that it had; later ones tell later rests. */
+const MAP_IDLE_MARK = 'map-idle';
+
 /** The map with its slips. Loaded only where it can be drawn. */
 export default function MapCanvas({ styleUrls, ...slips }: MapPaneProps) {
   const [hasBackground, setHasBackground] = useState(true);
@@ -20,6 +23,7 @@ export default function MapCanvas({ styleUrls, ...slips }: MapPaneProps) {
         attributionControl={{ compact: true }}
         onError={() => setHasBackground(false)}
         onStyleData={() => setHasBackground(true)}
+        onIdle={() => performance.mark(MAP_IDLE_MARK)}
         style={{ position: 'absolute', inset: 0 }}
       >
         <NavigationControl showCompass={false} />

@@ -35,6 +35,7 @@ export function MapLegend({ theme, isPast }: { theme: Theme; isPast: boolean }) 
         </span>
         {highDb} dB
       </span>
+      {isPast && <span>%: valid share of the quarter-hour</span>}
     </div>
   );
 }

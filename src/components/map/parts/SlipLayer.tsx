@@ -126,7 +126,7 @@ function Slip({ slip, station, choice, theme, zone, nowSec, isActive }: SlipProp
       {station.exceedances ? (
         <span
           title={exceedanceWords(station) ?? undefined}
-          className="mr-1 self-start rounded-slight bg-rust px-1 text-[12px] leading-4 font-medium text-paper"
+          className="absolute top-0.5 right-0.5 rounded-slight bg-rust px-1 text-[12px] leading-4 font-medium text-paper"
         >
           {station.exceedances}
         </span>

@@ -90,7 +90,7 @@ export function TimeControl({ zone, nowSec, atSec, onShow }: TimeControlProps) {
           showPlace(Number(target.value));
         }}
       />
-      <span className="w-full tabular-nums pad:w-[19rem]" aria-live={isPlaying ? 'off' : 'polite'}>
+      <span className="w-full tabular-nums" aria-live={isPlaying ? 'off' : 'polite'}>
         {atSec === null ? (
           'Levels as they arrive'
         ) : (
