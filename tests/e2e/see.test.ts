@@ -94,6 +94,32 @@ test('the strip by keyboard: a stretch is marked, left out with a reason, and co
   await context.close();
 });
 
+/** A date as its day begins by UTC. */
+const dateDaysAgo = (days: number) => new Date(Date.now() - days * 86_400_000).toISOString().slice(0, 10);
+
+test('the map through a day: the address keeps the moment and the layers, one press leads back to now', async () => {
+  const { page, context } = await open();
+  await signIn(page, 'regulator@merrow.example');
+  await page.goto('/n/merrow/map');
+  const scrub = page.getByLabel('Quarter-hour of the day');
+  await page.getByLabel('Wind', { exact: true }).check();
+  await page.getByLabel('Day', { exact: true }).fill(dateDaysAgo(3));
+  await scrub.focus();
+  await page.keyboard.press('Home');
+  await page.keyboard.press('ArrowRight');
+  expect(page.url()).toContain(`at=${dateDaysAgo(3)}T00:15`);
+  expect(page.url()).toContain('layers=wind');
+  await page.reload();
+  await page.getByText('00:15 to 00:30').first().waitFor();
+  await page
+    .getByText(/% valid/)
+    .first()
+    .waitFor();
+  await page.getByRole('button', { name: 'Live', exact: true }).click();
+  expect(page.url()).not.toContain('at=');
+  await context.close();
+});
+
 test('without WebGL the map is a plan with the same stations', async () => {
   const { page, context } = await open();
   await page.addInitScript(() => {
