@@ -1,4 +1,4 @@
-import { pool, type Connection, type Writes } from './connection';
+import { insertRows, pool, type Connection, type Writes } from './connection';
 
 /** How far a monitor's clock was ahead of ours in a quarter-hour of ours, by the post with the shortest way. */
 export interface ClockOffset {
@@ -12,11 +12,12 @@ export async function noteOffset(
   { quarterStartSec, aheadSec }: ClockOffset,
   conn: Writes,
 ): Promise<void> {
-  await conn.raw(
-    `INSERT INTO clock_offsets (station_id, quarter_starts_at, ahead_sec) VALUES (?, ?, ?)
-     ON DUPLICATE KEY UPDATE ahead_sec = GREATEST(ahead_sec, VALUES(ahead_sec))`,
-    [stationId, quarterStartSec, aheadSec],
-  );
+  await insertRows(conn, {
+    head: 'INSERT INTO clock_offsets (station_id, quarter_starts_at, ahead_sec)',
+    rows: ['(?, ?, ?)'],
+    tail: 'ON DUPLICATE KEY UPDATE ahead_sec = GREATEST(ahead_sec, VALUES(ahead_sec))',
+    bindings: [stationId, quarterStartSec, aheadSec],
+  });
 }
 
 /** Offsets of a station in quarter-hours that begin in `fromSec <= t < toSec`, ascending. */

@@ -86,10 +86,10 @@ export interface StandingShift extends ClockEpisode {
 
 const STANDING = ['moving', 'moved', 'reversing'] as const;
 
-/** The statement that answers a row where any shift of a station stands, or is being made or reversed. */
-export function hasStandingShiftsText(stationId: number): string {
+/** The statement that answers the ids of those of some stations of which a shift stands, or is being made or reversed. */
+export function shiftedStationsText(stationIds: readonly number[]): string {
   const states = STANDING.map((state) => `'${state}'`).join(', ');
-  return `SELECT 1 FROM clock_shifts WHERE station_id = ${stationId} AND state IN (${states}) LIMIT 1`;
+  return `SELECT DISTINCT station_id FROM clock_shifts WHERE station_id IN (${stationIds.join(', ')}) AND state IN (${states})`;
 }
 
 /** Shifts of a station that stand, or are being made or reversed, by their beginning. */

@@ -9,6 +9,28 @@ export type Connection = Knex | Knex.Transaction;
  */
 export interface Writes {
   raw(sql: string, bindings?: readonly Binding[]): PromiseLike<unknown>;
+  /** Takes rows to insert with those of other posts; without it they go by themselves. */
+  collect?(insertion: Insertion): void;
+}
+
+/** Rows to insert, and the same text before and after all that may go in one statement. They are independent of other tables' rows. */
+export interface Insertion {
+  head: string;
+  /** Each a list of cells in brackets, the placeholders of `bindings` among them. */
+  rows: readonly string[];
+  tail?: string;
+  bindings?: readonly Binding[];
+}
+
+/** Inserts rows, at once or with what else is collected. */
+export async function insertRows(conn: Writes, insertion: Insertion): Promise<void> {
+  if (conn.collect) conn.collect(insertion);
+  else await conn.raw(insertionText(insertion), insertion.bindings);
+}
+
+/** The statement that inserts them. */
+export function insertionText({ head, rows, tail = '' }: Insertion): string {
+  return `${head} VALUES ${rows.join(', ')} ${tail}`;
 }
 
 export type Binding = string | number | Date | Buffer | null;
@@ -44,6 +66,11 @@ export async function inTransaction<T>(
 export function isLockConflict(error: unknown): boolean {
   const errno = (error as { errno?: number }).errno;
   return errno === DEADLOCK || errno === LOCK_WAIT_TIMEOUT;
+}
+
+/** Whether an error says that the connection is gone or never came to be, so that others would meet the same. */
+export function isConnectionLost(error: unknown): boolean {
+  return (error as { fatal?: boolean }).fatal === true;
 }
 
 /** Waits longer from attempt to attempt. */

@@ -1,4 +1,4 @@
-import { pool, type Connection, type Writes } from './connection';
+import { insertRows, pool, type Connection, type Writes } from './connection';
 
 /** One quarter-hour of a station that must be recomputed; several marks may name the same one. */
 export interface DirtyMark {
@@ -16,9 +16,10 @@ export async function insertDirtyMarks(
   const markedAt = Math.floor(Date.now() / 1000);
   const rows = Array.from(quarterStartsSec, (quarter) => `(${stationId}, ${quarter}, ${markedAt})`);
   for (let first = 0; first < rows.length; first += 1000) {
-    await conn.raw(
-      `INSERT INTO dirty_marks (station_id, quarter_starts_at, marked_at) VALUES ${rows.slice(first, first + 1000).join(', ')}`,
-    );
+    await insertRows(conn, {
+      head: 'INSERT INTO dirty_marks (station_id, quarter_starts_at, marked_at)',
+      rows: rows.slice(first, first + 1000),
+    });
   }
 }
 

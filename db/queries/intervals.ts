@@ -1,4 +1,4 @@
-import { pool, type Connection, type Writes } from './connection';
+import { insertRows, pool, type Connection, type Writes } from './connection';
 import {
   INTERVAL_COLUMNS,
   intervalCellsText,
@@ -31,7 +31,7 @@ export async function selectIntervals(
 }
 
 /** The statement that reads them, as rows of `IntervalCells`. */
-export function selectIntervalsText(stationId: number, fromSec: number, toSec: number): string {
+function selectIntervalsText(stationId: number, fromSec: number, toSec: number): string {
   return `SELECT ${INTERVAL_COLUMNS} FROM interval_levels
     WHERE station_id = ${stationId} AND starts_at > ${fromSec - LONGEST_INTERVAL_SEC} AND starts_at < ${toSec}
       AND starts_at + duration_sec > ${fromSec}
@@ -55,8 +55,9 @@ export async function insertIntervals(
     const rows = intervals
       .slice(first, first + ROWS_A_STATEMENT)
       .map((row) => `(${leading}, ${intervalCellsText(row)})`);
-    await conn.raw(
-      `INSERT INTO interval_levels (station_id, import_id, ${INTERVAL_COLUMNS}) VALUES ${rows.join(', ')}`,
-    );
+    await insertRows(conn, {
+      head: `INSERT INTO interval_levels (station_id, import_id, ${INTERVAL_COLUMNS})`,
+      rows,
+    });
   }
 }

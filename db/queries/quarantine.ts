@@ -1,5 +1,5 @@
 import { createHash } from 'node:crypto';
-import { pool, type Connection, type Writes } from './connection';
+import { insertRows, pool, type Connection, type Writes } from './connection';
 
 /** A refused record, kept for the operator with its reason. */
 export interface NewQuarantined {
@@ -42,12 +42,12 @@ async function insertRecords(
 ): Promise<void> {
   for (let first = 0; first < records.length; first += ROWS_A_STATEMENT) {
     const part = records.slice(first, first + ROWS_A_STATEMENT);
-    await conn.raw(
-      `INSERT INTO quarantine
-         (station_id, code, detail, record, record_digest, starts_at, received_at, import_id)
-       VALUES ${part.map(() => '(?, ?, ?, ?, ?, ?, ?, ?)').join(', ')}
-       ON DUPLICATE KEY UPDATE times_received = times_received + ${importId === null ? 1 : 0}`,
-      part.flatMap(({ code, detail, record, startSec }) => [
+    await insertRows(conn, {
+      head: `INSERT INTO quarantine
+         (station_id, code, detail, record, record_digest, starts_at, received_at, import_id)`,
+      rows: part.map(() => '(?, ?, ?, ?, ?, ?, ?, ?)'),
+      tail: `ON DUPLICATE KEY UPDATE times_received = times_received + ${importId === null ? 1 : 0}`,
+      bindings: part.flatMap(({ code, detail, record, startSec }) => [
         stationId,
         code,
         detail.slice(0, 500),
@@ -57,7 +57,7 @@ async function insertRecords(
         receivedAt,
         importId,
       ]),
-    );
+    });
   }
 }
 

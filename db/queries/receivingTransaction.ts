@@ -1,6 +1,14 @@
 import mysql from 'mysql2';
 import { receivingPool } from '../receiving';
-import { isLockConflict, MOST_ATTEMPTS, pauseBefore, type Binding, type Writes } from './connection';
+import {
+  insertionText,
+  isLockConflict,
+  MOST_ATTEMPTS,
+  pauseBefore,
+  type Binding,
+  type Insertion,
+  type Writes,
+} from './connection';
 
 /** Rows of one SELECT, each an array of cells. */
 export type Cells = unknown[][];
@@ -45,13 +53,35 @@ async function attemptOnce<T>(
   return decided.value;
 }
 
+const MOST_ROWS_A_STATEMENT = 600;
+
+/** Statements to send at once, the rows of one table in one of them. */
 class Collected implements Writes {
-  readonly statements: string[] = [];
+  private readonly others: string[] = [];
+  private readonly insertions = new Map<string, (Insertion & { rows: string[] })[]>();
 
   raw(sql: string, bindings?: readonly Binding[]): PromiseLike<void> {
-    this.statements.push(bindings ? mysql.format(sql, [...bindings], false, 'Z') : sql);
+    this.others.push(format(sql, bindings));
     return Promise.resolve();
   }
+
+  collect({ head, rows, tail = '', bindings }: Insertion): void {
+    const kind = `${head} ${tail}`;
+    const ofKind = this.insertions.get(kind) ?? [];
+    const last = ofKind.at(-1);
+    const texts = bindings ? [format(rows.join(', '), bindings)] : rows;
+    if (last && last.rows.length + rows.length <= MOST_ROWS_A_STATEMENT) last.rows.push(...texts);
+    else ofKind.push({ head, tail, rows: [...texts] });
+    this.insertions.set(kind, ofKind);
+  }
+
+  get statements(): string[] {
+    return [...[...this.insertions.values()].flat().map(insertionText), ...this.others];
+  }
+}
+
+function format(sql: string, bindings: readonly Binding[] | undefined): string {
+  return bindings ? mysql.format(sql, [...bindings], false, 'Z') : sql;
 }
 
 function acquire(): Promise<mysql.PoolConnection> {

@@ -1,4 +1,4 @@
-import { pool, type Connection, type Writes } from './connection';
+import { insertRows, pool, type Connection, type Writes } from './connection';
 
 /** How far a monitor's clock was ahead of ours, in seconds, at its last two posts. */
 export interface StationClock {
@@ -16,11 +16,12 @@ export async function noteClock(
   conn: Writes,
 ): Promise<void> {
   // The value before comes first: it is what the row holds so far.
-  await conn.raw(
-    `INSERT INTO station_clocks (station_id, ahead_sec, ahead_before_sec, noted_at) VALUES (?, ?, ?, ?)
-     ON DUPLICATE KEY UPDATE ahead_before_sec = ahead_sec, ahead_sec = VALUES(ahead_sec), noted_at = VALUES(noted_at)`,
-    [stationId, aheadSec, aheadSec, notedAt],
-  );
+  await insertRows(conn, {
+    head: 'INSERT INTO station_clocks (station_id, ahead_sec, ahead_before_sec, noted_at)',
+    rows: ['(?, ?, ?, ?)'],
+    tail: `ON DUPLICATE KEY UPDATE ahead_before_sec = ahead_sec, ahead_sec = VALUES(ahead_sec), noted_at = VALUES(noted_at)`,
+    bindings: [stationId, aheadSec, aheadSec, notedAt],
+  });
 }
 
 /** Clocks of a network's stations that send their time. */

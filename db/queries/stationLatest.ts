@@ -1,4 +1,4 @@
-import { pool, type Connection, type Writes } from './connection';
+import { insertRows, pool, type Connection, type Writes } from './connection';
 
 /** The newest interval of a station, and when the station last posted anything new. */
 export interface LatestInterval {
@@ -29,13 +29,13 @@ export async function noteLatest(latest: LatestInterval, conn: Writes, isPost = 
     'wind_speed_centi_ms',
     'battery_centi_v',
   ];
-  await conn.raw(
-    `INSERT INTO station_latest (station_id, starts_at, ${columns.join(', ')}, received_at)
-     VALUES (?, ?, ?, ?, ?, ?, ?, ?, ?)
-     ON DUPLICATE KEY UPDATE ${columns.map(newer).join(', ')}, 
+  await insertRows(conn, {
+    head: `INSERT INTO station_latest (station_id, starts_at, ${columns.join(', ')}, received_at)`,
+    rows: ['(?, ?, ?, ?, ?, ?, ?, ?, ?)'],
+    tail: `ON DUPLICATE KEY UPDATE ${columns.map(newer).join(', ')},
        received_at = ${isPost ? 'GREATEST(received_at, VALUES(received_at))' : 'received_at'},
        starts_at = GREATEST(starts_at, VALUES(starts_at))`,
-    [
+    bindings: [
       latest.stationId,
       latest.startSec,
       latest.durationSec,
@@ -46,7 +46,7 @@ export async function noteLatest(latest: LatestInterval, conn: Writes, isPost = 
       latest.batteryV === null ? null : Math.round(latest.batteryV * 100),
       latest.receivedAt,
     ],
-  );
+  });
 }
 
 /** Notes the newest stored interval anew, after stored ones went; the time of the last post stays. Without any, the row goes. */

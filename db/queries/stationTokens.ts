@@ -52,14 +52,6 @@ export async function findStationByToken(
   return (rows as TokenStation[])[0];
 }
 
-/** The statement that answers a row where all that was found by a token still is so. */
-export function isStillSoText({ tokenId, id, bandFraction, acceptsFromSec }: TokenStation): string {
-  return `SELECT 1 FROM station_tokens JOIN stations ON stations.id = station_tokens.station_id
-    WHERE station_tokens.id = ${tokenId} AND station_tokens.revoked_at IS NULL AND stations.id = ${id}
-      AND stations.retired_at IS NULL AND stations.band_fraction = ${bandFraction}
-      AND stations.accepts_from <=> ${acceptsFromSec ?? 'NULL'}`;
-}
-
 export async function listStationTokens(
   stationId: number,
   conn: Connection = pool(),

@@ -68,12 +68,7 @@ export async function findStationById(
  * computed from them, holds this lock, so that each sees the other's whole work or nothing of it.
  */
 export async function lockStation(id: number, transaction: Connection): Promise<void> {
-  await transaction.raw(lockStationText(id));
-}
-
-/** The statement that does it. */
-export function lockStationText(id: number): string {
-  return `SELECT id FROM stations WHERE id = ${id} FOR UPDATE`;
+  await transaction.raw('SELECT id FROM stations WHERE id = ? FOR UPDATE', [id]);
 }
 
 /** Stations of a network by code; retired ones too. */

@@ -1,32 +1,38 @@
 import { bandSetOf } from '#db/queries/bandSets';
-import { hasStandingShiftsText } from '#db/queries/clockShifts';
-import { inTransaction, pool } from '#db/queries/connection';
-import { intervalsOfCells, type IntervalCells } from '#db/queries/intervalRows';
-import { selectIntervalsText, type StoredInterval } from '#db/queries/intervals';
-import { inReceivingTransaction, type Cells } from '#db/queries/receivingTransaction';
-import { lockStation, lockStationText } from '#db/queries/stations';
-import { isStillSoText, type TokenStation } from '#db/queries/stationTokens';
+import { inTransaction, isConnectionLost } from '#db/queries/connection';
+import { lockStation } from '#db/queries/stations';
+import type { TokenStation } from '#db/queries/stationTokens';
 import type { Receipt } from '#lib/contracts/intervals';
 import { clockRulesFor, possibleStretches } from './clockRules';
 import { decide } from './decide';
 import type { Envelope } from './envelope';
 import { finishPost, type Post, type ReceivingStation } from './finishPost';
+import { Gatherer } from './gatherer';
 import { readRecords } from './readRecords';
-import { addStretch, storedAround, stretchesOf } from './storedAround';
+import { storedAround } from './storedAround';
+import { circumstancesOf, StaleStation, takeTogether } from './together';
 
-/** What was remembered of a station is no longer so: ask for it anew. Nothing was done. */
-export class StaleStation extends Error {
-  constructor() {
-    super('The station or its token has changed.');
-    this.name = 'StaleStation';
-  }
-}
+export { StaleStation };
+
+/** Posts of more intervals gain nothing by sharing a transaction, and would keep the others of it waiting. */
+const MOST_SHARED_INTERVALS = 120;
+
+const gatherer = new Gatherer<Post, Receipt>(
+  {
+    together: (posts) => takeTogether(posts, { isWaiting: false }),
+    alone: takeAlone,
+    keyOf: ({ station }) => station.id,
+    sizeOf: ({ envelope }) => envelope.intervals.length,
+    isHopeless: isConnectionLost,
+  },
+  { groupsAtOnce: 2, mostItems: 64, mostSize: 600 },
+);
 
 /**
  * Takes a post of a station: each record is accepted, known already, or refused with a reason and kept in quarantine. When the
  * promise resolves everything accepted and every record kept is durable, with marks for what must be recomputed.
  * A station that is `remembered` by its token costs no question of its own: that it is still so is asked with the rest.
- * @throws {StaleStation} when it is not.
+ * @throws {StaleStation} when it is not. Small posts that wait at the same moment share a transaction.
  */
 export async function receiveBatch(
   station: ReceivingStation,
@@ -35,40 +41,23 @@ export async function receiveBatch(
   remembered: TokenStation | null = null,
 ): Promise<Receipt> {
   const { bandIndices, intervals } = envelope;
-  const bandSet =
-    'problem' in bandIndices ? bandIndices : await bandSetOf(station.bandFraction, bandIndices.indices);
+  const bandSet = await ('problem' in bandIndices
+    ? bandIndices
+    : bandSetOf(station.bandFraction, bandIndices.indices));
   const read = readRecords(intervals, bandSet, now.getTime() / 1000);
   const post = { station, remembered, envelope, now, bandSet, ...read };
-  return (await receiveAtOnce(post)) ?? (await receiveThroughShifts(post));
+  return intervals.length > MOST_SHARED_INTERVALS ? takeAlone(post) : gatherer.take(post);
 }
 
-/** Takes a post in two journeys to the database; null, with nothing done, where a shift of the clock stands for the station. */
-async function receiveAtOnce(post: Post): Promise<Receipt | null> {
-  const { station, remembered, candidates, bandSet } = post;
-  const asked = remembered ? [isStillSoText(remembered)] : [];
-  if ('problem' in bandSet || candidates.length === 0) {
-    return inReceivingTransaction(asked, async (rows, writes) => {
-      if (remembered) requireStillSo(rows[0]);
-      return finishPost(post, null, writes);
-    });
-  }
-  const stretches = stretchesOf(candidates.map(({ interval }) => interval));
-  const reads = [
-    lockStationText(station.id),
-    hasStandingShiftsText(station.id),
-    ...stretches.map(({ fromSec, toSec }) => selectIntervalsText(station.id, fromSec, toSec)),
-    ...asked,
-  ];
-  return inReceivingTransaction(reads, async ([, shifts, ...rows], writes) => {
-    if (remembered) requireStillSo(rows.pop());
-    if (shifts?.length !== 0) return null;
-    const stored = await intervalsOf(rows);
-    return finishPost(post, decide(candidates, { ...circumstancesOf(post), stored, bandSet }), writes);
-  });
+async function takeAlone(post: Post): Promise<Receipt> {
+  const [outcome] = await takeTogether([post], { isWaiting: true });
+  if (outcome?.kind === 'done') return outcome.answer;
+  if (outcome?.kind === 'failed') throw outcome.error;
+  return takeThroughShifts(post);
 }
 
 /** Takes a post of a station some of whose intervals a shift of the clock puts elsewhere than their monitor says. */
-async function receiveThroughShifts(post: Post): Promise<Receipt> {
+async function takeThroughShifts(post: Post): Promise<Receipt> {
   const { station, candidates, bandSet } = post;
   return inTransaction(async (transaction) => {
     if ('problem' in bandSet) return finishPost(post, null, transaction);
@@ -79,18 +68,4 @@ async function receiveThroughShifts(post: Post): Promise<Receipt> {
     const decision = decide(candidates, { ...circumstancesOf(post), stored, bandSet, clock });
     return finishPost(post, decision, transaction);
   });
-}
-
-function requireStillSo(rows: Cells | undefined): void {
-  if (rows?.length !== 1) throw new StaleStation();
-}
-
-async function intervalsOf(rows: readonly Cells[]): Promise<StoredInterval[]> {
-  const stored: StoredInterval[] = [];
-  for (const stretch of rows) addStretch(stored, await intervalsOfCells(stretch as IntervalCells[], pool()));
-  return stored;
-}
-
-function circumstancesOf({ station, now }: Post) {
-  return { acceptsFromSec: station.acceptsFromSec, receivedAtSec: Math.floor(now.getTime() / 1000) };
 }

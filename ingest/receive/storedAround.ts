@@ -20,7 +20,7 @@ export async function storedAround(
 }
 
 /** Adds what is stored in the next stretch: the last of one stretch may reach into the next. */
-export function addStretch(stored: StoredInterval[], found: readonly StoredInterval[]): void {
+function addStretch(stored: StoredInterval[], found: readonly StoredInterval[]): void {
   const lastStartSec = stored.at(-1)?.startSec ?? -1;
   for (const interval of found) if (interval.startSec > lastStartSec) stored.push(interval);
 }

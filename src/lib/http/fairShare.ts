@@ -18,8 +18,16 @@ interface Bounds {
   longestWaitMs: number;
 }
 
-/** Waits for the turn, does something in it and hands it on. @throws {NoRoom} when it does not come in time. */
-export type TakeTurn = <T>(inTurn: () => Promise<T>) => Promise<T>;
+/**
+ * Waits for the turn, does something in it and hands it on; `part`: how much of a turn it takes, all of it unless told otherwise.
+ * @throws {NoRoom} when it does not come in time.
+ */
+export type TakeTurn = <T>(inTurn: () => Promise<T>, part?: number) => Promise<T>;
+
+interface Waiting {
+  part: number;
+  call(): void;
+}
 
 /**
  * Shares something scarce among keys: whoever is under way waits for its turn, and turns go round from key to key, so that one that
@@ -29,7 +37,7 @@ export class FairShare {
   private readonly underWay = new Counts();
   private readonly inTurn = new Counts();
   /** Who waits, the key first that has waited longest since its last turn. */
-  private readonly waiting = new Map<string, (() => void)[]>();
+  private readonly waiting = new Map<string, Waiting[]>();
 
   constructor(private readonly bounds: Bounds) {}
 
@@ -39,51 +47,56 @@ export class FairShare {
     if (this.underWay.total >= this.bounds.mostOfAll) throw new NoRoom('all');
     this.underWay.add(key, 1);
     try {
-      return await work((inTurn) => this.takeTurn(key, inTurn));
+      return await work((inTurn, part = 1) => this.takeTurn(key, inTurn, part));
     } finally {
       this.underWay.add(key, -1);
     }
   }
 
-  private async takeTurn<T>(key: string, inTurn: () => Promise<T>): Promise<T> {
-    await this.untilCalled(key);
+  private async takeTurn<T>(key: string, inTurn: () => Promise<T>, part: number): Promise<T> {
+    await this.untilCalled(key, part);
     try {
       return await inTurn();
     } finally {
-      this.inTurn.add(key, -1);
+      this.inTurn.add(key, -part);
       this.callNext();
     }
   }
 
-  private untilCalled(key: string): Promise<void> {
+  private untilCalled(key: string, part: number): Promise<void> {
     return new Promise((resolve, reject) => {
-      const call = () => {
-        clearTimeout(timer);
-        resolve();
+      const waiting = {
+        part,
+        call() {
+          clearTimeout(timer);
+          resolve();
+        },
       };
       const timer = setTimeout(() => {
-        this.forget(key, call);
+        this.forget(key, waiting);
         reject(new NoRoom('waited'));
       }, this.bounds.longestWaitMs);
-      this.waiting.set(key, [...(this.waiting.get(key) ?? []), call]);
+      this.waiting.set(key, [...(this.waiting.get(key) ?? []), waiting]);
       this.callNext();
     });
   }
 
   private callNext(): void {
-    for (const [key, [call, ...later]] of this.waiting) {
+    for (const [key, [next, ...later]] of this.waiting) {
       if (this.inTurn.total >= this.bounds.turnsAtOnce) return;
-      if (!call || this.inTurn.of(key) >= this.bounds.turnsOfKey) continue;
-      this.inTurn.add(key, 1);
+      if (!next || this.inTurn.of(key) + next.part > this.bounds.turnsOfKey) continue;
+      // What takes more than is left waits for it; smaller ones do not overtake it for ever.
+      if (this.inTurn.total + next.part > this.bounds.turnsAtOnce) return;
+      this.inTurn.add(key, next.part);
       // The key goes to the end of the round.
       this.waiting.delete(key);
       if (later.length > 0) this.waiting.set(key, later);
-      call();
+      next.call();
     }
   }
 
-  private forget(key: string, call: () => void): void {
-    const others = (this.waiting.get(key) ?? []).filter((other) => other !== call);
+  private forget(key: string, waiting: Waiting): void {
+    const others = (this.waiting.get(key) ?? []).filter((other) => other !== waiting);
     if (others.length > 0) this.waiting.set(key, others);
     else this.waiting.delete(key);
   }

@@ -9,7 +9,7 @@ import { Problem } from './problem';
 const inflateInPool = promisify(gunzip);
 
 /** Up to here inflating at once costs less than going to another thread and back. */
-const SMALL_BYTES = 16 * 1024;
+const SMALL_BYTES = 64 * 1024;
 const LARGEST_CHUNK_BYTES = 1024 * 1024;
 
 /** A body as it came, not yet inflated. */
@@ -57,20 +57,29 @@ function decode(bytes: Buffer): string {
   return bytes.toString(isAscii(bytes) ? 'latin1' : 'utf8');
 }
 
+/** Whether a body is small, as far as can be told before it is inflated. */
+export function isSmallBody({ bytes, isGzip }: MonitorBody): boolean {
+  return bytes.length <= SMALL_BYTES && (!isGzip || claimedBytes(bytes) <= SMALL_BYTES);
+}
+
+/** What gzip says of its size; it may lie. */
+function claimedBytes(bytes: Buffer): number {
+  return bytes.length < 18 ? 0 : bytes.readUInt32LE(bytes.length - 4);
+}
+
 async function inflate(bytes: Buffer): Promise<Buffer> {
-  const claimedBytes = bytes.length < 18 ? 0 : bytes.readUInt32LE(bytes.length - 4);
-  if (claimedBytes <= SMALL_BYTES && bytes.length <= SMALL_BYTES) {
-    const small = inflateSmall(bytes);
+  if (isSmallBody({ bytes, isGzip: true })) {
+    const small = inflateSmall(bytes, claimedBytes(bytes));
     if (small) return small;
   }
-  // What gzip says of its size only chooses the size of the pieces: it may lie.
-  const chunkSize = Math.min(LARGEST_CHUNK_BYTES, Math.max(SMALL_BYTES, claimedBytes + 64));
+  // What gzip says of its size only chooses the size of the pieces.
+  const chunkSize = Math.min(LARGEST_CHUNK_BYTES, Math.max(SMALL_BYTES, claimedBytes(bytes) + 64));
   return inflateInPool(bytes, { maxOutputLength: MOST_BODY_BYTES, chunkSize });
 }
 
-function inflateSmall(bytes: Buffer): Buffer | null {
+function inflateSmall(bytes: Buffer, claimed: number): Buffer | null {
   try {
-    return gunzipSync(bytes, { maxOutputLength: 2 * SMALL_BYTES });
+    return gunzipSync(bytes, { maxOutputLength: 2 * SMALL_BYTES, chunkSize: Math.max(1024, claimed + 64) });
   } catch (error) {
     if ((error as { code?: string }).code === 'ERR_BUFFER_TOO_LARGE') return null;
     throw error;
