@@ -2,8 +2,8 @@ import { z } from 'zod';
 
 /** Longest period whose mean spectrum is looked for, in days. */
 export const MOST_ASKED_DAYS = 31;
-/** Most days times stations of one search: ten years of eight stations take some ten seconds. */
-export const MOST_STATION_DAYS = 30_000;
+/** Longest stretch that is searched: ten years. The cost grows with it and with the stations. */
+export const MOST_SEARCHED_DAYS = 3660;
 
 const number = (least: number, most: number, unit: string) => {
   const message = `must be a number from ${least} to ${most} ${unit}`;

@@ -1,7 +1,7 @@
 import { findStation } from '#db/queries/stations';
 import {
   MOST_ASKED_DAYS,
-  MOST_STATION_DAYS,
+  MOST_SEARCHED_DAYS,
   spectrumSearchOptionsSchema,
 } from '#lib/contracts/spectrumSearch';
 import { type SpectrumSearch } from '#lib/services/spectra/search';
@@ -34,7 +34,7 @@ function searchedOf(url: URL, nowSec: number): Period {
   const toSec = url.searchParams.has('until') ? instantParameter(url, 'until') : nowSec;
   const fromSec = url.searchParams.has('since') ? instantParameter(url, 'since') : toSec - YEAR_SEC;
   if (fromSec >= toSec) throw badRequest('`since` must be before `until`.');
-  if (toSec - fromSec > MOST_STATION_DAYS * DAY_SEC) {
+  if (toSec - fromSec > MOST_SEARCHED_DAYS * DAY_SEC) {
     throw badRequest('The dates that are searched span too many years.');
   }
   return { fromSec: Math.max(0, fromSec), toSec };

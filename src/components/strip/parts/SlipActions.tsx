@@ -27,7 +27,7 @@ export function SlipActions({ selection, isMarked, context }: SlipActionsProps) 
   const { slug, stationCode } = context;
   const period = periodQuery(selection);
   const code = encodeURIComponent(stationCode);
-  const complaint = new URLSearchParams({
+  const marked = new URLSearchParams({
     from: formatInstantUtc(selection.fromSec),
     to: formatInstantUtc(selection.toSec),
     station: stationCode,
@@ -43,7 +43,7 @@ export function SlipActions({ selection, isMarked, context }: SlipActionsProps) 
         </a>
       )}
       {context.mayLogComplaints && (
-        <a className="button" href={`/n/${slug}/complaints/new?${complaint.toString()}`}>
+        <a className="button" href={`/n/${slug}/complaints/new?${marked.toString()}`}>
           Log complaint
         </a>
       )}
@@ -57,6 +57,9 @@ export function SlipActions({ selection, isMarked, context }: SlipActionsProps) 
           Exclude
         </button>
       )}
+      <a className="button" href={`/n/${slug}/spectra/search?${marked.toString()}`}>
+        Find elsewhere
+      </a>
       <CopyLink />
       <a className="button" href={`/api/v1/networks/${slug}/stations/${code}/intervals.csv?${period}`}>
         CSV

@@ -7,21 +7,36 @@ export interface CivilMinute {
   minuteOfDay: number;
 }
 
-/** Clocks of minutes that come in order: a quarter-hour is looked up once, no clock changes within it. */
+const DAY_SEC = 86_400;
+const DAY_MINUTES = 1440;
+
+/** Clocks of minutes that come in order: only a day in which clocks change is looked up by quarter-hours, others once. */
 export class CivilMinutes {
-  #quarterSec = NaN;
-  #quarter: CivilMinute = { weekday: 0, minuteOfDay: 0 };
+  #fromSec = NaN;
+  #lastsSec = 0;
+  #from: CivilMinute = { weekday: 0, minuteOfDay: 0 };
 
   constructor(private readonly zone: string) {}
 
   at(sec: number): CivilMinute {
-    const quarterSec = sec - (sec % QUARTER_SEC);
-    if (quarterSec !== this.#quarterSec) {
-      this.#quarterSec = quarterSec;
-      const weekday = weekdayOf(localDateAt(quarterSec, this.zone));
-      this.#quarter = { weekday, minuteOfDay: localMinuteAt(quarterSec, this.zone) };
-    }
-    const { weekday, minuteOfDay } = this.#quarter;
-    return { weekday, minuteOfDay: (minuteOfDay + Math.floor((sec - quarterSec) / 60)) % 1440 };
+    if (!(sec >= this.#fromSec && sec < this.#fromSec + this.#lastsSec)) this.#lookUp(sec);
+    const minutes = this.#from.minuteOfDay + Math.floor((sec - this.#fromSec) / 60);
+    const isNextDay = minutes >= DAY_MINUTES;
+    return {
+      weekday: (this.#from.weekday + Number(isNextDay)) % 7,
+      minuteOfDay: isNextDay ? minutes - DAY_MINUTES : minutes,
+    };
+  }
+
+  /** The longest stretch around an instant without a change: its day of UTC, or its quarter-hour. */
+  #lookUp(sec: number): void {
+    const daySec = sec - (sec % DAY_SEC);
+    const isEven = localMinuteAt(daySec, this.zone) === localMinuteAt(daySec + DAY_SEC, this.zone);
+    this.#fromSec = isEven ? daySec : sec - (sec % QUARTER_SEC);
+    this.#lastsSec = isEven ? DAY_SEC : QUARTER_SEC;
+    this.#from = {
+      weekday: weekdayOf(localDateAt(this.#fromSec, this.zone)),
+      minuteOfDay: localMinuteAt(this.#fromSec, this.zone),
+    };
   }
 }
