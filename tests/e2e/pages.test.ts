@@ -73,6 +73,7 @@ const ACCESS: Record<string, Access> = {
   '/n/[network]/quarantine/[id]': 'members',
   '/n/[network]/search': 'members',
   '/n/[network]/settings': 'members',
+  '/n/[network]/spectra/search': 'members',
   '/n/[network]/stations': 'members',
   '/n/[network]/stations/[code]': 'members',
   '/n/[network]/stations/[code]/clock': 'members',

@@ -22,6 +22,7 @@ export const FINDABLE_PAGES: readonly FindablePage[] = [
   { label: 'Health', terms: 'silent battery clock trouble coverage', path: 'health' },
   { label: 'Health settings', terms: 'thresholds alerts', path: 'health/settings' },
   { label: 'Exceedances', terms: 'alerts over limit loud', path: 'exceedances' },
+  { label: 'This spectrum elsewhere', terms: 'alike shape find sound', path: 'spectra/search' },
   { label: 'Complaints', terms: 'residents cases reply', path: 'complaints' },
   { label: 'Log a complaint', terms: 'new add resident', path: 'complaints/new', roles: LIAISON },
   { label: 'Residents’ form', terms: 'report public complaint', path: 'complaints/form', roles: LIAISON },
