@@ -81,7 +81,8 @@ describe('what is found', () => {
 
   test('a limit by name, a month in words and digits', async () => {
     expect(await find('regulator', 'quiet')).toMatchObject([
-      { kind: 'limit', label: 'Quiet hours', detail: 'LAeq,1 h above 55 dB' },
+      { kind: 'limit', label: 'Quiet hours', detail: 'LAeq,1 h above 55.0 dB' },
+      { kind: 'page', label: 'Alerts' },
     ]);
     const month = { kind: 'month', label: 'March 2026', href: '/n/merrow/summaries/2026-03' };
     expect(await find('regulator', 'march')).toMatchObject([month]);
