@@ -601,6 +601,7 @@ CREATE TABLE `limit_versions` (
   `to_min` smallint(5) unsigned DEFAULT NULL COMMENT 'before from_min: across midnight',
   `minimum_coverage` double DEFAULT NULL COMMENT 'null: the network minimum',
   `station_ids` longtext CHARACTER SET utf8mb4 COLLATE utf8mb4_bin DEFAULT NULL COMMENT 'null: every station of the network' CHECK (json_valid(`station_ids`)),
+  `group_id` int(10) unsigned DEFAULT NULL COMMENT 'of station_groups, which station_ids were taken from',
   `recipients` longtext CHARACTER SET utf8mb4 COLLATE utf8mb4_bin NOT NULL COMMENT 'e-mail addresses' CHECK (json_valid(`recipients`)),
   `reason` varchar(500) NOT NULL DEFAULT '',
   `created_by` char(36) DEFAULT NULL,
@@ -900,6 +901,17 @@ CREATE TABLE `station_day_traces` (
   `is_waiting` tinyint(3) unsigned GENERATED ALWAYS AS (`shapes` is null) STORED,
   PRIMARY KEY (`station_id`,`starts_at`),
   KEY `waiting` (`is_waiting`,`starts_at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `station_groups` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `network_id` int(10) unsigned NOT NULL,
+  `name` varchar(160) NOT NULL,
+  `station_ids` longtext CHARACTER SET utf8mb4 COLLATE utf8mb4_bin NOT NULL COMMENT 'as they are now; limit_versions keep what they were' CHECK (json_valid(`station_ids`)),
+  `changed_by` char(36) DEFAULT NULL,
+  `changed_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`id`),
+  UNIQUE KEY `station_groups_name` (`network_id`,`name`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
 CREATE TABLE `station_latest` (

@@ -61,6 +61,8 @@ export interface LimitVersion {
   minimumCoverage: number | null;
   /** Null: every station of the network. */
   stationIds: number[] | null;
+  /** The group that the stations were taken from, else null. */
+  groupId: number | null;
   recipients: string[];
   reason: string;
   createdBy: string | null;
@@ -72,7 +74,14 @@ export interface LimitVersion {
 type Assigned = 'id' | 'limitId' | 'networkId' | 'version' | 'createdAt' | 'withdrawnAt' | 'holidayDates';
 /** What is left out of these is as it is without: fixed windows, named dates like any other, no parameter of its quantity. */
 type Optional =
-  'windowMin' | 'stepMin' | 'holidays' | 'percent' | 'bandToIndex' | 'eventTenths' | 'eventMinimumSec';
+  | 'windowMin'
+  | 'stepMin'
+  | 'holidays'
+  | 'percent'
+  | 'bandToIndex'
+  | 'eventTenths'
+  | 'eventMinimumSec'
+  | 'groupId';
 export type NewLimitVersion = Omit<LimitVersion, Assigned | Optional> & Partial<Pick<LimitVersion, Optional>>;
 
 interface Row extends Omit<LimitVersion, 'stationIds' | 'recipients' | 'holidayDates'> {
@@ -116,6 +125,8 @@ export interface LimitRecord extends LimitVersion {
   createdByName: string | null;
   withdrawnByName: string | null;
   withdrawalReason: string | null;
+  /** As the group is called now. */
+  groupName: string | null;
 }
 
 /** As `listLimitVersions`, or of one limit of the network only, with names and reasons for people. */
@@ -127,11 +138,13 @@ export async function listLimitRecords(
   const rows: (Row & Omit<LimitRecord, keyof LimitVersion>)[] = await selectVersions(conn)
     .leftJoin({ creator: 'users' }, 'creator.id', 'v.created_by')
     .leftJoin({ withdrawer: 'users' }, 'withdrawer.id', 'l.withdrawn_by')
+    .leftJoin({ g: 'station_groups' }, 'g.id', 'v.group_id')
     .where({ 'l.network_id': networkId, ...(limitId === null ? {} : { 'l.id': limitId }) })
     .select({
       createdByName: 'creator.name',
       withdrawnByName: 'withdrawer.name',
       withdrawalReason: 'l.withdrawal_reason',
+      groupName: 'g.name',
     });
   return versionsOf(rows, networkId, conn);
 }
@@ -176,6 +189,7 @@ export async function insertVersion(
     to_min: fields.toMin,
     minimum_coverage: fields.minimumCoverage,
     station_ids: fields.stationIds && JSON.stringify(fields.stationIds),
+    group_id: fields.groupId ?? null,
     recipients: JSON.stringify(fields.recipients),
     reason: fields.reason,
     created_by: fields.createdBy,
@@ -223,6 +237,7 @@ function selectVersions(conn: Connection) {
       toMin: 'v.to_min',
       minimumCoverage: 'v.minimum_coverage',
       stationIds: 'v.station_ids',
+      groupId: 'v.group_id',
       recipients: 'v.recipients',
       reason: 'v.reason',
       createdBy: 'v.created_by',

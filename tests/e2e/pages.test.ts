@@ -61,6 +61,7 @@ const ACCESS: Record<string, Access> = {
   '/n/[network]/limits': 'members',
   '/n/[network]/limits/[id]': 'members',
   '/n/[network]/limits/[id]/edit': 'operator',
+  '/n/[network]/limits/groups': 'members',
   '/n/[network]/limits/holidays': 'members',
   '/n/[network]/limits/new': 'operator',
   '/n/[network]/limits/trial': 'operator',

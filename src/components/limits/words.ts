@@ -85,9 +85,17 @@ export function datesWords(weekdays: readonly Weekday[], holidays: LimitVersionV
   }
 }
 
-/** "every station", or their codes. */
-export function stationsWords(stations: readonly string[] | null): string {
-  return stations === null ? 'every station' : stations.join(', ');
+/** "every station", their codes, or "Quay side: MER-01, MER-02" of a group. */
+export function stationsWords({
+  stations,
+  groupName = null,
+}: {
+  stations: readonly string[] | null;
+  groupName?: string | null;
+}): string {
+  if (stations === null) return groupName ?? 'every station';
+  const codes = stations.join(', ');
+  return groupName === null ? codes : `${groupName}: ${codes}`;
 }
 
 /** Coverage that a window needs to be compared. */
@@ -124,6 +132,7 @@ export const LIMIT_LABELS = {
   minimumCoverage: 'Minimum coverage',
   scope: 'Stations',
   stations: 'Chosen stations',
+  group: 'Group of stations',
   recipients: 'Who gets e-mail',
   effectiveFrom: 'In force from',
   reason: 'Reason',

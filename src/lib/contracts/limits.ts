@@ -52,6 +52,13 @@ const fields = {
     .nullable()
     .default(null)
     .describe('Codes; null: every station of the network, later ones too'),
+  group: z
+    .number('must be chosen')
+    .int('must be chosen')
+    .positive('must be chosen')
+    .nullable()
+    .default(null)
+    .describe('Number of a group of stations, instead of `stations`: those that it has at the time'),
   recipients: z
     .array(recipient)
     .max(MOST_RECIPIENTS, `must be at most ${MOST_RECIPIENTS} addresses`)
@@ -70,6 +77,8 @@ type Checked = Omit<z.output<z.ZodObject<typeof fields>>, 'reason'>;
 function checkTogether(limit: Checked, context: z.RefinementCtx): void {
   const issue = (path: keyof Checked, message: string) =>
     context.addIssue({ code: 'custom', path: [path], message });
+  if (limit.group !== null && limit.stations !== null)
+    issue('stations', 'must be left out where a group is named');
   for (const [field, message] of [...metricIssues(limit), ...windowIssues(limit)]) issue(field, message);
 }
 
@@ -104,7 +113,9 @@ export const limitVersionSchema = z.object({
   from: z.string().nullable(),
   to: z.string().nullable(),
   minimumCoverage: minimumCoverage.nullable(),
-  stations: z.array(z.string()).nullable(),
+  stations: z.array(z.string()).nullable().describe('Of a group those that this version holds for'),
+  group: z.number().int().nullable(),
+  groupName: z.string().nullable(),
   recipients: z.array(z.string()).optional().describe('For operators only: addresses are personal data'),
   reason: z.string(),
   effectiveFrom: z.string(),

@@ -83,7 +83,7 @@ async function tried(limit: object, changes: object = {}): Promise<LimitTrialAns
 async function set(limit: object): Promise<number> {
   const read = readRule(
     newLimitSchema.parse({ name: 'Trial', ...limit }),
-    await listStations(networkId),
+    { stations: await listStations(networkId), groups: [] },
     FROM_SEC,
   );
   if (!read.isValid) throw new Error(JSON.stringify(read.problems));

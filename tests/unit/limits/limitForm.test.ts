@@ -42,6 +42,13 @@ const windows = fc.oneof(
     .map(([window, times]) => ({ window, ...times })),
 );
 
+const places = fc.oneof(
+  fc
+    .option(fc.subarray(['A-1', 'B-2', 'C-3'], { minLength: 1 }))
+    .map((stations) => ({ stations, group: null })),
+  fc.integer({ min: 1, max: 99 }).map((group) => ({ stations: null, group })),
+);
+
 /** A limit as the interface shows it. */
 const limits = fc
   .record({
@@ -51,13 +58,13 @@ const limits = fc
       .map((days) => WEEKDAYS.filter((day) => days.includes(day))),
     coverage: fc.option(fc.integer({ min: 0, max: 100 })),
     holidays: fc.constantFrom(...HOLIDAY_RULES),
-    stations: fc.option(fc.subarray(['A-1', 'B-2', 'C-3'], { minLength: 1 })),
+    where: places,
     recipients: fc.subarray(['a@x.example', 'b+c@y.example']),
     quantity,
     windows,
   })
   .map(
-    ({ quantity: what, windows: when, coverage, ...rest }) =>
+    ({ quantity: what, windows: when, where, coverage, ...rest }) =>
       ({
         name: 'Any',
         reason: 'Said before',
@@ -73,6 +80,7 @@ const limits = fc
         stepMinutes: null,
         ...what,
         ...when,
+        ...where,
         ...rest,
         minimumCoverage: coverage === null || what.metric === 'LAFmax' ? null : coverage / 100,
       }) as unknown as Limit,
@@ -88,7 +96,13 @@ test('a limit shown in the form and sent back unchanged is the same limit', () =
 });
 
 test('hours to midnight are kept, and from midnight to midnight is all day', () => {
-  const limit = { weekdays: WEEKDAYS, window: '1h', metric: 'LAeq', stations: null } as unknown as Limit;
+  const limit = {
+    weekdays: WEEKDAYS,
+    window: '1h',
+    metric: 'LAeq',
+    stations: null,
+    group: null,
+  } as unknown as Limit;
   const evening = limitValues({ ...limit, from: '18:00', to: '24:00' }, ZONE);
   expect(evening.text).toMatchObject({ from: '18:00', to: '00:00' });
   const allDay = limitValues({ ...limit, from: '00:00', to: '24:00' }, ZONE);

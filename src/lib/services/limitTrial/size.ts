@@ -12,7 +12,7 @@ const SLOW: readonly LimitMetric[] = ['LAeqLessUsual', 'tonalShare', 'eventCount
 const MOST_MERGED_PARTS = 4e6;
 const DAY_MS = 86_400_000;
 
-/** Why a trial is too large to be answered at once, at the field that makes it so; null where it is not. */
+/** Why a trial at so many stations is too large to be answered at once, at the field that makes it so; null where it is not. */
 export function sizeProblem({ limit, from, to }: LimitTrialQuery, stationCount: number): FieldProblem | null {
   const days = (Date.parse(to) - Date.parse(from)) / DAY_MS;
   const lengthMin = lengthMinutesOf(limit) ?? 0;
@@ -30,8 +30,7 @@ export function sizeProblem({ limit, from, to }: LimitTrialQuery, stationCount: 
       message: `is tried on at most ${MOST_FINE_DAYS} days, because it reads much for each window`,
     };
   if (stepMinutes === null || PARTS_OF[metric] === 'energies') return null;
-  const stations = limit.stations?.length ?? stationCount;
-  const parts = stations * days * (1440 / stepMinutes) * (lengthMin / (isFine ? 5 : 15));
+  const parts = stationCount * days * (1440 / stepMinutes) * (lengthMin / (isFine ? 5 : 15));
   const message = 'makes too many windows to try at once: take fewer days or stations, or a shorter window';
   return parts > MOST_MERGED_PARTS ? { field: 'stepMinutes', message } : null;
 }

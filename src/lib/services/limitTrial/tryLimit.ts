@@ -2,6 +2,7 @@ import { pool, type Connection } from '#db/queries/connection';
 import { listHolidays } from '#db/queries/holidays';
 import { findLimit, type LimitVersion } from '#db/queries/limits';
 import { listSettings, pickSettings } from '#db/queries/networks';
+import { listStationGroups } from '#db/queries/stationGroups';
 import { listStations } from '#db/queries/stations';
 import { toTenths } from '#lib/acoustics/rounding';
 import { formatInstantUtc } from '#lib/contracts/common';
@@ -40,11 +41,12 @@ export async function tryLimit(
   conn: Connection = pool(),
 ): Promise<Outcome<LimitTrialAnswer>> {
   const stations = await listStations(networkId, conn);
-  const read = readRule({ ...query.limit, effectiveFrom: undefined }, stations, nowSec);
+  const places = { stations, groups: await listStationGroups(networkId, conn) };
+  const read = readRule({ ...query.limit, effectiveFrom: undefined }, places, nowSec);
   if (!read.isValid) return { kind: 'invalid', problems: read.problems };
   const today = query.basedOn === null ? null : await versionOfToday(networkId, query.basedOn, nowSec, conn);
   if (query.basedOn !== null && !today) return unknown('The network has no limit with this number.');
-  const problem = sizeProblem(query, stations.length);
+  const problem = sizeProblem(query, read.version.stationIds?.length ?? stations.length);
   if (problem) return { kind: 'invalid', problems: [problem] };
   const timeline = await listSettings(networkId, conn);
   const holidayDates = new Set((await listHolidays(networkId, conn)).map(({ date }) => date));

@@ -1,8 +1,7 @@
 import type { NewLimitVersion } from '#db/queries/limits';
-import type { StationRow } from '#db/queries/stations';
-import { bandByNominalHz, bandLabel, type Band } from '#lib/acoustics/bands';
-import { thirdsOfOctave } from '#lib/acoustics/octaves';
+import { bandByNominalHz, type Band } from '#lib/acoustics/bands';
 import { MOST_DAYS_BACK, WEEKDAYS, type NewLimit } from '#lib/contracts/limits';
+import { whereOf, type LimitPlaces } from './where';
 
 /** What is wrong with a limit, by field. */
 export interface FieldProblem {
@@ -15,28 +14,19 @@ export type LimitRule = Required<Omit<NewLimitVersion, 'createdBy'>>;
 
 export type ReadRule = { isValid: true; version: LimitRule } | { isValid: false; problems: FieldProblem[] };
 
-/** A limit as it is stored, from what the interface was given; `stations` are those of the network. */
-export function readRule(limit: NewLimit, stations: readonly StationRow[], nowSec: number): ReadRule {
+/** A limit as it is stored, from what the interface was given, and what the network has. */
+export function readRule(limit: NewLimit, places: LimitPlaces, nowSec: number): ReadRule {
   const problems: FieldProblem[] = [];
   const effectiveFromSec = limit.effectiveFrom ?? nowSec;
   if (effectiveFromSec < nowSec - MOST_DAYS_BACK * 86_400)
     problems.push({ field: 'effectiveFrom', message: `must be at most ${MOST_DAYS_BACK} days ago` });
   const [band, bandTo] = bandsOfLimit(limit);
-  const named = limit.stations === null ? null : [...new Set(limit.stations)].sort();
-  const chosen = named?.map((code) => stations.find((station) => station.code === code));
-  const unknown = named?.filter((_, at) => !chosen?.[at]) ?? [];
-  if (unknown.length > 0)
-    problems.push({ field: 'stations', message: `${unknown.join(', ')}: no station of this network` });
-  const known = chosen?.filter((station) => station !== undefined) ?? null;
-  const without = band
-    ? (known ?? []).filter((station) => !measures(station, band) || !measures(station, bandTo ?? band))
-    : [];
-  if (band && without.length > 0) {
-    const codes = without.map(({ code }) => code).join(', ');
-    const upTo = bandTo ? ` to ${bandLabel(bandTo)}` : '';
-    const what = `${bandLabel(band)}${upTo} ${band.fraction === 3 ? 'third' : 'octave'}${bandTo ? 's' : ''}`;
-    problems.push({ field: 'stations', message: `${codes}: not measured there, the ${what}` });
-  }
+  const where = whereOf(
+    limit,
+    [band, bandTo].filter((one) => one !== undefined),
+    places,
+  );
+  if (Array.isArray(where)) return { isValid: false, problems: [...problems, ...where] };
   if (problems.length > 0) return { isValid: false, problems };
   return {
     isValid: true,
@@ -59,7 +49,7 @@ export function readRule(limit: NewLimit, stations: readonly StationRow[], nowSe
       fromMin: limit.from,
       toMin: limit.to,
       minimumCoverage: limit.minimumCoverage,
-      stationIds: known && known.map(({ id }) => id),
+      ...where,
       recipients: distinctAddresses(limit.recipients),
       reason: limit.reason,
     },
@@ -69,16 +59,6 @@ export function readRule(limit: NewLimit, stations: readonly StationRow[], nowSe
 /** The band of a limit, and of several the last one. */
 function bandsOfLimit({ bandFraction, bandHz, bandToHz }: NewLimit): (Band | undefined)[] {
   return [bandHz, bandToHz].map((hz) => (bandFraction && hz ? bandByNominalHz(bandFraction, hz) : undefined));
-}
-
-/** Whether a station has a band: its own, or an octave whose three thirds it has. */
-export function measures(
-  { bandFraction, firstBandIndex, lastBandIndex }: StationRow,
-  { fraction, index }: Pick<Band, 'fraction' | 'index'>,
-): boolean {
-  if (bandFraction === 1 && fraction === 3) return false;
-  const needed = bandFraction === fraction ? [index] : thirdsOfOctave(index);
-  return needed.every((one) => firstBandIndex <= one && one <= lastBandIndex);
 }
 
 /** An address that differs only in capitals is the same one. */

@@ -2,6 +2,7 @@ import { appendAudit } from '#db/queries/audit';
 import { inTransaction, type Connection } from '#db/queries/connection';
 import { findLimit, insertLimit, insertVersion, lockLimits, withdrawLimit } from '#db/queries/limits';
 import { settingsAt } from '#db/queries/networks';
+import { listStationGroups, lockStationGroups } from '#db/queries/stationGroups';
 import { listStations } from '#db/queries/stations';
 import { formatInstantUtc } from '#lib/contracts/common';
 import type { Limit, NewLimit } from '#lib/contracts/limits';
@@ -27,9 +28,9 @@ const ISOLATION = { isolationLevel: 'read committed' } as const;
 
 /** Sets a limit. Windows that begin from its beginning on are judged by it, those of the past too. */
 export async function addLimit(setter: LimitSetter, limit: NewLimit): Promise<SetOutcome> {
-  const read = await ruleOf(setter, limit);
-  if (!read.isValid) return { kind: 'invalid', problems: read.problems };
   return inTransaction<SetOutcome>(async (transaction) => {
+    const read = await ruleOf(setter, limit, transaction);
+    if (!read.isValid) return { kind: 'invalid', problems: read.problems };
     const version = { ...read.version, createdBy: setter.userId };
     const limitId = await insertLimit(setter.networkId, version, transaction);
     await pendLimit(setter.networkId, limitId, version.effectiveFromSec, transaction);
@@ -47,9 +48,9 @@ export async function reviseLimit(
   limit: NewLimit,
   basedOn: number | null = null,
 ): Promise<SetOutcome> {
-  const read = await ruleOf(setter, limit);
-  if (!read.isValid) return { kind: 'invalid', problems: read.problems };
   return inTransaction<SetOutcome>(async (transaction) => {
+    const read = await ruleOf(setter, limit, transaction);
+    if (!read.isValid) return { kind: 'invalid', problems: read.problems };
     await lockLimits([limitId], transaction);
     const last = (await findLimit(setter.networkId, limitId, transaction)).at(-1);
     if (!last) return { kind: 'unknown' };
@@ -81,14 +82,24 @@ export async function endLimit(setter: LimitSetter, limitId: number, reason: str
   }, ISOLATION);
 }
 
-async function ruleOf({ networkId }: LimitSetter, limit: NewLimit): Promise<ReadRule> {
+/** The rule to be set. Holds the network's groups: their stations stay as it has them until it is stored. */
+async function ruleOf(
+  { networkId }: LimitSetter,
+  limit: NewLimit,
+  transaction: Connection,
+): Promise<ReadRule> {
   const nowSec = Math.floor(Date.now() / 1000);
-  const { scheme } = await settingsAt(networkId, nowSec);
+  const { scheme } = await settingsAt(networkId, nowSec, transaction);
   if (limit.window === 'evening' && scheme.eveningStartMin === null) {
     const message = 'must be another one: this network has no evening';
     return { isValid: false, problems: [{ field: 'window', message }] };
   }
-  return readRule(limit, await listStations(networkId), nowSec);
+  await lockStationGroups(networkId, transaction);
+  const places = {
+    stations: await listStations(networkId, transaction),
+    groups: await listStationGroups(networkId, transaction),
+  };
+  return readRule(limit, places, nowSec);
 }
 
 async function audited(

@@ -88,6 +88,8 @@ function versionView(
     from: fromMin === null ? null : formatClockTime(fromMin),
     to: toMin === null ? null : formatClockTime(toMin),
     minimumCoverage: version.minimumCoverage,
+    group: version.groupId,
+    groupName: version.groupName,
     stations: stationIds && stationIds.map((id) => codes.get(id) ?? String(id)).sort(),
     ...(seesRecipients && { recipients: version.recipients }),
     reason: version.reason,

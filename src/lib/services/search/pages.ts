@@ -29,6 +29,7 @@ export const FINDABLE_PAGES: readonly FindablePage[] = [
   { label: 'Summaries', terms: 'monthly report months pdf', path: 'summaries' },
   { label: 'Limits', terms: 'thresholds', path: 'limits' },
   { label: 'Holidays', terms: 'named dates sundays limits', path: 'limits/holidays' },
+  { label: 'Station groups', terms: 'group stations limits', path: 'limits/groups' },
   { label: 'Set a limit', terms: 'new add threshold', path: 'limits/new', roles: OPERATOR },
   { label: 'Try a limit', terms: 'trial past threshold', path: 'limits/trial', roles: OPERATOR },
   { label: 'Alerts', terms: 'e-mail digest quiet hours notifications', path: 'alerts' },

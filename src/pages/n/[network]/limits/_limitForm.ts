@@ -29,6 +29,7 @@ export function limitOfForm({ text, all }: LimitValues, zone: string) {
         ? null
         : fractionOf(text['minimumCoverage']),
     stations: text['scope'] === 'chosen' ? all('stations') : null,
+    group: text['scope'] === 'group' ? Number(text['group']) : null,
     recipients: (text['recipients'] ?? '').split(/[\s,;]+/).filter((address) => address !== ''),
     effectiveFrom: instantOf(text['effectiveFrom'] ?? '', zone),
     reason: text['reason'] ?? '',
@@ -46,7 +47,7 @@ export const NEW_LIMIT_VALUES: LimitValues = valuesOf(
  * of a limit that is to come, from when that would.
  */
 export function limitValues(limit: Limit, zone: string): LimitValues {
-  const { bandFraction, bandHz, minimumCoverage, stations, recipients = [] } = limit;
+  const { bandFraction, bandHz, minimumCoverage, stations, group, recipients = [] } = limit;
   const upcomingSec = limit.state === 'upcoming' ? parseInstant(limit.effectiveFrom) : null;
   const isAllDay = limit.from === '00:00' && limit.to === '24:00';
   return valuesOf(
@@ -67,11 +68,12 @@ export function limitValues(limit: Limit, zone: string): LimitValues {
       // A time control has no 24:00; for windows that begin before it, 00:00 is the same.
       to: isAllDay ? '' : (limit.to?.replace('24:00', '00:00') ?? ''),
       minimumCoverage: minimumCoverage === null ? '' : String(Math.round(minimumCoverage * 10_000) / 100),
-      scope: stations === null ? 'all' : 'chosen',
+      scope: group !== null ? 'group' : stations === null ? 'all' : 'chosen',
+      group: group === null ? '' : String(group),
       recipients: recipients.join('\n'),
       effectiveFrom: upcomingSec === null ? '' : urlInstant(upcomingSec, zone),
     },
-    { weekdays: limit.weekdays, stations: stations ?? [] },
+    { weekdays: limit.weekdays, stations: group === null ? (stations ?? []) : [] },
   );
 }
 
