@@ -1,5 +1,5 @@
 import type { ClockOffsets } from '#lib/contracts/clockShifts';
-import { formatLocalDate } from '#lib/format/times';
+import { formatDayMonth, formatLocalDate } from '#lib/format/times';
 import { localDateAt, type LocalDate } from '#lib/time/zone';
 import { offsetWords } from './clockWords';
 
@@ -79,7 +79,7 @@ export function dayTicks({ fromSec, toSec }: { fromSec: number; toSec: number },
     const sec = fromSec + at * stepSec;
     return {
       share: (sec - fromSec) / (toSec - fromSec),
-      label: localDateAt(sec, zone).slice(5).replace('-', '/'),
+      label: formatDayMonth(sec, zone),
     };
   });
 }

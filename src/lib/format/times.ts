@@ -30,9 +30,14 @@ export function formatInstant(sec: number, zone: string): string {
   return `${formatDate(sec, zone)}, ${formatClock(sec, zone)}`;
 }
 
+/** "17 Mar", for axes. */
+export function formatDayMonth(sec: number, zone: string): string {
+  return civilFormatter('dayMonth', zone).format(sec * 1000);
+}
+
 /** "17 Mar 12:00" for narrow columns. */
 export function formatInstantShort(sec: number, zone: string): string {
-  return `${civilFormatter('dayMonth', zone).format(sec * 1000)} ${formatClock(sec, zone)}`;
+  return `${formatDayMonth(sec, zone)} ${formatClock(sec, zone)}`;
 }
 
 /** "March 2026" of a month `YYYY-MM`. */
