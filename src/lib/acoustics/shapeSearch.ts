@@ -32,12 +32,16 @@ export interface ShapeMatch {
 
 /** Rounding an outline's group to whole steps moves its mean by at most half of one. */
 const GROUP_ERROR_DB = 0.5 / STEPS_A_DB;
+/** Of sums of squares, in floating point. */
+const ROUNDING = 1e-6;
 
 /** Compares the minutes of day traces with one spectrum. */
 export class ShapeSearch {
   readonly #slots: number[];
   readonly #query: Float64Array;
-  readonly #groups: { group: number; steps: number }[];
+  /** Groups of which the query has every third, and their means in steps. */
+  readonly #groups: Uint8Array;
+  readonly #groupSteps: Float64Array;
 
   constructor(private readonly asked: ShapeQuery) {
     this.#query = Float64Array.from(
@@ -45,7 +49,9 @@ export class ShapeSearch {
       (_, slot) => (asked.levelsDb[slot] ?? 0) * STEPS_A_DB,
     );
     this.#slots = [...this.#query.keys()].filter((slot) => (asked.levelsDb[slot] ?? null) !== null);
-    this.#groups = groupsOf(asked.levelsDb);
+    const groups = groupsOf(asked.levelsDb);
+    this.#groups = Uint8Array.from(groups, ({ group }) => group);
+    this.#groupSteps = Float64Array.from(groups, ({ steps }) => steps);
   }
 
   /**
@@ -65,10 +71,10 @@ export class ShapeSearch {
     let sum = 0;
     let squares = 0;
     let count = 0;
-    for (const { group, steps } of this.#groups) {
-      const step = outline[at + group] ?? NO_GROUP;
+    for (let one = 0; one < this.#groups.length; one += 1) {
+      const step = outline[at + (this.#groups[one] ?? 0)] ?? NO_GROUP;
       if (step === NO_GROUP) continue;
-      const difference = step - steps;
+      const difference = step - (this.#groupSteps[one] ?? 0);
       sum += difference;
       squares += difference * difference;
       count += 1;
@@ -89,11 +95,12 @@ export class ShapeSearch {
     if (compared.length < MINIMUM_SHARED_THIRDS) return [];
     const offsets = Int32Array.from(compared, (slot) => slot - firstSlot);
     const querySteps = Float64Array.from(compared, (slot) => this.#query[slot] ?? 0);
+    const mostSquares = compared.length * (this.asked.mostRmsDb * STEPS_A_DB) ** 2;
     const found: ShapeMatch[] = [];
     for (let minute = 0; minute < DAY_MINUTES; minute += 1) {
       const laeqCentiDb = trace.laeqCentiDb[minute] ?? NO_LEVEL_CENTI_DB;
       if (!this.#isLevel(laeqCentiDb) || !isWanted(minute)) continue;
-      const rmsDb = rmsOf(trace.steps, minute * slots, offsets, querySteps);
+      const rmsDb = rmsOf(trace.steps, minute * slots, { offsets, querySteps, mostSquares });
       if (rmsDb <= this.asked.mostRmsDb) found.push({ minute, rmsDb, laeqDb: laeqCentiDb / 100 });
     }
     return found;
@@ -106,8 +113,19 @@ export class ShapeSearch {
   }
 }
 
-/** RMS difference in dB about its mean; Infinity where too few thirds are shared. */
-function rmsOf(steps: Uint8Array, from: number, offsets: Int32Array, querySteps: Float64Array): number {
+/** The query beside the bands of a trace. */
+interface Beside {
+  offsets: Int32Array;
+  querySteps: Float64Array;
+  /** Sum of squares about the mean beyond which no minute is alike. */
+  mostSquares: number;
+}
+
+/** Bands after which a minute that is too far already is given up: the squares about the mean only grow. */
+const LOOK_EVERY = 8;
+
+/** RMS difference in dB about its mean; Infinity where too few thirds are shared or it is surely too large. */
+function rmsOf(steps: Uint8Array, from: number, { offsets, querySteps, mostSquares }: Beside): number {
   let sum = 0;
   let squares = 0;
   let count = 0;
@@ -118,6 +136,7 @@ function rmsOf(steps: Uint8Array, from: number, offsets: Int32Array, querySteps:
     sum += difference;
     squares += difference * difference;
     count += 1;
+    if (count % LOOK_EVERY === 0 && squares - (sum * sum) / count > mostSquares + ROUNDING) return Infinity;
   }
   if (count < MINIMUM_SHARED_THIRDS) return Infinity;
   const mean = sum / count;

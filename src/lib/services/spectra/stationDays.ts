@@ -5,7 +5,7 @@ import { unpackShapes, type DayTrace } from '#lib/acoustics/dayTrace';
 import { DAY_SEC, makeTrace } from './makeTrace';
 import { type SearchTask } from './searchTask';
 
-/** Days whose shapes are in memory at once: 0.8 MB. */
+/** Days whose shapes are read at once, those before being compared meanwhile: 0.8 MB each. */
 const SHAPES_AT_ONCE = 16;
 
 type Station = SearchTask['stations'][number];
@@ -52,14 +52,22 @@ export async function readDays(
   if (first === undefined || last === undefined) return;
   const outlines = new Map(await selectOutlines(station.id, first, last + 1));
   const isTraced = (day: number) => !fresh.has(day) && outlines.has(day);
-  const wanted = days.filter((day) => isTraced(day) && mayMatch(outlines.get(day) ?? NOTHING));
+  const asked = new Set(days.filter((day) => isTraced(day) && mayMatch(outlines.get(day) ?? NOTHING)));
+  const shapesFrom = (at: number) =>
+    selectShapes(
+      station.id,
+      days.slice(at, at + SHAPES_AT_ONCE).filter((day) => asked.has(day)),
+    );
+  let reading = shapesFrom(0);
   for (let at = 0; at < days.length; at += SHAPES_AT_ONCE) {
+    const shapes = new Map(await reading);
+    // The database reads the days after these while this thread compares.
+    reading = shapesFrom(at + SHAPES_AT_ONCE);
+    reading.catch(() => undefined);
     const some = days.slice(at, at + SHAPES_AT_ONCE);
-    const asked = some.filter((day) => wanted.includes(day));
-    const shapes = new Map(await selectShapes(station.id, asked));
     for (const day of some) {
       const [outline, packed] = [outlines.get(day), shapes.get(day)];
-      const isChanged = packed === undefined && asked.includes(day);
+      const isChanged = packed === undefined && asked.has(day);
       if (isTraced(day) && outline && !isChanged) {
         visit(day, outline, packed ? unpackShapes(packed, outline) : null);
       } else if (mayMake()) {
