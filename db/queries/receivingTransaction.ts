@@ -53,12 +53,16 @@ async function attemptOnce<T>(
   return decided.value;
 }
 
-const MOST_ROWS_A_STATEMENT = 600;
+/** Rows are added to a statement up to here: some 600 intervals. */
+const MOST_COLLECTED_CHARS = 256 * 1024;
 
 /** Statements to send at once, the rows of one table in one of them. */
 class Collected implements Writes {
   private readonly others: string[] = [];
-  private readonly insertions = new Map<string, (Insertion & { rows: string[] })[]>();
+  private readonly insertions = new Map<
+    string,
+    { head: string; tail: string; rows: string[]; chars: number }[]
+  >();
 
   raw(sql: string, bindings?: readonly Binding[]): PromiseLike<void> {
     this.others.push(format(sql, bindings));
@@ -69,10 +73,14 @@ class Collected implements Writes {
     const kind = `${head} ${tail}`;
     const ofKind = this.insertions.get(kind) ?? [];
     const last = ofKind.at(-1);
-    const texts = bindings ? [format(rows.join(', '), bindings)] : rows;
-    if (last && last.rows.length + rows.length <= MOST_ROWS_A_STATEMENT) last.rows.push(...texts);
-    else ofKind.push({ head, tail, rows: [...texts] });
-    this.insertions.set(kind, ofKind);
+    const text = format(rows.join(', '), bindings);
+    if (last && last.chars + text.length <= MOST_COLLECTED_CHARS) {
+      last.rows.push(text);
+      last.chars += text.length;
+    } else {
+      ofKind.push({ head, tail, rows: [text], chars: text.length });
+      this.insertions.set(kind, ofKind);
+    }
   }
 
   get statements(): string[] {

@@ -8,7 +8,7 @@ import { decide } from './decide';
 import type { Envelope } from './envelope';
 import { finishPost, type Post, type ReceivingStation } from './finishPost';
 import { Gatherer } from './gatherer';
-import { readRecords } from './readRecords';
+import { readRecordsInParts } from './readRecords';
 import { storedAround } from './storedAround';
 import { circumstancesOf, StaleStation, takeTogether } from './together';
 
@@ -25,7 +25,7 @@ const gatherer = new Gatherer<Post, Receipt>(
     sizeOf: ({ envelope }) => envelope.intervals.length,
     isHopeless: isConnectionLost,
   },
-  { groupsAtOnce: 2, mostItems: 64, mostSize: 600 },
+  { groupsAtOnce: 3, mostItems: 64, mostSize: 600 },
 );
 
 /**
@@ -44,7 +44,7 @@ export async function receiveBatch(
   const bandSet = await ('problem' in bandIndices
     ? bandIndices
     : bandSetOf(station.bandFraction, bandIndices.indices));
-  const read = readRecords(intervals, bandSet, now.getTime() / 1000);
+  const read = await readRecordsInParts(intervals, bandSet, now.getTime() / 1000);
   const post = { station, remembered, envelope, now, bandSet, ...read };
   return intervals.length > MOST_SHARED_INTERVALS ? takeAlone(post) : gatherer.take(post);
 }

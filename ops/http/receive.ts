@@ -1,6 +1,7 @@
 import { randomUUID } from 'node:crypto';
 import type { Request, RequestHandler, Response } from 'express';
-import { problemResponse } from '#lib/http/problem';
+import type { Answer } from '#lib/http/answer';
+import { problemAnswer } from '#lib/http/problem';
 import { problemOf } from '#lib/http/route';
 import { takePost } from '../../src/pages/api/v1/intervals/index';
 
@@ -15,10 +16,10 @@ export const receivePost: RequestHandler = async (request, response) => {
       body: request.iterator({ destroyOnReturn: false }),
     },
     request.ip ?? '',
-  ).catch((error: unknown) => problemResponse(problemOf(error, request.path)));
+  ).catch((error: unknown) => problemAnswer(problemOf(error, request.path)));
   // What was not read of the body is not waited for.
   if (!request.complete) response.set('Connection', 'close');
-  await write(answer, response);
+  write(answer, response);
 };
 
 function headerOf(request: Request, name: string): string | null {
@@ -26,13 +27,12 @@ function headerOf(request: Request, name: string): string | null {
   return typeof value === 'string' ? value : null;
 }
 
-async function write(answer: globalThis.Response, response: Response): Promise<void> {
-  const text = await answer.text();
-  response.writeHead(answer.status, {
-    ...Object.fromEntries(answer.headers),
-    'Content-Length': Buffer.byteLength(text),
+function write({ status, headers, body }: Answer, response: Response): void {
+  response.writeHead(status, {
+    ...headers,
+    'Content-Length': Buffer.byteLength(body),
     'X-Content-Type-Options': 'nosniff',
     'X-Request-Id': randomUUID(),
   });
-  response.end(text);
+  response.end(body);
 }

@@ -1,3 +1,5 @@
+import { responseOf, type Answer } from './answer';
+
 /** A refusal that the caller is meant to read: RFC 9457 problem details with a stable `code`. */
 export class Problem extends Error {
   constructor(
@@ -38,10 +40,16 @@ export const invalidFields = (fields: { field: string; message: string }[]) =>
 
 /** The problem as a response of type `application/problem+json`. */
 export function problemResponse(problem: Problem): Response {
+  return responseOf(problemAnswer(problem));
+}
+
+/** The same before it is a web Response. */
+export function problemAnswer(problem: Problem): Answer {
   const { status, code, title, detail, extra } = problem;
   const body = { type: 'about:blank', status, code, title, ...(detail ? { detail } : {}), ...extra.members };
-  return new Response(JSON.stringify(body), {
+  return {
     status,
     headers: { 'Content-Type': 'application/problem+json', 'Cache-Control': 'no-store', ...extra.headers },
-  });
+    body: JSON.stringify(body),
+  };
 }

@@ -1,14 +1,22 @@
+import { responseOf, type Answer } from './answer';
+
 interface Options {
   status?: number;
   headers?: Record<string, string>;
 }
 
 /** A JSON answer; private to the caller, never cached by a proxy. */
-export function json(body: unknown, { status = 200, headers = {} }: Options = {}): Response {
-  return new Response(JSON.stringify(body), {
+export function json(body: unknown, options: Options = {}): Response {
+  return responseOf(jsonAnswer(body, options));
+}
+
+/** The same before it is a web Response. */
+export function jsonAnswer(body: unknown, { status = 200, headers = {} }: Options = {}): Answer {
+  return {
     status,
     headers: { 'Content-Type': 'application/json; charset=utf-8', 'Cache-Control': 'no-store', ...headers },
-  });
+    body: JSON.stringify(body),
+  };
 }
 
 /** An answer without a body. */

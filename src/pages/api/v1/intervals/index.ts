@@ -2,16 +2,19 @@ import { ShiftUnderWay } from '#ingest/receive/clockRules';
 import { readEnvelope, UnreadablePost } from '#ingest/receive/envelope';
 import { receiveBatch, StaleStation } from '#ingest/receive/receive';
 import { requireStationToken, sentStationToken, type TokenStation } from '#lib/auth/guards';
+import { responseOf, type Answer } from '#lib/http/answer';
 import { HeldBytes } from '#lib/http/heldBytes';
 import { inTime } from '#lib/http/inTime';
 import { monitorRequestOf, type MonitorRequest } from '#lib/http/monitorRequest';
 import { Problem } from '#lib/http/problem';
 import { isSmallBody, readMonitorBody, textOfBody, type MonitorBody } from '#lib/http/readMonitorBody';
 import { receivingGate } from '#lib/http/receivingGate';
-import { json } from '#lib/http/respond';
+import { jsonAnswer } from '#lib/http/respond';
 import { route } from '#lib/http/route';
 
-export const POST = route(({ request, clientAddress }) => takePost(monitorRequestOf(request), clientAddress));
+export const POST = route(async ({ request, clientAddress }) =>
+  responseOf(await takePost(monitorRequestOf(request), clientAddress)),
+);
 
 /** Of a turn, for a small post: it costs little time and memory, and several can share a transaction. */
 const SMALL_PART = 1 / 4;
@@ -20,7 +23,7 @@ const SMALL_PART = 1 / 4;
  * Takes what a monitor posts from an address; the HTTP front calls it directly. The body is read before its turn comes, so that a
  * slow line keeps nobody waiting, and inflated and stored in it.
  */
-export async function takePost(request: MonitorRequest, address: string): Promise<Response> {
+export async function takePost(request: MonitorRequest, address: string): Promise<Answer> {
   const secret = sentStationToken(request);
   return receivingGate().enter({ address, secret }, async (takeTurn) => {
     const remembered = receivingGate().recall(secret);
@@ -48,7 +51,7 @@ async function askForStation(request: MonitorRequest, secret: string): Promise<T
 
 /** Where what was remembered is no longer so, asks anew: the token may have ended. */
 function onceMore(request: MonitorRequest, secret: string, body: MonitorBody) {
-  return async (error: unknown): Promise<Response> => {
+  return async (error: unknown): Promise<Answer> => {
     if (!(error instanceof StaleStation)) throw error;
     receivingGate().forget(secret);
     return receive(body, await askForStation(request, secret), null);
@@ -59,10 +62,10 @@ async function receive(
   body: MonitorBody,
   station: TokenStation,
   remembered: TokenStation | null,
-): Promise<Response> {
+): Promise<Answer> {
   try {
     const envelope = readEnvelope(await textOfBody(body), station.bandFraction);
-    return json(await receiveBatch(station, envelope, new Date(), remembered));
+    return jsonAnswer(await receiveBatch(station, envelope, new Date(), remembered));
   } catch (error) {
     throw refusalOf(error);
   }
