@@ -54,10 +54,23 @@ export function placeSlips(
 ): PlacedSlip[] {
   const placed: PlacedSlip[] = [];
   const dots = [...points, ...avoid];
+  // Nothing farther away can be in the way of any of a point's spots.
+  const reach = { width: reachOf(slip.width), height: reachOf(slip.height) };
   for (const point of points) {
     const spots = candidates(point, slip);
-    const allFree = spots.filter((spot) => isFree(spot, slip, placed, dots, point));
-    const free = allFree.find((spot) => frame && isInside(spot, slip, frame)) ?? allFree[0];
+    const near = <T extends { x: number; y: number }>(others: readonly T[]) =>
+      others.filter(
+        ({ x, y }) => Math.abs(x - point.x) < reach.width && Math.abs(y - point.y) < reach.height,
+      );
+    const [nearSlips, nearDots] = [near(placed), near(dots)];
+    const isInFrame = (spot: Spot) => frame !== undefined && isInside(spot, slip, frame);
+    let free: Spot | undefined;
+    for (const spot of spots) {
+      // One outside the frame is only a stopgap.
+      if ((free && !isInFrame(spot)) || !isFree(spot, slip, nearSlips, nearDots, point)) continue;
+      free = spot;
+      if (!frame || isInFrame(spot)) break;
+    }
     const host = free ? undefined : nearest(placed, point);
     // The very first one is placed even on others' dots: they are taken into its slip.
     const spot = free ?? (host ? undefined : spots[0]);
@@ -65,6 +78,12 @@ export function placeSlips(
     else host?.ids.push(point.id);
   }
   return placed;
+}
+
+/** Farthest from a point, along one side, that a slip or a dot can lie and be in the way of one of its spots. */
+function reachOf(sidePx: number): number {
+  const farthestRing = Math.max(...RINGS) * (sidePx / 2 + DOT_PX + GAP_PX);
+  return farthestRing + 1.5 * sidePx + DOT_PX + GAP_PX;
 }
 
 function isInside({ x, y }: Spot, slip: Size, frame: Size): boolean {

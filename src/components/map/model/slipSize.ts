@@ -1,2 +1,2 @@
 /** Size of a station's slip on the map, CSS pixels. */
-export const SLIP_SIZE = { width: 108, height: 38 };
+export const SLIP_SIZE = { width: 108, height: 41 };

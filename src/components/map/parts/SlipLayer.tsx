@@ -1,7 +1,8 @@
 import { formatLevelDb } from '#lib/format/levels';
 import { levelColour, type Theme } from '#lib/format/levelRamp';
 import { MAP_LEVEL_RANGE } from '../model/levelRange';
-import { placeSlips, type PlacedSlip, type Size, type SlipPoint } from '../model/placeSlips';
+import { type PlacedSlip, type Size, type SlipPoint } from '../model/placeSlips';
+import { useSlips } from '../hooks/useSlips';
 import { type LayerMark } from '../model/layerMarks';
 import { type ShownStation } from '../model/shownStation';
 import {
@@ -41,7 +42,8 @@ interface SlipLayerProps {
 export function SlipLayer(props: SlipLayerProps) {
   const { stations, points, choice } = props;
   const byCode = new Map(stations.map((station) => [station.code, station]));
-  const slips = placeSlips(points, SLIP_SIZE, props.frame, dotsOfMarks(props.marks, props.markPoints));
+  const avoid = dotsOfMarks(props.marks, props.markPoints);
+  const slips = useSlips({ points, frame: props.frame, avoid }, SLIP_SIZE);
   return (
     <div className="pointer-events-none absolute inset-0 overflow-hidden">
       <svg className="absolute inset-0 size-full" aria-hidden="true">
