@@ -33,6 +33,12 @@ describe('when a limit holds', () => {
     expect(times({ fromMin: null, toMin: null })).toEqual([['03-17T12:00', '03-19T00:00']]);
   });
 
+  it('is its own hours, or those in which windows of any length begin', () => {
+    const hours = { averaging: 'hours', fromMin: 22 * 60, toMin: 6 * 60 } as const;
+    expect(times(hours)[0]).toEqual(['03-17T22:00', '03-18T06:00']);
+    expect(times({ ...hours, averaging: 'length', windowMin: 30, stepMin: 5 })).toEqual(times(hours));
+  });
+
   it('keeps to the weekdays on which its windows begin', () => {
     // 17 March 2026 is a Tuesday (bit 1).
     expect(times({ weekdays: 1 << 1 })).toEqual([['03-17T23:00', '03-18T07:00']]);

@@ -1,3 +1,4 @@
+import { formatDuration } from '#lib/format/durations';
 import { pxOfLevel, type LevelRange } from '../model/levelAxis';
 import { type StripLimit } from '../model/limitLines';
 import { type Run } from '../model/runs';
@@ -10,14 +11,6 @@ export interface LimitLine {
   limit: StripLimit;
   runs: readonly Run[];
 }
-
-const AVERAGING_WORDS: Record<StripLimit['averaging'], string> = {
-  '15min': '15 min',
-  '1h': '1 h',
-  day: 'day',
-  evening: 'evening',
-  night: 'night',
-};
 
 /** Dashed lines at the thresholds (dotted for maxima) with what they are, where there is room to say it. */
 export function drawLimits(
@@ -63,7 +56,7 @@ function labelLimits(
   const { palette } = surface;
   const placed: Label[] = [];
   for (const { limit, runs } of lines) {
-    const name = `${limit.thresholdDb} dB${limit.metric === 'LAFmax' ? ' max' : ''}, ${AVERAGING_WORDS[limit.averaging]}`;
+    const name = nameOf(limit);
     const labelWidth = textWidth(surface, name);
     for (const run of runs) {
       if (run.toSec <= view.fromSec || run.fromSec >= view.toSec) continue;
@@ -80,6 +73,21 @@ function labelLimits(
     }
   }
 }
+
+/** "55 dB, 1 h", "70 dB max, night", "60 dB, 30 min rolling". */
+function nameOf({ thresholdDb, metric, averaging, windowMin, stepMin }: StripLimit): string {
+  const window = averaging === 'length' ? formatDuration((windowMin ?? 0) * 60) : AVERAGING_WORDS[averaging];
+  return `${thresholdDb} dB${metric === 'LAFmax' ? ' max' : ''}, ${window}${stepMin ? ' rolling' : ''}`;
+}
+
+const AVERAGING_WORDS = {
+  '15min': '15 min',
+  '1h': '1 h',
+  hours: 'own hours',
+  day: 'day',
+  evening: 'evening',
+  night: 'night',
+} as const;
 
 function overlaps(a: Label, b: Label): boolean {
   return Math.abs(a.y - b.y) < 14 && a.x < b.x + b.width + 6 && b.x < a.x + a.width + 6;

@@ -9,7 +9,11 @@ export interface StripLimit {
   id: number;
   name: string;
   metric: 'LAeq' | 'LAFmax';
-  averaging: '15min' | '1h' | PeriodKind;
+  averaging: '15min' | '1h' | 'length' | 'hours' | PeriodKind;
+  /** Of averaging `length`, minutes. */
+  windowMin?: number | null;
+  /** Of rolling windows. */
+  stepMin?: number | null;
   thresholdDb: number;
   /** Bit 0 Monday … bit 6 Sunday. */
   weekdays: number;
@@ -41,7 +45,7 @@ export function timesOfValidity(
 
 function windowsOf(limit: StripLimit, view: Run, scheme: PeriodScheme, zone: string): Run[] {
   const { averaging } = limit;
-  if (averaging !== '15min' && averaging !== '1h') {
+  if (averaging === 'day' || averaging === 'evening' || averaging === 'night') {
     return periodsOverlapping(view.fromSec, view.toSec, scheme, zone).filter(
       (period) => period.kind === averaging && holdsOn(limit, period.date),
     );

@@ -8,7 +8,11 @@ export interface LimitInForce {
   id: number;
   name: string;
   metric: 'LAeq' | 'LAFmax';
-  averaging: '15min' | '1h' | PeriodKind;
+  averaging: '15min' | '1h' | 'length' | 'hours' | PeriodKind;
+  /** Of averaging `length`, minutes. */
+  windowMin: number | null;
+  /** Rolling windows begin so often, minutes; null: fixed ones. */
+  stepMin: number | null;
   thresholdDb: number;
   /** Bit 0 Monday … bit 6 Sunday. */
   weekdays: number;
@@ -20,14 +24,13 @@ export interface LimitInForce {
   effectiveToSec: number | null;
 }
 
-/** Limits of LAeq or LAFmax in fixed windows of 15 min, 1 h or a period of day, the ones that are drawn, that hold, or held, for a station: every version with its time in force. */
+/** Limits of LAeq or LAFmax, the ones that are drawn, that hold, or held, for a station: every version with its time in force. */
 export async function limitsOfStation(networkId: number, stationId: number): Promise<LimitInForce[]> {
   const versions = await listLimitVersions(networkId);
   return versions.flatMap((version, at) => {
     const { metric, averaging } = version;
     if (metric !== 'LAeq' && metric !== 'LAFmax') return [];
-    if (averaging === 'length' || averaging === 'hours' || averaging === 'den' || version.stepMin !== null)
-      return [];
+    if (averaging === 'den') return [];
     if (!concerns(version, stationId)) return [];
     const next = versions[at + 1];
     return [
@@ -36,6 +39,8 @@ export async function limitsOfStation(networkId: number, stationId: number): Pro
         name: version.name,
         metric,
         averaging,
+        windowMin: version.windowMin,
+        stepMin: version.stepMin,
         thresholdDb: version.thresholdTenths / 10,
         weekdays: version.weekdays,
         fromMin: version.fromMin,
