@@ -17,8 +17,8 @@ import { invent, makeNetwork, makeStation } from './support/station';
 
 /**
  * A spectrum looked for in a year of minutes of eight stations (31 thirds): target 2 s, aim 0.5 s; against a month of one station.
- * "Common" is like much of what is invented, so that every day's shapes are read; "near" is no more than near all of it;
- * "odd" has another shape, which the outlines rule out. The days are a month's traces, repeated.
+ * "Common" finds most of it; "near" finds nothing, and outlines rule out most days; "odd" has the slope the other way round, some 5 dB
+ * off, so that nothing is found, but outlines rule out little. The days are a month's traces, repeated.
  */
 const STATIONS = 8;
 const MONTHS = 12;
