@@ -65,3 +65,28 @@ test('whoever waits too long is told so and forgotten; what fails hands its turn
   await expect(share.enter('c', (takeTurn) => takeTurn(async () => 'in'))).resolves.toBe('in');
   expect(order).toEqual(['a']);
 });
+
+test('what takes a part of a turn leaves the rest; what takes a whole one is not overtaken for ever', async () => {
+  const share = new FairShare({ ...BOUNDS, turnsAtOnce: 1 });
+  const order: string[] = [];
+  const leave: (() => void)[] = [];
+  const enter = (key: string, part: number) =>
+    share.enter(key, (takeTurn) =>
+      takeTurn(() => {
+        order.push(key);
+        return new Promise<void>((gone) => leave.push(gone));
+      }, part),
+    );
+  const all = [enter('a', 0.5), enter('b', 0.5), enter('whole', 1), enter('c', 0.5)];
+  await sleep(1);
+  expect(order).toEqual(['a', 'b']);
+  leave[0]?.();
+  await sleep(1);
+  expect(order).toEqual(['a', 'b']);
+  for (let at = 1; at < 4; at += 1) {
+    leave[at]?.();
+    await sleep(1);
+  }
+  expect(order).toEqual(['a', 'b', 'whole', 'c']);
+  await Promise.all(all);
+});
