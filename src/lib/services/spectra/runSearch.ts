@@ -69,7 +69,7 @@ export class SearchRun {
       await readDays(plan, days, {
         timeline,
         mayMatch: (outline) => this.#search.mayMatch(outline),
-        mayMake: () => (this.#freshDays += 1) <= MOST_FRESH_DAYS,
+        mayMake: () => !this.#mustStop() && (this.#freshDays += 1) <= MOST_FRESH_DAYS,
         visit: (dayStartSec, outline, trace) => this.#day(searched, dayStartSec, outline, trace),
         onLeftOut: () => (searched.daysLeftOut += 1),
       });
