@@ -1,6 +1,7 @@
 import { inTransaction } from '#db/queries/connection';
 import { bandByNominalHz } from '#lib/acoustics/bands';
 import { insertLimit } from '#db/queries/limits';
+import { insertStationGroup } from '#db/queries/stationGroups';
 import { changeEscalation } from '#lib/services/alerts/escalation';
 import { addExclusion } from '#lib/services/exclusions/add';
 import { excludeAtStations } from '#lib/services/exclusions/bulk';
@@ -22,8 +23,11 @@ export async function seedLimits(
   for (const limit of DEMO_LIMITS) {
     const bandFraction = 'bandFraction' in limit ? limit.bandFraction : null;
     const band = 'bandHz' in limit && bandFraction ? bandByNominalHz(bandFraction, limit.bandHz) : undefined;
-    await inTransaction((transaction) =>
-      insertLimit(
+    const stationIds = limit.stations.map(idOf).filter((id) => id !== undefined);
+    await inTransaction(async (transaction) => {
+      const group = 'group' in limit ? { name: limit.group, stationIds, changedBy: operatorId } : null;
+      const groupId = group && (await insertStationGroup(networkId, group, transaction));
+      await insertLimit(
         networkId,
         {
           effectiveFromSec,
@@ -38,14 +42,15 @@ export async function seedLimits(
           fromMin: 'from' in limit ? minutesOf(limit.from) : null,
           toMin: 'to' in limit ? minutesOf(limit.to) : null,
           minimumCoverage: null,
-          stationIds: limit.stations.map(idOf).filter((id) => id !== undefined),
+          stationIds,
+          groupId,
           recipients: ['operator@merrow.example'],
           reason: limit.reason,
           createdBy: operatorId,
         },
         transaction,
-      ),
-    );
+      );
+    });
   }
   const who = { networkId, userId: operatorId };
   must(await changeEscalation(who, [{ afterMinutes: 60, people: [operatorId] }]));

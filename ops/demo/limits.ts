@@ -6,6 +6,7 @@ export const DEMO_LIMITS = [
     averaging: '15min',
     thresholdDb: 58,
     stations: ['MER-02', 'MER-04', 'MER-06', 'MER-08'],
+    group: 'Dwellings',
     from: '23:00',
     to: '07:00',
     weekdays: [0, 1, 2, 3, 4, 5, 6],
