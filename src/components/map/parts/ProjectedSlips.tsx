@@ -24,7 +24,9 @@ export function ProjectedSlips({ stations, ...props }: Omit<MapPaneProps, 'style
     if (!map) return '';
     const { clientWidth, clientHeight } = map.getContainer();
     const { lng, lat } = map.getCenter();
-    return [lng, lat, map.getZoom(), clientWidth, clientHeight].join(' ');
+    // Where the centre is drawn tells the size that the map reckons with, which follows its element's a little later.
+    const { x, y } = map.project([lng, lat]);
+    return [lng, lat, map.getZoom(), clientWidth, clientHeight, x, y].join(' ');
   });
   if (!map || place === '') return null;
   const { clientWidth, clientHeight } = map.getContainer();
