@@ -3,6 +3,7 @@ import { LevelClassCounts } from '#lib/acoustics/classCounts';
 import { emptySums, type PeriodSums } from '#lib/acoustics/periodSums';
 import { ByteWriter } from '#lib/acoustics/varint';
 import { packBandEnergies, unpackBandEnergies } from './aggregatePacking';
+import { type Cell } from './preparedInsert';
 
 /** The columns that quarter-hours and day periods share, except `band_energies`, in the order that `sumsOfCells` reads. */
 export const SUMS_COLUMNS = [
@@ -38,12 +39,9 @@ export type SumsCells = [
   bandEnergies?: Buffer,
 ];
 
-/**
- * Values of `SUMS_COLUMNS` and then `BAND_COLUMNS` as SQL; distributions per band are not among them. Bindings would cost more than
- * the sums did; every cell is a number or hexadecimal digits, so there is nothing to escape.
- */
-export function sumsCellsText(sums: PeriodSums): string {
-  const cells: (number | string | null)[] = [
+/** Values of `SUMS_COLUMNS` and then `BAND_COLUMNS`; distributions per band are not among them. */
+export function cellsOfSums(sums: PeriodSums): Cell[] {
+  return [
     sums.validSec,
     sums.excludedSec,
     sums.sampleSec,
@@ -54,30 +52,24 @@ export function sumsCellsText(sums: PeriodSums): string {
     sums.lafmaxCentiDb,
     sums.lafminCentiDb,
     sums.lcpeakCentiDb,
-    classesText(sums.aClasses),
+    bytesOfClasses(sums.aClasses),
     sums.bandFraction,
-    bytesText(packBandEnergies(sums)),
+    packBandEnergies(sums),
   ];
-  return cells.map((cell) => cell ?? 'NULL').join(', ');
 }
 
 /** Emptied before each use: a buffer of its own for every row costs more than what is written into it. */
 const writer = new ByteWriter();
 
-function classesText(counts: LevelClassCounts): string {
+function bytesOfClasses(counts: LevelClassCounts): Buffer {
   writer.length = 0;
   counts.encodeInto(writer);
-  return bytesText(Buffer.from(writer.bytes.buffer, 0, writer.length));
+  return Buffer.from(writer.bytes.subarray(0, writer.length));
 }
 
-/** Bytes as SQL. */
-export function bytesText(bytes: Buffer): string {
-  return `x'${bytes.toString('hex')}'`;
-}
-
-/** An instant as SQL, for a DATETIME(3) in UTC. */
-export function instantText(instant: Date): string {
-  return `'${instant.toISOString().slice(0, -1).replace('T', ' ')}'`;
+/** An instant as a cell of a DATETIME(3), in UTC. */
+export function instantCell(instant: Date): string {
+  return instant.toISOString().slice(0, -1).replace('T', ' ');
 }
 
 /** Sums of the cells of a row; without the band columns they have no band figures. */

@@ -77,29 +77,3 @@ export function isConnectionLost(error: unknown): boolean {
 export function pauseBefore(attempt: number): Promise<void> {
   return new Promise((resolve) => setTimeout(resolve, 10 * 4 ** attempt * (0.5 + attempt / 8)));
 }
-
-/** What the driver's connections are used for here. */
-interface DriverConnection {
-  query(statement: string, values: null, done: (error: Error | null) => void): void;
-}
-
-interface DriverClient {
-  acquireConnection(): Promise<DriverConnection>;
-  releaseConnection(connection: DriverConnection): Promise<void>;
-}
-
-/**
- * Runs a long statement that has its values in itself, each a number or hexadecimal digits. It goes straight to the driver: query
- * builder and driver would look for placeholders in millions of characters, and put them all into the message of an error.
- */
-export async function runText(conn: Connection, statement: string): Promise<void> {
-  const client = conn.client as DriverClient;
-  const connection = await client.acquireConnection();
-  try {
-    await new Promise<void>((resolve, reject) => {
-      connection.query(statement, null, (error) => (error ? reject(error) : resolve()));
-    });
-  } finally {
-    await client.releaseConnection(connection);
-  }
-}

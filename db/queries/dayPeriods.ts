@@ -3,15 +3,15 @@ import { type PeriodSums } from '#lib/acoustics/periodSums';
 import { packBandClasses, unpackBandClasses } from './aggregatePacking';
 import {
   BAND_COLUMNS,
-  bytesText,
-  instantText,
+  cellsOfSums,
+  instantCell,
   SUMS_COLUMNS,
-  sumsCellsText,
   sumsOfCells,
   type SumsCells,
 } from './aggregateSums';
-import { pool, runText, type Connection } from './connection';
+import { pool, type Connection } from './connection';
 import { type Span } from './exclusions';
+import { insertPrepared } from './preparedInsert';
 
 /** A period never lasts longer: a day with a clock change, and an hour to spare. */
 const LONGEST_PERIOD_SEC = 26 * 3600;
@@ -124,19 +124,18 @@ export async function insertDayPeriods(
   periods: readonly DayPeriod[],
   conn: Connection,
 ): Promise<void> {
-  if (periods.length === 0) return;
-  const computedAt = instantText(new Date());
-  const rows = periods.map((period) => {
-    const { date, kind, fromSec, toSec, flagBits, sums } = period;
-    const classes = bytesText(packedClasses(period));
-    return `(${stationId}, '${date}', '${kind}', ${fromSec}, ${toSec}, ${flagBits}, ${computedAt}, ${classes}, ${sumsCellsText(sums)})`;
+  const computedAt = instantCell(new Date());
+  await insertPrepared(conn, {
+    table: 'day_periods',
+    columns: INSERTED_COLUMNS,
+    rows: periods.map((period) => {
+      const { date, kind, fromSec, toSec, flagBits, sums } = period;
+      const classes = packedClasses(period);
+      return [stationId, date, kind, fromSec, toSec, flagBits, computedAt, classes, ...cellsOfSums(sums)];
+    }),
+    // A changed zone can leave a row of the same date and kind elsewhere in time.
+    tail: `ON DUPLICATE KEY UPDATE ${INSERTED_COLUMNS.map((name) => `${name} = VALUES(${name})`).join(', ')}`,
   });
-  // A changed zone can leave a row of the same date and kind elsewhere in time.
-  await runText(
-    conn,
-    `INSERT INTO day_periods (${INSERTED_COLUMNS.join(', ')}) VALUES ${rows.join(', ')}
-     ON DUPLICATE KEY UPDATE ${INSERTED_COLUMNS.map((name) => `${name} = VALUES(${name})`).join(', ')}`,
-  );
 }
 
 function packedClasses({ sums, date, kind }: DayPeriod): Buffer {

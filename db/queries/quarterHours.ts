@@ -1,13 +1,25 @@
 import { type PeriodSums } from '#lib/acoustics/periodSums';
 import {
   BAND_COLUMNS,
-  instantText,
+  cellsOfSums,
+  instantCell,
   SUMS_COLUMNS,
-  sumsCellsText,
   sumsOfCells,
   type SumsCells,
 } from './aggregateSums';
-import { pool, runText, type Connection } from './connection';
+import { pool, type Connection } from './connection';
+import { insertPrepared } from './preparedInsert';
+
+const INSERTED_COLUMNS = [
+  'station_id',
+  'starts_at',
+  'flags',
+  'reason_bits',
+  'late_sec',
+  'computed_at',
+  ...SUMS_COLUMNS,
+  ...BAND_COLUMNS,
+];
 
 /** One station's UTC quarter-hour, recomputed wholly from its intervals. A quarter without any interval has no row. */
 export interface QuarterHour {
@@ -81,17 +93,20 @@ export async function insertQuarterHours(
   quarters: readonly QuarterHour[],
   conn: Connection,
 ): Promise<void> {
-  if (quarters.length === 0) return;
-  const computedAt = instantText(new Date());
-  const rows = quarters.map(
-    ({ startSec, flagBits, reasonBits, lateSec, sums }) =>
-      `(${stationId}, ${startSec}, ${flagBits}, ${reasonBits}, ${lateSec}, ${computedAt}, ${sumsCellsText(sums)})`,
-  );
-  await runText(
-    conn,
-    `INSERT INTO quarter_hours (station_id, starts_at, flags, reason_bits, late_sec, computed_at,
-       ${[...SUMS_COLUMNS, ...BAND_COLUMNS].join(', ')}) VALUES ${rows.join(', ')}`,
-  );
+  const computedAt = instantCell(new Date());
+  await insertPrepared(conn, {
+    table: 'quarter_hours',
+    columns: INSERTED_COLUMNS,
+    rows: quarters.map(({ startSec, flagBits, reasonBits, lateSec, sums }) => [
+      stationId,
+      startSec,
+      flagBits,
+      reasonBits,
+      lateSec,
+      computedAt,
+      ...cellsOfSums(sums),
+    ]),
+  });
 }
 
 /** Drops every quarter-hour of a station. */
