@@ -30,13 +30,15 @@ export async function judgementOf(
   { fromSec, toSec }: Span,
   conn: Connection,
 ): Promise<Judgement> {
+  if (validity === 'all') {
+    return { validity, timeline, exclusions: mergedSpans(alsoExcluded), weather: null };
+  }
   // An interval that reaches into the period may begin, or end, up to an hour outside it.
-  const exclusions =
-    validity === 'all' ? [] : await selectStandingExclusions(station.id, fromSec - 3600, toSec + 3600, conn);
-  const weather =
-    validity === 'all'
-      ? null
-      : await weatherAtStation(station.id, { fromSec: fromSec - 3600, toSec: toSec + 3600 }, conn);
+  const reach = { fromSec: fromSec - 3600, toSec: toSec + 3600 };
+  const [exclusions, weather] = await Promise.all([
+    selectStandingExclusions(station.id, reach.fromSec, reach.toSec, conn),
+    weatherAtStation(station.id, reach, conn),
+  ]);
   return { validity, timeline, exclusions: mergedSpans([...exclusions, ...alsoExcluded]), weather };
 }
 
@@ -48,11 +50,16 @@ export async function sumIntervals(
   conn: Connection,
 ): Promise<PeriodAccumulator> {
   const whole = new PeriodAccumulator(options);
-  const judgement = await judgementOf(source, period, conn);
   const stepSec = MOST_INTERVALS * source.station.intervalSec;
-  for (let fromSec = period.fromSec; fromSec < period.toSec; fromSec += stepSec) {
-    const part = { fromSec, toSec: Math.min(fromSec + stepSec, period.toSec) };
-    const intervals = await selectIntervals(source.station.id, part.fromSec, part.toSec, conn);
+  const partAt = (fromSec: number) => ({ fromSec, toSec: Math.min(fromSec + stepSec, period.toSec) });
+  const read = (part: Span) => selectIntervals(source.station.id, part.fromSec, part.toSec, conn);
+  const [judgement, first] = await Promise.all([
+    judgementOf(source, period, conn),
+    read(partAt(period.fromSec)),
+  ]);
+  for (let { fromSec } = period; fromSec < period.toSec; fromSec += stepSec) {
+    const part = partAt(fromSec);
+    const intervals = fromSec === period.fromSec ? first : await read(part);
     whole.merge(accumulate(intervals, part, judgement, options));
   }
   return whole;
