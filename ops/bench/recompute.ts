@@ -10,6 +10,7 @@ import { compare, digits, median, printTable } from './support/measure';
 import { residentMib, untilNothingWaits } from './support/memory';
 import { withOwnSchema } from './support/schema';
 import { fill, makeNetwork, makeStation } from './support/station';
+import { WORKER_ARGUMENTS } from '#ops/start/workerArguments';
 
 /**
  * Recomputing a civil day of samples of a second (86,400) and of a minute (1,440), against only reading its intervals; and the
@@ -58,7 +59,7 @@ function mark({ id }: StationRow): Promise<void> {
 
 /** Runs a worker until nothing is left to do, five rounds, and prints its resident memory. */
 async function watchWorker(): Promise<void> {
-  const worker = spawn(process.execPath, ['--import', 'tsx', 'ingest/worker.ts'], { stdio: 'ignore' });
+  const worker = spawn(process.execPath, [...WORKER_ARGUMENTS, 'ingest/worker.ts'], { stdio: 'ignore' });
   const rows: string[][] = [];
   try {
     for (let round = 1; round <= 3; round += 1) {

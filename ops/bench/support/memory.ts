@@ -6,10 +6,11 @@ import { db } from '#db/client';
 import { inTransaction } from '#db/queries/connection';
 import { markMeasuredQuarters } from '#db/queries/quarterHours';
 import { type StationRow } from '#db/queries/stations';
+import { WORKER_ARGUMENTS } from '#ops/start/workerArguments';
 
 /** Highest resident memory of a worker, in MiB, that recomputes everything a station has, twice. */
 export async function workersMemoryMib({ id }: StationRow): Promise<number> {
-  const worker = spawn(process.execPath, ['--import', 'tsx', 'ingest/worker.ts'], { stdio: 'ignore' });
+  const worker = spawn(process.execPath, [...WORKER_ARGUMENTS, 'ingest/worker.ts'], { stdio: 'ignore' });
   try {
     for (let round = 0; round < 2; round += 1) {
       await inTransaction((transaction) => markMeasuredQuarters(id, transaction));
