@@ -47,6 +47,55 @@ export const TONALITY_STATES = [
   'no-data',
 ] as const;
 
+const excludedSchema = z.object({ from: z.string(), to: z.string(), reason: z.string() });
+
+/** What more a station has to say about the window. Evidence that was kept before there was this lacks it. */
+export const evidenceContextSchema = z.object({
+  rank: z
+    .number()
+    .nullable()
+    .describe('Percentile rank of LAeq among the valid weeks, 100·(below + equal/2)/n, whole per cent'),
+  uncertainty: level.describe('Expanded uncertainty U = 2u of LAeq, dB; null where it cannot be told'),
+  uncertaintyBasis: z.string().describe('What it rests on, or why it is not known'),
+  limits: z
+    .array(
+      z.object({
+        limit: z.string(),
+        metric: z.string(),
+        threshold: z.number(),
+        unit: z.enum(LIMIT_UNITS),
+        windows: z
+          .array(z.object({ from: z.string(), to: z.string() }))
+          .describe('That overlap, the first few'),
+        windowCount: z.number().int(),
+        isExceeded: z.boolean().describe('By an exceedance that stands'),
+      }),
+    )
+    .describe(
+      'In force with a window that overlaps, by the clock windows and holidays that the judge goes by',
+    ),
+  lowFrequency: z
+    .object({ difference: z.number(), bound: z.number(), isAbove: z.boolean() })
+    .nullable()
+    .describe('LCeq − LAeq, dB'),
+  standingOut: z.array(
+    z.object({ fromHz: z.number(), toHz: z.number(), isTone: z.boolean(), words: z.string() }),
+  ),
+  plants: z
+    .array(z.object({ name: z.string(), reason: z.string() }))
+    .describe('Candidates, most likely first'),
+  bandFraction: z.union([z.literal(1), z.literal(3)]),
+  bands: z.array(z.object({ nominalHz: z.number(), Leq: level, usual: level })),
+  exclusions: z.array(excludedSchema),
+  flags: z.array(z.object({ flag: z.string(), seconds: z.number() })),
+  wind: z
+    .object({ mean: z.number(), maximum: z.number(), directionDeg: z.number().nullable() })
+    .nullable()
+    .describe('m/s, degrees from; of the source that tells most of the window'),
+  windWords: z.string(),
+});
+export type EvidenceContext = z.output<typeof evidenceContextSchema>;
+
 export const stationEvidenceSchema = z.object({
   station: z.string(),
   name: z.string(),
@@ -67,6 +116,7 @@ export const stationEvidenceSchema = z.object({
   exceedances: z.array(evidenceExceedanceSchema),
   tonality: z.enum(TONALITY_STATES),
   tones: z.array(toneSchema),
+  context: evidenceContextSchema.optional(),
 });
 export type StationEvidence = z.output<typeof stationEvidenceSchema>;
 

@@ -246,7 +246,7 @@ describe('evidence and reply', () => {
       laeqCentiDb: (startSec / 60) % 2 === 0 ? 5000 : 6000,
       bandCentiDb: (index) => (index === -10 ? 6200 : 4000),
     }));
-    // Three of the four Tuesdays before, one of them with too little data: 40, 42 dB count, 70 dB does not.
+    // Three of the eight Tuesdays before, one of them with too little data: 40, 42 dB count, 70 dB does not.
     const weeks: [number, number, number][] = [
       [1, 4000, 30],
       [2, 4200, 30],
@@ -296,13 +296,29 @@ describe('evidence and reply', () => {
       LA90: 50,
       coverage: 1,
       meetsMinimum: true,
-      usual: { weeks: 4, validWeeks: 2, median: 41, low: 40.2, high: 41.8 },
+      usual: { weeks: 8, validWeeks: 2, median: 41, low: 40.2, high: 41.8 },
       limits: { set: 1, applying: 1, unjudged: 0 },
       exceedances: [
         { limit: 'Night hours', metric: 'LAeq,1 h', level: 57.4, threshold: 50, state: 'standing' },
       ],
       tonality: 'assessed',
       tones: [{ method: 'survey', excess: 22 }],
+      context: {
+        rank: 100,
+        uncertainty: 1,
+        limits: [
+          {
+            limit: 'Night hours',
+            metric: 'LAeq,1 h',
+            threshold: 50,
+            windows: [{ from: '2026-03-17T03:00:00Z', to: '2026-03-17T04:00:00Z' }],
+            isExceeded: true,
+          },
+        ],
+        lowFrequency: null,
+        standingOut: [{ isTone: true, words: expect.stringContaining('100 Hz') }],
+        exclusions: [],
+      },
     });
   });
 

@@ -148,8 +148,8 @@ describe('no data', () => {
       ...facts,
       whereabouts: {
         ...facts.whereabouts,
-        'MER-01': { distanceM: 2000, wind: 'east' },
-        'MER-02': { distanceM: 1240, wind: 'south' },
+        'MER-01': { distanceM: 2000, wind: 'east', bearingDeg: 90 },
+        'MER-02': { distanceM: 1240, wind: 'south', bearingDeg: 180 },
       },
     });
     expect(text).not.toContain('Quay Head');

@@ -34,7 +34,7 @@ export function letterFacts(
     kind: 'hum',
     recipientName: 'Ada Wren',
     signedBy: 'Lia Teal',
-    whereabouts: { 'MER-04': { distanceM: 352, wind: 'north-east' } },
+    whereabouts: { 'MER-04': { distanceM: 352, wind: 'north-east', bearingDeg: 45 } },
     evidence: {
       from: '2026-03-17T03:10:00Z',
       to: '2026-03-17T03:40:00Z',

@@ -6,7 +6,7 @@ import { formatInstantUtc } from '#lib/contracts/common';
 import type { Evidence } from '#lib/contracts/complaintEvidence';
 import type { Whereabouts } from './letter/measured';
 import { gatherStationEvidence } from './stationEvidence';
-import { distanceM, windTowards, type Place } from './whereabouts';
+import { bearingDeg, distanceM, windTowards, type Place } from './whereabouts';
 
 /** Stations that are shown to a reader who may know the exact place. */
 const STATIONS_NEARBY = 3;
@@ -53,18 +53,27 @@ function stationsFor(stations: StationRow[], complaint: ComplaintRow, place: Pla
   const nearest = stations.filter((station) => station.id === complaint.nearestStationId);
   if (!place) return nearest;
   const neighbours = stations
-    .filter((station) => station.retiredAt === null && station.id !== complaint.nearestStationId)
+    .filter((station) => stoodThen(station, complaint) && station.id !== complaint.nearestStationId)
     .toSorted((a, b) => distanceM(place, a) - distanceM(place, b))
     .slice(0, STATIONS_NEARBY - nearest.length)
     .toSorted((a, b) => (a.code < b.code ? -1 : 1));
   return [...nearest, ...neighbours];
 }
 
+/** A station that retired since still tells of its time, so that the same question has the same answer later. */
+function stoodThen({ retiredAt }: StationRow, { startsAtSec }: ComplaintRow): boolean {
+  return retiredAt === null || retiredAt.getTime() / 1000 > startsAtSec;
+}
+
 function whereaboutsOf(stations: StationRow[], place: Place): Record<string, Whereabouts> {
   return Object.fromEntries(
     stations.map((station) => [
       station.code,
-      { distanceM: distanceM(place, station), wind: windTowards(place, station) },
+      {
+        distanceM: Math.round(distanceM(place, station)),
+        wind: windTowards(place, station),
+        bearingDeg: Math.round(bearingDeg(place, station)) % 360,
+      },
     ]),
   );
 }

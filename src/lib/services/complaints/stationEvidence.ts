@@ -6,12 +6,12 @@ import { roundHalfUp } from '#lib/acoustics/rounding';
 import { formatInstantUtc } from '#lib/contracts/common';
 import type { EvidenceExceedance, StationEvidence, Usual } from '#lib/contracts/complaintEvidence';
 import { limitMetricText, limitUnit } from '#lib/format/limitMetric';
-import { periodStatistics } from '../levels/statistics';
+import { periodFigures } from '../levels/figures';
+import { statisticsOf } from '../levels/statistics';
 import { usualFor } from '../levels/usual';
 import { applyingLimits } from './applyingLimits';
+import { evidenceContext } from './evidenceContext';
 
-/** Weeks before, of which the same weekday and clock window is compared. */
-const WEEKS_COMPARED = 4;
 const COVERAGE_DECIMALS = 4;
 
 export interface StationEvidenceQuery {
@@ -25,14 +25,17 @@ export interface StationEvidenceQuery {
 export async function gatherStationEvidence(query: StationEvidenceQuery): Promise<StationEvidence> {
   const { station, window, timeline, nowSec } = query;
   const { fromSec, toSec } = window;
-  const [statistics, usual, exceedances, limits, unjudged] = await Promise.all([
-    periodStatistics({ station, fromSec, toSec, timeline, nowSec }),
-    usualFor({ station, window, weeks: WEEKS_COMPARED, timeline }),
+  const [figures, usual, records, limits, unjudged] = await Promise.all([
+    periodFigures({ station, fromSec, toSec, timeline, nowSec }),
+    usualFor({ station, window, timeline }),
     listExceedancesOverlapping(station.id, fromSec, toSec),
     applyingLimits(station, fromSec, toSec, timeline),
     countUnjudgedWindows(station.id, fromSec, toSec),
   ]);
+  const statistics = statisticsOf(figures, { station });
+  const exceedances = records.map(exceedanceOf);
   const { seconds, coverage, meetsMinimum, sampleSeconds, tonality } = statistics;
+  const { inForce } = limits;
   return {
     station: station.code,
     name: station.name,
@@ -45,10 +48,11 @@ export async function gatherStationEvidence(query: StationEvidenceQuery): Promis
     coverage: roundHalfUp(coverage, COVERAGE_DECIMALS),
     meetsMinimum,
     usual: usualOf(usual),
-    limits: { ...limits, unjudged },
-    exceedances: exceedances.map(exceedanceOf),
+    limits: { set: limits.set, applying: new Set(inForce.map(({ limitId }) => limitId)).size, unjudged },
+    exceedances,
     tonality: tonality.state,
     tones: tonality.tones,
+    context: await evidenceContext({ ...query, figures, statistics, usual, inForce, exceedances }),
   };
 }
 

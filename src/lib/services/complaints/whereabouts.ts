@@ -29,12 +29,17 @@ export function distanceM(a: Place, b: Place): number {
 
 /** The wind towards which `to` lies from `from`. */
 export function windTowards(from: Place, to: Place): Wind {
+  const eighth = Math.round(bearingDeg(from, to) / 45);
+  return WINDS[eighth % 8] ?? 'north';
+}
+
+/** The initial bearing of `to` from `from` along the great circle, degrees clockwise of north, 0 to 360. */
+export function bearingDeg(from: Place, to: Place): number {
   const [latA, latB] = [radians(from.latitude), radians(to.latitude)];
   const lon = radians(to.longitude - from.longitude);
   const y = Math.sin(lon) * Math.cos(latB);
   const x = Math.cos(latA) * Math.sin(latB) - Math.sin(latA) * Math.cos(latB) * Math.cos(lon);
-  const eighth = Math.round(Math.atan2(y, x) / (Math.PI / 4));
-  return WINDS[(eighth + 8) % 8] ?? 'north';
+  return ((Math.atan2(y, x) * 180) / Math.PI + 360) % 360;
 }
 
 /** A distance as told to people: `about 350 m` in steps of 50 m, `about 1.2 km` from 1 km on. */

@@ -13,6 +13,8 @@ export interface Usual {
   weeks: number;
   /** How many of these weeks had enough valid data; only they count. */
   validWeeks: number;
+  /** LAeq of each of these, the latest first. */
+  levelsDb: number[];
   medianDb: number | null;
   /** 10 % and 90 % points (linear interpolation between order statistics, "type 7"). */
   lowDb: number | null;
@@ -52,6 +54,7 @@ export async function usualFor(query: UsualQuery, conn: Connection = pool()): Pr
   return {
     weeks,
     validWeeks: levelsDb.length,
+    levelsDb,
     medianDb: quantile(levelsDb, 0.5),
     lowDb: quantile(levelsDb, 0.1),
     highDb: quantile(levelsDb, 0.9),

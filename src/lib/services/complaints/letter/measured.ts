@@ -5,7 +5,10 @@ import { levelInWords, shareInWords } from './words';
 /** Where a station stands, seen from the resident; null where the exact place is not known. */
 export interface Whereabouts {
   distanceM: number;
+  /** The wind towards which it lies. */
   wind: Wind;
+  /** The same as a bearing, degrees clockwise of north. */
+  bearingDeg: number;
 }
 
 /** What can be said of a station's data in the window. */
