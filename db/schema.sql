@@ -71,6 +71,15 @@ CREATE TABLE `alert_tellings` (
   KEY `alert_tellings_age` (`told_at`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_bin;
 
+CREATE TABLE `answering_settings` (
+  `network_id` int(10) unsigned NOT NULL,
+  `needs_approval` tinyint(1) NOT NULL DEFAULT 0 COMMENT 'a second person approves an answer before it goes',
+  `reply_address` varchar(254) DEFAULT NULL COMMENT 'where residents answer to; {reference} in it is filled in; null: the sender',
+  `updated_by` char(36) NOT NULL,
+  `updated_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`network_id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
 CREATE TABLE `audit_head` (
   `only_row` tinyint(3) unsigned NOT NULL,
   `last_id` bigint(20) unsigned NOT NULL,
@@ -209,6 +218,28 @@ CREATE TABLE `complaint_additions` (
   KEY `complaint_additions_complaint` (`complaint_id`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
+CREATE TABLE `complaint_answers` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `complaint_id` int(10) unsigned NOT NULL,
+  `state` enum('draft','submitted','sent','withdrawn') NOT NULL DEFAULT 'draft',
+  `revision` int(10) unsigned NOT NULL DEFAULT 1 COMMENT 'counts each keeping, so that of two writers the second is told',
+  `ciphertext` mediumblob NOT NULL COMMENT 'AES-256-GCM of the JSON: the text with its fields',
+  `items` longtext CHARACTER SET utf8mb4 COLLATE utf8mb4_bin NOT NULL COMMENT 'items of the evidence that go with it' CHECK (json_valid(`items`)),
+  `template_version_id` int(10) unsigned DEFAULT NULL,
+  `author` char(36) NOT NULL COMMENT 'who wrote it last',
+  `figures_digest` char(64) DEFAULT NULL COMMENT 'of the figures that were submitted',
+  `submitted_at` datetime(3) DEFAULT NULL,
+  `decided_by` char(36) DEFAULT NULL,
+  `decided_at` datetime(3) DEFAULT NULL,
+  `reply_id` int(10) unsigned DEFAULT NULL,
+  `created_at` datetime(3) NOT NULL,
+  `updated_at` datetime(3) NOT NULL,
+  `open_complaint_id` int(10) unsigned GENERATED ALWAYS AS (if(`state` in ('draft','submitted'),`complaint_id`,NULL)) STORED,
+  PRIMARY KEY (`id`),
+  UNIQUE KEY `complaint_answers_open` (`open_complaint_id`),
+  KEY `complaint_answers_complaint` (`complaint_id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
 CREATE TABLE `complaint_attachments` (
   `complaint_id` int(10) unsigned NOT NULL,
   `media_type` varchar(40) NOT NULL COMMENT 'by its first bytes; the name that the resident gave it is not kept',
@@ -225,6 +256,17 @@ CREATE TABLE `complaint_keys` (
   PRIMARY KEY (`complaint_id`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
+CREATE TABLE `complaint_letters` (
+  `reply_id` int(10) unsigned NOT NULL,
+  `complaint_id` int(10) unsigned NOT NULL,
+  `ciphertext` mediumblob NOT NULL COMMENT 'AES-256-GCM of the PDF as it was sent',
+  `byte_count` int(10) unsigned NOT NULL,
+  `sha256` binary(32) NOT NULL COMMENT 'of the PDF',
+  `created_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`reply_id`),
+  KEY `complaint_letters_complaint` (`complaint_id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
 CREATE TABLE `complaint_numbers` (
   `prefix` varchar(8) NOT NULL,
   `year` smallint(5) unsigned NOT NULL,
@@ -239,6 +281,22 @@ CREATE TABLE `complaint_private` (
   PRIMARY KEY (`complaint_id`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
+CREATE TABLE `complaint_received` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `complaint_id` int(10) unsigned NOT NULL,
+  `source` enum('message','note') NOT NULL COMMENT 'an e-mail as it came, or what a person noted',
+  `ciphertext` mediumblob NOT NULL COMMENT 'AES-256-GCM of the JSON: from, subject, text, Message-ID',
+  `message_digest` binary(32) DEFAULT NULL COMMENT 'SHA-256 of its Message-ID: the same one is filed once',
+  `received_at` datetime(3) NOT NULL,
+  `filed_by` char(36) NOT NULL,
+  `created_at` datetime(3) NOT NULL,
+  `withdrawn_by` char(36) DEFAULT NULL,
+  `withdrawn_at` datetime(3) DEFAULT NULL,
+  PRIMARY KEY (`id`),
+  UNIQUE KEY `complaint_received_once` (`complaint_id`,`message_digest`),
+  KEY `complaint_received_complaint` (`complaint_id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
 CREATE TABLE `complaint_replies` (
   `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
   `complaint_id` int(10) unsigned NOT NULL,
@@ -246,6 +304,10 @@ CREATE TABLE `complaint_replies` (
   `figures` longtext CHARACTER SET utf8mb4 COLLATE utf8mb4_bin NOT NULL COMMENT 'the figures the letter carries, as sent' CHECK (json_valid(`figures`)),
   `sent_by` char(36) NOT NULL,
   `created_at` datetime(3) NOT NULL,
+  `items` longtext CHARACTER SET utf8mb4 COLLATE utf8mb4_bin DEFAULT NULL COMMENT 'items of the evidence that went with it; null: sent before there was a choice' CHECK (json_valid(`items`)),
+  `approved_by` char(36) DEFAULT NULL,
+  `posted_by` char(36) DEFAULT NULL,
+  `posted_on` date DEFAULT NULL COMMENT 'of a letter on paper',
   PRIMARY KEY (`id`),
   KEY `complaint_replies_complaint` (`complaint_id`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
@@ -578,28 +640,46 @@ CREATE TABLE `job_runs` (
   KEY `job_runs_started` (`started_at`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
+CREATE TABLE `letter_templates` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `network_id` int(10) unsigned NOT NULL,
+  `template` int(10) unsigned NOT NULL COMMENT 'number of the template in its network, the same in all its versions',
+  `version` int(10) unsigned NOT NULL,
+  `name` varchar(120) NOT NULL,
+  `body` text NOT NULL COMMENT 'text with fields such as {{laeq}}',
+  `is_withdrawn` tinyint(1) NOT NULL DEFAULT 0 COMMENT 'this version withdraws the template',
+  `created_by` char(36) NOT NULL,
+  `created_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`id`),
+  UNIQUE KEY `letter_templates_version` (`network_id`,`template`,`version`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
 CREATE TABLE `limit_versions` (
   `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
   `limit_id` int(10) unsigned NOT NULL,
   `version` smallint(5) unsigned NOT NULL,
   `effective_from` int(10) unsigned NOT NULL COMMENT 'epoch seconds; windows that begin from here on are judged by it',
   `name` varchar(160) NOT NULL,
-  `metric` enum('LAeq','LAFmax','bandLeq','LAN','LAE','Lden','bandGroupLeq','LCeqLessLAeq','LAeqLessLA90','LAeqLessUsual','tonalShare','eventCount') NOT NULL,
+  `metric` enum('LAeq','LAFmax','bandLeq','LAN','LAE','Lden','bandGroupLeq','LCeqLessLAeq','LAeqLessLA90','LAeqLessUsual','tonalShare','eventCount','eventLAE') NOT NULL,
   `averaging` enum('15min','1h','day','evening','night','length','hours','den') NOT NULL COMMENT 'length: window_min; hours: from_min to to_min of each date, one window; den: all periods of a date',
   `window_min` smallint(5) unsigned DEFAULT NULL COMMENT 'of averaging length, minutes',
   `step_min` tinyint(3) unsigned DEFAULT NULL COMMENT 'rolling windows begin so often; null: fixed',
   `band_fraction` tinyint(3) unsigned DEFAULT NULL,
   `band_index` tinyint(4) DEFAULT NULL,
-  `percent` tinyint(3) unsigned DEFAULT NULL COMMENT 'of LAN',
+  `percent` tinyint(3) unsigned DEFAULT NULL COMMENT 'of LAN, and of the background of LAeqLessLA90',
   `band_to_index` tinyint(4) DEFAULT NULL COMMENT 'of bandGroupLeq the last band',
   `event_tenths` smallint(6) DEFAULT NULL COMMENT 'of eventCount: what an event is above',
   `event_minimum_sec` smallint(5) unsigned DEFAULT NULL COMMENT 'of eventCount',
+  `event_gap_sec` smallint(5) unsigned DEFAULT NULL COMMENT 'of events: gaps that are bridged; NULL: 10 s',
+  `background_from_min` smallint(5) unsigned DEFAULT NULL COMMENT 'of LAeqLessLA90: hours that the background is of; NULL: the window itself',
+  `background_to_min` smallint(5) unsigned DEFAULT NULL,
   `threshold_tenths` smallint(6) NOT NULL COMMENT 'exceeded when the level, rounded half up to tenths, is greater',
   `weekdays` tinyint(3) unsigned NOT NULL DEFAULT 127 COMMENT 'bit 0 Monday … bit 6 Sunday, of the local date on which the window begins',
   `holidays` enum('as-weekday','as-sunday','never','only') NOT NULL DEFAULT 'as-weekday' COMMENT 'what the dates of network_holidays are to it',
   `from_min` smallint(5) unsigned DEFAULT NULL COMMENT 'local clock, minutes after midnight; null: all day',
   `to_min` smallint(5) unsigned DEFAULT NULL COMMENT 'before from_min: across midnight',
   `minimum_coverage` double DEFAULT NULL COMMENT 'null: the network minimum',
+  `wind_rule` longtext CHARACTER SET utf8mb4 COLLATE utf8mb4_bin DEFAULT NULL COMMENT 'which wind intervals must have to count, and which dismisses a window' CHECK (json_valid(`wind_rule`)),
   `station_ids` longtext CHARACTER SET utf8mb4 COLLATE utf8mb4_bin DEFAULT NULL COMMENT 'null: every station of the network' CHECK (json_valid(`station_ids`)),
   `group_id` int(10) unsigned DEFAULT NULL COMMENT 'of station_groups, which station_ids were taken from',
   `recipients` longtext CHARACTER SET utf8mb4 COLLATE utf8mb4_bin NOT NULL COMMENT 'e-mail addresses' CHECK (json_valid(`recipients`)),
