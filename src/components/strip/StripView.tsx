@@ -1,4 +1,4 @@
-import { type PeriodScheme } from '#lib/acoustics/dayEveningNight';
+import { type ClockSetting } from './model/limitLines';
 import { type TimeView } from './model/timeView';
 import { type Track } from './model/track';
 import { OneStrip } from './OneStrip';
@@ -9,7 +9,8 @@ export interface StripProps {
   /** The page's period: that of the axis. */
   period: TimeView;
   zone: string;
-  scheme: PeriodScheme;
+  /** The network's clock and periods of day, in order of their beginning. */
+  clocks: ClockSetting[];
   /** The page's station, and what is shown under it, if anything. */
   tracks: [Track] | [Track, Track];
   mayExclude: boolean;

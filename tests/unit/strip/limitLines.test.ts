@@ -8,16 +8,21 @@ const limit: StripLimit = {
   name: 'Night',
   metric: 'LAeq',
   averaging: '1h',
+  windowMin: null,
+  stepMin: null,
   thresholdDb: 55,
   weekdays: 127,
+  holidays: 'as-weekday',
+  holidayDates: new Set(['2026-03-17']),
   fromMin: 23 * 60,
   toMin: 7 * 60,
   effectiveFromSec: 0,
   effectiveToSec: null,
 };
 const view = { fromSec: sec('2026-03-17T12:00Z'), toSec: sec('2026-03-19T00:00Z') };
-const times = (changes: Partial<StripLimit>, at = view) =>
-  timesOfValidity({ ...limit, ...changes }, at, DEFAULT_SCHEME, 'Europe/London').map((run) =>
+const london = { effectiveFromSec: 0, timeZone: 'Europe/London', scheme: DEFAULT_SCHEME };
+const times = (changes: Partial<StripLimit>, at = view, clocks = [london]) =>
+  timesOfValidity({ ...limit, ...changes }, at, clocks).map((run) =>
     [run.fromSec, run.toSec].map((s) => new Date(s * 1000).toISOString().slice(5, 16)),
   );
 
@@ -33,15 +38,38 @@ describe('when a limit holds', () => {
     expect(times({ fromMin: null, toMin: null })).toEqual([['03-17T12:00', '03-19T00:00']]);
   });
 
-  it('is its own hours, or those in which windows of any length begin', () => {
+  it('is its own hours, or all of the windows of any length that begin in them', () => {
     const hours = { averaging: 'hours', fromMin: 22 * 60, toMin: 6 * 60 } as const;
     expect(times(hours)[0]).toEqual(['03-17T22:00', '03-18T06:00']);
-    expect(times({ ...hours, averaging: 'length', windowMin: 30, stepMin: 5 })).toEqual(times(hours));
+    expect(times({ ...hours, averaging: 'length', windowMin: 30 })).toEqual(times(hours));
+    const rolling = times({ ...hours, averaging: 'length', windowMin: 30, stepMin: 5 });
+    expect(rolling[0]).toEqual(['03-17T22:00', '03-18T06:25']);
+  });
+
+  it('takes the named dates as the limit does', () => {
+    const night = [['03-17T23:00', '03-18T00:00']];
+    expect(times({ holidays: 'only' })).toEqual(night);
+    expect(times({ holidays: 'never' })).toEqual([
+      ['03-18T00:00', '03-18T07:00'],
+      ['03-18T23:00', '03-19T00:00'],
+    ]);
+    // Sundays alone (bit 6): the Tuesday is one by its name.
+    expect(times({ holidays: 'as-sunday', weekdays: 1 << 6 })).toEqual(night);
+    expect(times({ weekdays: 1 << 6 })).toEqual([]);
+  });
+
+  it('goes by the clock that the network had at the time', () => {
+    const before = { ...london, timeZone: 'America/New_York' };
+    const clocks = [before, { ...london, effectiveFromSec: sec('2026-03-18T00:00Z') }];
+    expect(times({}, view, clocks)).toEqual([
+      ['03-18T00:00', '03-18T07:00'],
+      ['03-18T23:00', '03-19T00:00'],
+    ]);
   });
 
   it('keeps to the weekdays on which its windows begin', () => {
     // 17 March 2026 is a Tuesday (bit 1).
-    expect(times({ weekdays: 1 << 1 })).toEqual([['03-17T23:00', '03-18T07:00']]);
+    expect(times({ weekdays: 1 << 1 })).toEqual([['03-17T23:00', '03-18T00:00']]);
     expect(times({ weekdays: 1 << 4 })).toEqual([]);
   });
 

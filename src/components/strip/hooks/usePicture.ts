@@ -1,12 +1,11 @@
 import { useMemo } from 'react';
-import { type PeriodScheme } from '#lib/acoustics/dayEveningNight';
 import { levelRampRgb } from '#lib/format/levelRamp';
 import { type StripPicture } from '../draw/drawStrip';
 import { onDevice } from '../draw/surface';
 import { type LimitLine } from '../draw/drawLimits';
 import { type StripGeometry } from '../draw/geometry';
 import { lanesOf, leftOutRuns } from '../model/lanes';
-import { timesOfValidity, type StripLimit } from '../model/limitLines';
+import { timesOfValidity, type ClockSetting, type StripLimit } from '../model/limitLines';
 import { pixelColumns } from '../model/pixelColumns';
 import { type Run } from '../model/runs';
 import { type TimeView } from '../model/timeView';
@@ -20,7 +19,7 @@ interface PictureInput {
   ratio: number;
   theme: Theme;
   zone: string;
-  scheme: PeriodScheme;
+  clocks: readonly ClockSetting[];
   limits: readonly StripLimit[];
   nowSec: number;
   gapWords: (gap: Run) => string;
@@ -77,14 +76,14 @@ export function usePicture(input: PictureInput): StripPicture {
 /** Times of validity are worked out for whole weeks about the view, so that moving it a little costs nothing. */
 const WEEK_SEC = 7 * 86_400;
 
-function useLimitLines({ limits, view, scheme, zone }: PictureInput): LimitLine[] {
+function useLimitLines({ limits, view, clocks }: PictureInput): LimitLine[] {
   const fromSec = Math.floor(view.fromSec / WEEK_SEC) * WEEK_SEC;
   const toSec = Math.ceil(view.toSec / WEEK_SEC) * WEEK_SEC;
   return useMemo(
     () =>
       limits
-        .map((limit) => ({ limit, runs: timesOfValidity(limit, { fromSec, toSec }, scheme, zone) }))
+        .map((limit) => ({ limit, runs: timesOfValidity(limit, { fromSec, toSec }, clocks) }))
         .filter(({ runs }) => runs.length > 0),
-    [limits, fromSec, toSec, scheme, zone],
+    [limits, fromSec, toSec, clocks],
   );
 }

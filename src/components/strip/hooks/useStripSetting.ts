@@ -19,7 +19,7 @@ export interface StripControl {
 
 /** What the strips on one axis share: their view, their size, the clock, and how levels are shown. */
 export function useStripSetting(
-  { slug, zone, scheme, period, tracks }: StripProps,
+  { slug, zone, clocks, period, tracks }: StripProps,
   host: RefObject<HTMLElement | null>,
 ): StripControl {
   const geometry = useGeometry(useElementWidth(host));
@@ -36,7 +36,7 @@ export function useStripSetting(
   const setting: StripSetting = {
     slug,
     zone,
-    scheme,
+    clocks,
     geometry,
     ratio: window.devicePixelRatio,
     theme,

@@ -1,7 +1,7 @@
 import { useCallback, useMemo } from 'react';
-import { type PeriodScheme } from '#lib/acoustics/dayEveningNight';
 import { type StripPicture } from '../draw/drawStrip';
 import { type StripGeometry } from '../draw/geometry';
+import { type ClockSetting } from '../model/limitLines';
 import { type Run } from '../model/runs';
 import { stripSummary } from '../model/summary';
 import { clockStretchWords } from '../model/timeWords';
@@ -17,7 +17,7 @@ import { type Theme } from './useTheme';
 export interface StripSetting {
   slug: string;
   zone: string;
-  scheme: PeriodScheme;
+  clocks: readonly ClockSetting[];
   geometry: StripGeometry;
   ratio: number;
   theme: Theme;
@@ -54,7 +54,7 @@ export interface TrackPicture {
 export function useTrackPicture(
   { station, limits }: Track,
   { view, levels }: Pick<TrackLevels, 'view' | 'levels'>,
-  { geometry, ratio, theme, zone, scheme, nowSec }: StripSetting,
+  { geometry, ratio, theme, zone, clocks, nowSec }: StripSetting,
 ): TrackPicture {
   const gapWords = useCallback((gap: Run) => `no data ${clockStretchWords(gap, zone)}`, [zone]);
   const picture = usePicture({
@@ -64,7 +64,7 @@ export function useTrackPicture(
     ratio,
     theme,
     zone,
-    scheme,
+    clocks,
     limits,
     nowSec,
     gapWords,

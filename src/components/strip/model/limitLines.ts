@@ -1,66 +1,41 @@
-import { type PeriodKind, type PeriodScheme } from '#lib/acoustics/dayEveningNight';
-import { periodsOverlapping } from '#lib/time/periods';
-import { addDays, datesBetween, instantAtSec, localDateAt, weekdayOf } from '#lib/time/zone';
+import { type PeriodScheme } from '#lib/acoustics/dayEveningNight';
+import { limitWindows, type WindowRule } from '#lib/time/limitWindows';
 import { clipRun, joinRuns, type Run } from './runs';
 import { type TimeView } from './timeView';
 
 /** A limit as the level trace draws it: one version of it, A-weighted level or maximum. */
-export interface StripLimit {
+export interface StripLimit extends WindowRule {
   id: number;
   name: string;
   metric: 'LAeq' | 'LAFmax';
-  averaging: '15min' | '1h' | 'length' | 'hours' | PeriodKind;
-  /** Of averaging `length`, minutes. */
-  windowMin?: number | null;
-  /** Of rolling windows. */
-  stepMin?: number | null;
+  averaging: Exclude<WindowRule['averaging'], 'den'>;
   thresholdDb: number;
-  /** Bit 0 Monday … bit 6 Sunday. */
-  weekdays: number;
-  /** Local clock, minutes after midnight; null: all day. `toMin` before `fromMin`: across midnight. */
-  fromMin: number | null;
-  toMin: number | null;
+}
+
+/** The network's clock and periods of day from an instant on. */
+export interface ClockSetting {
   effectiveFromSec: number;
-  /** Null: still in force. */
-  effectiveToSec: number | null;
+  timeZone: string;
+  scheme: PeriodScheme;
 }
 
 const LONGEST_DRAWN_SEC = 100 * 86_400;
+/** A day of its own hours, with the hour of a clock change. */
+const LONGEST_WINDOW_SEC = 25 * 3600;
 
-/** Stretches of the view in which a limit holds: its times of day on its weekdays, or its period of day. */
-export function timesOfValidity(
-  limit: StripLimit,
-  view: TimeView,
-  scheme: PeriodScheme,
-  zone: string,
-): Run[] {
-  if (view.toSec - view.fromSec > LONGEST_DRAWN_SEC) return [];
-  const inForce = clipRun(view, {
-    fromSec: limit.effectiveFromSec,
-    toSec: limit.effectiveToSec ?? Infinity,
-  });
-  if (!inForce) return [];
-  return joinRuns(windowsOf(limit, inForce, scheme, zone)).flatMap((run) => clipRun(run, inForce) ?? []);
-}
-
-function windowsOf(limit: StripLimit, view: Run, scheme: PeriodScheme, zone: string): Run[] {
-  const { averaging } = limit;
-  if (averaging === 'day' || averaging === 'evening' || averaging === 'night') {
-    return periodsOverlapping(view.fromSec, view.toSec, scheme, zone).filter(
-      (period) => period.kind === averaging && holdsOn(limit, period.date),
-    );
-  }
-  const fromMin = limit.fromMin ?? 0;
-  const endMin = limit.toMin === null || limit.toMin > fromMin ? (limit.toMin ?? 1440) : limit.toMin + 1440;
-  const first = addDays(localDateAt(view.fromSec, zone), -1);
-  return datesBetween(first, addDays(localDateAt(view.toSec, zone), 1))
-    .filter((date) => holdsOn(limit, date))
-    .map((date) => ({
-      fromSec: instantAtSec(date, fromMin, zone),
-      toSec: instantAtSec(date, endMin, zone),
-    }));
-}
-
-function holdsOn(limit: StripLimit, date: string): boolean {
-  return (limit.weekdays & (1 << weekdayOf(date))) !== 0;
+/**
+ * Stretches of the view in which a limit holds: its windows, as they are judged. `clocks`: the network's in order of their
+ * beginning.
+ */
+export function timesOfValidity(limit: StripLimit, view: TimeView, clocks: readonly ClockSetting[]): Run[] {
+  const { fromSec, toSec } = view;
+  const [first] = clocks;
+  if (toSec - fromSec > LONGEST_DRAWN_SEC || !first) return [];
+  const clockInForce = (sec: number) => clocks.findLast((one) => one.effectiveFromSec <= sec) ?? first;
+  const windows = limitWindows(limit, fromSec - LONGEST_WINDOW_SEC, toSec, clockInForce);
+  // Where the network changed its zone, windows of one date may begin after those of the next.
+  const runs = windows
+    .map(({ startSec, endSec }) => ({ fromSec: startSec, toSec: endSec }))
+    .sort((a, b) => a.fromSec - b.fromSec);
+  return joinRuns(runs).flatMap((run) => clipRun(run, view) ?? []);
 }

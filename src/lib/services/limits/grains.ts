@@ -1,10 +1,11 @@
 import type { Connection } from '#db/queries/connection';
-import { selectIntervals } from '#db/queries/intervals';
+import { selectIntervals, type StoredInterval } from '#db/queries/intervals';
 import type { PeriodSums } from '#lib/acoustics/periodSums';
-import { accumulate } from '../levels/accumulate';
+import { WINDOW_GRAIN_MIN } from '#lib/time/clockWindows';
+import { addWind, noWind, type WindowWind } from '#lib/acoustics/windRule';
+import { accumulate, firstEndingAfter, windOf, type Judgement } from '../levels/accumulate';
 import { judgementOf, MOST_INTERVALS, type LevelSource } from '../levels/intervalSums';
 import type { Span } from '../levels/spans';
-import { WINDOW_GRAIN_MIN } from './clockWindows';
 
 /** What every window of a limit is whole numbers of. */
 export const GRAIN_SEC = WINDOW_GRAIN_MIN * 60;
@@ -13,6 +14,8 @@ export const GRAIN_SEC = WINDOW_GRAIN_MIN * 60;
 export interface GrainSums {
   startSec: number;
   sums: PeriodSums;
+  /** Of a source that goes by the wind. */
+  wind?: WindowWind | undefined;
 }
 
 /**
@@ -33,8 +36,28 @@ export async function sumsByGrain(source: LevelSource, span: Span, conn: Connect
     for (let startSec = part.fromSec; startSec < part.toSec; startSec += GRAIN_SEC) {
       const grain = { fromSec: startSec, toSec: startSec + GRAIN_SEC };
       const { sums } = accumulate(intervals, grain, judgement, { bandClasses: false });
-      if (sums.validSec > 0 || sums.excludedSec > 0) found.push({ startSec, sums });
+      if (sums.validSec > 0 || sums.excludedSec > 0)
+        found.push({ startSec, sums, wind: windOfSpan(intervals, grain, judgement) });
     }
   }
   return found;
+}
+
+/** Wind of all that was measured in a span, whether it counts or not; undefined where no rule asks for it. */
+function windOfSpan(
+  intervals: readonly StoredInterval[],
+  { fromSec, toSec }: Span,
+  judgement: Judgement,
+): WindowWind | undefined {
+  const { wind: rule } = judgement;
+  if (!rule) return undefined;
+  const wind = noWind();
+  for (let at = firstEndingAfter(intervals, fromSec); at < intervals.length; at += 1) {
+    const interval = intervals[at];
+    if (!interval || interval.startSec >= toSec) break;
+    const endSec = interval.startSec + interval.durationSec;
+    const seconds = Math.min(endSec, toSec) - Math.max(interval.startSec, fromSec);
+    addWind(wind, rule, windOf(interval, judgement), seconds);
+  }
+  return wind;
 }

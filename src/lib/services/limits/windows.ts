@@ -1,12 +1,10 @@
 import type { LimitVersion } from '#db/queries/limits';
 import { pickSettings, type NetworkSettings } from '#db/queries/networks';
-import type { PeriodScheme } from '#lib/acoustics/dayEveningNight';
-import { periodsOf } from '#lib/time/periods';
-import { addDays, instantAtSec, localDateAt, localMinuteAt, type LocalDate } from '#lib/time/zone';
-import { clockOf, clockWindows, rollingWindows, type ClockWindow, type LimitWindow } from './clockWindows';
-import { isDateOf } from './dates';
+import type { LimitWindow } from '#lib/time/clockWindows';
+import { limitWindows } from '#lib/time/limitWindows';
 
-export type { LimitWindow } from './clockWindows';
+export type { LimitWindow } from '#lib/time/clockWindows';
+export { hoursWindow } from '#lib/time/limitWindows';
 
 export type WindowRule = Pick<
   LimitVersion,
@@ -23,83 +21,15 @@ export type WindowRule = Pick<
 >;
 
 /**
- * Windows of a limit's version that begin in `fromSec <= t < toSec`, ascending: of a length by the clock on the wall, fixed or
- * rolling, or the network's days, evenings and nights, or one of its own hours each date; on its weekdays and holidays (of the
- * local date on which the window begins), within its clock times (across midnight where they end before they begin), while the
- * version is in force. A later version of the limit is the caller's to look out for. `timeline`: the network's settings in order
- * of their beginning.
+ * Windows of a limit's version that begin in `fromSec <= t < toSec`, as `limitWindows` has them, until the limit is withdrawn. A
+ * later version of the limit is the caller's to look out for. `timeline`: the network's settings in order of their beginning.
  */
 export function windowsOf(
-  rule: WindowRule,
+  { withdrawnAt, ...rule }: WindowRule,
   fromSec: number,
   toSec: number,
   timeline: NetworkSettings[],
 ): LimitWindow[] {
-  const { timeZone } = pickSettings(timeline, fromSec);
-  const lastDate = addDays(localDateAt(toSec, timeZone), 1);
-  const windows: LimitWindow[] = [];
-  for (let date = addDays(localDateAt(fromSec, timeZone), -1); date <= lastDate; date = addDays(date, 1)) {
-    if (!isDateOf(rule, date)) continue;
-    for (const { startSec, endSec, clockMin } of candidatesOf(date, rule, timeline)) {
-      const isAsked = fromSec <= startSec && startSec < toSec;
-      if (isAsked && isWithinClock(clockMin, rule) && isInForce(startSec, rule))
-        windows.push({ startSec, endSec });
-    }
-  }
-  return windows;
-}
-
-/** Minutes of a window by the clock; null for a period of day and for hours of its own. */
-export function lengthMinOf({
-  averaging,
-  windowMin,
-}: Pick<WindowRule, 'averaging' | 'windowMin'>): number | null {
-  if (averaging === '15min') return 15;
-  if (averaging === '1h') return 60;
-  return averaging === 'length' ? windowMin : null;
-}
-
-function candidatesOf(date: LocalDate, rule: WindowRule, timeline: NetworkSettings[]): ClockWindow[] {
-  const { timeZone } = pickSettings(timeline, Date.parse(`${date}T12:00:00Z`) / 1000);
-  const { timeZone: zone, scheme } = pickSettings(timeline, instantAtSec(date, 0, timeZone));
-  const lengthMin = lengthMinOf(rule);
-  if (lengthMin !== null) {
-    const { stepMin } = rule;
-    const clock = clockOf(date, zone);
-    return stepMin === null ? clockWindows(clock, lengthMin) : rollingWindows(clock, lengthMin, stepMin);
-  }
-  if (rule.averaging === 'hours') return hoursWindow(date, rule, zone);
-  if (rule.averaging === 'den') return periodsWindow(date, scheme, zone);
-  return periodsOf(date, scheme, zone)
-    .filter(({ kind }) => kind === rule.averaging)
-    .map((period) => ({
-      startSec: period.fromSec,
-      endSec: period.toSec,
-      clockMin: localMinuteAt(period.fromSec, zone),
-    }));
-}
-
-/** All periods of a date together, from the beginning of its day to the end of its night. */
-function periodsWindow(date: LocalDate, scheme: PeriodScheme, zone: string): ClockWindow[] {
-  const periods = periodsOf(date, scheme, zone);
-  const [first, last] = [periods[0], periods.at(-1)];
-  if (!first || !last) return [];
-  return [{ startSec: first.fromSec, endSec: last.toSec, clockMin: localMinuteAt(first.fromSec, zone) }];
-}
-
-/** The hours of a date, to the next one where they end before they begin; none where the clock was put forward over them. */
-function hoursWindow(date: LocalDate, { fromMin, toMin }: WindowRule, zone: string): ClockWindow[] {
-  if (fromMin === null || toMin === null) throw new RangeError('A window of its own hours has none.');
-  const startSec = instantAtSec(date, fromMin, zone);
-  const endSec = instantAtSec(date, toMin > fromMin ? toMin : toMin + 1440, zone);
-  return endSec > startSec ? [{ startSec, endSec, clockMin: fromMin }] : [];
-}
-
-function isWithinClock(clockMin: number, { averaging, fromMin, toMin }: WindowRule): boolean {
-  if (averaging === 'hours' || fromMin === null || toMin === null) return true;
-  return fromMin < toMin ? fromMin <= clockMin && clockMin < toMin : clockMin >= fromMin || clockMin < toMin;
-}
-
-function isInForce(startSec: number, { effectiveFromSec, withdrawnAt }: WindowRule): boolean {
-  return startSec >= effectiveFromSec && (withdrawnAt === null || startSec * 1000 < withdrawnAt.getTime());
+  const effectiveToSec = withdrawnAt && withdrawnAt.getTime() / 1000;
+  return limitWindows({ ...rule, effectiveToSec }, fromSec, toSec, (sec) => pickSettings(timeline, sec));
 }

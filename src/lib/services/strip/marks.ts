@@ -1,27 +1,15 @@
 import { listExceedancesOverlapping, type ExceedanceRecord } from '#db/queries/exceedanceRecords';
 import { listLimitVersions, type LimitVersion } from '#db/queries/limits';
-import { type PeriodKind } from '#lib/acoustics/dayEveningNight';
 import { type Span } from '#lib/services/levels/spans';
+import { type WindowRule } from '#lib/time/limitWindows';
 
 /** A limit of the A-weighted level, in windows that are drawn, for the time that one version of it was in force. */
-export interface LimitInForce {
+export interface LimitInForce extends WindowRule {
   id: number;
   name: string;
   metric: 'LAeq' | 'LAFmax';
-  averaging: '15min' | '1h' | 'length' | 'hours' | PeriodKind;
-  /** Of averaging `length`, minutes. */
-  windowMin: number | null;
-  /** Rolling windows begin so often, minutes; null: fixed ones. */
-  stepMin: number | null;
+  averaging: Exclude<WindowRule['averaging'], 'den'>;
   thresholdDb: number;
-  /** Bit 0 Monday … bit 6 Sunday. */
-  weekdays: number;
-  /** Local clock, minutes after midnight; null: all day. */
-  fromMin: number | null;
-  toMin: number | null;
-  effectiveFromSec: number;
-  /** Null: still in force. */
-  effectiveToSec: number | null;
 }
 
 /** Limits of LAeq or LAFmax, the ones that are drawn, that hold, or held, for a station: every version with its time in force. */
@@ -43,6 +31,8 @@ export async function limitsOfStation(networkId: number, stationId: number): Pro
         stepMin: version.stepMin,
         thresholdDb: version.thresholdTenths / 10,
         weekdays: version.weekdays,
+        holidays: version.holidays,
+        holidayDates: version.holidayDates,
         fromMin: version.fromMin,
         toMin: version.toMin,
         effectiveFromSec: version.effectiveFromSec,

@@ -1,4 +1,4 @@
-import { addDays, localMinuteAt, startOfDaySec, type LocalDate } from '#lib/time/zone';
+import { addDays, localMinuteAt, startOfDaySec, type LocalDate } from './zone';
 
 /** A window that a limit looks at: half-open, epoch seconds. */
 export interface LimitWindow {
