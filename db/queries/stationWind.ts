@@ -1,4 +1,5 @@
 import { type WeatherRecord } from '#lib/acoustics/mastWeather';
+import { type WindSums } from '#lib/acoustics/windOfSums';
 import { pool, type Connection } from './connection';
 
 /** An instant's wind by a station's own sensor. */
@@ -21,6 +22,33 @@ export async function selectStationWind(
     .whereRaw('starts_at + duration_sec > ?', [fromSec])
     .orderBy('starts_at');
   return rows.map(known);
+}
+
+/** The same added up by the database: a month has tens of thousands of records. Null where there are none. */
+export async function sumStationWind(
+  stationId: number,
+  { fromSec, toSec }: { fromSec: number; toSec: number },
+  conn: Connection = pool(),
+): Promise<WindSums | null> {
+  const [[row]] = (await conn.raw(
+    `SELECT SUM(sec) AS seconds, SUM(speed * sec) AS metres, MAX(speed) AS maximumMs,
+       SUM(COALESCE(SIN(RADIANS(direction)), 0) * speed * sec) AS east,
+       SUM(COALESCE(COS(RADIANS(direction)), 0) * speed * sec) AS north
+     FROM (SELECT LEAST(starts_at + duration_sec, ?) - GREATEST(starts_at, ?) AS sec, wind_speed_centi_ms / 100 AS speed,
+         wind_direction_deg AS direction
+       FROM interval_levels
+       WHERE station_id = ? AND starts_at > ? AND starts_at < ? AND starts_at + duration_sec > ?
+         AND wind_speed_centi_ms IS NOT NULL) AS records`,
+    [toSec, fromSec, stationId, fromSec - LONGEST_SEC, toSec, fromSec],
+  )) as [[Record<keyof WindSums, string | number | null>]];
+  if (row.seconds === null) return null;
+  return {
+    seconds: Number(row.seconds),
+    metres: Number(row.metres),
+    maximumMs: Number(row.maximumMs),
+    east: Number(row.east),
+    north: Number(row.north),
+  };
 }
 
 /** The newest of them that begins in the hour up to an instant. */

@@ -125,7 +125,8 @@ class Tally {
   }
 }
 
-const REASON_WORDS: Record<InvalidityReason, string> = {
+/** Why intervals are left out, in words. */
+export const REASON_WORDS: Record<InvalidityReason, string> = {
   calibration: 'calibration',
   selfcheck: 'self-check',
   overload: 'overload',

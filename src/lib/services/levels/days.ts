@@ -22,6 +22,8 @@ export interface DaysQuery {
   timeline?: NetworkSettings[];
   /** Epoch seconds; a period counts as elapsed up to here. Now when left out. */
   nowSec?: number;
+  /** Quarter-hours of every date asked for and its night; read when left out. */
+  series?: QuarterSeries;
   /** Figures as if these were excluded, too. */
   alsoExcluded?: readonly Span[];
   /** Figures as if this episode of a wrong clock were moved. */
@@ -46,7 +48,7 @@ export async function dayFigures(query: DaysQuery, conn: Connection = pool()): P
     toSec: Math.max(dateSettings(toDate, timeline).midnightSec, lastNight?.toSec ?? 0),
   };
   const source = { station, timeline, validity: 'rules', alsoExcluded, moved } as const;
-  const series = await QuarterSeries.read(source, span, conn);
+  const series = query.series ?? (await QuarterSeries.read(source, span, conn));
   const days: DayFigures[] = [];
   for (const date of datesBetween(fromDate, toDate)) {
     days.push(await figuresOfDate(date, timeline, series, nowSec));

@@ -1,16 +1,18 @@
 import { pool, type Connection } from '#db/queries/connection';
 import { listSettings, type NetworkSettings } from '#db/queries/networks';
 import { ldenDb, type PeriodKind } from '#lib/acoustics/dayEveningNight';
+import { type PeriodAccumulator } from '#lib/acoustics/periodStatistics';
 import { type Statistics } from '#lib/contracts/levels';
 import { addDays, datesBetween, type LocalDate } from '#lib/time/zone';
 import { datePeriods, dateSettings, settingsOfDate } from './datePeriods';
 import { periodLevelsOf, type PeriodLevel } from './days';
 import { type LevelSource } from './intervalSums';
+import { periodFigures } from './figures';
 import { loudestOf, type Loudest } from './loudest';
 import { poolPeriods, type PooledPeriods } from './pooledPeriods';
 import { QuarterSeries } from './quarterSeries';
 import { type Span } from './spans';
-import { periodStatistics, type StatisticsQuery } from './statistics';
+import { statisticsOf, type StatisticsQuery } from './statistics';
 
 /** A station's month as asked for. */
 export interface MonthQuery {
@@ -21,6 +23,8 @@ export interface MonthQuery {
   timeline?: NetworkSettings[];
   /** Epoch seconds; a period counts as elapsed up to here. Now when left out. */
   nowSec?: number;
+  /** Quarter-hours of the month and its last night; read when left out. */
+  series?: QuarterSeries;
 }
 
 export interface MonthFigures extends Span {
@@ -28,6 +32,8 @@ export interface MonthFigures extends Span {
   timeZone: string;
   /** By the clock, from the month's first midnight to the next month's. */
   statistics: Statistics;
+  /** What these are taken from, with distributions per band. */
+  levels: PeriodAccumulator;
   /** Within the same clock month. */
   loudest: Loudest | null;
   /**
@@ -52,7 +58,7 @@ export async function monthFigures(query: MonthQuery, conn: Connection = pool())
   const source: LevelSource = { station, timeline, validity: 'rules' };
   const lastNightEndSec = datePeriods(addDays(nextMonth, -1), timeline).at(-1)?.toSec ?? civil.toSec;
   const span = { fromSec: civil.fromSec, toSec: Math.max(civil.toSec, lastNightEndSec) };
-  const series = await QuarterSeries.read(source, span, conn);
+  const series = query.series ?? (await QuarterSeries.read(source, span, conn));
   const periods: PeriodLevel[] = [];
   let isSchemeMixed = false;
   for (const date of datesBetween(firstDate, nextMonth)) {
@@ -66,11 +72,17 @@ export async function monthFigures(query: MonthQuery, conn: Connection = pool())
     );
   const [day, evening, night] = [pooled('day'), pooled('evening'), pooled('night')];
   const levelsDb = { day: day.laeqDb, evening: evening.laeqDb, night: night.laeqDb };
+  const figures = await periodFigures(
+    { station, ...civil, timeline, nowSec },
+    { bandPercentiles: true },
+    conn,
+  );
   return {
     month,
     timeZone,
     ...civil,
-    statistics: await periodStatistics({ station, ...civil, timeline, nowSec }, conn),
+    statistics: statisticsOf(figures, { station }),
+    levels: figures.levels,
     loudest: await loudestOf(source, civil, series, conn),
     periods: { day, evening: periods.some(({ kind }) => kind === 'evening') ? evening : null, night },
     ldenDb: isSchemeMixed ? null : ldenDb(scheme, levelsDb),

@@ -27,7 +27,11 @@ export class QuarterSeries {
   /** Reads the quarter-hours that `span` touches. */
   static async read(source: LevelSource, span: Span, conn: Connection): Promise<QuarterSeries> {
     const whole = { fromSec: quarterAt(span.fromSec), toSec: quarterAt(span.toSec + QUARTER_SEC - 1) };
-    const rows = await QuarterSeries.#rows(source, whole, conn);
+    return QuarterSeries.of(source, await QuarterSeries.#rows(source, whole, conn), conn);
+  }
+
+  /** A series of quarter-hours that were read already and cover whatever will be asked of it. */
+  static of(source: LevelSource, rows: readonly QuarterHour[], conn: Connection): QuarterSeries {
     const quarters = new Map(rows.map(({ startSec, sums }) => [startSec, sums]));
     return new QuarterSeries(source, quarters, conn);
   }

@@ -42,7 +42,8 @@ export async function monthlySummary(network: NetworkRow, month: string, now: Da
   } satisfies Summary);
 }
 
-function conventionsOf(timeline: NetworkSettings[], { fromSec, toSec }: MonthSpan): Convention[] {
+/** Settings of the network that hold at some time of a month, in order of time. */
+export function conventionsOf(timeline: NetworkSettings[], { fromSec, toSec }: MonthSpan): Convention[] {
   const changes = timeline.filter((settings) => settings.effectiveFromSec < toSec);
   const first = Math.max(
     0,

@@ -62,7 +62,8 @@ export async function stationSummary(query: StationMonthQuery): Promise<SummaryS
   };
 }
 
-function levelsOf({ statistics, periods, loudest, ldenDb }: MonthFigures): MonthLevels {
+/** The figures of a month’s summary. */
+export function levelsOf({ statistics, periods, loudest, ldenDb }: MonthFigures): MonthLevels {
   const { day, evening, night } = periods;
   return {
     Lday: day.laeqDb,
@@ -81,7 +82,8 @@ function levelsOf({ statistics, periods, loudest, ldenDb }: MonthFigures): Month
   };
 }
 
-function dayOf(day: DayFigures): SummaryDay {
+/** A date of a month’s summary. */
+export function dayOf(day: DayFigures): SummaryDay {
   const { date, Lday, Levening, Lnight, Lden, periods } = day;
   return {
     date,

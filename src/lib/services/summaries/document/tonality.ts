@@ -1,0 +1,98 @@
+import { bandAt } from '#lib/acoustics/bands';
+import { lowFrequencyIndicator, LOW_FREQUENCY_BOUND_DB } from '#lib/acoustics/lowFrequency';
+import { PeriodAccumulator } from '#lib/acoustics/periodStatistics';
+import { assessTonality, surveyTones, thirdsTenthsOfDb } from '#lib/acoustics/tonality';
+import { type DocumentLowFrequency, type DocumentTonality } from '#lib/contracts/monthEvidence';
+import { notAssessableWords } from '#lib/format/tones';
+import { QUARTER_SEC } from '#lib/time/quarters';
+import { fractionOf, stationBands } from '../../figures/stationBands';
+import { type MonthEvidence } from './evidence';
+
+/** Quarter-hours with less valid time are not looked at for tones. */
+const LEAST_SEC = 60;
+
+/** Tones of the month’s mean spectrum, and how many quarter-hours have one by the survey method. */
+export function documentTonality(evidence: MonthEvidence, month: PeriodAccumulator): DocumentTonality {
+  const blocks = tonalBlocks(evidence);
+  const mean = meanTones(evidence, month);
+  return { ...mean, blockSeconds: QUARTER_SEC, ...blocks };
+}
+
+/** LCeq − LAeq of the month and of its quarter-hours against the bound. */
+export function documentLowFrequency(
+  { quarters, span }: MonthEvidence,
+  month: PeriodAccumulator,
+): DocumentLowFrequency {
+  const found = lowFrequencyIndicator(month.lceqDb(), month.laeqDb());
+  let [assessedBlocks, blocksAbove] = [0, 0];
+  for (const { startSec, sums } of quarters) {
+    // Both are to be of the same intervals.
+    if (startSec >= span.toSec || sums.validSec === 0 || sums.cValidSec !== sums.validSec) continue;
+    assessedBlocks += 1;
+    const quarter = new PeriodAccumulator({ from: sums });
+    if (lowFrequencyIndicator(quarter.lceqDb(), quarter.laeqDb())?.isAbove) blocksAbove += 1;
+  }
+  return {
+    bound: LOW_FREQUENCY_BOUND_DB,
+    difference: found?.differenceDb ?? null,
+    isAbove: found?.isAbove ?? false,
+    assessedBlocks,
+    blocksAbove,
+  };
+}
+
+function meanTones(
+  { station }: MonthEvidence,
+  month: PeriodAccumulator,
+): Pick<DocumentTonality, 'notAssessable' | 'tones'> {
+  if (month.sums.validSec === 0) {
+    return { notAssessable: 'There are no valid data in this month.', tones: [] };
+  }
+  const bands = stationBands(station, month);
+  const levelsDb = bands.map(({ index }) => month.bandLeqDb(index));
+  const found = assessTonality(fractionOf(station, month), levelsDb, bands, month.sums.validSec);
+  if (found.kind === 'not-assessable') return { notAssessable: notAssessableWords(found.reason), tones: [] };
+  const tones = found.findings.flatMap(({ method, lowerIndex, upperIndex, excessTenths, thresholdTenths }) =>
+    method === 'averaged-neighbours'
+      ? []
+      : [
+          {
+            method,
+            lowerHz: bandAt(3, lowerIndex).lowerHz,
+            upperHz: bandAt(3, upperIndex).upperHz,
+            excess: excessTenths / 10,
+            threshold: thresholdTenths / 10,
+          },
+        ],
+  );
+  return { notAssessable: null, tones };
+}
+
+function tonalBlocks({
+  station,
+  span,
+  quarters,
+}: MonthEvidence): Pick<DocumentTonality, 'assessedBlocks' | 'tonalBlocks' | 'bands'> {
+  const blocksOfBand = new Map<number, number>();
+  let [assessedBlocks, tonal] = [0, 0];
+  for (const { startSec, sums } of quarters) {
+    if (startSec >= span.toSec || sums.bandFraction !== 3 || sums.validSec < LEAST_SEC) continue;
+    assessedBlocks += 1;
+    const quarter = new PeriodAccumulator({ from: sums });
+    const bands = stationBands(station, quarter);
+    const tones = surveyTones(
+      thirdsTenthsOfDb(
+        bands.map(({ index }) => quarter.bandLeqDb(index)),
+        bands,
+      ),
+    );
+    if (tones.length > 0) tonal += 1;
+    for (const { lowerIndex } of tones) {
+      blocksOfBand.set(lowerIndex, (blocksOfBand.get(lowerIndex) ?? 0) + 1);
+    }
+  }
+  const bands = [...blocksOfBand]
+    .sort(([a, many], [b, more]) => more - many || a - b)
+    .map(([index, blocks]) => ({ nominalHz: bandAt(3, index).nominalHz, blocks }));
+  return { assessedBlocks, tonalBlocks: tonal, bands };
+}
