@@ -19,6 +19,8 @@ export interface ExceedanceRecord {
   percent: number | null;
   bandToIndex: number | null;
   eventTenths: number | null;
+  backgroundFromMin: number | null;
+  backgroundToMin: number | null;
   startsAtSec: number;
   endsAtSec: number;
   /** Of a rolling limit the loudest of the windows that make it: level and coverage are its. Else null. */
@@ -91,6 +93,8 @@ function selectRecords(conn: Connection) {
       percent: 'v.percent',
       bandToIndex: 'v.band_to_index',
       eventTenths: 'v.event_tenths',
+      backgroundFromMin: 'v.background_from_min',
+      backgroundToMin: 'v.background_to_min',
       startsAtSec: 'e.starts_at',
       endsAtSec: 'e.ends_at',
       loudestStartSec: 'e.loudest_starts_at',

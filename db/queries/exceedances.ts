@@ -189,6 +189,8 @@ function selectExceedances(conn: Connection) {
       percent: 'v.percent',
       bandToIndex: 'v.band_to_index',
       eventTenths: 'v.event_tenths',
+      backgroundFromMin: 'v.background_from_min',
+      backgroundToMin: 'v.background_to_min',
       startsAtSec: 'e.starts_at',
       endsAtSec: 'e.ends_at',
       loudestStartSec: 'e.loudest_starts_at',

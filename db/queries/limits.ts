@@ -1,22 +1,11 @@
 import type { BandFraction } from '#lib/acoustics/bands';
+import type { LimitMetricName, LimitWindowName } from '#lib/acoustics/limitQuantities';
+import type { WindRule } from '#lib/acoustics/windRule';
 import { pool, type Connection } from './connection';
 import { listHolidays } from './holidays';
 
-export type LimitMetric =
-  | 'LAeq'
-  | 'LAFmax'
-  | 'bandLeq'
-  | 'LAN'
-  | 'LAE'
-  | 'Lden'
-  | 'bandGroupLeq'
-  | 'LCeqLessLAeq'
-  | 'LAeqLessLA90'
-  | 'LAeqLessUsual'
-  | 'tonalShare'
-  | 'eventCount';
-/** `length`: `windowMin`; `hours`: `fromMin` to `toMin` of each date, one window; `den`: all periods of a date together. */
-export type LimitAveraging = '15min' | '1h' | 'day' | 'evening' | 'night' | 'length' | 'hours' | 'den';
+export type LimitMetric = LimitMetricName;
+export type LimitAveraging = LimitWindowName;
 /** What the named dates of the network are to a limit: nothing, Sundays, left out, or the only dates. */
 export type HolidayRule = 'as-weekday' | 'as-sunday' | 'never' | 'only';
 
@@ -37,13 +26,18 @@ export interface LimitVersion {
   /** Of a band limit, else null. */
   bandFraction: BandFraction | null;
   bandIndex: number | null;
-  /** N of an L_N limit, else null. */
+  /** N of an L_N limit, or of the background that a level is above (null: 90); else null. */
   percent: number | null;
   /** Of a group of bands, which begins with `bandIndex`, the last one; else null. */
   bandToIndex: number | null;
   /** Of a limit on events: what an event is above, and how long it is at least; else null. */
   eventTenths: number | null;
   eventMinimumSec: number | null;
+  /** Gaps up to this long do not end an event; null: 10 s. */
+  eventGapSec: number | null;
+  /** Hours, minutes after midnight, that the background is taken from; null: the window itself. */
+  backgroundFromMin: number | null;
+  backgroundToMin: number | null;
   /** Exceeded when the level, rounded half up to tenths of a dB, is greater. */
   thresholdTenths: number;
   /** Bit 0 Monday … bit 6 Sunday, of the local date on which the window begins. */
@@ -59,6 +53,8 @@ export interface LimitVersion {
   toMin: number | null;
   /** Null: the network's minimum. */
   minimumCoverage: number | null;
+  /** Beside the network's bound on wind; null: none. */
+  windRule: WindRule | null;
   /** Null: every station of the network. */
   stationIds: number[] | null;
   /** The group that the stations were taken from, else null. */
@@ -81,10 +77,15 @@ type Optional =
   | 'bandToIndex'
   | 'eventTenths'
   | 'eventMinimumSec'
+  | 'eventGapSec'
+  | 'backgroundFromMin'
+  | 'backgroundToMin'
+  | 'windRule'
   | 'groupId';
 export type NewLimitVersion = Omit<LimitVersion, Assigned | Optional> & Partial<Pick<LimitVersion, Optional>>;
 
-interface Row extends Omit<LimitVersion, 'stationIds' | 'recipients' | 'holidayDates'> {
+interface Row extends Omit<LimitVersion, 'stationIds' | 'recipients' | 'holidayDates' | 'windRule'> {
+  windRule: string | WindRule | null;
   stationIds: string | number[] | null;
   recipients: string | string[];
 }
@@ -182,12 +183,16 @@ export async function insertVersion(
     band_to_index: fields.bandToIndex ?? null,
     event_tenths: fields.eventTenths ?? null,
     event_minimum_sec: fields.eventMinimumSec ?? null,
+    event_gap_sec: fields.eventGapSec ?? null,
+    background_from_min: fields.backgroundFromMin ?? null,
+    background_to_min: fields.backgroundToMin ?? null,
     threshold_tenths: fields.thresholdTenths,
     weekdays: fields.weekdays,
     holidays: fields.holidays ?? 'as-weekday',
     from_min: fields.fromMin,
     to_min: fields.toMin,
     minimum_coverage: fields.minimumCoverage,
+    wind_rule: fields.windRule ? JSON.stringify(fields.windRule) : null,
     station_ids: fields.stationIds && JSON.stringify(fields.stationIds),
     group_id: fields.groupId ?? null,
     recipients: JSON.stringify(fields.recipients),
@@ -230,12 +235,16 @@ function selectVersions(conn: Connection) {
       bandToIndex: 'v.band_to_index',
       eventTenths: 'v.event_tenths',
       eventMinimumSec: 'v.event_minimum_sec',
+      eventGapSec: 'v.event_gap_sec',
+      backgroundFromMin: 'v.background_from_min',
+      backgroundToMin: 'v.background_to_min',
       thresholdTenths: 'v.threshold_tenths',
       weekdays: 'v.weekdays',
       holidays: 'v.holidays',
       fromMin: 'v.from_min',
       toMin: 'v.to_min',
       minimumCoverage: 'v.minimum_coverage',
+      windRule: 'v.wind_rule',
       stationIds: 'v.station_ids',
       groupId: 'v.group_id',
       recipients: 'v.recipients',
@@ -252,6 +261,7 @@ async function versionsOf<R extends Row>(rows: readonly R[], networkId: number, 
   );
   return rows.map((row) => ({
     ...row,
+    windRule: parsed<WindRule | null>(row.windRule),
     stationIds: parsed<number[] | null>(row.stationIds),
     recipients: parsed<string[]>(row.recipients),
     holidayDates,

@@ -1,16 +1,23 @@
 import type { Connection } from '#db/queries/connection';
 import { LONGEST_EXCEEDANCE_SEC, selectStandingWindows } from '#db/queries/judgedExceedances';
-import { listLimitVersions } from '#db/queries/limits';
-import { listSettings } from '#db/queries/networks';
+import { listLimitVersions, type LimitVersion } from '#db/queries/limits';
+import { listSettings, type NetworkSettings } from '#db/queries/networks';
 import { insertPendingWindows, selectOpenWindows, type NewPendingWindow } from '#db/queries/pendingWindows';
 import { findStationById } from '#db/queries/stations';
-import { byLimit, enoughToJudge, judgedWindows, LONGEST_WINDOW_SEC } from '#lib/services/limits/force';
+import type { Span } from '#lib/services/levels/spans';
+import {
+  BACKGROUND_REACH_SEC,
+  backgroundHoursOf,
+  hasBackgroundHours,
+} from '#lib/services/limits/backgroundHours';
+import {
+  byLimit,
+  enoughToJudge,
+  judgedWindows,
+  LONGEST_WINDOW_SEC,
+  type JudgedWindow,
+} from '#lib/services/limits/force';
 import { QUARTER_SEC } from '#lib/time/quarters';
-
-interface Run {
-  fromSec: number;
-  toSec: number;
-}
 
 /**
  * Has every window judged, once it has closed, that holds one of these quarter-hours of a station: of every limit in force
@@ -31,10 +38,11 @@ export async function pendWindowsFor(
   const add = (window: NewPendingWindow) => pending.set(keyOf(window), window);
   const nowSec = Math.floor(Date.now() / 1000);
   for (const run of runsOf(quarterStartsSec)) {
-    const begun = { fromSec: run.fromSec - LONGEST_WINDOW_SEC, toSec: run.toSec };
     for (const [limitId, ofLimit] of limits) {
-      const windows = judgedWindows(ofLimit, stationId, begun, timeline).filter(
-        ({ endSec }) => endSec > run.fromSec,
+      const windows = windowsTouched(
+        run,
+        judgedWindows(ofLimit, stationId, begunAround(run, ofLimit, nowSec), timeline),
+        timeline,
       );
       for (const { startSec, endSec } of enoughToJudge(windows, nowSec, timeline))
         add({ limitId, stationId, startSec, endSec });
@@ -43,6 +51,27 @@ export async function pendWindowsFor(
     (await selectStandingWindows(stationId, { ...run, longestSec }, transaction)).forEach(add);
   }
   await insertPendingWindows([...(await withoutWaiting(pending, stationId, transaction))], transaction);
+}
+
+/** When windows begin that some quarter-hours may change: those that hold them, and, of what is past, those that look back at them. */
+function begunAround({ fromSec, toSec }: Span, ofLimit: readonly LimitVersion[], nowSec: number): Span {
+  const looksBack = ofLimit.some(hasBackgroundHours);
+  return {
+    fromSec: fromSec - LONGEST_WINDOW_SEC,
+    toSec: looksBack ? Math.max(toSec, Math.min(nowSec, toSec + BACKGROUND_REACH_SEC)) : toSec,
+  };
+}
+
+function windowsTouched(
+  run: Span,
+  windows: readonly JudgedWindow[],
+  timeline: NetworkSettings[],
+): JudgedWindow[] {
+  return windows.filter(({ version, startSec, endSec }) => {
+    if (startSec < run.toSec && endSec > run.fromSec) return true;
+    const hours = backgroundHoursOf(version, startSec, timeline);
+    return hours !== null && hours.fromSec < run.toSec && hours.toSec > run.fromSec;
+  });
 }
 
 /**
@@ -68,8 +97,8 @@ function keyOf({ limitId, startSec, endSec }: NewPendingWindow): string {
 }
 
 /** Runs of quarter-hours that follow one another. */
-function runsOf(quarterStartsSec: readonly number[]): Run[] {
-  const runs: Run[] = [];
+function runsOf(quarterStartsSec: readonly number[]): Span[] {
+  const runs: Span[] = [];
   for (const startSec of [...new Set(quarterStartsSec)].sort((a, b) => a - b)) {
     const last = runs.at(-1);
     if (last?.toSec === startSec) last.toSec += QUARTER_SEC;

@@ -8,6 +8,7 @@ import { formatCoverage } from '#lib/format/levels';
 import { limitMetricText, limitUnit, limitValueText } from '#lib/format/limitMetric';
 import { standingOutWords } from '#lib/format/standingOut';
 import { formatPeriod, formatZone } from '#lib/format/times';
+import { windRuleText } from '#lib/format/windRule';
 
 /** What an e-mail says of one change, in words. */
 export interface ChangeWords {
@@ -43,6 +44,7 @@ export function describeChange(change: TellingChange, networkSlug: string): Chan
         'Limit',
         `${version.name}: ${limitMetricText(version)} above ${limitValueText(version.thresholdTenths / 10, unit)}`,
       ],
+      ...windFacts(version),
       ['Level', levelDb === null ? 'no level' : limitValueText(roundHalfUp(levelDb, 1), unit)],
       ...toldBefore(change),
       ['Period', `${formatPeriod(window, settings.timeZone)}, ${formatZone(settings.timeZone, window)}`],
@@ -55,6 +57,10 @@ export function describeChange(change: TellingChange, networkSlug: string): Chan
     exceedanceUrl: `${base}/exceedances/${change.exceedanceId}`,
     stripUrl: `${base}/stations/${station.code}?from=${from}&to=${to}`,
   };
+}
+
+function windFacts({ windRule }: LimitVersion): [string, string][] {
+  return windRule ? [['Its wind rule', windRuleText(windRule)]] : [];
 }
 
 function headlineOf(

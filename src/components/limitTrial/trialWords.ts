@@ -29,6 +29,9 @@ export function countRows({ trial, today }: LimitTrialAnswer): SideBySide[] {
     row('Compared', ({ counts }) => counts.compared),
     row('Not compared: too little data', ({ counts }) => counts.uncovered),
     row('Not compared: no data', ({ counts }) => counts.empty),
+    ...(trial.counts.dismissed + (today?.counts.dismissed ?? 0) > 0
+      ? [row('Not compared: the wind', ({ counts }) => counts.dismissed)]
+      : []),
     row('Above the limit', ({ counts }) => counts.caught),
     row('E-mails to each recipient', ({ mails }) => mails),
   ];

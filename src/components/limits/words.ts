@@ -1,7 +1,8 @@
+import { EVENT_METRICS } from '#lib/acoustics/limitQuantities';
 import type { PeriodScheme } from '#lib/acoustics/dayEveningNight';
 import { formatClockTime } from '#lib/contracts/common';
 import { WEEKDAYS, type Limit, type LimitVersionView, type Weekday } from '#lib/contracts/limits';
-import { formatCoverage } from '#lib/format/levels';
+import { formatCoverage, formatLevelDb } from '#lib/format/levels';
 
 export const STATE_WORDS: Readonly<Record<Limit['state'], string>> = {
   'in-force': 'In force',
@@ -104,9 +105,22 @@ export function coverageWords(
   networkMinimum: number,
 ): string {
   if (metric === 'LAFmax') return 'any: a maximum that was measured is one';
-  if (metric === 'eventCount') return 'any: events that were measured are some';
+  if (EVENT_METRICS.includes(metric)) return 'any: events that were measured are some';
   if (minimumCoverage === null) return `${formatCoverage(networkMinimum)} (the network’s minimum)`;
   return formatCoverage(minimumCoverage);
+}
+
+/** What makes an event of a limit on events; nothing of others. */
+export function eventFacts({
+  eventThreshold,
+  eventSeconds,
+  eventGap,
+}: Pick<LimitVersionView, 'eventThreshold' | 'eventSeconds' | 'eventGap'>): [string, string][] {
+  if (eventThreshold === null || eventSeconds === null) return [];
+  const gap = `gaps of up to ${eventGap ?? 0} s do not end it`;
+  return [
+    ['An event', `LAeq above ${formatLevelDb(eventThreshold)} dB for at least ${eventSeconds} s; ${gap}`],
+  ];
 }
 
 /** Labels of the form's fields, by name. */
@@ -121,6 +135,16 @@ export const LIMIT_LABELS = {
   percent: 'Exceeded for',
   eventThreshold: 'An event is above',
   eventSeconds: 'for at least',
+  eventGap: 'Gaps that do not end it',
+  backgroundPercent: 'Background',
+  backgroundFrom: 'Background from',
+  backgroundTo: 'to',
+  windMinimum: 'Lowest wind speed',
+  windMaximum: 'Highest wind speed',
+  windFrom: 'Wind from',
+  windTo: 'clockwise to',
+  windDismissAbove: 'Not compared above a mean wind of',
+  windUnknown: 'Wind that is not known',
   window: 'Window',
   windowMinutes: 'Length of the window',
   stepMinutes: 'Rolling windows',

@@ -43,6 +43,26 @@ export function weatherDuring(
   return { windSpeedMs, isRaining: (rainMm ?? 0) > 0 };
 }
 
+/** Where the wind of the same stretch comes from, by the same records: the direction of their mean vector; null: not told. */
+export function directionDuring(
+  records: readonly WeatherRecord[],
+  fromSec: number,
+  toSec: number,
+  maximumAgeSec: number,
+): number | null {
+  const first = firstRecordEndingAfter(records, fromSec);
+  const overlapping: WeatherRecord[] = [];
+  for (let at = first; at < records.length; at += 1) {
+    const record = records[at];
+    if (!record || record.startSec >= toSec) break;
+    overlapping.push(record);
+  }
+  const mean = meanWind(overlapping, { fromSec, toSec });
+  if (mean) return mean.directionDeg;
+  const nearest = nearestOf(records[first - 1], records[first], fromSec, toSec);
+  return nearest && nearest.distanceSec < maximumAgeSec ? nearest.record.windDirectionDeg : null;
+}
+
 /** Index of the first of some ascending, disjoint records that ends after an instant. */
 export function firstRecordEndingAfter(records: readonly WeatherRecord[], sec: number): number {
   let low = 0;

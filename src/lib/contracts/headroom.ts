@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import { LIMIT_METRICS } from './limitMetrics';
+import { LIMIT_METRICS } from '#lib/acoustics/limitQuantities';
 import { registerRoute } from './registry';
 
 export const HEADROOM_STATES = [

@@ -1,22 +1,13 @@
 import { z } from 'zod';
 import { bandByNominalHz } from '#lib/acoustics/bands';
-import type { LIMIT_WINDOWS } from './limitWindows';
-
-export const LIMIT_METRICS = [
-  'LAeq',
-  'LAFmax',
-  'bandLeq',
-  'LAN',
-  'LAE',
-  'Lden',
-  'bandGroupLeq',
-  'LCeqLessLAeq',
-  'LAeqLessLA90',
-  'LAeqLessUsual',
-  'tonalShare',
-  'eventCount',
-] as const;
-export type LimitMetricName = (typeof LIMIT_METRICS)[number];
+import {
+  EVENT_METRICS,
+  LIMIT_METRICS,
+  type LimitMetricName,
+  type LimitWindowName,
+} from '#lib/acoustics/limitQuantities';
+import { clockTime } from './common';
+import { GRAIN_MIN } from './limitWindows';
 
 export const LIMIT_UNITS = ['dB', '%', 'events'] as const;
 
@@ -24,14 +15,19 @@ export const LIMIT_UNITS = ['dB', '%', 'events'] as const;
 export const LIMIT_PERCENTS = [1, 5, 10, 50, 90, 95, 99] as const;
 
 /** Quantities that are not told by the sums of the window alone: they have no rolling windows. */
-const FIXED_ONLY: readonly LimitMetricName[] = ['Lden', 'LAeqLessUsual', 'tonalShare', 'eventCount'];
+const FIXED_ONLY: readonly LimitMetricName[] = ['Lden', 'LAeqLessUsual', 'tonalShare', ...EVENT_METRICS];
+
+/** N of the L_N that may be the background. */
+export const BACKGROUND_PERCENTS = [90, 95] as const;
+/** Gaps that end no event, where a limit tells no other, s. */
+export const EVENT_GAP_SEC = 10;
 
 export const limitMetric = z
   .enum(LIMIT_METRICS, 'must be one of the list')
   .describe(
     'bandLeq, bandGroupLeq: the unweighted level of one band, or of several together. LCeqLessLAeq, LAeqLessLA90: differences within ' +
       'the window. LAeqLessUsual: above the median of the same weekday and clock window of the eight weeks before. tonalShare: per cent ' +
-      'of the time with a tone by the survey method. eventCount: how many events',
+      'of the time with a tone by the survey method. eventCount: how many events. eventLAE: the greatest LAE of a single event',
   );
 export const limitBandFraction = z.union([z.literal(1), z.literal(3)], 'must be 1 (octaves) or 3 (thirds)');
 
@@ -48,14 +44,26 @@ export const metricFields = {
     .refine((percent) => LIMIT_PERCENTS.some((one) => one === percent), 'must be one of the list')
     .nullable()
     .default(null)
-    .describe(`Of LAN: ${LIMIT_PERCENTS.join(', ')}`),
+    .describe(
+      `Of LAN: ${LIMIT_PERCENTS.join(', ')}; of the background of LAeqLessLA90: ${BACKGROUND_PERCENTS.join(' or ')}, null: 90`,
+    ),
+  backgroundFrom: clockTime
+    .nullable()
+    .default(null)
+    .describe(
+      'Of LAeqLessLA90: local time at which the hours of the background begin; the last such hours that ended by the beginning of the ' +
+        'window count, and need its coverage. Null: the window itself is its own background',
+    ),
+  backgroundTo: clockTime.nullable().default(null).describe('Before backgroundFrom: across midnight'),
   eventThreshold: z
     .number('must be a level in dB')
     .min(-20, 'must be −20 to 200 dB')
     .max(200, 'must be −20 to 200 dB')
     .nullable()
     .default(null)
-    .describe('Of eventCount: an event is a run of intervals whose LAeq, to tenths, is greater; dB'),
+    .describe(
+      'Of eventCount and eventLAE: an event is a run of intervals whose LAeq, to tenths, is greater; dB',
+    ),
   eventSeconds: z
     .number('must be a number of seconds')
     .int('must be whole seconds')
@@ -63,7 +71,17 @@ export const metricFields = {
     .max(3600, 'must be 1 to 3600 s')
     .nullable()
     .default(null)
-    .describe('Of eventCount: how long an event is at least'),
+    .describe('Of eventCount and eventLAE: how long an event is at least'),
+  eventGap: z
+    .number('must be a number of seconds')
+    .int('must be whole seconds')
+    .min(0, 'must be 0 to 600 s')
+    .max(600, 'must be 0 to 600 s')
+    .nullable()
+    .default(null)
+    .describe(
+      `Of eventCount and eventLAE: gaps up to this long, quieter or without data, do not end an event; null: ${EVENT_GAP_SEC} s`,
+    ),
   threshold: z
     .number('must be a number')
     .min(-20, 'must be −20 to 200')
@@ -75,14 +93,44 @@ export const metricFields = {
 };
 
 export type CheckedMetric = z.output<z.ZodObject<typeof metricFields>> & {
-  window: (typeof LIMIT_WINDOWS)[number];
+  window: LimitWindowName;
   stepMinutes: number | null;
 };
 type Issue = [field: keyof CheckedMetric, message: string];
 
 /** What does not go together of what a limit is about. */
 export function metricIssues(limit: CheckedMetric): Issue[] {
-  return [...bandIssues(limit), ...parameterIssues(limit), ...windowIssues(limit), ...thresholdIssues(limit)];
+  return [
+    ...bandIssues(limit),
+    ...parameterIssues(limit),
+    ...backgroundIssues(limit),
+    ...windowIssues(limit),
+    ...thresholdIssues(limit),
+  ];
+}
+
+function backgroundIssues({ metric, percent, backgroundFrom, backgroundTo }: CheckedMetric): Issue[] {
+  if (metric !== 'LAeqLessLA90')
+    return backgroundFrom === null && backgroundTo === null
+      ? []
+      : [['backgroundFrom', 'goes with a level above the background only']];
+  const issues: Issue[] = [];
+  if (percent !== null && !BACKGROUND_PERCENTS.some((one) => one === percent))
+    issues.push(['percent', `must be ${BACKGROUND_PERCENTS.join(' or ')} of a background`]);
+  if ((backgroundFrom === null) !== (backgroundTo === null))
+    return [
+      ...issues,
+      [
+        backgroundFrom === null ? 'backgroundFrom' : 'backgroundTo',
+        'must be given together with the other one',
+      ],
+    ];
+  if (backgroundFrom === null || backgroundTo === null) return issues;
+  if (backgroundFrom === backgroundTo) issues.push(['backgroundTo', 'must differ from the beginning']);
+  if (backgroundFrom === 1440) issues.push(['backgroundFrom', 'must be from 00:00 to 23:59']);
+  if (backgroundFrom % GRAIN_MIN !== 0 || backgroundTo % GRAIN_MIN !== 0)
+    issues.push(['backgroundFrom', `must be in steps of ${GRAIN_MIN} minutes, like the end`]);
+  return issues;
 }
 
 function bandIssues({ metric, bandHz, bandFraction, bandToHz }: CheckedMetric): Issue[] {
@@ -103,11 +151,19 @@ function bandIssues({ metric, bandHz, bandFraction, bandToHz }: CheckedMetric): 
   return issues;
 }
 
-function parameterIssues({ metric, percent, eventThreshold, eventSeconds }: CheckedMetric): Issue[] {
+function parameterIssues({
+  metric,
+  percent,
+  eventThreshold,
+  eventSeconds,
+  eventGap,
+}: CheckedMetric): Issue[] {
   const issues: Issue[] = [];
   if (metric === 'LAN' && percent === null) issues.push(['percent', 'must be given for an L_N']);
-  if (metric !== 'LAN' && percent !== null) issues.push(['percent', 'goes with an L_N only']);
-  const isOfEvents = metric === 'eventCount';
+  if (metric !== 'LAN' && metric !== 'LAeqLessLA90' && percent !== null)
+    issues.push(['percent', 'goes with an L_N or a background only']);
+  const isOfEvents = EVENT_METRICS.includes(metric);
+  if (!isOfEvents && eventGap !== null) issues.push(['eventGap', 'goes with events only']);
   for (const [field, value] of [
     ['eventThreshold', eventThreshold],
     ['eventSeconds', eventSeconds],

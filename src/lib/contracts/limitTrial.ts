@@ -37,6 +37,10 @@ const countsSchema = z.object({
   compared: z.number().int().describe('Of these, with the coverage that it takes'),
   uncovered: z.number().int().describe('With data, but too few'),
   empty: z.number().int().describe('Without any valid data of the quantity'),
+  dismissed: z
+    .number()
+    .int()
+    .describe('Not compared by the limit’s wind: too much of it, or too little known'),
   caught: z.number().int().describe('Above the limit'),
 });
 export type TrialCounts = z.output<typeof countsSchema>;

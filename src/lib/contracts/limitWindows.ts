@@ -1,6 +1,6 @@
 import { z } from 'zod';
+import { LIMIT_WINDOWS, type LimitWindowName } from '#lib/acoustics/limitQuantities';
 
-export const LIMIT_WINDOWS = ['15min', '1h', 'day', 'evening', 'night', 'length', 'hours', 'den'] as const;
 export const HOLIDAY_RULES = ['as-weekday', 'as-sunday', 'never', 'only'] as const;
 /** Every how many minutes rolling windows may begin. */
 export const WINDOW_STEPS_MIN = [5, 15] as const;
@@ -48,7 +48,7 @@ export const holidayRule = z
 
 /** What is looked at together. Clock times in minutes after midnight. */
 export interface CheckedWindow {
-  window: (typeof LIMIT_WINDOWS)[number];
+  window: LimitWindowName;
   windowMinutes: number | null;
   stepMinutes: 5 | 15 | null;
   from: number | null;

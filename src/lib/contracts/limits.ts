@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import { clockTime, instant, reasonText, shortText } from './common';
 import { limitBandFraction, LIMIT_UNITS, limitMetric, metricFields, metricIssues } from './limitMetrics';
+import { windFields, windIssues } from './limitWind';
 import { holidayRule, windowFields, windowIssues } from './limitWindows';
 import { registerRoute } from './registry';
 
@@ -45,6 +46,7 @@ const fields = {
     .describe('Local time from which on windows begin, of own hours the beginning; null: all day'),
   to: clockTime.nullable().default(null).describe('Before `from`: across midnight'),
   minimumCoverage: minimumCoverage.nullable().default(null),
+  ...windFields,
   stations: z
     .array(z.string().max(32))
     .min(1, 'must name at least one station')
@@ -79,7 +81,8 @@ function checkTogether(limit: Checked, context: z.RefinementCtx): void {
     context.addIssue({ code: 'custom', path: [path], message });
   if (limit.group !== null && limit.stations !== null)
     issue('stations', 'must be left out where a group is named');
-  for (const [field, message] of [...metricIssues(limit), ...windowIssues(limit)]) issue(field, message);
+  for (const [field, message] of [...metricIssues(limit), ...windowIssues(limit), ...windIssues(limit)])
+    issue(field, message);
 }
 
 export const newLimitSchema = z
@@ -105,6 +108,9 @@ export const limitVersionSchema = z.object({
   percent: z.number().int().nullable(),
   eventThreshold: z.number().nullable(),
   eventSeconds: z.number().int().nullable(),
+  eventGap: z.number().int().nullable(),
+  backgroundFrom: z.string().nullable(),
+  backgroundTo: z.string().nullable(),
   descriptor: z.string().describe('What is compared, in words: "LAeq,15 min"'),
   threshold: z.number(),
   unit: z.enum(LIMIT_UNITS).describe('Of the threshold, and of what is measured against it'),
@@ -113,6 +119,16 @@ export const limitVersionSchema = z.object({
   from: z.string().nullable(),
   to: z.string().nullable(),
   minimumCoverage: minimumCoverage.nullable(),
+  windMinimum: z.number().nullable(),
+  windMaximum: z.number().nullable(),
+  windFrom: z.number().int().nullable(),
+  windTo: z.number().int().nullable(),
+  windDismissAbove: z.number().nullable(),
+  windUnknown: windFields.windUnknown,
+  windWords: z
+    .string()
+    .nullable()
+    .describe('The wind that it goes by, in words; null: any that counts in the network'),
   stations: z.array(z.string()).nullable().describe('Of a group those that this version holds for'),
   group: z.number().int().nullable(),
   groupName: z.string().nullable(),

@@ -1,27 +1,13 @@
 import { bandAt, bandLabel, type BandFraction } from '#lib/acoustics/bands';
+import type { LimitMetricName, LimitWindowName } from '#lib/acoustics/limitQuantities';
 import { clockTimeText } from './clockTime';
 import { formatDuration } from './durations';
 import { formatDifferenceDb, formatLevelDb } from './levels';
 
-/** Which quantity a limit is about. */
-export type LimitMetricName =
-  | 'LAeq'
-  | 'LAFmax'
-  | 'bandLeq'
-  | 'LAN'
-  | 'LAE'
-  | 'Lden'
-  | 'bandGroupLeq'
-  | 'LCeqLessLAeq'
-  | 'LAeqLessLA90'
-  | 'LAeqLessUsual'
-  | 'tonalShare'
-  | 'eventCount';
-
 /** What a limit is about. */
 export interface LimitMetric {
   metric: LimitMetricName;
-  averaging: '15min' | '1h' | 'day' | 'evening' | 'night' | 'length' | 'hours' | 'den';
+  averaging: LimitWindowName;
   /** Of averaging `length`. */
   windowMin?: number | null;
   /** Of rolling windows. */
@@ -34,10 +20,13 @@ export interface LimitMetric {
   bandIndex: number | null;
   /** Of a group of bands the last one. */
   bandToIndex?: number | null;
-  /** Of an L_N. */
+  /** Of an L_N, and of the background that a level is above (90 unless told). */
   percent?: number | null;
   /** What events are above, in tenths of a dB. */
   eventTenths?: number | null;
+  /** Hours that the background is taken from, minutes after midnight; null: the window itself. */
+  backgroundFromMin?: number | null;
+  backgroundToMin?: number | null;
 }
 
 /** What a limit's values are given in. */
@@ -91,16 +80,26 @@ function fixedText(limit: LimitMetric): string {
     case 'LCeqLessLAeq':
       return `LCeq − LAeq over ${within}`;
     case 'LAeqLessLA90':
-      return `LAeq − LA90 over ${within}`;
+      return backgroundText(limit, window, within);
     case 'LAeqLessUsual':
       return `LAeq,${window} above the usual`;
     case 'tonalShare':
       return `tonal share of ${within}, in per cent`;
     case 'eventCount':
       return `number of events above LAeq ${formatLevelDb((limit.eventTenths ?? 0) / 10)} dB within ${within}`;
+    case 'eventLAE':
+      return `LAE of one event above LAeq ${formatLevelDb((limit.eventTenths ?? 0) / 10)} dB within ${within}`;
     default:
       return `Leq,${window} of the ${bandsText(limit)}`;
   }
+}
+
+/** "LAeq − LA90 over 1 h", "LAeq,15 min − LA95 of the last 23:00–07:00". */
+function backgroundText(limit: LimitMetric, window: string, within: string): string {
+  const { percent, backgroundFromMin: from = null, backgroundToMin: to = null } = limit;
+  const background = `LA${percent ?? 90}`;
+  if (from === null || to === null) return `LAeq − ${background} over ${within}`;
+  return `LAeq,${window} − ${background} of the last ${clockTimeText(from)}–${clockTimeText(to)}`;
 }
 
 function windowText({ averaging, windowMin, fromMin, toMin }: LimitMetric): string {

@@ -1,6 +1,7 @@
 import fc from 'fast-check';
 import { expect, test } from 'vitest';
 import { bandsOf } from '#lib/acoustics/bands';
+import { needsNoCoverage, type LimitMetricName } from '#lib/acoustics/limitQuantities';
 import { formatClockTime } from '#lib/contracts/common';
 import { newLimitSchema, WEEKDAYS, type Limit } from '#lib/contracts/limits';
 import { HOLIDAY_RULES } from '#lib/contracts/limitWindows';
@@ -20,6 +21,9 @@ const quantity = fc.oneof(
   band.map((one) => ({ metric: 'bandLeq' as const, ...one })),
   fc.constantFrom(
     { metric: 'LAE' },
+    { metric: 'LAeqLessLA90', percent: 95, backgroundFrom: '23:00', backgroundTo: '05:00' },
+    { metric: 'eventCount', eventThreshold: 65.5, eventSeconds: 5, eventGap: 0 },
+    { metric: 'eventLAE', eventThreshold: 70, eventSeconds: 1, eventGap: 30 },
     { metric: 'LAN', percent: 90 },
     { metric: 'bandGroupLeq', bandFraction: 3, bandHz: 50, bandToHz: 200 },
   ),
@@ -42,6 +46,22 @@ const windows = fc.oneof(
     .map(([window, times]) => ({ window, ...times })),
 );
 
+const speed = fc.option(fc.integer({ min: 0, max: 400 }).map((tenths) => tenths / 10));
+const wind = fc
+  .record({
+    speeds: fc.tuple(speed, speed),
+    sector: fc.option(fc.tuple(fc.integer({ min: 0, max: 359 }), fc.integer({ min: 0, max: 359 }))),
+    windDismissAbove: speed,
+    windUnknown: fc.constantFrom('left-out', 'counts'),
+  })
+  .map(({ speeds: [one, other], sector, ...rest }) => ({
+    ...rest,
+    windMinimum: one !== null && other !== null ? Math.min(one, other) : one,
+    windMaximum: one !== null && other !== null ? Math.max(one, other) : other,
+    windFrom: sector?.[0] ?? null,
+    windTo: sector?.[1] ?? null,
+  }));
+
 const places = fc.oneof(
   fc
     .option(fc.subarray(['A-1', 'B-2', 'C-3'], { minLength: 1 }))
@@ -62,9 +82,10 @@ const limits = fc
     recipients: fc.subarray(['a@x.example', 'b+c@y.example']),
     quantity,
     windows,
+    wind,
   })
   .map(
-    ({ quantity: what, windows: when, where, coverage, ...rest }) =>
+    ({ quantity: what, windows: when, wind: itsWind, where, coverage, threshold, ...rest }) =>
       ({
         name: 'Any',
         reason: 'Said before',
@@ -73,16 +94,22 @@ const limits = fc
         bandFraction: null,
         eventThreshold: null,
         eventSeconds: null,
+        eventGap: null,
         percent: null,
+        backgroundFrom: null,
+        backgroundTo: null,
         from: null,
         to: null,
         windowMinutes: null,
         stepMinutes: null,
         ...what,
         ...when,
+        ...itsWind,
         ...where,
         ...rest,
-        minimumCoverage: coverage === null || what.metric === 'LAFmax' ? null : coverage / 100,
+        threshold: what.metric === 'eventCount' ? Math.abs(Math.round(threshold)) : threshold,
+        minimumCoverage:
+          coverage === null || needsNoCoverage(what.metric as LimitMetricName) ? null : coverage / 100,
       }) as unknown as Limit,
   );
 

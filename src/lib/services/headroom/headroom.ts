@@ -45,7 +45,8 @@ async function headroomOf(window: JudgedWindow, evidence: HeadroomEvidence): Pro
   const { version, startSec, endSec } = window;
   const { nowSec, newestSec } = evidence;
   const sums = await evidence.sums({ fromSec: startSec, toSec: nowSec });
-  const { levelDb, validSec } = FORETOLD.includes(version.metric)
+  const isForetold = FORETOLD.includes(version.metric) && version.windRule === null;
+  const { levelDb, validSec } = isForetold
     ? measure(version, sums)
     : { levelDb: null, validSec: sums.validSec };
   const minimumCoverage = minimumFor(version, pickSettings(evidence.timeline, startSec));
@@ -64,8 +65,7 @@ async function headroomOf(window: JudgedWindow, evidence: HeadroomEvidence): Pro
     level: levelDb,
     seconds: seconds.told,
   };
-  if (version.stepMin !== null || !FORETOLD.includes(version.metric))
-    return { ...told, ...NO_FINDINGS, state: 'not-foretold' };
+  if (version.stepMin !== null || !isForetold) return { ...told, ...NO_FINDINGS, state: 'not-foretold' };
   if (version.metric === 'LAFmax') return { ...told, ...ofMaximum(window, levelDb) };
   return { ...told, ...(await ofMean(window, levelDb, seconds, evidence)) };
 }

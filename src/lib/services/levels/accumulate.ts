@@ -2,6 +2,7 @@ import { pickSettings, type NetworkSettings } from '#db/queries/networks';
 import { type StoredInterval } from '#db/queries/intervals';
 import { type BandInterval } from '#lib/acoustics/bandClassCounting';
 import { PeriodAccumulator, type AccumulatedInterval } from '#lib/acoustics/periodStatistics';
+import { countsInWind, type KnownWind, type WindRule } from '#lib/acoustics/windRule';
 import { isValid, type JudgedInterval, type ValidityRules } from '#lib/acoustics/validity';
 import { QUARTER_SEC } from '#lib/time/quarters';
 import { type StationWeather } from '../weather/stationWeather';
@@ -19,6 +20,8 @@ export interface Judgement {
   exclusions: readonly Span[];
   /** What masts tell of the weather at the station; left out or null: no mast is assigned. */
   weather?: StationWeather | null;
+  /** Of a limit that goes by the wind: which intervals count for it, of those that count in the network. */
+  wind?: WindRule | null;
 }
 
 /** A stretch in which one set of validity rules holds: each quarter-hour goes by the settings at its start. */
@@ -44,7 +47,19 @@ export function rulesSpans(fromSec: number, toSec: number, timeline: NetworkSett
 /** Whether an interval counts under some rules. */
 export function counts(interval: StoredInterval, rules: ValidityRules, judgement: Judgement): boolean {
   if (judgement.validity === 'all') return true;
-  return isValid(withWeather(interval, judgement), rules, isExcluded(interval, judgement));
+  if (!isValid(withWeather(interval, judgement), rules, isExcluded(interval, judgement))) return false;
+  return !judgement.wind || countsInWind(judgement.wind, windOf(interval, judgement));
+}
+
+/** Wind of an interval: speed by the station's own sensor before its mast's, direction by the mast. */
+export function windOf(
+  { startSec, durationSec, windSpeedMs }: StoredInterval,
+  { weather }: Judgement,
+): KnownWind {
+  return {
+    speedMs: windSpeedMs ?? weather?.during(startSec, durationSec)?.windSpeedMs ?? null,
+    directionDeg: weather?.directionDuring(startSec, durationSec) ?? null,
+  };
 }
 
 /** An interval with what its station's mast tells of it, where its own sensor tells no wind. */

@@ -4,6 +4,7 @@ import { selectStandingExclusions } from '#db/queries/exclusions';
 import { selectIntervals } from '#db/queries/intervals';
 import { type NetworkSettings } from '#db/queries/networks';
 import { type StationRow } from '#db/queries/stations';
+import { type WindRule } from '#lib/acoustics/windRule';
 import { PeriodAccumulator } from '#lib/acoustics/periodStatistics';
 import { weatherAtStation } from '../weather/stationWeather';
 import { accumulate, type Judgement, type Validity } from './accumulate';
@@ -17,6 +18,8 @@ export interface LevelSource {
   validity: Validity;
   /** Counted as if these were excluded, too: what figures would become. Nothing is stored of them. */
   alsoExcluded?: readonly Span[];
+  /** Only intervals with this wind count: for limits that go by it. Nothing is stored of them. */
+  wind?: WindRule | null;
   /** Counted as if this episode of a wrong clock were moved. Nothing is stored of it. */
   moved?: ClockEpisode;
 }
@@ -26,7 +29,7 @@ export const MOST_INTERVALS = 45_000;
 
 /** What decides which intervals of a period count: settings and standing exclusions. */
 export async function judgementOf(
-  { station, timeline, validity, alsoExcluded = [] }: LevelSource,
+  { station, timeline, validity, alsoExcluded = [], wind = null }: LevelSource,
   { fromSec, toSec }: Span,
   conn: Connection,
 ): Promise<Judgement> {
@@ -39,7 +42,7 @@ export async function judgementOf(
     selectStandingExclusions(station.id, reach.fromSec, reach.toSec, conn),
     weatherAtStation(station.id, reach, conn),
   ]);
-  return { validity, timeline, exclusions: mergedSpans([...exclusions, ...alsoExcluded]), weather };
+  return { validity, timeline, exclusions: mergedSpans([...exclusions, ...alsoExcluded]), weather, wind };
 }
 
 /** Sums of a period straight from its intervals. */

@@ -1,4 +1,5 @@
-import type { LimitMetric } from '#db/queries/limits';
+import type { LimitMetric, NewLimitVersion } from '#db/queries/limits';
+import { hasBackgroundHours } from '../limits/backgroundHours';
 
 /**
  * What a trial reads of a quarter-hour: A-weighted energies and maxima, the distribution of levels and C-weighted energies too, or
@@ -7,7 +8,7 @@ import type { LimitMetric } from '#db/queries/limits';
 export type TrialParts = 'energies' | 'distributions' | 'bands';
 
 /** What the windows of a quantity are added up from; null where the worker's way has to be gone, window by window. */
-export const PARTS_OF: Readonly<Record<LimitMetric, TrialParts | null>> = {
+const PARTS_OF: Readonly<Record<LimitMetric, TrialParts | null>> = {
   LAeq: 'energies',
   LAFmax: 'energies',
   LAE: 'energies',
@@ -20,4 +21,12 @@ export const PARTS_OF: Readonly<Record<LimitMetric, TrialParts | null>> = {
   LAeqLessUsual: null,
   tonalShare: null,
   eventCount: null,
+  eventLAE: null,
 };
+
+/** What a limit's windows are added up from: null, too, where it goes by the wind, or by a background of other hours. */
+export function partsOf(
+  rule: Pick<NewLimitVersion, 'metric' | 'windRule' | 'backgroundFromMin'>,
+): TrialParts | null {
+  return rule.windRule || hasBackgroundHours(rule) ? null : PARTS_OF[rule.metric];
+}

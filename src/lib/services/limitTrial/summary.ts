@@ -4,7 +4,7 @@ import type { Span } from '#lib/services/levels/spans';
 import { addDays, localDateAt, startOfDaySec, weekdayOf } from '#lib/time/zone';
 import type { CaughtWindow, StationTrial, TrialRule } from './tryRule';
 
-const NONE: TrialCounts = { windows: 0, compared: 0, uncovered: 0, empty: 0, caught: 0 };
+const NONE: TrialCounts = { windows: 0, compared: 0, uncovered: 0, empty: 0, dismissed: 0, caught: 0 };
 
 /** Counts of a trial: in all, by station, by week of the zone; and how many e-mails each recipient would have had. */
 export function summaryOf(
@@ -38,6 +38,7 @@ function added(a: TrialCounts, b: TrialCounts): TrialCounts {
     compared: a.compared + b.compared,
     uncovered: a.uncovered + b.uncovered,
     empty: a.empty + b.empty,
+    dismissed: a.dismissed + b.dismissed,
     caught: a.caught + b.caught,
   };
 }

@@ -46,7 +46,7 @@ export async function tryLimit(
   if (!read.isValid) return { kind: 'invalid', problems: read.problems };
   const today = query.basedOn === null ? null : await versionOfToday(networkId, query.basedOn, nowSec, conn);
   if (query.basedOn !== null && !today) return unknown('The network has no limit with this number.');
-  const problem = sizeProblem(query, read.version.stationIds?.length ?? stations.length);
+  const problem = sizeProblem(query, read.version, read.version.stationIds?.length ?? stations.length);
   if (problem) return { kind: 'invalid', problems: [problem] };
   const timeline = await listSettings(networkId, conn);
   const holidayDates = new Set((await listHolidays(networkId, conn)).map(({ date }) => date));

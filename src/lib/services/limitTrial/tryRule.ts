@@ -6,14 +6,14 @@ import type { TrialCounts } from '#lib/contracts/limitTrial';
 import type { LevelSource } from '#lib/services/levels/intervalSums';
 import type { Span } from '#lib/services/levels/spans';
 import { coversStation } from '#lib/services/limits/force';
-import { judgeMeasured, measure, minimumFor, type Measured } from '#lib/services/limits/measure';
+import { judgeMeasured, measure, minimumFor, type Judged, type Measured } from '#lib/services/limits/measure';
 import { WindowEvidence } from '#lib/services/limits/windowEvidence';
 import { GRAIN_SEC } from '#lib/services/limits/grains';
 import { runDateOf, runsOf, type WindowAbove } from '#lib/services/limits/runs';
 import { windowsOf, type LimitWindow } from '#lib/services/limits/windows';
 import { QUARTER_SEC } from '#lib/time/quarters';
 import { groupBy } from '../groupBy';
-import { PARTS_OF } from './parts';
+import { partsOf } from './parts';
 import { trialQuarters } from './trialQuarters';
 import { WindowSums } from './windowSums';
 
@@ -31,6 +31,10 @@ export type TrialRule = Pick<
   | 'bandToIndex'
   | 'eventTenths'
   | 'eventMinimumSec'
+  | 'eventGapSec'
+  | 'backgroundFromMin'
+  | 'backgroundToMin'
+  | 'windRule'
   | 'thresholdTenths'
   | 'weekdays'
   | 'fromMin'
@@ -97,7 +101,7 @@ async function measuredAll(
 ): Promise<Measured[]> {
   const [first, last] = [windows[0], windows.at(-1)];
   if (!first || !last) return [];
-  const parts = PARTS_OF[rule.metric];
+  const parts = partsOf(rule);
   if (parts === null) {
     const evidence = new WindowEvidence(source, conn);
     const measured: Measured[] = [];
@@ -151,14 +155,20 @@ function tryStation(
   measured: readonly Measured[],
   timeline: NetworkSettings[],
 ): StationTrial {
-  const counts: TrialCounts = { windows: windows.length, compared: 0, uncovered: 0, empty: 0, caught: 0 };
+  const counts: TrialCounts = {
+    windows: windows.length,
+    compared: 0,
+    uncovered: 0,
+    empty: 0,
+    dismissed: 0,
+    caught: 0,
+  };
   const above: WindowAbove[] = [];
   for (const [at, window] of windows.entries()) {
     const came = measured[at] ?? { levelDb: null, validSec: 0 };
-    const { levelDb, coverage, isCovered, isExceeded } = judgeMeasured(rule, window, came);
-    if (levelDb === null) counts.empty += 1;
-    else if (isCovered) counts.compared += 1;
-    else counts.uncovered += 1;
+    const judged = judgeMeasured(rule, window, came);
+    const { levelDb, coverage, isExceeded } = judged;
+    counts[placeOf(rule, judged)] += 1;
     if (!isExceeded || levelDb === null) continue;
     const { startSec, endSec } = window;
     above.push({ startSec, endSec, levelDb, coverage });
@@ -166,6 +176,14 @@ function tryStation(
   const caught = caughtOf(rule, above, timeline).map((one) => ({ ...one, stationId: station.id }));
   counts.caught = caught.length;
   return { station, counts, caught };
+}
+
+/** Where a window is counted. One without an event is compared like any other: it has none that is too loud. */
+function placeOf({ metric }: TrialRule, judged: Judged): 'compared' | 'uncovered' | 'empty' | 'dismissed' {
+  const isWithoutEvent = metric === 'eventLAE' && judged.validSec > 0;
+  if (judged.levelDb === null && !isWithoutEvent) return 'empty';
+  if (judged.isDismissed) return 'dismissed';
+  return judged.isCovered ? 'compared' : 'uncovered';
 }
 
 /** Windows above the limit as the judge would list them: rolling ones that follow one another on a date as one. */

@@ -2,16 +2,14 @@ import type { StoredInterval } from '#db/queries/intervals';
 import { pickSettings } from '#db/queries/networks';
 import { bandsOf, bandSlot } from '#lib/acoustics/bands';
 import { levelOfEnergyDb } from '#lib/acoustics/energy';
-import { findEvents, type EventRules } from '#lib/acoustics/events';
+import { findEvents, type EventRules, type SoundEvent } from '#lib/acoustics/events';
 import type { PeriodSums } from '#lib/acoustics/periodSums';
 import { surveyTones, thirdsTenthsOfDb, TONAL_AVERAGING_SEC } from '#lib/acoustics/tonality';
+import { EVENT_GAP_SEC } from '#lib/contracts/limitMetrics';
 import { quarterAt } from '#lib/time/quarters';
 import { accumulate, counts, type Judgement } from '../levels/accumulate';
 import type { Span } from '../levels/spans';
-import type { Measured } from './measure';
-
-/** Gaps up to this long, quieter or without valid data, do not end an event of a limit. */
-export const EVENT_GAP_SEC = 10;
+import type { Measured, MetricRule } from './measure';
 
 /**
  * Share of the valid time of a window, in per cent, in which the survey method (ISO 1996-2, Annex K) finds a tone: of minutes, or of
@@ -43,14 +41,26 @@ function thirdsDb({ bandEnergySec, bandValidSec }: PeriodSums): (number | null)[
   });
 }
 
-/** How many events a window has: of one that reaches over its edge what lies within. Null without any valid data. */
-export function eventCountOf(
+/** What makes an event of a limit. */
+export function eventRulesOf({
+  eventTenths,
+  eventMinimumSec,
+  eventGapSec,
+}: Pick<MetricRule, 'eventTenths' | 'eventMinimumSec' | 'eventGapSec'>): EventRules {
+  return {
+    thresholdTenths: eventTenths ?? NaN,
+    minimumSec: eventMinimumSec ?? 0,
+    bridgedGapSec: eventGapSec ?? EVENT_GAP_SEC,
+  };
+}
+
+/** The events of a window: of one that reaches over its edge what lies within. */
+export function eventsOf(
   intervals: readonly StoredInterval[],
   window: Span,
   judgement: Judgement,
-  rules: Omit<EventRules, 'bridgedGapSec'>,
-): Measured {
-  const { validSec } = accumulate(intervals, window, judgement, { bandClasses: false }).sums;
+  rules: EventRules,
+): SoundEvent[] {
   const within = intervals.filter(({ startSec }) => window.fromSec <= startSec && startSec < window.toSec);
   const judged = within.map((interval) => ({
     ...interval,
@@ -61,6 +71,19 @@ export function eventCountOf(
       judgement,
     ),
   }));
-  const events = findEvents(judged, { ...rules, bridgedGapSec: EVENT_GAP_SEC });
-  return { levelDb: validSec === 0 ? null : events.length, validSec };
+  return findEvents(judged, rules);
+}
+
+/** How many events a window has, or the greatest LAE of one. Null without any valid data, and of LAE without an event. */
+export function eventMeasureOf(
+  intervals: readonly StoredInterval[],
+  window: Span,
+  judgement: Judgement,
+  rule: MetricRule,
+): Measured {
+  const { validSec } = accumulate(intervals, window, judgement, { bandClasses: false }).sums;
+  const events = eventsOf(intervals, window, judgement, eventRulesOf(rule));
+  if (rule.metric === 'eventCount') return { levelDb: validSec === 0 ? null : events.length, validSec };
+  const exposures = events.map(({ figures }) => figures.laeDb()).filter((levelDb) => levelDb !== null);
+  return { levelDb: exposures.length === 0 ? null : Math.max(...exposures), validSec };
 }

@@ -2,6 +2,7 @@ import type { LimitVersion, NewLimitVersion } from '#db/queries/limits';
 import type { NetworkSettings } from '#db/queries/networks';
 import { bandsOf, bandSlot } from '#lib/acoustics/bands';
 import { levelOfEnergyDb } from '#lib/acoustics/energy';
+import { needsNoCoverage } from '#lib/acoustics/limitQuantities';
 import { laeDb } from '#lib/acoustics/exposure';
 import { thirdsOfOctave } from '#lib/acoustics/octaves';
 import type { PeriodSums } from '#lib/acoustics/periodSums';
@@ -13,6 +14,8 @@ export interface Measured {
   levelDb: number | null;
   /** Seconds that the level stands on. */
   validSec: number;
+  /** The wind dismisses the window: whatever the level, it is not compared. */
+  isDismissed?: boolean;
 }
 
 /** The sums that some limit may be about. */
@@ -33,7 +36,17 @@ export type MeasurableSums = Pick<
 
 export type MetricRule = Pick<
   NewLimitVersion,
-  'metric' | 'bandFraction' | 'bandIndex' | 'percent' | 'bandToIndex' | 'eventTenths' | 'eventMinimumSec'
+  | 'metric'
+  | 'bandFraction'
+  | 'bandIndex'
+  | 'percent'
+  | 'bandToIndex'
+  | 'eventTenths'
+  | 'eventMinimumSec'
+  | 'eventGapSec'
+  | 'backgroundFromMin'
+  | 'backgroundToMin'
+  | 'windRule'
 >;
 
 /**
@@ -53,7 +66,7 @@ export function measure(rule: MetricRule, sums: MeasurableSums): Measured {
       return { levelDb: sums.aClasses.exceedanceLevelDb(rule.percent ?? NaN, sums.sampleSec), validSec };
     case 'LAeqLessLA90':
       return {
-        levelDb: difference(laeqDb(sums), sums.aClasses.exceedanceLevelDb(90, sums.sampleSec)),
+        levelDb: difference(laeqDb(sums), backgroundDb(rule, sums)),
         validSec,
       };
     case 'LCeqLessLAeq': {
@@ -71,6 +84,11 @@ export function measure(rule: MetricRule, sums: MeasurableSums): Measured {
 /** How much one level is above another, dB; null where one is missing. */
 export function difference(levelDb: number | null, fromDb: number | null): number | null {
   return levelDb === null || fromDb === null ? null : levelDb - fromDb;
+}
+
+/** The level that the background of a limit is: LA90, or LA95. */
+export function backgroundDb({ percent }: MetricRule, sums: MeasurableSums): number | null {
+  return sums.aClasses.exceedanceLevelDb(percent ?? 90, sums.sampleSec);
 }
 
 function laeqDb({ aEnergySec, validSec }: MeasurableSums): number | null {
@@ -114,6 +132,7 @@ export interface Judged extends Measured {
   coverage: number;
   /** Whether it has the coverage that it takes to be compared. */
   isCovered: boolean;
+  isDismissed: boolean;
   isExceeded: boolean;
 }
 
@@ -127,12 +146,12 @@ interface JudgedLength {
 export function judgeMeasured(
   version: Pick<LimitVersion, 'thresholdTenths'>,
   { lengthSec, minimumCoverage }: JudgedLength,
-  { levelDb, validSec }: Measured,
+  { levelDb, validSec, isDismissed = false }: Measured,
 ): Judged {
   const coverage = validSec / lengthSec;
   const isCovered = coverage >= (minimumCoverage ?? 0) - 1e-9;
-  const isExceeded = isCovered && isAbove(version, levelDb);
-  return { levelDb, validSec, coverage, isCovered, isExceeded };
+  const isExceeded = isCovered && !isDismissed && isAbove(version, levelDb);
+  return { levelDb, validSec, coverage, isCovered, isDismissed, isExceeded };
 }
 
 /**
@@ -154,7 +173,5 @@ export function minimumFor(
   { metric, minimumCoverage }: Pick<LimitVersion, 'metric' | 'minimumCoverage'>,
   settings: Pick<NetworkSettings, 'minimumCoverage'>,
 ): number | null {
-  return metric === 'LAFmax' || metric === 'eventCount'
-    ? null
-    : (minimumCoverage ?? settings.minimumCoverage);
+  return needsNoCoverage(metric) ? null : (minimumCoverage ?? settings.minimumCoverage);
 }

@@ -1,5 +1,8 @@
 import type { NewLimitVersion } from '#db/queries/limits';
 import { bandByNominalHz, type Band } from '#lib/acoustics/bands';
+import { EVENT_METRICS } from '#lib/acoustics/limitQuantities';
+import type { WindRule } from '#lib/acoustics/windRule';
+import { EVENT_GAP_SEC } from '#lib/contracts/limitMetrics';
 import { MOST_DAYS_BACK, WEEKDAYS, type NewLimit } from '#lib/contracts/limits';
 import { whereOf, type LimitPlaces } from './where';
 
@@ -43,16 +46,35 @@ export function readRule(limit: NewLimit, places: LimitPlaces, nowSec: number): 
       percent: limit.percent,
       eventTenths: limit.eventThreshold === null ? null : Math.round(limit.eventThreshold * 10),
       eventMinimumSec: limit.eventSeconds,
+      eventGapSec: EVENT_METRICS.includes(limit.metric) ? (limit.eventGap ?? EVENT_GAP_SEC) : null,
+      backgroundFromMin: limit.backgroundFrom,
+      backgroundToMin: limit.backgroundTo,
       thresholdTenths: Math.round(limit.threshold * 10),
       weekdays: limit.weekdays.reduce((bits, day) => bits | (1 << WEEKDAYS.indexOf(day)), 0),
       holidays: limit.holidays,
       fromMin: limit.from,
       toMin: limit.to,
       minimumCoverage: limit.minimumCoverage,
+      windRule: windRuleOf(limit),
       ...where,
       recipients: distinctAddresses(limit.recipients),
       reason: limit.reason,
     },
+  };
+}
+
+/** Null where no bound is given: what is unknown does not matter then. */
+function windRuleOf(limit: NewLimit): WindRule | null {
+  const { windMinimum, windMaximum, windFrom, windTo, windDismissAbove, windUnknown } = limit;
+  const bounds = [windMinimum, windMaximum, windFrom, windTo, windDismissAbove];
+  if (bounds.every((bound) => bound === null)) return null;
+  return {
+    minimumMs: windMinimum,
+    maximumMs: windMaximum,
+    fromDeg: windFrom,
+    toDeg: windTo,
+    dismissAboveMs: windDismissAbove,
+    unknown: windUnknown,
   };
 }
 

@@ -1,8 +1,12 @@
 import type { LimitRecord } from '#db/queries/limits';
 import { bandAt, type BandFraction } from '#lib/acoustics/bands';
+import { EVENT_METRICS } from '#lib/acoustics/limitQuantities';
+import type { WindRule } from '#lib/acoustics/windRule';
 import { formatClockTime, formatInstantUtc } from '#lib/contracts/common';
+import { EVENT_GAP_SEC } from '#lib/contracts/limitMetrics';
 import { WEEKDAYS, type Limit, type LimitDetail, type LimitVersionView } from '#lib/contracts/limits';
 import { limitMetricText, limitUnit } from '#lib/format/limitMetric';
+import { windRuleText } from '#lib/format/windRule';
 import { replacedFromSec, versionAt } from './force';
 
 /** Who looks at limits. */
@@ -57,6 +61,22 @@ function nominalHz(fraction: BandFraction | null, index: number | null): number 
   return fraction === null || index === null ? null : bandAt(fraction, index).nominalHz;
 }
 
+function clockOf(minutes: number | null): string | null {
+  return minutes === null ? null : formatClockTime(minutes);
+}
+
+function windView(rule: WindRule | null) {
+  return {
+    windMinimum: rule?.minimumMs ?? null,
+    windMaximum: rule?.maximumMs ?? null,
+    windFrom: rule?.fromDeg ?? null,
+    windTo: rule?.toDeg ?? null,
+    windDismissAbove: rule?.dismissAboveMs ?? null,
+    windUnknown: rule?.unknown ?? ('left-out' as const),
+    windWords: rule && windRuleText(rule),
+  };
+}
+
 function versionView(
   version: LimitRecord,
   ofLimit: readonly LimitRecord[],
@@ -80,14 +100,18 @@ function versionView(
     percent: version.percent,
     eventThreshold: version.eventTenths === null ? null : version.eventTenths / 10,
     eventSeconds: version.eventMinimumSec,
+    eventGap: EVENT_METRICS.includes(version.metric) ? (version.eventGapSec ?? EVENT_GAP_SEC) : null,
+    backgroundFrom: clockOf(version.backgroundFromMin),
+    backgroundTo: clockOf(version.backgroundToMin),
     descriptor: limitMetricText(version),
     threshold: version.thresholdTenths / 10,
     unit: limitUnit(version.metric),
     weekdays: WEEKDAYS.filter((_, bit) => (version.weekdays & (1 << bit)) !== 0),
     holidays: version.holidays,
-    from: fromMin === null ? null : formatClockTime(fromMin),
-    to: toMin === null ? null : formatClockTime(toMin),
+    from: clockOf(fromMin),
+    to: clockOf(toMin),
     minimumCoverage: version.minimumCoverage,
+    ...windView(version.windRule),
     group: version.groupId,
     groupName: version.groupName,
     stations: stationIds && stationIds.map((id) => codes.get(id) ?? String(id)).sort(),

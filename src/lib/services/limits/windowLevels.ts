@@ -1,5 +1,6 @@
 import type { Connection } from '#db/queries/connection';
 import { PeriodAccumulator } from '#lib/acoustics/periodStatistics';
+import { mergeWind, noWind, type WindowWind } from '#lib/acoustics/windRule';
 import type { PeriodSums } from '#lib/acoustics/periodSums';
 import { QUARTER_SEC } from '#lib/time/quarters';
 import { currentQuarters } from '../levels/currentQuarters';
@@ -13,6 +14,7 @@ const READ_AHEAD_SEC = 2 * 86_400;
 interface Part {
   startSec: number;
   sums: PeriodSums;
+  wind?: WindowWind | undefined;
 }
 
 interface Read extends Span {
@@ -23,7 +25,7 @@ const NOTHING_READ: Read = { fromSec: 0, toSec: 0, parts: [] };
 
 /**
  * Sums of a station's windows, asked for in order of time: parts are read two days at once, each about once. Windows of whole
- * quarter-hours are made of these, others of fives of minutes from the intervals.
+ * quarter-hours are made of these, others, and those of a source that goes by the wind, of fives of minutes from the intervals.
  */
 export class WindowLevels {
   #quarters = NOTHING_READ;
@@ -44,9 +46,20 @@ export class WindowLevels {
     return levels;
   }
 
+  /** Wind of all that was measured in a window, of a source that goes by the wind. */
+  async windOf(window: Span): Promise<WindowWind> {
+    const wind = noWind();
+    for (const part of await this.partsOf(window)) {
+      if (part.startSec >= window.toSec) break;
+      if (part.startSec >= window.fromSec && part.wind) mergeWind(wind, part.wind);
+    }
+    return wind;
+  }
+
   private async partsOf(window: Span): Promise<Part[]> {
     const span = { fromSec: window.fromSec, toSec: Math.max(window.toSec, window.fromSec + READ_AHEAD_SEC) };
-    const isOfQuarters = window.fromSec % QUARTER_SEC === 0 && window.toSec % QUARTER_SEC === 0;
+    const isOfQuarters =
+      !this.source.wind && window.fromSec % QUARTER_SEC === 0 && window.toSec % QUARTER_SEC === 0;
     if (isOfQuarters) {
       if (!isWithin(window, this.#quarters)) {
         const parts = await currentQuarters(this.source, span, { bands: true }, this.conn);

@@ -1,7 +1,7 @@
 import { type Connection } from '#db/queries/connection';
 import { selectAssignmentsOf, type MastAssignment } from '#db/queries/mastAssignments';
 import { selectWeather } from '#db/queries/weatherRecords';
-import { weatherDuring, type WeatherRecord } from '#lib/acoustics/mastWeather';
+import { directionDuring, weatherDuring, type WeatherRecord } from '#lib/acoustics/mastWeather';
 import { type MastWeather } from '#lib/acoustics/validity';
 
 /** A mast for the time that it is assigned to a station, with its records. */
@@ -17,11 +17,24 @@ export class StationWeather {
 
   /** Weather of an interval by the mast assigned where it begins; null: unknown. */
   during(startSec: number, durationSec: number): MastWeather | null {
-    for (const { assignment, records } of this.masts) {
-      if (startSec < assignment.fromSec || startSec >= (assignment.toSec ?? Infinity)) continue;
-      return weatherDuring(records, startSec, startSec + durationSec, assignment.maximumAgeSec);
-    }
-    return null;
+    const mast = this.mastAt(startSec);
+    if (!mast) return null;
+    const { assignment, records } = mast;
+    return weatherDuring(records, startSec, startSec + durationSec, assignment.maximumAgeSec);
+  }
+
+  /** Where the wind of an interval comes from by that mast, degrees; null: unknown. */
+  directionDuring(startSec: number, durationSec: number): number | null {
+    const mast = this.mastAt(startSec);
+    if (!mast) return null;
+    const { assignment, records } = mast;
+    return directionDuring(records, startSec, startSec + durationSec, assignment.maximumAgeSec);
+  }
+
+  private mastAt(sec: number): AssignedMast | undefined {
+    return this.masts.find(
+      ({ assignment }) => assignment.fromSec <= sec && sec < (assignment.toSec ?? Infinity),
+    );
   }
 }
 

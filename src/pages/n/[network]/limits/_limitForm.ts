@@ -1,4 +1,5 @@
 import { bandLabel, type Band, type BandFraction } from '#lib/acoustics/bands';
+import { LIMIT_METRICS, needsNoCoverage } from '#lib/acoustics/limitQuantities';
 import { formatInstantUtc, parseInstant } from '#lib/contracts/common';
 import { WEEKDAYS, type Limit } from '#lib/contracts/limits';
 import { typedNumber, type FormValues } from '#lib/http/forms';
@@ -24,10 +25,8 @@ export function limitOfForm({ text, all }: LimitValues, zone: string) {
     holidays: text['holidays'] || 'as-weekday',
     from: text['from'] || null,
     to: text['to'] || null,
-    minimumCoverage:
-      text['metric'] === 'LAFmax' || text['metric'] === 'eventCount'
-        ? null
-        : fractionOf(text['minimumCoverage']),
+    minimumCoverage: hasCoverage(text['metric']) ? fractionOf(text['minimumCoverage']) : null,
+    ...windOf(text),
     stations: text['scope'] === 'chosen' ? all('stations') : null,
     group: text['scope'] === 'group' ? Number(text['group']) : null,
     recipients: (text['recipients'] ?? '').split(/[\s,;]+/).filter((address) => address !== ''),
@@ -55,14 +54,21 @@ export function limitValues(limit: Limit, zone: string): LimitValues {
       name: limit.name,
       metric: limit.metric,
       window: limit.window,
-      windowMinutes: limit.windowMinutes === null ? '' : String(limit.windowMinutes),
-      stepMinutes: limit.stepMinutes === null ? '' : String(limit.stepMinutes),
+      windowMinutes: numberText(limit.windowMinutes),
+      stepMinutes: numberText(limit.stepMinutes),
       holidays: limit.holidays,
       band: bandFraction === null || bandHz === null ? '' : bandValue(bandFraction, bandHz),
       bandTo: bandFraction === null || limit.bandToHz === null ? '' : bandValue(bandFraction, limit.bandToHz),
-      percent: limit.percent === null ? '10' : String(limit.percent),
-      eventThreshold: limit.eventThreshold === null ? '' : String(limit.eventThreshold),
-      eventSeconds: limit.eventSeconds === null ? '' : String(limit.eventSeconds),
+      percent: limit.metric === 'LAN' ? numberText(limit.percent) : '10',
+      eventThreshold: numberText(limit.eventThreshold),
+      eventSeconds: numberText(limit.eventSeconds),
+      eventGap: numberText(limit.eventGap),
+      backgroundPercent: limit.metric === 'LAeqLessLA90' ? String(limit.percent ?? 90) : '90',
+      backgroundFrom: limit.backgroundFrom ?? '',
+      // A time control has no 24:00.
+      backgroundTo: limit.backgroundTo?.replace('24:00', '00:00') ?? '',
+      ...Object.fromEntries(WIND_NUMBERS.map((name) => [name, numberText(limit[name])])),
+      windUnknown: limit.windUnknown,
       threshold: String(limit.threshold),
       from: isAllDay ? '' : (limit.from ?? ''),
       // A time control has no 24:00; for windows that begin before it, 00:00 is the same.
@@ -98,14 +104,38 @@ function parametersOf(text: LimitValues['text']) {
       return { ...bandOf(text['band'] ?? ''), bandToHz: bandOf(text['bandTo'] ?? '').bandHz };
     case 'LAN':
       return { percent: typedNumber(text['percent']) ?? null };
+    case 'LAeqLessLA90':
+      return {
+        percent: typedNumber(text['backgroundPercent']) ?? null,
+        backgroundFrom: text['backgroundFrom'] || null,
+        backgroundTo: text['backgroundTo'] || null,
+      };
     case 'eventCount':
+    case 'eventLAE':
       return {
         eventThreshold: typedNumber(text['eventThreshold']) ?? null,
         eventSeconds: typedNumber(text['eventSeconds']) ?? null,
+        eventGap: typedNumber(text['eventGap']) ?? null,
       };
     default:
       return {};
   }
+}
+
+function hasCoverage(metric: string | undefined): boolean {
+  return !LIMIT_METRICS.some((one) => one === metric && needsNoCoverage(one));
+}
+
+/** Fields of the wind that are numbers, named alike in the form and in the interface. */
+const WIND_NUMBERS = ['windMinimum', 'windMaximum', 'windFrom', 'windTo', 'windDismissAbove'] as const;
+
+function windOf(text: LimitValues['text']) {
+  const numbers = WIND_NUMBERS.map((name) => [name, typedNumber(text[name]) ?? null] as const);
+  return { ...Object.fromEntries(numbers), windUnknown: text['windUnknown'] || 'left-out' };
+}
+
+function numberText(value: number | null): string {
+  return value === null ? '' : String(value);
 }
 
 function hasSteps(window: string | undefined): boolean {
