@@ -2,7 +2,8 @@ import { parseArgs } from 'node:util';
 import type { NewInterval } from '#db/queries/intervals';
 import { readsBesideIngest } from './support/readsBesideIngest';
 import { compare, digits, median, percentile, printTable } from './support/measure';
-import { makeMonitors, postOf, sendAll, sendAtPace } from './support/monitors';
+import { makeMonitors, postOf, sendAll, sendAtPace, type Post } from './support/monitors';
+import { ProcessorTimes, SpentTime } from './support/processorTime';
 import { insertStatement, RawInsert } from './support/rawInsert';
 import { withOwnSchema } from './support/schema';
 import { invent, makeNetwork } from './support/station';
@@ -49,31 +50,48 @@ async function printRatios(web: Web, raw: RawInsert, networkId: number): Promise
     const statements = batches.map((turn) =>
       rawStations.map(({ stationId }) => turn.map((batch) => insertStatement(stationId, batch))),
     );
-    let cpuMs = 0;
+    const processor = await ProcessorTimes.of(web);
+    const [cpu, cpuOfD] = [new SpentTime(), new SpentTime()];
     const { ms, againstMs } = await compare(
       TURNS,
       async (turn) => {
-        const beforeMs = web.cpuMs;
-        await sendAll(web.origin, monitors, Array(SENDERS).fill(bodies[turn + 1]));
+        const posts = Array<Post[]>(SENDERS).fill(bodies[turn + 1] ?? []);
+        const spent = await processor.during(() => sendAll(web.origin, monitors, posts));
         // The first, which warms up, does not count.
-        if (turn >= 0) cpuMs += web.cpuMs - beforeMs;
+        if (turn >= 0) cpu.add(spent);
       },
-      (turn) => raw.run(statements[turn + 1] ?? []),
+      async (turn) => {
+        const spent = await processor.during(() => raw.run(statements[turn + 1] ?? []));
+        if (turn >= 0) cpuOfD.add(spent);
+      },
     );
-    const count = SENDERS * posts * perPost * 1000;
+    const postCount = SENDERS * posts;
     const ratios = ms.map((time, at) => (againstMs[at] ?? NaN) / time);
+    const aPost = (cpuMs: number) => digits(cpuMs / (TURNS * postCount));
     rows.push([
       digits(perPost),
       digits(median(againstMs) / median(ms)),
       `${digits(Math.min(...ratios))}–${digits(Math.max(...ratios))}`,
       target,
-      digits(count / median(ms)),
-      digits(count / median(againstMs)),
-      digits(cpuMs / (TURNS * SENDERS * posts)),
+      digits((postCount * perPost * 1000) / median(ms)),
+      digits((postCount * perPost * 1000) / median(againstMs)),
+      [cpu.web, cpu.database, cpu.own].map(aPost).join(' + '),
+      [cpuOfD.database, cpuOfD.own].map(aPost).join(' + '),
+      digits((cpuOfD.database + cpuOfD.own) / (cpu.web + cpu.database + cpu.own)),
     ]);
   }
   printTable(
-    ['intervals a post', '÷ D', 'over turns', 'target', 'acknowledged/s', 'D, rows/s', 'web CPU ms a post'],
+    [
+      'intervals a post',
+      '÷ D',
+      'over turns',
+      'target',
+      'acknowledged/s',
+      'D, rows/s',
+      'processor ms a post: web + database + senders',
+      'D: database + its senders',
+      'D ÷ all of a post',
+    ],
     rows,
   );
 }

@@ -1,9 +1,10 @@
 import { spawn, type ChildProcess } from 'node:child_process';
-import { existsSync, readFileSync } from 'node:fs';
+import { existsSync } from 'node:fs';
 import { once } from 'node:events';
 import { createServer, type AddressInfo } from 'node:net';
 import { setTimeout as sleep } from 'node:timers/promises';
 import { residentMib } from './memory';
+import { processorMs } from './processorTime';
 
 const START_MS = 30_000;
 
@@ -30,10 +31,7 @@ export class Web {
 
   /** Processor time that all its threads have had so far, in milliseconds. */
   get cpuMs(): number {
-    const cells = readFileSync(`/proc/${this.process.pid}/stat`, 'utf8')
-      .replace(/^.*\) /, '')
-      .split(' ');
-    return (Number(cells[11]) + Number(cells[12])) * 10;
+    return processorMs(this.process.pid ?? NaN);
   }
 
   /** Its highest resident memory so far, in MiB. */
