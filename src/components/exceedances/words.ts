@@ -1,11 +1,12 @@
 import { parseInstant } from '#lib/contracts/common';
-import type { Conditions } from '#lib/contracts/exceedanceDetail';
+import type { Conditions, LimitWind } from '#lib/contracts/exceedanceDetail';
 import type { Acknowledgement, Cause, Exceedance, ExceedanceDetail } from '#lib/contracts/exceedances';
 import type { LimitVersionView } from '#lib/contracts/limits';
 import { formatDuration } from '#lib/format/durations';
 import { formatCoverage } from '#lib/format/levels';
 import { limitValueText } from '#lib/format/limitMetric';
 import { formatInstantShort, formatPeriod } from '#lib/format/times';
+import { formatSpeed } from '#lib/format/wind';
 import { datesWords } from '../limits/words';
 
 export const CAUSE_WORDS: Readonly<Record<Cause, string>> = {
@@ -101,6 +102,19 @@ export function flagsWords({ flags }: Conditions): string | null {
     ({ flag, seconds }) => `${FLAG_WORDS[flag] ?? flag} for ${formatDuration(seconds)}`,
   );
   return words.length === 0 ? null : words.join(', ');
+}
+
+/** "mean 4.3 m/s; 30 min within, 15 min outside, 15 min unknown" of what was measured. */
+export function limitWindWords(wind: LimitWind): string {
+  const { meanSpeed, secondsWithin, secondsOutside, secondsUnknown } = wind;
+  const parts = [
+    [secondsWithin, 'within'],
+    [secondsOutside, 'outside'],
+    [secondsUnknown, 'unknown'],
+  ] as const;
+  const told = parts.filter(([seconds]) => seconds > 0);
+  const mean = meanSpeed === null ? 'no speed known' : `mean ${formatSpeed(meanSpeed)}`;
+  return `${mean}; ${told.map(([seconds, place]) => `${formatDuration(seconds)} ${place}`).join(', ') || 'nothing measured'}`;
 }
 
 /** A distance between stations: "350 m", "1.2 km". */

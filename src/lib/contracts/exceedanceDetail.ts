@@ -59,6 +59,33 @@ const neighbourSchema = z.object({
 });
 export type Neighbour = z.output<typeof neighbourSchema>;
 
+/** Events that a window lists; all of them are counted. */
+export const MOST_LISTED_EVENTS = 1000;
+
+const eventSchema = z.object({
+  from: z.string(),
+  to: z.string(),
+  seconds: z.number().int().describe('From its first to its last interval above, bridged gaps included'),
+  LAE: level('Exposure, re 1 s'),
+  LAFmax: level('Highest LAFmax'),
+  LAeq: level('Over its valid time'),
+});
+const eventsSchema = z.object({
+  count: z.number().int(),
+  items: z.array(eventSchema).describe(`In order of time, at most ${MOST_LISTED_EVENTS}`),
+});
+export type WindowEvents = z.output<typeof eventsSchema>;
+
+const limitWindSchema = z.object({
+  meanSpeed: z.number().nullable().describe('Over all that was measured with a known wind, m/s'),
+  secondsMeasured: z.number().describe('Of all intervals, whether they count or not'),
+  secondsKnown: z.number().describe('Of these with a known wind speed'),
+  secondsWithin: z.number().describe('With a wind that the limit’s rule has count'),
+  secondsOutside: z.number(),
+  secondsUnknown: z.number().describe('With a speed or direction that the rule asks for and nobody tells'),
+});
+export type LimitWind = z.output<typeof limitWindSchema>;
+
 const mailSchema = z.object({
   createdAt: z.string(),
   state: z.enum(['waiting', 'sent', 'dead']),
@@ -111,6 +138,10 @@ export const exceedanceDetailPartSchema = z.object({
     .enum(['assessed', 'octave-bands', 'no-neighbours', 'averaged-too-short', 'no-data'])
     .describe('Whether the mean spectrum could be examined for tones'),
   conditions: conditionsSchema,
+  limitWind: limitWindSchema
+    .nullable()
+    .describe('The wind of the window by the limit’s own rule; null: it has none'),
+  events: eventsSchema.nullable().describe('Of a limit on events, as it has them; null: of another limit'),
   instruments: periodInstrumentsSchema,
   neighbours: z.array(neighbourSchema).describe('Nearest first'),
   mails: z.array(mailSchema),

@@ -150,6 +150,14 @@ registerRoute({
 });
 registerRoute({
   access: 'person',
+  method: 'get',
+  path: `${base}/{id}/events.csv`,
+  summary: 'The events of the window, of an exceedance of a limit on events; 404 for any other',
+  request: { params: z.object({ network, id }) },
+  responses: { 200: { description: 'The file', content: { 'text/csv': { schema: z.string() } } } },
+});
+registerRoute({
+  access: 'person',
   method: 'post',
   path: `${base}/{id}/acknowledgement`,
   summary: 'Acknowledge an exceedance, or change the acknowledgement (operator); the audit trail keeps both',

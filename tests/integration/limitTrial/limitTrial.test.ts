@@ -42,6 +42,8 @@ async function measured(stationId: number, offsetDb: number): Promise<void> {
         seconds: 60,
         LAeq,
         LAFmax: LAeq + 6 + 4 * Math.cos(minute),
+        // Never above the network's bound, and not always known.
+        ...(minute % 13 === 0 ? {} : { windSpeed: Math.round(250 + 240 * Math.sin(minute / 83)) / 100 }),
         levels: [LAeq - 2, LAeq - 5 + 3 * Math.sin(minute / 5), LAeq - 6, minute % 60 < 50 ? LAeq - 9 : null],
       });
     }
@@ -131,6 +133,18 @@ const LIMITS = [
   { metric: 'LAeqLessLA90', window: 'length', windowMinutes: 120, threshold: 9 },
   { metric: 'bandGroupLeq', bandFraction: 3, bandHz: 80, bandToHz: 125, window: '1h', threshold: 65 },
   { metric: 'Lden', window: 'den', threshold: 60 },
+  { metric: 'LAeq', window: '1h', threshold: 61, windMaximum: 3, minimumCoverage: 0.3 },
+  { metric: 'LAeq', window: '1h', stepMinutes: 15, threshold: 61, windMinimum: 2, minimumCoverage: 0.3 },
+  { metric: 'LAeq', window: '15min', threshold: 66, windDismissAbove: 3, windUnknown: 'counts' },
+  {
+    metric: 'LAeqLessLA90',
+    window: '1h',
+    threshold: 12,
+    percent: 95,
+    backgroundFrom: '23:00',
+    backgroundTo: '05:00',
+  },
+  { metric: 'eventLAE', window: '1h', eventThreshold: 65, eventSeconds: 60, eventGap: 60, threshold: 92 },
   {
     metric: 'LAeq',
     window: '1h',

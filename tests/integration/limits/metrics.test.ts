@@ -85,11 +85,35 @@ test.each<[name: string, rule: Partial<MetricRule>, expected: number]>([
   ['above the usual', { metric: 'LAeqLessUsual' }, 4],
   ['tonal share', { metric: 'tonalShare' }, 20],
   ['events', { metric: 'eventCount', eventTenths: 600, eventMinimumSec: 120 }, 2],
+  // Two stretches of six minutes at 70 dB; where gaps of 24 minutes end none, one with what lies between.
+  [
+    'LAE of one event',
+    { metric: 'eventLAE', eventTenths: 600, eventMinimumSec: 120, eventGapSec: 10 },
+    70 + 10 * Math.log10(360),
+  ],
+  [
+    'LAE of one event over its gap',
+    { metric: 'eventLAE', eventTenths: 600, eventMinimumSec: 120, eventGapSec: 1440 },
+    10 * Math.log10(720 * 1e7 + 1440 * 1e5),
+  ],
+  ['LAeq − LA95', { metric: 'LAeqLessLA90', percent: 95 }, MEAN_DB - 50],
   ['events that are too short', { metric: 'eventCount', eventTenths: 600, eventMinimumSec: 361 }, 0],
 ])('%s of an hour', async (_, rule, expected) => {
   const { levelDb, validSec } = await measured(rule);
   expect(levelDb).toBeCloseTo(expected, 6);
   expect(validSec).toBe(3600);
+});
+
+test('a background of hours of its own is that of the last ones before the window', async () => {
+  const hours = {
+    metric: 'LAeqLessLA90',
+    backgroundFromMin: 23 * 60,
+    backgroundToMin: 23 * 60 + 30,
+  } as const;
+  const next = { fromSec: HOUR.fromSec + 86_400, toSec: HOUR.toSec + 86_400 };
+  expect((await measured(hours, next)).levelDb).toBeCloseTo(MEAN_DB - 50, 6);
+  // The evening before has no data: not known, not 0.
+  expect(await measured(hours)).toEqual({ levelDb: null, validSec: 3600 });
 });
 
 test('Lden of a date stands on its least covered period', async () => {
@@ -112,6 +136,11 @@ test('what does not go together is refused by its field', async () => {
     ['window', { metric: 'Lden' }],
     ['window', { window: 'den' }],
     ['eventSeconds', { metric: 'eventCount', eventThreshold: 60 }],
+    ['eventGap', { eventGap: 5 }],
+    ['backgroundTo', { metric: 'LAeqLessLA90', backgroundFrom: '23:00' }],
+    ['backgroundFrom', { metric: 'LAeqLessLA90', backgroundFrom: '23:01', backgroundTo: '05:00' }],
+    ['backgroundFrom', { backgroundFrom: '23:00', backgroundTo: '05:00' }],
+    ['percent', { metric: 'LAeqLessLA90', percent: 50 }],
     ['threshold', { metric: 'eventCount', eventThreshold: 60, eventSeconds: 10, threshold: 5.5 }],
     ['threshold', { metric: 'tonalShare', threshold: 100 }],
     ['stepMinutes', { metric: 'tonalShare', window: '1h', stepMinutes: 15 }],

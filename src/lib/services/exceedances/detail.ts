@@ -1,6 +1,7 @@
 import { listExceedanceMails } from '#db/queries/exceedanceMails';
 import { listRevisions } from '#db/queries/exceedanceRevisions';
 import { findExceedance, type ExceedanceRow } from '#db/queries/exceedances';
+import { findLimit, type LimitVersion } from '#db/queries/limits';
 import { listSettings, pickSettings } from '#db/queries/networks';
 import { findStationById, type StationRow } from '#db/queries/stations';
 import { toTenths } from '#lib/acoustics/rounding';
@@ -13,6 +14,8 @@ import { statisticsOf } from '../levels/statistics';
 import { readLimit } from '../limits/list';
 import { windowStrip } from '../strip/windowStrip';
 import { windowConditions } from './conditions';
+import { eventsCsv, windowEvents } from './events';
+import { limitWindOf } from './limitWind';
 import { neighboursOf } from './neighbours';
 import { comparedSpectrum } from './spectrum';
 import { exceedanceView } from './view';
@@ -39,6 +42,17 @@ export async function readExceedance(id: number, reader: ExceedanceReader): Prom
   return { ...exceedanceView(row), ...limits, ...window, revisions, mails };
 }
 
+/** The events of an exceedance's window as CSV; null when the network has none of this number, or its limit is on no events. */
+export async function exceedanceEventsCsv(networkId: number, id: number): Promise<string | null> {
+  const row = await findExceedance(networkId, id);
+  if (!row) return null;
+  const station = await stationOf(row);
+  const window = { fromSec: row.startsAtSec, toSec: row.endsAtSec };
+  const version = await versionOf(row, networkId);
+  const events = await windowEvents(version, station, window, await listSettings(networkId));
+  return events && eventsCsv(row.stationCode, events);
+}
+
 /** The levels around an exceedance's window for a small drawing; null when the network has none of this number. */
 export async function stripOfExceedance(
   id: number,
@@ -56,6 +70,16 @@ async function stationOf({ id, stationId }: ExceedanceRow): Promise<StationRow> 
   return station;
 }
 
+/** The version that an exceedance is judged by, with all that it compares. */
+async function versionOf(
+  { id, limitId, limitVersionId }: ExceedanceRow,
+  networkId: number,
+): Promise<LimitVersion> {
+  const version = (await findLimit(networkId, limitId)).find((one) => one.id === limitVersionId);
+  if (!version) throw new Error(`Exceedance ${id} has no limit.`);
+  return version;
+}
+
 async function limitsOf({ id, limitId, limitVersion }: ExceedanceRow, reader: ExceedanceReader) {
   const detail = await readLimit(reader.networkId, limitId, reader.seesRecipients);
   const limitThen = detail?.versions.find(({ version }) => version === limitVersion);
@@ -70,11 +94,14 @@ async function windowOf(row: ExceedanceRow, station: StationRow, nowSec: number)
   const periodOfStation = await periodFigures({ station, timeline, nowSec, ...window });
   const statistics = statisticsOf(periodOfStation, { station });
   const fraction = periodOfStation.levels.sums.bandFraction ?? station.bandFraction;
-  const [spectrum, conditions, neighbours, instruments] = await Promise.all([
+  const version = await versionOf(row, station.networkId);
+  const [spectrum, conditions, neighbours, instruments, limitWind, events] = await Promise.all([
     comparedSpectrum(station, window, { statistics, fraction }, timeline),
     windowConditions(station, window, settings),
     neighboursOf(station, window, timeline, nowSec),
     madeBy(station, window),
+    limitWindOf(version, station, window, timeline),
+    windowEvents(version, station, window, timeline),
   ]);
   const { seconds, coverage, meetsMinimum, sampleSeconds, LAeq, LAFmax, LAN } = statistics;
   return {
@@ -91,6 +118,8 @@ async function windowOf(row: ExceedanceRow, station: StationRow, nowSec: number)
     },
     ...spectrum,
     conditions,
+    limitWind,
+    events,
     neighbours,
     instruments,
   };

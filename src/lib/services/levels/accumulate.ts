@@ -51,14 +51,14 @@ export function counts(interval: StoredInterval, rules: ValidityRules, judgement
   return !judgement.wind || countsInWind(judgement.wind, windOf(interval, judgement));
 }
 
-/** Wind of an interval: speed by the station's own sensor before its mast's, direction by the mast. */
+/** Wind of an interval, by the station's own sensor before its mast's. */
 export function windOf(
-  { startSec, durationSec, windSpeedMs }: StoredInterval,
+  { startSec, durationSec, windSpeedMs, windDirectionDeg }: StoredInterval,
   { weather }: Judgement,
 ): KnownWind {
   return {
     speedMs: windSpeedMs ?? weather?.during(startSec, durationSec)?.windSpeedMs ?? null,
-    directionDeg: weather?.directionDuring(startSec, durationSec) ?? null,
+    directionDeg: windDirectionDeg ?? weather?.directionDuring(startSec, durationSec) ?? null,
   };
 }
 
