@@ -1,7 +1,7 @@
 import { setImmediate as nextTurn } from 'node:timers/promises';
 import { type Connection } from '#db/queries/connection';
 import { deletePeriodsTouching, insertDayPeriods, type DayPeriod } from '#db/queries/dayPeriods';
-import { selectIntervals } from '#db/queries/intervals';
+import { selectMeasuredIntervals } from '#db/queries/measuredIntervals';
 import { type NetworkSettings } from '#db/queries/networks';
 import { deleteQuartersAt, insertQuarterHours } from '#db/queries/quarterHours';
 import { type StationRow } from '#db/queries/stations';
@@ -33,7 +33,7 @@ export async function recompute(
   await deletePeriodsTouching(station.id, replacedSpans(chunk, parts), conn);
   const read = (part: number) => {
     const span = parts[part]?.span;
-    return span && selectIntervals(station.id, span.fromSec, span.toSec, conn);
+    return span && selectMeasuredIntervals(station.id, span.fromSec, span.toSec, conn);
   };
   // The database reads the parts after this one and writes those before it while this process computes, so that neither waits.
   const reading = [heard(read(0)), heard(read(1))];

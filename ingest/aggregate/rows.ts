@@ -1,5 +1,5 @@
 import { type DayPeriod } from '#db/queries/dayPeriods';
-import { type StoredInterval } from '#db/queries/intervals';
+import { type MeasuredInterval } from '#db/queries/measuredIntervals';
 import { type QuarterHour } from '#db/queries/quarterHours';
 import { PeriodAccumulator } from '#lib/acoustics/periodStatistics';
 import {
@@ -19,7 +19,7 @@ export class PartRows {
 
   constructor(
     private readonly part: Part,
-    private readonly intervals: readonly StoredInterval[],
+    private readonly intervals: readonly MeasuredInterval[],
     private readonly judgement: Judgement,
   ) {}
 
@@ -65,7 +65,7 @@ function isWholeQuarters({ fromSec, toSec }: PeriodInstance): boolean {
 function periodOfQuarters(
   period: PeriodInstance,
   quarters: readonly QuarterHour[],
-  intervals: readonly StoredInterval[],
+  intervals: readonly MeasuredInterval[],
   judgement: Judgement,
 ): DayPeriod | null {
   if (quarters.length === 0) return null;
@@ -81,7 +81,7 @@ function periodOfQuarters(
 
 function periodOfIntervals(
   period: PeriodInstance,
-  intervals: readonly StoredInterval[],
+  intervals: readonly MeasuredInterval[],
   judgement: Judgement,
 ): DayPeriod | null {
   let flagBits = 0;

@@ -1,14 +1,9 @@
-import { ByteWriter, MOST_VARINT_BYTES, readVarint, type VarintReader } from './varint';
-import { MAX_SUM_CENTI_DB, MIN_LEVEL_CENTI_DB } from './levelRange';
+import { readClasses, writeClasses } from './classEncoding';
+import { ClassSpan, HIGHEST_TENTHS, LOWEST_TENTHS } from './classSpan';
 import { centiDbToTenths } from './rounding';
+import { ByteWriter } from './varint';
 
 export { MAX_LEVEL_CENTI_DB, MIN_LEVEL_CENTI_DB } from './levelRange';
-
-const LOWEST_TENTHS = MIN_LEVEL_CENTI_DB / 10;
-const HIGHEST_TENTHS = MAX_SUM_CENTI_DB / 10;
-const GROWTH_CLASSES = 32;
-/** Shared by all that count nothing yet: making an array costs more than what most rows do with it. */
-const NO_CLASSES = new Float64Array(0);
 
 /** Samples that an exceedance level needs, times min(N, 100 − N): 30 for L10, 300 for L1. Our own rule. */
 const SAMPLES_TIMES_PERCENT = 300;
@@ -18,8 +13,7 @@ const SAMPLES_TIMES_PERCENT = 300;
  * merges across periods without loss. Holds only the span of classes that occur.
  */
 export class LevelClassCounts {
-  #firstTenths = 0;
-  #secs = NO_CLASSES;
+  readonly #span = new ClassSpan();
   #totalSec = 0;
   /** Where the encoded bytes lie that stand for everything until somebody looks. */
   #unread: Uint8Array | null = null;
@@ -48,9 +42,10 @@ export class LevelClassCounts {
     }
     if (sec === 0) return;
     this.#read();
-    if (tenths < this.#firstTenths || tenths >= this.#firstTenths + this.#secs.length) this.#cover(tenths);
-    const at = tenths - this.#firstTenths;
-    this.#secs[at] = (this.#secs[at] ?? 0) + sec;
+    const span = this.#span;
+    span.cover(tenths, tenths);
+    const at = tenths - span.firstTenths;
+    span.secs[at] = (span.secs[at] ?? 0) + sec;
     this.#totalSec += sec;
   }
 
@@ -69,14 +64,9 @@ export class LevelClassCounts {
       if (level > highest) highest = level;
     }
     if (highest < lowest) return;
-    if (lowest < LOWEST_TENTHS || highest > HIGHEST_TENTHS) {
-      throw new RangeError(`${lowest} to ${highest} tenths of a dB leave the stored range of levels.`);
-    }
     this.#read();
-    this.#cover(lowest);
-    this.#cover(highest);
-    const own = this.#secs;
-    const first = this.#firstTenths;
+    this.#span.cover(lowest, highest);
+    const { secs: own, firstTenths: first } = this.#span;
     for (let i = 0; i < count; i += 1) {
       const at = (tenths[i] ?? NaN) - first;
       const sec = secs[i] ?? NaN;
@@ -93,11 +83,12 @@ export class LevelClassCounts {
       return;
     }
     if (other.#totalSec === 0) return;
-    this.#cover(other.#firstTenths);
-    this.#cover(other.#firstTenths + other.#secs.length - 1);
-    const shift = other.#firstTenths - this.#firstTenths;
-    for (let i = 0; i < other.#secs.length; i += 1) {
-      this.#secs[i + shift] = (this.#secs[i + shift] ?? 0) + (other.#secs[i] ?? 0);
+    const from = other.#span;
+    const into = this.#span;
+    into.cover(from.firstTenths, from.firstTenths + from.secs.length - 1);
+    const shift = from.firstTenths - into.firstTenths;
+    for (let i = 0; i < from.secs.length; i += 1) {
+      into.secs[i + shift] = (into.secs[i + shift] ?? 0) + (from.secs[i] ?? 0);
     }
     this.#totalSec += other.#totalSec;
   }
@@ -105,9 +96,10 @@ export class LevelClassCounts {
   /** The classes that occur with their seconds, as [tenths of a dB, seconds], ascending. */
   *entries(): Generator<[tenths: number, sec: number]> {
     this.#read();
-    for (let i = 0; i < this.#secs.length; i += 1) {
-      const sec = this.#secs[i] ?? 0;
-      if (sec > 0) yield [this.#firstTenths + i, sec];
+    const { secs, firstTenths } = this.#span;
+    for (let i = 0; i < secs.length; i += 1) {
+      const sec = secs[i] ?? 0;
+      if (sec > 0) yield [firstTenths + i, sec];
     }
   }
 
@@ -131,20 +123,18 @@ export class LevelClassCounts {
     const allowed = percent * this.#totalSec;
     let aboveSec = 0;
     let smallest: number | null = null;
-    for (let i = this.#secs.length - 1; i >= 0; i -= 1) {
-      const sec = this.#secs[i] ?? 0;
+    const { secs, firstTenths } = this.#span;
+    for (let i = secs.length - 1; i >= 0; i -= 1) {
+      const sec = secs[i] ?? 0;
       if (sec === 0) continue;
       if (aboveSec * 100 > allowed) break;
-      smallest = this.#firstTenths + i;
+      smallest = firstTenths + i;
       aboveSec += sec;
     }
     return smallest;
   }
 
-  /**
-   * Compact bytes for storage: number of classes, then per class the step from the class before (the first from −30.0 dB)
-   * and the seconds, all LEB128 varints. Equal counts give equal bytes.
-   */
+  /** Compact bytes for storage, as `writeClasses` defines them. Equal counts give equal bytes. */
   encode(): Uint8Array {
     const writer = new ByteWriter();
     this.encodeInto(writer);
@@ -154,19 +144,7 @@ export class LevelClassCounts {
   /** Appends what `encode` gives. */
   encodeInto(writer: ByteWriter): void {
     this.#read();
-    let classCount = 0;
-    for (let i = 0; i < this.#secs.length; i += 1) if ((this.#secs[i] ?? 0) > 0) classCount += 1;
-    writer.reserve(MOST_VARINT_BYTES * (1 + 2 * classCount));
-    writer.varint(classCount);
-    let previous = LOWEST_TENTHS;
-    // Not through `entries`: a month's rows hold half a million classes, and a generator takes most of the time.
-    for (let i = 0; i < this.#secs.length; i += 1) {
-      const sec = this.#secs[i] ?? 0;
-      if (sec === 0) continue;
-      writer.varint(this.#firstTenths + i - previous);
-      writer.varint(sec);
-      previous = this.#firstTenths + i;
-    }
+    writeClasses(writer, this.#span);
   }
 
   /** @throws RangeError for bytes that `encode` did not make. */
@@ -196,42 +174,6 @@ export class LevelClassCounts {
   }
 
   #addEncoded(bytes: Uint8Array, from: number, to: number): void {
-    const reader: VarintReader = { bytes, at: from };
-    const classCount = readVarint(reader);
-    let tenths = LOWEST_TENTHS;
-    let secs = this.#secs;
-    let first = this.#firstTenths;
-    for (let read = 0; read < classCount; read += 1) {
-      const step = readVarint(reader);
-      const sec = readVarint(reader);
-      tenths += step;
-      if (sec === 0 || (step === 0 && read > 0)) throw new RangeError('Level classes are out of order.');
-      if (tenths > HIGHEST_TENTHS)
-        throw new RangeError(`${tenths} tenths of a dB is outside the stored range of levels.`);
-      if (tenths < first || tenths >= first + secs.length) {
-        this.#cover(tenths);
-        secs = this.#secs;
-        first = this.#firstTenths;
-      }
-      secs[tenths - first] = (secs[tenths - first] ?? 0) + sec;
-      this.#totalSec += sec;
-    }
-    if (reader.at !== to) throw new RangeError('The last level class does not end where its bytes do.');
-  }
-
-  /** Makes the span of classes reach `tenths`, with some to spare on the side where it grows. */
-  #cover(tenths: number): void {
-    const first = this.#firstTenths;
-    const end = first + this.#secs.length;
-    if (first <= tenths && tenths < end) return;
-    const isEmpty = this.#secs.length === 0;
-    // Three times as long at least, because every new array costs more than a day's samples in it.
-    const growth = Math.max(GROWTH_CLASSES, 2 * this.#secs.length);
-    const from = isEmpty || tenths < first ? Math.max(LOWEST_TENTHS, tenths - growth) : first;
-    const to = isEmpty || tenths >= end ? Math.min(HIGHEST_TENTHS, tenths + growth) + 1 : end;
-    const grown = new Float64Array(to - from);
-    grown.set(this.#secs, isEmpty ? 0 : first - from);
-    this.#secs = grown;
-    this.#firstTenths = from;
+    this.#totalSec += readClasses(this.#span, bytes, from, to);
   }
 }

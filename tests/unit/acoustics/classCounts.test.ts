@@ -1,3 +1,4 @@
+import fc from 'fast-check';
 import { describe, expect, test } from 'vitest';
 import { LevelClassCounts } from '#lib/acoustics/classCounts';
 import { NO_LEVEL_CENTI_DB } from '#lib/acoustics/levelRange';
@@ -97,7 +98,51 @@ describe('class counts', () => {
     expect([...new LevelClassCounts().encode()]).toEqual([0]);
   });
 
+  test('encoded: a dense run where most classes occur, of known bytes', () => {
+    // Mark, unit 60 s, 70.0 dB = class 1000 above −30.0 dB (0xE8 0x07), 4 classes, 1 byte each: 1, 0, 2, 1 minutes.
+    const bytes = [0, 60, 0xe8, 0x07, 4, 1, 1, 0, 2, 1];
+    const counts = countsOf([700, 60], [702, 120], [703, 60]);
+    expect([...counts.encode()]).toEqual(bytes);
+    // Two bytes where one does not hold 300 units: 300 = 0x2C 0x01.
+    expect([...countsOf([700, 300], [701, 1]).encode()]).toEqual([
+      0, 1, 0xe8, 0x07, 2, 2, 0x2c, 0x01, 0x01, 0x00,
+    ]);
+    expect([...LevelClassCounts.decode(Uint8Array.from(bytes)).entries()]).toEqual([...counts.entries()]);
+  });
+
+  test('lists and dense runs tell the same, and merge alike', () => {
+    fc.assert(
+      fc.property(
+        fc.array(
+          fc.tuple(
+            fc.integer({ min: -300, max: 2048 }),
+            fc.oneof(fc.constant(60), fc.integer({ min: 0, max: 4e9 })),
+          ),
+        ),
+        fc.array(fc.tuple(fc.integer({ min: 400, max: 420 }), fc.integer({ min: 0, max: 300 })), {
+          maxLength: 40,
+        }),
+        (sparse, dense) => {
+          const [a, b] = [countsOf(...sparse), countsOf(...dense)];
+          const merged = countsOf(...sparse, ...dense);
+          const read = new LevelClassCounts();
+          read.merge(LevelClassCounts.encoded(a.encode()));
+          read.merge(LevelClassCounts.encoded(b.encode()));
+          expect([...read.entries()]).toEqual([...merged.entries()]);
+          expect(read.totalSec).toBe(merged.totalSec);
+          expect(read.encode()).toEqual(merged.encode());
+        },
+      ),
+    );
+  });
+
   test.each([
+    ['dense, cut short', [0, 60, 5, 3, 1, 1, 1]],
+    ['dense, trailing byte', [0, 60, 5, 1, 1, 1, 1]],
+    ['dense, no unit', [0, 0, 5, 1, 1, 1]],
+    ['dense, no classes', [0, 60, 5, 0, 1]],
+    ['dense, unknown width', [0, 60, 5, 1, 3, 1, 1, 1]],
+    ['dense, out of range', [0, 60, 0xff, 0x7f, 1, 1, 1]],
     ['cut short', [2, 0, 5]],
     ['empty', []],
     ['trailing byte', [0, 1]],

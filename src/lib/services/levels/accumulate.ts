@@ -1,5 +1,5 @@
 import { pickSettings, type NetworkSettings } from '#db/queries/networks';
-import { type StoredInterval } from '#db/queries/intervals';
+import { type MeasuredInterval } from '#db/queries/measuredIntervals';
 import { type BandInterval } from '#lib/acoustics/bandClassCounting';
 import { PeriodAccumulator, type AccumulatedInterval } from '#lib/acoustics/periodStatistics';
 import { countsInWind, type KnownWind, type WindRule } from '#lib/acoustics/windRule';
@@ -45,7 +45,7 @@ export function rulesSpans(fromSec: number, toSec: number, timeline: NetworkSett
 }
 
 /** Whether an interval counts under some rules. */
-export function counts(interval: StoredInterval, rules: ValidityRules, judgement: Judgement): boolean {
+export function counts(interval: MeasuredInterval, rules: ValidityRules, judgement: Judgement): boolean {
   if (judgement.validity === 'all') return true;
   if (!isValid(withWeather(interval, judgement), rules, isExcluded(interval, judgement))) return false;
   return !judgement.wind || countsInWind(judgement.wind, windOf(interval, judgement));
@@ -63,19 +63,19 @@ export function windOf(
 }
 
 /** An interval with what its station's mast tells of it, where its own sensor tells no wind. */
-export function withWeather(interval: StoredInterval, { weather }: Judgement): JudgedInterval {
+export function withWeather(interval: MeasuredInterval, { weather }: Judgement): JudgedInterval {
   if (!weather || interval.windSpeedMs !== null) return interval;
   const mast = weather.during(interval.startSec, interval.durationSec);
   return { flags: interval.flags, windSpeedMs: null, mast };
 }
 
 /** Whether a standing exclusion overlaps an interval. */
-export function isExcluded({ startSec, durationSec }: StoredInterval, { exclusions }: Judgement): boolean {
+export function isExcluded({ startSec, durationSec }: MeasuredInterval, { exclusions }: Judgement): boolean {
   return exclusions.length > 0 && overlapsAny(exclusions, startSec, startSec + durationSec);
 }
 
 /** Index of the first of some ascending, disjoint intervals that ends after an instant. */
-export function firstEndingAfter(intervals: readonly StoredInterval[], sec: number): number {
+export function firstEndingAfter(intervals: readonly MeasuredInterval[], sec: number): number {
   let low = 0;
   let high = intervals.length;
   while (low < high) {
@@ -92,7 +92,7 @@ export function firstEndingAfter(intervals: readonly StoredInterval[], sec: numb
  * interval that straddles an edge is clipped to the period by duration; its extremes count.
  */
 export function accumulate(
-  intervals: readonly StoredInterval[],
+  intervals: readonly MeasuredInterval[],
   period: Span,
   judgement: Judgement,
   options: { bandClasses: boolean },
@@ -106,7 +106,7 @@ export function accumulate(
 /** Counts the distributions of every band and octave of a period into sums that have all else of it. */
 export function countBandClasses(
   accumulator: PeriodAccumulator,
-  intervals: readonly StoredInterval[],
+  intervals: readonly MeasuredInterval[],
   period: Span,
   judgement: Judgement,
 ): void {
@@ -121,7 +121,7 @@ export function countBandClasses(
 
 /** Every interval of a period clipped to it, and whether it counts. The object is filled again for the next. */
 function eachClipped(
-  intervals: readonly StoredInterval[],
+  intervals: readonly MeasuredInterval[],
   { fromSec, toSec }: Span,
   judgement: Judgement,
   use: (interval: AccumulatedInterval, isCounted: boolean) => void,
@@ -139,7 +139,7 @@ function eachClipped(
 }
 
 /** One object is filled again for each interval: a month has tens of thousands, and they are summed at once. */
-function clip(into: AccumulatedInterval, interval: StoredInterval, durationSec: number): AccumulatedInterval {
+function clip(into: AccumulatedInterval, interval: MeasuredInterval, durationSec: number): AccumulatedInterval {
   into.durationSec = durationSec;
   into.sampleSec = interval.durationSec;
   into.laeqCentiDb = interval.laeqCentiDb;

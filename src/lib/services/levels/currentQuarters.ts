@@ -1,5 +1,5 @@
 import { type Connection } from '#db/queries/connection';
-import { selectIntervals } from '#db/queries/intervals';
+import { selectMeasuredIntervals } from '#db/queries/measuredIntervals';
 import { selectQuarterHours, type QuarterHour } from '#db/queries/quarterHours';
 import { QUARTER_SEC } from '#lib/time/quarters';
 import { dirtySpans } from './dirtySpans';
@@ -37,7 +37,7 @@ export async function quartersOfIntervals(
   for (let fromSec = span.fromSec; fromSec < span.toSec; fromSec += 96 * QUARTER_SEC) {
     const part = { fromSec, toSec: Math.min(fromSec + 96 * QUARTER_SEC, span.toSec) };
     const judgement = await judgementOf(source, part, conn);
-    const intervals = await selectIntervals(source.station.id, part.fromSec, part.toSec, conn);
+    const intervals = await selectMeasuredIntervals(source.station.id, part.fromSec, part.toSec, conn);
     for (let startSec = part.fromSec; startSec < part.toSec; startSec += QUARTER_SEC) {
       const quarter = quarterOf(intervals, startSec, judgement);
       if (quarter) found.push(quarter);

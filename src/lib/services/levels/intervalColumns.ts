@@ -1,4 +1,4 @@
-import { type StoredInterval } from '#db/queries/intervals';
+import { type MeasuredInterval } from '#db/queries/measuredIntervals';
 import { bandSlot } from '#lib/acoustics/bands';
 import { energyOfCentiDb, levelOfEnergyDb } from '#lib/acoustics/energy';
 import { NO_LEVEL_CENTI_DB } from '#lib/acoustics/levelRange';
@@ -9,15 +9,13 @@ import { overlapSec } from './quarterOf';
 import { isLate, reasonBitsOf } from './seen';
 import { type Span } from './spans';
 
-const NONE: readonly StoredInterval[] = [];
-
 /**
  * Fills the columns that begin in `part` from intervals (ascending, disjoint): energy means by duration of everything measured,
  * counted or not. A column that is one interval's alone takes its levels as they are.
  */
 export function fillFromIntervals(
   columns: Columns,
-  intervals: readonly StoredInterval[],
+  intervals: readonly MeasuredInterval[],
   part: Span,
   judgement: Judgement,
 ): void {
@@ -30,19 +28,26 @@ export function fillFromIntervals(
     const toSec = fromSec + plan.stepSec;
     let end = first;
     while ((intervals[end]?.startSec ?? Infinity) < toSec) end += 1;
-    const within = end === first ? NONE : intervals.slice(first, end);
-    for (const interval of within) noteInterval(columns, at, interval, { fromSec, toSec }, rules, judgement);
-    fillLevels(columns, at, within, { fromSec, toSec });
-    const last = within.at(-1);
+    const only = end === first + 1 ? intervals[first] : undefined;
+    if (only) {
+      noteInterval(columns, at, only, { fromSec, toSec }, rules, judgement);
+      takeLevels(columns, at, only);
+    } else if (end > first) {
+      const within = intervals.slice(first, end);
+      for (const interval of within)
+        noteInterval(columns, at, interval, { fromSec, toSec }, rules, judgement);
+      fillLevels(columns, at, within, { fromSec, toSec });
+    }
+    const last = intervals[end - 1];
     // The last one may reach into the next column.
-    first = last && last.startSec + last.durationSec > toSec ? end - 1 : end;
+    first = end > first && last && last.startSec + last.durationSec > toSec ? end - 1 : end;
   }
 }
 
 function noteInterval(
   columns: Columns,
   at: number,
-  interval: StoredInterval,
+  interval: MeasuredInterval,
   { fromSec, toSec }: Span,
   rules: readonly RulesSpan[],
   judgement: Judgement,
@@ -61,21 +66,34 @@ function noteInterval(
   }
 }
 
-function fillLevels(columns: Columns, at: number, within: readonly StoredInterval[], column: Span): void {
-  const [only] = within;
-  if (!only) return;
-  const { bands, placeOfSlot, levelsCentiDb, laeqCentiDb } = columns;
-  const offset = at * bands.length;
-  if (within.length === 1) {
-    laeqCentiDb[at] = only.laeqCentiDb;
-    if (only.bandFraction !== bands[0]?.fraction) return;
-    const { bandIndices, levelsCentiDb: ofBands } = only;
-    for (let i = 0; i < bandIndices.length; i += 1) {
-      const place = placeOfSlot[bandSlot(bandIndices[i] ?? NaN)] ?? -1;
-      if (place >= 0) levelsCentiDb[offset + place] = ofBands[i] ?? NO_LEVEL_CENTI_DB;
-    }
-    return;
+/** Places in the columns' bands of an interval's; −1 for those that are not shown. Intervals of one band set share it. */
+function placesOf(columns: Columns, { bandFraction, bandIndices }: MeasuredInterval): Int8Array | null {
+  if (bandFraction !== columns.bands[0]?.fraction) return null;
+  if (lastPlaces.indices !== bandIndices || lastPlaces.placeOfSlot !== columns.placeOfSlot) {
+    const places = bandIndices.map((index) => columns.placeOfSlot[bandSlot(index)] ?? -1);
+    lastPlaces = { indices: bandIndices, placeOfSlot: columns.placeOfSlot, places };
   }
+  return lastPlaces.places;
+}
+
+let lastPlaces = { indices: new Int8Array(0), placeOfSlot: new Int8Array(0), places: new Int8Array(0) };
+
+/** Levels of a column that is one interval's alone. */
+function takeLevels(columns: Columns, at: number, interval: MeasuredInterval): void {
+  const { levelsCentiDb } = columns;
+  const offset = at * columns.bands.length;
+  columns.laeqCentiDb[at] = interval.laeqCentiDb;
+  const places = placesOf(columns, interval);
+  if (!places) return;
+  for (let i = 0; i < places.length; i += 1) {
+    const place = places[i] ?? -1;
+    if (place >= 0) levelsCentiDb[offset + place] = interval.levelsCentiDb[i] ?? NO_LEVEL_CENTI_DB;
+  }
+}
+
+function fillLevels(columns: Columns, at: number, within: readonly MeasuredInterval[], column: Span): void {
+  const { bands, levelsCentiDb, laeqCentiDb } = columns;
+  const offset = at * bands.length;
   const energies = new Float64Array(bands.length + 1);
   const seconds = new Float64Array(bands.length + 1);
   const add = (place: number, centiDb: number, sec: number) => {
@@ -85,9 +103,10 @@ function fillLevels(columns: Columns, at: number, within: readonly StoredInterva
   for (const interval of within) {
     const sec = overlapSec(interval, column.fromSec, column.toSec);
     add(bands.length, interval.laeqCentiDb, sec);
-    if (interval.bandFraction !== bands[0]?.fraction) continue;
-    for (let i = 0; i < interval.bandIndices.length; i += 1) {
-      const place = placeOfSlot[bandSlot(interval.bandIndices[i] ?? NaN)] ?? -1;
+    const places = placesOf(columns, interval);
+    if (!places) continue;
+    for (let i = 0; i < places.length; i += 1) {
+      const place = places[i] ?? -1;
       const centiDb = interval.levelsCentiDb[i] ?? NO_LEVEL_CENTI_DB;
       if (place >= 0 && centiDb !== NO_LEVEL_CENTI_DB) add(place, centiDb, sec);
     }

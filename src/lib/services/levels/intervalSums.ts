@@ -1,7 +1,7 @@
 import { type ClockEpisode } from '#db/queries/clockShifts';
 import { type Connection } from '#db/queries/connection';
 import { selectStandingExclusions } from '#db/queries/exclusions';
-import { selectIntervals } from '#db/queries/intervals';
+import { selectMeasuredIntervals } from '#db/queries/measuredIntervals';
 import { type NetworkSettings } from '#db/queries/networks';
 import { type StationRow } from '#db/queries/stations';
 import { type WindRule } from '#lib/acoustics/windRule';
@@ -55,7 +55,7 @@ export async function sumIntervals(
   const whole = new PeriodAccumulator(options);
   const stepSec = MOST_INTERVALS * source.station.intervalSec;
   const partAt = (fromSec: number) => ({ fromSec, toSec: Math.min(fromSec + stepSec, period.toSec) });
-  const read = (part: Span) => selectIntervals(source.station.id, part.fromSec, part.toSec, conn);
+  const read = (part: Span) => selectMeasuredIntervals(source.station.id, part.fromSec, part.toSec, conn);
   const [judgement, first] = await Promise.all([
     judgementOf(source, period, conn),
     read(partAt(period.fromSec)),

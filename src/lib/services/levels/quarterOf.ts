@@ -1,4 +1,4 @@
-import { type StoredInterval } from '#db/queries/intervals';
+import { type MeasuredInterval } from '#db/queries/measuredIntervals';
 import { type QuarterHour } from '#db/queries/quarterHours';
 import { QUARTER_SEC } from '#lib/time/quarters';
 import { accumulate, counts, firstEndingAfter, rulesSpans, type Judgement } from './accumulate';
@@ -6,7 +6,7 @@ import { isLate, reasonBitsOf } from './seen';
 
 /** A quarter-hour wholly from intervals (ascending, disjoint; more than its own may be given); null when it has none. */
 export function quarterOf(
-  intervals: readonly StoredInterval[],
+  intervals: readonly MeasuredInterval[],
   startSec: number,
   judgement: Judgement,
 ): QuarterHour | null {
@@ -30,7 +30,7 @@ export function quarterOf(
 
 /** Seconds of an interval within `fromSec <= t < toSec`. */
 export function overlapSec(
-  { startSec, durationSec }: Pick<StoredInterval, 'startSec' | 'durationSec'>,
+  { startSec, durationSec }: Pick<MeasuredInterval, 'startSec' | 'durationSec'>,
   fromSec: number,
   toSec: number,
 ): number {

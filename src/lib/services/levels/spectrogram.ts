@@ -1,6 +1,6 @@
 import { setImmediate as nextTurn } from 'node:timers/promises';
 import { pool, type Connection } from '#db/queries/connection';
-import { selectIntervals } from '#db/queries/intervals';
+import { selectMeasuredIntervals } from '#db/queries/measuredIntervals';
 import { listSettings, pickSettings, type NetworkSettings } from '#db/queries/networks';
 import { type StationRow } from '#db/queries/stations';
 import { bandSlot, bandsOf, BAND_SLOTS } from '#lib/acoustics/bands';
@@ -69,7 +69,7 @@ async function readIntervals(source: LevelSource, columns: Columns, conn: Connec
   const parts = partsOf(columns, MOST_INTERVALS * station.intervalSec);
   const read = (at: number) => {
     const part = parts[at];
-    return part && selectIntervals(station.id, part.fromSec, part.toSec, conn);
+    return part && selectMeasuredIntervals(station.id, part.fromSec, part.toSec, conn);
   };
   // The database reads the next part while this process fills columns from the one before.
   let reading = read(0);

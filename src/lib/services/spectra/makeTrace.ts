@@ -1,5 +1,5 @@
 import { type Connection } from '#db/queries/connection';
-import { selectIntervals } from '#db/queries/intervals';
+import { selectMeasuredIntervals } from '#db/queries/measuredIntervals';
 import { type NetworkSettings } from '#db/queries/networks';
 import { type StationRow } from '#db/queries/stations';
 import { bandSlot } from '#lib/acoustics/bands';
@@ -18,7 +18,7 @@ export async function makeTrace(
 ): Promise<DayTrace | null> {
   const day = { fromSec: dayStartSec, toSec: dayStartSec + DAY_SEC };
   const judgement = await judgementOf({ station, timeline, validity: 'rules' }, day, conn);
-  const intervals = await selectIntervals(station.id, day.fromSec, day.toSec, conn);
+  const intervals = await selectMeasuredIntervals(station.id, day.fromSec, day.toSec, conn);
   const builder = new DayTraceBuilder();
   const slotsOf = new Map<Int8Array, Int8Array>();
   for (const span of rulesSpans(day.fromSec, day.toSec, timeline)) {
