@@ -6,10 +6,11 @@ import { LONGEST_INTERVAL_SEC } from './intervals';
 import { runPrepared } from './prepared';
 
 /** What levels and their validity are taken from: an interval without what only lists of intervals show. */
-export type MeasuredInterval = Omit<StoredInterval, 'windDirectionDeg' | 'temperatureC' | 'batteryV'>;
+export type MeasuredInterval = Omit<StoredInterval, 'temperatureC' | 'batteryV'>;
 
 const SELECT = `SELECT starts_at, duration_sec, laeq_centi_db, lafmax_centi_db, lafmin_centi_db, lceq_centi_db,
-    lcpeak_centi_db, band_set_id, band_levels_centi_db, flags, wind_speed_centi_ms, received_at
+    lcpeak_centi_db, band_set_id, band_levels_centi_db, flags, wind_speed_centi_ms, wind_direction_deg,
+    received_at
   FROM interval_levels
   WHERE station_id = ? AND starts_at > ? AND starts_at < ? AND starts_at + duration_sec > ? ORDER BY starts_at`;
 
@@ -25,6 +26,7 @@ type Cells = [
   levels: Buffer,
   flags: number,
   windSpeedCentiMs: number | null,
+  windDirectionDeg: number | null,
   receivedAtSec: number,
 ];
 
@@ -62,7 +64,8 @@ async function intervalsOf(rows: Cells[], conn: Connection): Promise<MeasuredInt
       levelsCentiDb: unpackLevels(row[8]),
       flags: row[9],
       windSpeedMs: row[10] === null ? null : row[10] / 100,
-      receivedAtSec: row[11],
+      windDirectionDeg: row[11],
+      receivedAtSec: row[12],
     });
   }
   return intervals;

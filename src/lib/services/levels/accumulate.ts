@@ -53,7 +53,7 @@ export function counts(interval: MeasuredInterval, rules: ValidityRules, judgeme
 
 /** Wind of an interval, by the station's own sensor before its mast's. */
 export function windOf(
-  { startSec, durationSec, windSpeedMs, windDirectionDeg }: StoredInterval,
+  { startSec, durationSec, windSpeedMs, windDirectionDeg }: MeasuredInterval,
   { weather }: Judgement,
 ): KnownWind {
   return {

@@ -66,6 +66,13 @@ function noteInterval(
   }
 }
 
+const NONE = new Int8Array(0);
+let lastPlaces: Record<'indices' | 'placeOfSlot' | 'places', Int8Array> = {
+  indices: NONE,
+  placeOfSlot: NONE,
+  places: NONE,
+};
+
 /** Places in the columns' bands of an interval's; −1 for those that are not shown. Intervals of one band set share it. */
 function placesOf(columns: Columns, { bandFraction, bandIndices }: MeasuredInterval): Int8Array | null {
   if (bandFraction !== columns.bands[0]?.fraction) return null;
@@ -75,8 +82,6 @@ function placesOf(columns: Columns, { bandFraction, bandIndices }: MeasuredInter
   }
   return lastPlaces.places;
 }
-
-let lastPlaces = { indices: new Int8Array(0), placeOfSlot: new Int8Array(0), places: new Int8Array(0) };
 
 /** Levels of a column that is one interval's alone. */
 function takeLevels(columns: Columns, at: number, interval: MeasuredInterval): void {
