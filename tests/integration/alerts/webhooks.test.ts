@@ -74,7 +74,7 @@ const found = () => {
 const add = async () => {
   const outcome = await addWebhook(actor(), url);
   if (outcome.kind !== 'done') throw new Error('The webhook was refused.');
-  return outcome.value;
+  return outcome.value.secret;
 };
 const sendAll = async (afterMs = 0, holder = 'one') => {
   const now = new Date(Date.now() + 1000 + afterMs);

@@ -4,6 +4,7 @@ import { inTransaction, type Connection } from '#db/queries/connection';
 import { insertDeliveries, listDeliveries, type DeliveryRow } from '#db/queries/webhookDeliveries';
 import {
   endWebhook,
+  findWebhook,
   insertWebhook,
   listWebhooks,
   lockWebhook,
@@ -35,8 +36,14 @@ export async function webhooksOf(
   return { webhooks, deliveries };
 }
 
-/** Adds a webhook and answers the secret that its receiver checks signatures with, told this once. */
-export function addWebhook(actor: Actor, url: string): Promise<Outcome<string>> {
+/** A webhook with the secret that its receiver checks signatures with. */
+export interface AddedWebhook {
+  webhook: WebhookRow;
+  secret: string;
+}
+
+/** Adds a webhook and answers it with its secret, told this once. */
+export function addWebhook(actor: Actor, url: string): Promise<Outcome<AddedWebhook>> {
   return inTransaction(async (transaction) => {
     const problem = url.length > 500 ? 'must have at most 500 characters' : targetProblem(url, mayLoopBack());
     if (problem) return invalid('url', problem);
@@ -52,7 +59,9 @@ export function addWebhook(actor: Actor, url: string): Promise<Outcome<string>> 
       transaction,
     );
     await note(actor, 'webhook.add', { id, url }, transaction);
-    return done(webhookSecret(salt));
+    const webhook = await findWebhook(id, transaction);
+    if (!webhook) throw new Error(`There is no webhook ${id}.`);
+    return done({ webhook, secret: webhookSecret(salt) });
   });
 }
 

@@ -23,7 +23,7 @@ export async function actOnWebhooks(
   const id = idOf(text['webhook']);
   switch (text['act']) {
     case 'add':
-      return { done: 'added', secret: valueOf(await addWebhook(actor, text['url'] ?? '')) };
+      return { done: 'added', secret: valueOf(await addWebhook(actor, text['url'] ?? '')).secret };
     case 'end':
       valueOf(await removeWebhook(actor, id));
       return { done: 'ended', secret: null };
