@@ -7,6 +7,8 @@ import { makeTraces } from '#ingest/traces/makeTraces';
 import { BAND_SLOTS, bandByNominalHz, bandSlot } from '#lib/acoustics/bands';
 import { spectralLikeness } from '#lib/acoustics/likeness';
 import { type SpectrumSearchAnswer } from '#lib/contracts/spectrumSearch';
+import { findStationById } from '#db/queries/stations';
+import { sameSpectrum } from '#lib/services/complaints/sameSpectrum';
 import { addExclusion } from '#lib/services/exclusions/add';
 import { invent, seededNoise, storeMeasured } from '../levels/support/measured';
 import { callApi } from '../support/callApi';
@@ -186,4 +188,32 @@ test('as a file and as events with progress; wrong input is told', async () => {
   ] as const) {
     expect((await callApi('GET', `${path}?${query}${wrong}`, { session })).status, wrong).toBe(status);
   }
+});
+
+test('evidence lists the most alike spells of other dates, and says where it could not look', async () => {
+  const station = await findStationById(ids.get('AL-1') ?? NaN);
+  if (!station) throw new Error('No station.');
+  const question = {
+    station,
+    period: { fromSec: sec('2026-03-04T05:50:00Z'), toSec: sec('2026-03-04T06:00:00Z') },
+    nowSec: sec('2026-03-20T00:00:00Z'),
+  };
+  const found = await sameSpectrum(question, { mostMs: 20_000 });
+  expect(found).toMatchObject({ state: 'searched', why: null });
+  expect(found.spells).toHaveLength(5);
+  // The rest of the machine's half hour of that date is not another date.
+  expect(found.spells.filter(({ from }) => from.startsWith('2026-03-04'))).toEqual([]);
+  expect(found.spells.map(({ best }) => best)).toEqual(
+    found.spells.map(({ best }) => best).sort((a, b) => a - b),
+  );
+  expect(await sameSpectrum(question, { mostMs: -1 })).toMatchObject({
+    state: 'partly',
+    spells: [],
+    found: 0,
+  });
+  const silent = { ...question, period: { fromSec: FIRST_SEC - 7200, toSec: FIRST_SEC - 3600 } };
+  expect(await sameSpectrum(silent)).toMatchObject({
+    state: 'not-searched',
+    why: 'The period has no valid data.',
+  });
 });

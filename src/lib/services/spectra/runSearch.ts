@@ -97,10 +97,11 @@ export class SearchRun {
 
   /** Whether a minute of a day is asked for: in the dates, and not the spectrum itself. */
   #wantedOf(stationId: number, dayStartSec: number): (minute: number) => boolean {
-    const { fromSec, toSec, asked } = this.task;
+    const { fromSec, toSec, asked, leftOut } = this.task;
     return (minute) => {
       const sec = dayStartSec + minute * 60;
       if (sec < fromSec || sec >= toSec) return false;
+      if (leftOut && sec + 60 > leftOut.fromSec && sec < leftOut.toSec) return false;
       return asked.stationId !== stationId || sec + 60 <= asked.fromSec || sec >= asked.toSec;
     };
   }

@@ -23,9 +23,12 @@ export interface SpectrumSearch {
   codes: readonly string[];
   options: SpectrumSearchOptions;
   nowSec: number;
+  /** Looked at nowhere, such as the dates of the period itself. */
+  leftOut?: Span;
+  /** The search answers what it has found by then. */
+  mostMs?: number;
 }
 
-/** A search answers what it has found by then. */
 const MOST_MS = 20_000;
 
 /**
@@ -114,7 +117,7 @@ interface Prepared {
 }
 
 function taskOf(
-  { station, period, searched, options, nowSec }: SpectrumSearch,
+  { station, period, searched, options, nowSec, leftOut, mostMs = MOST_MS }: SpectrumSearch,
   { thirds, levelsDb, laeqDb, timeline }: Prepared,
 ): SearchTask {
   return {
@@ -123,9 +126,10 @@ function taskOf(
     fromSec: searched.fromSec,
     toSec: searched.toSec,
     asked: { stationId: station.id, ...period },
+    leftOut: leftOut ?? null,
     query: { levelsDb, laeqDb, mostRmsDb: options.likeness, withinDb: options.within ?? null },
     gapMinutes: options.gap,
     timeZone: pickSettings(timeline, nowSec).timeZone,
-    mostMs: MOST_MS,
+    mostMs,
   };
 }

@@ -11,6 +11,8 @@ export interface SearchTask {
   toSec: number;
   /** Where the spectrum is from: not found again. */
   asked: { stationId: number; fromSec: number; toSec: number };
+  /** Minutes that are looked at nowhere; null: none. */
+  leftOut: { fromSec: number; toSec: number } | null;
   query: ShapeQuery;
   gapMinutes: number;
   timeZone: string;
