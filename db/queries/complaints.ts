@@ -96,6 +96,7 @@ export interface ComplaintFilter {
   /** Windows that overlap `fromSec <= t < toSec`. */
   fromSec?: number;
   toSec?: number;
+  nearestStationId?: number;
   /** Goes on behind this one. */
   after?: { dueOn: LocalDate; id: number };
   limit: number;
@@ -111,6 +112,8 @@ export async function listComplaints(
   if (filter.status) void query.where({ 'c.status': filter.status });
   if (filter.toSec !== undefined) void query.where('c.starts_at', '<', filter.toSec);
   if (filter.fromSec !== undefined) void query.where('c.ends_at', '>', filter.fromSec);
+  if (filter.nearestStationId !== undefined)
+    void query.where('c.nearest_station_id', filter.nearestStationId);
   if (filter.after) {
     const { dueOn, id } = filter.after;
     void query.whereRaw('(c.due_on, c.id) > (?, ?)', [dueOn, id]);

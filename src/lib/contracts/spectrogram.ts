@@ -29,6 +29,12 @@ export const spectrogramSchema = z.object({
   levels: z
     .array(levels)
     .describe('By column, then by band; unweighted, dB; null where the monitor gave none'),
+  percentiles: z
+    .object({ seconds: z.number().int(), LA10: levels, LA50: levels, LA90: levels })
+    .nullable()
+    .describe(
+      'Exceedance levels of the block of UTC, `seconds` long, that a column begins in; null unless asked for, and null entries where a block has too few samples',
+    ),
 });
 export type Spectrogram = z.output<typeof spectrogramSchema>;
 
@@ -48,6 +54,10 @@ registerRoute({
         .describe(
           'The most columns wanted, 4,000 unless given, 44,640 at most; steps are the finest that need no more',
         ),
+      percentiles: z
+        .enum(['none', 'A'])
+        .optional()
+        .describe('A: with LA10, LA50 and LA90 of blocks no shorter than a column'),
     }),
   },
   responses: {

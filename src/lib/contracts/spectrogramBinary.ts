@@ -21,6 +21,20 @@ export interface SpectrogramColumns {
   lafminCentiDb: Int16Array;
   /** Unweighted band levels, column after column, each in the order of the header's bands. */
   levelsCentiDb: Int16Array;
+  /** Null where they were not asked for. */
+  percentiles: PercentileColumns | null;
+}
+
+/**
+ * Levels exceeded 10, 50 and 90 % of the time, of what counts. Each column has those of the block of UTC that it begins in: a
+ * column by itself often has too few samples for them.
+ */
+export interface PercentileColumns {
+  /** Length of the blocks, from 00:00 UTC on. */
+  blockSec: number;
+  la10CentiDb: Int16Array;
+  la50CentiDb: Int16Array;
+  la90CentiDb: Int16Array;
 }
 
 /** What the arrays are of. */
@@ -40,6 +54,8 @@ export interface SpectrogramHeader {
   reasons: string[];
   /** Meaning of the flag bits, from bit 0 on. */
   flags: string[];
+  /** Length of the blocks that LA10, LA50 and LA90 are of; without it there are none. */
+  percentileSeconds?: number;
 }
 
 const MAGIC = 0x31_53_54_42; // "BTS1" read as a little-endian uint32
@@ -50,8 +66,8 @@ export const SPECTROGRAM_LAYOUT =
   'Little endian. uint32 0x31535442 ("BTS1"); uint32 h, the length of the header; h bytes of JSON (UTF-8, padded with spaces to ' +
   'a multiple of 4), the header with `columns` n and `bands` b; then arrays without gaps: uint32[n] start (epoch seconds), ' +
   'uint32[n] present seconds, uint32[n] valid seconds, uint32[n] late seconds, uint16[n] reason bits, uint16[n] flag bits, ' +
-  'int16[n] LAeq, int16[n] LAFmax, int16[n] LAFmin, int16[n·b] band levels, column after column. Levels in hundredths of a ' +
-  'dB, −32768 = none.';
+  'int16[n] LAeq, int16[n] LAFmax, int16[n] LAFmin, int16[n·b] band levels, column after column; where the ' +
+  'header has `percentileSeconds` then int16[n] LA10, int16[n] LA50, int16[n] LA90. Levels in hundredths of a dB, −32768 = none.';
 
 /** Bytes of a spectrogram. */
 export function encodeSpectrogram(columns: SpectrogramColumns): Uint8Array<ArrayBuffer> {
@@ -92,7 +108,7 @@ export function decodeSpectrogram(bytes: ArrayBuffer): SpectrogramColumns {
     at += bytesEach * length;
     return array;
   };
-  return {
+  const columns = {
     header,
     startSec: next(Uint32Array, 4, count),
     presentSec: next(Uint32Array, 4, count),
@@ -105,10 +121,18 @@ export function decodeSpectrogram(bytes: ArrayBuffer): SpectrogramColumns {
     lafminCentiDb: next(Int16Array, 2, count),
     levelsCentiDb: next(Int16Array, 2, count * bands.length),
   };
+  const blockSec = header.percentileSeconds;
+  if (blockSec === undefined) return { ...columns, percentiles: null };
+  const level = () => next(Int16Array, 2, count);
+  return {
+    ...columns,
+    percentiles: { blockSec, la10CentiDb: level(), la50CentiDb: level(), la90CentiDb: level() },
+  };
 }
 
 /** The arrays in the order of the layout. Typed arrays are little endian on every platform that runs a browser or Node 20. */
 function arraysOf(columns: SpectrogramColumns) {
+  const { percentiles } = columns;
   return [
     columns.startSec,
     columns.presentSec,
@@ -120,5 +144,6 @@ function arraysOf(columns: SpectrogramColumns) {
     columns.lafmaxCentiDb,
     columns.lafminCentiDb,
     columns.levelsCentiDb,
+    ...(percentiles ? [percentiles.la10CentiDb, percentiles.la50CentiDb, percentiles.la90CentiDb] : []),
   ];
 }

@@ -91,6 +91,6 @@ describe('marks of exceedances', () => {
       100,
       12,
     );
-    expect(marks.map((m) => m.exceedances.map((e) => e.id))).toEqual([[1, 2], [3]]);
+    expect(marks.map((m) => m.held.map((e) => e.id))).toEqual([[1, 2], [3]]);
   });
 });

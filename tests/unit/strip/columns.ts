@@ -21,3 +21,16 @@ export function columnsOf(
   });
   return columns;
 }
+
+/** The same columns with LA10, LA50 and LA90 of one block, dB. */
+export function withPercentiles(
+  columns: StripColumns,
+  [la10Db, la50Db, la90Db]: readonly [number, number, number],
+  blockSec = 3600,
+): StripColumns {
+  const all = (levelDb: number) => new Int16Array(columns.count).fill(toCentiDb(levelDb));
+  return {
+    ...columns,
+    percentiles: { blockSec, la10CentiDb: all(la10Db), la50CentiDb: all(la50Db), la90CentiDb: all(la90Db) },
+  };
+}

@@ -11,7 +11,7 @@ import { SvgContext } from '../../../src/components/strip/export/svgContext';
 import { lanesOf } from '../../../src/components/strip/model/lanes';
 import { type StripLimit } from '../../../src/components/strip/model/limitLines';
 import { pixelColumns } from '../../../src/components/strip/model/pixelColumns';
-import { columnsOf } from './columns';
+import { columnsOf, withPercentiles } from './columns';
 
 const svg = () => new SvgContext((text) => text.length * 6);
 const palette = new Proxy({} as Surface['palette'], { get: (_, name) => `var(${String(name)})` });
@@ -75,7 +75,10 @@ describe('the sheet', () => {
     effectiveFromSec: 0,
     effectiveToSec: null,
   };
-  const columns = columnsOf([50, null, 52, 58], { fromSec: view.fromSec, stepSec: 900 });
+  const columns = withPercentiles(
+    columnsOf([50, null, 52, 58], { fromSec: view.fromSec, stepSec: 900 }),
+    [60, 52, 48],
+  );
   const geometry = stripGeometry(800);
   const part: SheetPart = {
     picture: {
@@ -91,6 +94,10 @@ describe('the sheet', () => {
       limits: [
         { limit, runs: [view] },
         { limit: { ...limit, name: 'Other day' }, runs: [{ fromSec: 0, toSec: 900 }] },
+      ],
+      complaints: [
+        { reference: 'MER-2026-0007', kind: 'hum', fromSec: view.fromSec + 600, toSec: view.fromSec + 1200 },
+        { reference: 'MER-2026-0008', kind: 'bang', fromSec: view.toSec, toSec: view.toSec + 600 },
       ],
       gapWords: () => 'no data',
     },
@@ -109,7 +116,7 @@ describe('the sheet', () => {
       },
     ],
   };
-  const sheet: Sheet = { parts: [part], weighting: 'Z', stepSec: 900 };
+  const sheet: Sheet = { parts: [part], weighting: 'Z', stepSec: 900, blockSec: 3600 };
 
   it('says by itself which station, period and zone it shows, what its signs mean, and the limits that hold in it', () => {
     const context = svg();
@@ -121,9 +128,13 @@ describe('the sheet', () => {
     expect(all).toContain('Limit “Night limit”:');
     expect(all).toContain('above 55 dB');
     expect(all).not.toContain('Other day');
+    expect(all).toContain('Complaint MER-2026-0007, hum, heard Sun 1 Mar 00:10–00:20');
+    expect(all).not.toContain('MER-2026-0008');
+    expect(texts).toContain('A90,1\u00a0h');
     expect(texts).toContain('Aeq,15\u00a0min');
     expect(context.elements()).toContain('url(#hatch)');
     expect(context.elements()).toContain('fill="var(rust)"');
+    expect(context.elements()).toContain('fill="var(percentiles)"');
   });
 
   it('is as tall as what stands on it', () => {

@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest';
 import { energyMeanDb } from '#lib/acoustics/energy';
 import { NO_LEVEL_CENTI_DB } from '#lib/acoustics/levelRange';
 import { pixelColumns } from '../../../src/components/strip/model/pixelColumns';
-import { columnsOf, NINE_THIRDS } from './columns';
+import { columnsOf, NINE_THIRDS, withPercentiles } from './columns';
 
 describe('columns on pixels', () => {
   it('shows a column on every pixel that it spans', () => {
@@ -39,4 +39,16 @@ describe('columns on pixels', () => {
     const pixels = pixelColumns([columnsOf(levels)], { fromSec: 0, toSec: 86_400 }, 777);
     expect([...pixels.laeqHighCentiDb].filter((high) => high === 9000)).toHaveLength(1);
   });
+});
+
+it('shows exceedance levels of the block in the middle of a pixel, and none where there are no data', () => {
+  const columns = withPercentiles(columnsOf([50, 51, null, 53]), [56, 52, 47]);
+  columns.percentiles?.la10CentiDb.set([5600, 5700, 5800, 5900]);
+  const pixels = pixelColumns([columns], { fromSec: 0, toSec: 240 }, 2);
+  expect([...pixels.la10CentiDb]).toEqual([5700, 5900]);
+  const each = pixelColumns([columns], { fromSec: 0, toSec: 240 }, 4);
+  expect([...each.la10CentiDb]).toEqual([5600, 5700, NO_LEVEL_CENTI_DB, 5900]);
+  expect([...pixelColumns([columnsOf([50])], { fromSec: 0, toSec: 60 }, 1).la90CentiDb]).toEqual([
+    NO_LEVEL_CENTI_DB,
+  ]);
 });

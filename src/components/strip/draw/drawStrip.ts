@@ -1,8 +1,10 @@
+import { type StripComplaint } from '../model/complaintMarks';
 import { type Lane } from '../model/lanes';
 import { type LevelRange } from '../model/levelAxis';
 import { type PixelColumns } from '../model/pixelColumns';
 import { type Run } from '../model/runs';
 import { pxAtSec, type TimeView } from '../model/timeView';
+import { drawComplaints } from './drawComplaints';
 import { drawGapWords } from './drawGapWords';
 import { drawLanes } from './drawLanes';
 import { drawLimits, type LimitLine } from './drawLimits';
@@ -26,10 +28,11 @@ export interface StripPicture {
   /** Stretches with data that do not count. */
   leftOut: readonly Run[];
   limits: readonly LimitLine[];
+  complaints: readonly StripComplaint[];
   gapWords: (gap: Run) => string;
 }
 
-/** Draws the strip: spectrogram, level trace with limits, validity rows and the time axis. */
+/** Draws the strip: spectrogram, level trace with limits, validity rows, complaints and the time axis. */
 export function drawStrip(surface: Surface, picture: StripPicture): void {
   const { context, ratio } = surface;
   const { geometry, view, pixels, lanes, traceRange } = picture;
@@ -41,6 +44,7 @@ export function drawStrip(surface: Surface, picture: StripPicture): void {
   drawLimits(surface, geometry, view, traceRange, picture.limits);
   drawGapWords(surface, geometry, view, gapsOf(lanes), picture.gapWords);
   drawLanes(surface, geometry, view, lanes);
+  drawComplaints(surface, geometry, view, picture.complaints);
 }
 
 /** Stretches that passed without data. */

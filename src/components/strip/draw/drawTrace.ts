@@ -1,4 +1,5 @@
 import { NO_LEVEL_CENTI_DB } from '#lib/acoustics/levelRange';
+import { drawPercentiles } from './drawPercentiles';
 import { levelTicks, pxOfLevel, type LevelRange } from '../model/levelAxis';
 import { type PixelColumns } from '../model/pixelColumns';
 import { type Run } from '../model/runs';
@@ -16,7 +17,7 @@ export interface TracePicture {
   elapsedPx: number;
 }
 
-/** LAeq as a line of ink (its range where a pixel spans several columns) on a light envelope up to LAFmax. */
+/** LAeq as a line of ink (its range where a pixel spans several columns) on a light envelope up to LAFmax, over LA90 to LA10. */
 export function drawTrace(surface: Surface, geometry: StripGeometry, picture: TracePicture): void {
   const { palette, context, ratio } = surface;
   const { x, y, width, height } = geometry.trace;
@@ -31,8 +32,10 @@ export function drawTrace(surface: Surface, geometry: StripGeometry, picture: Tr
   within(surface, geometry.trace, (device) => {
     washRuns(surface, picture, device.width, device.height);
     hatchGaps(surface, pixels, picture.elapsedPx, device.height);
-    drawEnvelope(surface, pixels, (db) => pxOfLevel(range, device.height, db));
-    drawLine(surface, pixels, (db) => pxOfLevel(range, device.height, db));
+    const yOf = (db: number) => pxOfLevel(range, device.height, db);
+    drawEnvelope(surface, pixels, yOf);
+    drawPercentiles(surface, pixels, yOf);
+    drawLine(surface, pixels, yOf);
   });
 }
 

@@ -14,13 +14,16 @@ export interface StripGeometry {
   spectrogram: Rect;
   marks: Rect;
   trace: Rect;
+  /** The validity strip's rows, and the row of complaints below them. */
   lanes: Rect;
   laneHeight: number;
+  complaints: Rect;
   axis: Rect;
 }
 
 export const LANES = 5;
 const NARROW_PX = 560;
+const COMPLAINTS_PX = 24;
 
 /** The parts for a strip `width` CSS pixels wide: less tall and with a thinner margin where it is narrow. */
 export function stripGeometry(width: number): StripGeometry {
@@ -32,7 +35,8 @@ export function stripGeometry(width: number): StripGeometry {
   const spectrogram = part(0, isNarrow ? 217 : 279);
   const marks = part(spectrogram.height, 20);
   const trace = part(marks.y + marks.height, isNarrow ? 130 : 140);
-  const lanes = part(trace.y + trace.height + 10, LANES * laneHeight);
+  const lanes = part(trace.y + trace.height + 10, LANES * laneHeight + COMPLAINTS_PX);
+  const complaints = part(lanes.y + LANES * laneHeight, COMPLAINTS_PX);
   const axis = part(lanes.y + lanes.height + 4, 24);
   return {
     width,
@@ -43,6 +47,7 @@ export function stripGeometry(width: number): StripGeometry {
     trace,
     lanes,
     laneHeight,
+    complaints,
     axis,
   };
 }

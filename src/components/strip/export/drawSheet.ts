@@ -6,6 +6,7 @@ import { drawSelection } from '../draw/drawSelection';
 import { drawStrip, type StripPicture } from '../draw/drawStrip';
 import { type StripGeometry, type Rect } from '../draw/geometry';
 import { textWidth, writeText, type Surface } from '../draw/surface';
+import { complaintMarkWords } from '../model/complaintMarks';
 import { exceedanceMarks, type StripExceedance } from '../model/exceedanceMarks';
 import { pxAtSec } from '../model/timeView';
 import { bandRangeWords } from '../model/bandWords';
@@ -29,11 +30,14 @@ export interface Sheet {
   weighting: Weighting;
   /** Length of the columns, s; null where there are none. */
   stepSec: number | null;
+  /** Length of time that exceedance levels are of, s; null where there are none. */
+  blockSec: number | null;
 }
 
 const HEAD_PX = 54;
 const ROW_PX = 18;
 const MARGIN_PX = 10;
+const MOST_COMPLAINT_LINES = 5;
 
 /** Width and height of the sheet, CSS pixels. */
 export function sheetSize(sheet: Sheet): { width: number; height: number } {
@@ -78,7 +82,7 @@ function drawPart(
   if (selection) drawSelection(surface, moved, selection);
 }
 
-/** What is told below the legend of one strip: its limits, and what is marked on it. */
+/** What is told below the legend of one strip: its limits, complaints, and what is marked on it. */
 function footLines({ picture, selection }: SheetPart): string[] {
   const { view, zone } = picture;
   const limits = picture.limits
@@ -87,8 +91,15 @@ function footLines({ picture, selection }: SheetPart): string[] {
       const metric = limitMetricText({ ...limit, bandFraction: null, bandIndex: null });
       return `Limit “${limit.name}”: ${metric} above ${limit.thresholdDb} dB`;
     });
+  const complaints = picture.complaints
+    .filter(({ fromSec, toSec }) => fromSec < view.toSec && toSec > view.fromSec)
+    .map((complaint) => complaintMarkWords([complaint], zone));
+  const heard = complaints.slice(0, MOST_COMPLAINT_LINES);
+  const more = complaints.length - heard.length;
+  if (more > 0) heard.push(`and ${more} more ${more === 1 ? 'complaint' : 'complaints'}`);
+  const told = [...limits, ...heard];
   const bands = selection?.bands ? `, ${bandRangeWords(selection.bands)}` : '';
-  return selection ? [...limits, `Marked: ${stretchWords(selection, zone)}${bands}`] : limits;
+  return selection ? [...told, `Marked: ${stretchWords(selection, zone)}${bands}`] : told;
 }
 
 function movedDown(geometry: StripGeometry, byPx: number): StripGeometry {
@@ -99,6 +110,7 @@ function movedDown(geometry: StripGeometry, byPx: number): StripGeometry {
     marks: moved(geometry.marks),
     trace: moved(geometry.trace),
     lanes: moved(geometry.lanes),
+    complaints: moved(geometry.complaints),
     axis: moved(geometry.axis),
   };
 }
@@ -110,8 +122,8 @@ function drawMarks(
   all: readonly StripExceedance[],
 ): void {
   const { x, y, width, height } = geometry.marks;
-  for (const { px, exceedances } of exceedanceMarks(all, (sec) => pxAtSec(view, width, sec), width, 25)) {
-    const [halfPx, tallPx] = exceedances.length === 1 ? [5.5, 9] : [9, 16];
+  for (const { px, held } of exceedanceMarks(all, (sec) => pxAtSec(view, width, sec), width, 25)) {
+    const [halfPx, tallPx] = held.length === 1 ? [5.5, 9] : [9, 16];
     const top = y + (height - tallPx) / 2;
     context.fillStyle = palette.rust;
     context.beginPath();
@@ -120,8 +132,8 @@ function drawMarks(
     context.lineTo(x + px, top + tallPx);
     context.closePath();
     context.fill();
-    if (exceedances.length === 1) continue;
-    const count = exceedances.length > 9 ? '9+' : String(exceedances.length);
+    if (held.length === 1) continue;
+    const count = held.length > 9 ? '9+' : String(held.length);
     const style = { colour: palette.paper, align: 'center', sizePx: 9, weight: 700 } as const;
     writeText({ context, palette, ...rest }, count, x + px, top + 5.5, style);
   }
@@ -132,7 +144,7 @@ const RAMP_STEPS = 56;
 const GAP_PX = 18;
 
 function drawLegend(surface: Surface, sheet: Sheet, y: number): void {
-  const { weighting, stepSec } = sheet;
+  const { weighting, stepSec, blockSec } = sheet;
   const colouring = sheet.parts.find(({ picture }) => picture.colouring)?.picture.colouring;
   const { context, palette } = surface;
   const colour = palette.inkSoft;
@@ -159,5 +171,13 @@ function drawLegend(surface: Surface, sheet: Sheet, y: number): void {
   context.fillRect(x, y - 5, 16, 10);
   x += 22;
   write('up to LAFmax', GAP_PX);
+  if (blockSec !== null) {
+    context.fillStyle = palette.percentiles;
+    context.fillRect(x, y - 5, 16, 10);
+    context.fillStyle = palette.reed;
+    context.fillRect(x, y - 0.75, 16, 1.5);
+    x += 22;
+    write(`LA90,${formatDuration(blockSec)} to LA10, line LA50`, GAP_PX);
+  }
   if (x + textWidth(surface, 'hatched: no data') < sheetSize(sheet).width) write('hatched: no data', 0);
 }

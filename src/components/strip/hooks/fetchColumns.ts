@@ -16,6 +16,7 @@ export async function fetchColumns(
     from: formatInstantUtc(tile.fromSec),
     to: formatInstantUtc(tile.toSec),
     columns: String(columns),
+    percentiles: 'A',
   });
   const headers = { Accept: 'application/octet-stream' };
   const answer = await fetchAnswer(`${stationUrl}/spectrogram?${query.toString()}`, { signal, headers });
@@ -37,5 +38,6 @@ function columnsOf(spectrogram: SpectrogramColumns): StripColumns {
     reasonBits: spectrogram.reasonBits,
     flagBits: spectrogram.flagBits,
     levelsCentiDb: spectrogram.levelsCentiDb,
+    percentiles: spectrogram.percentiles,
   };
 }

@@ -44,7 +44,11 @@ export function useLevels(
   const trace = useMemo(
     () =>
       traceRange(
-        layers.flatMap(({ laeqCentiDb, lafmaxCentiDb }) => [laeqCentiDb, lafmaxCentiDb]),
+        layers.flatMap(({ laeqCentiDb, lafmaxCentiDb, percentiles }) => [
+          laeqCentiDb,
+          lafmaxCentiDb,
+          ...(percentiles ? [percentiles.la90CentiDb] : []),
+        ]),
         limits.map(({ thresholdDb }) => thresholdDb),
       ),
     [layers, limits],

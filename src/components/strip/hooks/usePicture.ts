@@ -4,6 +4,7 @@ import { type StripPicture } from '../draw/drawStrip';
 import { onDevice } from '../draw/surface';
 import { type LimitLine } from '../draw/drawLimits';
 import { type StripGeometry } from '../draw/geometry';
+import { type StripComplaint } from '../model/complaintMarks';
 import { lanesOf, leftOutRuns } from '../model/lanes';
 import { timesOfValidity, type ClockSetting, type StripLimit } from '../model/limitLines';
 import { pixelColumns } from '../model/pixelColumns';
@@ -21,13 +22,14 @@ interface PictureInput {
   zone: string;
   clocks: readonly ClockSetting[];
   limits: readonly StripLimit[];
+  complaints: readonly StripComplaint[];
   nowSec: number;
   gapWords: (gap: Run) => string;
 }
 
 /** What the canvas is to show, made anew only where what it is made of has changed. */
 export function usePicture(input: PictureInput): StripPicture {
-  const { geometry, ratio, theme, zone, nowSec, gapWords } = input;
+  const { geometry, ratio, theme, zone, nowSec, gapWords, complaints } = input;
   const { fromSec, toSec } = input.view;
   const { layers, weightsCentiDb } = input.levels;
   const { lowDb, highDb } = input.levels.colours ?? { lowDb: null, highDb: null };
@@ -54,6 +56,7 @@ export function usePicture(input: PictureInput): StripPicture {
       lanes: lanesOf(layers, { fromSec, toSec }, nowSec),
       leftOut: leftOutRuns(layers, { fromSec, toSec }),
       limits: lines,
+      complaints,
       gapWords,
     }),
     [
@@ -68,6 +71,7 @@ export function usePicture(input: PictureInput): StripPicture {
       traceHighDb,
       layers,
       lines,
+      complaints,
       gapWords,
     ],
   );

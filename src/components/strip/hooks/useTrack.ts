@@ -52,7 +52,7 @@ export interface TrackPicture {
 
 /** Makes a strip's picture of its levels; `levels` says which ranges its colours and its trace span. */
 export function useTrackPicture(
-  { station, limits }: Track,
+  { station, limits, complaints }: Track,
   { view, levels }: Pick<TrackLevels, 'view' | 'levels'>,
   { geometry, ratio, theme, zone, clocks, nowSec }: StripSetting,
 ): TrackPicture {
@@ -66,6 +66,7 @@ export function useTrackPicture(
     zone,
     clocks,
     limits,
+    complaints,
     nowSec,
     gapWords,
   });

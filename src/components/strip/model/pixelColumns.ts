@@ -13,6 +13,10 @@ export interface PixelColumns {
   laeqLowCentiDb: Int16Array;
   laeqHighCentiDb: Int16Array;
   lafmaxCentiDb: Int16Array;
+  /** Of the block of time that the pixel's middle lies in. */
+  la10CentiDb: Int16Array;
+  la50CentiDb: Int16Array;
+  la90CentiDb: Int16Array;
   /** Band levels, pixel after pixel: energy means. */
   levelsCentiDb: Int16Array;
   /** 1 where the fetched columns reach, whether or not they hold data: elsewhere nothing is known yet. */
@@ -38,6 +42,7 @@ export function pixelColumns(layers: readonly StripColumns[], view: TimeView, wi
     pixels.isKnown[px] = 1;
     const range = columnsOfPixel(layer, fromSec, pixelSec);
     fillLevels(pixels, px, layer, range);
+    fillPercentiles(pixels, px, layer, Math.floor((range.from + range.to) / 2));
     fillBands(pixels, px, layer, range, { energies, counts });
   }
   return pixels;
@@ -79,6 +84,19 @@ function fillLevels(pixels: PixelColumns, px: number, layer: StripColumns, { fro
   pixels.laeqCentiDb[px] = Math.round(1000 * Math.log10(energySec / seconds));
   pixels.laeqLowCentiDb[px] = low;
   pixels.laeqHighCentiDb[px] = high;
+}
+
+/** Exceedance levels do not average: a pixel shows those of one of its columns. */
+function fillPercentiles(
+  pixels: PixelColumns,
+  px: number,
+  { percentiles, laeqCentiDb }: StripColumns,
+  at: number,
+): void {
+  if (!percentiles || laeqCentiDb[at] === NO_LEVEL_CENTI_DB) return;
+  pixels.la10CentiDb[px] = percentiles.la10CentiDb[at] ?? NO_LEVEL_CENTI_DB;
+  pixels.la50CentiDb[px] = percentiles.la50CentiDb[at] ?? NO_LEVEL_CENTI_DB;
+  pixels.la90CentiDb[px] = percentiles.la90CentiDb[at] ?? NO_LEVEL_CENTI_DB;
 }
 
 interface Scratch {
@@ -124,6 +142,9 @@ function emptyPixels(widthPx: number, bands: readonly Band[]): PixelColumns {
     laeqLowCentiDb: none(),
     laeqHighCentiDb: none(),
     lafmaxCentiDb: none(),
+    la10CentiDb: none(),
+    la50CentiDb: none(),
+    la90CentiDb: none(),
     levelsCentiDb: new Int16Array(widthPx * bands.length).fill(NO_LEVEL_CENTI_DB),
     isKnown: new Uint8Array(widthPx),
   };

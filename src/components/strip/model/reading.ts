@@ -12,6 +12,8 @@ export interface Reading {
   /** Null: no data. */
   laeqDb: number | null;
   lafmaxDb: number | null;
+  /** Exceedance levels of the block of time that it begins in; null where there are none. */
+  percentiles: { blockSec: number; la10Db: number; la50Db: number; la90Db: number } | null;
   /** Null: the cursor names no band. */
   band: Band | null;
   bandLevelDb: number | null;
@@ -38,6 +40,7 @@ export function readingAt(
       toSec: fromSec + columns.stepSec,
       laeqDb: dbOf(columns.laeqCentiDb[at]),
       lafmaxDb: dbOf(columns.lafmaxCentiDb[at]),
+      percentiles: percentilesAt(columns, at),
       band,
       bandLevelDb: bandDb === null ? null : bandDb + weightDb,
       reasons: reasonsOfMask(columns.reasonBits[at] ?? 0),
@@ -49,6 +52,17 @@ export function readingAt(
 /** How far one level lies above another, dB; null where one of them is missing. */
 export function differenceDb(levelDb: number | null, fromDb: number | null): number | null {
   return levelDb === null || fromDb === null ? null : levelDb - fromDb;
+}
+
+function percentilesAt({ percentiles }: StripColumns, at: number): Reading['percentiles'] {
+  if (!percentiles) return null;
+  const [la10Db, la50Db, la90Db] = [
+    dbOf(percentiles.la10CentiDb[at]),
+    dbOf(percentiles.la50CentiDb[at]),
+    dbOf(percentiles.la90CentiDb[at]),
+  ];
+  if (la10Db === null || la50Db === null || la90Db === null) return null;
+  return { blockSec: percentiles.blockSec, la10Db, la50Db, la90Db };
 }
 
 function dbOf(centiDb: number | undefined): number | null {

@@ -1,5 +1,6 @@
 import { type Band } from '#lib/acoustics/bands';
 import { NO_LEVEL_CENTI_DB } from '#lib/acoustics/levelRange';
+import type { PercentileColumns } from '#lib/contracts/spectrogramBinary';
 
 /**
  * A stretch of a station's measurements in equal time steps, as the strip works with it. Levels are hundredths of a dB,
@@ -26,6 +27,8 @@ export interface StripColumns {
   lateSec: Uint32Array;
   /** Unweighted band levels, column after column. */
   levelsCentiDb: Int16Array;
+  /** Null where nothing is known of them. */
+  percentiles: PercentileColumns | null;
 }
 
 /** End of the last column, epoch seconds. */
@@ -59,5 +62,6 @@ export function emptyColumns(
     flagBits: new Uint16Array(count),
     lateSec: new Uint32Array(count),
     levelsCentiDb: new Int16Array(count * bands.length).fill(NO_LEVEL_CENTI_DB),
+    percentiles: null,
   };
 }

@@ -20,7 +20,8 @@ export interface ShownLevels {
 
 /**
  * The columns on the screen as a CSV file: a row a column of each strip, whole columns also at the edges; instants in UTC, levels
- * in dB, bands weighted as they are shown. A column without data has its seconds and no levels.
+ * in dB, bands weighted as they are shown; LA10, LA50 and LA90 are of the block of UTC, `LAN_block_s` long, that a column begins in. A
+ * column without data has its seconds and no levels.
  */
 export function stripCsv(strips: readonly ShownLevels[], weighting: Weighting): string {
   const bands = bandsOfAll(strips);
@@ -32,6 +33,10 @@ export function stripCsv(strips: readonly ShownLevels[], weighting: Weighting): 
     'valid_s',
     'LAeq_dB',
     'LAFmax_dB',
+    'LAN_block_s',
+    'LA10_dB',
+    'LA50_dB',
+    'LA90_dB',
     'left_out',
     ...bands.map((band) => `L${weighting}eq_${bandLabel(band)}_dB`.replaceAll(/\s/g, '')),
   ];
@@ -64,6 +69,10 @@ function rowOf(strip: ShownLevels, columns: StripColumns, at: number, places: re
     columns.validSec[at] ?? 0,
     levelCell(columns.laeqCentiDb[at]),
     levelCell(columns.lafmaxCentiDb[at]),
+    columns.percentiles?.blockSec ?? null,
+    levelCell(columns.percentiles?.la10CentiDb[at]),
+    levelCell(columns.percentiles?.la50CentiDb[at]),
+    levelCell(columns.percentiles?.la90CentiDb[at]),
     reasonsOfMask(columns.reasonBits[at] ?? 0).join(' '),
     ...places.map((place) =>
       place < 0

@@ -1,4 +1,5 @@
 import { type Band, type BandFraction } from '#lib/acoustics/bands';
+import { type StripComplaint } from './complaintMarks';
 import { type Corner } from './dragSelection';
 import { type StripExceedance } from './exceedanceMarks';
 import { type Interaction } from './interaction';
@@ -12,6 +13,7 @@ export interface Track {
   shiftSec: number;
   limits: StripLimit[];
   exceedances: StripExceedance[];
+  complaints: StripComplaint[];
 }
 
 /** A stretch of time moved later by some seconds, with whatever else it holds. */

@@ -2,7 +2,8 @@ import { memo } from 'react';
 import { formatInstantUtc } from '#lib/contracts/instants';
 import { limitValueText } from '#lib/format/limitMetric';
 import { type StripGeometry } from '../draw/geometry';
-import { exceedanceMarks, type ExceedanceMark, type StripExceedance } from '../model/exceedanceMarks';
+import { exceedanceMarks, type StripExceedance } from '../model/exceedanceMarks';
+import { type GroupedMark } from '../model/groupMarks';
 import { stretchWords } from '../model/timeWords';
 import { pxAtSec, type TimeView } from '../model/timeView';
 
@@ -30,7 +31,7 @@ export const ExceedanceMarks = memo(function ExceedanceMarks({
   const marks = exceedanceMarks(exceedances, (sec) => pxAtSec(view, width, sec), width, TARGET_PX + 1);
   return marks.map((mark) => (
     <a
-      key={mark.exceedances[0]?.id}
+      key={mark.held[0]?.id}
       href={addressOf(mark, listUrl)}
       title={wordsOf(mark, zone)}
       aria-label={wordsOf(mark, zone)}
@@ -42,7 +43,7 @@ export const ExceedanceMarks = memo(function ExceedanceMarks({
         height: TARGET_PX,
       }}
     >
-      {mark.exceedances.length === 1 ? (
+      {mark.held.length === 1 ? (
         <svg viewBox="0 0 12 10" width="11" height="9" aria-hidden="true">
           <path d="M0 0h12L6 10z" fill="currentColor" />
         </svg>
@@ -50,7 +51,7 @@ export const ExceedanceMarks = memo(function ExceedanceMarks({
         <svg viewBox="0 0 18 16" width="18" height="16" aria-hidden="true">
           <path d="M0 0h18L9 16z" fill="currentColor" />
           <text x="9" y="8.5" textAnchor="middle" fontSize="9" fontWeight="700" className="fill-paper">
-            {mark.exceedances.length > 9 ? '9+' : mark.exceedances.length}
+            {mark.held.length > 9 ? '9+' : mark.held.length}
           </text>
         </svg>
       )}
@@ -58,19 +59,19 @@ export const ExceedanceMarks = memo(function ExceedanceMarks({
   ));
 });
 
-function addressOf({ exceedances }: ExceedanceMark, listUrl: string): string {
-  const [first] = exceedances;
-  if (exceedances.length === 1 && first) return `${listUrl}/${first.id}`;
-  const from = Math.min(...exceedances.map(({ fromSec }) => fromSec));
-  const to = Math.max(...exceedances.map(({ toSec }) => toSec));
+function addressOf({ held }: GroupedMark<StripExceedance>, listUrl: string): string {
+  const [first] = held;
+  if (held.length === 1 && first) return `${listUrl}/${first.id}`;
+  const from = Math.min(...held.map(({ fromSec }) => fromSec));
+  const to = Math.max(...held.map(({ toSec }) => toSec));
   const query = new URLSearchParams({ from: formatInstantUtc(from), to: formatInstantUtc(to) });
   return `${listUrl}?${query.toString()}`;
 }
 
-function wordsOf({ exceedances }: ExceedanceMark, zone: string): string {
-  const [first] = exceedances;
+function wordsOf({ held }: GroupedMark<StripExceedance>, zone: string): string {
+  const [first] = held;
   if (!first) return '';
-  if (exceedances.length > 1) return `${exceedances.length} exceedances from ${stretchWords(first, zone)}`;
+  if (held.length > 1) return `${held.length} exceedances from ${stretchWords(first, zone)}`;
   const { limitName, levelDb, thresholdDb, unit } = first;
   return `Exceedance, ${stretchWords(first, zone)}: ${limitValueText(levelDb, unit)}, ${limitName}, limit ${limitValueText(thresholdDb, unit)}`;
 }

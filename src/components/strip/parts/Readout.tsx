@@ -1,6 +1,7 @@
 import { bandLabel, type Band } from '#lib/acoustics/bands';
 import { type InvalidityReason } from '#lib/acoustics/validity';
 import { type Weighting } from '#lib/acoustics/weighting';
+import { formatDuration } from '#lib/format/durations';
 import { formatDifferenceDb, formatLevelDb } from '#lib/format/levels';
 import { differenceDb, type Reading } from '../model/reading';
 import { stretchWords } from '../model/timeWords';
@@ -100,6 +101,7 @@ function ReadingWords({
               {' · '}L<sub>AFmax</sub> {formatLevelDb(reading.lafmaxDb)} dB
             </>
           )}
+          {reading.percentiles && <PercentileWords {...reading.percentiles} />}
         </>
       )}
       {band && (
@@ -120,6 +122,16 @@ function ReadingWords({
           {' · '}left out: {reading.reasons.map((reason) => REASON_WORDS[reason]).join(', ')}
         </span>
       )}
+    </>
+  );
+}
+
+function PercentileWords({ blockSec, la10Db, la50Db, la90Db }: NonNullable<Reading['percentiles']>) {
+  return (
+    <>
+      {' · '}
+      {formatDuration(blockSec)} L<sub>A10</sub> {formatLevelDb(la10Db)}, L<sub>A50</sub>{' '}
+      {formatLevelDb(la50Db)}, L<sub>A90</sub> {formatLevelDb(la90Db)} dB
     </>
   );
 }

@@ -13,7 +13,9 @@ interface StripFootProps {
 /** The legend, and the ways to take away what is shown. */
 export function StripFoot({ strips, setting, isMarked }: StripFootProps) {
   const { weighting } = setting.display;
-  const stepSec = strips[0]?.levels.layers[0]?.stepSec ?? null;
+  const columns = strips[0]?.levels.layers[0];
+  const stepSec = columns?.stepSec ?? null;
+  const blockSec = columns?.percentiles?.blockSec ?? null;
   return (
     <div className="flex flex-wrap items-center justify-between gap-x-5 gap-y-2">
       <Legend
@@ -21,6 +23,7 @@ export function StripFoot({ strips, setting, isMarked }: StripFootProps) {
         weighting={weighting}
         theme={setting.theme}
         stepSec={stepSec}
+        blockSec={blockSec}
       />
       <SavePicture
         sheet={{
@@ -32,6 +35,7 @@ export function StripFoot({ strips, setting, isMarked }: StripFootProps) {
           })),
           weighting,
           stepSec,
+          blockSec,
         }}
         levels={strips.map(({ track, view, levels }) => ({
           stationCode: track.station.code,

@@ -8,6 +8,7 @@ import { type StripPicture } from '../draw/drawStrip';
 import { type StripExceedance } from '../model/exceedanceMarks';
 import { type Interaction, type InteractionEvent } from '../model/interaction';
 import { movedCursor } from '../model/keyboard';
+import { ComplaintMarks } from './ComplaintMarks';
 import { CursorLine } from './CursorLine';
 import { ExceedanceMarks } from './ExceedanceMarks';
 import { SelectionBox } from './SelectionBox';
@@ -24,6 +25,7 @@ interface StripPlotProps {
   stepSec: number;
   exceedances: readonly StripExceedance[];
   exceedancesUrl: string;
+  complaintsUrl: string;
   summary: string;
 }
 
@@ -84,6 +86,13 @@ export function StripPlot(props: StripPlotProps) {
         geometry={geometry}
         zone={picture.zone}
         listUrl={exceedancesUrl}
+      />
+      <ComplaintMarks
+        complaints={picture.complaints}
+        view={view}
+        geometry={geometry}
+        zone={picture.zone}
+        listUrl={props.complaintsUrl}
       />
       <div
         {...axis}

@@ -57,6 +57,7 @@ export function TrackPlot(props: TrackPlotProps) {
           stepSec={strip.levels.layers[0]?.stepSec ?? track.station.intervalSec}
           exceedances={track.exceedances}
           exceedancesUrl={`/n/${setting.slug}/exceedances`}
+          complaintsUrl={`/n/${setting.slug}/complaints`}
           summary={strip.summary}
         />
       )}

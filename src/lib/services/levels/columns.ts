@@ -4,7 +4,7 @@ import { type SpectrogramColumns } from '#lib/contracts/spectrogramBinary';
 import { type ColumnPlan } from './columnPlan';
 
 /** Columns to be filled, and the bands that their levels are of. */
-export interface Columns extends Omit<SpectrogramColumns, 'header'> {
+export interface Columns extends Omit<SpectrogramColumns, 'header' | 'percentiles'> {
   plan: ColumnPlan;
   bands: readonly Band[];
   /** Place in `bands` by `bandSlot`; −1 for bands that are not shown. */

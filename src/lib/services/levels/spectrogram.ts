@@ -11,8 +11,9 @@ import { emptyColumns, type Columns } from './columns';
 import { currentQuarters } from './currentQuarters';
 import { fillFromIntervals } from './intervalColumns';
 import { judgementOf, type LevelSource } from './intervalSums';
+import { PercentileBlocks } from './percentileBlocks';
 import { fillFromQuarters } from './quarterColumns';
-import { type Span } from './spans';
+import { withoutSpans, type Span } from './spans';
 
 export interface SpectrogramQuery extends Span {
   station: Pick<
@@ -21,6 +22,8 @@ export interface SpectrogramQuery extends Span {
   >;
   /** The most columns wanted; the steps are the finest that need no more. */
   mostColumns: number;
+  /** Whether LA10, LA50 and LA90 are wanted beside the columns. */
+  percentiles?: boolean;
   /** The network's settings in order of their beginning; read when left out. */
   timeline?: NetworkSettings[];
 }
@@ -45,10 +48,19 @@ export async function spectrogram(
   bands.forEach(({ index }, place) => (placeOfSlot[bandSlot(index)] = place));
   const columns = emptyColumns(plan, bands, placeOfSlot);
   const source: LevelSource = { station, timeline, validity: 'rules' };
+  const blocks = query.percentiles ? new PercentileBlocks(plan, station.intervalSec) : null;
   if (plan.source === 'intervals') await readIntervals(source, columns, conn);
-  else await readQuarters(source, columns, conn);
+  else await readQuarters(source, columns, blocks, conn);
+  if (blocks) {
+    const isRead = plan.source === 'quarter-hours';
+    for (const span of withoutSpans(blocks.span, isRead ? [spanOf(columns)] : [])) {
+      blocks.add(await currentQuarters(source, span, { bands: false }, conn));
+    }
+  }
+  const percentiles = blocks?.columns() ?? null;
   return {
     ...columns,
+    percentiles,
     header: {
       from: plan.fromSec,
       stepSeconds: plan.stepSec,
@@ -59,6 +71,7 @@ export async function spectrogram(
       source: plan.source,
       reasons: [...INVALIDITY_REASONS],
       flags: [...FLAG_NAMES],
+      ...(percentiles && { percentileSeconds: percentiles.blockSec }),
     },
   };
 }
@@ -83,9 +96,16 @@ async function readIntervals(source: LevelSource, columns: Columns, conn: Connec
   }
 }
 
-async function readQuarters(source: LevelSource, columns: Columns, conn: Connection): Promise<void> {
+async function readQuarters(
+  source: LevelSource,
+  columns: Columns,
+  blocks: PercentileBlocks | null,
+  conn: Connection,
+): Promise<void> {
   for (const part of partsOf(columns, MOST_QUARTERS * 900)) {
-    fillFromQuarters(columns, await currentQuarters(source, part, { bands: true }, conn));
+    const quarters = await currentQuarters(source, part, { bands: true }, conn);
+    fillFromQuarters(columns, quarters);
+    blocks?.add(quarters);
   }
 }
 

@@ -6,7 +6,7 @@ import { type SpectrogramColumns } from '#lib/contracts/spectrogramBinary';
 
 /** Columns in the JSON form of the interface: dB, names instead of bits. */
 export function spectrogramJson(columns: SpectrogramColumns): Spectrogram {
-  const { header } = columns;
+  const { header, percentiles } = columns;
   const bandCount = header.bands.length;
   return {
     from: formatInstantUtc(header.from),
@@ -28,6 +28,12 @@ export function spectrogramJson(columns: SpectrogramColumns): Spectrogram {
     levels: Array.from({ length: header.columns }, (_, at) =>
       levelsDb(columns.levelsCentiDb.subarray(at * bandCount, (at + 1) * bandCount)),
     ),
+    percentiles: percentiles && {
+      seconds: percentiles.blockSec,
+      LA10: levelsDb(percentiles.la10CentiDb),
+      LA50: levelsDb(percentiles.la50CentiDb),
+      LA90: levelsDb(percentiles.la90CentiDb),
+    },
   };
 }
 

@@ -1,5 +1,7 @@
+import { listComplaints } from '#db/queries/complaints';
 import { type StationRow } from '#db/queries/stations';
 import { type BandFraction } from '#lib/acoustics/bands';
+import { type ComplaintKind } from '#lib/contracts/complaints';
 import { limitUnit, type LimitUnit } from '#lib/format/limitMetric';
 import { type Span } from '#lib/services/levels/spans';
 import { exceedancesOfStation, limitsOfStation, type LimitInForce } from './marks';
@@ -20,19 +22,24 @@ export interface StripTrack {
     unit: LimitUnit;
     isStanding: boolean;
   }[];
+  /** Those that the station is the nearest to, without anything personal. */
+  complaints: { reference: string; kind: ComplaintKind; fromSec: number; toSec: number }[];
 }
 
+const MOST_COMPLAINTS = 1000;
 const LEAST_AROUND_SEC = 7 * 86_400;
 
-/** A station's strip for a period of the axis. Exceedances are marked well beyond the period, for panning and zooming out. */
+/** A station's strip for a period of the axis. Exceedances and complaints are marked well beyond the period, for panning and zooming out. */
 export async function stripTrack(station: StationRow, period: Span, shiftSec = 0): Promise<StripTrack> {
   const aroundSec = Math.max(LEAST_AROUND_SEC, 2 * (period.toSec - period.fromSec));
-  const [limits, exceedances] = await Promise.all([
+  const around = {
+    fromSec: period.fromSec + shiftSec - aroundSec,
+    toSec: period.toSec + shiftSec + aroundSec,
+  };
+  const [limits, exceedances, complaints] = await Promise.all([
     limitsOfStation(station.networkId, station.id),
-    exceedancesOfStation(station.id, {
-      fromSec: period.fromSec + shiftSec - aroundSec,
-      toSec: period.toSec + shiftSec + aroundSec,
-    }),
+    exceedancesOfStation(station.id, around),
+    listComplaints(station.networkId, { ...around, nearestStationId: station.id, limit: MOST_COMPLAINTS }),
   ]);
   const { code, name, bandFraction, intervalSec } = station;
   return {
@@ -49,5 +56,13 @@ export async function stripTrack(station: StationRow, period: Span, shiftSec = 0
       unit: limitUnit(one.metric),
       isStanding: one.state === 'standing',
     })),
+    complaints: complaints
+      .map(({ reference, kind, startsAtSec, endsAtSec }) => ({
+        reference,
+        kind,
+        fromSec: startsAtSec,
+        toSec: endsAtSec,
+      }))
+      .sort((a, b) => a.fromSec - b.fromSec),
   };
 }

@@ -1,7 +1,7 @@
 import { requireNetwork, requireStation } from '#lib/auth/guards';
 import { ALL_ROLES } from '#lib/auth/roles';
 import { encodeSpectrogram } from '#lib/contracts/spectrogramBinary';
-import { parseCount, parsePeriod } from '#lib/http/parse';
+import { parseChoice, parseCount, parsePeriod } from '#lib/http/parse';
 import { json } from '#lib/http/respond';
 import { route } from '#lib/http/route';
 import { MOST_COLUMNS, USUAL_MOST_COLUMNS } from '#lib/services/levels/columnPlan';
@@ -16,7 +16,8 @@ export const GET = route(async (context) => {
     fallback: USUAL_MOST_COLUMNS,
     most: MOST_COLUMNS,
   });
-  const columns = await spectrogram({ station, ...period, mostColumns });
+  const percentiles = parseChoice(context.url, 'percentiles', ['none', 'A']) === 'A';
+  const columns = await spectrogram({ station, ...period, mostColumns, percentiles });
   const wantsBytes = (context.request.headers.get('accept') ?? '').includes('application/octet-stream');
   if (!wantsBytes) return json(spectrogramJson(columns), { headers: { Vary: 'Accept' } });
   return new Response(encodeSpectrogram(columns), {
