@@ -24,13 +24,11 @@ export async function recompute(
   conn: Connection,
 ): Promise<void> {
   const parts = partsOf(chunk, Date.now() / 1000);
-  const judgement = await judgementOf(
-    { station, timeline, validity: 'rules' },
-    wholeOf(parts.map(({ span }) => span)),
-    conn,
-  );
-  await deleteQuartersAt(station.id, chunk.quarterStartsSec, conn);
-  await deletePeriodsTouching(station.id, replacedSpans(chunk, parts), conn);
+  const [judgement] = await Promise.all([
+    judgementOf({ station, timeline, validity: 'rules' }, wholeOf(parts.map(({ span }) => span)), conn),
+    deleteQuartersAt(station.id, chunk.quarterStartsSec, conn),
+    deletePeriodsTouching(station.id, replacedSpans(chunk, parts), conn),
+  ]);
   const read = (part: number) => {
     const span = parts[part]?.span;
     return span && selectMeasuredIntervals(station.id, span.fromSec, span.toSec, conn);
