@@ -13,6 +13,8 @@ const MIXED_MARK = 255;
 const TYPICAL_CLASSES_BYTES = 32_768;
 
 type BandSums = Pick<PeriodSums, 'isBandFractionMixed' | 'bandEnergySec' | 'bandValidSec'>;
+/** Where the bands of a row go. */
+export type BandRoom = Pick<PeriodSums, 'bandEnergySec' | 'bandValidSec'>;
 
 /** Band energies for the column `band_energies`: the bands that have valid seconds, ascending. Equal sums give equal bytes. */
 export function packBandEnergies(sums: BandSums): Buffer {
@@ -30,19 +32,26 @@ export function packBandEnergies(sums: BandSums): Buffer {
   return bytes.subarray(0, at);
 }
 
-/** Reads what `packBandEnergies` made. @throws RangeError for other bytes. */
-export function unpackBandEnergies(bytes: Buffer): BandSums {
-  const bandEnergySec = new Float64Array(BAND_SLOTS);
-  const bandValidSec = new Float64Array(BAND_SLOTS);
+/** Zeros for the bands of so many rows, in one piece: an array a row costs more than what is read into it. */
+export function bandRooms(rows: number): (row: number) => BandRoom {
+  const whole = new Float64Array(2 * rows * BAND_SLOTS);
+  const part = (at: number) => whole.subarray(at * BAND_SLOTS, (at + 1) * BAND_SLOTS);
+  return (row) => ({ bandEnergySec: part(2 * row), bandValidSec: part(2 * row + 1) });
+}
+
+/** Reads what `packBandEnergies` made, into `room` where that is given. @throws RangeError for other bytes. */
+export function unpackBandEnergies(bytes: Buffer, room: BandRoom = bandRooms(1)(0)): BandSums {
+  const { bandEnergySec, bandValidSec } = room;
   if (bytes.length === 1 && bytes[0] === MIXED_MARK) {
     return { isBandFractionMixed: true, bandEnergySec, bandValidSec };
   }
   if (bytes.length % BAND_BYTES !== 0) throw new RangeError('Band energies end within a band.');
+  const view = new DataView(bytes.buffer, bytes.byteOffset, bytes.length);
   for (let at = 0; at < bytes.length; at += BAND_BYTES) {
-    const slot = bytes.readUInt8(at);
+    const slot = view.getUint8(at);
     if (slot >= BAND_SLOTS) throw new RangeError(`${slot} is not a slot of a band.`);
-    bandValidSec[slot] = bytes.readUInt32LE(at + 1);
-    bandEnergySec[slot] = bytes.readDoubleLE(at + 5);
+    bandValidSec[slot] = view.getUint32(at + 1, true);
+    bandEnergySec[slot] = view.getFloat64(at + 5, true);
   }
   return { isBandFractionMixed: false, bandEnergySec, bandValidSec };
 }

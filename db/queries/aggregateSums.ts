@@ -2,7 +2,7 @@ import { type BandFraction } from '#lib/acoustics/bands';
 import { LevelClassCounts } from '#lib/acoustics/classCounts';
 import { emptySums, type PeriodSums } from '#lib/acoustics/periodSums';
 import { ByteWriter } from '#lib/acoustics/varint';
-import { packBandEnergies, unpackBandEnergies } from './aggregatePacking';
+import { packBandEnergies, unpackBandEnergies, type BandRoom } from './aggregatePacking';
 import { type Cell } from './preparedInsert';
 
 /** The columns that quarter-hours and day periods share, except `band_energies`, in the order that `sumsOfCells` reads. */
@@ -72,8 +72,8 @@ export function instantCell(instant: Date): string {
   return instant.toISOString().slice(0, -1).replace('T', ' ');
 }
 
-/** Sums of the cells of a row; without the band columns they have no band figures. */
-export function sumsOfCells(cells: SumsCells): PeriodSums {
+/** Sums of the cells of a row; without the band columns they have no band figures. `room`: zeros to read its bands into. */
+export function sumsOfCells(cells: SumsCells, room?: BandRoom): PeriodSums {
   const [
     validSec,
     excludedSec,
@@ -89,7 +89,7 @@ export function sumsOfCells(cells: SumsCells): PeriodSums {
     bandFraction = null,
     bandEnergies,
   ] = cells;
-  const bands = bandEnergies ? unpackBandEnergies(bandEnergies) : NO_BANDS;
+  const bands = bandEnergies ? unpackBandEnergies(bandEnergies, room) : NO_BANDS;
   return {
     validSec,
     excludedSec,

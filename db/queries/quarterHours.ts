@@ -1,4 +1,5 @@
 import { type PeriodSums } from '#lib/acoustics/periodSums';
+import { bandRooms } from './aggregatePacking';
 import {
   BAND_COLUMNS,
   cellsOfSums,
@@ -49,15 +50,15 @@ export async function selectQuarterHours(
       [stationId, fromSec, toSec],
     )
     .options({ rowsAsArray: true });
-  return (rows as [number, number, number, number, ...SumsCells][]).map(
-    ([startSec, flagBits, reasonBits, lateSec, ...cells]) => ({
-      startSec,
-      flagBits,
-      reasonBits,
-      lateSec,
-      sums: sumsOfCells(cells),
-    }),
-  );
+  const found = rows as [number, number, number, number, ...SumsCells][];
+  const roomOf = bands ? bandRooms(found.length) : () => undefined;
+  return found.map(([startSec, flagBits, reasonBits, lateSec, ...cells], row) => ({
+    startSec,
+    flagBits,
+    reasonBits,
+    lateSec,
+    sums: sumsOfCells(cells, roomOf(row)),
+  }));
 }
 
 /** Beginnings of the computed quarter-hours of a station in `fromSec <= t < toSec`, ascending. */

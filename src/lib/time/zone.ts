@@ -18,7 +18,7 @@ export function isTimeZone(zone: string): boolean {
 
 /** Civil date in `zone` at an instant (epoch seconds). */
 export function localDateAt(epochSec: number, zone: string): LocalDate {
-  return DateTime.fromSeconds(epochSec, { zone }).toFormat('yyyy-MM-dd');
+  return dateOfUtc(epochSec + offsetSec(epochSec, zone));
 }
 
 /** Minutes since local midnight by the clock on the wall, 0–1439. */
@@ -29,12 +29,16 @@ export function localMinuteAt(epochSec: number, zone: string): number {
 
 /** Weekday of a civil date: 0 Monday … 6 Sunday. */
 export function weekdayOf(date: LocalDate): number {
-  return DateTime.fromISO(date, { zone: 'utc' }).weekday - 1;
+  return (new Date(`${date}T00:00:00Z`).getUTCDay() + 6) % 7;
 }
 
 /** The civil date `days` later (earlier when negative). */
 export function addDays(date: LocalDate, days: number): LocalDate {
-  return DateTime.fromISO(date, { zone: 'utc' }).plus({ days }).toFormat('yyyy-MM-dd');
+  return dateOfUtc(Date.parse(`${date}T00:00:00Z`) / 1000 + days * DAY_SEC);
+}
+
+function dateOfUtc(epochSec: number): LocalDate {
+  return new Date(epochSec * 1000).toISOString().slice(0, 10);
 }
 
 /** Every civil date from `from` until before `to`. */
@@ -63,8 +67,19 @@ export function instantAtSec(date: LocalDate, minutes: number, zone: string): nu
  * misses the hour after a change where that is far from the offsets of the time (Apia before 2011).
  */
 function offsetSec(epochSec: number, zone: string): number {
-  return IANAZone.create(zone).offset(epochSec * 1000) * 60;
+  const known = offsets.get(zone) ?? new Map<number, number>();
+  offsets.set(zone, known);
+  const remembered = known.get(epochSec);
+  if (remembered !== undefined) return remembered;
+  const offset = IANAZone.create(zone).offset(epochSec * 1000) * 60;
+  if (known.size >= MOST_OFFSETS) known.clear();
+  known.set(epochSec, offset);
+  return offset;
 }
+
+/** A page asks for the same midnights again and again, and the formatter that tells an offset is slow. */
+const offsets = new Map<string, Map<number, number>>();
+const MOST_OFFSETS = 20_000;
 
 /** Instant (epoch seconds) at which a civil date begins in `zone`. */
 export function startOfDaySec(date: LocalDate, zone: string): number {

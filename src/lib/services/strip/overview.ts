@@ -3,9 +3,8 @@ import { listSettings, pickSettings, type NetworkSettings } from '#db/queries/ne
 import { type PeriodKind } from '#lib/acoustics/dayEveningNight';
 import { type PeriodAccumulator } from '#lib/acoustics/periodStatistics';
 import { type Statistics } from '#lib/contracts/levels';
-import { type PeriodLevel } from '#lib/services/levels/days';
 import { coverageOf, type Coverage } from '#lib/services/levels/figures';
-import { poolPeriods, type PooledPeriods } from '#lib/services/levels/pooledPeriods';
+import { addEnergy, laeqDbOf, noEnergy, type EnergySums } from '#lib/services/levels/energySums';
 import { QuarterSeries } from '#lib/services/levels/quarterSeries';
 import { type Span } from '#lib/services/levels/spans';
 import { periodStatistics, type StatisticsQuery } from '#lib/services/levels/statistics';
@@ -23,10 +22,21 @@ export interface NamedLevel extends NamedPeriod, Coverage {
   laeqDb: number | null;
 }
 
+/** Many days, evenings or nights as one: their energies are pooled, never their levels averaged. */
+export interface PooledLevel {
+  /** Valid seconds against all that have elapsed. */
+  coverage: number;
+  meetsMinimum: boolean;
+  laeqDb: number | null;
+}
+
 /** A row of the table that stands beside the picture. */
 export interface TableRow extends Span, Coverage {
   laeqDb: number | null;
   lafmaxDb: number | null;
+  la10Db: number | null;
+  la50Db: number | null;
+  la90Db: number | null;
 }
 
 /** What a station's page says in figures about a period. */
@@ -35,7 +45,7 @@ export interface Overview {
   /** Each day, evening and night concerned, in order of time; empty where `pooled` is given. */
   periods: NamedLevel[];
   /** Of a period of more than three days: its days, evenings and nights, each pooled; null where there are none. */
-  pooled: { kind: PeriodKind; figures: PooledPeriods }[] | null;
+  pooled: { kind: PeriodKind; figures: PooledLevel }[] | null;
   /** Hour by hour, or day by day where that would be more than a week of hours. */
   rows: TableRow[];
   rowLength: 'hour' | 'day';
@@ -48,21 +58,26 @@ export async function stationOverview(query: OverviewQuery, conn: Connection = p
   const isPooled = query.toSec - query.fromSec >= POOLED_FROM_SEC;
   const named = isPooled ? periodsBeginningIn(query, timeline) : periodsConcerned(query, timeline);
   const source = { station, timeline, validity: 'rules' } as const;
-  const series = await QuarterSeries.read(source, spanOver([query, ...named]), conn);
-  const levels: (PeriodLevel & NamedPeriod)[] = [];
+  const [series, statistics] = await Promise.all([
+    QuarterSeries.read(source, spanOver([query, ...named]), conn),
+    periodStatistics({ ...query, timeline }, conn),
+  ]);
+  const levels: SummedLevel[] = [];
   for (const period of named) levels.push(await levelOf(period, series, timeline, nowSec));
   const { rowLength, steps } = stepsOf(query, timeline, nowSec);
   const rows: TableRow[] = [];
   for (const step of steps) rows.push(rowOf(step, await series.levels(step), timeline, nowSec));
   return {
-    statistics: await periodStatistics({ ...query, timeline }, conn),
-    periods: isPooled
-      ? []
-      : levels.map(({ levels: held, ...period }) => ({ ...period, laeqDb: held.laeqDb() })),
+    statistics,
+    periods: isPooled ? [] : levels,
     pooled: isPooled ? pooledKinds(levels, pickSettings(timeline, query.fromSec).minimumCoverage) : null,
     rows,
     rowLength,
   };
+}
+
+interface SummedLevel extends NamedLevel {
+  sums: EnergySums;
 }
 
 async function levelOf(
@@ -70,10 +85,11 @@ async function levelOf(
   series: QuarterSeries,
   timeline: NetworkSettings[],
   nowSec: number,
-): Promise<PeriodLevel & NamedPeriod> {
-  const levels = await series.levels(period);
+): Promise<SummedLevel> {
+  const sums = await series.energySums(period);
   const { minimumCoverage } = pickSettings(timeline, period.fromSec);
-  return { ...period, levels, ...coverageOf(levels.sums, period, minimumCoverage, nowSec) };
+  const coverage = coverageOf(sums, period, minimumCoverage, nowSec);
+  return { ...period, ...coverage, sums, laeqDb: laeqDbOf(sums) };
 }
 
 function rowOf(step: Span, levels: PeriodAccumulator, timeline: NetworkSettings[], nowSec: number): TableRow {
@@ -83,18 +99,33 @@ function rowOf(step: Span, levels: PeriodAccumulator, timeline: NetworkSettings[
     ...coverageOf(levels.sums, step, pickSettings(timeline, step.fromSec).minimumCoverage, nowSec),
     laeqDb: levels.laeqDb(),
     lafmaxDb: lafmaxCentiDb === null ? null : lafmaxCentiDb / 100,
+    la10Db: levels.exceedanceLevelDb(10),
+    la50Db: levels.exceedanceLevelDb(50),
+    la90Db: levels.exceedanceLevelDb(90),
   };
 }
 
 function pooledKinds(
-  levels: readonly PeriodLevel[],
+  levels: readonly SummedLevel[],
   minimumCoverage: number,
 ): NonNullable<Overview['pooled']> {
   const kinds: readonly PeriodKind[] = ['day', 'evening', 'night'];
   return kinds.flatMap((kind) => {
     const held = levels.filter((period) => period.kind === kind);
-    return held.length === 0 ? [] : [{ kind, figures: poolPeriods(held, minimumCoverage) }];
+    return held.length === 0 ? [] : [{ kind, figures: pooledLevel(held, minimumCoverage) }];
   });
+}
+
+function pooledLevel(periods: readonly SummedLevel[], minimumCoverage: number): PooledLevel {
+  const sums = noEnergy();
+  for (const period of periods) addEnergy(sums, period.sums);
+  const expectedSec = periods.reduce((sum, { seconds }) => sum + seconds.expected, 0);
+  const coverage = expectedSec === 0 ? 0 : Math.min(1, sums.validSec / expectedSec);
+  return {
+    coverage,
+    meetsMinimum: expectedSec > 0 && coverage >= minimumCoverage,
+    laeqDb: laeqDbOf(sums),
+  };
 }
 
 function spanOver(spans: readonly Span[]): Span {
