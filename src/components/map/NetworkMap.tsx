@@ -12,7 +12,7 @@ import { useStations } from './hooks/useStations';
 import { dayOf, QUARTER_SEC } from './model/day';
 import { layerMarks } from './model/layerMarks';
 import { type MapLayer } from './model/layers';
-import { stationsAsOf, withExceedances } from './model/shownStation';
+import { stationsAsOf, stationsInUse, withExceedances } from './model/shownStation';
 import { GlancePanel } from './parts/GlancePanel';
 import { LayerLists } from './parts/LayerLists';
 import { LayerSwitches } from './parts/LayerSwitches';
@@ -24,6 +24,7 @@ import { TimeControl } from './parts/TimeControl';
 export interface NetworkMapProps {
   slug: string;
   zone: string;
+  /** Retired ones too: they are on maps of the past. */
   stations: Station[];
   /** When the page was made, epoch seconds. */
   madeAtSec: number;
@@ -58,7 +59,7 @@ function NetworkAtMoment({ slug, zone, period, periodQuery, styleUrls, ...given 
   const [active, setActive] = useState<string | null>(null);
   const [chosen, setChosen] = useState<string | null>(null);
   const choice: StationChoice = { active, chosen, onActive: setActive, onChoose: setChosen };
-  const asOf = atSec === null ? live.stations : stationsAsOf(live.stations, past.data, atSec);
+  const asOf = atSec === null ? stationsInUse(live.stations) : stationsAsOf(live.stations, past.data, atSec);
   const stations = data.exceedances ? withExceedances(asOf, data.exceedances) : asOf;
   const marks = useMemo(
     () => layerMarks(data.winds, data.complaints?.places),

@@ -3,12 +3,13 @@ import type { NetworkLevels } from '#lib/contracts/networkMap';
 import type { Station } from '#lib/contracts/stations';
 import { readUrlMoment } from '#lib/time/urlMoment';
 import { dayOf, sameClockOn } from '../../../src/components/map/model/day';
-import { stationsAsOf } from '../../../src/components/map/model/shownStation';
-import { markStateOf, stationSentence } from '../../../src/components/map/model/stationWords';
+import { stationsAsOf, stationsInUse } from '../../../src/components/map/model/shownStation';
+import { markStateOf, stateLine, stationSentence } from '../../../src/components/map/model/stationWords';
 
 const ZONE = 'Europe/London';
 const sec = (text: string) => Date.parse(text) / 1000;
-const station = (code: string) => ({ code, name: code, intervalSeconds: 60, state: 'live' }) as Station;
+const station = (code: string) =>
+  ({ code, name: code, intervalSeconds: 60, state: 'live', retiredAt: null }) as Station;
 const levels: NetworkLevels = {
   from: '2026-03-17T00:00:00Z',
   to: '2026-03-17T00:30:00Z',
@@ -40,6 +41,31 @@ describe('stations as of a past quarter-hour', () => {
       ['silent', null],
       ['silent', null],
     ]);
+  });
+});
+
+describe('a retired station', () => {
+  const retired = (code: string, at: string) =>
+    ({ ...station(code), state: 'retired', retiredAt: at }) as Station;
+  const at = sec('2026-03-17T00:15:00Z');
+  const codes = (stations: Station[]) => stationsAsOf(stations, levels, at).map(({ code }) => code);
+
+  it('is on the map of a moment when it was in service, with or without data', () => {
+    expect(codes([retired('A', '2026-05-01T00:00:00Z'), retired('B', '2026-03-17T00:20:00Z')])).toEqual([
+      'A',
+      'B',
+    ]);
+    const [a] = stationsAsOf([retired('A', '2026-05-01T00:00:00Z')], levels, at);
+    expect(a && stateLine(a, ZONE, 0)).toBe('50\u00a0% valid, not enough to compare; retired since');
+  });
+
+  it('is not on maps of later moments, unless it still measured', () => {
+    expect(codes([retired('B', '2026-03-17T00:15:00Z'), retired('A', '2026-03-16T00:00:00Z')])).toEqual([
+      'A',
+    ]);
+    expect(
+      stationsInUse([retired('B', '2026-03-17T00:15:00Z'), station('A')]).map(({ code }) => code),
+    ).toEqual(['A']);
   });
 });
 

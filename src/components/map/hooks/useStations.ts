@@ -20,7 +20,7 @@ export interface Stations {
   error: Error | null;
 }
 
-/** A network's stations in use, renewed as they measure, or else every five seconds; what the page brought along until then. */
+/** A network's stations, retired ones too, renewed as they measure, or else every five seconds; what the page brought along until then. */
 export function useStations(slug: string, initial: Station[], initialAtSec: number): Stations {
   const client = useQueryClient();
   const isLive = useLive(slug, (interval) =>
@@ -36,9 +36,5 @@ export function useStations(slug: string, initial: Station[], initialAtSec: numb
     initialDataUpdatedAt: initialAtSec * 1000,
     refetchInterval: isLive ? EVERY_WHILE_LIVE_MS : EVERY_MS,
   });
-  return { stations: data.items.filter(isInUse), atSec: dataUpdatedAt / 1000, error };
-}
-
-function isInUse({ state }: Station): boolean {
-  return state !== 'retired';
+  return { stations: data.items, atSec: dataUpdatedAt / 1000, error };
 }

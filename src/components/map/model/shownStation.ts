@@ -21,7 +21,10 @@ export interface ShownStation extends Station {
   exceedances?: number;
 }
 
-/** Stations as of the quarter-hour that begins at `fromSec`; without levels, while these are being fetched, nothing is told. */
+/**
+ * Stations as of the quarter-hour that begins at `fromSec`; without levels, while these are being fetched, nothing is told. Those that
+ * had been retired by then are left out, unless they measured all the same.
+ */
 export function stationsAsOf(
   stations: readonly Station[],
   levels: NetworkLevels | undefined,
@@ -31,13 +34,14 @@ export function stationsAsOf(
   const stepSec = levels?.stepSeconds ?? 900;
   const toSec = fromSec + stepSec;
   const at = levels ? (fromSec - secondsOf(levels.from)) / stepSec : 0;
-  return stations.map((station) => {
+  return stations.flatMap((station) => {
     const held = byCode.get(station.code);
     const level = held?.LAeq[at] ?? null;
+    if (level === null && isRetiredBy(station, fromSec)) return [];
     const coverage = (held?.validSeconds[at] ?? 0) / stepSec;
     const overLimit =
       held?.exceeded.some(({ from, to }) => secondsOf(from) < toSec && secondsOf(to) > fromSec) ?? false;
-    return {
+    const shown: ShownStation = {
       ...station,
       state: level === null ? 'silent' : 'live',
       overLimit,
@@ -50,7 +54,17 @@ export function stationsAsOf(
         isKnown: levels !== undefined,
       },
     };
+    return [shown];
   });
+}
+
+/** Stations that are in use now. */
+export function stationsInUse(stations: readonly Station[]): Station[] {
+  return stations.filter(({ state }) => state !== 'retired');
+}
+
+function isRetiredBy({ retiredAt }: Station, sec: number): boolean {
+  return retiredAt !== null && secondsOf(retiredAt) <= sec;
 }
 
 function latestOf(fromSec: number, seconds: number, LAeq: number): NonNullable<Station['latest']> {

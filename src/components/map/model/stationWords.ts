@@ -23,8 +23,8 @@ export function stateLine(station: ShownStation, zone: string, nowSec: number): 
   const { past, latest } = station;
   if (!past) return stateWords(station, zone, nowSec);
   if (!past.isKnown) return 'being fetched';
-  if (!latest) return 'no valid data then';
-  return pastWords(past);
+  const words = latest ? pastWords(past) : 'no valid data then';
+  return station.retiredAt ? `${words}; retired since` : words;
 }
 
 /** The words on a slip that has no level. */

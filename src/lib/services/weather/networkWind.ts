@@ -22,19 +22,21 @@ export interface WindAt {
 /** A record older than this says nothing about an instant. */
 const MOST_AGE_SEC = 3600;
 
-/** Wind of a network at an instant (epoch seconds): of each mast, and of each station that has a sensor of its own; retired ones left out. */
+/** Wind of a network at an instant (epoch seconds): of each mast, and of each station that has a sensor of its own; those retired by then are left out. */
 export async function networkWind(
   networkId: number,
   atSec: number,
   conn: Connection = pool(),
 ): Promise<WindAt[]> {
+  const isInService = ({ retiredAt }: { retiredAt: Date | null }) =>
+    retiredAt === null || retiredAt.getTime() > atSec * 1000;
   const [masts, stations] = [await listMasts(networkId, conn), await listStations(networkId, conn)];
   const found = await Promise.all([
     ...masts
-      .filter(({ retiredAt }) => retiredAt === null)
+      .filter(isInService)
       .map(async (mast) => windAt('mast', mast, await findLastWeather(mast.id, atSec, conn), atSec)),
     ...stations
-      .filter(({ retiredAt }) => retiredAt === null)
+      .filter(isInService)
       .map(async (one) => windAt('station', one, await findStationWind(one.id, atSec, conn), atSec)),
   ]);
   return found.filter((wind) => wind !== null);
