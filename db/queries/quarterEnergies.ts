@@ -1,9 +1,10 @@
 import { pool, type Connection } from './connection';
 
-/** What A-weighted limits look at of a quarter-hour. */
+/** A-weighted energy and seconds of a quarter-hour: what levels of many periods are summed from. */
 export interface QuarterEnergy {
   startSec: number;
   validSec: number;
+  excludedSec: number;
   /** Sum over the valid seconds of 10^(LAeq/10). */
   aEnergySec: number;
   lafmaxCentiDb: number | null;
@@ -18,12 +19,18 @@ export async function selectQuarterEnergies(
 ): Promise<QuarterEnergy[]> {
   const [rows] = await conn
     .raw(
-      `SELECT starts_at, valid_sec, a_energy_sec, lafmax_centi_db FROM quarter_hours
+      `SELECT starts_at, valid_sec, excluded_sec, a_energy_sec, lafmax_centi_db FROM quarter_hours
        WHERE station_id = ? AND starts_at >= ? AND starts_at < ? ORDER BY starts_at`,
       [stationId, fromSec, toSec],
     )
     .options({ rowsAsArray: true });
-  return (rows as [number, number, number, number | null][]).map(
-    ([startSec, validSec, aEnergySec, lafmaxCentiDb]) => ({ startSec, validSec, aEnergySec, lafmaxCentiDb }),
+  return (rows as [number, number, number, number, number | null][]).map(
+    ([startSec, validSec, excludedSec, aEnergySec, lafmaxCentiDb]) => ({
+      startSec,
+      validSec,
+      excludedSec,
+      aEnergySec,
+      lafmaxCentiDb,
+    }),
   );
 }

@@ -5,7 +5,6 @@ import { type PeriodSums } from '#lib/acoustics/periodSums';
 import { QUARTER_SEC, quarterAt } from '#lib/time/quarters';
 import { assumedQuarters } from './assumedQuarters';
 import { currentQuarters } from './currentQuarters';
-import { addEnergy, noEnergy, type EnergySums } from './energySums';
 import { sumIntervals, type LevelSource } from './intervalSums';
 import { movedQuarters } from './movedQuarters';
 import { type Span } from './spans';
@@ -45,34 +44,23 @@ export class QuarterSeries {
   }
 
   /** Levels of a period within the series; ends within a quarter-hour are counted from intervals. */
-  async levels(period: Span): Promise<PeriodAccumulator> {
+  async levels({ fromSec, toSec }: Span): Promise<PeriodAccumulator> {
     const whole = new PeriodAccumulator();
-    await this.#each(period, (sums) => whole.merge({ sums }));
-    return whole;
-  }
-
-  /** What LAeq and coverage of a period are taken from: a fraction of the work of `levels`. */
-  async energySums(period: Span): Promise<EnergySums> {
-    const whole = noEnergy();
-    await this.#each(period, (sums) => addEnergy(whole, sums));
-    return whole;
-  }
-
-  async #each({ fromSec, toSec }: Span, add: (sums: PeriodSums) => void): Promise<void> {
     const firstWhole = Math.min(quarterAt(fromSec + QUARTER_SEC - 1), toSec);
     const endOfWhole = Math.max(quarterAt(toSec), firstWhole);
     for (let startSec = firstWhole; startSec < endOfWhole; startSec += QUARTER_SEC) {
       const sums = this.#quarters.get(startSec);
-      if (sums) add(sums);
+      if (sums) whole.merge({ sums });
     }
     for (const ragged of [
       { fromSec, toSec: firstWhole },
       { fromSec: endOfWhole, toSec },
     ]) {
       if (ragged.fromSec < ragged.toSec) {
-        add((await sumIntervals(this.#source, ragged, { bandClasses: false }, this.#conn)).sums);
+        whole.merge(await sumIntervals(this.#source, ragged, { bandClasses: false }, this.#conn));
       }
     }
+    return whole;
   }
 
   /** The first of the quarter-hours beginning in `fromSec <= t < toSec` that have the highest LAFmax; null when none has one. */

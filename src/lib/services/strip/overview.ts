@@ -1,13 +1,17 @@
 import { pool, type Connection } from '#db/queries/connection';
 import { listSettings, pickSettings, type NetworkSettings } from '#db/queries/networks';
 import { type PeriodKind } from '#lib/acoustics/dayEveningNight';
-import { type PeriodAccumulator } from '#lib/acoustics/periodStatistics';
 import { type Statistics } from '#lib/contracts/levels';
 import { coverageOf, type Coverage } from '#lib/services/levels/figures';
-import { addEnergy, laeqDbOf, noEnergy, type EnergySums } from '#lib/services/levels/energySums';
-import { QuarterSeries } from '#lib/services/levels/quarterSeries';
+import {
+  addEnergy,
+  EnergySeries,
+  laeqDbOf,
+  noEnergy,
+  type EnergySums,
+} from '#lib/services/levels/energySeries';
 import { type Span } from '#lib/services/levels/spans';
-import { periodStatistics, type StatisticsQuery } from '#lib/services/levels/statistics';
+import { levelOrNull, periodStatistics, type StatisticsQuery } from '#lib/services/levels/statistics';
 import { periodsBeginningIn, periodsConcerned, POOLED_FROM_SEC, type NamedPeriod } from './namedPeriods';
 import { stepsOf } from './tableSteps';
 
@@ -34,9 +38,6 @@ export interface PooledLevel {
 export interface TableRow extends Span, Coverage {
   laeqDb: number | null;
   lafmaxDb: number | null;
-  la10Db: number | null;
-  la50Db: number | null;
-  la90Db: number | null;
 }
 
 /** What a station's page says in figures about a period. */
@@ -59,14 +60,14 @@ export async function stationOverview(query: OverviewQuery, conn: Connection = p
   const named = isPooled ? periodsBeginningIn(query, timeline) : periodsConcerned(query, timeline);
   const source = { station, timeline, validity: 'rules' } as const;
   const [series, statistics] = await Promise.all([
-    QuarterSeries.read(source, spanOver([query, ...named]), conn),
+    EnergySeries.read(source, spanOver([query, ...named]), conn),
     periodStatistics({ ...query, timeline }, conn),
   ]);
   const levels: SummedLevel[] = [];
   for (const period of named) levels.push(await levelOf(period, series, timeline, nowSec));
   const { rowLength, steps } = stepsOf(query, timeline, nowSec);
   const rows: TableRow[] = [];
-  for (const step of steps) rows.push(rowOf(step, await series.levels(step), timeline, nowSec));
+  for (const step of steps) rows.push(rowOf(step, await series.sums(step), timeline, nowSec));
   return {
     statistics,
     periods: isPooled ? [] : levels,
@@ -82,26 +83,22 @@ interface SummedLevel extends NamedLevel {
 
 async function levelOf(
   period: NamedPeriod,
-  series: QuarterSeries,
+  series: EnergySeries,
   timeline: NetworkSettings[],
   nowSec: number,
 ): Promise<SummedLevel> {
-  const sums = await series.energySums(period);
+  const sums = await series.sums(period);
   const { minimumCoverage } = pickSettings(timeline, period.fromSec);
   const coverage = coverageOf(sums, period, minimumCoverage, nowSec);
   return { ...period, ...coverage, sums, laeqDb: laeqDbOf(sums) };
 }
 
-function rowOf(step: Span, levels: PeriodAccumulator, timeline: NetworkSettings[], nowSec: number): TableRow {
-  const { lafmaxCentiDb } = levels.sums;
+function rowOf(step: Span, sums: EnergySums, timeline: NetworkSettings[], nowSec: number): TableRow {
   return {
     ...step,
-    ...coverageOf(levels.sums, step, pickSettings(timeline, step.fromSec).minimumCoverage, nowSec),
-    laeqDb: levels.laeqDb(),
-    lafmaxDb: lafmaxCentiDb === null ? null : lafmaxCentiDb / 100,
-    la10Db: levels.exceedanceLevelDb(10),
-    la50Db: levels.exceedanceLevelDb(50),
-    la90Db: levels.exceedanceLevelDb(90),
+    ...coverageOf(sums, step, pickSettings(timeline, step.fromSec).minimumCoverage, nowSec),
+    laeqDb: laeqDbOf(sums),
+    lafmaxDb: levelOrNull(sums.lafmaxCentiDb),
   };
 }
 
