@@ -42,15 +42,21 @@ export async function findSealedPerson(
 }
 
 /**
- * Destroys the key and every ciphertext of a complaint's personal data: of its replies, of what the resident added and of the
- * attached file too. Not to be undone.
+ * Destroys the key and every ciphertext of a complaint's personal data: of its replies, their letters and an answer being written,
+ * of what the resident answered or added and of the attached file too. Not to be undone.
  */
 export async function destroyPersonalData(complaintId: number, conn: Connection): Promise<void> {
   await conn('complaint_keys').where({ complaint_id: complaintId }).delete();
   await conn('complaint_private').where({ complaint_id: complaintId }).delete();
   await conn('complaint_additions').where({ complaint_id: complaintId }).delete();
   await conn('complaint_attachments').where({ complaint_id: complaintId }).delete();
-  await conn('complaint_replies')
-    .where({ complaint_id: complaintId })
-    .update({ ciphertext: Buffer.alloc(0) });
+  await conn('complaint_letters').where({ complaint_id: complaintId }).delete();
+  await conn('complaint_answers')
+    .where({ open_complaint_id: complaintId })
+    .update({ state: 'withdrawn', updated_at: new Date() });
+  for (const table of ['complaint_replies', 'complaint_answers', 'complaint_received']) {
+    await conn(table)
+      .where({ complaint_id: complaintId })
+      .update({ ciphertext: Buffer.alloc(0) });
+  }
 }

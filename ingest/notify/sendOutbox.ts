@@ -11,6 +11,11 @@ export interface MailBody {
   subject: string;
   text: string;
   html: string;
+  /** Where an answer goes; left out: to the sender. One address, whatever characters it holds. */
+  replyTo?: { name: string; address: string };
+  /** Message-IDs of earlier messages to the same person about the same thing. */
+  references?: string[];
+  attachments?: { filename: string; content: Buffer; contentType: string }[];
 }
 
 export interface SenderSettings {

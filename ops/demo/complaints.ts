@@ -1,9 +1,8 @@
 import { db } from '#db/client';
 import type { NetworkRow, NetworkSettings } from '#db/queries/networks';
 import { answerCase } from '#lib/services/complaints/answerCase';
-import { draftReply } from '#lib/services/complaints/letter/draftReply';
+import { STANDARD_LETTER } from '#lib/services/complaints/letter/draftReply';
 import { logComplaint } from '#lib/services/complaints/logComplaint';
-import { openCase } from '#lib/services/complaints/openCase';
 import { addDays, instantAtSec, localDateAt } from '#lib/time/zone';
 import { DEMO_COMPLAINTS, type DemoComplaint } from './complaintTexts';
 import type { DemoStation } from './stations';
@@ -39,6 +38,7 @@ async function seedComplaint(desk: Desk, complaint: DemoComplaint, nowSec: numbe
       kind: complaint.kind,
       ...homeNear(desk.stations, complaint),
       station: null,
+      area: null,
       words: complaint.words,
       contact: {
         name: complaint.name,
@@ -54,7 +54,7 @@ async function seedComplaint(desk: Desk, complaint: DemoComplaint, nowSec: numbe
   await row.clone().update({ created_at: loggedAt });
   if (!complaint.isAnswered) return;
   const answeredAt = new Date(loggedAt.getTime() + 3 * DAY_MS);
-  await answer(desk, outcome.reference, complaint, answeredAt);
+  await answer(desk, outcome.reference, answeredAt);
   await row.clone().update({ answered_at: answeredAt });
 }
 
@@ -69,26 +69,8 @@ function homeNear(stations: DemoStation[], { station: code, daysAgo }: DemoCompl
   };
 }
 
-async function answer(desk: Desk, reference: string, complaint: DemoComplaint, at: Date): Promise<void> {
-  const { network, settings, liaisonId } = desk;
-  const reader = { userId: liaisonId, mayReadPersonalData: true, network, settings };
-  const opened = await openCase(reader, reference, at);
-  if (!opened) throw new Error(`${reference} cannot be opened.`);
-  const text = draftReply({
-    reference,
-    networkName: network.name,
-    kind: complaint.kind,
-    recipientName: complaint.name,
-    signedBy: 'Tobias Liaison',
-    evidence: opened.evidence,
-    whereabouts: opened.whereabouts,
-  });
-  const outcome = await answerCase(
-    liaisonId,
-    network,
-    reference,
-    { text, figuresDigest: null, repliesSoFar: null },
-    at,
-  );
+async function answer(desk: Desk, reference: string, at: Date): Promise<void> {
+  const letter = { text: STANDARD_LETTER, items: null, figuresDigest: null, repliesSoFar: null };
+  const outcome = await answerCase(desk.liaisonId, desk.network, reference, letter, at);
   if (outcome.kind !== 'sent') throw new Error(`${reference} was not answered: ${outcome.kind}.`);
 }

@@ -32,10 +32,11 @@ export const CLOSING_WORDS: Readonly<Record<ClosingReason, string>> = {
 };
 
 export const DELIVERY_WORDS: Readonly<Record<Reply['delivery'], string>> = {
-  waiting: 'e-mail waiting to be sent',
-  sent: 'sent by e-mail',
+  waiting: 'e-mail queued',
+  sent: 'e-mail handed to the mail server',
   dead: 'e-mail could not be delivered',
   letter: 'letter to print and post',
+  posted: 'letter, posted',
 };
 
 /** Where a complaint stands, with how long it is overdue: `Open, overdue by 3 days`. `today` is a civil date. */

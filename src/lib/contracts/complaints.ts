@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import { emailAddress, instant, localDate } from './common';
 import { evidenceSchema } from './complaintEvidence';
+import { packItemsSchema } from './evidencePack';
 import { registerRoute } from './registry';
 
 /** What a noise sounds like, from a list; own words are personal data and stand apart. */
@@ -72,6 +73,12 @@ export const newComplaintSchema = z
     latitude: latitude.nullable().default(null),
     longitude: longitude.nullable().default(null),
     station: z.string().max(32).nullable().default(null),
+    area: z
+      .string()
+      .max(80)
+      .nullable()
+      .default(null)
+      .describe('Of the areas of the residents’ form; its station is the nearest one where no coordinates are given'),
     words: z.string().trim().max(4000, 'must have at most 4000 characters').default(''),
     contact: contactSchema.prefault({}),
   })
@@ -91,8 +98,9 @@ export const newComplaintSchema = z
         'must be given together with the other one',
       );
     }
-    if (complaint.latitude === null && complaint.longitude === null && complaint.station === null) {
-      issue('station', 'must be chosen where no coordinates are given');
+    const hasPlace = complaint.latitude !== null || complaint.longitude !== null;
+    if (!hasPlace && complaint.station === null && complaint.area === null) {
+      issue('station', 'must be chosen where neither coordinates nor an area are given');
     }
   });
 export type NewComplaint = z.output<typeof newComplaintSchema>;
@@ -109,8 +117,11 @@ export const complaintSchema = z.object({
   isOverdue: z.boolean(),
   coarsePlace: coordinatesSchema
     .nullable()
-    .describe('Rounded to 0.01 degree; null where only a station was named'),
+    .describe('Rounded to the step of the desk’s settings; null where only a station or an area was named'),
   nearestStation: z.string().nullable(),
+  area: z.string().nullable().describe('Of the areas of the residents’ form, where one was chosen'),
+  assignedTo: z.string().nullable().describe('Name of the person who answers it'),
+  mergedInto: z.string().nullable().describe('Reference of the complaint that this one repeats'),
   createdAt: z.string(),
   answeredAt: z.string().nullable(),
   closedAt: z.string().nullable(),
@@ -132,13 +143,27 @@ export const personalDataSchema = z.object({
 });
 export type PersonalData = z.output<typeof personalDataSchema>;
 
-/** How a reply leaves: `email` by the outbox, `letter` printed and posted where there is no address. */
-export const REPLY_STATES = ['waiting', 'sent', 'dead', 'letter'] as const;
+/** How a reply leaves: by the outbox (the first three), or on paper where there is no address. */
+export const REPLY_STATES = ['waiting', 'sent', 'dead', 'letter', 'posted'] as const;
 
 export const replySchema = z.object({
+  id: z.number().int(),
   sentAt: z.string(),
   sentBy: z.string(),
-  delivery: z.enum(REPLY_STATES).describe('State of the e-mail; "letter": printed and posted'),
+  approvedBy: z.string().nullable().describe('The second person, where one approved it'),
+  delivery: z
+    .enum(REPLY_STATES)
+    .describe(
+      '"waiting": queued; "sent": handed to the mail server; "dead": given up; "letter": to be printed and posted; "posted": so it was',
+    ),
+  deliveredAt: z.string().nullable().describe('When it was handed to the mail server'),
+  attempts: z.number().int().nullable(),
+  failure: z.string().nullable().describe('Why the last attempt failed, without an address'),
+  postedOn: localDate.nullable(),
+  items: packItemsSchema
+    .nullable()
+    .describe('Items of the evidence that went with it; null: sent before there was a choice'),
+  hasPdf: z.boolean(),
   text: z.string().nullable().optional().describe('Left out for those who may not read it; null once erased'),
   figures: evidenceSchema,
 });
@@ -159,7 +184,14 @@ export const newReplySchema = z.object({
     .trim()
     .min(1, 'must not be empty')
     .max(20_000, 'must have at most 20,000 characters')
-    .transform((text) => text.replaceAll('\r\n', '\n')),
+    .transform((text) => text.replaceAll('\r\n', '\n'))
+    .describe(
+      'May have fields such as {{laeq}}, which are filled in from the figures; levels are never typed',
+    ),
+  items: packItemsSchema
+    .nullable()
+    .default(null)
+    .describe('Items of the evidence that go along; null: the usual ones'),
   figuresDigest: z
     .string()
     .nullable()
@@ -227,4 +259,25 @@ registerRoute({
   summary: 'Send the reply (liaison): e-mailed, and kept with the figures it carries',
   request: { params: z.object({ network, reference: z.string() }), body: body(newReplySchema) },
   responses: { 201: answer('The reply as kept', z.object({ reply: replySchema })) },
+});
+const pdf = (description: string) => ({
+  description,
+  content: { 'application/pdf': { schema: z.string().describe('PDF') } },
+});
+registerRoute({
+  access: 'person',
+  method: 'get',
+  path: `${base}/{reference}/replies/{id}/letter`,
+  summary: 'A reply as it was sent, with its evidence (liaison); every look is audited',
+  request: { params: z.object({ network, reference: z.string(), id: z.string() }) },
+  responses: { 200: pdf('The letter') },
+});
+registerRoute({
+  access: 'person',
+  method: 'get',
+  path: `${base}/{reference}/answer`,
+  summary:
+    'The answer that is being written, exactly as it would be sent now (liaison); every look is audited',
+  request: { params: z.object({ network, reference: z.string() }) },
+  responses: { 200: pdf('The letter') },
 });

@@ -35,6 +35,18 @@ export function download(body: BodyInit, contentType: string, fileName: string):
   });
 }
 
+/** A PDF to read in the browser and to print, never kept in a cache: it may name a person. */
+export function pdfToRead(bytes: Uint8Array, fileName: string): Response {
+  return new Response(new Uint8Array(bytes), {
+    headers: {
+      'Content-Type': 'application/pdf',
+      'Content-Disposition': `inline; filename="${fileName.replace(/[^\w.-]/g, '_')}"`,
+      'Cache-Control': 'private, no-store',
+      'X-Content-Type-Options': 'nosniff',
+    },
+  });
+}
+
 /** CSV text (RFC 4180, UTF-8) to download. */
 export function csv(text: string, fileName: string): Response {
   return download(text, 'text/csv; charset=utf-8; header=present', fileName);

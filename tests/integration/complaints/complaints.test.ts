@@ -328,7 +328,7 @@ describe('evidence and reply', () => {
   test('a reply is kept with its figures, its e-mail waits without a name, and the complaint is answered', async () => {
     const { reference } = await log();
     const { evidence } = (await get(reference, sessions.liaison)) as { evidence: { digest: string } };
-    const text = 'Dear Ada Wren,\n\nIt was 57.4 dB(A) <there>.';
+    const text = 'Dear {{name}},\n\nIt was {{laeq}} <there>.\n\n{{measured}} {{limits}} {{second-station}}';
     const sent = await answer(reference, { text, figuresDigest: evidence.digest, repliesSoFar: 0 });
     expect(sent.status).toBe(201);
     expect(await sent.json()).toMatchObject({ reply: { delivery: 'waiting', figures: evidence } });
@@ -345,12 +345,15 @@ describe('evidence and reply', () => {
       html_body: null,
       state: 'waiting',
     });
-    expect(mail.message_id).toMatch(/^<[\w.-]+@[\w.-]+>$/);
+    expect(mail.message_id).toMatch(new RegExp(`^<${reference}\\.${reply.id}\\.[\\w-]+@[\\w.-]+>$`));
     expect(await resolveComplaintReply(reply.id)).toMatchObject({
       to: 'ada@wren.example',
       subject: `Your noise report ${reference}`,
-      text,
+      text: expect.stringMatching(
+        /^Dear Ada Wren,\n\nIt was 57\.4 dB\(A\) <there>\.\n\nOur nearest station, Station MER-04/,
+      ),
       html: expect.stringContaining('It was 57.4 dB(A) &lt;there&gt;.'),
+      attachments: [{ filename: `${reference}.pdf`, contentType: 'application/pdf' }],
     });
     const everything = await wholeDatabase();
     for (const secret of SECRETS) expect(everything.includes(secret), secret).toBe(false);

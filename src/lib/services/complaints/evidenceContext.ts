@@ -61,10 +61,15 @@ export async function evidenceContext(source: ContextSource): Promise<EvidenceCo
 }
 
 function limitsOf({ inForce, exceedances }: ContextSource): EvidenceContext['limits'] {
-  return inForce.map(({ limitId: _, ...shown }) => ({
-    ...shown,
+  return inForce.map(({ limit, metric, threshold, unit, windows, windowCount }) => ({
+    limit,
+    metric,
+    threshold,
+    unit,
+    windows,
+    windowCount,
     isExceeded: exceedances.some(
-      ({ limit, metric, state }) => state === 'standing' && limit === shown.limit && metric === shown.metric,
+      (one) => one.state === 'standing' && one.limit === limit && one.metric === metric,
     ),
   }));
 }

@@ -8,6 +8,7 @@ import type { Addition } from '../reports/additions';
 import { gatherEvidence } from './evidence';
 import type { Whereabouts } from './letter/measured';
 import { readPersonalData } from './readPersonalData';
+import type { FiledAnswer } from './received/listFiled';
 import { complaintView, replyView } from './view';
 
 export interface CaseReader {
@@ -27,6 +28,8 @@ export interface ComplaintCase {
   person: PersonalData | null | undefined;
   /** What the resident wrote after the report; empty for a reader who may not see it. */
   additions: Addition[];
+  /** What came back in answer to a reply; empty for a reader who may not see it. */
+  received: FiledAnswer[];
   /** Stations seen from the resident, by code; empty where the exact place is unknown or not the reader's to see. */
   whereabouts: Record<string, Whereabouts>;
 }
@@ -60,6 +63,7 @@ export async function openCase(
     })),
     person,
     additions: file?.additions ?? [],
+    received: file?.received ?? [],
     whereabouts,
   };
 }

@@ -14,9 +14,11 @@ const TAG_BYTES = 16;
 const HEAD_BYTES = 1 + NONCE_BYTES + TAG_BYTES;
 
 /** What sealed bytes are for. */
-type Purpose = 'key' | 'person' | 'reply' | 'addition' | 'attachment';
+type Purpose = 'key' | ValuePurpose | FilePurpose;
+/** What is sealed as bytes: what a resident sent, or a letter's PDF. */
+type FilePurpose = 'attachment' | 'letter';
 /** What is sealed as JSON. */
-type ValuePurpose = 'person' | 'reply' | 'addition';
+type ValuePurpose = 'person' | 'reply' | 'addition' | 'answer' | 'received' | 'note';
 
 /** Sealed bytes that do not open: another key in the settings, or changed bytes. */
 export class PersonalDataUnreadable extends Error {
@@ -53,14 +55,24 @@ export function openValue(
   return JSON.parse(open(unwrap(wrappedKey, complaintId), complaintId, purpose, sealed).toString('utf8'));
 }
 
-/** Seals an attached file under a complaint's wrapped key. @throws {PersonalDataUnreadable} */
-export function sealFile(wrappedKey: Buffer, complaintId: number, bytes: Buffer): Buffer {
-  return seal(unwrap(wrappedKey, complaintId), complaintId, 'attachment', bytes);
+/** Seals a file under a complaint's wrapped key. @throws {PersonalDataUnreadable} */
+export function sealFile(
+  wrappedKey: Buffer,
+  complaintId: number,
+  bytes: Buffer,
+  purpose: FilePurpose = 'attachment',
+): Buffer {
+  return seal(unwrap(wrappedKey, complaintId), complaintId, purpose, bytes);
 }
 
 /** The file that `sealFile` sealed. @throws {PersonalDataUnreadable} */
-export function openFile(wrappedKey: Buffer, complaintId: number, sealed: Buffer): Buffer {
-  return open(unwrap(wrappedKey, complaintId), complaintId, 'attachment', sealed);
+export function openFile(
+  wrappedKey: Buffer,
+  complaintId: number,
+  sealed: Buffer,
+  purpose: FilePurpose = 'attachment',
+): Buffer {
+  return open(unwrap(wrappedKey, complaintId), complaintId, purpose, sealed);
 }
 
 function unwrap(wrappedKey: Buffer, complaintId: number): Buffer {

@@ -5,6 +5,7 @@ import type { ComplaintRow } from '#db/queries/complaints';
 import { inTransaction, type Connection } from '#db/queries/connection';
 import { personalDataSchema, type PersonalData } from '#lib/contracts/complaints';
 import { listAdditions, type Addition } from '../reports/additions';
+import { listFiled, type FiledAnswer } from './received/listFiled';
 import { openValue } from './personalData';
 import { filledFields } from './personalFields';
 import { openReply } from './replyMessage';
@@ -15,6 +16,8 @@ export interface PersonalFile {
   letters: ReadonlyMap<number, string>;
   /** What the resident wrote after the report. */
   additions: Addition[];
+  /** What came back in answer to a reply. */
+  received: FiledAnswer[];
 }
 
 /**
@@ -31,6 +34,7 @@ export async function readPersonalData(
     const sealed = await listSealedReplies(complaint.id, transaction);
     const letters = new Map(sealed.map((reply) => [reply.id, openReply(reply).text]));
     const additions = await listAdditions(complaint.id, transaction);
+    const received = await listFiled(complaint.id, transaction);
     await appendAudit(
       {
         userId,
@@ -42,12 +46,13 @@ export async function readPersonalData(
             ...filledFields(person),
             ...(letters.size > 0 ? ['letters'] : []),
             ...(additions.length > 0 ? ['additions'] : []),
+            ...(received.length > 0 ? ['received'] : []),
           ],
         },
       },
       transaction,
     );
-    return { person, letters, additions };
+    return { person, letters, additions, received };
   });
 }
 

@@ -18,6 +18,9 @@ export function complaintView(row: ComplaintRow, today: LocalDate): Complaint {
     isOverdue: row.status === 'open' && row.dueOn < today,
     coarsePlace: latitude === null || longitude === null ? null : { latitude, longitude },
     nearestStation: row.nearestStationCode,
+    area: row.area,
+    assignedTo: row.assignedToName,
+    mergedInto: row.mergedInto,
     createdAt: row.createdAt.toISOString(),
     answeredAt: row.answeredAt?.toISOString() ?? null,
     closedAt: row.closedAt?.toISOString() ?? null,
@@ -28,9 +31,17 @@ export function complaintView(row: ComplaintRow, today: LocalDate): Complaint {
 /** A reply without its text, which is personal: when, by whom, how, and on which figures. */
 export function replyView(row: ReplyRow): Reply {
   return {
+    id: row.id,
     sentAt: row.createdAt.toISOString(),
     sentBy: row.sentBy,
-    delivery: row.mailState ?? 'letter',
+    approvedBy: row.approvedBy,
+    delivery: row.mailState ?? (row.postedOn === null ? 'letter' : 'posted'),
+    deliveredAt: row.mailSentAt?.toISOString() ?? null,
+    attempts: row.mailAttempts,
+    failure: row.mailState === 'sent' ? null : row.mailError,
+    postedOn: row.postedOn,
+    items: row.items,
+    hasPdf: row.hasPdf,
     figures: row.figures,
   };
 }

@@ -33,6 +33,11 @@ export function windTowards(from: Place, to: Place): Wind {
   return WINDS[eighth % 8] ?? 'north';
 }
 
+/** The wind of a name; null for any other text. */
+export function windNamed(name: string | null): Wind | null {
+  return WINDS.find((wind) => wind === name) ?? null;
+}
+
 /** The initial bearing of `to` from `from` along the great circle, degrees clockwise of north, 0 to 360. */
 export function bearingDeg(from: Place, to: Place): number {
   const [latA, latB] = [radians(from.latitude), radians(to.latitude)];

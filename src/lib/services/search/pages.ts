@@ -25,6 +25,7 @@ export const FINDABLE_PAGES: readonly FindablePage[] = [
   { label: 'This spectrum elsewhere', terms: 'alike shape find sound', path: 'spectra/search' },
   { label: 'Complaints', terms: 'residents cases reply', path: 'complaints' },
   { label: 'Log a complaint', terms: 'new add resident', path: 'complaints/new', roles: LIAISON },
+  { label: 'Letters', terms: 'templates answers approval reply', path: 'complaints/letters', roles: LIAISON },
   { label: 'Residents’ form', terms: 'report public complaint', path: 'complaints/form', roles: LIAISON },
   { label: 'Summaries', terms: 'monthly report months pdf', path: 'summaries' },
   { label: 'Limits', terms: 'thresholds', path: 'limits' },

@@ -4,7 +4,7 @@ import { weekdaysInWords } from './times';
 import { differenceInWords, levelInWords, numberInWords } from './words';
 
 /** Fewer comparable weeks than this say nothing about what is usual. Our own rule. */
-const FEWEST_WEEKS = 3;
+export const FEWEST_WEEKS = 3;
 
 /** The level of the window against the same weekday and hours of the weeks before, at that place. */
 export function comparedParagraph(laeqDb: number, usual: Usual, fromSec: number, zone: string): string {

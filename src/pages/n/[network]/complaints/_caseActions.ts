@@ -1,8 +1,12 @@
 import { fieldErrors, typedFields, type FieldErrors } from '#components/complaints/complaintForm.ts';
 import type { NetworkAccess } from '#lib/auth/networkAccess';
-import { CLOSING_REASONS, contactSchema, newReplySchema } from '#lib/contracts/complaints';
-import { answerCase, UNSENT_REASONS } from '#lib/services/complaints/answerCase';
+import { localDate } from '#lib/contracts/common';
+import { CLOSING_REASONS, contactSchema } from '#lib/contracts/complaints';
+import type { Decision } from '#lib/services/complaints/answer/decideAnswer';
 import { closeByReference, correctByReference, eraseByReference } from '#lib/services/complaints/caseActs';
+import { notePosted, resendReply } from '#lib/services/complaints/deliverReply';
+import { fileMessage, noteReceived, withdrawFiled } from '#lib/services/complaints/received/fileReceived';
+import { parseUrlInstant } from '#lib/time/urlPeriod';
 
 const CONTACT_FIELDS = ['name', 'email', 'phone', 'address'] as const;
 export type TypedContact = Record<(typeof CONTACT_FIELDS)[number], string>;
@@ -11,7 +15,6 @@ export type TypedContact = Record<(typeof CONTACT_FIELDS)[number], string>;
 export type ActionOutcome =
   | { kind: 'done' }
   | { kind: 'unknown' }
-  | { kind: 'reply-refused'; message: string; text: string; figuresChanged: boolean }
   | { kind: 'contact-refused'; typed: TypedContact; errors: FieldErrors }
   | { kind: 'refused'; message: string };
 
@@ -21,10 +24,17 @@ export async function actOnCase(
   userId: string,
   network: NetworkAccess['network'],
   reference: string,
+  zone: string,
 ): Promise<ActionOutcome> {
   switch (form.get('action')) {
-    case 'reply':
-      return reply(form, userId, network, reference);
+    case 'resend':
+    case 'posted':
+    case 'not-posted':
+      return deliver(form, userId, network, reference);
+    case 'received-message':
+    case 'received-note':
+    case 'received-withdraw':
+      return receive(form, { userId, network, reference }, zone);
     case 'contact':
       return correct(form, userId, network, reference);
     case 'close':
@@ -36,27 +46,36 @@ export async function actOnCase(
   }
 }
 
-async function reply(
+function deliver(
   form: FormData,
   userId: string,
   network: NetworkAccess['network'],
   reference: string,
-): Promise<ActionOutcome> {
-  const { text, figuresDigest, repliesSoFar } = typedFields(form, ['text', 'figuresDigest', 'repliesSoFar']);
-  const parsed = newReplySchema.safeParse({ text, figuresDigest, repliesSoFar: Number(repliesSoFar) });
-  if (!parsed.success) {
-    const message = parsed.error.issues[0]?.message ?? 'could not be read';
-    return { kind: 'reply-refused', message: `The letter ${message}`, text, figuresChanged: false };
+): Promise<Decision> {
+  const act = { userId, network, reference, replyId: Number(form.get('reply')) };
+  if (form.get('action') === 'resend') return resendReply(act, new Date());
+  if (form.get('action') === 'not-posted') return notePosted(act, null);
+  const on = localDate.safeParse(form.get('on'));
+  if (on.success) return notePosted(act, on.data);
+  return Promise.resolve({ kind: 'refused', message: 'Say on which date it was posted. Nothing was noted.' });
+}
+
+async function receive(
+  form: FormData,
+  who: { userId: string; network: NetworkAccess['network']; reference: string },
+  zone: string,
+): Promise<Decision> {
+  if (form.get('action') === 'received-withdraw') return withdrawFiled(who, Number(form.get('received')));
+  if (form.get('action') === 'received-note') {
+    const { note, at } = typedFields(form, ['note', 'at']);
+    const sec = parseUrlInstant(at, zone);
+    return noteReceived(who, note, new Date((sec ?? NaN) * 1000), new Date());
   }
-  const outcome = await answerCase(userId, network, reference, parsed.data, new Date());
-  if (outcome.kind === 'sent') return { kind: 'done' };
-  if (outcome.kind === 'unknown') return outcome;
-  return {
-    kind: 'reply-refused',
-    message: UNSENT_REASONS[outcome.kind],
-    text,
-    figuresChanged: outcome.kind === 'figures-changed',
-  };
+  const file = form.get('message');
+  if (!(file instanceof File) || file.size === 0) {
+    return { kind: 'refused', message: 'No file was chosen. Nothing was filed.' };
+  }
+  return fileMessage(who, Buffer.from(await file.arrayBuffer()));
 }
 
 async function correct(

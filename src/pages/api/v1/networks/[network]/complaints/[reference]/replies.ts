@@ -4,7 +4,7 @@ import { readJson } from '#lib/http/parse';
 import { notFound, Problem } from '#lib/http/problem';
 import { json } from '#lib/http/respond';
 import { route } from '#lib/http/route';
-import { answerCase, UNSENT_REASONS } from '#lib/services/complaints/answerCase';
+import { answerCase, unsentReason } from '#lib/services/complaints/answerCase';
 
 export const POST = route(async (context) => {
   const { user, network } = await requireNetwork(context, context.params['network'], ['liaison']);
@@ -12,7 +12,8 @@ export const POST = route(async (context) => {
   const outcome = await answerCase(user.id, network, context.params['reference'] ?? '', reply, new Date());
   if (outcome.kind === 'unknown') throw notFound('The network has no complaint with this reference.');
   if (outcome.kind !== 'sent') {
-    throw new Problem(409, outcome.kind, 'The reply was not sent', UNSENT_REASONS[outcome.kind]);
+    const status = outcome.kind === 'text-refused' ? 422 : 409;
+    throw new Problem(status, outcome.kind, 'The reply was not sent', unsentReason(outcome));
   }
   return json({ reply: outcome.reply }, { status: 201 });
 });
