@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { INVALIDITY_REASONS } from '../acoustics/validity';
 import { calibrationSchema } from './calibrations';
 import { CAUSES } from './exceedances';
 import { LIMIT_UNITS } from './limitMetrics';
@@ -23,7 +24,10 @@ export const packedSpectrogramSchema = z
 export type PackedSpectrogram = z.output<typeof packedSpectrogramSchema>;
 
 export const documentTonalitySchema = z.object({
-  notAssessable: z.string().nullable().describe('Why the mean spectrum says nothing about tones'),
+  notAssessable: z
+    .enum(['no-data', 'octave-bands', 'no-neighbours', 'averaged-too-short'])
+    .nullable()
+    .describe('Why the mean spectrum says nothing about tones'),
   tones: z
     .array(
       z.object({
@@ -70,7 +74,7 @@ export const exclusionEffectSchema = z.object({
     .array(z.object({ from: z.string(), to: z.string(), reason: z.string() }))
     .describe('Standing exclusions by an operator that touch the month'),
   leftOut: z
-    .array(z.object({ reason: z.string(), seconds: z.number().int() }))
+    .array(z.object({ reason: z.enum(INVALIDITY_REASONS), seconds: z.number().int() }))
     .describe('Time measured and left out, by reason; an interval may have several'),
   figures: z
     .array(

@@ -37,7 +37,7 @@ export type Uncertainties = z.output<typeof uncertaintiesSchema>;
 /** What the uncertainty of a month’s LAeq is made of. */
 export const uncertaintyTermsSchema = z.object({
   instrument: z.number().describe('Standard uncertainty of the instrument’s class, dB'),
-  basis: z.string().describe('What that rests on, in words'),
+  basis: z.enum(['class-1', 'class-2', 'class-1-assumed']).describe('assumed: no instrument is on record'),
   drift: z.number().describe('Largest drift that the calibration checks show, dB'),
   driftKnown: z.enum(['both', 'before', 'after', 'none']).describe('On which sides checks enclose the month'),
   gaps: z.number().nullable().describe('Of missing data, assuming that gaps fall at random, dB'),

@@ -19,6 +19,7 @@ export interface PeriodInstruments {
   uncertaintyDb: number;
   /** What that rests on: "class 2", "class 1 assumed". */
   basis: string;
+  basisKind: 'class-1' | 'class-2' | 'class-1-assumed';
   /** How far they may have been off, by their checks. */
   drift: PeriodDrift;
 }
@@ -38,6 +39,7 @@ export async function instrumentsOf({
       words,
       uncertaintyDb: CLASS_1_UNCERTAINTY_DB,
       basis: 'class 1 assumed, none is on record',
+      basisKind: 'class-1-assumed',
       drift,
     };
   }
@@ -46,6 +48,7 @@ export async function instrumentsOf({
     words: isWhole(period, instruments) ? words : `${words}; for a part of the period none is on record`,
     uncertaintyDb: isClass2 ? CLASS_2_UNCERTAINTY_DB : CLASS_1_UNCERTAINTY_DB,
     basis: isClass2 ? 'class 2' : 'class 1',
+    basisKind: isClass2 ? 'class-2' : 'class-1',
     drift,
   };
 }

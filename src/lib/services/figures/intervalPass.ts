@@ -125,8 +125,7 @@ class Tally {
   }
 }
 
-/** Why intervals are left out, in words. */
-export const REASON_WORDS: Record<InvalidityReason, string> = {
+const REASON_WORDS: Record<InvalidityReason, string> = {
   calibration: 'calibration',
   selfcheck: 'self-check',
   overload: 'overload',

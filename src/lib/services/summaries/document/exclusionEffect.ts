@@ -3,7 +3,6 @@ import { PeriodAccumulator } from '#lib/acoustics/periodStatistics';
 import { COMPARED, type ExclusionEffect } from '#lib/contracts/monthEvidence';
 import { type DocumentFigures } from '#lib/contracts/monthFigures';
 import { datesBetween } from '#lib/time/zone';
-import { REASON_WORDS } from '../../figures/intervalPass';
 import { datePeriods, settingsOfDate } from '../../levels/datePeriods';
 import { type QuarterSeries } from '../../levels/quarterSeries';
 import { levelOrNull } from '../../levels/statistics';
@@ -38,10 +37,7 @@ export async function exclusionEffect(
       .filter(({ withdrawal }) => withdrawal === null)
       .map(({ from, to, reason }) => ({ from, to, reason }))
       .reverse(),
-    leftOut: reasonsInOrder(leftOutSec).map(([reason, seconds]) => ({
-      reason: REASON_WORDS[reason],
-      seconds,
-    })),
+    leftOut: reasonsInOrder(leftOutSec).map(([reason, seconds]) => ({ reason, seconds })),
     figures: COMPARED.map((quantity) => {
       const valid = figures[quantity];
       const difference = valid === null || all[quantity] === null ? null : valid - all[quantity];

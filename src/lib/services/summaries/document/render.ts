@@ -1,5 +1,10 @@
 import { type MonthDocument } from '#lib/contracts/monthDocument';
 import { type SummaryTemplate } from '#lib/contracts/summaryTemplate';
+import { csvZip } from './csvFiles';
+import { renderPdf, methodSentences } from './pdf/renderPdf';
+import { topicTables } from './tables/topics';
+import { wordsOf } from './words/words';
+import { workbook, type Facts } from './workbook';
 
 /** A network’s mark as it was uploaded. */
 export interface SummaryMark {
@@ -23,6 +28,9 @@ export interface RenderContext {
   verifyUrl?: string | null;
 }
 
+export const FILE_FORMATS = ['pdf', 'xlsx', 'csv', 'json'] as const;
+export type FileFormat = (typeof FILE_FORMATS)[number];
+
 /** A finished file of a month. */
 export interface RenderedFile {
   name: string;
@@ -30,24 +38,83 @@ export interface RenderedFile {
   bytes: Uint8Array;
 }
 
-/** A month’s files, all written from the one document. */
-export async function renderFiles(doc: MonthDocument, context: RenderContext): Promise<RenderedFile[]> {
-  return Promise.resolve([renderJson(doc, context)]);
+/** A month’s files, all written from the one document. `formats` in the order wanted; all of them when left out. */
+export async function renderFiles(
+  doc: MonthDocument,
+  context: RenderContext,
+  formats: readonly FileFormat[] = FILE_FORMATS,
+): Promise<RenderedFile[]> {
+  const files: RenderedFile[] = [];
+  for (const format of formats) files.push(await RENDERERS[format](doc, context));
+  return files;
 }
 
 /** File name of a month: `merrow-2026-03-r2.pdf`, `merrow-2026-03-draft.pdf`. */
 export function fileName(
-  { network, month }: MonthDocument,
+  { network, month }: Pick<MonthDocument, 'network' | 'month'>,
   { revision }: Pick<RenderContext, 'revision'>,
   ending: string,
 ): string {
   return `${network.slug}-${month}-${revision === null ? 'draft' : `r${revision}`}.${ending}`;
 }
 
-function renderJson(doc: MonthDocument, context: RenderContext): RenderedFile {
-  return {
-    name: fileName(doc, context, 'json'),
-    mediaType: 'application/json',
-    bytes: Buffer.from(`${JSON.stringify(doc)}\n`),
-  };
+type Renderer = (doc: MonthDocument, context: RenderContext) => Promise<RenderedFile>;
+
+const RENDERERS: Record<FileFormat, Renderer> = {
+  pdf: async (doc, context) => ({
+    name: fileName(doc, context, 'pdf'),
+    mediaType: 'application/pdf',
+    bytes: await renderPdf(doc, context),
+  }),
+  xlsx: async (doc, context) => ({
+    name: fileName(doc, context, 'xlsx'),
+    mediaType: 'application/vnd.openxmlformats-officedocument.spreadsheetml.sheet',
+    bytes: await workbook(doc, topicTables(doc), factsOf(doc, context), paragraphsOf(doc, context)),
+  }),
+  csv: (doc, context) =>
+    Promise.resolve({
+      name: fileName(doc, context, 'csv.zip'),
+      mediaType: 'application/zip',
+      bytes: csvZip(doc, topicTables(doc)),
+    }),
+  json: (doc, context) =>
+    Promise.resolve({
+      name: fileName(doc, context, 'json'),
+      mediaType: 'application/json',
+      bytes: Buffer.from(`${JSON.stringify(doc)}\n`),
+    }),
+};
+
+function factsOf(
+  doc: MonthDocument,
+  { revision, issuedBy, seal, chainHead, verifyUrl }: RenderContext,
+): Facts {
+  return [
+    ['network', `${doc.network.name} (${doc.network.slug})`],
+    ['month', doc.month],
+    ['state', revision === null ? 'draft, not issued' : `issued, revision ${revision}`],
+    ...(issuedBy ? [['issued by', `${issuedBy.name}, ${issuedBy.at}`] as const] : []),
+    ['computed', doc.generatedAt],
+    ['to date', doc.isToDate ? 'yes: the month, or its last night, is not over' : 'no'],
+    ['from', doc.from],
+    ['to', doc.to],
+    ['nights to', doc.nightsTo],
+    ['time zone', doc.timeZone],
+    ['levels', 'dB re 20 µPa, unrounded in the cells; times are UTC, dates local'],
+    ['form', doc.form],
+    ...(seal
+      ? ([
+          ['data SHA-256', seal.dataSha256],
+          ['software', seal.softwareVersion],
+          ...(seal.publicKey === null ? [] : [['public key', seal.publicKey] as const]),
+        ] as const)
+      : []),
+    ...(chainHead ? [['audit chain', `${chainHead.position}, ${chainHead.sha256}`] as const] : []),
+    ...(verifyUrl ? [['verify at', verifyUrl] as const] : []),
+  ];
+}
+
+function paragraphsOf(doc: MonthDocument, { template }: RenderContext): string[] {
+  const words = wordsOf(template.language);
+  return [...methodSentences(doc, words), ...words.cautions];
 }

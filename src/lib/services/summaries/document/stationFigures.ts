@@ -61,7 +61,7 @@ export function documentFigures(
     U: uncertainties(evidence, { clock, kinds, ldenDb: month.ldenDb }, ground),
     uncertainty: {
       instrument: instruments.uncertaintyDb,
-      basis: instruments.basis,
+      basis: instruments.basisKind,
       drift: instruments.drift.driftDb,
       driftKnown: instruments.drift.known,
       gaps: gapsOf(hours, clock.spans, clock.coverage),

@@ -3,7 +3,6 @@ import { lowFrequencyIndicator, LOW_FREQUENCY_BOUND_DB } from '#lib/acoustics/lo
 import { PeriodAccumulator } from '#lib/acoustics/periodStatistics';
 import { assessTonality, surveyTones, thirdsTenthsOfDb } from '#lib/acoustics/tonality';
 import { type DocumentLowFrequency, type DocumentTonality } from '#lib/contracts/monthEvidence';
-import { notAssessableWords } from '#lib/format/tones';
 import { QUARTER_SEC } from '#lib/time/quarters';
 import { fractionOf, stationBands } from '../../figures/stationBands';
 import { type MonthEvidence } from './evidence';
@@ -46,12 +45,12 @@ function meanTones(
   month: PeriodAccumulator,
 ): Pick<DocumentTonality, 'notAssessable' | 'tones'> {
   if (month.sums.validSec === 0) {
-    return { notAssessable: 'There are no valid data in this month.', tones: [] };
+    return { notAssessable: 'no-data', tones: [] };
   }
   const bands = stationBands(station, month);
   const levelsDb = bands.map(({ index }) => month.bandLeqDb(index));
   const found = assessTonality(fractionOf(station, month), levelsDb, bands, month.sums.validSec);
-  if (found.kind === 'not-assessable') return { notAssessable: notAssessableWords(found.reason), tones: [] };
+  if (found.kind === 'not-assessable') return { notAssessable: found.reason, tones: [] };
   const tones = found.findings.flatMap(({ method, lowerIndex, upperIndex, excessTenths, thresholdTenths }) =>
     method === 'averaged-neighbours'
       ? []
