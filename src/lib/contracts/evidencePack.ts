@@ -61,6 +61,7 @@ export const elsewhereSchema = z.object({
   ),
   count: z.number().int(),
   isComplete: z.boolean(),
+  isSearched: z.boolean(),
   note: z.string().nullable(),
 });
 export type Elsewhere = z.output<typeof elsewhereSchema>;

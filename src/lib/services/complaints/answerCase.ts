@@ -7,6 +7,7 @@ import { findUserById } from '#db/queries/users';
 import type { NewReply, Reply } from '#lib/contracts/complaints';
 import { USUAL_ITEMS } from './answer/items';
 import { letterText, pdfOf, replyAddressOf } from './answer/makeLetter';
+import { findElsewhere } from './pack/findElsewhere';
 import { gatherPack } from './pack/gatherPack';
 import { openPersonalData } from './readPersonalData';
 import { sendReply, type Unsent } from './sendReply';
@@ -31,10 +32,11 @@ export async function answerCase(
   const [person, user] = await Promise.all([openPersonalData(complaint.id, pool()), findUserById(userId)]);
   if (!person) return { kind: 'erased' };
   const nowSec = Math.floor(now.getTime() / 1000);
-  const pack = await gatherPack({ network, complaint, place: person.place, nowSec });
-  if (reply.figuresDigest !== null && reply.figuresDigest !== pack.evidence.digest)
+  const gathered = await gatherPack({ network, complaint, place: person.place, nowSec });
+  if (reply.figuresDigest !== null && reply.figuresDigest !== gathered.evidence.digest)
     return { kind: 'figures-changed' };
   const items = reply.items ?? [...USUAL_ITEMS];
+  const pack = { ...gathered, elsewhere: await findElsewhere(complaint, items, nowSec) };
   const source = { network, complaint, person, body: reply.text, items, pack, signedBy: user?.name ?? '' };
   const letter = letterText(source);
   if (!letter.isReady) return { kind: 'text-refused', problems: letter.problems };

@@ -69,7 +69,7 @@ export async function openAnswerDesk(
   if (!file || !sealed) return null;
   const { person } = file;
   const nowSec = Math.floor(now.getTime() / 1000);
-  const [pack, kept, templates, settings, repliesSoFar] = await Promise.all([
+  const [gathered, kept, templates, settings, repliesSoFar] = await Promise.all([
     gatherPack({ network, complaint, place: person.place, nowSec }),
     findOpenAnswer(complaint.id),
     offeredTemplates(network.id),
@@ -78,7 +78,9 @@ export async function openAnswerDesk(
   ]);
   const template = templates.find(({ id }) => id === chosen) ?? templates[0];
   const isFresh = !kept || (chosen !== null && kept.state === 'draft');
-  const body = isFresh ? (template?.body ?? '') : openAnswer(sealed.wrappedKey, kept);
+  const content = kept ? openAnswer(sealed.wrappedKey, kept) : null;
+  const body = isFresh ? (template?.body ?? '') : (content?.body ?? '');
+  const pack = { ...gathered, elsewhere: content?.elsewhere ?? null };
   const items = kept?.items ?? USUAL_ITEMS;
   const author = await findUserById(kept?.author ?? userId);
   const signedBy = author?.name ?? '';

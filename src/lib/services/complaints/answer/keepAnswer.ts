@@ -1,10 +1,11 @@
 import { appendAudit } from '#db/queries/audit';
 import { findOpenAnswer, insertAnswer, rewriteAnswer } from '#db/queries/complaintAnswers';
 import { findSealedPerson } from '#db/queries/complaintPrivate';
-import { lockComplaint } from '#db/queries/complaints';
+import { findComplaint, lockComplaint } from '#db/queries/complaints';
 import { inTransaction } from '#db/queries/connection';
 import type { NetworkRow } from '#db/queries/networks';
 import type { PackItem } from '#lib/contracts/evidencePack';
+import { findElsewhere } from '../pack/findElsewhere';
 import { sealAnswer } from './keptAnswer';
 
 /** What a person keeps of an answer. */
@@ -26,13 +27,19 @@ export type KeepOutcome =
   | { kind: 'erased' }
   | { kind: 'unknown' };
 
-/** Keeps an answer that is being written, whether or not it may be sent as it is. */
+/**
+ * Keeps an answer that is being written, whether or not it may be sent as it is. Where the same spectrum on other dates was chosen, it is
+ * looked for now, which takes some seconds.
+ */
 export async function keepAnswer(
   userId: string,
   network: NetworkRow,
   reference: string,
   entry: AnswerEntry,
 ): Promise<KeepOutcome> {
+  const asked = await findComplaint(network.id, reference);
+  if (!asked) return { kind: 'unknown' };
+  const elsewhere = await findElsewhere(asked, entry.items, Math.floor(Date.now() / 1000));
   return inTransaction(async (transaction) => {
     const complaint = await lockComplaint(network.id, reference, transaction);
     if (!complaint) return { kind: 'unknown' };
@@ -44,7 +51,7 @@ export async function keepAnswer(
     if ((before?.revision ?? 0) !== entry.revision) return { kind: 'changed-meanwhile' };
     const kept = {
       complaintId: complaint.id,
-      ciphertext: sealAnswer(sealed.wrappedKey, complaint.id, entry.body),
+      ciphertext: sealAnswer(sealed.wrappedKey, complaint.id, { body: entry.body, elsewhere }),
       items: entry.items,
       templateVersionId: entry.templateVersionId,
       author: userId,

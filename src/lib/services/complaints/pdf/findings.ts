@@ -87,7 +87,10 @@ export function elsewhereSection(elsewhere: Elsewhere | null, timeZone: string):
   if (!elsewhere) {
     return [heading('The same spectrum otherwise'), paragraph('It has not been looked for.')];
   }
-  const { spells, count, since, until, isComplete, note } = elsewhere;
+  const { spells, count, since, until, isComplete, isSearched, note } = elsewhere;
+  if (!isSearched) {
+    return [heading('The same spectrum otherwise'), paragraph(`It could not be looked for. ${note ?? ''}`)];
+  }
   const searched = `${formatInstant(instantSec(since), timeZone)} to ${formatInstant(instantSec(until), timeZone)}`;
   const found = spells
     .slice(0, MOST_SPELLS)
