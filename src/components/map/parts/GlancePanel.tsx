@@ -1,9 +1,11 @@
-import { useEffect, useRef } from 'react';
+import { Fragment, useEffect, useRef } from 'react';
+import { NO_LEVEL_CENTI_DB } from '#lib/acoustics/levelRange';
 import { formatLevelDb } from '#lib/format/levels';
-import { formatInstant } from '#lib/format/times';
+import { formatClock, formatInstant } from '#lib/format/times';
 import { urlInstant } from '#lib/time/urlPeriod';
 import { HeadroomLines } from '../../headroom/HeadroomLines';
 import { Descriptor } from '../../ui/Descriptor';
+import { FoldedTable } from '../../ui/FoldedTable';
 import { Level } from '../../ui/Level';
 import { useLastDay, type LastDay } from '../hooks/useLastDay';
 import { type ShownStation } from '../model/shownStation';
@@ -120,6 +122,29 @@ function DayAtAGlance({ day, zone, name, when }: DayAtAGlanceProps) {
         zone={zone}
         summary={`${name}, ${when}: LAeq of quarter-hours, ${formatLevelDb(LAeq)} dB over all.`}
       />
+      <FoldedTable
+        label="The quarter-hours as a table"
+        columns={[
+          'From',
+          <Fragment key="LAeq">
+            <Descriptor name="LAeq" window="15 min" /> dB
+          </Fragment>,
+        ]}
+        rows={quarterRows(day, zone)}
+      />
     </>
   );
+}
+
+function quarterRows({ columns, toSec }: LastDay, zone: string) {
+  return Array.from(columns.laeqCentiDb, (centiDb, at) => ({
+    fromSec: columns.fromSec + at * columns.stepSec,
+    levelDb: centiDb === NO_LEVEL_CENTI_DB ? null : centiDb / 100,
+  }))
+    .filter(({ fromSec }) => fromSec < toSec)
+    .map(({ fromSec, levelDb }) => ({
+      key: String(fromSec),
+      heading: formatClock(fromSec, zone),
+      cells: [formatLevelDb(levelDb)],
+    }));
 }

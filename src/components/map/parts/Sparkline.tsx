@@ -53,7 +53,13 @@ export function Sparkline({ day, zone, summary }: SparklineProps) {
         ))}
       <path d={linePath(steps, y)} fill="none" className="stroke-ink" strokeWidth="1.3" />
       {timeTicks(day, 170, zone).map(({ sec, label, kind }) => (
-        <text key={sec} x={x(sec)} y={HEIGHT + 15} textAnchor="middle" className="fill-ink-soft text-[12px]">
+        <text
+          key={sec}
+          x={x(sec)}
+          y={HEIGHT + 15}
+          textAnchor={x(sec) > WIDTH - 16 ? 'end' : 'middle'}
+          className="fill-ink-soft text-[12px]"
+        >
           {kind === 'day' ? label.slice(0, 3) : label}
         </text>
       ))}

@@ -2,25 +2,34 @@ import { NO_LEVEL_CENTI_DB } from '#lib/acoustics/levelRange';
 import { type PixelColumns } from '../model/pixelColumns';
 import { type Surface } from './surface';
 
-/** LA90 to LA10 as a shaded band with LA50 as a line in it, a step a block of time; within the trace, in device pixels. */
-export function drawPercentiles(
+/** LA90 to LA10 as a shaded band, a step a block of time; within the trace, in device pixels. */
+export function drawPercentileBand(
   { context, palette, ratio }: Surface,
   pixels: PixelColumns,
-  yOf: (levelDb: number) => number,
+  yOf: YOf,
 ): void {
-  for (const step of stepsOf(pixels)) {
-    const width = step.toPx - step.fromPx;
-    const top = yOf(step.la10 / 100);
-    context.fillStyle = palette.percentiles;
-    context.fillRect(step.fromPx, top, width, Math.max(ratio, yOf(step.la90 / 100) - top));
-  }
-  // Apart from the band, so that a drawing in vectors can join equal rectangles.
-  context.fillStyle = palette.reed;
-  for (const step of stepsOf(pixels)) {
-    const thickPx = 1.5 * ratio;
-    context.fillRect(step.fromPx, yOf(step.la50 / 100) - thickPx / 2, step.toPx - step.fromPx, thickPx);
+  context.fillStyle = palette.percentiles;
+  for (const { fromPx, toPx, la10, la90 } of stepsOf(pixels)) {
+    const top = yOf(la10 / 100);
+    context.fillRect(fromPx, top, toPx - fromPx, Math.max(ratio, yOf(la90 / 100) - top));
   }
 }
+
+/** LA50 as steps over everything else, in a halo of paper, for it lies where the line of LAeq is densest. */
+export function drawMedian({ context, palette, ratio }: Surface, pixels: PixelColumns, yOf: YOf): void {
+  const steps = stepsOf(pixels);
+  for (const [colour, thickPx] of [
+    [palette.paper, 3.5 * ratio],
+    [palette.reed, 1.75 * ratio],
+  ] as const) {
+    context.fillStyle = colour;
+    for (const { fromPx, toPx, la50 } of steps) {
+      context.fillRect(fromPx, yOf(la50 / 100) - thickPx / 2, toPx - fromPx, thickPx);
+    }
+  }
+}
+
+type YOf = (levelDb: number) => number;
 
 interface Step {
   fromPx: number;

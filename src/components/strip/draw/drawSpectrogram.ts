@@ -36,12 +36,17 @@ export function drawSpectrogram(
   }
 }
 
+/** What levels are painted into before they are drawn; one for all, since each is drawn at once. */
+let scratch: HTMLCanvasElement | undefined;
+
 function spectrogramImage(pixels: PixelColumns, colouring: Colouring): HTMLCanvasElement | null {
   if (pixels.bands.length === 0) return null;
-  const image = document.createElement('canvas');
-  image.width = pixels.widthPx;
-  image.height = pixels.bands.length;
-  const context = image.getContext('2d');
+  scratch ??= document.createElement('canvas');
+  const image = scratch;
+  // Setting a size, even the same one, makes a canvas anew.
+  if (image.width !== pixels.widthPx) image.width = pixels.widthPx;
+  if (image.height !== pixels.bands.length) image.height = pixels.bands.length;
+  const context = image.getContext('2d', { willReadFrequently: true });
   if (!context) return null;
   const data = context.createImageData(image.width, image.height);
   paintSpectrogram(pixels, colouring, data.data);

@@ -1,5 +1,5 @@
 import { NO_LEVEL_CENTI_DB } from '#lib/acoustics/levelRange';
-import { drawPercentiles } from './drawPercentiles';
+import { drawMedian, drawPercentileBand } from './drawPercentiles';
 import { levelTicks, pxOfLevel, type LevelRange } from '../model/levelAxis';
 import { type PixelColumns } from '../model/pixelColumns';
 import { type Run } from '../model/runs';
@@ -17,7 +17,7 @@ export interface TracePicture {
   elapsedPx: number;
 }
 
-/** LAeq as a line of ink (its range where a pixel spans several columns) on a light envelope up to LAFmax, over LA90 to LA10. */
+/** LAeq as a line of ink (its range where a pixel spans several columns) on a light envelope up to LAFmax; LA90 to LA10 behind it, LA50 before it. */
 export function drawTrace(surface: Surface, geometry: StripGeometry, picture: TracePicture): void {
   const { palette, context, ratio } = surface;
   const { x, y, width, height } = geometry.trace;
@@ -34,8 +34,9 @@ export function drawTrace(surface: Surface, geometry: StripGeometry, picture: Tr
     hatchGaps(surface, pixels, picture.elapsedPx, device.height);
     const yOf = (db: number) => pxOfLevel(range, device.height, db);
     drawEnvelope(surface, pixels, yOf);
-    drawPercentiles(surface, pixels, yOf);
+    drawPercentileBand(surface, pixels, yOf);
     drawLine(surface, pixels, yOf);
+    drawMedian(surface, pixels, yOf);
   });
 }
 

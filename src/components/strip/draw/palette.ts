@@ -39,7 +39,7 @@ const SOURCES: Record<keyof Palette, string> = {
   plate: 'color-mix(in oklab, var(--color-paper) 82%, transparent)',
   wash: 'color-mix(in oklab, var(--color-ochre) 16%, transparent)',
   envelope: 'color-mix(in oklab, var(--color-ink) 24%, transparent)',
-  percentiles: 'color-mix(in oklab, var(--color-reed) 30%, transparent)',
+  percentiles: 'color-mix(in oklab, var(--color-reed) 38%, transparent)',
 };
 
 /** Reads the theme's tokens where they hold: on an element of the page. */

@@ -1,25 +1,20 @@
 import { bandByNominalHz } from '#lib/acoustics/bands';
-import { formatInstantUtc } from '#lib/contracts/instants';
 import { decodeSpectrogram, type SpectrogramColumns } from '#lib/contracts/spectrogramBinary';
+import { COLUMNS_HEADERS, columnsUrl } from '../model/columnsRequest';
 import { type StripColumns } from '../model/stripColumns';
 import { type Tile } from '../model/tiles';
+import { takeEarlyAnswer } from './earlyAnswers';
 import { fetchAnswer } from './fetchJson';
 
 /** A tile's columns from the server. @throws {ServerRefusal} */
 export async function fetchColumns(
   stationUrl: string,
   tile: Tile,
-  columns: number,
   signal: AbortSignal,
 ): Promise<StripColumns> {
-  const query = new URLSearchParams({
-    from: formatInstantUtc(tile.fromSec),
-    to: formatInstantUtc(tile.toSec),
-    columns: String(columns),
-    percentiles: 'A',
-  });
-  const headers = { Accept: 'application/octet-stream' };
-  const answer = await fetchAnswer(`${stationUrl}/spectrogram?${query.toString()}`, { signal, headers });
+  const url = columnsUrl(stationUrl, tile);
+  const answer =
+    (await takeEarlyAnswer(url)) ?? (await fetchAnswer(url, { signal, headers: COLUMNS_HEADERS }));
   return columnsOf(decodeSpectrogram(await answer.arrayBuffer()));
 }
 

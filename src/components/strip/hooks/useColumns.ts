@@ -1,6 +1,6 @@
 import { useQueries, useQueryClient, type UseQueryOptions } from '@tanstack/react-query';
 import { endOfColumnsSec, type StripColumns } from '../model/stripColumns';
-import { TILE_COLUMNS, tilesFor, type Tile } from '../model/tiles';
+import { tilesFor, tilesInView, type Tile } from '../model/tiles';
 import { spanSec, type TimeView } from '../model/timeView';
 import { fetchColumns } from './fetchColumns';
 
@@ -33,9 +33,18 @@ export function useColumns({ stationUrl, view, intervalSec, nowSec, isTold }: Co
   const client = useQueryClient();
   const everyMs = isTold ? TOLD_EVERY_MS : LIVE_EVERY_MS;
   const tiles = tilesFor(view, intervalSec, nowSec);
-  const wanted = useQueries({ queries: tiles.map((tile) => tileQuery(stationUrl, tile, nowSec, everyMs)) });
+  const inView = tilesInView(tiles, view);
+  const queryOf = (tile: Tile) => tileQuery(stationUrl, tile, nowSec, everyMs);
+  const wanted = useQueries({ queries: inView.map(queryOf) });
+  const isLoading = wanted.some((query) => query.isLoading);
+  // What a pan would show waits until what is looked at is there.
+  const margins = useQueries({
+    queries: tiles
+      .filter((tile) => !inView.includes(tile))
+      .map((tile) => ({ ...queryOf(tile), enabled: !isLoading })),
+  });
   const stepSec = tiles[0]?.stepSec;
-  const fresh = wanted.flatMap(({ data }) => data ?? []);
+  const fresh = [...wanted, ...margins].flatMap(({ data }) => data ?? []);
   const older = client
     .getQueriesData<StripColumns>({ queryKey: ['columns', stationUrl] })
     .flatMap(([, columns]) => columns ?? [])
@@ -43,7 +52,7 @@ export function useColumns({ stationUrl, view, intervalSec, nowSec, isTold }: Co
     .sort((a, b) => a.stepSec - b.stepSec);
   return {
     layers: [...fresh, ...older].slice(0, MOST_LAYERS),
-    isLoading: wanted.some((query) => query.isLoading),
+    isLoading,
     error: wanted.find((query) => query.error)?.error ?? null,
     retry: () => wanted.filter((query) => query.error).forEach((query) => void query.refetch()),
   };
@@ -59,7 +68,7 @@ function tileQuery(
   const isLive = tile.toSec > nowSec - 3600;
   return {
     queryKey: ['columns', stationUrl, tile.stepSec, tile.fromSec],
-    queryFn: ({ signal }) => fetchColumns(stationUrl, tile, TILE_COLUMNS, signal),
+    queryFn: ({ signal }) => fetchColumns(stationUrl, tile, signal),
     staleTime: isLive ? LIVE_EVERY_MS : KEEP_MS,
     gcTime: KEEP_MS,
     refetchInterval: isLive ? everyMs : false,

@@ -4,13 +4,14 @@ import { estimateFigures } from '../model/estimate';
 import { type Selection } from '../model/selection';
 import { figuresOfEstimate, figuresOfStatistics, type SlipFigures } from '../model/slipFigures';
 import { type StripColumns } from '../model/stripColumns';
+import type { Statistics } from '#lib/contracts/levels';
 import type { UsualLevels } from '#lib/contracts/usual';
 import { useDebounced } from './useDebounced';
 import { useStatistics } from './useStatistics';
 import { useUsual } from './useUsual';
 
 /** Time that a view must stand still before the server is asked for its figures. What a person marked is asked for when let go. */
-const SETTLE_MS = 250;
+const SETTLE_MS = 150;
 
 interface SlipInput {
   stationUrl: string;
@@ -23,6 +24,8 @@ interface SlipInput {
   fraction: BandFraction;
   intervalSec: number;
   nowSec: number;
+  /** Figures that came with the page. */
+  known: Statistics | undefined;
 }
 
 export interface SlipState {
@@ -37,7 +40,7 @@ export function useSlipFigures(input: SlipInput): SlipState {
   const { fromSec, toSec } = selection;
   const settled = useDebounced(`${fromSec}/${toSec}`, SETTLE_MS);
   const isSettled = input.isSettled && (input.isMarked || settled === `${fromSec}/${toSec}`);
-  const statistics = useStatistics(stationUrl, { fromSec, toSec }, isSettled, nowSec);
+  const statistics = useStatistics(stationUrl, { fromSec, toSec }, isSettled, nowSec, input.known);
   const usual = useUsual(stationUrl, { fromSec, toSec }, isSettled && input.isMarked);
   const estimate = useMemo(
     () => estimateFigures(layers, { fromSec, toSec }, intervalSec, nowSec),

@@ -9,6 +9,7 @@ import { type TimeView } from '../model/timeView';
 import { shifted, type Track } from '../model/track';
 import { stationUrlOf } from './stationUrl';
 import { useColumns, type Columns } from './useColumns';
+import { useDebounced } from './useDebounced';
 import { useLevels, type Display, type Levels } from './useLevels';
 import { usePicture } from './usePicture';
 import { type Theme } from './useTheme';
@@ -44,6 +45,9 @@ export function useTrackLevels({ station, shiftSec, limits }: Track, setting: St
   return { view, columns, levels: useLevels(columns.layers, display, limits) };
 }
 
+/** Time that a picture must stand still before it is put into words. */
+const SUMMARY_MS = 200;
+
 /** A strip's picture, and what it shows in a sentence. */
 export interface TrackPicture {
   picture: StripPicture;
@@ -70,6 +74,8 @@ export function useTrackPicture(
     nowSec,
     gapWords,
   });
-  const summary = useMemo(() => stripSummary(station.name, picture), [station.name, picture]);
+  // Nobody is told of what passes by in a gesture.
+  const settled = useDebounced(picture, SUMMARY_MS);
+  const summary = useMemo(() => stripSummary(station.name, settled), [station.name, settled]);
   return { picture, summary };
 }

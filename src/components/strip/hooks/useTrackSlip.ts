@@ -3,8 +3,12 @@ import { type Interaction } from '../model/interaction';
 import { type Selection } from '../model/selection';
 import { shifted, type Track } from '../model/track';
 import { stationUrlOf } from './stationUrl';
+import { useDebounced } from './useDebounced';
 import { useSlipFigures, type SlipState } from './useSlipFigures';
 import { type StripSetting, type TrackLevels } from './useTrack';
+
+/** Time that a view must stand still before the slip is of it. */
+const FOLLOW_MS = 100;
 
 /** What a strip's reading slip is of, and its figures. */
 export interface TrackSlip {
@@ -15,12 +19,13 @@ export interface TrackSlip {
 
 /** The figures of what is marked on the axis, or of all that it shows, for one strip. */
 export function useTrackSlip(
-  { station, shiftSec }: Track,
+  { station, shiftSec, statistics }: Track,
   { levels }: TrackLevels,
   { selection: marked, anchor }: Interaction,
   { slug, view, display, nowSec }: StripSetting,
 ): TrackSlip {
-  const { fromSec, toSec } = view;
+  // Figures of all that is shown follow once it stands still: in a gesture they would take the time of the picture.
+  const { fromSec, toSec } = useDebounced(view, FOLLOW_MS);
   const selection = useMemo((): Selection => {
     const whole = { fromSec: Math.floor(fromSec), toSec: Math.ceil(toSec), bands: null };
     return shifted(marked ?? whole, shiftSec);
@@ -34,6 +39,7 @@ export function useTrackSlip(
     fraction: display.fraction,
     intervalSec: station.intervalSec,
     nowSec,
+    known: statistics,
   });
   return { selection, state };
 }

@@ -41,8 +41,16 @@ const leftOutBy =
   (columns, at) =>
     ((columns.reasonBits[at] ?? 0) & mask) !== 0;
 
+const isWindy = leftOutBy(WIND);
+const isRainy = leftOutBy(RAIN);
+const isLeftOutOtherwise = leftOutBy(OTHERWISE);
+const isMissing: Holds = (columns, at) => columns.presentSec[at] === 0;
+const isThere: Holds = (columns, at) => (columns.presentSec[at] ?? 0) > 0;
+const isLate: Holds = (columns, at) => (columns.lateSec[at] ?? 0) > 0;
+const isLeftOut: Holds = (columns, at) => (columns.reasonBits[at] ?? 0) !== 0;
+
 const isRainThatCounts: Holds = (columns, at) =>
-  ((columns.flagBits[at] ?? 0) & FLAGS.rain) !== 0 && !leftOutBy(RAIN)(columns, at);
+  ((columns.flagBits[at] ?? 0) & FLAGS.rain) !== 0 && !isRainy(columns, at);
 
 /**
  * The validity strip's rows over a view; where layers overlap the first one counts. `nowSec`: what has not happened yet is no
@@ -53,38 +61,46 @@ export function lanesOf(layers: readonly StripColumns[], view: TimeView, nowSec:
   const find = (kind: LaneRunKind, holds: Holds): LaneRun[] =>
     collect(parts, holds).map((run) => ({ ...run, kind }));
   const elapsed = { fromSec: view.fromSec, toSec: nowSec };
-  const missing = find('missing', (columns, at) => columns.presentSec[at] === 0);
+  const missing = find('missing', isMissing);
   return [
     {
       key: 'data',
       label: 'data',
-      runs: [
-        ...find('data', (columns, at) => (columns.presentSec[at] ?? 0) > 0),
-        ...missing.flatMap((run) => toElapsed(run, elapsed)),
-      ],
+      runs: [...find('data', isThere), ...missing.flatMap((run) => toElapsed(run, elapsed))],
     },
-    { key: 'left-out', label: 'left out', runs: find('left-out', leftOutBy(OTHERWISE)) },
-    { key: 'wind', label: 'wind', runs: find('left-out', leftOutBy(WIND)) },
+    { key: 'left-out', label: 'left out', runs: find('left-out', isLeftOutOtherwise) },
+    { key: 'wind', label: 'wind', runs: find('left-out', isWindy) },
     {
       key: 'rain',
       label: 'rain',
-      runs: [...find('noted', isRainThatCounts), ...find('left-out', leftOutBy(RAIN))],
+      runs: [...find('noted', isRainThatCounts), ...find('left-out', isRainy)],
     },
-    { key: 'late', label: 'late', runs: find('noted', (columns, at) => (columns.lateSec[at] ?? 0) > 0) },
+    { key: 'late', label: 'late', runs: find('noted', isLate) },
   ];
 }
 
 /** Stretches with data that do not count, for whatever reason. */
 export function leftOutRuns(layers: readonly StripColumns[], view: TimeView): Run[] {
-  return collect(visibleParts(layers, view), (columns, at) => (columns.reasonBits[at] ?? 0) !== 0);
+  return collect(visibleParts(layers, view), isLeftOut);
 }
 
 function collect(parts: readonly VisiblePart[], holds: Holds): Run[] {
   return joinRuns(
     parts.flatMap(({ columns, within }) =>
-      runsWhere(columns, (at) => holds(columns, at)).flatMap((run) => clipRun(run, within) ?? []),
+      runsOf(columns, holds).flatMap((run) => clipRun(run, within) ?? []),
     ),
   );
+}
+
+const known = new WeakMap<StripColumns, Map<Holds, Run[]>>();
+
+/** Runs of a whole layer, found once: a picture in motion asks for them every frame. */
+function runsOf(columns: StripColumns, holds: Holds): Run[] {
+  const ofColumns = known.get(columns) ?? new Map<Holds, Run[]>();
+  known.set(columns, ofColumns);
+  const runs = ofColumns.get(holds) ?? runsWhere(columns, (at) => holds(columns, at));
+  ofColumns.set(holds, runs);
+  return runs;
 }
 
 function toElapsed(run: LaneRun, elapsed: Run): LaneRun[] {

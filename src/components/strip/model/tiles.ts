@@ -40,6 +40,11 @@ export function tilesFor(view: TimeView, intervalSec: number, latestSec: number)
   return tiles;
 }
 
+/** Of tiles, those that hold something of the view; the others are its margins. */
+export function tilesInView(tiles: readonly Tile[], view: TimeView): Tile[] {
+  return tiles.filter((tile) => tile.fromSec < view.toSec && view.fromSec < tile.toSec);
+}
+
 function stepFor(mostSec: number, intervalSec: number): number {
   const steps = ladderOf(intervalSec);
   return steps.filter((step) => step <= mostSec).at(-1) ?? steps[0] ?? intervalSec;

@@ -1,4 +1,5 @@
 import { type Band, type BandFraction } from '#lib/acoustics/bands';
+import type { Statistics } from '#lib/contracts/levels';
 import { type StripComplaint } from './complaintMarks';
 import { type Corner } from './dragSelection';
 import { type StripExceedance } from './exceedanceMarks';
@@ -14,6 +15,8 @@ export interface Track {
   limits: StripLimit[];
   exceedances: StripExceedance[];
   complaints: StripComplaint[];
+  /** Figures of the page's whole period, where they came with the page. */
+  statistics?: Statistics;
 }
 
 /** A stretch of time moved later by some seconds, with whatever else it holds. */

@@ -46,7 +46,7 @@ export const Legend = memo(function Legend({ range, weighting, theme, stepSec, b
       </span>
       {blockSec !== null && (
         <span className="flex items-center gap-1.5">
-          <span aria-hidden="true" className="flex h-2.5 w-4 items-center bg-reed/30">
+          <span aria-hidden="true" className="flex h-2.5 w-4 items-center bg-reed/38">
             <span className="h-0.5 w-full bg-reed" />
           </span>
           <span>

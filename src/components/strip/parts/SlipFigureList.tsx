@@ -48,6 +48,7 @@ export function SlipFigureList({ figures, marked, bands, usual, ...props }: Slip
             </>
           }
           value={`${formatLevelDb(figures?.la10Db)} / ${formatLevelDb(figures?.la90Db)}`}
+          isTall
         />
         {bands && (
           <Row
@@ -128,11 +129,13 @@ interface RowProps {
   value: string;
   unit?: string;
   difference?: ReactNode;
+  /** Keeps the place of a second line of the term. */
+  isTall?: boolean;
 }
 
-function Row({ term, value, unit = 'dB', difference = null }: RowProps) {
+function Row({ term, value, unit = 'dB', difference = null, isTall = false }: RowProps) {
   return (
-    <div className="flex items-baseline border-b border-line py-1">
+    <div className={`flex items-baseline border-b border-line py-1 ${isTall ? 'min-h-[3.4em]' : ''}`}>
       <dt className="grow">{term}</dt>
       <dd>{value}</dd>
       <dd className={unit ? 'w-13 pl-1.5 text-ink-soft' : 'w-0'}>{unit}</dd>

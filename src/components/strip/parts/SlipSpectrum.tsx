@@ -5,6 +5,8 @@ import { isTone, standingOutWords } from '#lib/format/standingOut';
 import type { UsualLevels } from '#lib/contracts/usual';
 import { notAssessableWords, toneWords } from '#lib/format/tones';
 import { SpectrumBars } from '../../spectrum/SpectrumBars';
+import { Descriptor } from '../../ui/Descriptor';
+import { FoldedTable } from '../../ui/FoldedTable';
 import { selectedBands, type Selection } from '../model/selection';
 import { type SlipFigures } from '../model/slipFigures';
 
@@ -52,6 +54,24 @@ export function SlipSpectrum({ figures, selection, fraction, usual }: SlipSpectr
           </>
         )}
       </p>
+      <FoldedTable
+        label="The spectrum as a table"
+        columns={[
+          'Band',
+          <ColumnName key="Leq" name="Leq" />,
+          ...(figures.isEstimate ? [] : [<ColumnName key="L10" name="L10" />]),
+          ...(usualOf.size > 0 ? ['usual dB'] : []),
+        ]}
+        rows={figures.bands.map(({ band, leqDb, l10Db }) => ({
+          key: String(band.index),
+          heading: bandLabel(band),
+          cells: [
+            formatLevelDb(leqDb),
+            ...(figures.isEstimate ? [] : [formatLevelDb(l10Db)]),
+            ...(usualOf.size > 0 ? [formatLevelDb(usualOf.get(band.nominalHz))] : []),
+          ],
+        }))}
+      />
       {tonality.kind === 'not-assessable' && (
         <p className="mt-2 text-small text-ink-soft">{notAssessableWords(tonality.reason)}</p>
       )}
@@ -72,6 +92,14 @@ export function SlipSpectrum({ figures, selection, fraction, usual }: SlipSpectr
         <p className="mt-2 text-small text-ink-soft">No band of the mean spectrum stands out.</p>
       )}
     </div>
+  );
+}
+
+function ColumnName({ name }: { name: string }) {
+  return (
+    <>
+      <Descriptor name={name} /> dB
+    </>
   );
 }
 
