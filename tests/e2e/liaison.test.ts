@@ -34,13 +34,15 @@ test('the liaison logs a complaint, sees the figures of that window, and answers
   await page.waitForURL(/complaints\/[A-Z]+-\d{4}-\d+/);
   const reference = page.url().split('/').at(-1) ?? '';
   expect(await page.getByRole('heading', { name: /Silo Lane/ }).count()).toBe(1);
+  await picture(page, 'liaison-complaint');
+  await page.getByRole('link', { name: 'Write the answer' }).click();
   const letter = page.getByLabel('Letter');
-  const draft = await letter.inputValue();
+  await letter.fill(`${await letter.inputValue()}\nP.S. Thank you for telling us.`);
+  await page.getByRole('button', { name: 'Keep and preview' }).click();
+  await page.waitForURL(/kept/);
+  const draft = await page.locator('[data-letter]').innerText();
   expect(draft).toContain(reference);
   expect(draft).toMatch(/\d+\.\d dB/);
-  await picture(page, 'liaison-complaint');
-
-  await letter.fill(`${draft}\nP.S. Thank you for telling us.`);
   await page.getByRole('button', { name: `Send to ${RESIDENT}` }).click();
   await page.waitForLoadState();
   expect(await page.getByText('Thank you for telling us').count()).toBeGreaterThan(0);

@@ -2,6 +2,8 @@ import { setTimeout as sleep } from 'node:timers/promises';
 import { inject } from 'vitest';
 
 export interface ReceivedMail {
+  /** In the stand-in. */
+  id: string;
   messageId: string;
   from: string;
   to: string;
