@@ -33,7 +33,7 @@ async function fetchLastDay(url: string, toSec: number, signal: AbortSignal): Pr
   const gridFromSec = Math.floor(period.fromSec / STEP_SEC) * STEP_SEC;
   const tile = { fromSec: gridFromSec, toSec: gridFromSec + DAY_SEC + STEP_SEC, stepSec: STEP_SEC };
   const [columns, statistics] = await Promise.all([
-    fetchColumns(url, tile, (tile.toSec - tile.fromSec) / STEP_SEC, signal),
+    fetchColumns(url, tile, signal, (tile.toSec - tile.fromSec) / STEP_SEC),
     fetchJson<Statistics>(`${url}/statistics?${periodQuery(period)}`, signal),
   ]);
   return { ...period, columns, statistics };

@@ -11,8 +11,9 @@ export async function fetchColumns(
   stationUrl: string,
   tile: Tile,
   signal: AbortSignal,
+  columns?: number,
 ): Promise<StripColumns> {
-  const url = columnsUrl(stationUrl, tile);
+  const url = columnsUrl(stationUrl, tile, columns);
   const answer =
     (await takeEarlyAnswer(url)) ?? (await fetchAnswer(url, { signal, headers: COLUMNS_HEADERS }));
   return columnsOf(decodeSpectrogram(await answer.arrayBuffer()));
