@@ -100,7 +100,8 @@ CREATE TABLE `audit_log` (
   PRIMARY KEY (`id`),
   KEY `audit_log_network` (`network_id`,`at`),
   KEY `audit_log_user` (`user_id`,`id`),
-  KEY `audit_log_action` (`action`,`id`)
+  KEY `audit_log_action` (`action`,`id`),
+  KEY `audit_log_subject` (`subject`,`id`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
 CREATE TABLE `band_sets` (
@@ -249,6 +250,15 @@ CREATE TABLE `complaint_attachments` (
   PRIMARY KEY (`complaint_id`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
+CREATE TABLE `complaint_contacts` (
+  `complaint_id` int(10) unsigned NOT NULL,
+  `network_id` int(10) unsigned NOT NULL,
+  `kind` enum('email','phone','none') NOT NULL COMMENT 'none: looked at, and there is nothing to know the person by',
+  `digest` binary(32) NOT NULL COMMENT 'keyed digest of the address or number in this network: alike for the same one, and not to be turned back',
+  PRIMARY KEY (`complaint_id`,`kind`),
+  KEY `complaint_contacts_digest` (`network_id`,`digest`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
 CREATE TABLE `complaint_keys` (
   `complaint_id` int(10) unsigned NOT NULL,
   `wrapped_key` varbinary(80) NOT NULL COMMENT 'AES-256-GCM key wrapped by the personal-data key of the settings; destroying it erases the person',
@@ -265,6 +275,18 @@ CREATE TABLE `complaint_letters` (
   `created_at` datetime(3) NOT NULL,
   PRIMARY KEY (`reply_id`),
   KEY `complaint_letters_complaint` (`complaint_id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `complaint_notes` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `complaint_id` int(10) unsigned NOT NULL,
+  `ciphertext` blob NOT NULL COMMENT 'AES-256-GCM of the note: it may name somebody',
+  `author` char(36) NOT NULL,
+  `created_at` datetime(3) NOT NULL,
+  `withdrawn_by` char(36) DEFAULT NULL,
+  `withdrawn_at` datetime(3) DEFAULT NULL,
+  PRIMARY KEY (`id`),
+  KEY `complaint_notes_complaint` (`complaint_id`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
 CREATE TABLE `complaint_numbers` (
@@ -315,11 +337,22 @@ CREATE TABLE `complaint_replies` (
 CREATE TABLE `complaint_reports` (
   `complaint_id` int(10) unsigned NOT NULL,
   `key_digest` binary(32) NOT NULL COMMENT 'SHA-256 of the key in the address of the private page; the key itself is with the resident only',
-  `area` varchar(80) DEFAULT NULL COMMENT 'of the list of the network; coarse, so it may stand open',
   `language` char(2) NOT NULL,
   `created_at` datetime(3) NOT NULL,
   PRIMARY KEY (`complaint_id`),
   UNIQUE KEY `complaint_reports_key` (`key_digest`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `complaint_settings` (
+  `network_id` int(10) unsigned NOT NULL,
+  `answer_days` tinyint(3) unsigned NOT NULL COMMENT 'working days within which a complaint is answered',
+  `working_weekdays` longtext CHARACTER SET utf8mb4 COLLATE utf8mb4_bin NOT NULL COMMENT '0 Monday to 6 Sunday' CHECK (json_valid(`working_weekdays`)),
+  `remind_days` tinyint(3) unsigned NOT NULL COMMENT 'working days before the due date; 0: no reminder beforehand',
+  `retention_months` tinyint(3) unsigned NOT NULL COMMENT 'after the end of a complaint its personal data are erased',
+  `place_step_hundredths` tinyint(3) unsigned NOT NULL COMMENT 'of a degree, to which a place is rounded for all but the exact one; 0: not told',
+  `changed_by` char(36) NOT NULL,
+  `changed_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`network_id`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
 CREATE TABLE `complaints` (
@@ -340,10 +373,16 @@ CREATE TABLE `complaints` (
   `closed_at` datetime(3) DEFAULT NULL,
   `closing_reason` varchar(40) DEFAULT NULL COMMENT 'from a list: a reason in own words could name somebody',
   `source` enum('desk','resident') NOT NULL DEFAULT 'desk' COMMENT 'who wrote it down: the liaison, or the resident on the public form',
+  `area` varchar(80) DEFAULT NULL COMMENT 'of the list of the network; coarse, so it may stand open',
+  `assigned_to` char(36) DEFAULT NULL COMMENT 'who answers it; null: nobody in particular',
+  `merged_into` int(10) unsigned DEFAULT NULL COMMENT 'the complaint that this one repeats',
+  `merged_from_status` enum('open','answered','closed') DEFAULT NULL COMMENT 'what it was before, to be put back when the merge is undone',
+  `first_due_on` date DEFAULT NULL COMMENT 'of the first answer, once due_on is that of a later one; null: still due_on',
   PRIMARY KEY (`id`),
   UNIQUE KEY `complaints_reference` (`reference`),
   KEY `complaints_network` (`network_id`,`created_at`),
-  KEY `complaints_due` (`network_id`,`status`,`due_on`)
+  KEY `complaints_due` (`network_id`,`status`,`due_on`),
+  KEY `complaints_merged` (`merged_into`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
 CREATE TABLE `day_periods` (

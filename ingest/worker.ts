@@ -4,12 +4,16 @@ import { log } from '#lib/config/log';
 import { aggregate } from './jobs/aggregate';
 import { composeAlerts } from './jobs/composeAlerts';
 import { completeEndedPeriods } from './jobs/completePeriods';
+import { draftSummaries } from './jobs/draftSummaries';
 import { escalateUnacknowledged } from './jobs/escalate';
 import { housekeeping } from './jobs/housekeeping';
 import { importFiles } from './jobs/importFiles';
 import { judgeLimits } from './jobs/judgeLimits';
+import { keepComplaints } from './jobs/keepComplaints';
 import { runLoop, type LoopSettings } from './jobs/loop';
+import { makeSummaries } from './jobs/makeSummaries';
 import { remindOfCalibrations } from './jobs/remindCalibrations';
+import { remindOfComplaints } from './jobs/remindComplaints';
 import { shiftClocks } from './jobs/shiftClocks';
 import { sendMail } from './jobs/sendMail';
 import { sendWebhooks } from './jobs/sendWebhooks';
@@ -18,6 +22,7 @@ import { traceDays } from './jobs/traceDays';
 import { watchDrifts } from './jobs/watchDrifts';
 import { warnOfHeadings } from './jobs/warnEarly';
 import { watchHealth } from './jobs/watchHealth';
+import { watchSummaries } from './jobs/watchSummaries';
 
 /** Done round by round, as much as there is. Aggregation rests longer: figures that are asked for meanwhile are current anyway. */
 const LOOPS: LoopSettings[] = [
@@ -26,12 +31,14 @@ const LOOPS: LoopSettings[] = [
   { name: 'import-files', everySec: 2, work: importFiles },
   { name: 'shift-clocks', everySec: 2, work: shiftClocks },
   { name: 'trace-days', everySec: 60, work: traceDays },
+  { name: 'make-summaries', everySec: 5, work: makeSummaries },
   { name: 'compose-alerts', everySec: 10, work: composeAlerts },
   { name: 'escalate', everySec: 20, work: escalateUnacknowledged },
   { name: 'send-mail', everySec: 2, work: sendMail },
   { name: 'send-webhooks', everySec: 3, work: sendWebhooks },
   { name: 'warn-early', everySec: 60, work: warnOfHeadings },
   { name: 'watch-health', everySec: 60, work: watchHealth },
+  { name: 'watch-summaries', everySec: 900, work: watchSummaries },
 ];
 
 /** Done once a slot. The first is the worker's sign of life, which /readyz reads. */
@@ -41,6 +48,9 @@ const SLOT_JOBS: SlotJob[] = [
   { name: 'housekeeping', slotMinutes: 60, run: housekeeping },
   { name: 'watch-drifts', slotMinutes: 24 * 60, run: watchDrifts },
   { name: 'remind-calibrations', slotMinutes: 60, run: remindOfCalibrations },
+  { name: 'draft-summaries', slotMinutes: 15, run: draftSummaries },
+  { name: 'remind-complaints', slotMinutes: 60, run: remindOfComplaints },
+  { name: 'keep-complaints', slotMinutes: 60, run: keepComplaints },
 ];
 
 const stop = new AbortController();

@@ -16,13 +16,14 @@ export interface AuditFilter {
   userId?: string | undefined;
   networkId?: number | undefined;
   action?: string | undefined;
+  subject?: string | undefined;
   /** Only acts before this one. */
   beforeId?: number | undefined;
 }
 
 /** Acts that fit, newest first, at most `limit`. */
 export async function listAudit(
-  { userId, networkId, action, beforeId }: AuditFilter,
+  { userId, networkId, action, subject, beforeId }: AuditFilter,
   limit: number,
   conn: Connection = pool(),
 ): Promise<AuditRecord[]> {
@@ -30,6 +31,7 @@ export async function listAudit(
   if (userId !== undefined) void query.where({ user_id: userId });
   if (networkId !== undefined) void query.where({ network_id: networkId });
   if (action !== undefined) void query.where({ action });
+  if (subject !== undefined) void query.where({ subject });
   if (beforeId !== undefined) void query.where('id', '<', beforeId);
   const rows: AuditLogRow[] = await query.select({
     id: 'id',
@@ -52,6 +54,12 @@ export async function listAuditActions(conn: Connection = pool()): Promise<strin
 export async function countAudit(conn: Connection = pool()): Promise<number> {
   const head = await conn('audit_head').where({ only_row: 1 }).first('last_id');
   return Number(head.last_id);
+}
+
+/** Head of the chain: how many acts it holds, and the digest of the last. */
+export async function auditHead(conn: Connection = pool()): Promise<{ position: number; sha256: string }> {
+  const head = await conn('audit_head').where({ only_row: 1 }).first('last_id', 'last_digest');
+  return { position: Number(head.last_id), sha256: (head.last_digest as Buffer).toString('hex') };
 }
 
 type AuditLogRow = Omit<AuditRecord, 'id' | 'detail'> & { id: number | string; detail: unknown };

@@ -16,18 +16,24 @@ export interface ComplaintRow {
   startsAtSec: number;
   endsAtSec: number;
   kind: ComplaintKind;
-  /** Rounded to 0.01 degree. */
+  /** Rounded to the step of the network's settings, at least 0.01 degree; null where no place is known, or none is told. */
   coarseLatitude: number | null;
   coarseLongitude: number | null;
   nearestStationId: number | null;
   nearestStationCode: string | null;
+  /** Of the network's list, where one was chosen. */
+  area: string | null;
   status: ComplaintStatus;
   source: ComplaintSource;
   dueOn: LocalDate;
+  assignedTo: string | null;
+  assignedToName: string | null;
   createdAt: Date;
   answeredAt: Date | null;
   closedAt: Date | null;
   closingReason: ClosingReason | null;
+  /** Reference of the complaint that this one repeats. */
+  mergedInto: string | null;
 }
 
 export type NewComplaintRow = Pick<
@@ -40,6 +46,7 @@ export type NewComplaintRow = Pick<
   | 'coarseLatitude'
   | 'coarseLongitude'
   | 'nearestStationId'
+  | 'area'
   | 'source'
   | 'dueOn'
 > & { createdBy: string | null };
@@ -65,6 +72,7 @@ export async function insertComplaint(complaint: NewComplaintRow, conn: Connecti
     coarse_latitude: complaint.coarseLatitude,
     coarse_longitude: complaint.coarseLongitude,
     nearest_station_id: complaint.nearestStationId,
+    area: complaint.area,
     source: complaint.source,
     due_on: complaint.dueOn,
     created_by: complaint.createdBy,
@@ -97,6 +105,17 @@ export interface ComplaintFilter {
   fromSec?: number;
   toSec?: number;
   nearestStationId?: number;
+  /** Code of the nearest station. */
+  station?: string;
+  area?: string;
+  kind?: ComplaintKind;
+  source?: ComplaintSource;
+  /** A person, or `nobody`: not assigned. */
+  assignedTo?: string;
+  /** Open ones whose due date is before this. */
+  dueBefore?: LocalDate;
+  /** Part of the reference. */
+  reference?: string;
   /** Goes on behind this one. */
   after?: { dueOn: LocalDate; id: number };
   limit: number;
@@ -108,17 +127,55 @@ export async function listComplaints(
   filter: ComplaintFilter,
   conn: Connection = pool(),
 ): Promise<ComplaintRow[]> {
-  const query = selectComplaints(conn).where({ 'c.network_id': networkId });
-  if (filter.status) void query.where({ 'c.status': filter.status });
-  if (filter.toSec !== undefined) void query.where('c.starts_at', '<', filter.toSec);
-  if (filter.fromSec !== undefined) void query.where('c.ends_at', '>', filter.fromSec);
-  if (filter.nearestStationId !== undefined)
-    void query.where('c.nearest_station_id', filter.nearestStationId);
+  const query = narrowed(selectComplaints(conn).where({ 'c.network_id': networkId }), filter);
   if (filter.after) {
     const { dueOn, id } = filter.after;
     void query.whereRaw('(c.due_on, c.id) > (?, ?)', [dueOn, id]);
   }
   return query.orderBy(['c.due_on', 'c.id']).limit(filter.limit);
+}
+
+/** Narrows a query by everything of a filter but where it goes on. */
+function narrowed(
+  query: ReturnType<typeof selectComplaints>,
+  filter: Omit<ComplaintFilter, 'after' | 'limit'>,
+) {
+  const equal = {
+    'c.status': filter.status,
+    'c.nearest_station_id': filter.nearestStationId,
+    's.code': filter.station,
+    'c.area': filter.area,
+    'c.kind': filter.kind,
+    'c.source': filter.source,
+  };
+  for (const [column, value] of Object.entries(equal))
+    if (value !== undefined) void query.where(column, value);
+  if (filter.assignedTo === 'nobody') void query.whereNull('c.assigned_to');
+  else if (filter.assignedTo !== undefined) void query.where('c.assigned_to', filter.assignedTo);
+  if (filter.toSec !== undefined) void query.where('c.starts_at', '<', filter.toSec);
+  if (filter.fromSec !== undefined) void query.where('c.ends_at', '>', filter.fromSec);
+  if (filter.dueBefore !== undefined)
+    void query.where({ 'c.status': 'open' }).where('c.due_on', '<', filter.dueBefore);
+  if (filter.reference !== undefined)
+    void query.whereRaw('LOCATE(?, LOWER(c.reference)) > 0', [filter.reference.toLowerCase()]);
+  return query;
+}
+
+/** Complaints of a network by their numbers, latest noise first. */
+export async function listComplaintsById(
+  networkId: number,
+  ids: readonly number[],
+  conn: Connection = pool(),
+): Promise<ComplaintRow[]> {
+  return selectComplaints(conn)
+    .where({ 'c.network_id': networkId })
+    .whereIn('c.id', ids)
+    .orderBy(['c.starts_at', 'c.id'].map((column) => ({ column, order: 'desc' })));
+}
+
+/** Complaints that were merged into one, oldest first. */
+export async function listMergedInto(id: number, conn: Connection = pool()): Promise<ComplaintRow[]> {
+  return selectComplaints(conn).where({ 'c.merged_into': id }).orderBy('c.id');
 }
 
 export interface ComplaintCounts {
@@ -190,6 +247,9 @@ export async function markClosed(
 function selectComplaints(conn: Connection) {
   return conn('complaints as c')
     .leftJoin('stations as s', 's.id', 'c.nearest_station_id')
+    .leftJoin('users as a', 'a.id', 'c.assigned_to')
+    .leftJoin('complaints as m', 'm.id', 'c.merged_into')
+    .leftJoin('complaint_settings as st', 'st.network_id', 'c.network_id')
     .select({
       id: 'c.id',
       networkId: 'c.network_id',
@@ -197,17 +257,27 @@ function selectComplaints(conn: Connection) {
       startsAtSec: 'c.starts_at',
       endsAtSec: 'c.ends_at',
       kind: 'c.kind',
-      coarseLatitude: 'c.coarse_latitude',
-      coarseLongitude: 'c.coarse_longitude',
+      coarseLatitude: conn.raw(toldDegrees('c.coarse_latitude')),
+      coarseLongitude: conn.raw(toldDegrees('c.coarse_longitude')),
       nearestStationId: 'c.nearest_station_id',
       nearestStationCode: 's.code',
+      area: 'c.area',
       status: 'c.status',
       source: 'c.source',
       // A DATE would come out as an instant.
       dueOn: conn.raw(`DATE_FORMAT(c.due_on, '%Y-%m-%d')`),
+      assignedTo: 'c.assigned_to',
+      assignedToName: 'a.name',
       createdAt: 'c.created_at',
       answeredAt: 'c.answered_at',
       closedAt: 'c.closed_at',
       closingReason: 'c.closing_reason',
+      mergedInto: 'm.reference',
     });
+}
+
+/** Degrees rounded to the step that the network tells; none where it tells no place. */
+function toldDegrees(column: string): string {
+  const step = 'COALESCE(st.place_step_hundredths, 1)';
+  return `IF(${step} = 0, NULL, ROUND(ROUND(${column} * 100 / ${step}) * ${step} / 100, 2))`;
 }

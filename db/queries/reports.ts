@@ -48,13 +48,12 @@ export interface ReportRow {
 
 /** Keeps a report beside its complaint. Fails as a duplicate when the key is there already. */
 export async function insertReport(
-  report: Omit<ReportRow, 'reference'> & { keyDigest: Buffer },
+  report: Omit<ReportRow, 'reference' | 'area'> & { keyDigest: Buffer },
   conn: Connection,
 ): Promise<void> {
   await conn('complaint_reports').insert({
     complaint_id: report.complaintId,
     key_digest: report.keyDigest,
-    area: report.area,
     language: report.language,
     created_at: new Date(),
   });
@@ -80,7 +79,7 @@ function selectReports(conn: Connection) {
   return conn('complaint_reports as r').join('complaints as c', 'c.id', 'r.complaint_id').select({
     complaintId: 'r.complaint_id',
     reference: 'c.reference',
-    area: 'r.area',
+    area: 'c.area',
     language: 'r.language',
   });
 }
@@ -166,7 +165,11 @@ export async function reopenComplaint(
 ): Promise<void> {
   await conn('complaints')
     .where({ id: complaintId, status: 'answered' })
-    .update({ status: 'open', due_on: dueOn });
+    .update({
+      status: 'open',
+      first_due_on: conn.raw('COALESCE(first_due_on, due_on)'),
+      due_on: dueOn,
+    });
 }
 
 /** How many reports came since an instant: to the network, and of these from one address. */

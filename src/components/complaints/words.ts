@@ -2,6 +2,7 @@ import type {
   ClosingReason,
   Complaint,
   ComplaintKind,
+  ComplaintSource,
   ComplaintStatus,
   Reply,
 } from '#lib/contracts/complaints';
@@ -15,6 +16,11 @@ export const KIND_WORDS: Readonly<Record<ComplaintKind, string>> = {
   traffic: 'Traffic',
   alarm: 'Alarm',
   other: 'Other',
+};
+
+export const SOURCE_WORDS: Readonly<Record<ComplaintSource, string>> = {
+  desk: 'The desk',
+  resident: 'The residents’ form',
 };
 
 export const STATUS_WORDS: Readonly<Record<ComplaintStatus, string>> = {
@@ -41,6 +47,7 @@ export const DELIVERY_WORDS: Readonly<Record<Reply['delivery'], string>> = {
 
 /** Where a complaint stands, with how long it is overdue: `Open, overdue by 3 days`. `today` is a civil date. */
 export function statusWords(complaint: Complaint, today: string): string {
+  if (complaint.mergedInto) return `Merged into ${complaint.mergedInto}`;
   if (complaint.status === 'closed' && complaint.closingReason) {
     return `Closed: ${CLOSING_WORDS[complaint.closingReason].toLowerCase()}`;
   }

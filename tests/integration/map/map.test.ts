@@ -73,6 +73,7 @@ test('layers count the standing exceedances that overlap the period, and tell ro
     endsAtSec: FROM_SEC + 600,
     kind: 'hum' as const,
     nearestStationId: null,
+    area: null,
     source: 'desk' as const,
     dueOn: '2026-03-31',
     createdBy: null,

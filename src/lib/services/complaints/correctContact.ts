@@ -1,8 +1,10 @@
 import { appendAudit } from '#db/queries/audit';
+import { writeContactDigests } from '#db/queries/complaintContacts';
 import { findSealedPerson, writeComplaintPrivate } from '#db/queries/complaintPrivate';
 import { lockComplaint, type ComplaintRow } from '#db/queries/complaints';
 import { inTransaction } from '#db/queries/connection';
 import type { Contact } from '#lib/contracts/complaints';
+import { contactDigests } from './desk/contactDigests';
 import { sealValue } from './personalData';
 import { openPersonalData } from './readPersonalData';
 
@@ -22,6 +24,7 @@ export async function correctContact(
     );
     const ciphertext = sealValue(sealed.wrappedKey, complaint.id, 'person', { ...person, contact });
     await writeComplaintPrivate(complaint.id, ciphertext, transaction);
+    await writeContactDigests(complaint, contactDigests(complaint.networkId, contact), transaction);
     await appendAudit(
       {
         userId,

@@ -17,11 +17,14 @@ export interface ComplaintPage {
   next: ListCursor | null;
 }
 
+/** What a list of complaints is narrowed by. */
+export type ComplaintListFilter = Omit<ComplaintFilter, 'after' | 'limit'>;
+
 /** A page of a network's complaints by due date, never with personal data. */
 export async function listCases(
   network: NetworkRow,
   settings: NetworkSettings,
-  filter: Omit<ComplaintFilter, 'after'> & { cursor: number[] | null },
+  filter: ComplaintListFilter & { limit: number; cursor: number[] | null },
   now: Date,
 ): Promise<ComplaintPage> {
   const { cursor, limit, ...rest } = filter;

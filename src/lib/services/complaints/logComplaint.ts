@@ -1,12 +1,16 @@
 import { appendAudit } from '#db/queries/audit';
+import { writeContactDigests } from '#db/queries/complaintContacts';
 import { insertComplaintKey, writeComplaintPrivate } from '#db/queries/complaintPrivate';
 import { insertComplaint } from '#db/queries/complaints';
 import { inTransaction, type Connection } from '#db/queries/connection';
 import type { NetworkRow, NetworkSettings } from '#db/queries/networks';
 import { listStations, type StationRow } from '#db/queries/stations';
 import type { ComplaintEffect, NewComplaint, PersonalData } from '#lib/contracts/complaints';
+import type { ReportArea } from '#lib/contracts/reports';
 import { localDateAt } from '#lib/time/zone';
-import { addWorkingDays, WORKING_DAYS_TO_ANSWER } from './dueDate';
+import { areasInUse } from '../reports/areas';
+import { contactDigests } from './desk/contactDigests';
+import { answerDueOn } from './dueDate';
 import { newWrappedKey, sealValue } from './personalData';
 import { filledFields } from './personalFields';
 import { newReference } from './reference';
@@ -30,11 +34,12 @@ export interface ResidentPart {
 }
 
 export type LogOutcome =
-  { kind: 'logged'; reference: string } | { kind: 'invalid'; field: 'to' | 'station'; message: string };
+  | { kind: 'logged'; reference: string }
+  | { kind: 'invalid'; field: 'to' | 'station' | 'area'; message: string };
 
 /**
  * Logs a complaint: what everybody may read in the open, contact, own words and exact place sealed under a key of its
- * own. The nearest station is the named one, or of those not retired the nearest to the place.
+ * own. The nearest station is the named one, or of those not retired the nearest to the place, or the one of the area.
  */
 export async function logComplaint(
   { userId, network, settings }: LoggingPerson,
@@ -52,7 +57,12 @@ export async function logComplaint(
   }
   const stations = await listStations(network.id);
   const place = placeOf(complaint);
-  const nearest = nearestStation(stations, complaint.station, place);
+  const area = complaint.area === null ? null : await findArea(network.id, complaint.area);
+  if (area === undefined) {
+    return { kind: 'invalid', field: 'area', message: 'must be an area of this network' };
+  }
+  const code = complaint.station ?? (place ? null : (area?.station ?? null));
+  const nearest = nearestStation(stations, code, place);
   if (complaint.station !== null && !nearest) {
     return { kind: 'invalid', field: 'station', message: 'must be a station of this network' };
   }
@@ -77,8 +87,9 @@ export async function logComplaint(
         coarseLatitude: coarse?.latitude ?? null,
         coarseLongitude: coarse?.longitude ?? null,
         nearestStationId: nearest?.id ?? null,
+        area: area?.name ?? null,
         source: resident ? 'resident' : 'desk',
-        dueOn: addWorkingDays(today, WORKING_DAYS_TO_ANSWER),
+        dueOn: await answerDueOn(network.id, today, transaction),
         createdBy: userId,
       },
       transaction,
@@ -86,6 +97,8 @@ export async function logComplaint(
     const wrappedKey = newWrappedKey(id);
     await insertComplaintKey(id, wrappedKey, transaction);
     await writeComplaintPrivate(id, sealValue(wrappedKey, id, 'person', person), transaction);
+    const digests = contactDigests(network.id, person.contact);
+    await writeContactDigests({ id, networkId: network.id }, digests, transaction);
     await resident?.writeBeside(id, wrappedKey, transaction);
     await appendAudit(
       {
@@ -105,6 +118,11 @@ export async function logComplaint(
     return made;
   });
   return { kind: 'logged', reference };
+}
+
+/** Undefined where the network has no area of that name. */
+async function findArea(networkId: number, name: string): Promise<ReportArea | undefined> {
+  return (await areasInUse(networkId)).find((area) => area.name === name);
 }
 
 function placeOf({ latitude, longitude }: NewComplaint): Place | null {

@@ -6,7 +6,7 @@ import { insertAddition, reopenComplaint } from '#db/queries/reports';
 import { MOST_ADDITION_CHARACTERS, type ReportFaults } from '#lib/contracts/reports';
 import { localDateAt } from '#lib/time/zone';
 import { erasePersonalData } from '../complaints/closeComplaint';
-import { addWorkingDays, WORKING_DAYS_TO_ANSWER } from '../complaints/dueDate';
+import { answerDueOn } from '../complaints/dueDate';
 import { sealValue } from '../complaints/personalData';
 import { findByKey } from './followReport';
 import type { PublicNetwork } from './openForm';
@@ -41,7 +41,7 @@ export async function addToReport(
     if (!sealed || current?.status === 'closed') return refused('addition', 'closed');
     const ciphertext = sealValue(sealed.wrappedKey, complaint.id, 'addition', words);
     await insertAddition(complaint.id, ciphertext, transaction);
-    await reopenComplaint(complaint.id, addWorkingDays(today, WORKING_DAYS_TO_ANSWER), transaction);
+    await reopenComplaint(complaint.id, await answerDueOn(network.id, today, transaction), transaction);
     await countSent(sender, now, transaction);
     await appendAudit(
       {
@@ -62,7 +62,7 @@ export async function eraseReport(place: PublicNetwork, key: string, isSure: boo
   const found = await findByKey(place, key);
   if (!found) return { kind: 'unknown' };
   if (!isSure) return refused('erase', 'confirm-erase');
-  await erasePersonalData(null, found.complaint);
+  await erasePersonalData({ by: 'resident' }, found.complaint);
   return { kind: 'done' };
 }
 

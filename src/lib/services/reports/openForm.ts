@@ -1,6 +1,6 @@
 import { findNetworkBySlug, settingsAt, type NetworkRow, type NetworkSettings } from '#db/queries/networks';
 import { findReportForm, type ReportForm } from '#db/queries/reports';
-import { stationChoices } from '../complaints/stationChoices';
+import { areasInUse } from './areas';
 
 /** A network as its residents meet it. */
 export interface PublicNetwork {
@@ -18,12 +18,5 @@ export async function publicNetwork(slug: string, now: Date): Promise<PublicNetw
   const form = network && (await findReportForm(network.id));
   if (!network || !form) return undefined;
   const settings = await settingsAt(network.id, Math.floor(now.getTime() / 1000));
-  return { network, settings, form: { ...form, areas: await areasOf(network.id, form) } };
-}
-
-/** The areas set up; without any, the surroundings of each station by its name. */
-async function areasOf(networkId: number, form: ReportForm): Promise<ReportForm['areas']> {
-  if (form.areas.length > 0) return form.areas;
-  const stations = await stationChoices(networkId);
-  return stations.map(({ code, name }) => ({ name, station: code }));
+  return { network, settings, form: { ...form, areas: await areasInUse(network.id) } };
 }

@@ -22,8 +22,6 @@ import { reportWindow } from './reportWindow';
 /** A report that can be kept. */
 export interface ReadableReport {
   complaint: NewComplaint;
-  /** Of the network's list; null: elsewhere. */
-  area: string | null;
   effects: ComplaintEffect[];
   file: { type: AttachmentType; bytes: Buffer } | null;
 }
@@ -74,10 +72,10 @@ export function readReport(
         longitude: place?.longitude ?? null,
         // A typed place finds its nearest station by itself.
         station: place ? null : (area?.station ?? null),
+        area: area?.name ?? null,
         words: typed.words.replaceAll('\r\n', '\n'),
         contact: contact.data,
       },
-      area: area?.name ?? null,
       effects: COMPLAINT_EFFECTS.filter((effect) => typed.effects.includes(effect)),
       file: fileBytes && type ? { type, bytes: Buffer.from(fileBytes) } : null,
     },

@@ -52,17 +52,14 @@ export async function takeReport(
     const outcome = await logComplaint({ userId: null, network, settings }, read.report.complaint, now, {
       effects: read.report.effects,
       writeBeside: async (complaintId, wrappedKey, transaction) => {
-        const { area } = read.report;
         const keyDigest = keyDigestOf(key);
-        await insertReport({ complaintId, keyDigest, area, language: posted.language }, transaction);
+        await insertReport({ complaintId, keyDigest, language: posted.language }, transaction);
         await keepFile(complaintId, wrappedKey, read.report.file, transaction);
         await countSent(sender, now, transaction);
       },
     });
     if (outcome.kind === 'logged') return { kind: 'taken', key };
-    return outcome.field === 'station'
-      ? { kind: 'refused', faults: { area: 'station-away' } }
-      : refused('future');
+    return outcome.field !== 'to' ? { kind: 'refused', faults: { area: 'station-away' } } : refused('future');
   } catch (error) {
     // The very same form came twice: the first one stands.
     if (isDuplicateKey(error)) return { kind: 'taken', key };
