@@ -1,4 +1,5 @@
 import { expect, inject, test } from 'vitest';
+import { faultsOf } from './support/axe';
 import { picture, signIn, useBrowser } from './support/browser';
 import { mailTo } from './support/mailbox';
 import { minutes, post } from './support/posts';
@@ -92,6 +93,16 @@ test('the operator registers a station by a pin, connects it, limits it, and fol
   const scanned = await fetch(`${inject('origin')}${byMail}`);
   expect(scanned.status).toBe(200);
   expect(await scanned.text()).toContain('Nothing has been noted yet');
+  for (const [theme, width] of [
+    ['light', 1280],
+    ['dark', 390],
+  ] as const) {
+    const stranger = await open({ theme, width });
+    await stranger.page.goto(byMail);
+    await stranger.page.getByText('Nothing has been noted yet').waitFor();
+    expect(await faultsOf(stranger.page), `${theme}, ${width} px`).toEqual([]);
+    await stranger.context.close();
+  }
   const link = /\/n\/merrow\/exceedances\/\d+/.exec(mail.text)?.[0] ?? '';
   await page.goto(link);
   expect(await page.getByRole('heading', { level: 1 }).innerText()).toMatch(/Lock Cottage|Quiet at the lock/);
