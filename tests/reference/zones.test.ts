@@ -1,6 +1,7 @@
 import { Temporal } from '@js-temporal/polyfill';
 import fc from 'fast-check';
 import { expect, test } from 'vitest';
+import { isRepeatedHour } from '#lib/time/clockChange';
 import { hoursOfDay, instantAtSec, localDateAt, localMinuteAt, startOfDaySec } from '#lib/time/zone';
 
 /**
@@ -59,6 +60,21 @@ test('an instant named by date and clock is Temporal’s, at skipped and repeate
         );
       },
     ),
+    { numRuns: 600 },
+  );
+});
+
+test('a clock time that comes twice is known as one on both occasions, and no other is', () => {
+  fc.assert(
+    fc.property(secs, zones, fc.integer({ min: -7200, max: 7200 }), (sec, zone, aside) => {
+      const change = zoned(sec, zone).getTimeZoneTransition('next');
+      const near = (change ? secOf(change) : sec) + aside;
+      const shown = zoned(near, zone).toPlainDateTime();
+      const [first, second] = (['earlier', 'later'] as const).map(
+        (disambiguation) => shown.toZonedDateTime(zone, { disambiguation }).epochMilliseconds,
+      );
+      expect(isRepeatedHour(near, zone), `${shown.toString()} ${zone}`).toBe(first !== second);
+    }),
     { numRuns: 600 },
   );
 });

@@ -1,4 +1,4 @@
-import { DateTime } from 'luxon';
+import { offsetSec } from './offset';
 import { addDays, hoursOfDay, localDateAt, type LocalDate } from './zone';
 
 /** A civil date on which the clock changes, and the hours it has. */
@@ -7,11 +7,12 @@ export interface ClockChange {
   hours: number;
 }
 
+const DAY_SEC = 86_400;
 const MOST_DAYS_SEARCHED = 62;
 
 /** Clock changes on the dates that a span touches; spans longer than two months name none. */
 export function clockChangesIn(fromSec: number, toSec: number, zone: string): ClockChange[] {
-  if (toSec - fromSec > MOST_DAYS_SEARCHED * 86_400) return [];
+  if (toSec - fromSec > MOST_DAYS_SEARCHED * DAY_SEC) return [];
   if (isSameOffsetThroughout(fromSec, toSec, zone)) return [];
   const changes: ClockChange[] = [];
   const last = localDateAt(toSec - 1, zone);
@@ -24,15 +25,22 @@ export function clockChangesIn(fromSec: number, toSec: number, zone: string): Cl
 
 /** Whether the clock on the wall shows this very time again, or has shown it before, on this date. */
 export function isRepeatedHour(sec: number, zone: string): boolean {
-  return DateTime.fromSeconds(sec, { zone }).getPossibleOffsets().length > 1;
+  const shownSec = sec + offsetSec(sec, zone);
+  const offsets = new Set([offsetSec(shownSec - DAY_SEC, zone), offsetSec(shownSec + DAY_SEC, zone)]);
+  return [...offsets].filter((offset) => offsetSec(shownSec - offset, zone) === offset).length > 1;
 }
 
 /** "GMT", "BST", "CEST", or "GMT+9" where English has no name for the offset in force. */
 export function zoneAbbreviationAt(sec: number, zone: string): string {
-  return DateTime.fromSeconds(sec, { zone, locale: 'en-GB' }).toFormat('ZZZZ');
+  const formatter = new Intl.DateTimeFormat('en-GB', {
+    timeZone: zone,
+    timeZoneName: 'short',
+    hour: 'numeric',
+  });
+  const parts = formatter.formatToParts(sec * 1000);
+  return parts.find(({ type }) => type === 'timeZoneName')?.value ?? zone;
 }
 
 function isSameOffsetThroughout(fromSec: number, toSec: number, zone: string): boolean {
-  const offsetAt = (sec: number) => DateTime.fromSeconds(sec, { zone }).offset;
-  return offsetAt(fromSec) === offsetAt(toSec - 1);
+  return offsetSec(fromSec, zone) === offsetSec(toSec - 1, zone);
 }

@@ -1,5 +1,5 @@
-import { DateTime } from 'luxon';
-import { addDays, instantAtSec, startOfDaySec } from './zone';
+import { offsetSec } from './offset';
+import { addDays, instantAtSec, isLocalDate, startOfDaySec } from './zone';
 
 const DAY_SEC = 86_400;
 const MOST_PERIOD_SEC = 10 * 366 * DAY_SEC;
@@ -36,9 +36,7 @@ export function readUrlPeriod(url: URL, zone: string, nowSec: number): UrlPeriod
 
 /** Epoch seconds of one end of a period as an address or a form gives it, or null when it cannot be read. */
 export function parseUrlInstant(text: string, zone: string): number | null {
-  const sec = RFC_3339.test(text)
-    ? DateTime.fromISO(text.toUpperCase(), { setZone: true }).toSeconds()
-    : parseLocal(text, zone);
+  const sec = RFC_3339.test(text) ? secOfRfc3339(text) : parseLocal(text, zone);
   return sec !== null && sec >= 0 && sec <= LATEST_SEC ? Math.floor(sec) : null;
 }
 
@@ -47,9 +45,11 @@ export function parseUrlInstant(text: string, zone: string): number | null {
  * change repeats, or between minutes) RFC 3339 in UTC.
  */
 export function urlInstant(sec: number, zone: string): string {
-  const local = DateTime.fromSeconds(sec, { zone }).toFormat("yyyy-MM-dd'T'HH:mm");
+  const local = new Date((sec + offsetSec(sec, zone)) * 1000)
+    .toISOString()
+    .slice(0, 'yyyy-MM-ddTHH:mm'.length);
   if (parseLocal(local, zone) === sec) return local;
-  return DateTime.fromSeconds(sec, { zone: 'utc' }).toFormat("yyyy-MM-dd'T'HH:mm:ss'Z'");
+  return `${new Date(sec * 1000).toISOString().slice(0, 'yyyy-MM-ddTHH:mm:ss'.length)}Z`;
 }
 
 /** Path and query of a page for a period, with the other parameters of `url` kept; without a period, the last 24 hours. */
@@ -85,15 +85,16 @@ function problemOf(fromSec: number | null, toSec: number | null): string | null 
 }
 
 function parseLocal(text: string, zone: string): number | null {
-  if (LOCAL_DATE.test(text)) return isCalendarDate(text) ? startOfDaySec(text, zone) : null;
+  if (LOCAL_DATE.test(text)) return isLocalDate(text) ? startOfDaySec(text, zone) : null;
   const match = LOCAL_MINUTE.exec(text);
   const [, date = '', hour, minute] = match ?? [];
   const minutes = Number(hour) * 60 + Number(minute);
-  if (!match || !isCalendarDate(date) || Number(minute) > 59 || minutes > 1440) return null;
+  if (!match || !isLocalDate(date) || Number(minute) > 59 || minutes > 1440) return null;
   if (minutes === 1440) return startOfDaySec(addDays(date, 1), zone);
   return instantAtSec(date, minutes, zone);
 }
 
-function isCalendarDate(date: string): boolean {
-  return DateTime.fromISO(date, { zone: 'utc' }).isValid;
+function secOfRfc3339(text: string): number | null {
+  const sec = isLocalDate(text.slice(0, 'yyyy-MM-dd'.length)) ? Date.parse(text.toUpperCase()) / 1000 : NaN;
+  return Number.isNaN(sec) ? null : sec;
 }

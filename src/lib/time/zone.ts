@@ -1,4 +1,4 @@
-import { DateTime, IANAZone } from 'luxon';
+import { offsetSec } from './offset';
 
 /** A civil date as `YYYY-MM-DD`. */
 export type LocalDate = string;
@@ -8,12 +8,19 @@ const LOCAL_DATE = /^\d{4}-\d{2}-\d{2}$/;
 
 /** Whether `text` is a date of the calendar, as `YYYY-MM-DD`. */
 export function isLocalDate(text: string): text is LocalDate {
-  return LOCAL_DATE.test(text) && DateTime.fromISO(text, { zone: 'utc' }).isValid;
+  const sec = Date.parse(`${text}T00:00:00Z`) / 1000;
+  return LOCAL_DATE.test(text) && !Number.isNaN(sec) && dateOfUtc(sec) === text;
 }
 
 /** Whether `zone` names a zone of the IANA time-zone database. */
 export function isTimeZone(zone: string): boolean {
-  return IANAZone.isValidZone(zone);
+  if (zone === '') return false;
+  try {
+    new Intl.DateTimeFormat('en-GB', { timeZone: zone });
+    return true;
+  } catch {
+    return false;
+  }
 }
 
 /** Civil date in `zone` at an instant (epoch seconds). */
@@ -23,8 +30,8 @@ export function localDateAt(epochSec: number, zone: string): LocalDate {
 
 /** Minutes since local midnight by the clock on the wall, 0–1439. */
 export function localMinuteAt(epochSec: number, zone: string): number {
-  const local = DateTime.fromSeconds(epochSec, { zone });
-  return local.hour * 60 + local.minute;
+  const localSec = epochSec + offsetSec(epochSec, zone);
+  return Math.floor((localSec - Math.floor(localSec / DAY_SEC) * DAY_SEC) / 60);
 }
 
 /** Weekday of a civil date: 0 Monday … 6 Sunday. */
@@ -62,28 +69,9 @@ export function instantAtSec(date: LocalDate, minutes: number, zone: string): nu
   return possible.length > 0 ? Math.min(...possible.map(({ sec }) => sec)) : shownSec - offsets[0];
 }
 
-/**
- * East of UTC at an instant. Asked at instants only: Luxon's own way from a clock to an instant begins with today's offset and
- * misses the hour after a change where that is far from the offsets of the time (Apia before 2011).
- */
-function offsetSec(epochSec: number, zone: string): number {
-  const known = offsets.get(zone) ?? new Map<number, number>();
-  offsets.set(zone, known);
-  const remembered = known.get(epochSec);
-  if (remembered !== undefined) return remembered;
-  const offset = IANAZone.create(zone).offset(epochSec * 1000) * 60;
-  if (known.size >= MOST_OFFSETS) known.clear();
-  known.set(epochSec, offset);
-  return offset;
-}
-
-/** A page asks for the same midnights again and again, and the formatter that tells an offset is slow. */
-const offsets = new Map<string, Map<number, number>>();
-const MOST_OFFSETS = 20_000;
-
 /** Instant (epoch seconds) at which a civil date begins in `zone`. */
 export function startOfDaySec(date: LocalDate, zone: string): number {
-  return DateTime.fromISO(date, { zone }).startOf('day').toUnixInteger();
+  return instantAtSec(date, 0, zone);
 }
 
 /** Hours that a civil date has in `zone`: 24, or other on the days of a clock change. */
