@@ -104,6 +104,8 @@ const limits = fc
         stepMinutes: null,
         ...what,
         ...when,
+        // Events have windows that follow one another.
+        ...('eventSeconds' in what && { stepMinutes: null }),
         ...itsWind,
         ...where,
         ...rest,

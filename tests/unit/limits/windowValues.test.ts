@@ -4,6 +4,7 @@ import type { StoredInterval } from '#db/queries/intervals';
 import { accumulate } from '#lib/services/levels/accumulate';
 import { measure, type MetricRule } from '#lib/services/limits/measure';
 import { windowsOf, type LimitWindow } from '#lib/services/limits/windows';
+import { partsOf } from '#lib/services/limitTrial/parts';
 import { WindowSums } from '#lib/services/limitTrial/windowSums';
 import {
   ALL_DAY,
@@ -99,8 +100,9 @@ test(
         }
         const wrong: object[] = [];
         for (const rule of METRICS) {
-          const isOfEnergies = rule.metric === 'LAeq' || rule.metric === 'LAFmax' || rule.metric === 'LAE';
-          const sums = new WindowSums(parts, { parts: isOfEnergies ? 'energies' : 'bands', partSec });
+          const ofRule = partsOf(rule);
+          if (ofRule === null) throw new Error(`${rule.metric} is not told by sums.`);
+          const sums = new WindowSums(parts, { parts: ofRule, partSec });
           for (const window of windows) {
             const found = measure(rule, sums.of(window));
             const expected = defined(rule, window, intervals);

@@ -27,14 +27,12 @@ export interface Wanted {
   bands: Pick<NewLimitVersion, 'bandFraction' | 'bandIndex' | 'bandToIndex'>;
 }
 
-/** Whole quarter-hours that are read at once, seconds of them: a month. */
-const AT_ONCE_SEC = 31 * 86_400;
 /** Shared by every quarter-hour that was read without what stands in it; nobody writes to it. */
 const NOTHING: MeasurableSums = emptySums({ bandClasses: false });
 
 /**
  * Quarter-hours of a station in `fromSec <= t < toSec` (whole quarter-hours), ascending and current; or, as `partSec` says, fives
- * of minutes from the intervals. A year of energies, or of some bands, takes a fraction of a second.
+ * of minutes from the intervals.
  */
 export async function trialQuarters(
   source: LevelSource,
@@ -43,7 +41,7 @@ export async function trialQuarters(
   conn: Connection,
 ): Promise<TrialQuarter[]> {
   if (partSec !== QUARTER_SEC) return sumsByGrain(source, span, conn);
-  if (parts === 'distributions') return wholeQuarters(source, span, conn);
+  if (parts === 'distributions') return currentQuarters(source, span, { bands: false }, conn);
   // Marks are read before rows: what is recomputed in between is then made from its intervals, never missed.
   const { id } = source.station;
   const dirty = await dirtySpans(id, span, conn);
@@ -58,16 +56,6 @@ export async function trialQuarters(
       found.push({ startSec, sums });
   }
   return found.sort((a, b) => a.startSec - b.startSec);
-}
-
-async function wholeQuarters(source: LevelSource, span: Span, conn: Connection): Promise<TrialQuarter[]> {
-  const found: TrialQuarter[] = [];
-  for (let fromSec = span.fromSec; fromSec < span.toSec; fromSec += AT_ONCE_SEC) {
-    const part = { fromSec, toSec: Math.min(span.toSec, fromSec + AT_ONCE_SEC) };
-    for (const { startSec, sums } of await currentQuarters(source, part, { bands: false }, conn))
-      found.push({ startSec, sums });
-  }
-  return found;
 }
 
 /** Slots of the bands that a limit is about, of stations with thirds and with octaves. */

@@ -87,35 +87,58 @@ export async function tryRule(
   const tried: StationTrial[] = [];
   for (const station of ground.stations.filter(({ id }) => coversStation(rule, id))) {
     const source = { station, timeline, validity: 'rules' as const };
-    tried.push(tryStation(rule, station, windows, await measuredAll(rule, source, windows, conn), timeline));
+    const count = new StationCount(rule, windows.length);
+    await measureEach(rule, source, windows, conn, (window, came) => count.add(window, came));
+    tried.push(count.trial(station, timeline));
   }
   return tried;
 }
 
-/** What every window came to, beside the windows: from parts read at once, where these tell it. */
-async function measuredAll(
+/** Tells what every window came to, in their order: from parts read at once, where these tell it. */
+async function measureEach(
   rule: TrialRule,
   source: LevelSource,
   windows: readonly TriedWindow[],
   conn: Connection,
-): Promise<Measured[]> {
-  const [first, last] = [windows[0], windows.at(-1)];
-  if (!first || !last) return [];
+  tell: (window: TriedWindow, came: Measured) => void,
+): Promise<void> {
   const parts = partsOf(rule);
   if (parts === null) {
     const evidence = new WindowEvidence(source, conn);
-    const measured: Measured[] = [];
-    for (const { startSec, endSec } of windows)
-      measured.push(await evidence.measure(rule, { fromSec: startSec, toSec: endSec }));
-    return measured;
+    for (const window of windows)
+      tell(window, await evidence.measure(rule, { fromSec: window.startSec, toSec: window.endSec }));
+    return;
   }
   const partSec = partSecOf(windows);
-  const span = { fromSec: first.startSec, toSec: last.endSec };
-  const sums = new WindowSums(await trialQuarters(source, span, { parts, partSec, bands: rule }, conn), {
-    parts,
-    partSec,
-  });
-  return windows.map((window) => measure(rule, sums.of(window)));
+  for (const some of chunksOf(windows)) {
+    const read = await trialQuarters(source, spanOf(some), { parts, partSec, bands: rule }, conn);
+    const sums = new WindowSums(read, { parts, partSec });
+    for (const window of some) tell(window, measure(rule, sums.of(window)));
+  }
+}
+
+function spanOf(windows: readonly TriedWindow[]): Span {
+  let [fromSec, toSec] = [Infinity, -Infinity];
+  for (const { startSec, endSec } of windows) {
+    fromSec = Math.min(fromSec, startSec);
+    toSec = Math.max(toSec, endSec);
+  }
+  return { fromSec, toSec };
+}
+
+/** Windows that begin within so long of each other are measured from what is read at once: the next ones' parts take its memory. */
+const CHUNK_SEC = 31 * 86_400;
+
+function* chunksOf(windows: readonly TriedWindow[]): Generator<TriedWindow[]> {
+  let chunk: TriedWindow[] = [];
+  for (const window of windows) {
+    if (window.startSec >= (chunk[0]?.startSec ?? Infinity) + CHUNK_SEC) {
+      yield chunk;
+      chunk = [];
+    }
+    chunk.push(window);
+  }
+  if (chunk.length > 0) yield chunk;
 }
 
 function closedWindows(
@@ -148,34 +171,38 @@ function partSecOf(windows: readonly LimitWindow[]): number {
   return isOfQuarters ? QUARTER_SEC : GRAIN_SEC;
 }
 
-function tryStation(
-  rule: TrialRule,
-  station: StationRow,
-  windows: readonly TriedWindow[],
-  measured: readonly Measured[],
-  timeline: NetworkSettings[],
-): StationTrial {
-  const counts: TrialCounts = {
-    windows: windows.length,
-    compared: 0,
-    uncovered: 0,
-    empty: 0,
-    dismissed: 0,
-    caught: 0,
-  };
-  const above: WindowAbove[] = [];
-  for (const [at, window] of windows.entries()) {
-    const came = measured[at] ?? { levelDb: null, validSec: 0 };
-    const judged = judgeMeasured(rule, window, came);
-    const { levelDb, coverage, isExceeded } = judged;
-    counts[placeOf(rule, judged)] += 1;
-    if (!isExceeded || levelDb === null) continue;
-    const { startSec, endSec } = window;
-    above.push({ startSec, endSec, levelDb, coverage });
+/** Counts the windows of a station as they are measured, in order of time. */
+class StationCount {
+  readonly #counts: TrialCounts;
+  readonly #above: WindowAbove[] = [];
+
+  constructor(
+    private readonly rule: TrialRule,
+    windows: number,
+  ) {
+    this.#counts = { windows, compared: 0, uncovered: 0, empty: 0, dismissed: 0, caught: 0 };
   }
-  const caught = caughtOf(rule, above, timeline).map((one) => ({ ...one, stationId: station.id }));
-  counts.caught = caught.length;
-  return { station, counts, caught };
+
+  add(window: TriedWindow, came: Measured): void {
+    const judged = judgeMeasured(this.rule, window, came);
+    this.#counts[placeOf(this.rule, judged)] += 1;
+    const { levelDb, coverage, isExceeded } = judged;
+    if (!isExceeded || levelDb === null) return;
+    this.#above.push({ startSec: window.startSec, endSec: window.endSec, levelDb, coverage });
+  }
+
+  trial(station: StationRow, timeline: NetworkSettings[]): StationTrial {
+    const caught = caughtOf(this.rule, this.#above, timeline).map(
+      ({ startSec, endSec, levelDb, coverage }) => ({
+        startSec,
+        endSec,
+        levelDb,
+        coverage,
+        stationId: station.id,
+      }),
+    );
+    return { station, counts: { ...this.#counts, caught: caught.length }, caught };
+  }
 }
 
 /** Where a window is counted. One without an event is compared like any other: it has none that is too loud. */
@@ -191,8 +218,8 @@ function caughtOf(
   { stepMin = null, fromMin, toMin }: TrialRule,
   above: readonly WindowAbove[],
   timeline: NetworkSettings[],
-): WindowAbove[] {
-  if (stepMin === null) return [...above];
+): readonly WindowAbove[] {
+  if (stepMin === null) return above;
   const byDate = groupBy(above, ({ startSec }) => runDateOf({ fromMin, toMin }, startSec, timeline));
   return [...byDate.values()].flatMap((ofDate) =>
     runsOf(ofDate, stepMin * 60).map(({ startSec, endSec, loudest }) => ({ ...loudest, startSec, endSec })),
