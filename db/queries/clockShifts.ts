@@ -86,10 +86,10 @@ export interface StandingShift extends ClockEpisode {
 
 const STANDING = ['moving', 'moved', 'reversing'] as const;
 
-/** The statement that answers the ids of those of some stations of which a shift stands, or is being made or reversed. */
-export function shiftedStationsText(stationIds: readonly number[]): string {
+/** The condition, as SQL, that a shift stands of a station, or is being made or reversed. */
+export function isShiftedText(stationId: string): string {
   const states = STANDING.map((state) => `'${state}'`).join(', ');
-  return `SELECT DISTINCT station_id FROM clock_shifts WHERE station_id IN (${stationIds.join(', ')}) AND state IN (${states})`;
+  return `EXISTS (SELECT 1 FROM clock_shifts WHERE clock_shifts.station_id = ${stationId} AND clock_shifts.state IN (${states}))`;
 }
 
 /** Shifts of a station that stand, or are being made or reversed, by their beginning. */

@@ -1,3 +1,4 @@
+import { isShiftedText } from './clockShifts';
 import { INTERVAL_COLUMNS, type IntervalCells } from './intervalRows';
 import { LONGEST_INTERVAL_SEC } from './intervals';
 import type { TokenStation } from './stationTokens';
@@ -15,21 +16,25 @@ export function lockStationsText(ids: readonly number[], isWaiting: boolean): st
     FOR UPDATE${isWaiting ? '' : ' SKIP LOCKED'}`;
 }
 
-/** A row of `tokensInForceText`: token, station, fraction of its bands, since when it takes intervals. */
-export type TokenCells = [number, number, number, number | null];
+/**
+ * A row of `stationsNowText`: a station, whether a shift of its clock stands, one of the tokens where it is in force (null: none is), fraction of the
+ * bands, since when it takes intervals.
+ */
+export type StationNowCells = [number, 0 | 1, number | null, number, number | null];
 
-/** The statement that answers what some tokens stand for, where they and their stations are in force. */
-export function tokensInForceText(tokenIds: readonly number[]): string {
-  return `SELECT station_tokens.id, stations.id, stations.band_fraction, stations.accepts_from
-    FROM station_tokens JOIN stations ON stations.id = station_tokens.station_id
-    WHERE station_tokens.id IN (${tokenIds.join(', ')})
-      AND station_tokens.revoked_at IS NULL AND stations.retired_at IS NULL`;
+/** The statement that answers how some stations are now, once for each of some tokens that is in force, or once where none of its is. */
+export function stationsNowText(ids: readonly number[], tokenIds: readonly number[]): string {
+  const isToken = tokenIds.length > 0 ? `station_tokens.id IN (${tokenIds.join(', ')})` : 'FALSE';
+  return `SELECT stations.id, ${isShiftedText('stations.id')}, station_tokens.id, stations.band_fraction, stations.accepts_from
+    FROM stations LEFT JOIN station_tokens ON station_tokens.station_id = stations.id AND ${isToken}
+      AND station_tokens.revoked_at IS NULL AND stations.retired_at IS NULL
+    WHERE stations.id IN (${ids.join(', ')})`;
 }
 
 /** Whether what was found by a token still is so. */
-export function isStillSo(remembered: TokenStation, rows: readonly TokenCells[]): boolean {
+export function isStillSo(remembered: TokenStation, rows: readonly StationNowCells[]): boolean {
   return rows.some(
-    ([tokenId, id, bandFraction, acceptsFromSec]) =>
+    ([id, , tokenId, bandFraction, acceptsFromSec]) =>
       tokenId === remembered.tokenId &&
       id === remembered.id &&
       bandFraction === remembered.bandFraction &&

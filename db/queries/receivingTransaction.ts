@@ -53,8 +53,12 @@ async function attemptOnce<T>(
   return decided.value;
 }
 
-/** Rows are added to a statement up to here: some 600 intervals. */
-const MOST_COLLECTED_CHARS = 256 * 1024;
+/**
+ * Rows are added to a statement up to here, and statements to a packet: longer strings than 128 kB lie in memory of their own, which costs
+ * more to get than a further journey with what they hold.
+ */
+const MOST_COLLECTED_CHARS = 56 * 1024;
+const MOST_PACKET_CHARS = 2 * MOST_COLLECTED_CHARS;
 
 /** Statements to send at once, the rows of one table in one of them. */
 class Collected implements Writes {
@@ -72,14 +76,15 @@ class Collected implements Writes {
   collect({ head, rows, tail = '', bindings }: Insertion): void {
     const kind = `${head} ${tail}`;
     const ofKind = this.insertions.get(kind) ?? [];
-    const last = ofKind.at(-1);
-    const text = format(rows.join(', '), bindings);
-    if (last && last.chars + text.length <= MOST_COLLECTED_CHARS) {
-      last.rows.push(text);
-      last.chars += text.length;
-    } else {
-      ofKind.push({ head, tail, rows: [text], chars: text.length });
-      this.insertions.set(kind, ofKind);
+    this.insertions.set(kind, ofKind);
+    for (const row of bindings ? [format(rows.join(', '), bindings)] : rows) {
+      let last = ofKind.at(-1);
+      if (!last || last.chars + row.length > MOST_COLLECTED_CHARS) {
+        last = { head, tail, rows: [], chars: 0 };
+        ofKind.push(last);
+      }
+      last.rows.push(row);
+      last.chars += row.length;
     }
   }
 
@@ -98,10 +103,7 @@ function acquire(): Promise<mysql.PoolConnection> {
   });
 }
 
-/** Far below what a server takes at once (`max_allowed_packet`, 16 MiB by default). */
-const MOST_PACKET_CHARS = 2 * 1024 * 1024;
-
-/** What each of some statements answers; the first that fails ends them all. Only very many need more than one journey. */
+/** What each of some statements answers; the first that fails ends them all. Large posts need more than one journey. */
 async function run(connection: mysql.PoolConnection, statements: readonly string[]): Promise<unknown[]> {
   const answers: unknown[] = [];
   let packet: string[] = [];

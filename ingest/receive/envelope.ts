@@ -1,6 +1,7 @@
 import { bandByNominalHz, type BandFraction } from '#lib/acoustics/bands';
 import { parseInstant } from '#lib/contracts/common';
 import { intervalBatchSchema, MOST_INTERVALS } from '#lib/contracts/intervals';
+import { parsePost } from './parsePost';
 
 /** A post as far as it concerns all of its records. */
 export interface Envelope {
@@ -26,10 +27,28 @@ export class UnreadablePost extends Error {
 
 const unreadable = (detail: string) => new UnreadablePost('unreadable', detail);
 
-/** Reads the envelope of a post for a station whose bands are of `fraction`. @throws {UnreadablePost} */
+/** Reads the envelope of a post, as its bytes came, for a station whose bands are of `fraction`. @throws {UnreadablePost} */
+export async function readPost(bytes: Buffer, fraction: BandFraction): Promise<Envelope> {
+  return envelopeOf(await parsePost(bytes).catch(notJson), fraction);
+}
+
+/** As `readPost`, of text. @throws {UnreadablePost} */
 export function readEnvelope(text: string, fraction: BandFraction): Envelope {
-  const body = parse(text);
-  if (Array.isArray(body.intervals) && body.intervals.length > MOST_INTERVALS) {
+  let body: unknown;
+  try {
+    body = JSON.parse(text);
+  } catch (error) {
+    notJson(error);
+  }
+  return envelopeOf(body, fraction);
+}
+
+function envelopeOf(body: unknown, fraction: BandFraction): Envelope {
+  if (typeof body !== 'object' || body === null || Array.isArray(body)) {
+    throw unreadable('The body is not a JSON object.');
+  }
+  const { intervals: list } = body as { intervals?: unknown };
+  if (Array.isArray(list) && list.length > MOST_INTERVALS) {
     throw new UnreadablePost('too-large', `A post may have at most ${MOST_INTERVALS} intervals.`);
   }
   const envelope = intervalBatchSchema.safeParse(body);
@@ -42,14 +61,8 @@ export function readEnvelope(text: string, fraction: BandFraction): Envelope {
   return { bands, intervals, sentAtSec, bandIndices: indicesOf(bands, fraction) };
 }
 
-function parse(text: string): { intervals?: unknown } {
-  try {
-    const body: unknown = JSON.parse(text);
-    if (typeof body === 'object' && body !== null && !Array.isArray(body)) return body;
-  } catch {
-    throw unreadable('The body is not JSON.');
-  }
-  throw unreadable('The body is not a JSON object.');
+function notJson(error: unknown): never {
+  throw error instanceof SyntaxError ? unreadable('The body is not JSON.') : error;
 }
 
 function indicesOf(bands: number[], fraction: BandFraction): Envelope['bandIndices'] {

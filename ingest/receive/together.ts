@@ -1,13 +1,12 @@
-import { shiftedStationsText } from '#db/queries/clockShifts';
 import { pool, type Writes } from '#db/queries/connection';
 import { intervalsOfCells, type IntervalCells, type StoredInterval } from '#db/queries/intervalRows';
 import {
   isStillSo,
   lockStationsText,
   selectIntervalsOfText,
-  tokensInForceText,
+  stationsNowText,
   type StationIntervalCells,
-  type TokenCells,
+  type StationNowCells,
 } from '#db/queries/receivingReads';
 import { inReceivingTransaction, type Cells } from '#db/queries/receivingTransaction';
 import type { Receipt } from '#lib/contracts/intervals';
@@ -27,8 +26,7 @@ export class StaleStation extends Error {
 /** What the database says of the stations of some posts. */
 interface Known {
   locked: ReadonlySet<unknown>;
-  shifted: ReadonlySet<unknown>;
-  tokens: readonly TokenCells[];
+  now: readonly StationNowCells[];
   /** What is stored where the posts' records lie, by station; what a post adds is added. */
   stored: Map<number, StoredInterval[]>;
 }
@@ -61,19 +59,15 @@ function readsOf(posts: readonly Post[], isWaiting: boolean): string[] {
   });
   return [
     lockStationsText(ids, isWaiting),
-    shiftedStationsText(ids),
-    tokenIds.length > 0 ? tokensInForceText(tokenIds) : NOTHING,
+    stationsNowText(ids, tokenIds),
     ...(stretches.length > 0 ? [selectIntervalsOfText(stretches)] : []),
   ];
 }
 
-const NOTHING = 'SELECT 1 LIMIT 0';
-
-async function knownOf([locked = [], shifted = [], tokens = [], stored = []]: Cells[]): Promise<Known> {
+async function knownOf([locked = [], now = [], stored = []]: Cells[]): Promise<Known> {
   return {
     locked: new Set(locked.map(([id]) => id)),
-    shifted: new Set(shifted.map(([id]) => id)),
-    tokens: tokens as TokenCells[],
+    now: now as StationNowCells[],
     stored: await storedOf(stored as StationIntervalCells[]),
   };
 }
@@ -94,9 +88,8 @@ async function storedOf(rows: readonly StationIntervalCells[]): Promise<Map<numb
 
 async function takeOne(post: Post, known: Known, writes: Writes): Promise<Outcome<Receipt>> {
   const { station, remembered, candidates, bandSet } = post;
-  if (remembered && !isStillSo(remembered, known.tokens))
-    return { kind: 'failed', error: new StaleStation() };
-  if (!known.locked.has(station.id) || known.shifted.has(station.id)) return { kind: 'alone' };
+  if (remembered && !isStillSo(remembered, known.now)) return { kind: 'failed', error: new StaleStation() };
+  if (!known.locked.has(station.id) || isShifted(station.id, known)) return { kind: 'alone' };
   if ('problem' in bandSet || candidates.length === 0) {
     return { kind: 'done', answer: await finishPost(post, null, writes) };
   }
@@ -104,6 +97,10 @@ async function takeOne(post: Post, known: Known, writes: Writes): Promise<Outcom
   const decision = decide(candidates, { ...circumstancesOf(post), stored, bandSet });
   known.stored.set(station.id, [...stored, ...decision.accepted]);
   return { kind: 'done', answer: await finishPost(post, decision, writes) };
+}
+
+function isShifted(stationId: number, { now }: Known): boolean {
+  return now.some(([id, isShiftedNow]) => id === stationId && isShiftedNow === 1);
 }
 
 /** What a post is judged by besides what is stored. */

@@ -18,7 +18,8 @@ const SENDERS = 4;
 const TURNS = 5;
 const SIZES = [
   { perPost: 600, posts: 20, target: '≥ 0.35, aim 0.5' },
-  { perPost: 60, posts: 60, target: '≥ 0.3' },
+  // Enough for a turn of half a second and more: in a shorter one compiling the code is a third of all that is measured.
+  { perPost: 60, posts: 240, target: '≥ 0.3' },
 ];
 const SINGLES = { monitors: 100, seconds: 10, postsPerSec: 500 };
 

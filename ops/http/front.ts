@@ -1,14 +1,17 @@
+import type { IncomingMessage, RequestListener } from 'node:http';
 import compression from 'compression';
 import express, { type Express, type Request, type RequestHandler, type Response } from 'express';
 import helmet from 'helmet';
 import type { Config } from '#lib/config/config';
+import { peopleUnderWay } from '#lib/http/peopleUnderWay';
+import { clientAddress } from './clientAddress';
 import { receivePost } from './receive';
 
 const MOST_BODY_BYTES = 16 * 1024 * 1024;
 const YEAR_SEC = 365 * 86_400;
 
-/** Where monitors post; what arrives there needs neither the pages' server nor what protects browsers. */
-const POSTS = '/api/v1/intervals';
+/** Where monitors post; what arrives there needs neither Express, the pages' server nor what protects browsers. */
+const POSTS = /^\/api\/v1\/intervals\/?(\?|$)/i;
 /** Where files of intervals are uploaded; they are streamed to disk. */
 const UPLOADS = /^\/(api\/v1\/networks\/[^/]+\/imports|n\/[^/]+\/imports\/new)\/?$/;
 /** What a form adds around a file. */
@@ -19,15 +22,29 @@ type FrontSettings = Pick<Config, 'allowedHosts' | 'trustedProxies' | 'origin' |
 /** Astro's handler in middleware mode. */
 export type AstroHandler = (request: Request, response: Response) => Promise<void> | void;
 
+/** What a server listens by: posts of monitors go straight to receiving, everything else is a person's and passes the front before Astro. */
+export function makeFront(astro: AstroHandler, settings: FrontSettings): RequestListener {
+  const pages = makePagesFront(astro, settings);
+  const isPost = ({ method, url, headers }: IncomingMessage) =>
+    method === 'POST' && POSTS.test(url ?? '') && isKnownHost(settings.allowedHosts, headers.host);
+  return (request, response) => {
+    if (isPost(request)) {
+      void receivePost(request, response, clientAddress(request, settings.trustedProxies));
+      return;
+    }
+    peopleUnderWay.note(response);
+    pages(request, response);
+  };
+}
+
 /**
  * The thin HTTP front before Astro: Host allow-list, proxy trust, a bound on bodies, compression, static files.
  * Handlers count the bytes of what they read themselves; the bound here stops what announces itself as too large.
  */
-export function makeFront(astro: AstroHandler, settings: FrontSettings): Express {
+function makePagesFront(astro: AstroHandler, settings: FrontSettings): Express {
   const front = express();
   front.disable('x-powered-by');
   front.set('trust proxy', settings.trustedProxies);
-  front.post(POSTS, requireKnownHost(settings.allowedHosts), receivePost);
   front.use(safeHeaders(settings.origin));
   front.use(requireKnownHost(settings.allowedHosts));
   front.use(setClientAddress);
@@ -64,12 +81,16 @@ function safeHeaders(origin: string): RequestHandler {
 
 function requireKnownHost(allowedHosts: string[]): RequestHandler {
   return (request, response, next) => {
-    if (allowedHosts.includes((request.headers.host ?? '').toLowerCase())) return next();
+    if (isKnownHost(allowedHosts, request.headers.host)) return next();
     response
       .status(421)
       .type('text/plain')
       .send('This server does not answer under that name (BITTERN_ALLOWED_HOSTS).\n');
   };
+}
+
+function isKnownHost(allowedHosts: string[], host = ''): boolean {
+  return allowedHosts.includes(host.toLowerCase());
 }
 
 /** Astro believes forwarding headers: it gets the one address that the proxy setting vouches for, and no others. */

@@ -9,6 +9,7 @@ import { ensureDatabase, OwnDatabase } from './ownDatabase';
 import { takenPorts } from './ports';
 import { ensureSecrets } from './secrets';
 import { untilAnswers } from './untilAnswers';
+import { WEB_ARGUMENTS } from './webArguments';
 import { WORKER_ARGUMENTS } from './workerArguments';
 
 const isEmpty = process.argv.includes('--empty');
@@ -50,7 +51,7 @@ async function start(): Promise<void> {
   await closeDb();
 
   run(settings, 'worker', [...WORKER_ARGUMENTS, 'ingest/worker.ts']);
-  run(settings, 'web', ['--import', 'tsx', 'ops/http/server.ts']);
+  run(settings, 'web', [...WEB_ARGUMENTS, 'ops/http/server.ts']);
   await untilAnswers(`http://${settings.host}:${settings.port}/healthz`, 60_000);
   if (isDemo) run(settings, 'monitors', ['--import', 'tsx', 'ops/demo/monitors.ts']);
   tell(settings, isDemo);

@@ -3,6 +3,7 @@ import { existsSync } from 'node:fs';
 import { once } from 'node:events';
 import { createServer, type AddressInfo } from 'node:net';
 import { setTimeout as sleep } from 'node:timers/promises';
+import { WEB_ARGUMENTS } from '#ops/start/webArguments';
 import { residentMib } from './memory';
 import { processorMs } from './processorTime';
 
@@ -20,7 +21,7 @@ export class Web {
     if (!existsSync('dist/server/entry.mjs')) throw new Error('Build the web first: bash ops/build.sh');
     const port = await freePort();
     const profile = profileDir === undefined ? [] : ['--cpu-prof', `--cpu-prof-dir=${profileDir}`];
-    const web = spawn(process.execPath, [...profile, '--import', 'tsx', 'ops/http/server.ts'], {
+    const web = spawn(process.execPath, [...profile, ...WEB_ARGUMENTS, 'ops/http/server.ts'], {
       stdio: ['ignore', 'ignore', 'inherit'],
       env: { ...process.env, BITTERN_PORT: String(port), BITTERN_ORIGIN: `http://127.0.0.1:${port}` },
     });

@@ -16,6 +16,11 @@ interface Bounds {
   mostOfKey: number;
   mostOfAll: number;
   longestWaitMs: number;
+  /**
+   * Whether whoever takes a whole turn does not get it at the moment, with so many others in one; left out: never. What takes a part overtakes
+   * it meanwhile. It is asked at every change, and when the share is told to `goOn`.
+   */
+  isHeldBack?(wholeTurns: number): boolean;
 }
 
 /**
@@ -36,6 +41,7 @@ interface Waiting {
 export class FairShare {
   private readonly underWay = new Counts();
   private readonly inTurn = new Counts();
+  private wholeTurns = 0;
   /** Who waits, the key first that has waited longest since its last turn. */
   private readonly waiting = new Map<string, Waiting[]>();
 
@@ -59,6 +65,7 @@ export class FairShare {
       return await inTurn();
     } finally {
       this.inTurn.add(key, -part);
+      if (part >= 1) this.wholeTurns -= 1;
       this.callNext();
     }
   }
@@ -81,13 +88,20 @@ export class FairShare {
     });
   }
 
+  /** Asks again who is held back. */
+  goOn(): void {
+    this.callNext();
+  }
+
   private callNext(): void {
     for (const [key, [next, ...later]] of this.waiting) {
       if (this.inTurn.total >= this.bounds.turnsAtOnce) return;
       if (!next || this.inTurn.of(key) + next.part > this.bounds.turnsOfKey) continue;
       // What takes more than is left waits for it; smaller ones do not overtake it for ever.
       if (this.inTurn.total + next.part > this.bounds.turnsAtOnce) return;
+      if (next.part >= 1 && this.bounds.isHeldBack?.(this.wholeTurns)) continue;
       this.inTurn.add(key, next.part);
+      if (next.part >= 1) this.wholeTurns += 1;
       // The key goes to the end of the round.
       this.waiting.delete(key);
       if (later.length > 0) this.waiting.set(key, later);

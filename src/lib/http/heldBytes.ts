@@ -1,3 +1,4 @@
+import type { Chunks } from './monitorRequest';
 import { Problem } from './problem';
 
 /** What bodies that are being read, or wait for their turn, may hold of this process's memory all together. */
@@ -9,19 +10,15 @@ export class HeldBytes {
   private count = 0;
 
   /** Reads a body, counting while it comes. @throws what `tooLarge` makes beyond the limit; {Problem} 503 when memory is full of bodies. */
-  async collect(
-    body: AsyncIterable<Uint8Array>,
-    mostBytes: number,
-    tooLarge: () => Problem,
-  ): Promise<Buffer> {
+  async collect(body: Chunks, mostBytes: number, tooLarge: () => Problem): Promise<Buffer> {
     const chunks: Uint8Array[] = [];
-    for await (const chunk of body) {
+    await body.forEach((chunk) => {
       this.count += chunk.length;
       heldBytes += chunk.length;
       if (this.count > mostBytes) throw tooLarge();
       if (heldBytes > MOST_HELD_BYTES) throw fullOfBodies();
       chunks.push(chunk);
-    }
+    });
     return Buffer.concat(chunks, this.count);
   }
 

@@ -1,4 +1,3 @@
-import { isAscii } from 'node:buffer';
 import { promisify } from 'node:util';
 import { gunzip, gunzipSync } from 'node:zlib';
 import { MOST_BODY_BYTES } from '#lib/contracts/intervals';
@@ -32,13 +31,13 @@ export async function readMonitorBody(
 }
 
 /**
- * The text of a body, inflated when it is gzip: outside this thread unless it is small, and never beyond the limit.
+ * The bytes of a body, inflated when it is gzip: outside this thread unless it is small, and never beyond the limit.
  * @throws {Problem} 413 too large, 422 broken gzip.
  */
-export async function textOfBody({ bytes, isGzip }: MonitorBody): Promise<string> {
-  if (!isGzip || bytes.length === 0) return decode(bytes);
+export async function bytesOfBody({ bytes, isGzip }: MonitorBody): Promise<Buffer> {
+  if (!isGzip || bytes.length === 0) return bytes;
   try {
-    return decode(await inflate(bytes));
+    return await inflate(bytes);
   } catch (error) {
     const { code = '' } = error as { code?: string };
     if (code === 'ERR_BUFFER_TOO_LARGE') throw tooLarge();
@@ -50,11 +49,6 @@ export async function textOfBody({ bytes, isGzip }: MonitorBody): Promise<string
       'The gzip data are broken or cut short.',
     );
   }
-}
-
-/** UTF-8; of what is ASCII, nearly every post, the bytes are the characters. */
-function decode(bytes: Buffer): string {
-  return bytes.toString(isAscii(bytes) ? 'latin1' : 'utf8');
 }
 
 /** Whether a body is small, as far as can be told before it is inflated. */

@@ -1,6 +1,8 @@
 import type { TokenStation } from '#db/queries/stationTokens';
 import { config } from '#lib/config/index';
+import { Courtesy } from './courtesy';
 import { FairShare, NoRoom, type TakeTurn } from './fairShare';
+import { peopleUnderWay } from './peopleUnderWay';
 import { Problem } from './problem';
 import { addressKey, RateLimit } from './rateLimit';
 
@@ -36,7 +38,9 @@ export class ReceivingGate {
       mostOfKey: MOST_OF_TOKEN,
       mostOfAll: MOST_OF_ALL,
       longestWaitMs: LONGEST_WAIT_MS,
+      isHeldBack: (largePosts) => courtesy.isHeldBack(largePosts),
     });
+    const courtesy = new Courtesy(peopleUnderWay, () => this.share.goOn());
   }
 
   /** Lets a post in. @throws {Problem} 429 above the pace, or with too many of the token under way; 503 when all have too many. */

@@ -90,3 +90,25 @@ test('what takes a part of a turn leaves the rest; what takes a whole one is not
   expect(order).toEqual(['a', 'b', 'whole', 'c']);
   await Promise.all(all);
 });
+
+test('whole turns are held back while they shall be, parts of turns go past them, and then they go on', async () => {
+  let areHeldBack = true;
+  const share = new FairShare({ ...BOUNDS, isHeldBack: (wholeTurns) => areHeldBack || wholeTurns > 0 });
+  const order: string[] = [];
+  const take = (key: string, part: number) =>
+    share.enter(key, (takeTurn) =>
+      takeTurn(async () => {
+        order.push(key);
+        await sleep(1);
+      }, part),
+    );
+  const large = [take('large', 1), take('also large', 1)];
+  await take('small', 1 / 4);
+  expect(order).toEqual(['small']);
+  areHeldBack = false;
+  share.goOn();
+  await sleep(0);
+  expect(order).toEqual(['small', 'large']);
+  await Promise.all(large);
+  expect(order).toEqual(['small', 'large', 'also large']);
+});

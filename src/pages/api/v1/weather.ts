@@ -4,7 +4,7 @@ import { HeldBytes } from '#lib/http/heldBytes';
 import { inTime } from '#lib/http/inTime';
 import { monitorRequestOf } from '#lib/http/monitorRequest';
 import { Problem } from '#lib/http/problem';
-import { readMonitorBody, textOfBody } from '#lib/http/readMonitorBody';
+import { readMonitorBody, bytesOfBody } from '#lib/http/readMonitorBody';
 import { json } from '#lib/http/respond';
 import { route } from '#lib/http/route';
 import { receiveWeather } from '#lib/services/weather/receive';
@@ -15,7 +15,7 @@ export const POST = route(async (context) => {
   const held = new HeldBytes();
   try {
     const body = await readMonitorBody(request, held);
-    const records = recordsOf(await textOfBody(body));
+    const records = recordsOf((await bytesOfBody(body)).toString('utf8'));
     return json(await inTime(receiveWeather(mast, records, new Date())));
   } finally {
     held.release();

@@ -1,5 +1,5 @@
 import { ShiftUnderWay } from '#ingest/receive/clockRules';
-import { readEnvelope, UnreadablePost } from '#ingest/receive/envelope';
+import { readPost, UnreadablePost } from '#ingest/receive/envelope';
 import { receiveBatch, StaleStation } from '#ingest/receive/receive';
 import { requireStationToken, sentStationToken, type TokenStation } from '#lib/auth/guards';
 import { responseOf, type Answer } from '#lib/http/answer';
@@ -7,7 +7,7 @@ import { HeldBytes } from '#lib/http/heldBytes';
 import { inTime } from '#lib/http/inTime';
 import { monitorRequestOf, type MonitorRequest } from '#lib/http/monitorRequest';
 import { Problem } from '#lib/http/problem';
-import { isSmallBody, readMonitorBody, textOfBody, type MonitorBody } from '#lib/http/readMonitorBody';
+import { bytesOfBody, isSmallBody, readMonitorBody, type MonitorBody } from '#lib/http/readMonitorBody';
 import { receivingGate } from '#lib/http/receivingGate';
 import { jsonAnswer } from '#lib/http/respond';
 import { route } from '#lib/http/route';
@@ -64,7 +64,7 @@ async function receive(
   remembered: TokenStation | null,
 ): Promise<Answer> {
   try {
-    const envelope = readEnvelope(await textOfBody(body), station.bandFraction);
+    const envelope = await readPost(await bytesOfBody(body), station.bandFraction);
     return jsonAnswer(await receiveBatch(station, envelope, new Date(), remembered));
   } catch (error) {
     throw refusalOf(error);
