@@ -56,8 +56,27 @@ export const documentStationSchema = summaryStationSchema.extend({
 });
 export type DocumentStation = z.output<typeof documentStationSchema>;
 
+/** What a version of a limit says, as far as a reader needs it. */
 export const documentLimitSchema = limitVersionSchema
-  .omit({ recipients: true, createdBy: true })
+  .pick({
+    version: true,
+    name: true,
+    metric: true,
+    descriptor: true,
+    threshold: true,
+    unit: true,
+    weekdays: true,
+    holidays: true,
+    from: true,
+    to: true,
+    minimumCoverage: true,
+    windWords: true,
+    stations: true,
+    groupName: true,
+    reason: true,
+    effectiveFrom: true,
+    effectiveTo: true,
+  })
   .extend({ id: z.number().int() });
 export type DocumentLimit = z.output<typeof documentLimitSchema>;
 

@@ -1,12 +1,13 @@
 import { type Connection } from '#db/queries/connection';
 import { type ExceedanceRow } from '#db/queries/exceedances';
 import { listHolidays } from '#db/queries/holidays';
-import { listLimitRecords, type LimitMetric, type LimitRecord } from '#db/queries/limits';
+import { listLimitRecords, type LimitRecord } from '#db/queries/limits';
 import { type NetworkSettings } from '#db/queries/networks';
 import { type StationRow } from '#db/queries/stations';
 import { documentLimitSchema, type DocumentLimit } from '#lib/contracts/monthDocument';
 import { type Compliance } from '#lib/contracts/monthEvidence';
 import { limitMetricText, limitUnit } from '#lib/format/limitMetric';
+import { partsOf } from '../../limitTrial/parts';
 import { tryRule } from '../../limitTrial/tryRule';
 import { byLimit, coversStation, replacedFromSec } from '../../limits/force';
 import { limitView } from '../../limits/view';
@@ -86,24 +87,13 @@ function inForceWithin(version: LimitRecord, ofLimit: readonly LimitRecord[], mo
   return fromSec < toSec ? { fromSec, toSec } : null;
 }
 
-/** Quantities whose windows are added up from quarter-hours, and those of them that rolling windows are, too. */
-const ADDED_UP: readonly LimitMetric[] = [
-  'LAeq',
-  'LAFmax',
-  'LAE',
-  'LAN',
-  'LAeqLessLA90',
-  'LCeqLessLAeq',
-  'bandLeq',
-  'bandGroupLeq',
-];
-const ROLLING: readonly LimitMetric[] = ['LAeq', 'LAFmax', 'LAE'];
-
 /** Windows whose count would take reading every interval, or weeks before, are not counted. */
-function isCounted({ averaging, windowMin, stepMin, fromMin, toMin, metric }: LimitRecord): boolean {
+function isCounted(version: LimitRecord): boolean {
+  const { averaging, windowMin, stepMin, fromMin, toMin } = version;
   const isRagged = averaging === 'hours' && [fromMin, toMin].some((minute) => (minute ?? 0) % 15 !== 0);
   const isFine = (windowMin ?? 0) % 15 !== 0 || (stepMin !== null && stepMin % 15 !== 0) || isRagged;
-  return !isFine && (stepMin === null ? ADDED_UP : ROLLING).includes(metric);
+  const parts = partsOf(version);
+  return !isFine && parts !== null && (stepMin === null || parts === 'energies');
 }
 
 async function windowsOf(

@@ -1,5 +1,6 @@
 import { bandByNominalHz, bandLabel } from '#lib/acoustics/bands';
 import { type DocumentStation, type MonthDocument } from '#lib/contracts/monthDocument';
+import { type SummaryMetric } from '#lib/contracts/summaryTemplate';
 import { levelColour } from '#lib/format/levelRamp';
 import { skippedHours } from '../../../figures/civilHours';
 import { type DocumentFormat } from '../format';
@@ -15,6 +16,12 @@ export interface ChartGround {
 }
 
 const AXIS = 30;
+
+const TRENDS = [
+  { name: 'Lden', kind: 'whole', colour: RUST },
+  { name: 'Lday', kind: 'day', colour: GREEN },
+  { name: 'Lnight', kind: 'night', colour: BLUE },
+] as const;
 
 /** Draws a figure of some height with its alternative text, kept on one page. */
 export function figure(pages: Pages, height: number, alt: string, draw: (top: number) => void): void {
@@ -32,25 +39,17 @@ export function levelScale(levels: readonly number[], stepDb: number): { lowDb: 
   return { lowDb, highDb: Math.max(highDb, lowDb + stepDb) };
 }
 
-/** Lden, Lday and Lnight of each date. */
-export function trendChart({ pages, words }: ChartGround, station: DocumentStation): void {
-  const series = [
-    {
-      name: 'Lden',
-      colour: RUST,
-      of: station.days.map(({ Lden, periods }) => ({ db: Lden, isWhole: periods.whole.meetsMinimum })),
-    },
-    {
-      name: 'Lday',
-      colour: GREEN,
-      of: station.days.map(({ Lday, periods }) => ({ db: Lday, isWhole: periods.day.meetsMinimum })),
-    },
-    {
-      name: 'Lnight',
-      colour: BLUE,
-      of: station.days.map(({ Lnight, periods }) => ({ db: Lnight, isWhole: periods.night.meetsMinimum })),
-    },
-  ];
+/** Lden, Lday and Lnight of each date, those of them that are among the chosen figures. */
+export function trendChart(
+  { pages, words }: ChartGround,
+  station: DocumentStation,
+  metrics: readonly SummaryMetric[],
+): void {
+  const series = TRENDS.filter(({ name }) => metrics.includes(name)).map(({ name, kind, colour }) => ({
+    name,
+    colour,
+    of: station.days.map((day) => ({ db: day[name], isWhole: day.periods[kind].meetsMinimum })),
+  }));
   const levels = series.flatMap(({ of }) => of.flatMap(({ db }) => (db === null ? [] : [db])));
   if (levels.length === 0) return;
   const height = 120;

@@ -132,8 +132,8 @@ function days(ground: PdfGround, station: DocumentStation): void {
   const { pages, words, format, context } = ground;
   pages.heading(3, words.sections.days, { keep: 160 + (station.days.length + 2) * BAND_ROW });
   pages.paragraph(words.captions.days, CAPTION, 3);
-  trendChart(ground, station);
   const { metrics } = context.template;
+  trendChart(ground, station, metrics);
   table(
     pages,
     [

@@ -43,6 +43,7 @@ export function limitsTable({ limits }: MonthDocument): TopicTable {
       text('holidays', 'What named dates are to it', ({ holidays }) => holidays),
       text('from_clock', 'Local time from which on', (limit) => limit.from),
       text('to_clock', 'Local time until which', (limit) => limit.to),
+      text('wind', 'Wind at which it holds; empty: any', ({ windWords }) => windWords),
       share(
         'minimum_coverage',
         'Coverage that a window needs; empty: the network’s',
