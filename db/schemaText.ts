@@ -3,7 +3,7 @@ import type { Knex } from 'knex';
 /** Knex's own tables say nothing about the product. */
 const BOOKKEEPING = /^schema_migrations/;
 
-/** The statements that would make the tables of a migrated database as they are now, by name. */
+/** The statements that would make the tables and triggers of a migrated database as they are now, by name. */
 export async function schemaText(conn: Knex): Promise<string> {
   const [tables] = (await conn.raw('SHOW FULL TABLES')) as [Record<string, string>[]];
   const names = tables.map((row) => Object.values(row)[0] ?? '').filter((name) => !BOOKKEEPING.test(name));
@@ -13,5 +13,16 @@ export async function schemaText(conn: Knex): Promise<string> {
     const statement = row?.['Create Table'] ?? row?.['Create View'] ?? '';
     statements.push(`${statement.replace(/ AUTO_INCREMENT=\d+/, '')};\n`);
   }
-  return statements.join('\n');
+  return [...statements, ...(await triggerStatements(conn))].join('\n');
+}
+
+async function triggerStatements(conn: Knex): Promise<string[]> {
+  const [triggers] = (await conn.raw('SHOW TRIGGERS')) as [Record<string, string>[]];
+  return triggers
+    .map(({ Trigger: name = '', Timing, Event, Table, Statement }) => ({
+      name,
+      text: `CREATE TRIGGER \`${name}\` ${Timing} ${Event} ON \`${Table}\` FOR EACH ROW\n  ${Statement};\n`,
+    }))
+    .sort((a, b) => a.name.localeCompare(b.name))
+    .map(({ text }) => text);
 }

@@ -16,6 +16,9 @@ const OPEN_ROUTES = [
   '/api/v1/intervals',
   '/api/v1/intervals/last',
   '/api/v1/weather',
+  '/api/v1/summaries/verify',
+  '/api/v1/summaries/keys',
+  '/api/v1/summaries/keys/[key]',
 ];
 
 const NAMES: Record<string, string> = {
@@ -24,6 +27,8 @@ const NAMES: Record<string, string> = {
   id: '1',
   reference: 'DOORS-2026-0001',
   file: '2026-03.csv',
+  month: '2026-03',
+  key: 'ab'.repeat(32),
 };
 
 const BODIES: [what: string, body: string | undefined, contentType: string][] = [

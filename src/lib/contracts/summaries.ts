@@ -9,7 +9,7 @@ import { registerRoute } from './registry';
 export const month = z.string().regex(/^(19|20|21)\d{2}-(0[1-9]|1[0-2])$/, 'must be a month such as 2026-03');
 
 /** Formats that a month comes in. */
-export const SUMMARY_FORMATS = ['pdf', 'csv', 'json'] as const;
+export const SUMMARY_FORMATS = ['pdf', 'xlsx', 'csv', 'json'] as const;
 export type SummaryFormat = (typeof SUMMARY_FORMATS)[number];
 
 const level = (description: string) =>
@@ -137,11 +137,27 @@ export const summarySchema = z.object({
 });
 export type Summary = z.output<typeof summarySchema>;
 
+/** States of a month: `open` and `closed` before anybody drafts it. */
+export const MONTH_STATES = ['open', 'closed', 'draft', 'review', 'issuing', 'issued'] as const;
+export type MonthState = (typeof MONTH_STATES)[number];
+
 export const summaryMonthSchema = z.object({
   month,
   isToDate: z.boolean(),
   stations: z.array(z.object({ code: z.string(), coverage: z.number() })),
   formats: z.array(z.enum(SUMMARY_FORMATS)),
+  state: z
+    .enum(MONTH_STATES)
+    .describe(
+      'open: not over; closed: not drafted yet; else of the latest revision. Files are of the latest issued one',
+    ),
+  revision: z.number().int().nullable().describe('Latest issued; null: none, files are a draft'),
+  issuedAt: z.string().nullable(),
+  issuedBy: z.string().nullable(),
+  revisions: z
+    .array(z.number().int())
+    .describe('Issued ones, latest first; all but the first are superseded'),
+  hasProposal: z.boolean().describe('Figures have changed since; a revision waits for a decision'),
 });
 export type SummaryMonth = z.output<typeof summaryMonthSchema>;
 
@@ -176,23 +192,39 @@ registerRoute({
   access: 'person',
   method: 'get',
   path: `${base}/{file}`,
-  summary: 'A month as PDF, CSV or JSON; the same figures in each',
+  summary: 'A month as PDF, XLSX, CSV or JSON, and the seal of an issued one',
   request: {
     params: z.object({
       network: z.string(),
       file: z
         .string()
-        .regex(/^\d{4}-\d{2}\.(pdf|csv|json)$/)
-        .describe('Such as 2026-03.pdf'),
+        .regex(/^\d{4}-\d{2}\.(pdf|xlsx|csv|json|manifest\.json|manifest\.sig)$/)
+        .describe('Such as 2026-03.pdf, or 2026-03.manifest.json and 2026-03.manifest.sig'),
+    }),
+    query: z.object({
+      revision: z
+        .string()
+        .optional()
+        .describe('Without it the latest issued revision, and where there is none the draft as of now'),
     }),
   },
   responses: {
     200: {
-      description: 'The month. The CSV is long: one figure a row, the first column says the kind of record.',
+      description:
+        'The month. CSV of an issued one is a ZIP with its description; of a draft it is long: one figure a row, the first column says the kind of record. The signature is 64 bytes, Ed25519.',
+      headers: {
+        'Bittern-Revision': { description: 'Its revision, or draft', schema: { type: 'string' } },
+        'Bittern-Superseded': {
+          description: 'The revision that takes its place, where there is one',
+          schema: { type: 'string' },
+        },
+      },
       content: {
         'application/json': { schema: summarySchema },
         'text/csv': { schema: z.string() },
+        'application/zip': { schema: z.string() },
         'application/pdf': { schema: z.string() },
+        'application/octet-stream': { schema: z.string() },
       },
     },
   },

@@ -1,10 +1,13 @@
 import { createHash, randomBytes } from 'node:crypto';
+import { createReadStream } from 'node:fs';
 import { mkdir, open, readFile, rename, rm } from 'node:fs/promises';
 import { join } from 'node:path';
+import { type Readable } from 'node:stream';
+import { pipeline } from 'node:stream/promises';
 import { config } from '#lib/config/index';
 
-/** Folders of the data directory that hold what people uploaded, each file under the name of its own digest. */
-export type KeptFolder = 'certificates' | 'photos';
+/** Folders of the data directory that hold what people uploaded and what was issued, each file under the name of its own digest. */
+export type KeptFolder = 'certificates' | 'photos' | 'marks' | 'summaries';
 
 /**
  * Writes a file into the data directory, outside everything that is served, and answers its SHA-256. It is durable when the
@@ -35,6 +38,19 @@ export async function readKeptFile(folder: KeptFolder, sha256: Buffer): Promise<
     if ((error as { code?: string }).code === 'ENOENT') return null;
     throw error;
   }
+}
+
+/** A file’s bytes as a stream, told whole beforehand; null when it is gone or is no longer what was kept. */
+export async function streamKeptFile(folder: KeptFolder, sha256: Buffer): Promise<Readable | null> {
+  const path = pathOf(folder, sha256);
+  const hash = createHash('sha256');
+  try {
+    await pipeline(createReadStream(path), hash);
+  } catch (error) {
+    if ((error as { code?: string }).code === 'ENOENT') return null;
+    throw error;
+  }
+  return hash.digest().equals(sha256) ? createReadStream(path) : null;
 }
 
 /** Removes a file; one that is gone is no error. */

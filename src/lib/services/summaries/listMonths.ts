@@ -2,6 +2,7 @@ import { listSettings, type NetworkRow } from '#db/queries/networks';
 import { listStations } from '#db/queries/stations';
 import { listStationMonths } from '#db/queries/summaries';
 import { SUMMARY_FORMATS, type SummaryMonth } from '#lib/contracts/summaries';
+import { monthStandings } from './life/states';
 import { monthSpan, stoodWithin } from './monthSpan';
 
 /**
@@ -15,10 +16,11 @@ export async function listMonths(
   within: { fromSec: number; toSec: number } | null = null,
 ): Promise<SummaryMonth[]> {
   const nowSec = Math.floor(now.getTime() / 1000);
-  const [timeline, stations, found] = await Promise.all([
+  const [timeline, stations, found, standingOf] = await Promise.all([
     listSettings(network.id),
     listStations(network.id),
     listStationMonths(network.id),
+    monthStandings(network.id),
   ]);
   const months = [...new Set(found.map(({ month }) => month))].map((month) => monthSpan(month, timeline));
   const wanted = months.filter(
@@ -36,6 +38,7 @@ export async function listMonths(
       month,
       isToDate: nowSec < span.lastNightEndSec,
       formats: [...SUMMARY_FORMATS],
+      ...standingOf(month, nowSec >= span.lastNightEndSec),
       stations: listed.map(({ id, code }) => {
         const validSec = found.find((row) => row.month === month && row.stationId === id)?.validSec ?? 0;
         return { code, coverage: elapsedSec === 0 ? 0 : Math.min(1, validSec / elapsedSec) };

@@ -1,0 +1,58 @@
+import { appendAudit } from '#db/queries/audit';
+import { inTransaction } from '#db/queries/connection';
+import { listIssued } from '#db/queries/issuedSummaries';
+import { findNetworkById, listSettings } from '#db/queries/networks';
+import { listWatchedDrafts, updateDraft, type SummaryDraftRow } from '#db/queries/summaryDrafts';
+import { insertProposal, replaceOpenProposals } from '#db/queries/summaryProposals';
+import { log } from '#lib/config/log';
+import { fingerprintOf } from '#lib/services/summaries/life/measure';
+import { monthSpan } from '#lib/services/summaries/monthSpan';
+import { differencesSinceIssue } from '#lib/services/summaries/life/differences';
+
+/**
+ * Looks at each issued month whose grounds have changed since it was looked at last, and proposes a revision where any of its figures
+ * would be another now. @returns how many were compared.
+ */
+export async function watchIssuedMonths(now: Date): Promise<number> {
+  let compared = 0;
+  for (const watched of await listWatchedDrafts()) {
+    try {
+      if (await compare(watched, now)) compared += 1;
+    } catch (error) {
+      log().error({ err: error, month: watched.month, network: watched.networkId }, 'month not compared');
+    }
+  }
+  return compared;
+}
+
+async function compare(watched: SummaryDraftRow, now: Date): Promise<boolean> {
+  const { networkId, month, revision } = watched;
+  const network = await findNetworkById(networkId);
+  if (!network) return false;
+  const span = monthSpan(month, await listSettings(networkId));
+  const fingerprint = await fingerprintOf(networkId, span);
+  if (watched.fingerprint?.equals(fingerprint)) return false;
+  const [issued] = await listIssued(networkId, month);
+  if (!issued || issued.revision !== revision) return false;
+  const { changes } = await differencesSinceIssue(network, issued, now);
+  await inTransaction(async (transaction) => {
+    await updateDraft(watched, { fingerprint }, transaction);
+    if (changes.length === 0) {
+      await replaceOpenProposals({ networkId, month }, null, transaction);
+      return;
+    }
+    const isNew = await insertProposal({ networkId, month, ofRevision: revision, changes }, transaction);
+    if (!isNew) return;
+    await appendAudit(
+      {
+        userId: null,
+        networkId,
+        action: 'summary.propose',
+        subject: `summary ${month} revision ${revision}`,
+        detail: { changes: changes.length },
+      },
+      transaction,
+    );
+  });
+  return true;
+}

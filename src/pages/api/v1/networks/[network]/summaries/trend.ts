@@ -1,0 +1,10 @@
+import { requireNetwork } from '#lib/auth/guards';
+import { ALL_ROLES } from '#lib/auth/roles';
+import { json } from '#lib/http/respond';
+import { route } from '#lib/http/route';
+import { summaryTrend } from '#lib/services/summaries/desk/trend';
+
+export const GET = route(async (context) => {
+  const { network } = await requireNetwork(context, context.params['network'], ALL_ROLES);
+  return json({ items: await summaryTrend(network.id) });
+});
