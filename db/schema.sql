@@ -1121,6 +1121,25 @@ CREATE TABLE `users` (
   UNIQUE KEY `users_email` (`email`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
+CREATE TABLE `weather_quarantine` (
+  `id` bigint(20) unsigned NOT NULL AUTO_INCREMENT,
+  `mast_id` int(10) unsigned NOT NULL,
+  `code` varchar(32) NOT NULL COMMENT 'of the refusal; superseded: was stored until a released record replaced it',
+  `detail` varchar(500) NOT NULL,
+  `record` mediumtext NOT NULL COMMENT 'JSON as received',
+  `record_digest` binary(32) NOT NULL COMMENT 'the same refused record sent again is kept once',
+  `starts_at` int(10) unsigned DEFAULT NULL,
+  `received_at` datetime(3) NOT NULL,
+  `times_received` int(10) unsigned NOT NULL DEFAULT 1,
+  `settlement` enum('released','dismissed','superseded') DEFAULT NULL,
+  `settlement_reason` varchar(500) DEFAULT NULL,
+  `settled_at` datetime(3) DEFAULT NULL,
+  `settled_by` char(36) DEFAULT NULL,
+  PRIMARY KEY (`id`),
+  UNIQUE KEY `weather_quarantine_record` (`mast_id`,`code`,`record_digest`),
+  KEY `weather_quarantine_open` (`mast_id`,`settlement`,`id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
 CREATE TABLE `weather_records` (
   `mast_id` int(10) unsigned NOT NULL,
   `starts_at` int(10) unsigned NOT NULL,

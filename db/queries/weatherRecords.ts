@@ -83,3 +83,12 @@ export async function insertWeather(
 function hundredths(value: number | null): number | null {
   return value === null ? null : Math.round(value * 100);
 }
+
+/** Takes one record of a mast out of the stored ones. */
+export async function deleteWeather(
+  mastId: number,
+  startSec: number,
+  transaction: Connection,
+): Promise<void> {
+  await transaction('weather_records').where({ mast_id: mastId, starts_at: startSec }).delete();
+}

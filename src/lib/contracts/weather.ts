@@ -143,7 +143,7 @@ registerRoute({
   summary: 'A weather mast posts records',
   description:
     'As monitors post intervals: batches, gzip welcome, late and again as it comes; the answer comes once everything accepted is durable. ' +
-    'A record with the start of another is known when it says the same, and refused when it differs. Refused records are not kept.',
+    'A record with the start of another is known when it says the same, and refused when it differs. Refused records are kept for the operator.',
   request: {
     body: body(
       weatherBatchSchema.extend({ records: z.array(weatherRecordSchema).min(1).max(MOST_WEATHER_RECORDS) }),

@@ -1,8 +1,10 @@
 import { type MastRow } from '#db/queries/masts';
 import { mastChangeSchema, newAssignmentSchema, type WeatherFileReport } from '#lib/contracts/weather';
+import { weatherSettlementSchema, type WeatherSettled } from '#lib/contracts/weatherQuarantine';
 import { assignMast, endMastAssignment } from '#lib/services/weather/assign';
 import { takeWeatherFile } from '#lib/services/weather/file';
 import { addMastToken, changeMast, endMastToken } from '#lib/services/weather/masts';
+import { settleWeather } from '#lib/services/weather/refused';
 import { type PostedForm } from './forms';
 import { idOf, valueOf } from './outcome';
 import { badRequest, invalidFields, notFound } from './problem';
@@ -11,7 +13,8 @@ import { badRequest, invalidFields, notFound } from './problem';
 export type MastAct =
   | { kind: 'done'; word: 'changed' | 'assigned' | 'ended' | 'revoked' }
   | { kind: 'token'; token: string }
-  | { kind: 'file'; report: WeatherFileReport };
+  | { kind: 'file'; report: WeatherFileReport }
+  | { kind: 'settled'; outcome: WeatherSettled };
 
 /** What the page read of a form that holds local times and typed numbers. */
 interface Typed {
@@ -57,6 +60,17 @@ export async function actOnMast(
       if (!file) throw invalidFields([{ field: 'file', message: 'must be chosen' }]);
       const isTrial = text['act'] === 'try-file';
       return { kind: 'file', report: valueOf(await takeWeatherFile(mast, await file.text(), isTrial)) };
+    }
+    case 'refused': {
+      const ids = text['record'] ? [idOf(text['record'])] : undefined;
+      if (!ids && text['state'] === 'superseded')
+        throw invalidFields([{ field: 'ids', message: 'must name a record' }]);
+      const settling = weatherSettlementSchema.parse({
+        act: text['settle'],
+        ids,
+        reason: text['reason'] || null,
+      });
+      return { kind: 'settled', outcome: await settleWeather(mast, settling, userId, new Date()) };
     }
     default:
       throw badRequest('The form did not say what to do. Nothing was changed.');

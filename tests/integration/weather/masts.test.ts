@@ -69,6 +69,60 @@ describe('a mast posts', () => {
   });
 });
 
+describe('what was refused', () => {
+  const refused = async (state = 'open') => {
+    const path = `${base}/masts/WI-W1/refused?state=${state}`;
+    const { items } = await (await callApi('GET', path, regulator)).json();
+    return items as { id: number; code: string; timesReceived: number; record: unknown; settled: unknown }[];
+  };
+  const settle = async (body: object, by = operator) =>
+    callApi('POST', `${base}/masts/WI-W1/refused/settlements`, { ...by, body });
+  const windAt = (minute: number) =>
+    db()('weather_records')
+      .where({ starts_at: Date.parse(record(minute).start) / 1000 })
+      .pluck('wind_speed_centi_ms');
+
+  test('is kept as it came, once, and released, dismissed and reopened by an operator', async () => {
+    const bad = record(1, { windSpeed: 9 });
+    await post([bad]);
+    const open = await refused();
+    const conflict = open.find(({ record: kept }) => JSON.stringify(kept) === JSON.stringify(bad));
+    expect(conflict).toMatchObject({ code: 'conflict', timesReceived: 2, record: bad });
+    expect(open.map(({ code }) => code).sort()).toEqual([
+      'clock-ahead',
+      'conflict',
+      'malformed',
+      'out-of-range',
+      'overlap',
+    ]);
+    const malformed = open.find(({ code }) => code === 'malformed');
+    const [ids, reason] = [[malformed?.id], 'The logger was being set up.'];
+    expect((await settle({ act: 'dismiss', ids }, operator)).status).toBe(422);
+    expect((await settle({ act: 'dismiss', ids, reason }, regulator)).status).toBe(403);
+    const { outcome } = await (await settle({ act: 'dismiss', ids, reason })).json();
+    expect(outcome).toMatchObject({ settled: 1, passedOver: 0 });
+    expect(await refused('dismissed')).toMatchObject([{ settled: { reason } }]);
+    await settle({ act: 'reopen', ids });
+    expect(await refused('dismissed')).toEqual([]);
+    const all = await (await settle({ act: 'release' })).json();
+    expect(all.outcome).toMatchObject({ settled: 0, passedOver: 5 });
+  });
+
+  test('a released conflict takes the place of the stored record, which can be put back the same way', async () => {
+    const conflict = (await refused()).find(({ code }) => code === 'conflict');
+    const reason = 'The mast’s own log shows it.';
+    expect((await settle({ act: 'replace', ids: [conflict?.id] })).status).toBe(422);
+    await settle({ act: 'replace', ids: [conflict?.id], reason });
+    expect(await windAt(1)).toEqual([900]);
+    const [before] = await refused('superseded');
+    expect(before).toMatchObject({ record: { windSpeed: 3.2, windDirection: 240 } });
+    await settle({ act: 'replace', ids: [before?.id], reason: 'It was right.' });
+    expect(await windAt(1)).toEqual([320]);
+    const acts = await db()('audit_log').where('action', 'weather-quarantine.replace');
+    expect(acts).toHaveLength(2);
+  });
+});
+
 describe('people', () => {
   test('operators add, assign and end; a station has one mast at a time; every role sees', async () => {
     expect((await callApi('POST', `${base}/masts`, { ...regulator, body: MAST })).status).toBe(403);

@@ -1,16 +1,19 @@
-import { inTransaction } from '#db/queries/connection';
+import { inTransaction, type Connection } from '#db/queries/connection';
 import { lockMast } from '#db/queries/masts';
+import { insertRefusedWeather } from '#db/queries/weatherQuarantine';
 import { insertWeather, selectWeather, type StoredWeather } from '#db/queries/weatherRecords';
-import { firstRecordEndingAfter } from '#lib/acoustics/mastWeather';
+import { firstRecordEndingAfter, type WeatherRecord } from '#lib/acoustics/mastWeather';
 import { parseInstant } from '#lib/contracts/common';
 import { type Receipt, type RefusalCode } from '#lib/contracts/intervals';
 import { weatherRecordSchema } from '#lib/contracts/weather';
+import { keptWeather } from './keptWeather';
 import { markStationsOf, spansSpokenOf } from './touched';
 
 /** A clock this far ahead is believed. */
 const AHEAD_SEC = 300;
 
-interface Refused {
+/** Why a record is not taken, by its place among those given. */
+export interface RefusedRecord {
   index: number;
   code: RefusalCode;
   detail: string;
@@ -19,7 +22,7 @@ interface Refused {
 interface Sorted {
   accepted: StoredWeather[];
   known: number;
-  refused: Refused[];
+  refused: RefusedRecord[];
   /** What is stored, and the accepted ones, ascending. */
   all: StoredWeather[];
 }
@@ -31,9 +34,9 @@ export interface ReceivingMast {
 }
 
 /**
- * Takes records of a mast: each is accepted, known already, or refused with a reason. When the promise resolves everything accepted
- * is durable, with marks for every quarter-hour of the stations whose figures it may decide. `isTrial`: tells what would become
- * of them and stores nothing.
+ * Takes records of a mast: each is accepted, known already, or refused with a reason and kept. When the promise resolves everything
+ * accepted and every record kept is durable, with marks for every quarter-hour of the stations whose figures it may decide. `isTrial`:
+ * tells what would become of them and stores nothing.
  */
 export async function receiveWeather(
   mast: ReceivingMast,
@@ -41,44 +44,69 @@ export async function receiveWeather(
   now: Date,
   isTrial = false,
 ): Promise<Receipt> {
-  const nowSec = now.getTime() / 1000;
-  const read = readAll(records, nowSec);
-  const sorted = await inTransaction(
+  const taken = await inTransaction(
     async (transaction) => {
-      const [earliest] = [...read.records].sort((a, b) => a.record.startSec - b.record.startSec);
-      if (!earliest) return { accepted: [], known: 0, refused: [], all: [] };
-      const latestSec = Math.max(...read.records.map(({ record }) => record.startSec + record.durationSec));
-      await lockMast(mast.id, transaction);
-      const fromSec = earliest.record.startSec;
-      const stored = await selectWeather(mast.id, fromSec, latestSec, mast.maximumAgeSec, transaction);
-      const found = sort(read.records, stored);
-      if (isTrial) return found;
-      await insertWeather(mast.id, found.accepted, Math.floor(nowSec), transaction);
-      const fresh = new Set(found.accepted);
-      const spans = spansSpokenOf(
-        found.all,
-        (record) => fresh.has(record as StoredWeather),
-        mast.maximumAgeSec,
-      );
-      await markStationsOf(mast.id, spans, transaction);
-      return found;
+      const found = await takeRecords(mast, records, now, transaction, isTrial);
+      const refused = found.refused.map((one) => ({ ...one, kept: keptWeather(one, records[one.index]) }));
+      const kept = refused.flatMap((one) => one.kept ?? []);
+      if (!isTrial) await insertRefusedWeather(mast.id, kept, now, transaction);
+      return { ...found, refused };
     },
     // Reads after a lock must see all that was committed before it was granted.
     { isolationLevel: 'read committed' },
   );
-  const refused = [...read.refused, ...sorted.refused].sort((a, b) => a.index - b.index);
   return {
-    accepted: sorted.accepted.length,
-    known: sorted.known,
-    refused: refused.map((one) => ({ ...one, quarantined: false })),
+    accepted: taken.accepted,
+    known: taken.known,
+    refused: taken.refused.map(({ index, code, detail, kept }) => ({
+      index,
+      code,
+      detail,
+      quarantined: kept !== null && !isTrial,
+    })),
     serverTime: now.toISOString(),
   };
+}
+
+/** What became of some records. */
+export interface TakenWeather {
+  accepted: number;
+  known: number;
+  /** By their places, ascending. */
+  refused: RefusedRecord[];
+}
+
+/** Takes records in a read-committed transaction, with the mast locked, keeping none of the refused ones; `isTrial`: stores nothing. */
+export async function takeRecords(
+  mast: ReceivingMast,
+  records: readonly unknown[],
+  now: Date,
+  transaction: Connection,
+  isTrial = false,
+): Promise<TakenWeather> {
+  const nowSec = now.getTime() / 1000;
+  const read = readAll(records, nowSec);
+  const [earliest] = [...read.records].sort((a, b) => a.record.startSec - b.record.startSec);
+  if (!earliest) return { accepted: 0, known: 0, refused: read.refused };
+  const latestSec = Math.max(...read.records.map(({ record }) => record.startSec + record.durationSec));
+  await lockMast(mast.id, transaction);
+  const fromSec = earliest.record.startSec;
+  const stored = await selectWeather(mast.id, fromSec, latestSec, mast.maximumAgeSec, transaction);
+  const found = sort(read.records, stored);
+  if (!isTrial) {
+    await insertWeather(mast.id, found.accepted, Math.floor(nowSec), transaction);
+    const fresh = new Set<WeatherRecord>(found.accepted);
+    const spans = spansSpokenOf(found.all, (record) => fresh.has(record), mast.maximumAgeSec);
+    await markStationsOf(mast.id, spans, transaction);
+  }
+  const refused = [...read.refused, ...found.refused].sort((a, b) => a.index - b.index);
+  return { accepted: found.accepted.length, known: found.known, refused };
 }
 
 function readAll(
   records: readonly unknown[],
   nowSec: number,
-): { records: { index: number; record: StoredWeather }[]; refused: Refused[] } {
+): { records: { index: number; record: StoredWeather }[]; refused: RefusedRecord[] } {
   const read: ReturnType<typeof readAll> = { records: [], refused: [] };
   for (const [index, value] of records.entries()) {
     const parsed = weatherRecordSchema.safeParse(value);
