@@ -27,7 +27,7 @@ export interface ShapeQuery {
 export interface ShapeMatch {
   minute: number;
   rmsDb: number;
-  laeqDb: number;
+  laeqCentiDb: number;
 }
 
 /** Rounding an outline's group to whole steps moves its mean by at most half of one. */
@@ -90,20 +90,34 @@ export class ShapeSearch {
 
   /** Minutes of a day that are alike, ascending; `isWanted` leaves out minutes that are not asked for. */
   matches(trace: DayTrace, isWanted: (minute: number) => boolean): ShapeMatch[] {
+    const found: ShapeMatch[] = [];
+    this.eachMatch(trace, isWanted, (match) => found.push({ ...match }));
+    return found;
+  }
+
+  /** The same, told one after the other in one object that is filled again: a year of stations has millions. */
+  eachMatch(
+    trace: DayTrace,
+    isWanted: (minute: number) => boolean,
+    tell: (match: Readonly<ShapeMatch>) => void,
+  ): void {
     const { firstSlot, slots } = trace;
     const compared = this.#slots.filter((slot) => firstSlot <= slot && slot < firstSlot + slots);
-    if (compared.length < MINIMUM_SHARED_THIRDS) return [];
+    if (compared.length < MINIMUM_SHARED_THIRDS) return;
     const offsets = Int32Array.from(compared, (slot) => slot - firstSlot);
     const querySteps = Float64Array.from(compared, (slot) => this.#query[slot] ?? 0);
     const mostSquares = compared.length * (this.asked.mostRmsDb * STEPS_A_DB) ** 2;
-    const found: ShapeMatch[] = [];
+    const match: ShapeMatch = { minute: 0, rmsDb: 0, laeqCentiDb: 0 };
     for (let minute = 0; minute < DAY_MINUTES; minute += 1) {
       const laeqCentiDb = trace.laeqCentiDb[minute] ?? NO_LEVEL_CENTI_DB;
       if (!this.#isLevel(laeqCentiDb) || !isWanted(minute)) continue;
       const rmsDb = rmsOf(trace.steps, minute * slots, { offsets, querySteps, mostSquares });
-      if (rmsDb <= this.asked.mostRmsDb) found.push({ minute, rmsDb, laeqDb: laeqCentiDb / 100 });
+      if (rmsDb > this.asked.mostRmsDb) continue;
+      match.minute = minute;
+      match.rmsDb = rmsDb;
+      match.laeqCentiDb = laeqCentiDb;
+      tell(match);
     }
-    return found;
   }
 
   #isLevel(laeqCentiDb: number): boolean {

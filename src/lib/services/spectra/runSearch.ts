@@ -86,13 +86,14 @@ export class SearchRun {
     for (let minute = 0; minute < DAY_MINUTES; minute += 1) {
       if (outline[minute * OUTLINE_GROUPS] !== 0 && isWanted(minute)) searched.minutes += 1;
     }
-    for (const match of trace ? this.#search.matches(trace, isWanted) : []) {
+    if (!trace) return;
+    this.#search.eachMatch(trace, isWanted, (match) => {
       const startSec = dayStartSec + match.minute * 60;
       searched.alikeMinutes += 1;
       this.#spells.add(stationId, startSec, match);
       const { weekday, minuteOfDay } = this.#civil.at(startSec);
       this.#pattern.add(weekday, minuteOfDay);
-    }
+    });
   }
 
   /** Whether a minute of a day is asked for: in the dates, and not the spectrum itself. */

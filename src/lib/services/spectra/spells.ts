@@ -1,3 +1,4 @@
+import { energyOfCentiDb } from '#lib/acoustics/energy';
 import { type ShapeMatch } from '#lib/acoustics/shapeSearch';
 
 /** Consecutive alike minutes of one station, with gaps of a few minutes bridged. */
@@ -37,7 +38,7 @@ export class SpellList {
   /** Minutes without likeness that are bridged. */
   constructor(private readonly gapMinutes: number) {}
 
-  add(stationId: number, startSec: number, { rmsDb, laeqDb }: ShapeMatch): void {
+  add(stationId: number, startSec: number, { rmsDb, laeqCentiDb }: Readonly<ShapeMatch>): void {
     const open = this.#open;
     const continues =
       open !== null && open.stationId === stationId && startSec - open.toSec <= this.gapMinutes * 60;
@@ -47,7 +48,7 @@ export class SpellList {
     spell.minutes += 1;
     spell.bestRmsDb = Math.min(spell.bestRmsDb, rmsDb);
     spell.rmsSumDb += rmsDb;
-    spell.energySum += 10 ** (laeqDb / 10);
+    spell.energySum += energyOfCentiDb(laeqCentiDb);
   }
 
   /** Those that are kept, most alike first. */
