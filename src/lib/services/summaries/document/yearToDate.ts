@@ -8,9 +8,14 @@ import { currentSums } from '../../levels/currentSums';
 import { datePeriods, dateSettings, settingsOfDate } from '../../levels/datePeriods';
 import { dirtySpans } from '../../levels/dirtySpans';
 import { coverageOf } from '../../levels/figures';
-import { overlapsAny, type Span } from '../../levels/spans';
+import { QuarterSeries } from '../../levels/quarterSeries';
+import { mergedSpans, overlapsAny, type Span } from '../../levels/spans';
 import { levelOrNull } from '../../levels/statistics';
 import { type MonthEvidence } from './evidence';
+
+interface KindSpan extends Span {
+  kind: PeriodKind;
+}
 
 /** Figures from the first of January to the end of the month: all energies pooled, never months averaged. */
 export async function yearToDate(evidence: MonthEvidence): Promise<YearToDate> {
@@ -55,14 +60,28 @@ async function pooledPeriods(
   for await (const part of eachDayPeriod(station.id, whole, { bandClasses: false }, conn)) {
     for (const row of part) rows.set(`${row.kind} ${row.fromSec} ${row.toSec}`, row);
   }
+  const isStored = ({ kind, fromSec, toSec }: KindSpan) =>
+    rows.has(`${kind} ${fromSec} ${toSec}`) && !overlapsAny(dirty, fromSec, toSec);
+  const stored = wanted.filter(isStored);
   const pooled = new Map<PeriodKind, PeriodAccumulator>();
-  for (const { kind, fromSec, toSec } of wanted) {
+  const into = (kind: PeriodKind) => {
     const levels = pooled.get(kind) ?? new PeriodAccumulator();
     pooled.set(kind, levels);
+    return levels;
+  };
+  for (const { kind, fromSec, toSec } of stored) {
     const row = rows.get(`${kind} ${fromSec} ${toSec}`);
-    const period = { fromSec, toSec };
-    if (row && !overlapsAny(dirty, fromSec, toSec)) levels.merge(row);
-    else levels.merge(await currentSums(source, period, { bandClasses: false }, conn));
+    if (row) into(kind).merge(row);
+  }
+  // What has no row is mostly time without data, months of it: read as one stretch.
+  const missing = wanted.filter((period) => !isStored(period));
+  for (const span of mergedSpans(missing.map(({ fromSec, toSec }) => ({ fromSec, toSec })))) {
+    const series = await QuarterSeries.read(source, span, conn);
+    for (const { kind, fromSec, toSec } of missing) {
+      if (span.fromSec <= fromSec && toSec <= span.toSec) {
+        into(kind).merge(await series.levels({ fromSec, toSec }));
+      }
+    }
   }
   return pooled;
 }
