@@ -11,6 +11,7 @@ import { seedHistory } from './history';
 import { seedInstruments } from './instruments';
 import { seedMast } from './mast';
 import { seedPeople } from './people';
+import { seedPhotos } from './photos';
 import { seedReportForm } from './reportForm';
 import { seedQuarantine } from './quarantine';
 import { seedSelfChecks } from './selfChecks';
@@ -50,6 +51,7 @@ export async function seedDemo(settings: Config, tell: (line: string) => void): 
     stations,
   });
   tell(`${instruments} instruments`);
+  tell(`${await seedPhotos(operatorId, stations, days)} pictures of stations`);
   tell(`${await seedSelfChecks(stations, nowSec, days)} self-checks`);
   await seedExclusions(networkId, operatorId, stations, nowSec, days);
   const quarters = await aggregateAll(pendWindowsFor);
