@@ -43,9 +43,13 @@ const ACCESS: Record<string, Access> = {
   '/n/[network]/complaints': 'members',
   '/n/[network]/complaints/[reference]': 'members',
   '/n/[network]/complaints/[reference]/answer': 'liaison',
+  '/n/[network]/complaints/[reference]/person': 'liaison',
+  '/n/[network]/complaints/calendar': 'members',
   '/n/[network]/complaints/form': 'liaison',
   '/n/[network]/complaints/letters': 'liaison',
   '/n/[network]/complaints/new': 'liaison',
+  '/n/[network]/complaints/numbers': 'members',
+  '/n/[network]/complaints/settings': 'liaison',
   '/n/[network]/exceedances': 'members',
   '/n/[network]/exceedances/[id]': 'members',
   '/n/[network]/exclusions': 'members',
@@ -88,9 +92,14 @@ const ACCESS: Record<string, Access> = {
   '/n/[network]/stations/new': 'operator',
   '/n/[network]/summaries': 'members',
   '/n/[network]/summaries/[month]': 'members',
+  '/n/[network]/summaries/[month]/review': 'operator',
+  '/n/[network]/summaries/compare': 'members',
+  '/n/[network]/summaries/settings': 'operator',
   '/report/[network]': 'public',
   '/report/[network]/[key]': 'public',
   '/sign-in': 'public',
+  '/summaries': 'signed-in',
+  '/verify': 'public',
 };
 
 /** Not pages of their own: redirects, errors, what machines ask, what only a form reaches, and what only
@@ -105,6 +114,8 @@ const APART = new Set([
   '/healthz',
   '/metrics',
   '/n/[network]',
+  '/n/[network]/summaries/mark',
+  '/n/[network]/summaries/preview.pdf',
   '/readyz',
   '/refused',
   '/sign-out',
@@ -116,6 +127,7 @@ const OWN_FORMS = new Set([
   '/n/[network]/alerts',
   '/n/[network]/alerts/feed',
   '/n/[network]/instruments/settings',
+  '/n/[network]/summaries',
 ]);
 const FORM = 'application/x-www-form-urlencoded';
 const ROLES = ['operator', 'liaison', 'regulator', 'admin'] as const;

@@ -6,6 +6,7 @@ import { type PinPickerProps } from './PinPicker';
 import { type Place } from './useTypedPlace';
 
 interface Props extends Pick<PinPickerProps, 'styleUrls' | 'others'> {
+  meaning: string;
   place: Place | null;
   onPlace: (place: Place) => void;
 }
@@ -13,7 +14,7 @@ interface Props extends Pick<PinPickerProps, 'styleUrls' | 'others'> {
 const NEAR_ZOOM = 14;
 
 /** The map with the pin and the stations that are there already. Loaded only where it can be drawn. */
-export default function PinMap({ place, onPlace, styleUrls, others }: Props) {
+export default function PinMap({ place, onPlace, styleUrls, others, meaning }: Props) {
   const theme = useTheme();
   const map = useRef<MapRef>(null);
   const [hasBackground, setHasBackground] = useState(true);
@@ -63,7 +64,7 @@ export default function PinMap({ place, onPlace, styleUrls, others }: Props) {
             draggable
             onDragEnd={({ lngLat }) => onPlace({ latitude: lngLat.lat, longitude: lngLat.lng })}
           >
-            <Pin />
+            <Pin meaning={meaning} />
           </Marker>
         )}
       </MapGl>
@@ -76,16 +77,9 @@ export default function PinMap({ place, onPlace, styleUrls, others }: Props) {
   );
 }
 
-function Pin() {
+function Pin({ meaning }: { meaning: string }) {
   return (
-    <svg
-      width="26"
-      height="36"
-      viewBox="0 0 26 36"
-      className="text-reed"
-      role="img"
-      aria-label="Place of the station"
-    >
+    <svg width="26" height="36" viewBox="0 0 26 36" className="text-reed" role="img" aria-label={meaning}>
       <path
         d="M13 35 3.6 19.4A11 11 0 1 1 22.4 19.4z"
         fill="currentColor"

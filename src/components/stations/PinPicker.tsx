@@ -8,12 +8,20 @@ export interface PinPickerProps {
   longitudeId: string;
   styleUrls: { light: string; dark: string };
   others: readonly { code: string; latitude: number; longitude: number }[];
+  /** Whose place the pin is. */
+  meaning?: string;
 }
 
 const PinMap = lazy(() => import('./PinMap'));
 
 /** A pin on a small map beside the coordinate fields, which work without it. */
-export function PinPicker({ latitudeId, longitudeId, styleUrls, others }: PinPickerProps) {
+export function PinPicker({
+  latitudeId,
+  longitudeId,
+  styleUrls,
+  others,
+  meaning = 'Place of the station',
+}: PinPickerProps) {
   const [place, setPlace] = useTypedPlace(latitudeId, longitudeId);
   const [canDraw] = useState(hasWebGl);
   if (!canDraw) {
@@ -29,7 +37,7 @@ export function PinPicker({ latitudeId, longitudeId, styleUrls, others }: PinPic
         <Suspense
           fallback={<p className="grid h-full place-items-center text-ink-soft">Fetching the map …</p>}
         >
-          <PinMap place={place} onPlace={setPlace} styleUrls={styleUrls} others={others} />
+          <PinMap {...{ place, styleUrls, others, meaning }} onPlace={setPlace} />
         </Suspense>
       </div>
       <p className="field-hint">

@@ -57,6 +57,11 @@ export const de: ReportWords = {
   addressHint: 'Straße und Hausnummer oder eine Beschreibung. Das hilft uns, die nächste Station zu finden.',
   place: 'Koordinaten',
   placeHint: 'Aus einer Karte, zum Beispiel 54.1031, 1.6027.',
+  onMap: 'Auf einer Karte wählen',
+  here: 'Wo ich gerade bin',
+  hereFailed:
+    'Ihr Telefon hat nicht gesagt, wo es ist. Wählen Sie auf der Karte oder geben Sie eine Adresse an.',
+  mapFailed: 'Die Karte ist zurzeit nicht zu erreichen. Geben Sie eine Adresse oder ein Gebiet an.',
   file: 'Ein Bild oder eine Tonaufnahme',
   fileHint: 'Eine Datei mit höchstens 5 MB: JPEG, PNG, MP3, M4A, OGG oder WAV.',
   contact: 'Wie können wir Sie erreichen?',
@@ -67,8 +72,8 @@ export const de: ReportWords = {
   phone: 'Telefon',
   hidden: 'Dieses Feld leer lassen',
   consent: 'Ich bin einverstanden, dass diese Meldung aufbewahrt und zur Beantwortung verwendet wird.',
-  consentText: (keeper) =>
-    `Aufbewahrt von ${keeper}. Name, Kontakt, Adresse, Worte, Datei und die Auswirkungen auf Sie werden verschlüsselt aufbewahrt; nur wer Meldungen beantwortet, kann sie lesen, und jeder Blick darauf wird festgehalten. Zeit, Geräusch und ungefähres Gebiet zählen in der Statistik. Alles, was Sie betrifft, können Sie jederzeit auf Ihrer eigenen Seite löschen lassen.`,
+  consentText: (keeper, months) =>
+    `Aufbewahrt von ${keeper}, bis ${months} Monate nach der Antwort oder Schließung. Name, Kontakt, Adresse, Worte, Datei und die Auswirkungen auf Sie werden verschlüsselt aufbewahrt; nur wer Meldungen beantwortet, kann sie lesen, und jeder Blick darauf wird festgehalten. Zeit, Geräusch und ungefähres Gebiet zählen in der Statistik. Alles, was Sie betrifft, können Sie jederzeit auf Ihrer eigenen Seite löschen lassen.`,
   send: 'Meldung senden',
   closedTitle: 'Zurzeit keine Meldungen',
   closedText: (network, keeper) =>
@@ -94,6 +99,7 @@ export const de: ReportWords = {
     'not-ours': 'Geschlossen: Das Geräusch kam von außerhalb dieses Messnetzes.',
     erased: 'Geschlossen: auf Ihren Wunsch gelöscht.',
   },
+  answeredWith: (reference) => `Sie wird zusammen mit der Meldung ${reference} beantwortet.`,
   byEmail: 'Die Antwort geht auch an die E-Mail-Adresse, die Sie angegeben haben.',
   byPage: 'Die Antwort erscheint auf dieser Seite.',
   answers: 'Antworten',

@@ -58,6 +58,10 @@ export const en = {
   addressHint: 'Street and number, or a description. It helps us find the nearest station.',
   place: 'Coordinates',
   placeHint: 'From a map, such as 54.1031, 1.6027.',
+  onMap: 'Choose on a map',
+  here: 'Where I am now',
+  hereFailed: 'Your phone did not say where it is. Choose on the map, or give an address.',
+  mapFailed: 'The map cannot be fetched at the moment. Give an address or an area.',
   file: 'A picture or a sound recording',
   fileHint: 'One file of at most 5 MB: JPEG, PNG, MP3, M4A, OGG or WAV.',
   contact: 'How can we reach you?',
@@ -68,8 +72,8 @@ export const en = {
   phone: 'Phone',
   hidden: 'Leave this empty',
   consent: 'I agree that this report is kept and used to answer it.',
-  consentText: (keeper: string) =>
-    `Kept by ${keeper}. Your name, contact, address, words, file and what the noise did to you are kept encrypted; only the people who answer reports can read them, and each look is recorded. The time, the sound and the rough area count in the statistics. You can have all that is about you erased at any time, on your own page.`,
+  consentText: (keeper: string, months: number) =>
+    `Kept by ${keeper}, until ${months} months after it is answered or closed. Your name, contact, address, words, file and what the noise did to you are kept encrypted; only the people who answer reports can read them, and each look is recorded. The time, the sound and the rough area count in the statistics. You can have all that is about you erased at any time, on your own page.`,
   send: 'Send the report',
   closedTitle: 'No reports here at the moment',
   closedText: (network: string, keeper: string) =>
@@ -95,6 +99,7 @@ export const en = {
     'not-ours': 'Closed: the noise came from outside this network.',
     erased: 'Closed: erased at your wish.',
   } satisfies Record<ClosingReason, string>,
+  answeredWith: (reference: string) => `It is answered with report ${reference}.`,
   byEmail: 'The answer is also sent to the e-mail address that you gave.',
   byPage: 'The answer will appear on this page.',
   answers: 'Answers',

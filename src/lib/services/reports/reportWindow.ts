@@ -1,4 +1,3 @@
-import { DateTime } from 'luxon';
 import {
   NOW_MINUTES,
   REPORT_WHENS,
@@ -7,8 +6,8 @@ import {
   type TypedReport,
 } from '#lib/contracts/reports';
 import { MOST_WINDOW_DAYS } from '#lib/contracts/complaints';
-import { LocalInstants, zoneNamed } from '#lib/time/localInstants';
-import { addDays, instantAtSec, isLocalDate, type LocalDate } from '#lib/time/zone';
+import { wallInstants } from '#lib/time/wallInstants';
+import { addDays, isLocalDate, type LocalDate } from '#lib/time/zone';
 
 /** "About three" is taken as this much before and after, seconds. */
 const ABOUT_SEC = 1800;
@@ -60,7 +59,7 @@ function windowAbout({ day, clock }: TypedReport, zone: string, nowSec: number):
   const minutes = Number(hour) * 60 + Number(minute);
   const date = dateMeant(day, minutes);
   if (date === null) return unclear('day', 'choose');
-  const instants = instantsOf(date, minutes, zone);
+  const instants = wallInstants(date, minutes, zone);
   const [first, last] = [Math.min(...instants), Math.max(...instants)];
   if (first > nowSec) return unclear('clock', 'future');
   const toSec = Math.min(last + ABOUT_SEC, Math.ceil(nowSec / 60) * 60);
@@ -102,15 +101,7 @@ function localInstants(text: string, zone: string): number[] | null {
   const [, date = '', hour, minute] = LOCAL.exec(text) ?? [];
   const minutes = Number(hour) * 60 + Number(minute);
   if (!isLocalDate(date) || Number(minute) > 59 || minutes >= 1440) return null;
-  return instantsOf(date, minutes, zone);
-}
-
-/** Every instant at which the wall showed this time, epoch seconds; where the clock was put forward over it, just after. */
-function instantsOf(date: LocalDate, minutes: number, zone: string): number[] {
-  const known = zoneNamed(zone);
-  const wallMs = DateTime.fromISO(date, { zone: 'utc' }).toMillis() + minutes * 60_000;
-  const found = known ? new LocalInstants(known).at(wallMs).map((ms) => ms / 1000) : [];
-  return found.length > 0 ? found : [instantAtSec(date, minutes, zone)];
+  return wallInstants(date, minutes, zone);
 }
 
 function unclear(field: ReportField, fault: ReportFault): WindowOutcome {

@@ -1,0 +1,12 @@
+import { requireNetwork } from '#lib/auth/guards';
+import { ALL_ROLES } from '#lib/auth/roles';
+import { askedNumbers } from '#lib/http/askedNumbers';
+import { json } from '#lib/http/respond';
+import { route } from '#lib/http/route';
+
+export const GET = route(async (context) => {
+  const { network, settings } = await requireNetwork(context, context.params.network, ALL_ROLES);
+  const nowSec = Math.floor(Date.now() / 1000);
+  const { numbers, measure } = await askedNumbers(context.url, network, settings, nowSec);
+  return json({ numbers, measure });
+});
