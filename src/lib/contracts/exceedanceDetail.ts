@@ -2,6 +2,7 @@ import { z } from 'zod';
 import { secondsSchema } from './levels';
 import { periodInstrumentsSchema } from './periodInstruments';
 import { limitVersionSchema } from './limits';
+import { windSourcesSchema } from './windSource';
 
 const level = (description: string) =>
   z.number().nullable().describe(`${description}, dB; null where nothing contributes`);
@@ -143,6 +144,7 @@ export const exceedanceDetailPartSchema = z.object({
     .describe('The wind of the window by the limit’s own rule; null: it has none'),
   events: eventsSchema.nullable().describe('Of a limit on events, as it has them; null: of another limit'),
   instruments: periodInstrumentsSchema,
+  wind: windSourcesSchema,
   neighbours: z.array(neighbourSchema).describe('Nearest first'),
   mails: z.array(mailSchema),
   revisions: z.array(revisionSchema).describe('Oldest first'),

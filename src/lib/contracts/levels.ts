@@ -2,6 +2,7 @@ import { z } from 'zod';
 import { localDate } from './common';
 import { periodInstrumentsSchema } from './periodInstruments';
 import { registerRoute } from './registry';
+import { windSourcesSchema } from './windSource';
 
 const level = (description: string) =>
   z.number().nullable().describe(`${description}, dB; null where nothing contributes`);
@@ -103,6 +104,7 @@ export type Incident = z.output<typeof incidentSchema>;
 export const statisticsAnswerSchema = statisticsSchema.extend({
   incident: incidentSchema.describe('Every other figure is as measured'),
   instruments: periodInstrumentsSchema,
+  wind: windSourcesSchema,
 });
 
 const periodSchema = z.object({

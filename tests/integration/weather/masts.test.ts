@@ -165,6 +165,14 @@ describe('people', () => {
     expect(words).toBe(
       'mean 3.2 m/s from WSW (240°), highest 3.2 m/s, by mast WI-W1 (Pier head), 2 min of 2 min',
     );
+    const wind = async (to: string) => {
+      const path = `${base}/stations/WI-1/statistics?from=2026-03-01T00:00:00Z&to=${to}`;
+      return (await (await callApi('GET', path, regulator)).json()).wind as unknown;
+    };
+    const byMast = { source: 'mast', mast: { code: 'WI-W1', name: 'Pier head' } };
+    expect(await wind('2026-03-01T00:15:00Z')).toMatchObject([{ ...byMast, seconds: 240, meanSpeed: 3.2 }]);
+    const month = [await wind('2026-03-20T00:00:00Z')].flat();
+    expect(month).toMatchObject(Array(2).fill({ ...byMast, meanSpeed: null }));
     const { id, maximum_age_sec: maximumAgeSec } = await db()('masts').first('id', 'maximum_age_sec');
     const text = 'start;seconds;windSpeed\n2026-03-01T01:00:00Z;600;4,5\n2026-03-01T01:05:00Z;600;4\nx;1;1';
     const take = (isTrial: boolean) => takeWeatherFile({ id, maximumAgeSec }, text, isTrial);

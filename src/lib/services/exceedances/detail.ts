@@ -13,6 +13,7 @@ import { periodFigures } from '../levels/figures';
 import { statisticsOf } from '../levels/statistics';
 import { readLimit } from '../limits/list';
 import { windowStrip } from '../strip/windowStrip';
+import { windSources } from '../weather/windSources';
 import { windowConditions } from './conditions';
 import { eventsCsv, windowEvents } from './events';
 import { limitWindOf } from './limitWind';
@@ -95,11 +96,12 @@ async function windowOf(row: ExceedanceRow, station: StationRow, nowSec: number)
   const statistics = statisticsOf(periodOfStation, { station });
   const fraction = periodOfStation.levels.sums.bandFraction ?? station.bandFraction;
   const version = await versionOf(row, station.networkId);
-  const [spectrum, conditions, neighbours, instruments, limitWind, events] = await Promise.all([
+  const [spectrum, conditions, neighbours, instruments, wind, limitWind, events] = await Promise.all([
     comparedSpectrum(station, window, { statistics, fraction }, timeline),
     windowConditions(station, window, settings),
     neighboursOf(station, window, timeline, nowSec),
     madeBy(station, window),
+    windSources(station.id, window),
     limitWindOf(version, station, window, timeline),
     windowEvents(version, station, window, timeline),
   ]);
@@ -122,6 +124,7 @@ async function windowOf(row: ExceedanceRow, station: StationRow, nowSec: number)
     events,
     neighbours,
     instruments,
+    wind,
   };
 }
 

@@ -6,6 +6,7 @@ import { route } from '#lib/http/route';
 import { madeBy } from '#lib/services/calibrations/madeBy';
 import { incidentOf } from '#lib/services/levels/incident';
 import { periodStatistics } from '#lib/services/levels/statistics';
+import { windSources } from '#lib/services/weather/windSources';
 
 export const GET = route(async (context) => {
   const { network } = await requireNetwork(context, context.params.network, ALL_ROLES);
@@ -14,9 +15,10 @@ export const GET = route(async (context) => {
   const validity = parseChoice(context.url, 'validity', ['rules', 'all']);
   const query = { station, ...period, validity };
   const statistics = await periodStatistics(query);
-  const [incident, instruments] = await Promise.all([
+  const [incident, instruments, wind] = await Promise.all([
     incidentOf(query, statistics.LAeq),
     madeBy(station, period),
+    windSources(station.id, period),
   ]);
-  return json({ ...statistics, incident, instruments });
+  return json({ ...statistics, incident, instruments, wind });
 });
