@@ -1,15 +1,20 @@
 import { z } from 'zod';
-import { alertPreferencesSchema } from './alerts';
+import { alertPreferencesSchema, DELIVERIES } from './alerts';
 import { registerRoute } from './registry';
 
 const clock = (description: string) => z.string().nullable().describe(description);
 
 /** How a person is told, as the interface shows it. */
 export const ownAlertsSchema = z.object({
-  preferences: alertPreferencesSchema.safeExtend({
+  preferences: z.object({
+    delivery: z.enum(DELIVERIES),
     dailyAt: z.string().describe('Local time, "07:00"'),
+    groupMinutes: z.number().int(),
     quietFrom: clock('Local time; null: no quiet hours'),
     quietTo: clock('Local time, over midnight where it is earlier than its beginning'),
+    override: z.number().nullable().describe('dB above the limit'),
+    stations: z.array(z.string()).nullable().describe('Codes; null: every station'),
+    warnsEarly: z.boolean(),
   }),
   namingLimits: z
     .array(z.string())
