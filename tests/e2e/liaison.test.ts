@@ -6,23 +6,16 @@ const { open } = useBrowser();
 
 const RESIDENT = 'odile.brandt@residents.example';
 
-/** A quarter past three last night, local time, as the form's control takes it. */
-function lastNight(hour: number, minute: number): string {
-  const day = new Date(Date.now() - 24 * 3_600_000).toISOString().slice(0, 10);
-  return `${day}T${String(hour).padStart(2, '0')}:${String(minute).padStart(2, '0')}`;
-}
-
 test('the liaison logs a complaint, sees the figures of that window, and answers; the mail arrives', async () => {
   const { page, context } = await open();
   await signIn(page, 'liaison@merrow.example');
   await page.goto('/n/merrow/complaints');
   await page.getByRole('link', { name: 'Log a complaint' }).click();
 
-  await page.getByLabel('From').fill(lastNight(3, 15));
-  await page.getByLabel('To', { exact: true }).fill(lastNight(4, 5));
-  await page.getByText('Hum', { exact: true }).click();
+  await page.getByLabel('When').fill('last night 3:15-4:05');
+  await page.getByLabel('What it sounds like').selectOption('hum');
   await page.getByLabel('In their own words').fill('A steady low hum in the bedroom.');
-  await page.getByLabel('Nearest station').selectOption('MER-02');
+  await page.getByLabel('Area').selectOption('Around Silo Lane');
   await page.getByLabel('E-mail').fill('not an address');
   await page.getByRole('button', { name: /log/i }).click();
   expect(await page.getByText('must be an e-mail address').count()).toBeGreaterThan(0);
@@ -65,5 +58,44 @@ test('a regulator sees that there was a complaint, and nothing of the person', a
   expect(html).not.toMatch(/residents\.example|Odile|bedroom/);
   expect(await page.getByLabel('Letter').count()).toBe(0);
   expect((await page.goto('/n/merrow/complaints/new'))?.status()).toBe(403);
+  await context.close();
+});
+
+test('a caller’s complaint is logged by the keyboard alone, in few enough keys for a minute', async () => {
+  const { page, context } = await open();
+  await signIn(page, 'liaison@merrow.example');
+  await page.goto('/n/merrow/complaints/new');
+  await page.getByLabel('When').waitFor();
+  let keys = 0;
+  const press = async (key: string) => {
+    keys += 1;
+    await page.keyboard.press(key);
+  };
+  const type = async (text: string) => {
+    for (const letter of text) await press(letter === ' ' ? 'Space' : letter);
+  };
+  await type('last night about 3');
+  const sound = page.getByLabel('What it sounds like');
+  while (!(await sound.evaluate((field) => field === document.activeElement))) await press('Tab');
+  await press('h');
+  await press('Tab');
+  await type('around s');
+  while (
+    !(await page.getByLabel('In their own words').evaluate((field) => field === document.activeElement))
+  ) {
+    await press('Tab');
+  }
+  await type('low hum');
+  await press('Tab');
+  await type('Mara Finch');
+  await press('Tab');
+  await press('Tab');
+  await type('0555 0177');
+  await press('Enter');
+  await page.waitForURL(/complaints\/[A-Z]+-\d{4}-\d+/);
+  expect(await page.getByText('Mara Finch').count()).toBeGreaterThan(0);
+  expect(await page.getByText(/03:30|02:30/).count()).toBeGreaterThan(0);
+  // At two keys a second, slow for somebody who types while listening.
+  expect(keys).toBeLessThanOrEqual(120);
   await context.close();
 });
