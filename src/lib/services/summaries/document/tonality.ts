@@ -1,6 +1,9 @@
-import { bandAt } from '#lib/acoustics/bands';
+import { bandAt, BAND_SLOTS } from '#lib/acoustics/bands';
+import { levelOfEnergyDb } from '#lib/acoustics/energy';
 import { lowFrequencyIndicator, LOW_FREQUENCY_BOUND_DB } from '#lib/acoustics/lowFrequency';
 import { PeriodAccumulator } from '#lib/acoustics/periodStatistics';
+import { type PeriodSums } from '#lib/acoustics/periodSums';
+import { toTenths } from '#lib/acoustics/rounding';
 import { assessTonality, surveyTones, thirdsTenthsOfDb } from '#lib/acoustics/tonality';
 import { type DocumentLowFrequency, type DocumentTonality } from '#lib/contracts/monthEvidence';
 import { QUARTER_SEC } from '#lib/time/quarters';
@@ -67,8 +70,18 @@ function meanTones(
   return { notAssessable: null, tones };
 }
 
+/** Mean spectrum of a quarter-hour as the method takes it: a month has thousands, so they are made without anything between. */
+function spectrumTenths({ bandEnergySec, bandValidSec }: PeriodSums): (number | null)[] {
+  const tenths = new Array<number | null>(BAND_SLOTS).fill(null);
+  for (let slot = 0; slot < BAND_SLOTS; slot += 1) {
+    const sec = bandValidSec[slot] ?? 0;
+    const levelDb = sec > 0 ? levelOfEnergyDb((bandEnergySec[slot] ?? 0) / sec) : null;
+    tenths[slot] = levelDb === null ? null : toTenths(levelDb);
+  }
+  return tenths;
+}
+
 function tonalBlocks({
-  station,
   span,
   quarters,
 }: MonthEvidence): Pick<DocumentTonality, 'assessedBlocks' | 'tonalBlocks' | 'bands'> {
@@ -77,14 +90,7 @@ function tonalBlocks({
   for (const { startSec, sums } of quarters) {
     if (startSec >= span.toSec || sums.bandFraction !== 3 || sums.validSec < LEAST_SEC) continue;
     assessedBlocks += 1;
-    const quarter = new PeriodAccumulator({ from: sums });
-    const bands = stationBands(station, quarter);
-    const tones = surveyTones(
-      thirdsTenthsOfDb(
-        bands.map(({ index }) => quarter.bandLeqDb(index)),
-        bands,
-      ),
-    );
+    const tones = surveyTones(spectrumTenths(sums));
     if (tones.length > 0) tonal += 1;
     for (const { lowerIndex } of tones) {
       blocksOfBand.set(lowerIndex, (blocksOfBand.get(lowerIndex) ?? 0) + 1);
