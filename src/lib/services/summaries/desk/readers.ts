@@ -29,3 +29,10 @@ export async function visit(reader: Reader, now: Date): Promise<IssuedHead[] | n
   if (since === null) return null;
   return (await listIssuedHeads(reader.networkId)).filter(({ issuedAt }) => issuedAt > since);
 }
+
+/** What was issued since a person’s last visit, without making one; everything where there was none. */
+export async function issuedSinceVisit(reader: Reader): Promise<IssuedHead[]> {
+  const { visitedAt } = await findReader(reader);
+  const heads = await listIssuedHeads(reader.networkId);
+  return visitedAt === null ? heads : heads.filter(({ issuedAt }) => issuedAt > visitedAt);
+}

@@ -1,0 +1,85 @@
+import { mkdtempSync, rmSync } from 'node:fs';
+import { tmpdir } from 'node:os';
+import { join } from 'node:path';
+import { afterAll, beforeAll, expect, test, vi } from 'vitest';
+import { db } from '#db/client';
+import { listIssued, type IssuedSummaryRow } from '#db/queries/issuedSummaries';
+import { aggregateAll } from '#ingest/aggregate/aggregate';
+import { rerunMonth } from '#lib/services/summaries/life/rerun';
+import { rerunWords } from '#ops/summaries/rerunWords';
+import { at } from '../complaints/support';
+import { useFreshSchema } from '../support/freshSchema';
+import { makeNetwork, makePerson, makeStation } from '../support/people';
+import { issue, MONTH, network, storeMarch } from './lifeSupport';
+
+const dataDir = mkdtempSync(join(tmpdir(), 'bittern-rerun-'));
+process.env['BITTERN_DATA_DIR'] = dataDir;
+useFreshSchema();
+vi.setConfig({ testTimeout: 240_000 });
+
+let quay: number;
+let issued: IssuedSummaryRow;
+
+beforeAll(async () => {
+  const networkId = await makeNetwork('merrow');
+  quay = await makeStation(networkId, 'MER-01');
+  await db()('stations').update({ created_at: new Date('2026-01-01T00:00:00Z') });
+  await storeMarch(quay, 5200);
+  await aggregateAll(async () => {});
+  await issue((await makePerson(networkId, ['operator'])).userId);
+  [issued = await Promise.reject(new Error('Nothing was issued.'))] = await listIssued(networkId);
+}, 240_000);
+
+afterAll(() => {
+  rmSync(dataDir, { recursive: true, force: true });
+});
+
+const rerun = async () => rerunWords(issued, await rerunMonth(await network(), issued));
+const minute = (start: string) => db()('interval_levels').where({ station_id: quay, starts_at: at(start) });
+
+test('a month from its intervals, past every stored sum, has the figures that were sealed', async () => {
+  expect(await rerun()).toEqual({
+    isSame: true,
+    lines: ['2026-03, revision 1: manifest and signature hold.', 'Every figure is the same.'],
+  });
+  // The hours of the clock change are among them.
+  expect(await db()('dirty_marks').count({ count: '*' }).first()).toEqual({ count: 0 });
+});
+
+test('what was changed in the stored sums alone does not hide what the intervals say', async () => {
+  await db()('quarter_hours')
+    .where({ station_id: quay })
+    .update({ a_energy_sec: db().raw('a_energy_sec * 2') });
+  expect((await rerun()).isSame).toBe(true);
+  await db()('quarter_hours')
+    .where({ station_id: quay })
+    .update({ a_energy_sec: db().raw('a_energy_sec / 2') });
+});
+
+test('one changed bit of one interval is told, also where no figure shows it', async () => {
+  const row = await minute('2026-03-20T12:34:00Z').first('laeq_centi_db', 'battery_centi_v');
+  await minute('2026-03-20T12:34:00Z').update({ laeq_centi_db: row.laeq_centi_db ^ 64 });
+  const changed = await rerun();
+  expect(changed.isSame).toBe(false);
+  expect(changed.lines).toContain('CHANGED  intervals of MER-01 are not those that were sealed.');
+  expect(changed.lines.some((line) => line.startsWith('DIFFERS  MER-01 days 2026-03-20 Lday'))).toBe(true);
+  expect(changed.lines.some((line) => line.includes('days 2026-03-25'))).toBe(false);
+  await minute('2026-03-20T12:34:00Z').update({ laeq_centi_db: row.laeq_centi_db, battery_centi_v: 1 });
+  expect((await rerun()).lines.slice(1)).toEqual([
+    'CHANGED  intervals of MER-01 are not those that were sealed.',
+    '0 figures differ.',
+  ]);
+  await minute('2026-03-20T12:34:00Z').update({ battery_centi_v: row.battery_centi_v });
+  expect((await rerun()).isSame).toBe(true);
+});
+
+test('where the intervals are not kept any more, the stored sums tell, and it says so', async () => {
+  await db()('interval_levels').where({ station_id: quay }).delete();
+  const { isSame, lines } = await rerun();
+  expect(lines).toEqual([
+    '2026-03, revision 1: manifest and signature hold.',
+    'NOTE     intervals of MER-01 are not kept any more; its figures come from the stored sums.',
+    'Every figure is the same.',
+  ]);
+  expect(isSame).toBe(true);
+});
