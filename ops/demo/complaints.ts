@@ -5,6 +5,7 @@ import { STANDARD_LETTER } from '#lib/services/complaints/letter/draftReply';
 import { logComplaint } from '#lib/services/complaints/logComplaint';
 import { addDays, instantAtSec, localDateAt } from '#lib/time/zone';
 import { DEMO_COMPLAINTS, type DemoComplaint } from './complaintTexts';
+import { areaAround } from './reportForm';
 import type { DemoStation } from './stations';
 
 const DAY_MS = 86_400_000;
@@ -38,7 +39,7 @@ async function seedComplaint(desk: Desk, complaint: DemoComplaint, nowSec: numbe
       kind: complaint.kind,
       ...homeNear(desk.stations, complaint),
       station: null,
-      area: null,
+      area: areaAround(stationOf(desk.stations, complaint.station).site),
       words: complaint.words,
       contact: {
         name: complaint.name,
@@ -58,14 +59,19 @@ async function seedComplaint(desk: Desk, complaint: DemoComplaint, nowSec: numbe
   await row.clone().update({ answered_at: answeredAt });
 }
 
-/** A home a few hundred metres from the station that stands for it. */
-function homeNear(stations: DemoStation[], { station: code, daysAgo }: DemoComplaint) {
+function stationOf(stations: DemoStation[], code: string): DemoStation {
   const found = stations.find(({ site }) => site.code === code);
   if (!found) throw new Error(`There is no station ${code}.`);
+  return found;
+}
+
+/** A home a few hundred metres from the station that stands for it. */
+function homeNear(stations: DemoStation[], { station: code, daysAgo }: DemoComplaint) {
+  const { site } = stationOf(stations, code);
   const turn = daysAgo * 2.4;
   return {
-    latitude: found.site.latitude + 0.0016 * Math.sin(turn),
-    longitude: found.site.longitude + 0.0028 * Math.cos(turn),
+    latitude: site.latitude + 0.0016 * Math.sin(turn),
+    longitude: site.longitude + 0.0028 * Math.cos(turn),
   };
 }
 

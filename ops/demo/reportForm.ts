@@ -8,7 +8,12 @@ export async function seedReportForm(
   liaisonId: string,
   stations: readonly DemoStation[],
 ): Promise<void> {
-  const areas = stations.map(({ site }) => ({ name: `Around ${site.name}`, station: site.code }));
+  const areas = stations.map(({ site }) => ({ name: areaAround(site), station: site.code }));
   const keeper = 'the community liaison of the Merrow estuary, liaison@merrow.example';
   await changeReportForm(liaisonId, network, { isOpen: true, keeper, areas });
+}
+
+/** Name of the area around a station. */
+export function areaAround({ name }: DemoStation['site']): string {
+  return `Around ${name}`;
 }

@@ -69,8 +69,9 @@ export async function seedDemo(settings: Config, tell: (line: string) => void): 
     liaisonId: idOf(people, 'liaison@merrow.example'),
     stations,
   };
-  tell(`${await seedComplaints(desk, nowSec, days)} complaints`);
+  // Complaints name areas of the form.
   await seedReportForm(network, desk.liaisonId, stations);
+  tell(`${await seedComplaints(desk, nowSec, days)} complaints`);
 }
 
 async function judgeAll(): Promise<number> {
