@@ -21,6 +21,6 @@ export async function askedNumbers(
   const view = readNumbersView(url, timeZone, nowSec);
   const what = { networkId: id, timeZone, kind: view.kind, area: view.area };
   const numbers = await complaintNumbers({ ...what, ...numbersSpan(view, timeZone) }, nowSec);
-  const measure = view.measure && (await compareMeasure(what, view.measure, view.days, nowSec));
+  const measure = view.measure === null ? null : await compareMeasure(what, view.measure, view.days, nowSec);
   return { view, numbers, measure };
 }

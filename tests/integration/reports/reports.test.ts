@@ -143,7 +143,7 @@ describe('the whole way', () => {
       effects: ['woken'],
       place: { latitude: 54.10312, longitude: 1.60277 },
     });
-    const reply = { text: 'We heard it too.', figuresDigest: null, repliesSoFar: null };
+    const reply = { text: 'We heard it too.', items: null, figuresDigest: null, repliesSoFar: null };
     await answerCase(liaison.userId, place.network, complaint.reference, reply, NOW);
     expect((await follow(key)).letters.map(({ text }) => text)).toEqual(['We heard it too.']);
     expect((await follow(key)).complaint.status).toBe('answered');

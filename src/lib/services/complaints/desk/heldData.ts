@@ -74,5 +74,5 @@ async function heldAnswer(complaintId: number, transaction: Connection): Promise
     await findOpenAnswer(complaintId, transaction),
     await findSealedPerson(complaintId, transaction),
   ];
-  return answer && sealed ? openAnswer(sealed.wrappedKey, answer) : null;
+  return answer && sealed ? openAnswer(sealed.wrappedKey, answer).body : null;
 }
