@@ -34,15 +34,18 @@ const ANSWER_TIMEOUT_MS = 30_000;
 /** Posts the oldest waiting records and forgets them once the server has answered for them. */
 export class Sender {
   private failures = 0;
+  private batchSize: number;
 
   constructor(
     private readonly spool: Spool,
     private readonly settings: SenderSettings,
-  ) {}
+  ) {
+    this.batchSize = settings.batchSize;
+  }
 
   /** One post. After `later` wait that long: Retry-After when the server named it, else longer from failure to failure. */
   async sendOnce(signal?: AbortSignal): Promise<SendOutcome> {
-    const batch = this.spool.oldest(this.settings.batchSize);
+    const batch = this.spool.oldest(this.batchSize);
     if (batch.length === 0) return { kind: 'nothing' };
     try {
       const response = await this.post(
@@ -55,6 +58,10 @@ export class Sender {
           `HTTP ${response.status}`,
           Number(response.headers.get('retry-after') ?? Number.NaN),
         );
+      }
+      if (response.status === 413 && batch.length > 1) {
+        this.batchSize = Math.ceil(batch.length / 2);
+        return { kind: 'later', waitSec: 0, reason: 'HTTP 413: half as many at once from now on' };
       }
       return { kind: 'refused', status: response.status, reason: (await response.text()).slice(0, 500) };
     } catch (error) {

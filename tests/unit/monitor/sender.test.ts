@@ -72,6 +72,15 @@ test('without Retry-After the wait grows from failure to failure', async () => {
   expect(waits[4]).toBeGreaterThan((waits[0] ?? 0) * 4);
 });
 
+test('of what is too large at once half is sent', async () => {
+  const { spool, sender } = senderWith(2);
+  answers = [{ status: 413 }, ACCEPTED, ACCEPTED];
+  expect(await sender.sendOnce()).toMatchObject({ kind: 'later', waitSec: 0 });
+  expect(spool.length).toBe(2);
+  expect(await sender.sendOnce()).toMatchObject({ kind: 'sent', count: 1 });
+  expect(await sender.sendOnce()).toMatchObject({ kind: 'sent', count: 1 });
+});
+
 test('a refused token keeps the records and says so', async () => {
   const { spool, sender } = senderWith(1);
   answers = [{ status: 401, body: 'no' }];
