@@ -14,6 +14,7 @@ export default defineConfig({
   vite: {
     plugins: [tailwindcss()],
     ssr: { external: ['mysql2', 'knex', '@node-rs/argon2', 'pdfmake', 'pino'] },
-    build: { chunkSizeWarningLimit: 1200 },
+    // The manifest tells pages which scripts an island needs (src/layouts/islandScripts.ts).
+    build: { chunkSizeWarningLimit: 1200, manifest: true },
   },
 });

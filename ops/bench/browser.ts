@@ -12,6 +12,7 @@ import { Web } from './support/web';
 /**
  * What a person at a browser waits for, in headless Chromium on loopback against the built web (`bash ops/build.sh` first), every
  * visit with nothing cached: the strip of a month of minutes and of a year, panning, zooming, a selection, and the size of scripts.
+ * The strip draws without WebGL and is measured with the GPU off; scripts are weighed with WebGL by software, for the map.
  * `npx tsx ops/bench/browser.ts`, about 2 min.
  */
 const VISITS = 3;
@@ -34,16 +35,20 @@ await withOwnSchema(async () => {
   await fillMonth(station);
   await repeatMonth(station);
   const web = await Web.start();
-  const visitor = await Visitor.start(networkId, web.origin);
+  const visiting = async (webGl: boolean, work: (visitor: Visitor) => Promise<void>) => {
+    const visitor = await Visitor.start(networkId, web.origin, { webGl });
+    await work(visitor).finally(() => visitor.stop());
+  };
   console.log('| what | median | target |\n| --- | --- | --- |');
   try {
-    await noteVisits(visitor, 'month', MONTH, ['≤ 1,000', '≤ 1,500']);
-    await noteVisits(visitor, 'year', YEAR, ['≤ 2,000', '≤ 2,000']);
-    await noteMoves(visitor);
-    await openReportForm(networkId, visitor.userId);
-    await noteSizes(visitor);
+    await visiting(false, async (visitor) => {
+      await noteVisits(visitor, 'month', MONTH, ['≤ 1,000', '≤ 1,500']);
+      await noteVisits(visitor, 'year', YEAR, ['≤ 2,000', '≤ 2,000']);
+      await noteMoves(visitor);
+      await openReportForm(networkId, visitor.userId);
+    });
+    await visiting(true, noteSizes);
   } finally {
-    await visitor.stop();
     await web.stop();
   }
   console.log('');

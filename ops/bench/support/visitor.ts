@@ -25,7 +25,12 @@ export class Visitor {
     readonly userId: string,
   ) {}
 
-  static async start(networkId: number, origin: string): Promise<Visitor> {
+  /** `webGl`: with WebGL by software, which the map needs and which slows down everything else. */
+  static async start(
+    networkId: number,
+    origin: string,
+    { webGl = true }: { webGl?: boolean } = {},
+  ): Promise<Visitor> {
     const id = randomUUID();
     await inTransaction(async (transaction) => {
       const email = `${id.slice(0, 8)}@bench.example`;
@@ -33,7 +38,7 @@ export class Visitor {
       await insertUser(person, transaction);
       await insertMembership({ userId: id, networkId, role: 'operator' }, transaction);
     });
-    const browser = await launchChromium();
+    const browser = await launchChromium({ webGl });
     return new Visitor(browser, origin, (await startSession(id)).value, id);
   }
 
