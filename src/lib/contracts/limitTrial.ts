@@ -47,6 +47,10 @@ export type TrialCounts = z.output<typeof countsSchema>;
 
 const trialSchema = z.object({
   descriptor: z.string(),
+  windWords: z
+    .string()
+    .nullable()
+    .describe('The wind that it goes by, in words; null: any that counts in the network'),
   threshold: z.number(),
   unit: z.enum(LIMIT_UNITS).describe('Of the threshold and of levels'),
   counts: countsSchema,

@@ -1,10 +1,9 @@
 import { beforeAll, expect, test } from 'vitest';
 import { aggregateAll } from '#ingest/aggregate/aggregate';
-import { judgeDueWindows, type TellingChange } from '#ingest/detect/judge';
-import { receiveBatch } from '#ingest/receive/receive';
 import { callApi } from '../support/callApi';
 import { useFreshSchema } from '../support/freshSchema';
 import { makeNetwork, makePerson, makeStation } from '../support/people';
+import { judged, send } from './support';
 
 useFreshSchema();
 
@@ -15,29 +14,21 @@ let session: string;
 let stationId: number;
 
 /** Ten minutes of seconds at 45 dB; a passing of 20 s at 75 dB with one second's gap, and one of 4 s at 80 dB. */
-async function send(fromSec: number): Promise<void> {
-  const intervals = Array.from({ length: 600 }, (_, second) => {
+async function sendPassings(): Promise<void> {
+  const seconds = Array.from({ length: 600 }, (_, second) => {
     const isPassing = second >= 100 && second < 121 && second !== 110;
     const LAeq = isPassing ? 75 : second >= 300 && second < 304 ? 80 : 45;
-    const start = new Date((fromSec + second) * 1000).toISOString();
-    return { start, seconds: 1, LAeq, LAFmax: LAeq + 3, levels: [LAeq - 5] };
+    return { LAeq, LAFmax: LAeq + 3, levels: [LAeq - 5] };
   });
-  const envelope = { bands: [100], bandIndices: { indices: [-10] }, intervals };
-  await receiveBatch({ id: stationId, bandFraction: 3, acceptsFromSec: null }, envelope, new Date());
+  await send(stationId, NIGHT_SEC, seconds, 1);
   await aggregateAll(async () => undefined);
-}
-
-async function judged(): Promise<TellingChange[]> {
-  const changes: TellingChange[] = [];
-  while ((await judgeDueWindows(new Date(), async (some) => void changes.push(...some))) > 0);
-  return changes;
 }
 
 beforeAll(async () => {
   const networkId = await makeNetwork('events');
   stationId = await makeStation(networkId, 'EV-1');
   ({ session } = await makePerson(networkId, ['operator']));
-  await send(NIGHT_SEC);
+  await sendPassings();
 });
 
 const api = (path: string) => callApi('GET', `/api/v1/networks/events/exceedances/${path}`, { session });

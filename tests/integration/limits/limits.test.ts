@@ -1,14 +1,11 @@
 import { beforeEach, describe, expect, test } from 'vitest';
 import { db } from '#db/client';
-import { aggregateAll } from '#ingest/aggregate/aggregate';
-import { judgeDueWindows } from '#ingest/detect/judge';
-import { pendWindowsFor } from '#ingest/detect/pendWindows';
 import { tellExceedances } from '#ingest/notify/tellExceedances';
-import { receiveBatch } from '#ingest/receive/receive';
 import type { Limit, LimitDetail } from '#lib/contracts/limits';
 import { callApi } from '../support/callApi';
 import { useFreshSchema } from '../support/freshSchema';
 import { makeNetwork, makePerson, makeStation } from '../support/people';
+import { judged, send } from './support';
 
 useFreshSchema();
 
@@ -67,21 +64,11 @@ const quartersAgo = (count: number) =>
 
 /** A quarter-hour of minutes at one level. */
 async function measured(startSec: number, LAeq: number): Promise<void> {
-  const intervals = Array.from({ length: 15 }, (_, minute) => ({
-    start: utc(startSec + minute * 60),
-    seconds: 60,
-    LAeq,
-    LAFmax: LAeq + 5,
-    levels: [LAeq + 3, LAeq - 3],
-  }));
-  const envelope = { bands: [80, 100], bandIndices: { indices: [-11, -10] }, intervals };
-  await receiveBatch({ id: stationId, bandFraction: 3, acceptsFromSec: null }, envelope, new Date());
+  const minute = { LAeq, LAFmax: LAeq + 5, levels: [LAeq + 3, LAeq - 3] };
+  await send(stationId, startSec, new Array<typeof minute>(15).fill(minute));
 }
 
-async function judge(): Promise<void> {
-  await aggregateAll(pendWindowsFor);
-  while ((await judgeDueWindows(new Date(), tellExceedances)) > 0);
-}
+const judge = () => judged(tellExceedances);
 
 const exceedances = () => db()('exceedances').where({ network_id: networkId }).orderBy('starts_at');
 

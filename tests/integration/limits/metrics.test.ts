@@ -3,37 +3,31 @@ import { listSettings } from '#db/queries/networks';
 import { findStationById, type StationRow } from '#db/queries/stations';
 import { pool } from '#db/queries/connection';
 import { aggregateAll } from '#ingest/aggregate/aggregate';
-import { receiveBatch } from '#ingest/receive/receive';
 import type { MetricRule } from '#lib/services/limits/measure';
 import { WindowEvidence } from '#lib/services/limits/windowEvidence';
 import { callApi } from '../support/callApi';
 import { useFreshSchema } from '../support/freshSchema';
 import { makeNetwork, makePerson, makeStation } from '../support/people';
+import { send } from './support';
 
 useFreshSchema();
 
 /** Tuesday 3 March 2026, midnight in London (GMT). */
 const DAY_SEC = Date.parse('2026-03-03T00:00:00Z') / 1000;
 const HOUR = { fromSec: DAY_SEC + 10 * 3600, toSec: DAY_SEC + 11 * 3600 };
-const BANDS = { bands: [80, 100, 125, 160, 200], bandIndices: { indices: [-11, -10, -9, -8, -7] } };
 
 let station: StationRow;
 let operator: string;
 
 /** A day of minutes: 50 dB, and 70 dB in minutes 0–5 and 30–35 of each hour, in which 125 Hz stands out. */
 async function day(startSec: number, offsetDb: number): Promise<void> {
-  const intervals = Array.from({ length: 1440 }, (_, minute) => {
+  const minutes = Array.from({ length: 1440 }, (_, minute) => {
     const isLoud = minute % 30 < 6;
     const LAeq = (isLoud ? 70 : 50) + offsetDb;
     const levels = isLoud ? [50, 50, 70, 50, 50] : [50, 50, 50, 50, 50];
-    const start = new Date((startSec + minute * 60) * 1000).toISOString();
-    return { start, seconds: 60, LAeq, LCeq: LAeq + 12, levels };
+    return { LAeq, LCeq: LAeq + 12, levels };
   });
-  await receiveBatch(
-    { id: station.id, bandFraction: 3, acceptsFromSec: null },
-    { ...BANDS, intervals },
-    new Date(),
-  );
+  await send(station.id, startSec, minutes);
 }
 
 beforeAll(async () => {

@@ -2,14 +2,11 @@ import { afterEach, beforeEach, expect, test, vi } from 'vitest';
 import { db } from '#db/client';
 import { inTransaction } from '#db/queries/connection';
 import { insertLimit, insertVersion, type NewLimitVersion } from '#db/queries/limits';
-import { aggregateAll } from '#ingest/aggregate/aggregate';
-import { judgeDueWindows, type TellingChange } from '#ingest/detect/judge';
-import { pendWindowsFor } from '#ingest/detect/pendWindows';
 import { tellExceedances } from '#ingest/notify/tellExceedances';
-import { receiveBatch } from '#ingest/receive/receive';
 import { pendLimit } from '#lib/services/limits/pendLimit';
 import { useFreshSchema } from '../support/freshSchema';
 import { makeNetwork, makeStation } from '../support/people';
+import { judged, minutesAt, send } from './support';
 
 useFreshSchema();
 
@@ -55,25 +52,13 @@ afterEach(() => {
 
 async function measured(from: string, minutes: number, LAeq: number): Promise<void> {
   vi.useRealTimers();
-  const intervals = Array.from({ length: minutes }, (_, minute) => ({
-    start: new Date((at(from) + minute * 60) * 1000).toISOString(),
-    seconds: 60,
-    LAeq,
-    levels: [LAeq],
-  }));
-  const envelope = { bands: [100], bandIndices: { indices: [-10] }, intervals };
-  await receiveBatch({ id: stationId, bandFraction: 3, acceptsFromSec: null }, envelope, new Date());
+  await send(stationId, at(from), minutesAt(LAeq, minutes));
 }
 
 async function judgeAt(clockTime: string): Promise<void> {
   const now = new Date((at(clockTime) + 60) * 1000);
   vi.useFakeTimers({ toFake: ['Date'], now });
-  await aggregateAll(pendWindowsFor);
-  const tell = async (changes: TellingChange[], ...rest: [Date, Parameters<typeof tellExceedances>[2]]) => {
-    told.push(...changes.map(({ kind }) => kind));
-    await tellExceedances(changes, ...rest);
-  };
-  while ((await judgeDueWindows(now, tell)) > 0);
+  told.push(...(await judged(tellExceedances, now)).map(({ kind }) => kind));
 }
 
 async function found() {

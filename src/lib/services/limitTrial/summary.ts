@@ -1,5 +1,6 @@
 import type { TrialCounts, TrialSummary } from '#lib/contracts/limitTrial';
 import { limitMetricText, limitUnit } from '#lib/format/limitMetric';
+import { windRuleText } from '#lib/format/windRule';
 import type { Span } from '#lib/services/levels/spans';
 import { addDays, localDateAt, startOfDaySec, weekdayOf } from '#lib/time/zone';
 import type { CaughtWindow, StationTrial, TrialRule } from './tryRule';
@@ -16,6 +17,7 @@ export function summaryOf(
   const caught = caughtInOrder(tried);
   return {
     descriptor: limitMetricText(rule),
+    windWords: rule.windRule ? windRuleText(rule.windRule) : null,
     threshold: rule.thresholdTenths / 10,
     unit: limitUnit(rule.metric),
     counts: tried.reduce((sum, { counts }) => added(sum, counts), NONE),
