@@ -17,6 +17,7 @@ import {
   documentHourSchema,
   yearToDateSchema,
 } from './monthFigures';
+import { registry } from './registry';
 import { summarySchema, summaryStationSchema } from './summaries';
 
 /** Changes when a reader of the file has to. */
@@ -91,3 +92,10 @@ export const monthDocumentSchema = summarySchema.omit({ status: true }).extend({
   stations: z.array(documentStationSchema),
 });
 export type MonthDocument = z.output<typeof monthDocumentSchema>;
+
+// Published as it is read: of the JSON file of a month.
+registry.registerComponent(
+  'schemas',
+  'MonthDocument',
+  z.toJSONSchema(monthDocumentSchema, { io: 'input' }) as object,
+);

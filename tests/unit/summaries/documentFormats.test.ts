@@ -7,6 +7,7 @@ import { strFromU8, unzipSync } from 'fflate';
 import Papa from 'papaparse';
 import { afterAll, beforeAll, describe, expect, test, vi } from 'vitest';
 import { monthDocumentSchema } from '#lib/contracts/monthDocument';
+import { openApiDocument } from '#lib/contracts/openapi';
 import { DEFAULT_SUMMARY_TEMPLATE } from '#lib/contracts/summaryTemplate';
 import { formatLevelDb } from '#lib/format/levels';
 import { renderFiles, type RenderContext } from '#lib/services/summaries/document/render';
@@ -77,6 +78,14 @@ const cell = (value: number | null | undefined) =>
 test('the JSON is the document, of its published form', () => {
   const read: unknown = JSON.parse(Buffer.from(file('merrow-2026-03-r2.json')).toString('utf8'));
   expect(monthDocumentSchema.parse(read)).toEqual(doc);
+});
+
+test('the interface publishes the form of the JSON', () => {
+  const published = JSON.stringify(openApiDocument('https://merrow.example'));
+  const { components } = JSON.parse(published) as {
+    components: { schemas: Record<string, { required: string[] }> };
+  };
+  expect(components.schemas['MonthDocument']?.required.sort()).toEqual(Object.keys(doc).sort());
 });
 
 describe('CSV', () => {
