@@ -1,5 +1,5 @@
 import { QueryClient, QueryClientProvider } from '@tanstack/react-query';
-import { useMemo, useState } from 'react';
+import { lazy, Suspense, useMemo, useState } from 'react';
 import type { Station } from '#lib/contracts/stations';
 import { type Theme } from '#lib/format/levelRamp';
 import { useNow } from '../strip/hooks/useNow';
@@ -13,13 +13,17 @@ import { dayOf, QUARTER_SEC } from './model/day';
 import { layerMarks } from './model/layerMarks';
 import { type MapLayer } from './model/layers';
 import { stationsAsOf, stationsInUse, withExceedances } from './model/shownStation';
-import { GlancePanel } from './parts/GlancePanel';
 import { LayerLists } from './parts/LayerLists';
 import { LayerSwitches } from './parts/LayerSwitches';
 import { MapLegend } from './parts/MapLegend';
 import { MapPane } from './parts/MapPane';
 import { StationList, type StationChoice } from './parts/StationList';
 import { TimeControl } from './parts/TimeControl';
+
+/** Fetched with the first station that is looked at: the map itself needs none of it. */
+const GlancePanel = lazy(() =>
+  import('./parts/GlancePanel').then((panel) => ({ default: panel.GlancePanel })),
+);
 
 export interface NetworkMapProps {
   slug: string;
@@ -86,14 +90,16 @@ function NetworkAtMoment({ slug, zone, period, periodQuery, styleUrls, ...given 
           </p>
         )}
         {shown && (
-          <GlancePanel
-            key={shown.code}
-            slug={slug}
-            station={shown}
-            zone={zone}
-            nowSec={nowSec}
-            onClose={() => setChosen(null)}
-          />
+          <Suspense fallback={null}>
+            <GlancePanel
+              key={shown.code}
+              slug={slug}
+              station={shown}
+              zone={zone}
+              nowSec={nowSec}
+              onClose={() => setChosen(null)}
+            />
+          </Suspense>
         )}
         <StationList {...{ slug, stations, periodQuery, choice, zone, nowSec }} />
         <LayerLists slug={slug} data={data} />

@@ -1,5 +1,5 @@
 import { keepPreviousData, useQuery } from '@tanstack/react-query';
-import { formatInstantUtc } from '#lib/contracts/common';
+import { formatInstantUtc } from '#lib/contracts/instants';
 import type { MapLayers, NetworkWind } from '#lib/contracts/networkMap';
 import { fetchJson } from '../../strip/hooks/fetchJson';
 import { type MapLayer } from '../model/layers';

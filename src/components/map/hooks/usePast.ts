@@ -1,5 +1,5 @@
 import { useQuery } from '@tanstack/react-query';
-import { formatInstantUtc } from '#lib/contracts/common';
+import { formatInstantUtc } from '#lib/contracts/instants';
 import type { NetworkLevels } from '#lib/contracts/networkMap';
 import { fetchJson } from '../../strip/hooks/fetchJson';
 import { type DayOfQuarters } from '../model/day';

@@ -1,5 +1,5 @@
 import { useQuery } from '@tanstack/react-query';
-import { formatInstantUtc } from '#lib/contracts/common';
+import { formatInstantUtc } from '#lib/contracts/instants';
 import type { Trouble } from '#lib/contracts/health';
 import { fetchJson } from '../../strip/hooks/fetchJson';
 

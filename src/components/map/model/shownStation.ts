@@ -1,4 +1,4 @@
-import { formatInstantUtc } from '#lib/contracts/common';
+import { formatInstantUtc } from '#lib/contracts/instants';
 import type { NetworkLevels } from '#lib/contracts/networkMap';
 import type { Station } from '#lib/contracts/stations';
 import { secondsOf } from '../../stations/stateWords';
