@@ -9,12 +9,14 @@ import { gatherPack } from '#lib/services/complaints/pack/gatherPack';
 import { gatherStationEvidence } from '#lib/services/complaints/stationEvidence';
 import { median, msOf, printTable } from './support/measure';
 import { FIRST_SEC, fillMonth, MONTH_SEC, repeatMonth } from './support/months';
+import { ProcessorTimes } from './support/processorTime';
 import { withOwnSchema } from './support/schema';
 import { makeNetwork, makeStation } from './support/station';
 
 /**
  * The evidence pack of a month-old window in a network of eight stations of minutes (31 thirds) with four limits: target 1.5 s. The pack
- * has the three nearest stations; the evidence of all eight is measured too, and the letter's PDF.
+ * has the three nearest stations; the evidence of all eight is measured too, and the letter's PDF. Processor time tells more than time on
+ * a machine that does other things; that of the database is with it where it runs here.
  */
 const STATIONS = 8;
 const MONTHS = 4;
@@ -59,16 +61,21 @@ await withOwnSchema(async () => {
     ];
     for (const [what, work] of works) rows.push([length, what, ...(await timed(work))]);
   }
-  printTable(['window', 'what', 'median ms', 'longest ms'], rows);
+  printTable(['window', 'what', 'median ms', 'longest ms', 'processor ms'], rows);
 });
 
 async function timed(work: () => Promise<unknown>): Promise<string[]> {
   const times: number[] = [];
+  const processor: number[] = [];
+  const spent = await ProcessorTimes.of({ cpuMs: 0 });
   for (let round = 0; round < WARM_ROUNDS + ROUNDS; round += 1) {
-    const ms = await msOf(work);
-    if (round >= WARM_ROUNDS) times.push(ms);
+    let ms = 0;
+    const { own, database } = await spent.during(async () => (ms = await msOf(work)));
+    if (round < WARM_ROUNDS) continue;
+    times.push(ms);
+    processor.push(own + database);
   }
-  return [median(times).toFixed(0), Math.max(...times).toFixed(0)];
+  return [median(times), Math.max(...times), median(processor)].map((ms) => ms.toFixed(0));
 }
 
 /** Every station has the same months of minutes, and all that was computed from them. */
@@ -129,6 +136,7 @@ async function report(
         coarseLatitude: 54.1,
         coarseLongitude: 1.6,
         nearestStationId: nearest?.id ?? null,
+        area: null,
         source: 'desk',
         dueOn: '2025-05-01',
         createdBy: null,

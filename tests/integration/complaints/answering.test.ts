@@ -186,6 +186,8 @@ describe('the PDF', () => {
     expect(text).toContain('Levels');
     expect(text).not.toContain('Against the usual');
     expect(text).not.toContain('Weather and the instrument');
+    const refused = await callApi('GET', `${COMPLAINTS}/${reference}/answer`, { session: regulator.session });
+    expect(refused.status).toBe(403);
   });
 
   test('a letter of a reply is not reached by another complaint', async () => {
