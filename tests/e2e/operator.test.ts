@@ -114,4 +114,4 @@ test('the operator registers a station by a pin, connects it, limits it, and fol
   await page.goto('/n/merrow/exceedances');
   await picture(page, 'exceedances');
   await context.close();
-});
+}, 240_000);
