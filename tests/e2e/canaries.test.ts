@@ -92,7 +92,10 @@ async function everyAddress(): Promise<string[]> {
     // What is told as it happens never ends.
     .filter(([path]) => !path.endsWith('/live'))
     .map(([path]) => path.replaceAll('{', '[').replaceAll('}', ']'));
-  const { '[key]': _, ...subjects } = await someSubjects();
+  // Whoever holds a private page's key is the resident.
+  const subjects = Object.fromEntries(
+    Object.entries(await someSubjects()).filter(([parameter]) => parameter !== '[key]'),
+  );
   const patterns = [...pagePatterns().filter((pattern) => !/^\/(sign-out|theme)/.test(pattern)), ...routes];
   const today = new Date(Date.now() + 86_400_000).toISOString().slice(0, 10);
   const monthAgo = new Date(Date.now() - 30 * 86_400_000).toISOString().slice(0, 10);

@@ -62,6 +62,6 @@ export function complaintListQuery(view: ComplaintListView, cursor: string | nul
 }
 
 /** How many of a view's fields beside the status narrow it. */
-export function narrowingCount({ status: _, ...others }: ComplaintListView): number {
-  return Object.values(others).filter((value) => value !== null).length;
+export function narrowingCount(view: ComplaintListView): number {
+  return Object.entries(view).filter(([name, value]) => name !== 'status' && value !== null).length;
 }
