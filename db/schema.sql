@@ -669,6 +669,37 @@ CREATE TABLE `interval_levels` (
   PRIMARY KEY (`station_id`,`starts_at`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
+CREATE TABLE `issued_summaries` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `network_id` int(10) unsigned NOT NULL,
+  `month` char(7) CHARACTER SET ascii COLLATE ascii_general_ci NOT NULL,
+  `revision` smallint(5) unsigned NOT NULL,
+  `issued_by` char(36) NOT NULL,
+  `issued_by_name` varchar(160) NOT NULL COMMENT 'as it stands in the files',
+  `issued_at` datetime(3) NOT NULL,
+  `note` varchar(1000) NOT NULL,
+  `figures` longtext CHARACTER SET utf8mb4 COLLATE utf8mb4_bin NOT NULL COMMENT 'levels of the month by station' CHECK (json_valid(`figures`)),
+  `changes` longtext CHARACTER SET utf8mb4 COLLATE utf8mb4_bin DEFAULT NULL COMMENT 'figures that differ from the revision before; null: the first' CHECK (json_valid(`changes`)),
+  `key_id` int(10) unsigned NOT NULL,
+  `manifest` mediumtext NOT NULL COMMENT 'the very text that is signed',
+  `manifest_sha256` binary(32) NOT NULL,
+  `signature` binary(64) NOT NULL COMMENT 'Ed25519 of the manifest',
+  PRIMARY KEY (`id`),
+  UNIQUE KEY `issued_summaries_revision` (`network_id`,`month`,`revision`),
+  KEY `issued_summaries_manifest` (`manifest_sha256`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `issued_summary_files` (
+  `summary_id` int(10) unsigned NOT NULL,
+  `format` varchar(10) CHARACTER SET ascii COLLATE ascii_general_ci NOT NULL,
+  `name` varchar(160) NOT NULL,
+  `media_type` varchar(120) NOT NULL,
+  `byte_count` int(10) unsigned NOT NULL,
+  `sha256` binary(32) NOT NULL COMMENT 'names the file under the data directory',
+  PRIMARY KEY (`summary_id`,`format`),
+  KEY `issued_summary_files_sha256` (`sha256`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
 CREATE TABLE `job_runs` (
   `job` varchar(60) NOT NULL,
   `slot` datetime(3) NOT NULL,
@@ -1109,6 +1140,96 @@ CREATE TABLE `stations` (
   UNIQUE KEY `stations_code` (`network_id`,`code`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
+CREATE TABLE `summary_comments` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `network_id` int(10) unsigned NOT NULL,
+  `month` char(7) CHARACTER SET ascii COLLATE ascii_general_ci NOT NULL,
+  `revision` smallint(5) unsigned NOT NULL,
+  `body` varchar(2000) NOT NULL,
+  `created_by` char(36) NOT NULL,
+  `created_at` datetime(3) NOT NULL,
+  `withdrawn_at` datetime(3) DEFAULT NULL,
+  PRIMARY KEY (`id`),
+  KEY `summary_comments_month` (`network_id`,`month`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `summary_drafts` (
+  `network_id` int(10) unsigned NOT NULL,
+  `month` char(7) CHARACTER SET ascii COLLATE ascii_general_ci NOT NULL,
+  `revision` smallint(5) unsigned NOT NULL,
+  `state` enum('draft','review','issuing','issued') NOT NULL DEFAULT 'draft',
+  `drafted_at` datetime(3) NOT NULL,
+  `computed_at` datetime(3) DEFAULT NULL COMMENT 'null: its figures wait to be made',
+  `document_sha256` binary(32) DEFAULT NULL COMMENT 'names the figures under the data directory',
+  `data_sha256` binary(32) DEFAULT NULL COMMENT 'digest of the intervals that the figures are of',
+  `figures` longtext CHARACTER SET utf8mb4 COLLATE utf8mb4_bin DEFAULT NULL COMMENT 'levels of the month by station' CHECK (json_valid(`figures`)),
+  `progress` smallint(5) unsigned NOT NULL DEFAULT 0 COMMENT 'stations done of the computation under way',
+  `failure` varchar(500) DEFAULT NULL COMMENT 'why the last attempt came to nothing',
+  `submitted_by` char(36) DEFAULT NULL,
+  `submitted_at` datetime(3) DEFAULT NULL,
+  `requested_by` char(36) DEFAULT NULL COMMENT 'who issues it',
+  `requested_at` datetime(3) DEFAULT NULL,
+  `note` varchar(1000) NOT NULL DEFAULT '' COMMENT 'what whoever issues it says about it',
+  `proposal_id` int(10) unsigned DEFAULT NULL COMMENT 'what led to a revision',
+  `fingerprint` binary(32) DEFAULT NULL COMMENT 'of an issued one: what it rests on, when it was compared last',
+  `fingerprint_at` datetime(3) DEFAULT NULL,
+  PRIMARY KEY (`network_id`,`month`,`revision`),
+  KEY `summary_drafts_state` (`state`,`computed_at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `summary_keys` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `network_id` int(10) unsigned NOT NULL,
+  `public_spki` varbinary(64) NOT NULL COMMENT 'Ed25519 public key, SubjectPublicKeyInfo',
+  `sha256` binary(32) NOT NULL COMMENT 'of public_spki: names the key',
+  `wrapped_private` varbinary(200) NOT NULL COMMENT 'AES-256-GCM of the private key under a key of the settings',
+  `created_by` char(36) DEFAULT NULL COMMENT 'null: made at the first issue',
+  `created_at` datetime(3) NOT NULL,
+  `retired_at` datetime(3) DEFAULT NULL COMMENT 'signs nothing any more; what it signed still holds',
+  `signing_network_id` int(10) unsigned GENERATED ALWAYS AS (if(`retired_at` is null,`network_id`,NULL)) STORED,
+  PRIMARY KEY (`id`),
+  UNIQUE KEY `summary_keys_sha256` (`sha256`),
+  UNIQUE KEY `summary_keys_signing` (`signing_network_id`),
+  KEY `summary_keys_network` (`network_id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `summary_proposals` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `network_id` int(10) unsigned NOT NULL,
+  `month` char(7) CHARACTER SET ascii COLLATE ascii_general_ci NOT NULL,
+  `of_revision` smallint(5) unsigned NOT NULL COMMENT 'the issued revision whose figures differ',
+  `changes_sha256` binary(32) NOT NULL COMMENT 'of the changes: the same ones are proposed once',
+  `changes` longtext CHARACTER SET utf8mb4 COLLATE utf8mb4_bin NOT NULL COMMENT 'station, figure, old, new, why' CHECK (json_valid(`changes`)),
+  `found_at` datetime(3) NOT NULL,
+  `state` enum('open','accepted','dismissed','replaced') NOT NULL DEFAULT 'open',
+  `decided_by` char(36) DEFAULT NULL,
+  `decided_at` datetime(3) DEFAULT NULL,
+  `reason` varchar(500) DEFAULT NULL,
+  PRIMARY KEY (`id`),
+  UNIQUE KEY `summary_proposals_changes` (`network_id`,`month`,`of_revision`,`changes_sha256`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `summary_readers` (
+  `network_id` int(10) unsigned NOT NULL,
+  `user_id` char(36) NOT NULL,
+  `is_told` tinyint(1) DEFAULT NULL COMMENT 'e-mail when a month is issued or revised; null: as the role has it',
+  `visited_at` datetime(3) DEFAULT NULL COMMENT 'when the person looked at the months last',
+  `previous_visit_at` datetime(3) DEFAULT NULL COMMENT 'what changed is told since then',
+  PRIMARY KEY (`network_id`,`user_id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `summary_settings` (
+  `network_id` int(10) unsigned NOT NULL,
+  `version` int(10) unsigned NOT NULL COMMENT 'counts from 1; the last one holds',
+  `grace_days` tinyint(3) unsigned NOT NULL COMMENT 'days after the end of a month before it is drafted',
+  `template` longtext CHARACTER SET utf8mb4 COLLATE utf8mb4_bin NOT NULL COMMENT 'how the month looks in print' CHECK (json_valid(`template`)),
+  `mark_sha256` binary(32) DEFAULT NULL COMMENT 'names the mark under the data directory; null: none',
+  `mark_media_type` varchar(40) DEFAULT NULL,
+  `created_by` char(36) NOT NULL,
+  `created_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`network_id`,`version`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
 CREATE TABLE `users` (
   `id` char(36) NOT NULL,
   `email` varchar(254) NOT NULL,
@@ -1187,3 +1308,15 @@ CREATE TABLE `webhooks` (
   PRIMARY KEY (`id`),
   KEY `webhooks_network` (`network_id`,`ended_at`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TRIGGER `issued_summaries_delete` BEFORE DELETE ON `issued_summaries` FOR EACH ROW
+  SIGNAL SQLSTATE '45000' SET MESSAGE_TEXT = 'What is issued is never changed';
+
+CREATE TRIGGER `issued_summaries_update` BEFORE UPDATE ON `issued_summaries` FOR EACH ROW
+  SIGNAL SQLSTATE '45000' SET MESSAGE_TEXT = 'What is issued is never changed';
+
+CREATE TRIGGER `issued_summary_files_delete` BEFORE DELETE ON `issued_summary_files` FOR EACH ROW
+  SIGNAL SQLSTATE '45000' SET MESSAGE_TEXT = 'What is issued is never changed';
+
+CREATE TRIGGER `issued_summary_files_update` BEFORE UPDATE ON `issued_summary_files` FOR EACH ROW
+  SIGNAL SQLSTATE '45000' SET MESSAGE_TEXT = 'What is issued is never changed';

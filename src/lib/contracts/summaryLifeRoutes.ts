@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { monthDocumentSchema } from './monthDocument';
 import { registerRoute } from './registry';
 import {
   monthActSchema,
@@ -10,6 +11,9 @@ import {
 } from './summaryLife';
 import { summaryManifestSchema } from './summaryManifest';
 import { summaryKeySchema } from './summaryVerification';
+
+/** A draft says that it is one; a sealed file is the document alone. */
+const monthFileSchema = monthDocumentSchema.extend({ status: z.literal('draft').optional() });
 
 const network = '/api/v1/networks/{network}';
 const month = `${network}/summaries/{month}`;
@@ -83,4 +87,45 @@ registerRoute({
   summary: 'Put a new signing key in the place of the one that signs',
   request: { params: z.object({ network: z.string() }) },
   responses: answers('Public keys', z.object({ items: z.array(summaryKeySchema) })),
+});
+registerRoute({
+  access: 'person',
+  method: 'get',
+  path: `${network}/summaries/{file}`,
+  summary: 'A month as PDF, XLSX, CSV or JSON, and the seal of an issued one',
+  request: {
+    params: z.object({
+      network: z.string(),
+      file: z
+        .string()
+        .regex(/^\d{4}-\d{2}\.(pdf|xlsx|csv|json|manifest\.json|manifest\.sig)$/)
+        .describe('Such as 2026-03.pdf, or 2026-03.manifest.json and 2026-03.manifest.sig'),
+    }),
+    query: z.object({
+      revision: z
+        .string()
+        .optional()
+        .describe('Without it the latest issued revision, and where there is none the draft as of now'),
+    }),
+  },
+  responses: {
+    200: {
+      description:
+        'The month. CSV of an issued one is a ZIP with its description; of a draft it is long: one figure a row, the first column says the kind of record. The signature is 64 bytes, Ed25519.',
+      headers: {
+        'Bittern-Revision': { description: 'Its revision, or draft', schema: { type: 'string' } },
+        'Bittern-Superseded': {
+          description: 'The revision that takes its place, where there is one',
+          schema: { type: 'string' },
+        },
+      },
+      content: {
+        'application/json': { schema: monthFileSchema },
+        'text/csv': { schema: z.string() },
+        'application/zip': { schema: z.string() },
+        'application/pdf': { schema: z.string() },
+        'application/octet-stream': { schema: z.string() },
+      },
+    },
+  },
 });

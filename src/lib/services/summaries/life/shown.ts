@@ -1,7 +1,7 @@
 import { type IssuedRevision, type MonthLife } from '#lib/contracts/summaryLife';
 import { type Summary } from '#lib/contracts/summaries';
 import { issuedSummary } from '../seal/files';
-import { sealedMonth } from './differences';
+import { SealBroken, sealedMonth } from './differences';
 import { monthLife } from './view';
 
 /** A month as its page shows it. */
@@ -9,13 +9,14 @@ export interface ShownMonth {
   life: MonthLife;
   /** The revision that is shown; null: the draft as of now. */
   revision: IssuedRevision | null;
-  /** Its sealed figures; null: to be computed. */
+  /** Its sealed figures; null: to be computed, or damaged. */
   summary: Omit<Summary, 'status'> | null;
+  /** Why an issued revision cannot be shown: what is stored of it does not fit its seal. */
+  damage: string | null;
 }
 
 /**
  * A month’s issued revision by the number asked for, or the latest; where nothing is issued, the draft. Null for a revision that was not issued.
- * @throws {SealBroken} for one whose stored figures do not hold: they are not shown.
  */
 export async function shownMonth(
   networkId: number,
@@ -29,7 +30,11 @@ export async function shownMonth(
       : life.revisions.find((one) => String(one.revision) === asked);
   if (revision === undefined) return null;
   const issued = revision && (await issuedSummary(networkId, month, revision.revision));
-  if (!issued) return { life, revision: null, summary: null };
-  const { doc } = await sealedMonth(issued.row);
-  return { life, revision, summary: doc };
+  if (!issued) return { life, revision: null, summary: null, damage: null };
+  try {
+    return { life, revision, summary: (await sealedMonth(issued.row)).doc, damage: null };
+  } catch (error) {
+    if (!(error instanceof SealBroken)) throw error;
+    return { life, revision, summary: null, damage: error.message };
+  }
 }
