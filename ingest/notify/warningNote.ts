@@ -24,7 +24,7 @@ export function warningNote(item: LimitHeadroom, { network, station, timeZone }:
   const passedSec = window.toSec - window.fromSec - seconds.left;
   return {
     subject: `${station.code} ${station.name}: ${isCertain ? 'will pass' : 'heading above'} the limit by ${end}`,
-    opening: `${restWords(item)} ${headingWords(item)}`.trim(),
+    opening: [restWords(item), headingWords(item), windWords(item)].filter(Boolean).join(' '),
     facts: [
       ['Limit', `${limit.name}: ${limit.descriptor} above ${formatLevelDb(limit.threshold)} dB`],
       ['Period', `${formatPeriod(window, timeZone)}, ${formatZone(timeZone, window)}`],
@@ -49,6 +49,12 @@ function restWords({ state, headroom, seconds, limit }: LimitHeadroom): string {
   }
   const most = formatLevelDb(Math.floor(headroom * 10 + 1e-9) / 10);
   return `The remaining ${rest} of the window may be at most ${most} dB on average.`;
+}
+
+function windWords({ windWords }: LimitHeadroom): string {
+  return windWords === null
+    ? ''
+    : `All of the rest is taken to have the wind that the limit goes by: ${windWords}.`;
 }
 
 function headingWords({ heading }: LimitHeadroom): string {

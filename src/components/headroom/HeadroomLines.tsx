@@ -1,4 +1,4 @@
-import { isPressing, verdictWords, windowWords } from './headroomWords';
+import { assumptionWords, isPressing, verdictWords, windowWords } from './headroomWords';
 import { useHeadroom } from './useHeadroom';
 
 interface HeadroomLinesProps {
@@ -19,6 +19,9 @@ export function HeadroomLines({ slug, code, zone }: HeadroomLinesProps) {
           <li key={item.limit.id}>
             {item.limit.name}, {windowWords(item, zone)}:{' '}
             <span className={isPressing(item) ? 'font-medium text-rust' : ''}>{verdictWords(item)}</span>
+            {assumptionWords(item) && (
+              <span className="text-small text-ink-soft block">{assumptionWords(item)}</span>
+            )}
           </li>
         ))}
       </ul>

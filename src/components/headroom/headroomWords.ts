@@ -20,6 +20,7 @@ export function verdictWords(item: LimitHeadroom): string {
   if (state === 'passed') return 'Passed: a moment was above the limit';
   if (state === 'not-foretold') return 'Not foretold for this limit: its windows are judged as they end';
   if (state === 'not-compared') return 'Not compared: its coverage cannot become enough';
+  if (state === 'dismissed') return 'Not compared: its wind dismisses it, however calm the rest is';
   if (limit.metric === 'LAFmax' && headroom !== null) return `No moment above ${formatLevelDb(headroom)} dB`;
   if (state === 'certain') {
     return item.seconds.needed > 0
@@ -28,6 +29,12 @@ export function verdictWords(item: LimitHeadroom): string {
   }
   if (headroom === null) return 'Nothing is left of it';
   return `Up to ${formatHeadroomDb(headroom)} dB on average for ${restWords(item)}`;
+}
+
+/** What is taken of the rest's wind, of a limit that goes by it; null where nothing is, or nothing is foretold. */
+export function assumptionWords({ windWords, state }: LimitHeadroom): string | null {
+  if (windWords === null || state === 'dismissed' || state === 'not-foretold') return null;
+  return `If all of the rest has the wind that this limit goes by: ${windWords}`;
 }
 
 /** "22:00–06:00" of the window. */

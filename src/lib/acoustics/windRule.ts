@@ -86,6 +86,20 @@ export function meanSpeedMs({ metres, knownSec }: WindowWind): number | null {
 }
 
 /**
+ * Whether a window is sure to be dismissed by its wind so far: even if all of its rest is measured, with the calmest wind that counts
+ * for the rule.
+ */
+export function isSureToBeDismissed(rule: WindRule, soFar: WindowWind, restSec: number): boolean {
+  if (soFar.measuredSec === 0) return false;
+  return isDismissed(rule, {
+    ...soFar,
+    measuredSec: soFar.measuredSec + restSec,
+    knownSec: soFar.knownSec + restSec,
+    metres: soFar.metres + (rule.minimumMs ?? 0) * restSec,
+  });
+}
+
+/**
  * Whether the wind of a window dismisses it, so that it is not compared: by its mean speed, rounded half up to tenths; where too little
  * is known, as the rule says of what is unknown.
  */

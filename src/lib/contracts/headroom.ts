@@ -8,6 +8,7 @@ export const HEADROOM_STATES = [
   'certain',
   'passed',
   'not-compared',
+  'dismissed',
   'not-foretold',
 ] as const;
 export const HEADING_SOURCES = ['last-15-min', 'so-far'] as const;
@@ -30,9 +31,16 @@ export const limitHeadroomSchema = z.object({
     .enum(HEADROOM_STATES)
     .describe(
       'certain: above the limit even if the rest is silent, once coverage suffices; passed: a maximum was above; ' +
-        'not-compared: the coverage that it takes cannot be reached any more; not-foretold: rolling windows, of which many are open at once, and quantities other than LAeq, LAFmax and the level of bands',
+        'not-compared: the coverage that it takes cannot be reached any more; dismissed: not compared for its wind, even if the ' +
+        'rest is as calm as the limit lets count; not-foretold: rolling windows, of which many are open at once, and quantities other than LAeq, LAFmax and the level of bands',
     ),
   level: level('Mean, or maximum, of the valid data so far'),
+  windWords: z
+    .string()
+    .nullable()
+    .describe(
+      'The wind that the limit goes by, in words: what was measured in it counts, and all of the rest is taken to have it; null: any',
+    ),
   seconds: z.object({
     valid: seconds('Seconds that the level stands on'),
     missing: seconds('Before the newest data: not measured, or left out'),
@@ -48,7 +56,9 @@ export const limitHeadroomSchema = z.object({
     .object({ level: z.number(), from: z.enum(HEADING_SOURCES) })
     .nullable()
     .describe('Where the mean ends if the rest is like the last 15 minutes or, without these, like so far'),
-  usualHigh: level('90 % point of LAeq over the rest by the clock in the eight weeks before'),
+  usualHigh: level(
+    '90 % point of LAeq over the rest by the clock in the eight weeks before; null of limits that go by the wind',
+  ),
   earliestPassing: z
     .string()
     .nullable()

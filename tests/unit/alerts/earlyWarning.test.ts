@@ -15,6 +15,7 @@ const HOUR: LimitHeadroom = {
   to: '2026-03-03T11:00:00Z',
   state: 'open',
   level: 57,
+  windWords: null,
   seconds: { valid: 1800, missing: 0, awaited: 0, left: 1800, needed: 0 },
   headroom: 50,
   heading: { level: 55.05, from: 'last-15-min' },

@@ -2,15 +2,16 @@ import { pool, type Connection } from '#db/queries/connection';
 import type { NetworkSettings } from '#db/queries/networks';
 import { listLatest } from '#db/queries/stationLatest';
 import type { StationRow } from '#db/queries/stations';
-import type { PeriodSums } from '#lib/acoustics/periodSums';
+import type { WindRule } from '#lib/acoustics/windRule';
 import { currentSums } from '#lib/services/levels/currentSums';
 import type { Span } from '#lib/services/levels/spans';
 import { usualFor } from '#lib/services/levels/usual';
 import { QUARTER_SEC, quarterAt } from '#lib/time/quarters';
+import { sumsInWind, type SumsInWind } from './sumsInWind';
 
 /** What is read of a station to tell its headroom: each thing once, however many limits ask for it. */
 export class HeadroomEvidence {
-  readonly #sums = new Map<string, Promise<PeriodSums>>();
+  readonly #sums = new Map<string, Promise<SumsInWind>>();
   readonly #usual = new Map<string, Promise<number | null>>();
 
   private constructor(
@@ -35,39 +36,39 @@ export class HeadroomEvidence {
     return new HeadroomEvidence(station, timeline, nowSec, newestSec, conn);
   }
 
-  /** Current sums of a stretch of time. */
-  sums(span: Span): Promise<PeriodSums> {
-    const source = { station: this.station, timeline: this.timeline, validity: 'rules' as const };
-    return once(this.#sums, span, async () => {
+  /** Current sums of a stretch of time, of the intervals that count for a limit with this wind rule. */
+  sums(span: Span, wind: WindRule | null): Promise<SumsInWind> {
+    const source = { station: this.station, timeline: this.timeline, validity: 'rules' as const, wind };
+    return once(this.#sums, keyOf(span, wind), async () => {
+      if (wind) return sumsInWind(source, span, this.conn);
       const { sums } = await currentSums(source, span, { bandClasses: false }, this.conn);
-      return sums;
+      return { sums, wind: null };
     });
   }
 
   /** Sums of the 15 minutes before the newest data; null where these are not of the last 15 minutes. */
-  async recentSums(): Promise<PeriodSums | null> {
+  async recentSums(wind: WindRule | null): Promise<SumsInWind | null> {
     const { newestSec } = this;
     if (newestSec === null || this.nowSec - newestSec > QUARTER_SEC) return null;
-    return this.sums({ fromSec: newestSec - QUARTER_SEC, toSec: newestSec });
+    return this.sums({ fromSec: newestSec - QUARTER_SEC, toSec: newestSec }, wind);
   }
 
   /** The loud end of what is usual for a rest, LAeq in dB; from the beginning of its quarter-hour, which is read at once. */
   usualHighDb({ fromSec, toSec }: Span): Promise<number | null> {
     const { station, timeline } = this;
     const window = { fromSec: quarterAt(fromSec), toSec };
-    return once(this.#usual, window, async () => {
+    return once(this.#usual, keyOf(window, null), async () => {
       const { highDb } = await usualFor({ station, timeline, window }, this.conn);
       return highDb;
     });
   }
 }
 
-function once<T>(
-  known: Map<string, Promise<T>>,
-  { fromSec, toSec }: Span,
-  read: () => Promise<T>,
-): Promise<T> {
-  const key = `${fromSec}:${toSec}`;
+function keyOf({ fromSec, toSec }: Span, wind: WindRule | null): string {
+  return `${fromSec}:${toSec}:${JSON.stringify(wind)}`;
+}
+
+function once<T>(known: Map<string, Promise<T>>, key: string, read: () => Promise<T>): Promise<T> {
   const before = known.get(key);
   if (before) return before;
   const answer = read();

@@ -10,9 +10,11 @@ import {
   secondsUntilCertain,
   type WindowSoFar,
 } from '#lib/acoustics/headroom';
+import { isSureToBeDismissed } from '#lib/acoustics/windRule';
 import { formatInstantUtc } from '#lib/contracts/common';
 import type { Headroom, LimitHeadroom } from '#lib/contracts/headroom';
 import { limitMetricText } from '#lib/format/limitMetric';
+import { windRuleText } from '#lib/format/windRule';
 import type { JudgedWindow } from '#lib/services/limits/force';
 import { isAbove, measure, minimumFor } from '#lib/services/limits/measure';
 import { HeadroomEvidence } from './evidence';
@@ -44,8 +46,9 @@ export async function stationHeadroom(
 async function headroomOf(window: JudgedWindow, evidence: HeadroomEvidence): Promise<LimitHeadroom> {
   const { version, startSec, endSec } = window;
   const { nowSec, newestSec } = evidence;
-  const sums = await evidence.sums({ fromSec: startSec, toSec: nowSec });
-  const isForetold = FORETOLD.includes(version.metric) && version.windRule === null;
+  const { windRule } = version;
+  const { sums, wind } = await evidence.sums({ fromSec: startSec, toSec: nowSec }, windRule);
+  const isForetold = FORETOLD.includes(version.metric);
   const { levelDb, validSec } = isForetold
     ? measure(version, sums)
     : { levelDb: null, validSec: sums.validSec };
@@ -63,9 +66,12 @@ async function headroomOf(window: JudgedWindow, evidence: HeadroomEvidence): Pro
     from: formatInstantUtc(startSec),
     to: formatInstantUtc(endSec),
     level: levelDb,
+    windWords: windRule && windRuleText(windRule),
     seconds: seconds.told,
   };
   if (version.stepMin !== null || !isForetold) return { ...told, ...NO_FINDINGS, state: 'not-foretold' };
+  if (windRule && wind && isSureToBeDismissed(windRule, wind, endSec - seconds.restFromSec))
+    return { ...told, ...NO_FINDINGS, state: 'dismissed' };
   if (version.metric === 'LAFmax') return { ...told, ...ofMaximum(window, levelDb) };
   return { ...told, ...(await ofMean(window, levelDb, seconds, evidence)) };
 }
@@ -94,7 +100,9 @@ async function ofMean(
   const heading = await headingOf(version, soFar, levelDb, evidence);
   if (isCertainToPass(thresholdTenths, soFar)) return { ...NO_FINDINGS, state: 'certain', heading };
   const usualHigh =
-    version.metric === 'LAeq' ? await evidence.usualHighDb({ fromSec: restFromSec, toSec: endSec }) : null;
+    version.metric === 'LAeq' && version.windRule === null
+      ? await evidence.usualHighDb({ fromSec: restFromSec, toSec: endSec })
+      : null;
   const untilSec = usualHigh === null ? null : secondsUntilCertain(thresholdTenths, soFar, usualHigh);
   const earliestSec = untilSec === null ? null : Math.max(evidence.nowSec, Math.ceil(restFromSec + untilSec));
   return {
@@ -112,8 +120,8 @@ async function headingOf(
   levelDb: number | null,
   evidence: HeadroomEvidence,
 ): Promise<LimitHeadroom['heading']> {
-  const recentSums = await evidence.recentSums();
-  const recent = recentSums && measure(version, recentSums);
+  const recentSums = await evidence.recentSums(version.windRule);
+  const recent = recentSums && measure(version, recentSums.sums);
   if (recent && recent.levelDb !== null && recent.validSec >= LEAST_RECENT_SEC) {
     const level = headingDb(soFar, recent.levelDb);
     return level === null ? null : { level, from: 'last-15-min' };

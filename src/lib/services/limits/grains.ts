@@ -44,7 +44,7 @@ export async function sumsByGrain(source: LevelSource, span: Span, conn: Connect
 }
 
 /** Wind of all that was measured in a span, whether it counts or not; undefined where no rule asks for it. */
-function windOfSpan(
+export function windOfSpan(
   intervals: readonly StoredInterval[],
   { fromSec, toSec }: Span,
   judgement: Judgement,
