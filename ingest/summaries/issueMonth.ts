@@ -155,7 +155,10 @@ async function record(
       transaction,
     );
   });
-  if (draft.documentSha256) await removeKeptFile('summaries', draft.documentSha256);
+  const reviewed = draft.documentSha256;
+  if (reviewed && !files.some(({ sha256 }) => sha256.equals(reviewed))) {
+    await removeKeptFile('summaries', reviewed);
+  }
 }
 
 async function keptFile({ name, mediaType, bytes }: RenderedFile): Promise<Omit<IssuedFileRow, 'summaryId'>> {

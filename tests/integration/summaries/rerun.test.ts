@@ -10,7 +10,7 @@ import { rerunWords } from '#ops/summaries/rerunWords';
 import { at } from '../complaints/support';
 import { useFreshSchema } from '../support/freshSchema';
 import { makeNetwork, makePerson, makeStation } from '../support/people';
-import { issue, MONTH, network, storeMarch } from './lifeSupport';
+import { issue, network, storeMarch } from './lifeSupport';
 
 const dataDir = mkdtempSync(join(tmpdir(), 'bittern-rerun-'));
 process.env['BITTERN_DATA_DIR'] = dataDir;
@@ -40,7 +40,10 @@ const minute = (start: string) => db()('interval_levels').where({ station_id: qu
 test('a month from its intervals, past every stored sum, has the figures that were sealed', async () => {
   expect(await rerun()).toEqual({
     isSame: true,
-    lines: ['2026-03, revision 1: manifest and signature hold.', 'Every figure is the same.'],
+    lines: [
+      '2026-03, revision 1: manifest and signature hold.',
+      'Every figure that was compared is the same.',
+    ],
   });
   // The hours of the clock change are among them.
   expect(await db()('dirty_marks').count({ count: '*' }).first()).toEqual({ count: 0 });
@@ -76,10 +79,22 @@ test('one changed bit of one interval is told, also where no figure shows it', a
 test('where the intervals are not kept any more, the stored sums tell, and it says so', async () => {
   await db()('interval_levels').where({ station_id: quay }).delete();
   const { isSame, lines } = await rerun();
-  expect(lines).toEqual([
-    '2026-03, revision 1: manifest and signature hold.',
-    'NOTE     intervals of MER-01 are not kept any more; its figures come from the stored sums.',
-    'Every figure is the same.',
-  ]);
   expect(isSame).toBe(true);
+  expect(lines.slice(1)).toEqual([
+    'NOTE     intervals of MER-01 are not kept any more; its figures come from the stored sums.',
+    expect.stringMatching(/^NOTE {5}\d+ of their figures that only intervals tell could not be compared\.$/),
+    'Every figure that was compared is the same.',
+  ]);
+  await db()('day_periods')
+    .where({ station_id: quay, local_date: '2026-03-20', period: 'day' })
+    .update({
+      a_energy_sec: db().raw('a_energy_sec * 2'),
+    });
+  await db()('quarter_hours')
+    .where({ station_id: quay })
+    .whereBetween('starts_at', [at('2026-03-20T08:00:00Z'), at('2026-03-20T12:00:00Z')])
+    .update({ a_energy_sec: db().raw('a_energy_sec * 2') });
+  const changed = await rerun();
+  expect(changed.isSame).toBe(false);
+  expect(changed.lines.some((line) => line.startsWith('DIFFERS  MER-01 days 2026-03-20 Lday'))).toBe(true);
 });

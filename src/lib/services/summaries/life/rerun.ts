@@ -20,11 +20,16 @@ export interface Rerun {
   changedData: string[];
   /** Stations whose intervals are not kept any more: their figures are compared with the stored sums’. */
   withoutIntervals: string[];
+  /** Figures of those stations that only intervals tell, and that differ or are missing for that. */
+  notCompared: number;
   differences: BareChange[];
 }
 
 /** Parts of a station’s month that only intervals tell. */
 const OF_INTERVALS = /^(exclusions (figures|leftOut)|tonality|lowFrequency|wind|figures LAFmaxAt)/;
+/** Levels by the clock: where the month’s midnights part a night, its hours are counted from intervals. */
+const BY_THE_CLOCK =
+  /^(bands|octaves|spectrogram|(figures|yearToDate) (?!(U )?L(day|evening|night|den)\b|periods))/;
 
 class Undo extends Error {}
 
@@ -37,9 +42,12 @@ export async function rerunMonth(network: NetworkRow, issued: IssuedSummaryRow):
   const { manifest, doc } = await sealedMonth(issued);
   const fromIntervals = await measureFromIntervals(network, issued, manifest);
   const withoutIntervals = gone(manifest.data, fromIntervals.data);
-  const differences = changedFigures(doc, fromIntervals.doc).filter(
+  const all = changedFigures(doc, fromIntervals.doc);
+  const differences = all.filter(
     ({ station, figure }) =>
-      station === null || !withoutIntervals.includes(station) || !OF_INTERVALS.test(figure),
+      station === null ||
+      !withoutIntervals.includes(station) ||
+      !(OF_INTERVALS.test(figure) || BY_THE_CLOCK.test(figure)),
   );
   return {
     damagedFiles: await damaged(issued, manifest),
@@ -47,6 +55,7 @@ export async function rerunMonth(network: NetworkRow, issued: IssuedSummaryRow):
       (code) => !withoutIntervals.includes(code),
     ),
     withoutIntervals,
+    notCompared: all.length - differences.length,
     differences,
   };
 }
