@@ -16,7 +16,13 @@ const FIGURES: PeriodFigures = {
   levels,
 };
 const rowWith = (drift: PeriodDrift) =>
-  uncertaintyRow(FIGURES, [], { words: '', uncertaintyDb: 0.5, basis: 'class 1', drift });
+  uncertaintyRow(FIGURES, [], {
+    words: '',
+    uncertaintyDb: 0.5,
+    basis: 'class 1',
+    basisKind: 'class-1',
+    drift,
+  });
 
 test('calibration drift about the period is a term of its uncertainty, and said', () => {
   const row = rowWith({ driftDb: 1.2, known: 'both' });

@@ -69,7 +69,7 @@ const RENDERERS: Record<FileFormat, Renderer> = {
   xlsx: async (doc, context) => ({
     name: fileName(doc, context, 'xlsx'),
     mediaType: 'application/vnd.openxmlformats-officedocument.spreadsheetml.sheet',
-    bytes: await workbook(doc, topicTables(doc), factsOf(doc, context), paragraphsOf(doc, context)),
+    bytes: await workbook(topicTables(doc), factsOf(doc, context), paragraphsOf(doc, context)),
   }),
   csv: (doc, context) =>
     Promise.resolve({

@@ -4,7 +4,7 @@ import { lowFrequencyIndicator, LOW_FREQUENCY_BOUND_DB } from '#lib/acoustics/lo
 import { PeriodAccumulator } from '#lib/acoustics/periodStatistics';
 import { type PeriodSums } from '#lib/acoustics/periodSums';
 import { toTenths } from '#lib/acoustics/rounding';
-import { assessTonality, surveyTones, thirdsTenthsOfDb } from '#lib/acoustics/tonality';
+import { assessTonality, surveyTones } from '#lib/acoustics/tonality';
 import { type DocumentLowFrequency, type DocumentTonality } from '#lib/contracts/monthEvidence';
 import { QUARTER_SEC } from '#lib/time/quarters';
 import { fractionOf, stationBands } from '../../figures/stationBands';

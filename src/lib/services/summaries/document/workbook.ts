@@ -1,5 +1,4 @@
 import writeExcelFile, { type Row, type SheetData } from 'write-excel-file/node';
-import { type MonthDocument } from '#lib/contracts/monthDocument';
 import { type ColumnType, type ColumnUnit, type TableCell, type TopicTable } from './tables/table';
 
 /** Facts about the file, name and value, for its first sheet. */
@@ -29,7 +28,6 @@ const WIDTHS: Record<ColumnType, number> = {
 
 /** A month as a workbook: about the file, a sheet a topic with typed cells, and what every column means. Times are UTC. */
 export async function workbook(
-  doc: MonthDocument,
   tables: readonly TopicTable[],
   facts: Facts,
   paragraphs: readonly string[],

@@ -68,7 +68,7 @@ function drawMark({ pages, context, doc }: PdfGround): void {
         fit: [130, MARK_HEIGHT],
         align: 'right',
       }),
-    { alt: name, bbox: [RIGHT - 130, 40, RIGHT, 40 + MARK_HEIGHT] },
+    { alt: name, bbox: [RIGHT - 130, 40, RIGHT, 40 + MARK_HEIGHT] } as PDFKit.Mixins.StructureElementOptions,
   );
 }
 

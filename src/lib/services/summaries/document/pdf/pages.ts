@@ -26,7 +26,8 @@ export interface PdfMeta {
   createdAt: Date;
   /** Left side of every page’s foot. */
   foot: string;
-  pageOf: (page: number, pages: number) => string;
+  /** Null: pages are numbered without telling how many there are, so that each can leave memory when it is full. */
+  pageOf: ((page: number, pages: number) => string) | null;
 }
 
 type Structure = PDFKit.PDFStructureElement;
@@ -45,6 +46,7 @@ export class Pages {
   readonly #ended: Promise<unknown>;
   readonly #root: Structure;
   readonly #widths = new Map<string, number>();
+  #page = 1;
   #section: Structure;
   #outline: Outline | null = null;
 
@@ -53,7 +55,7 @@ export class Pages {
     this.doc = new PDFDocument({
       size: 'A4',
       margin: 0,
-      bufferPages: true,
+      bufferPages: meta.pageOf !== null,
       pdfVersion: '1.7',
       tagged: true,
       lang: meta.language,
@@ -89,6 +91,8 @@ export class Pages {
   }
 
   newPage(): void {
+    if (this.#meta.pageOf === null) this.#foot(String(this.#page));
+    this.#page += 1;
     this.doc.addPage();
     this.y = TOP;
   }
@@ -174,18 +178,25 @@ export class Pages {
   async finish(): Promise<Buffer> {
     this.#section.end();
     this.#root.end();
-    const { start, count } = this.doc.bufferedPageRange();
-    for (let at = 0; at < count; at += 1) {
-      this.doc.switchToPage(start + at);
-      this.artifact(() => {
-        const style = { size: SMALL, colour: SOFT_INK };
-        this.put(this.#meta.foot, LEFT, PAGE.height - 44, style);
-        this.put(this.#meta.pageOf(at + 1, count), RIGHT, PAGE.height - 44, { ...style, align: 'right' });
-      }, 'Pagination');
+    const { pageOf } = this.#meta;
+    if (pageOf === null) this.#foot(String(this.#page));
+    else {
+      for (let at = 0; at < this.#page; at += 1) {
+        this.doc.switchToPage(at);
+        this.#foot(pageOf(at + 1, this.#page));
+      }
     }
     this.doc.end();
     await this.#ended;
     return Buffer.concat(this.#chunks);
+  }
+
+  #foot(number: string): void {
+    const style = { size: SMALL, colour: SOFT_INK };
+    this.artifact(() => {
+      this.put(this.#meta.foot, LEFT, PAGE.height - 44, style);
+      this.put(number, RIGHT, PAGE.height - 44, { ...style, align: 'right' });
+    }, 'Pagination');
   }
 
   #text(type: string, text: string, { font = 'regular', size = BODY, colour = INK }: TextStyle): void {

@@ -11,6 +11,9 @@ import { Pages } from './pages';
 import { stationPages } from './stationPages';
 import { table } from './table';
 
+/** Pages of more stations are not held until all are made: a hundred stations would take more than 500 MB. */
+const MOST_BUFFERED = 40;
+
 /** The month as an A4 document to read, print and sign: tagged, with bookmarks, and with what it is on every page. */
 export async function renderPdf(doc: MonthDocument, context: RenderContext): Promise<Buffer> {
   const words = wordsOf(context.template.language);
@@ -24,7 +27,7 @@ export async function renderPdf(doc: MonthDocument, context: RenderContext): Pro
     language: words.tag,
     createdAt: new Date(doc.generatedAt),
     foot: `${title}${doc.isToDate ? `, ${words.toDate}` : ''} · ${state}`,
-    pageOf: words.page,
+    pageOf: doc.stations.length > MOST_BUFFERED ? null : words.page,
   });
   const ground: PdfGround = { pages, words, format, doc, context };
   overview(ground);
