@@ -78,7 +78,9 @@ export const newComplaintSchema = z
       .max(80)
       .nullable()
       .default(null)
-      .describe('Of the areas of the residents’ form; its station is the nearest one where no coordinates are given'),
+      .describe(
+        'Of the areas of the residents’ form; its station is the nearest one where no coordinates are given',
+      ),
     words: z.string().trim().max(4000, 'must have at most 4000 characters').default(''),
     contact: contactSchema.prefault({}),
   })
