@@ -139,7 +139,11 @@ function eachClipped(
 }
 
 /** One object is filled again for each interval: a month has tens of thousands, and they are summed at once. */
-function clip(into: AccumulatedInterval, interval: MeasuredInterval, durationSec: number): AccumulatedInterval {
+function clip(
+  into: AccumulatedInterval,
+  interval: MeasuredInterval,
+  durationSec: number,
+): AccumulatedInterval {
   into.durationSec = durationSec;
   into.sampleSec = interval.durationSec;
   into.laeqCentiDb = interval.laeqCentiDb;
