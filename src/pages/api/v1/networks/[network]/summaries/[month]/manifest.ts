@@ -17,7 +17,12 @@ export const GET = route(async (context) => {
   if (!issued) throw notFound('No such revision has been issued.');
   const opened = await openManifest(issued.row);
   if (!opened) {
-    throw new Problem(500, 'seal-damaged', 'The seal is damaged', 'What is kept of the manifest does not fit its signature.');
+    throw new Problem(
+      500,
+      'seal-damaged',
+      'The seal is damaged',
+      'What is kept of the manifest does not fit its signature.',
+    );
   }
   return json(opened.manifest);
 });
