@@ -12,8 +12,6 @@ export const POST = route(async (context) => {
   const { network, user } = await requireNetwork(context, context.params['network'], ['operator']);
   const month = monthOf(context.params['month']);
   const decision = await readJson(context.request, proposalDecisionSchema);
-  valueOf(
-    await decideOnProposal({ network, month, userId: user.id }, idOf(context.params['id']), decision),
-  );
+  valueOf(await decideOnProposal({ network, month, userId: user.id }, idOf(context.params['id']), decision));
   return json(await monthLife(network.id, month));
 });
