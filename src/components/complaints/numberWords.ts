@@ -34,8 +34,12 @@ export function kindSentence({ total, byKind }: ComplaintNumbers): string {
 export function hourSentence({ total, byHour }: ComplaintNumbers): string {
   if (total === 0) return 'No complaint in this period.';
   const early = byHour.slice(0, 6).reduce((sum, count) => sum + count, 0);
-  const most = byHour.indexOf(Math.max(...byHour));
-  return `Most began between ${most}:00 and ${most + 1}:00 (${byHour[most] ?? 0}); ${early} of ${total} between midnight and 6:00.`;
+  const most = Math.max(...byHour);
+  const hours = byHour.flatMap((count, hour) => (count === most ? [hour] : []));
+  const [hour = 0] = hours;
+  const told =
+    hours.length > 1 ? 'No hour stands out' : `Most began between ${hour}:00 and ${hour + 1}:00 (${most})`;
+  return `${told}; ${early} of ${total} began between midnight and 6:00.`;
 }
 
 /** What the comparison may and may not be taken for, in sentences. */
