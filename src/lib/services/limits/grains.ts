@@ -1,5 +1,6 @@
 import type { Connection } from '#db/queries/connection';
-import { selectIntervals, type StoredInterval } from '#db/queries/intervals';
+import { selectIntervals } from '#db/queries/intervals';
+import type { MeasuredInterval } from '#db/queries/measuredIntervals';
 import type { PeriodSums } from '#lib/acoustics/periodSums';
 import { WINDOW_GRAIN_MIN } from '#lib/time/clockWindows';
 import { addWind, noWind, type WindowWind } from '#lib/acoustics/windRule';
@@ -45,7 +46,7 @@ export async function sumsByGrain(source: LevelSource, span: Span, conn: Connect
 
 /** Wind of all that was measured in a span, whether it counts or not; undefined where no rule asks for it. */
 export function windOfSpan(
-  intervals: readonly StoredInterval[],
+  intervals: readonly MeasuredInterval[],
   { fromSec, toSec }: Span,
   judgement: Judgement,
 ): WindowWind | undefined {
