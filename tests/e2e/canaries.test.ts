@@ -96,7 +96,10 @@ async function everyAddress(): Promise<string[]> {
   const subjects = Object.fromEntries(
     Object.entries(await someSubjects()).filter(([parameter]) => parameter !== '[key]'),
   );
-  const patterns = [...pagePatterns().filter((pattern) => !/^\/(sign-out|theme)/.test(pattern)), ...routes];
+  const patterns = [
+    ...pagePatterns().filter((pattern) => !/^\/(sign-out|theme|500)/.test(pattern)),
+    ...routes,
+  ];
   const today = new Date(Date.now() + 86_400_000).toISOString().slice(0, 10);
   const monthAgo = new Date(Date.now() - 30 * 86_400_000).toISOString().slice(0, 10);
   const named = references.flatMap((reference) =>

@@ -12,7 +12,7 @@ test('the liaison logs a complaint, sees the figures of that window, and answers
   await page.goto('/n/merrow/complaints');
   await page.getByRole('link', { name: 'Log a complaint' }).click();
 
-  await page.getByLabel('When').fill('last night 3:15-4:05');
+  await page.getByRole('textbox', { name: 'When' }).fill('last night 3:15-4:05');
   await page.getByLabel('What it sounds like').selectOption('hum');
   await page.getByLabel('In their own words').fill('A steady low hum in the bedroom.');
   await page.getByLabel('Area').selectOption('Around Silo Lane');
@@ -65,7 +65,7 @@ test('a caller’s complaint is logged by the keyboard alone, in few enough keys
   const { page, context } = await open();
   await signIn(page, 'liaison@merrow.example');
   await page.goto('/n/merrow/complaints/new');
-  await page.getByLabel('When').waitFor();
+  await page.getByRole('textbox', { name: 'When' }).waitFor();
   let keys = 0;
   const press = async (key: string) => {
     keys += 1;
