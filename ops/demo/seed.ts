@@ -16,6 +16,7 @@ import { seedReportForm } from './reportForm';
 import { seedQuarantine } from './quarantine';
 import { seedSelfChecks } from './selfChecks';
 import { seedStations } from './stations';
+import { seedSummaries } from './summaries';
 
 const DAY_SEC = 86_400;
 const STATIONS_AT_ONCE = 4;
@@ -72,6 +73,7 @@ export async function seedDemo(settings: Config, tell: (line: string) => void): 
   // Complaints name areas of the form.
   await seedReportForm(network, desk.liaisonId, stations);
   tell(`${await seedComplaints(desk, nowSec, days)} complaints`);
+  tell(`${await seedSummaries(network, operatorId)} months issued`);
 }
 
 async function judgeAll(): Promise<number> {
