@@ -31,14 +31,14 @@ const LOOPS: LoopSettings[] = [
   { name: 'import-files', everySec: 2, work: importFiles },
   { name: 'shift-clocks', everySec: 2, work: shiftClocks },
   { name: 'trace-days', everySec: 60, work: traceDays },
-  { name: 'make-summaries', everySec: 5, work: makeSummaries },
+  { name: 'make-summaries', everySec: 5, work: makeSummaries, locksItself: true },
   { name: 'compose-alerts', everySec: 10, work: composeAlerts },
   { name: 'escalate', everySec: 20, work: escalateUnacknowledged },
   { name: 'send-mail', everySec: 2, work: sendMail },
   { name: 'send-webhooks', everySec: 3, work: sendWebhooks },
   { name: 'warn-early', everySec: 60, work: warnOfHeadings },
   { name: 'watch-health', everySec: 60, work: watchHealth },
-  { name: 'watch-summaries', everySec: 900, work: watchSummaries },
+  { name: 'watch-summaries', everySec: 900, work: watchSummaries, locksItself: true },
 ];
 
 /** Done once a slot. The first is the worker's sign of life, which /readyz reads. */

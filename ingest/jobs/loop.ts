@@ -10,6 +10,8 @@ export interface LoopSettings {
   /** Seconds between rounds while nothing is left. */
   everySec: number;
   work: Work;
+  /** It takes locks of its own, where there is something to do: a lock for the round would hold a connection of the pool for nothing. */
+  locksItself?: true;
 }
 
 const AFTER_FAILURE_SEC = 5;
@@ -18,9 +20,12 @@ const AFTER_FAILURE_SEC = 5;
  * Does a kind of work round by round until `signal` aborts: at once again while something is left. A failure is logged and
  * tried again; it stops neither this loop nor the others.
  */
-export async function runLoop({ name, everySec, work }: LoopSettings, signal: AbortSignal): Promise<void> {
+export async function runLoop(
+  { name, everySec, work, locksItself }: LoopSettings,
+  signal: AbortSignal,
+): Promise<void> {
   while (!signal.aborted) {
-    const waitSec = await round(name, work).then(
+    const waitSec = await round(name, work, locksItself === true).then(
       (done) => (done > 0 ? 0 : everySec),
       (error: unknown) => {
         log().error({ err: error, job: name }, 'job failed');
@@ -31,11 +36,13 @@ export async function runLoop({ name, everySec, work }: LoopSettings, signal: Ab
   }
 }
 
-async function round(name: string, work: Work): Promise<number> {
+async function round(name: string, work: Work, locksItself: boolean): Promise<number> {
   let done = 0;
-  await withNamedLock(name, async () => {
+  const once = async () => {
     done = await work(new Date());
-  });
+  };
+  if (locksItself) await once();
+  else await withNamedLock(name, once);
   if (done > 0) log().debug({ job: name, done }, 'job did');
   return done;
 }

@@ -1,6 +1,7 @@
 import { appendAudit } from '#db/queries/audit';
 import { inTransaction } from '#db/queries/connection';
 import { listIssued } from '#db/queries/issuedSummaries';
+import { withNamedLock } from '#db/queries/namedLock';
 import { findNetworkById, listSettings } from '#db/queries/networks';
 import { listWatchedDrafts, updateDraft, type SummaryDraftRow } from '#db/queries/summaryDrafts';
 import { insertProposal, replaceOpenProposals } from '#db/queries/summaryProposals';
@@ -17,12 +18,20 @@ export async function watchIssuedMonths(now: Date): Promise<number> {
   let compared = 0;
   for (const watched of await listWatchedDrafts()) {
     try {
-      if (await compare(watched, now)) compared += 1;
+      if (await isUnchanged(watched)) continue;
+      await withNamedLock(`summary:${watched.networkId}:${watched.month}`, async () => {
+        if (await compare(watched, now)) compared += 1;
+      });
     } catch (error) {
       log().error({ err: error, month: watched.month, network: watched.networkId }, 'month not compared');
     }
   }
   return compared;
+}
+
+async function isUnchanged({ networkId, month, fingerprint }: SummaryDraftRow): Promise<boolean> {
+  const span = monthSpan(month, await listSettings(networkId));
+  return fingerprint?.equals(await fingerprintOf(networkId, span)) === true;
 }
 
 async function compare(watched: SummaryDraftRow, now: Date): Promise<boolean> {
@@ -31,7 +40,6 @@ async function compare(watched: SummaryDraftRow, now: Date): Promise<boolean> {
   if (!network) return false;
   const span = monthSpan(month, await listSettings(networkId));
   const fingerprint = await fingerprintOf(networkId, span);
-  if (watched.fingerprint?.equals(fingerprint)) return false;
   const [issued] = await listIssued(networkId, month);
   if (!issued || issued.revision !== revision) return false;
   const { changes } = await differencesSinceIssue(network, issued, now);

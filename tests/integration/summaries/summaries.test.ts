@@ -184,7 +184,8 @@ describe('the figures of a month', () => {
       );
       expect(row?.['value']).toBe(day.Lden === null ? '' : String(roundHalfUp(day.Lden, 4)));
       expect(
-        line(day.date)[0]
+        line(day.date)
+          .find((found) => !found.includes('Day hours'))
           ?.replaceAll('† ', '')
           .trim()
           .split(/\s{2,}/)
