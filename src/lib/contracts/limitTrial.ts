@@ -100,6 +100,9 @@ registerRoute({
   method: 'post',
   path: '/api/v1/networks/{network}/limits/trial',
   summary: 'Try a limit on past data (operator): nothing is set, stored or told',
+  description:
+    'With `Accept: text/event-stream` events `progress` (`{"done","all"}` in days of stations) come before `result`; closing the ' +
+    'connection cancels the trial. Trials of more than a month that read every interval follow each other; 503 when too many wait.',
   request: {
     params: z.object({ network: z.string() }),
     body: { content: { 'application/json': { schema: limitTrialSchema } } },

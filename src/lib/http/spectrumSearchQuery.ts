@@ -5,9 +5,8 @@ import {
   spectrumSearchOptionsSchema,
 } from '#lib/contracts/spectrumSearch';
 import { type SpectrumSearch } from '#lib/services/spectra/search';
-import { SearchCancelled, SearchesFull } from '#lib/services/spectra/threads';
 import { instantParameter, parsePeriod, type Period } from './parse';
-import { badRequest, notFound, Problem } from './problem';
+import { badRequest, notFound } from './problem';
 
 const DAY_SEC = 86_400;
 const YEAR_SEC = 365 * DAY_SEC;
@@ -49,17 +48,4 @@ async function knownCodes(text: string, networkId: number): Promise<string[]> {
       throw notFound('The network has no station with one of these codes.');
   }
   return codes;
-}
-
-/** What keeps a search from its answer, as a refusal: too many wait, or who asked has gone. Anything else as it is. */
-export function searchProblem(error: unknown): unknown {
-  if (error instanceof SearchesFull) {
-    const detail = 'Several searches wait already. Try again in a few seconds.';
-    return new Problem(503, 'searches-full', 'Too many searches at the moment', detail, {
-      headers: { 'Retry-After': '5' },
-    });
-  }
-  return error instanceof SearchCancelled
-    ? new Problem(499, 'cancelled', 'Cancelled', 'The search was given up.')
-    : error;
 }

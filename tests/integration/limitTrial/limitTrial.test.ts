@@ -7,10 +7,12 @@ import { aggregateAll } from '#ingest/aggregate/aggregate';
 import { judgeDueWindows } from '#ingest/detect/judge';
 import { receiveBatch } from '#ingest/receive/receive';
 import { newLimitSchema } from '#lib/contracts/limits';
+import { readEvents } from '#components/ui/readEvents.ts';
 import type { LimitTrialAnswer } from '#lib/contracts/limitTrial';
 import { addExclusion } from '#lib/services/exclusions/add';
 import { pendLimit } from '#lib/services/limits/pendLimit';
 import { readRule } from '#lib/services/limits/rule';
+import type { Progress } from '#lib/services/threads/messages';
 import { callApi } from '../support/callApi';
 import { useFreshSchema } from '../support/freshSchema';
 import { makeNetwork, makePerson, makeStation } from '../support/people';
@@ -223,6 +225,54 @@ test('nothing is set, stored or told', async () => {
   expect(
     await Promise.all(['limits', 'exceedances', 'outbox', 'audit_log'].map((name) => rows(name))),
   ).toEqual(before);
+});
+
+const IN_WIND = {
+  name: 'Trial',
+  metric: 'LAeq',
+  window: '1h',
+  threshold: 61,
+  windMaximum: 3,
+  minimumCoverage: 0.3,
+};
+const YEAR = { limit: IN_WIND, from: '2025-04-01', to: TO };
+
+test('a wind rule is tried on a year, telling how far it is, and finds what it finds on the days with data', async () => {
+  const days = await tried(IN_WIND);
+  expect(days.windows.length).toBeGreaterThan(0);
+  const answer = await callApi('POST', PATH, {
+    session: operator,
+    headers: { Accept: 'text/event-stream' },
+    body: YEAR,
+  });
+  const events: { name: string; data: unknown }[] = [];
+  if (!answer.body) throw new Error('No events.');
+  await readEvents(answer.body, (name, data) => events.push({ name, data }));
+  const progress = events.filter(({ name }) => name === 'progress').map(({ data }) => data as Progress);
+  expect(progress.length).toBeGreaterThan(2);
+  progress.forEach(({ done, all }, at) => {
+    expect(all).toBe(2 * 364);
+    expect(done).toBeGreaterThanOrEqual(progress[at - 1]?.done ?? 0);
+  });
+  expect(events.at(-1)?.name).toBe('result');
+  const { windows, trial } = events.at(-1)?.data as LimitTrialAnswer;
+  expect(windows).toEqual(days.windows);
+  expect(trial.counts.windows).toBe(2 * (364 * 24 - 1) + 2);
+});
+
+test('who leaves ends a long trial, and the next one is not kept waiting', async () => {
+  const left = await callApi('POST', PATH, {
+    session: operator,
+    headers: { Accept: 'text/event-stream' },
+    body: {
+      ...YEAR,
+      limit: { ...IN_WIND, metric: 'LAeqLessLA90', backgroundFrom: '23:00', backgroundTo: '05:00' },
+    },
+  });
+  const reader = left.body?.getReader();
+  await reader?.read();
+  await reader?.cancel();
+  expect((await tried(IN_WIND, { from: '2026-02-20' })).windows.length).toBeGreaterThan(0);
 });
 
 const rows = async (table: string) => (await db()(table).count({ count: '*' }))[0]?.['count'];

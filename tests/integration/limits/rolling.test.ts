@@ -2,6 +2,7 @@ import { afterEach, beforeEach, expect, test, vi } from 'vitest';
 import { db } from '#db/client';
 import { inTransaction } from '#db/queries/connection';
 import { insertLimit, insertVersion, type NewLimitVersion } from '#db/queries/limits';
+import type { TellingChange } from '#ingest/detect/judge';
 import { tellExceedances } from '#ingest/notify/tellExceedances';
 import { pendLimit } from '#lib/services/limits/pendLimit';
 import { useFreshSchema } from '../support/freshSchema';

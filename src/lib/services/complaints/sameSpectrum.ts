@@ -9,7 +9,7 @@ import {
 import { addDays, localDateAt, startOfDaySec } from '#lib/time/zone';
 import type { Span } from '../levels/spans';
 import { searchSpectrum } from '../spectra/search';
-import { SearchCancelled, SearchesFull } from '../spectra/threads';
+import { JobCancelled, JobsFull } from '../threads/messages';
 
 /** Where the same spectrum was heard on other dates, for the evidence of a complaint. */
 export interface SameSpectrum {
@@ -67,8 +67,8 @@ export async function sameSpectrum(
       pattern: answer.pattern.words,
     };
   } catch (error) {
-    if (error instanceof SearchCancelled) return notSearched('It would have taken too long just now.');
-    if (error instanceof SearchesFull) return notSearched('Other searches were waiting.');
+    if (error instanceof JobCancelled) return notSearched('It would have taken too long just now.');
+    if (error instanceof JobsFull) return notSearched('Other searches were waiting.');
     throw error;
   }
 }

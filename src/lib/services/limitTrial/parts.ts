@@ -24,6 +24,11 @@ const PARTS_OF: Readonly<Record<LimitMetric, TrialParts | null>> = {
   eventLAE: null,
 };
 
+/** Whether a quantity is measured window by window, from intervals or from many other windows. */
+export function isFromIntervals(metric: LimitMetric): boolean {
+  return PARTS_OF[metric] === null;
+}
+
 /** What a limit's windows are added up from: null, too, where it goes by the wind, or by a background of other hours. */
 export function partsOf(
   rule: Pick<NewLimitVersion, 'metric' | 'windRule' | 'backgroundFromMin'>,

@@ -9,17 +9,20 @@ import { formatInstantUtc } from '#lib/contracts/common';
 import {
   MOST_TRIAL_WINDOWS,
   type LimitTrialAnswer,
-  type LimitTrialQuery,
   type TrialSummary,
   type TrialWindow,
 } from '#lib/contracts/limitTrial';
 import { versionAt } from '#lib/services/limits/force';
 import { readRule } from '#lib/services/limits/rule';
-import { done, unknown, type Outcome } from '#lib/services/outcome';
+import { done, unknown } from '#lib/services/outcome';
 import { startOfDaySec } from '#lib/time/zone';
-import { caughtInOrder, summaryOf } from './summary';
+import { coversStation } from '../limits/force';
+import { type JobWatch } from '../threads/messages';
 import { sizeProblem } from './size';
-import { tryRule, type CaughtWindow, type TrialGround, type TrialRule } from './tryRule';
+import { caughtInOrder, summaryOf } from './summary';
+import { TrialSteps } from './trialSteps';
+import { type TrialOutcome, type TrialTask } from './trialTask';
+import { daysOf, tryRule, type CaughtWindow, type TrialGround, type TrialRule } from './tryRule';
 
 /** A rule with what it caught, in order of time. */
 interface Tried {
@@ -31,15 +34,15 @@ interface Tried {
 type Codes = ReadonlyMap<number, string>;
 
 /**
- * Tries a limit on past data, and beside it today's version of the limit that it is to replace. Nothing is stored. `nowSec`:
- * windows that end later have not closed.
+ * Tries a limit on past data, and beside it today's version of the limit that it is to replace. Nothing is stored. What a
+ * field cannot be tried with is told, and how far it is.
+ * @throws {JobCancelled}
  */
 export async function tryLimit(
-  networkId: number,
-  query: LimitTrialQuery,
-  nowSec: number,
+  { networkId, query, nowSec }: TrialTask,
+  watch: JobWatch,
   conn: Connection = pool(),
-): Promise<Outcome<LimitTrialAnswer>> {
+): Promise<TrialOutcome> {
   const stations = await listStations(networkId, conn);
   const places = { stations, groups: await listStationGroups(networkId, conn) };
   const read = readRule({ ...query.limit, effectiveFrom: undefined }, places, nowSec);
@@ -52,7 +55,12 @@ export async function tryLimit(
   const holidayDates = new Set((await listHolidays(networkId, conn)).map(({ date }) => date));
   const zone = pickSettings(timeline, nowSec).timeZone;
   const period = { fromSec: startOfDaySec(query.from, zone), toSec: startOfDaySec(query.to, zone) };
-  const ground: TrialGround = { stations, timeline, holidayDates, period, nowSec };
+  const days = [read.version, ...(today ? [today] : [])].reduce(
+    (sum, rule) => sum + daysOf(period) * stations.filter(({ id }) => coversStation(rule, id)).length,
+    0,
+  );
+  const steps = new TrialSteps(Math.ceil(days), watch);
+  const ground: TrialGround = { stations, timeline, holidayDates, period, nowSec, steps };
   const own = await tried(read.version, ground, zone, conn);
   const other = today && { ...(await tried(today, ground, zone, conn)), version: today };
   const codes = new Map(stations.map(({ id, code }) => [id, code]));

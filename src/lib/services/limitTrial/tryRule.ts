@@ -15,6 +15,7 @@ import { QUARTER_SEC } from '#lib/time/quarters';
 import { groupBy } from '../groupBy';
 import { partsOf } from './parts';
 import { trialQuarters } from './trialQuarters';
+import type { TrialSteps } from './trialSteps';
 import { WindowSums } from './windowSums';
 
 /** What a limit compares, whoever set it and whenever it holds. */
@@ -67,6 +68,8 @@ export interface TrialGround {
   /** Windows that begin in it are tried. */
   period: Span;
   nowSec: number;
+  /** Told how far it is; left out: nobody is. */
+  steps?: TrialSteps;
 }
 
 const NO_DATES: ReadonlySet<string> = new Set();
@@ -82,16 +85,25 @@ export async function tryRule(
   ground: TrialGround,
   conn: Connection,
 ): Promise<StationTrial[]> {
-  const { timeline } = ground;
+  const { timeline, period, steps } = ground;
   const windows = closedWindows(rule, ground);
   const tried: StationTrial[] = [];
   for (const station of ground.stations.filter(({ id }) => coversStation(rule, id))) {
     const source = { station, timeline, validity: 'rules' as const };
     const count = new StationCount(rule, windows.length);
-    await measureEach(rule, source, windows, conn, (window, came) => count.add(window, came));
+    await measureEach(rule, source, windows, conn, (window, came) => {
+      count.add(window, came);
+      steps?.reach(daysOf({ fromSec: period.fromSec, toSec: window.startSec }));
+    });
+    steps?.finish(daysOf(period));
     tried.push(count.trial(station, timeline));
   }
   return tried;
+}
+
+/** Length of a period in days of 24 hours. */
+export function daysOf({ fromSec, toSec }: Span): number {
+  return (toSec - fromSec) / 86_400;
 }
 
 /** Tells what every window came to, in their order: from parts read at once, where these tell it. */
@@ -110,7 +122,7 @@ async function measureEach(
     return;
   }
   const partSec = partSecOf(windows);
-  for (const some of chunksOf(windows)) {
+  for (const some of chunksOf(windows, partSec === QUARTER_SEC ? CHUNK_SEC : FINE_CHUNK_SEC)) {
     const read = await trialQuarters(source, spanOf(some), { parts, partSec, bands: rule }, conn);
     const sums = new WindowSums(read, { parts, partSec });
     for (const window of some) tell(window, measure(rule, sums.of(window)));
@@ -128,11 +140,13 @@ function spanOf(windows: readonly TriedWindow[]): Span {
 
 /** Windows that begin within so long of each other are measured from what is read at once: the next ones' parts take its memory. */
 const CHUNK_SEC = 31 * 86_400;
+/** The same of fives of minutes, that hold their distributions. */
+const FINE_CHUNK_SEC = 7 * 86_400;
 
-function* chunksOf(windows: readonly TriedWindow[]): Generator<TriedWindow[]> {
+function* chunksOf(windows: readonly TriedWindow[], chunkSec: number): Generator<TriedWindow[]> {
   let chunk: TriedWindow[] = [];
   for (const window of windows) {
-    if (window.startSec >= (chunk[0]?.startSec ?? Infinity) + CHUNK_SEC) {
+    if (window.startSec >= (chunk[0]?.startSec ?? Infinity) + chunkSec) {
       yield chunk;
       chunk = [];
     }

@@ -3,7 +3,8 @@ import { DAY_MINUTES, OUTLINE_GROUPS, type DayTrace } from '#lib/acoustics/dayTr
 import { ShapeSearch } from '#lib/acoustics/shapeSearch';
 import { CivilMinutes } from './civilMinutes';
 import { PatternCounter } from './pattern';
-import { type SearchedStation, type SearchProgress, type SearchResult, type SearchTask } from './searchTask';
+import { type JobWatch, type Progress } from '../threads/messages';
+import { type SearchedStation, type SearchResult, type SearchTask } from './searchTask';
 import { SpellList } from './spells';
 import { daysOfStation, readDays, type StationDays } from './stationDays';
 
@@ -11,12 +12,6 @@ import { daysOfStation, readDays, type StationDays } from './stationDays';
 const DAYS_AT_ONCE = 64;
 /** Days made from intervals for one search, of all stations together; more are left out and told. */
 const MOST_FRESH_DAYS = 40;
-
-/** What a search tells and is told while it runs. */
-export interface SearchWatch {
-  onProgress: (progress: SearchProgress) => void;
-  isCancelled: () => boolean;
-}
 
 /** Looks at every day of every station in turn. Memory is bounded; time grows with the days that are asked for. */
 export class SearchRun {
@@ -30,7 +25,7 @@ export class SearchRun {
 
   constructor(
     private readonly task: SearchTask,
-    private readonly watch: SearchWatch,
+    private readonly watch: JobWatch,
   ) {
     this.#search = new ShapeSearch(task.query);
     this.#spells = new SpellList(task.gapMinutes);
@@ -60,7 +55,7 @@ export class SearchRun {
   async #station(
     plan: StationDays,
     timeline: NetworkSettings[],
-    progress: SearchProgress,
+    progress: Progress,
   ): Promise<SearchedStation> {
     const searched = { stationId: plan.station.id, days: 0, daysLeftOut: 0, minutes: 0, alikeMinutes: 0 };
     for (let first = 0; first < plan.days.length; first += DAYS_AT_ONCE) {

@@ -10,7 +10,8 @@ import { type Span } from '../levels/spans';
 import { statisticsOf } from '../levels/statistics';
 import { EMPTY_RESULT, searchAnswer } from './searchAnswer';
 import { type SearchTask } from './searchTask';
-import { searchInThread, type SearchListener } from './threads';
+import { type JobListener } from '../threads/messages';
+import { searches } from './threads';
 
 /** A spectrum and where it is looked for. */
 export interface SpectrumSearch {
@@ -34,11 +35,11 @@ const MOST_MS = 20_000;
 /**
  * Where else and when the mean spectrum of a station's period was heard: minutes whose shape differs by no more than the asked RMS,
  * grouped to spells. Runs in a thread of its own.
- * @throws {SearchesFull | SearchCancelled}
+ * @throws {JobsFull | JobCancelled}
  */
 export async function searchSpectrum(
   search: SpectrumSearch,
-  listener: SearchListener = {},
+  listener: JobListener = {},
 ): Promise<SpectrumSearchAnswer> {
   const { station, period, searched, nowSec } = search;
   const [timeline, stations] = await Promise.all([
@@ -51,7 +52,7 @@ export async function searchSpectrum(
   const state = stateOf(station, statistics, levelsDb);
   const thirds = stations.filter(({ bandFraction }) => bandFraction === 3);
   const task = taskOf(search, { thirds, levelsDb, laeqDb: statistics.LAeq, timeline });
-  const result = state === 'searched' ? await searchInThread(task, listener) : EMPTY_RESULT;
+  const result = state === 'searched' ? await searches.run(task, listener) : EMPTY_RESULT;
   return {
     asked: {
       station: station.code,

@@ -42,9 +42,3 @@ export interface SearchResult {
   isComplete: boolean;
   tookMs: number;
 }
-
-/** Station-days done of all. */
-export interface SearchProgress {
-  done: number;
-  all: number;
-}

@@ -2,7 +2,8 @@ import { requireNetwork } from '#lib/auth/guards';
 import { ALL_ROLES } from '#lib/auth/roles';
 import { csv } from '#lib/http/respond';
 import { route } from '#lib/http/route';
-import { parseSpectrumSearch, searchProblem } from '#lib/http/spectrumSearchQuery';
+import { jobProblem } from '#lib/http/jobProblem';
+import { parseSpectrumSearch } from '#lib/http/spectrumSearchQuery';
 import { spellsCsv } from '#lib/services/spectra/spellsCsv';
 import { searchSpectrum } from '#lib/services/spectra/search';
 
@@ -13,6 +14,6 @@ export const GET = route(async (context) => {
     const answer = await searchSpectrum(search, { signal: context.request.signal });
     return csv(spellsCsv(answer), `${network.slug}-spectrum-search.csv`);
   } catch (error) {
-    throw searchProblem(error);
+    throw jobProblem(error, 'search');
   }
 });

@@ -1,7 +1,10 @@
 import { readEvents } from './readEvents';
 
-/** Shows how far a search is, and stops it; the page then has what was found. Without it the page is simply waited for. */
-class SpectrumSearchForm extends HTMLElement {
+/**
+ * Shows how far what a form asks for is, and stops it; the page then has the answer. Without it the page is simply waited for.
+ * `data-doing`: words before anything is known; `data-of`: what is counted; `data-stopped`: words after stopping.
+ */
+class ProgressForm extends HTMLElement {
   private stop: AbortController | null = null;
 
   connectedCallback(): void {
@@ -19,21 +22,21 @@ class SpectrumSearchForm extends HTMLElement {
     event.preventDefault();
     const query = new URLSearchParams();
     for (const [name, value] of new FormData(form)) if (typeof value === 'string') query.append(name, value);
-    void this.search(`${location.pathname}?${query}`);
+    void this.ask(`${location.pathname}?${query}`);
   }
 
-  private async search(address: string): Promise<void> {
+  private async ask(address: string): Promise<void> {
     this.stop?.abort();
     const stop = new AbortController();
     this.stop = stop;
-    this.show('Searching', true);
+    this.show(this.dataset['doing'] ?? '', true);
     try {
       const answer = await fetch(address, { headers: { Accept: 'text/event-stream' }, signal: stop.signal });
       const isStream = answer.headers.get('content-type')?.startsWith('text/event-stream');
       if (isStream && answer.body) await readEvents(answer.body, (name, data) => this.hear(name, data));
     } catch (error) {
       if (!stop.signal.aborted) throw error;
-      return this.show('Stopped. Nothing was found yet.', false);
+      return this.show(this.dataset['stopped'] ?? '', false);
     }
     // The page has the answer, or says what is wrong.
     location.assign(address);
@@ -44,15 +47,14 @@ class SpectrumSearchForm extends HTMLElement {
     const { done, all } = data as { done: number; all: number };
     const bar = this.querySelector('progress');
     if (bar) [bar.max, bar.value] = [Math.max(1, all), done];
-    this.show(`${done} of ${all} days of stations`, true);
+    this.show(`${done} of ${all} ${this.dataset['of'] ?? ''}`, true);
   }
 
-  private show(words: string, isSearching: boolean): void {
+  private show(words: string, isAsking: boolean): void {
     const status = this.querySelector('[role=status]');
     if (status) status.textContent = words;
-    for (const part of this.querySelectorAll<HTMLElement>('[data-stop], progress'))
-      part.hidden = !isSearching;
+    for (const part of this.querySelectorAll<HTMLElement>('[data-stop], progress')) part.hidden = !isAsking;
   }
 }
 
-customElements.define('spectrum-search', SpectrumSearchForm);
+customElements.define('progress-form', ProgressForm);

@@ -1,5 +1,6 @@
+import { workerData } from 'node:worker_threads';
 import { register } from 'tsx/esm/api';
 
 // A thread does not take over how its process reads TypeScript.
 register();
-await import('./searchThread.ts');
+await import(workerData.module);

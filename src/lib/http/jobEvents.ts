@@ -1,9 +1,6 @@
-import { type SpectrumSearchAnswer } from '#lib/contracts/spectrumSearch';
-import { type SearchListener } from '#lib/services/spectra/threads';
+import { type JobListener } from '#lib/services/threads/messages';
+import { jobProblem, type JobKind } from './jobProblem';
 import { problemOf } from './route';
-import { searchProblem } from './spectrumSearchQuery';
-
-type Search = (listener: SearchListener) => Promise<SpectrumSearchAnswer>;
 
 const HEADERS = {
   'Content-Type': 'text/event-stream; charset=utf-8',
@@ -13,8 +10,19 @@ const HEADERS = {
   Connection: 'close',
 };
 
-/** Server-sent events of a search: `progress`, then `result`, or `problem` (problem details). Leaving cancels it. */
-export function searchEvents(search: Search, path: string): Response {
+/** Whether who asks would rather have events than the answer alone. */
+export function wantsEvents(request: Request): boolean {
+  return request.headers.get('accept')?.includes('text/event-stream') ?? false;
+}
+
+interface Told {
+  kind: JobKind;
+  /** Path that was asked for. */
+  path: string;
+}
+
+/** Server-sent events of a job: `progress`, then `result`, or `problem` (problem details). Leaving cancels it. */
+export function jobEvents(job: (listener: JobListener) => Promise<unknown>, { kind, path }: Told): Response {
   const left = new AbortController();
   const body = new ReadableStream<Uint8Array>({
     start: (controller) => {
@@ -26,15 +34,18 @@ export function searchEvents(search: Search, path: string): Response {
       const end = () => {
         if (!left.signal.aborted) controller.close();
       };
-      const watch = { signal: left.signal, onProgress: (progress: unknown) => send('progress', progress) };
-      void search(watch).then(
+      const listener: JobListener = {
+        signal: left.signal,
+        onProgress: (progress) => send('progress', progress),
+      };
+      void job(listener).then(
         (answer) => {
           send('result', answer);
           end();
         },
         (error: unknown) => {
           if (left.signal.aborted) return;
-          const { status, code, title, detail } = problemOf(searchProblem(error), path);
+          const { status, code, title, detail } = problemOf(jobProblem(error, kind), path);
           send('problem', { type: 'about:blank', status, code, title, detail });
           end();
         },
