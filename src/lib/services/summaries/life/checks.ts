@@ -43,7 +43,7 @@ export async function monthChecks(
         path: `${base}/stations/${code}?${period}`,
       })),
       'Every station has the coverage that it needs',
-      'below the minimum coverage',
+      ['station is', 'stations are', 'below the minimum coverage'],
     ),
     check(
       'quarantine',
@@ -52,7 +52,7 @@ export async function monthChecks(
         path: `${base}/quarantine?station=${code}`,
       })),
       'No refused record of the month waits',
-      'with refused records that nobody has settled',
+      ['station has', 'stations have', 'refused records that nobody has settled'],
     ),
     check(
       'calibration',
@@ -61,7 +61,7 @@ export async function monthChecks(
         path: `${base}/instruments`,
       })),
       'No stretch of the month is in doubt by a calibration',
-      'in doubt by a calibration',
+      ['stretch is', 'stretches are', 'in doubt by a calibration'],
     ),
     check(
       'exceedances',
@@ -70,23 +70,29 @@ export async function monthChecks(
         path: `${base}/exceedances/${row.id}`,
       })),
       'Every exceedance of the month is acknowledged',
-      'that nobody has acknowledged',
+      ['exceedance is', 'exceedances are', 'acknowledged by nobody'],
     ),
     check(
       'recomputation',
-      dirty === 0 ? [] : [{ words: `${dirty} quarter-hours wait to be recomputed`, path: `${base}/health` }],
+      dirty === 0 ? [] : [{ words: `${dirty} marks on quarter-hours`, path: `${base}/health` }],
       'Nothing of the month waits to be recomputed',
-      'of recomputation',
+      ['stretch waits', 'stretches wait', 'to be recomputed'],
     ),
   ];
 }
 
-function check(kind: SummaryCheck['kind'], items: Item[], none: string, some: string): SummaryCheck {
-  const count = items.length > MOST_ITEMS ? `more than ${MOST_ITEMS}` : String(items.length);
+function check(
+  kind: SummaryCheck['kind'],
+  items: Item[],
+  none: string,
+  some: [one: string, several: string, what: string],
+): SummaryCheck {
+  const [one, several, what] = some;
+  const count = items.length > MOST_ITEMS ? `More than ${MOST_ITEMS}` : String(items.length);
   return {
     kind,
     isOpen: items.length > 0,
-    words: items.length === 0 ? none : `${count} ${some}`,
+    words: items.length === 0 ? none : `${count} ${items.length === 1 ? one : several} ${what}`,
     items: items.slice(0, MOST_ITEMS),
   };
 }
