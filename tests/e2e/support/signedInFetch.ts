@@ -1,12 +1,12 @@
 import { inject } from 'vitest';
 
-/** Signs a demo account in through the interface and answers a caller that carries its session. */
-export async function signedInFetch(email: string) {
+/** Signs an account in through the interface, a demo account without a password, and answers a caller that carries its session. */
+export async function signedInFetch(email: string, password = inject('demoPassword')) {
   const origin = inject('origin');
   const session = await fetch(`${origin}/api/v1/session`, {
     method: 'POST',
     headers: { 'Content-Type': 'application/json' },
-    body: JSON.stringify({ email, password: inject('demoPassword') }),
+    body: JSON.stringify({ email, password }),
   });
   if (session.status !== 204) throw new Error(`Sign-in failed: ${session.status} ${await session.text()}`);
   const cookie = session.headers
