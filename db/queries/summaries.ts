@@ -22,3 +22,19 @@ export async function listStationMonths(
     .sum({ validSec: 'd.valid_sec' });
   return rows.map((row) => ({ ...row, validSec: Number(row.validSec) }));
 }
+
+/** Whether a station has anything in `fromSec <= t < toSec`: intervals, or what was summed of them. */
+export async function hasData(
+  stationId: number,
+  { fromSec, toSec }: { fromSec: number; toSec: number },
+  conn: Connection = pool(),
+): Promise<boolean> {
+  // An interval may begin before, a quarter-hour at whatever part of it.
+  const range = [stationId, fromSec - 3600, toSec];
+  const [[row]] = await conn.raw(
+    `SELECT EXISTS (SELECT 1 FROM quarter_hours WHERE station_id = ? AND starts_at > ? AND starts_at < ?)
+        OR EXISTS (SELECT 1 FROM interval_levels WHERE station_id = ? AND starts_at > ? AND starts_at < ?) AS found`,
+    [...range, ...range],
+  );
+  return Number(row.found) === 1;
+}

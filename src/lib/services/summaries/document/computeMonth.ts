@@ -4,6 +4,7 @@ import { pool, type Connection } from '#db/queries/connection';
 import { listExceedances, type ExceedanceRow } from '#db/queries/exceedances';
 import { listSettings, type NetworkRow } from '#db/queries/networks';
 import { listStations } from '#db/queries/stations';
+import { hasData } from '#db/queries/summaries';
 import { formatInstantUtc } from '#lib/contracts/common';
 import { MONTH_DOCUMENT_FORM, type DocumentStation, type MonthDocument } from '#lib/contracts/monthDocument';
 import { type Span } from '../../levels/spans';
@@ -54,8 +55,12 @@ export async function computeMonth(
   };
   const found: DocumentStation[] = [];
   for (const [at, station] of stations.entries()) {
-    const one = await stationDocument({ station, span, timeline, nowSec, conn }, shared);
-    if (stoodWithin(station, span) || one.figures.LAeq !== null) found.push(one);
+    const stood = stoodWithin(station, span);
+    // What neither stood nor measured then need not be computed.
+    if (stood || (await hasData(station.id, civil, conn))) {
+      const one = await stationDocument({ station, span, timeline, nowSec, conn }, shared);
+      if (stood || one.figures.LAeq !== null) found.push(one);
+    }
     onProgress?.(at + 1, stations.length);
   }
   return {
