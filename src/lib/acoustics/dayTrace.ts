@@ -159,11 +159,14 @@ export function packShapes({ firstSlot, slots, laeqCentiDb, meanCentiDb, steps }
   return bytes;
 }
 
-/** The trace of packed bytes and its outline. The steps are a view of the bytes. */
+/** The trace of packed bytes and its outline: a view of the bytes, as far as these lie evenly. */
 export function unpackShapes(bytes: Uint8Array, outline: Uint8Array): DayTrace {
   const [firstSlot = 0, slots = 0] = bytes;
   const int16 = (from: number) => {
-    const own = Uint8Array.from(bytes.subarray(from, from + 2 * DAY_MINUTES));
+    const at = bytes.byteOffset + from;
+    if (at % 2 === 0) return new Int16Array(bytes.buffer, at, DAY_MINUTES);
+    const own = new Uint8Array(2 * DAY_MINUTES);
+    own.set(bytes.subarray(from, from + 2 * DAY_MINUTES));
     return new Int16Array(own.buffer);
   };
   return {

@@ -23,6 +23,9 @@ export interface ShapeQuery {
   withinDb: number | null;
 }
 
+/** Whether a minute of a day is asked for. */
+export type IsWanted = (minute: number) => boolean;
+
 /** A minute that is alike. */
 export interface ShapeMatch {
   minute: number;
@@ -88,19 +91,15 @@ export class ShapeSearch {
     return ((spread + GROUP_ERROR_DB * Math.sqrt(OUTLINE_GROUPS)) * STEPS_A_DB) ** 2;
   }
 
-  /** Minutes of a day that are alike, ascending; `isWanted` leaves out minutes that are not asked for. */
-  matches(trace: DayTrace, isWanted: (minute: number) => boolean): ShapeMatch[] {
+  /** Minutes of a day that are alike, ascending; `isWanted` leaves out minutes that are not asked for, null none. */
+  matches(trace: DayTrace, isWanted: IsWanted | null): ShapeMatch[] {
     const found: ShapeMatch[] = [];
     this.eachMatch(trace, isWanted, (match) => found.push({ ...match }));
     return found;
   }
 
   /** The same, told one after the other in one object that is filled again: a year of stations has millions. */
-  eachMatch(
-    trace: DayTrace,
-    isWanted: (minute: number) => boolean,
-    tell: (match: Readonly<ShapeMatch>) => void,
-  ): void {
+  eachMatch(trace: DayTrace, isWanted: IsWanted | null, tell: (match: Readonly<ShapeMatch>) => void): void {
     const { firstSlot, slots } = trace;
     const compared = this.#slots.filter((slot) => firstSlot <= slot && slot < firstSlot + slots);
     if (compared.length < MINIMUM_SHARED_THIRDS) return;
@@ -110,7 +109,7 @@ export class ShapeSearch {
     const match: ShapeMatch = { minute: 0, rmsDb: 0, laeqCentiDb: 0 };
     for (let minute = 0; minute < DAY_MINUTES; minute += 1) {
       const laeqCentiDb = trace.laeqCentiDb[minute] ?? NO_LEVEL_CENTI_DB;
-      if (!this.#isLevel(laeqCentiDb) || !isWanted(minute)) continue;
+      if (!this.#isLevel(laeqCentiDb) || (isWanted !== null && !isWanted(minute))) continue;
       const rmsDb = rmsOf(trace.steps, minute * slots, { offsets, querySteps, mostSquares });
       if (rmsDb > this.asked.mostRmsDb) continue;
       match.minute = minute;

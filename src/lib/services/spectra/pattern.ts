@@ -26,9 +26,9 @@ const WEEKDAY_SHARE = 0.95;
 export class PatternCounter {
   readonly counts = new Uint32Array(WEEKDAYS * BINS);
 
-  /** Counts a minute of a weekday (0 = Monday) and its minute of the day. */
-  add(weekday: number, minuteOfDay: number): void {
-    const at = weekday * BINS + Math.floor(minuteOfDay / BIN_MINUTES);
+  /** Counts a minute of the week (0: Monday, 00:00). */
+  add(weekMinute: number): void {
+    const at = Math.floor(weekMinute / BIN_MINUTES);
     this.counts[at] = (this.counts[at] ?? 0) + 1;
   }
 

@@ -1,6 +1,6 @@
 import { listSettings, type NetworkSettings } from '#db/queries/networks';
 import { DAY_MINUTES, OUTLINE_GROUPS, type DayTrace } from '#lib/acoustics/dayTrace';
-import { ShapeSearch } from '#lib/acoustics/shapeSearch';
+import { ShapeSearch, type IsWanted } from '#lib/acoustics/shapeSearch';
 import { CivilMinutes } from './civilMinutes';
 import { PatternCounter } from './pattern';
 import { type JobWatch, type Progress } from '../threads/messages';
@@ -79,21 +79,30 @@ export class SearchRun {
     const isWanted = this.#wantedOf(stationId, dayStartSec);
     searched.days += 1;
     for (let minute = 0; minute < DAY_MINUTES; minute += 1) {
-      if (outline[minute * OUTLINE_GROUPS] !== 0 && isWanted(minute)) searched.minutes += 1;
+      const hasSpectrum = outline[minute * OUTLINE_GROUPS] !== 0;
+      if (hasSpectrum && (isWanted === null || isWanted(minute))) searched.minutes += 1;
     }
     if (!trace) return;
     this.#search.eachMatch(trace, isWanted, (match) => {
       const startSec = dayStartSec + match.minute * 60;
       searched.alikeMinutes += 1;
       this.#spells.add(stationId, startSec, match);
-      const { weekday, minuteOfDay } = this.#civil.at(startSec);
-      this.#pattern.add(weekday, minuteOfDay);
+      this.#pattern.add(this.#civil.at(startSec));
     });
   }
 
-  /** Whether a minute of a day is asked for: in the dates, and not the spectrum itself. */
-  #wantedOf(stationId: number, dayStartSec: number): (minute: number) => boolean {
+  /** Whether a minute of a day is asked for: in the dates, and not the spectrum itself; null: all of them are, as on most days. */
+  #wantedOf(stationId: number, dayStartSec: number): IsWanted | null {
     const { fromSec, toSec, asked, leftOut } = this.task;
+    const endSec = dayStartSec + DAY_MINUTES * 60;
+    const isApart = (span: { fromSec: number; toSec: number }) =>
+      endSec <= span.fromSec || dayStartSec >= span.toSec;
+    const isAll =
+      fromSec <= dayStartSec &&
+      endSec <= toSec &&
+      (leftOut === null || isApart(leftOut)) &&
+      (asked.stationId !== stationId || isApart(asked));
+    if (isAll) return null;
     return (minute) => {
       const sec = dayStartSec + minute * 60;
       if (sec < fromSec || sec >= toSec) return false;

@@ -32,6 +32,8 @@ interface OpenSpell {
 export class SpellList {
   #kept: Spell[] = [];
   #open: (OpenSpell & { stationId: number }) | null = null;
+  /** Of the least alike spell that stays when there are enough. */
+  #mostRmsDb = Infinity;
   /** All that were found, kept or not. */
   found = 0;
 
@@ -73,17 +75,20 @@ export class SpellList {
   }
 
   #close(): void {
-    if (this.#open) {
-      const { rmsSumDb, energySum, ...spell } = this.#open;
-      const laeqDb = 10 * Math.log10(energySum / spell.minutes);
-      this.#kept.push({ ...spell, meanRmsDb: rmsSumDb / spell.minutes, laeqDb });
-      if (this.#kept.length >= 4 * MOST_SPELLS) this.#prune();
-    }
+    const open = this.#open;
     this.#open = null;
+    // What is less alike than all that stay would be sorted out again.
+    if (open === null || open.bestRmsDb > this.#mostRmsDb) return;
+    const { stationId, fromSec, toSec, minutes, bestRmsDb, rmsSumDb, energySum } = open;
+    const laeqDb = 10 * Math.log10(energySum / minutes);
+    const meanRmsDb = rmsSumDb / minutes;
+    this.#kept.push({ stationId, fromSec, toSec, minutes, bestRmsDb, meanRmsDb, laeqDb });
+    if (this.#kept.length >= 4 * MOST_SPELLS) this.#prune();
   }
 
   #prune(): void {
     this.#kept.sort((a, b) => a.bestRmsDb - b.bestRmsDb || a.fromSec - b.fromSec);
     this.#kept = this.#kept.slice(0, MOST_SPELLS);
+    this.#mostRmsDb = this.#kept[MOST_SPELLS - 1]?.bestRmsDb ?? Infinity;
   }
 }

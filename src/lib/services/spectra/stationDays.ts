@@ -5,8 +5,8 @@ import { unpackShapes, type DayTrace } from '#lib/acoustics/dayTrace';
 import { DAY_SEC, makeTrace } from './makeTrace';
 import { type SearchTask } from './searchTask';
 
-/** Days whose shapes are read at once, those before being compared meanwhile: 0.8 MB each. */
-const SHAPES_AT_ONCE = 16;
+/** Days whose shapes are read at once, those before being compared meanwhile: 1.6 MB each. */
+const SHAPES_AT_ONCE = 32;
 
 type Station = SearchTask['stations'][number];
 
