@@ -1,3 +1,4 @@
+import { join } from 'node:path';
 import { settingsSchema } from './schema';
 
 /** The settings in typed form, as the rest of the program reads them. */
@@ -25,6 +26,8 @@ export interface Config {
     name: string;
     poolMax: number;
   };
+  /** Where backups go and how long they stay; `keysKeepDays` is for what lets personal data be read. */
+  backup: { dir: string; keepDays: number; keysKeepDays: number; passphraseFile: string | null };
   smtp: {
     host: string;
     port: number;
@@ -94,6 +97,12 @@ export function parseConfig(environment: Record<string, string | undefined>): Co
       password: settings.BITTERN_DB_PASSWORD,
       name: settings.BITTERN_DB_NAME,
       poolMax: settings.BITTERN_DB_POOL_MAX,
+    },
+    backup: {
+      dir: settings.BITTERN_BACKUP_DIR ?? join(settings.BITTERN_DATA_DIR, 'backups'),
+      keepDays: settings.BITTERN_BACKUP_KEEP_DAYS,
+      keysKeepDays: settings.BITTERN_BACKUP_KEYS_KEEP_DAYS,
+      passphraseFile: settings.BITTERN_BACKUP_PASSPHRASE_FILE ?? null,
     },
     smtp: {
       host: settings.BITTERN_SMTP_HOST,

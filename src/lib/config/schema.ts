@@ -33,6 +33,11 @@ export const settingsSchema = z.object({
     .default('bittern'),
   BITTERN_DB_POOL_MAX: z.coerce.number().int().min(2).max(200).default(12),
 
+  BITTERN_BACKUP_DIR: z.string().optional(),
+  BITTERN_BACKUP_KEEP_DAYS: z.coerce.number().int().min(1).max(3650).default(35),
+  BITTERN_BACKUP_KEYS_KEEP_DAYS: z.coerce.number().int().min(1).max(31).default(7),
+  BITTERN_BACKUP_PASSPHRASE_FILE: z.string().optional(),
+
   BITTERN_SMTP_HOST: z.string().default('127.0.0.1'),
   BITTERN_SMTP_PORT: port(4325),
   BITTERN_SMTP_SECURE: isTrue('false'),
