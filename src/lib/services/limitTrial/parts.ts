@@ -29,9 +29,10 @@ export function isFromIntervals(metric: LimitMetric): boolean {
   return PARTS_OF[metric] === null;
 }
 
-/** What a limit's windows are added up from: null, too, where it goes by the wind, or by a background of other hours. */
+/** What a limit's windows are added up from: null, too, where the wind may dismiss them, or where they need a background of other hours. */
 export function partsOf(
   rule: Pick<NewLimitVersion, 'metric' | 'windRule' | 'backgroundFromMin'>,
 ): TrialParts | null {
-  return rule.windRule || hasBackgroundHours(rule) ? null : PARTS_OF[rule.metric];
+  const mayBeDismissed = (rule.windRule?.dismissAboveMs ?? null) !== null;
+  return mayBeDismissed || hasBackgroundHours(rule) ? null : PARTS_OF[rule.metric];
 }

@@ -121,9 +121,15 @@ async function measureEach(
       tell(window, await evidence.measure(rule, { fromSec: window.startSec, toSec: window.endSec }));
     return;
   }
-  const partSec = partSecOf(windows);
+  const { windRule: wind = null } = rule;
+  const partSec = wind ? GRAIN_SEC : partSecOf(windows);
   for (const some of chunksOf(windows, partSec === QUARTER_SEC ? CHUNK_SEC : FINE_CHUNK_SEC)) {
-    const read = await trialQuarters(source, spanOf(some), { parts, partSec, bands: rule }, conn);
+    const read = await trialQuarters(
+      { ...source, wind },
+      spanOf(some),
+      { parts, partSec, bands: rule },
+      conn,
+    );
     const sums = new WindowSums(read, { parts, partSec });
     for (const window of some) tell(window, measure(rule, sums.of(window)));
   }
