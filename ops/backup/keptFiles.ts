@@ -38,6 +38,8 @@ export function startArchive(dataDir: string, folders: string[]): Tool {
 /** Unpacks an archive into the data directory. */
 export async function unpack(archive: Readable, dataDir: string): Promise<void> {
   await mkdir(dataDir, { recursive: true, mode: 0o700 });
-  const tar = startTool('tar', ['--extract', '--no-same-owner', `--directory=${dataDir}`]);
+  // Else tar goes at the mark that ends an archive, sometimes before the stream has been closed, which then looks broken.
+  const args = ['--extract', '--ignore-zeros', '--no-same-owner', `--directory=${dataDir}`];
+  const tar = startTool('tar', args);
   await Promise.all([pipeline(archive, tar.input), tar.ended]);
 }

@@ -21,6 +21,7 @@ const backups = join(root, 'backups');
 const target = { BITTERN_DB_NAME: freshName(), BITTERN_DATA_DIR: join(root, 'target') };
 process.env['BITTERN_DATA_DIR'] = join(root, 'source');
 
+vi.setConfig({ testTimeout: 120_000, hookTimeout: 120_000 });
 useFreshSchema();
 let filled: Awaited<ReturnType<typeof fillInstance>>;
 let erased: string;
