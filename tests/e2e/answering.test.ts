@@ -86,7 +86,7 @@ test('a resident reports a night’s noise from a phone; the answer arrives with
   await expectAccessible(page);
   await picture(page, 'answering-preview');
   await page.getByRole('button', { name: `Send to ${email}` }).click();
-  await page.waitForURL(new RegExp(`complaints/${reference}$`));
+  await page.waitForURL(({ pathname }) => pathname.endsWith(`complaints/${reference}`));
 
   const mail = await mailTo(email, ({ subject }) => subject === `Your noise report ${reference}`);
   expect(mail.messageId).toContain(reference);
