@@ -21,7 +21,7 @@ const STEPS_MIN = [1, 2, 5, 10, 15, 30, 60, 120, 180, 360, 720] as const;
 const STEPS_DAYS = [1, 2, 7, 14, 28, 91] as const;
 
 /** Least room of a mark among marks of the clock, in CSS pixels; a date among them has the room of its neighbours. */
-const CLOCK_PX = 50;
+const CLOCK_PX = 60;
 /** Least room of a date among dates. */
 const DATE_PX = 66;
 
