@@ -358,6 +358,18 @@ describe('PDF', () => {
     for (const { code } of doc.stations) expect(raw).toContain(`/Title (${code} `);
   });
 
+  test('a month in progress says so, and that it is a draft, on every page', async () => {
+    const running = { ...documentOf([documentStation('MER-01')]), isToDate: true };
+    const [pdf] = await renderFiles(running, { ...context, revision: null, issuedBy: null }, ['pdf']);
+    writeFileSync(path, pdf?.bytes ?? '');
+    const shown = pagesOf(path);
+    expect(shown.length).toBeGreaterThan(1);
+    for (const page of shown) {
+      expect(page).toContain('to date');
+      expect(page).toContain('Draft, not issued');
+    }
+  });
+
   test('every character of both languages has a glyph', async () => {
     for (const language of ['en', 'de'] as const) {
       const [pdf] = await renderFiles(
