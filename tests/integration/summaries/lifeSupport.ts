@@ -1,3 +1,4 @@
+import { setTimeout } from 'node:timers/promises';
 import { db } from '#db/client';
 import { findNetworkBySlug, type NetworkRow } from '#db/queries/networks';
 import { findLatestDraft } from '#db/queries/summaryDrafts';
@@ -44,12 +45,13 @@ export async function issue(userId: string, note = ''): Promise<number> {
   return issued.revision;
 }
 
-/** One more interval of a station, as if its post had come just now. */
+/** An hour more of a station, as if its posts had come just now; waits out the second, since that is as fine as a receipt is noted. */
 export async function storeLate(stationId: number, start: string): Promise<void> {
   const startSec = at(start);
   await storeMinutes(stationId, startSec, startSec + 3600, () => ({ laeqCentiDb: 7500 }));
   await db()('interval_levels')
     .where({ station_id: stationId })
     .whereBetween('starts_at', [startSec, startSec + 3599])
-    .update({ received_at: Math.floor(Date.now() / 1000) + 1 });
+    .update({ received_at: Math.floor(Date.now() / 1000) });
+  await setTimeout(1000 - (Date.now() % 1000));
 }
