@@ -1,4 +1,5 @@
 import knex, { type Knex } from 'knex';
+import { closeLocks } from './locks';
 import { closeReceiving } from './receiving';
 import { connectionSettings } from './settings';
 
@@ -14,5 +15,5 @@ export function db(): Knex {
 export async function closeDb(): Promise<void> {
   const closing = pool;
   pool = undefined;
-  await Promise.all([closing?.destroy(), closeReceiving()]);
+  await Promise.all([closing?.destroy(), closeReceiving(), closeLocks()]);
 }

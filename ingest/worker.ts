@@ -1,3 +1,4 @@
+import { setMaxListeners } from 'node:events';
 import { schedule } from 'node-cron';
 import { closeDb } from '#db/client';
 import { log } from '#lib/config/log';
@@ -54,6 +55,8 @@ const SLOT_JOBS: SlotJob[] = [
 ];
 
 const stop = new AbortController();
+// Every loop that rests listens to it.
+setMaxListeners(LOOPS.length + 1, stop.signal);
 const tick = schedule('* * * * *', () => runDueSlots(SLOT_JOBS, new Date()), {
   timezone: 'UTC',
   noOverlap: true,

@@ -1,27 +1,28 @@
 import { config } from '#lib/config/index';
-import { db } from '../client';
+import { askLocks } from '../locks';
+
+/** Held by this process. The server would grant it a second time, because all its locks share a connection. */
+const held = new Set<string>();
 
 /**
- * Runs `work` while no other process runs it, or not at all. The lock saves double work; it is not what makes the work correct
- * (it is lost with its connection).
+ * Runs `work` while nobody else runs it, in this process or another, or not at all. The lock saves double work; it is not what makes the
+ * work correct (it is lost with its connection).
+ * @returns whether it ran.
  */
 export async function withNamedLock(name: string, work: () => Promise<void>): Promise<boolean> {
-  const { client } = db();
-  const connection: unknown = await client.acquireConnection();
   const lock = `bittern:${config().database.name}:${name}`.slice(0, 64);
-  const ask = async (sql: string) => {
-    const [[row]] = await db().raw(sql, [lock]).connection(connection);
-    return Number(row.held) === 1;
-  };
+  if (held.has(lock)) return false;
+  held.add(lock);
   try {
-    if (!(await ask('SELECT GET_LOCK(?, 0) AS held'))) return false;
+    if (Number(await askLocks('SELECT GET_LOCK(?, 0)', [lock])) !== 1) return false;
     try {
       await work();
     } finally {
-      await ask('SELECT RELEASE_LOCK(?) AS held');
+      // A connection that is lost has released it.
+      await askLocks('SELECT RELEASE_LOCK(?)', [lock]).catch(() => undefined);
     }
     return true;
   } finally {
-    await client.releaseConnection(connection);
+    held.delete(lock);
   }
 }
