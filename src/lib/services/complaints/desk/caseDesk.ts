@@ -1,14 +1,13 @@
-import { appendAudit } from '#db/queries/audit';
 import { listComplaintsOfContact } from '#db/queries/complaintContacts';
 import { listWithdrawnNotes } from '#db/queries/complaintNotes';
 import { listComplaints, listMergedInto, type ComplaintRow } from '#db/queries/complaints';
-import { inTransaction, pool } from '#db/queries/connection';
+import { pool } from '#db/queries/connection';
 import type { NetworkRow } from '#db/queries/networks';
 import type { PersonalData } from '#lib/contracts/complaints';
 import { answerersOf } from './assign';
 import { contactDigests } from './contactDigests';
 import { historyOf, type HistoryEvent } from './history';
-import { openNotes, type DeskNote } from './notes';
+import { readNotes, type DeskNote } from './notes';
 
 /** Another complaint, as a choice or a link. */
 export interface OtherComplaint {
@@ -64,25 +63,6 @@ export async function caseDesk(
     mergeChoices: near.filter(isChoice).map(otherOf),
     othersOfPerson: alike.filter((id) => id !== row.id).length,
   };
-}
-
-async function readNotes(userId: string, row: ComplaintRow): Promise<DeskNote[]> {
-  return inTransaction(async (transaction) => {
-    const notes = await openNotes(row.id, transaction);
-    if (notes.length > 0) {
-      await appendAudit(
-        {
-          userId,
-          networkId: row.networkId,
-          action: 'complaint.personal-data-read',
-          subject: `complaint ${row.reference}`,
-          detail: { fields: ['notes'] },
-        },
-        transaction,
-      );
-    }
-    return notes;
-  });
 }
 
 function otherOf({ reference, kind, startsAtSec, endsAtSec }: ComplaintRow): OtherComplaint {

@@ -1,7 +1,9 @@
 import { z } from 'zod';
 import { findSealedPerson } from '#db/queries/complaintPrivate';
+import { appendAudit } from '#db/queries/audit';
 import { insertNote, listSealedNotes, setNoteWithdrawn } from '#db/queries/complaintNotes';
-import type { Connection } from '#db/queries/connection';
+import type { ComplaintRow } from '#db/queries/complaints';
+import { inTransaction, type Connection } from '#db/queries/connection';
 import { openValue, sealValue } from '../personalData';
 import { actOnComplaint, type DeskAct, type DeskOutcome } from './deskAct';
 
@@ -13,15 +15,20 @@ export interface DeskNote {
   at: Date;
 }
 
+type NoteOutcome = Exclude<DeskOutcome, { kind: 'done' }> | { kind: 'done'; noteId: number };
+
 /** Keeps an internal note, sealed under the complaint's key since it may name somebody. */
-export function addNote(act: DeskAct, text: string): Promise<DeskOutcome> {
-  return actOnComplaint(act, async ({ id }, transaction) => {
+export async function addNote(act: DeskAct, text: string): Promise<NoteOutcome> {
+  let kept = 0;
+  const outcome = await actOnComplaint(act, async ({ id }, transaction) => {
     const sealed = await findSealedPerson(id, transaction);
     if (!sealed) return 'The personal data have been erased: no note can be kept any more.';
     const ciphertext = sealValue(sealed.wrappedKey, id, 'note', text);
     const noteId = await insertNote({ complaintId: id, ciphertext, author: act.userId }, transaction);
+    kept = noteId;
     return { action: 'complaint.note-add', detail: { noteId } };
   });
+  return outcome.kind === 'done' ? { kind: 'done', noteId: kept } : outcome;
 }
 
 /** Withdraws a note, or puts a withdrawn one back. */
@@ -44,4 +51,20 @@ export async function openNotes(complaintId: number, conn: Connection): Promise<
     author: authorName,
     at: createdAt,
   }));
+}
+
+/** The same for a person who answers; a look at notes is audited. @throws {PersonalDataUnreadable} */
+export function readNotes(
+  userId: string,
+  { id, networkId, reference }: Pick<ComplaintRow, 'id' | 'networkId' | 'reference'>,
+): Promise<DeskNote[]> {
+  return inTransaction(async (transaction) => {
+    const notes = await openNotes(id, transaction);
+    if (notes.length > 0) {
+      const subject = `complaint ${reference}`;
+      const look = { action: 'complaint.personal-data-read', subject, detail: { fields: ['notes'] } };
+      await appendAudit({ userId, networkId, ...look }, transaction);
+    }
+    return notes;
+  });
 }
