@@ -44,6 +44,7 @@ ${pictures.map(figure).join('\n')}</div></section>`;
 
 function figure({ file, theme, widthPx, faults }: Picture): string {
   const words = faults.map((fault) => `<br><span class="fault">${escapeHtml(fault)}</span>`).join('');
-  return `<figure><a href="${file}"><img loading="lazy" src="${file}" alt=""></a>
+  const image = file === '' ? '' : `<a href="${file}"><img loading="lazy" src="${file}" alt=""></a>`;
+  return `<figure>${image}
 <figcaption>${theme}, ${widthPx} px${words}</figcaption></figure>`;
 }

@@ -16,12 +16,15 @@ export const VIEWS: readonly View[] = [
 ];
 
 export interface Picture extends View {
+  /** Empty: there is none, the faults say why. */
   file: string;
   /** What is wrong: a status, what scripts complained of, how much too wide it is. */
   faults: string[];
 }
 
 const SETTLED_MS = 2000;
+/** Longer than a picture takes on a machine that has other work. */
+const MOST_WAIT_MS = 120_000;
 /** Pages are cut off below that: lists may be long. */
 const MOST_HEIGHT_PX = 4000;
 
@@ -43,6 +46,7 @@ export async function takePicture(
   try {
     await context.addCookies(cookiesOf(session));
     const page = await context.newPage();
+    page.setDefaultTimeout(MOST_WAIT_MS);
     page.on('console', (message) => {
       if (message.type() === 'error') faults.push(`console: ${message.text()}`);
     });
@@ -61,9 +65,14 @@ export async function takePicture(
       path: join(folder, file),
       fullPage: true,
       animations: 'disabled',
+      timeout: MOST_WAIT_MS,
       clip: { x: 0, y: 0, width: widthPx, height },
     });
     return { ...view, file, faults };
+  } catch (error) {
+    // One page that cannot be shown takes no other's picture away.
+    faults.push(`no picture: ${error instanceof Error ? error.message : String(error)}`);
+    return { ...view, file: '', faults };
   } finally {
     await context.close();
   }
