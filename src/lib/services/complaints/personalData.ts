@@ -1,17 +1,12 @@
-import { createCipheriv, createDecipheriv, randomBytes } from 'node:crypto';
+import { randomBytes } from 'node:crypto';
 import { config } from '#lib/config/index';
+import { openSealed, sealBytes } from '../sealing';
 
 /**
  * Personal data of a complaint rest under a random key of its own (AES-256-GCM), and that key rests wrapped by the
  * personal-data key of the settings. Destroying the wrapped key erases the person, in every backup of the data too.
- *
- * Sealed bytes: version (1 byte, 1), nonce (12), tag (16), ciphertext. The complaint's id and the purpose are authenticated
- * with them, so that no row opens in another's place.
+ * The complaint's id and the purpose are authenticated with what is sealed.
  */
-const VERSION = 1;
-const NONCE_BYTES = 12;
-const TAG_BYTES = 16;
-const HEAD_BYTES = 1 + NONCE_BYTES + TAG_BYTES;
 
 /** What sealed bytes are for. */
 type Purpose = 'key' | ValuePurpose | FilePurpose;
@@ -80,26 +75,15 @@ function unwrap(wrappedKey: Buffer, complaintId: number): Buffer {
 }
 
 function seal(key: Buffer, complaintId: number, purpose: Purpose, plain: Buffer): Buffer {
-  const nonce = randomBytes(NONCE_BYTES);
-  const cipher = createCipheriv('aes-256-gcm', key, nonce);
-  cipher.setAAD(authenticated(complaintId, purpose));
-  const ciphertext = Buffer.concat([cipher.update(plain), cipher.final()]);
-  return Buffer.concat([Buffer.of(VERSION), nonce, cipher.getAuthTag(), ciphertext]);
+  return sealBytes(key, authenticated(complaintId, purpose), plain);
 }
 
 function open(key: Buffer, complaintId: number, purpose: Purpose, sealed: Buffer): Buffer {
-  if (sealed.length < HEAD_BYTES || sealed[0] !== VERSION) throw new PersonalDataUnreadable(complaintId);
-  const nonce = sealed.subarray(1, 1 + NONCE_BYTES);
-  const decipher = createDecipheriv('aes-256-gcm', key, nonce, { authTagLength: TAG_BYTES });
-  decipher.setAAD(authenticated(complaintId, purpose));
-  decipher.setAuthTag(sealed.subarray(1 + NONCE_BYTES, HEAD_BYTES));
   try {
-    return Buffer.concat([decipher.update(sealed.subarray(HEAD_BYTES)), decipher.final()]);
+    return openSealed(key, authenticated(complaintId, purpose), sealed);
   } catch (error) {
     throw new PersonalDataUnreadable(complaintId, error);
   }
 }
 
-function authenticated(complaintId: number, purpose: Purpose): Buffer {
-  return Buffer.from(`complaint ${complaintId} ${purpose} ${VERSION}`);
-}
+const authenticated = (complaintId: number, purpose: Purpose) => `complaint ${complaintId} ${purpose} 1`;
