@@ -10,11 +10,15 @@ export default defineConfig({
   devToolbar: { enabled: false },
   // The HTTP front checks Host and Origin itself (ops/http): Astro's check knows form content types only.
   security: { checkOrigin: false },
-  experimental: { csp: false },
   vite: {
     plugins: [tailwindcss()],
     ssr: { external: ['mysql2', 'knex', '@node-rs/argon2', 'pdfmake', 'pino'] },
     // The manifest tells pages which scripts an island needs (src/layouts/islandScripts.ts).
-    build: { chunkSizeWarningLimit: 1200, manifest: true },
+    build: {
+      chunkSizeWarningLimit: 1200,
+      manifest: true,
+      // Scripts stay in files: the content security policy (ops/http/contentSecurity.ts) lets no others run.
+      assetsInlineLimit: (path) => (/\.m?js$/.test(path) ? false : undefined),
+    },
   },
 });

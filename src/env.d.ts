@@ -7,5 +7,7 @@ declare namespace App {
     /** The signed-in person, from the session cookie or an access token. */
     user: SignedInUser | null;
     requestId: string;
+    /** The colours that the person chose; null: as the device has it. */
+    theme: 'light' | 'dark' | null;
   }
 }

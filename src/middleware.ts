@@ -4,18 +4,22 @@ import { userOfRequest } from '#lib/auth/requestUser';
 import { problemResponse } from '#lib/http/problem';
 import { problemOf } from '#lib/http/route';
 import { requireSameOrigin } from '#lib/http/sameOrigin';
+import { chosenTheme } from '#lib/http/themeCookie';
 
 const HEADERS = {
   'X-Content-Type-Options': 'nosniff',
   'Referrer-Policy': 'same-origin',
   'X-Frame-Options': 'DENY',
   'Cross-Origin-Opener-Policy': 'same-origin',
-  'Permissions-Policy': 'camera=(), microphone=(), payment=(), usb=()',
+  // A resident may have the form find the place; files are chosen, never filmed.
+  'Permissions-Policy':
+    'camera=(), display-capture=(), geolocation=(self), microphone=(), midi=(), payment=(), usb=()',
 };
 
 /** Every request: own-origin check, who is asking, and the headers that every answer carries. */
 export const onRequest = defineMiddleware(async (context, next) => {
   context.locals.requestId = randomUUID();
+  context.locals.theme = chosenTheme(context.cookies);
   try {
     requireSameOrigin(context.request);
     context.locals.user = await userOfRequest(context);

@@ -4,32 +4,39 @@ import express, { type Express, type Request, type RequestHandler, type Response
 import helmet from 'helmet';
 import type { Config } from '#lib/config/config';
 import { peopleUnderWay } from '#lib/http/peopleUnderWay';
-import { clientAddress } from './clientAddress';
+import { clientAddress, proxyTrust, type TrustsProxy } from './clientAddress';
+import { contentSecurityPolicy } from './contentSecurity';
 import { receivePost } from './receive';
+import { securityText } from './securityText';
 
 const MOST_BODY_BYTES = 16 * 1024 * 1024;
-const YEAR_SEC = 365 * 86_400;
+const DAY_SEC = 86_400;
+const YEAR_SEC = 365 * DAY_SEC;
 
 /** Where monitors post; what arrives there needs neither Express, the pages' server nor what protects browsers. */
 const POSTS = /^\/api\/v1\/intervals\/?(\?|$)/i;
 /** Where files of intervals are uploaded; they are streamed to disk. */
 const UPLOADS = /^\/(api\/v1\/networks\/[^/]+\/imports|n\/[^/]+\/imports\/new)\/?$/;
+const FORWARDING = ['forwarded', 'x-forwarded-host', 'x-forwarded-proto', 'x-forwarded-port', 'x-real-ip'];
 /** What a form adds around a file. */
 const FORM_BYTES = 64 * 1024;
 
-type FrontSettings = Pick<Config, 'allowedHosts' | 'trustedProxies' | 'origin' | 'importMostBytes'>;
+/** What is left out is as if it were not set. */
+type FrontSettings = Pick<Config, 'allowedHosts' | 'trustedProxies' | 'origin' | 'importMostBytes'> &
+  Partial<Pick<Config, 'hstsDays' | 'mapOrigins' | 'securityContact'>>;
 
 /** Astro's handler in middleware mode. */
 export type AstroHandler = (request: Request, response: Response) => Promise<void> | void;
 
 /** What a server listens by: posts of monitors go straight to receiving, everything else is a person's and passes the front before Astro. */
 export function makeFront(astro: AstroHandler, settings: FrontSettings): RequestListener {
-  const pages = makePagesFront(astro, settings);
+  const trusts = proxyTrust(settings.trustedProxies);
+  const pages = makePagesFront(astro, settings, trusts);
   const isPost = ({ method, url, headers }: IncomingMessage) =>
     method === 'POST' && POSTS.test(url ?? '') && isKnownHost(settings.allowedHosts, headers.host);
   return (request, response) => {
     if (isPost(request)) {
-      void receivePost(request, response, clientAddress(request, settings.trustedProxies));
+      void receivePost(request, response, clientAddress(request, trusts));
       return;
     }
     peopleUnderWay.note(response);
@@ -41,15 +48,15 @@ export function makeFront(astro: AstroHandler, settings: FrontSettings): Request
  * The thin HTTP front before Astro: Host allow-list, proxy trust, a bound on bodies, compression, static files.
  * Handlers count the bytes of what they read themselves; the bound here stops what announces itself as too large.
  */
-function makePagesFront(astro: AstroHandler, settings: FrontSettings): Express {
+function makePagesFront(astro: AstroHandler, settings: FrontSettings, trusts: TrustsProxy): Express {
   const front = express();
   front.disable('x-powered-by');
-  front.set('trust proxy', settings.trustedProxies);
-  front.use(safeHeaders(settings.origin));
+  front.use(safeHeaders(settings));
   front.use(requireKnownHost(settings.allowedHosts));
-  front.use(setClientAddress);
+  front.use(setClientAddress(trusts));
   front.use(refuseLargeBodies(settings.importMostBytes + FORM_BYTES));
   front.use(compression());
+  front.use(tellSecurityContact(settings));
   front.use(
     '/_astro',
     express.static('dist/client/_astro', { immutable: true, maxAge: YEAR_SEC * 1000, fallthrough: false }),
@@ -60,23 +67,22 @@ function makePagesFront(astro: AstroHandler, settings: FrontSettings): Express {
   return front;
 }
 
-/** No framing, no plug-ins, no forms or bases elsewhere, no address told to other sites; https kept once it is in use. */
-function safeHeaders(origin: string): RequestHandler {
+/** What a page may load and who may show it, no address told to other sites; https kept once it is in use. */
+function safeHeaders({ origin, mapOrigins = [], hstsDays = 365 }: FrontSettings): RequestHandler {
+  const isKept = origin.startsWith('https:') && hstsDays > 0;
   return helmet({
-    contentSecurityPolicy: {
-      useDefaults: false,
-      directives: {
-        defaultSrc: helmet.contentSecurityPolicy.dangerouslyDisableDefaultSrc,
-        baseUri: ["'self'"],
-        formAction: ["'self'"],
-        frameAncestors: ["'none'"],
-        objectSrc: ["'none'"],
-      },
-    },
+    contentSecurityPolicy: { useDefaults: false, directives: contentSecurityPolicy(mapOrigins) },
     frameguard: { action: 'deny' },
     referrerPolicy: { policy: 'same-origin' },
-    strictTransportSecurity: origin.startsWith('https:') ? { maxAge: YEAR_SEC } : false,
+    strictTransportSecurity: isKept ? { maxAge: hstsDays * DAY_SEC } : false,
   });
+}
+
+function tellSecurityContact({ securityContact, origin }: FrontSettings): RequestHandler {
+  return (request, response, next) => {
+    if (!securityContact || request.path !== '/.well-known/security.txt') return next();
+    response.type('text/plain').send(securityText(securityContact, origin, new Date()));
+  };
 }
 
 function requireKnownHost(allowedHosts: string[]): RequestHandler {
@@ -94,20 +100,14 @@ function isKnownHost(allowedHosts: string[], host = ''): boolean {
 }
 
 /** Astro believes forwarding headers: it gets the one address that the proxy setting vouches for, and no others. */
-const setClientAddress: RequestHandler = (request: Request, _response, next) => {
-  const address = request.ip ?? '';
-  for (const name of [
-    'forwarded',
-    'x-forwarded-host',
-    'x-forwarded-proto',
-    'x-forwarded-port',
-    'x-real-ip',
-  ]) {
-    delete request.headers[name];
-  }
-  request.headers['x-forwarded-for'] = address;
-  next();
-};
+function setClientAddress(trusts: TrustsProxy): RequestHandler {
+  return (request: Request, _response, next) => {
+    const address = clientAddress(request, trusts);
+    for (const name of FORWARDING) delete request.headers[name];
+    request.headers['x-forwarded-for'] = address;
+    next();
+  };
+}
 
 function refuseLargeBodies(mostUploadBytes: number): RequestHandler {
   return (request, response, next) => {

@@ -4,7 +4,10 @@ import { pathToFileURL } from 'node:url';
 import { config } from '#lib/config/index';
 import { log } from '#lib/config/log';
 import { closeDb } from '#db/client';
+import { untilSchemaIsCurrent } from '#db/currentSchema';
+import { BodyPace } from './bodyPace';
 import { makeFront, type AstroHandler } from './front';
+import { behindGate, type Gate } from './maintenance';
 
 const DRAIN_MS = 20_000;
 
@@ -12,7 +15,14 @@ const entryUrl = pathToFileURL(resolve('dist/server/entry.mjs')).href;
 const { handler } = (await import(entryUrl)) as { handler: AstroHandler };
 const { host, port } = config();
 
-const server = createServer(makeFront(handler, config()));
+const gate: Gate = { isOpen: false };
+const front = behindGate(makeFront(handler, config()), gate);
+const pace = new BodyPace();
+pace.start();
+const server = createServer((request, response) => {
+  pace.watch(request);
+  front(request, response);
+});
 // A client that dribbles its headers or body holds a connection no longer than this.
 server.headersTimeout = 15_000;
 server.requestTimeout = 600_000;
@@ -38,6 +48,19 @@ function drain(signal: string): void {
   server.close(() => void closeDb().finally(() => process.exit(0)));
   server.closeIdleConnections();
 }
+
+untilSchemaIsCurrent({
+  mayMigrate: config().database.mayMigrate,
+  tell: (what) => log().warn(`web waits: ${what}`),
+}).then(
+  () => {
+    gate.isOpen = true;
+  },
+  (error: unknown) => {
+    log().fatal({ err: error }, 'web cannot start: the schema is not as it must be');
+    process.exit(1);
+  },
+);
 
 process.on('SIGTERM', () => drain('SIGTERM'));
 process.on('SIGINT', () => drain('SIGINT'));

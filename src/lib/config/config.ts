@@ -8,7 +8,12 @@ export interface Config {
   /** Address that people type, without a trailing slash; links in e-mail begin with it. */
   origin: string;
   allowedHosts: string[];
-  trustedProxies: number;
+  /** How many proxies in front are believed about a caller's address, or the addresses and blocks of those that are. */
+  trustedProxies: number | string[];
+  /** For how long browsers keep to https, in days; 0: not asked for. */
+  hstsDays: number;
+  /** Where to tell of weaknesses, for `/.well-known/security.txt`. */
+  securityContact: string | null;
   logLevel: string;
   metricsToken: string | null;
   dataDir: string;
@@ -25,6 +30,8 @@ export interface Config {
     password: string;
     name: string;
     poolMax: number;
+    /** The web applies pending migrations when it starts. */
+    mayMigrate: boolean;
   };
   /** Where backups go and how long they stay; `keysKeepDays` is for what lets personal data be read. */
   backup: { dir: string; keepDays: number; keysKeepDays: number; passphraseFile: string | null };
@@ -39,6 +46,8 @@ export interface Config {
   /** Whether webhooks may lead to this machine itself, by http too; else https to public addresses only. */
   webhooksMayLoopBack: boolean;
   mapStyleUrls: { light: string; dark: string };
+  /** Where browsers may get styles, tiles, glyphs and icons of maps from. */
+  mapOrigins: string[];
   /** Local stand-ins for the hosted mail and tile services. */
   standins: { areStarted: boolean; mailWebPort: number; tilesPort: number };
   demo: { password: string | null; days: number };
@@ -75,12 +84,19 @@ export function parseConfig(environment: Record<string, string | undefined>): Co
     settings.BITTERN_ORIGIN ?? `http://${settings.BITTERN_HOST}:${settings.BITTERN_PORT}`,
   );
   const tilesUrl = `http://127.0.0.1:${settings.BITTERN_TILES_PORT}`;
+  const mapStyleUrls = {
+    light: settings.BITTERN_STYLE_LIGHT_URL ?? `${tilesUrl}/style/light.json`,
+    dark: settings.BITTERN_STYLE_DARK_URL ?? `${tilesUrl}/style/dark.json`,
+  };
+  const mapUrls = [...Object.values(mapStyleUrls), settings.BITTERN_TILES_PUBLIC_URL ?? []].flat();
   return {
     host: settings.BITTERN_HOST,
     port: settings.BITTERN_PORT,
     origin: origin.origin,
     allowedHosts: allowedHosts(origin, settings.BITTERN_PORT, settings.BITTERN_ALLOWED_HOSTS),
     trustedProxies: settings.BITTERN_TRUSTED_PROXIES,
+    hstsDays: settings.BITTERN_HSTS_DAYS,
+    securityContact: settings.BITTERN_SECURITY_CONTACT ?? null,
     logLevel: settings.BITTERN_LOG_LEVEL,
     metricsToken: settings.BITTERN_METRICS_TOKEN ?? null,
     dataDir: settings.BITTERN_DATA_DIR,
@@ -97,6 +113,7 @@ export function parseConfig(environment: Record<string, string | undefined>): Co
       password: settings.BITTERN_DB_PASSWORD,
       name: settings.BITTERN_DB_NAME,
       poolMax: settings.BITTERN_DB_POOL_MAX,
+      mayMigrate: settings.BITTERN_DB_MIGRATE,
     },
     backup: {
       dir: settings.BITTERN_BACKUP_DIR ?? join(settings.BITTERN_DATA_DIR, 'backups'),
@@ -112,10 +129,8 @@ export function parseConfig(environment: Record<string, string | undefined>): Co
       password: settings.BITTERN_SMTP_PASSWORD ?? null,
       from: settings.BITTERN_MAIL_FROM,
     },
-    mapStyleUrls: {
-      light: settings.BITTERN_STYLE_LIGHT_URL ?? `${tilesUrl}/style/light.json`,
-      dark: settings.BITTERN_STYLE_DARK_URL ?? `${tilesUrl}/style/dark.json`,
-    },
+    mapStyleUrls,
+    mapOrigins: [...new Set([...mapUrls.map((url) => new URL(url).origin), ...settings.BITTERN_MAP_ORIGINS])],
     standins: {
       areStarted: settings.BITTERN_STANDINS,
       mailWebPort: settings.BITTERN_MAIL_WEB_PORT,

@@ -1,3 +1,4 @@
+import { isIP } from 'node:net';
 import { z } from 'zod';
 
 const port = (fallback: number) => z.coerce.number().int().min(1).max(65535).default(fallback);
@@ -8,13 +9,52 @@ const isTrue = (fallback: 'true' | 'false') =>
     .transform((text) => text === 'true');
 const url = z.url({ protocol: /^https?$/, error: 'must be an http or https address' });
 
+/** The items of a list with commas. */
+const itemsOf = (text: string) =>
+  text
+    .split(',')
+    .map((item) => item.trim())
+    .filter((item) => item !== '');
+
+/** An IP address, or a block of them such as `10.0.0.0/8`. */
+function isAddressBlock(text: string): boolean {
+  const [address = '', prefix, ...more] = text.split('/');
+  const version = isIP(address);
+  const bits = version === 6 ? 128 : 32;
+  return (
+    version > 0 && more.length === 0 && (!prefix || (/^\d{1,3}$/.test(prefix) && Number(prefix) <= bits))
+  );
+}
+
+/** How many proxies in front are believed, or the addresses of those that are. */
+const trustedProxies = z
+  .string()
+  .default('0')
+  .refine((text) => /^[0-8]$/.test(text.trim()) || itemsOf(text).every(isAddressBlock), {
+    error: 'must be a number from 0 to 8, or addresses and blocks such as 10.0.0.5,10.1.0.0/16',
+  })
+  .transform((text) => (/^\d$/.test(text.trim()) ? Number(text) : itemsOf(text)));
+
+/** Addresses without a path, such as `https://tiles.merrow.example`. */
+const origins = z
+  .string()
+  .default('')
+  .transform(itemsOf)
+  .refine((items) => items.every((item) => URL.canParse(item) && new URL(item).origin === item), {
+    error: 'must be addresses without a path, such as https://tiles.merrow.example',
+  });
+
 /** Every setting of Bittern. The README's settings table lists the same names. */
 export const settingsSchema = z.object({
   BITTERN_HOST: z.string().default('127.0.0.1'),
   BITTERN_PORT: port(4321),
   BITTERN_ORIGIN: url.optional(),
   BITTERN_ALLOWED_HOSTS: z.string().default(''),
-  BITTERN_TRUSTED_PROXIES: z.coerce.number().int().min(0).max(8).default(0),
+  BITTERN_TRUSTED_PROXIES: trustedProxies,
+  BITTERN_HSTS_DAYS: z.coerce.number().int().min(0).max(3650).default(365),
+  BITTERN_SECURITY_CONTACT: z
+    .url({ protocol: /^(mailto|https)$/, error: 'must begin with mailto: or https:' })
+    .optional(),
   BITTERN_LOG_LEVEL: z.enum(['fatal', 'error', 'warn', 'info', 'debug', 'silent']).default('info'),
   BITTERN_METRICS_TOKEN: z.string().min(16).optional(),
 
@@ -31,6 +71,7 @@ export const settingsSchema = z.object({
     .string()
     .regex(/^[A-Za-z0-9_]{1,64}$/, 'may hold letters, digits and _ only')
     .default('bittern'),
+  BITTERN_DB_MIGRATE: isTrue('true'),
   BITTERN_DB_POOL_MAX: z.coerce.number().int().min(2).max(200).default(12),
 
   BITTERN_BACKUP_DIR: z.string().optional(),
@@ -52,6 +93,8 @@ export const settingsSchema = z.object({
   BITTERN_TILES_PORT: port(4331),
   BITTERN_STYLE_LIGHT_URL: url.optional(),
   BITTERN_STYLE_DARK_URL: url.optional(),
+  BITTERN_TILES_PUBLIC_URL: url.optional(),
+  BITTERN_MAP_ORIGINS: origins,
 
   BITTERN_DEMO_PASSWORD: z.string().min(12, 'must have at least 12 characters').optional(),
   BITTERN_DEMO_DAYS: z.coerce.number().int().min(2).max(400).default(70),

@@ -1,7 +1,6 @@
 import type { AstroCookies } from 'astro';
-import { config } from '#lib/config/index';
+import { isHttps, pathCookieName } from './cookieName';
 
-const NAME = 'bittern-once';
 const LIFETIME_SEC = 300;
 
 /**
@@ -9,13 +8,13 @@ const LIFETIME_SEC = 300;
  * path gets, that no script reads and that the showing ends; nothing in the clear is stored here.
  */
 export function keepOnce(cookies: AstroCookies, path: string, secret: string): void {
-  cookies.set(NAME, secret, { ...attributes(path), maxAge: LIFETIME_SEC });
+  cookies.set(pathCookieName('once'), secret, { ...attributes(path), maxAge: LIFETIME_SEC });
 }
 
 /** The secret kept for this page, if one is, and never again. */
 export function takeOnce(cookies: AstroCookies, path: string): string | null {
-  const secret = cookies.get(NAME)?.value ?? null;
-  if (secret !== null) cookies.delete(NAME, attributes(path));
+  const secret = cookies.get(pathCookieName('once'))?.value ?? null;
+  if (secret !== null) cookies.delete(pathCookieName('once'), attributes(path));
   return secret;
 }
 
@@ -24,6 +23,6 @@ function attributes(path: string) {
     path: encodeURI(decodeURI(path)),
     httpOnly: true,
     sameSite: 'strict',
-    secure: config().origin.startsWith('https:'),
+    secure: isHttps(),
   } as const;
 }

@@ -36,3 +36,32 @@ test('the public address decides origin and hosts', () => {
   expect(config.origin).toBe('https://noise.merrow.example');
   expect(config.allowedHosts).toContain('noise.merrow.example');
 });
+
+test('proxies are a number, or addresses and blocks', () => {
+  const trusted = (text: string) =>
+    parseConfig({ ...REQUIRED, BITTERN_TRUSTED_PROXIES: text }).trustedProxies;
+  expect(trusted('2')).toBe(2);
+  expect(trusted('10.0.0.5, 10.1.0.0/16,2001:db8::/32')).toEqual([
+    '10.0.0.5',
+    '10.1.0.0/16',
+    '2001:db8::/32',
+  ]);
+  for (const wrong of ['9', '-1', 'all', '10.0.0.0/33', '10.0.0.0/8/8', 'proxy.example']) {
+    expect(() => trusted(wrong), wrong).toThrow('BITTERN_TRUSTED_PROXIES');
+  }
+});
+
+test('map data may come from where styles are, and from what is named besides', () => {
+  const settings = {
+    BITTERN_STYLE_LIGHT_URL: 'https://maps.merrow.example/light.json?key=1',
+    BITTERN_STYLE_DARK_URL: 'https://maps.merrow.example/dark.json',
+    BITTERN_MAP_ORIGINS: 'https://tiles.merrow.example',
+  };
+  expect(parseConfig({ ...REQUIRED, ...settings }).mapOrigins).toEqual([
+    'https://maps.merrow.example',
+    'https://tiles.merrow.example',
+  ]);
+  expect(() =>
+    parseConfig({ ...REQUIRED, BITTERN_MAP_ORIGINS: "https://a.example/ 'unsafe-inline'" }),
+  ).toThrow('BITTERN_MAP_ORIGINS');
+});
