@@ -1,6 +1,7 @@
 import { setMaxListeners } from 'node:events';
 import { schedule } from 'node-cron';
 import { closeDb } from '#db/client';
+import { untilSchemaIsCurrent } from '#db/currentSchema';
 import { log } from '#lib/config/log';
 import { aggregate } from './jobs/aggregate';
 import { composeAlerts } from './jobs/composeAlerts';
@@ -53,6 +54,14 @@ const SLOT_JOBS: SlotJob[] = [
   { name: 'remind-complaints', slotMinutes: 60, run: remindOfComplaints },
   { name: 'keep-complaints', slotMinutes: 60, run: keepComplaints },
 ];
+
+await untilSchemaIsCurrent({
+  mayMigrate: false,
+  tell: (what) => log().warn(`worker waits: ${what}`),
+}).catch((error: unknown) => {
+  log().fatal({ err: error }, 'worker cannot start: the schema is not as it must be');
+  process.exit(1);
+});
 
 const stop = new AbortController();
 // Every loop that rests listens to it.

@@ -41,16 +41,30 @@ export async function insertAlertItems(
     .merge({ item_key: transaction.raw('item_key') });
 }
 
-/** Who waits for a message that is due: the one who waits longest first. */
+/** Somebody who waits for a message; `name` stands for the address where nothing personal belongs. */
+export interface DueRecipient {
+  networkId: number;
+  recipient: string;
+  name: string;
+}
+
+const RECIPIENT_NAME = "CONCAT('recipient ', network_id, '/', LEFT(SHA2(LOWER(recipient), 256), 16))";
+
+/** Who waits for a message that is due, the one who waits longest first, but some by their names. */
 export async function findDueRecipient(
   now: Date,
+  exceptNames: readonly string[] = [],
   conn: Connection = pool(),
-): Promise<{ networkId: number; recipient: string } | undefined> {
-  return conn('alert_items')
+): Promise<DueRecipient | undefined> {
+  const waiting = conn('alert_items')
     .whereNull('told_at')
     .where('due_at', '<=', now)
     .orderBy(['due_at', 'id'])
-    .first({ networkId: 'network_id', recipient: 'recipient' });
+    .first('network_id as networkId', 'recipient', conn.raw(`${RECIPIENT_NAME} AS name`));
+  if (exceptNames.length === 0) return waiting;
+  return waiting.whereRaw(`${RECIPIENT_NAME} NOT IN (${exceptNames.map(() => '?').join(', ')})`, [
+    ...exceptNames,
+  ]);
 }
 
 /** What is due for a recipient and not told, oldest first, locked until the transaction ends. */

@@ -74,8 +74,15 @@ export async function findClockShift(
 }
 
 /** The oldest shift that the worker has something to do for. */
-export async function findWorkingShift(conn: Connection = pool()): Promise<ClockShiftRow | undefined> {
-  return selectShifts(conn).whereIn('s.state', ['moving', 'reversing']).orderBy('s.id').first();
+export async function findWorkingShift(
+  exceptIds: readonly number[] = [],
+  conn: Connection = pool(),
+): Promise<ClockShiftRow | undefined> {
+  return selectShifts(conn)
+    .whereIn('s.state', ['moving', 'reversing'])
+    .whereNotIn('s.id', [...exceptIds])
+    .orderBy('s.id')
+    .first();
 }
 
 /** A shift that stands, as receiving asks for it. */

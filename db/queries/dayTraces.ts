@@ -32,14 +32,16 @@ export async function deleteDayTraces(stationId: number, conn: Connection): Prom
   await conn('station_day_traces').where({ station_id: stationId }).delete();
 }
 
-/** Days that wait to be made and ended before an instant, latest first. */
+/** Days that wait to be made and ended before an instant, latest first, but those of some stations. */
 export async function listWaitingDays(
   endedBeforeSec: number,
   limit: number,
+  exceptStationIds: readonly number[] = [],
   conn: Connection = pool(),
 ): Promise<{ stationId: number; dayStartSec: number }[]> {
   return conn('station_day_traces')
     .where({ is_waiting: 1 })
+    .whereNotIn('station_id', [...exceptStationIds])
     .where('starts_at', '<=', endedBeforeSec - 86_400)
     .orderBy('starts_at', 'desc')
     .limit(limit)

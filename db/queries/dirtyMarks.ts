@@ -23,9 +23,14 @@ export async function insertDirtyMarks(
   }
 }
 
-/** The oldest marks, at most `limit`. */
-export async function readDirtyMarks(limit: number, conn: Connection = pool()): Promise<DirtyMark[]> {
+/** The oldest marks, at most `limit`, but those of some stations. */
+export async function readDirtyMarks(
+  limit: number,
+  exceptStationIds: readonly number[] = [],
+  conn: Connection = pool(),
+): Promise<DirtyMark[]> {
   return conn('dirty_marks')
+    .whereNotIn('station_id', [...exceptStationIds])
     .orderBy('id')
     .limit(limit)
     .select({ id: 'id', stationId: 'station_id', quarterStartSec: 'quarter_starts_at' });

@@ -109,8 +109,15 @@ export async function listImports(
 }
 
 /** The oldest import that the worker has something to do for. */
-export async function findWorkingImport(conn: Connection = pool()): Promise<ImportRow | undefined> {
-  return selectImports(conn).whereIn('imports.state', WORKING_STATES).orderBy('imports.id').first();
+export async function findWorkingImport(
+  exceptIds: readonly number[] = [],
+  conn: Connection = pool(),
+): Promise<ImportRow | undefined> {
+  return selectImports(conn)
+    .whereIn('imports.state', WORKING_STATES)
+    .whereNotIn('imports.id', [...exceptIds])
+    .orderBy('imports.id')
+    .first();
 }
 
 /** Locks an import until the transaction ends and reads it as it is then. */

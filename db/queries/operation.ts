@@ -1,4 +1,4 @@
-import { readdirSync } from 'node:fs';
+import { schemaState } from '../migrateUp';
 import { pool, type Connection } from './connection';
 
 /** How the work stands: everything that /readyz and /metrics tell. */
@@ -10,11 +10,17 @@ export interface OperationState {
   outboxDead: number;
   quarantineOpen: number;
   pendingMigrations: number;
+  /** Parts of jobs that fail while the rest goes on. */
+  jobTroubles: number;
 }
 
 export async function readOperationState(now: Date, conn: Connection = pool()): Promise<OperationState> {
-  const [tick, dirty, outbox, quarantine, applied] = await Promise.all([
-    conn('job_runs').max({ at: 'started_at' }).first(),
+  const [tick, dirty, outbox, quarantine, schema, troubles] = await Promise.all([
+    // What a clock that was ahead has noted is no sign of life.
+    conn('job_runs')
+      .where('started_at', '<=', new Date(now.getTime() + 60_000))
+      .max({ at: 'started_at' })
+      .first(),
     conn('dirty_marks')
       .count({ count: conn.raw('DISTINCT station_id, quarter_starts_at') })
       .first(),
@@ -27,7 +33,8 @@ export async function readOperationState(now: Date, conn: Connection = pool()): 
         conn.raw('MIN(created_at) AS oldest'),
       ),
     conn('quarantine').whereNull('settled_at').count({ count: '*' }).first(),
-    conn('schema_migrations').count({ count: '*' }).first(),
+    schemaState(),
+    conn('job_troubles').count({ count: '*' }).first(),
   ]);
   const waiting = outbox.find((row) => row.state === 'waiting');
   const dead = outbox.find((row) => row.state === 'dead');
@@ -38,13 +45,7 @@ export async function readOperationState(now: Date, conn: Connection = pool()): 
     outboxWaiting: Number(waiting?.count ?? 0),
     outboxDead: Number(dead?.count ?? 0),
     quarantineOpen: Number(quarantine?.count ?? 0),
-    pendingMigrations: migrationFileCount() - Number(applied?.count ?? 0),
+    pendingMigrations: schema.pending.length,
+    jobTroubles: Number(troubles?.count ?? 0),
   };
-}
-
-let fileCount: number | undefined;
-
-function migrationFileCount(): number {
-  fileCount ??= readdirSync('db/migrations').filter((name) => name.endsWith('.mjs')).length;
-  return fileCount;
 }

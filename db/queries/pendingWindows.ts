@@ -48,17 +48,27 @@ export async function selectOpenWindows(
     .distinct({ limitId: 'limit_id', stationId: 'station_id', startSec: 'starts_at', endSec: 'ends_at' });
 }
 
-/** Ids of windows that ended at or before `untilSec`, the longest ended first, at most `limit`. */
-export async function findDueWindowIds(
+/** How the windows of a limit at a station are named together. */
+export const placeOfWindow = ({ limitId, stationId }: Pick<PendingWindow, 'limitId' | 'stationId'>) =>
+  `limit ${limitId} at station ${stationId}`;
+
+/**
+ * Windows that ended at or before `untilSec`, the longest ended first, at most `limit`, but those of some places (`placeOfWindow`).
+ */
+export async function findDueWindows(
   untilSec: number,
   limit: number,
+  exceptPlaces: readonly string[] = [],
   conn: Connection = pool(),
-): Promise<number[]> {
-  return conn('pending_windows')
+): Promise<PendingWindow[]> {
+  const due = conn('pending_windows')
     .where('ends_at', '<=', untilSec)
     .orderBy(['ends_at', 'id'])
     .limit(limit)
-    .pluck('id');
+    .select(COLUMNS);
+  if (exceptPlaces.length === 0) return due;
+  const place = "CONCAT('limit ', limit_id, ' at station ', station_id)";
+  return due.whereRaw(`${place} NOT IN (${exceptPlaces.map(() => '?').join(', ')})`, [...exceptPlaces]);
 }
 
 /** Those of the windows that still wait, locked until the transaction ends. */

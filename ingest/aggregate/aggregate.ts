@@ -3,6 +3,7 @@ import { dropDayTraces } from '#db/queries/dayTraces';
 import { deleteDirtyMarks, readDirtyMarks, type DirtyMark } from '#db/queries/dirtyMarks';
 import { listSettings, type NetworkSettings } from '#db/queries/networks';
 import { findStationById, lockStation, type StationRow } from '#db/queries/stations';
+import { eachStation, restingStationIds } from '../jobs/stationsAlone';
 import { chunksOf, marksByStation, type Chunk } from './chunks';
 import { recompute } from './recompute';
 
@@ -23,6 +24,7 @@ export interface AggregationRun {
   marks: number;
 }
 
+const JOB = 'aggregate';
 const DAY_SEC = 86_400;
 /** Marks read at once. */
 const MOST_MARKS = 5000;
@@ -33,24 +35,22 @@ const INTERVALS_A_CHUNK = 7 * 1440;
  * Recomputes what is marked, oldest marks first, at most `mostMarks` of them: each quarter-hour and the periods of day it is
  * part of wholly from intervals, in transactions of a station's date or a few. Marks are read before a transaction's reads, and
  * exactly those are deleted: what changes meanwhile has a mark of its own. Safe to run twice at once, because the second
- * finds the station locked and then recomputes the same from newer data.
+ * finds the station locked and then recomputes the same from newer data. A station that cannot be recomputed is noted and rests; its
+ * marks stay.
  */
 export async function aggregateMarks(
   onQuartersRecomputed: OnQuartersRecomputed,
   mostMarks: number = MOST_MARKS,
 ): Promise<AggregationRun> {
-  const marks = await readDirtyMarks(mostMarks);
-  let quarters = 0;
-  const failures: unknown[] = [];
-  for (const [stationId, ofStation] of marksByStation(marks)) {
-    try {
-      quarters += await aggregateStation(stationId, ofStation, onQuartersRecomputed);
-    } catch (failure) {
-      // One station's trouble must not keep the others from being current; its marks stay.
-      failures.push(failure);
-    }
-  }
-  if (failures.length > 0) throw new AggregateError(failures, 'Some stations could not be recomputed.');
+  const now = new Date();
+  const marks = await readDirtyMarks(mostMarks, await restingStationIds(JOB, now));
+  const byStation = marksByStation(marks);
+  const quarters = await eachStation(
+    JOB,
+    byStation.keys(),
+    (stationId) => aggregateStation(stationId, byStation.get(stationId) ?? [], onQuartersRecomputed),
+    now,
+  );
   return { quarters, marks: marks.length };
 }
 

@@ -4,19 +4,22 @@ import { listLimitVersions, lockLimits } from '#db/queries/limits';
 import { listSettings, pickSettings, type NetworkSettings } from '#db/queries/networks';
 import {
   deletePendingWindows,
-  findDueWindowIds,
+  findDueWindows,
   lockPendingWindows,
+  placeOfWindow,
   type PendingWindow,
 } from '#db/queries/pendingWindows';
 import { findStationById, type StationRow } from '#db/queries/stations';
 import type { StandingOutRange } from '#lib/acoustics/standingOut';
 import { groupBy } from '#lib/services/groupBy';
 import { byLimit } from '#lib/services/limits/force';
+import { concernsEverybody, eachAlone, restingSubjects } from '../jobs/alone';
 import { standingOutOf } from './standingOutOf';
 import { verdictsOn } from './verdictOn';
 import { recordVerdict, type JudgedChange, type Verdict } from './verdicts';
 import { WindowEvidence } from '#lib/services/limits/windowEvidence';
 
+const JOB = 'judge-limits';
 /** A window is judged this long after its end, so that the last post of a punctual monitor is in. */
 export const SETTLE_SEC = 60;
 const WINDOWS_A_TRANSACTION = 500;
@@ -36,12 +39,41 @@ export type TellChanges = (changes: TellingChange[], now: Date, transaction: Con
 /**
  * Judges windows that have closed, a bounded number in one transaction: exceedances, e-mails and the deletion of exactly the
  * windows read are durable together or not at all. Safe to run twice at once: the locks on windows and limits let one judge a
- * window at a time, and read committed lets the next see what the one before found.
+ * window at a time, and read committed lets the next see what the one before found. Where a window cannot be judged, those of each limit and
+ * station are judged by themselves, and only its own wait.
  * @returns how many windows were settled; 0 when none is due.
  */
 export async function judgeDueWindows(now: Date, tell: TellChanges): Promise<number> {
-  const ids = await findDueWindowIds(closedBy(now), WINDOWS_A_TRANSACTION);
-  if (ids.length === 0) return 0;
+  const resting = await restingSubjects(JOB, now);
+  const due = await findDueWindows(closedBy(now), WINDOWS_A_TRANSACTION, resting);
+  if (due.length === 0) return 0;
+  try {
+    return await judgeTogether(due, now, tell);
+  } catch (error) {
+    if (concernsEverybody(error)) throw error;
+  }
+  const places = groupBy(due, placeOfWindow).entries();
+  return eachAlone(
+    JOB,
+    await withNetworks(places),
+    ({ place, networkId }) => ({ name: place, networkId }),
+    ({ windows }) => judgeTogether(windows, now, tell),
+    now,
+  );
+}
+
+async function withNetworks(places: Iterable<[string, PendingWindow[]]>) {
+  const found = [];
+  for (const [place, windows] of places) {
+    const station = await findStationById(windows[0]?.stationId ?? 0);
+    found.push({ place, windows, networkId: station?.networkId ?? null });
+  }
+  return found;
+}
+
+/** Settles windows in one transaction. */
+function judgeTogether(due: readonly PendingWindow[], now: Date, tell: TellChanges): Promise<number> {
+  const ids = due.map(({ id }) => id);
   return inTransaction(
     async (transaction) => {
       const windows = await lockPendingWindows(ids, transaction);

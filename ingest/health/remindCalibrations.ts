@@ -5,6 +5,7 @@ import { config } from '#lib/config/index';
 import type { DueCheck } from '#lib/contracts/calibrations';
 import { formatLocalDate } from '#lib/format/times';
 import { dueChecks } from '#lib/services/calibrations/due';
+import { eachAlone } from '../jobs/alone';
 import { putNotes, type Note } from './mail';
 
 /** Reminds of each calibration check that falls due, once: of an instrument that stands at a station. @returns messages put. */
@@ -23,15 +24,16 @@ async function remindNetwork(network: NetworkRow, now: Date): Promise<number> {
   if (due.length === 0) return 0;
   const { recipients } = await calibrationSettingsOf(network.id);
   const told = recipients.length > 0 ? recipients : await operatorAddresses(network.id);
-  return inTransaction(async (transaction) => {
-    let added = 0;
-    for (const check of due) {
-      const key = `${check.instrument}:${check.lastCheckedAt ?? 'never'}:${check.dueOn}`;
-      const cause = { networkId: network.id, kind: 'calibration-due', key };
-      added += await putNotes(noteOf(check, network), cause, told, transaction);
-    }
-    return added;
+  const subjectOf = ({ instrument }: DueCheck) => ({
+    name: `instrument ${instrument}`,
+    networkId: network.id,
   });
+  const remind = (check: DueCheck) => {
+    const key = `${check.instrument}:${check.lastCheckedAt ?? 'never'}:${check.dueOn}`;
+    const cause = { networkId: network.id, kind: 'calibration-due', key };
+    return inTransaction((transaction) => putNotes(noteOf(check, network), cause, told, transaction));
+  };
+  return eachAlone('remind-calibrations', due, subjectOf, remind, now);
 }
 
 function noteOf(

@@ -3,11 +3,11 @@ import { listHealthSettings } from '#db/queries/healthSettings';
 import { listNetworks, type NetworkRow } from '#db/queries/networks';
 import { listClocks } from '#db/queries/stationClocks';
 import { listLatest } from '#db/queries/stationLatest';
-import { listStations } from '#db/queries/stations';
-import { log } from '#lib/config/log';
+import { listStations, type StationRow } from '#db/queries/stations';
 import { judgeStation } from '#lib/services/health/judge';
 import { readEvidence } from '#lib/services/health/readEvidence';
 import { thresholdsFor } from '#lib/services/health/thresholds';
+import { eachAlone } from '../jobs/alone';
 import { endTroubleOf, follow, watchOf } from './follow';
 
 /**
@@ -31,12 +31,11 @@ async function watchNetwork(network: NetworkRow, now: Date): Promise<number> {
     listOpenTroubles(network.id),
   ]);
   const watch = await watchOf(network, rows, nowSec);
-  let changes = 0;
-  for (const station of stations) {
+  const judge = async (station: StationRow) => {
     const ofStation = open.filter(({ stationId }) => stationId === station.id);
     if (station.retiredAt) {
       for (const trouble of ofStation) await endTroubleOf(trouble, nowSec);
-      continue;
+      return 0;
     }
     const known = {
       station,
@@ -45,17 +44,15 @@ async function watchNetwork(network: NetworkRow, now: Date): Promise<number> {
       thresholds: thresholdsFor(station.id, rows),
       nowSec,
     };
-    try {
-      const openSince = new Map(ofStation.map(({ kind, beginsAtSec }) => [kind, beginsAtSec]));
-      const findings = judgeStation(await readEvidence(known), openSince);
-      for (const [kind, finding] of findings) {
-        const trouble = ofStation.find((one) => one.kind === kind);
-        if (await follow(watch, station, kind, finding, trouble)) changes += 1;
-      }
-    } catch (error) {
-      // One station's trouble must not hide another's.
-      log().error({ err: error, station: station.code }, 'health of a station could not be judged');
+    let changes = 0;
+    const openSince = new Map(ofStation.map(({ kind, beginsAtSec }) => [kind, beginsAtSec]));
+    const findings = judgeStation(await readEvidence(known), openSince);
+    for (const [kind, finding] of findings) {
+      const trouble = ofStation.find((one) => one.kind === kind);
+      if (await follow(watch, station, kind, finding, trouble)) changes += 1;
     }
-  }
-  return changes;
+    return changes;
+  };
+  const subjectOf = ({ id }: StationRow) => ({ name: `station ${id}`, networkId: network.id });
+  return eachAlone('watch-health', stations, subjectOf, judge, now);
 }

@@ -1,10 +1,10 @@
 import { listOpenTroubles } from '#db/queries/health';
 import { listHealthSettings } from '#db/queries/healthSettings';
 import { listNetworks, type NetworkRow } from '#db/queries/networks';
-import { log } from '#lib/config/log';
 import type { Drift, DriftVerdictJson } from '#lib/contracts/drift';
 import { driftSource, stationDrift } from '#lib/services/drift/stationDrift';
 import { FINE, UNKNOWN, type Finding } from '#lib/services/health/evidence';
+import { eachAlone } from '../jobs/alone';
 import { follow, watchOf } from './follow';
 
 /**
@@ -25,20 +25,17 @@ async function watchNetwork(network: NetworkRow, now: Date): Promise<number> {
     listOpenTroubles(network.id),
   ]);
   const watch = await watchOf(network, settings, nowSec);
-  let changes = 0;
-  for (const station of source.stations) {
-    try {
-      const drift = await stationDrift(station, source);
-      for (const [kind, finding] of findingsOf(drift, nowSec)) {
-        const trouble = open.find((one) => one.stationId === station.id && one.kind === kind);
-        if (await follow(watch, station, kind, finding, trouble)) changes += 1;
-      }
-    } catch (error) {
-      // One station's trouble must not hide another's.
-      log().error({ err: error, station: station.code }, 'drift of a station could not be judged');
+  const judge = async (station: (typeof source.stations)[number]) => {
+    let changes = 0;
+    const drift = await stationDrift(station, source);
+    for (const [kind, finding] of findingsOf(drift, nowSec)) {
+      const trouble = open.find((one) => one.stationId === station.id && one.kind === kind);
+      if (await follow(watch, station, kind, finding, trouble)) changes += 1;
     }
-  }
-  return changes;
+    return changes;
+  };
+  const subjectOf = ({ id }: { id: number }) => ({ name: `station ${id}`, networkId: network.id });
+  return eachAlone('watch-drifts', source.stations, subjectOf, judge, now);
 }
 
 function findingsOf({ background, selfCheck }: Drift, nowSec: number) {

@@ -1,5 +1,6 @@
 import { inTransaction } from '#db/queries/connection';
 import { findWorkingImport, lockImport, updateImport, type ImportRow } from '#db/queries/imports';
+import { eachAlone, restingNumbers } from '../jobs/alone';
 import { checkImport } from './check';
 import { UnreadableFile } from './csvRows';
 import { discardImport } from './discard';
@@ -7,15 +8,22 @@ import { redoImport } from './redo';
 import { storeImport } from './storeStaged';
 import { undoImport } from './undo';
 
+const JOB = 'import-files';
 const ROUND_MS = 5000;
 
 /**
  * Does a bounded part of the oldest import that waits for something. Every part begins where the last committed chunk ended, so
- * it makes no difference whether the worker went on or began again. @returns how much it did; 0 when nothing waits.
+ * it makes no difference whether the worker went on or began again. One that fails unforeseen rests, and the next goes on. @returns how much it did; 0 when nothing waits.
  */
 export async function advanceImports(): Promise<number> {
-  const row = await findWorkingImport();
+  const now = new Date();
+  const row = await findWorkingImport(await restingNumbers(JOB, 'import', now));
   if (!row) return 0;
+  const subject = { name: `import ${row.id}`, networkId: row.networkId };
+  return eachAlone(JOB, [row], () => subject, advanceOne, now);
+}
+
+async function advanceOne(row: ImportRow): Promise<number> {
   const endsAtMs = Date.now() + ROUND_MS;
   const isOver = () => Date.now() > endsAtMs;
   try {

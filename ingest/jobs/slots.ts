@@ -1,4 +1,5 @@
 import { claimJobRun, finishJobRun } from '#db/queries/jobRuns';
+import { failureWords } from '#lib/config/failureWords';
 import { log } from '#lib/config/log';
 
 /** Work that is done once a slot of time, by whichever worker comes first. */
@@ -18,7 +19,7 @@ export async function runDueSlots(jobs: readonly SlotJob[], now: Date): Promise<
       await finishJobRun(job.name, slot, await job.run(now));
     } catch (error) {
       log().error({ err: error, job: job.name }, 'job failed');
-      await finishJobRun(job.name, slot, `failed: ${String(error)}`).catch(() => undefined);
+      await finishJobRun(job.name, slot, `failed: ${failureWords(error)}`).catch(() => undefined);
     }
   }
 }

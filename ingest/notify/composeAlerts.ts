@@ -1,4 +1,10 @@
-import { findDueRecipient, lockDueItems, markItemsTold, type AlertItemRow } from '#db/queries/alertItems';
+import {
+  findDueRecipient,
+  lockDueItems,
+  markItemsTold,
+  type AlertItemRow,
+  type DueRecipient,
+} from '#db/queries/alertItems';
 import { listAlertPeople, type AlertPerson } from '#db/queries/alertPreferences';
 import { inTransaction, type Connection } from '#db/queries/connection';
 import { insertExceedanceMails } from '#db/queries/exceedanceMails';
@@ -6,9 +12,12 @@ import { findNetworkById, type NetworkRow } from '#db/queries/networks';
 import { insertMail } from '#db/queries/outbox';
 import { config } from '#lib/config/index';
 import { acknowledgeUrl } from '#lib/services/alerts/acknowledgeLink';
+import { eachAlone, restingSubjects } from '../jobs/alone';
 import type { ChangeWords } from './describeChange';
 import { exceedanceMail } from './exceedanceMail';
 import { messageIdOf } from './messageId';
+
+const JOB = 'compose-alerts';
 
 type StoredWords = ChangeWords & { isStanding: boolean };
 
@@ -61,18 +70,31 @@ export async function composeAlerts(
   );
 }
 
-/** Composes the message of the recipient who waits longest. @returns 1, or 0 when nobody waits. */
+/**
+ * Composes the message of the recipient who waits longest; one whose message cannot be composed rests. @returns 1, or 0 when nobody
+ * waits.
+ */
 export async function composeDueAlerts(now: Date): Promise<number> {
-  const waiting = await findDueRecipient(now);
+  const waiting = await findDueRecipient(now, await restingSubjects(JOB, now));
   if (!waiting) return 0;
-  await inTransaction(
+  return eachAlone(
+    JOB,
+    [waiting],
+    ({ name, networkId }) => ({ name, networkId }),
+    (one) => composeFor(one, now),
+    now,
+  );
+}
+
+function composeFor({ networkId, recipient }: DueRecipient, now: Date): Promise<number> {
+  return inTransaction(
     async (transaction) => {
-      const network = await findNetworkById(waiting.networkId, transaction);
-      if (network) await composeAlerts(network, waiting.recipient, now, transaction);
+      const network = await findNetworkById(networkId, transaction);
+      if (network) await composeAlerts(network, recipient, now, transaction);
+      return 1;
     },
     { isolationLevel: 'read committed' },
   );
-  return 1;
 }
 
 function told({ words, exceedanceId }: AlertItemRow, person: AlertPerson | undefined, now: Date) {

@@ -14,20 +14,25 @@ import { insertMail } from '#db/queries/outbox';
 import { config } from '#lib/config/index';
 import { TELL_WITHIN_HOURS } from '#lib/contracts/limits';
 import { acknowledgeUrl } from '#lib/services/alerts/acknowledgeLink';
+import { concernsEverybody, eachAlone } from '../jobs/alone';
 import { describeExceedance } from './describeExceedance';
 import { exceedanceMail } from './exceedanceMail';
 import { messageIdOf } from './messageId';
 
+const JOB = 'escalate';
 /** A worker that was away so long does not wake people for what is past. */
 const AT_MOST_LATE_MS = 24 * 3_600_000;
 
-/** Tells the people of each step that is due of exceedances that nobody has acknowledged. @returns how many steps told. */
+/**
+ * Tells the people of each step that is due of exceedances that nobody has acknowledged, in one message where all can be described.
+ * @returns how many messages were told.
+ */
 export async function escalate(now: Date): Promise<number> {
   let told = 0;
   for (const networkId of await listEscalatingNetworks()) {
     const network = await findNetworkById(networkId);
     for (const step of network ? await listEscalationSteps(networkId) : []) {
-      if (network && (await takeStep(network, step, now))) told += 1;
+      if (network) told += await takeStep(network, step, now);
     }
   }
   return told;
@@ -35,7 +40,7 @@ export async function escalate(now: Date): Promise<number> {
 
 const subjectOf = (exceedanceId: number, { step }: EscalationStep) => `${exceedanceId}/${step}`;
 
-async function takeStep(network: NetworkRow, step: EscalationStep, now: Date): Promise<boolean> {
+async function takeStep(network: NetworkRow, step: EscalationStep, now: Date): Promise<number> {
   const to = new Date(now.getTime() - step.afterMin * 60_000);
   const from = new Date(Math.max(step.changedAt.getTime(), to.getTime() - AT_MOST_LATE_MS));
   const withinSec = TELL_WITHIN_HOURS * 3600;
@@ -45,7 +50,28 @@ async function takeStep(network: NetworkRow, step: EscalationStep, now: Date): P
     ids.map((id) => subjectOf(id, step)),
   );
   const due = ids.filter((id) => !before.has(subjectOf(id, step)));
-  if (due.length === 0) return false;
+  if (due.length === 0) return 0;
+  try {
+    return await tellTogether(network, step, due, now);
+  } catch (error) {
+    if (concernsEverybody(error)) throw error;
+  }
+  return eachAlone(
+    JOB,
+    due,
+    (id) => ({ name: `exceedance ${id}, step ${step.step}`, networkId: network.id }),
+    (id) => tellTogether(network, step, [id], now),
+    now,
+  );
+}
+
+/** @returns 1, or 0 when nobody is told of any. */
+function tellTogether(
+  network: NetworkRow,
+  step: EscalationStep,
+  due: readonly number[],
+  now: Date,
+): Promise<number> {
   return inTransaction(
     async (transaction) => {
       const rows: ExceedanceRow[] = [];
@@ -56,7 +82,7 @@ async function takeStep(network: NetworkRow, step: EscalationStep, now: Date): P
           rows.push(row);
       }
       if (rows.length > 0) await tellStep(network, step, rows, now, transaction);
-      return rows.length > 0;
+      return rows.length > 0 ? 1 : 0;
     },
     { isolationLevel: 'read committed' },
   );

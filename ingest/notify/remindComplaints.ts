@@ -7,6 +7,7 @@ import { config } from '#lib/config/index';
 import { formatLocalDate } from '#lib/format/times';
 import { addWorkingDays, workingCalendarOf } from '#lib/services/complaints/dueDate';
 import { addDays, localDateAt } from '#lib/time/zone';
+import { eachAlone } from '../jobs/alone';
 
 /** What is overdue longer was told of when it became so, or came in before there were reminders. */
 const TOLD_OVERDUE_DAYS = 60;
@@ -30,19 +31,18 @@ async function remindNetwork(network: NetworkRow, now: Date): Promise<number> {
   const due = await listDueBetween(network.id, addDays(today, -TOLD_OVERDUE_DAYS), soon);
   if (due.length === 0) return 0;
   const people = await listAnswerers(network.id);
-  return inTransaction(async (transaction) => {
-    let added = 0;
-    for (const complaint of due) {
-      const isOverdue = complaint.dueOn < today;
-      const assigned = people.filter(({ id }) => id === complaint.assignedTo);
-      const told = assigned.length > 0 ? assigned : people;
-      const kind = isOverdue ? 'complaint-overdue' : 'complaint-due';
-      const cause = { networkId: network.id, kind, key: `${complaint.id}:${complaint.dueOn}` };
-      const addresses = told.map(({ email }) => email);
-      added += await putNotes(noteOf(complaint, network, isOverdue), cause, addresses, transaction);
-    }
-    return added;
-  });
+  const remind = (complaint: DueComplaint) => {
+    const isOverdue = complaint.dueOn < today;
+    const assigned = people.filter(({ id }) => id === complaint.assignedTo);
+    const told = assigned.length > 0 ? assigned : people;
+    const kind = isOverdue ? 'complaint-overdue' : 'complaint-due';
+    const cause = { networkId: network.id, kind, key: `${complaint.id}:${complaint.dueOn}` };
+    const addresses = told.map(({ email }) => email);
+    const note = noteOf(complaint, network, isOverdue);
+    return inTransaction((transaction) => putNotes(note, cause, addresses, transaction));
+  };
+  const subjectOf = ({ id }: DueComplaint) => ({ name: `complaint ${id}`, networkId: network.id });
+  return eachAlone('remind-complaints', due, subjectOf, remind, now);
 }
 
 /** Nothing of the complaint but its reference and date: mail is read on the way. */

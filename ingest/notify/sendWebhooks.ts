@@ -7,6 +7,7 @@ import { putNotes } from '#ingest/health/mail';
 import { config } from '#lib/config/index';
 import { postOnce, type PostOutcome } from '#lib/services/webhooks/post';
 import { signatureHeader, webhookSecret } from '#lib/services/webhooks/signature';
+import { eachAlone } from '../jobs/alone';
 import { waitMs } from './backOff';
 
 export interface WebhookSender {
@@ -34,13 +35,19 @@ export async function sendDueWebhook(sender: WebhookSender, now: Date): Promise<
   if (!delivery) return 0;
   const webhook = await findWebhook(delivery.webhookId);
   if (!webhook) return 1;
-  const outcome = await postOnce(
-    webhook.url,
-    delivery.body,
-    headersOf(webhook, delivery, now),
-    sender.mayLoopBack,
-  );
-  await settle(delivery, outcome, sender, now);
+  const subject = { name: `webhook ${webhook.id}`, networkId: webhook.networkId };
+  const post = async () => {
+    const headers = headersOf(webhook, delivery, now);
+    await settle(
+      delivery,
+      await postOnce(webhook.url, delivery.body, headers, sender.mayLoopBack),
+      sender,
+      now,
+    );
+    return 1;
+  };
+  // One that fails unforeseen keeps its lease for a while, so that the next comes first.
+  await eachAlone('send-webhooks', [delivery], () => subject, post, now);
   return 1;
 }
 

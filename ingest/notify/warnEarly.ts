@@ -8,6 +8,7 @@ import type { LimitHeadroom } from '#lib/contracts/headroom';
 import { isQuiet } from '#lib/services/alerts/dueAt';
 import { isWorthWarning } from '#lib/services/alerts/earlyWarning';
 import { stationHeadroom } from '#lib/services/headroom/headroom';
+import { eachAlone } from '../jobs/alone';
 import { warningNote } from './warningNote';
 
 /**
@@ -25,13 +26,18 @@ export async function warnEarly(now: Date): Promise<number> {
     const people = (await listAlertPeople(networkId)).filter(
       ({ preferences }) => preferences.warnsEarly && !isQuiet(preferences, nowSec, timeZone),
     );
-    for (const station of people.length > 0 ? await listStations(networkId) : []) {
+    const warnOf = async (station: StationRow) => {
       const concerned = people.filter(({ preferences }) => concerns(preferences.stationIds, station));
-      if (station.retiredAt !== null || concerned.length === 0) continue;
+      if (station.retiredAt !== null || concerned.length === 0) return 0;
       const { items } = await stationHeadroom(station, nowSec);
       const found = { network, station, timeZone, people: concerned };
-      for (const item of items.filter(isWorthWarning)) written += await warn(item, found, now);
-    }
+      let ofStation = 0;
+      for (const item of items.filter(isWorthWarning)) ofStation += await warn(item, found, now);
+      return ofStation;
+    };
+    const stations = people.length > 0 ? await listStations(networkId) : [];
+    const subjectOf = ({ id }: StationRow) => ({ name: `station ${id}`, networkId });
+    written += await eachAlone('warn-early', stations, subjectOf, warnOf, now);
   }
   return written;
 }

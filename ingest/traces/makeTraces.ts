@@ -3,8 +3,11 @@ import { deleteDayTraces, listWaitingDays, storeDayTrace } from '#db/queries/day
 import { listSettings } from '#db/queries/networks';
 import { findStationById, lockStation } from '#db/queries/stations';
 import { packShapes } from '#lib/acoustics/dayTrace';
+import { groupBy } from '#lib/services/groupBy';
 import { makeTrace } from '#lib/services/spectra/makeTrace';
+import { eachStation, restingStationIds } from '../jobs/stationsAlone';
 
+const JOB = 'trace-days';
 /** Days made in one round. */
 const MOST_DAYS = 40;
 /** A day that ended this recently is still being filled by monitors that were late: it is made when it is asked for. */
@@ -17,9 +20,14 @@ const REST_SEC = 1800;
  */
 export async function makeTraces(now: Date, mostDays: number = MOST_DAYS): Promise<number> {
   const nowSec = Math.floor(now.getTime() / 1000);
-  const days = await listWaitingDays(nowSec - REST_SEC, mostDays);
-  for (const { stationId, dayStartSec } of days) await makeDay(stationId, dayStartSec);
-  return days.length;
+  const days = await listWaitingDays(nowSec - REST_SEC, mostDays, await restingStationIds(JOB, now));
+  const byStation = groupBy(days, ({ stationId }) => stationId);
+  const makeDays = async (stationId: number) => {
+    const ofStation = byStation.get(stationId) ?? [];
+    for (const { dayStartSec } of ofStation) await makeDay(stationId, dayStartSec);
+    return ofStation.length;
+  };
+  return eachStation(JOB, byStation.keys(), makeDays, now);
 }
 
 async function makeDay(stationId: number, dayStartSec: number): Promise<void> {

@@ -1,6 +1,7 @@
 import { existsSync } from 'node:fs';
 import { join } from 'node:path';
-import { closeDb, db } from '#db/client';
+import { closeDb } from '#db/client';
+import { migrateUp } from '#db/migrateUp';
 import { findAuditBreak } from '#db/queries/audit';
 import type { Config } from '#lib/config/config';
 import { config } from '#lib/config/index';
@@ -103,7 +104,7 @@ async function load(
 }
 
 async function afterwards(settings: Config, hasKeys: boolean): Promise<void> {
-  const [, migrations] = (await db().migrate.latest()) as [number, string[]];
+  const migrations = await migrateUp();
   console.log(`Applied ${migrations.length} migrations.`);
   if (hasKeys)
     console.log(

@@ -1,7 +1,8 @@
 import { join } from 'node:path';
 import { SettingsError, type Config } from '#lib/config/config';
 import { config } from '#lib/config/index';
-import { closeDb, db } from '#db/client';
+import { closeDb } from '#db/client';
+import { migrateUp, NewerSchemaError } from '#db/migrateUp';
 import { DEFAULT_DEMO_PASSWORD, DEMO_ACCOUNTS } from '#ops/demo/accounts';
 import { Child, runOnce } from './child';
 import { ensureFirstAdministrator, hasPeople } from './firstAdministrator';
@@ -23,7 +24,7 @@ try {
   await start();
 } catch (error) {
   console.error(
-    error instanceof SettingsError
+    error instanceof SettingsError || error instanceof NewerSchemaError
       ? error.message
       : error instanceof Error
         ? (error.stack ?? error.message)
@@ -64,7 +65,7 @@ async function startDatabase(settings: Config): Promise<void> {
     await database.start();
   }
   await ensureDatabase(settings);
-  await db().migrate.latest();
+  await migrateUp();
 }
 
 async function startStandIns(settings: Config): Promise<void> {

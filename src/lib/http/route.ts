@@ -1,6 +1,7 @@
 import type { APIContext, APIRoute } from 'astro';
 import { ZodError } from 'zod';
 import { log } from '#lib/config/log';
+import { isDatabaseAway } from './databaseAway';
 import { invalidFields, Problem, problemResponse } from './problem';
 
 /** Wraps a handler so that every way out is an answer to the contract: whatever it throws becomes problem details. */
@@ -41,57 +42,4 @@ function loggedPath(path: string): string {
 
 function fieldsOf(error: ZodError): { field: string; message: string }[] {
   return error.issues.map((issue) => ({ field: issue.path.join('.'), message: issue.message }));
-}
-
-const AWAY_CODES = new Set([
-  // Not reached, or gone.
-  'ECONNREFUSED',
-  'ECONNRESET',
-  'ETIMEDOUT',
-  'EPIPE',
-  'EHOSTUNREACH',
-  'ENETUNREACH',
-  'EAI_AGAIN',
-  'PROTOCOL_CONNECTION_LOST',
-  'PROTOCOL_SEQUENCE_TIMEOUT',
-  'ER_SERVER_SHUTDOWN',
-  'ER_QUERY_INTERRUPTED',
-  // Too many connections.
-  'ER_CON_COUNT_ERROR',
-  'ER_TOO_MANY_USER_CONNECTIONS',
-  'ER_USER_LIMIT_REACHED',
-  // Full, or out of memory.
-  'ER_RECORD_FILE_FULL',
-  'ER_DISK_FULL',
-  'EE_WRITE',
-  'ER_ERROR_ON_WRITE',
-  'ER_ERROR_DURING_COMMIT',
-  'ER_OUTOFMEMORY',
-  'ER_OUT_OF_RESOURCES',
-  // Stuck behind others, after all attempts.
-  'ER_LOCK_WAIT_TIMEOUT',
-  'ER_LOCK_DEADLOCK',
-  'ER_LOCK_TABLE_FULL',
-  // Read-only.
-  'ER_OPTION_PREVENTS_STATEMENT',
-  'ER_READ_ONLY_MODE',
-  'ER_CANT_EXECUTE_IN_READ_ONLY_TRANSACTION',
-]);
-
-/** MariaDB's ER_CONNECTION_KILLED, which the driver has no name for. */
-const CONNECTION_KILLED = 1927;
-
-/** Whether an error says that the database cannot take anything now (away, full, read-only, stuck), not that the request was wrong. */
-export function isDatabaseAway(error: unknown): boolean {
-  if (!(error instanceof Error)) return false;
-  const { code, errno, fatal } = error as Error & { code?: string; errno?: number; fatal?: boolean };
-  return (
-    AWAY_CODES.has(code ?? '') ||
-    errno === CONNECTION_KILLED ||
-    fatal === true ||
-    error.name === 'KnexTimeoutError' ||
-    /Connection lost|closed state|Can't add new command|Unable to acquire a connection|aborted|No space left|error 28\b/.test(
-      error.message,
-    )
-  );
 }

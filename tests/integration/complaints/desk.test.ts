@@ -11,7 +11,7 @@ import { correctContact } from '#lib/services/complaints/correctContact';
 import { assignCase } from '#lib/services/complaints/desk/assign';
 import { caseDesk } from '#lib/services/complaints/desk/caseDesk';
 import { contactDigests, digestOlderContacts } from '#lib/services/complaints/desk/contactDigests';
-import { eraseOutlived } from '#lib/services/complaints/desk/eraseOutlived';
+import { keepComplaints } from '#ingest/jobs/keepComplaints';
 import { mergeCase, unmergeCase } from '#lib/services/complaints/desk/merge';
 import { addNote, withdrawNote } from '#lib/services/complaints/desk/notes';
 import { personHistory } from '#lib/services/complaints/desk/personHistory';
@@ -314,8 +314,8 @@ describe('erasure', () => {
       ciphertext: Buffer.alloc(1),
       created_at: new Date('2026-07-01T12:00:00Z'),
     });
-    expect(await eraseOutlived(now)).toBe(1);
-    expect(await eraseOutlived(now)).toBe(0);
+    expect(await keepComplaints(now)).toMatch(/^1 erased/);
+    expect(await keepComplaints(now)).toMatch(/^0 erased/);
     const kept = async (row: { id: number } | undefined) =>
       (await db()('complaint_keys').where({ complaint_id: row?.id })).length;
     expect(await Promise.all([over, recent, open, moving].map(kept))).toEqual([0, 1, 1, 1]);

@@ -11,6 +11,7 @@ export async function metricsText(now: Date): Promise<string> {
     ['bittern_outbox_waiting', 'Messages that wait to be sent.', state.outboxWaiting],
     ['bittern_outbox_dead', 'Messages given up.', state.outboxDead],
     ['bittern_quarantine_open', 'Refused records that wait for an operator.', state.quarantineOpen],
+    ['bittern_job_troubles', 'Parts of jobs that fail while the rest goes on.', state.jobTroubles],
     ['process_resident_memory_bytes', 'Resident memory of this process.', process.memoryUsage().rss],
   ];
   const lines = gauges

@@ -5,24 +5,33 @@ import { readDeskSettings } from '#db/queries/complaintSettings';
 import { listNetworks } from '#db/queries/networks';
 import { erasePersonalData } from '../closeComplaint';
 
-/** Erased in one run of a network; the next run goes on. */
+/** Named in one run of a network; the next run goes on. */
 const MOST_A_RUN = 500;
 
-/**
- * Erases the personal data of complaints that ended longer ago than their network keeps them: closed or answered, and nothing sent,
- * added or filed since. Each is audited. Safe to run twice. @returns how many were erased.
- */
-export async function eraseOutlived(now: Date): Promise<number> {
-  let erased = 0;
-  for (const network of await listNetworks()) {
-    const { retentionMonths: months } = await readDeskSettings(network.id);
+/** A complaint whose personal data are kept no longer. */
+export interface Outlived {
+  networkId: number;
+  reference: string;
+  /** As long as the network keeps them. */
+  months: number;
+}
+
+/** Complaints that ended longer ago than their network keeps them: closed or answered, and nothing sent, added or filed since. */
+export async function listAllOutlived(now: Date): Promise<Outlived[]> {
+  const found: Outlived[] = [];
+  for (const { id: networkId } of await listNetworks()) {
+    const { retentionMonths: months } = await readDeskSettings(networkId);
     const before = DateTime.fromJSDate(now, { zone: 'utc' }).minus({ months }).toJSDate();
-    for (const reference of await listOutlived(network.id, before, MOST_A_RUN)) {
-      const complaint = await findComplaint(network.id, reference);
-      if (!complaint) continue;
-      await erasePersonalData({ by: 'retention', months }, complaint);
-      erased += 1;
-    }
+    const references = await listOutlived(networkId, before, MOST_A_RUN);
+    found.push(...references.map((reference) => ({ networkId, reference, months })));
   }
-  return erased;
+  return found;
+}
+
+/** Erases one's personal data, audited. Safe to run twice. @returns 1, or 0 when the complaint is gone. */
+export async function eraseOutlived({ networkId, reference, months }: Outlived): Promise<number> {
+  const complaint = await findComplaint(networkId, reference);
+  if (!complaint) return 0;
+  await erasePersonalData({ by: 'retention', months }, complaint);
+  return 1;
 }
