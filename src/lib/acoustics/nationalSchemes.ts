@@ -34,7 +34,7 @@ export const NATIONAL_SCHEMES: readonly NationalScheme[] = [
     key: 'fr',
     label: 'France',
     scheme: hours(6, 18, 22),
-    source: 'app.impulsion-acoustique.fr/lden',
+    source: 'a public explanation of Lden in French',
     status: 'secondary',
   },
   {
@@ -55,7 +55,7 @@ export const NATIONAL_SCHEMES: readonly NationalScheme[] = [
     key: 'nl',
     label: 'Netherlands',
     scheme: hours(7, 19, 23),
-    source: 'www.naa.nl/begrip/lden',
+    source: 'a public explanation of Lden in Dutch',
     status: 'secondary',
   },
   {
@@ -90,7 +90,7 @@ export const NATIONAL_SCHEMES: readonly NationalScheme[] = [
     key: 'us-dnl',
     label: 'United States (Ldn, no evening)',
     scheme: LDN_SCHEME,
-    source: '14 CFR 150 and public implementations',
+    source: '14 CFR 150, as quoted in public',
     status: 'secondary',
   },
   {
@@ -112,7 +112,7 @@ export const NATIONAL_SCHEMES: readonly NationalScheme[] = [
     key: 'pt',
     label: 'Portugal',
     scheme: hours(7, 20, 23),
-    source: 'RGR DL 9/2007; hours read in a public implementation',
+    source: 'RGR DL 9/2007, as quoted in public',
     status: 'secondary',
   },
   { key: 'fi', label: 'Finland', scheme: hours(7, 19, 22), source: 'VNa 801/2004', status: 'from memory' },
