@@ -8,7 +8,6 @@ export const MINI_STRIP = {
   spectrogramHeight: 132,
   traceTop: 160,
   traceHeight: 84,
-  height: 268,
 } as const;
 
 const CLASSES = 16;
