@@ -51,7 +51,13 @@ export async function insertDeliveries(
     .merge({ event_key: transaction.raw('event_key') });
 }
 
-/** Takes the oldest delivery whose webhook is to be tried and that nobody holds, for `leaseSec` seconds. */
+/** Nothing waits longer between attempts: what would, was put off by a clock that was ahead. */
+const LONGEST_WAIT_MS = 2 * 3_600_000;
+
+/**
+ * Takes the oldest delivery whose webhook is to be tried and that nobody holds, for `leaseSec` seconds. Times that lie further ahead than
+ * any wait or lease count as past.
+ */
 export async function leaseDueDelivery(
   holder: string,
   now: Date,
@@ -62,12 +68,21 @@ export async function leaseDueDelivery(
       const due = transaction('webhooks')
         .whereNull('ended_at')
         .whereNull('disabled_at')
-        .where('next_attempt_at', '<=', now)
+        .where((query) =>
+          query
+            .where('next_attempt_at', '<=', now)
+            .orWhere('next_attempt_at', '>', new Date(now.getTime() + LONGEST_WAIT_MS)),
+        )
         .select('id');
       const delivery: LeasedDelivery | undefined = await transaction('webhook_deliveries')
         .where({ state: 'waiting' })
         .whereIn('webhook_id', due)
-        .where((query) => query.whereNull('leased_until').orWhere('leased_until', '<', now))
+        .where((query) =>
+          query
+            .whereNull('leased_until')
+            .orWhere('leased_until', '<', now)
+            .orWhere('leased_until', '>', new Date(now.getTime() + leaseSec * 1000)),
+        )
         .orderBy('id')
         .forUpdate()
         .skipLocked()

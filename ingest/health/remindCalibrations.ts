@@ -5,14 +5,13 @@ import { config } from '#lib/config/index';
 import type { DueCheck } from '#lib/contracts/calibrations';
 import { formatLocalDate } from '#lib/format/times';
 import { dueChecks } from '#lib/services/calibrations/due';
-import { eachAlone } from '../jobs/alone';
+import { eachAlone, networkSubject } from '../jobs/alone';
 import { putNotes, type Note } from './mail';
 
 /** Reminds of each calibration check that falls due, once: of an instrument that stands at a station. @returns messages put. */
 export async function remindCalibrations(now: Date): Promise<number> {
-  let added = 0;
-  for (const network of await listNetworks()) added += await remindNetwork(network, now);
-  return added;
+  const remind = (network: NetworkRow) => remindNetwork(network, now);
+  return eachAlone('remind-calibrations', await listNetworks(), networkSubject, remind, now);
 }
 
 async function remindNetwork(network: NetworkRow, now: Date): Promise<number> {

@@ -7,7 +7,7 @@ import { listStations, type StationRow } from '#db/queries/stations';
 import { judgeStation } from '#lib/services/health/judge';
 import { readEvidence } from '#lib/services/health/readEvidence';
 import { thresholdsFor } from '#lib/services/health/thresholds';
-import { eachAlone } from '../jobs/alone';
+import { eachAlone, networkSubject } from '../jobs/alone';
 import { endTroubleOf, follow, watchOf } from './follow';
 
 /**
@@ -16,9 +16,8 @@ import { endTroubleOf, follow, watchOf } from './follow';
  * @returns how many began or were over.
  */
 export async function watchStations(now: Date): Promise<number> {
-  let changes = 0;
-  for (const network of await listNetworks()) changes += await watchNetwork(network, now);
-  return changes;
+  const watch = (network: NetworkRow) => watchNetwork(network, now);
+  return eachAlone('watch-health', await listNetworks(), networkSubject, watch, now);
 }
 
 async function watchNetwork(network: NetworkRow, now: Date): Promise<number> {

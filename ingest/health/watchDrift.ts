@@ -4,7 +4,7 @@ import { listNetworks, type NetworkRow } from '#db/queries/networks';
 import type { Drift, DriftVerdictJson } from '#lib/contracts/drift';
 import { driftSource, stationDrift } from '#lib/services/drift/stationDrift';
 import { FINE, UNKNOWN, type Finding } from '#lib/services/health/evidence';
-import { eachAlone } from '../jobs/alone';
+import { eachAlone, networkSubject } from '../jobs/alone';
 import { follow, watchOf } from './follow';
 
 /**
@@ -12,9 +12,8 @@ import { follow, watchOf } from './follow';
  * corrected by it. Safe to run twice and on two machines. @returns how many began or were over.
  */
 export async function watchDrift(now: Date): Promise<number> {
-  let changes = 0;
-  for (const network of await listNetworks()) changes += await watchNetwork(network, now);
-  return changes;
+  const watch = (network: NetworkRow) => watchNetwork(network, now);
+  return eachAlone('watch-drifts', await listNetworks(), networkSubject, watch, now);
 }
 
 async function watchNetwork(network: NetworkRow, now: Date): Promise<number> {

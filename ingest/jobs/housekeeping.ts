@@ -30,6 +30,9 @@ const KEEP_TROUBLES_MS = 2 * 86_400_000;
 /** What has run out, each with its removal. */
 const REMOVALS: [what: string, remove: (now: Date) => Promise<unknown>][] = [
   ['sessions', deleteExpiredSessions],
+  ['links to accounts', deleteAccountTokensExpired],
+  ['invitations', (now) => deleteInvitationsBefore(before(now, KEEP_INVITATIONS_MS))],
+  ['known browsers', (now) => deleteOriginsBefore(before(now, KEEP_ORIGINS_MS))],
   ['job runs', (now) => deleteJobRunsBefore(before(now, KEEP_JOB_RUNS_MS))],
   ['clock offsets', (now) => deleteOffsetsBefore(Math.floor(now.getTime() / 1000) - KEEP_OFFSETS_SEC)],
   ['alert items', (now) => deleteItemsToldBefore(before(now, KEEP_ALERTS_MS))],
@@ -42,7 +45,7 @@ const REMOVALS: [what: string, remove: (now: Date) => Promise<unknown>][] = [
 
 /**
  * Removes what has run out: sessions, the record of jobs older than two weeks, and uploads that broke off, what clocks said
- * more than a year ago, notes of what alerts told, and troubles of jobs that were about what is gone.
+ * more than a year ago, notes of what alerts told, links and invitations, where people signed in from, and troubles of jobs that were about what is gone.
  */
 export async function housekeeping(now: Date): Promise<string> {
   const removed: string[] = [];

@@ -14,7 +14,7 @@ import { insertMail } from '#db/queries/outbox';
 import { config } from '#lib/config/index';
 import { TELL_WITHIN_HOURS } from '#lib/contracts/limits';
 import { acknowledgeUrl } from '#lib/services/alerts/acknowledgeLink';
-import { concernsEverybody, eachAlone } from '../jobs/alone';
+import { concernsEverybody, eachAlone, networkSubject } from '../jobs/alone';
 import { describeExceedance } from './describeExceedance';
 import { exceedanceMail } from './exceedanceMail';
 import { messageIdOf } from './messageId';
@@ -28,14 +28,15 @@ const AT_MOST_LATE_MS = 24 * 3_600_000;
  * @returns how many messages were told.
  */
 export async function escalate(now: Date): Promise<number> {
-  let told = 0;
-  for (const networkId of await listEscalatingNetworks()) {
+  const escalateNetwork = async (networkId: number) => {
     const network = await findNetworkById(networkId);
-    for (const step of network ? await listEscalationSteps(networkId) : []) {
-      if (network) told += await takeStep(network, step, now);
-    }
-  }
-  return told;
+    if (!network) return 0;
+    let told = 0;
+    for (const step of await listEscalationSteps(networkId)) told += await takeStep(network, step, now);
+    return told;
+  };
+  const subjectOf = (id: number) => networkSubject({ id });
+  return eachAlone(JOB, await listEscalatingNetworks(), subjectOf, escalateNetwork, now);
 }
 
 const subjectOf = (exceedanceId: number, { step }: EscalationStep) => `${exceedanceId}/${step}`;

@@ -7,7 +7,7 @@ import { config } from '#lib/config/index';
 import { formatLocalDate } from '#lib/format/times';
 import { addWorkingDays, workingCalendarOf } from '#lib/services/complaints/dueDate';
 import { addDays, localDateAt } from '#lib/time/zone';
-import { eachAlone } from '../jobs/alone';
+import { eachAlone, networkSubject } from '../jobs/alone';
 
 /** What is overdue longer was told of when it became so, or came in before there were reminders. */
 const TOLD_OVERDUE_DAYS = 60;
@@ -17,9 +17,8 @@ const TOLD_OVERDUE_DAYS = 60;
  * it is told, or everybody who may where it is given to nobody. A new due date begins anew. @returns messages put.
  */
 export async function remindComplaints(now: Date): Promise<number> {
-  let added = 0;
-  for (const network of await listNetworks()) added += await remindNetwork(network, now);
-  return added;
+  const remind = (network: NetworkRow) => remindNetwork(network, now);
+  return eachAlone('remind-complaints', await listNetworks(), networkSubject, remind, now);
 }
 
 async function remindNetwork(network: NetworkRow, now: Date): Promise<number> {

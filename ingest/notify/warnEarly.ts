@@ -8,8 +8,10 @@ import type { LimitHeadroom } from '#lib/contracts/headroom';
 import { isQuiet } from '#lib/services/alerts/dueAt';
 import { isWorthWarning } from '#lib/services/alerts/earlyWarning';
 import { stationHeadroom } from '#lib/services/headroom/headroom';
-import { eachAlone } from '../jobs/alone';
+import { eachAlone, networkSubject } from '../jobs/alone';
 import { warningNote } from './warningNote';
+
+const JOB = 'warn-early';
 
 /**
  * Writes to those who wish it, and are not in quiet hours, of windows that are open and heading above their limit: once a window,
@@ -17,29 +19,31 @@ import { warningNote } from './warningNote';
  * @returns how many messages were written.
  */
 export async function warnEarly(now: Date): Promise<number> {
+  const warnNetwork = (networkId: number) => warnOfNetwork(networkId, now);
+  const subjectOf = (id: number) => networkSubject({ id });
+  return eachAlone(JOB, await listWarnedNetworks(), subjectOf, warnNetwork, now);
+}
+
+async function warnOfNetwork(networkId: number, now: Date): Promise<number> {
   const nowSec = Math.floor(now.getTime() / 1000);
-  let written = 0;
-  for (const networkId of await listWarnedNetworks()) {
-    const network = await findNetworkById(networkId);
-    if (!network) continue;
-    const { timeZone } = await settingsAt(networkId, nowSec);
-    const people = (await listAlertPeople(networkId)).filter(
-      ({ preferences }) => preferences.warnsEarly && !isQuiet(preferences, nowSec, timeZone),
-    );
-    const warnOf = async (station: StationRow) => {
-      const concerned = people.filter(({ preferences }) => concerns(preferences.stationIds, station));
-      if (station.retiredAt !== null || concerned.length === 0) return 0;
-      const { items } = await stationHeadroom(station, nowSec);
-      const found = { network, station, timeZone, people: concerned };
-      let ofStation = 0;
-      for (const item of items.filter(isWorthWarning)) ofStation += await warn(item, found, now);
-      return ofStation;
-    };
-    const stations = people.length > 0 ? await listStations(networkId) : [];
-    const subjectOf = ({ id }: StationRow) => ({ name: `station ${id}`, networkId });
-    written += await eachAlone('warn-early', stations, subjectOf, warnOf, now);
-  }
-  return written;
+  const network = await findNetworkById(networkId);
+  if (!network) return 0;
+  const { timeZone } = await settingsAt(networkId, nowSec);
+  const people = (await listAlertPeople(networkId)).filter(
+    ({ preferences }) => preferences.warnsEarly && !isQuiet(preferences, nowSec, timeZone),
+  );
+  if (people.length === 0) return 0;
+  const warnOf = async (station: StationRow) => {
+    const concerned = people.filter(({ preferences }) => concerns(preferences.stationIds, station));
+    if (station.retiredAt !== null || concerned.length === 0) return 0;
+    const { items } = await stationHeadroom(station, nowSec);
+    const found = { network, station, timeZone, people: concerned };
+    let written = 0;
+    for (const item of items.filter(isWorthWarning)) written += await warn(item, found, now);
+    return written;
+  };
+  const subjectOf = ({ id }: StationRow) => ({ name: `station ${id}`, networkId });
+  return eachAlone(JOB, await listStations(networkId), subjectOf, warnOf, now);
 }
 
 const concerns = (stationIds: number[] | null, { id }: StationRow) => stationIds?.includes(id) ?? true;

@@ -2,7 +2,6 @@ import { DateTime } from 'luxon';
 import { listOutlived } from '#db/queries/complaintDesk';
 import { findComplaint } from '#db/queries/complaints';
 import { readDeskSettings } from '#db/queries/complaintSettings';
-import { listNetworks } from '#db/queries/networks';
 import { erasePersonalData } from '../closeComplaint';
 
 /** Named in one run of a network; the next run goes on. */
@@ -16,16 +15,14 @@ export interface Outlived {
   months: number;
 }
 
-/** Complaints that ended longer ago than their network keeps them: closed or answered, and nothing sent, added or filed since. */
-export async function listAllOutlived(now: Date): Promise<Outlived[]> {
-  const found: Outlived[] = [];
-  for (const { id: networkId } of await listNetworks()) {
-    const { retentionMonths: months } = await readDeskSettings(networkId);
-    const before = DateTime.fromJSDate(now, { zone: 'utc' }).minus({ months }).toJSDate();
-    const references = await listOutlived(networkId, before, MOST_A_RUN);
-    found.push(...references.map((reference) => ({ networkId, reference, months })));
-  }
-  return found;
+/**
+ * Complaints of a network that ended longer ago than it keeps them: closed or answered, and nothing sent, added or filed since.
+ */
+export async function outlivedOf(networkId: number, now: Date): Promise<Outlived[]> {
+  const { retentionMonths: months } = await readDeskSettings(networkId);
+  const before = DateTime.fromJSDate(now, { zone: 'utc' }).minus({ months }).toJSDate();
+  const references = await listOutlived(networkId, before, MOST_A_RUN);
+  return references.map((reference) => ({ networkId, reference, months }));
 }
 
 /** Erases one's personal data, audited. Safe to run twice. @returns 1, or 0 when the complaint is gone. */
