@@ -9,7 +9,7 @@ export function complaintsText(count: number): string {
 
 /** "3 of 4, 75 %"; of none there is no share. */
 export function shareText({ count, of }: { count: number; of: number }): string {
-  return of === 0 ? 'none to tell of' : `${count} of ${of}, ${Math.round((count / of) * 100)}\u00a0%`;
+  return of === 0 ? 'none so far' : `${count} of ${of}, ${Math.round((count / of) * 100)}\u00a0%`;
 }
 
 /** Which month had most, in a sentence. */
@@ -30,6 +30,12 @@ export function kindSentence({ total, byKind }: ComplaintNumbers): string {
   return `“${KIND_WORDS[most.kind]}” was named most often: ${most.count} of ${total}.`;
 }
 
+/** "03:00" */
+const clock = (hour: number) => `${String(hour).padStart(2, '0')}:00`;
+
+/** An hour of the day, "03:00 to 04:00". */
+export const hourLabel = (hour: number) => `${clock(hour)} to ${clock(hour + 1)}`;
+
 /** At which time of day noise began, in a sentence. */
 export function hourSentence({ total, byHour }: ComplaintNumbers): string {
   if (total === 0) return 'No complaint in this period.';
@@ -38,8 +44,10 @@ export function hourSentence({ total, byHour }: ComplaintNumbers): string {
   const hours = byHour.flatMap((count, hour) => (count === most ? [hour] : []));
   const [hour = 0] = hours;
   const told =
-    hours.length > 1 ? 'No hour stands out' : `Most began between ${hour}:00 and ${hour + 1}:00 (${most})`;
-  return `${told}; ${early} of ${total} began between midnight and 6:00.`;
+    hours.length > 1
+      ? 'No hour stands out'
+      : `Most began between ${clock(hour)} and ${clock(hour + 1)} (${most})`;
+  return `${told}; ${early} of ${total} began between 00:00 and 06:00.`;
 }
 
 /** What the comparison may and may not be taken for, in sentences. */
