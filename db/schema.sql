@@ -9,10 +9,23 @@ CREATE TABLE `access_tokens` (
   `expires_at` datetime(3) NOT NULL,
   `revoked_at` datetime(3) DEFAULT NULL,
   `last_used_at` datetime(3) DEFAULT NULL,
+  `access` enum('read','change') NOT NULL DEFAULT 'change' COMMENT 'read: GET alone',
+  `families` longtext CHARACTER SET utf8mb4 COLLATE utf8mb4_bin DEFAULT NULL COMMENT 'families of routes that it opens; null: all' CHECK (json_valid(`families`)),
   PRIMARY KEY (`id`),
   UNIQUE KEY `access_tokens_digest` (`digest`),
   KEY `access_tokens_user` (`user_id`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `account_tokens` (
+  `digest` binary(32) NOT NULL COMMENT 'SHA-256 of the token in a link that was mailed',
+  `purpose` enum('invitation','password-reset') NOT NULL,
+  `subject` char(36) NOT NULL COMMENT 'id of the invitation, or of the person',
+  `created_at` datetime(3) NOT NULL,
+  `expires_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`digest`),
+  KEY `account_tokens_subject` (`purpose`,`subject`),
+  KEY `account_tokens_expiry` (`expires_at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_bin;
 
 CREATE TABLE `activities` (
   `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
@@ -91,6 +104,7 @@ CREATE TABLE `audit_log` (
   `id` bigint(20) unsigned NOT NULL COMMENT 'gapless: the place in the chain',
   `at` datetime(3) NOT NULL,
   `user_id` char(36) DEFAULT NULL,
+  `from_address` varchar(45) DEFAULT NULL COMMENT 'where a signed-in person acted from; null: Bittern itself, a monitor, a resident',
   `network_id` int(10) unsigned DEFAULT NULL,
   `action` varchar(60) NOT NULL,
   `subject` varchar(160) NOT NULL,
@@ -669,6 +683,23 @@ CREATE TABLE `interval_levels` (
   PRIMARY KEY (`station_id`,`starts_at`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
+CREATE TABLE `invitations` (
+  `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
+  `email` varchar(254) NOT NULL,
+  `name` varchar(160) NOT NULL,
+  `is_administrator` tinyint(1) NOT NULL DEFAULT 0,
+  `roles` longtext CHARACTER SET utf8mb4 COLLATE utf8mb4_bin NOT NULL COMMENT 'list of network (slug) and role, given when it is accepted' CHECK (json_valid(`roles`)),
+  `created_by` char(36) NOT NULL,
+  `created_at` datetime(3) NOT NULL,
+  `expires_at` datetime(3) NOT NULL COMMENT 'sending it again moves it on',
+  `mails` smallint(5) unsigned NOT NULL DEFAULT 0 COMMENT 'how often it was sent',
+  `last_mail_at` datetime(3) DEFAULT NULL,
+  `accepted_at` datetime(3) DEFAULT NULL,
+  `withdrawn_at` datetime(3) DEFAULT NULL,
+  PRIMARY KEY (`id`),
+  KEY `invitations_email` (`email`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
 CREATE TABLE `issued_summaries` (
   `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
   `network_id` int(10) unsigned NOT NULL,
@@ -709,6 +740,29 @@ CREATE TABLE `job_runs` (
   PRIMARY KEY (`job`,`slot`),
   KEY `job_runs_started` (`started_at`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `job_troubles` (
+  `job` varchar(40) NOT NULL,
+  `subject` varchar(120) NOT NULL COMMENT 'what the job could not do, such as "station 12"; nothing personal',
+  `network_id` int(10) unsigned DEFAULT NULL COMMENT 'whose operators are shown it; null: administrators only',
+  `failure` varchar(300) NOT NULL,
+  `times` int(10) unsigned NOT NULL,
+  `since` datetime(3) NOT NULL,
+  `last_at` datetime(3) NOT NULL,
+  `rests_until` datetime(3) NOT NULL COMMENT 'not tried before',
+  PRIMARY KEY (`job`,`subject`),
+  KEY `job_troubles_network` (`network_id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `known_origins` (
+  `user_id` char(36) NOT NULL,
+  `kind` enum('device','address','place') NOT NULL COMMENT 'place: a browser at an address',
+  `digest` binary(32) NOT NULL,
+  `first_at` datetime(3) NOT NULL,
+  `last_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`user_id`,`kind`,`digest`),
+  KEY `known_origins_age` (`last_at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_bin;
 
 CREATE TABLE `letter_templates` (
   `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
@@ -855,6 +909,7 @@ CREATE TABLE `networks` (
   `slug` varchar(64) NOT NULL,
   `name` varchar(160) NOT NULL,
   `created_at` datetime(3) NOT NULL,
+  `second_factor_required` tinyint(1) NOT NULL DEFAULT 0 COMMENT 'a browser without one is let in nowhere',
   PRIMARY KEY (`id`),
   UNIQUE KEY `networks_slug` (`slug`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
@@ -1013,6 +1068,16 @@ CREATE TABLE `report_forms` (
   PRIMARY KEY (`network_id`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
+CREATE TABLE `second_factors` (
+  `user_id` char(36) NOT NULL,
+  `sealed_secret` varbinary(255) NOT NULL COMMENT 'sealed under the personal-data key of the settings',
+  `created_at` datetime(3) NOT NULL,
+  `confirmed_at` datetime(3) DEFAULT NULL COMMENT 'null: begun, and not asked for yet',
+  `last_step` bigint(20) unsigned NOT NULL DEFAULT 0 COMMENT 'time step of the last code accepted: none is accepted twice',
+  `recovery_hashes` longtext NOT NULL COMMENT 'argon2 hashes of the recovery codes that are left' CHECK (json_valid(`recovery_hashes`)),
+  PRIMARY KEY (`user_id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_bin;
+
 CREATE TABLE `self_checks` (
   `station_id` int(10) unsigned NOT NULL,
   `checked_at` int(10) unsigned NOT NULL COMMENT 'epoch seconds UTC',
@@ -1030,6 +1095,7 @@ CREATE TABLE `sessions` (
   `created_at` datetime(3) NOT NULL,
   `from_address` varchar(45) DEFAULT NULL COMMENT 'network address that signed in, for its owner to recognise',
   `agent` varchar(255) DEFAULT NULL COMMENT 'what the browser said it is',
+  `last_seen_at` datetime(3) DEFAULT NULL COMMENT 'to the minute; null: not since it began',
   PRIMARY KEY (`id_digest`),
   KEY `sessions_user` (`user_id`),
   KEY `sessions_expiry` (`expires_at`)

@@ -3,6 +3,7 @@ import { schedule } from 'node-cron';
 import { closeDb } from '#db/client';
 import { untilSchemaIsCurrent } from '#db/currentSchema';
 import { log } from '#lib/config/log';
+import { warnOfAuditGrant } from '#lib/services/audit/warnOfGrant';
 import { aggregate } from './jobs/aggregate';
 import { composeAlerts } from './jobs/composeAlerts';
 import { completeEndedPeriods } from './jobs/completePeriods';
@@ -13,6 +14,7 @@ import { importFiles } from './jobs/importFiles';
 import { judgeLimits } from './jobs/judgeLimits';
 import { keepComplaints } from './jobs/keepComplaints';
 import { runLoop, type LoopSettings } from './jobs/loop';
+import { mailAuditHead } from './jobs/mailAuditHead';
 import { makeSummaries } from './jobs/makeSummaries';
 import { remindOfCalibrations } from './jobs/remindCalibrations';
 import { remindOfComplaints } from './jobs/remindComplaints';
@@ -52,6 +54,7 @@ const SLOT_JOBS: SlotJob[] = [
   { name: 'remind-calibrations', slotMinutes: 60, run: remindOfCalibrations },
   { name: 'draft-summaries', slotMinutes: 15, run: draftSummaries },
   { name: 'remind-complaints', slotMinutes: 60, run: remindOfComplaints },
+  { name: 'mail-audit-head', slotMinutes: 24 * 60, run: mailAuditHead },
   { name: 'keep-complaints', slotMinutes: 60, run: keepComplaints },
 ];
 
@@ -62,6 +65,8 @@ await untilSchemaIsCurrent({
   log().fatal({ err: error }, 'worker cannot start: the schema is not as it must be');
   process.exit(1);
 });
+
+await warnOfAuditGrant();
 
 const stop = new AbortController();
 // Every loop that rests listens to it.

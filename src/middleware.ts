@@ -1,5 +1,6 @@
 import { randomUUID } from 'node:crypto';
 import { defineMiddleware } from 'astro:middleware';
+import { actingFrom } from '#lib/auth/actingFrom';
 import { userOfRequest } from '#lib/auth/requestUser';
 import { problemResponse } from '#lib/http/problem';
 import { problemOf } from '#lib/http/route';
@@ -26,7 +27,7 @@ export const onRequest = defineMiddleware(async (context, next) => {
   } catch (error) {
     return withHeaders(refusal(error, context.url.pathname), context.locals.requestId);
   }
-  return withHeaders(await next(), context.locals.requestId);
+  return withHeaders(await actingFrom(context.clientAddress, next), context.locals.requestId);
 });
 
 function refusal(error: unknown, path: string): Response {

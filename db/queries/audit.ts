@@ -1,4 +1,5 @@
 import { createHash } from 'node:crypto';
+import { originAddress } from './auditOrigin';
 import { pool, type Connection } from './connection';
 
 /** One act worth remembering. For personal tables `detail` names fields, never values. */
@@ -15,6 +16,8 @@ export interface AuditEntry {
 interface ChainedEntry extends AuditEntry {
   id: number;
   atIso: string;
+  /** Where a signed-in person acted from. */
+  fromAddress: string | null;
 }
 
 /**
@@ -28,11 +31,14 @@ export async function appendAudit(entry: AuditEntry, transaction: Connection): P
     .first('last_id', 'last_digest');
   const at = new Date();
   const id = Number(head.last_id) + 1;
-  const digest = auditDigest(head.last_digest, { ...entry, id, atIso: at.toISOString() });
+  // Bittern itself has no address, and a resident's is not to be kept.
+  const fromAddress = entry.userId === null ? null : originAddress();
+  const digest = auditDigest(head.last_digest, { ...entry, id, atIso: at.toISOString(), fromAddress });
   await transaction('audit_log').insert({
     id,
     at,
     user_id: entry.userId,
+    from_address: fromAddress,
     network_id: entry.networkId,
     action: entry.action,
     subject: entry.subject,
@@ -60,10 +66,18 @@ export async function findAuditBreak(conn: Connection = pool()): Promise<number 
   return previous.equals(head.last_digest) ? null : expectedId;
 }
 
+/** The digest of the act at a place of the chain, in hexadecimal; null where there is none. Place 0 is the beginning, before any act. */
+export async function auditDigestAt(position: number, conn: Connection = pool()): Promise<string | null> {
+  if (position === 0) return Buffer.alloc(32).toString('hex');
+  const row: { digest: Buffer } | undefined = await conn('audit_log').where({ id: position }).first('digest');
+  return row?.digest.toString('hex') ?? null;
+}
+
 interface AuditRow {
   id: number;
   at: Date;
   user_id: string | null;
+  from_address: string | null;
   network_id: number | null;
   action: string;
   subject: string;
@@ -77,6 +91,7 @@ function entryOf(row: AuditRow): ChainedEntry {
     id: Number(row.id),
     atIso: row.at.toISOString(),
     userId: row.user_id,
+    fromAddress: row.from_address,
     networkId: row.network_id,
     action: row.action,
     subject: row.subject,
@@ -85,7 +100,9 @@ function entryOf(row: AuditRow): ChainedEntry {
 }
 
 function auditDigest(previous: Buffer, entry: ChainedEntry): Buffer {
-  const { id, atIso, userId, networkId, action, subject, detail } = entry;
-  const text = JSON.stringify([id, atIso, userId, networkId, action, subject, detail]);
+  const { id, atIso, userId, networkId, action, subject, detail, fromAddress } = entry;
+  // Acts from before addresses were noted have digests without one.
+  const from = fromAddress === null ? [] : [fromAddress];
+  const text = JSON.stringify([id, atIso, userId, networkId, action, subject, detail, ...from]);
   return createHash('sha256').update(previous).update(text).digest();
 }

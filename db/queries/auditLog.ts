@@ -1,3 +1,4 @@
+import type { Knex } from 'knex';
 import { pool, type Connection } from './connection';
 
 /** An act as the trail shows it. */
@@ -5,6 +6,8 @@ export interface AuditRecord {
   id: number;
   at: Date;
   userId: string | null;
+  /** Where a signed-in person acted from; null: not in a request of one. */
+  fromAddress: string | null;
   networkId: number | null;
   action: string;
   subject: string;
@@ -17,13 +20,18 @@ export interface AuditFilter {
   networkId?: number | undefined;
   action?: string | undefined;
   subject?: string | undefined;
+  /** Stands in what it was done to, in its details, or is the address it was done from. */
+  text?: string | undefined;
+  /** Half-open: `fromAt <= at < toAt`. */
+  fromAt?: Date | undefined;
+  toAt?: Date | undefined;
   /** Only acts before this one. */
   beforeId?: number | undefined;
 }
 
 /** Acts that fit, newest first, at most `limit`. */
 export async function listAudit(
-  { userId, networkId, action, subject, beforeId }: AuditFilter,
+  { userId, networkId, action, subject, text, fromAt, toAt, beforeId }: AuditFilter,
   limit: number,
   conn: Connection = pool(),
 ): Promise<AuditRecord[]> {
@@ -32,17 +40,29 @@ export async function listAudit(
   if (networkId !== undefined) void query.where({ network_id: networkId });
   if (action !== undefined) void query.where({ action });
   if (subject !== undefined) void query.where({ subject });
+  if (text !== undefined) void query.where((either) => holdsText(either, text));
+  if (fromAt !== undefined) void query.where('at', '>=', fromAt);
+  if (toAt !== undefined) void query.where('at', '<', toAt);
   if (beforeId !== undefined) void query.where('id', '<', beforeId);
   const rows: AuditLogRow[] = await query.select({
     id: 'id',
     at: 'at',
     userId: 'user_id',
+    fromAddress: 'from_address',
     networkId: 'network_id',
     action: 'action',
     subject: 'subject',
     detail: 'detail',
   });
   return rows.map((row) => ({ ...row, id: Number(row.id), detail: detailOf(row.detail) }));
+}
+
+function holdsText(query: Knex.QueryBuilder, text: string): void {
+  const pattern = `%${text.replace(/[\\%_]/g, '\\$&')}%`;
+  void query
+    .where('subject', 'like', pattern)
+    .orWhereRaw('detail COLLATE utf8mb4_uca1400_ai_ci LIKE ?', [pattern])
+    .orWhere('from_address', text);
 }
 
 /** Every kind of act that has happened, by name. */

@@ -5,6 +5,7 @@ import { config } from '#lib/config/index';
 import { log } from '#lib/config/log';
 import { closeDb } from '#db/client';
 import { untilSchemaIsCurrent } from '#db/currentSchema';
+import { warnOfAuditGrant } from '#lib/services/audit/warnOfGrant';
 import { BodyPace } from './bodyPace';
 import { makeFront, type AstroHandler } from './front';
 import { behindGate, type Gate } from './maintenance';
@@ -55,6 +56,7 @@ untilSchemaIsCurrent({
 }).then(
   () => {
     gate.isOpen = true;
+    void warnOfAuditGrant();
   },
   (error: unknown) => {
     log().fatal({ err: error }, 'web cannot start: the schema is not as it must be');

@@ -40,7 +40,7 @@ async function start(): Promise<void> {
   const taken = await takenPorts(settings);
   if (taken.length > 0) throw new SettingsError(taken);
 
-  await startDatabase(settings);
+  const account = await startDatabase(settings);
   const people = await hasPeople();
   if (isEmpty && !people) await ensureFirstAdministrator(settings.firstAdministrator);
   if (isDemo) requireSafeDemo(settings);
@@ -51,21 +51,29 @@ async function start(): Promise<void> {
   }
   await closeDb();
 
-  run(settings, 'worker', [...WORKER_ARGUMENTS, 'ingest/worker.ts']);
-  run(settings, 'web', [...WEB_ARGUMENTS, 'ops/http/server.ts']);
+  run(settings, 'worker', [...WORKER_ARGUMENTS, 'ingest/worker.ts'], account);
+  run(settings, 'web', [...WEB_ARGUMENTS, 'ops/http/server.ts'], account);
   await untilAnswers(`http://${settings.host}:${settings.port}/healthz`, 60_000);
   if (isDemo) run(settings, 'monitors', ['--import', 'tsx', 'ops/demo/monitors.ts']);
   tell(settings, isDemo);
 }
 
-async function startDatabase(settings: Config): Promise<void> {
-  if (settings.database.isOwn) {
-    const database = new OwnDatabase(settings);
-    stoppers.push(() => database.stop());
-    await database.start();
+/** @returns the settings by which web and worker reach the database; of our own by an account that may not change the audit trail. */
+async function startDatabase(settings: Config): Promise<Record<string, string>> {
+  const own = settings.database.isOwn ? new OwnDatabase(settings) : null;
+  if (own) {
+    stoppers.push(() => own.stop());
+    await own.start();
   }
   await ensureDatabase(settings);
   await migrateUp();
+  const account = await own?.makeAppAccount();
+  if (!account) return {};
+  return {
+    BITTERN_DB_USER: account.user,
+    BITTERN_DB_PASSWORD: account.password,
+    BITTERN_DB_MIGRATE: 'false',
+  };
 }
 
 async function startStandIns(settings: Config): Promise<void> {

@@ -1,6 +1,7 @@
-import { join } from 'node:path';
+import { join, resolve } from 'node:path';
 import mysql from 'mysql2/promise';
 import type { Config } from '#lib/config/config';
+import { makeAppAccount } from '#ops/database/appAccount';
 import { startDatabase, type DatabaseServer } from '#ops/database/server';
 
 const RESTART_MS = 500;
@@ -18,6 +19,21 @@ export class OwnDatabase {
     const server = await startDatabase({ directory, ...database, bufferPoolMiB: 512 });
     this.server = server;
     server.process.once('exit', () => this.isStopping || this.startAgain());
+  }
+
+  /** Makes the account that web and worker use, which may add to the audit trail and not change it; the tables must be there. */
+  async makeAppAccount(): Promise<{ user: string; password: string }> {
+    const { dataDir, database } = this.config;
+    const root = await mysql.createConnection({
+      socketPath: join(resolve(dataDir, 'mariadb'), 'socket'),
+      user: 'root',
+      password: database.password,
+    });
+    try {
+      return await makeAppAccount(root, { owner: database.user, database: database.name });
+    } finally {
+      await root.end();
+    }
   }
 
   private startAgain(): void {

@@ -43,6 +43,8 @@ export interface Config {
     password: string | null;
     from: string;
   };
+  /** Who is sent the head of the audit trail each day. */
+  auditHeadTo: string | null;
   /** Whether webhooks may lead to this machine itself, by http too; else https to public addresses only. */
   webhooksMayLoopBack: boolean;
   mapStyleUrls: { light: string; dark: string };
@@ -141,6 +143,7 @@ export function parseConfig(environment: Record<string, string | undefined>): Co
       email: settings.BITTERN_ADMIN_EMAIL ?? null,
       password: settings.BITTERN_ADMIN_PASSWORD ?? null,
     },
+    auditHeadTo: settings.BITTERN_AUDIT_HEAD_TO ?? null,
     webhooksMayLoopBack: settings.BITTERN_WEBHOOKS_LOOPBACK,
     personalDataKey: Buffer.from(settings.BITTERN_PERSONAL_DATA_KEY, 'hex'),
     session: { idleHours: settings.BITTERN_SESSION_IDLE_HOURS, maxDays: settings.BITTERN_SESSION_MAX_DAYS },

@@ -86,6 +86,7 @@ export const settingsSchema = z.object({
   BITTERN_SMTP_PASSWORD: z.string().optional(),
   BITTERN_MAIL_FROM: z.string().default('Bittern <bittern@merrow.example>'),
 
+  BITTERN_AUDIT_HEAD_TO: z.email('must be an e-mail address').optional(),
   BITTERN_WEBHOOKS_LOOPBACK: isTrue('false'),
 
   BITTERN_STANDINS: isTrue('true'),

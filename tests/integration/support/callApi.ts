@@ -1,4 +1,5 @@
 import type { APIContext, APIRoute } from 'astro';
+import { actingFrom } from '#lib/auth/actingFrom';
 import { userOfRequest } from '#lib/auth/requestUser';
 import { problemResponse } from '#lib/http/problem';
 import { problemOf } from '#lib/http/route';
@@ -34,7 +35,7 @@ export async function callApi(method: string, path: string, call: Call = {}): Pr
   } catch (error) {
     return problemResponse(problemOf(error, url.pathname));
   }
-  return found.handler(context);
+  return actingFrom(context.clientAddress, async () => found.handler(context));
 }
 
 /** Every route file’s pattern, such as `/api/v1/networks/[network]/stations`. */

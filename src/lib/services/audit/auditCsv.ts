@@ -5,7 +5,7 @@ import { auditTrail, type Act } from './trail';
 /** Acts in one file at most; the newest of those asked for. */
 export const MOST_CSV_ACTS = 20_000;
 
-const HEADER = ['id', 'at', 'person', 'network', 'action', 'subject', 'details'];
+const HEADER = ['id', 'at', 'person', 'address', 'network', 'action', 'subject', 'details'];
 
 /** The acts that fit as CSV, newest first; times in UTC. */
 export async function auditCsv(filter: AuditFilter): Promise<string> {
@@ -13,11 +13,12 @@ export async function auditCsv(filter: AuditFilter): Promise<string> {
   return csvText([HEADER, ...acts.map(rowOf)]);
 }
 
-function rowOf({ id, at, person, network, action, subject, details }: Act) {
+function rowOf({ id, at, person, fromAddress, network, action, subject, details }: Act) {
   return [
     id,
     at.toISOString(),
     person?.name ?? null,
+    fromAddress,
     network?.slug ?? null,
     action,
     subject,

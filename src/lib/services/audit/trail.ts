@@ -16,6 +16,8 @@ export interface Act {
   at: Date;
   /** Null: Bittern itself, or a monitor. */
   person: { id: string; name: string } | null;
+  /** Where the person acted from. */
+  fromAddress: string | null;
   network: { slug: string; name: string } | null;
   action: string;
   /** In words; a person is named, as long as there is one of this id. */
@@ -58,13 +60,14 @@ function actOf(
   names: ReadonlyMap<string, string>,
   networks: ReadonlyMap<number, { slug: string; name: string }>,
 ): Act {
-  const { id, at, userId, networkId, action, subject, detail } = record;
+  const { id, at, userId, fromAddress, networkId, action, subject, detail } = record;
   const personId = /^person (\S+)$/.exec(subject)?.[1];
   const isKnown = personId !== undefined && names.has(personId);
   return {
     id,
     at,
     person: userId === null ? null : { id: userId, name: names.get(userId) ?? userId },
+    fromAddress,
     network: networkId === null ? null : (networks.get(networkId) ?? null),
     action,
     subject: isKnown ? `person ${names.get(personId)}` : subject,

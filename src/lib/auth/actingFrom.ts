@@ -1,0 +1,1 @@
+export { actingFrom } from '#db/queries/auditOrigin';
