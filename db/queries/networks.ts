@@ -54,6 +54,23 @@ export async function renameNetwork(id: number, name: string, conn: Connection):
   await conn('networks').where({ id }).update({ name });
 }
 
+/** Ids of networks that let nobody in from a browser without a second factor. */
+export async function listSecondFactorNetworks(conn: Connection = pool()): Promise<number[]> {
+  return conn('networks').where({ second_factor_required: true }).pluck('id');
+}
+
+/** Whether a network asks for a second factor from now on; answers whether that is a change. */
+export async function requireSecondFactor(
+  id: number,
+  isRequired: boolean,
+  conn: Connection,
+): Promise<boolean> {
+  const changed = await conn('networks')
+    .where({ id, second_factor_required: !isRequired })
+    .update({ second_factor_required: isRequired });
+  return changed > 0;
+}
+
 /** Adds settings from `effectiveFromSec` on, or replaces those that begin at that very instant. */
 export async function insertSettings(
   networkId: number,

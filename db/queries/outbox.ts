@@ -5,12 +5,14 @@ export interface NewMail {
   messageId: string;
   /** One message a cause and recipient: a second one with the same key is not added. */
   dedupeKey: string;
-  networkId: number;
+  /** Null: of no network, such as what concerns a person's account. */
+  networkId: number | null;
   kind: string;
   recipient: string;
   subject: string;
-  text: string;
-  html: string;
+  /** Null, as `html`: resolved by kind at sending, so that no secret stands here. */
+  text: string | null;
+  html: string | null;
 }
 
 /** A message that this sender holds until its lease ends. */
@@ -51,7 +53,13 @@ export async function insertMail(mail: NewMail, transaction: Connection): Promis
   }
 }
 
-/** Takes the message that is due longest and that nobody holds, for `leaseSec` seconds. Two senders never get the same one. */
+/** Nothing waits longer between attempts: what would, was put off by a clock that was ahead. */
+const LONGEST_WAIT_MS = 2 * 3_600_000;
+
+/**
+ * Takes the message that is due longest and that nobody holds, for `leaseSec` seconds. Two senders never get the same one. Times that lie
+ * further ahead than any wait or lease count as past.
+ */
 export async function leaseDueMail(
   holder: string,
   now: Date,
@@ -61,8 +69,17 @@ export async function leaseDueMail(
     async (transaction) => {
       const mail: LeasedMail | undefined = await transaction('outbox')
         .where({ state: 'waiting' })
-        .where('next_attempt_at', '<=', now)
-        .where((query) => query.whereNull('leased_until').orWhere('leased_until', '<', now))
+        .where((query) =>
+          query
+            .where('next_attempt_at', '<=', now)
+            .orWhere('next_attempt_at', '>', new Date(now.getTime() + LONGEST_WAIT_MS)),
+        )
+        .where((query) =>
+          query
+            .whereNull('leased_until')
+            .orWhere('leased_until', '<', now)
+            .orWhere('leased_until', '>', new Date(now.getTime() + leaseSec * 1000)),
+        )
         .orderBy(['next_attempt_at', 'id'])
         .forUpdate()
         .skipLocked()
@@ -118,4 +135,9 @@ export async function markMailFailed(
       last_error: error.slice(0, 500),
       ...(nextAttemptAt ? { next_attempt_at: nextAttemptAt } : { state: 'dead' }),
     });
+}
+
+/** Forgets a message that this sender holds, as if it had never been asked for. */
+export async function deleteMail(id: number, conn: Connection): Promise<void> {
+  await conn('outbox').where({ id, state: 'waiting' }).delete();
 }

@@ -33,10 +33,19 @@ export async function insertSession(
   });
 }
 
-export async function findSession(id: string, conn: Connection = pool()): Promise<SessionRow | undefined> {
+export async function findSession(
+  id: string,
+  conn: Connection = pool(),
+): Promise<(SessionRow & { lastSeenAt: Date | null }) | undefined> {
   return conn('sessions')
     .where({ id_digest: sessionDigest(id) })
-    .first({ userId: 'user_id', expiresAt: 'expires_at', endsAt: 'ends_at' });
+    .first({ userId: 'user_id', expiresAt: 'expires_at', endsAt: 'ends_at', lastSeenAt: 'last_seen_at' });
+}
+
+export async function noteSessionSeen(id: string, at: Date, conn: Connection = pool()): Promise<void> {
+  await conn('sessions')
+    .where({ id_digest: sessionDigest(id) })
+    .update({ last_seen_at: at });
 }
 
 export async function moveSessionExpiry(
@@ -63,6 +72,8 @@ export async function deleteSessionsOf(userId: string, conn: Connection = pool()
 export interface SessionEntry extends SessionOrigin {
   idDigest: string;
   createdAt: Date;
+  /** To the minute. */
+  lastSeenAt: Date;
   expiresAt: Date;
 }
 
@@ -77,6 +88,7 @@ export async function listSessions(userId: string, conn: Connection = pool()): P
       address: 'from_address',
       agent: 'agent',
       createdAt: 'created_at',
+      lastSeenAt: conn.raw('COALESCE(last_seen_at, created_at)'),
       expiresAt: 'expires_at',
     });
 }

@@ -42,6 +42,18 @@ export async function findCredentials(
   return user && { user, passwordHash: row.passwordHash };
 }
 
+/** The same of a person by id. */
+export async function findCredentialsById(
+  id: string,
+  conn: Connection = pool(),
+): Promise<{ user: UserRow; passwordHash: string } | undefined> {
+  const row = await conn('users')
+    .where({ id })
+    .first({ ...USER_COLUMNS, passwordHash: 'password_hash' });
+  const user = userOf(row);
+  return user && { user, passwordHash: row.passwordHash };
+}
+
 export async function listUsers(conn: Connection = pool()): Promise<UserRow[]> {
   const rows = await conn('users').orderBy('name').select(USER_COLUMNS);
   return rows.map((row) => ({ ...row, isAdministrator: Boolean(row.isAdministrator) }));

@@ -62,7 +62,8 @@ async function readersToken(networkId: number): Promise<string> {
     );
     await insertMembership({ userId, networkId, role: 'regulator' }, transaction);
     const expiresAt = new Date(Date.now() + 3_600_000);
-    return insertAccessToken({ userId, name: 'bench', expiresAt }, transaction);
+    const token = { userId, name: 'bench', expiresAt, access: 'read', families: null } as const;
+    return insertAccessToken(token, transaction);
   });
 }
 

@@ -2,6 +2,7 @@ import type { APIContext } from 'astro';
 import { findStation, type StationRow } from '#db/queries/stations';
 import { findStationByToken, noteTokenUse, type TokenStation } from '#db/queries/stationTokens';
 import { notAllowed, notFound, Problem, signInFirst } from '#lib/http/problem';
+import { factorFirst } from './factorWanted';
 import { enterNetwork, type NetworkAccess } from './networkAccess';
 import { bearerToken } from './requestUser';
 import type { Role } from './roles';
@@ -13,10 +14,11 @@ export function requireUser(context: Pick<APIContext, 'locals'>): SignedInUser {
   return context.locals.user;
 }
 
-/** The signed-in administrator. @throws {Problem} 401, 403 */
+/** The signed-in administrator, with the second factor where a network asks for one. @throws {Problem} 401, 403 */
 export function requireAdministrator(context: Pick<APIContext, 'locals'>): SignedInUser {
   const user = requireUser(context);
   if (!user.isAdministrator) throw notAllowed('Only an administrator may do this.');
+  if (user.administrationIsClosed) throw factorFirst();
   return user;
 }
 

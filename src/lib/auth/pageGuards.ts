@@ -1,6 +1,7 @@
 import type { AstroGlobal } from 'astro';
 import { Problem } from '#lib/http/problem';
-import { requireSession } from './guards';
+import { FACTOR_FIRST } from './factorWanted';
+import { requireAdministrator, requireSession } from './guards';
 import { enterNetwork, type NetworkAccess } from './networkAccess';
 import { ALL_ROLES, type Role } from './roles';
 import type { SignedInUser } from './sessions';
@@ -28,7 +29,8 @@ export async function pageSession(
 export async function pageAdministrator(astro: AstroGlobal): Promise<SignedInUser | Response> {
   const session = await pageSession(astro);
   if (session instanceof Response) return session;
-  return session.user.isAdministrator ? session.user : astro.rewrite('/404');
+  if (!session.user.isAdministrator) return astro.rewrite('/404');
+  return orRefusal(astro, async () => requireAdministrator(astro));
 }
 
 /** For a page's frontmatter: the person inside a network, or the response to return instead. */
@@ -41,13 +43,16 @@ export async function pageNetwork(
   return orRefusal(astro, () => enterNetwork(user, astro.params['network'] ?? '', roles));
 }
 
-/** Runs a step of a page; a refusal becomes the page that tells it. */
+/** Runs a step of a page; a refusal becomes the page that tells it, or the one that puts it right. */
 export async function orRefusal<T>(astro: AstroGlobal, step: () => Promise<T>): Promise<T | Response> {
   try {
     return await step();
   } catch (error) {
     if (!(error instanceof Problem)) throw error;
     if (error.status === 404) return astro.rewrite('/404');
+    if (error.code === FACTOR_FIRST) {
+      return astro.redirect(`/account/second-factor?next=${encodeURIComponent(astro.url.pathname)}`, 303);
+    }
     return astro.rewrite(
       `/refused?status=${error.status}&detail=${encodeURIComponent(error.detail ?? error.title)}`,
     );

@@ -5,7 +5,10 @@ import { changePerson, disablePerson, enablePerson, type PersonChange } from '#l
 import { findPerson, type Person } from '#lib/services/people/list';
 import { unknownNetworks } from '#lib/services/people/memberships';
 import { resetPassword } from '#lib/services/people/passwords';
+import { endFactor } from '#lib/services/people/secondFactor';
+import { hashChosen } from './chosenPassword';
 import { makeFirstPassword } from './firstPassword';
+import { contextOfNew, passwordContextOf } from './passwordContext';
 import { hashPassword } from './passwords';
 
 const REFUSALS: Record<Exclude<PersonChange, 'changed'>, string> = {
@@ -32,7 +35,10 @@ export async function addByAdministrator(
 ): Promise<{ id: string; password: string | null }> {
   await requireNetworks(input.roles);
   const made = password ? null : makeFirstPassword();
-  const adding = await addPerson(input, await hashPassword(password ?? made ?? ''), byUserId);
+  const hash = password
+    ? await hashChosen(password, await contextOfNew(input), 'password')
+    : await hashPassword(made ?? '');
+  const adding = await addPerson(input, hash, byUserId);
   if (adding.outcome === 'added') return { id: adding.id, password: made };
   throw invalidFields([
     { field: 'email', message: 'belongs to somebody already; disabled people count, too' },
@@ -85,7 +91,10 @@ export async function resetByAdministrator(
     throw refused('yourself', 'Your own password is changed on your own page, with the current one.');
   }
   const made = chosen ? null : makeFirstPassword();
-  await resetPassword(person.user.id, await hashPassword(chosen ?? made ?? ''), byUserId);
+  const hash = chosen
+    ? await hashChosen(chosen, await passwordContextOf(person.user), 'password')
+    : await hashPassword(made ?? '');
+  await resetPassword(person.user.id, hash, byUserId);
   return made;
 }
 
@@ -94,7 +103,16 @@ export function rolesGiven({ roles }: Person): RoleGiven[] {
   return roles.map(({ network, role }) => ({ network: network.slug, role }));
 }
 
-async function requireNetworks(roles: readonly RoleGiven[]): Promise<void> {
+/** Takes a person's second factor away, for who lost the authenticator and the codes. @throws {Problem} 404, 409 */
+export async function resetFactor(person: Person, byUserId: string): Promise<void> {
+  if (person.user.id === byUserId) {
+    throw refused('yourself', 'Your own second factor is changed on your own page. Nothing was changed.');
+  }
+  if (!(await endFactor(person.user, byUserId))) throw notFound('There is no second factor to take away.');
+}
+
+/** Refuses roles that name no network. @throws {Problem} 422 */
+export async function requireNetworks(roles: readonly RoleGiven[]): Promise<void> {
   const unknown = await unknownNetworks(roles);
   if (unknown.length > 0) {
     throw invalidFields([{ field: 'roles', message: `name no network: ${unknown.join(', ')}` }]);

@@ -1,15 +1,16 @@
 import type { APIContext } from 'astro';
-import { findUserIdByAccessToken } from '#db/queries/accessTokens';
+import { findAccessToken } from '#db/queries/accessTokens';
 import { findUserById } from '#db/queries/users';
 import { sessionCookieName, userOfSession, type SignedInUser } from './sessions';
+import { requireScope } from './tokenScope';
 
-/** The person whom a request's access token or session cookie names, or null. */
+/** The person whom a request's access token or session cookie names, or null. @throws {Problem} 403 for what the token is not for. */
 export async function userOfRequest({
   request,
   cookies,
 }: Pick<APIContext, 'request' | 'cookies'>): Promise<SignedInUser | null> {
   const token = bearerToken(request);
-  if (token !== null) return token.startsWith('bp_') ? userOfAccessToken(token) : null;
+  if (token !== null) return token.startsWith('bp_') ? userOfAccessToken(token, request) : null;
   const sessionId = cookies.get(sessionCookieName())?.value;
   return sessionId ? userOfSession(sessionId) : null;
 }
@@ -19,9 +20,10 @@ export function bearerToken(request: { headers: Pick<Headers, 'get'> }): string 
   return /^Bearer +([\w-]{1,200})$/i.exec(request.headers.get('authorization') ?? '')?.[1] ?? null;
 }
 
-async function userOfAccessToken(token: string): Promise<SignedInUser | null> {
-  const userId = await findUserIdByAccessToken(token, new Date());
-  const user = userId === undefined ? undefined : await findUserById(userId);
+async function userOfAccessToken(secret: string, request: Request): Promise<SignedInUser | null> {
+  const token = await findAccessToken(secret, new Date());
+  const user = token && (await findUserById(token.userId));
   if (!user || user.disabledAt) return null;
+  requireScope(token, request.method, new URL(request.url).pathname);
   return { id: user.id, email: user.email, name: user.name, isAdministrator: user.isAdministrator };
 }

@@ -1,5 +1,6 @@
 import { Lucia, TimeSpan } from 'lucia';
 import { config } from '#lib/config/index';
+import { listSecondFactorNetworks } from '#db/queries/networks';
 import { type SessionOrigin } from '#db/queries/sessions';
 import { sessionStore } from './sessionStore';
 
@@ -9,6 +10,10 @@ export interface SignedInUser {
   email: string;
   name: string;
   isAdministrator: boolean;
+  /** Signed in from a browser without a second factor: networks that ask for one are closed. */
+  lacksSecondFactor?: boolean;
+  /** An administrator whom a network keeps out so may not administer either. */
+  administrationIsClosed?: boolean;
 }
 
 declare module 'lucia' {
@@ -27,7 +32,7 @@ export interface SessionCookie {
 }
 
 /**
- * Everything the rest of the program knows of sessions; Lucia stays behind these four functions.
+ * Everything the rest of the program knows of sessions; Lucia stays behind these functions.
  */
 export async function startSession(
   userId: string,
@@ -40,7 +45,18 @@ export async function startSession(
 /** The person whose session this is, or null when it is unknown, over or the person may no longer sign in. */
 export async function userOfSession(sessionId: string): Promise<SignedInUser | null> {
   const { user } = await lucia().validateSession(sessionId);
-  return user && { id: user.id, email: user.email, name: user.name, isAdministrator: user.isAdministrator };
+  if (!user) return null;
+  const { id, email, name, isAdministrator, lacksSecondFactor } = user;
+  const administrationIsClosed =
+    isAdministrator && lacksSecondFactor === true && (await listSecondFactorNetworks()).length > 0;
+  return {
+    id,
+    email,
+    name,
+    isAdministrator,
+    lacksSecondFactor: lacksSecondFactor ?? true,
+    administrationIsClosed,
+  };
 }
 
 /** Ends a session and answers the cookie that clears it from the browser. */
@@ -65,7 +81,12 @@ function makeLucia() {
   return new Lucia(sessionStore, {
     sessionExpiresIn: new TimeSpan(config().session.idleHours, 'h'),
     sessionCookie: { name: sessionCookieName(), attributes: { secure: isSecure() } },
-    getUserAttributes: ({ email, name, isAdministrator }) => ({ email, name, isAdministrator }),
+    getUserAttributes: ({ email, name, isAdministrator, lacksSecondFactor }) => ({
+      email,
+      name,
+      isAdministrator,
+      lacksSecondFactor,
+    }),
   });
 }
 
@@ -74,6 +95,11 @@ function isSecure(): boolean {
 }
 
 function cookie(value: string, maxAgeSec: number): SessionCookie {
+  return cookieNamed(sessionCookieName(), value, maxAgeSec);
+}
+
+/** A cookie that no script reads and that other sites' forms do not bring along. */
+export function cookieNamed(name: string, value: string, maxAgeSec: number): SessionCookie {
   const attributes = {
     httpOnly: true,
     sameSite: 'lax',
@@ -81,5 +107,5 @@ function cookie(value: string, maxAgeSec: number): SessionCookie {
     secure: isSecure(),
     maxAge: maxAgeSec,
   } as const;
-  return { name: sessionCookieName(), value, attributes };
+  return { name, value, attributes };
 }

@@ -1,21 +1,12 @@
 import { z } from 'zod';
-import { newAccessTokenSchema, ownPasswordChangeSchema } from './people';
+import { accessTokenSchema, newAccessTokenSchema } from './accessTokens';
+import { ownPasswordChangeSchema } from './people';
 import { registerRoute } from './registry';
-
-/** An access token as its owner sees it: never the secret. */
-export const accessTokenSchema = z.object({
-  id: z.number().int(),
-  name: z.string(),
-  createdAt: z.string(),
-  expiresAt: z.string(),
-  lastUsedAt: z.string().nullable(),
-  revokedAt: z.string().nullable(),
-});
-export type AccessToken = z.output<typeof accessTokenSchema>;
 
 export const sessionSchema = z.object({
   id: z.string(),
   createdAt: z.string(),
+  lastSeenAt: z.string().describe('To the minute'),
   expiresAt: z.string(),
   address: z.string().nullable(),
   agent: z.string().nullable(),
@@ -69,7 +60,8 @@ registerRoute({
   access: 'person',
   method: 'post',
   path: '/api/v1/me/tokens',
-  summary: 'Make an access token with the caller’s roles (not with an access token)',
+  summary:
+    'Make an access token with the caller’s roles, as far as its scope goes (not with an access token)',
   request: { body: jsonOf(newAccessTokenSchema) },
   responses: {
     201: { description: 'The token, told this once', ...jsonOf(z.object({ token: z.string() })) },

@@ -4,30 +4,32 @@ import { registerRoute } from './registry';
 
 export const ROLES = ['operator', 'liaison', 'regulator'] as const;
 
+/** A password exactly as it was given: nothing is cut off or folded. The rules for new ones know whose it is, and are judged later. */
+const givenPassword = z.string().min(1, 'must not be empty').max(5000, 'must have at most 1,000 characters');
+
 export const signInSchema = z.object({
   email: z.string().trim().min(1, 'must not be empty').max(254),
-  password: z.string().trim().min(1, 'must not be empty').max(1000),
+  password: givenPassword,
+  code: z
+    .string()
+    .trim()
+    .max(100)
+    .optional()
+    .describe('Of the authenticator, or a recovery code: asked for with the problem `second-factor-needed`'),
 });
-
-/** Spaces around a password are left out here as when signing in: they come from copying. */
-export const newPasswordSchema = z
-  .string()
-  .trim()
-  .min(12, 'must have at least 12 characters')
-  .max(1000, 'must have at most 1,000 characters');
 
 /** A role in a network, by its slug. */
 export const membershipSchema = z.object({ network: z.string(), role: z.enum(ROLES) });
 export type RoleGiven = z.output<typeof membershipSchema>;
 
-const MOST_ROLES = 3000;
+export const MOST_ROLES = 3000;
 
 export const newPersonSchema = z.object({
   name: shortText,
   email: emailAddress,
   isAdministrator: z.boolean().default(false),
   roles: z.array(membershipSchema).max(MOST_ROLES).default([]),
-  password: newPasswordSchema.optional().describe('Left out, one is made and answered once'),
+  password: givenPassword.optional().describe('Left out, one is made and answered once'),
 });
 export type NewPerson = z.output<typeof newPersonSchema>;
 
@@ -50,22 +52,13 @@ export const personPatchSchema = personChangesSchema
 export type PersonPatch = z.output<typeof personPatchSchema>;
 
 export const ownPasswordChangeSchema = z.object({
-  currentPassword: z.string().trim().min(1, 'must not be empty').max(1000),
-  newPassword: newPasswordSchema,
+  currentPassword: givenPassword,
+  newPassword: givenPassword,
 });
 export type OwnPasswordChange = z.output<typeof ownPasswordChangeSchema>;
 
 export const passwordResetSchema = z.object({
-  password: newPasswordSchema.optional().describe('Left out, one is made and answered once'),
-});
-
-/** How long an access token may hold, in days. */
-export const ACCESS_TOKEN_DAYS = [7, 30, 90, 365] as const;
-export const newAccessTokenSchema = z.object({
-  name: shortText,
-  days: z
-    .number()
-    .refine((days) => (ACCESS_TOKEN_DAYS as readonly number[]).includes(days), 'must be one of the choices'),
+  password: givenPassword.optional().describe('Left out, one is made and answered once'),
 });
 
 export const meSchema = z.object({
@@ -108,6 +101,7 @@ export const personSchema = z.object({
   isAdministrator: z.boolean(),
   createdAt: z.string(),
   disabledAt: z.string().nullable(),
+  hasSecondFactor: z.boolean(),
   roles: z.array(membershipSchema),
 });
 export type PersonEntry = z.output<typeof personSchema>;

@@ -83,6 +83,11 @@ function valuesOf(form: FormData): PostedForm {
   };
 }
 
+/** What was typed in a field to the last space, as a password is; empty where nothing was. */
+export function typedExactly({ all }: Pick<FormValues, 'all'>, name: string): string {
+  return all(name).at(-1) ?? '';
+}
+
 /** A number typed in a form; undefined for an empty field, NaN for what is no number. A decimal comma is a decimal point. */
 export function typedNumber(text: string | undefined): number | undefined {
   if (text === undefined || text === '') return undefined;

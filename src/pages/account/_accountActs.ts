@@ -1,9 +1,11 @@
 import { changePassword } from '#lib/auth/ownPassword';
+import { makeOwnToken } from '#lib/auth/ownTokens';
 import type { SignedInUser } from '#lib/auth/sessions';
-import { newAccessTokenSchema, ownPasswordChangeSchema } from '#lib/contracts/people';
-import { typedNumber, type FormValues } from '#lib/http/forms';
-import { badRequest, invalidFields } from '#lib/http/problem';
-import { endAccessToken, makeAccessToken } from '#lib/services/people/accessTokens';
+import { newAccessTokenSchema } from '#lib/contracts/accessTokens';
+import { ownPasswordChangeSchema } from '#lib/contracts/people';
+import { typedExactly, typedNumber, type FormValues } from '#lib/http/forms';
+import { badRequest } from '#lib/http/problem';
+import { endAccessToken } from '#lib/services/people/accessTokens';
 import { endOtherSessions, endSessionOf } from '#lib/services/people/sessions';
 
 export const ACCOUNT_DONE = {
@@ -24,19 +26,20 @@ export interface AccountAct {
 
 /** Does what a form of the account page asks. @throws {Problem} 4xx, and zod errors, with what is wrong by field. */
 export async function actOnAccount(
-  { text }: FormValues,
+  values: FormValues,
   { user, sessionId }: { user: SignedInUser; sessionId: string },
 ): Promise<AccountAct> {
+  const { text } = values;
   switch (text['act']) {
     case 'password':
-      return changeOwn(text, user, sessionId);
+      return changeOwn(values, user, sessionId);
     case 'end-session':
       return { done: (await endSessionOf(user.id, text['session'] ?? '')) ? 'session' : 'no-session' };
     case 'end-others':
       await endOtherSessions(user.id, sessionId);
       return { done: 'sessions' };
     case 'make-token':
-      return makeToken(text, user.id);
+      return makeToken(values, user);
     case 'end-token':
       return { done: (await endAccessToken(user.id, idOf(text['token']))) ? 'revoked' : 'no-token' };
     default:
@@ -44,28 +47,23 @@ export async function actOnAccount(
   }
 }
 
-async function changeOwn(
-  text: FormValues['text'],
-  user: SignedInUser,
-  sessionId: string,
-): Promise<AccountAct> {
+async function changeOwn(values: FormValues, user: SignedInUser, sessionId: string): Promise<AccountAct> {
   const change = ownPasswordChangeSchema.parse({
-    currentPassword: text['currentPassword'] ?? '',
-    newPassword: text['newPassword'] ?? '',
+    currentPassword: typedExactly(values, 'currentPassword'),
+    newPassword: typedExactly(values, 'newPassword'),
   });
-  if (text['repeated'] !== change.newPassword) {
-    throw invalidFields([{ field: 'repeated', message: 'is not the same as the new password' }]);
-  }
   await changePassword(user, sessionId, change);
   return { done: 'password' };
 }
 
-async function makeToken(text: FormValues['text'], userId: string): Promise<AccountAct> {
-  const { name, days } = newAccessTokenSchema.parse({
+async function makeToken({ text, all }: FormValues, user: SignedInUser): Promise<AccountAct> {
+  const token = newAccessTokenSchema.parse({
     name: text['name'] ?? '',
     days: typedNumber(text['days']) ?? 0,
+    access: text['access'] ?? '',
+    families: text['reach'] === 'some' ? all('families') : null,
   });
-  return { done: 'token', secret: await makeAccessToken(userId, name, days) };
+  return { done: 'token', secret: await makeOwnToken(user, token) };
 }
 
 /** A token's number, 0 for what is none. */

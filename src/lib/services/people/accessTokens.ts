@@ -6,6 +6,7 @@ import {
 } from '#db/queries/accessTokens';
 import { appendAudit } from '#db/queries/audit';
 import { inTransaction } from '#db/queries/connection';
+import { type NewAccessToken } from '#lib/contracts/accessTokens';
 
 const DAY_MS = 86_400_000;
 
@@ -15,11 +16,14 @@ export function accessTokensOf(userId: string): Promise<AccessTokenRow[]> {
 }
 
 /** Makes a token for a person's scripts, told this once. */
-export function makeAccessToken(userId: string, name: string, days: number): Promise<string> {
+export function makeAccessToken(
+  userId: string,
+  { name, days, access, families }: NewAccessToken,
+): Promise<string> {
   const expiresAt = new Date(Date.now() + days * DAY_MS);
   return inTransaction(async (transaction) => {
-    const token = await insertAccessToken({ userId, name, expiresAt }, transaction);
-    const detail = { expiresAt: expiresAt.toISOString() };
+    const token = await insertAccessToken({ userId, name, expiresAt, access, families }, transaction);
+    const detail = { expiresAt: expiresAt.toISOString(), access, families };
     const subject = `person ${userId}`;
     await appendAudit({ userId, networkId: null, action: 'access-token.make', subject, detail }, transaction);
     return token;

@@ -5,7 +5,7 @@ export interface PersonFilter {
   text: string;
   /** Slug of a network in which a role is held; empty: any. */
   network: string;
-  /** `active`, `disabled` or `administrator`; anything else: any. */
+  /** `active`, `disabled`, `administrator` or `one-factor` (active, without a second factor); anything else: any. */
   state: string;
 }
 
@@ -23,8 +23,9 @@ export function filterPeople(
   );
 }
 
-function isInState({ isAdministrator, disabledAt }: PersonEntry, state: string): boolean {
+function isInState({ isAdministrator, disabledAt, hasSecondFactor }: PersonEntry, state: string): boolean {
   if (state === 'active') return disabledAt === null;
+  if (state === 'one-factor') return disabledAt === null && !hasSecondFactor;
   if (state === 'disabled') return disabledAt !== null;
   return state !== 'administrator' || isAdministrator;
 }

@@ -1,4 +1,5 @@
 import { listNetworks, type NetworkRow } from '#db/queries/networks';
+import { hasSecondFactor, listSecondFactorUsers } from '#db/queries/secondFactors';
 import { findUserById, listAllMemberships, listMemberships, listUsers, type Role } from '#db/queries/users';
 import { type UserRow } from '#db/queries/users';
 
@@ -6,17 +7,20 @@ import { type UserRow } from '#db/queries/users';
 export interface Person {
   user: UserRow;
   roles: { network: NetworkRow; role: Role }[];
+  hasSecondFactor: boolean;
 }
 
 /** Everybody by name, disabled people too. */
 export async function listPeople(): Promise<Person[]> {
-  const [users, networks, memberships] = await Promise.all([
+  const [users, withFactor, networks, memberships] = await Promise.all([
     listUsers(),
+    listSecondFactorUsers(),
     listNetworks(),
     listAllMemberships(),
   ]);
   return users.map((user) => ({
     user,
+    hasSecondFactor: withFactor.includes(user.id),
     roles: rolesOf(
       memberships.filter((membership) => membership.userId === user.id),
       networks,
@@ -25,12 +29,13 @@ export async function listPeople(): Promise<Person[]> {
 }
 
 export async function findPerson(id: string): Promise<Person | undefined> {
-  const [user, networks, memberships] = await Promise.all([
+  const [user, hasFactor, networks, memberships] = await Promise.all([
     findUserById(id),
+    hasSecondFactor(id),
     listNetworks(),
     listMemberships(id),
   ]);
-  return user && { user, roles: rolesOf(memberships, networks) };
+  return user && { user, roles: rolesOf(memberships, networks), hasSecondFactor: hasFactor };
 }
 
 function rolesOf(memberships: { networkId: number; role: Role }[], networks: NetworkRow[]): Person['roles'] {

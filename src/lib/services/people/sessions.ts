@@ -9,6 +9,8 @@ export interface SessionShown {
   address: string | null;
   agent: string | null;
   createdAt: Date;
+  /** To the minute. */
+  lastSeenAt: Date;
   expiresAt: Date;
   isThisOne: boolean;
 }

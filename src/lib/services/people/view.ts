@@ -1,11 +1,12 @@
 import { type AccessTokenRow } from '#db/queries/accessTokens';
-import { type AccessToken, type OpenSession } from '#lib/contracts/account';
+import { type AccessToken } from '#lib/contracts/accessTokens';
+import { type OpenSession } from '#lib/contracts/account';
 import { type PersonEntry } from '#lib/contracts/people';
 import { type Person } from './list';
 import { type SessionShown } from './sessions';
 
 /** A person as the interface answers it. */
-export function personView({ user, roles }: Person): PersonEntry {
+export function personView({ user, roles, hasSecondFactor }: Person): PersonEntry {
   return {
     id: user.id,
     name: user.name,
@@ -13,6 +14,7 @@ export function personView({ user, roles }: Person): PersonEntry {
     isAdministrator: user.isAdministrator,
     createdAt: user.createdAt.toISOString(),
     disabledAt: user.disabledAt?.toISOString() ?? null,
+    hasSecondFactor,
     roles: roles.map(({ network, role }) => ({ network: network.slug, role })),
   };
 }
@@ -22,6 +24,8 @@ export function accessTokenView(row: AccessTokenRow): AccessToken {
   return {
     id: row.id,
     name: row.name,
+    access: row.access,
+    families: row.families,
     createdAt: row.createdAt.toISOString(),
     expiresAt: row.expiresAt.toISOString(),
     lastUsedAt: row.lastUsedAt?.toISOString() ?? null,
@@ -30,6 +34,11 @@ export function accessTokenView(row: AccessTokenRow): AccessToken {
 }
 
 /** A session as the interface answers it. */
-export function sessionView({ createdAt, expiresAt, ...session }: SessionShown): OpenSession {
-  return { ...session, createdAt: createdAt.toISOString(), expiresAt: expiresAt.toISOString() };
+export function sessionView({ createdAt, lastSeenAt, expiresAt, ...session }: SessionShown): OpenSession {
+  return {
+    ...session,
+    createdAt: createdAt.toISOString(),
+    lastSeenAt: lastSeenAt.toISOString(),
+    expiresAt: expiresAt.toISOString(),
+  };
 }

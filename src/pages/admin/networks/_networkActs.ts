@@ -1,4 +1,5 @@
 import { patchByAdministrator, requirePerson, rolesGiven } from '#lib/auth/personActs';
+import { changeRules } from '#lib/auth/signInRules';
 import { newNetworkSchema } from '#lib/contracts/networks';
 import { ROLES } from '#lib/contracts/people';
 import { typedNumber, type FormValues } from '#lib/http/forms';
@@ -20,6 +21,8 @@ export const NETWORK_DONE = {
   made: 'The network is made. Give people their roles in it, then register its stations.',
   given: 'The role is given. It holds from the next request on.',
   taken: 'The role is taken away. It ends with the next request.',
+  asked: 'The second factor is required from the next request on.',
+  unasked: 'The second factor is not required any more.',
 } as const;
 
 /** Makes the network that the form describes. @throws {Problem} 422, and zod errors, with what is wrong by field. */
@@ -37,6 +40,17 @@ export async function makeFromForm({ text }: FormValues, userId: string): Promis
   const made = await makeNetwork(input, userId);
   if (made.outcome === 'made') return made.network.slug;
   throw invalidFields([{ field: 'slug', message: 'belongs to another network already' }]);
+}
+
+/** Says whether the network requires a second factor. @throws {Problem} 409 */
+export async function changeRulesFromForm(
+  { text }: FormValues,
+  network: Parameters<typeof changeRules>[0],
+  userId: string,
+): Promise<keyof typeof NETWORK_DONE> {
+  const secondFactorRequired = text['secondFactorRequired'] === 'yes';
+  await changeRules(network, { secondFactorRequired }, userId);
+  return secondFactorRequired ? 'asked' : 'unasked';
 }
 
 /** Gives a person a role in the network, or takes it away. @throws {Problem} 4xx with what is wrong by field. */

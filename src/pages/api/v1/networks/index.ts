@@ -1,5 +1,5 @@
 import { requireAdministrator, requireUser } from '#lib/auth/guards';
-import { networksOf } from '#lib/auth/networkAccess';
+import { openNetworksOf } from '#lib/auth/networkAccess';
 import { newNetworkSchema } from '#lib/contracts/networks';
 import { readJson } from '#lib/http/parse';
 import { invalidFields } from '#lib/http/problem';
@@ -10,7 +10,7 @@ import { makeNetwork } from '#lib/services/networks/make';
 import { networkView } from '#lib/services/networks/view';
 
 export const GET = route(async (context) => {
-  const networks = await networksOf(requireUser(context));
+  const networks = await openNetworksOf(requireUser(context));
   const items = await Promise.all(networks.map(({ network }) => networkNow(network)));
   return json({ items, next: null });
 });

@@ -1,9 +1,10 @@
 import { requireSession, requireUser } from '#lib/auth/guards';
-import { newAccessTokenSchema } from '#lib/contracts/people';
+import { makeOwnToken } from '#lib/auth/ownTokens';
+import { newAccessTokenSchema } from '#lib/contracts/accessTokens';
 import { readJson } from '#lib/http/parse';
 import { json } from '#lib/http/respond';
 import { route } from '#lib/http/route';
-import { accessTokensOf, makeAccessToken } from '#lib/services/people/accessTokens';
+import { accessTokensOf } from '#lib/services/people/accessTokens';
 import { accessTokenView } from '#lib/services/people/view';
 
 export const GET = route(async (context) => {
@@ -13,6 +14,6 @@ export const GET = route(async (context) => {
 
 export const POST = route(async (context) => {
   const { user } = requireSession(context);
-  const { name, days } = await readJson(context.request, newAccessTokenSchema);
-  return json({ token: await makeAccessToken(user.id, name, days) }, { status: 201 });
+  const token = await readJson(context.request, newAccessTokenSchema);
+  return json({ token: await makeOwnToken(user, token) }, { status: 201 });
 });
