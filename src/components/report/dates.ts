@@ -21,7 +21,7 @@ export function dayChoices(
     const say = back === 0 && !isSmallHours ? words.lastNight : words.night;
     return {
       value: `night-${evening}`,
-      label: say(weekday(evening, words), dayName(addDays(evening, 1), words)),
+      label: say(weekday(evening, words), dayName(addDays(evening, 1), words, 'short')),
     };
   });
   const days = Array.from({ length: DAYS_BACK }, (_, back) => {
@@ -64,12 +64,12 @@ function longDate(at: DateTime): string {
 }
 
 function weekday(date: LocalDate, { locale }: ReportWords): string {
-  return DateTime.fromISO(date, { zone: 'utc', locale }).toLocaleString({ weekday: 'long' });
+  return DateTime.fromISO(date, { zone: 'utc', locale }).toLocaleString({ weekday: 'short' });
 }
 
-function dayName(date: LocalDate, { locale }: ReportWords): string {
+function dayName(date: LocalDate, { locale }: ReportWords, weekday: 'long' | 'short' = 'long'): string {
   return DateTime.fromISO(date, { zone: 'utc', locale }).toLocaleString({
-    weekday: 'long',
+    weekday,
     day: 'numeric',
     month: 'long',
   });
