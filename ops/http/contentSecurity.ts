@@ -1,13 +1,14 @@
 import { createHash } from 'node:crypto';
+import loadDirective from 'astro/runtime/client/load.prebuilt.js';
 import onlyDirective from 'astro/runtime/client/only.prebuilt.js';
 import island from 'astro/runtime/server/astro-island.prebuilt.js';
-import { EARLY_SCRIPT } from '#components/strip/earlyScript.ts';
+import { EARLY_SCRIPT } from '#components/strip/early/earlyScript.ts';
 
 /**
- * Every script that stands in a page itself instead of a file: what wakes islands (all are `client:only`), and what asks for the strip's first
+ * Every script that stands in a page itself instead of a file: what wakes islands (`client:only` and `client:load`), and what asks for the strip's first
  * columns. The build keeps all others in files (astro.config.mjs).
  */
-const INLINE_SCRIPTS = [island, onlyDirective, EARLY_SCRIPT];
+const INLINE_SCRIPTS = [island, loadDirective, onlyDirective, EARLY_SCRIPT];
 
 /** A script's source for a policy: its SHA-256, so that exactly this text may run. */
 export function scriptHash(script: string): string {

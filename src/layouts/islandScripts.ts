@@ -13,9 +13,10 @@ let chunks: Record<string, Chunk> | undefined;
 
 /**
  * Addresses of all scripts that an island needs, so that a page can have them fetched at once: found one behind the other, each
- * waits until the page has time for the one before. `source`: end of the path of its component.
+ * waits until the page has time for the one before. `source`: end of the path of its component, or of a page's script, which needs no
+ * renderer.
  */
-export function islandScripts(source: string): string[] {
+export function islandScripts(source: string, kind: 'island' | 'script' = 'island'): string[] {
   chunks ??= existsSync(MANIFEST)
     ? (JSON.parse(readFileSync(MANIFEST, 'utf8')) as Record<string, Chunk>)
     : {};
@@ -28,7 +29,7 @@ export function islandScripts(source: string): string[] {
     chunk.imports?.forEach(add);
   };
   Object.keys(all)
-    .filter((name) => name.endsWith(source) || name.endsWith(RENDERER))
+    .filter((name) => name.endsWith(source) || (kind === 'island' && name.endsWith(RENDERER)))
     .forEach(add);
   return [...files].map((file) => `/${file}`);
 }

@@ -28,7 +28,7 @@ export function watchStrip(): void {
     }
   }).observe({ type: 'layout-shift', buffered: true });
   const isPainted = () => {
-    const canvas = document.querySelector<HTMLCanvasElement>('[role="application"] canvas');
+    const canvas = document.querySelector<HTMLCanvasElement>('[data-strip] canvas');
     const [, , , alpha] = canvas?.getContext('2d')?.getImageData(canvas.width >> 1, 120, 1, 1).data ?? [];
     return alpha === 255;
   };

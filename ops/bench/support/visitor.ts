@@ -7,6 +7,8 @@ import { launchChromium } from '#ops/chromium';
 import { sessionCookieName, startSession } from '#lib/auth/sessions';
 
 const SHOWN_WITHIN_MS = 60_000;
+/** A new window of the browser is busy with itself for a while; a person's has long been open. */
+const SETTLES_MS = 2500;
 
 /** A page whose scripts are weighed. */
 export interface ScriptsOf {
@@ -58,7 +60,9 @@ export class Visitor {
     await context.addInitScript({ content: 'globalThis.__name ??= (named) => named;' });
     if (script) await context.addInitScript(script);
     try {
-      return await work(await context.newPage());
+      const page = await context.newPage();
+      await page.waitForTimeout(SETTLES_MS);
+      return await work(page);
     } finally {
       await context.close();
     }

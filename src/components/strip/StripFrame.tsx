@@ -1,5 +1,5 @@
 import { Fragment, useCallback, useMemo, type Dispatch, type RefObject } from 'react';
-import { type StripControl } from './hooks/useStripSetting';
+import { isMounted, type StripControl } from './hooks/useStripSetting';
 import { type TrackLevels, type TrackPicture } from './hooks/useTrack';
 import { type TrackSlip } from './hooks/useTrackSlip';
 import { type Interaction, type InteractionEvent } from './model/interaction';
@@ -46,7 +46,11 @@ export function StripFrame(props: StripFrameProps) {
     [strips, bands, interaction.cursor],
   );
   return (
-    <div className="grid gap-x-6 gap-y-5 desk:grid-cols-[minmax(0,1fr)_18.25rem]">
+    // What the server has made answers to nothing yet.
+    <div
+      className="grid gap-x-6 gap-y-5 desk:grid-cols-[minmax(0,1fr)_18.25rem]"
+      inert={!isMounted(setting.geometry)}
+    >
       {strips.map((strip, at) => (
         <Fragment key={at}>
           <div ref={at === 0 ? props.host : undefined} className={`min-w-0 ${PLOT_ORDER[at]}`}>

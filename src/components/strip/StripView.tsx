@@ -13,6 +13,8 @@ export interface StripProps {
   clocks: ClockSetting[];
   /** The page's station, and what is shown under it, if anything. */
   tracks: [Track] | [Track, Track];
+  /** When the page was made. */
+  madeSec: number;
   mayExclude: boolean;
   mayLogComplaints: boolean;
 }

@@ -1,16 +1,9 @@
 import { formatDuration } from '#lib/format/durations';
 import { pxOfLevel, type LevelRange } from '../model/levelAxis';
-import { type StripLimit } from '../model/limitLines';
-import { type Run } from '../model/runs';
+import { type LimitLine, type StripLimit } from '../model/limitLines';
 import { pxAtSec, type TimeView } from '../model/timeView';
 import { type StripGeometry } from './geometry';
 import { textWidth, within, writeText, type Surface } from './surface';
-
-/** A limit with the stretches of the view in which it holds. */
-export interface LimitLine {
-  limit: StripLimit;
-  runs: readonly Run[];
-}
 
 /** Dashed lines at the thresholds (dotted for maxima) with what they are, where there is room to say it. */
 export function drawLimits(

@@ -1,13 +1,14 @@
 import { type StripComplaint } from '../model/complaintMarks';
 import { type Lane } from '../model/lanes';
 import { type LevelRange } from '../model/levelAxis';
+import { type LimitLine } from '../model/limitLines';
 import { type PixelColumns } from '../model/pixelColumns';
 import { type Run } from '../model/runs';
 import { pxAtSec, type TimeView } from '../model/timeView';
 import { drawComplaints } from './drawComplaints';
 import { drawGapWords } from './drawGapWords';
 import { drawLanes } from './drawLanes';
-import { drawLimits, type LimitLine } from './drawLimits';
+import { drawLimits } from './drawLimits';
 import { drawSpectrogram } from './drawSpectrogram';
 import { drawTimeAxis } from './drawTimeAxis';
 import { drawTrace } from './drawTrace';

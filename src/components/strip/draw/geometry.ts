@@ -22,7 +22,8 @@ export interface StripGeometry {
 }
 
 export const LANES = 5;
-const NARROW_PX = 560;
+/** Width below which a strip is less tall and has a thinner margin. */
+export const NARROW_PX = 560;
 const COMPLAINTS_PX = 24;
 
 /** The parts for a strip `width` CSS pixels wide: less tall and with a thinner margin where it is narrow. */

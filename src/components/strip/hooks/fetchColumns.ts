@@ -1,12 +1,11 @@
-import { bandByNominalHz } from '#lib/acoustics/bands';
-import { decodeSpectrogram, type SpectrogramColumns } from '#lib/contracts/spectrogramBinary';
+import { earlyColumns, forgetEarlyColumns } from '../early/earlyColumns';
 import { COLUMNS_HEADERS, columnsUrl } from '../model/columnsRequest';
+import { decodeColumns } from '../model/decodeColumns';
 import { type StripColumns } from '../model/stripColumns';
 import { type Tile } from '../model/tiles';
-import { takeEarlyAnswer } from './earlyAnswers';
 import { fetchAnswer } from './fetchJson';
 
-/** A tile's columns from the server. @throws {ServerRefusal} */
+/** A tile's columns from the server: those that the page asked for early, once. @throws {ServerRefusal} */
 export async function fetchColumns(
   stationUrl: string,
   tile: Tile,
@@ -14,26 +13,11 @@ export async function fetchColumns(
   columns?: number,
 ): Promise<StripColumns> {
   const url = columnsUrl(stationUrl, tile, columns);
-  const answer =
-    (await takeEarlyAnswer(url)) ?? (await fetchAnswer(url, { signal, headers: COLUMNS_HEADERS }));
-  return columnsOf(decodeSpectrogram(await answer.arrayBuffer()));
-}
-
-function columnsOf(spectrogram: SpectrogramColumns): StripColumns {
-  const { header } = spectrogram;
-  return {
-    fromSec: header.from,
-    stepSec: header.stepSeconds,
-    count: header.columns,
-    bands: header.bands.flatMap((hz) => bandByNominalHz(header.bandFraction, hz) ?? []),
-    laeqCentiDb: spectrogram.laeqCentiDb,
-    lafmaxCentiDb: spectrogram.lafmaxCentiDb,
-    presentSec: spectrogram.presentSec,
-    validSec: spectrogram.validSec,
-    lateSec: spectrogram.lateSec,
-    reasonBits: spectrogram.reasonBits,
-    flagBits: spectrogram.flagBits,
-    levelsCentiDb: spectrogram.levelsCentiDb,
-    percentiles: spectrogram.percentiles,
-  };
+  const early = await earlyColumns(url);
+  if (early) {
+    forgetEarlyColumns(url);
+    return early;
+  }
+  const answer = await fetchAnswer(url, { signal, headers: COLUMNS_HEADERS });
+  return decodeColumns(await answer.arrayBuffer());
 }

@@ -1,4 +1,6 @@
 import { useQueries, useQueryClient, type UseQueryOptions } from '@tanstack/react-query';
+import { takeColumnsThere } from '../early/earlyColumns';
+import { columnsUrl } from '../model/columnsRequest';
 import { endOfColumnsSec, type StripColumns } from '../model/stripColumns';
 import { tilesFor, tilesInView, type Tile } from '../model/tiles';
 import { spanSec, type TimeView } from '../model/timeView';
@@ -24,15 +26,24 @@ export interface ColumnsWanted {
   view: TimeView;
   intervalSec: number;
   nowSec: number;
+  /** Whether the strip stands in a page: before that nothing is fetched. */
+  isMounted: boolean;
   /** Whether new columns are told of as they arrive. */
   isTold: boolean;
 }
 
 /** A station's columns for a view. While finer or farther tiles are on their way, the layers that were there remain. */
-export function useColumns({ stationUrl, view, intervalSec, nowSec, isTold }: ColumnsWanted): Columns {
+export function useColumns({
+  stationUrl,
+  view,
+  intervalSec,
+  nowSec,
+  isMounted,
+  isTold,
+}: ColumnsWanted): Columns {
   const client = useQueryClient();
   const everyMs = isTold ? TOLD_EVERY_MS : LIVE_EVERY_MS;
-  const tiles = tilesFor(view, intervalSec, nowSec);
+  const tiles = isMounted ? tilesFor(view, intervalSec, nowSec) : [];
   const inView = tilesInView(tiles, view);
   const queryOf = (tile: Tile) => tileQuery(stationUrl, tile, nowSec, everyMs);
   const wanted = useQueries({ queries: inView.map(queryOf) });
@@ -69,6 +80,7 @@ function tileQuery(
   return {
     queryKey: ['columns', stationUrl, tile.stepSec, tile.fromSec],
     queryFn: ({ signal }) => fetchColumns(stationUrl, tile, signal),
+    initialData: () => takeColumnsThere(columnsUrl(stationUrl, tile)),
     staleTime: isLive ? LIVE_EVERY_MS : KEEP_MS,
     gcTime: KEEP_MS,
     refetchInterval: isLive ? everyMs : false,

@@ -1,4 +1,4 @@
-import { useEffect, useReducer, type Dispatch } from 'react';
+import { useEffect, useLayoutEffect, useReducer, type Dispatch } from 'react';
 import {
   interact,
   NOTHING_MARKED,
@@ -15,11 +15,12 @@ export function useInteraction(grid: InteractionGrid): [Interaction, Dispatch<In
   const [state, dispatch] = useReducer(
     (before: Interaction, event: InteractionEvent) => interact(before, event, grid),
     NOTHING_MARKED,
-    (nothing) => ({ ...nothing, selection: selectionOfAddress() }),
   );
 
-  useEffect(() => {
+  // Before anything is shown: only the browser knows what stands behind the `#`.
+  useLayoutEffect(() => {
     const follow = () => dispatch({ type: 'select', selection: selectionOfAddress() });
+    follow();
     window.addEventListener('hashchange', follow);
     return () => window.removeEventListener('hashchange', follow);
   }, []);

@@ -1,17 +1,21 @@
 import { useMemo } from 'react';
-import { levelRampRgb } from '#lib/format/levelRamp';
+import { levelRampRgb, type Theme } from '#lib/format/levelRamp';
 import { type StripPicture } from '../draw/drawStrip';
 import { onDevice } from '../draw/surface';
-import { type LimitLine } from '../draw/drawLimits';
 import { type StripGeometry } from '../draw/geometry';
 import { type StripComplaint } from '../model/complaintMarks';
 import { lanesOf, leftOutRuns } from '../model/lanes';
-import { timesOfValidity, type ClockSetting, type StripLimit } from '../model/limitLines';
+import {
+  limitLinesOf,
+  wholeWeeks,
+  type ClockSetting,
+  type LimitLine,
+  type StripLimit,
+} from '../model/limitLines';
 import { pixelColumns } from '../model/pixelColumns';
 import { type Run } from '../model/runs';
 import { type TimeView } from '../model/timeView';
 import { type Levels } from './useLevels';
-import { type Theme } from './useTheme';
 
 interface PictureInput {
   levels: Levels;
@@ -77,17 +81,7 @@ export function usePicture(input: PictureInput): StripPicture {
   );
 }
 
-/** Times of validity are worked out for whole weeks about the view, so that moving it a little costs nothing. */
-const WEEK_SEC = 7 * 86_400;
-
 function useLimitLines({ limits, view, clocks }: PictureInput): LimitLine[] {
-  const fromSec = Math.floor(view.fromSec / WEEK_SEC) * WEEK_SEC;
-  const toSec = Math.ceil(view.toSec / WEEK_SEC) * WEEK_SEC;
-  return useMemo(
-    () =>
-      limits
-        .map((limit) => ({ limit, runs: timesOfValidity(limit, { fromSec, toSec }, clocks) }))
-        .filter(({ runs }) => runs.length > 0),
-    [limits, fromSec, toSec, clocks],
-  );
+  const { fromSec, toSec } = wholeWeeks(view);
+  return useMemo(() => limitLinesOf(limits, { fromSec, toSec }, clocks), [limits, fromSec, toSec, clocks]);
 }

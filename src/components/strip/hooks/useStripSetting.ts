@@ -1,8 +1,8 @@
 import { useState, type RefObject } from 'react';
-import { stripGeometry } from '../draw/geometry';
+import { stripGeometry, type StripGeometry } from '../draw/geometry';
+import { firstDisplay, type Display } from '../model/display';
 import { type StripProps } from '../StripView';
 import { useElementWidth } from './useElementWidth';
-import { type Display } from './useLevels';
 import { useLiveColumns } from './useLiveColumns';
 import { useNow } from './useNow';
 import { useTheme } from './useTheme';
@@ -19,16 +19,17 @@ export interface StripControl {
 
 /** What the strips on one axis share: their view, their size, the clock, and how levels are shown. */
 export function useStripSetting(
-  { slug, zone, clocks, period, tracks }: StripProps,
+  { slug, zone, clocks, period, tracks, madeSec }: StripProps,
   host: RefObject<HTMLElement | null>,
 ): StripControl {
   const geometry = useGeometry(useElementWidth(host));
   const theme = useTheme();
-  const nowSec = useNow(NOW_EVERY_SEC);
+  const nowSec = useNow(NOW_EVERY_SEC, madeSec);
   const intervalSec = Math.min(...tracks.map(({ station }) => station.intervalSec));
   const control = useTimeView(period, intervalSec, nowSec);
-  const fraction = tracks.some(({ station }) => station.bandFraction === 1) ? 1 : 3;
-  const [display, onDisplay] = useState<Display>({ weighting: 'Z', fraction });
+  const [display, onDisplay] = useState(() =>
+    firstDisplay(tracks.map(({ station }) => station.bandFraction)),
+  );
   const isTold = useLiveColumns(
     slug,
     tracks.map(({ station }) => station.code),
@@ -38,7 +39,7 @@ export function useStripSetting(
     zone,
     clocks,
     geometry,
-    ratio: window.devicePixelRatio,
+    ratio: isMounted(geometry) ? window.devicePixelRatio : 1,
     theme,
     nowSec,
     view: control.view,
@@ -46,6 +47,11 @@ export function useStripSetting(
     isTold,
   };
   return { setting, control, onDisplay };
+}
+
+/** Whether the strip's place is known: not before it stands in a page. What it shows until then is what the server has made of it. */
+export function isMounted({ width }: StripGeometry): boolean {
+  return width > 0;
 }
 
 function useGeometry(width: number) {

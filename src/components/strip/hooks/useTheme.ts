@@ -1,18 +1,10 @@
 import { useSyncExternalStore } from 'react';
+import { type Theme } from '#lib/format/levelRamp';
+import { PREFERS_DARK, themeNow } from '../model/theme';
 
-export type Theme = 'light' | 'dark';
-
-const PREFERS_DARK = '(prefers-color-scheme: dark)';
-
-/** The theme in force: the one chosen on the page's root element, else the one that the device prefers. */
+/** The theme in force, followed; light where there is no page yet. */
 export function useTheme(): Theme {
-  return useSyncExternalStore(subscribe, themeNow);
-}
-
-function themeNow(): Theme {
-  const chosen = document.documentElement.dataset['theme'];
-  if (chosen === 'light' || chosen === 'dark') return chosen;
-  return matchMedia(PREFERS_DARK).matches ? 'dark' : 'light';
+  return useSyncExternalStore(subscribe, themeNow, () => 'light');
 }
 
 function subscribe(changed: () => void): () => void {

@@ -2,6 +2,7 @@ import { useCallback, useMemo } from 'react';
 import { type StripPicture } from '../draw/drawStrip';
 import { type StripGeometry } from '../draw/geometry';
 import { type ClockSetting } from '../model/limitLines';
+import { type Display } from '../model/display';
 import { type Run } from '../model/runs';
 import { stripSummary } from '../model/summary';
 import { clockStretchWords } from '../model/timeWords';
@@ -10,9 +11,10 @@ import { shifted, type Track } from '../model/track';
 import { stationUrlOf } from './stationUrl';
 import { useColumns, type Columns } from './useColumns';
 import { useDebounced } from './useDebounced';
-import { useLevels, type Display, type Levels } from './useLevels';
+import { useLevels, type Levels } from './useLevels';
 import { usePicture } from './usePicture';
-import { type Theme } from './useTheme';
+import { isMounted } from './useStripSetting';
+import { type Theme } from '#lib/format/levelRamp';
 
 /** What all strips on one axis have in common. */
 export interface StripSetting {
@@ -38,10 +40,17 @@ export interface TrackLevels {
 
 /** Fetches what a strip shows of its time. */
 export function useTrackLevels({ station, shiftSec, limits }: Track, setting: StripSetting): TrackLevels {
-  const { slug, nowSec, isTold, display } = setting;
+  const { slug, nowSec, geometry, isTold, display } = setting;
   const view = shifted(setting.view, shiftSec);
   const stationUrl = stationUrlOf(slug, station.code);
-  const columns = useColumns({ stationUrl, view, intervalSec: station.intervalSec, nowSec, isTold });
+  const columns = useColumns({
+    stationUrl,
+    view,
+    intervalSec: station.intervalSec,
+    nowSec,
+    isMounted: isMounted(geometry),
+    isTold,
+  });
   return { view, columns, levels: useLevels(columns.layers, display, limits) };
 }
 

@@ -19,6 +19,33 @@ export interface ClockSetting {
   scheme: PeriodScheme;
 }
 
+/** A limit with the stretches of the view in which it holds. */
+export interface LimitLine {
+  limit: StripLimit;
+  runs: readonly Run[];
+}
+
+const WEEK_SEC = 7 * 86_400;
+
+/** The whole weeks about a view: times of validity are worked out for them, so that moving the view a little costs nothing. */
+export function wholeWeeks({ fromSec, toSec }: TimeView): TimeView {
+  return {
+    fromSec: Math.floor(fromSec / WEEK_SEC) * WEEK_SEC,
+    toSec: Math.ceil(toSec / WEEK_SEC) * WEEK_SEC,
+  };
+}
+
+/** The limits that hold at some time of a view. */
+export function limitLinesOf(
+  limits: readonly StripLimit[],
+  view: TimeView,
+  clocks: readonly ClockSetting[],
+): LimitLine[] {
+  return limits
+    .map((limit) => ({ limit, runs: timesOfValidity(limit, view, clocks) }))
+    .filter(({ runs }) => runs.length > 0);
+}
+
 const LONGEST_DRAWN_SEC = 100 * 86_400;
 /** A day of its own hours, with the hour of a clock change. */
 const LONGEST_WINDOW_SEC = 25 * 3600;

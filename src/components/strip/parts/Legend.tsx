@@ -1,7 +1,6 @@
 import { memo } from 'react';
-import { levelRampRgb } from '#lib/format/levelRamp';
+import { levelRampRgb, type Theme } from '#lib/format/levelRamp';
 import { type Weighting } from '#lib/acoustics/weighting';
-import { type Theme } from '../hooks/useTheme';
 import { type LevelRange } from '../model/levelAxis';
 import { formatDuration } from '#lib/format/durations';
 

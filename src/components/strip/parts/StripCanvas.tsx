@@ -1,7 +1,7 @@
 import { memo, useEffect, useLayoutEffect, useRef, useState } from 'react';
 import { drawStrip, type StripPicture } from '../draw/drawStrip';
 import { readPalette, type Palette } from '../draw/palette';
-import { type Theme } from '../hooks/useTheme';
+import { type Theme } from '#lib/format/levelRamp';
 
 interface StripCanvasProps {
   picture: StripPicture;

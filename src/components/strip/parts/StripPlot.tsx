@@ -3,7 +3,7 @@ import { useAxisDrag } from '../hooks/useAxisDrag';
 import { usePlotPointer } from '../hooks/usePlotPointer';
 import { type TimeViewControl } from '../hooks/useTimeView';
 import { useWheelZoom } from '../hooks/useWheelZoom';
-import { type Theme } from '../hooks/useTheme';
+import { type Theme } from '#lib/format/levelRamp';
 import { type StripPicture } from '../draw/drawStrip';
 import { type StripExceedance } from '../model/exceedanceMarks';
 import { type Interaction, type InteractionEvent } from '../model/interaction';

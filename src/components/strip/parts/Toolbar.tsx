@@ -1,5 +1,5 @@
 import { type ReactNode } from 'react';
-import { type Display } from '../hooks/useLevels';
+import { type Display } from '../model/display';
 import { type TimeViewControl } from '../hooks/useTimeView';
 import { spanSec } from '../model/timeView';
 

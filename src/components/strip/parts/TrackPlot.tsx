@@ -1,11 +1,13 @@
 import { useCallback, useMemo, type Dispatch } from 'react';
 import { type Band } from '#lib/acoustics/bands';
 import { type TimeViewControl } from '../hooks/useTimeView';
+import { isMounted } from '../hooks/useStripSetting';
 import { type StripSetting } from '../hooks/useTrack';
 import { type Interaction, type InteractionEvent } from '../model/interaction';
 import { cornerOn, interactionOn } from '../model/track';
 import { stripTitle } from '../model/trackWords';
 import { type MadeStrip } from '../StripFrame';
+import { FirstPicture } from './FirstPicture';
 import { StripPlot } from './StripPlot';
 
 interface TrackPlotProps {
@@ -46,7 +48,7 @@ export function TrackPlot(props: TrackPlotProps) {
   return (
     <>
       {props.isOneOfTwo && <h2 className="mb-1 text-body">{stripTitle(track, view, setting.zone)}</h2>}
-      {setting.geometry.width > 0 && (
+      {isMounted(setting.geometry) ? (
         <StripPlot
           picture={picture}
           ratio={setting.ratio}
@@ -60,6 +62,8 @@ export function TrackPlot(props: TrackPlotProps) {
           complaintsUrl={`/n/${setting.slug}/complaints`}
           summary={strip.summary}
         />
+      ) : (
+        <FirstPicture />
       )}
     </>
   );
