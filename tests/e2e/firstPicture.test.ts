@@ -40,7 +40,7 @@ for (const theme of ['light', 'dark'] as const) {
 
     await page.unroute(scripts);
     problems.length = 0;
-    await page.goto(`${STATION}#selection=nothing`);
+    await page.reload();
     await page.getByRole('application').waitFor(SLOW);
     await expect.poll(() => page.getByText(/dB \(Z\) a band/).count(), SLOW).toBe(1);
     await expect.poll(() => drawn(page), SLOW).toEqual(first);
