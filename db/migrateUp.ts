@@ -1,4 +1,7 @@
 import { readdirSync } from 'node:fs';
+import { resolve } from 'node:path';
+import { pathToFileURL } from 'node:url';
+import type { Knex } from 'knex';
 import { config } from '#lib/config/index';
 import { db } from './client';
 import { withSchemaLock } from './schemaLock';
@@ -6,7 +9,7 @@ import { withSchemaLock } from './schemaLock';
 const DIRECTORY = 'db/migrations';
 const RECORD = 'schema_migrations';
 /** What a statement says that has been carried out already: a table, column, key, constraint or trigger is there, or gone. */
-const ALREADY_DONE = new Set([1050, 1051, 1060, 1061, 1091, 1359, 1826]);
+const ALREADY_DONE = new Set([1050, 1051, 1054, 1060, 1061, 1091, 1359, 1826]);
 
 /** The database holds what this Bittern knows nothing of. */
 export class NewerSchemaError extends Error {
@@ -41,21 +44,26 @@ export async function schemaState(): Promise<SchemaState> {
 }
 
 /**
- * Applies what is pending, one process at a time. A migration whose statement was carried out before its process was killed, and before
- * that was noted, is noted now: each is one statement, which the database carries out wholly or not at all.
+ * Applies what is pending, one process at a time. A migration whose process was killed before it was noted is gone on with: the database
+ * carries out each statement wholly or not at all, and what says that it was carried out before is passed over.
+ * @param only these, where given, in this order; by default all that are pending.
  * @returns the names of what was applied.
  * @throws {NewerSchemaError} before anything is changed.
  */
-export async function migrateUp(): Promise<string[]> {
+export async function migrateUp(only?: readonly string[]): Promise<string[]> {
   return withSchemaLock(async () => {
-    const { pending, unknown } = await schemaState();
-    if (unknown.length > 0) throw new NewerSchemaError(unknown);
+    const state = await schemaState();
+    if (state.unknown.length > 0) throw new NewerSchemaError(state.unknown);
+    const pending = only?.filter((name) => state.pending.includes(name)) ?? state.pending;
     if (pending.length === 0) return [];
     if (await wasBrokenOff()) {
       await db().migrate.forceFreeMigrationsLock();
       await applyBrokenOff(pending[0] ?? '');
     }
-    await db().migrate.latest();
+    if (only === undefined) await db().migrate.latest();
+    else
+      for (const name of (await schemaState()).pending.filter((one) => only.includes(one)))
+        await applyOne(name);
     return pending;
   });
 }
@@ -68,12 +76,37 @@ async function wasBrokenOff(): Promise<boolean> {
   return row?.is_locked === 1;
 }
 
+function applyOne(name: string): Promise<unknown> {
+  const chosen: Knex.MigratorConfig & { name: string } = { name };
+  return db().migrate.up(chosen);
+}
+
+interface Migration {
+  up(conn: Knex): Promise<unknown>;
+}
+
+/** Carries out what is left of a migration, and notes it in the same transaction. */
 async function applyBrokenOff(name: string): Promise<void> {
-  try {
-    await db().migrate.up();
-  } catch (error) {
-    if (!ALREADY_DONE.has((error as { errno?: number }).errno ?? 0)) throw error;
-    const last = await db()(RECORD).max<{ batch: number | null }[]>({ batch: 'batch' });
-    await db()(RECORD).insert({ name, batch: (last[0]?.batch ?? 0) + 1, migration_time: new Date() });
-  }
+  const { up } = (await import(pathToFileURL(resolve(DIRECTORY, name)).href)) as Migration;
+  await db().transaction(async (transaction) => {
+    await up(forgiving(transaction));
+    const last = await transaction(RECORD).max<{ batch: number | null }[]>({ batch: 'batch' });
+    const batch = (last[0]?.batch ?? 0) + 1;
+    await transaction(RECORD).insert({ name, batch, migration_time: new Date() });
+  });
+}
+
+/** A connection on which statements that were carried out before do not fail. */
+function forgiving(conn: Knex): Knex {
+  const raw = async (sql: string) => {
+    try {
+      return await conn.raw(sql);
+    } catch (error) {
+      if (!ALREADY_DONE.has((error as { errno?: number }).errno ?? 0)) throw error;
+      return undefined;
+    }
+  };
+  return new Proxy(conn, {
+    get: (target, key, receiver) => (key === 'raw' ? raw : (Reflect.get(target, key, receiver) as unknown)),
+  });
 }
