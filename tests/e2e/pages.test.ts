@@ -20,12 +20,14 @@ type Access = 'public' | 'signed-in' | 'members' | 'operator' | 'liaison' | 'adm
 
 const ACCESS: Record<string, Access> = {
   '/account': 'signed-in',
+  '/account/second-factor': 'signed-in',
   '/admin': 'administrator',
   '/admin/audit': 'administrator',
   '/admin/networks': 'administrator',
   '/admin/networks/[network]': 'administrator',
   '/admin/networks/new': 'administrator',
   '/admin/people': 'administrator',
+  '/admin/people/invite': 'administrator',
   '/admin/people/new': 'administrator',
   '/n/[network]/weather': 'members',
   '/n/[network]/weather/[mast]': 'members',
@@ -95,6 +97,7 @@ const ACCESS: Record<string, Access> = {
   '/n/[network]/summaries/[month]/review': 'operator',
   '/n/[network]/summaries/compare': 'members',
   '/n/[network]/summaries/settings': 'operator',
+  '/forgotten': 'public',
   '/report/[network]': 'public',
   '/report/[network]/[key]': 'public',
   '/sign-in': 'public',
@@ -103,7 +106,7 @@ const ACCESS: Record<string, Access> = {
 };
 
 /** Not pages of their own: redirects, errors, what machines ask, what only a form reaches, and what only
- * an e-mail leads to (operator.test.ts follows it). */
+ * an e-mail leads to (operator.test.ts and people.test.ts follow them), or a fitting password. */
 const APART = new Set([
   '/',
   '/404',
@@ -112,12 +115,15 @@ const APART = new Set([
   '/admin/audit.csv',
   '/admin/people/[id]',
   '/healthz',
+  '/join/[token]',
   '/metrics',
   '/n/[network]',
   '/n/[network]/summaries/mark',
   '/n/[network]/summaries/preview.pdf',
   '/readyz',
   '/refused',
+  '/reset/[token]',
+  '/sign-in/code',
   '/sign-out',
   '/theme',
 ]);

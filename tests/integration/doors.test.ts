@@ -13,6 +13,9 @@ useFreshSchema();
 const OPEN_ROUTES = [
   '/api/v1/openapi.json',
   '/api/v1/session',
+  '/api/v1/invitations/acceptance',
+  '/api/v1/password-links',
+  '/api/v1/password-links/use',
   '/api/v1/intervals',
   '/api/v1/intervals/last',
   '/api/v1/weather',

@@ -17,6 +17,8 @@ interface Call {
   body?: unknown;
   headers?: Record<string, string>;
   clientAddress?: string;
+  /** Cookies that a browser keeps between calls: read, and written to. */
+  jar?: Map<string, string>;
 }
 
 /**
@@ -92,7 +94,8 @@ function requestOf(method: string, url: URL, call: Call): Request {
 }
 
 function contextOf(request: Request, url: URL, params: Record<string, string>, call: Call): APIContext {
-  const cookies = new Map<string, string>();
+  const cookies = call.jar ?? new Map<string, string>();
+  if (call.session) cookies.set('bittern-session', call.session);
   const context = {
     request,
     url,
@@ -100,8 +103,10 @@ function contextOf(request: Request, url: URL, params: Record<string, string>, c
     locals: { user: null, requestId: 'test' },
     clientAddress: call.clientAddress ?? '127.0.0.1',
     cookies: {
-      get: (name: string) =>
-        name === 'bittern-session' && call.session ? { value: call.session } : undefined,
+      get: (name: string) => {
+        const value = cookies.get(name);
+        return value === undefined ? undefined : { value };
+      },
       set: (name: string, value: string) => cookies.set(name, value),
       delete: (name: string) => cookies.delete(name),
     },
