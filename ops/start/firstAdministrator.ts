@@ -5,6 +5,9 @@ import { inTransaction } from '#db/queries/connection';
 import { insertUser, listUsers } from '#db/queries/users';
 import { hashPassword } from '#lib/auth/passwords';
 import { SettingsError } from '#lib/config/config';
+import { passwordProblem } from '#lib/services/people/passwordRules';
+
+const NAME = 'Administrator';
 
 export async function hasPeople(): Promise<boolean> {
   return (await listUsers()).length > 0;
@@ -18,13 +21,12 @@ export async function ensureFirstAdministrator(given: {
   const { email, password } = given.email && given.password ? given : await ask(given);
   if (!email || !/^\S+@\S+\.\S+$/.test(email))
     throw new SettingsError(['BITTERN_ADMIN_EMAIL: must be an e-mail address']);
-  if (!password || password.length < 12) {
-    throw new SettingsError(['BITTERN_ADMIN_PASSWORD: must have at least 12 characters']);
-  }
+  const problem = passwordProblem(password ?? '', { email, name: NAME, networks: [] });
+  if (!password || problem) throw new SettingsError([`BITTERN_ADMIN_PASSWORD: ${problem}`]);
   const passwordHash = await hashPassword(password);
   await inTransaction(async (transaction) => {
     const id = randomUUID();
-    await insertUser({ id, email, name: 'Administrator', passwordHash, isAdministrator: true }, transaction);
+    await insertUser({ id, email, name: NAME, passwordHash, isAdministrator: true }, transaction);
     await appendAudit(
       {
         userId: null,
