@@ -21,5 +21,7 @@ test('a thing made has no before; an act without details has no lines', () => {
     'name: Quay',
     'mastHeightM: none',
   ]);
+  expect(detailLines({ before: null, after: { cause: 'people' } })).toEqual(['cause: people']);
+  expect(detailLines({ before: { cause: 'people' }, after: null })).toEqual(['cause: people → nothing']);
   expect(detailLines({})).toEqual([]);
 });

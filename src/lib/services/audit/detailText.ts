@@ -5,7 +5,8 @@ const MOST_DEPTH = 4;
  * Members that stayed the same are left out.
  */
 export function detailLines({ before, after, ...others }: Record<string, unknown>): string[] {
-  const [was, is] = [flat(before), flat(after)];
+  // Null: there was none, which has no members.
+  const [was, is] = [flat(before ?? undefined), flat(after ?? undefined)];
   const changed = [...new Set([...was.keys(), ...is.keys()])]
     .filter((path) => was.get(path) !== is.get(path))
     .map((path) => lineOf(path, was.get(path), is.get(path)));
