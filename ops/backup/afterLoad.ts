@@ -22,8 +22,12 @@ export async function removeStrayKeys(): Promise<number> {
   return removed;
 }
 
-/** Ends every session of the backup: one that was revoked since must not hold again. */
-export function endSessions(): Promise<number> {
+/**
+ * Ends every session of the backup, and every link that was mailed: one that was revoked or used since must not hold again.
+ * @returns how many sessions.
+ */
+export async function endSessions(): Promise<number> {
+  await db()('account_tokens').delete();
   return db()('sessions').delete();
 }
 
