@@ -1,8 +1,10 @@
 import { beforeAll, expect, test } from 'vitest';
+import { db } from '#db/client';
+import { sessionDigest } from '#db/queries/sessions';
 import { callApi } from '../support/callApi';
 import { useFreshSchema } from '../support/freshSchema';
 import { makeNetwork, makePerson } from '../support/people';
-import { deliverMails, givePassword } from './support';
+import { deliverMails, givePassword, meStatus } from './support';
 
 useFreshSchema();
 
@@ -81,6 +83,15 @@ test('sessions tell when they were seen last', async () => {
   const { session } = await person();
   const listed = await (await callApi('GET', '/api/v1/me/sessions', { session })).json();
   expect(Date.now() - Date.parse(listed.items[0].lastSeenAt)).toBeLessThan(120_000);
+});
+
+test.each(['expires_at', 'ends_at'])('a session is over once its time is (%s)', async (column) => {
+  const { session } = await person();
+  expect(await meStatus({ session })).toBe(200);
+  await db()('sessions')
+    .where({ id_digest: sessionDigest(session) })
+    .update({ [column]: new Date(Date.now() - 1000) });
+  expect(await meStatus({ session })).toBe(401);
 });
 
 test('an access token opens what it is made for and nothing beside', async () => {
