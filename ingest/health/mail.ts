@@ -1,5 +1,5 @@
 import { insertMail } from '#db/queries/outbox';
-import { messageIdOf } from '#ingest/notify/messageId';
+import { messageIdOf } from '#lib/services/mails/messageId';
 import { noteHtml, noteText, type Note } from '#lib/services/mails/note';
 import type { Connection } from '#db/queries/connection';
 

@@ -15,7 +15,7 @@ import { acknowledgeUrl } from '#lib/services/alerts/acknowledgeLink';
 import { eachAlone, restingSubjects } from '../jobs/alone';
 import type { ChangeWords } from './describeChange';
 import { exceedanceMail } from './exceedanceMail';
-import { messageIdOf } from './messageId';
+import { messageIdOf } from '#lib/services/mails/messageId';
 
 const JOB = 'compose-alerts';
 

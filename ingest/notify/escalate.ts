@@ -17,7 +17,7 @@ import { acknowledgeUrl } from '#lib/services/alerts/acknowledgeLink';
 import { concernsEverybody, eachAlone, networkSubject } from '../jobs/alone';
 import { describeExceedance } from './describeExceedance';
 import { exceedanceMail } from './exceedanceMail';
-import { messageIdOf } from './messageId';
+import { messageIdOf } from '#lib/services/mails/messageId';
 
 const JOB = 'escalate';
 /** A worker that was away so long does not wake people for what is past. */

@@ -1,4 +1,4 @@
-import { messageIdOf } from '#ingest/notify/messageId';
+import { messageIdOf } from '#lib/services/mails/messageId';
 import { type Connection } from '#db/queries/connection';
 import { type IssuedSummaryRow } from '#db/queries/issuedSummaries';
 import { type NetworkRow } from '#db/queries/networks';

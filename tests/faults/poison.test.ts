@@ -3,7 +3,7 @@ import { db } from '#db/client';
 import { inTransaction } from '#db/queries/connection';
 import { listJobTroubles, wakeJobTroubles } from '#db/queries/jobTroubles';
 import { insertMail } from '#db/queries/outbox';
-import { messageIdOf } from '#ingest/notify/messageId';
+import { messageIdOf } from '#lib/services/mails/messageId';
 import { sendDueMail } from '#ingest/notify/sendOutbox';
 import { sendDueWebhook } from '#ingest/notify/sendWebhooks';
 import { aggregate } from '#ingest/jobs/aggregate';

@@ -10,7 +10,7 @@ import { afterEach, beforeEach, expect, test } from 'vitest';
 import { db } from '#db/client';
 import { inTransaction } from '#db/queries/connection';
 import { insertMail } from '#db/queries/outbox';
-import { messageIdOf } from '#ingest/notify/messageId';
+import { messageIdOf } from '#lib/services/mails/messageId';
 import { sendDueMail } from '#ingest/notify/sendOutbox';
 import { makeTransport } from '#ingest/notify/transport';
 import { mailPage, retryMail } from '#lib/services/mails/outbox';

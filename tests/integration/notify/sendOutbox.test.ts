@@ -2,7 +2,7 @@ import { beforeEach, expect, test } from 'vitest';
 import { db } from '#db/client';
 import { inTransaction } from '#db/queries/connection';
 import { insertMail } from '#db/queries/outbox';
-import { messageIdOf } from '#ingest/notify/messageId';
+import { messageIdOf } from '#lib/services/mails/messageId';
 import { sendDueMail, type SenderSettings } from '#ingest/notify/sendOutbox';
 import { useFreshSchema } from '../support/freshSchema';
 

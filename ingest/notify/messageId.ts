@@ -1,1 +1,0 @@
-export { messageIdOf } from '#lib/services/mails/messageId';
