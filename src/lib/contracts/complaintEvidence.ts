@@ -6,6 +6,14 @@ const level = z
   .nullable()
   .describe('dB, rounded once, half up, to 0.1; null where nothing contributes');
 
+/** Fewer comparable weeks than this say nothing about what is usual. Our own rule. */
+export const FEWEST_WEEKS = 3;
+
+/** The usual level, dB, where enough weeks stand behind it to be called so. */
+export function usualDbOf(usual: { validWeeks: number; median: number | null }): number | null {
+  return usual.validWeeks < FEWEST_WEEKS ? null : usual.median;
+}
+
 /** What is usual at a station: the same weekday and clock window in the weeks before. */
 export const usualSchema = z.object({
   weeks: z.number().int(),

@@ -1,10 +1,7 @@
 import { toTenths } from '#lib/acoustics/rounding';
-import type { Usual } from '#lib/contracts/complaintEvidence';
+import { FEWEST_WEEKS, type Usual } from '#lib/contracts/complaintEvidence';
 import { weekdaysInWords } from './times';
 import { differenceInWords, levelInWords, numberInWords } from './words';
-
-/** Fewer comparable weeks than this say nothing about what is usual. Our own rule. */
-export const FEWEST_WEEKS = 3;
 
 /** The level of the window against the same weekday and hours of the weeks before, at that place. */
 export function comparedParagraph(laeqDb: number, usual: Usual, fromSec: number, zone: string): string {

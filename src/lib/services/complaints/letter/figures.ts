@@ -1,8 +1,7 @@
 import { toTenths } from '#lib/acoustics/rounding';
-import type { StationEvidence } from '#lib/contracts/complaintEvidence';
+import { FEWEST_WEEKS, type StationEvidence } from '#lib/contracts/complaintEvidence';
 import { distanceInWords } from '../whereabouts';
 import { nearestOf, type LetterFacts } from './facts';
-import { FEWEST_WEEKS } from './compared';
 import { dataState } from './measured';
 import { differenceInWords, levelInWords, shareInWords } from './words';
 

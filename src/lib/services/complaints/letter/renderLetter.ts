@@ -1,10 +1,10 @@
 import type { LetterFacts } from './facts';
 import { fieldByName, neededStatements } from './fields';
 
-/** `{{name}}`, with or without spaces inside. */
-const FIELD = /\{\{\s*([^{}]*?)\s*\}\}/g;
+/** `{{name}}`, with or without spaces inside, which are not part of the name. Takes time in proportion to the text. */
+const FIELD = /\{\{([^{}]*)\}\}/g;
 /** A level that was typed by hand. */
-const TYPED_LEVEL = /\d(?:[\d.,]*\d)?\s*(?:dB|decibel)/i;
+const TYPED_LEVEL = /\d(?:[\d.,]{0,18}\d)?\s{0,9}(?:dB|decibel)/i;
 
 /** What is wrong with a letter's text, each in plain words with the way out; none: it may be rendered. */
 export function letterProblems(body: string): string[] {
@@ -37,7 +37,8 @@ export function renderLetter(body: string, facts: LetterFacts): string {
 
 function renderParagraph(paragraph: string, facts: LetterFacts): string {
   return paragraph
-    .replace(FIELD, (_, name: string) => {
+    .replace(FIELD, (_, inside: string) => {
+      const name = inside.trim();
       const field = fieldByName(name);
       if (!field) throw new RangeError(`A letter has no field ${name}.`);
       return field.render(facts);
@@ -56,5 +57,5 @@ function isAboutData(name: string): boolean {
 const DATA_STATEMENTS = new Set(['measured', 'compared', 'limits', 'tones', 'second-station', 'elsewhere']);
 
 function namesIn(body: string): string[] {
-  return [...body.matchAll(FIELD)].map((match) => match[1] ?? '');
+  return [...body.matchAll(FIELD)].map((match) => match[1]?.trim() ?? '');
 }

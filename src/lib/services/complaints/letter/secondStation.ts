@@ -1,7 +1,6 @@
 import { toTenths } from '#lib/acoustics/rounding';
-import type { StationEvidence } from '#lib/contracts/complaintEvidence';
+import { FEWEST_WEEKS, type StationEvidence } from '#lib/contracts/complaintEvidence';
 import { nearestOf, othersOf, type LetterFacts } from './facts';
-import { FEWEST_WEEKS } from './compared';
 import { dataState, introduced } from './measured';
 import { levelInWords } from './words';
 
