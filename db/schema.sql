@@ -453,6 +453,14 @@ CREATE TABLE `dirty_marks` (
   KEY `dirty_marks_quarter` (`station_id`,`quarter_starts_at`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
+CREATE TABLE `disk_samples` (
+  `taken_at` datetime(3) NOT NULL,
+  `total_bytes` bigint(20) unsigned NOT NULL COMMENT 'of the file system that holds the data directory',
+  `free_bytes` bigint(20) unsigned NOT NULL COMMENT 'that Bittern may still write',
+  `database_bytes` bigint(20) unsigned NOT NULL COMMENT 'of all tables',
+  PRIMARY KEY (`taken_at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
 CREATE TABLE `doubt_decisions` (
   `calibration_id` int(10) unsigned NOT NULL COMMENT 'the check that made the data doubtful',
   `station_id` int(10) unsigned NOT NULL,
@@ -681,6 +689,14 @@ CREATE TABLE `interval_levels` (
   `import_id` int(10) unsigned DEFAULT NULL,
   `received_at` int(10) unsigned NOT NULL COMMENT 'epoch seconds UTC',
   PRIMARY KEY (`station_id`,`starts_at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `interval_retention` (
+  `network_id` int(10) unsigned NOT NULL,
+  `keep_months` smallint(5) unsigned DEFAULT NULL COMMENT 'single intervals of whole months older than this are deleted; null: never',
+  `changed_by` char(36) NOT NULL,
+  `changed_at` datetime(3) NOT NULL,
+  PRIMARY KEY (`network_id`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
 CREATE TABLE `invitations` (
@@ -1066,6 +1082,14 @@ CREATE TABLE `report_forms` (
   `changed_by` char(36) NOT NULL,
   `changed_at` datetime(3) NOT NULL,
   PRIMARY KEY (`network_id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `sealed_stations` (
+  `station_id` int(10) unsigned NOT NULL,
+  `sealed_before` int(10) unsigned NOT NULL COMMENT 'epoch seconds; what is computed of earlier time is never computed anew, and nothing of it is taken or changed',
+  `kept_from` int(10) unsigned NOT NULL COMMENT 'epoch seconds; single intervals that begin before are no longer kept',
+  `sealed_at` datetime(3) NOT NULL COMMENT 'deleting begins a while later, when everybody reads sums instead',
+  PRIMARY KEY (`station_id`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
 CREATE TABLE `second_factors` (

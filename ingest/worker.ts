@@ -9,6 +9,7 @@ import { composeAlerts } from './jobs/composeAlerts';
 import { completeEndedPeriods } from './jobs/completePeriods';
 import { draftSummaries } from './jobs/draftSummaries';
 import { escalateUnacknowledged } from './jobs/escalate';
+import { forecastDisk } from './jobs/forecastDisk';
 import { housekeeping } from './jobs/housekeeping';
 import { importFiles } from './jobs/importFiles';
 import { judgeLimits } from './jobs/judgeLimits';
@@ -21,6 +22,7 @@ import { remindOfComplaints } from './jobs/remindComplaints';
 import { shiftClocks } from './jobs/shiftClocks';
 import { sendMail } from './jobs/sendMail';
 import { sendWebhooks } from './jobs/sendWebhooks';
+import { retainIntervals } from './jobs/retainIntervals';
 import { runDueSlots, type SlotJob } from './jobs/slots';
 import { traceDays } from './jobs/traceDays';
 import { watchDrifts } from './jobs/watchDrifts';
@@ -38,6 +40,7 @@ const LOOPS: LoopSettings[] = [
   { name: 'make-summaries', everySec: 5, work: makeSummaries, locksItself: true },
   { name: 'compose-alerts', everySec: 10, work: composeAlerts },
   { name: 'escalate', everySec: 20, work: escalateUnacknowledged },
+  { name: 'retain-intervals', everySec: 900, work: retainIntervals },
   { name: 'send-mail', everySec: 2, work: sendMail },
   { name: 'send-webhooks', everySec: 3, work: sendWebhooks },
   { name: 'warn-early', everySec: 60, work: warnOfHeadings },
@@ -50,6 +53,7 @@ const SLOT_JOBS: SlotJob[] = [
   { name: 'tick', slotMinutes: 1, run: async () => 'alive' },
   { name: 'complete-periods', slotMinutes: 15, run: completeEndedPeriods },
   { name: 'housekeeping', slotMinutes: 60, run: housekeeping },
+  { name: 'forecast-disk', slotMinutes: 60, run: forecastDisk },
   { name: 'watch-drifts', slotMinutes: 24 * 60, run: watchDrifts },
   { name: 'remind-calibrations', slotMinutes: 60, run: remindOfCalibrations },
   { name: 'draft-summaries', slotMinutes: 15, run: draftSummaries },

@@ -147,11 +147,14 @@ export async function insertClockShift(shift: NewClockShift, conn: Connection): 
 export async function lockClockShift(
   id: number,
   transaction: Connection,
-): Promise<Pick<ClockShiftRow, 'state' | 'movedCount' | 'asideCount'>> {
-  return transaction('clock_shifts')
-    .where({ id })
-    .forUpdate()
-    .first({ state: 'state', movedCount: 'moved_count', asideCount: 'aside_count' });
+): Promise<Pick<ClockShiftRow, 'state' | 'fromSec' | 'shiftSec' | 'movedCount' | 'asideCount'>> {
+  return transaction('clock_shifts').where({ id }).forUpdate().first({
+    state: 'state',
+    fromSec: 'from_sec',
+    shiftSec: 'shift_sec',
+    movedCount: 'moved_count',
+    asideCount: 'aside_count',
+  });
 }
 
 interface ClockShiftChange {

@@ -166,7 +166,7 @@ export async function markUncomputedPeriod(
   return marks.length;
 }
 
-/** Drops every day period of a station. */
-export async function deleteDayPeriods(stationId: number, conn: Connection): Promise<void> {
-  await conn('day_periods').where({ station_id: stationId }).delete();
+/** Drops every day period of a station that begins at `fromSec` or later. */
+export async function deleteDayPeriods(stationId: number, fromSec: number, conn: Connection): Promise<void> {
+  await conn('day_periods').where({ station_id: stationId }).where('starts_at', '>=', fromSec).delete();
 }

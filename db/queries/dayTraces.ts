@@ -27,6 +27,14 @@ export async function dropDayTraces(
   );
 }
 
+/** Drops traces of a station's days that begin at `fromSec` or later. */
+export async function dropTracesFrom(stationId: number, fromSec: number, conn: Connection): Promise<void> {
+  await conn('station_day_traces')
+    .where({ station_id: stationId })
+    .where('starts_at', '>=', fromSec)
+    .delete();
+}
+
 /** Drops every trace of a station. */
 export async function deleteDayTraces(stationId: number, conn: Connection): Promise<void> {
   await conn('station_day_traces').where({ station_id: stationId }).delete();

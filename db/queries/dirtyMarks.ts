@@ -45,7 +45,7 @@ export async function deleteDirtyMarks(ids: readonly number[], conn: Connection)
   }
 }
 
-/** Quarter-hours of a station that begin in `fromSec <= t < toSec` and wait for recomputation. */
+/** Quarter-hours of a station that begin in `fromSec <= t < toSec` and wait for recomputation; sealed ones never do. */
 export async function dirtyQuartersIn(
   stationId: number,
   fromSec: number,
@@ -56,6 +56,10 @@ export async function dirtyQuartersIn(
     .where({ station_id: stationId })
     .where('quarter_starts_at', '>=', fromSec)
     .where('quarter_starts_at', '<', toSec)
+    .whereRaw(
+      'quarter_starts_at >= COALESCE((SELECT sealed_before FROM sealed_stations WHERE sealed_stations.station_id = ?), 0)',
+      [stationId],
+    )
     .distinct()
     .pluck('quarter_starts_at');
   return new Set(quarters);

@@ -110,9 +110,13 @@ export async function insertQuarterHours(
   });
 }
 
-/** Drops every quarter-hour of a station. */
-export async function deleteQuarterHours(stationId: number, conn: Connection): Promise<void> {
-  await conn('quarter_hours').where({ station_id: stationId }).delete();
+/** Drops every quarter-hour of a station that begins at `fromSec` or later. */
+export async function deleteQuarterHours(
+  stationId: number,
+  fromSec: number,
+  conn: Connection,
+): Promise<void> {
+  await conn('quarter_hours').where({ station_id: stationId }).where('starts_at', '>=', fromSec).delete();
 }
 
 /** Marks for recomputation every computed quarter-hour of a station that begins in `fromSec <= t < toSec`. */

@@ -2,6 +2,7 @@ import { inTransaction, type Connection } from '#db/queries/connection';
 import { dropDayTraces } from '#db/queries/dayTraces';
 import { deleteDirtyMarks, readDirtyMarks, type DirtyMark } from '#db/queries/dirtyMarks';
 import { listSettings, type NetworkSettings } from '#db/queries/networks';
+import { findSeal } from '#db/queries/retention';
 import { findStationById, lockStation, type StationRow } from '#db/queries/stations';
 import { eachStation, restingStationIds } from '../jobs/stationsAlone';
 import { chunksOf, marksByStation, type Chunk } from './chunks';
@@ -60,14 +61,16 @@ async function aggregateStation(
   onQuartersRecomputed: OnQuartersRecomputed,
 ): Promise<number> {
   const station = await findStationById(stationId);
-  if (!station) {
-    await inTransaction((transaction) =>
-      deleteDirtyMarks(
-        marks.map(({ id }) => id),
-        transaction,
-      ),
+  if (!station) return forget(marks);
+  const { sealedBeforeSec } = await findSeal(stationId);
+  const sealed = marks.filter(({ quarterStartSec }) => quarterStartSec < sealedBeforeSec);
+  if (sealed.length > 0) {
+    await forget(sealed);
+    return aggregateStation(
+      stationId,
+      marks.filter((mark) => !sealed.includes(mark)),
+      onQuartersRecomputed,
     );
-    return 0;
   }
   const timeline = await listSettings(station.networkId);
   let quarters = 0;
@@ -76,6 +79,13 @@ async function aggregateStation(
     quarters += chunk.quarterStartsSec.length;
   }
   return quarters;
+}
+
+/** Deletes marks of what is gone, or sealed and so never computed anew. */
+async function forget(marks: readonly DirtyMark[]): Promise<number> {
+  const ids = marks.map(({ id }) => id);
+  await inTransaction((transaction) => deleteDirtyMarks(ids, transaction));
+  return 0;
 }
 
 /** Recomputes until no mark is left that had been made when this began to look. Answers the quarter-hours recomputed. */

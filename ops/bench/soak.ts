@@ -22,8 +22,6 @@ const QUARTER_SEC = 900;
 const DRAIN_TIMEOUT_MS = 1_200_000;
 /** Monitors that post at once in the undisturbed run, which waits for no clock. */
 const CALM_AT_ONCE = 12;
-/** Minutes in each file that is brought. */
-const CARD_ROWS = 6000;
 
 const dataMinutes = Math.max(30, Math.round(options.minutes * options.speed));
 const firstSec = firstSecond();
@@ -53,7 +51,7 @@ async function soak(): Promise<boolean> {
     `${stations} stations, ${dataMinutes} minutes of data from ${new Date(firstSec * 1000).toISOString()}, ` +
       `posted over ${minutes} minutes, seed ${seed}; web: ${webScript()}; load ${loadavg()[0]?.toFixed(1)}`,
   );
-  instance = await Instance.start(directory);
+  instance = await Instance.start(directory, options.paired);
   const disturbed = await disturbedRun(instance);
   const calm = await calmRun(instance);
   stop.signal.throwIfAborted();
@@ -74,7 +72,11 @@ async function disturbedRun(on: Instance): Promise<Answers> {
   const startMs = Date.now();
   const msOfMinute = (options.minutes * 60_000) / dataMinutes;
   const killing = new AbortController();
-  const kills = killAtRandom(on, options.seed, AbortSignal.any([killing.signal, stop.signal]));
+  const kills = killAtRandom(
+    on,
+    { seed: options.seed, longestGapSec: options.killsWithin },
+    AbortSignal.any([killing.signal, stop.signal]),
+  );
   const answers = new Answers();
   try {
     await Promise.all([
@@ -122,7 +124,8 @@ function placeOf(
 ) {
   const given = givenBy(options.seed, station, firstSec, dataMinutes);
   const address = `10.0.${Math.floor(station / 250)}.${(station % 250) + 1}`;
-  return { origin: on.origin, token, address, given, answers, dueInMs };
+  const origin = on.origins[station % on.origins.length] ?? '';
+  return { origin, token, address, given, answers, dueInMs };
 }
 
 /** Makes a database with its stations. @returns their tokens. */
@@ -135,7 +138,7 @@ async function prepare(on: Instance, databaseName: string): Promise<string[]> {
 
 /** Files of the month before, brought, undone and redone while monitors post. */
 function bringFiles(on: Instance, databaseName: string): Promise<void> {
-  const given = [String(firstSec - (CARD_ROWS + 60) * 60), String(CARD_ROWS)];
+  const given = [String(firstSec - (options.cardRows + 60) * 60), String(options.cardRows)];
   return runScript('ops/bench/support/soak/bring.ts', given, on.environment(databaseName), stop.signal);
 }
 

@@ -81,6 +81,11 @@ function spawnServer(
       '--innodb-log-file-size=256M',
       '--max-connections=200',
       '--max-allowed-packet=64M',
+      // Slower statements, for whoever operates it; they may hold what people typed, so the file is its owner's alone.
+      '--slow-query-log=1',
+      `--slow-query-log-file=${join(directory, 'slow.log')}`,
+      '--long-query-time=2',
+      '--log-slow-verbosity=query_plan',
     ],
     { stdio: ['ignore', log, log], detached: true },
   );

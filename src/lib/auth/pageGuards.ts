@@ -1,5 +1,6 @@
 import type { AstroGlobal } from 'astro';
 import { Problem } from '#lib/http/problem';
+import { SealedError } from '#lib/services/retention/seal';
 import { FACTOR_FIRST } from './factorWanted';
 import { requireAdministrator, requireSession } from './guards';
 import { enterNetwork, type NetworkAccess } from './networkAccess';
@@ -48,6 +49,9 @@ export async function orRefusal<T>(astro: AstroGlobal, step: () => Promise<T>): 
   try {
     return await step();
   } catch (error) {
+    if (error instanceof SealedError) {
+      return astro.rewrite(`/refused?status=409&detail=${encodeURIComponent(error.message)}`);
+    }
     if (!(error instanceof Problem)) throw error;
     if (error.status === 404) return astro.rewrite('/404');
     if (error.code === FACTOR_FIRST) {

@@ -17,6 +17,8 @@ export interface Config {
   logLevel: string;
   metricsToken: string | null;
   dataDir: string;
+  /** Operators are warned when the disk will be full within so many days. */
+  diskWarnDays: number;
   /** Largest file of intervals that may be uploaded. */
   importMostBytes: number;
   /** What each web process takes from monitors in a minute. */
@@ -102,6 +104,7 @@ export function parseConfig(environment: Record<string, string | undefined>): Co
     logLevel: settings.BITTERN_LOG_LEVEL,
     metricsToken: settings.BITTERN_METRICS_TOKEN ?? null,
     dataDir: settings.BITTERN_DATA_DIR,
+    diskWarnDays: settings.BITTERN_DISK_WARN_DAYS,
     importMostBytes: settings.BITTERN_IMPORT_MAX_MIB * 1024 * 1024,
     receiving: {
       postsPerMinuteOfToken: settings.BITTERN_POSTS_PER_MINUTE_TOKEN,

@@ -71,6 +71,7 @@ export const settingsSchema = z.object({
     .string()
     .regex(/^[A-Za-z0-9_]{1,64}$/, 'may hold letters, digits and _ only')
     .default('bittern'),
+  BITTERN_DISK_WARN_DAYS: z.coerce.number().int().min(1).max(365).default(30),
   BITTERN_DB_MIGRATE: isTrue('true'),
   BITTERN_DB_POOL_MAX: z.coerce.number().int().min(2).max(200).default(12),
 

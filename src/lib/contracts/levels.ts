@@ -80,6 +80,13 @@ export const statisticsSchema = z.object({
     .object({ NR: z.number().int(), governingHz: z.number(), isAtLeast: z.boolean() })
     .nullable()
     .describe('NR of the octave spectrum; meant for rooms. isAtLeast: an octave is missing'),
+  note: z
+    .string()
+    .nullable()
+    .describe(
+      'Where the period reaches back to where single intervals are no longer kept: what the figures are from. from and to are then whole ' +
+        'quarter-hours, and L_N per band may be missing',
+    ),
 });
 export type Statistics = z.output<typeof statisticsSchema>;
 

@@ -1,4 +1,5 @@
 import { ZodError } from 'zod';
+import { SealedError } from '#lib/services/retention/seal';
 import { Problem } from './problem';
 
 /** What a person typed, by field; a field that may hold several values holds the last here and all in `all`. */
@@ -100,6 +101,7 @@ function formErrors(error: unknown): FormErrors | null {
       error.issues.map((issue) => ({ field: String(issue.path[0] ?? ''), message: issue.message })),
     );
   }
+  if (error instanceof SealedError) return { '': error.message };
   if (!(error instanceof Problem) || error.status < 400 || error.status >= 500) return null;
   const fields = error.extra.members?.['fields'] as { field: string; message: string }[] | undefined;
   return fields ? firstOfEach(fields) : { '': error.detail ?? error.title };

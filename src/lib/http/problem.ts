@@ -38,6 +38,9 @@ export const invalidFields = (fields: { field: string; message: string }[]) =>
     { members: { fields } },
   );
 
+/** A change, or a question, about time whose figures are sealed. */
+export const sealed = ({ message }: Error) => new Problem(409, 'sealed', 'Sealed', message);
+
 /** The problem as a response of type `application/problem+json`. */
 export function problemResponse(problem: Problem): Response {
   return responseOf(problemAnswer(problem));

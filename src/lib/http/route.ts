@@ -1,8 +1,9 @@
 import type { APIContext, APIRoute } from 'astro';
 import { ZodError } from 'zod';
 import { log } from '#lib/config/log';
+import { SealedError } from '#lib/services/retention/seal';
 import { isDatabaseAway } from './databaseAway';
-import { invalidFields, Problem, problemResponse } from './problem';
+import { invalidFields, Problem, problemResponse, sealed } from './problem';
 
 /** Wraps a handler so that every way out is an answer to the contract: whatever it throws becomes problem details. */
 export function route(handler: (context: APIContext) => Promise<Response> | Response): APIRoute {
@@ -18,6 +19,7 @@ export function route(handler: (context: APIContext) => Promise<Response> | Resp
 /** What to tell the caller about an error; an unforeseen one is logged and told without its insides. */
 export function problemOf(error: unknown, path: string): Problem {
   if (error instanceof Problem) return error;
+  if (error instanceof SealedError) return sealed(error);
   if (error instanceof ZodError) return invalidFields(fieldsOf(error));
   if (isDatabaseAway(error)) {
     log().warn({ err: error, path: loggedPath(path) }, 'database away');

@@ -57,8 +57,10 @@ export class OwnServer {
     this.server = await startDatabase(this.place);
   }
 
-  async stop(): Promise<void> {
+  /** Stops it for good and removes its files, before which `release` lets go of them. */
+  async stop(release: () => void = () => undefined): Promise<void> {
     await this.server.stop();
+    release();
     rmSync(this.place.directory, { recursive: true, force: true });
   }
 }

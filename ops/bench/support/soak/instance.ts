@@ -6,40 +6,55 @@ import { startDatabase } from '#ops/database/server';
 import { untilAnswers } from '#ops/start/untilAnswers';
 import { freePorts } from './ports';
 
-export const VICTIMS = ['web', 'worker', 'database'] as const;
+const VICTIMS = ['web', 'worker', 'database', 'web2', 'worker2'] as const;
 export type Victim = (typeof VICTIMS)[number];
 
 const START_TIMEOUT_MS = 90_000;
 const STOP_TIMEOUT_MS = 25_000;
 const AFTER_OWN_END_MS = 500;
 
-/** A MariaDB, a web and a worker of the soak's own, each of which may be killed and is then started again. */
+/** A MariaDB, a web and a worker of the soak's own, or two of each, each of which may be killed and is then started again. */
 export class Instance {
   /** How often a process ended though nobody had killed it. */
   ownEnds = 0;
   readonly #processes = new Map<Victim, ChildProcess>();
   readonly #restarts = new Set<Promise<void>>();
   readonly #directory: string;
-  readonly #ports: { web: number; database: number };
+  readonly #ports: { web: number; web2: number; database: number };
   #databaseName = '';
   /** Of web and worker; the database runs on between the two runs. */
   #areWanted = false;
   #isDatabaseWanted = true;
 
-  private constructor(directory: string, ports: { web: number; database: number }) {
+  private constructor(
+    directory: string,
+    ports: { web: number; web2: number; database: number },
+    readonly isPaired: boolean,
+  ) {
     this.#directory = directory;
     this.#ports = ports;
   }
 
-  static async start(directory: string): Promise<Instance> {
-    const [web = 0, database = 0] = await freePorts(2);
-    const instance = new Instance(directory, { web, database });
+  static async start(directory: string, isPaired: boolean): Promise<Instance> {
+    const [web = 0, database = 0, web2 = 0] = await freePorts(3);
+    const instance = new Instance(directory, { web, web2, database }, isPaired);
     await instance.#startVictim('database');
     return instance;
   }
 
-  get origin(): string {
-    return `http://127.0.0.1:${this.#ports.web}`;
+  /** Of the webs. */
+  get origins(): string[] {
+    const { web, web2 } = this.#ports;
+    return (this.isPaired ? [web, web2] : [web]).map(originAt);
+  }
+
+  /** What may be killed. */
+  get victims(): readonly Victim[] {
+    return this.isPaired ? VICTIMS : VICTIMS.slice(0, 3);
+  }
+
+  get #bitterns(): Exclude<Victim, 'database'>[] {
+    return this.isPaired ? ['web', 'web2', 'worker', 'worker2'] : ['web', 'worker'];
   }
 
   get databasePort(): number {
@@ -47,11 +62,11 @@ export class Instance {
   }
 
   /** Settings of Bittern's processes, on a database of some name. */
-  environment(databaseName: string): Record<string, string> {
+  environment(databaseName: string, web: 'web' | 'web2' = 'web'): Record<string, string> {
     return {
       BITTERN_DATA_DIR: this.#directory,
-      BITTERN_PORT: String(this.#ports.web),
-      BITTERN_ORIGIN: this.origin,
+      BITTERN_PORT: String(this.#ports[web]),
+      BITTERN_ORIGIN: originAt(this.#ports[web]),
       // Monitors that all post from one address would share what an address may do.
       BITTERN_TRUSTED_PROXIES: '1',
       BITTERN_DB_HOST: '127.0.0.1',
@@ -64,12 +79,12 @@ export class Instance {
     };
   }
 
-  /** Starts web and worker on a database, and waits until the web answers. */
+  /** Starts webs and workers on a database, and waits until the webs answer. */
   async startBittern(databaseName: string): Promise<void> {
     this.#databaseName = databaseName;
     this.#areWanted = true;
-    await Promise.all([this.#startVictim('web'), this.#startVictim('worker')]);
-    await untilAnswers(`${this.origin}/healthz`, START_TIMEOUT_MS);
+    await Promise.all(this.#bitterns.map((victim) => this.#startVictim(victim)));
+    await Promise.all(this.origins.map((origin) => untilAnswers(`${origin}/healthz`, START_TIMEOUT_MS)));
   }
 
   /** Kills a process outright and starts it again after `downMs`. */
@@ -86,7 +101,7 @@ export class Instance {
   async stopBittern(): Promise<void> {
     this.#areWanted = false;
     await Promise.all([...this.#restarts]);
-    await Promise.all([this.#stopVictim('web'), this.#stopVictim('worker')]);
+    await Promise.all(this.#bitterns.map((victim) => this.#stopVictim(victim)));
   }
 
   async stop(): Promise<void> {
@@ -121,10 +136,11 @@ export class Instance {
     return (await startDatabase({ directory: join(this.#directory, 'mariadb'), ...place })).process;
   }
 
-  #spawnBittern(victim: 'web' | 'worker'): ChildProcess {
+  #spawnBittern(victim: Exclude<Victim, 'database'>): ChildProcess {
+    const isWeb = victim === 'web' || victim === 'web2';
     const log = openSync(join(this.#directory, `${victim}-${this.#databaseName}.log`), 'a');
-    return spawn(process.execPath, ['--import', 'tsx', victim === 'web' ? webScript() : 'ingest/worker.ts'], {
-      env: { ...process.env, ...this.environment(this.#databaseName) },
+    return spawn(process.execPath, ['--import', 'tsx', isWeb ? webScript() : 'ingest/worker.ts'], {
+      env: { ...process.env, ...this.environment(this.#databaseName, isWeb ? victim : 'web') },
       stdio: ['ignore', log, log],
       // Ctrl-C reaches the terminal's whole process group; the order of stopping is ours to keep.
       detached: true,
@@ -140,6 +156,8 @@ export class Instance {
     clearTimeout(lastResort);
   }
 }
+
+const originAt = (port: number) => `http://127.0.0.1:${port}`;
 
 /** The built web where there is one, otherwise its stand-in. */
 export function webScript(): string {

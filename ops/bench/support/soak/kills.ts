@@ -1,31 +1,34 @@
 import { setTimeout as sleep } from 'node:timers/promises';
-import { VICTIMS, type Instance, type Victim } from './instance';
+import type { Instance, Victim } from './instance';
 import { Random } from './random';
 
 const SHORTEST_GAP_MS = 2_000;
-const LONGEST_GAP_MS = 12_000;
 const LONGEST_DOWN_MS = 3_000;
 
 /**
  * Kills web, worker and database at random until `signal` aborts; each is started again after a moment, and a kill may come while
- * another of them is still down or starting. @returns how often each was killed.
+ * another of them is still down or starting. Each has been killed once before any is killed a second time.
+ * @param longestGapSec longest time between two kills.
+ * @returns how often each was killed.
  */
 export async function killAtRandom(
   instance: Instance,
-  seed: number,
+  { seed, longestGapSec }: { seed: number; longestGapSec: number },
   signal: AbortSignal,
-): Promise<Record<Victim, number>> {
+): Promise<Partial<Record<Victim, number>>> {
   const random = new Random(seed ^ 0x5eed);
-  const counts: Record<Victim, number> = { web: 0, worker: 0, database: 0 };
+  const counts = new Map<Victim, number>(instance.victims.map((victim) => [victim, 0]));
   const underWay = new Map<Victim, Promise<void>>();
   while (!signal.aborted) {
-    await sleep(random.between(SHORTEST_GAP_MS, LONGEST_GAP_MS), undefined, { signal }).catch(
+    await sleep(random.between(SHORTEST_GAP_MS, longestGapSec * 1000), undefined, { signal }).catch(
       () => undefined,
     );
-    const victim = random.oneOf(VICTIMS);
+    const fewest = Math.min(1, ...counts.values());
+    const open = [...counts].flatMap(([one, count]) => (fewest > 0 || count === 0 ? [one] : []));
+    const victim = random.oneOf(open as [Victim, ...Victim[]]);
     const downMs = random.between(0, LONGEST_DOWN_MS);
     if (signal.aborted || underWay.has(victim)) continue;
-    counts[victim] += 1;
+    counts.set(victim, (counts.get(victim) ?? 0) + 1);
     const kill = instance.kill(victim, downMs);
     underWay.set(
       victim,
@@ -33,5 +36,5 @@ export async function killAtRandom(
     );
   }
   await Promise.all(underWay.values());
-  return counts;
+  return Object.fromEntries(counts);
 }

@@ -6,6 +6,7 @@ import { lockStation, type StationRow } from '#db/queries/stations';
 import { type ClockShift, type NewClockShiftAsked } from '#lib/contracts/clockShifts';
 import { formatInstantUtc } from '#lib/contracts/common';
 import { done, invalid, type Outcome } from '../outcome';
+import { requireUnsealed } from '../retention/seal';
 import { clockShiftJson } from './clockShiftJson';
 import { planShift } from './plan';
 import { episodeOf } from './preview';
@@ -20,6 +21,8 @@ export async function makeShift(
   const episode = episodeOf(asked);
   return inTransaction<Outcome<ClockShift>>(async (transaction) => {
     await lockStation(station.id, transaction);
+    const { fromSec, shiftSec } = episode;
+    await requireUnsealed(station.id, Math.min(fromSec, fromSec + shiftSec), transaction);
     if (await isImportWorking(station.id, transaction)) {
       return invalid('from', 'must wait: a file of this station is being stored or undone');
     }

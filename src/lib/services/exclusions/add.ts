@@ -4,6 +4,7 @@ import { insertExclusion, readExclusion, type Span } from '#db/queries/exclusion
 import { findStation, lockStation, type StationRow } from '#db/queries/stations';
 import { formatInstantUtc } from '#lib/contracts/common';
 import { type Exclusion } from '#lib/contracts/exclusions';
+import { requireUnsealed } from '../retention/seal';
 import { exclusionJson } from './exclusionJson';
 import { markTouched } from './touched';
 
@@ -17,6 +18,7 @@ export interface ExclusionRequest extends Span {
 /**
  * Leaves a period of a station out of statistics from now on; null when the network has no such station. The data stay;
  * figures follow as quarter-hours are recomputed.
+ * @throws {SealedError} for a period before the station's seal.
  */
 export async function addExclusion(request: ExclusionRequest): Promise<Exclusion | null> {
   const station = await findStation(request.networkId, request.stationCode);
@@ -31,6 +33,7 @@ export async function exclude(
   transaction: Connection,
 ): Promise<Exclusion> {
   await lockStation(station.id, transaction);
+  await requireUnsealed(station.id, fromSec, transaction);
   const id = await insertExclusion(
     { networkId, stationId: station.id, fromSec, toSec, reason, createdBy: userId },
     transaction,

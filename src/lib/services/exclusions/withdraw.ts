@@ -9,6 +9,7 @@ import {
 } from '#db/queries/exclusions';
 import { lockStation } from '#db/queries/stations';
 import { type Exclusion } from '#lib/contracts/exclusions';
+import { requireUnsealed } from '../retention/seal';
 import { exclusionJson } from './exclusionJson';
 import { markTouched } from './touched';
 
@@ -56,6 +57,7 @@ async function withdrawFound(
   { networkId, reason, userId }: WithdrawalRequest,
   transaction: Connection,
 ): Promise<Exclusion | null> {
+  await requireUnsealed(stationId, fromSec, transaction);
   const changed = await withdrawExclusion(id, { by: userId, reason }, transaction);
   if (!changed) return null;
   await markTouched(stationId, { fromSec, toSec }, transaction);

@@ -8,6 +8,7 @@ export function cautionsOf(statistics: Statistics, intervals: IntervalFacts | nu
   return [
     'These are levels at the place of the microphone as installed, not of a source, a dwelling or a person. They hold every sound, ' +
       'whoever made it.',
+    ...(statistics.note === null ? [] : [statistics.note]),
     ...occupational(statistics),
     ...(statistics.coverage < 1
       ? ['Time without valid data is not silence: what happened then is not in any figure here.']

@@ -13,6 +13,7 @@ import {
 } from '../levels/accumulate';
 import { judgementOf, MOST_INTERVALS } from '../levels/intervalSums';
 import { type Span } from '../levels/spans';
+import { keptNote } from '../retention/kept';
 import { BlockTones } from './blockTones';
 import { type SheetSource } from './source';
 
@@ -27,13 +28,26 @@ export interface IntervalPass {
   tones: BlockTones;
 }
 
-/** Whether a period is short enough to be read interval by interval. */
-export function isReadable({ station, period }: Pick<SheetSource, 'station' | 'period'>): boolean {
+/** Whether a period is short enough to be read interval by interval, and its intervals are kept. */
+export function isReadable({
+  station,
+  period,
+  keptFromSec,
+}: Pick<SheetSource, 'station' | 'period' | 'keptFromSec'>): boolean {
+  if (period.fromSec < keptFromSec) return false;
   return (period.toSec - period.fromSec) / station.intervalSec <= MOST_READ;
 }
 
-/** Why a period that is too long for it is not read, in words. */
-export function notReadWords({ station }: Pick<SheetSource, 'station'>): string {
+/** Why a period that is too long for it, or whose intervals are gone, is not read, in words. */
+export function notReadWords({
+  station,
+  period,
+  keptFromSec,
+}: Pick<SheetSource, 'station' | 'period' | 'keptFromSec'>): string {
+  const gone = keptNote(period.fromSec, keptFromSec);
+  if (gone !== null) {
+    return `Counts by reason, raw figures and tones block by block are not given: every interval has to be read for them. ${gone}`;
+  }
   const longest = formatDuration(MOST_READ * station.intervalSec);
   return (
     `Counts by reason, raw figures and tones block by block are given of periods of up to ${longest} at this station, because ` +

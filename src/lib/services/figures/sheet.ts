@@ -8,6 +8,7 @@ import { periodFigures } from '../levels/figures';
 import { incidentOf } from '../levels/incident';
 import { QuarterSeries } from '../levels/quarterSeries';
 import { type Span } from '../levels/spans';
+import { keptFromSecOf, onQuarters } from '../retention/kept';
 import { periodWind, periodWindWords } from '../weather/periodWind';
 import { statisticsOf } from '../levels/statistics';
 import { addDays } from '#lib/time/zone';
@@ -109,7 +110,8 @@ async function sourceOf(
 ): Promise<SheetSource> {
   const timeline = await listSettings(station.networkId, conn);
   const { timeZone, minimumCoverage } = pickSettings(timeline, fromSec);
-  const period = { fromSec, toSec };
+  const keptFromSec = await keptFromSecOf(station.id, conn);
+  const period = onQuarters({ fromSec, toSec }, keptFromSec);
   const { fromDate, toDate } = datesTouched({ period, timeZone });
   const lastNightEndSec = datePeriods(addDays(toDate, -1), timeline).at(-1)?.toSec ?? toSec;
   const span = {
@@ -117,7 +119,7 @@ async function sourceOf(
     toSec: Math.max(toSec, dateSettings(toDate, timeline).midnightSec, lastNightEndSec),
   };
   const series = await QuarterSeries.read({ station, timeline, validity: 'rules' }, span, conn);
-  return { station, period, timeline, timeZone, minimumCoverage, nowSec, series, conn };
+  return { station, period, timeline, timeZone, minimumCoverage, nowSec, series, keptFromSec, conn };
 }
 
 async function standingExclusions({ station, period }: SheetSource): Promise<FigureSheet['exclusions']> {

@@ -17,6 +17,8 @@ export interface SheetSource {
   nowSec: number;
   /** Quarter-hours of every date that the period touches. */
   series: QuarterSeries;
+  /** Single intervals that begin before are no longer kept, epoch seconds. */
+  keptFromSec: number;
   conn: Connection;
 }
 

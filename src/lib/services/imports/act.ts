@@ -2,8 +2,10 @@ import { appendAudit } from '#db/queries/audit';
 import { selectStandingShifts } from '#db/queries/clockShifts';
 import { inTransaction, type Connection } from '#db/queries/connection';
 import { findImport, lockImport, updateImport, type ImportRow, type ImportState } from '#db/queries/imports';
+import { firstStartOfImport } from '#db/queries/retention';
 import { hasShiftedOfImport } from '#db/queries/shiftedStarts';
 import { type Import, type ImportAct, type ImportMapping } from '#lib/contracts/imports';
+import { requireUnsealed } from '../retention/seal';
 import { importJson } from './importJson';
 import { EMPTY_REPORT } from './report';
 
@@ -82,6 +84,7 @@ async function change({ networkId, id, userId }: Asked, act: Act): Promise<ActOu
   return inTransaction<ActOutcome>(async (transaction) => {
     const row: ImportRow = await lockImport(id, transaction);
     if (!act.from.includes(row.state)) return { kind: 'not-now', message: act.otherwise };
+    await requireUnsealedRows(row, act, transaction);
     const hindrance = await clockHindrance(row, act, transaction);
     if (hindrance !== null) return { kind: 'not-now', message: hindrance };
     const changes = { ...act.changes, actedBy: userId, actedAt: new Date() };
@@ -98,6 +101,17 @@ async function change({ networkId, id, userId }: Asked, act: Act): Promise<ActOu
     );
     return { kind: 'done', import: importJson(await lockImport(id, transaction)) };
   });
+}
+
+/** @throws {SealedError} where intervals that would be taken out, or brought back, are of sealed time. */
+async function requireUnsealedRows(
+  { id, stationId }: ImportRow,
+  { changes: { state } }: Act,
+  transaction: Connection,
+): Promise<void> {
+  if (state !== 'undoing' && state !== 'redoing') return;
+  const firstSec = await firstStartOfImport(stationId, id, transaction);
+  if (firstSec !== null) await requireUnsealed(stationId, firstSec, transaction);
 }
 
 /** Why a shift of the station's clock forbids to store or take out intervals now; null when none does. */

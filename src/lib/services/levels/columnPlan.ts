@@ -20,12 +20,18 @@ export interface ColumnPlan {
 /**
  * The finest steps that cover a period with at most `mostColumns` columns: whole multiples of the interval length, or, for a
  * period of more than 14 days, of the quarter-hour, unless more columns than usual are asked for and give steps finer than
- * that. Columns begin on whole multiples of that unit.
+ * that, or where intervals are no longer kept (before `keptFromSec`). Columns begin on whole multiples of that unit.
  */
-export function planColumns(period: Span, intervalSec: number, mostColumns: number): ColumnPlan {
+export function planColumns(
+  period: Span,
+  intervalSec: number,
+  mostColumns: number,
+  keptFromSec = 0,
+): ColumnPlan {
   const native = stepsOf(period, intervalSec, mostColumns);
   const isLong = period.toSec - period.fromSec > LONG_PERIOD_SEC;
-  if (isLong && (mostColumns <= USUAL_MOST_COLUMNS || native.stepSec >= QUARTER_SEC)) {
+  const isKept = period.fromSec >= keptFromSec;
+  if (!isKept || (isLong && (mostColumns <= USUAL_MOST_COLUMNS || native.stepSec >= QUARTER_SEC))) {
     return {
       ...stepsOf(period, leastCommonMultiple(QUARTER_SEC, intervalSec), mostColumns),
       source: 'quarter-hours',

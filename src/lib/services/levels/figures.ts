@@ -4,6 +4,7 @@ import { type StationRow } from '#db/queries/stations';
 import { type PeriodAccumulator } from '#lib/acoustics/periodStatistics';
 import { type PeriodSums } from '#lib/acoustics/periodSums';
 import { type Seconds } from '#lib/contracts/levels';
+import { keptFromSecOf, keptNote, onQuarters, requireKept } from '../retention/kept';
 import { type Validity } from './accumulate';
 import { currentSums } from './currentSums';
 import { type Span } from './spans';
@@ -31,6 +32,8 @@ export interface Coverage {
 export interface PeriodFigures extends Coverage, Span {
   /** Levels, percentiles and bands in dB; distributions per band only where they were asked for. */
   levels: PeriodAccumulator;
+  /** Said where the period reaches back to where single intervals are no longer kept; its ends are then whole quarter-hours. */
+  keptNote: string | null;
 }
 
 /** Slack of the comparison with the minimum coverage, for products such as 0.7 × 3600. */
@@ -61,7 +64,10 @@ export async function periodFigures(
   { bandPercentiles = false }: { bandPercentiles?: boolean } = {},
   conn: Connection = pool(),
 ): Promise<PeriodFigures> {
-  const { station, fromSec, toSec, validity = 'rules' } = query;
+  const { station, validity = 'rules' } = query;
+  const keptFromSec = await keptFromSecOf(station.id, conn);
+  const { fromSec, toSec } = onQuarters(query, keptFromSec);
+  if (validity === 'all') requireKept(fromSec, keptFromSec);
   const timeline = query.timeline ?? (await listSettings(station.networkId, conn));
   const nowSec = query.nowSec ?? Math.floor(Date.now() / 1000);
   const levels = await currentSums(
@@ -71,5 +77,11 @@ export async function periodFigures(
     conn,
   );
   const { minimumCoverage } = pickSettings(timeline, fromSec);
-  return { fromSec, toSec, levels, ...coverageOf(levels.sums, query, minimumCoverage, nowSec) };
+  const period = { fromSec, toSec };
+  return {
+    ...period,
+    levels,
+    keptNote: keptNote(fromSec, keptFromSec),
+    ...coverageOf(levels.sums, period, minimumCoverage, nowSec),
+  };
 }

@@ -6,7 +6,9 @@ import { type NetworkSettings } from '#db/queries/networks';
 import { type StationRow } from '#db/queries/stations';
 import { type WindRule } from '#lib/acoustics/windRule';
 import { PeriodAccumulator } from '#lib/acoustics/periodStatistics';
+import { keptFromSecOf, requireKept } from '../retention/kept';
 import { weatherAtStation } from '../weather/stationWeather';
+import { sumSealedQuarters } from './sealedQuarters';
 import { accumulate, type Judgement, type Validity } from './accumulate';
 import { mergedSpans, type Span } from './spans';
 
@@ -27,6 +29,11 @@ export interface LevelSource {
 /** Intervals that are held in memory at once: a month of minutes, half a day of seconds. */
 export const MOST_INTERVALS = 45_000;
 
+/** Whether what counts of a source is what its stored quarter-hours count. */
+function isAsStored({ validity, alsoExcluded, wind, moved }: LevelSource): boolean {
+  return validity === 'rules' && !alsoExcluded && !wind && !moved;
+}
+
 /** What decides which intervals of a period count: settings and standing exclusions. */
 export async function judgementOf(
   { station, timeline, validity, alsoExcluded = [], wind = null }: LevelSource,
@@ -45,14 +52,26 @@ export async function judgementOf(
   return { validity, timeline, exclusions: mergedSpans([...exclusions, ...alsoExcluded]), weather, wind };
 }
 
-/** Sums of a period straight from its intervals. */
+/**
+ * Sums of a period straight from its intervals; where these are no longer kept, of the quarter-hours that it touches, which have no
+ * distributions per band.
+ * @throws {SealedError} for what only intervals tell of time before they are kept.
+ */
 export async function sumIntervals(
   source: LevelSource,
-  period: Span,
+  asked: Span,
   options: { bandClasses: boolean },
   conn: Connection,
 ): Promise<PeriodAccumulator> {
   const whole = new PeriodAccumulator(options);
+  const keptFromSec = await keptFromSecOf(source.station.id, conn);
+  const period = { fromSec: Math.max(asked.fromSec, keptFromSec), toSec: asked.toSec };
+  if (asked.fromSec < keptFromSec) {
+    if (!isAsStored(source)) requireKept(asked.fromSec, keptFromSec);
+    const sealed = { fromSec: asked.fromSec, toSec: Math.min(asked.toSec, keptFromSec) };
+    whole.merge(await sumSealedQuarters(source.station.id, sealed, conn));
+    if (asked.toSec <= keptFromSec) return whole;
+  }
   const stepSec = MOST_INTERVALS * source.station.intervalSec;
   const partAt = (fromSec: number) => ({ fromSec, toSec: Math.min(fromSec + stepSec, period.toSec) });
   const read = (part: Span) => selectMeasuredIntervals(source.station.id, part.fromSec, part.toSec, conn);

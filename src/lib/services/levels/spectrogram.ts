@@ -6,6 +6,7 @@ import { type StationRow } from '#db/queries/stations';
 import { bandSlot, bandsOf, BAND_SLOTS } from '#lib/acoustics/bands';
 import { FLAG_NAMES, INVALIDITY_REASONS } from '#lib/acoustics/validity';
 import { type SpectrogramColumns } from '#lib/contracts/spectrogramBinary';
+import { keptFromSecOf } from '../retention/kept';
 import { planColumns } from './columnPlan';
 import { emptyColumns, type Columns } from './columns';
 import { currentQuarters } from './currentQuarters';
@@ -40,7 +41,7 @@ export async function spectrogram(
 ): Promise<SpectrogramColumns> {
   const { station, mostColumns } = query;
   const timeline = query.timeline ?? (await listSettings(station.networkId, conn));
-  const plan = planColumns(query, station.intervalSec, mostColumns);
+  const plan = planColumns(query, station.intervalSec, mostColumns, await keptFromSecOf(station.id, conn));
   const bands = bandsOf(station.bandFraction).filter(
     ({ index }) => station.firstBandIndex <= index && index <= station.lastBandIndex,
   );

@@ -61,6 +61,7 @@ export function statisticsOf(
     tonality: tonalityOf(station, levels),
     lowFrequency: lowFrequencyOf(levels),
     noiseRating: noiseRatingOf(octaves),
+    note: figures.keptNote,
   };
 }
 

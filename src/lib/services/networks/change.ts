@@ -8,11 +8,14 @@ import {
   type NetworkRow,
   type NetworkSettings,
 } from '#db/queries/networks';
+import { latestSeal } from '#db/queries/retention';
 import { type NetworkChanges } from '#lib/contracts/networks';
+import { refuseBefore } from '../retention/seal';
 
 /**
  * Renames a network and gives it new settings from `effectiveFrom` (now, if left out) on. Earlier settings keep their time.
  * Settings that reach back have what was computed since recomputed.
+ * @throws {SealedError} for settings that reach back to sealed time.
  */
 export function changeNetwork(
   network: NetworkRow,
@@ -28,6 +31,7 @@ export function changeNetwork(
     const hasNewSettings = !isSame(before, after);
     if (name !== network.name) await renameNetwork(network.id, name, transaction);
     if (hasNewSettings) {
+      refuseBefore(fromSec, (await latestSeal(network.id, transaction))?.sealedBeforeSec ?? 0);
       await insertSettings(network.id, after, userId, transaction);
       if (fromSec < nowSec) await markNetworkFrom(network.id, fromSec, transaction);
     }

@@ -1,0 +1,50 @@
+import { pool, type Connection } from './connection';
+
+/** How full the disk was. */
+export interface DiskSample {
+  takenAt: Date;
+  totalBytes: number;
+  /** That Bittern may still write. */
+  freeBytes: number;
+  /** Of all tables. */
+  databaseBytes: number;
+}
+
+/** Keeps how full the disk is; one of two at the same moment. */
+export async function insertDiskSample(sample: DiskSample, conn: Connection = pool()): Promise<void> {
+  await conn('disk_samples')
+    .insert({
+      taken_at: sample.takenAt,
+      total_bytes: sample.totalBytes,
+      free_bytes: sample.freeBytes,
+      database_bytes: sample.databaseBytes,
+    })
+    .onConflict(['taken_at'])
+    .merge();
+}
+
+/** Samples since an instant, oldest first. */
+export async function diskSamplesSince(since: Date, conn: Connection = pool()): Promise<DiskSample[]> {
+  const rows: Record<string, unknown>[] = await conn('disk_samples')
+    .where('taken_at', '>=', since)
+    .orderBy('taken_at');
+  return rows.map((row) => ({
+    takenAt: row['taken_at'] as Date,
+    totalBytes: Number(row['total_bytes']),
+    freeBytes: Number(row['free_bytes']),
+    databaseBytes: Number(row['database_bytes']),
+  }));
+}
+
+export async function deleteDiskSamplesBefore(before: Date, conn: Connection = pool()): Promise<number> {
+  return conn('disk_samples').where('taken_at', '<', before).delete();
+}
+
+/** Bytes of the tables of this database, as the server counts them. */
+export async function databaseBytes(conn: Connection = pool()): Promise<number> {
+  const [[row]] = (await conn.raw(
+    `SELECT COALESCE(SUM(data_length + index_length + data_free), 0) AS bytes FROM information_schema.tables
+     WHERE table_schema = DATABASE()`,
+  )) as [{ bytes: number | string }[]];
+  return Number(row?.bytes ?? 0);
+}

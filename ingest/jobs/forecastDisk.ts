@@ -1,0 +1,65 @@
+import { statfs } from 'node:fs/promises';
+import { inTransaction } from '#db/queries/connection';
+import {
+  databaseBytes,
+  deleteDiskSamplesBefore,
+  diskSamplesSince,
+  insertDiskSample,
+} from '#db/queries/diskSamples';
+import { listNetworks } from '#db/queries/networks';
+import { operatorAddresses } from '#db/queries/calibrationSettings';
+import { putNotes } from '#ingest/health/mail';
+import { config } from '#lib/config/index';
+import { diskForecast, type DiskForecast } from '#lib/services/operation/diskForecast';
+import { eachAlone, networkSubject } from './alone';
+
+const DAY_MS = 86_400_000;
+const LOOK_BACK_MS = 28 * DAY_MS;
+const KEEP_MS = 400 * DAY_MS;
+/** So little room is told of whatever the forecast says. */
+const LEAST_FREE_SHARE = 0.05;
+const GIB = 2 ** 30;
+
+/** Notes how full the disk is, and writes to operators, at most once a week, when it will be full within the setting's days. */
+export async function forecastDisk(now: Date): Promise<string> {
+  const { bavail, bsize, blocks } = await statfs(config().dataDir);
+  await insertDiskSample({
+    takenAt: now,
+    totalBytes: blocks * bsize,
+    freeBytes: bavail * bsize,
+    databaseBytes: await databaseBytes(),
+  });
+  await deleteDiskSamplesBefore(new Date(now.getTime() - KEEP_MS));
+  const forecast = diskForecast(await diskSamplesSince(new Date(now.getTime() - LOOK_BACK_MS)));
+  if (!forecast || !isLow(forecast, config().diskWarnDays)) return 'room enough';
+  const warn = ({ id }: { id: number }) => warnNetwork(id, forecast, now);
+  return `${await eachAlone('forecast-disk', await listNetworks(), networkSubject, warn, now)} warnings`;
+}
+
+/** Whether it will be full within some days, or nearly is. */
+export function isLow({ totalBytes, freeBytes, daysLeft }: DiskForecast, warnDays: number): boolean {
+  return (daysLeft !== null && daysLeft < warnDays) || freeBytes < LEAST_FREE_SHARE * totalBytes;
+}
+
+async function warnNetwork(networkId: number, forecast: DiskForecast, now: Date): Promise<number> {
+  const recipients = await operatorAddresses(networkId);
+  const { freeBytes, totalBytes, bytesADay, daysLeft } = forecast;
+  const gib = (bytes: number) => `${(bytes / GIB).toFixed(1)} GiB`;
+  const note = {
+    subject:
+      daysLeft === null ? 'The disk is nearly full' : `The disk will be full in ${Math.floor(daysLeft)} days`,
+    opening:
+      'When it is full, monitors are asked to come again and keep what they measure, and nothing is computed until there is room.',
+    facts: [
+      ['Free', `${gib(freeBytes)} of ${gib(totalBytes)}`],
+      ['Written a day', bytesADay === null ? 'not known yet' : gib(bytesADay)],
+    ] as const,
+    link: { label: 'Open Bittern', url: config().origin },
+    closing:
+      'You get this once a week, as an operator, until there is room. What to do: ops/guide.md, “What to watch”.',
+  };
+  const week = Math.floor(now.getTime() / (7 * DAY_MS));
+  return inTransaction((transaction) =>
+    putNotes(note, { networkId, kind: 'disk', key: `week ${week}` }, recipients, transaction),
+  );
+}
