@@ -1,5 +1,5 @@
 import { inTransaction } from '#db/queries/connection';
-import { listNetworks, findNetworkById } from '#db/queries/networks';
+import { listNetworks, findNetworkById, type NetworkRow } from '#db/queries/networks';
 import { withNamedLock } from '#db/queries/namedLock';
 import {
   findLatestDraft,
@@ -10,24 +10,26 @@ import {
   updateDraft,
   type SummaryDraftRow,
 } from '#db/queries/summaryDrafts';
+import { failureWords } from '#lib/config/failureWords';
 import { log } from '#lib/config/log';
 import { removeKeptFile } from '#lib/services/files/keptFile';
-import { keepDocument } from '#lib/services/summaries/life/document';
-import { keptFigures, measureMonth } from '#lib/services/summaries/life/measure';
 import { dueMonths } from '#lib/services/summaries/life/months';
+import { monthWork } from '#lib/services/summaries/work/months';
+import { eachAlone, networkSubject } from '../jobs/alone';
 import { issueMonth } from './issueMonth';
 
 /** Drafts the months that have closed since; of two workers at once one adds each month. @returns how many were added. */
 export async function addDueDrafts(now: Date): Promise<number> {
-  let added = 0;
-  for (const network of await listNetworks()) {
+  const addOfNetwork = async (network: NetworkRow) => {
+    let added = 0;
     const known = new Set((await listDrafts(network.id)).map(({ month }) => month));
     for (const { month } of await dueMonths(network, now)) {
       if (known.has(month)) continue;
       if (await insertDraft({ networkId: network.id, month, revision: 1 }, null)) added += 1;
     }
-  }
-  return added;
+    return added;
+  };
+  return eachAlone('draft-summaries', await listNetworks(), networkSubject, addOfNetwork, now);
 }
 
 /** Makes what waits longest: the figures of a draft, or the files of a month that somebody issues. @returns 1, or 0 when nothing waits. */
@@ -54,7 +56,7 @@ async function make(draft: SummaryDraftRow, now: Date): Promise<void> {
     else await computeDraft(draft, now);
   } catch (error) {
     log().error({ err: error, month: draft.month, network: draft.networkId }, 'month not made');
-    const failure = `It could not be made: ${error instanceof Error ? error.message : String(error)}`;
+    const failure = `It could not be made: ${failureWords(error)}`;
     // Tried again by hand, so that a month that always fails does not keep the worker busy.
     await updateDraft(draft, {
       failure,
@@ -69,10 +71,16 @@ async function make(draft: SummaryDraftRow, now: Date): Promise<void> {
 async function computeDraft(draft: SummaryDraftRow, now: Date): Promise<void> {
   const network = await findNetworkById(draft.networkId);
   if (!network) return;
-  const { doc, data } = await measureMonth(network, draft.month, now, (progress) => {
-    void updateDraft(draft, { progress }).catch(() => undefined);
-  });
-  const documentSha256 = await keepDocument(doc);
+  const measured = await monthWork(
+    'measure',
+    { network, month: draft.month, asOf: now, reviewed: null },
+    {
+      onProgress: ({ done }) => {
+        void updateDraft(draft, { progress: done }).catch(() => undefined);
+      },
+    },
+  );
+  const documentSha256 = Buffer.from(measured.documentSha256, 'hex');
   await inTransaction(async (transaction) => {
     const current = await lockDraft(draft, transaction);
     if (!current || current.state === 'issued') return;
@@ -81,8 +89,8 @@ async function computeDraft(draft: SummaryDraftRow, now: Date): Promise<void> {
       {
         computedAt: now,
         documentSha256,
-        dataSha256: Buffer.from(data.sha256, 'hex'),
-        figures: keptFigures(doc),
+        dataSha256: Buffer.from(measured.data.sha256, 'hex'),
+        figures: measured.figures,
         failure: null,
         progress: 0,
       },

@@ -14,17 +14,14 @@ import { type SummaryKeyRow } from '#db/queries/summaryKeys';
 import { replaceOpenProposals } from '#db/queries/summaryProposals';
 import { findUserById, type UserRow } from '#db/queries/users';
 import { config } from '#lib/config/index';
-import { type FigureChange } from '#lib/contracts/summaryLife';
-import { keepFile, removeKeptFile } from '#lib/services/files/keptFile';
+import { removeKeptFile } from '#lib/services/files/keptFile';
 import { softwareVersion } from '#lib/services/softwareVersion';
-import { renderFiles, type RenderedFile } from '#lib/services/summaries/document/render';
-import { changedFigures } from '#lib/services/summaries/life/changedFigures';
-import { differencesSinceIssue } from '#lib/services/summaries/life/differences';
-import { keepDocument, readDocument } from '#lib/services/summaries/life/document';
-import { keptFigures, measureMonth, type MeasuredMonth } from '#lib/services/summaries/life/measure';
+import { FILE_FORMATS, type RenderContext } from '#lib/services/summaries/document/render';
 import { signingKey, signWith } from '#lib/services/summaries/seal/keys';
-import { formatOf, manifestText } from '#lib/services/summaries/seal/manifest';
+import { manifestText } from '#lib/services/summaries/seal/manifest';
 import { readMark, summarySettings } from '#lib/services/summaries/template/settings';
+import { monthWork } from '#lib/services/summaries/work/months';
+import { type KeptMonth } from '#lib/services/summaries/work/tasks';
 import { tellIssued } from './tellIssued';
 
 /**
@@ -35,13 +32,18 @@ export async function issueMonth(draft: SummaryDraftRow, now: Date): Promise<voi
   const network = await findNetworkById(draft.networkId);
   const person = draft.requestedBy === null ? undefined : await findUserById(draft.requestedBy);
   if (!network || !person) throw new Error('Nobody is known to issue it.');
-  const measured = await measureMonth(network, draft.month, now, (progress) => {
-    void updateDraft(draft, { progress }).catch(() => undefined);
-  });
-  const reviewed = draft.documentSha256 && (await readDocument(draft.documentSha256));
-  const moved = reviewed ? changedFigures(reviewed, measured.doc) : null;
-  if (moved === null || moved.length > 0) {
-    await backToReview(draft, measured, moved?.length ?? 0, now);
+  const reviewed = draft.documentSha256?.toString('hex') ?? null;
+  const measured = await monthWork(
+    'measure',
+    { network, month: draft.month, asOf: now, reviewed },
+    {
+      onProgress: ({ done }) => {
+        void updateDraft(draft, { progress: done }).catch(() => undefined);
+      },
+    },
+  );
+  if (measured.moved !== 0) {
+    await backToReview(draft, measured, now);
     return;
   }
   await seal({ draft, network, person, measured, now });
@@ -51,7 +53,7 @@ interface Issue {
   draft: SummaryDraftRow;
   network: NetworkRow;
   person: UserRow;
-  measured: MeasuredMonth;
+  measured: KeptMonth;
   now: Date;
 }
 
@@ -61,22 +63,23 @@ async function seal(issue: Issue): Promise<void> {
   const settings = await summarySettings(network.id);
   const key = await signingKey(network.id);
   const [software, head] = await Promise.all([softwareVersion(), auditHead()]);
-  const rendered = await renderFiles(measured.doc, {
+  const files = await printed(network, measured, {
     template: settings.template,
     mark: await readMark(settings.mark),
     revision: draft.revision,
     issuedBy: { name: person.name, at: now.toISOString() },
     seal: {
       dataSha256: measured.data.sha256,
+      yearSha256: draft.month.endsWith('-01') ? null : (measured.data.year?.sha256 ?? null),
       softwareVersion: software,
       publicKey: key.sha256.toString('hex'),
     },
     chainHead: head,
     verifyUrl: `${config().origin}/verify`,
   });
-  const files = await Promise.all(rendered.map(keptFile));
-  const manifest = manifestText(measured.doc, {
+  const manifest = manifestText({
     network,
+    month: draft.month,
     revision: draft.revision,
     supersedes: before,
     issuedAt: now,
@@ -87,13 +90,14 @@ async function seal(issue: Issue): Promise<void> {
       sha256: sha256.toString('hex'),
     })),
     data: measured.data,
+    limits: measured.limits,
+    settings: measured.settings,
     templateVersion: settings.version,
     software,
     auditHead: head,
     publicKey: key.sha256.toString('hex'),
   });
-  const changes = before && (await differencesSinceIssue(network, before, now, measured)).changes;
-  await record(issue, { manifest, key, files, changes });
+  await record(issue, { manifest, key, files });
 }
 
 async function record(
@@ -102,14 +106,9 @@ async function record(
     manifest,
     key,
     files,
-    changes,
-  }: {
-    manifest: string;
-    key: SummaryKeyRow;
-    files: Omit<IssuedFileRow, 'summaryId'>[];
-    changes: FigureChange[] | null;
-  },
+  }: { manifest: string; key: SummaryKeyRow; files: Omit<IssuedFileRow, 'summaryId'>[] },
 ): Promise<void> {
+  const { changes } = measured;
   const manifestSha256 = createHash('sha256').update(manifest).digest();
   await inTransaction(async (transaction) => {
     const current = await lockDraft(draft, transaction);
@@ -122,7 +121,7 @@ async function record(
       issuedByName: person.name,
       issuedAt: now,
       note: draft.note,
-      figures: keptFigures(measured.doc),
+      figures: measured.figures,
       changes,
       keyId: key.id,
       manifest,
@@ -137,7 +136,7 @@ async function record(
         failure: null,
         progress: 0,
         documentSha256: null,
-        fingerprint: measured.fingerprint,
+        fingerprint: Buffer.from(measured.fingerprint, 'hex'),
       },
       transaction,
     );
@@ -155,34 +154,42 @@ async function record(
       transaction,
     );
   });
-  const reviewed = draft.documentSha256;
-  if (reviewed && !files.some(({ sha256 }) => sha256.equals(reviewed))) {
-    await removeKeptFile('summaries', reviewed);
+  const drafted = [draft.documentSha256, Buffer.from(measured.documentSha256, 'hex')];
+  for (const digest of drafted) {
+    if (digest && !files.some(({ sha256 }) => sha256.equals(digest)))
+      await removeKeptFile('summaries', digest);
   }
 }
 
-async function keptFile({ name, mediaType, bytes }: RenderedFile): Promise<Omit<IssuedFileRow, 'summaryId'>> {
-  const sha256 = await keepFile('summaries', bytes);
-  return { format: formatOf(name), name, mediaType, byteCount: bytes.length, sha256 };
+/** Files of kept figures, one made after the other: together a hundred stations’ would take twice the memory. */
+async function printed(
+  network: NetworkRow,
+  { documentSha256 }: KeptMonth,
+  context: RenderContext,
+): Promise<Omit<IssuedFileRow, 'summaryId'>[]> {
+  const files: Omit<IssuedFileRow, 'summaryId'>[] = [];
+  for (const format of FILE_FORMATS) {
+    const kept = await monthWork('keep', { network, documentSha256, context, format });
+    files.push({ ...kept, format, sha256: Buffer.from(kept.sha256, 'hex') });
+  }
+  return files;
 }
 
 async function backToReview(
   draft: SummaryDraftRow,
-  { doc, data }: MeasuredMonth,
-  moved: number,
+  { documentSha256, data, figures, moved }: KeptMonth,
   now: Date,
 ): Promise<void> {
-  const documentSha256 = await keepDocument(doc);
   await updateDraft(draft, {
     state: 'review',
     requested: null,
     computedAt: now,
-    documentSha256,
+    documentSha256: Buffer.from(documentSha256, 'hex'),
     dataSha256: Buffer.from(data.sha256, 'hex'),
-    figures: keptFigures(doc),
+    figures,
     progress: 0,
     failure:
-      moved === 0
+      moved === null
         ? 'Nothing was issued: the figures that were reviewed are gone. These were made anew: look at them again.'
         : `Nothing was issued: ${moved} ${moved === 1 ? 'figure has' : 'figures have'} changed since it was reviewed. These are the new ones: look at them again.`,
   });

@@ -5,28 +5,29 @@ import { withNamedLock } from '#db/queries/namedLock';
 import { findNetworkById, listSettings } from '#db/queries/networks';
 import { listWatchedDrafts, updateDraft, type SummaryDraftRow } from '#db/queries/summaryDrafts';
 import { insertProposal, replaceOpenProposals } from '#db/queries/summaryProposals';
-import { log } from '#lib/config/log';
 import { fingerprintOf } from '#lib/services/summaries/life/measure';
 import { monthSpan } from '#lib/services/summaries/monthSpan';
-import { differencesSinceIssue } from '#lib/services/summaries/life/differences';
+import { monthWork } from '#lib/services/summaries/work/months';
+import { eachAlone } from '../jobs/alone';
 
 /**
  * Looks at each issued month whose grounds have changed since it was looked at last, and proposes a revision where any of its figures
  * would be another now. @returns how many were compared.
  */
 export async function watchIssuedMonths(now: Date): Promise<number> {
-  let compared = 0;
-  for (const watched of await listWatchedDrafts()) {
-    try {
-      if (await isUnchanged(watched)) continue;
-      await withNamedLock(`summary:${watched.networkId}:${watched.month}`, async () => {
-        if (await compare(watched, now)) compared += 1;
-      });
-    } catch (error) {
-      log().error({ err: error, month: watched.month, network: watched.networkId }, 'month not compared');
-    }
-  }
-  return compared;
+  const watch = async (watched: SummaryDraftRow) => {
+    let compared = 0;
+    if (await isUnchanged(watched)) return 0;
+    await withNamedLock(`summary:${watched.networkId}:${watched.month}`, async () => {
+      if (await compare(watched, now)) compared = 1;
+    });
+    return compared;
+  };
+  const subjectOf = ({ networkId, month }: SummaryDraftRow) => ({
+    name: `network ${networkId}, ${month}`,
+    networkId,
+  });
+  return eachAlone('watch-summaries', await listWatchedDrafts(), subjectOf, watch, now);
 }
 
 async function isUnchanged({ networkId, month, fingerprint }: SummaryDraftRow): Promise<boolean> {
@@ -42,7 +43,7 @@ async function compare(watched: SummaryDraftRow, now: Date): Promise<boolean> {
   const fingerprint = await fingerprintOf(networkId, span);
   const [issued] = await listIssued(networkId, month);
   if (!issued || issued.revision !== revision) return false;
-  const { changes } = await differencesSinceIssue(network, issued, now);
+  const changes = (await monthWork('compare', { network, month, now })) ?? [];
   await inTransaction(async (transaction) => {
     await updateDraft(watched, { fingerprint }, transaction);
     if (changes.length === 0) {

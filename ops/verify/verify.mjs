@@ -41,6 +41,32 @@ function checkSignature(text) {
   return fingerprint;
 }
 
+function digestOfLines(lines) {
+  return createHash('sha256')
+    .update(lines.map((line) => `${line}\n`).join(''))
+    .digest('hex');
+}
+
+/** Whether the one digest of the data is that of the digests by station, and by month of the year so far, that are listed. */
+function checkData({ data, month }) {
+  if (!Array.isArray(data?.stations)) return;
+  const own = data.stations.map(({ code, intervals, sha256 }) => `${code} ${intervals} ${sha256}`);
+  const isRight = digestOfLines(own) === data.sha256;
+  say(isRight, `the digest of the intervals is ${isRight ? '' : 'NOT '}that of its ${own.length} stations`);
+  if (data.year) {
+    const earlier = data.year.stations.flatMap(({ code, months }) =>
+      months.map((one) => `${code} ${one.month} ${one.hours} ${one.periods} ${one.sha256}`),
+    );
+    const isYearRight = digestOfLines(earlier) === data.year.sha256;
+    say(
+      isYearRight,
+      `the digest of the months before is ${isYearRight ? '' : 'NOT '}that of ${earlier.length} months of stations`,
+    );
+  } else if (!String(month).endsWith('-01')) {
+    console.log('       the year to date rests on months before, of which this manifest says nothing');
+  }
+}
+
 async function checkFile(path, named) {
   const sha256 = await digestOf(path);
   const found = named.find((file) => file.sha256 === sha256);
@@ -66,6 +92,7 @@ async function main() {
     return 1;
   }
   say(manifest.publicKey === fingerprint, `the manifest names key ${manifest.publicKey}`);
+  checkData(manifest);
   for (const path of files) await checkFile(path, manifest.files);
   const { network, month, revision, issuedBy, issuedAt } = manifest;
   console.log(`       ${network?.name}, ${month}, revision ${revision}, issued by ${issuedBy}, ${issuedAt}`);

@@ -89,6 +89,10 @@ export const yearToDateSchema = z.object({
   LAFmax: level('Highest LAFmax'),
   sampleSeconds: z.number().int().nullable(),
   ...coveredSchema.shape,
+  U: uncertaintiesSchema
+    .nullable()
+    .prefault(null)
+    .describe('Null in months that were issued before it was told'),
 });
 export type YearToDate = z.output<typeof yearToDateSchema>;
 

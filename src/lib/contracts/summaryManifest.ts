@@ -18,12 +18,37 @@ export const manifestFileSchema = z.object({
 });
 export type ManifestFile = z.output<typeof manifestFileSchema>;
 
+export const yearDigestSchema = z
+  .object({
+    from: z.string().describe('The year’s first midnight'),
+    to: z.string().describe('Beginning of the month'),
+    sha256: sha256.describe(
+      'Over the lines `code month hours periods sha256` and a line feed, by code and month',
+    ),
+    stations: z.array(
+      z.object({
+        code: z.string(),
+        months: z.array(
+          z.object({
+            month,
+            hours: z.number().int().describe('With valid time'),
+            periods: z.number().int().describe('Days, evenings and nights that begin in it, with valid time'),
+            sha256: sha256.describe('Over a line for each of its hours, and then for each of its periods'),
+          }),
+        ),
+      }),
+    ),
+  })
+  .describe('Of the sums of the months before, which the year to date is pooled from');
+export type YearDigest = z.output<typeof yearDigestSchema>;
+
 export const dataDigestSchema = z
   .object({
     from: z.string().describe('Beginning of the first interval’s span: the earlier of month and first day'),
     to: z.string().describe('End: the later of the month and its last night'),
     sha256: sha256.describe('Over the lines `code intervals sha256` and a line feed, by code'),
     stations: z.array(z.object({ code: z.string(), intervals: z.number().int(), sha256 })),
+    year: yearDigestSchema.optional().describe('Missing in months that were issued before it was told'),
   })
   .describe('Of every stored interval that overlaps the span, in order of time, as packed by record form 1');
 export type DataDigest = z.output<typeof dataDigestSchema>;

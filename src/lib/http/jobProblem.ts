@@ -2,9 +2,9 @@ import { JobCancelled, JobsFull } from '#lib/services/threads/messages';
 import { Problem } from './problem';
 
 /** What is waited for, as a refusal calls it. */
-export type JobKind = 'search' | 'trial';
+export type JobKind = 'search' | 'trial' | 'file';
 
-const MANY = { search: 'searches', trial: 'trials' } as const;
+const MANY = { search: 'searches', trial: 'trials', file: 'files' } as const;
 
 /** What keeps a job from its answer, as a refusal: too many wait, or who asked has gone. Anything else as it is. */
 export function jobProblem(error: unknown, kind: JobKind): unknown {

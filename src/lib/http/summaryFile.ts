@@ -2,16 +2,14 @@ import { Readable } from 'node:stream';
 import { type ReadableStream } from 'node:stream/web';
 import { findLatestDraft } from '#db/queries/summaryDrafts';
 import { type NetworkRow } from '#db/queries/networks';
-import { type MonthDocument } from '#lib/contracts/monthDocument';
 import { SUMMARY_FORMATS, type SummaryFormat } from '#lib/contracts/summaries';
-import { computeMonth } from '#lib/services/summaries/document/computeMonth';
-import { renderFiles } from '#lib/services/summaries/document/render';
-import { readDocument } from '#lib/services/summaries/life/document';
 import { issuedFiles, issuedSummary, openIssuedFile } from '#lib/services/summaries/seal/files';
-import { summaryCsv } from '#lib/services/summaries/summaryCsv';
 import { readMark, summarySettings } from '#lib/services/summaries/template/settings';
+import { monthWork } from '#lib/services/summaries/work/months';
+import { type DocumentSource } from '#lib/services/summaries/work/tasks';
+import { jobProblem } from './jobProblem';
 import { notFound, Problem } from './problem';
-import { csv, download, json } from './respond';
+import { download } from './respond';
 
 const FILE = /^(\d{4}-(?:0[1-9]|1[0-2]))\.([a-z]+|manifest\.json|manifest\.sig)$/;
 const NO_STORE = { 'Cache-Control': 'no-store' };
@@ -34,8 +32,7 @@ export async function summaryFile(
     );
   }
   if (issued) return issuedFile(issued, month, format, network.id);
-  const doc = await draftDocument(network, month, revision);
-  return draftFile(network, doc, format);
+  return draftFile(network, format, await draftSource(network, month, revision));
 }
 
 function revisionOf(text: string): number {
@@ -86,39 +83,31 @@ function sealFile({ manifest, signature, revision }: Issued['row'], ending: stri
 }
 
 /** Figures of a draft: as of now, or, asked for by the number of a revision that is being made, as they are in review. */
-async function draftDocument(
+async function draftSource(
   network: NetworkRow,
   month: string,
   revision: number | null,
-): Promise<MonthDocument> {
-  const draft = revision === null ? undefined : await findLatestDraft(network.id, month);
-  if (revision !== null) {
-    const isAsked = draft?.revision === revision && draft.documentSha256 !== null;
-    const doc = isAsked && draft.documentSha256 ? await readDocument(draft.documentSha256) : null;
-    if (!doc)
-      throw notFound('No such revision of this month; without `revision` you get the latest, or a draft.');
-    return doc;
-  }
-  try {
-    return await computeMonth(network, month, new Date());
-  } catch (error) {
-    if (error instanceof RangeError) throw notFound('This month has not begun.');
-    throw error;
-  }
+): Promise<DocumentSource> {
+  if (revision === null) return { month, asOf: new Date() };
+  const draft = await findLatestDraft(network.id, month);
+  if (draft?.revision !== revision || draft.documentSha256 === null) throw noRevision();
+  return { documentSha256: draft.documentSha256.toString('hex') };
 }
 
-async function draftFile(network: NetworkRow, doc: MonthDocument, format: SummaryFormat): Promise<Response> {
-  const headers = { 'Bittern-Revision': 'draft' };
-  if (format === 'json') return json({ ...doc, status: 'draft' }, { headers });
-  if (format === 'csv')
-    return csv(summaryCsv({ ...doc, status: 'draft' }), `${network.slug}-${doc.month}.csv`);
-  const settings = await summarySettings(network.id);
-  const [file] = await renderFiles(
-    doc,
-    { template: settings.template, mark: await readMark(settings.mark), revision: null },
-    [format],
-  );
-  if (!file) throw new Error(`There is no ${format}.`);
+const noRevision = () =>
+  notFound('No such revision of this month; without `revision` you get the latest, or a draft.');
+
+async function draftFile(
+  network: NetworkRow,
+  format: SummaryFormat,
+  source: DocumentSource,
+): Promise<Response> {
+  const { template, mark } = await summarySettings(network.id);
+  const context = { template, mark: await readMark(mark), revision: null };
+  const file = await monthWork('render', { network, source, context, format }).catch((error: unknown) => {
+    throw jobProblem(error, 'file');
+  });
+  if (!file) throw 'month' in source ? notFound('This month has not begun.') : noRevision();
   const answer = download(new Uint8Array(file.bytes), file.mediaType, file.name);
   answer.headers.set('Bittern-Revision', 'draft');
   return answer;

@@ -1,3 +1,4 @@
+import { createHash } from 'node:crypto';
 import { mkdtempSync, rmSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
@@ -6,8 +7,9 @@ import { db } from '#db/client';
 import { listIssued, type IssuedSummaryRow } from '#db/queries/issuedSummaries';
 import { aggregateAll } from '#ingest/aggregate/aggregate';
 import { rerunMonth } from '#lib/services/summaries/life/rerun';
+import { signingKey, signWith } from '#lib/services/summaries/seal/keys';
 import { rerunWords } from '#ops/summaries/rerunWords';
-import { at } from '../complaints/support';
+import { at, storeMinutes } from '../complaints/support';
 import { useFreshSchema } from '../support/freshSchema';
 import { makeNetwork, makePerson, makeStation } from '../support/people';
 import { issue, network, storeMarch } from './lifeSupport';
@@ -24,6 +26,9 @@ beforeAll(async () => {
   const networkId = await makeNetwork('merrow');
   quay = await makeStation(networkId, 'MER-01');
   await db()('stations').update({ created_at: new Date('2026-01-01T00:00:00Z') });
+  await storeMinutes(quay, at('2026-02-27T00:00:00Z'), at('2026-03-01T07:00:00Z'), () => ({
+    laeqCentiDb: 5100,
+  }));
   await storeMarch(quay, 5200);
   await aggregateAll(async () => {});
   await issue((await makePerson(networkId, ['operator'])).userId);
@@ -76,13 +81,49 @@ test('one changed bit of one interval is told, also where no figure shows it', a
   expect((await rerun()).isSame).toBe(true);
 });
 
+test('what the year to date rests on before the month is sealed, too', async () => {
+  const manifest = JSON.parse(issued.manifest);
+  expect(manifest.data.year).toMatchObject({
+    from: '2026-01-01T00:00:00Z',
+    to: '2026-03-01T00:00:00Z',
+    stations: [{ code: 'MER-01', months: [{ month: '2026-02', hours: 48, periods: 6 }] }],
+  });
+  const february = () =>
+    db()('quarter_hours').where({ station_id: quay, starts_at: at('2026-02-28T12:00:00Z') });
+  await february().update({ a_energy_sec: db().raw('a_energy_sec * 2') });
+  expect((await rerun()).lines).toContain(
+    'CHANGED  sums of MER-01 in 2026-02, which the year to date rests on, are not those that were sealed.',
+  );
+  await february().update({ a_energy_sec: db().raw('a_energy_sec / 2') });
+  expect((await rerun()).isSame).toBe(true);
+});
+
+test('a month that was issued before that was told is computed again as ever, and it says what is not sealed', async () => {
+  const manifest = JSON.parse(issued.manifest);
+  delete manifest.data.year;
+  const text = `${JSON.stringify(manifest, null, 2)}\n`;
+  const older = {
+    ...issued,
+    manifest: text,
+    manifestSha256: createHash('sha256').update(text).digest(),
+    signature: signWith(await signingKey((await network()).id), text),
+  };
+  const { isSame, lines } = rerunWords(older, await rerunMonth(await network(), older));
+  expect([isSame, lines[1]]).toEqual([
+    true,
+    'NOTE     nothing was sealed of the months before, which the year to date rests on.',
+  ]);
+});
+
 test('where the intervals are not kept any more, the stored sums tell, and it says so', async () => {
   await db()('interval_levels').where({ station_id: quay }).delete();
   const { isSame, lines } = await rerun();
   expect(isSame).toBe(true);
   expect(lines.slice(1)).toEqual([
-    'NOTE     intervals of MER-01 are not kept any more; its figures come from the stored sums.',
-    expect.stringMatching(/^NOTE {5}\d+ of their figures that only intervals tell could not be compared\.$/),
+    'NOTE     intervals of MER-01 are not kept any more; its figures come from the sealed sums of its quarter-hours and days.',
+    expect.stringMatching(
+      /^NOTE {5}\d+ of their figures, those that only intervals tell and those by the clock, cannot be compared any more\.$/,
+    ),
     'Every figure that was compared is the same.',
   ]);
   await db()('day_periods')

@@ -66,3 +66,11 @@ test('a station that came or went, and limits of the network', () => {
   expect(found).toContainEqual({ station: 'A', figure: 'figures LAeq', old: 50, new: null });
   expect(found).toContainEqual({ station: 'B', figure: 'figures LAeq', old: null, new: 50 });
 });
+
+test('what a month was issued before anybody was told of is no change; that it changes later is one', () => {
+  const year = (U: object | null) => month([station('A', { yearToDate: { LAeq: 50, U } })]);
+  expect(changedFigures(year(null), year({ LAeq: 1.2 }))).toEqual([]);
+  expect(changedFigures(year({ LAeq: 1.1 }), year({ LAeq: 1.2 }))).toEqual([
+    { station: 'A', figure: 'yearToDate U LAeq', old: 1.1, new: 1.2 },
+  ]);
+});

@@ -99,6 +99,7 @@ export function documentStation(code: string, number = 1): DocumentStation {
       LAFmax: distinct.level(70),
       sampleSeconds: 60,
       ...distinct.covered(7_776_000),
+      U: distinct.uncertainties(),
     },
     days,
     hours: days.flatMap(({ date }) =>
@@ -216,7 +217,7 @@ export function silentStation(code: string): DocumentStation {
       seconds,
       U,
     },
-    yearToDate: { ...station.yearToDate, ...noLevels, ...noStatistics, ...none, LAeq: null, seconds },
+    yearToDate: { ...station.yearToDate, ...noLevels, ...noStatistics, ...none, LAeq: null, seconds, U },
     days: station.days.map((day) => ({
       ...day,
       ...noLevels,

@@ -10,7 +10,7 @@ import { monthDocumentSchema } from '#lib/contracts/monthDocument';
 import { openApiDocument } from '#lib/contracts/openapi';
 import { DEFAULT_SUMMARY_TEMPLATE } from '#lib/contracts/summaryTemplate';
 import { formatLevelDb } from '#lib/format/levels';
-import { renderFiles, type RenderContext } from '#lib/services/summaries/document/render';
+import { FILE_FORMATS, renderFile, type RenderContext } from '#lib/services/summaries/document/render';
 import { documentOf, documentStation, silentStation } from './documentFixture';
 
 // Fonts are read and cut down; a busy machine takes its time for that.
@@ -21,7 +21,12 @@ const context: RenderContext = {
   template: DEFAULT_SUMMARY_TEMPLATE,
   revision: 2,
   issuedBy: { name: 'Ada Fenn', at: '2026-04-09T08:00:00Z' },
-  seal: { dataSha256: 'ab'.repeat(32), softwareVersion: '0.1.0', publicKey: null },
+  seal: {
+    dataSha256: 'ab'.repeat(32),
+    yearSha256: 'cd'.repeat(32),
+    softwareVersion: '0.1.0',
+    publicKey: null,
+  },
   chainHead: { position: 4711, sha256: 'cd'.repeat(32) },
   verifyUrl: 'https://merrow.example/verify',
 };
@@ -31,7 +36,8 @@ let files: Map<string, Uint8Array>;
 let tables: Map<string, Row[]>;
 
 beforeAll(async () => {
-  files = new Map((await renderFiles(doc, context)).map(({ name, bytes }) => [name, bytes]));
+  const made = await Promise.all(FILE_FORMATS.map((format) => renderFile(doc, context, format)));
+  files = new Map(made.map(({ name, bytes }) => [name, bytes]));
   tables = tablesOf(file('merrow-2026-03-r2.csv.zip'));
 });
 
@@ -130,6 +136,9 @@ describe('CSV', () => {
         'LAFmax',
       ] as const) {
         expect(year[`${key}_db`], `${of} year ${key}`).toBe(cell(yearToDate[key]));
+      }
+      for (const key of ['Lday', 'Levening', 'Lnight', 'Lden', 'LAeq'] as const) {
+        expect(year[`${key}_U_db`], `${of} year ${key} U`).toBe(cell(yearToDate.U?.[key] ?? null));
       }
       for (const day of station.days) {
         const row = rowOf('days', { station: of, date: day.date });
@@ -309,11 +318,17 @@ describe('PDF', () => {
           expect(own).toContain(formatLevelDb(db));
       }
       const row = (over: string) => levelsIn(own.split('\n').find((text) => text.includes(over)) ?? '');
-      expect(row(' days ')).toEqual([figures.Lday, figures.U.Lday, yearToDate.Lday].map(formatLevelDb));
-      expect(row(' nights ')).toEqual(
-        [figures.Lnight, figures.U.Lnight, yearToDate.Lnight].map(formatLevelDb),
+      expect(row(' days ')).toEqual(
+        [figures.Lday, figures.U.Lday, yearToDate.Lday, yearToDate.U?.Lday ?? null].map(formatLevelDb),
       );
-      expect(row('pooled days')).toEqual([figures.Lden, figures.U.Lden, yearToDate.Lden].map(formatLevelDb));
+      expect(row(' nights ')).toEqual(
+        [figures.Lnight, figures.U.Lnight, yearToDate.Lnight, yearToDate.U?.Lnight ?? null].map(
+          formatLevelDb,
+        ),
+      );
+      expect(row('pooled days')).toEqual(
+        [figures.Lden, figures.U.Lden, yearToDate.Lden, yearToDate.U?.Lden ?? null].map(formatLevelDb),
+      );
       for (const { all, difference } of station.exclusions.figures) {
         expect(own).toContain(formatLevelDb(all));
         expect(own).toContain(formatLevelDb(difference));
@@ -360,8 +375,8 @@ describe('PDF', () => {
 
   test('a month in progress says so, and that it is a draft, on every page', async () => {
     const running = { ...documentOf([documentStation('MER-01')]), isToDate: true };
-    const [pdf] = await renderFiles(running, { ...context, revision: null, issuedBy: null }, ['pdf']);
-    writeFileSync(path, pdf?.bytes ?? '');
+    const pdf = await renderFile(running, { ...context, revision: null, issuedBy: null }, 'pdf');
+    writeFileSync(path, pdf.bytes);
     const shown = pagesOf(path);
     expect(shown.length).toBeGreaterThan(1);
     for (const page of shown) {
@@ -372,12 +387,12 @@ describe('PDF', () => {
 
   test('every character of both languages has a glyph', async () => {
     for (const language of ['en', 'de'] as const) {
-      const [pdf] = await renderFiles(
+      const pdf = await renderFile(
         { ...doc, isToDate: true },
         { ...context, revision: null, issuedBy: null, template: { ...context.template, language } },
-        ['pdf'],
+        'pdf',
       );
-      writeFileSync(path, pdf?.bytes ?? '');
+      writeFileSync(path, pdf.bytes);
       const text = pagesOf(path).join(' ').replace(/\s+/g, ' ');
       expect(text).not.toMatch(/[\u0000\uFFFD]/);
       expect(text).toContain(language === 'de' ? 'Entwurf, nicht herausgegeben' : 'Draft, not issued');
@@ -393,10 +408,8 @@ describe('PDF', () => {
       metrics: ['Lden' as const],
       introduction: 'Made for the district.',
     };
-    const [pdf] = await renderFiles(documentOf([documentStation('MER-01')]), { ...context, template }, [
-      'pdf',
-    ]);
-    writeFileSync(path, pdf?.bytes ?? '');
+    const pdf = await renderFile(documentOf([documentStation('MER-01')]), { ...context, template }, 'pdf');
+    writeFileSync(path, pdf.bytes);
     const text = pagesOf(path).join('\n');
     expect(text).toContain('Made for the district.');
     expect(text).toContain('Day by day');

@@ -16,17 +16,29 @@ interface Job<Task, Result> extends JobListener {
   reject: (reason: Error) => void;
 }
 
+export interface JobThreadOptions {
+  /** Each job has a thread of its own, so that what it took of memory is given back when it is done. */
+  isFresh?: boolean;
+  /** Most memory that its objects may take, MiB. */
+  heapMib?: number;
+  /** Of it for young objects; without it as much as the process was told to give them. */
+  youngMib?: number;
+}
+
 /** The one thread that this process has for a kind of job: its event loop goes on meanwhile. Jobs follow each other. */
 export class JobThread<Task, Result> {
   readonly #waiting: Job<Task, Result>[] = [];
   readonly #module: string;
+  readonly #options: JobThreadOptions;
   #running: Job<Task, Result> | null = null;
   #worker: Worker | null = null;
+  #isEnding = false;
   #idle: NodeJS.Timeout | undefined;
   #lastId = 0;
 
   /** `file`: of the module that serves the jobs (`serveJobs`), from the root. */
-  constructor(file: string) {
+  constructor(file: string, options: JobThreadOptions = {}) {
+    this.#options = options;
     this.#module = new URL(`file://${path.resolve(file)}`).href;
   }
 
@@ -43,11 +55,11 @@ export class JobThread<Task, Result> {
   }
 
   #startNext(): void {
-    if (this.#running) return;
+    if (this.#running || this.#isEnding) return;
     this.#running = this.#waiting.shift() ?? null;
     clearTimeout(this.#idle);
     if (this.#running) this.#tell({ kind: 'job', id: this.#running.id, task: this.#running.task });
-    else this.#idle = setTimeout(() => this.#stop(), IDLE_MS).unref();
+    else this.#idle = setTimeout(() => void this.#stop(), IDLE_MS).unref();
   }
 
   /** Who asked is answered at once; the thread stops at its next step. */
@@ -65,7 +77,12 @@ export class JobThread<Task, Result> {
   }
 
   #start(): Worker {
-    const started = new Worker(START_FILE, { workerData: { module: this.#module } });
+    const { heapMib, youngMib } = this.#options;
+    const resourceLimits = {
+      ...(heapMib === undefined ? {} : { maxOldGenerationSizeMb: heapMib }),
+      ...(youngMib === undefined ? {} : { maxYoungGenerationSizeMb: youngMib }),
+    };
+    const started = new Worker(START_FILE, { workerData: { module: this.#module }, resourceLimits });
     started.on('message', (message: FromThread<Result>) => this.#hear(message));
     started.on('error', (error) => this.#lose(started, error));
     started.on('exit', () => this.#lose(started, new Error('The thread ended unexpectedly.')));
@@ -84,6 +101,7 @@ export class JobThread<Task, Result> {
   /** The process may end while the thread has nothing to do. */
   #endRunning(): void {
     this.#running = null;
+    if (this.#options.isFresh) return void this.#endThread();
     this.#worker?.unref();
     this.#startNext();
   }
@@ -95,9 +113,17 @@ export class JobThread<Task, Result> {
     if (this.#running) this.#endRunning();
   }
 
-  #stop(): void {
+  /** The next job waits until this one’s memory is given back. */
+  async #endThread(): Promise<void> {
+    this.#isEnding = true;
+    await this.#stop();
+    this.#isEnding = false;
+    this.#startNext();
+  }
+
+  async #stop(): Promise<void> {
     const stopped = this.#worker;
     this.#worker = null;
-    void stopped?.terminate();
+    await stopped?.terminate();
   }
 }

@@ -19,6 +19,8 @@ const MOST_EXCEEDANCES = 1_000_000;
 export interface ComputeOptions {
   /** Told after each station, so that whoever waits sees how far it is. */
   onProgress?: (done: number, of: number) => void;
+  /** Told of each station what its year so far rests on before the month. */
+  onEarlier?: SharedEvidence['onEarlier'];
   conn?: Connection;
 }
 
@@ -31,7 +33,7 @@ export async function computeMonth(
   network: NetworkRow,
   month: string,
   asOf: Date,
-  { onProgress, conn = pool() }: ComputeOptions = {},
+  { onProgress, onEarlier = () => undefined, conn = pool() }: ComputeOptions = {},
 ): Promise<MonthDocument> {
   const nowSec = Math.floor(asOf.getTime() / 1000);
   const timeline = await listSettings(network.id, conn);
@@ -52,6 +54,7 @@ export async function computeMonth(
     limits,
     exceedances: await exceedancesOf(network.id, civil, conn),
     calibrations: calibrations.filter(({ withdrawnAt }) => withdrawnAt === null),
+    onEarlier,
   };
   const found: DocumentStation[] = [];
   for (const [at, station] of stations.entries()) {

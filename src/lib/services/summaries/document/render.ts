@@ -21,7 +21,13 @@ export interface RenderContext {
   /** Who issued it, and when. */
   issuedBy?: { name: string; at: string } | null;
   /** What the manifest rests on. */
-  seal?: { dataSha256: string; softwareVersion: string; publicKey: string | null } | null;
+  seal?: {
+    dataSha256: string;
+    /** Of the months before, where there are any. */
+    yearSha256: string | null;
+    softwareVersion: string;
+    publicKey: string | null;
+  } | null;
   /** Head of the audit chain when it was issued. */
   chainHead?: { position: number; sha256: string } | null;
   /** Address of the page that verifies a file. */
@@ -38,15 +44,13 @@ export interface RenderedFile {
   bytes: Uint8Array;
 }
 
-/** A month’s files, all written from the one document. `formats` in the order wanted; all of them when left out. */
-export async function renderFiles(
+/** A month’s file in a format; all formats are written from the one document. */
+export function renderFile(
   doc: MonthDocument,
   context: RenderContext,
-  formats: readonly FileFormat[] = FILE_FORMATS,
-): Promise<RenderedFile[]> {
-  const files: RenderedFile[] = [];
-  for (const format of formats) files.push(await RENDERERS[format](doc, context));
-  return files;
+  format: FileFormat,
+): Promise<RenderedFile> {
+  return RENDERERS[format](doc, context);
 }
 
 /** File name of a month: `merrow-2026-03-r2.pdf`, `merrow-2026-03-draft.pdf`. */
@@ -81,7 +85,10 @@ const RENDERERS: Record<FileFormat, Renderer> = {
     Promise.resolve({
       name: fileName(doc, context, 'json'),
       mediaType: 'application/json',
-      bytes: Buffer.from(`${JSON.stringify(doc)}\n`),
+      // An issued month’s is the document itself; a draft tells that it is one.
+      bytes: Buffer.from(
+        `${JSON.stringify(context.revision === null ? { ...doc, status: 'draft' } : doc)}\n`,
+      ),
     }),
 };
 
@@ -105,6 +112,9 @@ function factsOf(
     ...(seal
       ? ([
           ['data SHA-256', seal.dataSha256],
+          ...(seal.yearSha256 === null
+            ? []
+            : [['SHA-256 of the sums of the months before', seal.yearSha256] as const]),
           ['software', seal.softwareVersion],
           ...(seal.publicKey === null ? [] : [['public key', seal.publicKey] as const]),
         ] as const)

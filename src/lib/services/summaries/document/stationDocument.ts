@@ -23,7 +23,7 @@ import { packedSpectrogram } from './spectrogram';
 import { documentDay, documentFigures } from './stationFigures';
 import { documentLowFrequency, documentTonality } from './tonality';
 import { monthWind } from './wind';
-import { yearToDate } from './yearToDate';
+import { yearToDate, type EarlierGround } from './yearToDate';
 
 /** What a network’s month knows beside one station’s own data. */
 export interface SharedEvidence {
@@ -32,6 +32,8 @@ export interface SharedEvidence {
   exceedances: readonly ExceedanceRow[];
   /** Standing checks of the whole network. */
   calibrations: readonly CalibrationRow[];
+  /** Told of each station what its year so far rests on before the month. */
+  onEarlier: (station: string, ground: EarlierGround) => void;
 }
 
 /** Everything that a month’s document says of one station. */
@@ -51,11 +53,13 @@ export async function stationDocument(month: StationMonth, shared: SharedEvidenc
   const ground = { hours, instruments, incidentDb: incident.LAeq };
   const figures = documentFigures(evidence, found, ground);
   const own = shared.exceedances.filter(({ stationId }) => stationId === station.id);
+  const year = await yearToDate(evidence, hours);
+  shared.onEarlier(station.code, year.earlier);
   const standing = own.filter(({ state }) => state === 'standing').length;
   return {
     ...(await describe(evidence)),
     figures,
-    yearToDate: await yearToDate(evidence),
+    yearToDate: year.figures,
     days: days
       .filter((day) => day.periods.day.seconds.expected > 0 || day.seconds.expected > 0)
       .map((day) => documentDay(evidence, day, ground)),

@@ -1,6 +1,6 @@
-import { type PeriodKind } from '#lib/acoustics/dayEveningNight';
+import { type PeriodKind, type PeriodScheme } from '#lib/acoustics/dayEveningNight';
 import { type DayFigures } from '#lib/contracts/levels';
-import { type DocumentDay, type DocumentFigures, type Uncertainties } from '#lib/contracts/monthFigures';
+import { type DocumentDay, type DocumentFigures } from '#lib/contracts/monthFigures';
 import { parseInstant } from '#lib/contracts/common';
 import { datesBetween } from '#lib/time/zone';
 import { type MeasuredHour } from '../../figures/heatMap';
@@ -10,20 +10,14 @@ import { type MonthFigures } from '../../levels/month';
 import { type Span } from '../../levels/spans';
 import { dayOf, levelsOf } from '../stationSummary';
 import { type MonthEvidence } from './evidence';
-import { expandedDb, gapsOf, ldenGaps, type GappedLevel } from './uncertainties';
+import { gapsOf, uncertaintiesOf, type CoveredLevel, type UncertaintyGround } from './uncertainties';
 
-/** What the uncertainties of a station’s month rest on. */
-export interface UncertaintyGround {
+/** What a station’s month is told with beside its levels. */
+export interface FiguresGround extends UncertaintyGround {
   hours: readonly MeasuredHour[];
   instruments: PeriodInstruments;
   /** LAeq of the incident sound of the month, dB. */
   incidentDb: number | null;
-}
-
-interface CoveredLevel {
-  levelDb: number | null;
-  coverage: number;
-  spans: readonly Span[];
 }
 
 type PeriodLevels = Record<PeriodKind, CoveredLevel>;
@@ -32,7 +26,7 @@ type PeriodLevels = Record<PeriodKind, CoveredLevel>;
 export function documentFigures(
   evidence: MonthEvidence,
   month: MonthFigures,
-  ground: UncertaintyGround,
+  ground: FiguresGround,
 ): DocumentFigures {
   const { statistics, periods } = month;
   const { hours, instruments, incidentDb } = ground;
@@ -58,7 +52,7 @@ export function documentFigures(
     LA95: named(95),
     LA99: named(99),
     incident: incidentDb,
-    U: uncertainties(evidence, { clock, kinds, ldenDb: month.ldenDb }, ground),
+    U: uncertaintiesOf(schemeOf(evidence), { clock, kinds, ldenDb: month.ldenDb }, ground),
     uncertainty: {
       instrument: instruments.uncertaintyDb,
       basis: instruments.basisKind,
@@ -70,11 +64,7 @@ export function documentFigures(
 }
 
 /** A date of the month with its uncertainties. */
-export function documentDay(
-  evidence: MonthEvidence,
-  day: DayFigures,
-  ground: UncertaintyGround,
-): DocumentDay {
+export function documentDay(evidence: MonthEvidence, day: DayFigures, ground: FiguresGround): DocumentDay {
   const { LAeq24h, LAFmax, LA10, LA50, LA90, seconds, coverage, meetsMinimum, sampleSeconds, hours } = day;
   const own = ground.hours.filter(({ date }) => date === day.date);
   const civil = { fromSec: own[0]?.fromSec ?? 0, toSec: own.at(-1)?.toSec ?? 0 };
@@ -104,8 +94,12 @@ export function documentDay(
     meetsMinimum,
     sampleSeconds,
     hours,
-    U: uncertainties(evidence, { clock, kinds, ldenDb: day.Lden, date: day.date }, ground),
+    U: uncertaintiesOf(schemeOf(evidence, day.date), { clock, kinds, ldenDb: day.Lden }, ground),
   };
+}
+
+function schemeOf({ timeline, span }: MonthEvidence, date: string = span.firstDate): PeriodScheme {
+  return settingsOfDate(date, timeline).scheme;
 }
 
 function covered(period: MonthFigures['periods']['evening']): Omit<CoveredLevel, 'spans'> {
@@ -116,30 +110,4 @@ function spansOf({ span, timeline }: MonthEvidence, wanted: PeriodKind): Span[] 
   return datesBetween(span.firstDate, span.endDate)
     .flatMap((date) => datePeriods(date, timeline))
     .filter(({ kind }) => kind === wanted);
-}
-
-function uncertainties(
-  { span, timeline }: MonthEvidence,
-  {
-    clock,
-    kinds,
-    ldenDb,
-    date = span.firstDate,
-  }: { clock: CoveredLevel; kinds: PeriodLevels; ldenDb: number | null; date?: string },
-  { hours, instruments }: UncertaintyGround,
-): Uncertainties {
-  const gapped = ({ levelDb, coverage, spans }: CoveredLevel): GappedLevel => ({
-    levelDb,
-    gapsDb: levelDb === null ? null : gapsOf(hours, spans, coverage),
-  });
-  const of = { day: gapped(kinds.day), evening: gapped(kinds.evening), night: gapped(kinds.night) };
-  const { scheme } = settingsOfDate(date, timeline);
-  const lden = { levelDb: ldenDb, gapsDb: ldenDb === null ? null : ldenGaps(scheme, of) };
-  return {
-    LAeq: expandedDb(gapped(clock), instruments),
-    Lday: expandedDb(of.day, instruments),
-    Levening: expandedDb(of.evening, instruments),
-    Lnight: expandedDb(of.night, instruments),
-    Lden: expandedDb(lden, instruments),
-  };
 }

@@ -6,10 +6,32 @@ import {
   type PeriodKind,
   type PeriodScheme,
 } from '#lib/acoustics/dayEveningNight';
+import { type PeriodSums } from '#lib/acoustics/periodSums';
 import { coverageUncertaintyDb, periodUncertainty } from '#lib/acoustics/uncertainty';
-import { type MeasuredHour } from '../../figures/heatMap';
+import { type Uncertainties } from '#lib/contracts/monthFigures';
 import { type PeriodInstruments } from '../../figures/instruments';
 import { type Span } from '../../levels/spans';
+
+/** An hour with the energy that was measured in it; one without a valid second has no part in what gaps bring in. */
+export interface HourEnergy {
+  fromSec: number;
+  levels: { sums: Pick<PeriodSums, 'validSec' | 'aEnergySec'> };
+}
+
+/** A level with the stretches of time that it is taken over. */
+export interface CoveredLevel {
+  levelDb: number | null;
+  coverage: number;
+  /** Ascending. */
+  spans: readonly Span[];
+}
+
+/** What uncertainties rest on. */
+export interface UncertaintyGround {
+  /** Ascending; those of other stretches of time are left aside. */
+  hours: readonly HourEnergy[];
+  instruments: Pick<PeriodInstruments, 'uncertaintyDb' | 'drift'>;
+}
 
 /** A level with what its gaps bring into it. */
 export interface GappedLevel {
@@ -20,7 +42,7 @@ export interface GappedLevel {
 
 /** Standard uncertainty that gaps bring into a level of some stretches of time, by the energies of their hours. */
 export function gapsOf(
-  hours: readonly MeasuredHour[],
+  hours: readonly HourEnergy[],
   spans: readonly Span[],
   coverage: number,
 ): number | null {
@@ -39,6 +61,31 @@ export function expandedDb(
   if (levelDb === null) return null;
   const terms = { instrumentDb: uncertaintyDb, driftDb: drift.driftDb, coverageDb: gapsDb };
   return periodUncertainty(terms)?.expandedDb ?? null;
+}
+
+/** Expanded uncertainties of the levels of some time, by its scheme of day, evening and night. */
+export function uncertaintiesOf(
+  scheme: PeriodScheme,
+  {
+    clock,
+    kinds,
+    ldenDb,
+  }: { clock: CoveredLevel; kinds: Record<PeriodKind, CoveredLevel>; ldenDb: number | null },
+  { hours, instruments }: UncertaintyGround,
+): Uncertainties {
+  const gapped = ({ levelDb, coverage, spans }: CoveredLevel): GappedLevel => ({
+    levelDb,
+    gapsDb: levelDb === null ? null : gapsOf(hours, spans, coverage),
+  });
+  const of = { day: gapped(kinds.day), evening: gapped(kinds.evening), night: gapped(kinds.night) };
+  const lden = { levelDb: ldenDb, gapsDb: ldenDb === null ? null : ldenGaps(scheme, of) };
+  return {
+    LAeq: expandedDb(gapped(clock), instruments),
+    Lday: expandedDb(of.day, instruments),
+    Levening: expandedDb(of.evening, instruments),
+    Lnight: expandedDb(of.night, instruments),
+    Lden: expandedDb(lden, instruments),
+  };
 }
 
 /**
@@ -61,7 +108,7 @@ export function ldenGaps(
 }
 
 /** Hours that begin within some ascending stretches. */
-function hoursWithin(hours: readonly MeasuredHour[], spans: readonly Span[]): MeasuredHour[] {
+function hoursWithin(hours: readonly HourEnergy[], spans: readonly Span[]): HourEnergy[] {
   let at = 0;
   return hours.filter(({ fromSec }) => {
     while ((spans[at]?.toSec ?? Infinity) <= fromSec) at += 1;

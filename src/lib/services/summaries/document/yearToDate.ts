@@ -1,42 +1,60 @@
-import { eachDayPeriod, type DayPeriod } from '#db/queries/dayPeriods';
 import { ldenDb, type PeriodKind } from '#lib/acoustics/dayEveningNight';
 import { PeriodAccumulator } from '#lib/acoustics/periodStatistics';
 import { formatInstantUtc } from '#lib/contracts/common';
 import { type YearToDate } from '#lib/contracts/monthFigures';
 import { datesBetween, type LocalDate } from '#lib/time/zone';
+import { instrumentsOf } from '../../figures/instruments';
 import { currentSums } from '../../levels/currentSums';
 import { datePeriods, dateSettings, settingsOfDate } from '../../levels/datePeriods';
-import { dirtySpans } from '../../levels/dirtySpans';
 import { coverageOf } from '../../levels/figures';
 import { QuarterSeries } from '../../levels/quarterSeries';
-import { mergedSpans, overlapsAny, type Span } from '../../levels/spans';
 import { levelOrNull } from '../../levels/statistics';
+import { currentPeriods, type CurrentPeriod } from './currentPeriods';
+import { earlierHours } from './earlierHours';
 import { type MonthEvidence } from './evidence';
+import { uncertaintiesOf, type CoveredLevel, type HourEnergy } from './uncertainties';
 
-interface KindSpan extends Span {
-  kind: PeriodKind;
+/** What the year so far rests on before the month. */
+export interface EarlierGround {
+  /** From the year’s first midnight on; only those with valid time. */
+  hours: readonly HourEnergy[];
+  /** What begins before the month; first the hours of the year before the first day begins, as the night that they are a part of. */
+  periods: readonly CurrentPeriod[];
 }
 
-/** Figures from the first of January to the end of the month: all energies pooled, never months averaged. */
-export async function yearToDate(evidence: MonthEvidence): Promise<YearToDate> {
-  const { source, span, timeline, nowSec, minimumCoverage, conn } = evidence;
+/**
+ * Figures from the first of January to the end of the month: all energies pooled, never months averaged; their uncertainties as those of
+ * the month. `hours` are the month’s own.
+ */
+export async function yearToDate(
+  evidence: MonthEvidence,
+  hours: readonly HourEnergy[],
+): Promise<{ figures: YearToDate; earlier: EarlierGround }> {
+  const { source, station, span, timeline, nowSec, minimumCoverage, conn } = evidence;
   const firstDate = `${span.month.slice(0, 4)}-01-01`;
   const civil = { fromSec: dateSettings(firstDate, timeline).midnightSec, toSec: span.toSec };
   const clock = await currentSums(source, civil, { bandClasses: false }, conn);
-  const pooled = await pooledPeriods(evidence, firstDate);
-  const levelOf = (kind: PeriodKind) => pooled.get(kind)?.laeqDb() ?? null;
-  const levelsDb = { day: levelOf('day'), evening: levelOf('evening'), night: levelOf('night') };
+  const periods = await currentPeriods(source, { firstDate, endDate: span.endDate }, conn);
+  const before = await earlierHours(source, { fromSec: civil.fromSec, toSec: span.fromSec }, conn);
+  const kinds = {
+    day: pooled(evidence, 'day', periods),
+    evening: pooled(evidence, 'evening', periods),
+    night: pooled(evidence, 'night', periods),
+  };
+  const levelsDb = { day: kinds.day.levelDb, evening: kinds.evening.levelDb, night: kinds.night.levelDb };
   const { seconds, coverage, meetsMinimum } = coverageOf(clock.sums, civil, minimumCoverage, nowSec);
-  return {
+  const { scheme } = settingsOfDate(firstDate, timeline);
+  const lden = isOneScheme(evidence, firstDate) ? ldenDb(scheme, levelsDb) : null;
+  const instruments = await instrumentsOf({ station, period: civil, timeZone: span.timeZone, conn });
+  const whole: CoveredLevel = { levelDb: clock.laeqDb(), coverage, spans: [civil] };
+  const figures = {
     from: formatInstantUtc(civil.fromSec),
     to: formatInstantUtc(civil.toSec),
     Lday: levelsDb.day,
     Levening: levelsDb.evening,
     Lnight: levelsDb.night,
-    Lden: isOneScheme(evidence, firstDate)
-      ? ldenDb(settingsOfDate(firstDate, timeline).scheme, levelsDb)
-      : null,
-    LAeq: clock.laeqDb(),
+    Lden: lden,
+    LAeq: whole.levelDb,
     LA10: clock.exceedanceLevelDb(10),
     LA50: clock.exceedanceLevelDb(50),
     LA90: clock.exceedanceLevelDb(90),
@@ -45,45 +63,48 @@ export async function yearToDate(evidence: MonthEvidence): Promise<YearToDate> {
     seconds,
     coverage,
     meetsMinimum,
+    U: uncertaintiesOf(
+      scheme,
+      { clock: whole, kinds, ldenDb: lden },
+      { hours: [...before, ...hours], instruments },
+    ),
   };
+  return { figures, earlier: await earlierGround(evidence, firstDate, periods, before) };
 }
 
-async function pooledPeriods(
-  { source, station, span, timeline, conn }: MonthEvidence,
+/** One kind of the year’s periods as a level, with its coverage of what has elapsed of them. */
+function pooled(
+  { nowSec }: MonthEvidence,
+  kind: PeriodKind,
+  periods: readonly CurrentPeriod[],
+): CoveredLevel {
+  const levels = new PeriodAccumulator();
+  const spans = periods.filter((period) => period.kind === kind);
+  let elapsedSec = 0;
+  for (const { sums, fromSec, toSec } of spans) {
+    levels.merge({ sums });
+    elapsedSec += Math.max(0, Math.min(toSec, nowSec) - fromSec);
+  }
+  const coverage = elapsedSec === 0 ? 0 : Math.min(1, levels.sums.validSec / elapsedSec);
+  return { levelDb: levels.laeqDb(), coverage, spans };
+}
+
+async function earlierGround(
+  { source, span, timeline, conn }: MonthEvidence,
   firstDate: LocalDate,
-): Promise<Map<PeriodKind, PeriodAccumulator>> {
-  const wanted = datesBetween(firstDate, span.endDate).flatMap((date) => datePeriods(date, timeline));
-  const whole: Span = { fromSec: wanted[0]?.fromSec ?? 0, toSec: wanted.at(-1)?.toSec ?? 0 };
-  // Marks are read before rows: what is recomputed in between is then counted anew, never missed.
-  const dirty = await dirtySpans(station.id, whole, conn);
-  const rows = new Map<string, DayPeriod>();
-  for await (const part of eachDayPeriod(station.id, whole, { bandClasses: false }, conn)) {
-    for (const row of part) rows.set(`${row.kind} ${row.fromSec} ${row.toSec}`, row);
-  }
-  const isStored = ({ kind, fromSec, toSec }: KindSpan) =>
-    rows.has(`${kind} ${fromSec} ${toSec}`) && !overlapsAny(dirty, fromSec, toSec);
-  const stored = wanted.filter(isStored);
-  const pooled = new Map<PeriodKind, PeriodAccumulator>();
-  const into = (kind: PeriodKind) => {
-    const levels = pooled.get(kind) ?? new PeriodAccumulator();
-    pooled.set(kind, levels);
-    return levels;
+  periods: readonly CurrentPeriod[],
+  hours: readonly HourEnergy[],
+): Promise<EarlierGround> {
+  if (firstDate === span.firstDate) return { hours: [], periods: [] };
+  const { midnightSec } = dateSettings(firstDate, timeline);
+  const beginning = {
+    fromSec: midnightSec,
+    toSec: datePeriods(firstDate, timeline)[0]?.fromSec ?? midnightSec,
   };
-  for (const { kind, fromSec, toSec } of stored) {
-    const row = rows.get(`${kind} ${fromSec} ${toSec}`);
-    if (row) into(kind).merge(row);
-  }
-  // What has no row is mostly time without data, months of it: read as one stretch.
-  const missing = wanted.filter((period) => !isStored(period));
-  for (const span of mergedSpans(missing.map(({ fromSec, toSec }) => ({ fromSec, toSec })))) {
-    const series = await QuarterSeries.read(source, span, conn);
-    for (const { kind, fromSec, toSec } of missing) {
-      if (span.fromSec <= fromSec && toSec <= span.toSec) {
-        into(kind).merge(await series.levels({ fromSec, toSec }));
-      }
-    }
-  }
-  return pooled;
+  const series = await QuarterSeries.read(source, beginning, conn);
+  const { sums } = await series.levels(beginning);
+  const first: CurrentPeriod = { ...beginning, date: firstDate, kind: 'night', sums };
+  return { hours, periods: [first, ...periods.filter(({ date }) => date < span.firstDate)] };
 }
 
 function isOneScheme({ span, timeline }: MonthEvidence, firstDate: LocalDate): boolean {

@@ -11,6 +11,9 @@ const MOST_CHARACTERS = 80;
 /** Parts that say when or for whom a month was computed, or how complaints stand by now: no figures of the month. */
 const NO_FIGURES = new Set(['form', 'generatedAt', 'isToDate', 'complaints', 'network']);
 
+/** Parts of a station that are null in months issued before they were told: that they are there now is no change. */
+const TOLD_LATER = ['yearToDate U'];
+
 export type BareChange = Omit<FigureChange, 'why'>;
 
 /** Every figure that differs between two computations of a month, in the document’s order; those of the network first. */
@@ -22,10 +25,18 @@ export function changedFigures(old: MonthDocument, now: MonthDocument): BareChan
     stations.find((station) => station.code === code);
   return [
     ...changesBetween(null, leavesOf(without(oldWhole)), leavesOf(without(newWhole))),
-    ...codes.flatMap((code) =>
-      changesBetween(code, leavesOf(byCode(oldStations, code)), leavesOf(byCode(newStations, code))),
-    ),
+    ...codes.flatMap((code) => {
+      const before = leavesOf(byCode(oldStations, code));
+      return changesBetween(code, before, asTold(leavesOf(byCode(newStations, code)), before));
+    }),
   ];
+}
+
+/** Without the parts that a month was issued before anybody was told of. */
+function asTold(now: Map<string, Leaf>, old: ReadonlyMap<string, Leaf>): Map<string, Leaf> {
+  const untold = TOLD_LATER.filter((part) => old.get(part) === null);
+  if (untold.length === 0) return now;
+  return new Map([...now].filter(([figure]) => !untold.some((part) => figure.startsWith(`${part} `))));
 }
 
 function without(whole: Record<string, unknown>): Record<string, unknown> {

@@ -9,6 +9,7 @@ import { SUMMARY_METRICS, type SummaryMetric } from '#lib/contracts/summaryTempl
 import { computeMonth } from '../document/computeMonth';
 import { monthSpan, type MonthSpan } from '../monthSpan';
 import { digestMonth } from '../seal/dataDigest';
+import { YearDigests } from '../seal/yearDigest';
 
 /** A month’s figures with the digest of the very intervals that they are of: both of one snapshot. */
 export interface MeasuredMonth {
@@ -20,12 +21,12 @@ export interface MeasuredMonth {
   stations: StationRow[];
 }
 
-/** Computes a month in one snapshot of the database. `onProgress` is told the stations done. */
+/** Computes a month in one snapshot of the database. `onProgress` is told the stations done, of how many. */
 export function measureMonth(
   network: NetworkRow,
   month: string,
   asOf: Date,
-  onProgress?: (done: number) => void,
+  onProgress?: (done: number, of: number) => void,
 ): Promise<MeasuredMonth> {
   return inTransaction((snapshot) => measureIn(snapshot, network, month, asOf, onProgress), {
     isolationLevel: 'repeatable read',
@@ -38,13 +39,20 @@ export async function measureIn(
   network: NetworkRow,
   month: string,
   asOf: Date,
-  onProgress: (done: number) => void = () => undefined,
+  onProgress: (done: number, of: number) => void = () => undefined,
 ): Promise<MeasuredMonth> {
-  const span = monthSpan(month, await listSettings(network.id, snapshot));
+  const timeline = await listSettings(network.id, snapshot);
+  const span = monthSpan(month, timeline);
   const stations = await listStations(network.id, snapshot);
   const fingerprint = await fingerprintOf(network.id, span, snapshot);
-  const data = await digestMonth(stations, span, snapshot);
-  const doc = await computeMonth(network, month, asOf, { conn: snapshot, onProgress });
+  const intervals = await digestMonth(stations, span, snapshot);
+  const year = new YearDigests(month, timeline);
+  const doc = await computeMonth(network, month, asOf, {
+    conn: snapshot,
+    onProgress,
+    onEarlier: (code, ground) => year.add(code, ground),
+  });
+  const data = { ...intervals, year: year.digest() };
   return { doc, data, fingerprint, span, stations };
 }
 

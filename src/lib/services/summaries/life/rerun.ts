@@ -2,6 +2,7 @@ import { pool } from '#db/queries/connection';
 import { insertDirtyMarks } from '#db/queries/dirtyMarks';
 import { listIssuedFiles, type IssuedSummaryRow } from '#db/queries/issuedSummaries';
 import { listSettings, type NetworkRow } from '#db/queries/networks';
+import { findSeal } from '#db/queries/retention';
 import { listStations } from '#db/queries/stations';
 import { type DataDigest, type SummaryManifest } from '#lib/contracts/summaryManifest';
 import { quartersTouching } from '#lib/time/quarters';
@@ -18,6 +19,8 @@ export interface Rerun {
   damagedFiles: string[];
   /** Stations whose intervals are not those that were sealed. */
   changedData: string[];
+  /** Earlier months of the year whose sums are not those that were sealed, by station; null: nothing was sealed of them. */
+  changedYear: { station: string; month: string }[] | null;
   /** Stations whose intervals are not kept any more: their figures are compared with the stored sums’. */
   withoutIntervals: string[];
   /** Figures of those stations that only intervals tell, and that differ or are missing for that. */
@@ -40,8 +43,7 @@ class Undo extends Error {}
  */
 export async function rerunMonth(network: NetworkRow, issued: IssuedSummaryRow): Promise<Rerun> {
   const { manifest, doc } = await sealedMonth(issued);
-  const fromIntervals = await measureFromIntervals(network, issued, manifest);
-  const withoutIntervals = gone(manifest.data, fromIntervals.data);
+  const { measured: fromIntervals, withoutIntervals } = await measureFromIntervals(network, issued, manifest);
   const all = changedFigures(doc, fromIntervals.doc);
   const differences = all.filter(
     ({ station, figure }) =>
@@ -54,6 +56,7 @@ export async function rerunMonth(network: NetworkRow, issued: IssuedSummaryRow):
     changedData: changed(manifest.data, fromIntervals.data).filter(
       (code) => !withoutIntervals.includes(code),
     ),
+    changedYear: changedYear(manifest.data, fromIntervals.data),
     withoutIntervals,
     notCompared: all.length - differences.length,
     differences,
@@ -65,8 +68,8 @@ async function measureFromIntervals(
   network: NetworkRow,
   issued: IssuedSummaryRow,
   { data }: SummaryManifest,
-): Promise<MeasuredMonth> {
-  let found: MeasuredMonth | undefined;
+): Promise<{ measured: MeasuredMonth; withoutIntervals: string[] }> {
+  let found: { measured: MeasuredMonth; withoutIntervals: string[] } | undefined;
   const asOf = issued.issuedAt;
   const run = pool().transaction(
     async (transaction) => {
@@ -75,10 +78,14 @@ async function measureFromIntervals(
       const { fromSec, toSec } = dataSpan(span);
       const missing = gone(data, await digestMonth(stations, span, transaction));
       for (const { id, code } of stations) {
+        // Partly gone counts as gone: what is left tells nothing of the whole.
+        if ((await findSeal(id, transaction)).keptFromSec > fromSec && isSealed(data, code))
+          missing.push(code);
         if (missing.includes(code)) continue;
         await insertDirtyMarks(id, quartersTouching(fromSec, toSec), transaction);
       }
-      found = await measureIn(transaction, network, issued.month, asOf);
+      const measured = await measureIn(transaction, network, issued.month, asOf);
+      found = { measured, withoutIntervals: [...new Set(missing)] };
       throw new Undo();
     },
     { isolationLevel: 'repeatable read' },
@@ -93,6 +100,8 @@ async function measureFromIntervals(
 const countOf = ({ stations }: DataDigest, code: string) =>
   stations.find((station) => station.code === code)?.intervals ?? 0;
 
+const isSealed = (data: DataDigest, code: string) => countOf(data, code) > 0;
+
 function gone(sealed: DataDigest, now: DataDigest): string[] {
   return sealed.stations
     .filter(({ code, intervals }) => intervals > 0 && countOf(now, code) === 0)
@@ -104,6 +113,21 @@ function changed(sealed: DataDigest, now: DataDigest): string[] {
     stations.find((station) => station.code === code && station.intervals > 0)?.sha256;
   const codes = new Set([...sealed.stations, ...now.stations].map(({ code }) => code));
   return [...codes].filter((code) => digestOf(sealed, code) !== digestOf(now, code)).sort();
+}
+
+function changedYear(sealed: DataDigest, now: DataDigest): Rerun['changedYear'] {
+  if (!sealed.year) return null;
+  const digests = ({ year }: DataDigest) =>
+    new Map(
+      (year?.stations ?? []).flatMap(({ code, months }) =>
+        months.map(({ month, sha256 }) => [`${code} ${month}`, { station: code, month, sha256 }]),
+      ),
+    );
+  const [before, after] = [digests(sealed), digests(now)];
+  return [...new Map([...after, ...before])]
+    .filter(([key]) => before.get(key)?.sha256 !== after.get(key)?.sha256)
+    .map(([, { station, month }]) => ({ station, month }))
+    .sort((a, b) => (`${a.station} ${a.month}` < `${b.station} ${b.month}` ? -1 : 1));
 }
 
 async function damaged(issued: IssuedSummaryRow, { files }: SummaryManifest): Promise<string[]> {

@@ -1,34 +1,37 @@
 import { type IssuedSummaryRow } from '#db/queries/issuedSummaries';
 import { type NetworkRow } from '#db/queries/networks';
 import { type MonthDocument } from '#lib/contracts/monthDocument';
-import {
-  MANIFEST_FORM,
-  type DataDigest,
-  type ManifestFile,
-  type SummaryManifest,
-} from '#lib/contracts/summaryManifest';
+import { MANIFEST_FORM, type ManifestFile, type SummaryManifest } from '#lib/contracts/summaryManifest';
 
-export interface SealGround {
+export interface SealGround extends Pick<SummaryManifest, 'data' | 'limits' | 'settings'> {
   network: NetworkRow;
+  month: string;
   revision: number;
   supersedes: Pick<IssuedSummaryRow, 'revision' | 'manifestSha256'> | null;
   issuedAt: Date;
   issuedBy: string;
   files: ManifestFile[];
-  data: DataDigest;
   templateVersion: number;
   software: string;
   auditHead: SummaryManifest['auditHead'];
   publicKey: string;
 }
 
+/** What the manifest says of a month’s figures beside their data. */
+export function manifestGrounds({
+  limits,
+  conventions,
+}: MonthDocument): Pick<SummaryManifest, 'limits' | 'settings'> {
+  return { limits: limits.map(({ id, version }) => ({ id, version })), settings: conventions };
+}
+
 /** The manifest of a month that is issued: the very text that is signed. */
-export function manifestText(doc: MonthDocument, ground: SealGround): string {
+export function manifestText(ground: SealGround): string {
   const { supersedes } = ground;
   const manifest: SummaryManifest = {
     form: MANIFEST_FORM,
     network: { slug: ground.network.slug, name: ground.network.name },
-    month: doc.month,
+    month: ground.month,
     revision: ground.revision,
     supersedes: supersedes && {
       revision: supersedes.revision,
@@ -38,17 +41,12 @@ export function manifestText(doc: MonthDocument, ground: SealGround): string {
     issuedBy: ground.issuedBy,
     files: ground.files,
     data: ground.data,
-    limits: doc.limits.map(({ id, version }) => ({ id, version })),
-    settings: doc.conventions,
+    limits: ground.limits,
+    settings: ground.settings,
     template: ground.templateVersion,
     software: ground.software,
     auditHead: ground.auditHead,
     publicKey: ground.publicKey,
   };
   return `${JSON.stringify(manifest, null, 2)}\n`;
-}
-
-/** The format of an issued file by its name: `merrow-2026-03-r2.csv.zip` is `csv`. */
-export function formatOf(name: string): string {
-  return /\.(pdf|xlsx|csv|json)(?:\.zip)?$/.exec(name)?.[1] ?? 'other';
 }

@@ -82,6 +82,7 @@ function seal({ pages, words, context }: PdfGround): void {
   pages.heading(3, words.sections.seal, { keep: 60 });
   if (sealed) {
     pages.paragraph(`${words.seal.digest}: ${sealed.dataSha256}`, style, 1);
+    if (sealed.yearSha256 !== null) pages.paragraph(`${words.seal.year}: ${sealed.yearSha256}`, style, 1);
     pages.paragraph(`${words.seal.software}: ${sealed.softwareVersion}`, style, 1);
     if (sealed.publicKey !== null) pages.paragraph(`${words.seal.key}: ${sealed.publicKey}`, style, 1);
   }

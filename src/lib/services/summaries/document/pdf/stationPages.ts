@@ -90,8 +90,7 @@ function figuresTable(ground: PdfGround, station: DocumentStation): void {
     LAFmax:
       figures.LAFmaxAt === null ? words.over.month : words.maximumAt(format.shortInstant(figures.LAFmaxAt)),
   };
-  const { U } = figures;
-  const uncertain = { Lday: U.Lday, Levening: U.Levening, Lnight: U.Lnight, Lden: U.Lden, LAeq: U.LAeq };
+  const uncertain = figures.U;
   const { columns } = words;
   table(
     pages,
@@ -101,20 +100,25 @@ function figuresTable(ground: PdfGround, station: DocumentStation): void {
       { head: columns.level },
       { head: 'U, dB' },
       { head: columns.coverage },
-      ...(showsYear ? [{ head: words.sections['year-to-date'] }] : []),
+      ...(showsYear ? [{ head: words.sections['year-to-date'] }, { head: 'U, dB' }] : []),
     ],
     context.template.metrics
       .filter((metric) => metric !== 'Levening' || figures.periods.evening !== null)
       .map((metric) => {
         const { level, coverage, meetsMinimum } = figureOf(station, metric);
-        const u = metric in uncertain ? uncertain[metric as keyof typeof uncertain] : null;
+        const of = metric in uncertain ? (metric as keyof typeof uncertain) : null;
         return [
           metric,
           over[metric],
           format.level(level, meetsMinimum),
-          format.uncertainty(u),
+          format.uncertainty(of && uncertain[of]),
           format.coverage(coverage),
-          ...(showsYear ? [format.level(yearToDate[metric], yearToDate.meetsMinimum)] : []),
+          ...(showsYear
+            ? [
+                format.level(yearToDate[metric], yearToDate.meetsMinimum),
+                format.uncertainty((of && yearToDate.U?.[of]) ?? null),
+              ]
+            : []),
         ];
       }),
   );

@@ -111,6 +111,7 @@ function covered({ coverage, meetsMinimum }: { coverage: number; meetsMinimum: b
   return { coverage, meetsMinimum };
 }
 
+const UNCERTAIN = ['Lday', 'Levening', 'Lnight', 'Lden', 'LAeq'] as const;
 const POOLED = ['Lday', 'Levening', 'Lnight', 'Lden', 'LAeq', 'LA10', 'LA50', 'LA90', 'LAFmax'] as const;
 
 /** The year so far, a station a row. */
@@ -128,6 +129,13 @@ export function yearToDateTable({ stations }: MonthDocument): TopicTable {
       instant('to', 'End', ({ of }) => of.to),
       ...POOLED.map((name) =>
         level<Of<DocumentStation['yearToDate']>>(`${name}_db`, `${name}, dB`, ({ of }) => of[name]),
+      ),
+      ...UNCERTAIN.map((name) =>
+        level<Of<DocumentStation['yearToDate']>>(
+          `${name}_U_db`,
+          `Expanded uncertainty of ${name}, dB; empty where it is not told`,
+          ({ of }) => of.U?.[name],
+        ),
       ),
       ...coverageColumns<DocumentStation['yearToDate']>(),
       seconds('sample_seconds', 'Length of the base samples of LA10 to LA90', ({ of }) => of.sampleSeconds),

@@ -233,7 +233,7 @@ export const GERMAN: MonthWords = {
       'verzeichnet. „Nicht überschritten“ gilt für die Fenster, die genug Daten zum Vergleich hatten, für keine anderen.',
     'Die Unsicherheit eines Pegels vereint die Klasse des Geräts, die Abweichung bei Kalibrierprüfungen und den Anteil der Lücken, ' +
       '4,34·s/m·((1 − c)/n)^0,5 über die n stündlichen Energien (Mittel m, Streuung s, Abdeckung c), was zufällige Lücken annimmt. Die von Lden wägt Tag, Abend und Nacht nach ihrem ' +
-      'Anteil an der Energie und nimmt deren Lücken als unabhängig.',
+      'Anteil an der Energie und nimmt deren Lücken als unabhängig. Die des Jahres bis hierher entsteht ebenso, aus allen seinen Stunden, Prüfungen und Geräten.',
     'Töne werden im mittleren Spektrum des Monats und jeder Viertelstunde gesucht, nach dem Übersichtsverfahren der ISO 1996-2:2017 Anhang K. Ein ' +
       'Mittel über einen Monat verbirgt Töne, die kommen und gehen.',
     'Pegel sind hier einmal kaufmännisch auf 0,1 dB gerundet; die Dateien mit Daten enthalten sie ungerundet. Grenzwerte und Verglichenes tragen ' +
@@ -272,6 +272,7 @@ export const GERMAN: MonthWords = {
   },
   seal: {
     digest: 'SHA-256 der verwendeten Daten',
+    year: 'SHA-256 der Summen der Monate davor, für das Jahr bis hierher',
     software: 'Version der Software',
     key: 'Öffentlicher Schlüssel des Netzes',
     chain: 'Kopf der Prüfkette',

@@ -233,7 +233,7 @@ export const ENGLISH: MonthWords = {
       'is listed as lifted. “Not exceeded” speaks of the windows that had enough data to be compared, of no others.',
     'The uncertainty of a level combines the instrument’s class, the drift that calibration checks show, and what gaps bring in, ' +
       '4.34·s/m·((1 − c)/n)^0.5 over the n hourly energies (mean m, spread s, coverage c), which assumes that gaps fall at random. That of Lden weighs day, evening and night ' +
-      'by their shares of its energy and takes their gaps as independent.',
+      'by their shares of its energy and takes their gaps as independent. That of the year to date is made likewise, of all its hours, checks and instruments.',
     'Tones are looked for in the mean spectrum of the month and of each quarter-hour, by the survey method of ISO 1996-2:2017 Annex K. ' +
       'A mean over a month hides tones that come and go.',
     'Levels here are rounded once, half up, to 0.1 dB; the files with data carry them unrounded.',
@@ -267,6 +267,7 @@ export const ENGLISH: MonthWords = {
   signOff: { prepared: 'Prepared by, date', reviewed: 'Reviewed by, date', issued: 'Issued by, date' },
   seal: {
     digest: 'SHA-256 of the data used',
+    year: 'SHA-256 of the sums of the months before, for the year to date',
     software: 'Version of the software',
     key: 'Public key of the network',
     chain: 'Head of the audit chain',

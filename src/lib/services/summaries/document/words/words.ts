@@ -120,7 +120,7 @@ export interface MonthWords {
   cautions: readonly string[];
   glossary: readonly (readonly [term: string, meaning: string])[];
   signOff: Record<'prepared' | 'reviewed' | 'issued', string>;
-  seal: Record<'digest' | 'software' | 'key' | 'chain' | 'verify', string>;
+  seal: Record<'digest' | 'year' | 'software' | 'key' | 'chain' | 'verify', string>;
 }
 
 /** How the method statement writes what it names. */

@@ -1,0 +1,34 @@
+import { listStations } from '#db/queries/stations';
+import { JobThread } from '../../threads/jobThread';
+import { type JobListener } from '../../threads/messages';
+import { doMonthTask } from './doTask';
+import { type MonthResult, type MonthTask, type MonthWork } from './tasks';
+
+/** Months of so few stations take a second or two and little memory: less than starting a thread is worth. */
+const FEW_STATIONS = 12;
+/** Enough for the tables of some hundreds of stations; a fourth of it does for a hundred. */
+const MOST_HEAP_MIB = 768;
+const YOUNG_HEAP_MIB = 24;
+
+/**
+ * Months of many stations are computed and printed one after another, each in a thread that ends with it: a hundred stations take
+ * hundreds of megabytes, which a process that goes on would keep.
+ */
+const thread = new JobThread<MonthTask, MonthResult>('src/lib/services/summaries/work/monthThread.ts', {
+  isFresh: true,
+  heapMib: MOST_HEAP_MIB,
+  youngMib: YOUNG_HEAP_MIB,
+});
+
+/** Does something with a whole month when what was asked before is done. @throws {JobsFull | JobCancelled} */
+export async function monthWork<Kind extends keyof MonthWork>(
+  kind: Kind,
+  task: MonthWork[Kind]['task'],
+  { onProgress = () => undefined }: JobListener = {},
+): Promise<MonthWork[Kind]['result']> {
+  const whole = { kind, ...task } as MonthTask;
+  const { length } = await listStations(task.network.id);
+  return length > FEW_STATIONS
+    ? thread.run(whole, { onProgress })
+    : doMonthTask(whole, { onProgress, isCancelled: () => false });
+}
