@@ -11,12 +11,16 @@ const RENDERER = '@astrojs/react/dist/client.js';
 
 let chunks: Record<string, Chunk> | undefined;
 
+/** Addresses of all scripts that islands need, with what makes them live; `sources`: ends of the paths of their components. */
+export function islandScripts(...sources: string[]): string[] {
+  return scriptsOf(...sources, RENDERER);
+}
+
 /**
- * Addresses of all scripts that an island needs, so that a page can have them fetched at once: found one behind the other, each
- * waits until the page has time for the one before. `source`: end of the path of its component, or of a page's script, which needs no
- * renderer.
+ * Addresses of all scripts that some sources need (ends of their paths), so that a page can have them fetched at once: found one
+ * behind the other, each waits until the page has time for the one before.
  */
-export function islandScripts(source: string, kind: 'island' | 'script' = 'island'): string[] {
+export function scriptsOf(...sources: string[]): string[] {
   chunks ??= existsSync(MANIFEST)
     ? (JSON.parse(readFileSync(MANIFEST, 'utf8')) as Record<string, Chunk>)
     : {};
@@ -29,7 +33,7 @@ export function islandScripts(source: string, kind: 'island' | 'script' = 'islan
     chunk.imports?.forEach(add);
   };
   Object.keys(all)
-    .filter((name) => name.endsWith(source) || (kind === 'island' && name.endsWith(RENDERER)))
+    .filter((name) => sources.some((source) => name.endsWith(source)))
     .forEach(add);
   return [...files].map((file) => `/${file}`);
 }

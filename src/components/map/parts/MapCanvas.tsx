@@ -20,6 +20,7 @@ export default function MapCanvas({ styleUrls, ...slips }: MapPaneProps) {
         pitchWithRotate={false}
         touchPitch={false}
         maxZoom={17.5}
+        fadeDuration={0}
         attributionControl={{ compact: true }}
         onError={() => setHasBackground(false)}
         onStyleData={() => setHasBackground(true)}
