@@ -1,0 +1,76 @@
+import { appendAudit } from '#db/queries/audit';
+import { inTransaction } from '#db/queries/connection';
+import { listJobTroubles, wakeJobTroubles } from '#db/queries/jobTroubles';
+import { findStationById } from '#db/queries/stations';
+
+/** Something that the worker could not do, for people. */
+export interface TroubleWords {
+  /** What it does: "recompute quarter-hours". */
+  job: string;
+  /** What it failed at: "station MER-02". */
+  subject: string;
+  failure: string;
+  /** Attempts that failed. */
+  times: number;
+  since: Date;
+  /** When it is tried again. */
+  restsUntil: Date;
+}
+
+const JOBS: Readonly<Record<string, string>> = {
+  aggregate: 'recompute quarter-hours',
+  'judge-limits': 'judge limits',
+  'import-files': 'import files',
+  'shift-clocks': 'move intervals of a wrong clock',
+  'trace-days': 'make day traces',
+  'compose-alerts': 'compose alerts',
+  escalate: 'escalate',
+  'send-webhooks': 'post to webhooks',
+  'warn-early': 'warn early',
+  'watch-health': 'judge health',
+  'watch-drifts': 'judge drift',
+  'watch-summaries': 'compare issued months',
+  'draft-summaries': 'draft months',
+  'complete-periods': 'complete days, evenings and nights',
+  'remind-calibrations': 'remind of calibration checks',
+  'remind-complaints': 'remind of complaints',
+  'keep-complaints': 'erase what is kept no longer',
+  'retain-intervals': 'delete old intervals',
+  'forecast-disk': 'warn of a full disk',
+  housekeeping: 'tidy up',
+};
+
+/** What the worker could not do, longest first; of one network, or of all (null). */
+export async function jobTroublesOf(networkId: number | null): Promise<TroubleWords[]> {
+  const rows = await listJobTroubles(networkId);
+  return Promise.all(
+    rows.map(async ({ job, subject, failure, times, since, restsUntil }) => ({
+      job: JOBS[job] ?? job,
+      subject: await withCode(subject),
+      failure,
+      times,
+      since,
+      restsUntil,
+    })),
+  );
+}
+
+/** Has everything that failed tried again at the next round. @returns how many. */
+export function tryJobsAgain(userId: string): Promise<number> {
+  return inTransaction(async (transaction) => {
+    const count = await wakeJobTroubles(null, new Date(), transaction);
+    const subject = 'jobs of the worker';
+    await appendAudit(
+      { userId, networkId: null, action: 'jobs.retry', subject, detail: { count } },
+      transaction,
+    );
+    return count;
+  });
+}
+
+/** Stations by their codes. */
+async function withCode(subject: string): Promise<string> {
+  const id = /\bstation (\d+)$/.exec(subject)?.[1];
+  const station = id === undefined ? undefined : await findStationById(Number(id));
+  return station ? subject.replace(/\d+$/, station.code) : subject;
+}
