@@ -1,3 +1,5 @@
+import { csvCell } from '#lib/format/csvText';
+
 /**
  * The rows and columns of a table that are shown, as CSV (RFC 4180). A cell's `data-value` stands for it where its text is
  * written for people. Text that a spreadsheet would run as a formula gets an apostrophe; numbers are left alone.
@@ -8,17 +10,16 @@ export function csvOfTable(table: HTMLTableElement): string {
     .map((row) =>
       [...row.cells]
         .filter((cell) => !cell.hidden)
-        .map(csvCell)
+        .map(cellText)
         .join(','),
     )
     .join('\r\n')
     .concat('\r\n');
 }
 
-function csvCell(cell: HTMLTableCellElement): string {
+function cellText(cell: HTMLTableCellElement): string {
   const text = (cell.dataset['value'] ?? cell.dataset['label'] ?? cell.innerText).replace(/\s+/g, ' ').trim();
   const number = text.replace('\u2212', '-');
   if (/^-?\d+(\.\d+)?$/.test(number)) return number;
-  const safe = /^[=+\-@\t\r]/.test(text) ? `'${text}` : text;
-  return /[",\r\n]/.test(safe) ? `"${safe.replaceAll('"', '""')}"` : safe;
+  return csvCell(text);
 }

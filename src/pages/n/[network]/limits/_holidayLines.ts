@@ -1,7 +1,7 @@
 import { isLocalDate } from '#lib/time/zone';
 import { invalidFields } from '#lib/http/problem';
 
-const LINE = /^"?(\d{4}-\d{2}-\d{2})"?\s*[,;\t ]\s*"?(.*?)"?$/;
+const LINE = /^"?(\d{4}-\d{2}-\d{2})"?(?:\s*[,;]|[\t ])(.*)$/;
 const HEADING = /^"?date"?\s*[,;\t]/i;
 
 /**
@@ -12,7 +12,8 @@ export function holidaysOfLines(text: string): { items: { date: string; name: st
   const items = text.split(/\r?\n/).flatMap((line, at) => {
     const trimmed = line.trim();
     if (trimmed === '' || (at === 0 && HEADING.test(trimmed))) return [];
-    const [, date = '', name = ''] = LINE.exec(trimmed) ?? [];
+    const [, date = '', rest = ''] = LINE.exec(trimmed) ?? [];
+    const name = rest.trim().replace(/^"|"$/g, '');
     if (!isLocalDate(date) || name === '') {
       const message = `must have lines like “2026-12-25, Christmas Day”; line ${at + 1} is “${trimmed.slice(0, 60)}”`;
       throw invalidFields([{ field: 'items', message }]);
