@@ -40,12 +40,16 @@ export const METRIC_LABELS: Record<SummaryMetric, string> = {
   LAFmax: 'LAFmax',
 };
 
+/** Values packed into one word, which tell a reader nothing. */
+const isCode = (text: string) => text.length > 40 && !text.includes(' ');
+
 /** A value of a changed figure for people: levels to 0.01, or finer where that would hide the change. */
 export function changedText(
   value: number | string | boolean | null,
   other: number | string | boolean | null,
 ): string {
   if (value === null) return '—';
+  if (typeof value === 'string') return isCode(value) ? 'many values' : value;
   if (typeof value !== 'number') return String(value);
   const digits = [2, 4, 6].find(
     (places) => typeof other !== 'number' || value.toFixed(places) !== other.toFixed(places),
