@@ -16,7 +16,7 @@ useEmptyDatabase();
 const DIRECTORY = 'db/migrations';
 const NAMES = readdirSync(DIRECTORY).sort();
 const committed = () => readFileSync('db/schema.sql', 'utf8').replace(/^--.*\n\n/, '');
-const KILLS = 5;
+const KILLS = 3;
 
 test('a migration killed at any moment is gone on with by the next start', async () => {
   const random = new Random(9);

@@ -124,6 +124,10 @@ export const intervalListSchema = z.object({
   bands: z.array(z.number()).describe('Nominal frequencies, Hz, of the page’s levels'),
   items: z.array(storedIntervalSchema),
   next: z.string().nullable(),
+  keptFrom: z
+    .string()
+    .nullable()
+    .describe('Where the period reaches back further: single intervals before are no longer kept'),
 });
 export type IntervalList = z.output<typeof intervalListSchema>;
 

@@ -13,6 +13,7 @@ import { sheetCsv } from '#lib/services/figures/sheetCsv';
 import { periodStatistics } from '#lib/services/levels/statistics';
 import { dayFigures } from '#lib/services/levels/days';
 import { spectrogram } from '#lib/services/levels/spectrogram';
+import { changeNetwork } from '#lib/services/networks/change';
 import { changeRetention } from '#lib/services/retention/settings';
 import { SealedError } from '#lib/services/retention/seal';
 import { findStationById, type StationRow } from '#db/queries/stations';
@@ -120,6 +121,22 @@ test('the spectrogram is drawn from quarter-hours, and the figures page and its 
   expect(sheetCsv(sheet)).toContain('are no longer kept');
 });
 
+test('lists of single intervals say from when they are kept; a file that would lack some is refused', async () => {
+  const from = '2025-02-26T00:00:00Z';
+  const list = await desk.read<{ keptFrom: string | null; items: unknown[] }>('KEPT', 'intervals', {
+    from,
+    to: '2025-02-27T12:00:00Z',
+  });
+  expect(list.keptFrom).toBe('2025-02-27T00:00:00Z');
+  expect(list.items.length).toBeGreaterThan(100);
+  const { session } = await makePerson(desk.networkId, ['operator']);
+  const path = '/api/v1/networks/kept/stations/KEPT/intervals.csv';
+  const file = (start: string) =>
+    callApi('GET', `${path}?from=${start}&to=2025-02-28T00:00:00Z`, { session });
+  expect((await file(from)).status).toBe(409);
+  expect((await file('2025-02-27T00:00:00Z')).status).toBe(200);
+});
+
 test('nothing before can be changed: exclusions, late data, settings that reach back', async () => {
   const { userId, session } = await makePerson(desk.networkId, ['operator']);
   const asked = { networkId: desk.networkId, stationCode: 'KEPT', ...OLD, reason: 'Mower', userId };
@@ -131,6 +148,9 @@ test('nothing before can be changed: exclusions, late data, settings that reach 
   });
   expect(refused.status).toBe(409);
   expect(await refused.json()).toMatchObject({ code: 'sealed' });
+  const network = { id: desk.networkId, slug: 'kept', name: 'Kept' };
+  const settings = { effectiveFrom: OLD.fromSec, minimumCoverage: 0.5 };
+  await expect(changeNetwork(network, settings, userId)).rejects.toThrow(SealedError);
   const token = await inTransaction((transaction) => insertStationToken(station.id, null, transaction));
   const late = {
     bands: [100],

@@ -4,6 +4,7 @@ import { selectIntervals, type StoredInterval } from '#db/queries/intervals';
 import type { StationRow } from '#db/queries/stations';
 import { flagNames } from '#lib/acoustics/validity';
 import { formatInstantUtc } from '#lib/contracts/common';
+import { keptFromSecOf, requireKept } from '../retention/kept';
 import { bandColumns, inDb, type BandColumns } from './columns';
 
 /** Most intervals in one file: two months of minutes, a day of seconds. */
@@ -29,9 +30,11 @@ interface Period {
  * Intervals that begin in `fromSec <= t < toSec` as CSV (RFC 4180) in the contract's columns, as of one moment. The same file
  * uploaded again is all known.
  * @throws {NotOneFile}
+ * @throws {SealedError} for a period that reaches back to where single intervals are no longer kept: a file would not tell what it lacks.
  */
 export async function intervalsCsv(station: StationRow, period: Period): Promise<string> {
   return inTransaction(async (snapshot) => {
+    requireKept(period.fromSec, await keptFromSecOf(station.id, snapshot));
     const columns = await columnsOf(station, period, snapshot);
     const lines = [[...CSV_LEADING, ...columns.nominalHz, ...CSV_TRAILING].join(',')];
     for (let fromSec = period.fromSec; ;) {

@@ -8,6 +8,7 @@ import type { IntervalList } from '#lib/contracts/intervals';
 import { rulesSpans, type Judgement } from '../levels/accumulate';
 import { judgementOf } from '../levels/intervalSums';
 import { reasonBitsOf } from '../levels/seen';
+import { keptFromSecOf } from '../retention/kept';
 import { bandColumns, inDb, type BandColumns } from './columns';
 
 export interface IntervalPage {
@@ -37,8 +38,13 @@ export async function listIntervals(
   );
   const timeline = await listSettings(station.networkId);
   const judgement = await judgementOf({ station, timeline, validity: 'rules' }, period, pool());
+  const keptFromSec = await keptFromSecOf(station.id, pool());
   return {
-    list: { bands: columns.nominalHz, items: page.map((interval) => itemOf(interval, columns, judgement)) },
+    list: {
+      bands: columns.nominalHz,
+      items: page.map((interval) => itemOf(interval, columns, judgement)),
+      keptFrom: period.fromSec < keptFromSec ? formatInstantUtc(keptFromSec) : null,
+    },
     nextStartSec: beginning[page.length]?.startSec ?? null,
   };
 }
