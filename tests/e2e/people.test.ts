@@ -42,7 +42,7 @@ async function giveEmailAndPassword(page: Page, email: string): Promise<void> {
 }
 
 async function giveCode(page: Page, code: string): Promise<void> {
-  await page.getByLabel('Code').fill(code);
+  await page.getByLabel('Code', { exact: true }).fill(code);
   await page.getByRole('button', { name: 'Sign in' }).click();
 }
 
@@ -83,13 +83,13 @@ test('invited by e-mail, in with a password, a second factor set up, back by cod
   await page.getByRole('button', { name: 'Set up a second factor' }).click();
   const secret = await page.locator('main code').innerText();
   await look(page, 'factor-setup');
-  await page.getByLabel('Code').fill('000000');
+  await page.getByLabel('Code', { exact: true }).fill('000000');
   await page.getByRole('button', { name: 'Put it into force' }).click();
   await page
     .getByText(/is not the code that holds now/)
     .first()
     .waitFor();
-  await page.getByLabel('Code').fill(codeOf(secret, -1));
+  await page.getByLabel('Code', { exact: true }).fill(codeOf(secret, -1));
   await page.getByRole('button', { name: 'Put it into force' }).click();
   await page.getByText('Your recovery codes').waitFor();
   const recoveryCodes = await page.locator('main li code').allInnerTexts();
