@@ -1,7 +1,9 @@
 import { randomUUID } from 'node:crypto';
+import type { APIContext, MiddlewareNext } from 'astro';
 import { defineMiddleware } from 'astro:middleware';
 import { actingFrom } from '#lib/auth/actingFrom';
 import { userOfRequest } from '#lib/auth/requestUser';
+import { noteRefusal } from '#lib/http/noteRefusal';
 import { problemResponse } from '#lib/http/problem';
 import { problemOf } from '#lib/http/route';
 import { requireSameOrigin } from '#lib/http/sameOrigin';
@@ -21,14 +23,22 @@ const HEADERS = {
 export const onRequest = defineMiddleware(async (context, next) => {
   context.locals.requestId = randomUUID();
   context.locals.theme = chosenTheme(context.cookies);
+  const response = await answer(context, next);
+  const { requestId, user } = context.locals;
+  const { method } = context.request;
+  noteRefusal(response.status, { requestId, method, path: context.url.pathname, userId: user?.id ?? null });
+  return withHeaders(response, requestId);
+});
+
+async function answer(context: APIContext, next: MiddlewareNext): Promise<Response> {
   try {
     requireSameOrigin(context.request);
     context.locals.user = await userOfRequest(context);
   } catch (error) {
-    return withHeaders(refusal(error, context.url.pathname), context.locals.requestId);
+    return refusal(error, context.url.pathname);
   }
-  return withHeaders(await actingFrom(context.clientAddress, next), context.locals.requestId);
-});
+  return actingFrom(context.clientAddress, next);
+}
 
 function refusal(error: unknown, path: string): Response {
   const problem = problemOf(error, path);

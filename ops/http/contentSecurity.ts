@@ -29,7 +29,7 @@ export function contentSecurityPolicy(mapOrigins: readonly string[]): Record<str
     fontSrc: ["'self'", 'data:'],
     connectSrc: ["'self'", ...mapOrigins],
     workerSrc: ["'self'"],
-    baseUri: ["'self'"],
+    baseUri: ["'none'"],
     formAction: ["'self'"],
     frameAncestors: ["'none'"],
     objectSrc: ["'none'"],

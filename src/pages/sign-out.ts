@@ -5,5 +5,8 @@ import { endSession, sessionCookieName } from '#lib/auth/sessions';
 export const POST: APIRoute = async ({ cookies, redirect }) => {
   const { name, value, attributes } = await endSession(cookies.get(sessionCookieName())?.value);
   cookies.set(name, value, attributes);
-  return redirect('/sign-in', 303);
+  const answer = redirect('/sign-in', 303);
+  // Pages that the browser keeps to go back to would show what only the person may see.
+  answer.headers.set('Clear-Site-Data', '"cache"');
+  return answer;
 };

@@ -3,6 +3,7 @@ import { ZodError } from 'zod';
 import { log } from '#lib/config/log';
 import { SealedError } from '#lib/services/retention/seal';
 import { isDatabaseAway } from './databaseAway';
+import { loggedPath } from './loggedPath';
 import { invalidFields, Problem, problemResponse, sealed } from './problem';
 
 /** Wraps a handler so that every way out is an answer to the contract: whatever it throws becomes problem details. */
@@ -35,11 +36,6 @@ export function problemOf(error: unknown, path: string): Problem {
   }
   log().error({ err: error, path: loggedPath(path) }, 'request failed');
   return new Problem(500, 'failed', 'Something went wrong here', 'Nothing was changed. It has been noted.');
-}
-
-/** A path without what is secret in it: the key of a resident's private page, the token of a mailed link. */
-function loggedPath(path: string): string {
-  return path.replace(/^(\/(?:report\/[^/]+|join|reset|acknowledge)\/).+/, '$1…');
 }
 
 function fieldsOf(error: ZodError): { field: string; message: string }[] {
