@@ -55,6 +55,9 @@ function withHeaders(response: Response, requestId: string): Response {
   for (const [name, value] of Object.entries(HEADERS)) {
     if (!response.headers.has(name)) response.headers.set(name, value);
   }
+  if (response.headers.get('Content-Type') === 'text/html') {
+    response.headers.set('Content-Type', 'text/html; charset=utf-8');
+  }
   response.headers.set('X-Request-Id', requestId);
   if (!response.headers.has('Cache-Control')) response.headers.set('Cache-Control', 'private, no-cache');
   return response;

@@ -53,6 +53,7 @@ function makePagesFront(astro: AstroHandler, settings: FrontSettings, trusts: Tr
   front.disable('x-powered-by');
   front.use(safeHeaders(settings));
   front.use(requireKnownHost(settings.allowedHosts));
+  front.use(requireKnownMethod);
   front.use(setClientAddress(trusts));
   front.use(refuseLargeBodies(settings.importMostBytes + FORM_BYTES));
   front.use(compression());
@@ -94,6 +95,14 @@ function requireKnownHost(allowedHosts: string[]): RequestHandler {
       .send('This server does not answer under that name (BITTERN_ALLOWED_HOSTS).\n');
   };
 }
+
+const METHODS = ['GET', 'HEAD', 'POST', 'PUT', 'PATCH', 'DELETE', 'OPTIONS'];
+
+/** TRACE, and what nobody uses, ends here: the pages' server cannot even represent it. */
+const requireKnownMethod: RequestHandler = (request, response, next) => {
+  if (METHODS.includes(request.method)) return next();
+  response.status(405).set('Allow', METHODS.join(', ')).type('text/plain').send('There is no such method.\n');
+};
 
 function isKnownHost(allowedHosts: string[], host = ''): boolean {
   return allowedHosts.includes(host.toLowerCase());

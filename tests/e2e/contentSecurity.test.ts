@@ -94,6 +94,7 @@ test('a script that somebody got into a page does not run', async () => {
 
 test('pages answer under their own name only, and nobody else may frame them', async () => {
   const answer = await fetch(`${inject('origin')}/sign-in`);
+  expect(answer.headers.get('content-type')).toBe('text/html; charset=utf-8');
   expect(answer.headers.get('x-frame-options')).toBe('DENY');
   expect(answer.headers.get('content-security-policy')).toContain("frame-ancestors 'none'");
   expect(answer.headers.get('permissions-policy')).toContain('geolocation=(self)');

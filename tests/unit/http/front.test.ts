@@ -13,6 +13,7 @@ async function ask(
   headers: Record<string, string>,
   settings: Omit<Parameters<typeof makeFront>[1], 'importMostBytes'> = plain,
   path = '/n/merrow/map',
+  method = 'GET',
 ): Promise<{ status: number; headers: IncomingHttpHeaders; text: string }> {
   seen = null;
   const astro = (request: { headers: IncomingHttpHeaders }, response: { end(text: string): void }) => {
@@ -23,7 +24,7 @@ async function ask(
   await new Promise<void>((listening) => server.listen(0, '127.0.0.1', listening));
   const { port } = server.address() as AddressInfo;
   return new Promise((answered, failed) => {
-    const asked = httpRequest({ host: '127.0.0.1', port, path, headers, agent: false });
+    const asked = httpRequest({ host: '127.0.0.1', port, path, method, headers, agent: false });
     asked.on('error', failed);
     asked.on('response', (response) => {
       let text = '';
@@ -53,6 +54,13 @@ describe('the front before the pages', () => {
     expect(headers['referrer-policy']).toBe('same-origin');
     expect(headers['x-powered-by']).toBeUndefined();
     expect(headers['strict-transport-security']).toBeUndefined();
+  });
+
+  test('knows no TRACE', async () => {
+    const { status, headers } = await ask(known, plain, '/n/merrow/map', 'TRACE');
+    expect(status).toBe(405);
+    expect(headers['allow']).not.toContain('TRACE');
+    expect(seen).toBeNull();
   });
 
   test('lets no script run but files of its own and known texts, and maps come from where they are', async () => {
