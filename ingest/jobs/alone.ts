@@ -2,7 +2,7 @@ import { isConnectionLost, isLockConflict } from '#db/queries/connection';
 import { endJobTrouble, noteJobTrouble, troublesOfJob } from '#db/queries/jobTroubles';
 import { failureWords } from '#lib/config/failureWords';
 import { log } from '#lib/config/log';
-import { isDatabaseAway } from '#lib/http/databaseAway';
+import { isDatabaseAway } from '#db/queries/databaseAway';
 
 const FIRST_REST_MS = 60_000;
 const LONGEST_REST_MS = 3_600_000;

@@ -2,7 +2,7 @@ import type { APIContext, APIRoute } from 'astro';
 import { ZodError } from 'zod';
 import { log } from '#lib/config/log';
 import { SealedError } from '#lib/services/retention/seal';
-import { isDatabaseAway } from './databaseAway';
+import { isDatabaseAway } from '#db/queries/databaseAway';
 import { loggedPath } from './loggedPath';
 import { invalidFields, Problem, problemResponse, sealed } from './problem';
 
