@@ -14,8 +14,15 @@ export async function askLocks(sql: string, values: readonly string[]): Promise<
     opening = undefined;
     throw error;
   });
-  const [rows] = await connection.query<RowDataPacket[]>({ sql, rowsAsArray: true, values: [...values] });
-  return (rows[0] as unknown[] | undefined)?.[0];
+  try {
+    const [rows] = await connection.query<RowDataPacket[]>({ sql, rowsAsArray: true, values: [...values] });
+    return (rows[0] as unknown[] | undefined)?.[0];
+  } catch (error) {
+    // Lost while it was asked, which it tells nobody else: the next question opens another.
+    opening = undefined;
+    connection.destroy();
+    throw error;
+  }
 }
 
 /** Ends it, where there is one; the locks go with it. */
