@@ -4,6 +4,9 @@ import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { afterAll, beforeAll, expect, test, vi } from 'vitest';
 import { db } from '#db/client';
+import { inTransaction } from '#db/queries/connection';
+import { sealStation } from '#db/queries/retention';
+import { forgetKept } from '#lib/services/retention/kept';
 import { listIssued, type IssuedSummaryRow } from '#db/queries/issuedSummaries';
 import { aggregateAll } from '#ingest/aggregate/aggregate';
 import { rerunMonth } from '#lib/services/summaries/life/rerun';
@@ -55,13 +58,11 @@ test('a month from its intervals, past every stored sum, has the figures that we
 });
 
 test('what was changed in the stored sums alone does not hide what the intervals say', async () => {
-  await db()('quarter_hours')
-    .where({ station_id: quay })
-    .update({ a_energy_sec: db().raw('a_energy_sec * 2') });
+  const ofMonth = () =>
+    db()('quarter_hours').where({ station_id: quay }).where('starts_at', '>=', at('2026-03-01T00:00:00Z'));
+  await ofMonth().update({ a_energy_sec: db().raw('a_energy_sec * 2') });
   expect((await rerun()).isSame).toBe(true);
-  await db()('quarter_hours')
-    .where({ station_id: quay })
-    .update({ a_energy_sec: db().raw('a_energy_sec / 2') });
+  await ofMonth().update({ a_energy_sec: db().raw('a_energy_sec / 2') });
 });
 
 test('one changed bit of one interval is told, also where no figure shows it', async () => {
@@ -86,7 +87,7 @@ test('what the year to date rests on before the month is sealed, too', async () 
   expect(manifest.data.year).toMatchObject({
     from: '2026-01-01T00:00:00Z',
     to: '2026-03-01T00:00:00Z',
-    stations: [{ code: 'MER-01', months: [{ month: '2026-02', hours: 48, periods: 6 }] }],
+    stations: [{ code: 'MER-01', months: [{ month: '2026-02', hours: 48, periods: 7 }] }],
   });
   const february = () =>
     db()('quarter_hours').where({ station_id: quay, starts_at: at('2026-02-28T12:00:00Z') });
@@ -113,6 +114,18 @@ test('a month that was issued before that was told is computed again as ever, an
     true,
     'NOTE     nothing was sealed of the months before, which the year to date rests on.',
   ]);
+});
+
+test('where only a part of the intervals is kept, the sealed sums tell of the whole month', async () => {
+  const keptFromSec = at('2026-03-15T00:00:00Z');
+  const seal = { sealedBeforeSec: at('2026-03-17T00:00:00Z'), keptFromSec };
+  await inTransaction((transaction) => sealStation(quay, seal, new Date(), transaction));
+  forgetKept();
+  await db()('interval_levels').where({ station_id: quay }).where('starts_at', '<', keptFromSec).delete();
+  const { isSame, lines } = await rerun();
+  expect(lines.filter((line) => /^(CHANGED|DIFFERS)/.test(line))).toEqual([]);
+  expect(isSame).toBe(true);
+  expect(lines[1]).toMatch(/^NOTE {5}intervals of MER-01 are not kept any more/);
 });
 
 test('where the intervals are not kept any more, the stored sums tell, and it says so', async () => {
