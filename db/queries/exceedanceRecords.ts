@@ -46,19 +46,6 @@ export async function listExceedancesOverlapping(
     .where('e.ends_at', '>', fromSec);
 }
 
-/** Exceedances of a network whose window begins within `fromSec <= t < toSec`, in order of time. */
-export async function listExceedancesBeginning(
-  networkId: number,
-  fromSec: number,
-  toSec: number,
-  conn: Connection = pool(),
-): Promise<ExceedanceRecord[]> {
-  return selectRecords(conn)
-    .where({ 'e.network_id': networkId })
-    .where('e.starts_at', '>=', fromSec)
-    .where('e.starts_at', '<', toSec);
-}
-
 /** Ids of a network's stations with a standing exceedance whose window ended after an instant (epoch seconds). */
 export async function listStationsOverLimit(
   networkId: number,

@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { placementSpanSchema } from './levels';
 import { limitVersionSchema } from './limits';
 import {
   complianceSchema,
@@ -17,13 +18,27 @@ import {
   documentHourSchema,
   yearToDateSchema,
 } from './monthFigures';
+import { periodInstrumentsSchema } from './periodInstruments';
 import { registry } from './registry';
-import { summarySchema, summaryStationSchema } from './summaries';
+import { conventionSchema, month } from './summaries';
 
 /** Changes when a reader of the file has to. */
 export const MONTH_DOCUMENT_FORM = 'bittern-month-1';
 
-export const documentStationSchema = summaryStationSchema.extend({
+export const documentStationSchema = z.object({
+  code: z.string(),
+  name: z.string(),
+  latitude: z.number(),
+  longitude: z.number(),
+  placement: z.enum(['free-field', 'facade']),
+  mastHeightMetres: z.number().nullable(),
+  bandFraction: z.union([z.literal(1), z.literal(3)]),
+  intervalSeconds: z.number().int(),
+  placements: z.array(placementSpanSchema).describe('How the microphone stood; levels are as measured'),
+  instruments: periodInstrumentsSchema,
+  masts: z
+    .array(z.object({ code: z.string(), name: z.string(), from: z.string(), to: z.string() }))
+    .describe('Weather masts that it went by where its own sensor told no wind'),
   standsFrom: z.string().describe('When the station was registered'),
   standsTo: z.string().nullable().describe('When it was retired'),
   coverageSinceRegistration: z
@@ -81,13 +96,21 @@ export const documentLimitSchema = limitVersionSchema
   .extend({ id: z.number().int() });
 export type DocumentLimit = z.output<typeof documentLimitSchema>;
 
-/**
- * Everything that a month’s files say, made by one computation: pure data. Levels unrounded in dB, times RFC 3339 UTC. It has all that
- * the summary has, and more.
- */
-export const monthDocumentSchema = summarySchema.omit({ status: true }).extend({
+/** Everything that a month’s files and pages say, made by one computation: pure data. Levels unrounded in dB, times RFC 3339 UTC. */
+export const monthDocumentSchema = z.object({
   form: z.literal(MONTH_DOCUMENT_FORM),
+  network: z.object({ slug: z.string(), name: z.string() }),
+  month,
+  timeZone: z.string(),
+  from: z.string().describe('Local midnight that begins the month'),
+  to: z.string().describe('Local midnight that ends the month'),
   nightsTo: z.string().describe('End of the night that begins on the last date'),
+  isToDate: z.boolean().describe('The month, or its last night, is not over'),
+  generatedAt: z.string(),
+  conventions: z.array(conventionSchema).min(1),
+  complaints: z
+    .object({ open: z.number().int(), answered: z.number().int(), closed: z.number().int() })
+    .describe('Complaints about noise that began in the month, by how they stand'),
   limits: z.array(documentLimitSchema).describe('Versions in force at some time of the month'),
   stations: z.array(documentStationSchema),
 });

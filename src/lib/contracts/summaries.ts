@@ -1,8 +1,6 @@
 import { z } from 'zod';
 import { localDate } from './common';
 import { LIMIT_UNITS } from './limitMetrics';
-import { placementSpanSchema } from './levels';
-import { periodInstrumentsSchema } from './periodInstruments';
 import { registerRoute } from './registry';
 
 /** A calendar month, `2026-03`. */
@@ -81,31 +79,6 @@ export const summaryExceedanceSchema = z.object({
 });
 export type SummaryExceedance = z.output<typeof summaryExceedanceSchema>;
 
-export const summaryStationSchema = z.object({
-  code: z.string(),
-  name: z.string(),
-  latitude: z.number(),
-  longitude: z.number(),
-  placement: z.enum(['free-field', 'facade']),
-  mastHeightMetres: z.number().nullable(),
-  bandFraction: z.union([z.literal(1), z.literal(3)]),
-  intervalSeconds: z.number().int(),
-  placements: z.array(placementSpanSchema).describe('How the microphone stood; levels are as measured'),
-  instruments: periodInstrumentsSchema,
-  masts: z
-    .array(z.object({ code: z.string(), name: z.string(), from: z.string(), to: z.string() }))
-    .describe('Weather masts that it went by where its own sensor told no wind'),
-  figures: monthFiguresSchema,
-  bands: z.array(summaryBandSchema),
-  days: z.array(summaryDaySchema),
-  exceedances: z.object({
-    standing: z.number().int(),
-    lifted: z.number().int(),
-    items: z.array(summaryExceedanceSchema),
-  }),
-});
-export type SummaryStation = z.output<typeof summaryStationSchema>;
-
 /** Settings of the network that the figures follow, from an instant on. */
 export const conventionSchema = z.object({
   from: z.string().nullable().describe('Null: since before the month'),
@@ -118,24 +91,6 @@ export const conventionSchema = z.object({
   excludeRain: z.boolean(),
 });
 export type Convention = z.output<typeof conventionSchema>;
-
-/** Everything that a month's summary says. PDF, CSV, JSON and the page are written from this one object. */
-export const summarySchema = z.object({
-  network: z.object({ slug: z.string(), name: z.string() }),
-  month,
-  status: z.literal('draft').describe('Not issued: its figures follow the data'),
-  timeZone: z.string(),
-  from: z.string().describe('Local midnight that begins the month'),
-  to: z.string().describe('Local midnight that ends the month'),
-  isToDate: z.boolean().describe('The month, or its last night, is not over'),
-  generatedAt: z.string(),
-  conventions: z.array(conventionSchema).min(1),
-  complaints: z
-    .object({ open: z.number().int(), answered: z.number().int(), closed: z.number().int() })
-    .describe('Complaints about noise that began in the month, by how they stand'),
-  stations: z.array(summaryStationSchema),
-});
-export type Summary = z.output<typeof summarySchema>;
 
 /** States of a month: `open` and `closed` before anybody drafts it. */
 export const MONTH_STATES = ['open', 'closed', 'draft', 'review', 'issuing', 'issued'] as const;

@@ -111,7 +111,7 @@ registerRoute({
   responses: {
     200: {
       description:
-        'The month. CSV of an issued one is a ZIP with its description; of a draft it is long: one figure a row, the first column says the kind of record. The signature is 64 bytes, Ed25519.',
+        'The month; CSV is a ZIP of a file a topic, with its description. A draft’s JSON tells so by `status`, which an issued one’s does not have. The signature is 64 bytes, Ed25519.',
       headers: {
         'Bittern-Revision': { description: 'Its revision, or draft', schema: { type: 'string' } },
         'Bittern-Superseded': {
@@ -121,7 +121,6 @@ registerRoute({
       },
       content: {
         'application/json': { schema: monthFileSchema },
-        'text/csv': { schema: z.string() },
         'application/zip': { schema: z.string() },
         'application/pdf': { schema: z.string() },
         'application/octet-stream': { schema: z.string() },

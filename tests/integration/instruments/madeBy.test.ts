@@ -3,7 +3,7 @@ import { findNetworkById } from '#db/queries/networks';
 import { findStation, type StationRow } from '#db/queries/stations';
 import { readRatingEntry } from '#lib/services/figures/ratingForm';
 import { figureSheet } from '#lib/services/figures/sheet';
-import { monthlySummary } from '#lib/services/summaries/monthlySummary';
+import { computeMonth } from '#lib/services/summaries/document/computeMonth';
 import { at, storeMinutes } from '../complaints/support';
 import { callApi } from '../support/callApi';
 import { useFreshSchema } from '../support/freshSchema';
@@ -85,8 +85,8 @@ test('so do the sheet of figures and the month', async () => {
   );
   const network = await findNetworkById(networkId);
   if (!network) throw new Error('The network is gone.');
-  const month = await monthlySummary(network, '2026-03', new Date('2026-04-02T00:00:00Z'));
-  expect(month?.stations[0]).toMatchObject({
+  const month = await computeMonth(network, '2026-03', new Date('2026-04-02T00:00:00Z'));
+  expect(month.stations[0]).toMatchObject({
     instruments: [{ serialNumber: 'A-1', from: '2026-03-01T00:00:00Z' }, { serialNumber: 'B-2' }],
     placements: [{ placement: 'free-field', correction: 0 }],
   });

@@ -2,8 +2,7 @@ import { bandRange } from '#lib/acoustics/bands';
 import { MONTH_DOCUMENT_FORM, type DocumentStation, type MonthDocument } from '#lib/contracts/monthDocument';
 import { COMPARED, type DocumentBand } from '#lib/contracts/monthEvidence';
 import { type CoveredSeconds, type DocumentDay, type Uncertainties } from '#lib/contracts/monthFigures';
-import { summarySchema } from '#lib/contracts/summaries';
-import { summaryOf, summaryStation } from './summaryFixture';
+import { monthHead, summaryStation } from './summaryFixture';
 
 /** Levels that no other figure has, so that one that stands in a wrong place shows. */
 class Distinct {
@@ -245,7 +244,7 @@ export function silentStation(code: string): DocumentStation {
 /** Two stations, one of them without data. */
 export function documentOf(stations: DocumentStation[], changes: Partial<MonthDocument> = {}): MonthDocument {
   return {
-    ...summarySchema.omit({ status: true }).parse(summaryOf([])),
+    ...monthHead(),
     form: MONTH_DOCUMENT_FORM,
     nightsTo: '2026-04-01T06:00:00Z',
     limits: [

@@ -1,11 +1,44 @@
 import { bandRange } from '#lib/acoustics/bands';
-import type { Summary, SummaryDay, SummaryStation } from '#lib/contracts/summaries';
+import { type DocumentStation, type MonthDocument } from '#lib/contracts/monthDocument';
+import {
+  type MonthLevels,
+  type SummaryBand,
+  type SummaryDay,
+  type SummaryExceedance,
+} from '#lib/contracts/summaries';
 
 const full = { coverage: 1, meetsMinimum: true };
 const periods = { day: full, evening: full, night: full, whole: full };
 
+/** What the fixtures of documents build on. */
+type Station = Omit<
+  DocumentStation,
+  | 'figures'
+  | 'bands'
+  | 'days'
+  | 'exceedances'
+  | 'standsFrom'
+  | 'standsTo'
+  | 'coverageSinceRegistration'
+  | 'yearToDate'
+  | 'hours'
+  | 'octaves'
+  | 'spectrogram'
+  | 'tonality'
+  | 'lowFrequency'
+  | 'exclusions'
+  | 'compliance'
+  | 'calibrations'
+  | 'wind'
+> & {
+  figures: MonthLevels;
+  bands: SummaryBand[];
+  days: SummaryDay[];
+  exceedances: { standing: number; lifted: number; items: SummaryExceedance[] };
+};
+
 /** Figures that tell each other apart: every level is another number with four decimals and more. */
-export function summaryStation(code: string, offsetDb = 0): SummaryStation {
+export function summaryStation(code: string, offsetDb = 0): Station {
   const level = (db: number) => db + offsetDb + 0.0123456;
   const days = Array.from({ length: 31 }, (_, at): SummaryDay => {
     const short = at === 4 ? { coverage: 0.4123, meetsMinimum: false } : full;
@@ -94,11 +127,11 @@ export function summaryStation(code: string, offsetDb = 0): SummaryStation {
   };
 }
 
-export function summaryOf(stations: SummaryStation[], changes: Partial<Summary> = {}): Summary {
+/** A month without its limits and stations. */
+export function monthHead(): Omit<MonthDocument, 'form' | 'nightsTo' | 'limits' | 'stations'> {
   return {
     network: { slug: 'merrow', name: 'Merrow estuary' },
     month: '2026-03',
-    status: 'draft',
     timeZone: 'Europe/London',
     from: '2026-03-01T00:00:00Z',
     to: '2026-03-31T23:00:00Z',
@@ -117,7 +150,5 @@ export function summaryOf(stations: SummaryStation[], changes: Partial<Summary> 
       },
     ],
     complaints: { open: 1, answered: 3, closed: 0 },
-    stations,
-    ...changes,
   };
 }

@@ -1,12 +1,10 @@
-import type { Convention, Summary } from '#lib/contracts/summaries';
+import type { MonthDocument } from '#lib/contracts/monthDocument';
+import type { Convention } from '#lib/contracts/summaries';
 import { formatCoverage } from '#lib/format/levels';
 import { clockChangeWords } from '#lib/format/periods';
 import { formatClock, formatDate } from '#lib/format/times';
 import { zoneAbbreviationAt } from '#lib/time/clockChange';
 import { BELOW_MINIMUM } from './figures';
-
-/** A month’s summary, issued or not. */
-type ShownSummary = Omit<Summary, 'status'>;
 
 /** An instant in a zone, with the zone's abbreviation: `Tue 17 March 2026, 03:40 GMT`. */
 export function instantText(instant: string, zone: string): string {
@@ -16,7 +14,7 @@ export function instantText(instant: string, zone: string): string {
 }
 
 /** How a month's figures are made: every convention by which another reader could get others. */
-export function methodStatement(summary: ShownSummary): string[] {
+export function methodStatement(summary: MonthDocument): string[] {
   return [
     ...summary.conventions.flatMap((convention) => conventionSentences(convention, summary)),
     'A night belongs to the date on which it begins. Lday, Levening, Lnight and Lden of the month pool the periods that begin in ' +
@@ -40,7 +38,7 @@ export function methodStatement(summary: ShownSummary): string[] {
   ];
 }
 
-function clockChangeSentences({ from, to, timeZone }: ShownSummary): string[] {
+function clockChangeSentences({ from, to, timeZone }: MonthDocument): string[] {
   const change = clockChangeWords(
     { fromSec: Date.parse(from) / 1000, toSec: Date.parse(to) / 1000 },
     timeZone,
@@ -50,7 +48,7 @@ function clockChangeSentences({ from, to, timeZone }: ShownSummary): string[] {
     : [`${change}, and so has the night in which it falls more or less than its nominal hours.`];
 }
 
-function conventionSentences(convention: Convention, { timeZone }: ShownSummary): string[] {
+function conventionSentences(convention: Convention, { timeZone }: MonthDocument): string[] {
   const { from, day, evening, night, minimumCoverage, maximumWindSpeed, excludeRain } = convention;
   const since = from === null ? '' : `From ${instantText(from, timeZone)} on: `;
   const periods =
@@ -71,7 +69,7 @@ export const CAUTIONS = [
 ] as const;
 
 /** How many complaints the month had; nothing else about them is told. */
-export function complaintsSentence({ complaints: { open, answered, closed } }: ShownSummary): string {
+export function complaintsSentence({ complaints: { open, answered, closed } }: MonthDocument): string {
   const total = open + answered + closed;
   if (total === 0) return 'No complaint about noise in this month is on record.';
   return `Complaints about noise that began in this month: ${total}, of which ${answered} answered, ${open} open, ${closed} closed without a reply.`;

@@ -8,8 +8,8 @@ import { hasData } from '#db/queries/summaries';
 import { formatInstantUtc } from '#lib/contracts/common';
 import { MONTH_DOCUMENT_FORM, type DocumentStation, type MonthDocument } from '#lib/contracts/monthDocument';
 import { type Span } from '../../levels/spans';
-import { conventionsOf } from '../monthlySummary';
 import { monthSpan, stoodWithin } from '../monthSpan';
+import { conventionsOf } from './conventions';
 import { limitsInForce } from './compliance';
 import { stationDocument, type SharedEvidence } from './stationDocument';
 

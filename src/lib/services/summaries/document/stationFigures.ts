@@ -8,8 +8,8 @@ import { type PeriodInstruments } from '../../figures/instruments';
 import { datePeriods, settingsOfDate } from '../../levels/datePeriods';
 import { type MonthFigures } from '../../levels/month';
 import { type Span } from '../../levels/spans';
-import { dayOf, levelsOf } from '../stationSummary';
 import { type MonthEvidence } from './evidence';
+import { dayOf, levelsOf } from './monthLevels';
 import { gapsOf, uncertaintiesOf, type CoveredLevel, type UncertaintyGround } from './uncertainties';
 
 /** What a station’s month is told with beside its levels. */

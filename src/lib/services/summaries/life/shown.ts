@@ -1,5 +1,5 @@
 import { type IssuedRevision, type MonthLife } from '#lib/contracts/summaryLife';
-import { type Summary } from '#lib/contracts/summaries';
+import { type MonthDocument } from '#lib/contracts/monthDocument';
 import { issuedSummary } from '../seal/files';
 import { SealBroken, sealedMonth } from './differences';
 import { monthLife } from './view';
@@ -10,7 +10,7 @@ export interface ShownMonth {
   /** The revision that is shown; null: the draft as of now. */
   revision: IssuedRevision | null;
   /** Its sealed figures; null: to be computed, or damaged. */
-  summary: Omit<Summary, 'status'> | null;
+  summary: MonthDocument | null;
   /** Why an issued revision cannot be shown: what is stored of it does not fit its seal. */
   damage: string | null;
 }

@@ -6,7 +6,7 @@ import { computeMonth } from '../document/computeMonth';
 import { renderFile } from '../document/render';
 import { changedFigures } from '../life/changedFigures';
 import { differencesSinceIssue } from '../life/differences';
-import { keepDocument, readDocument, readFreshDocument } from '../life/document';
+import { keepDocument, readDocument } from '../life/document';
 import { keptFigures, measureMonth, type MeasuredMonth } from '../life/measure';
 import { manifestGrounds } from '../seal/manifest';
 import {
@@ -71,7 +71,7 @@ function compare({ network, month, now }: MonthWork['compare']['task']): Promise
 }
 
 async function keep({ documentSha256, context, format }: MonthWork['keep']['task']): Promise<KeptFile> {
-  const doc = await readFreshDocument(Buffer.from(documentSha256, 'hex'));
+  const doc = await readDocument(Buffer.from(documentSha256, 'hex'));
   if (!doc) throw new Error(`There are no figures for the ${format}.`);
   const { name, mediaType, bytes } = await renderFile(doc, context, format);
   const sha256 = (await keepFile('summaries', bytes)).toString('hex');
