@@ -38,13 +38,13 @@ await withOwnSchema(async () => {
     await db()('stations').update({ created_at: new Date((FIRST_SEC - 86_400) * 1000) });
     rows.push(await row(slug, user.id, size));
   }
-  printTable(['stations', 'drafted s', 'issued s', 'highest MiB'], rows);
+  printTable(['stations', 'drafted s', 'highest MiB', 'issued s', 'highest MiB'], rows);
 });
 
 async function row(slug: string, userId: string, size: number): Promise<string[]> {
   const made = await makeMonth(slug, userId);
   if (made.stations !== size) throw new Error(`${made.stations} stations in the month of ${size}.`);
-  const figures = [made.draftedMs / 1000, made.issuedMs / 1000, made.highestMib];
+  const figures = [made.draftedMs / 1000, made.draftedMib, made.issuedMs / 1000, made.issuedMib];
   return [String(size), ...figures.map(digits)];
 }
 

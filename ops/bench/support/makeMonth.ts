@@ -9,8 +9,9 @@ import { residentMib } from './memory';
 export interface MadeMonth {
   draftedMs: number;
   issuedMs: number;
-  /** Of the whole process. */
-  highestMib: number;
+  /** Highest memory of the whole process until it is drafted, and until it is issued. */
+  draftedMib: number;
+  issuedMib: number;
   stations: number;
 }
 
@@ -23,6 +24,7 @@ await insertDraft(key, null);
 const draftedMs = await msOf(async () => {
   await makeWaitingMonth(new Date());
 });
+const draftedMib = residentMib(process.pid).highest;
 await updateDraft(key, { state: 'issuing', requested: { by: userId, at: new Date(), note: '' } });
 const issuedMs = await msOf(async () => {
   await makeWaitingMonth(new Date());
@@ -33,7 +35,8 @@ await closeDb();
 const told: MadeMonth = {
   draftedMs,
   issuedMs,
-  highestMib: residentMib(process.pid).highest,
+  draftedMib,
+  issuedMib: residentMib(process.pid).highest,
   stations: made.figures?.length ?? 0,
 };
 console.log(JSON.stringify(told));
