@@ -124,7 +124,7 @@ function limitsTable(ground: PdfGround): void {
     doc.limits.map((limit) => [
       limit.name,
       String(limit.version),
-      limit.descriptor,
+      words.limitText(limit.descriptor),
       format.value(limit.threshold, limit.unit),
       inForceText(ground, limit),
     ]),

@@ -47,7 +47,7 @@ export function exceedances(
       .map((item) => [
         format.shortInstant(item.from),
         item.limit,
-        item.metric,
+        words.limitText(item.metric),
         { text: format.value(item.level, item.unit), ...(item.state === 'standing' ? { colour: RUST } : {}) },
         format.value(item.threshold, item.unit),
         format.coverage(item.coverage),

@@ -1,5 +1,6 @@
 import { type Convention } from '#lib/contracts/summaries';
 import { type MethodFormat, type MonthWords } from './words';
+import { germanLimitText } from './limitsDe';
 
 const METHOD_OF_TONE = {
   survey: 'Übersichtsverfahren, ISO 1996-2:2017 Anhang K',
@@ -122,6 +123,7 @@ export const GERMAN: MonthWords = {
     leftOut: 'Nichts Gemessenes blieb außer Betracht.',
   },
   more: (count) => `und ${count} weitere, verzeichnet in den Dateien mit Daten.`,
+  limitText: germanLimitText,
   compliance: {
     exceeded: 'überschritten',
     'not-exceeded': 'nicht überschritten',
@@ -236,8 +238,8 @@ export const GERMAN: MonthWords = {
       'Anteil an der Energie und nimmt deren Lücken als unabhängig. Die des Jahres bis hierher entsteht ebenso, aus allen seinen Stunden, Prüfungen und Geräten.',
     'Töne werden im mittleren Spektrum des Monats und jeder Viertelstunde gesucht, nach dem Übersichtsverfahren der ISO 1996-2:2017 Anhang K. Ein ' +
       'Mittel über einen Monat verbirgt Töne, die kommen und gehen.',
-    'Pegel sind hier einmal kaufmännisch auf 0,1 dB gerundet; die Dateien mit Daten enthalten sie ungerundet. Grenzwerte und Verglichenes tragen ' +
-      'die Namen, unter denen sie eingetragen sind.',
+    'Pegel sind hier einmal kaufmännisch auf 0,1 dB gerundet; die Dateien mit Daten enthalten sie ungerundet. Grenzwerte tragen die ' +
+      'Namen, unter denen sie eingetragen sind.',
   ],
   cautions: [
     'Pegel beschreiben die Orte der Messstellen, wie sie aufgestellt sind, nicht die Belastung einer Person oder den Pegel an einer Wohnung.',

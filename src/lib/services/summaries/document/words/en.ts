@@ -123,6 +123,7 @@ export const ENGLISH: MonthWords = {
     leftOut: 'Nothing that was measured was left out.',
   },
   more: (count) => `and ${count} more, listed in the files with data.`,
+  limitText: (text) => text,
   compliance: {
     exceeded: 'exceeded',
     'not-exceeded': 'not exceeded',

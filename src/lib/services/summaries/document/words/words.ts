@@ -84,6 +84,8 @@ export interface MonthWords {
   none: Record<'limits' | 'exceedances' | 'exclusions' | 'calibrations' | 'weather' | 'leftOut', string>;
   more: (count: number) => string;
   compliance: Record<Compliance['state'], string>;
+  /** What a limit compares, as the document names it. */
+  limitText: (text: string) => string;
   lifted: (count: number) => string;
   exceedanceStates: Record<'standing' | 'lifted', string>;
   causes: Record<Cause, string>;
