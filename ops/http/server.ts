@@ -36,6 +36,12 @@ server.on('error', (error: NodeJS.ErrnoException) => {
   process.exit(1);
 });
 server.listen(port, host, () => log().info({ host, port }, 'web listens'));
+const { protocol, hostname } = new URL(config().origin);
+if (protocol === 'http:' && !/^(localhost|127\.[\d.]+|\[::1\])$/.test(hostname)) {
+  log().warn(
+    'people reach Bittern without https, so passwords and cookies can be read on the way (BITTERN_ORIGIN)',
+  );
+}
 
 let isDraining = false;
 
