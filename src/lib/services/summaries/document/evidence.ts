@@ -3,7 +3,6 @@ import { type NetworkSettings } from '#db/queries/networks';
 import { type QuarterHour } from '#db/queries/quarterHours';
 import { type StationRow } from '#db/queries/stations';
 import { quarterAt, QUARTER_SEC } from '#lib/time/quarters';
-import { type SheetSource } from '../../figures/source';
 import { currentQuarters } from '../../levels/currentQuarters';
 import { settingsOfDate } from '../../levels/datePeriods';
 import { type LevelSource } from '../../levels/intervalSums';
@@ -52,18 +51,4 @@ export function seriesOf(
 ): QuarterSeries {
   const rows = quarters.map((row) => ({ ...row, sums: { ...row.sums, bandFraction: null } }));
   return QuarterSeries.of(source, rows, conn);
-}
-
-/** The calendar month as the figures of a period take it. */
-export function sheetSourceOf({
-  station,
-  span,
-  timeline,
-  nowSec,
-  series,
-  minimumCoverage,
-  conn,
-}: MonthEvidence): SheetSource {
-  const period = { fromSec: span.fromSec, toSec: span.toSec };
-  return { station, period, timeline, timeZone: span.timeZone, minimumCoverage, nowSec, series, conn };
 }

@@ -15,7 +15,7 @@ import { incidentOf, placementsIn } from '../../levels/incident';
 import { monthFigures } from '../../levels/month';
 import { mastsOf } from '../../weather/mastsOf';
 import { complianceOf, type LimitInForce } from './compliance';
-import { readEvidence, sheetSourceOf, type MonthEvidence, type StationMonth } from './evidence';
+import { readEvidence, type MonthEvidence, type StationMonth } from './evidence';
 import { documentExceedance } from './exceedances';
 import { exclusionEffect } from './exclusionEffect';
 import { documentHours, monthHours } from './hours';
@@ -47,8 +47,8 @@ export async function stationDocument(month: StationMonth, shared: SharedEvidenc
     conn,
   );
   const hours = await monthHours(evidence);
-  const instruments = await instrumentsOf(sheetSourceOf(evidence));
   const civil = { fromSec: span.fromSec, toSec: span.toSec };
+  const instruments = await instrumentsOf({ station, period: civil, timeZone: span.timeZone, conn });
   const incident = await incidentOf({ station, ...civil, timeline, nowSec }, found.statistics.LAeq, conn);
   const ground = { hours, instruments, incidentDb: incident.LAeq };
   const figures = documentFigures(evidence, found, ground);
