@@ -373,6 +373,27 @@ describe('PDF', () => {
     for (const { code } of doc.stations) expect(raw).toContain(`/Title (${code} `);
   });
 
+  test('has contents with the page on which each part begins, also where pages are not held', async () => {
+    const many = Array.from({ length: 47 }, (_, at) => documentStation(`MER-${at + 10}`, at));
+    const template = { ...context.template, sections: [], metrics: ['Lden' as const] };
+    const pdf = await renderFile(documentOf(many), { ...context, template }, 'pdf');
+    writeFileSync(join(directory, 'many.pdf'), pdf.bytes);
+    for (const [shown, stations] of [
+      [pages, doc.stations],
+      [pagesOf(join(directory, 'many.pdf')), many],
+    ] as const) {
+      const contents = shown.filter((page) => /\d\n/.test(page)).join('\n');
+      for (const { code, name } of stations) {
+        const begins = shown.findIndex((page) => page.trimStart().startsWith(`${code} ${name}\n`));
+        expect(contents, code).toMatch(new RegExp(`^\\s*${code} ${name}\\s+${begins + 1}$`, 'm'));
+      }
+      const method = shown.findIndex((page) => page.trimStart().startsWith('How these figures are made\n'));
+      expect(contents).toMatch(new RegExp(`^\\s*How these figures are made\\s+${method + 1}$`, 'm'));
+    }
+    const raw = execFileSync('pdfinfo', ['-struct', path], { encoding: 'utf8', maxBuffer: 64e6 });
+    expect(raw.match(/^\s*TOCI\b/gm)).toHaveLength(doc.stations.length + 1);
+  });
+
   test('a month in progress says so, and that it is a draft, on every page', async () => {
     const running = { ...documentOf([documentStation('MER-01')]), isToDate: true };
     const pdf = await renderFile(running, { ...context, revision: null, issuedBy: null }, 'pdf');

@@ -28,6 +28,14 @@ export interface PdfMeta {
   foot: string;
   /** Null: pages are numbered without telling how many there are, so that each can leave memory when it is full. */
   pageOf: ((page: number, pages: number) => string) | null;
+  /** Only to learn on which pages parts begin: nothing of the document is kept. */
+  isTrial: boolean;
+}
+
+/** A part of the document and the page that it begins on. */
+export interface PageEntry {
+  title: string;
+  page: number;
 }
 
 type Structure = PDFKit.PDFStructureElement;
@@ -45,9 +53,11 @@ export class Pages {
   readonly #chunks: Buffer[] = [];
   readonly #ended: Promise<unknown>;
   readonly #root: Structure;
+  readonly #entries: PageEntry[] = [];
   readonly #widths = new Map<string, number>();
   #page = 1;
   #section: Structure;
+  #open: Structure | null = null;
   #outline: Outline | null = null;
 
   constructor(meta: PdfMeta) {
@@ -63,7 +73,9 @@ export class Pages {
       font: FONT_FILES.regular,
       info: { Title: meta.title, Author: meta.author, Creator: 'Bittern', CreationDate: meta.createdAt },
     });
-    this.doc.on('data', (chunk: Buffer) => this.#chunks.push(chunk));
+    this.doc.on('data', (chunk: Buffer) => {
+      if (!meta.isTrial) this.#chunks.push(chunk);
+    });
     this.#ended = once(this.doc, 'end');
     this.#root = this.doc.struct('Document');
     this.doc.addStructure(this.#root);
@@ -84,10 +96,36 @@ export class Pages {
   /** Begins a part of the document, on a new page where something stands on this one. */
   section(title: string, { newPage = true } = {}): void {
     if (newPage && this.y > TOP) this.newPage();
-    this.#section.end();
+    if (this.#section !== this.#open) this.#section.end();
     this.#section = this.doc.struct('Sect', { title });
     this.#root.add(this.#section);
     this.#outline = this.doc.outline.addItem(title);
+    this.#entries.push({ title, page: this.#page });
+  }
+
+  /** The present part may be added to until the document ends. */
+  leaveOpen(): void {
+    this.#open = this.#section;
+  }
+
+  /** Where each part so far begins. */
+  get entries(): readonly PageEntry[] {
+    return this.#entries;
+  }
+
+  /** The page that is being filled. */
+  get page(): number {
+    return this.#page;
+  }
+
+  /** Draws on a page that was filled before, where pages are held, and comes back. */
+  onPage(page: number, draw: () => void): void {
+    const y = this.y;
+    this.doc.switchToPage(page - 1);
+    this.y = TOP;
+    draw();
+    this.doc.switchToPage(this.#page - 1);
+    this.y = y;
   }
 
   newPage(): void {
@@ -116,6 +154,12 @@ export class Pages {
     if (level === 3) (this.#outline ?? this.doc.outline).addItem(text);
     this.#text(`H${level}`, text, { font: 'bold', size });
     this.y += level === 3 ? 3 : 5;
+  }
+
+  /** A heading of the part that was left open, which has a bookmark already. */
+  title(text: string): void {
+    this.#text('H2', text, { font: 'bold', size: 15 }, this.#open);
+    this.y += 5;
   }
 
   /** A paragraph over the width of the page. */
@@ -199,11 +243,16 @@ export class Pages {
     }, 'Pagination');
   }
 
-  #text(type: string, text: string, { font = 'regular', size = BODY, colour = INK }: TextStyle): void {
+  #text(
+    type: string,
+    text: string,
+    { font = 'regular', size = BODY, colour = INK }: TextStyle,
+    parent: Structure | null = null,
+  ): void {
     const lines = linesOf(text, font, size, WIDTH, this.measure);
     const height = size * LINE;
     // A paragraph that does not fit goes on over the page, line by line.
-    const element = this.open(type);
+    const element = this.open(type, parent);
     for (const line of lines) {
       this.ensure(height);
       element.add(() => this.fragments(line, LEFT, this.y, colour));

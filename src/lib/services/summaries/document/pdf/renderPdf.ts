@@ -7,37 +7,55 @@ import { wordsOf, type MethodFormat, type MonthWords } from '../words/words';
 import { SMALL, SOFT_INK } from './fonts';
 import { shows, type PdfGround } from './ground';
 import { overview, paragraphsOf, signatures } from './overview';
-import { Pages } from './pages';
+import { Contents } from './contents';
+import { Pages, type PageEntry } from './pages';
 import { stationPages } from './stationPages';
 import { table } from './table';
 
 /** Pages of more stations are not held until all are made: a hundred stations would take more than 500 MB. */
 const MOST_BUFFERED = 40;
 
-/** The month as an A4 document to read, print and sign: tagged, with bookmarks, and with what it is on every page. */
+/** The month as an A4 document to read, print and sign: tagged, with contents and bookmarks, and with what it is on every page. */
 export async function renderPdf(doc: MonthDocument, context: RenderContext): Promise<Buffer> {
+  if (doc.stations.length <= MOST_BUFFERED) return (await written(doc, context, null)).bytes;
+  // Pages that are not held cannot be come back to: a try tells where parts begin.
+  const { entries } = await written(doc, context, null);
+  return (await written(doc, context, entries)).bytes;
+}
+
+/** Writes the document once; `known` tells where its parts begin. */
+async function written(
+  doc: MonthDocument,
+  context: RenderContext,
+  known: readonly PageEntry[] | null,
+): Promise<{ bytes: Buffer; entries: PageEntry[] }> {
   const words = wordsOf(context.template.language);
   const format = new DocumentFormat(words, doc.timeZone);
   const name = context.template.networkName ?? doc.network.name;
   const title = `${name}, ${words.title(doc.month)}`;
   const state = context.revision === null ? words.draft : words.revision(context.revision);
+  const isHeld = doc.stations.length <= MOST_BUFFERED;
   const pages = new Pages({
     title,
     author: context.issuedBy?.name ?? name,
     language: words.tag,
     createdAt: new Date(doc.generatedAt),
     foot: `${title}${doc.isToDate ? `, ${words.toDate}` : ''} · ${state}`,
-    pageOf: doc.stations.length > MOST_BUFFERED ? null : words.page,
+    pageOf: isHeld ? words.page : null,
+    isTrial: !isHeld && known === null,
   });
   const ground: PdfGround = { pages, words, format, doc, context };
   overview(ground);
+  const contents = new Contents(pages, words.contents, doc.stations.length + 1, known);
+  const first = pages.entries.length;
   for (const station of doc.stations) {
     stationPages(ground, station);
     // Whoever else waits in this process gets a turn between stations.
     await new Promise((resolve) => setImmediate(resolve));
   }
   closing(ground);
-  return pages.finish();
+  if (isHeld) contents.fill();
+  return { bytes: await pages.finish(), entries: pages.entries.slice(first) };
 }
 
 /** The method statement’s sentences in a language. */
