@@ -10,17 +10,14 @@ let opening: Promise<Connection> | undefined;
  */
 export async function askLocks(sql: string, values: readonly string[]): Promise<unknown> {
   opening ??= open();
-  const connection = await opening.catch((error: unknown) => {
-    opening = undefined;
-    throw error;
-  });
+  const mine = opening;
   try {
+    const connection = await mine;
     const [rows] = await connection.query<RowDataPacket[]>({ sql, rowsAsArray: true, values: [...values] });
     return (rows[0] as unknown[] | undefined)?.[0];
   } catch (error) {
-    // Lost while it was asked, which it tells nobody else: the next question opens another.
-    opening = undefined;
-    connection.destroy();
+    // Lost, perhaps while it was asked, which it tells nobody else: the next question opens another.
+    forget(mine);
     throw error;
   }
 }
@@ -32,13 +29,23 @@ export async function closeLocks(): Promise<void> {
   await closing?.then((connection) => connection.end()).catch(() => undefined);
 }
 
-async function open(): Promise<Connection> {
-  const made = await mysql.createConnection(connectionSettings().connection as ConnectionOptions);
-  const forget = () => {
-    opening = undefined;
-  };
-  // Lost with the server: the next question opens another.
-  made.on('error', forget);
-  made.on('end', forget);
+function open(): Promise<Connection> {
+  const made = mysql.createConnection(connectionSettings().connection as ConnectionOptions);
+  made.then(
+    (connection) => {
+      connection.on('error', () => forget(made));
+      connection.on('end', () => forget(made));
+    },
+    () => undefined,
+  );
   return made;
+}
+
+/**
+ * Another one may be open by the time that this one is found lost, and holds locks: it stays. Ended rather than destroyed, which would leave
+ * whoever still asks it without an answer for good.
+ */
+function forget(lost: Promise<Connection>): void {
+  if (opening === lost) opening = undefined;
+  lost.then((connection) => connection.end()).catch(() => undefined);
 }
