@@ -67,7 +67,12 @@ async function startDatabase(settings: Config): Promise<Record<string, string>> 
   }
   await ensureDatabase(settings);
   await migrateUp();
-  const account = await own?.makeAppAccount();
+  const account = await own?.makeAppAccount().catch((error: Error) => {
+    console.error(
+      `Web and worker go on with the owner's account of the database, which may change the audit trail: ${error.message}`,
+    );
+    return null;
+  });
   if (!account) return {};
   return {
     BITTERN_DB_USER: account.user,
