@@ -6,10 +6,10 @@ import { afterAll, beforeAll, expect, test, vi } from 'vitest';
 import { db } from '#db/client';
 import { inTransaction } from '#db/queries/connection';
 import { sealStation } from '#db/queries/retention';
-import { forgetKept } from '#lib/services/retention/kept';
 import { listIssued, type IssuedSummaryRow } from '#db/queries/issuedSummaries';
 import { aggregateAll } from '#ingest/aggregate/aggregate';
 import { rerunMonth } from '#lib/services/summaries/life/rerun';
+import { forgetKept } from '#lib/services/retention/kept';
 import { signingKey, signWith } from '#lib/services/summaries/seal/keys';
 import { rerunWords } from '#ops/summaries/rerunWords';
 import { at, storeMinutes } from '../complaints/support';
@@ -129,6 +129,17 @@ test('where only a part of the intervals is kept, the sealed sums tell of the wh
 });
 
 test('where the intervals are not kept any more, the stored sums tell, and it says so', async () => {
+  const keptFromSec = at('2026-04-29T00:00:00Z');
+  await db()('sealed_stations')
+    .insert({
+      station_id: quay,
+      sealed_before: keptFromSec + 2 * 86_400,
+      kept_from: keptFromSec,
+      sealed_at: new Date(),
+    })
+    .onConflict(['station_id'])
+    .merge();
+  forgetKept();
   await db()('interval_levels').where({ station_id: quay }).delete();
   const { isSame, lines } = await rerun();
   expect(isSame).toBe(true);
