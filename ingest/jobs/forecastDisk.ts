@@ -1,4 +1,4 @@
-import { statfs } from 'node:fs/promises';
+import { mkdir, statfs } from 'node:fs/promises';
 import { inTransaction } from '#db/queries/connection';
 import {
   databaseBytes,
@@ -22,6 +22,8 @@ const GIB = 2 ** 30;
 
 /** Notes how full the disk is, and writes to operators, at most once a week, when it will be full within the setting's days. */
 export async function forecastDisk(now: Date): Promise<string> {
+  // Nothing may have been kept in it yet.
+  await mkdir(config().dataDir, { recursive: true });
   const { bavail, bsize, blocks } = await statfs(config().dataDir);
   await insertDiskSample({
     takenAt: now,
