@@ -16,11 +16,11 @@ interface Job<Task, Result> extends JobListener {
   reject: (reason: Error) => void;
 }
 
-export interface JobThreadOptions {
+export interface JobThreadOptions<Task> {
   /** Each job has a thread of its own, so that what it took of memory is given back when it is done. */
   isFresh?: boolean;
-  /** Most memory that its objects may take, MiB. */
-  heapMib?: number;
+  /** Most memory that the objects of a job may take, MiB; told when its thread begins. */
+  heapMib?: (task: Task) => number;
   /** Of it for young objects; without it as much as the process was told to give them. */
   youngMib?: number;
 }
@@ -29,7 +29,7 @@ export interface JobThreadOptions {
 export class JobThread<Task, Result> {
   readonly #waiting: Job<Task, Result>[] = [];
   readonly #module: string;
-  readonly #options: JobThreadOptions;
+  readonly #options: JobThreadOptions<Task>;
   #running: Job<Task, Result> | null = null;
   #worker: Worker | null = null;
   #isEnding = false;
@@ -37,7 +37,7 @@ export class JobThread<Task, Result> {
   #lastId = 0;
 
   /** `file`: of the module that serves the jobs (`serveJobs`), from the root. */
-  constructor(file: string, options: JobThreadOptions = {}) {
+  constructor(file: string, options: JobThreadOptions<Task> = {}) {
     this.#options = options;
     this.#module = new URL(`file://${path.resolve(file)}`).href;
   }
@@ -71,15 +71,16 @@ export class JobThread<Task, Result> {
   }
 
   #tell(message: ToThread<Task>): void {
-    this.#worker ??= this.#start();
+    if (message.kind === 'job') this.#worker ??= this.#start(message.task);
+    if (!this.#worker) return;
     this.#worker.ref();
     this.#worker.postMessage(message);
   }
 
-  #start(): Worker {
+  #start(task: Task): Worker {
     const { heapMib, youngMib } = this.#options;
     const resourceLimits = {
-      ...(heapMib === undefined ? {} : { maxOldGenerationSizeMb: heapMib }),
+      ...(heapMib === undefined ? {} : { maxOldGenerationSizeMb: heapMib(task) }),
       ...(youngMib === undefined ? {} : { maxYoungGenerationSizeMb: youngMib }),
     };
     const started = new Worker(START_FILE, { workerData: { module: this.#module }, resourceLimits });
