@@ -74,7 +74,7 @@ async function disturbedRun(on: Instance): Promise<Answers> {
   const killing = new AbortController();
   const kills = killAtRandom(
     on,
-    { seed: options.seed, longestGapSec: options.killsWithin },
+    { seed: options.seed, longestGapSec: options.killsWithin, forMinutes: options.minutes },
     AbortSignal.any([killing.signal, stop.signal]),
   );
   const answers = new Answers();
