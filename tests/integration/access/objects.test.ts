@@ -89,7 +89,9 @@ function bodiesOf({ pattern, body }: Described): unknown[] {
 }
 
 function headersOf({ bodyType, pattern }: Described): Record<string, string> {
-  const part = pattern.endsWith('/uploads/[id]/content') ? { 'content-range': 'bytes 0-0/1' } : {};
+  const part: Record<string, string> = pattern.endsWith('/uploads/[id]/content')
+    ? { 'content-range': 'bytes 0-0/1' }
+    : {};
   return bodyType ? { 'content-type': bodyType, ...part } : {};
 }
 
