@@ -236,10 +236,8 @@ export const GERMAN: MonthWords = {
     'Die Unsicherheit eines Pegels vereint die Klasse des Geräts, die Abweichung bei Kalibrierprüfungen und den Anteil der Lücken, ' +
       '4,34·s/m·((1 − c)/n)^0,5 über die n stündlichen Energien (Mittel m, Streuung s, Abdeckung c), was zufällige Lücken annimmt. Die von Lden wägt Tag, Abend und Nacht nach ihrem ' +
       'Anteil an der Energie und nimmt deren Lücken als unabhängig. Die des Jahres bis hierher entsteht ebenso, aus allen seinen Stunden, Prüfungen und Geräten.',
-    'Töne werden im mittleren Spektrum des Monats und jeder Viertelstunde gesucht, nach dem Übersichtsverfahren der ISO 1996-2:2017 Anhang K. Ein ' +
-      'Mittel über einen Monat verbirgt Töne, die kommen und gehen.',
-    'Pegel sind hier einmal kaufmännisch auf 0,1 dB gerundet; die Dateien mit Daten enthalten sie ungerundet. Grenzwerte tragen die ' +
-      'Namen, unter denen sie eingetragen sind.',
+    'Töne werden im mittleren Spektrum des Monats und jeder Viertelstunde gesucht, nach dem Übersichtsverfahren der ISO 1996-2:2017 Anhang K. Ein Mittel über einen Monat verbirgt Töne, die kommen und gehen.',
+    'Pegel sind hier einmal kaufmännisch auf 0,1 dB gerundet; die Dateien mit Daten enthalten sie ungerundet. Grenzwerte tragen die Namen, unter denen sie eingetragen sind.',
   ],
   cautions: [
     'Pegel beschreiben die Orte der Messstellen, wie sie aufgestellt sind, nicht die Belastung einer Person oder den Pegel an einer Wohnung.',
