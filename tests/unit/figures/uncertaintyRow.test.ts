@@ -14,6 +14,7 @@ const FIGURES: PeriodFigures = {
   meetsMinimum: true,
   minimumCoverage: 0.75,
   levels,
+  keptNote: null,
 };
 const rowWith = (drift: PeriodDrift) =>
   uncertaintyRow(FIGURES, [], {
