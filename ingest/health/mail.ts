@@ -24,7 +24,10 @@ export async function putNotes(
     const messageId = messageIdOf(`${kind}:${networkId}:${key}:${recipient}`);
     const mail = { messageId, dedupeKey: `${kind}:${messageId}`, networkId, kind, recipient };
     const subject = note.subject.replace(/\s+/g, ' ').trim();
-    const id = await insertMail({ ...mail, subject, text: noteText(note), html: noteHtml(note) }, transaction);
+    const id = await insertMail(
+      { ...mail, subject, text: noteText(note), html: noteHtml(note) },
+      transaction,
+    );
     if (id !== null) added += 1;
   }
   return added;
