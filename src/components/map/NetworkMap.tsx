@@ -1,5 +1,5 @@
 import { QueryClient, QueryClientProvider } from '@tanstack/react-query';
-import { lazy, Suspense, useMemo, useState } from 'react';
+import { lazy, Suspense, useDeferredValue, useMemo, useState } from 'react';
 import type { Station } from '#lib/contracts/stations';
 import { type Theme } from '#lib/format/levelRamp';
 import { useNow } from '../strip/hooks/useNow';
@@ -12,7 +12,7 @@ import { useStations } from './hooks/useStations';
 import { dayOf, QUARTER_SEC } from './model/day';
 import { layerMarks } from './model/layerMarks';
 import { type MapLayer } from './model/layers';
-import { stationsAsOf, stationsInUse, withExceedances } from './model/shownStation';
+import { stationsAsOf, stationsInUse, withExceedances, type ShownStation } from './model/shownStation';
 import { LayerLists } from './parts/LayerLists';
 import { LayerSwitches } from './parts/LayerSwitches';
 import { MapLegend } from './parts/MapLegend';
@@ -24,6 +24,8 @@ import { TimeControl } from './parts/TimeControl';
 const GlancePanel = lazy(() =>
   import('./parts/GlancePanel').then((panel) => ({ default: panel.GlancePanel })),
 );
+
+const NONE: ShownStation[] = [];
 
 export interface NetworkMapProps {
   slug: string;
@@ -65,6 +67,8 @@ function NetworkAtMoment({ slug, zone, period, periodQuery, styleUrls, ...given 
   const choice: StationChoice = { active, chosen, onActive: setActive, onChoose: setChosen };
   const asOf = atSec === null ? stationsInUse(live.stations) : stationsAsOf(live.stations, past.data, atSec);
   const stations = data.exceedances ? withExceedances(asOf, data.exceedances) : asOf;
+  // The map comes first, and the list of a large network when there is time.
+  const listed = useDeferredValue(stations, NONE);
   const marks = useMemo(
     () => layerMarks(data.winds, data.complaints?.places),
     [data.winds, data.complaints?.places],
@@ -101,7 +105,7 @@ function NetworkAtMoment({ slug, zone, period, periodQuery, styleUrls, ...given 
             />
           </Suspense>
         )}
-        <StationList {...{ slug, stations, periodQuery, choice, zone, nowSec }} />
+        <StationList {...{ slug, stations: listed, periodQuery, choice, zone, nowSec }} />
         <LayerLists slug={slug} data={data} />
       </div>
     </div>

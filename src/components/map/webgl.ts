@@ -6,3 +6,8 @@ export function hasWebGl(): boolean {
     return false;
   }
 }
+
+/** Whether it is worth trying: to ask for a context only to know costs as much as the map's own. */
+export function knowsWebGl(): boolean {
+  return 'WebGL2RenderingContext' in globalThis;
+}

@@ -8,8 +8,13 @@ import { ProjectedSlips } from './ProjectedSlips';
 /** Name of the mark on the browser's timeline at which the map had drawn all that it had; later ones tell later rests. */
 const MAP_IDLE_MARK = 'map-idle';
 
-/** The map with its slips. Loaded only where it can be drawn. */
-export default function MapCanvas({ styleUrls, ...slips }: MapPaneProps) {
+interface MapCanvasProps extends MapPaneProps {
+  /** The browser turned out not to be able to draw it. */
+  onImpossible: () => void;
+}
+
+/** The map with its slips. */
+export default function MapCanvas({ styleUrls, onImpossible, ...slips }: MapCanvasProps) {
   const [hasBackground, setHasBackground] = useState(true);
   return (
     <>
@@ -22,7 +27,10 @@ export default function MapCanvas({ styleUrls, ...slips }: MapPaneProps) {
         maxZoom={17.5}
         fadeDuration={0}
         attributionControl={{ compact: true }}
-        onError={() => setHasBackground(false)}
+        // There is no map to tell of what went wrong when it was made.
+        onError={({ target }: { target: object | null }) =>
+          target ? setHasBackground(false) : onImpossible()
+        }
         onStyleData={() => setHasBackground(true)}
         onIdle={() => performance.mark(MAP_IDLE_MARK)}
         style={{ position: 'absolute', inset: 0 }}

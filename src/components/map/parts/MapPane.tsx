@@ -2,7 +2,7 @@ import { lazy, Suspense, useState } from 'react';
 import { type Theme } from '#lib/format/levelRamp';
 import { type LayerMark } from '../model/layerMarks';
 import { type ShownStation } from '../model/shownStation';
-import { hasWebGl } from '../webgl';
+import { knowsWebGl } from '../webgl';
 import { StaticPlan } from './StaticPlan';
 import { type StationChoice } from './StationList';
 
@@ -21,11 +21,11 @@ export interface MapPaneProps {
 
 /** The map, or a plan of the same stations where the browser has no WebGL. */
 export function MapPane(props: MapPaneProps) {
-  const [canDrawMap] = useState(hasWebGl);
+  const [canDrawMap, setCanDrawMap] = useState(knowsWebGl);
   if (!canDrawMap) return <StaticPlan {...props} />;
   return (
     <Suspense fallback={<div className="absolute inset-0 bg-sunk" />}>
-      <MapCanvas {...props} />
+      <MapCanvas {...props} onImpossible={() => setCanDrawMap(false)} />
     </Suspense>
   );
 }

@@ -28,7 +28,11 @@ export function StationList({ slug, stations, periodQuery, choice, zone, nowSec 
   return (
     <ul className="border-t border-line text-table">
       {stations.map((station) => (
-        <li key={station.code} className="border-b border-line">
+        // What is out of sight need not be laid out.
+        <li
+          key={station.code}
+          className="border-b border-line [contain-intrinsic-size:auto_3.4rem] [content-visibility:auto]"
+        >
           <button
             type="button"
             aria-pressed={choice.chosen === station.code}
