@@ -127,8 +127,21 @@ test('without WebGL the map is a plan with the same stations', async () => {
   });
   await signIn(page, 'regulator@merrow.example');
   await page.goto('/n/merrow/map');
-  await expect.poll(() => page.getByRole('button', { name: /Quay Head/ }).count(), SLOW).toBeGreaterThan(0);
+  const pane = page.locator('.map-pane');
+  await expect.poll(() => pane.getByRole('button', { name: /Quay Head/ }).count(), SLOW).toBe(1);
+  await pane.getByText('This browser cannot draw the map').waitFor(SLOW);
   await picture(page, 'map-without-webgl');
+  await context.close();
+});
+
+test('without an answer of the tile server the map says so; stations lie where they should', async () => {
+  const { page, context } = await open();
+  await page.route('**/style/*.json', (route) => route.abort());
+  await signIn(page, 'regulator@merrow.example');
+  await page.goto('/n/merrow/map');
+  await page.getByText('The map’s background cannot be fetched at the moment.').waitFor(SLOW);
+  const pane = page.locator('.map-pane');
+  await expect.poll(() => pane.getByRole('button', { name: /Quay Head/ }).count(), SLOW).toBe(1);
   await context.close();
 });
 
