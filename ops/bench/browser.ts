@@ -12,7 +12,7 @@ import { Web } from './support/web';
 /**
  * What a person at a browser waits for, in headless Chromium on loopback against the built web (`bash ops/build.sh` first), every
  * visit with nothing cached: the strip of a month of minutes and of a year, panning, zooming, a selection, and the size of scripts.
- * The strip draws without WebGL and is measured with the GPU off; scripts are weighed with WebGL by software, for the map.
+ * There is no GPU: pages are drawn by the processor, and so is the map's WebGL.
  * `npx tsx ops/bench/browser.ts`, about 2 min.
  */
 const VISITS = 3;
@@ -35,20 +35,16 @@ await withOwnSchema(async () => {
   await fillMonth(station);
   await repeatMonth(station);
   const web = await Web.start();
-  const visiting = async (webGl: boolean, work: (visitor: Visitor) => Promise<void>) => {
-    const visitor = await Visitor.start(networkId, web.origin, { webGl });
-    await work(visitor).finally(() => visitor.stop());
-  };
+  const visitor = await Visitor.start(networkId, web.origin);
   console.log('| what | median | target |\n| --- | --- | --- |');
   try {
-    await visiting(false, async (visitor) => {
-      await noteVisits(visitor, 'month', MONTH, ['≤ 1,000', '≤ 1,500']);
-      await noteVisits(visitor, 'year', YEAR, ['≤ 2,000', '≤ 2,000']);
-      await noteMoves(visitor);
-      await openReportForm(networkId, visitor.userId);
-    });
-    await visiting(true, noteSizes);
+    await noteVisits(visitor, 'month', MONTH, ['≤ 1,000', '≤ 1,500']);
+    await noteVisits(visitor, 'year', YEAR, ['≤ 2,000', '≤ 2,000']);
+    await noteMoves(visitor);
+    await openReportForm(networkId, visitor.userId);
+    await noteSizes(visitor);
   } finally {
+    await visitor.stop();
     await web.stop();
   }
   console.log('');

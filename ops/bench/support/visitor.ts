@@ -27,12 +27,7 @@ export class Visitor {
     readonly userId: string,
   ) {}
 
-  /** `webGl`: with WebGL by software, which the map needs and which slows down everything else. */
-  static async start(
-    networkId: number,
-    origin: string,
-    { webGl = true }: { webGl?: boolean } = {},
-  ): Promise<Visitor> {
+  static async start(networkId: number, origin: string): Promise<Visitor> {
     const id = randomUUID();
     await inTransaction(async (transaction) => {
       const email = `${id.slice(0, 8)}@bench.example`;
@@ -40,7 +35,7 @@ export class Visitor {
       await insertUser(person, transaction);
       await insertMembership({ userId: id, networkId, role: 'operator' }, transaction);
     });
-    const browser = await launchChromium({ webGl });
+    const browser = await launchChromium();
     return new Visitor(browser, origin, (await startSession(id)).value, id);
   }
 
