@@ -53,7 +53,7 @@ export async function insertMail(mail: NewMail, transaction: Connection): Promis
   }
 }
 
-/** Nothing waits longer between attempts: what would, was put off by a clock that was ahead. */
+/** Nothing waits or is held longer: what would, was put off by a clock that was ahead. Far more than senders' clocks differ by. */
 const LONGEST_WAIT_MS = 2 * 3_600_000;
 
 /**
@@ -78,7 +78,7 @@ export async function leaseDueMail(
           query
             .whereNull('leased_until')
             .orWhere('leased_until', '<', now)
-            .orWhere('leased_until', '>', new Date(now.getTime() + leaseSec * 1000)),
+            .orWhere('leased_until', '>', new Date(now.getTime() + LONGEST_WAIT_MS)),
         )
         .orderBy(['next_attempt_at', 'id'])
         .forUpdate()

@@ -51,7 +51,7 @@ export async function insertDeliveries(
     .merge({ event_key: transaction.raw('event_key') });
 }
 
-/** Nothing waits longer between attempts: what would, was put off by a clock that was ahead. */
+/** Nothing waits or is held longer: what would, was put off by a clock that was ahead. Far more than senders' clocks differ by. */
 const LONGEST_WAIT_MS = 2 * 3_600_000;
 
 /**
@@ -81,7 +81,7 @@ export async function leaseDueDelivery(
           query
             .whereNull('leased_until')
             .orWhere('leased_until', '<', now)
-            .orWhere('leased_until', '>', new Date(now.getTime() + leaseSec * 1000)),
+            .orWhere('leased_until', '>', new Date(now.getTime() + LONGEST_WAIT_MS)),
         )
         .orderBy('id')
         .forUpdate()

@@ -29,7 +29,7 @@ registerRoute({
   request: { params: z.object({ network: z.string() }), query: searchQuerySchema },
   responses: {
     200: {
-      description: 'At most 30 hits',
+      description: 'At most 60 hits',
       content: { 'application/json': { schema: z.object({ items: z.array(hitSchema), next: z.null() }) } },
     },
   },

@@ -1,7 +1,7 @@
 import { beforeEach, expect, test } from 'vitest';
 import { db } from '#db/client';
 import { inTransaction } from '#db/queries/connection';
-import { insertMail } from '#db/queries/outbox';
+import { insertMail, leaseDueMail } from '#db/queries/outbox';
 import { messageIdOf } from '#lib/services/mails/messageId';
 import { sendDueMail, type SenderSettings } from '#ingest/notify/sendOutbox';
 import { useFreshSchema } from '../support/freshSchema';
@@ -65,6 +65,15 @@ test('two senders never hand over the same message', async () => {
   await Promise.all(['a', 'b', 'c', 'd', 'e', 'f'].map(untilNoneIsDue));
   expect(handed).toHaveLength(30);
   expect(new Set(handed.map(({ to }) => to)).size).toBe(30);
+});
+
+test('a sender whose clock is behind leaves to the other what that one holds', async () => {
+  await put('held');
+  const now = new Date();
+  expect(await leaseDueMail('ahead', now, 150)).toBeDefined();
+  for (const behindMs of [1, 1000, 60_000]) {
+    expect(await leaseDueMail('behind', new Date(now.getTime() - behindMs), 150)).toBeUndefined();
+  }
 });
 
 test('a failure waits longer each time, keeps its Message-ID, and is given up after five days', async () => {

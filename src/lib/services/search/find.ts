@@ -17,7 +17,8 @@ export interface Seeker {
   mayAct: (roles: readonly Role[]) => boolean;
 }
 
-const MOST_HITS = 30;
+/** Room for all pages, so that without words there are stations beside them. */
+const MOST_HITS = 60;
 const MOST_OF_A_KIND = 8;
 
 interface Candidate extends Hit {
