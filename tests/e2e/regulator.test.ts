@@ -1,6 +1,7 @@
 import { execFileSync } from 'node:child_process';
 import { readFileSync } from 'node:fs';
 import { parse } from 'csv-parse/sync';
+import { unzipSync } from 'fflate';
 import { expect, inject, test } from 'vitest';
 import { picture, signIn, useBrowser } from './support/browser';
 import { signedInFetch } from './support/signedInFetch';
@@ -28,10 +29,13 @@ test('the regulator downloads a month as PDF and CSV with the figures of the int
     const path = await (await waiting).path();
     return path;
   };
-  const rows = parse(readFileSync(await downloaded('CSV')), { bom: true, columns: true }) as Record<
-    string,
-    string
-  >[];
+  const archive = unzipSync(readFileSync(await downloaded('CSV')));
+  const rows = Object.entries(archive)
+    .filter(([name]) => name.endsWith('.csv'))
+    .flatMap(
+      ([, file]) => parse(Buffer.from(file), { bom: true, columns: true }) as Record<string, string>[],
+    );
+  expect(rows.length).toBeGreaterThan(100);
   const pdfText = execFileSync('pdftotext', ['-layout', await downloaded('PDF'), '-'], { encoding: 'utf8' });
 
   const api = await signedInFetch('regulator@merrow.example');
