@@ -14,7 +14,7 @@ import { failureWords } from '#lib/config/failureWords';
 import { log } from '#lib/config/log';
 import { removeKeptFile } from '#lib/services/files/keptFile';
 import { dueMonths } from '#lib/services/summaries/life/months';
-import { monthWork } from '#lib/services/summaries/work/months';
+import { monthWork } from '#lib/services/summaries/threads/months';
 import { eachAlone, networkSubject } from '../jobs/alone';
 import { issueMonth } from './issueMonth';
 

@@ -20,8 +20,8 @@ import { FILE_FORMATS, type RenderContext } from '#lib/services/summaries/docume
 import { signingKey, signWith } from '#lib/services/summaries/seal/keys';
 import { manifestText } from '#lib/services/summaries/seal/manifest';
 import { readMark, summarySettings } from '#lib/services/summaries/template/settings';
-import { monthWork } from '#lib/services/summaries/work/months';
-import { type KeptMonth } from '#lib/services/summaries/work/tasks';
+import { monthWork } from '#lib/services/summaries/threads/months';
+import { type KeptMonth } from '#lib/services/summaries/threads/tasks';
 import { tellIssued } from './tellIssued';
 
 /**

@@ -7,7 +7,7 @@ import { listWatchedDrafts, updateDraft, type SummaryDraftRow } from '#db/querie
 import { insertProposal, replaceOpenProposals } from '#db/queries/summaryProposals';
 import { fingerprintOf } from '#lib/services/summaries/life/measure';
 import { monthSpan } from '#lib/services/summaries/monthSpan';
-import { monthWork } from '#lib/services/summaries/work/months';
+import { monthWork } from '#lib/services/summaries/threads/months';
 import { eachAlone } from '../jobs/alone';
 
 /**

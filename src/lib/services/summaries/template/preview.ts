@@ -2,7 +2,7 @@ import { findLatestDraft } from '#db/queries/summaryDrafts';
 import { type NetworkRow } from '#db/queries/networks';
 import { type SummarySettings } from '#lib/contracts/summarySettings';
 import { closedMonths } from '../life/months';
-import { monthWork } from '../work/months';
+import { monthWork } from '../threads/months';
 import { markOf, readMark, summarySettings, type MarkChange } from './settings';
 
 /** A month as settings would print it, as PDF: the latest that is over, else the one under way. Nothing is kept. */

@@ -17,7 +17,7 @@ type SizedTask = MonthTask & { stations: number };
  * Months of many stations are computed and printed one after another, each in a thread that ends with it: a hundred stations take
  * hundreds of megabytes, which a process that goes on would keep.
  */
-const thread = new JobThread<SizedTask, MonthResult>('src/lib/services/summaries/work/monthThread.ts', {
+const thread = new JobThread<SizedTask, MonthResult>('src/lib/services/summaries/threads/monthThread.ts', {
   isFresh: true,
   heapMib: ({ stations }) => Math.ceil(LEAST_HEAP_MIB + HEAP_MIB_A_STATION * stations),
   youngMib: YOUNG_HEAP_MIB,
