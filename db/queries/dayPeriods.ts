@@ -11,6 +11,7 @@ import {
 } from './aggregateSums';
 import { pool, type Connection } from './connection';
 import { type Span } from './exclusions';
+import { runPrepared } from './prepared';
 import { insertPrepared } from './preparedInsert';
 
 /** A period never lasts longer: a day with a clock change, and an hour to spare. */
@@ -74,22 +75,21 @@ export async function* eachDayPeriod(
   }
 }
 
+function selection(withClasses: boolean): string {
+  return `SELECT CAST(local_date AS CHAR), period, starts_at, ends_at, flags, ${withClasses ? 'band_classes' : 'NULL'},
+      ${[...SUMS_COLUMNS, ...BAND_COLUMNS].join(', ')}
+    FROM day_periods WHERE station_id = ? AND starts_at >= ? AND starts_at < ? AND ends_at <= ?
+    ORDER BY starts_at LIMIT ${ROWS_A_READ}`;
+}
+
 async function selectDayPeriods(
   stationId: number,
   { fromSec, toSec }: Span,
   { bandClasses }: { bandClasses: boolean },
   conn: Connection,
 ): Promise<DayPeriod[]> {
-  const classes = bandClasses ? 'band_classes' : 'NULL';
-  const [rows] = await conn
-    .raw(
-      `SELECT CAST(local_date AS CHAR), period, starts_at, ends_at, flags, ${classes},
-         ${[...SUMS_COLUMNS, ...BAND_COLUMNS].join(', ')}
-       FROM day_periods WHERE station_id = ? AND starts_at >= ? AND starts_at < ? AND ends_at <= ?
-       ORDER BY starts_at LIMIT ${ROWS_A_READ}`,
-      [stationId, fromSec, toSec, toSec],
-    )
-    .options({ rowsAsArray: true });
+  const statement = selection(bandClasses);
+  const [rows] = await runPrepared(conn, [{ statement, cells: [stationId, fromSec, toSec, toSec] }]);
   return (rows as [string, PeriodKind, number, number, number, Buffer | null, ...SumsCells][]).map(
     ([date, kind, startSec, endSec, flagBits, packed, ...cells]) => ({
       date,

@@ -1,4 +1,5 @@
 import { insertRows, pool, type Connection, type Writes } from './connection';
+import { deleteRuns, runsOf } from './runs';
 
 /** One quarter-hour of a station that must be recomputed; several marks may name the same one. */
 export interface DirtyMark {
@@ -36,13 +37,13 @@ export async function readDirtyMarks(
     .select({ id: 'id', stationId: 'station_id', quarterStartSec: 'quarter_starts_at' });
 }
 
-/** Deletes exactly these marks: one that came meanwhile stays. */
-export async function deleteDirtyMarks(ids: readonly number[], conn: Connection): Promise<void> {
-  for (let first = 0; first < ids.length; first += 1000) {
-    await conn('dirty_marks')
-      .whereIn('id', ids.slice(first, first + 1000))
-      .delete();
-  }
+/** Deletes exactly these marks of a station: one that came meanwhile stays. */
+export async function deleteDirtyMarks(
+  stationId: number,
+  ids: readonly number[],
+  conn: Connection,
+): Promise<void> {
+  await deleteRuns({ table: 'dirty_marks', stationId, column: 'id' }, runsOf(ids, 1), conn);
 }
 
 /** Quarter-hours of a station that begin in `fromSec <= t < toSec` and wait for recomputation; sealed ones never do. */

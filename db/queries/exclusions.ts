@@ -1,4 +1,5 @@
 import { pool, type Connection } from './connection';
+import { runPrepared } from './prepared';
 
 /** A period of a station that an operator has left out of statistics, with the reason. Half-open, epoch seconds. */
 export interface ExclusionRow {
@@ -51,6 +52,9 @@ export interface Span {
   toSec: number;
 }
 
+const STANDING = `SELECT starts_at, ends_at FROM exclusions
+  WHERE station_id = ? AND withdrawn_at IS NULL AND starts_at < ? AND ends_at > ? ORDER BY starts_at`;
+
 /** Standing exclusions of a station that overlap `fromSec <= t < toSec`, by their beginning. */
 export async function selectStandingExclusions(
   stationId: number,
@@ -58,13 +62,8 @@ export async function selectStandingExclusions(
   toSec: number,
   conn: Connection = pool(),
 ): Promise<Span[]> {
-  return conn('exclusions')
-    .where({ station_id: stationId })
-    .whereNull('withdrawn_at')
-    .where('starts_at', '<', toSec)
-    .where('ends_at', '>', fromSec)
-    .orderBy('starts_at')
-    .select({ fromSec: 'starts_at', toSec: 'ends_at' });
+  const [rows] = await runPrepared(conn, [{ statement: STANDING, cells: [stationId, toSec, fromSec] }]);
+  return (rows as [number, number][]).map(([beginSec, endSec]) => ({ fromSec: beginSec, toSec: endSec }));
 }
 
 export async function findExclusion(

@@ -1,4 +1,5 @@
 import { type PeriodSums } from '#lib/acoustics/periodSums';
+import { QUARTER_SEC } from '#lib/time/quarters';
 import { bandRooms } from './aggregatePacking';
 import {
   BAND_COLUMNS,
@@ -10,6 +11,7 @@ import {
 } from './aggregateSums';
 import { pool, type Connection } from './connection';
 import { insertPrepared } from './preparedInsert';
+import { deleteRuns, runsOf } from './runs';
 
 const INSERTED_COLUMNS = [
   'station_id',
@@ -82,10 +84,8 @@ export async function deleteQuartersAt(
   quarterStartsSec: readonly number[],
   conn: Connection,
 ): Promise<void> {
-  await conn('quarter_hours')
-    .where({ station_id: stationId })
-    .whereIn('starts_at', quarterStartsSec)
-    .delete();
+  const runs = runsOf(quarterStartsSec, QUARTER_SEC);
+  await deleteRuns({ table: 'quarter_hours', stationId, column: 'starts_at' }, runs, conn);
 }
 
 /** Adds quarter-hours of a station that have no rows. */

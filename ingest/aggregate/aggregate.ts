@@ -26,6 +26,8 @@ export interface AggregationRun {
 }
 
 const JOB = 'aggregate';
+/** Reads after the lock see all that was committed, and deleting marks locks no gap that monitors insert into. */
+const AS_COMMITTED = { isolationLevel: 'read committed' } as const;
 const DAY_SEC = 86_400;
 /** Marks read at once. */
 const MOST_MARKS = 5000;
@@ -61,11 +63,11 @@ async function aggregateStation(
   onQuartersRecomputed: OnQuartersRecomputed,
 ): Promise<number> {
   const station = await findStationById(stationId);
-  if (!station) return forget(marks);
+  if (!station) return forget(stationId, marks);
   const { sealedBeforeSec } = await findSeal(stationId);
   const sealed = marks.filter(({ quarterStartSec }) => quarterStartSec < sealedBeforeSec);
   if (sealed.length > 0) {
-    await forget(sealed);
+    await forget(stationId, sealed);
     return aggregateStation(
       stationId,
       marks.filter((mark) => !sealed.includes(mark)),
@@ -82,9 +84,9 @@ async function aggregateStation(
 }
 
 /** Deletes marks of what is gone, or sealed and so never computed anew. */
-async function forget(marks: readonly DirtyMark[]): Promise<number> {
+async function forget(stationId: number, marks: readonly DirtyMark[]): Promise<number> {
   const ids = marks.map(({ id }) => id);
-  await inTransaction((transaction) => deleteDirtyMarks(ids, transaction));
+  await inTransaction((transaction) => deleteDirtyMarks(stationId, ids, transaction), AS_COMMITTED);
   return 0;
 }
 
@@ -97,23 +99,24 @@ export async function aggregateAll(onQuartersRecomputed: OnQuartersRecomputed): 
   }
 }
 
-/** Read committed: reads after the lock see all that was committed, and deleting marks locks no gap that monitors insert into. */
 async function recomputeChunk(
   chunk: Chunk,
   station: StationRow,
   timeline: NetworkSettings[],
   onQuartersRecomputed: OnQuartersRecomputed,
 ): Promise<void> {
-  await inTransaction(
-    async (transaction) => {
-      await lockStation(station.id, transaction);
-      await recompute(chunk, station, timeline, transaction);
-      await dropDayTraces(station.id, daysOf(chunk), transaction);
-      await onQuartersRecomputed(station.id, chunk.quarterStartsSec, transaction);
-      await deleteDirtyMarks(chunk.markIds, transaction);
-    },
-    { isolationLevel: 'read committed' },
-  );
+  await inTransaction(async (transaction) => {
+    await lockStation(station.id, transaction);
+    const computing = recompute(chunk, station, timeline, transaction);
+    // The database does what does not need the result meanwhile.
+    const settling = Promise.allSettled([
+      dropDayTraces(station.id, daysOf(chunk), transaction),
+      deleteDirtyMarks(station.id, chunk.markIds, transaction),
+    ]);
+    await computing;
+    for (const settled of await settling) if (settled.status === 'rejected') throw settled.reason;
+    await onQuartersRecomputed(station.id, chunk.quarterStartsSec, transaction);
+  }, AS_COMMITTED);
 }
 
 /** Days of UTC that a chunk's marked quarter-hours are in, by their beginnings. */

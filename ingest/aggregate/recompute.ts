@@ -24,22 +24,31 @@ export async function recompute(
   conn: Connection,
 ): Promise<void> {
   const parts = partsOf(chunk, Date.now() / 1000);
-  const [judgement] = await Promise.all([
-    judgementOf({ station, timeline, validity: 'rules' }, wholeOf(parts.map(({ span }) => span)), conn),
-    deleteQuartersAt(station.id, chunk.quarterStartsSec, conn),
-    deletePeriodsTouching(station.id, replacedSpans(chunk, parts), conn),
-  ]);
   const read = (part: number) => {
     const span = parts[part]?.span;
-    return span && selectMeasuredIntervals(station.id, span.fromSec, span.toSec, conn);
+    return heard(span && selectMeasuredIntervals(station.id, span.fromSec, span.toSec, conn));
   };
   // The database reads the parts after this one and writes those before it while this process computes, so that neither waits.
-  const reading = [heard(read(0)), heard(read(1))];
+  const judging = judgementOf(
+    { station, timeline, validity: 'rules' },
+    wholeOf(parts.map(({ span }) => span)),
+    conn,
+  );
+  const reading = [read(0), read(1)];
+  const clearing = heard(
+    Promise.all([
+      deleteQuartersAt(station.id, chunk.quarterStartsSec, conn),
+      deletePeriodsTouching(station.id, replacedSpans(chunk, parts), conn),
+    ]),
+  );
+  const judgement = await judging;
   const writing: Promise<void>[] = [];
   for (const [at, part] of parts.entries()) {
     const intervals = (await reading[at]) ?? [];
     const rows = new PartRows(part, intervals, judgement);
-    writing.push(heard(insertQuarterHours(station.id, rows.quarters(), conn)));
+    const quarters = rows.quarters();
+    await clearing;
+    writing.push(heard(insertQuarterHours(station.id, quarters, conn)));
     const periods: DayPeriod[] = [];
     for (const period of part.periods) {
       await nextTurn();
@@ -47,10 +56,10 @@ export async function recompute(
       if (found) periods.push(found);
     }
     writing.push(heard(insertDayPeriods(station.id, periods, conn)));
-    reading.push(heard(read(at + 2)));
+    reading.push(read(at + 2));
     await nextTurn();
   }
-  await Promise.all(writing);
+  await Promise.all([clearing, ...writing]);
 }
 
 /** Work under way whose failure is told when it is awaited; until then, unheard, it would end the process. */

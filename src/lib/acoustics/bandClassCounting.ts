@@ -1,9 +1,10 @@
 import { bandSlot, FIRST_BAND_INDEX, LAST_BAND_INDEX, type BandFraction } from './bands';
 import { energyOfCentiDb } from './energy';
+import { tenthsOfEnergy } from './energyClass';
 import { NO_LEVEL_CENTI_DB } from './levelRange';
 import { octaveIndexOf, octaveSlot, thirdsOfOctave } from './octaves';
 import { type BandClassCounts } from './periodSums';
-import { centiDbToTenths, toTenths } from './rounding';
+import { centiDbToTenths } from './rounding';
 
 /** Band levels of an interval, clipped to the period by duration. */
 export interface BandInterval {
@@ -74,7 +75,7 @@ function fillOctave(column: Column, intervals: readonly BandInterval[], places: 
     if (Math.min(lowCentiDb, middleCentiDb, highCentiDb) === NO_LEVEL_CENTI_DB) continue;
     const energy =
       energyOfCentiDb(lowCentiDb) + energyOfCentiDb(middleCentiDb) + energyOfCentiDb(highCentiDb);
-    append(column, toTenths(10 * Math.log10(energy)), durationSec);
+    append(column, tenthsOfEnergy(energy), durationSec);
   }
 }
 

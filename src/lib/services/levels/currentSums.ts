@@ -10,6 +10,13 @@ import { overlapsAny, withoutSpans, type Span } from './spans';
 /** The ragged nights at both ends of a month. */
 const RESTS_AT_ONCE = 2;
 
+export interface SumOptions {
+  /** Also the distribution of every band. */
+  bandClasses: boolean;
+  /** What waits for recomputation, read before this is called; read first when left out. */
+  dirty?: readonly Span[];
+}
+
 /**
  * Sums of `fromSec <= t < toSec`, current and from as few rows as possible: whole days, evenings and nights from their rows;
  * of the rest whole quarter-hours from theirs, or, where distributions per band are wanted (quarter-hours hold none), its
@@ -18,14 +25,14 @@ const RESTS_AT_ONCE = 2;
 export async function currentSums(
   source: LevelSource,
   period: Span,
-  options: { bandClasses: boolean },
+  options: SumOptions,
   conn: Connection,
 ): Promise<PeriodAccumulator> {
   if (source.validity === 'all') return sumIntervals(source, period, options, conn);
   const whole = new PeriodAccumulator(options);
   const { id } = source.station;
   // Marks are read before rows: what is recomputed in between is then counted anew, never missed.
-  const dirty = await dirtySpans(id, period, conn);
+  const dirty = options.dirty ?? (await dirtySpans(id, period, conn));
   const counted: Span[] = [];
   let countedToSec = -Infinity;
   for await (const rows of eachDayPeriod(id, period, options, conn)) {

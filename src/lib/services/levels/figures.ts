@@ -7,6 +7,7 @@ import { type Seconds } from '#lib/contracts/levels';
 import { keptFromSecOf, keptNote, onQuarters, requireKept } from '../retention/kept';
 import { type Validity } from './accumulate';
 import { currentSums } from './currentSums';
+import { dirtySpans } from './dirtySpans';
 import { type Span } from './spans';
 
 export interface FiguresQuery extends Span {
@@ -68,16 +69,15 @@ export async function periodFigures(
   const keptFromSec = await keptFromSecOf(station.id, conn);
   const { fromSec, toSec } = onQuarters(query, keptFromSec);
   if (validity === 'all') requireKept(fromSec, keptFromSec);
-  const timeline = query.timeline ?? (await listSettings(station.networkId, conn));
   const nowSec = query.nowSec ?? Math.floor(Date.now() / 1000);
-  const levels = await currentSums(
-    { station, timeline, validity },
-    { fromSec, toSec },
-    { bandClasses: bandPercentiles },
-    conn,
-  );
-  const { minimumCoverage } = pickSettings(timeline, fromSec);
   const period = { fromSec, toSec };
+  const [timeline, dirty] = await Promise.all([
+    query.timeline ?? listSettings(station.networkId, conn),
+    validity === 'rules' ? dirtySpans(station.id, period, conn) : [],
+  ]);
+  const options = { bandClasses: bandPercentiles, dirty };
+  const levels = await currentSums({ station, timeline, validity }, period, options, conn);
+  const { minimumCoverage } = pickSettings(timeline, fromSec);
   return {
     ...period,
     levels,
