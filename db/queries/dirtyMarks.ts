@@ -37,7 +37,7 @@ export async function readDirtyMarks(
     .select({ id: 'id', stationId: 'station_id', quarterStartSec: 'quarter_starts_at' });
 }
 
-/** Deletes exactly these marks of a station: one that came meanwhile stays. */
+/** Deletes exactly these marks of a station: one that came meanwhile stays. Ids are the station's own: another's mark may have the same. */
 export async function deleteDirtyMarks(
   stationId: number,
   ids: readonly number[],
