@@ -1325,6 +1325,7 @@ CREATE TABLE `users` (
   `email` varchar(254) NOT NULL,
   `name` varchar(160) NOT NULL,
   `password_hash` varchar(255) NOT NULL,
+  `must_change_password` tinyint(1) NOT NULL DEFAULT 0 COMMENT 'the password was handed over by somebody else: it opens nothing but the page to change it',
   `is_administrator` tinyint(1) NOT NULL DEFAULT 0,
   `created_at` datetime(3) NOT NULL,
   `disabled_at` datetime(3) DEFAULT NULL,

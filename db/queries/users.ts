@@ -7,6 +7,8 @@ export interface UserRow {
   email: string;
   name: string;
   isAdministrator: boolean;
+  /** Somebody else handed the password over: it opens nothing before it is changed. */
+  mustChangePassword: boolean;
   createdAt: Date;
   disabledAt: Date | null;
 }
@@ -22,6 +24,7 @@ const USER_COLUMNS = {
   email: 'email',
   name: 'name',
   isAdministrator: 'is_administrator',
+  mustChangePassword: 'must_change_password',
   createdAt: 'created_at',
   disabledAt: 'disabled_at',
 } as const;
@@ -56,7 +59,7 @@ export async function findCredentialsById(
 
 export async function listUsers(conn: Connection = pool()): Promise<UserRow[]> {
   const rows = await conn('users').orderBy('name').select(USER_COLUMNS);
-  return rows.map((row) => ({ ...row, isAdministrator: Boolean(row.isAdministrator) }));
+  return rows.flatMap((row) => userOf(row) ?? []);
 }
 
 export interface NewUser {
@@ -65,6 +68,8 @@ export interface NewUser {
   name: string;
   passwordHash: string;
   isAdministrator: boolean;
+  /** Left out: chosen by the person. */
+  mustChangePassword?: boolean;
 }
 
 /** Adds a person. An address that is known already fails with MariaDB's duplicate-key error. */
@@ -75,6 +80,7 @@ export async function insertUser(user: NewUser, conn: Connection): Promise<void>
     name: user.name,
     password_hash: user.passwordHash,
     is_administrator: user.isAdministrator,
+    must_change_password: user.mustChangePassword ?? false,
     created_at: new Date(),
   });
 }
@@ -108,13 +114,20 @@ export async function listAllMemberships(conn: Connection = pool()): Promise<Mem
 /** Changes a person's entry; what is left out stays. */
 export async function updateUser(
   id: string,
-  changes: { name?: string; isAdministrator?: boolean; passwordHash?: string; disabledAt?: Date | null },
+  changes: {
+    name?: string;
+    isAdministrator?: boolean;
+    passwordHash?: string;
+    mustChangePassword?: boolean;
+    disabledAt?: Date | null;
+  },
   conn: Connection,
 ): Promise<void> {
   const columns = {
     name: changes.name,
     is_administrator: changes.isAdministrator,
     password_hash: changes.passwordHash,
+    must_change_password: changes.mustChangePassword,
     disabled_at: changes.disabledAt,
   };
   const given = Object.fromEntries(Object.entries(columns).filter(([, value]) => value !== undefined));
@@ -131,7 +144,12 @@ export async function lockAdministrators(transaction: Connection): Promise<strin
 }
 
 function userOf(
-  row: (Omit<UserRow, 'isAdministrator'> & { isAdministrator: unknown }) | undefined,
+  row:
+    | (Omit<UserRow, 'isAdministrator' | 'mustChangePassword'> & {
+        isAdministrator: unknown;
+        mustChangePassword: unknown;
+      })
+    | undefined,
 ): UserRow | undefined {
   return (
     row && {
@@ -139,6 +157,7 @@ function userOf(
       email: row.email,
       name: row.name,
       isAdministrator: Boolean(row.isAdministrator),
+      mustChangePassword: Boolean(row.mustChangePassword),
       createdAt: row.createdAt,
       disabledAt: row.disabledAt,
     }

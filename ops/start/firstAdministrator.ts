@@ -17,6 +17,8 @@ export async function hasPeople(): Promise<boolean> {
 export async function ensureFirstAdministrator(given: {
   email: string | null;
   password: string | null;
+  /** The password is handed over: it has to be changed at the first sign-in. */
+  changesPassword: boolean;
 }): Promise<void> {
   const { email, password } = given.email && given.password ? given : await ask(given);
   if (!email || !/^\S+@\S+\.\S+$/.test(email))
@@ -26,7 +28,8 @@ export async function ensureFirstAdministrator(given: {
   const passwordHash = await hashPassword(password);
   await inTransaction(async (transaction) => {
     const id = randomUUID();
-    await insertUser({ id, email, name: NAME, passwordHash, isAdministrator: true }, transaction);
+    const person = { id, email, name: NAME, passwordHash, isAdministrator: true };
+    await insertUser({ ...person, mustChangePassword: given.changesPassword }, transaction);
     await appendAudit(
       {
         userId: null,

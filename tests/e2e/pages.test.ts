@@ -112,6 +112,7 @@ const APART = new Set([
   '/',
   '/404',
   '/500',
+  '/account/new-password',
   '/acknowledge/[token]',
   '/admin/audit.csv',
   '/admin/people/[id]',

@@ -139,3 +139,42 @@ test('a forgotten password is chosen anew by a link, without JavaScript', async 
   await look(page, 'asked');
   await context.close();
 }, 60_000);
+
+test('a password that was handed over is changed before anything opens, without JavaScript', async () => {
+  const email = `odo-${Date.now()}@people.example`;
+  const admin = await open();
+  await signIn(admin.page, 'admin@merrow.example');
+  const handed = 'eleven slow barges upstream';
+  const added = await admin.context.request.post('/api/v1/people', {
+    data: { name: 'Odo', email, password: handed, roles: [{ network: 'merrow', role: 'regulator' }] },
+    headers: { origin: inject('origin') },
+  });
+  expect(added.status()).toBe(201);
+  await admin.context.close();
+
+  const { context, page } = await open();
+  await page.route('**/*.js', (route) => route.abort());
+  await page.goto('/sign-in?next=/n/merrow/limits');
+  await page.getByLabel('E-mail').fill(email);
+  await page.getByLabel('Password').fill(handed);
+  await page.getByRole('button', { name: 'Sign in' }).click();
+  await page.waitForURL('**/account/new-password?next=%2Fn%2Fmerrow%2Flimits');
+  await look(page, 'handed-over');
+  for (const path of ['/', '/account', '/account/second-factor', '/summaries', '/n/merrow/map']) {
+    await page.goto(path);
+    expect(new URL(page.url()).pathname, path).toBe('/account/new-password');
+  }
+  await page.goto('/sign-in?next=/n/merrow/limits');
+  const change = page.getByRole('button', { name: 'Change the password' });
+  await page.getByLabel('Current password').fill(handed);
+  await page.getByLabel('New password').fill(handed);
+  await change.click();
+  await page.getByText('must differ from the current one').first().waitFor();
+  await page.getByLabel('Current password').fill(handed);
+  await page.getByLabel('New password').fill(PASSWORD);
+  await change.click();
+  await page.waitForURL('**/n/merrow/limits');
+  await page.goto('/account/new-password');
+  expect(new URL(page.url()).pathname).toBe('/account');
+  await context.close();
+}, 120_000);

@@ -3,15 +3,22 @@ import { findStation, type StationRow } from '#db/queries/stations';
 import { findStationByToken, noteTokenUse, type TokenStation } from '#db/queries/stationTokens';
 import { notAllowed, notFound, Problem, signInFirst } from '#lib/http/problem';
 import { factorFirst } from './factorWanted';
+import { passwordFirst } from './handedOver';
 import { enterNetwork, type NetworkAccess } from './networkAccess';
 import { bearerToken } from './requestUser';
 import type { Role } from './roles';
 import { sessionCookieName, type SignedInUser } from './sessions';
 
-/** The signed-in person. @throws {Problem} 401 */
+/** The signed-in person. @throws {Problem} 401, 403 where a password that was handed over has to be changed first */
 export function requireUser(context: Pick<APIContext, 'locals'>): SignedInUser {
-  if (!context.locals.user) throw signInFirst();
-  return context.locals.user;
+  const user = requireAnyUser(context);
+  if (user.mustChangePassword) throw passwordFirst();
+  return user;
+}
+
+function requireAnyUser({ locals }: Pick<APIContext, 'locals'>): SignedInUser {
+  if (!locals.user) throw signInFirst();
+  return locals.user;
 }
 
 /** The signed-in administrator, with the second factor where a network asks for one. @throws {Problem} 401, 403 */
@@ -31,12 +38,20 @@ export function requireSession(context: Pick<APIContext, 'locals' | 'cookies' | 
   user: SignedInUser;
   sessionId: string;
 } {
-  const user = requireUser(context);
-  const sessionId = context.cookies.get(sessionCookieName())?.value;
-  if (!sessionId || bearerToken(context.request) !== null) {
-    throw notAllowed('An access token may not do this: sign in.');
-  }
-  return { user, sessionId };
+  return { user: requireUser(context), sessionId: requireSessionId(context) };
+}
+
+/** The same for changing one's password, which a handed over one is good for alone. @throws {Problem} 401, 403 */
+export function requireSessionForPassword(
+  context: Parameters<typeof requireSession>[0],
+): ReturnType<typeof requireSession> {
+  return { user: requireAnyUser(context), sessionId: requireSessionId(context) };
+}
+
+function requireSessionId({ cookies, request }: Pick<APIContext, 'cookies' | 'request'>): string {
+  const sessionId = cookies.get(sessionCookieName())?.value;
+  if (sessionId && bearerToken(request) === null) return sessionId;
+  throw notAllowed('An access token may not do this: sign in.');
 }
 
 /** The administrator signed in in a browser. @throws {Problem} 401, 403 */

@@ -2,19 +2,29 @@ import type { AstroGlobal } from 'astro';
 import { Problem } from '#lib/http/problem';
 import { SealedError } from '#lib/services/retention/seal';
 import { FACTOR_FIRST } from './factorWanted';
-import { requireAdministrator, requireSession } from './guards';
+import { requireAdministrator, requireSession, requireSessionForPassword } from './guards';
 import { enterNetwork, type NetworkAccess } from './networkAccess';
 import { ALL_ROLES, type Role } from './roles';
 import type { SignedInUser } from './sessions';
 
 /**
- * For a page's frontmatter: the person, or the response to return instead (to sign in, and back here afterwards).
+ * For a page's frontmatter: the person, or the response to return instead (to sign in, or to change a password that was handed over,
+ * and back here afterwards).
  */
 export function pageUser(astro: AstroGlobal): SignedInUser | Response {
-  return (
-    astro.locals.user ??
-    astro.redirect(`/sign-in?next=${encodeURIComponent(astro.url.pathname + astro.url.search)}`)
-  );
+  const { user } = astro.locals;
+  const next = encodeURIComponent(astro.url.pathname + astro.url.search);
+  if (!user) return astro.redirect(`/sign-in?next=${next}`);
+  return user.mustChangePassword ? astro.redirect(`/account/new-password?next=${next}`, 303) : user;
+}
+
+/** For the page that changes a password that was handed over: who has one, or the response to return instead. */
+export async function pageHandedOver(
+  astro: AstroGlobal,
+): Promise<{ user: SignedInUser; sessionId: string } | Response> {
+  if (!astro.locals.user) return astro.redirect('/sign-in');
+  if (!astro.locals.user.mustChangePassword) return astro.redirect('/account', 303);
+  return orRefusal(astro, async () => requireSessionForPassword(astro));
 }
 
 /** For a page's frontmatter: the person signed in in a browser, or the response to return instead. */

@@ -28,8 +28,8 @@ export const sessionStore: Adapter = {
     ]);
     if (!user || user.disabledAt) return [null, null];
     await noteSeen(id, session.lastSeenAt);
-    const { email, name, isAdministrator } = user;
-    const attributes = { email, name, isAdministrator, lacksSecondFactor: !hasFactor };
+    const { email, name, isAdministrator, mustChangePassword } = user;
+    const attributes = { email, name, isAdministrator, mustChangePassword, lacksSecondFactor: !hasFactor };
     return [
       { id, userId: session.userId, expiresAt: session.expiresAt, attributes: {} },
       { id: user.id, attributes },

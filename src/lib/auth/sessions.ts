@@ -10,6 +10,8 @@ export interface SignedInUser {
   email: string;
   name: string;
   isAdministrator: boolean;
+  /** Signed in from a browser by a password that was handed over: it is changed before anything else. */
+  mustChangePassword?: boolean;
   /** Signed in from a browser without a second factor: networks that ask for one are closed. */
   lacksSecondFactor?: boolean;
   /** An administrator whom a network keeps out so may not administer either. */
@@ -46,7 +48,7 @@ export async function startSession(
 export async function userOfSession(sessionId: string): Promise<SignedInUser | null> {
   const { user } = await lucia().validateSession(sessionId);
   if (!user) return null;
-  const { id, email, name, isAdministrator, lacksSecondFactor } = user;
+  const { id, email, name, isAdministrator, mustChangePassword, lacksSecondFactor } = user;
   const administrationIsClosed =
     isAdministrator && lacksSecondFactor === true && (await listSecondFactorNetworks()).length > 0;
   return {
@@ -54,6 +56,7 @@ export async function userOfSession(sessionId: string): Promise<SignedInUser | n
     email,
     name,
     isAdministrator,
+    mustChangePassword: mustChangePassword ?? false,
     lacksSecondFactor: lacksSecondFactor ?? true,
     administrationIsClosed,
   };
@@ -81,10 +84,11 @@ function makeLucia() {
   return new Lucia(sessionStore, {
     sessionExpiresIn: new TimeSpan(config().session.idleHours, 'h'),
     sessionCookie: { name: sessionCookieName(), attributes: { secure: isSecure() } },
-    getUserAttributes: ({ email, name, isAdministrator, lacksSecondFactor }) => ({
+    getUserAttributes: ({ email, name, isAdministrator, mustChangePassword, lacksSecondFactor }) => ({
       email,
       name,
       isAdministrator,
+      mustChangePassword,
       lacksSecondFactor,
     }),
   });

@@ -32,6 +32,11 @@ export interface Config {
     password: string;
     name: string;
     poolMax: number;
+    /** Servers that the high-volume tables are shared out to; none: they are local. */
+    dataServers: { name: string; host: string; port: number }[];
+    /** The account on them, of the head and of migrations. */
+    dataUser: string;
+    dataPassword: string;
     /** The web applies pending migrations when it starts. */
     mayMigrate: boolean;
   };
@@ -55,7 +60,7 @@ export interface Config {
   /** Local stand-ins for the hosted mail and tile services. */
   standins: { areStarted: boolean; mailWebPort: number; tilesPort: number };
   demo: { password: string | null; days: number };
-  firstAdministrator: { email: string | null; password: string | null };
+  firstAdministrator: { email: string | null; password: string | null; changesPassword: boolean };
   /** 32 bytes that wrap the key of each complaint's personal data. Kept outside backups. */
   personalDataKey: Buffer;
   session: { idleHours: number; maxDays: number };
@@ -118,6 +123,9 @@ export function parseConfig(environment: Record<string, string | undefined>): Co
       password: settings.BITTERN_DB_PASSWORD,
       name: settings.BITTERN_DB_NAME,
       poolMax: settings.BITTERN_DB_POOL_MAX,
+      dataServers: settings.BITTERN_DATA_SERVERS,
+      dataUser: settings.BITTERN_DATA_USER ?? settings.BITTERN_DB_USER,
+      dataPassword: settings.BITTERN_DATA_PASSWORD ?? settings.BITTERN_DB_PASSWORD,
       mayMigrate: settings.BITTERN_DB_MIGRATE,
     },
     backup: {
@@ -145,6 +153,7 @@ export function parseConfig(environment: Record<string, string | undefined>): Co
     firstAdministrator: {
       email: settings.BITTERN_ADMIN_EMAIL ?? null,
       password: settings.BITTERN_ADMIN_PASSWORD ?? null,
+      changesPassword: settings.BITTERN_ADMIN_CHANGES_PASSWORD,
     },
     auditHeadTo: settings.BITTERN_AUDIT_HEAD_TO ?? null,
     webhooksMayLoopBack: settings.BITTERN_WEBHOOKS_LOOPBACK,

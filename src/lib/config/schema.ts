@@ -44,6 +44,21 @@ const origins = z
     error: 'must be addresses without a path, such as https://tiles.merrow.example',
   });
 
+/** Servers with a name each, such as `data1=127.0.0.1:4601,data2=127.0.0.1:4602`. */
+const dataServers = z
+  .string()
+  .default('')
+  .transform(itemsOf)
+  .refine((items) => items.every((item) => /^[a-z0-9]{1,20}=[^\s=]+:\d{1,5}$/.test(item)), {
+    error: 'must be names with addresses and ports, such as data1=10.0.0.5:3306,data2=10.0.0.6:3306',
+  })
+  .transform((items) =>
+    items.map((item) => {
+      const [, name = '', host = '', port = ''] = /^([^=]+)=(.+):(\d+)$/.exec(item) ?? [];
+      return { name, host, port: Number(port) };
+    }),
+  );
+
 /** Every setting of Bittern. The README's settings table lists the same names. */
 export const settingsSchema = z.object({
   BITTERN_HOST: z.string().default('127.0.0.1'),
@@ -72,6 +87,9 @@ export const settingsSchema = z.object({
     .regex(/^[A-Za-z0-9_]{1,64}$/, 'may hold letters, digits and _ only')
     .default('bittern'),
   BITTERN_DISK_WARN_DAYS: z.coerce.number().int().min(1).max(365).default(30),
+  BITTERN_DATA_SERVERS: dataServers,
+  BITTERN_DATA_USER: z.string().optional(),
+  BITTERN_DATA_PASSWORD: z.string().optional(),
   BITTERN_DB_MIGRATE: isTrue('true'),
   BITTERN_DB_POOL_MAX: z.coerce.number().int().min(2).max(200).default(12),
 
@@ -102,6 +120,7 @@ export const settingsSchema = z.object({
   BITTERN_DEMO_DAYS: z.coerce.number().int().min(2).max(400).default(70),
   BITTERN_ADMIN_EMAIL: z.email('must be an e-mail address').optional(),
   BITTERN_ADMIN_PASSWORD: z.string().min(12, 'must have at least 12 characters').optional(),
+  BITTERN_ADMIN_CHANGES_PASSWORD: isTrue('false'),
 
   BITTERN_PERSONAL_DATA_KEY: z
     .string({ error: 'is required' })

@@ -1,10 +1,12 @@
 import { readFileSync } from 'node:fs';
 import prettier from 'prettier';
 import { beforeAll, expect, test } from 'vitest';
+import { inTransaction } from '#db/queries/connection';
+import { updateUser } from '#db/queries/users';
 import { pagePatterns, takesForms } from '#ops/pictures/pagePatterns';
 import { callApi, methodsOf, routePatterns } from '../support/callApi';
 import { useFreshSchema } from '../support/freshSchema';
-import { makeNetwork, makeStation } from '../support/people';
+import { makeNetwork, makePerson, makeStation } from '../support/people';
 import { CALLERS, makeCaller, type CallerName } from '../support/roles';
 
 /**
@@ -34,9 +36,12 @@ beforeAll(async () => {
   ground = { home, foreign, stationId: await makeStation(home, 'MX-1') };
 }, 240_000);
 
+const pathOf = (pattern: string) =>
+  pattern.replace(/\[(?:\.\.\.)?(\w+)\]/g, (_, name: string) => NAMES[name] ?? 'x');
+
 /** What a caller hears who asks for nothing in particular; a body that is wrong, or a thing that is not there, comes after the door. */
 async function heard(method: string, pattern: string, caller: CallerName): Promise<string> {
-  const path = pattern.replace(/\[(?:\.\.\.)?(\w+)\]/g, (_, name: string) => NAMES[name] ?? 'x');
+  const path = pathOf(pattern);
   const isChange = method !== 'GET';
   const answer = await callApi(method, path, {
     ...(await makeCaller(caller, ground)),
@@ -83,7 +88,8 @@ function guardOf(source: string): string {
     source,
   );
   if (network) return network[1] === undefined ? 'every role of the network' : rolesIn(network[1]);
-  if (/(pageUser|pageSession|requireSession|requireUser)\(/.test(source)) return 'signed in';
+  if (/(pageUser|pageSession|pageHandedOver|requireSession\w*|requireUser)\(/.test(source))
+    return 'signed in';
   return 'anybody';
 }
 
@@ -136,3 +142,24 @@ function table(head: readonly string[], rows: readonly string[][]): string {
   const line = (cells: readonly string[]) => `| ${cells.join(' | ')} |`;
   return [line(head), line(head.map(() => '---')), ...rows.map(line)].join('\n');
 }
+
+test('a password that was handed over opens no door that asks who one is, but the one to change it', async () => {
+  const { userId, session } = await makePerson(null, [], true);
+  await inTransaction((transaction) => updateUser(userId, { mustChangePassword: true }, transaction));
+  const codeOf = async (method: string, pattern: string, call: { session?: string }) => {
+    const body = method === 'GET' ? {} : { body: '{}', headers: { 'content-type': 'application/json' } };
+    const answer = await callApi(method, pathOf(pattern), { ...call, ...body });
+    return answer.status < 400 ? answer.status : ((await answer.json()) as { code: string }).code;
+  };
+  const opened: string[] = [];
+  let closedCount = 0;
+  for (const pattern of routePatterns().filter((one) => one.startsWith('/api/'))) {
+    for (const method of await methodsOf(pattern)) {
+      if ((await codeOf(method, pattern, {})) !== 'sign-in-first') continue;
+      if ((await codeOf(method, pattern, { session })) === 'password-first') closedCount += 1;
+      else opened.push(`${method} ${pattern}`);
+    }
+  }
+  expect(closedCount).toBeGreaterThan(150);
+  expect(opened).toEqual(['POST /api/v1/me/password']);
+}, 240_000);

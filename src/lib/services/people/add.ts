@@ -8,7 +8,7 @@ import { setRoles } from './memberships';
 
 export type PersonAdding = { outcome: 'added'; id: string } | { outcome: 'email-taken' };
 
-/** Adds a person with roles. The audit entry names the person by id: names and addresses are personal. */
+/** Adds a person with roles and a password that is handed over, to be changed at the first sign-in. The audit entry names the person by id: names and addresses are personal. */
 export async function addPerson(
   input: NewPerson,
   passwordHash: string,
@@ -18,7 +18,8 @@ export async function addPerson(
   const id = randomUUID();
   try {
     await inTransaction(async (transaction) => {
-      await insertUser({ id, email, name, passwordHash, isAdministrator }, transaction);
+      const person = { id, email, name, passwordHash, isAdministrator, mustChangePassword: true };
+      await insertUser(person, transaction);
       await setRoles(id, roles, transaction);
       await appendAudit(
         {

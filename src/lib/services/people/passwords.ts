@@ -60,14 +60,15 @@ async function ofLink(secret: string, transaction: Connection): Promise<UserRow 
   return user?.disabledAt ? undefined : user;
 }
 
-/** A new password ends every link to choose one, and its owner is told. */
+/** A new password ends every link to choose one, and its owner is told. One that is handed over has to be changed first. */
 async function storePassword(
   userId: string,
   passwordHash: string,
   how: 'self' | 'link' | 'administrator',
   transaction: Connection,
 ): Promise<void> {
-  await updateUser(userId, { passwordHash }, transaction);
+  const mustChangePassword = how === 'administrator';
+  await updateUser(userId, { passwordHash, mustChangePassword }, transaction);
   await deleteAccountTokens('password-reset', userId, transaction);
   const user = await findUserById(userId, transaction);
   if (user) await tellPerson(user.email, { kind: 'password', how }, new Date(), transaction);
