@@ -5,6 +5,7 @@ import type { Knex } from 'knex';
 import { config } from '#lib/config/index';
 import { db } from './client';
 import { withSchemaLock } from './schemaLock';
+import { shardTables } from './sharding/shardTables';
 
 const DIRECTORY = 'db/migrations';
 const RECORD = 'schema_migrations';
@@ -55,17 +56,22 @@ export async function migrateUp(only?: readonly string[]): Promise<string[]> {
     const state = await schemaState();
     if (state.unknown.length > 0) throw new NewerSchemaError(state.unknown);
     const pending = only?.filter((name) => state.pending.includes(name)) ?? state.pending;
-    if (pending.length === 0) return [];
-    if (await wasBrokenOff()) {
-      await db().migrate.forceFreeMigrationsLock();
-      await applyBrokenOff(pending[0] ?? '');
-    }
-    if (only === undefined) await db().migrate.latest();
-    else
-      for (const name of (await schemaState()).pending.filter((one) => only.includes(one)))
-        await applyOne(name);
+    await apply(pending, only);
+    if (only === undefined) await shardTables();
     return pending;
   });
+}
+
+async function apply(pending: readonly string[], only: readonly string[] | undefined): Promise<void> {
+  if (pending.length === 0) return;
+  if (await wasBrokenOff()) {
+    await db().migrate.forceFreeMigrationsLock();
+    await applyBrokenOff(pending[0] ?? '');
+  }
+  if (only === undefined) await db().migrate.latest();
+  else
+    for (const name of (await schemaState()).pending.filter((one) => only.includes(one)))
+      await applyOne(name);
 }
 
 /** Whether a run that held Knex's own mark ended without taking it away; nobody else runs, because we hold the lock. */

@@ -449,8 +449,9 @@ CREATE TABLE `dirty_marks` (
   `station_id` int(10) unsigned NOT NULL,
   `quarter_starts_at` int(10) unsigned NOT NULL COMMENT 'epoch seconds UTC, a multiple of 900',
   `marked_at` int(10) unsigned NOT NULL COMMENT 'epoch seconds UTC',
-  PRIMARY KEY (`id`),
-  KEY `dirty_marks_quarter` (`station_id`,`quarter_starts_at`)
+  PRIMARY KEY (`station_id`,`id`),
+  KEY `dirty_marks_quarter` (`station_id`,`quarter_starts_at`),
+  KEY `dirty_marks_id` (`id`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
 CREATE TABLE `disk_samples` (
@@ -1138,7 +1139,7 @@ CREATE TABLE `station_day_traces` (
   `starts_at` int(10) unsigned NOT NULL COMMENT 'beginning of a day of UTC',
   `outline` blob DEFAULT NULL COMMENT 'per minute the means of groups of thirds; NULL: waits to be made',
   `shapes` mediumblob DEFAULT NULL COMMENT 'per minute level, mean and thirds about it; NULL: waits to be made',
-  `is_waiting` tinyint(3) unsigned GENERATED ALWAYS AS (`shapes` is null) STORED,
+  `is_waiting` tinyint(3) unsigned NOT NULL DEFAULT 1 COMMENT '1: to be made; 0: made',
   PRIMARY KEY (`station_id`,`starts_at`),
   KEY `waiting` (`is_waiting`,`starts_at`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
@@ -1167,6 +1168,11 @@ CREATE TABLE `station_latest` (
   PRIMARY KEY (`station_id`),
   KEY `station_latest_received` (`received_at`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `station_locks` (
+  `station_id` int(10) unsigned NOT NULL,
+  PRIMARY KEY (`station_id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci COMMENT='a row is locked by whoever changes what is measured or computed of its station';
 
 CREATE TABLE `station_photos` (
   `id` int(10) unsigned NOT NULL AUTO_INCREMENT,

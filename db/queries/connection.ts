@@ -40,8 +40,13 @@ export function pool(): Connection {
   return db();
 }
 
+/** Locks that wait for each other; also, at COMMIT, another node of the head that was first with the same row. */
 const DEADLOCK = 1213;
 const LOCK_WAIT_TIMEOUT = 1205;
+/** A node of the head that has no majority, or is only coming. */
+const NODE_NOT_READY = 1047;
+/** A data server is gone, was gone when its connection was used last, or cannot be reached. */
+const DATA_SERVER_GONE = new Set([12701, 1429, 1430]);
 export const MOST_ATTEMPTS = 4;
 
 /**
@@ -56,16 +61,27 @@ export async function inTransaction<T>(
     try {
       return await db().transaction(work, settings);
     } catch (error) {
-      if (attempt === MOST_ATTEMPTS || !isLockConflict(error)) throw error;
+      if (attempt === MOST_ATTEMPTS || !mayBeDoneAgain(error)) throw error;
       await pauseBefore(attempt);
     }
   }
 }
 
-/** Whether an error says that a lock stood in the way, so that doing all of it again may succeed. */
+/** A commit that a data server failed may have taken effect elsewhere: what has other effects is not done a second time. */
+function mayBeDoneAgain(error: unknown): boolean {
+  const isOfCommit = /^COMMIT\b/i.test((error as { sql?: string }).sql ?? '');
+  return isLockConflict(error) || (isDataServerGone(error) && !isOfCommit);
+}
+
+/** Whether an error says that a lock or another node stood in the way: nothing was done, and doing all of it again may succeed. */
 export function isLockConflict(error: unknown): boolean {
   const errno = (error as { errno?: number }).errno;
-  return errno === DEADLOCK || errno === LOCK_WAIT_TIMEOUT;
+  return errno === DEADLOCK || errno === LOCK_WAIT_TIMEOUT || errno === NODE_NOT_READY;
+}
+
+/** Whether an error says that a data server was not reached. */
+export function isDataServerGone(error: unknown): boolean {
+  return DATA_SERVER_GONE.has((error as { errno?: number }).errno ?? 0);
 }
 
 /** Whether an error says that the connection is gone or never came to be, so that others would meet the same. */

@@ -33,8 +33,15 @@ const AWAY_CODES = new Set([
   'ER_CANT_EXECUTE_IN_READ_ONLY_TRANSACTION',
 ]);
 
-/** MariaDB's ER_CONNECTION_KILLED, which the driver has no name for. */
-const CONNECTION_KILLED = 1927;
+/** Errors that the driver has no name for, or a misleading one. */
+const AWAY_NUMBERS = new Set([
+  // The connection was killed.
+  1927,
+  // A node of the head is not ready, or lost its majority.
+  1047,
+  // A data server is gone, cannot be reached, answers strangely, or is not read from or written to.
+  12701, 1429, 1430, 1158, 1159, 1160, 1161, 2006, 2013,
+]);
 
 /** Whether an error says that the database cannot take anything now (away, full, read-only, stuck), not that the request was wrong. */
 export function isDatabaseAway(error: unknown): boolean {
@@ -42,7 +49,7 @@ export function isDatabaseAway(error: unknown): boolean {
   const { code, errno, fatal } = error as Error & { code?: string; errno?: number; fatal?: boolean };
   return (
     AWAY_CODES.has(code ?? '') ||
-    errno === CONNECTION_KILLED ||
+    AWAY_NUMBERS.has(errno ?? 0) ||
     fatal === true ||
     error.name === 'KnexTimeoutError' ||
     /Connection lost|closed state|Can't add new command|Unable to acquire a connection|aborted|No space left|error 28\b/.test(

@@ -23,7 +23,7 @@ export async function dropDayTraces(
   const rows = dayStartsSec.map((startSec) => `(${stationId}, ${startSec})`);
   await conn.raw(
     `INSERT INTO station_day_traces (station_id, starts_at) VALUES ${rows.join(', ')}
-     ON DUPLICATE KEY UPDATE outline = NULL, shapes = NULL`,
+     ON DUPLICATE KEY UPDATE outline = NULL, shapes = NULL, is_waiting = 1`,
   );
 }
 
@@ -65,7 +65,10 @@ export async function storeDayTrace(
 ): Promise<void> {
   const day = { station_id: stationId, starts_at: dayStartSec };
   if (trace === null) await conn('station_day_traces').where(day).delete();
-  else await conn('station_day_traces').where(day).update({ outline: trace.outline, shapes: trace.shapes });
+  else
+    await conn('station_day_traces')
+      .where(day)
+      .update({ outline: trace.outline, shapes: trace.shapes, is_waiting: 0 });
 }
 
 /** Days of a station that begin in `fromSec <= t < toSec` and are made or wait to be, ascending. */

@@ -12,7 +12,7 @@ export interface StationStretch {
 
 /** The statement that locks some stations, ascending, and answers their ids: only those that are free now, or after waiting for the others. */
 export function lockStationsText(ids: readonly number[], isWaiting: boolean): string {
-  return `SELECT id FROM stations FORCE INDEX (PRIMARY) WHERE id IN (${ids.join(', ')}) ORDER BY id
+  return `SELECT station_id FROM station_locks FORCE INDEX (PRIMARY) WHERE station_id IN (${ids.join(', ')}) ORDER BY station_id
     FOR UPDATE${isWaiting ? '' : ' SKIP LOCKED'}`;
 }
 

@@ -2,6 +2,7 @@ import mysql from 'mysql2';
 import { receivingPool } from '../receiving';
 import {
   insertionText,
+  isDataServerGone,
   isLockConflict,
   MOST_ATTEMPTS,
   pauseBefore,
@@ -15,7 +16,8 @@ export type Cells = unknown[][];
 
 /**
  * A transaction in two journeys: what it reads in one (begin, locks, rows), and all that it writes, with its commit, in the other.
- * Everything is durable when the promise resolves, nothing when it rejects. A lock that stands in the way starts it again.
+ * Everything is durable when the promise resolves. A lock that stands in the way starts it again, and so does a data server that was gone:
+ * what was stored nevertheless is found stored.
  * `decide` gets the rows of each of `reads` and may only write.
  */
 export async function inReceivingTransaction<T>(
@@ -26,7 +28,7 @@ export async function inReceivingTransaction<T>(
     try {
       return await attemptOnce(reads, decide);
     } catch (error) {
-      if (attempt === MOST_ATTEMPTS || !isLockConflict(error)) throw error;
+      if (attempt === MOST_ATTEMPTS || !(isLockConflict(error) || isDataServerGone(error))) throw error;
       await pauseBefore(attempt);
     }
   }

@@ -68,7 +68,16 @@ export async function findStationById(
  * computed from them, holds this lock, so that each sees the other's whole work or nothing of it.
  */
 export async function lockStation(id: number, transaction: Connection): Promise<void> {
-  await transaction.raw('SELECT id FROM stations WHERE id = ? FOR UPDATE', [id]);
+  const [rows] = (await transaction.raw(
+    'SELECT station_id FROM station_locks WHERE station_id = ? FOR UPDATE',
+    [id],
+  )) as [unknown[]];
+  if (rows.length === 0) await insertLock(id, transaction);
+}
+
+/** The lock of a station stands beside its intervals, which may be on another server than the station itself. */
+async function insertLock(id: number, conn: Connection): Promise<void> {
+  await conn.raw('INSERT IGNORE INTO station_locks (station_id) VALUES (?)', [id]);
 }
 
 /** Stations of a network by code; retired ones too. */
@@ -89,6 +98,7 @@ export type NewStation = Omit<StationRow, 'id' | 'createdAt' | 'retiredAt' | Def
 /** Adds a station and answers its id. A code that the network has already fails with MariaDB's duplicate-key error. */
 export async function insertStation(station: NewStation, conn: Connection): Promise<number> {
   const [id] = await conn('stations').insert({ ...columnsOf(station), created_at: new Date() });
+  await insertLock(Number(id), conn);
   return Number(id);
 }
 

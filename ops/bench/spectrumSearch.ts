@@ -105,8 +105,8 @@ async function measure(station: StationRow, { mostRmsDb, stations, toSec }: Meas
 async function repeatTraces({ id, networkId }: StationRow): Promise<void> {
   const copy = (toId: number, shiftSec: number) =>
     db().raw(
-      `INSERT IGNORE INTO station_day_traces (station_id, starts_at, outline, shapes)
-       SELECT ?, starts_at + ?, outline, shapes FROM station_day_traces WHERE station_id = ? AND starts_at < ?`,
+      `INSERT IGNORE INTO station_day_traces (station_id, starts_at, outline, shapes, is_waiting)
+       SELECT ?, starts_at + ?, outline, shapes, is_waiting FROM station_day_traces WHERE station_id = ? AND starts_at < ?`,
       [toId, shiftSec, id, FIRST_SEC + MONTH_SEC],
     );
   for (let month = 1; month <= MONTHS; month += 1) await copy(id, month * MONTH_SEC);

@@ -126,7 +126,7 @@ test('a lock that is held: posts of other stations go on, and the one that waits
   const other = await makeStation(networkId, `QY-${nextMinute}`);
   const otherToken = await inTransaction((transaction) => insertStationToken(other, null, transaction));
   const holder = await db().transaction();
-  await holder('stations').where({ id: stationId }).forUpdate().first();
+  await holder('station_locks').where({ station_id: stationId }).forUpdate().first();
   let isTaken = false;
   const waiting = postUntilTaken(nextBatch(1)).then(() => (isTaken = true));
   for (let round = 0; round < 3; round += 1) {

@@ -2,6 +2,8 @@ import { randomBytes } from 'node:crypto';
 import mysql from 'mysql2/promise';
 import { afterAll, beforeAll } from 'vitest';
 import { closeDb, db } from '#db/client';
+import { dropShards } from '#db/sharding/dropShards';
+import { shardTables } from '#db/sharding/shardTables';
 
 /** Gives the test file a migrated database of its own, dropped when the file is done. */
 export function useFreshSchema(): void {
@@ -11,9 +13,11 @@ export function useFreshSchema(): void {
     process.env['BITTERN_DB_NAME'] = name;
     await asOwner(`CREATE DATABASE ${name} CHARACTER SET utf8mb4 COLLATE utf8mb4_uca1400_ai_ci`);
     await db().migrate.latest();
+    await shardTables();
   });
 
   afterAll(async () => {
+    await dropShards();
     await closeDb();
     await asOwner(`DROP DATABASE IF EXISTS ${name}`);
   });

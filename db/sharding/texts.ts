@@ -1,0 +1,55 @@
+import { BUCKETS, bucketTable, type Kind } from './kinds';
+
+/** From here on a table's definition says how it is parted. */
+const PARTITIONS = /\s*\n?\s*(\/\*!\d+\s*)?\n?\s*PARTITION BY [\s\S]*$/;
+const COUNTED = / AUTO_INCREMENT=\d+/;
+const CONSTRAINT = /,\n\s*CONSTRAINT [^\n]*?(?=,?\n)/g;
+
+/** The statement that makes the table of a bucket like a table whose `SHOW CREATE TABLE` is given: with its keys and partitions, without foreign keys. */
+export function bucketTableText(created: string, kind: Kind, bucket: number): string {
+  return created
+    .replace(COUNTED, '')
+    .replace(CONSTRAINT, '')
+    .replace(/^CREATE TABLE `\w+`/, `CREATE TABLE IF NOT EXISTS \`${bucketTable(kind, bucket)}\``);
+}
+
+/**
+ * The statement that makes the table of the head which leads to all buckets of a kind.
+ * @param serverOf the name, as the head knows it, of the server that a bucket stands on.
+ */
+export function linkTableText(
+  created: string,
+  kind: Kind,
+  name: string,
+  serverOf: (bucket: number) => string,
+): string {
+  const partitions = Array.from(
+    { length: BUCKETS },
+    (_, bucket) =>
+      `PARTITION b${String(bucket).padStart(2, '0')} VALUES IN (${bucket})
+       COMMENT = 'srv "${serverOf(bucket)}", tbl "${bucketTable(kind, bucket)}"' ENGINE = SPIDER`,
+  );
+  // Ids are counted by each bucket's table.
+  const counting = /AUTO_INCREMENT/.test(created.replace(COUNTED, '')) ? ', auto_increment_mode "3"' : '';
+  const columns = created
+    .replace(PARTITIONS, '')
+    .replace(COUNTED, '')
+    .replace(CONSTRAINT, '')
+    .replace(/^CREATE TABLE `\w+`/, `CREATE TABLE \`${name}\``)
+    .replace(/ENGINE=\w+/, 'ENGINE=SPIDER')
+    .replace(/ COMMENT='(?:[^']|'')*'\s*$/, '');
+  return `${columns} COMMENT='wrapper "mysql"${counting}' PARTITION BY LIST (station_id MOD ${BUCKETS}) (${partitions.join(',\n')})`;
+}
+
+/** Whether a table's definition is one that leads to buckets. */
+export function isLinkTable(created: string): boolean {
+  return /ENGINE ?= ?SPIDER/i.test(created);
+}
+
+/** The servers of a link table's buckets, by bucket, as the head knows them. */
+export function serversOfLinkTable(created: string): string[] {
+  const servers: string[] = [];
+  for (const [, bucket, server = ''] of created.matchAll(/VALUES IN \((\d+)\)\s+COMMENT = 'srv "([^"]+)"/g))
+    servers[Number(bucket)] = server;
+  return servers;
+}
