@@ -1,5 +1,5 @@
 #!/usr/bin/env bash
-# Installs what a bare Debian 12 with Node 20 lacks. Usage: ops/requirements.sh [chromium] (mariadb-server always).
+# Installs what a bare Debian 12 with Node 20 lacks. Usage: ops/requirements.sh [chromium] [poppler-utils] [cluster] (mariadb-server always).
 set -euo pipefail
 cd "$(dirname "$0")/.."
 
@@ -14,6 +14,12 @@ command -v mariadbd >/dev/null || [ -x /usr/sbin/mariadbd ] || missing+=(mariadb
 for tool in "$@"; do
   case "$tool" in
     chromium) command -v chromium >/dev/null || missing+=(chromium) ;;
+    cluster)
+      [ -e /usr/lib/galera/libgalera_smm.so ] || missing+=(galera-4)
+      [ -e /usr/lib/mysql/plugin/ha_spider.so ] || missing+=(mariadb-plugin-spider)
+      command -v rsync >/dev/null || missing+=(rsync)
+      command -v haproxy >/dev/null || [ -x /usr/sbin/haproxy ] || missing+=(haproxy)
+      ;;
     poppler-utils) command -v pdftotext >/dev/null || missing+=(poppler-utils) ;;
     *) echo "unknown requirement: $tool" >&2; exit 2 ;;
   esac

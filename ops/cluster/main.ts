@@ -1,0 +1,80 @@
+import { existsSync, readFileSync, writeFileSync } from 'node:fs';
+import { join } from 'node:path';
+import { closeDb } from '#db/client';
+import { migrateUp } from '#db/migrateUp';
+import { ensureDatabase } from '#ops/start/ownDatabase';
+import { config } from '#lib/config/index';
+import { httpPort, layoutIn, settingsOf, type Layout } from './layout';
+import { killProcess, pidOf, startedNames } from './processes';
+import { secretsIn, startDatabases, startPrograms, stopAll } from './programs';
+import { tellStatus } from './status';
+
+const USAGE = `ops/cluster.sh COMMAND
+  up [--data 2] [--only-databases]   builds what is not there, and starts what does not run
+  heal                               starts what does not run
+  status                             what runs, and how the head's nodes stand
+  kill NAME                          ends one without warning: head1 … head3, data1 …, web1, web2, worker1, worker2, proxy
+  move BUCKET SERVER                 moves a bucket (0 … 63), or "all of data1", to another data server while all goes on
+  down                               stops everything; the data stay
+All of it stands in BITTERN_CLUSTER_DIR (.bittern-cluster); its ports begin at BITTERN_CLUSTER_PORT (4600).`;
+
+const directory = process.env['BITTERN_CLUSTER_DIR'] || '.bittern-cluster';
+const [command = '', ...given] = process.argv.slice(2);
+
+try {
+  process.exitCode = await run();
+} catch (error) {
+  console.error(error instanceof Error ? (error.stack ?? error.message) : error);
+  process.exitCode = 1;
+} finally {
+  await closeDb();
+}
+
+async function run(): Promise<number> {
+  const layout = readLayout();
+  switch (command) {
+    case 'up':
+    case 'heal':
+      await startDatabases(layout);
+      useSettings(layout);
+      await ensureDatabase(config());
+      await migrateUp();
+      if (given.includes('--only-databases')) return 0;
+      await startPrograms(layout, { BITTERN_PERSONAL_DATA_KEY: secretsIn(directory).personalDataKey });
+      console.log(`Bittern is at http://127.0.0.1:${httpPort(layout)}`);
+      return 0;
+    case 'status':
+      await tellStatus(layout);
+      return startedNames(layout).every((name) => pidOf(layout, name) !== null) ? 0 : 1;
+    case 'kill':
+      if (killProcess(layout, given[0] ?? '')) return 0;
+      console.error(`${given[0] ?? 'Nothing'} does not run.`);
+      return 1;
+    case 'down':
+      await stopAll(layout);
+      return 0;
+    default:
+      console.error(USAGE);
+      return 2;
+  }
+}
+
+/** The number of data servers is kept, and may grow: buckets are moved to new ones by hand. */
+function readLayout(): Layout {
+  const path = join(directory, 'cluster.json');
+  const kept = existsSync(path) ? (JSON.parse(readFileSync(path, 'utf8')) as { dataServers: number }) : null;
+  const at = given.indexOf('--data');
+  const dataServers = at >= 0 ? Number(given[at + 1]) : (kept?.dataServers ?? 2);
+  if (!Number.isInteger(dataServers) || dataServers < (kept?.dataServers ?? 1) || dataServers > 4)
+    throw new Error('--data: 1 to 4 data servers; no fewer than there are.');
+  const { password } = secretsIn(directory);
+  writeFileSync(path, JSON.stringify({ dataServers }));
+  const basePort = Number(process.env['BITTERN_CLUSTER_PORT'] || '4600');
+  return layoutIn(directory, { basePort, dataServers, password });
+}
+
+function useSettings(layout: Layout): void {
+  Object.assign(process.env, settingsOf(layout), {
+    BITTERN_PERSONAL_DATA_KEY: secretsIn(directory).personalDataKey,
+  });
+}
