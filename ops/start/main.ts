@@ -7,6 +7,7 @@ import { DEFAULT_DEMO_PASSWORD, DEMO_ACCOUNTS } from '#ops/demo/accounts';
 import { Child, runOnce } from './child';
 import { ensureFirstAdministrator, hasPeople } from './firstAdministrator';
 import { ensureDatabase, OwnDatabase } from './ownDatabase';
+import { pageWhileUpgrading } from './pageWhileUpgrading';
 import { takenPorts } from './ports';
 import { ensureSecrets } from './secrets';
 import { untilAnswers } from './untilAnswers';
@@ -16,6 +17,7 @@ import { WORKER_ARGUMENTS } from './workerArguments';
 const isEmpty = process.argv.includes('--empty');
 const stoppers: (() => Promise<void>)[] = [];
 let isStopping = false;
+let own: OwnDatabase | null = null;
 
 process.on('SIGINT', () => void stopAll(0));
 process.on('SIGTERM', () => void stopAll(0));
@@ -40,7 +42,10 @@ async function start(): Promise<void> {
   const taken = await takenPorts(settings);
   if (taken.length > 0) throw new SettingsError(taken);
 
-  const account = await startDatabase(settings);
+  await startDatabase(settings);
+  const endPage = await pageWhileUpgrading(settings);
+  stoppers.push(endPage);
+  const account = await migrate();
   const people = await hasPeople();
   if (isEmpty && !people) await ensureFirstAdministrator(settings.firstAdministrator);
   if (isDemo) requireSafeDemo(settings);
@@ -51,6 +56,7 @@ async function start(): Promise<void> {
   }
   await closeDb();
 
+  await endPage();
   run(settings, 'worker', [...WORKER_ARGUMENTS, 'ingest/worker.ts'], account);
   run(settings, 'web', [...WEB_ARGUMENTS, 'ops/http/server.ts'], account);
   await untilAnswers(`http://${settings.host}:${settings.port}/healthz`, 60_000);
@@ -58,14 +64,18 @@ async function start(): Promise<void> {
   tell(settings, isDemo);
 }
 
-/** @returns the settings by which web and worker reach the database; of our own by an account that may not change the audit trail. */
-async function startDatabase(settings: Config): Promise<Record<string, string>> {
-  const own = settings.database.isOwn ? new OwnDatabase(settings) : null;
-  if (own) {
-    stoppers.push(() => own.stop());
-    await own.start();
+async function startDatabase(settings: Config): Promise<void> {
+  if (settings.database.isOwn) {
+    const started = new OwnDatabase(settings);
+    own = started;
+    stoppers.push(() => started.stop());
+    await started.start();
   }
   await ensureDatabase(settings);
+}
+
+/** @returns the settings by which web and worker reach the database; of our own by an account that may not change the audit trail. */
+async function migrate(): Promise<Record<string, string>> {
   await migrateUp();
   const account = await own?.makeAppAccount().catch((error: Error) => {
     console.error(

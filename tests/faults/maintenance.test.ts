@@ -1,7 +1,13 @@
 import { createServer, type Server } from 'node:http';
+import { readFileSync } from 'node:fs';
 import type { AddressInfo } from 'node:net';
 import { afterAll, beforeAll, expect, test } from 'vitest';
+import { migrateUp } from '#db/migrateUp';
 import { behindGate, type Gate } from '#ops/http/maintenance';
+import { pageWhileUpgrading } from '#ops/start/pageWhileUpgrading';
+import { useEmptyDatabase } from './support/emptyDatabase';
+
+useEmptyDatabase();
 
 /** What the web answers while the database is brought up to date: without asking it anything. */
 const gate: Gate = { isOpen: false };
@@ -14,7 +20,7 @@ beforeAll(async () => {
   origin = `http://127.0.0.1:${(server.address() as AddressInfo).port}`;
 });
 
-afterAll(() => server.close());
+afterAll(() => void server.close());
 
 test('people get a plain page that says when to come again', async () => {
   const response = await fetch(`${origin}/n/merrow/map`, { headers: { accept: 'text/html' } });
@@ -43,4 +49,34 @@ test('the process is alive and not ready; once it is, everything passes', async 
   expect([ready.status, await ready.json()]).toMatchObject([503, { migrations: 'pending' }]);
   gate.isOpen = true;
   expect((await fetch(`${origin}/n/merrow/map`)).status).toBe(204);
+});
+
+test('while an upgrade migrates the page shows; a new database, and one that is current, have none', async () => {
+  const { port } = server.address() as AddressInfo;
+  await new Promise((closed) => server.close(closed).closeAllConnections());
+  const asks = () =>
+    fetch(`${origin}/n/merrow/map`).then(
+      ({ status }) => status,
+      () => null,
+    );
+
+  const endOfNew = await pageWhileUpgrading({ host: '127.0.0.1', port });
+  expect(await asks()).toBeNull();
+  await endOfNew();
+
+  const [{ added }] = JSON.parse(readFileSync('tests/fixtures/schemas/landed.json', 'utf8'));
+  await migrateUp(added);
+  const end = await pageWhileUpgrading({ host: '127.0.0.1', port });
+  const heard: (number | null)[] = [];
+  const migrating = migrateUp().then(() => 'done');
+  while ((await Promise.race([migrating, asks().then((status) => heard.push(status))])) !== 'done');
+  expect(heard.length).toBeGreaterThan(3);
+  expect(new Set(heard)).toEqual(new Set([503]));
+  await end();
+  expect(await asks()).toBeNull();
+
+  await (
+    await pageWhileUpgrading({ host: '127.0.0.1', port })
+  )();
+  expect(await asks()).toBeNull();
 });
