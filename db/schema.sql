@@ -459,6 +459,7 @@ CREATE TABLE `disk_samples` (
   `total_bytes` bigint(20) unsigned NOT NULL COMMENT 'of the file system that holds the data directory',
   `free_bytes` bigint(20) unsigned NOT NULL COMMENT 'that Bittern may still write',
   `database_bytes` bigint(20) unsigned NOT NULL COMMENT 'of all tables',
+  `is_low` tinyint(1) NOT NULL DEFAULT 0 COMMENT 'little room then, so that operators were told; since when is the first of those without one between that is not',
   PRIMARY KEY (`taken_at`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 

@@ -8,6 +8,8 @@ export interface DiskSample {
   freeBytes: number;
   /** Of all tables. */
   databaseBytes: number;
+  /** Little room, by the forecast of then. */
+  isLow: boolean;
 }
 
 /** Keeps how full the disk is; one of two at the same moment. */
@@ -18,6 +20,7 @@ export async function insertDiskSample(sample: DiskSample, conn: Connection = po
       total_bytes: sample.totalBytes,
       free_bytes: sample.freeBytes,
       database_bytes: sample.databaseBytes,
+      is_low: sample.isLow,
     })
     .onConflict(['taken_at'])
     .merge();
@@ -33,7 +36,19 @@ export async function diskSamplesSince(since: Date, conn: Connection = pool()): 
     totalBytes: Number(row['total_bytes']),
     freeBytes: Number(row['free_bytes']),
     databaseBytes: Number(row['database_bytes']),
+    isLow: Boolean(row['is_low']),
   }));
+}
+
+/** Since when there has been little room without a break, as of the newest sample; null where there is enough. */
+export async function lowSince(conn: Connection = pool()): Promise<Date | null> {
+  const lastEnough = conn('disk_samples').where({ is_low: false }).max('taken_at');
+  const row = await conn('disk_samples')
+    .where({ is_low: true })
+    .andWhere('taken_at', '>', conn.raw("COALESCE((?), '1000-01-01')", [lastEnough]))
+    .min<{ since: Date | null }>({ since: 'taken_at' })
+    .first();
+  return row?.since ?? null;
 }
 
 export async function deleteDiskSamplesBefore(before: Date, conn: Connection = pool()): Promise<number> {

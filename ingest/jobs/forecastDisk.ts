@@ -5,6 +5,7 @@ import {
   deleteDiskSamplesBefore,
   diskSamplesSince,
   insertDiskSample,
+  lowSince,
 } from '#db/queries/diskSamples';
 import { listNetworks } from '#db/queries/networks';
 import { operatorAddresses } from '#db/queries/calibrationSettings';
@@ -18,32 +19,52 @@ const LOOK_BACK_MS = 28 * DAY_MS;
 const KEEP_MS = 400 * DAY_MS;
 /** So little room is told of whatever the forecast says. */
 const LEAST_FREE_SHARE = 0.05;
+const STAYS_LOW = 1.25;
 const GIB = 2 ** 30;
 
-/** Notes how full the disk is, and writes to operators, at most once a week, when it will be full within the setting's days. */
+/**
+ * Notes how full the disk is, and writes to operators when it will be full within the setting's days: once when that begins, and once a week
+ * for as long as it lasts.
+ */
 export async function forecastDisk(now: Date): Promise<string> {
   // Nothing may have been kept in it yet.
   await mkdir(config().dataDir, { recursive: true });
   const { bavail, bsize, blocks } = await statfs(config().dataDir);
-  await insertDiskSample({
-    takenAt: now,
-    totalBytes: blocks * bsize,
-    freeBytes: bavail * bsize,
-    databaseBytes: await databaseBytes(),
-  });
+  const sample = { takenAt: now, totalBytes: blocks * bsize, freeBytes: bavail * bsize };
   await deleteDiskSamplesBefore(new Date(now.getTime() - KEEP_MS));
-  const forecast = diskForecast(await diskSamplesSince(new Date(now.getTime() - LOOK_BACK_MS)));
-  if (!forecast || !isLow(forecast, config().diskWarnDays)) return 'room enough';
-  const warn = ({ id }: { id: number }) => warnNetwork(id, forecast, now);
+  const [earlier, since] = await Promise.all([
+    diskSamplesSince(new Date(now.getTime() - LOOK_BACK_MS)),
+    lowSince(),
+  ]);
+  const forecast = diskForecast([...earlier, sample]);
+  const low = forecast !== null && isLow(forecast, config().diskWarnDays, since !== null);
+  await insertDiskSample({ ...sample, databaseBytes: await databaseBytes(), isLow: low });
+  if (!low) return 'room enough';
+  const warn = ({ id }: { id: number }) => warnNetwork(id, forecast, since ?? now, now);
   return `${await eachAlone('forecast-disk', await listNetworks(), networkSubject, warn, now)} warnings`;
 }
 
-/** Whether it will be full within some days, or nearly is. */
-export function isLow({ totalBytes, freeBytes, daysLeft }: DiskForecast, warnDays: number): boolean {
-  return (daysLeft !== null && daysLeft < warnDays) || freeBytes < LEAST_FREE_SHARE * totalBytes;
+/**
+ * Whether it will be full within some days, or nearly is. What was low stays so until there is a quarter more room than made it low: a disk on the
+ * edge must not be told of every hour.
+ */
+export function isLow(
+  { totalBytes, freeBytes, daysLeft }: DiskForecast,
+  warnDays: number,
+  wasLow: boolean,
+): boolean {
+  const factor = wasLow ? STAYS_LOW : 1;
+  return (
+    (daysLeft !== null && daysLeft < warnDays * factor) || freeBytes < LEAST_FREE_SHARE * factor * totalBytes
+  );
 }
 
-async function warnNetwork(networkId: number, forecast: DiskForecast, now: Date): Promise<number> {
+async function warnNetwork(
+  networkId: number,
+  forecast: DiskForecast,
+  since: Date,
+  now: Date,
+): Promise<number> {
   const recipients = await operatorAddresses(networkId);
   const { freeBytes, totalBytes, bytesADay, daysLeft } = forecast;
   const gib = (bytes: number) => `${(bytes / GIB).toFixed(1)} GiB`;
@@ -60,8 +81,13 @@ async function warnNetwork(networkId: number, forecast: DiskForecast, now: Date)
     closing:
       'You get this once a week, as an operator, until there is room. What to do: ops/guide.md, “What to watch”.',
   };
-  const week = Math.floor(now.getTime() / (7 * DAY_MS));
+  const week = Math.floor((now.getTime() - since.getTime()) / (7 * DAY_MS));
   return inTransaction((transaction) =>
-    putNotes(note, { networkId, kind: 'disk', key: `week ${week}` }, recipients, transaction),
+    putNotes(
+      note,
+      { networkId, kind: 'disk', key: `${since.toISOString()} week ${week}` },
+      recipients,
+      transaction,
+    ),
   );
 }

@@ -17,7 +17,9 @@ export interface DiskForecast {
 }
 
 /** Forecast from samples, oldest first: a straight line through what was used (least squares). Null without any. */
-export function diskForecast(samples: readonly Omit<DiskSample, 'databaseBytes'>[]): DiskForecast | null {
+export function diskForecast(
+  samples: readonly Omit<DiskSample, 'databaseBytes' | 'isLow'>[],
+): DiskForecast | null {
   const [first, last] = [samples[0], samples.at(-1)];
   if (!first || !last) return null;
   const { totalBytes, freeBytes } = last;
