@@ -1,5 +1,4 @@
 import knex, { type Knex } from 'knex';
-import { closeLocks } from './locks';
 import { closeReceiving } from './receiving';
 import { connectionSettings } from './settings';
 
@@ -15,5 +14,5 @@ export function db(): Knex {
 export async function closeDb(): Promise<void> {
   const closing = pool;
   pool = undefined;
-  await Promise.all([closing?.destroy(), closeReceiving(), closeLocks()]);
+  await Promise.all([closing?.destroy(), closeReceiving()]);
 }

@@ -782,6 +782,14 @@ CREATE TABLE `known_origins` (
   KEY `known_origins_age` (`last_at`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_bin;
 
+CREATE TABLE `leases` (
+  `name` varchar(120) NOT NULL COMMENT 'what is done by one process at a time',
+  `holder` char(36) NOT NULL COMMENT 'of a process',
+  `taken_at` int(10) unsigned NOT NULL COMMENT 'epoch seconds by the database clock',
+  `expires_at` int(10) unsigned NOT NULL COMMENT 'epoch seconds by the database clock; renewed while it is held',
+  PRIMARY KEY (`name`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
 CREATE TABLE `letter_templates` (
   `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
   `network_id` int(10) unsigned NOT NULL,
@@ -1405,6 +1413,15 @@ CREATE TABLE `webhooks` (
   `disabled_reason` varchar(300) DEFAULT NULL,
   PRIMARY KEY (`id`),
   KEY `webhooks_network` (`network_id`,`ended_at`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
+CREATE TABLE `workers` (
+  `id` char(36) NOT NULL COMMENT 'of a process; leases are held under it, too',
+  `name` varchar(120) NOT NULL COMMENT 'machine and process number',
+  `started_at` int(10) unsigned NOT NULL COMMENT 'epoch seconds by the database clock',
+  `seen_at` int(10) unsigned NOT NULL COMMENT 'epoch seconds by the database clock; refreshed while it lives',
+  `buckets` varchar(200) NOT NULL DEFAULT '' COMMENT 'of stations that it computes, with commas',
+  PRIMARY KEY (`id`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
 CREATE TRIGGER `issued_summaries_delete` BEFORE DELETE ON `issued_summaries` FOR EACH ROW

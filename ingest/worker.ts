@@ -29,15 +29,16 @@ import { watchDrifts } from './jobs/watchDrifts';
 import { warnOfHeadings } from './jobs/warnEarly';
 import { watchHealth } from './jobs/watchHealth';
 import { watchSummaries } from './jobs/watchSummaries';
+import { thisWorker } from './sharing/thisWorker';
 
 /** Done round by round, as much as there is. Aggregation rests longer: figures that are asked for meanwhile are current anyway. */
 const LOOPS: LoopSettings[] = [
-  { name: 'aggregate', everySec: 15, work: aggregate },
-  { name: 'judge-limits', everySec: 5, work: judgeLimits },
+  { name: 'aggregate', everySec: 15, work: (_, buckets) => aggregate(buckets), by: 'stations' },
+  { name: 'judge-limits', everySec: 5, work: judgeLimits, by: 'stations' },
   { name: 'import-files', everySec: 2, work: importFiles },
   { name: 'shift-clocks', everySec: 2, work: shiftClocks },
-  { name: 'trace-days', everySec: 60, work: traceDays },
-  { name: 'make-summaries', everySec: 5, work: makeSummaries, locksItself: true },
+  { name: 'trace-days', everySec: 60, work: traceDays, by: 'stations' },
+  { name: 'make-summaries', everySec: 5, work: makeSummaries, by: 'itself' },
   { name: 'compose-alerts', everySec: 10, work: composeAlerts },
   { name: 'escalate', everySec: 20, work: escalateUnacknowledged },
   { name: 'retain-intervals', everySec: 900, work: retainIntervals },
@@ -45,7 +46,7 @@ const LOOPS: LoopSettings[] = [
   { name: 'send-webhooks', everySec: 3, work: sendWebhooks },
   { name: 'warn-early', everySec: 60, work: warnOfHeadings },
   { name: 'watch-health', everySec: 60, work: watchHealth },
-  { name: 'watch-summaries', everySec: 900, work: watchSummaries, locksItself: true },
+  { name: 'watch-summaries', everySec: 900, work: watchSummaries, by: 'itself' },
 ];
 
 /** Done once a slot. The first is the worker's sign of life, which /readyz reads. */
@@ -72,6 +73,7 @@ await untilSchemaIsCurrent({
 
 await warnOfAuditGrant();
 
+await thisWorker.join();
 const stop = new AbortController();
 // Every loop that rests listens to it.
 setMaxListeners(LOOPS.length + 1, stop.signal);
@@ -79,7 +81,7 @@ const tick = schedule('* * * * *', () => runDueSlots(SLOT_JOBS, new Date()), {
   timezone: 'UTC',
   noOverlap: true,
 });
-const loops = LOOPS.map((loop) => runLoop(loop, stop.signal));
+const loops = LOOPS.map((loop) => runLoop(loop, stop.signal, thisWorker));
 void runDueSlots(SLOT_JOBS, new Date());
 log().info('worker runs');
 
@@ -92,6 +94,7 @@ async function end(signal: string): Promise<void> {
   stop.abort();
   await tick.stop();
   await Promise.all(loops);
+  await thisWorker.leave();
   await closeDb();
   process.exit(0);
 }

@@ -1,4 +1,5 @@
 import { pool, type Connection } from './connection';
+import { onlyBuckets, type Buckets } from './onlyBuckets';
 
 /** A station's day of UTC as bytes of its trace. */
 export interface PackedTrace {
@@ -40,16 +41,17 @@ export async function deleteDayTraces(stationId: number, conn: Connection): Prom
   await conn('station_day_traces').where({ station_id: stationId }).delete();
 }
 
-/** Days that wait to be made and ended before an instant, latest first, but those of some stations. */
+/** Days that wait to be made and ended before an instant, latest first, of stations of some buckets, but those of some stations. */
 export async function listWaitingDays(
   endedBeforeSec: number,
   limit: number,
-  exceptStationIds: readonly number[] = [],
+  { exceptStationIds = [], buckets = null }: { exceptStationIds?: readonly number[]; buckets?: Buckets } = {},
   conn: Connection = pool(),
 ): Promise<{ stationId: number; dayStartSec: number }[]> {
   return conn('station_day_traces')
     .where({ is_waiting: 1 })
     .whereNotIn('station_id', [...exceptStationIds])
+    .modify(onlyBuckets, buckets)
     .where('starts_at', '<=', endedBeforeSec - 86_400)
     .orderBy('starts_at', 'desc')
     .limit(limit)

@@ -1,4 +1,5 @@
 import { insertRows, pool, type Connection, type Writes } from './connection';
+import { onlyBuckets, type Buckets } from './onlyBuckets';
 import { deleteRuns, runsOf } from './runs';
 
 /** One quarter-hour of a station that must be recomputed; several marks may name the same one. */
@@ -24,14 +25,15 @@ export async function insertDirtyMarks(
   }
 }
 
-/** The oldest marks, at most `limit`, but those of some stations. */
+/** The oldest marks, at most `limit`, of stations of some buckets, but those of some stations. */
 export async function readDirtyMarks(
   limit: number,
-  exceptStationIds: readonly number[] = [],
+  { exceptStationIds = [], buckets = null }: { exceptStationIds?: readonly number[]; buckets?: Buckets } = {},
   conn: Connection = pool(),
 ): Promise<DirtyMark[]> {
   return conn('dirty_marks')
     .whereNotIn('station_id', [...exceptStationIds])
+    .modify(onlyBuckets, buckets)
     .orderBy('id')
     .limit(limit)
     .select({ id: 'id', stationId: 'station_id', quarterStartSec: 'quarter_starts_at' });

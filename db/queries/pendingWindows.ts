@@ -1,4 +1,5 @@
 import { pool, type Connection } from './connection';
+import { onlyBuckets, type Buckets } from './onlyBuckets';
 
 /** A window of a limit at a station that must be judged, once it has closed, or again. */
 export interface NewPendingWindow {
@@ -53,16 +54,18 @@ export const placeOfWindow = ({ limitId, stationId }: Pick<PendingWindow, 'limit
   `limit ${limitId} at station ${stationId}`;
 
 /**
- * Windows that ended at or before `untilSec`, the longest ended first, at most `limit`, but those of some places (`placeOfWindow`).
+ * Windows that ended at or before `untilSec`, the longest ended first, at most `limit`, of stations of some buckets, but
+ * those of some places (`placeOfWindow`).
  */
 export async function findDueWindows(
   untilSec: number,
   limit: number,
-  exceptPlaces: readonly string[] = [],
+  { exceptPlaces = [], buckets = null }: { exceptPlaces?: readonly string[]; buckets?: Buckets } = {},
   conn: Connection = pool(),
 ): Promise<PendingWindow[]> {
   const due = conn('pending_windows')
     .where('ends_at', '<=', untilSec)
+    .modify(onlyBuckets, buckets)
     .orderBy(['ends_at', 'id'])
     .limit(limit)
     .select(COLUMNS);

@@ -2,6 +2,7 @@ import { inTransaction, type Connection } from '#db/queries/connection';
 import { dropDayTraces } from '#db/queries/dayTraces';
 import { deleteDirtyMarks, readDirtyMarks, type DirtyMark } from '#db/queries/dirtyMarks';
 import { listSettings, type NetworkSettings } from '#db/queries/networks';
+import type { Buckets } from '#db/queries/onlyBuckets';
 import { findSeal } from '#db/queries/retention';
 import { findStationById, lockStation, type StationRow } from '#db/queries/stations';
 import { eachStation, restingStationIds } from '../jobs/stationsAlone';
@@ -35,18 +36,21 @@ const MOST_MARKS = 5000;
 const INTERVALS_A_CHUNK = 7 * 1440;
 
 /**
- * Recomputes what is marked, oldest marks first, at most `mostMarks` of them: each quarter-hour and the periods of day it is
- * part of wholly from intervals, in transactions of a station's date or a few. Marks are read before a transaction's reads, and
- * exactly those are deleted: what changes meanwhile has a mark of its own. Safe to run twice at once, because the second
- * finds the station locked and then recomputes the same from newer data. A station that cannot be recomputed is noted and rests; its
- * marks stay.
+ * Recomputes what is marked, oldest marks first, at most `mostMarks` of them, of stations of some buckets: each quarter-hour and the
+ * periods of day it is part of wholly from intervals, in transactions of a station's date or a few. Marks are read before a
+ * transaction's reads, and exactly those are deleted: what changes meanwhile has a mark of its own. Safe to run twice at once, because
+ * the second finds the station locked and then recomputes the same from newer data. A station that cannot be recomputed is noted and
+ * rests; its marks stay.
  */
 export async function aggregateMarks(
   onQuartersRecomputed: OnQuartersRecomputed,
-  mostMarks: number = MOST_MARKS,
+  { mostMarks = MOST_MARKS, buckets = null }: { mostMarks?: number; buckets?: Buckets } = {},
 ): Promise<AggregationRun> {
   const now = new Date();
-  const marks = await readDirtyMarks(mostMarks, await restingStationIds(JOB, now));
+  const marks = await readDirtyMarks(mostMarks, {
+    exceptStationIds: await restingStationIds(JOB, now),
+    buckets,
+  });
   const byStation = marksByStation(marks);
   const quarters = await eachStation(
     JOB,

@@ -1,6 +1,7 @@
 import type { Connection } from '#db/queries/connection';
 import { inTransaction } from '#db/queries/connection';
 import { listLimitVersions, lockLimits } from '#db/queries/limits';
+import type { Buckets } from '#db/queries/onlyBuckets';
 import { listSettings, pickSettings, type NetworkSettings } from '#db/queries/networks';
 import {
   deletePendingWindows,
@@ -41,11 +42,16 @@ export type TellChanges = (changes: TellingChange[], now: Date, transaction: Con
  * windows read are durable together or not at all. Safe to run twice at once: the locks on windows and limits let one judge a
  * window at a time, and read committed lets the next see what the one before found. Where a window cannot be judged, those of each limit and
  * station are judged by themselves, and only its own wait.
+ * @param buckets the stations whose windows are judged; by default all.
  * @returns how many windows were settled; 0 when none is due.
  */
-export async function judgeDueWindows(now: Date, tell: TellChanges): Promise<number> {
+export async function judgeDueWindows(
+  now: Date,
+  tell: TellChanges,
+  buckets: Buckets = null,
+): Promise<number> {
   const resting = await restingSubjects(JOB, now);
-  const due = await findDueWindows(closedBy(now), WINDOWS_A_TRANSACTION, resting);
+  const due = await findDueWindows(closedBy(now), WINDOWS_A_TRANSACTION, { exceptPlaces: resting, buckets });
   if (due.length === 0) return 0;
   try {
     return await judgeTogether(due, now, tell);

@@ -10,6 +10,7 @@ import { deleteOriginsBefore } from '#db/queries/knownOrigins';
 import { deleteJobTroublesBefore } from '#db/queries/jobTroubles';
 import { deleteExpiredSessions } from '#db/queries/sessions';
 import { deleteDeliveriesBefore } from '#db/queries/webhookDeliveries';
+import { deleteDeadWorkers } from '#db/queries/workers';
 import { eachAlone } from './alone';
 
 const KEEP_JOB_RUNS_MS = 14 * 86_400_000;
@@ -40,6 +41,7 @@ const REMOVALS: [what: string, remove: (now: Date) => Promise<unknown>][] = [
   ['alert tellings', (now) => deleteTellingsBefore(before(now, KEEP_ALERTS_MS))],
   ['uploads', (now) => deleteUploadsBefore(before(now, KEEP_UPLOADS_MS))],
   ['files', removeUnclaimedFiles],
+  ['dead workers', () => deleteDeadWorkers()],
   ['job troubles', (now) => deleteJobTroublesBefore(before(now, KEEP_TROUBLES_MS))],
 ];
 

@@ -1,3 +1,4 @@
+import type { Buckets } from '#db/queries/onlyBuckets';
 import { judgeDueWindows, type TellChanges } from '#ingest/detect/judge';
 import { queueWebhooks } from '#ingest/notify/queueWebhooks';
 import { tellExceedances } from '#ingest/notify/tellExceedances';
@@ -9,6 +10,6 @@ const tellEverybody: TellChanges = async (changes, now, transaction) => {
 };
 
 /** Judges windows that have closed. @returns how many. */
-export function judgeLimits(now: Date): Promise<number> {
-  return judgeDueWindows(now, tellEverybody);
+export function judgeLimits(now: Date, buckets: Buckets = null): Promise<number> {
+  return judgeDueWindows(now, tellEverybody, buckets);
 }

@@ -1,6 +1,5 @@
 import { inTransaction } from '#db/queries/connection';
 import { listNetworks, findNetworkById, type NetworkRow } from '#db/queries/networks';
-import { withNamedLock } from '#db/queries/namedLock';
 import {
   findLatestDraft,
   insertDraft,
@@ -16,6 +15,7 @@ import { removeKeptFile } from '#lib/services/files/keptFile';
 import { dueMonths } from '#lib/services/summaries/life/months';
 import { monthWork } from '#lib/services/summaries/threads/months';
 import { eachAlone, networkSubject } from '../jobs/alone';
+import { thisWorker } from '../sharing/thisWorker';
 import { issueMonth } from './issueMonth';
 
 /** Drafts the months that have closed since; of two workers at once one adds each month. @returns how many were added. */
@@ -36,7 +36,7 @@ export async function addDueDrafts(now: Date): Promise<number> {
 export async function makeWaitingMonth(now: Date): Promise<number> {
   for (const draft of await listWaitingDrafts()) {
     let isMade = false;
-    await withNamedLock(`summary:${draft.networkId}:${draft.month}`, async () => {
+    await thisWorker.leases.during(`summary:${draft.networkId}:${draft.month}`, async () => {
       const current = await findLatestDraft(draft.networkId, draft.month);
       if (!current || current.revision !== draft.revision || !isWaiting(current)) return;
       await make(current, now);

@@ -1,7 +1,6 @@
 import { appendAudit } from '#db/queries/audit';
 import { inTransaction } from '#db/queries/connection';
 import { listIssued } from '#db/queries/issuedSummaries';
-import { withNamedLock } from '#db/queries/namedLock';
 import { findNetworkById, listSettings } from '#db/queries/networks';
 import { listWatchedDrafts, updateDraft, type SummaryDraftRow } from '#db/queries/summaryDrafts';
 import { insertProposal, replaceOpenProposals } from '#db/queries/summaryProposals';
@@ -9,6 +8,7 @@ import { fingerprintOf } from '#lib/services/summaries/life/measure';
 import { monthSpan } from '#lib/services/summaries/monthSpan';
 import { monthWork } from '#lib/services/summaries/threads/months';
 import { eachAlone } from '../jobs/alone';
+import { thisWorker } from '../sharing/thisWorker';
 
 /**
  * Looks at each issued month whose grounds have changed since it was looked at last, and proposes a revision where any of its figures
@@ -18,7 +18,7 @@ export async function watchIssuedMonths(now: Date): Promise<number> {
   const watch = async (watched: SummaryDraftRow) => {
     let compared = 0;
     if (await isUnchanged(watched)) return 0;
-    await withNamedLock(`summary:${watched.networkId}:${watched.month}`, async () => {
+    await thisWorker.leases.during(`summary:${watched.networkId}:${watched.month}`, async () => {
       if (await compare(watched, now)) compared = 1;
     });
     return compared;

@@ -1,6 +1,7 @@
 import { inTransaction } from '#db/queries/connection';
 import { deleteDayTraces, listWaitingDays, storeDayTrace } from '#db/queries/dayTraces';
 import { listSettings } from '#db/queries/networks';
+import type { Buckets } from '#db/queries/onlyBuckets';
 import { findStationById, lockStation } from '#db/queries/stations';
 import { packShapes } from '#lib/acoustics/dayTrace';
 import { groupBy } from '#lib/services/groupBy';
@@ -14,13 +15,19 @@ const MOST_DAYS = 40;
 const REST_SEC = 1800;
 
 /**
- * Makes traces of ended days that wait, latest first, at most `mostDays`. Each is made with its station locked, from everything that
+ * Makes traces of ended days that wait, latest first, at most `mostDays`, of stations of some buckets. Each is made with its station locked, from everything that
  * was committed before; what changes afterwards marks quarter-hours, whose recomputation has the day wait again.
  * @returns how many days.
  */
-export async function makeTraces(now: Date, mostDays: number = MOST_DAYS): Promise<number> {
+export async function makeTraces(
+  now: Date,
+  { mostDays = MOST_DAYS, buckets = null }: { mostDays?: number; buckets?: Buckets } = {},
+): Promise<number> {
   const nowSec = Math.floor(now.getTime() / 1000);
-  const days = await listWaitingDays(nowSec - REST_SEC, mostDays, await restingStationIds(JOB, now));
+  const days = await listWaitingDays(nowSec - REST_SEC, mostDays, {
+    exceptStationIds: await restingStationIds(JOB, now),
+    buckets,
+  });
   const byStation = groupBy(days, ({ stationId }) => stationId);
   const makeDays = async (stationId: number) => {
     const ofStation = byStation.get(stationId) ?? [];

@@ -55,7 +55,10 @@ test('the same rows come of any order of arrival, of small rounds, and of two wo
     .map(({ interval }) => interval);
   for (let first = 0; first < shuffled.length; first += 900) {
     await storeMeasured(otherId, shuffled.slice(first, first + 900));
-    await Promise.all([aggregateMarks(nothing, 70), aggregateMarks(nothing, 110)]);
+    await Promise.all([
+      aggregateMarks(nothing, { mostMarks: 70 }),
+      aggregateMarks(nothing, { mostMarks: 110 }),
+    ]);
   }
   await Promise.all([aggregateAll(nothing), aggregateAll(nothing)]);
   const ofFirst = (rows: unknown[]) => rows.map((row) => ({ ...(row as object), station_id: stationId }));

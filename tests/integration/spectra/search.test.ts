@@ -96,7 +96,7 @@ test('days that wait for their traces are made from intervals; traces then answe
   expect(first.spellsFound).toBe(15);
   expect(first.pattern.words).toBe('Mostly weekdays 05:40–06:10, at Station AL-2 too.');
   expect(first.stations.map(({ days }) => days)).toEqual([DAYS, DAYS]);
-  while ((await makeTraces(MAY_MAKE, 7)) > 0);
+  while ((await makeTraces(MAY_MAKE, { mostDays: 7 })) > 0);
   const [counted] = await db()('station_day_traces').where({ is_waiting: 1 }).count({ waiting: '*' });
   expect(Number(counted?.waiting)).toBe(0);
   expect(told(await search({ likeness: '1.5' }))).toEqual(told(first));
