@@ -33,7 +33,10 @@ export function structureLayers(ink: Palette): LayerSpecification[] {
       type: 'fill',
       ...from('structures'),
       filter: ofClass('container-stack', 'reefer-stack'),
-      paint: { 'fill-color': ink.stack, 'fill-opacity': byZoom([13, 1], [15.5, 0.55]) },
+      paint: {
+        'fill-color': byClass({ 'container-stack': ink.stack }, ink.stack),
+        'fill-opacity': byZoom([13, 1], [15.5, 0.55]),
+      },
     },
     {
       id: 'containers',
@@ -152,7 +155,10 @@ export function buildingLayers(ink: Palette): LayerSpecification[] {
       ...from('structures'),
       filter: ofClass('crane', 'crane-legs'),
       minzoom: 14,
-      paint: { 'fill-color': ink.crane, 'fill-opacity': ['match', ['get', 'class'], 'crane', 0.9, 0.3] },
+      paint: {
+        'fill-color': byClass({ crane: ink.crane }, ink.crane),
+        'fill-opacity': ['match', ['get', 'class'], 'crane', 0.9, 0.3],
+      },
     },
     {
       id: 'crane-edges',
