@@ -164,7 +164,9 @@ describe('the last administrator', () => {
       expect(await refused.json()).toMatchObject({ code: 'last-administrator' });
     }
     const csv = await callApi('GET', '/admin/audit.csv?action=person.disable', { session: left.session });
-    expect((await csv.text()).split('\r\n')[0]).toBe('id,at,person,address,network,action,subject,details');
+    expect((await csv.text()).split('\r\n')[0]).toBe(
+      'id,at,person,address,network,action,subject,details,words',
+    );
     expect(await findAuditBreak()).toBeNull();
   });
 });

@@ -1,11 +1,12 @@
 import { type AuditFilter } from '#db/queries/auditLog';
+import { actInWords } from '#lib/format/auditActs';
 import { csvText } from '#lib/format/csvText';
 import { auditTrail, type Act } from './trail';
 
 /** Acts in one file at most; the newest of those asked for. */
 export const MOST_CSV_ACTS = 20_000;
 
-const HEADER = ['id', 'at', 'person', 'address', 'network', 'action', 'subject', 'details'];
+const HEADER = ['id', 'at', 'person', 'address', 'network', 'action', 'subject', 'details', 'words'];
 
 /** The acts that fit as CSV, newest first; times in UTC. */
 export async function auditCsv(filter: AuditFilter): Promise<string> {
@@ -23,5 +24,6 @@ function rowOf({ id, at, person, fromAddress, network, action, subject, details 
     action,
     subject,
     details.join('; '),
+    actInWords(action),
   ];
 }

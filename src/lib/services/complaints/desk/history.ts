@@ -1,6 +1,7 @@
 import { listAudit, type AuditRecord } from '#db/queries/auditLog';
 import { listUsers } from '#db/queries/users';
-import { ACT_WORDS, detailWords } from './actWords';
+import { actInWords } from '#lib/format/auditActs';
+import { detailWords } from './actWords';
 
 /** Something that was done to a complaint, in words without anything personal. */
 export interface HistoryEvent {
@@ -29,7 +30,7 @@ export async function historyOf(networkId: number, reference: string): Promise<H
 }
 
 function wordsOf({ action, detail }: AuditRecord): string {
-  const words = ACT_WORDS[action] ?? action;
+  const words = actInWords(action);
   const more = detailWords(detail);
   return more === '' ? words : `${words} (${more})`;
 }
