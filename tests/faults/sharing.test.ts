@@ -6,6 +6,7 @@ import { aggregate } from '#ingest/jobs/aggregate';
 import { runLoop } from '#ingest/jobs/loop';
 import { LeaseHolder } from '#ingest/sharing/leaseHolder';
 import { SharingWorker } from '#ingest/sharing/sharingWorker';
+import { workersAtWork } from '#lib/services/operation/workers';
 import { useFreshSchema } from '../integration/support/freshSchema';
 import { makeNetwork, makeStation } from '../integration/support/people';
 import { runScript } from './support/scriptProcess';
@@ -146,4 +147,8 @@ test('what a killed worker had, leases and stations, is taken over within a minu
   }
   expect(heir.leases.holds('killed')).toBe(true);
   expect(heir.buckets).toEqual(ALL);
+  expect(await workersAtWork()).toEqual([
+    expect.objectContaining({ isLiving: false, parts: 0, jobs: [] }),
+    expect.objectContaining({ isLiving: true, parts: 64, jobs: ['killed'] }),
+  ]);
 });

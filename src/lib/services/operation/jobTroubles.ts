@@ -38,14 +38,21 @@ const JOBS: Readonly<Record<string, string>> = {
   'retain-intervals': 'delete old intervals',
   'forecast-disk': 'warn of a full disk',
   housekeeping: 'tidy up',
+  'send-mail': 'send e-mail',
+  'make-partitions': 'keep tables parted by months',
 };
+
+/** A job in words; the month of a network that is being made by what it is. */
+export function jobWords(name: string): string {
+  return JOBS[name] ?? (name.startsWith('summary:') ? 'make a month' : name);
+}
 
 /** What the worker could not do, longest first; of one network, or of all (null). */
 export async function jobTroublesOf(networkId: number | null): Promise<TroubleWords[]> {
   const rows = await listJobTroubles(networkId);
   return Promise.all(
     rows.map(async ({ job, subject, failure, times, since, restsUntil }) => ({
-      job: JOBS[job] ?? job,
+      job: jobWords(job),
       subject: await withCode(subject),
       failure,
       times,
