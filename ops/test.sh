@@ -1,12 +1,12 @@
 #!/usr/bin/env bash
-# Every check, or the parts named: ops/test.sh [format] [lint] [types] [unit] [reference] [integration] [faults] [e2e]
+# Every check, or the parts named: ops/test.sh [format] [lint] [types] [unit] [reference] [integration] [faults] [cluster] [e2e]
 # Ends with a line `N passed, N failed[, N skipped]`.
 set -uo pipefail
 cd "$(dirname "$0")/.."
 export PATH="$PATH:/usr/sbin" ASTRO_TELEMETRY_DISABLED=1
 
 parts=("$@")
-[ "${#parts[@]}" -gt 0 ] || parts=(format lint types unit reference integration faults e2e)
+[ "${#parts[@]}" -gt 0 ] || parts=(format lint types unit reference integration faults cluster e2e)
 bash ops/requirements.sh chromium poppler-utils || exit 1
 
 results=tests/.output
@@ -32,6 +32,7 @@ for part in "${parts[@]}"; do
     lint) check lint npm run --silent lint ;;
     types) check types npm run --silent check ;;
     unit | reference | integration | faults) check "$part" run_tests "$part" ;;
+    cluster) check requirements bash ops/requirements.sh cluster && check "$part" run_tests "$part" ;;
     e2e) check build bash ops/build.sh && check e2e run_tests e2e ;;
     *) echo "unknown part: $part" >&2; exit 2 ;;
   esac

@@ -3,6 +3,12 @@ import { defineConfig } from 'vitest/config';
 
 const root = fileURLToPath(new URL('..', import.meta.url));
 
+/** Integration tests that also run on a cluster: all of them by `CLUSTER=whole`. */
+const onCluster =
+  process.env['CLUSTER'] === 'whole'
+    ? ['tests/integration/**/*.test.ts']
+    : ['tests/integration/ingest/together.test.ts', 'tests/integration/levels/rebuild.test.ts'];
+
 export default defineConfig({
   root,
   test: {
@@ -42,6 +48,17 @@ export default defineConfig({
           include: ['tests/faults/**/*.test.ts'],
           globalSetup: ['tests/integration/support/globalSetup.ts'],
           testTimeout: 180_000,
+          hookTimeout: 120_000,
+          fileParallelism: false,
+        },
+      },
+      {
+        extends: true,
+        test: {
+          name: 'cluster',
+          include: ['tests/cluster/**/*.test.ts', ...onCluster],
+          globalSetup: ['tests/cluster/support/globalSetup.ts'],
+          testTimeout: 120_000,
           hookTimeout: 120_000,
           fileParallelism: false,
         },

@@ -1,10 +1,13 @@
 import { existsSync, readFileSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { closeDb } from '#db/client';
+import { dataServers, type DataServer } from '#db/sharding/dataServers';
+import { BUCKETS } from '#db/sharding/kinds';
 import { migrateUp } from '#db/migrateUp';
 import { ensureDatabase } from '#ops/start/ownDatabase';
 import { config } from '#lib/config/index';
 import { httpPort, layoutIn, settingsOf, type Layout } from './layout';
+import { emptyServer, moveBucket } from './moveBucket';
 import { killProcess, pidOf, startedNames } from './processes';
 import { secretsIn, startDatabases, startPrograms, stopAll } from './programs';
 import { tellStatus } from './status';
@@ -14,7 +17,8 @@ const USAGE = `ops/cluster.sh COMMAND
   heal                               starts what does not run
   status                             what runs, and how the head's nodes stand
   kill NAME                          ends one without warning: head1 … head3, data1 …, web1, web2, worker1, worker2, proxy
-  move BUCKET SERVER                 moves a bucket (0 … 63), or "all of data1", to another data server while all goes on
+  move BUCKET SERVER                 moves a bucket (0 … 63) to another data server while all goes on
+  empty SERVER                       moves all of a data server's buckets to the others
   down                               stops everything; the data stay
 All of it stands in BITTERN_CLUSTER_DIR (.bittern-cluster); its ports begin at BITTERN_CLUSTER_PORT (4600).`;
 
@@ -50,6 +54,13 @@ async function run(): Promise<number> {
       if (killProcess(layout, given[0] ?? '')) return 0;
       console.error(`${given[0] ?? 'Nothing'} does not run.`);
       return 1;
+    case 'move':
+      useSettings(layout);
+      return move(given[0] ?? '', given[1] ?? '');
+    case 'empty':
+      useSettings(layout);
+      await emptyServer(serverNamed(given[0] ?? ''), console.log);
+      return 0;
     case 'down':
       await stopAll(layout);
       return 0;
@@ -71,6 +82,21 @@ function readLayout(): Layout {
   writeFileSync(path, JSON.stringify({ dataServers }));
   const basePort = Number(process.env['BITTERN_CLUSTER_PORT'] || '4600');
   return layoutIn(directory, { basePort, dataServers, password });
+}
+
+async function move(bucketText: string, name: string): Promise<number> {
+  const bucket = Number(bucketText);
+  if (bucketText === '' || !Number.isInteger(bucket) || bucket < 0 || bucket >= BUCKETS)
+    throw new Error(`A bucket is a number from 0 to ${BUCKETS - 1}.`);
+  const heldMs = await moveBucket(bucket, serverNamed(name));
+  console.log(`Bucket ${bucket} is on ${name}; it could only be read for ${Math.round(heldMs)} ms.`);
+  return 0;
+}
+
+function serverNamed(name: string): DataServer {
+  const server = dataServers().find((one) => one.name === name);
+  if (!server) throw new Error(`There is no data server ${name}.`);
+  return server;
 }
 
 function useSettings(layout: Layout): void {

@@ -2,6 +2,7 @@ import { randomBytes } from 'node:crypto';
 import { chmodSync, existsSync, mkdirSync, readFileSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { setTimeout as sleep } from 'node:timers/promises';
+import { createConnection } from 'mysql2/promise';
 import { untilAnswers } from '#ops/start/untilAnswers';
 import { WEB_ARGUMENTS } from '#ops/start/webArguments';
 import { WORKER_ARGUMENTS } from '#ops/start/workerArguments';
@@ -28,7 +29,6 @@ export async function startDatabases(layout: Layout): Promise<void> {
 
 /** The proxy takes nobody before it has looked at a node twice. */
 async function untilListened(port: number): Promise<void> {
-  const { createConnection } = await import('mysql2/promise');
   for (let attempts = 0; attempts < 100; attempts += 1) {
     const error = await createConnection({ host: '127.0.0.1', port, user: 'look', connectTimeout: 1_000 })
       .then((connection) => connection.end())
@@ -40,7 +40,11 @@ async function untilListened(port: number): Promise<void> {
 }
 
 /** Starts those webs and workers that do not run, and waits until the proxy leads to a web. The schema must be there. */
-export async function startPrograms(layout: Layout, settings: Record<string, string>): Promise<void> {
+export async function startPrograms(
+  layout: Layout,
+  settings: Record<string, string>,
+  webScript = 'ops/http/server.ts',
+): Promise<void> {
   const common = {
     ...settingsOf(layout),
     BITTERN_DB_MIGRATE: 'false',
@@ -49,7 +53,7 @@ export async function startPrograms(layout: Layout, settings: Record<string, str
     ...settings,
   };
   for (const number of WEBS)
-    startOnce(layout, `web${number}`, [...WEB_ARGUMENTS, 'ops/http/server.ts'], {
+    startOnce(layout, `web${number}`, [...WEB_ARGUMENTS, webScript], {
       ...common,
       BITTERN_PORT: String(webPort(layout, number)),
     });

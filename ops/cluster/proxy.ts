@@ -21,7 +21,7 @@ export function startProxy(layout: Layout): void {
 export function proxyText(layout: Layout): string {
   const nodes = HEAD_NODES.map(
     (number) =>
-      `  server head${number} 127.0.0.1:${nodePorts(layout, number).sql} check inter 1s fall 2 rise 2 on-marked-down shutdown-sessions${number === 1 ? '' : ' backup'}`,
+      `  server head${number} 127.0.0.1:${nodePorts(layout, number).sql} check inter 1s fall 3 rise 2 on-marked-down shutdown-sessions${number === 1 ? '' : ' backup'}`,
   );
   const webs = WEBS.map(
     (number) => `  server web${number} 127.0.0.1:${webPort(layout, number)} check inter 1s fall 2 rise 1`,
@@ -36,7 +36,7 @@ defaults
   timeout connect 2s
   timeout client 1h
   timeout server 1h
-  timeout check 3s
+  timeout check 5s
 
 listen head
   mode tcp
@@ -51,7 +51,8 @@ listen web
   bind 127.0.0.1:${httpPort(layout)}
   balance roundrobin
   option forwardfor
-  option httpchk GET /healthz
+  option httpchk
+  http-check send meth GET uri /healthz ver HTTP/1.1 hdr Host 127.0.0.1:${httpPort(layout)}
   option redispatch
   retries 3
   # Only what never reached a web is asked of another one.

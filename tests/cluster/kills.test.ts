@@ -1,0 +1,106 @@
+import { setTimeout as sleep } from 'node:timers/promises';
+import { afterAll, beforeAll, expect, test } from 'vitest';
+import { closeDb, db } from '#db/client';
+import { inTransaction } from '#db/queries/connection';
+import { insertStationToken } from '#db/queries/stationTokens';
+import { makeNetwork, makeStation } from '#ops/bench/support/station';
+import { httpPort } from '#ops/cluster/layout';
+import { killProcess, stopProcess } from '#ops/cluster/processes';
+import { startDatabases, startPrograms } from '#ops/cluster/programs';
+import { useFreshSchema } from '../integration/support/freshSchema';
+import { testCluster } from './support/cluster';
+import { Posting } from './support/posting';
+
+const STATIONS = 8;
+const PROGRAMS = ['web1', 'web2', 'worker1', 'worker2'];
+/** `CLUSTER=whole` kills each of each kind, and the others after it is back. */
+const VICTIMS =
+  process.env['CLUSTER'] === 'whole'
+    ? ['head1', 'head2', 'head3', 'head1', 'data1', 'data2', 'web1', 'web2', 'worker1', 'worker2', 'proxy']
+    : ['head1', 'data1', 'web1', 'worker1'];
+const DOWN_MS = 2_000;
+const RESUMED_WITHIN_MS = 60_000;
+const RECEIVER = 'ops/bench/support/soak/receiver.ts';
+
+useFreshSchema();
+const layout = testCluster();
+const stationIds = new Map<string, number>();
+
+async function startBittern(): Promise<void> {
+  await startPrograms(
+    layout,
+    {
+      BITTERN_DB_NAME: process.env['BITTERN_DB_NAME'] ?? '',
+      BITTERN_PERSONAL_DATA_KEY: process.env['BITTERN_PERSONAL_DATA_KEY'] ?? '',
+      BITTERN_LOG_LEVEL: 'warn',
+    },
+    RECEIVER,
+  );
+}
+
+beforeAll(async () => {
+  const networkId = await makeNetwork();
+  for (let at = 0; at < STATIONS; at += 1) {
+    const { id } = await makeStation(networkId, `KILL-${at}`, 60);
+    stationIds.set(await inTransaction((transaction) => insertStationToken(id, null, transaction)), id);
+  }
+  await startBittern();
+}, 120_000);
+
+afterAll(async () => {
+  for (const name of PROGRAMS) await stopProcess(layout, name);
+  await closeDb();
+}, 60_000);
+
+test('any one may die under load: nothing acknowledged is lost or doubled, and posts go on by themselves', async () => {
+  const posting = new Posting(`http://127.0.0.1:${httpPort(layout)}`, [...stationIds.keys()]);
+  const told: string[] = [];
+  try {
+    await posting.untilMore(2 * STATIONS, RESUMED_WITHIN_MS);
+    for (const victim of VICTIMS) {
+      const killedMs = performance.now();
+      expect(killProcess(layout, victim), `${victim} ran`).toBe(true);
+      await sleep(DOWN_MS);
+      // A data server has to come back; of all others there is another one.
+      if (victim.startsWith('data') || victim === 'proxy') await startDatabases(layout);
+      await posting.untilMore(3 * STATIONS, RESUMED_WITHIN_MS);
+      told.push(`${victim} ${(posting.longestGapMs(killedMs) / 1000).toFixed(1)} s`);
+      await startDatabases(layout);
+      await startBittern();
+      await posting.untilMore(STATIONS, RESUMED_WITHIN_MS);
+    }
+  } finally {
+    await posting.stop();
+  }
+  console.log(`longest time without an acknowledged post: ${told.join(', ')}`);
+  console.log(`other answers: ${JSON.stringify([...posting.otherwise])}`);
+  // Our own connections were cut off, too.
+  await closeDb();
+  await untilComputed();
+  for (const [token, starts] of posting.acknowledged) {
+    const stationId = stationIds.get(token) ?? NaN;
+    const stored: number[] = await db()('interval_levels')
+      .where({ station_id: stationId })
+      .orderBy('starts_at')
+      .pluck('starts_at');
+    expect(new Set(stored).size, 'none is there twice').toBe(stored.length);
+    expect(
+      starts.filter((startSec) => !stored.includes(startSec)),
+      'acknowledged and lost',
+    ).toEqual([]);
+    const [sums] = (await db()('quarter_hours')
+      .where({ station_id: stationId })
+      .sum({ validSec: 'valid_sec' })) as [{ validSec: string }];
+    expect(Number(sums.validSec), 'what was stored was computed').toBe(60 * stored.length);
+  }
+}, 600_000);
+
+/** Waits until no mark is left. */
+async function untilComputed(): Promise<void> {
+  for (let attempts = 0; attempts < 300; attempts += 1) {
+    const marked = await db()('dirty_marks').first('id');
+    if (marked === undefined) return;
+    await sleep(200);
+  }
+  throw new Error('Marks are left.');
+}
