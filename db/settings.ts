@@ -1,5 +1,6 @@
 import type { Knex } from 'knex';
 import { config } from '#lib/config/index';
+import { tlsOf } from './tls';
 
 /**
  * Knex settings for MariaDB: UTC both ways, strict mode (a value out of range is an error, never clamped), affected
@@ -20,6 +21,7 @@ export function connectionSettings(): Knex.Config {
       supportBigNumbers: true,
       connectTimeout: 5_000,
       flags: ['-FOUND_ROWS'],
+      ...tlsOf(database),
     },
     pool: { min: 0, max: database.poolMax, afterCreate: setSessionModes },
     acquireConnectionTimeout: 5_000,

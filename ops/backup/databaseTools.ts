@@ -29,10 +29,11 @@ export function startLoad({ database }: Config): Tool {
 }
 
 function startClient(command: string, database: Config['database'], args: string[]): Tool {
-  const { host, port, user, password } = database;
+  const { host, port, user, password, tlsCaFile } = database;
   const reached = ['--no-defaults', '--protocol=tcp', `--host=${host}`, `--port=${port}`, `--user=${user}`];
+  const protectedBy = tlsCaFile === null ? [] : [`--ssl-ca=${tlsCaFile}`, '--ssl-verify-server-cert'];
   // The environment of a process is its owner's alone; its arguments are everybody's.
-  return startTool(command, [...reached, '--default-character-set=utf8mb4', ...args], {
+  return startTool(command, [...reached, ...protectedBy, '--default-character-set=utf8mb4', ...args], {
     environment: { MYSQL_PWD: password },
   });
 }

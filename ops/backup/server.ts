@@ -1,11 +1,12 @@
 import mysql, { type Connection, type RowDataPacket } from 'mysql2/promise';
+import { tlsOf } from '#db/tls';
 import type { Config } from '#lib/config/config';
 import { Ending, EXIT } from './ending';
 
 /** A connection that asks about the server and the database as they are. The caller ends it. */
 export function connect({ database }: Config): Promise<Connection> {
   const { host, port, user, password, name } = database;
-  return mysql.createConnection({ host, port, user, password, database: name });
+  return mysql.createConnection({ host, port, user, password, database: name, ...tlsOf(database) });
 }
 
 /** The first value of the first row of a statement's result. */

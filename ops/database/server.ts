@@ -12,6 +12,8 @@ export interface DatabasePlace {
   user: string;
   password: string;
   bufferPoolMiB: number;
+  /** Further options of the server, such as for a binary log. */
+  options?: readonly string[];
 }
 
 export interface DatabaseServer {
@@ -59,7 +61,7 @@ function installSystemTables(directory: string, dataDirectory: string): void {
 function spawnServer(
   directory: string,
   dataDirectory: string,
-  { port, bufferPoolMiB }: DatabasePlace,
+  { port, bufferPoolMiB, options = [] }: DatabasePlace,
 ): ChildProcess {
   const log = openSync(join(directory, 'error.log'), 'a');
   return spawn(
@@ -86,6 +88,7 @@ function spawnServer(
       `--slow-query-log-file=${join(directory, 'slow.log')}`,
       '--long-query-time=2',
       '--log-slow-verbosity=query_plan',
+      ...options,
     ],
     { stdio: ['ignore', log, log], detached: true },
   );

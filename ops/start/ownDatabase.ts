@@ -1,6 +1,7 @@
 import { join, resolve } from 'node:path';
 import mysql from 'mysql2/promise';
 import type { Config } from '#lib/config/config';
+import { tlsOf } from '#db/tls';
 import { makeAppAccount } from '#ops/database/appAccount';
 import { startDatabase, type DatabaseServer } from '#ops/database/server';
 
@@ -56,7 +57,7 @@ export class OwnDatabase {
 /** Makes the database itself where it is missing; the tables come from the migrations. */
 export async function ensureDatabase({ database }: Config): Promise<void> {
   const { host, port, user, password, name } = database;
-  const connection = await mysql.createConnection({ host, port, user, password });
+  const connection = await mysql.createConnection({ host, port, user, password, ...tlsOf(database) });
   await connection.query(
     `CREATE DATABASE IF NOT EXISTS \`${name}\` CHARACTER SET utf8mb4 COLLATE utf8mb4_uca1400_ai_ci`,
   );

@@ -32,6 +32,8 @@ export interface Config {
     password: string;
     name: string;
     poolMax: number;
+    /** A file of the certificates that vouch for the database's; null: it is reached without TLS. */
+    tlsCaFile: string | null;
     /** Servers that the high-volume tables are shared out to; none: they are local. */
     dataServers: { name: string; host: string; port: number }[];
     /** The account on them, of the head and of migrations. */
@@ -123,6 +125,7 @@ export function parseConfig(environment: Record<string, string | undefined>): Co
       password: settings.BITTERN_DB_PASSWORD,
       name: settings.BITTERN_DB_NAME,
       poolMax: settings.BITTERN_DB_POOL_MAX,
+      tlsCaFile: settings.BITTERN_DB_TLS_CA ?? null,
       dataServers: settings.BITTERN_DATA_SERVERS,
       dataUser: settings.BITTERN_DATA_USER ?? settings.BITTERN_DB_USER,
       dataPassword: settings.BITTERN_DATA_PASSWORD ?? settings.BITTERN_DB_PASSWORD,

@@ -80,6 +80,7 @@ export const settingsSchema = z.object({
   BITTERN_DB_OWN: isTrue('true'),
   BITTERN_DB_HOST: z.string().default('127.0.0.1'),
   BITTERN_DB_PORT: port(4330),
+  BITTERN_DB_TLS_CA: z.string().optional(),
   BITTERN_DB_USER: z.string().default('bittern'),
   BITTERN_DB_PASSWORD: z.string({ error: 'is required' }).min(1),
   BITTERN_DB_NAME: z
