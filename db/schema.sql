@@ -691,7 +691,9 @@ CREATE TABLE `interval_levels` (
   `import_id` int(10) unsigned DEFAULT NULL,
   `received_at` int(10) unsigned NOT NULL COMMENT 'epoch seconds UTC',
   PRIMARY KEY (`station_id`,`starts_at`)
-) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci
+ PARTITION BY RANGE (`starts_at`)
+(PARTITION `p_open` VALUES LESS THAN MAXVALUE);
 
 CREATE TABLE `interval_retention` (
   `network_id` int(10) unsigned NOT NULL,
@@ -1073,7 +1075,9 @@ CREATE TABLE `quarter_hours` (
   `late_sec` smallint(5) unsigned NOT NULL DEFAULT 0 COMMENT 'seconds whose intervals arrived more than an hour after they ended',
   `computed_at` datetime(3) NOT NULL,
   PRIMARY KEY (`station_id`,`starts_at`)
-) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci
+ PARTITION BY RANGE (`starts_at`)
+(PARTITION `p_open` VALUES LESS THAN MAXVALUE);
 
 CREATE TABLE `report_attempts` (
   `id` int(10) unsigned NOT NULL AUTO_INCREMENT,

@@ -2,6 +2,9 @@ import type { Knex } from 'knex';
 
 /** Knex's own tables say nothing about the product. */
 const BOOKKEEPING = /^schema_migrations/;
+/** Which months have a partition is no part of the schema. */
+const PARTITIONS = /(PARTITION BY RANGE[^\n]*\n)\s*\([\s\S]*\)$/;
+const OPEN_ONLY = '$1(PARTITION `p_open` VALUES LESS THAN MAXVALUE)';
 
 /** The statements that would make the tables and triggers of a migrated database as they are now, by name. */
 export async function schemaText(conn: Knex): Promise<string> {
@@ -11,7 +14,7 @@ export async function schemaText(conn: Knex): Promise<string> {
   for (const name of names.sort()) {
     const [[row]] = (await conn.raw('SHOW CREATE TABLE ??', [name])) as [Record<string, string>[]];
     const statement = row?.['Create Table'] ?? row?.['Create View'] ?? '';
-    statements.push(`${statement.replace(/ AUTO_INCREMENT=\d+/, '')};\n`);
+    statements.push(`${statement.replace(/ AUTO_INCREMENT=\d+/, '').replace(PARTITIONS, OPEN_ONLY)};\n`);
   }
   return [...statements, ...(await triggerStatements(conn))].join('\n');
 }

@@ -16,6 +16,7 @@ import { judgeLimits } from './jobs/judgeLimits';
 import { keepComplaints } from './jobs/keepComplaints';
 import { runLoop, type LoopSettings } from './jobs/loop';
 import { mailAuditHead } from './jobs/mailAuditHead';
+import { makePartitions } from './jobs/makePartitions';
 import { makeSummaries } from './jobs/makeSummaries';
 import { remindOfCalibrations } from './jobs/remindCalibrations';
 import { remindOfComplaints } from './jobs/remindComplaints';
@@ -53,6 +54,7 @@ const LOOPS: LoopSettings[] = [
 const SLOT_JOBS: SlotJob[] = [
   { name: 'tick', slotMinutes: 1, run: async () => 'alive' },
   { name: 'complete-periods', slotMinutes: 15, run: completeEndedPeriods },
+  { name: 'make-partitions', slotMinutes: 60, run: makePartitions },
   { name: 'housekeeping', slotMinutes: 60, run: housekeeping },
   { name: 'forecast-disk', slotMinutes: 60, run: forecastDisk },
   { name: 'watch-drifts', slotMinutes: 24 * 60, run: watchDrifts },

@@ -16,6 +16,7 @@ import { periodsTouching } from '#lib/services/levels/datePeriods';
 import { forgetKept } from '#lib/services/retention/kept';
 import { eachAlone, networkSubject } from '../jobs/alone';
 import { eachStation } from '../jobs/stationsAlone';
+import { dropPassedMonths } from './dropMonths';
 
 const JOB = 'retain-intervals';
 const DAY_SEC = 86_400;
@@ -27,12 +28,14 @@ const ROWS_A_TRANSACTION = 5000;
 
 /**
  * Where a network does not keep single intervals for good: seals whole months that are older, once everything of them is computed,
- * and deletes their intervals a while later, a bounded number at a time. Safe to run twice, late, or on two machines.
+ * and deletes their intervals a while later: partitions that nobody keeps anything of as they are, else a bounded number of rows at a time. Safe to run twice, late, or on two machines.
  * @returns how many rows were deleted.
  */
 export async function retainIntervals(now: Date): Promise<number> {
   await eachAlone(JOB, await listNetworks(), networkSubject, (network) => sealNetwork(network, now), now);
-  const sealed = await listSealedBefore(new Date(now.getTime() - PAUSE_MS));
+  const sealedBy = new Date(now.getTime() - PAUSE_MS);
+  await dropPassedMonths(sealedBy);
+  const sealed = await listSealedBefore(sealedBy);
   const keptFrom = new Map(sealed.map(({ stationId, keptFromSec }) => [stationId, keptFromSec]));
   const remove = (stationId: number) =>
     deleteIntervalsBefore(stationId, keptFrom.get(stationId) ?? 0, ROWS_A_TRANSACTION);

@@ -5,6 +5,8 @@ import type { Connection } from 'mysql2/promise';
 export const INSERT_ONLY = ['audit_log', 'issued_summaries', 'issued_summary_files'];
 /** One row that names the trail's last act: moved on, never removed. */
 const MOVED_ON = ['audit_head'];
+/** Partitions of them are made as months come and dropped as they go, by the worker. */
+const PARTED = ['interval_levels', 'quarter_hours'];
 /** What was migrated is the owner's to say. */
 const READ_ONLY = ['schema_migrations', 'schema_migrations_lock'];
 
@@ -31,6 +33,7 @@ function rightsOn(table: string): string {
   if (INSERT_ONLY.includes(table)) return 'SELECT, INSERT';
   if (MOVED_ON.includes(table)) return 'SELECT, UPDATE';
   if (READ_ONLY.includes(table)) return 'SELECT';
+  if (PARTED.includes(table)) return 'SELECT, INSERT, UPDATE, DELETE, ALTER, DROP';
   return 'SELECT, INSERT, UPDATE, DELETE';
 }
 
