@@ -91,6 +91,7 @@ export const AUDIT_ACTS: Readonly<Record<string, string>> = {
   'person.password-by-link': 'Password chosen by a link',
   'person.password-link': 'Link for a new password sent',
   'person.password-reset': 'Password handed over',
+  'personal-data-key.exchange': 'Key of personal data exchanged',
   'photo.add': 'Photo added',
   'photo.delete': 'Photo deleted',
   'plant.add': 'Plant added',

@@ -1,9 +1,9 @@
 import { createHmac, timingSafeEqual } from 'node:crypto';
 import { config } from '#lib/config/index';
 
-/** HMAC-SHA-256 of a text. The settings' key signs nothing itself: each purpose has a key of its own, derived from it. */
-export function purposeMac(purpose: string, text: string): Buffer {
-  const key = createHmac('sha256', config().personalDataKey).update(purpose).digest();
+/** HMAC-SHA-256 of a text. The settings' key signs nothing itself: each purpose has a key of its own, derived from it (or, where it is exchanged, from `root`). */
+export function purposeMac(purpose: string, text: string, root: Buffer = config().personalDataKey): Buffer {
+  const key = createHmac('sha256', root).update(purpose).digest();
   return createHmac('sha256', key).update(text).digest();
 }
 

@@ -17,7 +17,7 @@ const COMPOSED: Record<string, readonly string[]> = {
 const NOT_COMPOSED = new Set(['exceedance.${kind}']);
 
 function sources(): string[] {
-  return ['src', 'db/queries', 'ingest', 'ops/start', 'ops/demo'].flatMap((folder) =>
+  return ['src', 'db/queries', 'ingest', 'ops/start', 'ops/demo', 'ops/keys'].flatMap((folder) =>
     readdirSync(folder, { recursive: true, encoding: 'utf8' })
       .filter((name) => name.endsWith('.ts') && !name.endsWith('auditActs.ts'))
       .map((name) => readFileSync(`${folder}/${name}`, 'utf8')),

@@ -70,6 +70,21 @@ export function openFile(
   return open(unwrap(wrappedKey, complaintId), complaintId, purpose, sealed);
 }
 
+/** A complaint's key, wrapped by an earlier key of the settings, wrapped by theirs. @throws {PersonalDataUnreadable} where the earlier key is another one. */
+export function rewrapKey(wrappedKey: Buffer, complaintId: number, before: Buffer): Buffer {
+  return seal(config().personalDataKey, complaintId, 'key', open(before, complaintId, 'key', wrappedKey));
+}
+
+/** Whether the settings' key opens a complaint's wrapped key. */
+export function opensKey(wrappedKey: Buffer, complaintId: number): boolean {
+  try {
+    unwrap(wrappedKey, complaintId);
+    return true;
+  } catch {
+    return false;
+  }
+}
+
 function unwrap(wrappedKey: Buffer, complaintId: number): Buffer {
   return open(config().personalDataKey, complaintId, 'key', wrappedKey);
 }

@@ -104,7 +104,8 @@ export function endFactor(owner: Owner, byUserId: string): Promise<boolean> {
   });
 }
 
-const placeOf = (userId: string) => `person ${userId} second-factor 1`;
+/** What is authenticated with a person's sealed secret. */
+export const placeOf = (userId: string) => `person ${userId} second-factor 1`;
 
 /** Null where it does not open: the setting that seals it is another one now. */
 function openSecret(userId: string, sealed: Buffer): Buffer | null {

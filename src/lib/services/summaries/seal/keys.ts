@@ -19,6 +19,7 @@ import {
   type SummaryKeyRow,
 } from '#db/queries/summaryKeys';
 import { type SummaryKey } from '#lib/contracts/summaryVerification';
+import { config } from '#lib/config/index';
 import { purposeMac } from '../../purposeMac';
 
 const NONCE_BYTES = 12;
@@ -86,7 +87,7 @@ async function addKey(networkId: number, userId: string | null, transaction: Con
   const publicSpki = publicKey.export({ type: 'spki', format: 'der' });
   const sha256 = createHash('sha256').update(publicSpki).digest();
   const plain = privateKey.export({ type: 'pkcs8', format: 'der' });
-  const key = { networkId, publicSpki, sha256, wrappedPrivate: wrap(networkId, plain) };
+  const key = { networkId, publicSpki, sha256, wrappedPrivate: wrapPrivate(networkId, plain) };
   await insertSummaryKey(key, userId, transaction);
   await appendAudit(
     {
@@ -103,25 +104,31 @@ async function addKey(networkId: number, userId: string | null, transaction: Con
 const publicKeyOf = (spki: Buffer) => createPublicKey({ key: spki, type: 'spki', format: 'der' });
 
 function privateKeyOf({ networkId, wrappedPrivate }: SummaryKeyRow): KeyObject {
-  const nonce = wrappedPrivate.subarray(0, NONCE_BYTES);
-  const decipher = createDecipheriv('aes-256-gcm', wrappingKey(networkId), nonce, {
-    authTagLength: TAG_BYTES,
-  });
-  decipher.setAuthTag(wrappedPrivate.subarray(NONCE_BYTES, NONCE_BYTES + TAG_BYTES));
   try {
-    const sealed = wrappedPrivate.subarray(NONCE_BYTES + TAG_BYTES);
-    const der = Buffer.concat([decipher.update(sealed), decipher.final()]);
+    const der = unwrapPrivate(networkId, wrappedPrivate, config().personalDataKey);
     return createPrivateKey({ key: der, type: 'pkcs8', format: 'der' });
   } catch (error) {
     throw new SigningKeyUnreadable(networkId, error);
   }
 }
 
-function wrap(networkId: number, plain: Buffer): Buffer {
+/** The private key that was wrapped under a key of the settings. @throws {Error} where that was another one. */
+export function unwrapPrivate(networkId: number, wrappedPrivate: Buffer, root: Buffer): Buffer {
+  const nonce = wrappedPrivate.subarray(0, NONCE_BYTES);
+  const decipher = createDecipheriv('aes-256-gcm', wrappingKey(networkId, root), nonce, {
+    authTagLength: TAG_BYTES,
+  });
+  decipher.setAuthTag(wrappedPrivate.subarray(NONCE_BYTES, NONCE_BYTES + TAG_BYTES));
+  return Buffer.concat([decipher.update(wrappedPrivate.subarray(NONCE_BYTES + TAG_BYTES)), decipher.final()]);
+}
+
+/** Wraps a private key under the settings' key. */
+export function wrapPrivate(networkId: number, plain: Buffer): Buffer {
   const nonce = randomBytes(NONCE_BYTES);
-  const cipher = createCipheriv('aes-256-gcm', wrappingKey(networkId), nonce);
+  const cipher = createCipheriv('aes-256-gcm', wrappingKey(networkId, config().personalDataKey), nonce);
   const sealed = Buffer.concat([cipher.update(plain), cipher.final()]);
   return Buffer.concat([nonce, cipher.getAuthTag(), sealed]);
 }
 
-const wrappingKey = (networkId: number) => purposeMac('summary signing key', String(networkId));
+const wrappingKey = (networkId: number, root: Buffer) =>
+  purposeMac('summary signing key', String(networkId), root);
