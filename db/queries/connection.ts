@@ -1,3 +1,4 @@
+import { AsyncLocalStorage } from 'node:async_hooks';
 import type { Knex } from 'knex';
 import { db } from '../client';
 
@@ -35,9 +36,16 @@ export function insertionText({ head, rows, tail = '' }: Insertion): string {
 
 export type Binding = string | number | Date | Buffer | null;
 
-/** The pool itself, the default of every query's last parameter. */
+const reading = new AsyncLocalStorage<Knex>();
+
+/** The pool itself, the default of every query's last parameter; within `readingFrom` that of the replica. */
 export function pool(): Connection {
-  return db();
+  return reading.getStore() ?? db();
+}
+
+/** Runs `work`, which only reads, with another pool in place of ours. Transactions stay where they are. */
+export function readingFrom<T>(other: Knex, work: () => Promise<T>): Promise<T> {
+  return reading.run(other, work);
 }
 
 /** Locks that wait for each other; also, at COMMIT, another node of the head that was first with the same row. */
@@ -47,6 +55,8 @@ const LOCK_WAIT_TIMEOUT = 1205;
 const NODE_NOT_READY = 1047;
 /** A data server is gone, was gone when its connection was used last, or cannot be reached. */
 const DATA_SERVER_GONE = new Set([12701, 1429, 1430]);
+const NO_SUCH_TABLE = 1146;
+const BUCKET_IS_NOT_THERE = /_\d\d' doesn't exist/;
 export const MOST_ATTEMPTS = 4;
 
 /**
@@ -79,9 +89,10 @@ export function isLockConflict(error: unknown): boolean {
   return errno === DEADLOCK || errno === LOCK_WAIT_TIMEOUT || errno === NODE_NOT_READY;
 }
 
-/** Whether an error says that a data server was not reached. */
+/** Whether an error says that a data server was not reached, or that a bucket has just moved to another. */
 export function isDataServerGone(error: unknown): boolean {
-  return DATA_SERVER_GONE.has((error as { errno?: number }).errno ?? 0);
+  const { errno = 0, message = '' } = error as { errno?: number; message?: string };
+  return DATA_SERVER_GONE.has(errno) || (errno === NO_SUCH_TABLE && BUCKET_IS_NOT_THERE.test(message));
 }
 
 /** Whether an error says that the connection is gone or never came to be, so that others would meet the same. */

@@ -1,3 +1,5 @@
+import { isDataServerGone } from './connection';
+
 const AWAY_CODES = new Set([
   // Not reached, or gone.
   'ECONNREFUSED',
@@ -39,8 +41,8 @@ const AWAY_NUMBERS = new Set([
   1927,
   // A node of the head is not ready, or lost its majority.
   1047,
-  // A data server is gone, cannot be reached, answers strangely, or is not read from or written to.
-  12701, 1429, 1430, 1158, 1159, 1160, 1161, 2006, 2013,
+  // The connection to a data server broke.
+  1158, 1159, 1160, 1161, 2006, 2013,
 ]);
 
 /** Whether an error says that the database cannot take anything now (away, full, read-only, stuck), not that the request was wrong. */
@@ -50,6 +52,7 @@ export function isDatabaseAway(error: unknown): boolean {
   return (
     AWAY_CODES.has(code ?? '') ||
     AWAY_NUMBERS.has(errno ?? 0) ||
+    isDataServerGone(error) ||
     fatal === true ||
     error.name === 'KnexTimeoutError' ||
     /Connection lost|closed state|Can't add new command|Unable to acquire a connection|aborted|No space left|error 28\b/.test(

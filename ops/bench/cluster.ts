@@ -7,6 +7,7 @@ import { listSettings } from '#db/queries/networks';
 import { connectTo, dataServers } from '#db/sharding/dataServers';
 import { dropShards } from '#db/sharding/dropShards';
 import { bucketOf, bucketTable } from '#db/sharding/kinds';
+import type { StationRow } from '#db/queries/stations';
 import { shardTables } from '#db/sharding/shardTables';
 import { connectionSettings } from '#db/settings';
 import { currentSums } from '#lib/services/levels/currentSums';
@@ -82,7 +83,7 @@ async function monthOfFigures(networkId: number): Promise<number> {
 }
 
 async function ingest(networkId: number) {
-  const stations = [];
+  const stations: StationRow[] = [];
   for (let at = 0; at < SENDERS; at += 1) stations.push(await makeStation(networkId, `POSTED-${at}`, 60));
   const connections = await Promise.all(
     stations.map(() => mysql.createConnection(connectionSettings().connection as mysql.ConnectionOptions)),

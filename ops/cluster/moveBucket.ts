@@ -1,4 +1,3 @@
-import { setTimeout as sleep } from 'node:timers/promises';
 import type { Connection, RowDataPacket } from 'mysql2/promise';
 import { db } from '#db/client';
 import { connectTo, dataServers, linkName, type DataServer } from '#db/sharding/dataServers';
@@ -7,14 +6,14 @@ import { linkServers } from '#db/sharding/linkServers';
 import { definitionOf } from '#db/sharding/shardTables';
 import { bucketTableText, linkTableText, serversOfLinkTable } from '#db/sharding/texts';
 import { copyPart } from './copyPart';
-import { beginQueue, dropBucketText, nextParts, partDone } from './moveQueue';
+import { beginQueue, dropBucketText, holdText, nextParts, partDone } from './moveQueue';
+import { isOutOfReach, putOutOfReach } from './outOfReach';
 
 const PARTS_AT_ONCE = 50;
 /** So few parts are copied while the bucket is held. */
 const FEW_PARTS = 20;
 /** Times that all but a few are copied before it is held anyway. */
 const MOST_ROUNDS = 200;
-const WAITERS_EVERY_MS = 200;
 
 /** The server of each bucket, as the head has it. */
 export async function placesOfBuckets(): Promise<DataServer[]> {
@@ -28,9 +27,9 @@ export async function placesOfBuckets(): Promise<DataServer[]> {
 
 /**
  * Moves a bucket to another server while it is used. Rows are copied part by part; what changes is noted by triggers and copied again. For the last of
- * it the bucket can only be read, until the head leads to the new server; posts wait, or are asked to come again. The old copy goes when every part
- * was compared. Broken off, it goes on where it was when called again.
- * @returns for how long it could only be read, in milliseconds.
+ * it the bucket is held; posts wait, or are asked to come again. The old tables are put out of reach before the head leads to the new ones, and dropped
+ * afterwards. Every part was compared by then. Broken off, it goes on where it was when called again.
+ * @returns for how long it was held, in milliseconds.
  */
 export async function moveBucket(bucket: number, to: DataServer): Promise<number> {
   const from = (await placesOfBuckets())[bucket];
@@ -43,6 +42,12 @@ export async function moveBucket(bucket: number, to: DataServer): Promise<number
   const source = await connectTo(from);
   const target = await connectTo(to, { isDatabaseThere: false });
   try {
+    const startedMs = performance.now();
+    if (await isOutOfReach(source, bucket)) {
+      await leadTo(bucket, to);
+      await source.query(dropBucketText(bucket));
+      return performance.now() - startedMs;
+    }
     await prepareTarget(source, target, bucket);
     await beginQueue(source, bucket);
     for (let round = 0; round < MOST_ROUNDS; round += 1) {
@@ -50,7 +55,7 @@ export async function moveBucket(bucket: number, to: DataServer): Promise<number
       await copyParts(source, target, bucket, parts);
       if (parts.length <= FEW_PARTS) break;
     }
-    return await switchOver({ source, target, bucket, from, to });
+    return await switchOver(source, target, bucket, to);
   } finally {
     await Promise.all([source.end(), target.end()]);
   }
@@ -79,39 +84,27 @@ async function copyParts(
     if (await copyPart(source, target, bucket, part)) await partDone(source, bucket, part);
 }
 
-interface Switch {
-  source: Connection;
-  target: Connection;
-  bucket: number;
-  from: DataServer;
-  to: DataServer;
-}
-
-/** Holds the bucket, copies the rest, leads the head to the new server, and drops the old copy. */
-async function switchOver({ source, target, bucket, from, to }: Switch): Promise<number> {
-  const holder = await connectTo(from);
+/** Holds the bucket, copies the rest, puts the old tables out of reach, leads the head to the new server, and drops them. */
+async function switchOver(
+  source: Connection,
+  target: Connection,
+  bucket: number,
+  to: DataServer,
+): Promise<number> {
   const startedMs = performance.now();
-  let sendingAway = true;
-  try {
-    const tables = KINDS.map((kind) => `${bucketTable(kind, bucket)} READ`);
-    await holder.query(`LOCK TABLES ${tables.join(', ')}`);
-    for (;;) {
-      const parts = await nextParts(source, bucket, PARTS_AT_ONCE);
-      if (parts.length === 0) break;
-      await copyParts(source, target, bucket, parts);
-    }
-    await takeCountersAlong(source, target, bucket);
-    const away = sendWaitersAway(source, () => sendingAway);
-    await leadTo(bucket, to).finally(() => (sendingAway = false));
-    await away;
-    const heldMs = performance.now() - startedMs;
-    await holder.query('UNLOCK TABLES');
-    await source.query(dropBucketText(bucket));
-    return heldMs;
-  } finally {
-    sendingAway = false;
-    holder.destroy();
+  await source.query(holdText(bucket));
+  for (;;) {
+    const parts = await nextParts(source, bucket, PARTS_AT_ONCE);
+    if (parts.length === 0) break;
+    await copyParts(source, target, bucket, parts);
   }
+  await takeCountersAlong(source, target, bucket);
+  await putOutOfReach(source, bucket);
+  await source.query('UNLOCK TABLES');
+  await leadTo(bucket, to);
+  const heldMs = performance.now() - startedMs;
+  await source.query(dropBucketText(bucket));
+  return heldMs;
 }
 
 /** Ids go on where they were, so that none that somebody has read comes a second time. */
@@ -120,17 +113,6 @@ async function takeCountersAlong(source: Connection, target: Connection, bucket:
   const [[row]] = await source.query<RowDataPacket[]>(`SHOW CREATE TABLE ${table}`);
   const next = / AUTO_INCREMENT=(\d+)/.exec(String(row?.['Create Table']))?.[1];
   if (next !== undefined) await target.query(`ALTER TABLE ${table} AUTO_INCREMENT = ${next}`);
-}
-
-/** Whoever waits to write at the old server has the head's tables in use, which cannot be renamed meanwhile: they are told to come again. */
-async function sendWaitersAway(source: Connection, isGoingOn: () => boolean): Promise<void> {
-  while (isGoingOn()) {
-    const [waiting] = await source.query<RowDataPacket[]>(
-      "SELECT id FROM information_schema.processlist WHERE state = 'Waiting for table metadata lock' AND db = DATABASE()",
-    );
-    for (const { id } of waiting) await source.query(`KILL ${Number(id)}`).catch(() => undefined);
-    await sleep(WAITERS_EVERY_MS);
-  }
 }
 
 /** All kinds at once: nobody sees a bucket half here and half there. */

@@ -84,12 +84,19 @@ export function partText({ kind, stationId, week }: Part): string {
   return `station_id = ${stationId}${time}`;
 }
 
-/** The statements that drop a bucket's tables, and with them what notes their changes. */
+/** The statement that lets nobody but its connection use a bucket's tables, until that unlocks them or ends. */
+export function holdText(bucket: number): string {
+  const tables = [...KINDS.map((kind) => bucketTable(kind, bucket)), queueTable(bucket)];
+  return `LOCK TABLES ${tables.map((table) => `${table} WRITE`).join(', ')}`;
+}
+
+/** The statement that drops what a bucket has left on a server, in or out of reach, and with it what notes changes. */
 export function dropBucketText(bucket: number): string {
-  const tables = [
-    ...KINDS.map((kind) => bucketTable(kind, bucket)),
-    queueTable(bucket),
-    `${queueTable(bucket)}_ready`,
-  ];
-  return `DROP TABLE IF EXISTS ${tables.join(', ')}`;
+  const tables = KINDS.flatMap((kind) => [bucketTable(kind, bucket), leftTable(kind, bucket)]);
+  return `DROP TABLE IF EXISTS ${[...tables, queueTable(bucket), `${queueTable(bucket)}_ready`].join(', ')}`;
+}
+
+/** What a bucket's table is called once nobody shall find it. */
+export function leftTable(kind: Kind, bucket: number): string {
+  return `left_${bucketTable(kind, bucket)}`;
 }
