@@ -1,5 +1,6 @@
 import { z } from 'zod';
-import { changeRetention, LEAST_KEEP_MONTHS, MOST_KEEP_MONTHS } from '#lib/services/retention/settings';
+import { LEAST_KEEP_MONTHS, MOST_KEEP_MONTHS } from '#lib/contracts/retention';
+import { changeRetention } from '#lib/services/retention/settings';
 import { typedNumber, type FormValues } from './forms';
 import { invalidFields } from './problem';
 

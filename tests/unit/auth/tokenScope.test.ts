@@ -2,8 +2,8 @@ import { readdirSync } from 'node:fs';
 import { expect, test } from 'vitest';
 import { familyOf, requireScope } from '#lib/auth/tokenScope';
 
-/** Families leave these out: what is found is of every family, and rules of signing in are for administrators. */
-const OF_NO_FAMILY = ['index', 'search', 'sign-in-rules'];
+/** Families leave these out: what is found is of every family; rules of signing in and what is deleted are for administrators. */
+const OF_NO_FAMILY = ['index', 'retention', 'search', 'sign-in-rules'];
 
 test('every route within a network has a family, or is one of those that have none', () => {
   const names = readdirSync('src/pages/api/v1/networks/[network]').map((name) => name.replace(/\..*$/, ''));

@@ -2,10 +2,6 @@ import { appendAudit } from '#db/queries/audit';
 import { inTransaction } from '#db/queries/connection';
 import { keepMonthsOf, latestSeal, setKeepMonths, type Seal } from '#db/queries/retention';
 
-/** Fewer would take away what usual levels, drift and limits look back at. */
-export const LEAST_KEEP_MONTHS = 13;
-export const MOST_KEEP_MONTHS = 600;
-
 export interface Retention {
   /** Null: single intervals are kept for good. */
   keepMonths: number | null;
