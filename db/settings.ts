@@ -29,6 +29,20 @@ export function connectionSettings(): Knex.Config {
   };
 }
 
+/** The same for the replica that heavy reads go to; null where there is none. One that does not answer soon is done without. */
+export function replicaSettings(): Knex.Config | null {
+  const { replica } = config().database;
+  if (!replica) return null;
+  const settings = connectionSettings();
+  const { host, port } = replica;
+  const tls = tlsOf({ host, tlsCaFile: config().database.tlsCaFile });
+  return {
+    ...settings,
+    connection: { ...(settings.connection as object), host, port, connectTimeout: 2_000, ...tls },
+    acquireConnectionTimeout: 2_000,
+  };
+}
+
 interface RawConnection {
   query(sql: string, done: (error: Error | null) => void): void;
 }

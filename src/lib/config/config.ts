@@ -24,6 +24,8 @@ export interface Config {
   /** What each web process takes from monitors in a minute. */
   receiving: { postsPerMinuteOfToken: number; postsPerMinuteOfAddress: number };
   /** `isOwn`: `ops/start.sh` starts a MariaDB of its own in the data directory. */
+  /** Pages and routes of one account that each web process answers in a minute. */
+  requestsPerMinuteOfAccount: number;
   database: {
     isOwn: boolean;
     host: string;
@@ -34,6 +36,8 @@ export interface Config {
     poolMax: number;
     /** A file of the certificates that vouch for the database's; null: it is reached without TLS. */
     tlsCaFile: string | null;
+    /** A replica that heavy reads go to while it is at most so far behind; null: they go where everything goes. */
+    replica: { host: string; port: number; mostAgeSec: number } | null;
     /** Servers that the high-volume tables are shared out to; none: they are local. */
     dataServers: { name: string; host: string; port: number }[];
     /** The account on them, of the head and of migrations. */
@@ -117,6 +121,7 @@ export function parseConfig(environment: Record<string, string | undefined>): Co
       postsPerMinuteOfToken: settings.BITTERN_POSTS_PER_MINUTE_TOKEN,
       postsPerMinuteOfAddress: settings.BITTERN_POSTS_PER_MINUTE_ADDRESS,
     },
+    requestsPerMinuteOfAccount: settings.BITTERN_REQUESTS_PER_MINUTE_ACCOUNT,
     database: {
       isOwn: settings.BITTERN_DB_OWN,
       host: settings.BITTERN_DB_HOST,
@@ -126,6 +131,13 @@ export function parseConfig(environment: Record<string, string | undefined>): Co
       name: settings.BITTERN_DB_NAME,
       poolMax: settings.BITTERN_DB_POOL_MAX,
       tlsCaFile: settings.BITTERN_DB_TLS_CA ?? null,
+      replica: settings.BITTERN_DB_READ_HOST
+        ? {
+            host: settings.BITTERN_DB_READ_HOST,
+            port: settings.BITTERN_DB_READ_PORT,
+            mostAgeSec: settings.BITTERN_DB_READ_MAX_AGE_SEC,
+          }
+        : null,
       dataServers: settings.BITTERN_DATA_SERVERS,
       dataUser: settings.BITTERN_DATA_USER ?? settings.BITTERN_DB_USER,
       dataPassword: settings.BITTERN_DATA_PASSWORD ?? settings.BITTERN_DB_PASSWORD,

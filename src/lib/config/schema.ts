@@ -77,6 +77,7 @@ export const settingsSchema = z.object({
   BITTERN_IMPORT_MAX_MIB: z.coerce.number().int().min(1).max(65_536).default(1024),
   BITTERN_POSTS_PER_MINUTE_TOKEN: z.coerce.number().int().min(1).max(10_000_000).default(30_000),
   BITTERN_POSTS_PER_MINUTE_ADDRESS: z.coerce.number().int().min(1).max(10_000_000).default(120_000),
+  BITTERN_REQUESTS_PER_MINUTE_ACCOUNT: z.coerce.number().int().min(60).max(10_000_000).default(30_000),
   BITTERN_DB_OWN: isTrue('true'),
   BITTERN_DB_HOST: z.string().default('127.0.0.1'),
   BITTERN_DB_PORT: port(4330),
@@ -88,6 +89,9 @@ export const settingsSchema = z.object({
     .regex(/^[A-Za-z0-9_]{1,64}$/, 'may hold letters, digits and _ only')
     .default('bittern'),
   BITTERN_DISK_WARN_DAYS: z.coerce.number().int().min(1).max(365).default(30),
+  BITTERN_DB_READ_HOST: z.string().optional(),
+  BITTERN_DB_READ_PORT: port(3306),
+  BITTERN_DB_READ_MAX_AGE_SEC: z.coerce.number().int().min(15).max(3600).default(60),
   BITTERN_DATA_SERVERS: dataServers,
   BITTERN_DATA_USER: z.string().optional(),
   BITTERN_DATA_PASSWORD: z.string().optional(),
