@@ -1,11 +1,23 @@
 import type { APIContext } from 'astro';
 import { findAccessToken } from '#db/queries/accessTokens';
 import { findUserById } from '#db/queries/users';
+import { requireAccountPace } from './accountPace';
 import { sessionCookieName, userOfSession, type SignedInUser } from './sessions';
 import { requireScope } from './tokenScope';
 
-/** The person whom a request's access token or session cookie names, or null. @throws {Problem} 403 for what the token is not for. */
-export async function userOfRequest({
+/**
+ * The person whom a request's access token or session cookie names, or null.
+ * @throws {Problem} 403 for what the token is not for, 429 above the pace of an account.
+ */
+export async function userOfRequest(
+  context: Pick<APIContext, 'request' | 'cookies'>,
+): Promise<SignedInUser | null> {
+  const user = await userNamedBy(context);
+  if (user) requireAccountPace(user.id, Date.now());
+  return user;
+}
+
+async function userNamedBy({
   request,
   cookies,
 }: Pick<APIContext, 'request' | 'cookies'>): Promise<SignedInUser | null> {
