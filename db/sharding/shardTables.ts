@@ -4,6 +4,7 @@ import { db } from '../client';
 import { connectTo, dataServers, linkName, onEach, type DataServer } from './dataServers';
 import { BUCKETS, bucketTable, KINDS, type Kind } from './kinds';
 import { linkServers } from './linkServers';
+import { relinkAltered } from './relink';
 import { bucketTableText, isLinkTable, linkTableText } from './texts';
 
 /**
@@ -15,11 +16,14 @@ export async function shardTables(): Promise<void> {
   if (servers.length === 0) return;
   const conn = db();
   const local: [Kind, string][] = [];
+  const links = new Map<Kind, string>();
   for (const kind of KINDS) {
     const created = await definitionOf(conn, kind);
-    if (!isLinkTable(created)) local.push([kind, created]);
+    if (isLinkTable(created)) links.set(kind, created);
+    else local.push([kind, created]);
   }
   await linkServers(conn, servers);
+  await relinkAltered(conn, links);
   if (local.length === 0) return;
   await makeDatabases(servers);
   await onEach(servers, async (connection, server) => {

@@ -3,8 +3,9 @@ import { db } from '#db/client';
 import { connectTo, dataServers, linkName, type DataServer } from '#db/sharding/dataServers';
 import { BUCKETS, bucketTable, KINDS } from '#db/sharding/kinds';
 import { linkServers } from '#db/sharding/linkServers';
+import { replaceLinks } from '#db/sharding/relink';
 import { definitionOf } from '#db/sharding/shardTables';
-import { bucketTableText, linkTableText, serversOfLinkTable } from '#db/sharding/texts';
+import { bucketTableText, serversOfLinkTable } from '#db/sharding/texts';
 import { copyPart } from './copyPart';
 import { beginQueue, dropBucketText, holdText, nextParts, partDone } from './moveQueue';
 import { isOutOfReach, putOutOfReach } from './outOfReach';
@@ -119,15 +120,9 @@ async function takeCountersAlong(source: Connection, target: Connection, bucket:
 async function leadTo(bucket: number, to: DataServer): Promise<void> {
   const places = await placesOfBuckets();
   const linkOf = (at: number) => linkName(at === bucket ? to : (places[at] as DataServer));
-  const renames: string[] = [];
-  for (const kind of KINDS) {
-    await db().raw('DROP TABLE IF EXISTS ??, ??', [`${kind}__linked`, `${kind}__left`]);
-    const text = linkTableText(await definitionOf(db(), kind), kind, `${kind}__linked`, linkOf);
-    await db().raw(text.replaceAll('?', '\\?'));
-    renames.push(`${kind} TO ${kind}__left, ${kind}__linked TO ${kind}`);
-  }
-  await db().raw(`RENAME TABLE ${renames.join(', ')}`);
-  await db().raw(`DROP TABLE ${KINDS.map((kind) => `${kind}__left`).join(', ')}`);
+  const changed = [];
+  for (const kind of KINDS) changed.push({ kind, created: await definitionOf(db(), kind), serverOf: linkOf });
+  await replaceLinks(db(), changed);
 }
 
 /** What a move that was broken off after the switch has left. */
