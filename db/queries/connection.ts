@@ -89,6 +89,11 @@ export function isLockConflict(error: unknown): boolean {
   return errno === DEADLOCK || errno === LOCK_WAIT_TIMEOUT || errno === NODE_NOT_READY;
 }
 
+/** Whether an error says that a lock was not granted in time. */
+export function isLockWaitOver(error: unknown): boolean {
+  return (error as { errno?: number }).errno === LOCK_WAIT_TIMEOUT;
+}
+
 /** Whether an error says that a data server was not reached, or that a bucket has just moved to another. */
 export function isDataServerGone(error: unknown): boolean {
   const { errno = 0, message = '' } = error as { errno?: number; message?: string };

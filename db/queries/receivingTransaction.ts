@@ -4,6 +4,7 @@ import {
   insertionText,
   isDataServerGone,
   isLockConflict,
+  isLockWaitOver,
   MOST_ATTEMPTS,
   pauseBefore,
   type Binding,
@@ -18,16 +19,18 @@ export type Cells = unknown[][];
  * A transaction in two journeys: what it reads in one (begin, locks, rows), and all that it writes, with its commit, in the other.
  * Everything is durable when the promise resolves. A lock that stands in the way starts it again, and so does a data server that was gone:
  * what was stored nevertheless is found stored.
- * `decide` gets the rows of each of `reads` and may only write.
+ * `decide` gets the rows of each of `reads` and may only write. With `waitsOnce`, a lock that was not granted in time is not asked for again.
  */
 export async function inReceivingTransaction<T>(
   reads: readonly string[],
   decide: (rows: Cells[], writes: Writes) => Promise<T>,
+  { waitsOnce = false } = {},
 ): Promise<T> {
   for (let attempt = 1; ; attempt += 1) {
     try {
       return await attemptOnce(reads, decide);
     } catch (error) {
+      if (waitsOnce && isLockWaitOver(error)) throw error;
       if (attempt === MOST_ATTEMPTS || !(isLockConflict(error) || isDataServerGone(error))) throw error;
       await pauseBefore(attempt);
     }

@@ -1,4 +1,4 @@
-import { pool, type Writes } from '#db/queries/connection';
+import { isLockWaitOver, pool, type Writes } from '#db/queries/connection';
 import { intervalsOfCells, type IntervalCells, type StoredInterval } from '#db/queries/intervalRows';
 import {
   isStillSo,
@@ -41,12 +41,19 @@ export async function takeTogether(
   { isWaiting }: { isWaiting: boolean },
 ): Promise<Outcome<Receipt>[]> {
   const ascending = [...posts.entries()].sort(([, a], [, b]) => a.station.id - b.station.id);
-  return inReceivingTransaction(readsOf(posts, isWaiting), async (rows, writes) => {
+  const take = async (rows: Cells[], writes: Writes) => {
     const known = await knownOf(rows);
     const taken: Outcome<Receipt>[] = [];
     for (const [at, post] of ascending) taken[at] = await takeOne(post, known, writes);
     return taken;
-  });
+  };
+  try {
+    return await inReceivingTransaction(readsOf(posts, isWaiting), take, { waitsOnce: !isWaiting });
+  } catch (error) {
+    // A data server waits even where it was asked to leave out what is locked.
+    if (isWaiting || !isLockWaitOver(error)) throw error;
+    return posts.map(() => ({ kind: 'alone' }));
+  }
 }
 
 function readsOf(posts: readonly Post[], isWaiting: boolean): string[] {
