@@ -7,7 +7,7 @@ const root = fileURLToPath(new URL('..', import.meta.url));
 const onCluster =
   process.env['CLUSTER'] === 'whole'
     ? ['tests/integration/**/*.test.ts']
-    : ['tests/integration/ingest/together.test.ts', 'tests/integration/levels/rebuild.test.ts'];
+    : ['tests/integration/ingest/order.test.ts', 'tests/integration/levels/rebuild.test.ts'];
 
 export default defineConfig({
   root,
