@@ -1,6 +1,6 @@
 import { chromium, type Browser } from 'playwright-core';
 
-const FLAGS = [
+export const CHROMIUM_FLAGS = [
   '--headless=new',
   '--no-sandbox',
   '--disable-quic',
@@ -15,5 +15,5 @@ const FLAGS = [
 
 /** Starts the machine's Chromium without a window and without a GPU. */
 export function launchChromium(): Promise<Browser> {
-  return chromium.launch({ executablePath: '/usr/bin/chromium', args: FLAGS });
+  return chromium.launch({ executablePath: '/usr/bin/chromium', args: CHROMIUM_FLAGS });
 }

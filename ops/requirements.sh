@@ -1,5 +1,5 @@
 #!/usr/bin/env bash
-# Installs what a bare Debian 12 with Node 20 lacks. Usage: ops/requirements.sh [chromium] [poppler-utils] [cluster] (mariadb-server always).
+# Installs what a bare Debian 12 with Node 20 lacks. Usage: ops/requirements.sh [chromium] [poppler-utils] [nginx] [cluster] (mariadb-server always).
 set -euo pipefail
 cd "$(dirname "$0")/.."
 
@@ -20,6 +20,7 @@ for tool in "$@"; do
       command -v rsync >/dev/null || missing+=(rsync)
       command -v haproxy >/dev/null || [ -x /usr/sbin/haproxy ] || missing+=(haproxy)
       ;;
+    nginx) command -v nginx >/dev/null || [ -x /usr/sbin/nginx ] || missing+=(nginx-light) ;;
     poppler-utils) command -v pdftotext >/dev/null || missing+=(poppler-utils) ;;
     *) echo "unknown requirement: $tool" >&2; exit 2 ;;
   esac
@@ -37,10 +38,13 @@ if [ "${#missing[@]}" -gt 0 ]; then
     exit 1
   fi
   echo "Installing ${missing[*]} …"
-  # A MariaDB that this installs must not take port 3306 or start by itself: Bittern starts its own.
+  # A MariaDB that this installs must not take port 3306 or start by itself: Bittern starts its own. Nor must nginx, which tests start.
   was_installed=$(dpkg-query --show --showformat='${Status}' mariadb-server 2>/dev/null || true)
   "${as_root[@]}" apt-get update --quiet=2
   "${as_root[@]}" "${command[@]}" >/dev/null
+  if [[ " ${missing[*]} " == *' nginx-light '* ]] && command -v systemctl >/dev/null; then
+    "${as_root[@]}" systemctl disable --now nginx >/dev/null 2>&1 || true
+  fi
   if [ -z "$was_installed" ] && command -v systemctl >/dev/null; then
     "${as_root[@]}" systemctl disable --now mariadb >/dev/null 2>&1 || true
   fi

@@ -7,7 +7,7 @@ export PATH="$PATH:/usr/sbin" ASTRO_TELEMETRY_DISABLED=1
 
 parts=("$@")
 [ "${#parts[@]}" -gt 0 ] || parts=(format lint types unit reference integration faults cluster e2e)
-bash ops/requirements.sh chromium poppler-utils || exit 1
+bash ops/requirements.sh chromium poppler-utils nginx || exit 1
 
 results=tests/.output
 rm -rf "$results" && mkdir -p "$results"

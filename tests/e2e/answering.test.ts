@@ -1,8 +1,8 @@
 import { setTimeout as sleep } from 'node:timers/promises';
-import { AxeBuilder } from '@axe-core/playwright';
 import type { Page } from 'playwright-core';
 import { expect, inject, test } from 'vitest';
 import type { Evidence } from '#lib/contracts/complaintEvidence';
+import { faultsOf } from './support/axe';
 import { picture, signIn, useBrowser } from './support/browser';
 import { mailTo } from './support/mailbox';
 import { pdfText } from './support/pdfText';
@@ -53,8 +53,7 @@ async function nearStation(): Promise<string> {
 }
 
 async function expectAccessible(page: Page): Promise<void> {
-  const { violations } = await new AxeBuilder({ page }).withTags(['wcag2a', 'wcag2aa', 'wcag22aa']).analyze();
-  expect(violations.map(({ id, nodes }) => `${id}: ${nodes.map(({ html }) => html).join(' ')}`)).toEqual([]);
+  expect(await faultsOf(page)).toEqual([]);
 }
 
 test('a resident reports a night’s noise from a phone; the answer arrives with a PDF whose figures are the interface’s', async () => {

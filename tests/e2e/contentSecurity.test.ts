@@ -4,6 +4,7 @@ import { scriptHash } from '#ops/http/contentSecurity';
 import { signIn, useBrowser } from './support/browser';
 import { signedInFetch } from './support/signedInFetch';
 import { someSubjects } from './support/subjects';
+import { inTabs } from './support/tabs';
 
 const { open } = useBrowser();
 let addresses: string[];
@@ -41,17 +42,17 @@ test('every script that stands in a page is one that the policy names', async ()
 test('no page does what its policy forbids', async () => {
   const { page, context } = await open();
   const refused: string[] = [];
-  let address = '';
-  page.on('console', (message) => {
-    if (/Content Security Policy/i.test(message.text())) refused.push(`${address}: ${message.text()}`);
-  });
-  page.on('pageerror', (error) => refused.push(`${address}: ${error.message}`));
   await signIn(page, 'admin@merrow.example');
-  for (address of addresses) {
-    const answer = await page.goto(address, { waitUntil: 'load' }).catch(() => null);
+  context.on('console', (message) => {
+    if (/Content Security Policy/i.test(message.text()))
+      refused.push(`${message.page()?.url()}: ${message.text()}`);
+  });
+  context.on('weberror', (error) => refused.push(`${error.page()?.url()}: ${error.error().message}`));
+  await inTabs(page, addresses, async (tab, address) => {
+    const answer = await tab.goto(address, { waitUntil: 'load' }).catch(() => null);
     // A file to download is no page.
-    if (answer) await page.waitForTimeout(300);
-  }
+    if (answer) await tab.waitForTimeout(300);
+  });
   expect(refused).toEqual([]);
   await context.close();
 }, 900_000);

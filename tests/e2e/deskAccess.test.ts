@@ -1,5 +1,5 @@
-import { AxeBuilder } from '@axe-core/playwright';
 import { expect, inject, test } from 'vitest';
+import { faultsOf } from './support/axe';
 import { signIn, useBrowser } from './support/browser';
 import { signedInFetch } from './support/signedInFetch';
 
@@ -78,14 +78,9 @@ test('without signing in the desk leads to the sign-in page, and back afterwards
   expect(answer.headers.get('location')).toBe('/sign-in?next=%2Fn%2Fmerrow%2Fcomplaints');
 });
 
-test.each([
-  ['light', 1280],
-  ['light', 390],
-  ['dark', 1280],
-  ['dark', 390],
-] as const)('the desk has no accessibility violations, %s, %d px', async (theme, width) => {
+test('the desk has no accessibility violations and nothing sideways, in both themes, wide and narrow', async () => {
   const { reference, month } = await someReference();
-  const { page, context } = await open({ theme, width });
+  const { page, context } = await open({ theme: 'light', width: 390 });
   await signIn(page, 'liaison@merrow.example');
   for (const path of [
     '/n/merrow/complaints?status=all',
@@ -95,15 +90,15 @@ test.each([
     `/n/merrow/summaries/${month}`,
   ]) {
     await page.goto(path, { waitUntil: 'networkidle' });
-    const { violations } = await new AxeBuilder({ page })
-      .withTags(['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa'])
-      .analyze();
-    expect(
-      violations.map(({ id, nodes }) => `${id}: ${nodes[0]?.html}`),
-      path,
-    ).toEqual([]);
-    const overflowPx = await page.evaluate(() => document.documentElement.scrollWidth - innerWidth);
-    expect(overflowPx, path).toBeLessThanOrEqual(0);
+    for (const width of [390, 1280]) {
+      for (const theme of ['light', 'dark'] as const) {
+        await page.setViewportSize({ width, height: 860 });
+        await page.emulateMedia({ colorScheme: theme });
+        await page.waitForTimeout(300);
+        expect(await faultsOf(page), `${path}, ${theme}, ${width} px`).toEqual([]);
+      }
+    }
+    await page.setViewportSize({ width: 390, height: 860 });
   }
   await context.close();
-});
+}, 240_000);
