@@ -1,7 +1,8 @@
 import { randomBytes } from 'node:crypto';
+import { cookieName } from '#lib/http/cookieName';
 import { cookieNamed, type SessionCookie } from './sessions';
 
-const NAME = 'bittern-device';
+const NAME = 'device';
 const KEPT_SEC = 200 * 86_400;
 
 interface Cookies {
@@ -10,7 +11,7 @@ interface Cookies {
 
 /** The cookie by which a browser that has signed somebody in is known again; it opens nothing. */
 export function deviceOf(cookies: Cookies): string | null {
-  const value = cookies.get(NAME)?.value ?? '';
+  const value = cookies.get(cookieName(NAME))?.value ?? '';
   return /^[\w-]{43}$/.test(value) ? value : null;
 }
 

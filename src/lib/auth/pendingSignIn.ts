@@ -1,9 +1,10 @@
 import { createHash } from 'node:crypto';
 import { findCredentialsById, type UserRow } from '#db/queries/users';
+import { cookieName } from '#lib/http/cookieName';
 import { isSameSignature, purposeMac } from '#lib/services/purposeMac';
 import { cookieNamed, type SessionCookie } from './sessions';
 
-const NAME = 'bittern-second';
+const NAME = 'second';
 const HOLDS_SEC = 600;
 
 /** The cookie of a sign-in whose password fitted and whose code is awaited. It opens nothing by itself. */
@@ -20,7 +21,7 @@ export async function pendingUser(
   cookies: { get(name: string): { value: string } | undefined },
   nowSec: number,
 ): Promise<UserRow | null> {
-  const [userId = '', until = '', signature = ''] = (cookies.get(NAME)?.value ?? '').split('.');
+  const [userId = '', until = '', signature = ''] = (cookies.get(cookieName(NAME))?.value ?? '').split('.');
   if (!/^\d{1,12}$/.test(until) || nowSec >= Number(until)) return null;
   const found = await findCredentialsById(userId);
   if (!found || found.user.disabledAt) return null;

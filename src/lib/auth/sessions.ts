@@ -2,6 +2,7 @@ import { Lucia, TimeSpan } from 'lucia';
 import { config } from '#lib/config/index';
 import { listSecondFactorNetworks } from '#db/queries/networks';
 import { type SessionOrigin } from '#db/queries/sessions';
+import { cookieName, isHttps } from '#lib/http/cookieName';
 import { sessionStore } from './sessionStore';
 
 /** The person behind a request. */
@@ -70,7 +71,7 @@ export async function endSession(sessionId: string | undefined): Promise<Session
 
 /** Name of the session cookie; `__Host-` wherever the public address is https. */
 export function sessionCookieName(): string {
-  return isSecure() ? '__Host-bittern-session' : 'bittern-session';
+  return cookieName('session');
 }
 
 let instance: ReturnType<typeof makeLucia> | undefined;
@@ -83,7 +84,7 @@ function lucia() {
 function makeLucia() {
   return new Lucia(sessionStore, {
     sessionExpiresIn: new TimeSpan(config().session.idleHours, 'h'),
-    sessionCookie: { name: sessionCookieName(), attributes: { secure: isSecure() } },
+    sessionCookie: { name: sessionCookieName(), attributes: { secure: isHttps() } },
     getUserAttributes: ({ email, name, isAdministrator, mustChangePassword, lacksSecondFactor }) => ({
       email,
       name,
@@ -94,22 +95,18 @@ function makeLucia() {
   });
 }
 
-function isSecure(): boolean {
-  return config().origin.startsWith('https:');
-}
-
 function cookie(value: string, maxAgeSec: number): SessionCookie {
-  return cookieNamed(sessionCookieName(), value, maxAgeSec);
+  return cookieNamed('session', value, maxAgeSec);
 }
 
-/** A cookie that no script reads and that other sites' forms do not bring along. */
+/** A cookie of the whole site, by its short name, that no script reads and that other sites' forms do not bring along. */
 export function cookieNamed(name: string, value: string, maxAgeSec: number): SessionCookie {
   const attributes = {
     httpOnly: true,
     sameSite: 'lax',
     path: '/',
-    secure: isSecure(),
+    secure: isHttps(),
     maxAge: maxAgeSec,
   } as const;
-  return { name, value, attributes };
+  return { name: cookieName(name), value, attributes };
 }
