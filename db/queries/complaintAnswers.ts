@@ -118,21 +118,3 @@ export async function endAnswer(
       updated_at: now,
     });
 }
-
-/** Answers of a network that wait for a second person, by reference, the oldest first. */
-export async function listSubmitted(
-  networkId: number,
-  conn: Connection = pool(),
-): Promise<{ reference: string; author: string; authorName: string; submittedAt: Date }[]> {
-  return conn('complaint_answers as a')
-    .join('complaints as c', 'c.id', 'a.complaint_id')
-    .join('users as u', 'u.id', 'a.author')
-    .where({ 'c.network_id': networkId, 'a.state': 'submitted' })
-    .orderBy('a.submitted_at')
-    .select({
-      reference: 'c.reference',
-      author: 'a.author',
-      authorName: 'u.name',
-      submittedAt: 'a.submitted_at',
-    });
-}

@@ -42,14 +42,6 @@ export async function listOpenTroubles(networkId: number, conn: Connection = poo
   return selectTroubles(conn).where({ 't.network_id': networkId, 't.is_open': 1 });
 }
 
-/** Troubles of one station that are not over. */
-export async function listOpenTroublesOf(
-  stationId: number,
-  conn: Connection = pool(),
-): Promise<TroubleRow[]> {
-  return selectTroubles(conn).where({ 't.station_id': stationId, 't.is_open': 1 });
-}
-
 export interface TroubleListQuery {
   networkId: number;
   stationId: number | null;

@@ -124,19 +124,5 @@ export const STATION_SITES: StationSite[] = [
   },
 ];
 
-/** What can be heard: the places of the demo's plants and other sources. */
-export const SOURCE_SITES = {
-  quayCranes: site('Quay cranes', SOURCE_POINTS.quayCranes),
-  reeferStack: site('Reefer stack', SOURCE_POINTS.reeferStack),
-  siloFan: site('Grain silo fan', SOURCE_POINTS.siloFan),
-  railYard: site('Merrow rail yard', SOURCE_POINTS.railYard),
-  quarry: site('Hallow Quarry', SOURCE_POINTS.quarry),
-  haulRoad: site('Quarry haul road', SOURCE_POINTS.haulRoad),
-  school: site('Ropewalk School', SOURCE_POINTS.school),
-  chapel: site('Salters’ Chapel', SOURCE_POINTS.chapel),
-  marsh: site('Merrow Marsh', SOURCE_POINTS.marsh),
-  ferrySteps: site('Ferry Steps', SOURCE_POINTS.ferrySteps),
-} as const satisfies Record<string, Site>;
-
 /** Where a map of the network opens. */
 export const MAP_START = { ...site('Merrow estuary', [-180, -640]), zoom: 13 } as const;

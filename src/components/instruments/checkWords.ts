@@ -14,8 +14,6 @@ export const CHECK_LABELS = {
   note: 'Note',
 } as const;
 
-export const DECISION_LABELS = { decision: 'Decision', reason: 'Reason' } as const;
-
 /** "−0.6 dB, more than the 0.5 dB that the network allows". */
 export function driftWords({ drift, driftBound, isWithinBound }: Calibration): string {
   const words = `${formatDifferenceDb(drift)} dB`;

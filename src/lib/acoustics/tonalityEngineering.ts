@@ -8,11 +8,6 @@ export interface AnalysedTone {
   centreHz: number;
 }
 
-/** Width in Hz of the critical band about a frequency: 100 Hz up to 500 Hz, then 20 % of it (ISO 1996-2:2007 C.2). */
-export function criticalBandwidthHz(centreHz: number): number {
-  return centreHz <= 500 ? 100 : 0.2 * centreHz;
-}
-
 /**
  * Tonal audibility ΔLta in dB above the masking threshold: Lpt − Lpn + 2 + lg[1 + (fc/502)^2.5] (ISO 1996-2:2007 C.3). Needs
  * a narrow-band analysis made elsewhere; thirds cannot give it.

@@ -29,7 +29,6 @@ const rangeSchema = z.object({
   excessOverUsual: z.number().nullable(),
   aShare: z.number().describe('Part of the A-weighted energy of the spectrum, 0–1'),
 });
-export type ComparedRange = z.output<typeof rangeSchema>;
 
 const conditionsSchema = z.object({
   seconds: z.number().int().describe('Of the intervals measured in the window'),

@@ -2,8 +2,6 @@ import { z } from 'zod';
 import { LIMIT_WINDOWS, type LimitWindowName } from '#lib/acoustics/limitQuantities';
 
 export const HOLIDAY_RULES = ['as-weekday', 'as-sunday', 'never', 'only'] as const;
-/** Every how many minutes rolling windows may begin. */
-export const WINDOW_STEPS_MIN = [5, 15] as const;
 
 export const GRAIN_MIN = 5;
 const DAY_MIN = 1440;

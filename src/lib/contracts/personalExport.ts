@@ -45,7 +45,6 @@ export const personalExportSchema = z.object({
 export type PersonalExport = z.output<typeof personalExportSchema>;
 
 export const EXPORT_FORMATS = ['json', 'text'] as const;
-export type ExportFormat = (typeof EXPORT_FORMATS)[number];
 
 registerRoute({
   access: 'person',

@@ -13,7 +13,6 @@ export type TrendMonth = z.output<typeof trendMonthSchema>;
 export const summaryPreferencesSchema = z.object({
   isTold: z.boolean('must be true or false').describe('By e-mail when a month is issued or revised'),
 });
-export type SummaryPreferences = z.output<typeof summaryPreferencesSchema>;
 
 const network = '/api/v1/networks/{network}';
 const params = z.object({ network: z.string() });

@@ -23,14 +23,6 @@ export function selectedBands(selection: Selection, bands: readonly Band[]): Ban
   return bands.filter((band) => band.exactHz > lowerHz && band.exactHz < upperHz);
 }
 
-/** Frequencies in Hz that a selection's bands span, edge to edge. */
-export function bandEdgesHz(range: BandSelection): { lowerHz: number; upperHz: number } {
-  return {
-    lowerHz: bandAt(range.fraction, range.lowestIndex).lowerHz,
-    upperHz: bandAt(range.fraction, range.highestIndex).upperHz,
-  };
-}
-
 /**
  * A selection in the address: ISO 8601 interval, then bands by their nominal frequencies in Hz (`o` before those of octaves):
  * `2026-03-17T20:58:00Z/2026-03-17T22:04:00Z/80-125`.

@@ -4,7 +4,7 @@ import { formatCoverage } from '#lib/format/levels';
 import { clockChangeWords } from '#lib/format/periods';
 import { formatClock, formatDate } from '#lib/format/times';
 import { zoneAbbreviationAt } from '#lib/time/clockChange';
-import { BELOW_MINIMUM } from './figures';
+import { BELOW_MINIMUM } from './document/format';
 
 /** An instant in a zone, with the zone's abbreviation: `Tue 17 March 2026, 03:40 GMT`. */
 export function instantText(instant: string, zone: string): string {
