@@ -58,7 +58,7 @@ export function measureCaution({ before, after, chance, days, isShortened }: Mea
   const difference = !isTold
     ? 'There was no complaint in either span, so nothing can be said.'
     : chance < least
-      ? `A difference of this size would come about by chance alone in about ${percent < 1 ? 'fewer than 1' : percent} of 100 such comparisons, were complaints independent.`
+      ? `A difference of this size would come about by chance alone in ${percent < 1 ? 'fewer than 1' : `about ${percent}`} of 100 such comparisons, were complaints independent.`
       : `A difference of this size comes about by chance alone in about ${percent} of 100 such comparisons: it does not show that the measure changed anything.`;
   return [
     difference,

@@ -220,7 +220,7 @@ export const GERMAN: MonthWords = {
     ...(format.clockChange === null
       ? []
       : [
-          `Die Uhr wird am ${format.clockChange.at} umgestellt; dieses Datum hat ${format.clockChange.hours} Stunden, und die Nacht, in die es fällt, ist länger oder kürzer als ihre Nennstunden.`,
+          `Die Uhr wird am ${format.clockChange.at} umgestellt; dieses Datum hat ${format.clockChange.hours} Stunden, und die Nacht, in die die Umstellung fällt, ist länger oder kürzer als ihre Nennstunden.`,
         ]),
     'Pegel eines Zeitraums sind Energiemittel allein über die gültige Zeit: erst kommen alle Energien zusammen, dann wird Lden einmal daraus ' +
       'berechnet, mit den Nennstunden von Tag, Abend und Nacht. Ein Datum, dem ein ganzer Zeitraum fehlt, hat kein Lden. Wechselten die ' +
