@@ -1,7 +1,7 @@
 import { bandSetById } from './bandSets';
 import { pool, type Connection } from './connection';
 import { type StoredInterval } from './intervalRows';
-import { unpackLevels } from './intervalPacking';
+import { unpackAll } from './intervalPacking';
 import { LONGEST_INTERVAL_SEC } from './intervals';
 import { runPrepared } from './prepared';
 
@@ -13,6 +13,8 @@ const SELECT = `SELECT starts_at, duration_sec, laeq_centi_db, lafmax_centi_db, 
     received_at
   FROM interval_levels
   WHERE station_id = ? AND starts_at > ? AND starts_at < ? AND starts_at + duration_sec > ? ORDER BY starts_at`;
+
+const NO_LEVELS = new Int16Array(0);
 
 type Cells = [
   startSec: number,
@@ -48,7 +50,8 @@ export async function selectMeasuredIntervals(
 async function intervalsOf(rows: Cells[], conn: Connection): Promise<MeasuredInterval[]> {
   const intervals: MeasuredInterval[] = [];
   let set = rows[0] && (await bandSetById(rows[0][7], conn));
-  for (const row of rows) {
+  const levels = unpackAll(rows.map((row) => row[8]));
+  for (const [at, row] of rows.entries()) {
     if (set?.id !== row[7]) set = await bandSetById(row[7], conn);
     intervals.push({
       startSec: row[0],
@@ -61,7 +64,7 @@ async function intervalsOf(rows: Cells[], conn: Connection): Promise<MeasuredInt
       bandSetId: set.id,
       bandFraction: set.fraction,
       bandIndices: set.indices,
-      levelsCentiDb: unpackLevels(row[8]),
+      levelsCentiDb: levels[at] ?? NO_LEVELS,
       flags: row[9],
       windSpeedMs: row[10] === null ? null : row[10] / 100,
       windDirectionDeg: row[11],

@@ -6,16 +6,16 @@ import { makeStation } from './station';
 /** Tables of what is computed from intervals. */
 const AGGREGATES = ['quarter_hours', 'day_periods'] as const;
 
-/** Adds stations that have what another's first month came to, without intervals of their own. */
-export async function addCopies(of: StationRow, count: number, name: string): Promise<void> {
+/** Adds stations that have what another's first months came to, without intervals of their own. */
+export async function addCopies(of: StationRow, count: number, name: string, months = 1): Promise<void> {
   for (let at = 1; at <= count; at += 1) {
     const { id } = await makeStation(of.networkId, `${name}-${at}`, of.intervalSec);
-    await copyAggregates(of.id, id);
+    await copyAggregates(of.id, id, months);
   }
 }
 
-/** Gives a station what another's first month came to. */
-export async function copyAggregates(fromId: number, toId: number): Promise<void> {
+/** Gives a station what another's first months came to. */
+export async function copyAggregates(fromId: number, toId: number, months = 1): Promise<void> {
   for (const table of AGGREGATES) {
     const [columns] = await db().raw(`SHOW COLUMNS FROM ${table}`);
     const names = (columns as { Field: string }[]).map(({ Field }) => Field);
@@ -23,7 +23,7 @@ export async function copyAggregates(fromId: number, toId: number): Promise<void
     await db().raw(
       `INSERT INTO ${table} (${names.join(', ')}) SELECT ${cells.join(', ')} FROM ${table}
        WHERE station_id = ? AND starts_at < ?`,
-      [fromId, FIRST_SEC + MONTH_SEC],
+      [fromId, FIRST_SEC + months * MONTH_SEC],
     );
   }
 }

@@ -4,19 +4,19 @@ import mysql from 'mysql2/promise';
 import { closeDb, db } from '#db/client';
 
 /**
- * Runs `work` with a migrated database of its own as the process's, and drops it whatever happens. Prints on what machine, and
- * how busy it was before and after.
+ * Runs `work` with a migrated database of its own as the process's, and drops it whatever happens. Unless told not
+ * to, prints on what machine, and how busy it was before and after.
  */
-export async function withOwnSchema(work: () => Promise<void>): Promise<void> {
+export async function withOwnSchema(work: () => Promise<void>, { isTold = true } = {}): Promise<void> {
   const name = `bittern_bench_${randomBytes(6).toString('hex')}`;
   process.env['BITTERN_DB_NAME'] = name;
   process.env['BITTERN_LOG_LEVEL'] ??= 'silent';
   await asOwner(`CREATE DATABASE ${name} CHARACTER SET utf8mb4 COLLATE utf8mb4_uca1400_ai_ci`);
   try {
     await db().migrate.latest();
-    printMachine();
+    if (isTold) printMachine();
     await work();
-    printLoad();
+    if (isTold) printLoad();
   } finally {
     await closeDb();
     await asOwner(`DROP DATABASE IF EXISTS ${name}`);

@@ -13,13 +13,13 @@ export interface Columns extends Omit<SpectrogramColumns, 'header' | 'percentile
 
 /** Columns of nothing. */
 export function emptyColumns(plan: ColumnPlan, bands: readonly Band[], placeOfSlot: Int8Array): Columns {
-  const { count, fromSec, stepSec } = plan;
+  const { count } = plan;
   const none = () => new Int16Array(count).fill(NO_LEVEL_CENTI_DB);
   return {
     plan,
     bands,
     placeOfSlot,
-    startSec: Uint32Array.from({ length: count }, (_, at) => fromSec + at * stepSec),
+    startSec: startsOf(plan),
     presentSec: new Uint32Array(count),
     validSec: new Uint32Array(count),
     lateSec: new Uint32Array(count),
@@ -30,6 +30,12 @@ export function emptyColumns(plan: ColumnPlan, bands: readonly Band[], placeOfSl
     lafminCentiDb: none(),
     levelsCentiDb: new Int16Array(count * bands.length).fill(NO_LEVEL_CENTI_DB),
   };
+}
+
+function startsOf({ count, fromSec, stepSec }: ColumnPlan): Uint32Array {
+  const startSec = new Uint32Array(count);
+  for (let at = 0; at < count; at += 1) startSec[at] = fromSec + at * stepSec;
+  return startSec;
 }
 
 /** Adds to the number at a place. */

@@ -66,19 +66,22 @@ function noteInterval(
   }
 }
 
+interface Places extends Record<'indices' | 'placeOfSlot' | 'places', Int8Array> {
+  /** Whether every band is shown, one beside the other. */
+  isRun: boolean;
+}
+
 const NONE = new Int8Array(0);
-let lastPlaces: Record<'indices' | 'placeOfSlot' | 'places', Int8Array> = {
-  indices: NONE,
-  placeOfSlot: NONE,
-  places: NONE,
-};
+let lastPlaces: Places = { indices: NONE, placeOfSlot: NONE, places: NONE, isRun: false };
 
 /** Places in the columns' bands of an interval's; −1 for those that are not shown. Intervals of one band set share it. */
 function placesOf(columns: Columns, { bandFraction, bandIndices }: MeasuredInterval): Int8Array | null {
   if (bandFraction !== columns.bands[0]?.fraction) return null;
   if (lastPlaces.indices !== bandIndices || lastPlaces.placeOfSlot !== columns.placeOfSlot) {
     const places = bandIndices.map((index) => columns.placeOfSlot[bandSlot(index)] ?? -1);
-    lastPlaces = { indices: bandIndices, placeOfSlot: columns.placeOfSlot, places };
+    const first = places[0] ?? -1;
+    const isRun = first >= 0 && places.every((place, at) => place === first + at);
+    lastPlaces = { indices: bandIndices, placeOfSlot: columns.placeOfSlot, places, isRun };
   }
   return lastPlaces.places;
 }
@@ -90,6 +93,10 @@ function takeLevels(columns: Columns, at: number, interval: MeasuredInterval): v
   columns.laeqCentiDb[at] = interval.laeqCentiDb;
   const places = placesOf(columns, interval);
   if (!places) return;
+  if (lastPlaces.isRun) {
+    levelsCentiDb.set(interval.levelsCentiDb, offset + (places[0] ?? 0));
+    return;
+  }
   for (let i = 0; i < places.length; i += 1) {
     const place = places[i] ?? -1;
     if (place >= 0) levelsCentiDb[offset + place] = interval.levelsCentiDb[i] ?? NO_LEVEL_CENTI_DB;
