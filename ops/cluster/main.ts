@@ -17,7 +17,7 @@ const USAGE = `ops/cluster.sh COMMAND
   heal                               starts what does not run
   status                             what runs, and how the head's nodes stand
   kill NAME                          ends one without warning: head1 … head3, data1 …, web1, web2, worker1, worker2, proxy
-  move BUCKET SERVER                 moves a bucket (0 … 63) to another data server while all goes on
+  move BUCKET SERVER                 moves a bucket (0 … 63) to another data server while all goes on; to its own: takes a broken move back
   empty SERVER                       moves all of a data server's buckets to the others
   down                               stops everything; the data stay
 All of it stands in BITTERN_CLUSTER_DIR (.bittern-cluster); its ports begin at BITTERN_CLUSTER_PORT (4600).`;
@@ -89,7 +89,7 @@ async function move(bucketText: string, name: string): Promise<number> {
   if (bucketText === '' || !Number.isInteger(bucket) || bucket < 0 || bucket >= BUCKETS)
     throw new Error(`A bucket is a number from 0 to ${BUCKETS - 1}.`);
   const heldMs = await moveBucket(bucket, serverNamed(name));
-  console.log(`Bucket ${bucket} is on ${name}; it could only be read for ${Math.round(heldMs)} ms.`);
+  console.log(`Bucket ${bucket} is on ${name}; it was held for ${Math.round(heldMs)} ms.`);
   return 0;
 }
 

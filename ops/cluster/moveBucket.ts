@@ -1,14 +1,16 @@
 import type { Connection, RowDataPacket } from 'mysql2/promise';
 import { db } from '#db/client';
-import { connectTo, dataServers, linkName, type DataServer } from '#db/sharding/dataServers';
+import { connectTo, dataServers, linkName, onEach, type DataServer } from '#db/sharding/dataServers';
 import { BUCKETS, bucketTable, KINDS } from '#db/sharding/kinds';
 import { linkServers } from '#db/sharding/linkServers';
 import { replaceLinks } from '#db/sharding/relink';
 import { definitionOf } from '#db/sharding/shardTables';
 import { bucketTableText, serversOfLinkTable } from '#db/sharding/texts';
+import { config } from '#lib/config/index';
 import { copyPart } from './copyPart';
-import { beginQueue, dropBucketText, holdText, nextParts, partDone } from './moveQueue';
-import { isOutOfReach, putOutOfReach } from './outOfReach';
+import { beginQueue, begunFor, dropBucketText, endQueue, holdText, nextParts, partDone } from './moveQueue';
+import { takeTurn } from './moveTurn';
+import { bringBack, isOutOfReach, putOutOfReach } from './outOfReach';
 
 const PARTS_AT_ONCE = 50;
 /** So few parts are copied while the bucket is held. */
@@ -29,28 +31,46 @@ export async function placesOfBuckets(): Promise<DataServer[]> {
 /**
  * Moves a bucket to another server while it is used. Rows are copied part by part; what changes is noted by triggers and copied again. For the last of
  * it the bucket is held; posts wait, or are asked to come again. The old tables are put out of reach before the head leads to the new ones, and dropped
- * afterwards. Every part was compared by then. Broken off, it goes on where it was when called again.
+ * afterwards. Every part was compared by then. Broken off, it goes on where it was when called again with the same server, and is taken back when called
+ * with the server that has the bucket.
  * @returns for how long it was held, in milliseconds.
+ * @throws where another move goes on, or one to another server was broken off.
  */
 export async function moveBucket(bucket: number, to: DataServer): Promise<number> {
-  const from = (await placesOfBuckets())[bucket];
-  if (!from) throw new Error(`There is no bucket ${bucket}.`);
-  await linkServers(db(), dataServers());
-  if (from.name === to.name) {
-    await dropElsewhere(bucket, to);
+  const turn = await takeTurn();
+  try {
+    const from = (await placesOfBuckets())[bucket];
+    if (!from) throw new Error(`There is no bucket ${bucket}.`);
+    await linkServers(db(), dataServers());
+    if (from.name !== to.name) return await moveFrom(from, bucket, to);
+    await takeBack(bucket, to);
     return 0;
+  } finally {
+    await turn.end();
   }
+}
+
+async function moveFrom(from: DataServer, bucket: number, to: DataServer): Promise<number> {
   const source = await connectTo(from);
   const target = await connectTo(to, { isDatabaseThere: false });
   try {
+    const begunTo = await begunFor(source, bucket);
+    if (begunTo !== null && begunTo !== to.name)
+      throw new Error(
+        `A move of bucket ${bucket} to ${begunTo} was broken off: go on with it by moving there, or take it back by moving to ${from.name}.`,
+      );
     const startedMs = performance.now();
     if (await isOutOfReach(source, bucket)) {
+      await requireCopy(target, bucket, from, to);
       await leadTo(bucket, to);
       await source.query(dropBucketText(bucket));
       return performance.now() - startedMs;
     }
-    await prepareTarget(source, target, bucket);
-    await beginQueue(source, bucket);
+    await bringBack(source, bucket);
+    if (begunTo === null) {
+      await makeTarget(source, target, bucket);
+      await beginQueue(source, bucket, to.name);
+    } else await requireCopy(target, bucket, from, to);
     for (let round = 0; round < MOST_ROUNDS; round += 1) {
       const parts = await nextParts(source, bucket, PARTS_AT_ONCE);
       await copyParts(source, target, bucket, parts);
@@ -62,13 +82,32 @@ export async function moveBucket(bucket: number, to: DataServer): Promise<number
   }
 }
 
-async function prepareTarget(source: Connection, target: Connection, bucket: number): Promise<void> {
-  const [[named]] = await source.query<RowDataPacket[]>('SELECT DATABASE() AS name');
-  const name = String(named?.['name']);
+/** Parts that left the queue must still be where they were copied to. */
+async function requireCopy(
+  target: Connection,
+  bucket: number,
+  from: DataServer,
+  to: DataServer,
+): Promise<void> {
+  await target.query(`USE \`${config().database.name}\``);
+  const [rows] = await target.query<RowDataPacket[]>(
+    'SELECT 1 FROM information_schema.tables WHERE table_schema = DATABASE() AND table_name IN (?)',
+    [KINDS.map((kind) => bucketTable(kind, bucket))],
+  );
+  if (rows.length === KINDS.length) return;
+  throw new Error(
+    `What was copied of bucket ${bucket} to ${to.name} is gone: take the move back by moving to ${from.name}, and begin anew.`,
+  );
+}
+
+/** Makes the bucket's tables at the target anew: what may be there is of a move that came to nothing. */
+async function makeTarget(source: Connection, target: Connection, bucket: number): Promise<void> {
+  const { name } = config().database;
   await target.query(
     `CREATE DATABASE IF NOT EXISTS \`${name}\` CHARACTER SET utf8mb4 COLLATE utf8mb4_uca1400_ai_ci`,
   );
   await target.query(`USE \`${name}\``);
+  await target.query(dropBucketText(bucket));
   for (const kind of KINDS) {
     const [[row]] = await source.query<RowDataPacket[]>(`SHOW CREATE TABLE ${bucketTable(kind, bucket)}`);
     await target.query(bucketTableText(String(row?.['Create Table']), kind, bucket));
@@ -125,8 +164,15 @@ async function leadTo(bucket: number, to: DataServer): Promise<void> {
   await replaceLinks(db(), changed);
 }
 
-/** What a move that was broken off after the switch has left. */
-async function dropElsewhere(bucket: number, owner: DataServer): Promise<void> {
+/** Undoes what a move that was broken off has left where the bucket is, before the switch or after it, and elsewhere. */
+async function takeBack(bucket: number, owner: DataServer): Promise<void> {
+  const own = await connectTo(owner);
+  try {
+    await bringBack(own, bucket);
+    await endQueue(own, bucket);
+  } finally {
+    await own.end();
+  }
   for (const server of dataServers().filter(({ name }) => name !== owner.name)) {
     const connection = await connectTo(server).catch(() => null);
     await connection?.query(dropBucketText(bucket));
@@ -141,7 +187,8 @@ export async function emptyServer(from: DataServer, tell: (line: string) => void
   const places = await placesOfBuckets();
   for (let bucket = 0; bucket < BUCKETS; bucket += 1) {
     if (places[bucket]?.name !== from.name) continue;
-    const to = others[bucket % others.length] as DataServer;
+    const [begunTo] = await onEach([from], (connection) => begunFor(connection, bucket));
+    const to = others.find(({ name }) => name === begunTo) ?? (others[bucket % others.length] as DataServer);
     const heldMs = await moveBucket(bucket, to);
     tell(`bucket ${bucket}: ${from.name} → ${to.name}, held ${Math.round(heldMs)} ms`);
   }

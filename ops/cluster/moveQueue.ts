@@ -21,17 +21,29 @@ export interface Part {
 
 const queueTable = (bucket: number) => `moving_${String(bucket).padStart(2, '0')}`;
 
+/** Is there once all parts are in the queue; its comment names the server they go to. */
+const readyTable = (bucket: number) => `${queueTable(bucket)}_ready`;
+
+const noter = (kind: Kind, bucket: number, event: string) => `moving_${kind}_${bucket}_${event}`;
+
 /** A part's week as SQL, of a row that `row` stands before (`NEW.`, `OLD.` or nothing). */
 const weekText = (kind: Kind, row = '') => (TIMED.includes(kind) ? `${row}starts_at DIV ${WEEK_SEC}` : '0');
 
+/** The server that a bucket is being moved to by the queue of the one that has it; null where no move has got as far as copying. */
+export async function begunFor(source: Connection, bucket: number): Promise<string | null> {
+  const [[row]] = await source.query<RowDataPacket[]>(
+    'SELECT table_comment AS server FROM information_schema.tables WHERE table_schema = DATABASE() AND table_name = ?',
+    [readyTable(bucket)],
+  );
+  return row ? String(row['server']) : null;
+}
+
 /**
- * Begins to note, on the server that has a bucket, which of its parts have yet to be copied: all of them, and from now on each that changes.
- * Begun before and broken off, it goes on with what it knows.
+ * Begins to note, on the server that has a bucket, which of its parts have yet to be copied to a server: all of them, and from now on each that
+ * changes.
  */
-export async function beginQueue(source: Connection, bucket: number): Promise<void> {
+export async function beginQueue(source: Connection, bucket: number, to: string): Promise<void> {
   const queue = queueTable(bucket);
-  const [tables] = await source.query<RowDataPacket[]>('SHOW TABLES LIKE ?', [`${queue}\\_ready`]);
-  if (tables.length > 0) return;
   await source.query(`CREATE TABLE IF NOT EXISTS ${queue} (
     kind VARCHAR(30) NOT NULL, station_id INT UNSIGNED NOT NULL, week INT UNSIGNED NOT NULL, version INT UNSIGNED NOT NULL DEFAULT 0,
     PRIMARY KEY (kind, station_id, week)) ENGINE = InnoDB CHARSET = ascii`);
@@ -42,17 +54,28 @@ export async function beginQueue(source: Connection, bucket: number): Promise<vo
       ['UPDATE', 'NEW.'],
       ['DELETE', 'OLD.'],
     ] as const)
-      await source.query(`CREATE OR REPLACE TRIGGER moving_${kind}_${bucket}_${event} AFTER ${event} ON ${table} FOR EACH ROW
+      await source.query(`CREATE OR REPLACE TRIGGER ${noter(kind, bucket, event)} AFTER ${event} ON ${table} FOR EACH ROW
         ${noteText(queue, kind, row)}`);
     // A row that is moved in time leaves its old week, too.
     if (TIMED.includes(kind))
-      await source.query(`CREATE OR REPLACE TRIGGER moving_${kind}_${bucket}_LEFT BEFORE UPDATE ON ${table} FOR EACH ROW
+      await source.query(`CREATE OR REPLACE TRIGGER ${noter(kind, bucket, 'LEFT')} BEFORE UPDATE ON ${table} FOR EACH ROW
         ${noteText(queue, kind, 'OLD.')}`);
     await source.query(
       `INSERT IGNORE INTO ${queue} (kind, station_id, week) SELECT DISTINCT '${kind}', station_id, ${weekText(kind)} FROM ${table}`,
     );
   }
-  await source.query(`CREATE TABLE ${queue}_ready (id INT) ENGINE = InnoDB`);
+  await source.query(
+    `CREATE TABLE ${readyTable(bucket)} (id INT) ENGINE = InnoDB COMMENT = ${source.escape(to)}`,
+  );
+}
+
+/** Notes nothing any more. That it was begun is forgotten first: broken off here, the next move begins anew. */
+export async function endQueue(source: Connection, bucket: number): Promise<void> {
+  await source.query(`DROP TABLE IF EXISTS ${readyTable(bucket)}`);
+  for (const kind of KINDS)
+    for (const event of ['INSERT', 'UPDATE', 'DELETE', 'LEFT'])
+      await source.query(`DROP TRIGGER IF EXISTS ${noter(kind, bucket, event)}`);
+  await source.query(`DROP TABLE IF EXISTS ${queueTable(bucket)}`);
 }
 
 function noteText(queue: string, kind: Kind, row: string): string {
@@ -93,7 +116,7 @@ export function holdText(bucket: number): string {
 /** The statement that drops what a bucket has left on a server, in or out of reach, and with it what notes changes. */
 export function dropBucketText(bucket: number): string {
   const tables = KINDS.flatMap((kind) => [bucketTable(kind, bucket), leftTable(kind, bucket)]);
-  return `DROP TABLE IF EXISTS ${[...tables, queueTable(bucket), `${queueTable(bucket)}_ready`].join(', ')}`;
+  return `DROP TABLE IF EXISTS ${[readyTable(bucket), ...tables, queueTable(bucket)].join(', ')}`;
 }
 
 /** What a bucket's table is called once nobody shall find it. */
