@@ -7,28 +7,37 @@ import { linkTableText, serversOfLinkTable } from './texts';
 /** Columns and keys of a definition, without what follows them. */
 const insideOf = (created: string) => created.slice(created.indexOf('('), created.lastIndexOf(') ENGINE'));
 
-/**
- * Makes the head's links of kinds anew, all at once: nobody sees some of them as they were.
- * @param changed kinds, each with a definition that has its columns and keys, and the server of each bucket as the head knows it.
- */
-export async function replaceLinks(
-  conn: Knex,
-  changed: readonly { kind: Kind; created: string; serverOf: (bucket: number) => string }[],
-): Promise<void> {
-  if (changed.length === 0) return;
+/** A kind, a definition that has its columns and keys, and the server of each bucket as the head knows it. */
+export interface ChangedKind {
+  kind: Kind;
+  created: string;
+  serverOf: (bucket: number) => string;
+}
+
+/** Makes links of kinds anew beside those that are used, which takes longest. `useLinks` puts them in their place. */
+export async function makeLinks(conn: Knex, changed: readonly ChangedKind[]): Promise<void> {
+  await dropOldLinks(conn);
   for (const { kind, created, serverOf } of changed) {
-    await conn.raw('DROP TABLE IF EXISTS ??, ??', [`${kind}__linked`, `${kind}__left`]);
+    await conn.raw('DROP TABLE IF EXISTS ??', [`${kind}__linked`]);
     const text = linkTableText(created, kind, `${kind}__linked`, serverOf);
     await conn.raw(text.replaceAll('?', '\\?'));
   }
+}
+
+/** Has the head use links that were made, all at once: nobody sees some of them as they were. */
+export async function useLinks(conn: Knex, changed: readonly Pick<ChangedKind, 'kind'>[]): Promise<void> {
   const renames = changed.map(({ kind }) => `${kind} TO ${kind}__left, ${kind}__linked TO ${kind}`);
   await conn.raw(`RENAME TABLE ${renames.join(', ')}`);
-  await conn.raw(`DROP TABLE ${changed.map(({ kind }) => `${kind}__left`).join(', ')}`);
+}
+
+/** Drops the links that `useLinks` has replaced. */
+export async function dropOldLinks(conn: Knex): Promise<void> {
+  await conn.raw(`DROP TABLE IF EXISTS ${KINDS.map((kind) => `${kind}__left`).join(', ')}`);
 }
 
 /** Has the head's links follow bucket tables that a migration has altered (`alterKind.mjs`). `links`: the head's definitions of all kinds. */
 export async function relinkAltered(conn: Knex, links: ReadonlyMap<Kind, string>): Promise<void> {
-  const changed = [];
+  const changed: ChangedKind[] = [];
   for (const kind of KINDS) {
     const link = links.get(kind) ?? '';
     const servers = serversOfLinkTable(link);
@@ -41,5 +50,8 @@ export async function relinkAltered(conn: Knex, links: ReadonlyMap<Kind, string>
     if (insideOf(created) !== insideOf(link))
       changed.push({ kind, created, serverOf: (bucket: number) => servers[bucket] ?? '' });
   }
-  await replaceLinks(conn, changed);
+  if (changed.length === 0) return;
+  await makeLinks(conn, changed);
+  await useLinks(conn, changed);
+  await dropOldLinks(conn);
 }

@@ -13,6 +13,11 @@ export function bucketTableText(created: string, kind: Kind, bucket: number): st
     .replace(/^CREATE TABLE `\w+`/, `CREATE TABLE IF NOT EXISTS \`${bucketTable(kind, bucket)}\``);
 }
 
+/** The statement that makes one table of a kind for all stations, from a bucket's table as `SHOW CREATE TABLE` gives it. */
+export function localTableText(created: string, kind: Kind): string {
+  return created.replace(COUNTED, '').replace(/^CREATE TABLE `\w+`/, `CREATE TABLE \`${kind}\``);
+}
+
 /**
  * The statement that makes the table of the head which leads to all buckets of a kind.
  * @param serverOf the name, as the head knows it, of the server that a bucket stands on.

@@ -3,6 +3,7 @@ import { readFile } from 'node:fs/promises';
 import { join, relative, resolve } from 'node:path';
 import { Readable } from 'node:stream';
 import { parseArgs } from 'node:util';
+import { closeDb } from '#db/client';
 import { SettingsError, type Config } from '#lib/config/config';
 import { config } from '#lib/config/index';
 import { Ending, EXIT, exitCodeOf } from './ending';
@@ -34,6 +35,7 @@ async function backUp(): Promise<void> {
     for (const name of [...oldKeys, ...oldData]) console.log(`Removed the older set ${name}.`);
     if (secretsTo !== null) await writeSecrets(settings, secretsTo);
   } finally {
+    await closeDb();
     await connection.end();
   }
 }

@@ -1,3 +1,4 @@
+import { KINDS } from '#db/sharding/kinds';
 import type { Config } from '#lib/config/config';
 import { startTool, type Tool } from './tool';
 
@@ -16,7 +17,14 @@ export function startDump({ database }: Config, hasBinaryLog = false): Tool {
     '--skip-add-locks',
     '--skip-disable-keys',
     '--no-tablespaces',
+    // Rows that the head reaches through links count, too; without this the dump passes them over silently.
+    '--skip-no-data-med',
     '--max-allowed-packet=64M',
+    // What a move of a bucket that was broken off has left at the head.
+    ...KINDS.flatMap((kind) => [
+      `--ignore-table=${database.name}.${kind}__linked`,
+      `--ignore-table=${database.name}.${kind}__left`,
+    ]),
     ...(hasBinaryLog ? ['--master-data=2'] : []),
     database.name,
   ];

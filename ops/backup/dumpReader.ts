@@ -13,19 +13,24 @@ export interface TableDigest {
 
 /**
  * Reads a dump line by line: parts the rows of `APART` from all else, counts and digests the rows of each table, and takes out whose the
- * triggers are, since the account may be another where they are restored.
+ * triggers are, since the account may be another where they are restored. `definitions` are statements that make a table, by its name, in place
+ * of those of the dump: a table that only leads to other servers is restored as one that has its rows.
  */
 export class DumpReader {
   private table: string | null = null;
-  private place: 'header' | 'table' | 'rows' | 'body' | 'trailer' = 'header';
+  private place: 'header' | 'table' | 'replaced' | 'rows' | 'body' | 'trailer' = 'header';
   private readonly tables = new Map<string, { rows: number; hash: Hash }>();
   private readonly apartLines: string[] = [];
   /** Where the binary log stood, where the server has one. */
   binaryLog: { file: string; position: number } | null = null;
 
+  constructor(private readonly definitions: ReadonlyMap<string, string> = new Map()) {}
+
   /** Takes lines and answers what goes with the data; the rest waits in `apart`. */
   take(lines: string[]): string {
-    const kept = lines.filter((line) => this.takeLine(line)).map(withoutDefiner);
+    const kept = lines.flatMap(
+      (line) => this.replaced(line) ?? (this.takeLine(line) ? [withoutDefiner(line)] : []),
+    );
     return kept.length === 0 ? '' : `${kept.join('\n')}\n`;
   }
 
@@ -37,6 +42,15 @@ export class DumpReader {
   /** Digests of all tables, those apart with them. Once only, when the dump has been read. */
   digests(): TableDigest[] {
     return [...this.tables].map(([name, { rows, hash }]) => ({ name, rows, sha256: hash.digest('hex') }));
+  }
+
+  /** What stands for a line of a definition that is replaced; null for any other. */
+  private replaced(line: string): string[] | null {
+    const isFirst = this.place === 'table' && line.startsWith('CREATE TABLE `');
+    const definition = isFirst && this.table !== null ? this.definitions.get(this.table) : undefined;
+    if (definition === undefined && this.place !== 'replaced') return null;
+    this.place = line.endsWith(';') ? 'table' : 'replaced';
+    return definition === undefined ? [] : [`${definition};`];
   }
 
   /** Whether the line goes with the data. */

@@ -1,6 +1,7 @@
 import { mkdir, rename, rm } from 'node:fs/promises';
 import { join } from 'node:path';
 import { Readable } from 'node:stream';
+import { localDefinitions } from '#db/sharding/localDefinitions';
 import type { Config } from '#lib/config/config';
 import { startDump } from './databaseTools';
 import { APART, DumpReader, linesOf, type TableDigest } from './dumpReader';
@@ -76,7 +77,7 @@ async function writeDatabase(
   places: Record<SetKind, string>,
 ): Promise<{ reader: DumpReader; data: FileFacts; keys: FileFacts }> {
   const { passphraseFile } = settings.backup;
-  const reader = new DumpReader();
+  const reader = new DumpReader(await localDefinitions());
   const dump = startDump(settings, hasBinaryLog);
   const file = 'database.sql.gz';
   const data = await writeSealed(dataOf(dump, reader), join(places.data, file), file, passphraseFile);

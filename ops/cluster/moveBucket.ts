@@ -3,7 +3,7 @@ import { db } from '#db/client';
 import { connectTo, dataServers, linkName, onEach, type DataServer } from '#db/sharding/dataServers';
 import { BUCKETS, bucketTable, KINDS } from '#db/sharding/kinds';
 import { linkServers } from '#db/sharding/linkServers';
-import { replaceLinks } from '#db/sharding/relink';
+import { dropOldLinks, makeLinks, useLinks, type ChangedKind } from '#db/sharding/relink';
 import { definitionOf } from '#db/sharding/shardTables';
 import { bucketTableText, serversOfLinkTable } from '#db/sharding/texts';
 import { config } from '#lib/config/index';
@@ -62,9 +62,10 @@ async function moveFrom(from: DataServer, bucket: number, to: DataServer): Promi
     const startedMs = performance.now();
     if (await isOutOfReach(source, bucket)) {
       await requireCopy(target, bucket, from, to);
-      await leadTo(bucket, to);
-      await source.query(dropBucketText(bucket));
-      return performance.now() - startedMs;
+      await useLinks(db(), await prepareLinks(bucket, to));
+      const heldMs = performance.now() - startedMs;
+      await dropLeft(source, bucket);
+      return heldMs;
     }
     await bringBack(source, bucket);
     if (begunTo === null) {
@@ -131,6 +132,7 @@ async function switchOver(
   bucket: number,
   to: DataServer,
 ): Promise<number> {
+  const links = await prepareLinks(bucket, to);
   const startedMs = performance.now();
   await source.query(holdText(bucket));
   for (;;) {
@@ -141,10 +143,15 @@ async function switchOver(
   await takeCountersAlong(source, target, bucket);
   await putOutOfReach(source, bucket);
   await source.query('UNLOCK TABLES');
-  await leadTo(bucket, to);
+  await useLinks(db(), links);
   const heldMs = performance.now() - startedMs;
-  await source.query(dropBucketText(bucket));
+  await dropLeft(source, bucket);
   return heldMs;
+}
+
+async function dropLeft(source: Connection, bucket: number): Promise<void> {
+  await dropOldLinks(db());
+  await source.query(dropBucketText(bucket));
 }
 
 /** Ids go on where they were, so that none that somebody has read comes a second time. */
@@ -155,13 +162,17 @@ async function takeCountersAlong(source: Connection, target: Connection, bucket:
   if (next !== undefined) await target.query(`ALTER TABLE ${table} AUTO_INCREMENT = ${next}`);
 }
 
-/** All kinds at once: nobody sees a bucket half here and half there. */
-async function leadTo(bucket: number, to: DataServer): Promise<void> {
-  const places = await placesOfBuckets();
-  const linkOf = (at: number) => linkName(at === bucket ? to : (places[at] as DataServer));
-  const changed = [];
-  for (const kind of KINDS) changed.push({ kind, created: await definitionOf(db(), kind), serverOf: linkOf });
-  await replaceLinks(db(), changed);
+/** Links that lead to the new server, beside those that are used: nobody has to wait while they are made. */
+async function prepareLinks(bucket: number, to: DataServer): Promise<ChangedKind[]> {
+  const links: ChangedKind[] = [];
+  for (const kind of KINDS) {
+    const created = await definitionOf(db(), kind);
+    const servers = serversOfLinkTable(created);
+    servers[bucket] = linkName(to);
+    links.push({ kind, created, serverOf: (at) => servers[at] ?? '' });
+  }
+  await makeLinks(db(), links);
+  return links;
 }
 
 /** Undoes what a move that was broken off has left where the bucket is, before the switch or after it, and elsewhere. */
@@ -170,6 +181,7 @@ async function takeBack(bucket: number, owner: DataServer): Promise<void> {
   try {
     await bringBack(own, bucket);
     await endQueue(own, bucket);
+    await dropOldLinks(db());
   } finally {
     await own.end();
   }
