@@ -4,6 +4,7 @@ import { periodStatistics } from '#lib/services/levels/statistics';
 import { addCopies, copyAggregates } from './support/copies';
 import { fleetRow } from './support/fleet';
 import { monthBySize } from './support/growth';
+import { WEB_ARGUMENTS } from '#ops/start/webArguments';
 import { WORKER_ARGUMENTS } from '#ops/start/workerArguments';
 import { digits, printTable } from './support/measure';
 import { asksMemoryMib, workersMemoryMib } from './support/memory';
@@ -15,12 +16,15 @@ import { makeNetwork, makeStation } from './support/station';
 /**
  * The targets of speed, as ratios to R within one run: R is fetching a station's month of minutes (43,200 rows of 31 thirds) as
  * the driver gives them. Each work takes turns with R, so that no work pays for collecting what another left, and tables of several sizes
- * take turns with one another; each ratio is of medians. `npx tsx ops/bench/targets.ts`, about 3 min.
+ * take turns with one another; each ratio is of medians. As the web, it needs
+ * room for young objects: `node --max-semi-space-size=32 --import tsx ops/bench/targets.ts`, about 3 min.
  */
 const MONTH = { fromSec: FIRST_SEC, toSec: FIRST_SEC + MONTH_SEC };
 const YEAR = { fromSec: FIRST_SEC, toSec: FIRST_SEC + 12 * MONTH_SEC };
 const ROUNDS = 15;
 const rows: string[][] = [];
+if (WEB_ARGUMENTS.some((argument) => !process.execArgv.includes(argument)))
+  throw new Error(`Start it as the web is started: node ${WEB_ARGUMENTS.join(' ')} ops/bench/targets.ts`);
 
 await withOwnSchema(async () => {
   const networkId = await makeNetwork();

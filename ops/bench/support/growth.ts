@@ -1,5 +1,6 @@
 import { fork, type ChildProcess } from 'node:child_process';
 import { once } from 'node:events';
+import { WEB_ARGUMENTS } from '#ops/start/webArguments';
 import { median } from './measure';
 
 /** What a table holds of stations like the one that is asked about. */
@@ -8,8 +9,8 @@ export interface Size {
   stations: number;
 }
 
-const WARM_ROUNDS = 10;
-const ROUNDS = 41;
+const WARM_ROUNDS = 40;
+const ROUNDS = 101;
 
 /**
  * What the statistics of a month cost in tables of several sizes, in milliseconds: medians, each size in a database and a process of its
@@ -19,7 +20,7 @@ export async function monthBySize(sizes: readonly Size[]): Promise<number[]> {
   const asked: { child: ChildProcess; ms: number[] }[] = [];
   for (const { months, stations } of sizes) {
     const child = fork('ops/bench/support/growing.ts', [String(months), String(stations)], {
-      execArgv: ['--import', 'tsx'],
+      execArgv: WEB_ARGUMENTS,
     });
     await once(child, 'message');
     asked.push({ child, ms: [] });

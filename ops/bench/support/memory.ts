@@ -6,6 +6,7 @@ import { db } from '#db/client';
 import { inTransaction } from '#db/queries/connection';
 import { markMeasuredQuarters } from '#db/queries/quarterHours';
 import { type StationRow } from '#db/queries/stations';
+import { WEB_ARGUMENTS } from '#ops/start/webArguments';
 import { WORKER_ARGUMENTS } from '#ops/start/workerArguments';
 
 /** Highest resident memory of a worker, in MiB, that recomputes everything a station has, twice. */
@@ -25,7 +26,7 @@ export async function workersMemoryMib({ id }: StationRow): Promise<number> {
 
 /** Highest resident memory, in MiB, of a process that answers the questions of a month and a year again and again. */
 export async function asksMemoryMib(): Promise<number> {
-  const asking = spawn(process.execPath, ['--import', 'tsx', 'ops/bench/support/ask.ts'], {
+  const asking = spawn(process.execPath, [...WEB_ARGUMENTS, 'ops/bench/support/ask.ts'], {
     stdio: ['ignore', 'pipe', 'inherit'],
   });
   let printed = '';

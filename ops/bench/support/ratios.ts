@@ -21,7 +21,7 @@ interface Taken {
 }
 
 /** Before those that count, so that everything is compiled as in a process that has run for a while. */
-const WARM_ROUNDS = 5;
+const WARM_ROUNDS = 20;
 
 /** Every work and R, turn by turn, after some for warmth. */
 export async function measure(
