@@ -12,8 +12,8 @@ export interface PreparedRows {
   tail?: string;
 }
 
-/** Rows a statement, largest first: a date's quarter-hours, its periods. */
-const ROWS_A_STATEMENT = [96, 16, 3, 1];
+/** Rows a statement, largest first: quarter-hours of three dates, of one; periods of three dates, of one. */
+const ROWS_A_STATEMENT = [288, 96, 16, 9, 3, 1];
 
 /** Inserts rows by prepared statements, which go in order. */
 export async function insertPrepared(conn: Connection, insertion: PreparedRows): Promise<void> {

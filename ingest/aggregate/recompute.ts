@@ -23,7 +23,7 @@ export async function recompute(
   timeline: NetworkSettings[],
   conn: Connection,
 ): Promise<void> {
-  const parts = partsOf(chunk, Date.now() / 1000);
+  const parts = partsOf(chunk, station.intervalSec, Date.now() / 1000);
   const read = (part: number) => {
     const span = parts[part]?.span;
     return heard(span && selectMeasuredIntervals(station.id, span.fromSec, span.toSec, conn));
