@@ -10,7 +10,7 @@ export interface NewDelivery {
 }
 
 /** A delivery that this sender holds until its lease ends. */
-export interface LeasedDelivery extends Omit<NewDelivery, 'key'> {
+export interface LeasedDelivery extends Pick<NewDelivery, 'webhookId' | 'body'> {
   id: number;
   attempts: number;
   createdAt: Date;
@@ -89,8 +89,6 @@ export async function leaseDueDelivery(
         .first({
           id: 'id',
           webhookId: 'webhook_id',
-          eventId: 'event_id',
-          event: 'event',
           body: 'body',
           attempts: 'attempts',
           createdAt: 'created_at',

@@ -6,7 +6,7 @@ import { findWebhook, lockWebhook, updateWebhookHealth, type WebhookRow } from '
 import { putNotes } from '#ingest/health/mail';
 import { config } from '#lib/config/index';
 import { postOnce, type PostOutcome } from '#lib/services/webhooks/post';
-import { signatureHeader, webhookSecret } from '#lib/services/webhooks/signature';
+import { signatureFields, webhookSecret } from '#lib/services/webhooks/signature';
 import { eachAlone } from '../jobs/alone';
 import { waitMs } from './backOff';
 
@@ -51,13 +51,12 @@ export async function sendDueWebhook(sender: WebhookSender, now: Date): Promise<
   return 1;
 }
 
-function headersOf({ salt }: WebhookRow, { event, eventId, body }: LeasedDelivery, now: Date) {
+function headersOf({ id, url, salt }: WebhookRow, { body }: LeasedDelivery, now: Date) {
+  const post = { webhookId: id, url, body, secret: webhookSecret(salt) };
   return {
     'Content-Type': 'application/json; charset=utf-8',
     'User-Agent': 'Bittern',
-    'Bittern-Event': event,
-    'Bittern-Delivery': eventId,
-    'Bittern-Signature': signatureHeader(webhookSecret(salt), body, Math.floor(now.getTime() / 1000)),
+    ...signatureFields(post, Math.floor(now.getTime() / 1000)),
   };
 }
 

@@ -40,7 +40,7 @@ export const webhookSchema = z.object({
 export type Webhook = z.output<typeof webhookSchema>;
 
 const deliverySchema = z.object({
-  id: z.string().describe('The `id` of what was posted, and its Bittern-Delivery'),
+  id: z.string().describe('The `id` in the body of what was posted'),
   webhook: z.number().int(),
   event: z.string(),
   state: z.enum(['waiting', 'delivered', 'dead']),
@@ -97,7 +97,15 @@ registerRoute({
   responses: {
     201: answer(
       'With the secret that its receiver checks signatures with, told this once',
-      z.object({ webhook: webhookSchema, secret: z.string() }),
+      z.object({
+        webhook: webhookSchema,
+        secret: z
+          .string()
+          .describe(
+            'Base64 of the 32 bytes that every post is signed under: HTTP message signature (RFC 9421) `bittern`, hmac-sha256, over ' +
+              '`@method`, `@target-uri` and `content-digest` (RFC 9530, sha-256)',
+          ),
+      }),
     ),
   },
 });
