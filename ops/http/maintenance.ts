@@ -1,5 +1,6 @@
 import type { IncomingMessage, RequestListener, ServerResponse } from 'node:http';
 import { problemAnswer, Problem } from '#lib/http/problem';
+import { closeLingering } from './lingeringClose';
 
 const RETRY_AFTER_SEC = 15;
 
@@ -71,6 +72,7 @@ function write(
   type: string,
   body: string,
 ): void {
+  if (!request.complete) closeLingering(request);
   response.writeHead(status, {
     'Content-Type': type,
     'Content-Length': Buffer.byteLength(body),

@@ -4,6 +4,7 @@ import type { Answer } from '#lib/http/answer';
 import type { Chunks } from '#lib/http/monitorRequest';
 import { problemAnswer } from '#lib/http/problem';
 import { problemOf } from '#lib/http/route';
+import { closeLingering } from './lingeringClose';
 import { takePost } from '../../src/pages/api/v1/intervals/index';
 
 /**
@@ -48,6 +49,7 @@ function chunksOf(request: IncomingMessage): Chunks {
 }
 
 function write({ status, headers, body }: Answer, request: IncomingMessage, response: ServerResponse): void {
+  if (!request.complete) closeLingering(request);
   response.writeHead(status, {
     ...headers,
     // What was not read of the body is not waited for.
