@@ -5,6 +5,7 @@ import { untilSchemaIsCurrent } from '#db/currentSchema';
 import { log } from '#lib/config/log';
 import { warnOfAuditGrant } from '#lib/services/audit/warnOfGrant';
 import { aggregate } from './jobs/aggregate';
+import { checkRights } from './jobs/checkRights';
 import { composeAlerts } from './jobs/composeAlerts';
 import { completeEndedPeriods } from './jobs/completePeriods';
 import { draftSummaries } from './jobs/draftSummaries';
@@ -54,6 +55,7 @@ const LOOPS: LoopSettings[] = [
 const SLOT_JOBS: SlotJob[] = [
   { name: 'tick', slotMinutes: 1, run: async () => 'alive' },
   { name: 'complete-periods', slotMinutes: 15, run: completeEndedPeriods },
+  { name: 'check-rights', slotMinutes: 60, run: checkRights },
   { name: 'make-partitions', slotMinutes: 60, run: makePartitions },
   { name: 'housekeeping', slotMinutes: 60, run: housekeeping },
   { name: 'forecast-disk', slotMinutes: 60, run: forecastDisk },
@@ -74,6 +76,9 @@ await untilSchemaIsCurrent({
 });
 
 await warnOfAuditGrant();
+await checkRights(new Date()).catch((error: unknown) =>
+  log().error({ err: error }, 'the rights of the database account could not be looked at'),
+);
 
 await thisWorker.join();
 const stop = new AbortController();

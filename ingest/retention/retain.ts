@@ -34,7 +34,8 @@ const ROWS_A_TRANSACTION = 5000;
 export async function retainIntervals(now: Date): Promise<number> {
   await eachAlone(JOB, await listNetworks(), networkSubject, (network) => sealNetwork(network, now), now);
   const sealedBy = new Date(now.getTime() - PAUSE_MS);
-  await dropPassedMonths(sealedBy);
+  // Where it cannot, rows are deleted one by one all the same.
+  await eachAlone(JOB, [sealedBy], () => ({ name: 'whole months', networkId: null }), dropPassedMonths, now);
   const sealed = await listSealedBefore(sealedBy);
   const keptFrom = new Map(sealed.map(({ stationId, keptFromSec }) => [stationId, keptFromSec]));
   const remove = (stationId: number) =>

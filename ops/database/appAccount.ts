@@ -1,14 +1,6 @@
 import { randomBytes } from 'node:crypto';
 import type { Connection } from 'mysql2/promise';
-
-/** Web and worker may add to these and read them, and nothing else. */
-export const INSERT_ONLY = ['audit_log', 'issued_summaries', 'issued_summary_files'];
-/** One row that names the trail's last act: moved on, never removed. */
-const MOVED_ON = ['audit_head'];
-/** Partitions of them are made as months come and dropped as they go, by the worker. */
-const PARTED = ['interval_levels', 'quarter_hours'];
-/** What was migrated is the owner's to say. */
-const READ_ONLY = ['schema_migrations', 'schema_migrations_lock'];
+import { appRightsOn } from '#db/appRights';
 
 /** An account of the database server, by its two parts. */
 export interface DatabaseAccount {
@@ -26,15 +18,9 @@ export function appGrants(
   { user, host }: DatabaseAccount,
 ): string[] {
   const account = `${quoted(user)}@${quoted(host)}`;
-  return tables.map((table) => `GRANT ${rightsOn(table)} ON \`${database}\`.\`${table}\` TO ${account}`);
-}
-
-function rightsOn(table: string): string {
-  if (INSERT_ONLY.includes(table)) return 'SELECT, INSERT';
-  if (MOVED_ON.includes(table)) return 'SELECT, UPDATE';
-  if (READ_ONLY.includes(table)) return 'SELECT';
-  if (PARTED.includes(table)) return 'SELECT, INSERT, UPDATE, DELETE, ALTER, DROP';
-  return 'SELECT, INSERT, UPDATE, DELETE';
+  return tables.map(
+    (table) => `GRANT ${appRightsOn(table).join(', ')} ON \`${database}\`.\`${table}\` TO ${account}`,
+  );
 }
 
 function quoted(text: string): string {

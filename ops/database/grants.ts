@@ -1,4 +1,4 @@
-import { readFileSync } from 'node:fs';
+import { schemaTables } from '#db/appRights';
 import { appGrants } from './appAccount';
 
 const USAGE = `Prints the rights that web and worker need, for a database server that is not Bittern's own:
@@ -10,8 +10,5 @@ if (!/^\w{1,64}$/.test(database) || user === '' || host === '' || more.length > 
   console.error(USAGE);
   process.exitCode = 2;
 } else {
-  const created = readFileSync('db/schema.sql', 'utf8').matchAll(/^CREATE TABLE `(\w+)`/gm);
-  const tables = new Set([...created].map(([, table = '']) => table));
-  for (const table of ['schema_migrations', 'schema_migrations_lock']) tables.add(table);
-  for (const statement of appGrants(database, [...tables], { user, host })) console.log(`${statement};`);
+  for (const statement of appGrants(database, schemaTables(), { user, host })) console.log(`${statement};`);
 }

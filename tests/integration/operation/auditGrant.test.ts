@@ -8,6 +8,7 @@ import { connectionSettings } from '#db/settings';
 import { config } from '#lib/config/index';
 import { makeAppAccount } from '#ops/database/appAccount';
 import { useFreshSchema } from '../support/freshSchema';
+import { whoMayGrant } from '../support/whoMayGrant';
 
 useFreshSchema();
 
@@ -27,18 +28,6 @@ beforeAll(async () => {
     ),
   );
 });
-
-/** The tests' own account, where it may give rights; else root of the server that the tests started. */
-async function whoMayGrant(): Promise<Connection> {
-  const { host, port, user, password } = config().database;
-  const own = await mysql.createConnection({ host, port, user, password });
-  const [grants] = await own.query('SHOW GRANTS');
-  if (JSON.stringify(grants).includes('WITH GRANT OPTION')) return own;
-  const [rows] = await own.query('SELECT @@socket AS socket');
-  await own.end();
-  const [{ socket }] = rows as [{ socket: string }];
-  return mysql.createConnection({ socketPath: socket, user: 'root', password });
-}
 
 afterAll(async () => {
   await app.end();

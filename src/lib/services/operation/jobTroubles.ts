@@ -39,6 +39,7 @@ const JOBS: Readonly<Record<string, string>> = {
   'forecast-disk': 'warn of a full disk',
   housekeeping: 'tidy up',
   'send-mail': 'send e-mail',
+  'check-rights': 'work with the database',
   'make-partitions': 'keep tables parted by months',
 };
 
