@@ -3,11 +3,20 @@ import { defineConfig } from 'vitest/config';
 
 const root = fileURLToPath(new URL('..', import.meta.url));
 
-/** Integration tests that also run on a cluster: all of them by `CLUSTER=whole`. */
+/** Tests of other folders that also run on a cluster: all that can by `CLUSTER=whole`. */
 const onCluster =
   process.env['CLUSTER'] === 'whole'
-    ? ['tests/integration/**/*.test.ts']
+    ? ['tests/integration/**/*.test.ts', 'tests/faults/{clock,smtp,poison,poisonedNetwork,sharing}.test.ts']
     : ['tests/integration/ingest/order.test.ts', 'tests/integration/levels/rebuild.test.ts'];
+
+/** Tests of what a server of their own does, with its options, accounts or files: a cluster has no part in it. */
+const OF_ONE_SERVER = [
+  'tests/integration/backup/pointInTime.test.ts', // its binary log
+  'tests/integration/ingest/away.test.ts', // stopped, made read-only, filled; here: tests/cluster/kills.test.ts
+  'tests/integration/operation/auditGrant.test.ts', // the account that Bittern makes for itself in a database of its own
+  'tests/integration/operation/databaseTls.test.ts', // its certificate
+  'tests/integration/operation/migrations.test.ts', // the schema of local tables; here: tests/cluster/alter.test.ts
+];
 
 export default defineConfig({
   root,
@@ -57,6 +66,7 @@ export default defineConfig({
         test: {
           name: 'cluster',
           include: ['tests/cluster/**/*.test.ts', ...onCluster],
+          exclude: OF_ONE_SERVER,
           globalSetup: ['tests/cluster/support/globalSetup.ts'],
           testTimeout: 120_000,
           hookTimeout: 120_000,

@@ -1,3 +1,5 @@
+import { readFileSync } from 'node:fs';
+import { isIP } from 'node:net';
 import mysql from 'mysql2/promise';
 
 /** What a statement says that has been carried out already: a migration that was broken off is gone on with. */
@@ -16,6 +18,7 @@ export async function alterKind(knex, kind, change) {
     return;
   }
   const places = [...created.matchAll(/srv "([^"]+)", tbl "(\w+)"/g)];
+  const ca = /ssl_ca "([^"]+)"/.exec(created)?.[1];
   for (const server of new Set(places.map(([, name]) => name))) {
     const [[known]] = await knex.raw('SELECT * FROM mysql.servers WHERE Server_name = ?', [server]);
     const connection = await mysql.createConnection({
@@ -24,6 +27,7 @@ export async function alterKind(knex, kind, change) {
       user: known.Username,
       password: known.Password,
       database: known.Db,
+      ...(ca ? { ssl: { ca: readFileSync(ca), verifyIdentity: isIP(known.Host) === 0 } } : {}),
     });
     try {
       for (const [, name, table] of places) if (name === server) await alter(connection, table, change);

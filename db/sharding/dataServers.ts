@@ -1,6 +1,7 @@
 import mysql, { type Connection } from 'mysql2/promise';
 import { config } from '#lib/config/index';
 import { SESSION_MODES } from '../settings';
+import { tlsOf } from '../tls';
 
 /** A server that keeps buckets. */
 export interface DataServer {
@@ -24,7 +25,7 @@ export async function connectTo(
   { host, port }: DataServer,
   { isDatabaseThere = true } = {},
 ): Promise<Connection> {
-  const { dataUser, dataPassword, name } = config().database;
+  const { dataUser, dataPassword, dataTlsCaFile, name } = config().database;
   const connection = await mysql.createConnection({
     host,
     port,
@@ -36,6 +37,7 @@ export async function connectTo(
     supportBigNumbers: true,
     connectTimeout: 5_000,
     multipleStatements: true,
+    ...tlsOf({ host, tlsCaFile: dataTlsCaFile }),
   });
   await connection.query(SESSION_MODES);
   return connection;

@@ -1,8 +1,9 @@
 import type { Knex } from 'knex';
 import type { RowDataPacket } from 'mysql2/promise';
+import { config } from '#lib/config/index';
 import { dataServers, linkName, onEach } from './dataServers';
 import { bucketTable, KINDS, type Kind } from './kinds';
-import { linkTableText, serversOfLinkTable } from './texts';
+import { linkTableText, serversOfLinkTable, tlsCaOfLinkTable } from './texts';
 
 /** Columns and keys of a definition, without what follows them. */
 const insideOf = (created: string) => created.slice(created.indexOf('('), created.lastIndexOf(') ENGINE'));
@@ -17,9 +18,10 @@ export interface ChangedKind {
 /** Makes links of kinds anew beside those that are used, which takes longest. `useLinks` puts them in their place. */
 export async function makeLinks(conn: Knex, changed: readonly ChangedKind[]): Promise<void> {
   await dropOldLinks(conn);
+  const { dataTlsCaFile } = config().database;
   for (const { kind, created, serverOf } of changed) {
     await conn.raw('DROP TABLE IF EXISTS ??', [`${kind}__linked`]);
-    const text = linkTableText(created, kind, `${kind}__linked`, serverOf);
+    const text = linkTableText(created, kind, `${kind}__linked`, serverOf, dataTlsCaFile);
     await conn.raw(text.replaceAll('?', '\\?'));
   }
 }
@@ -35,7 +37,7 @@ export async function dropOldLinks(conn: Knex): Promise<void> {
   await conn.raw(`DROP TABLE IF EXISTS ${KINDS.map((kind) => `${kind}__left`).join(', ')}`);
 }
 
-/** Has the head's links follow bucket tables that a migration has altered (`alterKind.mjs`). `links`: the head's definitions of all kinds. */
+/** Has the head's links follow bucket tables that a migration has altered (`alterKind.mjs`), and the setting for TLS. `links`: the head's definitions of all kinds. */
 export async function relinkAltered(conn: Knex, links: ReadonlyMap<Kind, string>): Promise<void> {
   const changed: ChangedKind[] = [];
   for (const kind of KINDS) {
@@ -47,7 +49,7 @@ export async function relinkAltered(conn: Knex, links: ReadonlyMap<Kind, string>
       const [[row]] = await connection.query<RowDataPacket[]>(`SHOW CREATE TABLE ${bucketTable(kind, 0)}`);
       return String(row?.['Create Table']);
     });
-    if (insideOf(created) !== insideOf(link))
+    if (insideOf(created) !== insideOf(link) || tlsCaOfLinkTable(link) !== config().database.dataTlsCaFile)
       changed.push({ kind, created, serverOf: (bucket: number) => servers[bucket] ?? '' });
   }
   if (changed.length === 0) return;

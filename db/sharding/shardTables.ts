@@ -76,8 +76,12 @@ async function replaceByLinks(
   const places = bucketsAtFirst(servers.length);
   await conn.raw('DROP TABLE IF EXISTS ??', [linked]);
   await conn.raw(
-    linkTableText(created, kind, linked, (bucket) =>
-      linkName(servers[places[bucket] ?? 0] as DataServer),
+    linkTableText(
+      created,
+      kind,
+      linked,
+      (bucket) => linkName(servers[places[bucket] ?? 0] as DataServer),
+      config().database.dataTlsCaFile,
     ).replaceAll('?', '\\?'),
   );
   const stationIds: number[] = await conn(kind).distinct().pluck('station_id');

@@ -21,12 +21,14 @@ export function localTableText(created: string, kind: Kind): string {
 /**
  * The statement that makes the table of the head which leads to all buckets of a kind.
  * @param serverOf the name, as the head knows it, of the server that a bucket stands on.
+ * @param tlsCaFile the file on the head's nodes that vouches for the data servers' certificates; null: they are reached without TLS.
  */
 export function linkTableText(
   created: string,
   kind: Kind,
   name: string,
   serverOf: (bucket: number) => string,
+  tlsCaFile: string | null = null,
 ): string {
   const partitions = Array.from(
     { length: BUCKETS },
@@ -36,6 +38,7 @@ export function linkTableText(
   );
   // Ids are counted by each bucket's table.
   const counting = /AUTO_INCREMENT/.test(created.replace(COUNTED, '')) ? ', auto_increment_mode "3"' : '';
+  const protectedBy = tlsCaFile === null ? '' : `, ssl_ca "${tlsCaFile}", ssl_verify_server_cert "1"`;
   const columns = created
     .replace(PARTITIONS, '')
     .replace(COUNTED, '')
@@ -43,12 +46,17 @@ export function linkTableText(
     .replace(/^CREATE TABLE `\w+`/, `CREATE TABLE \`${name}\``)
     .replace(/ENGINE=\w+/, 'ENGINE=SPIDER')
     .replace(/ COMMENT='(?:[^']|'')*'\s*$/, '');
-  return `${columns} COMMENT='wrapper "mysql"${counting}' PARTITION BY LIST (station_id MOD ${BUCKETS}) (${partitions.join(',\n')})`;
+  return `${columns} COMMENT='wrapper "mysql"${counting}${protectedBy}' PARTITION BY LIST (station_id MOD ${BUCKETS}) (${partitions.join(',\n')})`;
 }
 
 /** Whether a table's definition is one that leads to buckets. */
 export function isLinkTable(created: string): boolean {
   return /ENGINE ?= ?SPIDER/i.test(created);
+}
+
+/** The file that vouches for the data servers of a link table; null where it reaches them without TLS. */
+export function tlsCaOfLinkTable(created: string): string | null {
+  return /ssl_ca "([^"]+)"/.exec(created)?.[1] ?? null;
 }
 
 /** The servers of a link table's buckets, by bucket, as the head knows them. */

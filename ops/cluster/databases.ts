@@ -22,6 +22,8 @@ export function commonOptions(layout: Layout, name: string, port: number): strin
     `--user=${USER}`,
     `--datadir=${join(directory, 'data')}`,
     `--socket=${socketOf(layout, name)}`,
+    // Of its own: a server that starts deletes temporary tables that it finds, others' too.
+    `--tmpdir=${temporaryDirectory(layout, name)}`,
     `--pid-file=${join(directory, 'pid')}`,
     `--port=${port}`,
     '--bind-address=127.0.0.1',
@@ -40,6 +42,16 @@ export function commonOptions(layout: Layout, name: string, port: number): strin
     '--table-open-cache=4000',
     '--open-files-limit=16000',
   ];
+}
+
+/** Where a server has its temporary tables; made where it is not there. */
+function temporaryDirectory(layout: Layout, name: string): string {
+  const path = join(databaseDirectory(layout, name), 'temporary');
+  if (!existsSync(path)) {
+    mkdirSync(path, { recursive: true, mode: 0o711 });
+    giveAway(databaseDirectory(layout, name));
+  }
+  return path;
 }
 
 /** Makes a server's directory at its first start. @returns whether it did. */

@@ -147,7 +147,9 @@ test('what a killed worker had, leases and stations, is taken over within a minu
   }
   expect(heir.leases.holds('killed')).toBe(true);
   expect(heir.buckets).toEqual(ALL);
-  expect(await workersAtWork()).toEqual([
+  // Both may have started within the same second, which leaves their order open.
+  const atWork = await workersAtWork();
+  expect(atWork.sort((a, b) => Number(a.isLiving) - Number(b.isLiving))).toEqual([
     expect.objectContaining({ isLiving: false, parts: 0, jobs: [] }),
     expect.objectContaining({ isLiving: true, parts: 64, jobs: ['killed'] }),
   ]);

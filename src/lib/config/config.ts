@@ -43,6 +43,8 @@ export interface Config {
     /** The account on them, of the head and of migrations. */
     dataUser: string;
     dataPassword: string;
+    /** Vouches for the data servers' certificates, on this machine and at the same path on the head's; null: they are reached without TLS. */
+    dataTlsCaFile: string | null;
     /** The web applies pending migrations when it starts. */
     mayMigrate: boolean;
   };
@@ -141,6 +143,7 @@ export function parseConfig(environment: Record<string, string | undefined>): Co
       dataServers: settings.BITTERN_DATA_SERVERS,
       dataUser: settings.BITTERN_DATA_USER ?? settings.BITTERN_DB_USER,
       dataPassword: settings.BITTERN_DATA_PASSWORD ?? settings.BITTERN_DB_PASSWORD,
+      dataTlsCaFile: settings.BITTERN_DATA_TLS_CA ?? null,
       mayMigrate: settings.BITTERN_DB_MIGRATE,
     },
     backup: {

@@ -95,6 +95,10 @@ export const settingsSchema = z.object({
   BITTERN_DATA_SERVERS: dataServers,
   BITTERN_DATA_USER: z.string().optional(),
   BITTERN_DATA_PASSWORD: z.string().optional(),
+  BITTERN_DATA_TLS_CA: z
+    .string()
+    .regex(/^\/[\w./-]+$/, 'must be an absolute path of letters, digits, and _ . - only')
+    .optional(),
   BITTERN_DB_MIGRATE: isTrue('true'),
   BITTERN_DB_POOL_MAX: z.coerce.number().int().min(2).max(200).default(12),
 
