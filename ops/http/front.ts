@@ -6,7 +6,7 @@ import type { Config } from '#lib/config/config';
 import { peopleUnderWay } from '#lib/http/peopleUnderWay';
 import { clientAddress, proxyTrust, type TrustsProxy } from './clientAddress';
 import { contentSecurityPolicy } from './contentSecurity';
-import { letRefusalBeHeard } from './lingeringClose';
+import { closeLingering } from './lingeringClose';
 import { receivePost } from './receive';
 import { securityText } from './securityText';
 
@@ -52,10 +52,6 @@ export function makeFront(astro: AstroHandler, settings: FrontSettings): Request
 function makePagesFront(astro: AstroHandler, settings: FrontSettings, trusts: TrustsProxy): Express {
   const front = express();
   front.disable('x-powered-by');
-  front.use((request, response, next) => {
-    letRefusalBeHeard(request, response);
-    next();
-  });
   front.use(safeHeaders(settings));
   front.use(requireKnownHost(settings.allowedHosts));
   front.use(requireKnownMethod);
@@ -127,8 +123,10 @@ function refuseLargeBodies(mostUploadBytes: number): RequestHandler {
   return (request, response, next) => {
     const mostBytes = UPLOADS.test(request.path) ? mostUploadBytes : MOST_BODY_BYTES;
     if (Number(request.headers['content-length'] ?? 0) <= mostBytes) return next();
+    closeLingering(request);
     response
       .status(413)
+      .set('Connection', 'close')
       .type('application/problem+json')
       .send(JSON.stringify({ type: 'about:blank', status: 413, code: 'too-large', title: 'Too large' }));
   };

@@ -1,4 +1,4 @@
-import type { IncomingMessage, ServerResponse } from 'node:http';
+import type { IncomingMessage } from 'node:http';
 
 /** How long, and how much, is read of a body that was refused. */
 export interface LingerBounds {
@@ -39,24 +39,4 @@ export function closeLingering(
     if (socket.writableFinished) socket.destroy();
     else socket.once('finish', () => socket.destroy());
   }
-}
-
-/**
- * For requests that a handler may refuse before it has read their body: what stops reading does not end the connection, the answer says that
- * it is closed, and it is closed so that the answer is heard.
- */
-export function letRefusalBeHeard(
-  request: IncomingMessage & { body?: unknown },
-  response: ServerResponse,
-): void {
-  const { headers } = request;
-  if (headers['transfer-encoding'] === undefined && !(Number(headers['content-length']) > 0)) return;
-  closeLingering(request);
-  request.body = request.iterator({ destroyOnReturn: false });
-  const writeHead = response.writeHead.bind(response) as (...given: unknown[]) => ServerResponse;
-  const writeLastHead = (...given: unknown[]) => {
-    if (!request.complete) response.shouldKeepAlive = false;
-    return writeHead(...given);
-  };
-  response.writeHead = writeLastHead as typeof response.writeHead;
 }
