@@ -33,6 +33,34 @@ export interface ExceedanceRecord {
   state: 'standing' | 'lifted';
 }
 
+/** Columns of `exceedances` as `e` and `limit_versions` as `v` that make an `ExceedanceRecord`. */
+export const RECORD_COLUMNS = {
+  id: 'e.id',
+  stationId: 'e.station_id',
+  limitName: 'v.name',
+  metric: 'v.metric',
+  averaging: 'v.averaging',
+  windowMin: 'v.window_min',
+  stepMin: 'v.step_min',
+  fromMin: 'v.from_min',
+  toMin: 'v.to_min',
+  bandFraction: 'v.band_fraction',
+  bandIndex: 'v.band_index',
+  percent: 'v.percent',
+  bandToIndex: 'v.band_to_index',
+  eventTenths: 'v.event_tenths',
+  backgroundFromMin: 'v.background_from_min',
+  backgroundToMin: 'v.background_to_min',
+  startsAtSec: 'e.starts_at',
+  endsAtSec: 'e.ends_at',
+  loudestStartSec: 'e.loudest_starts_at',
+  loudestEndSec: 'e.loudest_ends_at',
+  levelDb: 'e.level_db',
+  thresholdTenths: 'e.threshold_tenths',
+  coverage: 'e.coverage',
+  state: 'e.state',
+};
+
 /** Exceedances of a station whose window overlaps `fromSec <= t < toSec`, in order of time. */
 export async function listExceedancesOverlapping(
   stationId: number,
@@ -65,30 +93,5 @@ function selectRecords(conn: Connection) {
   return conn('exceedances as e')
     .join('limit_versions as v', 'v.id', 'e.limit_version_id')
     .orderBy(['e.starts_at', 'e.id'])
-    .select({
-      id: 'e.id',
-      stationId: 'e.station_id',
-      limitName: 'v.name',
-      metric: 'v.metric',
-      averaging: 'v.averaging',
-      windowMin: 'v.window_min',
-      stepMin: 'v.step_min',
-      fromMin: 'v.from_min',
-      toMin: 'v.to_min',
-      bandFraction: 'v.band_fraction',
-      bandIndex: 'v.band_index',
-      percent: 'v.percent',
-      bandToIndex: 'v.band_to_index',
-      eventTenths: 'v.event_tenths',
-      backgroundFromMin: 'v.background_from_min',
-      backgroundToMin: 'v.background_to_min',
-      startsAtSec: 'e.starts_at',
-      endsAtSec: 'e.ends_at',
-      loudestStartSec: 'e.loudest_starts_at',
-      loudestEndSec: 'e.loudest_ends_at',
-      levelDb: 'e.level_db',
-      thresholdTenths: 'e.threshold_tenths',
-      coverage: 'e.coverage',
-      state: 'e.state',
-    });
+    .select(RECORD_COLUMNS);
 }

@@ -1,7 +1,7 @@
 import type { Cause } from '#lib/contracts/exceedances';
 import { pool, type Connection } from './connection';
 import { LONGEST_EXCEEDANCE_SEC } from './judgedExceedances';
-import type { ExceedanceRecord } from './exceedanceRecords';
+import { RECORD_COLUMNS, type ExceedanceRecord } from './exceedanceRecords';
 
 /** An exceedance with its station, the limit version that it is judged by, and who acknowledged it. */
 export interface ExceedanceRow extends ExceedanceRecord {
@@ -170,35 +170,12 @@ function selectExceedances(conn: Connection) {
     .join('stations as s', 's.id', 'e.station_id')
     .leftJoin('users as u', 'u.id', 'e.acknowledged_by')
     .select({
-      id: 'e.id',
-      stationId: 'e.station_id',
+      ...RECORD_COLUMNS,
       stationCode: 's.code',
       stationName: 's.name',
       limitId: 'e.limit_id',
       limitVersionId: 'e.limit_version_id',
       limitVersion: 'v.version',
-      limitName: 'v.name',
-      metric: 'v.metric',
-      averaging: 'v.averaging',
-      windowMin: 'v.window_min',
-      stepMin: 'v.step_min',
-      fromMin: 'v.from_min',
-      toMin: 'v.to_min',
-      bandFraction: 'v.band_fraction',
-      bandIndex: 'v.band_index',
-      percent: 'v.percent',
-      bandToIndex: 'v.band_to_index',
-      eventTenths: 'v.event_tenths',
-      backgroundFromMin: 'v.background_from_min',
-      backgroundToMin: 'v.background_to_min',
-      startsAtSec: 'e.starts_at',
-      endsAtSec: 'e.ends_at',
-      loudestStartSec: 'e.loudest_starts_at',
-      loudestEndSec: 'e.loudest_ends_at',
-      levelDb: 'e.level_db',
-      thresholdTenths: 'e.threshold_tenths',
-      coverage: 'e.coverage',
-      state: 'e.state',
       revision: 'e.revision',
       detectedAt: 'e.detected_at',
       revisedAt: 'e.revised_at',

@@ -47,7 +47,7 @@ export async function digestIntervals(
       .options({ rowsAsArray: true })) as unknown as [IntervalCells[]];
     for (const row of rows) {
       hash.update(await packed(row, conn));
-      receivedSec = Math.max(receivedSec ?? 0, row[14]);
+      receivedSec = Math.max(receivedSec ?? 0, row[12]);
     }
     intervals += rows.length;
     afterSec = partEndSec;
@@ -72,7 +72,7 @@ async function packed(row: IntervalCells, conn: Connection): Promise<Buffer> {
   record.writeUInt16LE(row[9], tailAt);
   record.writeUInt16LE(row[10] ?? NO_VALUE, tailAt + 2);
   record.writeUInt16LE(row[11] ?? NO_VALUE, tailAt + 4);
-  record.writeInt16LE(row[12] ?? NO_LEVEL, tailAt + 6);
-  record.writeUInt16LE(row[13] ?? NO_VALUE, tailAt + 8);
+  record.writeInt16LE(row[13] ?? NO_LEVEL, tailAt + 6);
+  record.writeUInt16LE(row[14] ?? NO_VALUE, tailAt + 8);
   return record;
 }

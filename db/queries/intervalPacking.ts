@@ -3,16 +3,7 @@ import { NO_LEVEL_CENTI_DB } from '#lib/acoustics/levelRange';
 
 const IS_LITTLE_ENDIAN = endianness() === 'LE';
 
-/** Band levels (hundredths of a dB, −32768 = none) as stored: int16, little endian, one a band of the set. */
-export function packLevels(levelsCentiDb: Int16Array): Buffer {
-  const packed = Buffer.allocUnsafe(levelsCentiDb.length * 2);
-  for (let at = 0; at < levelsCentiDb.length; at += 1) {
-    packed.writeInt16LE(levelsCentiDb[at] ?? NO_LEVEL_CENTI_DB, at * 2);
-  }
-  return packed;
-}
-
-/** As `packLevels`, in hexadecimal digits. */
+/** Band levels (hundredths of a dB, −32768 = none) as stored, in hexadecimal digits: int16, little endian, one a band of the set. */
 export function packLevelsHex(levelsCentiDb: Int16Array): string {
   const count = levelsCentiDb.length;
   const packed = count * 2 <= scratch.length ? scratch : Buffer.allocUnsafe(count * 2);
@@ -26,11 +17,6 @@ export function packLevelsHex(levelsCentiDb: Int16Array): string {
 
 /** Room for the levels of one interval, used over and over. */
 const scratch = Buffer.alloc(128);
-
-/** The band levels of stored bytes. */
-export function unpackLevels(packed: Buffer): Int16Array {
-  return unpackAll([packed])[0] ?? new Int16Array(0);
-}
 
 /**
  * The band levels of many intervals, beside their stored bytes. They share one buffer: an array of its own for each takes longer to make

@@ -1,7 +1,7 @@
 import type { BandFraction } from '#lib/acoustics/bands';
 import { bandSetById } from './bandSets';
 import { type Connection } from './connection';
-import { packLevelsHex, unpackLevels } from './intervalPacking';
+import { packLevelsHex, unpackAll } from './intervalPacking';
 
 /** One interval as stored: levels in hundredths of a dB, times in epoch seconds UTC. */
 export interface StoredInterval {
@@ -26,35 +26,51 @@ export interface StoredInterval {
   receivedAtSec: number;
 }
 
+/** What levels and their validity are taken from: an interval without what only lists of intervals show. */
+export type MeasuredInterval = Omit<StoredInterval, 'temperatureC' | 'batteryV'>;
+
+/** Columns of an interval that is measured with, in the order of `MeasuredCells`. */
+export const MEASURED_COLUMNS = `starts_at, duration_sec, laeq_centi_db, lafmax_centi_db, lafmin_centi_db, lceq_centi_db, lcpeak_centi_db,
+  band_set_id, band_levels_centi_db, flags, wind_speed_centi_ms, wind_direction_deg, received_at`;
+
 /** Columns of an interval's row, in the order of `IntervalCells`. */
-export const INTERVAL_COLUMNS = `starts_at, duration_sec, laeq_centi_db, lafmax_centi_db, lafmin_centi_db, lceq_centi_db, lcpeak_centi_db,
-  band_set_id, band_levels_centi_db, flags, wind_speed_centi_ms, wind_direction_deg, temperature_centi_c,
-  battery_centi_v, received_at`;
+export const INTERVAL_COLUMNS = `${MEASURED_COLUMNS}, temperature_centi_c, battery_centi_v`;
+
+/** A row of `MEASURED_COLUMNS` as the driver gives it. */
+export type MeasuredCells = [
+  startSec: number,
+  durationSec: number,
+  laeqCentiDb: number,
+  lafmaxCentiDb: number | null,
+  lafminCentiDb: number | null,
+  lceqCentiDb: number | null,
+  lcpeakCentiDb: number | null,
+  bandSetId: number,
+  levels: Buffer,
+  flags: number,
+  windSpeedCentiMs: number | null,
+  windDirectionDeg: number | null,
+  receivedAtSec: number,
+];
 
 /** A row of `INTERVAL_COLUMNS` as the driver gives it. */
 export type IntervalCells = [
-  number,
-  number,
-  number,
-  number | null,
-  number | null,
-  number | null,
-  number | null,
-  number,
-  Buffer,
-  number,
-  number | null,
-  number | null,
-  number | null,
-  number | null,
-  number,
+  ...MeasuredCells,
+  temperatureCentiC: number | null,
+  batteryCentiV: number | null,
 ];
 
-/** Intervals of rows. */
-export async function intervalsOfCells(rows: IntervalCells[], conn: Connection): Promise<StoredInterval[]> {
-  const intervals: StoredInterval[] = [];
+const NO_LEVELS = new Int16Array(0);
+
+/** Intervals of rows, without what only lists of intervals show. */
+export async function measuredOfCells(
+  rows: readonly (MeasuredCells | IntervalCells)[],
+  conn: Connection,
+): Promise<MeasuredInterval[]> {
+  const intervals: MeasuredInterval[] = [];
   let set = rows[0] && (await bandSetById(rows[0][7], conn));
-  for (const row of rows) {
+  const levels = unpackAll(rows.map((row) => row[8]));
+  for (const [at, row] of rows.entries()) {
     if (set?.id !== row[7]) set = await bandSetById(row[7], conn);
     intervals.push({
       startSec: row[0],
@@ -67,17 +83,32 @@ export async function intervalsOfCells(rows: IntervalCells[], conn: Connection):
       bandSetId: set.id,
       bandFraction: set.fraction,
       bandIndices: set.indices,
-      levelsCentiDb: unpackLevels(row[8]),
+      levelsCentiDb: levels[at] ?? NO_LEVELS,
       flags: row[9],
       windSpeedMs: row[10] === null ? null : row[10] / 100,
       windDirectionDeg: row[11],
-      temperatureC: row[12] === null ? null : row[12] / 100,
-      batteryV: row[13] === null ? null : row[13] / 100,
-      receivedAtSec: row[14],
+      receivedAtSec: row[12],
     });
   }
   return intervals;
 }
+
+/** Intervals of rows. */
+export async function intervalsOfCells(
+  rows: readonly IntervalCells[],
+  conn: Connection,
+): Promise<StoredInterval[]> {
+  const measured = await measuredOfCells(rows, conn);
+  return measured.map((interval, at) =>
+    Object.assign(interval, {
+      temperatureC: inWhole(rows[at]?.[13]),
+      batteryV: inWhole(rows[at]?.[14]),
+    }),
+  );
+}
+
+const inWhole = (hundredthsOfIt: number | null | undefined): number | null =>
+  hundredthsOfIt === null || hundredthsOfIt === undefined ? null : hundredthsOfIt / 100;
 
 /** What a new row holds: an interval without what its band set tells. */
 export type NewInterval = Omit<StoredInterval, 'bandFraction' | 'bandIndices'>;
@@ -91,9 +122,10 @@ export function intervalCellsText(interval: NewInterval): string {
     interval;
   const { windSpeedMs, windDirectionDeg, temperatureC, batteryV, bandSetId, flags, receivedAtSec } = interval;
   const levels = `${cell(lafmaxCentiDb)},${cell(lafminCentiDb)},${cell(lceqCentiDb)},${cell(lcpeakCentiDb)}`;
-  const weather = `${hundredths(windSpeedMs)},${cell(windDirectionDeg)},${hundredths(temperatureC)}`;
+  const wind = `${hundredths(windSpeedMs)},${cell(windDirectionDeg)}`;
   const bands = `${bandSetId},x'${packLevelsHex(interval.levelsCentiDb)}'`;
-  return `${startSec},${durationSec},${laeqCentiDb},${levels},${bands},${flags},${weather},${hundredths(batteryV)},${receivedAtSec}`;
+  const listed = `${hundredths(temperatureC)},${hundredths(batteryV)}`;
+  return `${startSec},${durationSec},${laeqCentiDb},${levels},${bands},${flags},${wind},${receivedAtSec},${listed}`;
 }
 
 const cell = (value: number | null): number | 'NULL' => value ?? 'NULL';

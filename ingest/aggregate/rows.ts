@@ -1,5 +1,5 @@
 import { type DayPeriod } from '#db/queries/dayPeriods';
-import { type MeasuredInterval } from '#db/queries/measuredIntervals';
+import { type MeasuredInterval } from '#db/queries/intervalRows';
 import { type QuarterHour } from '#db/queries/quarterHours';
 import { PeriodAccumulator } from '#lib/acoustics/periodStatistics';
 import {

@@ -3,6 +3,7 @@ import { PeriodAccumulator } from '#lib/acoustics/periodStatistics';
 import { FLAGS, INVALIDITY_REASONS, invalidityReasons, type InvalidityReason } from '#lib/acoustics/validity';
 import { type IntervalFacts } from '#lib/contracts/figureSheet';
 import { formatDuration } from '#lib/format/durations';
+import { INVALIDITY_WORDS } from '#lib/format/invalidityReason';
 import {
   accumulate,
   firstEndingAfter,
@@ -115,7 +116,7 @@ class Tally {
       leftOut: this.#leftOut,
       reasons: INVALIDITY_REASONS.flatMap((reason) => {
         const noted = this.#reasons.get(reason);
-        return noted ? [{ reason: REASON_WORDS[reason], ...noted }] : [];
+        return noted ? [{ reason: INVALIDITY_WORDS[reason], ...noted }] : [];
       }),
       underrangeSec: this.#underrangeSec,
       computedSec: this.#computedSec,
@@ -138,18 +139,3 @@ class Tally {
     }
   }
 }
-
-const REASON_WORDS: Record<InvalidityReason, string> = {
-  calibration: 'calibration',
-  selfcheck: 'self-check',
-  overload: 'overload',
-  tamper: 'tampering',
-  powerloss: 'power loss',
-  clockset: 'clock was set',
-  wind: 'flagged wind',
-  'wind-speed': 'wind above the bound by the station’s own sensor',
-  rain: 'rain flagged by the station',
-  exclusion: 'excluded by an operator',
-  'mast-wind': 'wind above the bound at the mast',
-  'mast-rain': 'rain at the mast',
-};

@@ -1,5 +1,5 @@
 import { pickSettings, type NetworkSettings } from '#db/queries/networks';
-import { type MeasuredInterval } from '#db/queries/measuredIntervals';
+import { type MeasuredInterval } from '#db/queries/intervalRows';
 import { type BandInterval } from '#lib/acoustics/bandClassCounting';
 import { PeriodAccumulator, type AccumulatedInterval } from '#lib/acoustics/periodStatistics';
 import { countsInWind, type KnownWind, type WindRule } from '#lib/acoustics/windRule';

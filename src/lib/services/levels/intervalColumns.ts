@@ -1,4 +1,4 @@
-import { type MeasuredInterval } from '#db/queries/measuredIntervals';
+import { type MeasuredInterval } from '#db/queries/intervalRows';
 import { bandSlot } from '#lib/acoustics/bands';
 import { energyOfCentiDb, levelOfEnergyDb } from '#lib/acoustics/energy';
 import { NO_LEVEL_CENTI_DB } from '#lib/acoustics/levelRange';

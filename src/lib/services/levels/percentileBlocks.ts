@@ -14,7 +14,7 @@ const LONGEST_SEC = 86_400;
 const SAMPLES = 60;
 
 /** Length of the blocks of UTC that exceedance levels beside columns are of: no shorter than a column, and long enough to have them. */
-export function blockSecOf(stepSec: number, intervalSec: number): number {
+function blockSecOf(stepSec: number, intervalSec: number): number {
   return LENGTHS_SEC.find((sec) => sec >= Math.max(stepSec, SAMPLES * intervalSec)) ?? LONGEST_SEC;
 }
 

@@ -1,4 +1,4 @@
-import { type MeasuredInterval } from '#db/queries/measuredIntervals';
+import { type MeasuredInterval } from '#db/queries/intervalRows';
 import { type QuarterHour } from '#db/queries/quarterHours';
 import { QUARTER_SEC } from '#lib/time/quarters';
 import { accumulate, counts, firstEndingAfter, rulesSpans, type Judgement } from './accumulate';

@@ -1,4 +1,4 @@
-import { type MeasuredInterval } from '#db/queries/measuredIntervals';
+import { type MeasuredInterval } from '#db/queries/intervalRows';
 import { INVALIDITY_REASONS, invalidityReasons, type ValidityRules } from '#lib/acoustics/validity';
 import { isExcluded, withWeather, type Judgement } from './accumulate';
 

@@ -1,6 +1,6 @@
 import type { Connection } from '#db/queries/connection';
 import { selectIntervals } from '#db/queries/intervals';
-import type { MeasuredInterval } from '#db/queries/measuredIntervals';
+import type { MeasuredInterval } from '#db/queries/intervalRows';
 import type { PeriodSums } from '#lib/acoustics/periodSums';
 import { WINDOW_GRAIN_MIN } from '#lib/time/clockWindows';
 import { addWind, noWind, type WindowWind } from '#lib/acoustics/windRule';

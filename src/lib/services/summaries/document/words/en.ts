@@ -1,4 +1,5 @@
 import { type Convention } from '#lib/contracts/summaries';
+import { INVALIDITY_WORDS } from '#lib/format/invalidityReason';
 import { type MethodFormat, type MonthWords } from './words';
 
 const METHOD_OF_TONE = {
@@ -147,20 +148,7 @@ export const ENGLISH: MonthWords = {
     other: 'other',
   },
   noCause: 'not yet decided',
-  reasons: {
-    calibration: 'calibration',
-    selfcheck: 'self-check',
-    overload: 'overload',
-    tamper: 'tampering',
-    powerloss: 'power loss',
-    clockset: 'clock was set',
-    wind: 'flagged wind',
-    'wind-speed': 'wind above the bound by the station’s own sensor',
-    rain: 'rain flagged by the station',
-    exclusion: 'excluded by an operator',
-    'mast-wind': 'wind above the bound at the mast',
-    'mast-rain': 'rain at the mast',
-  },
+  reasons: INVALIDITY_WORDS,
   ownSensor: 'the station’s own sensor',
   mast: (code, name) => `mast ${code} (${name})`,
   captions: {
