@@ -33,39 +33,53 @@ export function cellSpan({ hour, turn }: Pick<HourCell, 'hour' | 'turn'>, isTwic
 }
 
 /** Paths of the heat map. */
-export function heatMapPaths(rows: readonly HourRow[], { lowDb, highDb }: ChartRange): HeatMapPaths {
+export function heatMapPaths(rows: readonly HourRow[], range: ChartRange): HeatMapPaths {
   const height = rowHeight(rows.length);
-  const classDb = (highDb - lowDb) / CLASSES;
-  const classes = Array.from({ length: CLASSES }, (_, at) => ({
-    levelDb: lowDb + (at + 0.5) * classDb,
-    path: '',
-  }));
-  const paths: HeatMapPaths = { classes, gaps: '', thin: '', skipped: '' };
+  const cells: LevelCell[] = [];
+  let [thin, skipped] = ['', ''];
   rows.forEach((row, at) => {
     const y = HEAT_MAP.top + at * height;
     const twice = new Set(row.cells.filter(({ turn }) => turn === 1).map(({ hour }) => hour));
     for (const cell of row.cells) {
       const { x, width } = cellSpan(cell, twice.has(cell.hour));
       const path = rectangle(x, y, width, height);
-      const held = classes[classOf(cell.LAeq, lowDb, classDb)];
-      if (cell.LAeq === null || !held) {
-        paths.gaps += path;
-        continue;
-      }
-      held.path += path;
-      if (!cell.meetsMinimum) paths.thin += path;
+      cells.push({ levelDb: cell.LAeq, path });
+      if (cell.LAeq !== null && !cell.meetsMinimum) thin += path;
     }
     for (const hour of row.skippedHours) {
       const { x, width } = cellSpan({ hour, turn: 0 }, false);
-      paths.skipped += `M${round(x + width / 2 - 3)} ${round(y + height / 2)}h6`;
+      skipped += `M${round(x + width / 2 - 3)} ${round(y + height / 2)}h6`;
     }
   });
-  return { ...paths, classes: classes.filter(({ path }) => path !== '') };
+  return { ...classPaths(cells, range), thin, skipped };
 }
 
-/** Place of a level's class; −1 of no level. */
-export function classOf(levelDb: number | null, lowDb: number, classDb: number): number {
-  if (levelDb === null) return -1;
+/** A cell and its level; null has none. */
+export interface LevelCell {
+  levelDb: number | null;
+  path: string;
+}
+
+/** The paths of cells by their class of level, and of those that have none. */
+export function classPaths(
+  cells: readonly LevelCell[],
+  { lowDb, highDb }: ChartRange,
+): Pick<HeatMapPaths, 'classes' | 'gaps'> {
+  const classDb = (highDb - lowDb) / CLASSES;
+  const classes = Array.from({ length: CLASSES }, (_, at) => ({
+    levelDb: lowDb + (at + 0.5) * classDb,
+    path: '',
+  }));
+  let gaps = '';
+  for (const { levelDb, path } of cells) {
+    const held = levelDb === null ? undefined : classes[classOf(levelDb, lowDb, classDb)];
+    if (held) held.path += path;
+    else gaps += path;
+  }
+  return { classes: classes.filter(({ path }) => path !== ''), gaps };
+}
+
+function classOf(levelDb: number, lowDb: number, classDb: number): number {
   return Math.min(CLASSES - 1, Math.max(0, Math.floor((levelDb - lowDb) / classDb)));
 }
 

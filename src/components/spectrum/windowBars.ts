@@ -1,26 +1,36 @@
-import { barRange, barShare } from '#components/spectrum/spectrumScale.ts';
 import type { ComparedBand } from '#lib/contracts/exceedanceDetail';
+import { barRange, barShare } from './spectrumScale';
+
+/** A band of a window with what is usual, whose range may be unknown where its median is known. */
+export type WindowBand = Pick<
+  ComparedBand,
+  'nominalHz' | 'Leq' | 'usual' | 'usualLow' | 'usualHigh' | 'isStandingOut'
+>;
 
 /** Sizes of the drawing in its own units. */
 export const DRAWING = { width: 720, height: 250, left: 36, top: 8, foot: 222 } as const;
 
 /** A band as it is drawn; heights are distances from the top. */
 export interface DrawnBand {
-  band: ComparedBand;
+  band: WindowBand;
   x: number;
   width: number;
   /** Top of the bar; null without a level. */
   barY: number | null;
-  /** Usual median and range; null where they are not known. */
-  usual: { medianY: number; lowY: number; highY: number } | null;
+  /** Usual median; null where it is not known. */
+  usualY: number | null;
+  /** Usual range; null where it is not known. */
+  rangeY: { lowY: number; highY: number } | null;
 }
 
 /** The window's spectrum with the usual one on a common scale; null where no band has a level. */
 export function drawSpectrum(
-  bands: readonly ComparedBand[],
+  bands: readonly WindowBand[],
 ): { bands: DrawnBand[]; ticks: { levelDb: number; y: number }[] } | null {
   if (bands.every(({ Leq }) => Leq === null)) return null;
-  const range = barRange(bands.flatMap(({ Leq, usualLow, usualHigh }) => [Leq, usualLow, usualHigh]));
+  const range = barRange(
+    bands.flatMap(({ Leq, usual, usualLow, usualHigh }) => [Leq, usual, usualLow, usualHigh]),
+  );
   const { left, width, top, foot } = DRAWING;
   const y = (levelDb: number) => round(foot - (foot - top) * barShare(range, levelDb));
   const step = (width - left) / bands.length;
@@ -36,10 +46,11 @@ export function drawSpectrum(
       x: round(left + at * step + step * 0.1),
       width: round(step * 0.8),
       barY: band.Leq === null ? null : y(band.Leq),
-      usual:
-        band.usual === null || band.usualLow === null || band.usualHigh === null
+      usualY: band.usual === null ? null : y(band.usual),
+      rangeY:
+        band.usualLow === null || band.usualHigh === null
           ? null
-          : { medianY: y(band.usual), lowY: y(band.usualLow), highY: y(band.usualHigh) },
+          : { lowY: y(band.usualLow), highY: y(band.usualHigh) },
     })),
   };
 }
