@@ -4,14 +4,14 @@ import { dropTracesFrom } from '#db/queries/dayTraces';
 import { deleteQuarterHours, markMeasuredQuarters } from '#db/queries/quarterHours';
 import { findSeal } from '#db/queries/retention';
 import { listStationIds, lockStation } from '#db/queries/stations';
-import { aggregateAll, type OnQuartersRecomputed } from './aggregate';
 
 /**
- * Drops everything that is computed from intervals, but what is sealed, and computes it again. In between answers stay right, because every
- * quarter-hour that has intervals is marked in the transaction that drops its row.
+ * Drops everything that is computed from intervals, but what is sealed, and has the worker compute it again; answers how many stations
+ * that was. In between answers stay right, because every quarter-hour that has intervals is marked in the transaction that drops its row.
  */
-export async function rebuildAll(onQuartersRecomputed: OnQuartersRecomputed): Promise<number> {
-  for (const stationId of await listStationIds()) {
+export async function dropComputed(): Promise<number> {
+  const stationIds = await listStationIds();
+  for (const stationId of stationIds) {
     await inTransaction(async (transaction) => {
       await lockStation(stationId, transaction);
       const { sealedBeforeSec } = await findSeal(stationId, transaction);
@@ -21,5 +21,5 @@ export async function rebuildAll(onQuartersRecomputed: OnQuartersRecomputed): Pr
       await markMeasuredQuarters(stationId, transaction);
     });
   }
-  return aggregateAll(onQuartersRecomputed);
+  return stationIds.length;
 }

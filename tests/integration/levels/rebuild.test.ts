@@ -2,7 +2,6 @@ import { beforeAll, expect, test } from 'vitest';
 import { db } from '#db/client';
 import { type StoredInterval } from '#db/queries/intervals';
 import { aggregateAll, aggregateMarks } from '#ingest/aggregate/aggregate';
-import { rebuildAll } from '#ingest/aggregate/rebuild';
 import { addExclusion } from '#lib/services/exclusions/add';
 import { withdraw } from '#lib/services/exclusions/withdraw';
 import { useFreshSchema } from '../support/freshSchema';
@@ -10,6 +9,7 @@ import { makeStation } from '../support/people';
 import { makeDesk, sec, type Desk } from './support/desk';
 import { invent, seededNoise, storeMeasured } from './support/measured';
 import { computedRows } from './support/tables';
+import { rebuildAll } from './support/rebuildAll';
 
 /** What is computed from intervals is a function of the intervals and the exclusions, whatever happened on the way. */
 useFreshSchema();

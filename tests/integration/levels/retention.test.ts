@@ -4,7 +4,6 @@ import { inTransaction } from '#db/queries/connection';
 import { insertDirtyMarks } from '#db/queries/dirtyMarks';
 import { insertStationToken } from '#db/queries/stationTokens';
 import { aggregateAll } from '#ingest/aggregate/aggregate';
-import { rebuildAll } from '#ingest/aggregate/rebuild';
 import { retainIntervals } from '#ingest/retention/retain';
 import { addExclusion } from '#lib/services/exclusions/add';
 import { readRatingEntry } from '#lib/services/figures/ratingForm';
@@ -23,6 +22,7 @@ import { makePerson, makeStation } from '../support/people';
 import { makeDesk, sec, type Desk } from './support/desk';
 import { invent, storeMeasured } from './support/measured';
 import { computedRows } from './support/tables';
+import { rebuildAll } from './support/rebuildAll';
 
 /** Single intervals are kept for a while: what is computed of them stays, is told to be that, and nothing of it can be changed. */
 useFreshSchema();

@@ -2,13 +2,13 @@ import fc from 'fast-check';
 import { beforeAll, expect, test } from 'vitest';
 import { findNetworkById } from '#db/queries/networks';
 import { aggregateAll } from '#ingest/aggregate/aggregate';
-import { rebuildAll } from '#ingest/aggregate/rebuild';
 import { changeNetwork } from '#lib/services/networks/change';
 import { useFreshSchema } from '../support/freshSchema';
 import { makeStation } from '../support/people';
 import { makeDesk, sec, type Desk } from './support/desk';
 import { invent, storeMeasured } from './support/measured';
 import { computedRows } from './support/tables';
+import { rebuildAll } from './support/rebuildAll';
 
 /** Settings that reach back: what follows from the marks they leave is what a rebuild of everything gives, no row more or less. */
 const FIRST_SEC = sec('2025-10-23T05:00:00Z');

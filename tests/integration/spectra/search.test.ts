@@ -2,7 +2,6 @@ import { beforeAll, expect, test } from 'vitest';
 import { db } from '#db/client';
 import { type StoredInterval } from '#db/queries/intervals';
 import { aggregateAll } from '#ingest/aggregate/aggregate';
-import { rebuildAll } from '#ingest/aggregate/rebuild';
 import { makeTraces } from '#ingest/traces/makeTraces';
 import { BAND_SLOTS, bandByNominalHz, bandSlot } from '#lib/acoustics/bands';
 import { spectralLikeness } from '#lib/acoustics/likeness';
@@ -14,6 +13,7 @@ import { invent, seededNoise, storeMeasured } from '../levels/support/measured';
 import { callApi } from '../support/callApi';
 import { useFreshSchema } from '../support/freshSchema';
 import { makeNetwork, makePerson, makeStation } from '../support/people';
+import { rebuildAll } from '../levels/support/rebuildAll';
 
 useFreshSchema();
 

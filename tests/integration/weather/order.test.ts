@@ -3,7 +3,6 @@ import { beforeAll, expect, test } from 'vitest';
 import { db } from '#db/client';
 import { type StoredInterval } from '#db/queries/intervals';
 import { aggregateAll } from '#ingest/aggregate/aggregate';
-import { rebuildAll } from '#ingest/aggregate/rebuild';
 import { assignMast, endMastAssignment } from '#lib/services/weather/assign';
 import { addMast, changeMast } from '#lib/services/weather/masts';
 import { receiveWeather } from '#lib/services/weather/receive';
@@ -12,6 +11,7 @@ import { invent, storeMeasured } from '../levels/support/measured';
 import { computedRows } from '../levels/support/tables';
 import { useFreshSchema } from '../support/freshSchema';
 import { makePerson, makeStation } from '../support/people';
+import { rebuildAll } from '../levels/support/rebuildAll';
 
 /** What is computed is a function of intervals, weather and assignments, whatever the order in which they came. */
 useFreshSchema();
