@@ -118,3 +118,30 @@ export async function endAnswer(
       updated_at: now,
     });
 }
+
+/** An answer that waits for a second person. */
+export interface SubmittedAnswer {
+  /** Of the complaint. */
+  reference: string;
+  author: string;
+  authorName: string;
+  submittedAt: Date;
+}
+
+/** Answers of a network that wait for a second person, the oldest first. */
+export async function listSubmitted(
+  networkId: number,
+  conn: Connection = pool(),
+): Promise<SubmittedAnswer[]> {
+  return conn('complaint_answers as a')
+    .join('complaints as c', 'c.id', 'a.complaint_id')
+    .join('users as u', 'u.id', 'a.author')
+    .where({ 'c.network_id': networkId, 'a.state': 'submitted' })
+    .orderBy(['a.submitted_at', 'a.id'])
+    .select({
+      reference: 'c.reference',
+      author: 'a.author',
+      authorName: 'u.name',
+      submittedAt: 'a.submitted_at',
+    });
+}

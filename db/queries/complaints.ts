@@ -114,6 +114,8 @@ export interface ComplaintFilter {
   assignedTo?: string;
   /** Open ones whose due date is before this. */
   dueBefore?: LocalDate;
+  /** Those whose answer waits for a second person. */
+  isAnswerSubmitted?: boolean;
   /** Part of the reference. */
   reference?: string;
   /** Goes on behind this one. */
@@ -156,6 +158,10 @@ function narrowed(
   if (filter.fromSec !== undefined) void query.where('c.ends_at', '>', filter.fromSec);
   if (filter.dueBefore !== undefined)
     void query.where({ 'c.status': 'open' }).where('c.due_on', '<', filter.dueBefore);
+  if (filter.isAnswerSubmitted)
+    void query.whereIn('c.id', (submitted) =>
+      submitted.from('complaint_answers').where({ state: 'submitted' }).select('complaint_id'),
+    );
   if (filter.reference !== undefined)
     void query.whereRaw('LOCATE(?, LOWER(c.reference)) > 0', [filter.reference.toLowerCase()]);
   return query;

@@ -136,9 +136,19 @@ test('four eyes: who wrote an answer cannot approve it, and an answer received i
   await page.getByText('Submitted by').waitFor();
   expect(await page.getByRole('button', { name: /^Approve/ }).count()).toBe(0);
 
-  const other = await open();
+  const other = await open({ width: 390, height: 844 });
   await signIn(other.page, 'admin@merrow.example');
-  await other.page.goto(`/n/merrow/complaints/${reference}/answer`);
+  await other.page.goto('/n/merrow/complaints');
+  await other.page.getByRole('link', { name: /^To approve \d+/ }).press('Enter');
+  await other.page.waitForURL(/status=to-approve/);
+  await expectAccessible(other.page);
+  await picture(other.page, 'answering-to-approve');
+  await other.page
+    .getByRole('row')
+    .filter({ hasText: reference })
+    .getByRole('link', { name: /^Approve the answer/ })
+    .press('Enter');
+  await other.page.waitForURL(new RegExp(`${reference}/answer$`));
   await other.page.getByRole('button', { name: 'Approve and send to ines@residents.example' }).click();
   await other.page.waitForURL(new RegExp(`complaints/${reference}$`));
   expect(await other.page.getByText('approved by').count()).toBe(1);

@@ -10,8 +10,8 @@ import {
 
 /** Which complaints the list shows, as its address says; null: does not matter. */
 export interface ComplaintListView {
-  /** `overdue`: open ones whose due date has passed. */
-  status: ComplaintStatus | 'overdue' | 'all';
+  /** `overdue`: open ones whose due date has passed; `to-approve`: those whose answer waits for a second person. */
+  status: ComplaintStatus | 'overdue' | 'to-approve' | 'all';
   /** Id of a person, `me` or `nobody`. */
   assignee: string | null;
   kind: ComplaintKind | null;
@@ -25,11 +25,26 @@ export interface ComplaintListView {
   reference: string | null;
 }
 
+/** An answer that waits for a second person, without what it says. */
+export interface WaitingAnswer {
+  authorName: string;
+  /** Written by whoever looks, who cannot approve it. */
+  isOwn: boolean;
+}
+
 const STATUSES = [...COMPLAINT_STATUSES, 'overdue', 'all'] as const;
+/** What concerns only those who answer complaints. */
+const STATUSES_OF_ANSWERERS = [...STATUSES, 'to-approve'] as const;
 const MOST_CHARACTERS = 80;
 
-/** Reads an address; what it says wrongly counts as left out. Without a status the open ones are meant. */
-export function readComplaintList({ searchParams }: URL): ComplaintListView {
+/**
+ * Reads an address; what it says wrongly, or what whoever looks may not see, counts as left out. Without a status the open ones are
+ * meant.
+ */
+export function readComplaintList(
+  { searchParams }: URL,
+  { isAnswerer }: { isAnswerer: boolean },
+): ComplaintListView {
   const text = (name: string) => {
     const value = searchParams.get(name)?.trim() ?? '';
     return value === '' || value.length > MOST_CHARACTERS ? null : value;
@@ -41,7 +56,7 @@ export function readComplaintList({ searchParams }: URL): ComplaintListView {
     return localDate.safeParse(value).success ? value : null;
   };
   return {
-    status: choice('status', STATUSES) ?? 'open',
+    status: choice('status', isAnswerer ? STATUSES_OF_ANSWERERS : STATUSES) ?? 'open',
     assignee: text('assignee'),
     kind: choice('kind', COMPLAINT_KINDS),
     source: choice('source', COMPLAINT_SOURCES),

@@ -9,7 +9,7 @@ export function complaintFilterOf(
 ): ComplaintListFilter {
   const { status, assignee, kind, source, area, station, from, to, reference } = view;
   return {
-    ...(status === 'overdue' ? { dueBefore: today } : status === 'all' ? {} : { status }),
+    ...ofStatus(status, today),
     ...(assignee === null ? {} : { assignedTo: assignee === 'me' ? userId : assignee }),
     ...(kind === null ? {} : { kind }),
     ...(source === null ? {} : { source }),
@@ -19,4 +19,10 @@ export function complaintFilterOf(
     ...(to === null ? {} : { toSec: startOfDaySec(addDays(to, 1), zone) }),
     ...(reference === null ? {} : { reference }),
   };
+}
+
+function ofStatus(status: ComplaintListView['status'], today: LocalDate): ComplaintListFilter {
+  if (status === 'overdue') return { dueBefore: today };
+  if (status === 'to-approve') return { isAnswerSubmitted: true };
+  return status === 'all' ? {} : { status };
 }

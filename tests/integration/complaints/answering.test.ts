@@ -18,6 +18,7 @@ import {
 } from '#lib/services/complaints/answer/decideAnswer';
 import { USUAL_ITEMS } from '#lib/services/complaints/answer/items';
 import { keepAnswer } from '#lib/services/complaints/answer/keepAnswer';
+import { submittedAnswers } from '#lib/services/complaints/answer/submittedAnswers';
 import { erasePersonalData } from '#lib/services/complaints/closeComplaint';
 import { notePosted, resendReply } from '#lib/services/complaints/deliverReply';
 import { STANDARD_LETTER } from '#lib/services/complaints/letter/draftReply';
@@ -280,9 +281,18 @@ describe('four eyes', () => {
     expect(direct.status).toBe(409);
     expect(await submitAnswer(act(writer.userId, reference), new Date())).toEqual({ kind: 'done' });
     expect(await keep(reference, 'Dear …', 1)).toEqual({ kind: 'submitted' });
+    expect((await submittedAnswers(network.id, second.userId)).get(reference)?.isOwn).toBe(false);
+    expect((await submittedAnswers(network.id, writer.userId)).get(reference)?.isOwn).toBe(true);
+    const csvOf = async (session: string, status = 'to-approve') =>
+      (await callApi('GET', `${COMPLAINTS}.csv?status=${status}`, { session })).text();
+    const listed = (await csvOf(second.session)).trim().split('\r\n').slice(1);
+    expect(listed.map((line) => line.split(',')[0])).toEqual([reference]);
+    expect(await csvOf(regulator.session)).toBe(await csvOf(regulator.session, 'open'));
     expect(await approveAnswer(act(writer.userId, reference), new Date())).toMatchObject({ kind: 'refused' });
     expect((await detail(reference)).replies).toEqual([]);
     expect(await approveAnswer(act(second.userId, reference), new Date())).toEqual({ kind: 'done' });
+    expect(await submittedAnswers(network.id, second.userId)).toEqual(new Map());
+    expect((await csvOf(second.session)).trim().split('\r\n')).toHaveLength(1);
     const [reply] = (await detail(reference)).replies;
     const names = await db()('users').whereIn('id', [writer.userId, second.userId]).select('id', 'name');
     const nameOf = (userId: string) => names.find(({ id }) => id === userId)?.name;

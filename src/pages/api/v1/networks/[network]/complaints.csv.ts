@@ -1,5 +1,5 @@
 import { requireNetwork } from '#lib/auth/guards';
-import { ALL_ROLES } from '#lib/auth/roles';
+import { ALL_ROLES, mayAct } from '#lib/auth/roles';
 import { readComplaintList } from '#lib/contracts/complaintList';
 import { complaintFilterOf } from '#lib/http/complaintFilter';
 import { badRequest } from '#lib/http/problem';
@@ -9,14 +9,17 @@ import { complaintsCsv, MOST_CSV_COMPLAINTS } from '#lib/services/complaints/lis
 import { localDateAt } from '#lib/time/zone';
 
 export const GET = route(async (context) => {
-  const { user, network, settings } = await requireNetwork(context, context.params.network, ALL_ROLES);
+  const { user, roles, network, settings } = await requireNetwork(context, context.params.network, ALL_ROLES);
   const now = new Date();
   const today = localDateAt(Math.floor(now.getTime() / 1000), settings.timeZone);
-  const filter = complaintFilterOf(readComplaintList(context.url), {
-    userId: user.id,
-    today,
-    zone: settings.timeZone,
-  });
+  const filter = complaintFilterOf(
+    readComplaintList(context.url, { isAnswerer: mayAct(user, roles, ['liaison']) }),
+    {
+      userId: user.id,
+      today,
+      zone: settings.timeZone,
+    },
+  );
   const text = await complaintsCsv(network, settings, filter, now);
   if (text === null) {
     throw badRequest(`The list has more than ${MOST_CSV_COMPLAINTS} complaints; ask for a shorter period.`);
