@@ -79,7 +79,8 @@ async function warnNetwork(
     ] as const,
     link: { label: 'Open Bittern', url: config().origin },
     closing:
-      'You get this once a week, as an operator, until there is room. What to do: ops/guide.md, “What to watch”.',
+      'Whoever runs the server can give its disk more room; an administrator can have single intervals kept for a shorter time, in the network’s settings. ' +
+      'You get this once a week, as an operator, until there is room.',
   };
   const week = Math.floor((now.getTime() - since.getTime()) / (7 * DAY_MS));
   return inTransaction((transaction) =>

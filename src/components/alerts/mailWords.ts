@@ -15,7 +15,7 @@ const KIND_WORDS: Readonly<Record<string, string>> = {
   health: 'Health',
   webhook: 'Webhook given up',
   'calibration-due': 'Calibration due',
-  'complaint-reply': 'Reply to a complaint',
+  'complaint-reply': 'Answer to a complaint',
 };
 
 /** What a message is about, in words. */

@@ -32,7 +32,7 @@ export const STATUS_WORDS: Readonly<Record<ComplaintStatus, string>> = {
 export const CLOSING_WORDS: Readonly<Record<ClosingReason, string>> = {
   'no-contact': 'No way to reach the person',
   withdrawn: 'Withdrawn by the person',
-  repeated: 'Same report as another one',
+  repeated: 'Same complaint as another one',
   'not-ours': 'Noise from outside this network',
   erased: 'Personal data erased',
 };

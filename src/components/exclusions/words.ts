@@ -15,9 +15,9 @@ export function previewWords({ stations }: ExclusionPreview): string {
   const dates = stations.flatMap((station) => station.dates);
   const lostSec = dates.reduce((sum, { before, after }) => sum + before.validSeconds - after.validSeconds, 0);
   const where = stations.length === 1 ? 'one station' : `${stations.length} stations`;
-  if (lostSec <= 0) return `At ${where} nothing that counts now would be left out.`;
+  if (lostSec <= 0) return `At ${where} nothing that counts now would be excluded.`;
   const falling = dates.filter(({ before, after }) => before.meetsMinimum && !after.meetsMinimum).length;
-  const leaves = `Leaves out ${formatDuration(lostSec)} of valid data at ${where}.`;
+  const leaves = `Excludes ${formatDuration(lostSec)} of valid data at ${where}.`;
   if (falling === 0) return `${leaves} No date falls below the minimum coverage by it.`;
   const which = falling === 1 ? 'One date falls' : `${falling} dates, counted for each station, fall`;
   return `${leaves} ${which} below the minimum coverage by it.`;
@@ -26,5 +26,5 @@ export function previewWords({ stations }: ExclusionPreview): string {
 /** What was left out, after it was stored. */
 export function excludedWords(count: number): string {
   const where = count === 1 ? 'one station' : `${count} stations`;
-  return `Left out at ${where}. Figures follow within a minute or two; whoever thinks better of it withdraws it here.`;
+  return `Excluded at ${where}. Figures follow within a minute or two; whoever thinks better of it withdraws it here.`;
 }

@@ -3,7 +3,7 @@ import { instant, reasonText } from './common';
 import { registerRoute } from './registry';
 
 /** Longest exclusion, in days: a longer one is more likely a slip than a fault. */
-export const MOST_EXCLUSION_DAYS = 366;
+const MOST_EXCLUSION_DAYS = 366;
 
 /** Most local dates of a station that a preview shows. */
 export const MOST_PREVIEWED_DATES = 31;
@@ -40,7 +40,7 @@ export type BulkExclusion = z.output<typeof bulkExclusionSchema>;
 
 export const withdrawalSchema = z.object({ reason: reasonText });
 
-export const exclusionSchema = z.object({
+const exclusionSchema = z.object({
   id: z.number().int(),
   act: z
     .number()
@@ -124,7 +124,7 @@ registerRoute({
   access: 'person',
   method: 'post',
   path: base,
-  summary: 'Leave a period of a station out of statistics (operator); the data stay',
+  summary: 'Exclude a period of a station from statistics (operator); the data stay',
   request: { params: z.object({ network }), body: body(newExclusionSchema) },
   responses: { 201: answer('The exclusion', z.object({ exclusion: exclusionSchema })) },
 });
@@ -160,7 +160,7 @@ registerRoute({
   access: 'person',
   method: 'post',
   path: `${base}/bulk`,
-  summary: 'Leave a period of several stations out of statistics by one act (operator); all of it or nothing',
+  summary: 'Exclude a period of several stations from statistics by one act (operator); all of it or nothing',
   request: { params: z.object({ network }), body: body(bulkExclusionSchema) },
   responses: { 201: answer('The exclusions', z.object({ items: z.array(exclusionSchema) })) },
 });

@@ -71,7 +71,7 @@ export function ExcludeForm({ selection, context, onDone }: ExcludeFormProps) {
         disabled={exclusion.isPending || reason.trim() === ''}
         className="button button-primary mt-2"
       >
-        {exclusion.isPending ? 'Excluding …' : 'Leave it out'}
+        {exclusion.isPending ? 'Excluding …' : 'Exclude it'}
       </button>
     </form>
   );

@@ -44,7 +44,7 @@ export function SlipActions({ selection, isMarked, context }: SlipActionsProps) 
       )}
       {context.mayLogComplaints && (
         <a className="button" href={`/n/${slug}/complaints/new?${marked.toString()}`}>
-          Log complaint
+          Log a complaint
         </a>
       )}
       {context.mayExclude && isMarked && (

@@ -66,7 +66,7 @@ export function unsentReason(unsent: Unsent): string {
         'with the new figures.'
       );
     case 'answered-meanwhile':
-      return 'Another reply went out, or somebody changed this one meanwhile. Nothing was sent: read that first.';
+      return 'Another answer went out, or somebody changed this one meanwhile. Nothing was sent: read that first.';
     case 'approval-needed':
       return 'In this network a second person approves an answer. Nothing was sent: submit it on the page of the answer.';
     case 'text-refused':

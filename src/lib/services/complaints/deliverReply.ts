@@ -22,7 +22,7 @@ export async function notePosted(
   const complaint = await findComplaint(network.id, reference);
   if (!complaint) return { kind: 'unknown' };
   if ((await findReplyMail(complaint.id, replyId)) !== undefined) {
-    return { kind: 'refused', message: 'This reply goes by e-mail.' };
+    return { kind: 'refused', message: 'This answer goes by e-mail.' };
   }
   return inTransaction(async (transaction) => {
     const posted = on === null ? null : { by: userId, on };
@@ -51,7 +51,7 @@ export async function resendReply(
   const complaint = await findComplaint(network.id, reference);
   if (!complaint) return { kind: 'unknown' };
   const mailId = await findReplyMail(complaint.id, replyId);
-  if (mailId === undefined) return { kind: 'refused', message: 'This reply is a letter on paper.' };
+  if (mailId === undefined) return { kind: 'refused', message: 'This answer is a letter on paper.' };
   const outcome = await retryMail({ networkId: network.id, userId }, mailId, now);
   if (outcome.kind === 'done') return { kind: 'done' };
   return { kind: 'refused', message: 'Nothing waits to be sent again: the mail server has it already.' };

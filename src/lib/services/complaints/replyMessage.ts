@@ -6,7 +6,7 @@ import { letterHtml } from './letter/letterHtml';
 import { openFile, openValue } from './personalData';
 
 /** What rests sealed of a reply. `to` is null for a letter that is printed and posted. */
-export const replyContentSchema = z.object({
+const replyContentSchema = z.object({
   to: z.string().nullable(),
   subject: z.string(),
   text: z.string(),

@@ -63,7 +63,7 @@ export const FINDABLE_PAGES: readonly FindablePage[] = [
   },
   { label: 'E-mails', terms: 'outbox sent failed resend', path: 'alerts/mails', roles: OPERATOR },
   { label: 'Exclusions', terms: 'invalid left out periods', path: 'exclusions' },
-  { label: 'Leave a period out', terms: 'exclude exclusion new', path: 'exclusions/new', roles: OPERATOR },
+  { label: 'Exclude a period', terms: 'leave out exclusion new', path: 'exclusions/new', roles: OPERATOR },
   { label: 'Plant', terms: 'fans pumps engines machines sources', path: 'plants' },
   { label: 'Add a plant', terms: 'new machine source', path: 'plants/new', roles: OPERATOR },
   { label: 'What could it be?', terms: 'plant candidates tone cause', path: 'plants/candidates' },

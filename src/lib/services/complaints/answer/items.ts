@@ -13,7 +13,7 @@ export const ITEM_LABELS: Readonly<Record<PackItem, string>> = {
   exceedances: 'Exceedances',
   exclusions: 'Measurements left out, with the reason',
   weather: 'Wind and what the instrument flagged',
-  reports: 'Other reports near in place and time (counts alone)',
+  reports: 'Other complaints near in place and time (counts alone)',
   elsewhere: 'When the same spectrum was heard otherwise',
 };
 

@@ -36,9 +36,9 @@ const fact = (name: string, label: string, render: LetterField['render']): Lette
 /** Every field that a letter or a template may have. */
 export const LETTER_FIELDS: readonly LetterField[] = [
   fact('name', 'Name of the resident', ({ recipientName }) => recipientName ?? 'resident'),
-  fact('reference', 'Reference of the report', ({ reference }) => reference),
+  fact('reference', 'Reference of the complaint', ({ reference }) => reference),
   fact('sound', 'What was reported: “the hum”', ({ kind }) => REPORTED[kind]),
-  fact('time', 'The time of the report, with its date', statements.windowText),
+  fact('time', 'The time of the complaint, with its date', statements.windowText),
   fact('network', 'Name of the network', ({ networkName }) => networkName),
   fact('signed-by', 'Name of who answers', ({ signedBy }) => signedBy),
   statement('opening', 'Thanks, and what was reported', statements.opening),
@@ -54,7 +54,7 @@ export const LETTER_FIELDS: readonly LetterField[] = [
   statement('tones', 'Whether a tone stood out', statements.tones),
   statement('second-station', 'That a second station tells otherwise, if one does', secondStationParagraph),
   statement('elsewhere', 'Another station, where the nearest one lacks data', statements.elsewhere),
-  statement('other-reports', 'How many others reported around then; counts alone', statements.otherReports),
+  statement('other-reports', 'How many others complained around then; counts alone', statements.otherReports),
   statement('caution', 'That levels describe the station’s place, and who decides', statements.caution),
   statement('again', 'What to do if it happens again', statements.again),
   fact('station', 'Name of the nearest station', figures.stationFigure),

@@ -8,7 +8,7 @@ import { levelInWords } from './words';
 type AgainstUsual = 'louder' | 'as-usual' | 'quieter';
 
 /** The nearest other station with data that does not tell the same as the nearest one; undefined where none disagrees. */
-export function disagreeingStation(facts: LetterFacts): StationEvidence | undefined {
+function disagreeingStation(facts: LetterFacts): StationEvidence | undefined {
   const nearest = nearestOf(facts);
   if (!nearest || dataState(nearest) !== 'enough') return undefined;
   return othersOf(facts).find((other) => dataState(other) === 'enough' && isOtherStory(nearest, other));

@@ -5,9 +5,9 @@ import { shareInWords } from '../letter/words';
 import { distanceInWords } from '../whereabouts';
 
 /** Up to here a station is taken to hear much the same outdoors, metres. Bittern's own rule. */
-export const NEAR_M = 500;
+const NEAR_M = 500;
 /** Beyond this a station tells of another place, metres. Bittern's own rule. */
-export const AREA_M = 1500;
+const AREA_M = 1500;
 /** With less wind its direction tells nothing, m/s. */
 const LEAST_WIND_MS = 1;
 const SECTOR_DEG = 45;

@@ -11,7 +11,7 @@ import { readMessage, type ReceivedContent } from './readMessage';
 
 const MOST_CHARACTERS = 20_000;
 /** A message's own bytes: a letter with a picture or two. */
-export const MOST_MESSAGE_BYTES = 15 * 1024 * 1024;
+const MOST_MESSAGE_BYTES = 15 * 1024 * 1024;
 /** A clock may be a little fast. */
 const CLOCK_TOLERANCE_MS = 300_000;
 

@@ -9,7 +9,7 @@ import { done, invalid, unknown, type Outcome } from '../../outcome';
 import { STANDARD_LETTER } from '../letter/draftReply';
 import { letterProblems } from '../letter/renderLetter';
 
-export const STANDARD_NAME = 'Standard letter';
+const STANDARD_NAME = 'Standard letter';
 const MOST_CHARACTERS = 12_000;
 
 /** A template that a letter may begin with. `id` is its version's; null: the standard letter, which every network has. */

@@ -100,7 +100,7 @@ async function close(
 ): Promise<ActionOutcome> {
   const reason = CLOSING_REASONS.find((known) => known === form.get('reason'));
   if (!reason || reason === 'erased') {
-    return { kind: 'refused', message: 'Choose why no reply is sent. The complaint was not closed.' };
+    return { kind: 'refused', message: 'Choose why no answer is sent. The complaint was not closed.' };
   }
   const outcome = await closeByReference(userId, network, reference, reason);
   if (outcome !== 'not-open') return { kind: outcome };

@@ -13,7 +13,7 @@ export const POST = route(async (context) => {
   if (outcome.kind === 'unknown') throw notFound('The network has no complaint with this reference.');
   if (outcome.kind !== 'sent') {
     const status = outcome.kind === 'text-refused' ? 422 : 409;
-    throw new Problem(status, outcome.kind, 'The reply was not sent', unsentReason(outcome));
+    throw new Problem(status, outcome.kind, 'The answer was not sent', unsentReason(outcome));
   }
   return json({ reply: outcome.reply }, { status: 201 });
 });
