@@ -31,4 +31,4 @@ function makePool(): mysql.Pool {
 }
 
 /** As many as there may be posts in their turn. */
-export const RECEIVING_CONNECTIONS = 6;
+const RECEIVING_CONNECTIONS = 6;

@@ -11,7 +11,7 @@ export interface CalibrationSettings {
 }
 
 /** What holds until a network says otherwise: 0.5 dB (practice 0.5–1.0), a year, two weeks ahead. */
-export const DEFAULT_CALIBRATION_SETTINGS: CalibrationSettings = {
+const DEFAULT_CALIBRATION_SETTINGS: CalibrationSettings = {
   driftBoundCentiDb: 50,
   checkEveryDays: 365,
   remindBeforeDays: 14,

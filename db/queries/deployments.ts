@@ -84,21 +84,6 @@ export async function findDeployment(
     .first();
 }
 
-/** The deployment in force at a station at an instant (epoch seconds). */
-export async function findDeploymentAt(
-  stationId: number,
-  atSec: number,
-  conn: Connection = pool(),
-): Promise<DeploymentRow | undefined> {
-  return selectDeployments(conn)
-    .where('deployments.station_id', stationId)
-    .whereNull('deployments.withdrawn_at')
-    .where('deployments.starts_at', '<=', atSec)
-    .where((query) => query.whereNull('deployments.ends_at').orWhere('deployments.ends_at', '>', atSec))
-    .orderBy('deployments.starts_at', 'desc')
-    .first();
-}
-
 export interface Stay {
   instrumentId: number;
   stationId: number;

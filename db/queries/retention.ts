@@ -8,7 +8,7 @@ export interface Seal {
   keptFromSec: number;
 }
 
-export const NO_SEAL: Seal = { sealedBeforeSec: 0, keptFromSec: 0 };
+const NO_SEAL: Seal = { sealedBeforeSec: 0, keptFromSec: 0 };
 
 const SEAL = { sealedBeforeSec: 'sealed_before', keptFromSec: 'kept_from' };
 

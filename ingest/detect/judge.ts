@@ -22,7 +22,7 @@ import { WindowEvidence } from '#lib/services/limits/windowEvidence';
 
 const JOB = 'judge-limits';
 /** A window is judged this long after its end, so that the last post of a punctual monitor is in. */
-export const SETTLE_SEC = 60;
+const SETTLE_SEC = 60;
 const WINDOWS_A_TRANSACTION = 500;
 
 /** A change to tell people of, with all that the telling needs. */

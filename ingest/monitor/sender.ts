@@ -122,7 +122,7 @@ export async function lastKnownStartSec(
 }
 
 /** The token is not, or no longer, in force: a person has to hand out another. */
-export class TokenRefused extends Error {
+class TokenRefused extends Error {
   constructor() {
     super('The server does not know this station token.');
     this.name = 'TokenRefused';

@@ -12,7 +12,7 @@ const isRoot = process.getuid?.() === 0;
 export const USER = isRoot ? 'mysql' : execFileSync('id', ['-un'], { encoding: 'utf8' }).trim();
 
 export const databaseDirectory = ({ databases }: Layout, name: string) => join(databases, name);
-export const socketOf = (layout: Layout, name: string) => join(databaseDirectory(layout, name), 'socket');
+const socketOf = (layout: Layout, name: string) => join(databaseDirectory(layout, name), 'socket');
 
 /** What every server of the cluster is started with. */
 export function commonOptions(layout: Layout, name: string, port: number): string[] {

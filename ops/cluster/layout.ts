@@ -40,7 +40,7 @@ export function dataNumbers({ dataServers }: Layout): number[] {
 }
 
 /** The value of `BITTERN_DATA_SERVERS`. */
-export function dataServersSetting(layout: Layout, numbers = dataNumbers(layout)): string {
+function dataServersSetting(layout: Layout, numbers = dataNumbers(layout)): string {
   return numbers.map((number) => `data${number}=127.0.0.1:${dataPort(layout, number)}`).join(',');
 }
 

@@ -6,7 +6,7 @@ export interface Outage {
   isBackfilled: boolean;
 }
 
-export const OUTAGES: Outage[] = [
+const OUTAGES: Outage[] = [
   { code: 'MER-05', fromHoursAgo: 33, toHoursAgo: 24.4, isBackfilled: false },
   { code: 'MER-05', fromHoursAgo: 611, toHoursAgo: 585, isBackfilled: false },
   { code: 'MER-03', fromHoursAgo: 92, toHoursAgo: 79, isBackfilled: true },

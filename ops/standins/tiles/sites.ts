@@ -20,7 +20,7 @@ export interface StationSite extends Site {
 }
 
 /** Where the stations stand, in metres of the drawing plane. The geography is drawn around these points. */
-export const STATION_POINTS = {
+const STATION_POINTS = {
   'MER-01': [1392, -652],
   'MER-02': [-238, -742],
   'MER-03': [1010, -1452],

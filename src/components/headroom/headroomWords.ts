@@ -5,7 +5,7 @@ import { formatLevelDb } from '#lib/format/levels';
 import { formatClock } from '#lib/format/times';
 
 /** "62.7" of a headroom in dB: rounded down, so that what is told does not pass the limit. */
-export function formatHeadroomDb(headroomDb: number): string {
+function formatHeadroomDb(headroomDb: number): string {
   return formatLevelDb(Math.floor(headroomDb * 10 + 1e-9) / 10);
 }
 

@@ -1,7 +1,7 @@
 import { energyOfDb } from './energy';
 
 /** Margin in dB up to which ISO 1996-2:2017 10.4 allows no correction for the residual sound. */
-export const NO_CORRECTION_MARGIN_DB = 3;
+const NO_CORRECTION_MARGIN_DB = 3;
 
 /** Slack for margins that binary arithmetic puts a hair above 3 dB, such as 60.4 − 57.4. */
 const MARGIN_SLACK_DB = 1e-9;

@@ -3,7 +3,7 @@ import { laeqFromBandsDb } from './laeqFromBands';
 import { toTenths } from './rounding';
 
 /** Difference in dB between LAeq reported and LAeq from bands above which an interval's data are questionable. */
-export const CONSISTENCY_BOUND_DB = 1;
+const CONSISTENCY_BOUND_DB = 1;
 
 /** Whether an interval's LAeq and its band levels tell the same. */
 export type Consistency =

@@ -8,7 +8,7 @@ export const NO_LEVEL_CENTI_DB = -32768;
 /** Steps of a dB that a shape is kept in: a band lies within 0.25 dB of what was measured, and so does a likeness. */
 export const STEPS_A_DB = 2;
 /** The step that stands for the minute's mean; 0 stands for no band. */
-export const MEAN_STEP = 128;
+const MEAN_STEP = 128;
 /** Thirds of a group of the outline. */
 export const GROUP_THIRDS = 4;
 /** Band slot that the first group begins at: 25 Hz. The last ends at 12.5 kHz. */

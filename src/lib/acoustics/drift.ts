@@ -1,9 +1,9 @@
 /** Days whose trimmed mean is what a place, or a self-check, is like at present. */
 export const RECENT_DAYS = 10;
 /** Days before those that count for neither, so that what drifts by now does not draw its own baseline along. */
-export const GUARD_DAYS = 14;
+const GUARD_DAYS = 14;
 /** Days before those, whose trimmed mean is what it was like: eight weeks. */
-export const BASELINE_DAYS = 56;
+const BASELINE_DAYS = 56;
 /** Longest stretch over which a slope is looked for: half a year. */
 export const SLOPE_DAYS = 182;
 

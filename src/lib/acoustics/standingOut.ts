@@ -30,7 +30,7 @@ export interface StandingOutBounds {
   usualDb: number;
 }
 
-export const STANDING_OUT_BOUNDS: StandingOutBounds = { neighboursDb: 3, usualDb: 5 };
+const STANDING_OUT_BOUNDS: StandingOutBounds = { neighboursDb: 3, usualDb: 5 };
 
 /** A mean spectrum to be examined. */
 export interface ExaminedSpectrum extends LevelsOfBands {

@@ -4,7 +4,7 @@ import { toCentiDb } from './rounding';
 export const CLASS_1_UNCERTAINTY_DB = 0.5;
 
 /** Calibration drift in dB above which data since the last good check are doubtful; practice is 0.5–1.0 dB. */
-export const DRIFT_BOUND_DB = 0.5;
+const DRIFT_BOUND_DB = 0.5;
 
 /** A dB per relative energy: 10/ln 10. */
 const DB_PER_RELATIVE_ENERGY = 10 / Math.LN10;

@@ -23,7 +23,7 @@ export interface KnownWind {
 export type WindPlace = 'within' | 'outside' | 'unknown';
 
 /** A window's wind is known where the intervals with a wind speed make up at least this share of what was measured. */
-export const LEAST_KNOWN_SHARE = 0.5;
+const LEAST_KNOWN_SHARE = 0.5;
 
 /** Whether a wind lies within the range and sector of a rule. What is outside by its speed is outside, whatever its direction. */
 export function windPlace(rule: WindRule, { speedMs, directionDeg }: KnownWind): WindPlace {

@@ -3,7 +3,7 @@ import { accessTokenSchema, newAccessTokenSchema } from './accessTokens';
 import { ownPasswordChangeSchema } from './people';
 import { registerRoute } from './registry';
 
-export const sessionSchema = z.object({
+const sessionSchema = z.object({
   id: z.string(),
   createdAt: z.string(),
   lastSeenAt: z.string().describe('To the minute'),

@@ -5,7 +5,7 @@ import { registerRoute } from './registry';
 /** Kinds that are suggested; a site may use words of its own. */
 export const SUGGESTED_ACTIVITIES = ['ship at berth', 'shift', 'blast', 'rail move'] as const;
 /** Longest activity, in days: a longer one is more likely a slip. */
-export const MOST_ACTIVITY_DAYS = 62;
+const MOST_ACTIVITY_DAYS = 62;
 /** Longest period of a comparison, in days. */
 export const MOST_COMPARED_DAYS = 93;
 /** Activities in one file. */
@@ -36,7 +36,7 @@ export type NewActivity = z.output<typeof newActivitySchema>;
 
 export const activityWithdrawalSchema = z.object({ reason: reasonText });
 
-export const activitySchema = z.object({
+const activitySchema = z.object({
   id: z.number().int(),
   kind: z.string(),
   place: z.string(),
@@ -52,7 +52,7 @@ export const activitySchema = z.object({
 });
 export type Activity = z.output<typeof activitySchema>;
 
-export const activityFileReportSchema = z.object({
+const activityFileReportSchema = z.object({
   added: z.number().int(),
   known: z.number().int().describe('Noted before with the same kind, place and times'),
   refused: z.array(z.object({ line: z.number().int(), message: z.string() })),
@@ -66,7 +66,7 @@ const setSchema = z.object({
   mean: level('Arithmetic mean of the quarter-hours’ LAeq'),
   spread: level('Standard deviation of them'),
 });
-export const activityComparisonSchema = z.object({
+const activityComparisonSchema = z.object({
   kind: z.string(),
   station: z.string(),
   from: z.string(),

@@ -5,7 +5,7 @@ import { registerRoute } from './registry';
 const clock = (description: string) => z.string().nullable().describe(description);
 
 /** How a person is told, as the interface shows it. */
-export const ownAlertsSchema = z.object({
+const ownAlertsSchema = z.object({
   preferences: z.object({
     delivery: z.enum(DELIVERIES),
     dailyAt: z.string().describe('Local time, "07:00"'),
@@ -26,7 +26,7 @@ export const newWebhookSchema = z.object({
   url: z.string('must be an address').max(500, 'must have at most 500 characters'),
 });
 
-export const webhookSchema = z.object({
+const webhookSchema = z.object({
   id: z.number().int(),
   url: z.string(),
   state: z.enum(['working', 'failing', 'given-up']),

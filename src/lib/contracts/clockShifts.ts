@@ -6,7 +6,7 @@ import { registerRoute } from './registry';
 /** Intervals that one shift may move: nearly a year of minutes, five days and a half of seconds. */
 export const MOST_SHIFTED_INTERVALS = 500_000;
 /** A clock that lost its date begins again somewhere; further than this none is off. */
-export const MOST_SHIFT_SEC = 1_300_000_000;
+const MOST_SHIFT_SEC = 1_300_000_000;
 /** Colliding intervals that a preview names. */
 export const MOST_SHOWN_COLLISIONS = 20;
 
@@ -40,7 +40,7 @@ export type NewClockShiftAsked = z.output<typeof newClockShiftSchema>;
 
 export const shiftReversalSchema = z.object({ reason: reasonText });
 
-export const clockShiftSchema = z.object({
+const clockShiftSchema = z.object({
   id: z.number().int(),
   from: z.string(),
   to: z.string(),
@@ -61,7 +61,7 @@ export const clockShiftSchema = z.object({
 });
 export type ClockShift = z.output<typeof clockShiftSchema>;
 
-export const clockShiftPreviewSchema = z.object({
+const clockShiftPreviewSchema = z.object({
   intervals: z.number().int().describe('That would move'),
   first: z.string(),
   last: z.string().describe('Start of the last one'),
@@ -78,7 +78,7 @@ export const clockShiftPreviewSchema = z.object({
 });
 export type ClockShiftPreview = z.output<typeof clockShiftPreviewSchema>;
 
-export const clockOffsetsSchema = z.object({
+const clockOffsetsSchema = z.object({
   items: z.array(
     z.object({
       at: z.string().describe('Quarter-hour of our clock'),

@@ -33,7 +33,7 @@ export const DEFAULT_DESK_SETTINGS: DeskSettings = {
 };
 
 /** Longest internal note, characters. */
-export const MOST_NOTE_CHARACTERS = 4000;
+const MOST_NOTE_CHARACTERS = 4000;
 
 export const noteSchema = z
   .string()

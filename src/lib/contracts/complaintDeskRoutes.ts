@@ -14,7 +14,7 @@ export const newAssignmentSchema = z.object({
   to: z.string().max(36).nullable().describe('Id of one of the people, or null for nobody in particular'),
 });
 
-export const deskNotesSchema = z.object({
+const deskNotesSchema = z.object({
   items: z
     .array(z.object({ id: z.number().int(), text: z.string(), author: z.string(), at: z.string() }))
     .describe('Oldest first; none once the personal data have been erased'),
@@ -30,7 +30,7 @@ export const noteWithdrawalSchema = z.object({
 export const mergeSchema = z.object({
   into: z.string().max(40).nullable().describe('Reference of the complaint that it repeats; null undoes it'),
 });
-export const mergedSchema = z.object({ mergedInto: z.string().nullable() });
+const mergedSchema = z.object({ mergedInto: z.string().nullable() });
 
 const params = z.object({ network: z.string(), reference: z.string() });
 const base = '/api/v1/networks/{network}/complaints/{reference}';

@@ -24,7 +24,7 @@ export const usualSchema = z.object({
 });
 export type Usual = z.output<typeof usualSchema>;
 
-export const evidenceExceedanceSchema = z.object({
+const evidenceExceedanceSchema = z.object({
   id: z.number().int(),
   limit: z.string(),
   metric: z.string().describe('Such as LAeq,1 h'),
@@ -47,7 +47,7 @@ export const toneSchema = z.object({
 export type Tone = z.output<typeof toneSchema>;
 
 /** Why nothing can be said about tones, or that something can. */
-export const TONALITY_STATES = [
+const TONALITY_STATES = [
   'assessed',
   'octave-bands',
   'no-neighbours',
@@ -58,7 +58,7 @@ export const TONALITY_STATES = [
 const excludedSchema = z.object({ from: z.string(), to: z.string(), reason: z.string() });
 
 /** What more a station has to say about the window. Evidence that was kept before there was this lacks it. */
-export const evidenceContextSchema = z.object({
+const evidenceContextSchema = z.object({
   rank: z
     .number()
     .nullable()
@@ -104,7 +104,7 @@ export const evidenceContextSchema = z.object({
 });
 export type EvidenceContext = z.output<typeof evidenceContextSchema>;
 
-export const stationEvidenceSchema = z.object({
+const stationEvidenceSchema = z.object({
   station: z.string(),
   name: z.string(),
   sampleSeconds: z.number().int().nullable(),

@@ -7,7 +7,7 @@ const count = z.number().int();
 const shareSchema = z.object({ count, of: count });
 
 /** Numbers of the complaints whose noise began in a period. Repeats of another complaint are counted apart. */
-export const complaintNumbersSchema = z.object({
+const complaintNumbersSchema = z.object({
   from: z.string(),
   to: z.string(),
   timeZone: z.string(),
@@ -40,7 +40,7 @@ const spanCountsSchema = z.object({
 });
 
 /** Complaints before and after a measure, over two spans of the same length. */
-export const measureComparisonSchema = z.object({
+const measureComparisonSchema = z.object({
   measureOn: localDate,
   days: count.describe('Of each span: what was asked for, or as many as have passed since'),
   isShortened: z.boolean(),

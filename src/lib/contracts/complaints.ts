@@ -108,7 +108,7 @@ export const newComplaintSchema = z
 export type NewComplaint = z.output<typeof newComplaintSchema>;
 
 /** What everybody with a role in the network may read of a complaint. */
-export const complaintSchema = z.object({
+const complaintSchema = z.object({
   reference: z.string(),
   from: z.string(),
   to: z.string(),
@@ -146,9 +146,9 @@ export const personalDataSchema = z.object({
 export type PersonalData = z.output<typeof personalDataSchema>;
 
 /** How a reply leaves: by the outbox (the first three), or on paper where there is no address. */
-export const REPLY_STATES = ['waiting', 'sent', 'dead', 'letter', 'posted'] as const;
+const REPLY_STATES = ['waiting', 'sent', 'dead', 'letter', 'posted'] as const;
 
-export const replySchema = z.object({
+const replySchema = z.object({
   id: z.number().int(),
   sentAt: z.string(),
   sentBy: z.string(),
@@ -171,7 +171,7 @@ export const replySchema = z.object({
 });
 export type Reply = z.output<typeof replySchema>;
 
-export const complaintDetailSchema = complaintSchema.extend({
+const complaintDetailSchema = complaintSchema.extend({
   evidence: evidenceSchema,
   replies: z.array(replySchema),
   private: personalDataSchema

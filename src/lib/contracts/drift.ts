@@ -25,7 +25,7 @@ export const selfChecksSchema = z.object({
 });
 export type SelfChecks = z.output<typeof selfChecksSchema>;
 
-export const selfCheckReceiptSchema = z.object({
+const selfCheckReceiptSchema = z.object({
   accepted: z.number().int(),
   known: z.number().int().describe('Identical to what is stored already'),
   refused: z.array(
@@ -49,7 +49,7 @@ const verdictSchema = z.object({
 });
 export type DriftVerdictJson = z.output<typeof verdictSchema>;
 
-export const driftSchema = z.object({
+const driftSchema = z.object({
   station: z.string(),
   from: z.string().describe('Local date of the first night'),
   to: z.string().describe('Exclusive'),

@@ -21,9 +21,9 @@ export type PackItem = (typeof PACK_ITEMS)[number];
 export const packItemsSchema = z.array(z.enum(PACK_ITEMS));
 
 /** How far a station may speak for the place where the noise was heard. */
-export const REPRESENTATIVENESS = ['near', 'area', 'far', 'no-data', 'unknown-place'] as const;
+const REPRESENTATIVENESS = ['near', 'area', 'far', 'no-data', 'unknown-place'] as const;
 
-export const standingSchema = z.object({
+const standingSchema = z.object({
   station: z.string(),
   distanceM: z.number().nullable().describe('From the place; null where that is not known'),
   wind: z.string().nullable().describe('Towards which it lies, seen from the place'),
@@ -44,7 +44,7 @@ const stripSchema = z.object({
   bandLevelsDb: z.array(z.array(z.number().nullable())),
 });
 
-export const otherReportsSchema = z.object({
+const otherReportsSchema = z.object({
   withinHours: z.number(),
   withinKm: z.number(),
   count: z.number().int(),

@@ -26,7 +26,7 @@ export type ExceedanceState = (typeof EXCEEDANCE_STATES)[number];
 
 const tenths = (description: string) => z.number().describe(`${description}, dB to tenths`);
 
-export const acknowledgementSchema = z.object({
+const acknowledgementSchema = z.object({
   at: z.string(),
   by: z.string().nullable().describe('Name of the person'),
   cause: z.enum(CAUSES).nullable(),
@@ -36,7 +36,7 @@ export const acknowledgementSchema = z.object({
 });
 export type Acknowledgement = z.output<typeof acknowledgementSchema>;
 
-export const exceedanceSchema = z.object({
+const exceedanceSchema = z.object({
   id: z.number().int(),
   station: z.string().describe('Code'),
   stationName: z.string(),
@@ -72,7 +72,7 @@ export const exceedanceSchema = z.object({
 });
 export type Exceedance = z.output<typeof exceedanceSchema>;
 
-export const exceedanceDetailSchema = exceedanceSchema.extend(exceedanceDetailPartSchema.shape);
+const exceedanceDetailSchema = exceedanceSchema.extend(exceedanceDetailPartSchema.shape);
 export type ExceedanceDetail = z.output<typeof exceedanceDetailSchema>;
 
 export const newAcknowledgementSchema = z.object({

@@ -2,7 +2,7 @@ import { z } from 'zod';
 import { LIMIT_METRICS } from '#lib/acoustics/limitQuantities';
 import { registerRoute } from './registry';
 
-export const HEADROOM_STATES = [
+const HEADROOM_STATES = [
   'open',
   'no-data',
   'certain',
@@ -11,12 +11,12 @@ export const HEADROOM_STATES = [
   'dismissed',
   'not-foretold',
 ] as const;
-export const HEADING_SOURCES = ['last-15-min', 'so-far'] as const;
+const HEADING_SOURCES = ['last-15-min', 'so-far'] as const;
 
 const level = (description: string) => z.number().nullable().describe(`${description}, dB`);
 const seconds = (description: string) => z.number().int().describe(description);
 
-export const limitHeadroomSchema = z.object({
+const limitHeadroomSchema = z.object({
   limit: z.object({
     id: z.number().int(),
     version: z.number().int(),
@@ -66,7 +66,7 @@ export const limitHeadroomSchema = z.object({
 });
 export type LimitHeadroom = z.output<typeof limitHeadroomSchema>;
 
-export const headroomSchema = z.object({
+const headroomSchema = z.object({
   at: z.string().describe('The instant that it is told of'),
   items: z.array(limitHeadroomSchema).describe('Limits whose window is open, the one that ends first first'),
 });

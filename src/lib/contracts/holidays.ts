@@ -2,7 +2,7 @@ import { z } from 'zod';
 import { localDate } from './common';
 import { registerRoute } from './registry';
 
-export const MOST_HOLIDAYS = 500;
+const MOST_HOLIDAYS = 500;
 
 const holidaySchema = z.object({
   date: localDate.describe('Civil date in the zone of the network'),

@@ -5,7 +5,7 @@ import { registerRoute } from './registry';
 /** Bytes that one part may have at most. */
 export const MOST_PART_BYTES = 8 * 1024 * 1024;
 
-export const uploadSchema = z.object({
+const uploadSchema = z.object({
   id: z.number().int(),
   station: z.string(),
   fileName: z.string(),

@@ -3,7 +3,7 @@ import { reasonText } from './common';
 import { BOUNDS, REFUSAL_CODES } from './intervals';
 import { registerRoute } from './registry';
 
-export const IMPORT_STATES = [
+const IMPORT_STATES = [
   'mapping',
   'checking',
   'checked',
@@ -95,7 +95,7 @@ export type ImportMapping = z.output<typeof importMappingSchema>;
 export const ROW_REASONS = [...REFUSAL_CODES, 'ambiguous-time', 'nonexistent-time'] as const;
 export type RowReason = (typeof ROW_REASONS)[number];
 
-export const importReportSchema = z.object({
+const importReportSchema = z.object({
   rows: z.number().int(),
   accepted: z.number().int(),
   known: z.number().int().describe('Identical to what is stored already, or to an earlier row'),

@@ -53,7 +53,7 @@ export type NewDeployment = z.output<typeof newDeploymentSchema>;
 export const deploymentEndSchema = z.object({ to: instant });
 export const deploymentWithdrawalSchema = z.object({ reason: reasonText });
 
-export const deploymentSchema = z.object({
+const deploymentSchema = z.object({
   id: z.number().int(),
   serialNumber: z.string(),
   station: z.string(),
@@ -69,7 +69,7 @@ export const deploymentSchema = z.object({
 });
 export type Deployment = z.output<typeof deploymentSchema>;
 
-export const instrumentSchema = z.object({
+const instrumentSchema = z.object({
   id: z.number().int(),
   serialNumber: z.string(),
   class: instrumentClass,

@@ -90,7 +90,7 @@ export const receiptSchema = z.object({
 });
 export type Receipt = z.output<typeof receiptSchema>;
 
-export const lastIntervalSchema = z.object({
+const lastIntervalSchema = z.object({
   lastStart: z.string().nullable(),
   gaps: z
     .array(z.object({ from: z.string(), to: z.string() }))
@@ -100,7 +100,7 @@ export type LastInterval = z.output<typeof lastIntervalSchema>;
 
 const level = z.number().nullable();
 
-export const storedIntervalSchema = z.object({
+const storedIntervalSchema = z.object({
   start: z.string(),
   seconds: z.number().int(),
   LAeq: z.number(),
@@ -120,7 +120,7 @@ export const storedIntervalSchema = z.object({
     .describe('Reasons for which it does not count in statistics; empty when it counts'),
 });
 
-export const intervalListSchema = z.object({
+const intervalListSchema = z.object({
   bands: z.array(z.number()).describe('Nominal frequencies, Hz, of the page’s levels'),
   items: z.array(storedIntervalSchema),
   next: z.string().nullable(),

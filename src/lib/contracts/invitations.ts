@@ -6,7 +6,7 @@ import { registerRoute } from './registry';
 export const newInvitationSchema = newPersonSchema.omit({ password: true });
 export type NewInvitation = z.output<typeof newInvitationSchema>;
 
-export const invitationSchema = z.object({
+const invitationSchema = z.object({
   id: z.number().int(),
   email: z.string(),
   name: z.string(),

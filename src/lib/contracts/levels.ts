@@ -48,7 +48,7 @@ const tonalitySchema = z
   );
 
 /** Figures of one station and period. */
-export const statisticsSchema = z.object({
+const statisticsSchema = z.object({
   from: z.string(),
   to: z.string(),
   validity: z.enum(['rules', 'all']).describe('"all" includes what validity rules and exclusions leave out'),
@@ -101,14 +101,14 @@ export const placementSpanSchema = z.object({
 export type PlacementSpan = z.output<typeof placementSpanSchema>;
 
 /** Level of the sound without a façade's reflection, and how the microphone stood, stretch by stretch. */
-export const incidentSchema = z.object({
+const incidentSchema = z.object({
   LAeq: level('A-weighted equivalent level of the incident sound'),
   placements: z.array(placementSpanSchema),
 });
 export type Incident = z.output<typeof incidentSchema>;
 
 /** What the interface answers of a period: its figures, and what made them. */
-export const statisticsAnswerSchema = statisticsSchema.extend({
+const statisticsAnswerSchema = statisticsSchema.extend({
   incident: incidentSchema.describe('Every other figure is as measured'),
   instruments: periodInstrumentsSchema,
   wind: windSourcesSchema,
@@ -123,7 +123,7 @@ const periodSchema = z.object({
 });
 
 /** Figures of one local date. */
-export const daySchema = z.object({
+const daySchema = z.object({
   date: localDate,
   Lday: level('Level of the day'),
   Levening: level('Level of the evening'),
@@ -145,7 +145,7 @@ export const daySchema = z.object({
 export type DayFigures = z.output<typeof daySchema>;
 export type PeriodCoverage = z.output<typeof periodSchema>;
 
-export const daysSchema = z.object({
+const daysSchema = z.object({
   timeZone: z.string(),
   minimumCoverage: z.number(),
   days: z.array(daySchema),

@@ -74,7 +74,7 @@ const windowSchema = z.object({
   coverage: z.number(),
 });
 
-export const limitTrialAnswerSchema = z.object({
+const limitTrialAnswerSchema = z.object({
   from: z.string(),
   to: z.string(),
   trial: trialSchema,

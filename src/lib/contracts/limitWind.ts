@@ -1,6 +1,6 @@
 import { z } from 'zod';
 
-export const UNKNOWN_WIND_RULES = ['left-out', 'counts'] as const;
+const UNKNOWN_WIND_RULES = ['left-out', 'counts'] as const;
 
 const MOST_MS = 40;
 const speed = (description: string) =>

@@ -146,7 +146,7 @@ export const limitVersionSchema = z.object({
 });
 export type LimitVersionView = z.output<typeof limitVersionSchema>;
 
-export const limitSchema = limitVersionSchema.extend({
+const limitSchema = limitVersionSchema.extend({
   id: z.number().int(),
   state: z.enum(['in-force', 'upcoming', 'withdrawn']),
   nextVersionFrom: z.string().nullable().describe('When a version that is decided already takes over'),
@@ -157,7 +157,7 @@ export const limitSchema = limitVersionSchema.extend({
 });
 export type Limit = z.output<typeof limitSchema>;
 
-export const limitDetailSchema = z.object({
+const limitDetailSchema = z.object({
   limit: limitSchema,
   versions: z.array(limitVersionSchema).describe('Oldest first'),
 });

@@ -4,7 +4,7 @@ import { registerRoute } from './registry';
 import { latestSchema, STATION_STATES } from './stations';
 
 /** A station's newest interval, as it is told while it goes on. */
-export const liveIntervalSchema = latestSchema.extend({
+const liveIntervalSchema = latestSchema.extend({
   code: z.string().describe('The station’s code'),
   state: z.enum(STATION_STATES),
 });

@@ -25,7 +25,7 @@ import { conventionSchema, month } from './summaries';
 /** Changes when a reader of the file has to. */
 export const MONTH_DOCUMENT_FORM = 'bittern-month-1';
 
-export const documentStationSchema = z.object({
+const documentStationSchema = z.object({
   code: z.string(),
   name: z.string(),
   latitude: z.number(),

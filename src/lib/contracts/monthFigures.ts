@@ -18,7 +18,7 @@ const expanded = (of: string) =>
     .describe(`Expanded uncertainty U = 2u of ${of}, dB; null where it cannot be told or there is no level`);
 
 /** How much of a figure’s own time has valid data. */
-export const coveredSchema = z.object({
+const coveredSchema = z.object({
   seconds: secondsSchema,
   coverage: z.number().describe('Valid seconds over the seconds that have elapsed'),
   meetsMinimum: z.boolean(),
@@ -35,7 +35,7 @@ const uncertaintiesSchema = z.object({
 export type Uncertainties = z.output<typeof uncertaintiesSchema>;
 
 /** What the uncertainty of a month’s LAeq is made of. */
-export const uncertaintyTermsSchema = z.object({
+const uncertaintyTermsSchema = z.object({
   instrument: z.number().describe('Standard uncertainty of the instrument’s class, dB'),
   basis: z.enum(['class-1', 'class-2', 'class-1-assumed']).describe('assumed: no instrument is on record'),
   drift: z.number().describe('Largest drift that the calibration checks show, dB'),

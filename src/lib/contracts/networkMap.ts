@@ -8,7 +8,7 @@ const json = (description: string, schema: z.ZodType) => ({
   200: { description, content: { 'application/json': { schema } } },
 });
 
-export const networkLevelsSchema = z.object({
+const networkLevelsSchema = z.object({
   from: z.string(),
   to: z.string(),
   stepSeconds: z.number().int(),
@@ -30,7 +30,7 @@ export const networkLevelsSchema = z.object({
 });
 export type NetworkLevels = z.output<typeof networkLevelsSchema>;
 
-export const mapLayersSchema = z.object({
+const mapLayersSchema = z.object({
   from: z.string(),
   to: z.string(),
   exceedances: z
@@ -46,7 +46,7 @@ export const mapLayersSchema = z.object({
 });
 export type MapLayers = z.output<typeof mapLayersSchema>;
 
-export const networkWindSchema = z.object({
+const networkWindSchema = z.object({
   at: z.string(),
   items: z.array(
     z.object({

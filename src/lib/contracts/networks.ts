@@ -67,7 +67,7 @@ export const networkChangesSchema = z
   .strict();
 export type NetworkChanges = z.output<typeof networkChangesSchema>;
 
-export const networkSchema = z.object({
+const networkSchema = z.object({
   slug: z.string(),
   name: z.string(),
   timeZone: z.string(),

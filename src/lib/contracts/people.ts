@@ -61,7 +61,7 @@ export const passwordResetSchema = z.object({
   password: givenPassword.optional().describe('Left out, one is made and answered once'),
 });
 
-export const meSchema = z.object({
+const meSchema = z.object({
   name: z.string(),
   email: z.string(),
   isAdministrator: z.boolean(),

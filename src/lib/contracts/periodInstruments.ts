@@ -1,7 +1,7 @@
 import { z } from 'zod';
 
 /** An instrument that measured at a station in a part of a period. */
-export const periodInstrumentSchema = z.object({
+const periodInstrumentSchema = z.object({
   id: z.number().int(),
   serialNumber: z.string(),
   class: z.union([z.literal(1), z.literal(2)]),

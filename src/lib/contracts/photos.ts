@@ -9,7 +9,7 @@ export const MOST_PHOTO_BYTES = 8 * 1024 * 1024;
 export const MOST_PHOTOS = 24;
 
 /** Kinds of photo that are taken, told by their bytes. */
-export const PHOTO_TYPES = ['image/jpeg', 'image/png'] as const;
+const PHOTO_TYPES = ['image/jpeg', 'image/png'] as const;
 export type PhotoType = (typeof PHOTO_TYPES)[number];
 
 export const newPhotoSchema = z.object({
@@ -22,7 +22,7 @@ export const newPhotoSchema = z.object({
 });
 export type NewPhoto = z.output<typeof newPhotoSchema>;
 
-export const photoSchema = z.object({
+const photoSchema = z.object({
   id: z.number().int(),
   caption: z.string(),
   takenOn: z.string(),

@@ -18,7 +18,7 @@ export const plantFindingSchema = z.object({
 });
 export type PlantFinding = z.output<typeof plantFindingSchema>;
 
-export const plantCandidateSchema = z.object({
+const plantCandidateSchema = z.object({
   plant: z.number().int(),
   name: z.string(),
   kind: z.string(),

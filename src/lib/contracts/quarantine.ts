@@ -29,7 +29,7 @@ export const quarantinedSchema = z.object({
 });
 export type Quarantined = z.output<typeof quarantinedSchema>;
 
-export const quarantinedRecordSchema = quarantinedSchema.extend({
+const quarantinedRecordSchema = quarantinedSchema.extend({
   record: z
     .object({ bands: z.array(z.number()), interval: z.unknown() })
     .describe('As received, with the bands of its post'),
@@ -38,7 +38,7 @@ export type QuarantinedRecord = z.output<typeof quarantinedRecordSchema>;
 
 const ids = z.array(z.number().int().min(1)).min(1).max(MOST_SETTLED);
 
-export const quarantineFilterSchema = z
+const quarantineFilterSchema = z
   .object({
     station: z.string().max(32).optional(),
     code: z.enum(QUARANTINE_CODES, 'is not a code of the quarantine').optional(),
@@ -83,7 +83,7 @@ export const releaseSchema = z
 export const dismissalSchema = z.object({ ...chosen, reason: reasonText }).refine(isChosenOnce, CHOOSE);
 export const reopeningSchema = z.object(chosen).refine(isChosenOnce, CHOOSE);
 
-export const releaseOutcomeSchema = z.object({
+const releaseOutcomeSchema = z.object({
   released: z.number().int().describe('Stored now'),
   known: z.number().int().describe('Said the same as what is stored; settled as released'),
   refused: z
@@ -95,7 +95,7 @@ export const releaseOutcomeSchema = z.object({
 });
 export type ReleaseOutcome = z.output<typeof releaseOutcomeSchema>;
 
-export const settledOutcomeSchema = z.object({
+const settledOutcomeSchema = z.object({
   settled: z.number().int(),
   passedOver: z.number().int().describe('Not there, or not in a state for it'),
   isMoreLeft: z.boolean(),

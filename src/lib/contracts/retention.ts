@@ -27,7 +27,7 @@ export const retentionChangeSchema = z
     message: 'must be true, as what is deleted does not come back',
   });
 
-export const retentionSchema = z.object({
+const retentionSchema = z.object({
   keepMonths: z.number().int().nullable().describe('Null: single intervals are kept for good'),
   sealedBefore: z
     .string()

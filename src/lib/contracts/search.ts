@@ -1,7 +1,7 @@
 import { z } from 'zod';
 import { registerRoute } from './registry';
 
-export const HIT_KINDS = ['page', 'station', 'limit', 'complaint', 'month'] as const;
+const HIT_KINDS = ['page', 'station', 'limit', 'complaint', 'month'] as const;
 export type HitKind = (typeof HIT_KINDS)[number];
 
 export const searchQuerySchema = z.object({
@@ -12,7 +12,7 @@ export const searchQuerySchema = z.object({
     .describe('Words that all occur in what is looked for; empty: pages and stations'),
 });
 
-export const hitSchema = z.object({
+const hitSchema = z.object({
   kind: z.enum(HIT_KINDS),
   label: z.string(),
   detail: z.string().describe('What tells it from others of the same label, or empty'),

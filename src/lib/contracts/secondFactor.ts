@@ -4,7 +4,7 @@ import { registerRoute } from './registry';
 export const factorCodeSchema = z.object({ code: z.string().trim().min(1, 'must not be empty').max(100) });
 export const factorEndSchema = z.object({ password: z.string().min(1, 'must not be empty').max(5000) });
 
-export const factorStateSchema = z.object({
+const factorStateSchema = z.object({
   isOn: z.boolean(),
   isRequired: z.boolean().describe('A network of the caller lets nobody in from a browser without one'),
   recoveryCodesLeft: z.number().int(),

@@ -5,7 +5,7 @@ import { SPECTROGRAM_LAYOUT } from './spectrogramBinary';
 const levels = z.array(z.number().nullable());
 
 /** A spectrogram as JSON: every list has one entry a column. */
-export const spectrogramSchema = z.object({
+const spectrogramSchema = z.object({
   from: z.string().describe('Start of the first column; at or shortly before what was asked for'),
   to: z.string().describe('End of the last column'),
   stepSeconds: z.number().int(),

@@ -25,7 +25,7 @@ export const spectrumSearchOptionsSchema = z.object({
 });
 export type SpectrumSearchOptions = z.output<typeof spectrumSearchOptionsSchema>;
 
-export const spellSchema = z.object({
+const spellSchema = z.object({
   station: z.string(),
   stationName: z.string(),
   from: z.string(),
@@ -37,7 +37,7 @@ export const spellSchema = z.object({
 });
 export type SpectrumSpell = z.output<typeof spellSchema>;
 
-export const searchedStationSchema = z.object({
+const searchedStationSchema = z.object({
   station: z.string(),
   stationName: z.string(),
   days: z.number().int().describe('Days of UTC with data that were searched'),

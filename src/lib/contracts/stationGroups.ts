@@ -12,7 +12,7 @@ export const newStationGroupSchema = z.object({
 });
 export type NewStationGroup = z.output<typeof newStationGroupSchema>;
 
-export const stationGroupSchema = z.object({
+const stationGroupSchema = z.object({
   id: z.number().int(),
   name: z.string(),
   stations: z.array(z.string()).describe('Codes of its stations as they are now'),

@@ -11,7 +11,7 @@ export const newStationTokenSchema = z.object({
     .describe('What people tell the token by'),
 });
 
-export const stationTokenSchema = z.object({
+const stationTokenSchema = z.object({
   id: z.number().int(),
   label: z.string(),
   createdAt: z.string(),

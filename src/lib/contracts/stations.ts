@@ -127,7 +127,7 @@ export const latestSchema = z.object({
 });
 export type Latest = z.output<typeof latestSchema>;
 
-export const stationSchema = z.object({
+const stationSchema = z.object({
   code: z.string(),
   name: z.string(),
   latitude: z.number(),

@@ -93,10 +93,10 @@ export const conventionSchema = z.object({
 export type Convention = z.output<typeof conventionSchema>;
 
 /** States of a month: `open` and `closed` before anybody drafts it. */
-export const MONTH_STATES = ['open', 'closed', 'draft', 'review', 'issuing', 'issued'] as const;
+const MONTH_STATES = ['open', 'closed', 'draft', 'review', 'issuing', 'issued'] as const;
 export type MonthState = (typeof MONTH_STATES)[number];
 
-export const summaryMonthSchema = z.object({
+const summaryMonthSchema = z.object({
   month,
   isToDate: z.boolean(),
   stations: z.array(z.object({ code: z.string(), coverage: z.number() })),

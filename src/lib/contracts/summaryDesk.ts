@@ -3,7 +3,7 @@ import { registerRoute } from './registry';
 import { stationFiguresSchema } from './summaryLife';
 
 /** A month of a network as months are compared. */
-export const trendMonthSchema = z.object({
+const trendMonthSchema = z.object({
   month: z.string(),
   revision: z.number().int().nullable().describe('Issued; null: the figures of the draft'),
   stations: z.array(stationFiguresSchema),

@@ -4,11 +4,11 @@ import { manifestFileSchema } from './summaryManifest';
 import { monthFiguresSchema } from './summaries';
 
 /** States of the revision of a month that is being made. `issuing`: its files are being written. */
-export const DRAFT_STATES = ['draft', 'review', 'issuing', 'issued'] as const;
+const DRAFT_STATES = ['draft', 'review', 'issuing', 'issued'] as const;
 export type DraftState = (typeof DRAFT_STATES)[number];
 
 /** One figure that differs between an issued month and what the data say now. */
-export const figureChangeSchema = z.object({
+const figureChangeSchema = z.object({
   station: z.string().nullable().describe('Null: of the whole network'),
   figure: z.string().describe('Such as `days 2026-03-04 Lnight`'),
   old: z.union([z.number(), z.string(), z.boolean()]).nullable(),
@@ -35,7 +35,7 @@ export const stationFiguresSchema = monthFiguresSchema
 /** Levels of a station’s month, kept beside the month’s files so that months can be compared without opening them. */
 export type StationFigures = z.output<typeof stationFiguresSchema>;
 
-export const issuedRevisionSchema = z.object({
+const issuedRevisionSchema = z.object({
   month: z.string(),
   revision: z.number().int(),
   issuedAt: z.string(),
@@ -48,7 +48,7 @@ export const issuedRevisionSchema = z.object({
 });
 export type IssuedRevision = z.output<typeof issuedRevisionSchema>;
 
-export const revisionProposalSchema = z.object({
+const revisionProposalSchema = z.object({
   id: z.number().int(),
   ofRevision: z.number().int(),
   foundAt: z.string(),
@@ -59,7 +59,7 @@ export const revisionProposalSchema = z.object({
 });
 export type RevisionProposal = z.output<typeof revisionProposalSchema>;
 
-export const CHECK_KINDS = ['coverage', 'quarantine', 'calibration', 'exceedances', 'recomputation'] as const;
+const CHECK_KINDS = ['coverage', 'quarantine', 'calibration', 'exceedances', 'recomputation'] as const;
 
 export const summaryCheckSchema = z.object({
   kind: z.enum(CHECK_KINDS),
@@ -81,7 +81,7 @@ export const summaryCommentSchema = z.object({
 export type SummaryComment = z.output<typeof summaryCommentSchema>;
 
 /** The revision that is being made. */
-export const summaryDraftSchema = z.object({
+const summaryDraftSchema = z.object({
   revision: z.number().int(),
   state: z.enum(DRAFT_STATES),
   draftedAt: z.string(),

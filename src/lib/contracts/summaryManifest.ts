@@ -18,7 +18,7 @@ export const manifestFileSchema = z.object({
 });
 export type ManifestFile = z.output<typeof manifestFileSchema>;
 
-export const yearDigestSchema = z
+const yearDigestSchema = z
   .object({
     from: z.string().describe('The year’s first midnight'),
     to: z.string().describe('Beginning of the month'),
@@ -42,7 +42,7 @@ export const yearDigestSchema = z
   .describe('Of the sums of the months before, which the year to date is pooled from');
 export type YearDigest = z.output<typeof yearDigestSchema>;
 
-export const dataDigestSchema = z
+const dataDigestSchema = z
   .object({
     from: z.string().describe('Beginning of the first interval’s span: the earlier of month and first day'),
     to: z.string().describe('End: the later of the month and its last night'),

@@ -12,7 +12,7 @@ export type SummaryKey = z.output<typeof summaryKeySchema>;
 export const VERDICTS = ['issued', 'superseded', 'damaged', 'unknown'] as const;
 
 /** What is known of a digest. */
-export const verificationSchema = z.object({
+const verificationSchema = z.object({
   sha256: z.string(),
   verdict: z
     .enum(VERDICTS)

@@ -43,7 +43,7 @@ const degrees = (most: number) =>
     .min(-most, `must be −${most} to ${most}`)
     .max(most, `must be −${most} to ${most}`);
 
-export const mastFactsSchema = z.object({
+const mastFactsSchema = z.object({
   name: shortText,
   latitude: degrees(90),
   longitude: degrees(180),
@@ -91,7 +91,7 @@ export const assignmentSchema = z.object({
 });
 export type Assignment = z.output<typeof assignmentSchema>;
 
-export const mastSchema = mastFactsSchema.extend({
+const mastSchema = mastFactsSchema.extend({
   code: z.string(),
   maximumAge: z.number(),
   isRetired: z.boolean(),

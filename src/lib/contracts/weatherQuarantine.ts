@@ -6,12 +6,12 @@ import { registerRoute } from './registry';
 /** Most records that one act settles; what is left can be asked for again. */
 export const MOST_WEATHER_SETTLED = 5000;
 
-export const refusedWeatherSchema = quarantinedSchema
+const refusedWeatherSchema = quarantinedSchema
   .omit({ station: true, importId: true })
   .extend({ record: z.unknown().describe('As received') });
 export type RefusedWeatherRecord = z.output<typeof refusedWeatherSchema>;
 
-export const WEATHER_ACTS = ['release', 'replace', 'dismiss', 'reopen'] as const;
+const WEATHER_ACTS = ['release', 'replace', 'dismiss', 'reopen'] as const;
 
 export const weatherSettlementSchema = z
   .object({
@@ -38,7 +38,7 @@ export const weatherSettlementSchema = z
   });
 export type WeatherSettling = z.output<typeof weatherSettlementSchema>;
 
-export const weatherSettledSchema = z.object({
+const weatherSettledSchema = z.object({
   settled: z.number().int(),
   passedOver: z.number().int().describe('Still refused, not there, or not in a state for it'),
   detail: z.string().nullable().describe('Why the first of those that are still refused is'),

@@ -54,7 +54,7 @@ function byteOfLinear(linear: number): number {
 }
 
 /** Linear light 0–1 of an sRGB byte (IEC 61966-2-1). */
-export function linearOfByte(byte: number): number {
+function linearOfByte(byte: number): number {
   const encoded = byte / 255;
   return encoded <= 0.04045 ? encoded / 12.92 : ((encoded + 0.055) / 1.055) ** 2.4;
 }

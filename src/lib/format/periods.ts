@@ -1,6 +1,6 @@
 import { clockChangesIn } from '#lib/time/clockChange';
 import { type PresetName } from '#lib/time/periodSteps';
-import { localDateAt, localMinuteAt } from '#lib/time/zone';
+import { localDateAt } from '#lib/time/zone';
 import { formatDuration } from './durations';
 import { formatLocalDate, formatMonth, type Span } from './times';
 
@@ -29,17 +29,4 @@ export function clockChangeWords({ fromSec, toSec }: Span, zone: string): string
   const words = `Clock change on ${formatLocalDate(change.date)}: that day has ${change.hours} h`;
   const isShort = toSec - fromSec <= 2 * 86_400;
   return isShort ? `${words}, this period ${formatDuration(toSec - fromSec)}` : words;
-}
-
-/** "night of a clock change: 7 h" for a period of day that a change shortens or lengthens, or null. */
-export function clockChangeNote({ fromSec, toSec }: Span, kind: string, zone: string): string | null {
-  const civil = civilHours(fromSec, toSec, zone);
-  const hours = (toSec - fromSec) / 3600;
-  return civil === hours ? null : `${kind} of a clock change: ${hours} h`;
-}
-
-/** Hours by the clock on the wall from one instant to the other, less than a day apart. */
-function civilHours(fromSec: number, toSec: number, zone: string): number {
-  const hour = (sec: number) => localMinuteAt(sec, zone) / 60;
-  return (hour(toSec) - hour(fromSec) + 24) % 24 || 24;
 }

@@ -4,7 +4,7 @@ import { rotationHz } from '#lib/acoustics/plantTones';
 const DAYS = ['Mon', 'Tue', 'Wed', 'Thu', 'Fri', 'Sat', 'Sun'];
 const ORDINALS = ['', '', '2nd', '3rd', '4th', '5th', '6th'];
 
-export const LINE_SOURCE_WORDS: Readonly<Record<LineSource, string>> = {
+const LINE_SOURCE_WORDS: Readonly<Record<LineSource, string>> = {
   'blade-pass': 'blade-pass',
   firing: 'firing frequency',
   mains: 'hum at twice the mains frequency',

@@ -22,7 +22,7 @@ const REMEMBERED_MS = 60_000;
  * What every post of a monitor passes before it costs anything: the pace of its address and of its token, and a fair share of the
  * process. Each process keeps its own counts.
  */
-export class ReceivingGate {
+class ReceivingGate {
   private readonly share: FairShare;
   private readonly paceOfAddress: RateLimit;
   private readonly paceOfToken: RateLimit;

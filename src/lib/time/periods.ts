@@ -1,4 +1,4 @@
-import { addDays, instantAtSec, localDateAt, type LocalDate } from './zone';
+import { addDays, instantAtSec, type LocalDate } from './zone';
 import type { PeriodKind, PeriodScheme } from '#lib/acoustics/dayEveningNight';
 
 /** One day, evening or night: half-open, epoch seconds; `date` is the civil date on which it begins. */
@@ -26,29 +26,4 @@ export function periodsOf(date: LocalDate, scheme: PeriodScheme, zone: string): 
     { date, kind: 'evening', fromSec: eveningFrom, toSec: nightFrom },
     night,
   ];
-}
-
-/** The period that an instant falls in. */
-export function periodAt(epochSec: number, scheme: PeriodScheme, zone: string): PeriodInstance {
-  const today = localDateAt(epochSec, zone);
-  for (const date of [today, addDays(today, -1), addDays(today, 1)]) {
-    const found = periodsOf(date, scheme, zone).find((p) => p.fromSec <= epochSec && epochSec < p.toSec);
-    if (found) return found;
-  }
-  throw new RangeError(`No period of day holds the instant ${epochSec} in ${zone}.`);
-}
-
-/** Every period that overlaps `from <= t < to`, whole, in order of time. */
-export function periodsOverlapping(
-  fromSec: number,
-  toSec: number,
-  scheme: PeriodScheme,
-  zone: string,
-): PeriodInstance[] {
-  const found: PeriodInstance[] = [];
-  const last = localDateAt(toSec, zone);
-  for (let date = addDays(localDateAt(fromSec, zone), -1); date <= last; date = addDays(date, 1)) {
-    found.push(...periodsOf(date, scheme, zone).filter((p) => p.fromSec < toSec && fromSec < p.toSec));
-  }
-  return found;
 }

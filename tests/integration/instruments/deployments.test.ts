@@ -1,6 +1,6 @@
 import { beforeAll, describe, expect, test } from 'vitest';
 import { db } from '#db/client';
-import { instrumentAt } from '#lib/services/instruments/instrumentAt';
+import { selectStaysAt } from '#db/queries/deployments';
 import { callApi } from '../support/callApi';
 import { useFreshSchema } from '../support/freshSchema';
 import { makeNetwork, makePerson, makeStation } from '../support/people';
@@ -104,9 +104,11 @@ describe('stays', () => {
     expect((await deploy(second, 'RD-1', '2026-04-01T00:00:00Z')).status).toBe(201);
     expect((await deploy(first, 'RD-2', '2026-04-01T00:00:00Z')).status).toBe(201);
     const [stationId = 0] = stationIds;
-    expect((await instrumentAt(stationId, at('2026-03-31T23:59:59Z')))?.id).toBe(first);
-    expect((await instrumentAt(stationId, at('2026-04-01T00:00:00Z')))?.id).toBe(second);
-    expect(await instrumentAt(stationId, at('2026-02-28T23:59:59Z'))).toBeNull();
+    const standingAt = async (instant: string) =>
+      (await selectStaysAt(stationId, at(instant), at(instant) + 1)).map(({ instrumentId }) => instrumentId);
+    expect(await standingAt('2026-03-31T23:59:59Z')).toEqual([first]);
+    expect(await standingAt('2026-04-01T00:00:00Z')).toEqual([second]);
+    expect(await standingAt('2026-02-28T23:59:59Z')).toEqual([]);
   });
 
   test('of eight that are noted at once for one station one stands', async () => {

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { formatAgo, formatDuration } from '#lib/format/durations';
-import { clockChangeNote, clockChangeWords } from '#lib/format/periods';
+import { clockChangeWords } from '#lib/format/periods';
 import { formatInstant, formatPeriod, formatZone } from '#lib/format/times';
 
 const LONDON = 'Europe/London';
@@ -33,11 +33,9 @@ describe('periods in words', () => {
 
   it('says that the clock changes', () => {
     const night = span('2026-03-28T23:00Z', '2026-03-29T06:00Z');
-    expect(clockChangeNote(night, 'night', LONDON)).toBe('night of a clock change: 7 h');
     expect(clockChangeWords(night, LONDON)).toBe(
       'Clock change on Sun 29 March 2026: that day has 23 h, this period 7 h',
     );
-    expect(clockChangeNote(span('2026-03-27T23:00Z', '2026-03-28T07:00Z'), 'night', LONDON)).toBeNull();
     expect(clockChangeWords(span('2026-03-27T23:00Z', '2026-03-28T07:00Z'), LONDON)).toBeNull();
   });
 });

@@ -1,13 +1,17 @@
-import { afterEach, expect, test, vi } from 'vitest';
+import { afterEach, beforeAll, expect, test, vi } from 'vitest';
+import { log } from '#lib/config/log';
+import { noteRefusal } from '#lib/http/noteRefusal';
 
-const noted = vi.hoisted(() => [] as Record<string, unknown>[]);
-vi.mock('#lib/config/log', () => ({
-  log: () => ({ info: (what: Record<string, unknown>) => noted.push(what) }),
-}));
+const noted: unknown[] = [];
 
-const { noteRefusal } = await import('#lib/http/noteRefusal');
+beforeAll(() => {
+  process.env['BITTERN_DB_PASSWORD'] ??= 'unused';
+  process.env['BITTERN_PERSONAL_DATA_KEY'] ??= 'ab'.repeat(32);
+  const info = vi.spyOn(log(), 'info').mockImplementation((what: unknown) => void noted.push(what));
+  return () => info.mockRestore();
+});
 
-afterEach(() => noted.splice(0));
+afterEach(() => void noted.splice(0));
 
 const request = { requestId: 'r-1', method: 'POST', path: '/sign-in', userId: null };
 

@@ -98,7 +98,7 @@ function chains(points: Map<number, Point>, next: Map<number, number>, hasBefore
 }
 
 /** A copy of a grid whose outermost values are `value`, so that every isoline closes. */
-export function walled(grid: Grid, value: number): Grid {
+function walled(grid: Grid, value: number): Grid {
   const columns = grid.eastM.length;
   const rows = grid.northM.length;
   const copy = grid.value.slice();

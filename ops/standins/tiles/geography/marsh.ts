@@ -7,7 +7,7 @@ import { blob, distanceToSegmentM, isInside } from './shapes';
 import { greatCob, littleCob, marshShoreLine, northBankPoints, southBankPoints } from './shore';
 
 /** The bank that keeps the spring tides off the grazing marsh, from the hythe to the spit. */
-export const seaWall: Point[] = smooth(
+const seaWall: Point[] = smooth(
   [
     [-520, 1000],
     [-250, 1178],

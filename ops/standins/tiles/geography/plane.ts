@@ -4,7 +4,7 @@
  */
 export type Point = readonly [eastM: number, northM: number];
 
-export const CENTRE = { latitude: 54.1, longitude: 1.6 } as const;
+const CENTRE = { latitude: 54.1, longitude: 1.6 } as const;
 
 const METRES_PER_DEGREE_NORTH = 111_320;
 const METRES_PER_DEGREE_EAST = METRES_PER_DEGREE_NORTH * Math.cos((CENTRE.latitude * Math.PI) / 180);

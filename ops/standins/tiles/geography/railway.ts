@@ -4,7 +4,7 @@ import type { Point } from './plane';
 import { rectangle, box } from './shapes';
 
 /** The line from the island's west, through the town station to the yard. */
-export const mainLine: Point[] = smooth(
+const mainLine: Point[] = smooth(
   [
     [-16000, -3300],
     [-11000, -3250],

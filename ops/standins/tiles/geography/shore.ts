@@ -94,7 +94,7 @@ const riverSamples = alongSpline(
   ),
 }));
 
-export const riverMiddle: Point[] = riverSamples.map(({ point }) => point);
+const riverMiddle: Point[] = riverSamples.map(({ point }) => point);
 
 function bank(side: 1 | -1): Point[] {
   const widthM = (index: number) => riverSamples[index]?.widthM ?? 0;

@@ -21,7 +21,7 @@ export interface StripGeometry {
   axis: Rect;
 }
 
-export const LANES = 5;
+const LANES = 5;
 /** Width below which a strip is less tall and has a thinner margin. */
 export const NARROW_PX = 560;
 const COMPLAINTS_PX = 24;

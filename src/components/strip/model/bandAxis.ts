@@ -19,7 +19,7 @@ export function bandAtPx(bands: readonly Band[], heightPx: number, yPx: number):
 }
 
 /** Short label of a nominal frequency: "31.5", "1k", "3.15k". */
-export function shortHz(nominalHz: number): string {
+function shortHz(nominalHz: number): string {
   return nominalHz < 1000 ? String(nominalHz) : `${nominalHz / 1000}k`;
 }
 

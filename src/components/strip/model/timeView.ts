@@ -26,7 +26,7 @@ export function secAtPx(view: TimeView, widthPx: number, px: number): number {
 }
 
 /** A view within bounds that keeps its length where it can; one that would begin after the latest instant moves back. */
-export function clampView(view: TimeView, bounds: ViewBounds): TimeView {
+function clampView(view: TimeView, bounds: ViewBounds): TimeView {
   const length = Math.min(bounds.longestSec, Math.max(bounds.shortestSec, spanSec(view)));
   const middle = (view.fromSec + view.toSec) / 2;
   const toSec = Math.min(bounds.latestSec, middle + length / 2);

@@ -6,7 +6,7 @@ import { formatInstantUtc } from '#lib/contracts/common';
 import { done, unknown, type Outcome } from '../outcome';
 import { activityJson, storedActivity } from './activityJson';
 
-export const NO_ACTIVITY = unknown('The operations log has no entry with this number.');
+const NO_ACTIVITY = unknown('The operations log has no entry with this number.');
 
 /** Notes what the site did. */
 export function noteActivity(

@@ -4,7 +4,7 @@ import { csvText } from '#lib/format/csvText';
 import { auditTrail, type Act } from './trail';
 
 /** Acts in one file at most; the newest of those asked for. */
-export const MOST_CSV_ACTS = 20_000;
+const MOST_CSV_ACTS = 20_000;
 
 const HEADER = ['id', 'at', 'person', 'address', 'network', 'action', 'subject', 'details', 'words'];
 

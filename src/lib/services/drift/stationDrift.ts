@@ -14,7 +14,7 @@ import { driftMarks } from './marks';
 const MOST_NEIGHBOURS = 5;
 
 /** Nights of a network's stations, read once for all of them. */
-export class NetworkNights {
+class NetworkNights {
   readonly #read = new Map<number, Promise<Night[]>>();
 
   constructor(private readonly reading: (stationId: number) => Promise<Night[]>) {}

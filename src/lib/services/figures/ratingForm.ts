@@ -5,7 +5,7 @@ import {
   type AdjustmentKind,
 } from '#lib/acoustics/ratingLevel';
 
-export const ADJUSTMENT_KINDS: readonly AdjustmentKind[] = ['tonal', 'impulsive', 'intermittent', 'other'];
+const ADJUSTMENT_KINDS: readonly AdjustmentKind[] = ['tonal', 'impulsive', 'intermittent', 'other'];
 
 /** Adjustments and background as a person entered them; they live in the address, so that the page can be sent on. */
 export interface RatingEntry {
@@ -17,7 +17,7 @@ export interface RatingEntry {
 }
 
 /** Name of a kind's field for the reason. */
-export const reasonField = (kind: AdjustmentKind) => `${kind}Reason`;
+const reasonField = (kind: AdjustmentKind) => `${kind}Reason`;
 
 const NUMBER = /^[+-]?\d{1,3}(?:[.,]\d{1,2})?$/;
 const LONGEST_REASON = 300;

@@ -8,7 +8,7 @@ import { keptFromSecOf, requireKept } from '../retention/kept';
 import { bandColumns, inDb, type BandColumns } from './columns';
 
 /** Most intervals in one file: two months of minutes, a day of seconds. */
-export const MOST_CSV_INTERVALS = 100_000;
+const MOST_CSV_INTERVALS = 100_000;
 /** Rows written between two turns of the event loop. */
 const PAGE = 5000;
 

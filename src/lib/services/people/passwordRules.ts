@@ -1,8 +1,8 @@
 import { dictionary } from '@zxcvbn-ts/language-common';
 
-export const PASSWORD_LEAST = 12;
+const PASSWORD_LEAST = 12;
 /** Longer ones would only cost time to hash; nothing is cut off. */
-export const PASSWORD_MOST = 1000;
+const PASSWORD_MOST = 1000;
 /** What is left of a password without the names that anybody knows must have as many characters. */
 const LEAST_BESIDE_NAMES = 8;
 /** Shorter parts of names occur in any words. */

@@ -1,5 +1,5 @@
 /** Minutes of a bin of the clock. */
-export const BIN_MINUTES = 10;
+const BIN_MINUTES = 10;
 const BINS = 1440 / BIN_MINUTES;
 const WEEKDAYS = 7;
 

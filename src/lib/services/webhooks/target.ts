@@ -71,7 +71,7 @@ export function targetProblem(text: string, mayLoopBack: boolean): string | null
 }
 
 /** Host of an address, an IPv6 address without its brackets. */
-export function hostOf(url: URL): string {
+function hostOf(url: URL): string {
   return url.hostname.replace(/^\[|\]$/g, '').toLowerCase();
 }
 

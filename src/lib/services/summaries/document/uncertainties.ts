@@ -92,10 +92,7 @@ export function uncertaintiesOf(
  * What gaps bring into Lden: those of its periods, each weighted by the period’s share of the energy that Lden is made of. The
  * gaps of day, evening and night are taken as independent.
  */
-export function ldenGaps(
-  scheme: PeriodScheme,
-  levels: Readonly<Record<PeriodKind, GappedLevel>>,
-): number | null {
+function ldenGaps(scheme: PeriodScheme, levels: Readonly<Record<PeriodKind, GappedLevel>>): number | null {
   const hours = nominalHoursOf(scheme);
   const parts: { energy: number; gapsDb: number }[] = [];
   for (const kind of periodKindsOf(scheme)) {

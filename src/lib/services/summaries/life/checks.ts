@@ -15,7 +15,7 @@ const MOST_ITEMS = 50;
 type Item = SummaryCheck['items'][number];
 
 /** What stands open in a month before it is issued, each with the page where it is decided. Nothing of it hinders: a person decides. */
-export async function monthChecks(
+async function monthChecks(
   network: NetworkRow,
   month: string,
   figures: readonly StationFigures[],

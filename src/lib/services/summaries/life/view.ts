@@ -30,10 +30,7 @@ export async function monthLife(networkId: number, month: string): Promise<Month
 }
 
 /** Issued revisions of a network, of one month where it is given; latest month and revision first. */
-export async function issuedRevisions(
-  networkId: number,
-  month: string | null = null,
-): Promise<IssuedRevision[]> {
+async function issuedRevisions(networkId: number, month: string | null = null): Promise<IssuedRevision[]> {
   const rows = await listIssued(networkId, month);
   const files = groupBy(await listIssuedFiles(rows.map(({ id }) => id)), ({ summaryId }) => summaryId);
   const latest = new Map<string, number>();
@@ -68,7 +65,7 @@ function revisionJson(
 }
 
 /** The revision that is being made, as the interface gives it. */
-export function draftJson(row: SummaryDraftRow): SummaryDraft {
+function draftJson(row: SummaryDraftRow): SummaryDraft {
   return {
     revision: row.revision,
     state: row.state,

@@ -8,7 +8,7 @@ export const RUST = '#9c3d1f';
 
 /** pdfmake sets a subscript at 0.58 of its size, which is too small to read in print at 9 pt. */
 const INDEX_SCALE = 1.25;
-export const BODY_SIZE = 9;
+const BODY_SIZE = 9;
 export const SMALL_SIZE = 8;
 
 /** Text in which acoustic descriptors are typeset: an italic L and its index below the line. `size` in points. */

@@ -35,7 +35,7 @@ export async function digestMonth(
 }
 
 /** One digest of all stations’ digests. */
-export function wholeDigest(stations: DataDigest['stations']): string {
+function wholeDigest(stations: DataDigest['stations']): string {
   const hash = createHash('sha256');
   for (const { code, intervals, sha256 } of stations) hash.update(`${code} ${intervals} ${sha256}\n`);
   return hash.digest('hex');

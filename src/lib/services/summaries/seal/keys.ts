@@ -26,7 +26,7 @@ const NONCE_BYTES = 12;
 const TAG_BYTES = 16;
 
 /** The private key does not open: another key stands in the settings, or its bytes were changed. A new key is the way out. */
-export class SigningKeyUnreadable extends Error {
+class SigningKeyUnreadable extends Error {
   constructor(networkId: number, cause: unknown) {
     super(`The signing key of network ${networkId} cannot be opened with the key of the settings.`, {
       cause,

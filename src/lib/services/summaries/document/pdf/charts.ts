@@ -33,7 +33,7 @@ export function figure(pages: Pages, height: number, alt: string, draw: (top: nu
 }
 
 /** Steps of a scale of levels that spans some values, dB. */
-export function levelScale(levels: readonly number[], stepDb: number): { lowDb: number; highDb: number } {
+function levelScale(levels: readonly number[], stepDb: number): { lowDb: number; highDb: number } {
   const lowDb = Math.floor((Math.min(...levels) - 0.5) / stepDb) * stepDb;
   const highDb = Math.ceil((Math.max(...levels) + 0.5) / stepDb) * stepDb;
   return { lowDb, highDb: Math.max(highDb, lowDb + stepDb) };
