@@ -1,5 +1,7 @@
-import { afterEach, expect, test, vi } from 'vitest';
+import { afterEach, beforeEach, expect, test, vi } from 'vitest';
 
+// Settings are read once by the modules that are loaded: here for each address, by nobody else for these.
+beforeEach(() => void vi.resetModules());
 afterEach(() => {
   vi.resetModules();
   vi.unstubAllEnvs();
