@@ -18,6 +18,7 @@ async function backUp(): Promise<void> {
   const settings = config();
   const { dir, keepDays, keysKeepDays, passphraseFile } = settings.backup;
   requirePassphrase(passphraseFile);
+  if (secretsTo !== null) requirePlaceForSecrets(settings.backup, secretsTo);
   const connection = await connect(settings);
   try {
     await takeTurn(connection, settings.database.name);
@@ -53,17 +54,22 @@ function requirePassphrase(file: string | null): void {
   throw new SettingsError([`BITTERN_BACKUP_PASSPHRASE_FILE: there is no file ${file}`]);
 }
 
-/** Writes the generated secrets, encrypted, to a place apart from the backups, which they would open. */
-async function writeSecrets({ backup, dataDir }: Config, path: string): Promise<void> {
-  if (backup.passphraseFile === null) {
+/** Asked before anything is backed up, so that an ending with 2 means that nothing was done. */
+function requirePlaceForSecrets({ passphraseFile, dir }: Config['backup'], path: string): void {
+  if (passphraseFile === null) {
     throw new Ending(EXIT.usage, 'Secrets are written encrypted only: set BITTERN_BACKUP_PASSPHRASE_FILE.');
   }
-  if (!relative(resolve(backup.dir), resolve(path)).startsWith('..')) {
+  if (!relative(resolve(dir), resolve(path)).startsWith('..')) {
     throw new Ending(
       EXIT.usage,
       'Secrets are kept apart from backups: name a file outside BITTERN_BACKUP_DIR.',
     );
   }
+  if (existsSync(path)) throw new Ending(EXIT.usage, `There is a file ${path} already: name another.`);
+}
+
+/** Writes the generated secrets, encrypted, to a place apart from the backups, which they would open. */
+async function writeSecrets({ backup, dataDir }: Config, path: string): Promise<void> {
   const text = await readFile(join(dataDir, 'secrets.env'));
   await writeSealed(Readable.from([text]), path, 'secrets', backup.passphraseFile);
   console.log(`Secrets, encrypted: ${path}`);

@@ -68,6 +68,17 @@ it('brings every table, trigger and file back in another instance, though others
   expect(await readFile(photo, 'utf8')).toBe('a photo');
 });
 
+it('refuses a place for secrets before it backs anything up', async () => {
+  const sets = await readdir(join(backups, 'data'));
+  const refused = { code: 2, said: expect.any(String) as string };
+  const backUp = (path: string, settings: Record<string, string>) =>
+    runScript('ops/backup.sh', ['--secrets-to', path], settings);
+  expect(await backUp(join(root, 'secrets'), { BITTERN_BACKUP_DIR: backups })).toEqual(refused);
+  expect(await backUp(join(backups, 'secrets'), encrypting)).toEqual(refused);
+  expect(await backUp(passphraseFile, encrypting)).toEqual(refused);
+  expect(await readdir(join(backups, 'data'))).toEqual(sets);
+});
+
 it('lets people sign in and reads what residents told, in the restored instance', async () => {
   await insideTarget(async ({ signInStatus, findAuditBreak }) => {
     expect(await signInStatus(filled.email, PASSWORD)).toBe(204);
