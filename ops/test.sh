@@ -1,14 +1,14 @@
 #!/usr/bin/env bash
 # Every check, or those named: ops/test.sh [format] [lint] [types] [unit] [reference] [integration] [faults] [cluster] [build] [e2e]
-# Lanes joined by `+` run beside one another, parts joined by `,` after one another in their lane: `ops/test.sh faults+cluster,build`.
+# Lanes joined by `+` run beside one another, parts joined by `,` after one another in their lane: `ops/test.sh unit,build+reference`.
 # What lanes say is told whole when they have ended. Ends with a line `N passed, N failed[, N skipped]`.
 set -uo pipefail
 cd "$(dirname "$0")/.."
 export PATH="$PATH:/usr/sbin" ASTRO_TELEMETRY_DISABLED=1
 
-# Beside one another runs what needs one processor or mostly waits, and has a database of its own.
+# Beside one another runs what needs one processor or mostly waits, has a database of its own, and does not start a web while one is built.
 stages=("$@")
-[ "${#stages[@]}" -gt 0 ] || stages=(types+lint,format unit+reference integration faults+build cluster e2e)
+[ "${#stages[@]}" -gt 0 ] || stages=(types+lint,format unit,build+reference integration faults cluster e2e)
 read -ra parts <<<"$(tr ',+' '  ' <<<"${stages[*]}")"
 for part in "${parts[@]}"; do
   [[ " format lint types unit reference integration faults cluster build e2e " == *" $part "* ]] && continue

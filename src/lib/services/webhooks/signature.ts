@@ -44,8 +44,9 @@ export function signatureFields({ webhookId, url, body, secret }: WebhookPost, n
   };
 }
 
-/** An address as a request names it, so without a fragment, its host in lower case, a path at least `/` (RFC 9421, section 2.2.2). */
+/** An address as a request names it, so without a fragment, its host in lower case, a path at least `/` (RFC 9421, section 2.2.2). One that is none is left as it is: posting tells what is wrong with it. */
 function targetUri(address: string): string {
+  if (!URL.canParse(address)) return address;
   const url = new URL(address);
   url.hash = '';
   return url.href;
