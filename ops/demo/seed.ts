@@ -73,7 +73,8 @@ export async function seedDemo(settings: Config, tell: (line: string) => void): 
   // Complaints name areas of the form.
   await seedReportForm(network, desk.liaisonId, stations);
   tell(`${await seedComplaints(desk, nowSec, days)} complaints`);
-  tell(`${await seedSummaries(network, operatorId)} months issued`);
+  const months = await seedSummaries(network, operatorId);
+  tell(`${months} ${months === 1 ? 'month' : 'months'} issued`);
 }
 
 async function judgeAll(): Promise<number> {
