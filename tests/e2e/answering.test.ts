@@ -155,7 +155,7 @@ test('four eyes: who wrote an answer cannot approve it, and an answer received i
   await other.context.close();
 
   await page.goto(`/n/merrow/complaints/${reference}`);
-  await page.getByText('File an answer that came in').click();
+  await page.getByText('File a message that came in').click();
   await page.getByLabel('What was said or written').fill('She rang: it was back last night.');
   await page.getByRole('button', { name: 'File the note' }).click();
   await page.getByText('noted, filed by').waitFor();
