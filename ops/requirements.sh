@@ -18,6 +18,7 @@ for tool in "$@"; do
       [ -e /usr/lib/galera/libgalera_smm.so ] || missing+=(galera-4)
       [ -e /usr/lib/mysql/plugin/ha_spider.so ] || missing+=(mariadb-plugin-spider)
       command -v rsync >/dev/null || missing+=(rsync)
+      command -v stunnel >/dev/null || missing+=(stunnel4)
       command -v haproxy >/dev/null || [ -x /usr/sbin/haproxy ] || missing+=(haproxy)
       ;;
     nginx) command -v nginx >/dev/null || [ -x /usr/sbin/nginx ] || missing+=(nginx-light) ;;

@@ -14,6 +14,7 @@ const OF_ONE_SERVER = [
   'tests/integration/backup/pointInTime.test.ts', // its binary log
   'tests/integration/ingest/away.test.ts', // stopped, made read-only, filled; here: tests/cluster/kills.test.ts
   'tests/integration/operation/auditGrant.test.ts', // the account that Bittern makes for itself in a database of its own
+  'tests/integration/operation/missingRights.test.ts', // the same account, with less
   'tests/integration/operation/databaseTls.test.ts', // its certificate
   'tests/integration/operation/migrations.test.ts', // the schema of local tables; here: tests/cluster/alter.test.ts
 ];

@@ -1,9 +1,10 @@
 import { execFileSync, spawnSync } from 'node:child_process';
-import { existsSync, mkdirSync } from 'node:fs';
-import { join } from 'node:path';
+import { existsSync, mkdirSync, writeFileSync } from 'node:fs';
+import { dirname, join } from 'node:path';
 import { setTimeout as sleep } from 'node:timers/promises';
 import mysql, { type RowDataPacket } from 'mysql2/promise';
-import { dataPort, type Layout } from './layout';
+import { makeCertificate } from './certificate';
+import { certificateOf, dataPort, type Layout } from './layout';
 import { pidOf, startProcess } from './processes';
 
 const START_WITHIN_MS = 120_000;
@@ -17,8 +18,9 @@ const socketOf = (layout: Layout, name: string) => join(databaseDirectory(layout
 /** What every server of the cluster is started with. */
 export function commonOptions(layout: Layout, name: string, port: number): string[] {
   const directory = databaseDirectory(layout, name);
+  const tls = certificateOf(layout);
   return [
-    '--no-defaults',
+    tls ? `--defaults-file=${tls.options}` : '--no-defaults',
     `--user=${USER}`,
     `--datadir=${join(directory, 'data')}`,
     `--socket=${socketOf(layout, name)}`,
@@ -42,6 +44,25 @@ export function commonOptions(layout: Layout, name: string, port: number): strin
     '--table-open-cache=4000',
     '--open-files-limit=16000',
   ];
+}
+
+const CERTIFIED_DAYS = 3650;
+
+/** Makes the certificate of a layout that has TLS, where it is not there, and the file by which servers find it: a state transfer reads no other options. */
+export function ensureCertificate(layout: Layout): void {
+  const wanted = certificateOf(layout);
+  if (!wanted || existsSync(wanted.options)) return;
+  const directory = dirname(wanted.key);
+  mkdirSync(directory, { recursive: true, mode: 0o711 });
+  const { certificate, key } = makeCertificate(directory, 'cluster', {
+    names: 'DNS:localhost,IP:127.0.0.1',
+    days: CERTIFIED_DAYS,
+  });
+  writeFileSync(
+    wanted.options,
+    `[mysqld]\nssl-ca=${certificate}\nssl-cert=${certificate}\nssl-key=${key}\n\n[sst]\nssl-mode=VERIFY_CA\n`,
+  );
+  giveAway(directory);
 }
 
 /** Where a server has its temporary tables; made where it is not there. */
@@ -98,7 +119,9 @@ export async function startDataServers(layout: Layout, numbers: readonly number[
 export async function ensureOwner(layout: Layout, name: string): Promise<void> {
   const root = await mysql.createConnection({ socketPath: socketOf(layout, name), user: 'root' });
   await root.query('CREATE USER IF NOT EXISTS bittern@127.0.0.1 IDENTIFIED BY ?', [layout.password]);
-  await root.query('GRANT ALL PRIVILEGES ON *.* TO bittern@127.0.0.1');
+  await root.query(
+    `GRANT ALL PRIVILEGES ON *.* TO bittern@127.0.0.1 REQUIRE ${layout.hasTls ? 'SSL' : 'NONE'}`,
+  );
   await root.query('CREATE USER IF NOT EXISTS look@127.0.0.1');
   await root.end();
 }

@@ -9,7 +9,7 @@ import {
   installDatabase,
   untilAnswered,
 } from './databases';
-import { HEAD_NODES, nodePorts, type Layout } from './layout';
+import { certificateOf, HEAD_NODES, nodePorts, type Layout } from './layout';
 import { pidOf, startProcess, stopProcess } from './processes';
 
 const IS_READY =
@@ -60,6 +60,7 @@ function startNode(layout: Layout, number: number, more: readonly string[]): voi
 function nodeOptions(layout: Layout, number: number): string[] {
   const { sql, group, increments, transfer } = nodePorts(layout, number);
   const others = HEAD_NODES.map((other) => `127.0.0.1:${nodePorts(layout, other).group}`);
+  const made = certificateOf(layout);
   const provider = [
     `base_port=${group}`,
     `gmcast.listen_addr=tcp://127.0.0.1:${group}`,
@@ -68,6 +69,13 @@ function nodeOptions(layout: Layout, number: number): string[] {
     // A node that says nothing is left out after these: on one machine a node is silent only when it is dead.
     'evs.suspect_timeout=PT3S',
     'evs.inactive_timeout=PT8S',
+    ...(made
+      ? [
+          `socket.ssl_ca=${made.certificate}`,
+          `socket.ssl_cert=${made.certificate}`,
+          `socket.ssl_key=${made.key}`,
+        ]
+      : []),
   ];
   return [
     ...commonOptions(layout, nameOf(number), sql),

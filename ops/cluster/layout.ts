@@ -1,4 +1,5 @@
 import { join, resolve } from 'node:path';
+import { certificateIn, type Certificate } from './certificate';
 
 export const HEAD_NODES = [1, 2, 3] as const;
 
@@ -11,6 +12,8 @@ export interface Layout {
   password: string;
   /** Data directories of the databases; elsewhere than `directory` where they need not outlive the machine's run. */
   databases: string;
+  /** Whether all connections between its parts are encrypted, by a certificate of its own. */
+  hasTls: boolean;
 }
 
 const PORTS = { head: 0, http: 9, node: 1, data: 11, group: 21, increments: 31, transfer: 41, web: 51 };
@@ -44,8 +47,16 @@ function dataServersSetting(layout: Layout, numbers = dataNumbers(layout)): stri
   return numbers.map((number) => `data${number}=127.0.0.1:${dataPort(layout, number)}`).join(',');
 }
 
+/** The certificate of every server, and the file of options that names it; null where there is no encryption. */
+export function certificateOf({ hasTls, databases }: Layout): (Certificate & { options: string }) | null {
+  if (!hasTls) return null;
+  const directory = join(databases, 'tls');
+  return { ...certificateIn(directory, 'cluster'), options: join(directory, 'servers.cnf') };
+}
+
 /** What each of Bittern's processes gets to know. */
 export function settingsOf(layout: Layout): Record<string, string> {
+  const certificate = certificateOf(layout)?.certificate;
   return {
     BITTERN_DB_OWN: 'false',
     BITTERN_DB_HOST: '127.0.0.1',
@@ -54,14 +65,15 @@ export function settingsOf(layout: Layout): Record<string, string> {
     BITTERN_DB_PASSWORD: layout.password,
     BITTERN_DATA_SERVERS: dataServersSetting(layout),
     BITTERN_DATA_DIR: join(layout.directory, 'files'),
+    ...(certificate !== undefined && { BITTERN_DB_TLS_CA: certificate, BITTERN_DATA_TLS_CA: certificate }),
   };
 }
 
 /** A layout in a directory. */
 export function layoutIn(
   directory: string,
-  { basePort, dataServers, password }: Pick<Layout, 'basePort' | 'dataServers' | 'password'>,
+  given: Pick<Layout, 'basePort' | 'dataServers' | 'password' | 'hasTls'>,
 ): Layout {
   const absolute = resolve(directory);
-  return { directory: absolute, basePort, dataServers, password, databases: join(absolute, 'databases') };
+  return { ...given, directory: absolute, databases: join(absolute, 'databases') };
 }

@@ -13,7 +13,8 @@ import { secretsIn, startDatabases, startPrograms, stopAll } from './programs';
 import { tellStatus } from './status';
 
 const USAGE = `ops/cluster.sh COMMAND
-  up [--data 2] [--only-databases]   builds what is not there, and starts what does not run
+  up [--data 2] [--tls] [--only-databases]
+                                     builds what is not there, and starts what does not run; --tls, at the first time: all that they say to each other is encrypted
   heal                               starts what does not run
   status                             what runs, and how the head's nodes stand
   kill NAME                          ends one without warning: head1 … head3, data1 …, web1, web2, worker1, worker2, proxy
@@ -73,15 +74,20 @@ async function run(): Promise<number> {
 /** The number of data servers is kept, and may grow: buckets are moved to new ones by hand. */
 function readLayout(): Layout {
   const path = join(directory, 'cluster.json');
-  const kept = existsSync(path) ? (JSON.parse(readFileSync(path, 'utf8')) as { dataServers: number }) : null;
+  const kept = existsSync(path)
+    ? (JSON.parse(readFileSync(path, 'utf8')) as { dataServers: number; hasTls?: boolean })
+    : null;
   const at = given.indexOf('--data');
   const dataServers = at >= 0 ? Number(given[at + 1]) : (kept?.dataServers ?? 2);
   if (!Number.isInteger(dataServers) || dataServers < (kept?.dataServers ?? 1) || dataServers > 4)
     throw new Error('--data: 1 to 4 data servers; no fewer than there are.');
+  const isAsked = given.includes('--tls');
+  if (kept && isAsked && !kept.hasTls) throw new Error('--tls: this cluster was made without; make another.');
+  const hasTls = kept?.hasTls ?? isAsked;
   const { password } = secretsIn(directory);
-  writeFileSync(path, JSON.stringify({ dataServers }));
+  writeFileSync(path, JSON.stringify({ dataServers, hasTls }));
   const basePort = Number(process.env['BITTERN_CLUSTER_PORT'] || '4600');
-  return layoutIn(directory, { basePort, dataServers, password });
+  return layoutIn(directory, { basePort, dataServers, password, hasTls });
 }
 
 async function move(bucketText: string, name: string): Promise<number> {

@@ -6,7 +6,7 @@ import { createConnection } from 'mysql2/promise';
 import { untilAnswers } from '#ops/start/untilAnswers';
 import { WEB_ARGUMENTS } from '#ops/start/webArguments';
 import { WORKER_ARGUMENTS } from '#ops/start/workerArguments';
-import { startDataServers } from './databases';
+import { ensureCertificate, startDataServers } from './databases';
 import { startHead } from './head';
 import { dataNumbers, headPort, httpPort, settingsOf, webPort, type Layout } from './layout';
 import { pidOf, startProcess, startedNames, stopProcess } from './processes';
@@ -21,6 +21,7 @@ export async function startDatabases(layout: Layout): Promise<void> {
     // The databases' user goes through it; what is in it is its owner's.
     chmodSync(directory, 0o711);
   }
+  ensureCertificate(layout);
   await startDataServers(layout, dataNumbers(layout));
   await startHead(layout);
   startProxy(layout);

@@ -1,7 +1,7 @@
 import { randomBytes } from 'node:crypto';
 import { cpus, loadavg } from 'node:os';
-import mysql from 'mysql2/promise';
 import { closeDb, db } from '#db/client';
+import { asOwner } from './asOwner';
 
 /**
  * Runs `work` with a migrated database of its own as the process's, and drops it whatever happens. Unless told not
@@ -21,17 +21,6 @@ export async function withOwnSchema(work: () => Promise<void>, { isTold = true }
     await closeDb();
     await asOwner(`DROP DATABASE IF EXISTS ${name}`);
   }
-}
-
-async function asOwner(statement: string): Promise<void> {
-  const connection = await mysql.createConnection({
-    host: process.env['BITTERN_DB_HOST'] ?? '127.0.0.1',
-    port: Number(process.env['BITTERN_DB_PORT']),
-    user: process.env['BITTERN_DB_USER'],
-    password: process.env['BITTERN_DB_PASSWORD'],
-  });
-  await connection.query(statement);
-  await connection.end();
 }
 
 function printMachine(): void {

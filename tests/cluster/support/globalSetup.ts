@@ -10,7 +10,7 @@ const PORTS = 60;
 const MEMORY = '/dev/shm';
 
 /**
- * A cluster for the tests, thrown away afterwards: three nodes of the head, two data servers and the proxy. Its databases lie in memory where there
+ * A cluster for the tests, thrown away afterwards: three nodes of the head, two data servers and the proxy, encrypted between each other. Its databases lie in memory where there
  * is such a place, because each test's database is hundreds of tables. One that runs already is used where `BITTERN_TEST_CLUSTER` has its layout.
  */
 export default async function setUp(): Promise<(() => Promise<void>) | undefined> {
@@ -25,7 +25,7 @@ export default async function setUp(): Promise<(() => Promise<void>) | undefined
   const databases = mkdtempSync(join(existsSync(MEMORY) ? MEMORY : directory, 'bittern-test-cluster-'));
   for (const made of [directory, databases]) chmodSync(made, 0o711);
   const layout: Layout = {
-    ...layoutIn(directory, { basePort: await freeRange(), dataServers: 2, password: 'test' }),
+    ...layoutIn(directory, { basePort: await freeRange(), dataServers: 2, password: 'test', hasTls: true }),
     databases,
   };
   const stop = async () => {

@@ -1,7 +1,7 @@
 import { randomBytes } from 'node:crypto';
-import mysql from 'mysql2/promise';
 import { afterEach, beforeEach } from 'vitest';
 import { closeDb } from '#db/client';
+import { asOwner } from '#ops/bench/support/asOwner';
 
 /** Gives each test of a file an empty database, which `db()` and child processes with our environment use. */
 export function useEmptyDatabase(): void {
@@ -17,16 +17,4 @@ export function useEmptyDatabase(): void {
     await closeDb();
     await asOwner(`DROP DATABASE IF EXISTS ${name}`);
   });
-}
-
-/** Runs a statement on the tests' server, in no database. */
-export async function asOwner(statement: string): Promise<void> {
-  const connection = await mysql.createConnection({
-    host: process.env['BITTERN_DB_HOST'] ?? '127.0.0.1',
-    port: Number(process.env['BITTERN_DB_PORT']),
-    user: process.env['BITTERN_DB_USER'],
-    password: process.env['BITTERN_DB_PASSWORD'],
-  });
-  await connection.query(statement);
-  await connection.end();
 }

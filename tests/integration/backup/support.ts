@@ -1,6 +1,7 @@
 import { execFile } from 'node:child_process';
 import { createHash, randomBytes } from 'node:crypto';
 import mysql, { type RowDataPacket } from 'mysql2/promise';
+import { tlsOf } from '#db/tls';
 
 /** How a command ended, and what it said. */
 export interface Ended {
@@ -32,13 +33,15 @@ export function freshName(): string {
 
 /** Asks the server itself, past Bittern's own connections. */
 export async function askServer(sql: string, database?: string): Promise<RowDataPacket[]> {
+  const host = process.env['BITTERN_DB_HOST'] ?? '127.0.0.1';
   const connection = await mysql.createConnection({
-    host: process.env['BITTERN_DB_HOST'] ?? '127.0.0.1',
+    host,
     port: Number(process.env['BITTERN_DB_PORT']),
     user: process.env['BITTERN_DB_USER'],
     password: process.env['BITTERN_DB_PASSWORD'],
     timezone: 'Z',
     database,
+    ...tlsOf({ host, tlsCaFile: process.env['BITTERN_DB_TLS_CA'] ?? null }),
   });
   try {
     const [rows] = await connection.query<RowDataPacket[]>(sql);

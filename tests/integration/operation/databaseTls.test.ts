@@ -7,14 +7,15 @@ import { migrateUp } from '#db/migrateUp';
 import { parseConfig } from '#lib/config/config';
 import { connect } from '#ops/backup/server';
 import { startDump } from '#ops/backup/databaseTools';
-import { makeCertificate } from '../support/madeCertificate';
+import { makeCertificate } from '#ops/cluster/certificate';
 import { startServerOfOwn, type ServerOfOwn } from '../support/serverOfOwn';
 
 /** A database that takes nobody without TLS. */
 vi.setConfig({ testTimeout: 120_000, hookTimeout: 120_000 });
 const directory = mkdtempSync(join(tmpdir(), 'bittern-tls-'));
-const own = makeCertificate(directory, 'database', 'DNS:database.example,IP:127.0.0.1');
-const stranger = makeCertificate(directory, 'stranger', 'DNS:database.example,IP:127.0.0.1');
+const of = { names: 'DNS:database.example,IP:127.0.0.1', days: 2 };
+const own = makeCertificate(directory, 'database', of);
+const stranger = makeCertificate(directory, 'stranger', of);
 let running: ServerOfOwn;
 
 beforeAll(async () => {

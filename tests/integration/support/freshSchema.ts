@@ -1,9 +1,9 @@
 import { randomBytes } from 'node:crypto';
-import mysql from 'mysql2/promise';
 import { afterAll, beforeAll } from 'vitest';
 import { closeDb, db } from '#db/client';
 import { dropShards } from '#db/sharding/dropShards';
 import { shardTables } from '#db/sharding/shardTables';
+import { asOwner } from '#ops/bench/support/asOwner';
 
 /** Gives the test file a migrated database of its own, dropped when the file is done. */
 export function useFreshSchema(): void {
@@ -21,15 +21,4 @@ export function useFreshSchema(): void {
     await closeDb();
     await asOwner(`DROP DATABASE IF EXISTS ${name}`);
   });
-}
-
-async function asOwner(statement: string): Promise<void> {
-  const connection = await mysql.createConnection({
-    host: process.env['BITTERN_DB_HOST'] ?? '127.0.0.1',
-    port: Number(process.env['BITTERN_DB_PORT']),
-    user: process.env['BITTERN_DB_USER'],
-    password: process.env['BITTERN_DB_PASSWORD'],
-  });
-  await connection.query(statement);
-  await connection.end();
 }
