@@ -11,5 +11,6 @@ if [ "$(cat dist/.sources 2>/dev/null || true)" != "$sources_digest" ]; then
   echo 'Building …'
   rm -rf dist
   npx astro build --silent
+  find dist/client/_astro -type f \( -name '*.js' -o -name '*.mjs' -o -name '*.css' \) -exec gzip --keep --best --no-name {} +
   echo "$sources_digest" > dist/.sources
 fi

@@ -1,7 +1,7 @@
 import type { LayerSpecification } from 'maplibre-gl';
 import type { LayerName } from '../geography/feature';
 import type { Palette } from './palette';
-import { byClass, byZoom, metres, ofClass } from './scale';
+import { byClass, byZoom, DETAIL_ZOOM, metres, ofClass } from './scale';
 
 const from = (layer: LayerName) => ({ source: 'merrow', 'source-layer': layer }) as const;
 
@@ -12,6 +12,7 @@ export function structureLayers(ink: Palette): LayerSpecification[] {
       id: 'structures',
       type: 'fill',
       ...from('structures'),
+      minzoom: DETAIL_ZOOM,
       filter: ofClass('quay', 'pier', 'breakwater', 'platform', 'stockpile', 'bridge'),
       paint: {
         'fill-color': byClass(
@@ -32,6 +33,7 @@ export function structureLayers(ink: Palette): LayerSpecification[] {
       id: 'stacks',
       type: 'fill',
       ...from('structures'),
+      minzoom: DETAIL_ZOOM,
       filter: ofClass('container-stack', 'reefer-stack'),
       paint: {
         'fill-color': byClass({ 'container-stack': ink.stack }, ink.stack),
@@ -65,6 +67,7 @@ export function structureLayers(ink: Palette): LayerSpecification[] {
       id: 'sea-wall',
       type: 'line',
       ...from('structures'),
+      minzoom: DETAIL_ZOOM,
       filter: ofClass('sea-wall'),
       paint: { 'line-color': ink.bank, 'line-width': byZoom([12, 0.8], [14, 1.6], [16, 5.5], [18, 20]) },
     },
@@ -105,10 +108,10 @@ export function railLayers(ink: Palette): LayerSpecification[] {
       type: 'line',
       ...from('rail'),
       filter: ofClass('main'),
-      minzoom: 11,
+      minzoom: DETAIL_ZOOM,
       paint: {
         'line-color': ink.railTie,
-        'line-width': byZoom([11, 0.5], [15, 1.4], [18, 3]),
+        'line-width': byZoom([DETAIL_ZOOM, 0.6], [15, 1.4], [18, 3]),
         'line-dasharray': [5, 5],
       },
     },

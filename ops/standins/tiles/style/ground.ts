@@ -1,7 +1,7 @@
 import type { ExpressionSpecification, LayerSpecification } from 'maplibre-gl';
 import type { LayerName } from '../geography/feature';
 import type { Palette } from './palette';
-import { byClass, byZoom, metres, ofClass } from './scale';
+import { byClass, byZoom, DETAIL_ZOOM, metres, ofClass, SMOOTH_EDGES } from './scale';
 
 const from = (layer: LayerName) => ({ source: 'merrow', 'source-layer': layer }) as const;
 
@@ -18,6 +18,7 @@ export function seaLayers(ink: Palette): LayerSpecification[] {
       ...from('water'),
       filter: ofClass('sea'),
       paint: {
+        'fill-antialias': SMOOTH_EDGES,
         'fill-color': [
           'step',
           ['get', 'depth'],
@@ -31,7 +32,6 @@ export function seaLayers(ink: Palette): LayerSpecification[] {
           20,
           ink.sea20m,
         ],
-        'fill-antialias': true,
       },
     },
     {
@@ -39,7 +39,7 @@ export function seaLayers(ink: Palette): LayerSpecification[] {
       type: 'fill',
       ...from('wetland'),
       filter: ofClass('mud', 'sand'),
-      paint: { 'fill-color': byClass({ sand: ink.sand }, ink.mud) },
+      paint: { 'fill-antialias': SMOOTH_EDGES, 'fill-color': byClass({ sand: ink.sand }, ink.mud) },
     },
     {
       id: 'depth-lines',
@@ -93,7 +93,7 @@ export function landLayers(ink: Palette): LayerSpecification[] {
       type: 'fill',
       ...from('landuse'),
       filter: ofClass('land'),
-      paint: { 'fill-color': byClass({ land: ink.land }, ink.land) },
+      paint: { 'fill-antialias': SMOOTH_EDGES, 'fill-color': byClass({ land: ink.land }, ink.land) },
     },
     {
       id: 'country',
@@ -102,6 +102,7 @@ export function landLayers(ink: Palette): LayerSpecification[] {
       filter: ofClass('pasture', 'meadow', 'arable', 'heath'),
       minzoom: 8,
       paint: {
+        'fill-antialias': SMOOTH_EDGES,
         'fill-color': landuseColours(ink),
         'fill-opacity': byZoom([8, 0.55], [11.9, 0.6], [12, 0.6], [13.5, 1]),
       },
@@ -113,6 +114,7 @@ export function landLayers(ink: Palette): LayerSpecification[] {
       filter: ofClass('wood'),
       minzoom: 8,
       paint: {
+        'fill-antialias': SMOOTH_EDGES,
         'fill-color': byClass({ wood: ink.wood }, ink.wood),
         'fill-opacity': byZoom([8, 0.75], [12, 1]),
       },
@@ -146,12 +148,13 @@ export function landLayers(ink: Palette): LayerSpecification[] {
       type: 'fill',
       ...from('landuse'),
       filter: ofClass('residential', 'port', 'industrial', 'works', 'railway', 'quarry', 'holiday'),
-      paint: { 'fill-color': landuseColours(ink) },
+      paint: { 'fill-antialias': SMOOTH_EDGES, 'fill-color': landuseColours(ink) },
     },
     {
       id: 'grounds',
       type: 'fill',
       ...from('landuse'),
+      minzoom: DETAIL_ZOOM,
       filter: ofClass('school', 'park', 'churchyard', 'allotments', 'square', 'playground', 'scrub'),
       paint: { 'fill-color': landuseColours(ink) },
     },
@@ -178,6 +181,7 @@ export function landLayers(ink: Palette): LayerSpecification[] {
       id: 'quarry-benches',
       type: 'fill',
       ...from('landuse'),
+      minzoom: DETAIL_ZOOM,
       filter: ofClass('quarry-bench'),
       paint: {
         'fill-color': ['interpolate', ['linear'], ['get', 'step'], 0, ink.quarry, 4, ink.quarryFloor],
@@ -187,6 +191,7 @@ export function landLayers(ink: Palette): LayerSpecification[] {
       id: 'quarry-edges',
       type: 'line',
       ...from('contours'),
+      minzoom: DETAIL_ZOOM,
       filter: ofClass('quarry-edge'),
       paint: { 'line-color': ink.quarryEdge, 'line-width': byZoom([13, 0.5], [17, 1.4]) },
     },
@@ -204,6 +209,7 @@ export function landLayers(ink: Palette): LayerSpecification[] {
       ...from('wetland'),
       filter: ofClass('saltmarsh', 'reedbed', 'grazing-marsh'),
       paint: {
+        'fill-antialias': SMOOTH_EDGES,
         'fill-color': byClass({ saltmarsh: ink.saltmarsh, reedbed: ink.reedbed }, ink.grazingMarsh),
       },
     },
@@ -242,9 +248,7 @@ export function inlandWaterLayers(ink: Palette): LayerSpecification[] {
       type: 'fill',
       ...from('water'),
       filter: ['all', ['==', ['geometry-type'], 'Polygon'], ['!', ofClass('sea')]],
-      paint: {
-        'fill-color': byClass({ creek: ink.mud }, ink.inlandWater),
-      },
+      paint: { 'fill-antialias': SMOOTH_EDGES, 'fill-color': byClass({ creek: ink.mud }, ink.inlandWater) },
     },
     {
       id: 'rivers',

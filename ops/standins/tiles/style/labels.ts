@@ -1,7 +1,7 @@
 import type { ExpressionSpecification, LayerSpecification, SymbolLayerSpecification } from 'maplibre-gl';
 import type { LayerName } from '../geography/feature';
 import type { Palette } from './palette';
-import { byZoom, ofClass } from './scale';
+import { byZoom, DETAIL_ZOOM, ofClass } from './scale';
 
 /**
  * No glyphs are served: MapLibre draws letters with the page's own Noto Sans. The first name of a stack gives
@@ -127,6 +127,7 @@ export function labelLayers(ink: Palette): LayerSpecification[] {
     }),
     label({
       id: 'green-names',
+      minzoom: DETAIL_ZOOM,
       layer: 'places',
       filter: ofClass('green'),
       font: ITALIC,
@@ -160,6 +161,7 @@ export function labelLayers(ink: Palette): LayerSpecification[] {
     }),
     label({
       id: 'water-lines',
+      minzoom: DETAIL_ZOOM,
       layer: 'places',
       filter: ofClass('water-line'),
       size: byZoom([11, 11], [16, 17]),
@@ -222,6 +224,7 @@ function poiLayers(ink: Palette): LayerSpecification[] {
   return [
     {
       id: 'poi-marks',
+      minzoom: DETAIL_ZOOM,
       type: 'circle',
       source: 'merrow',
       'source-layer': 'poi',
@@ -234,6 +237,7 @@ function poiLayers(ink: Palette): LayerSpecification[] {
     },
     label({
       id: 'poi-names',
+      minzoom: DETAIL_ZOOM,
       layer: 'poi',
       filter: ['has', 'name'],
       font: REGULAR,

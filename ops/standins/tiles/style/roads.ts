@@ -1,7 +1,7 @@
 import type { LayerSpecification } from 'maplibre-gl';
 import type { RoadClass } from '../geography/roads';
 import type { Palette } from './palette';
-import { byZoom, ofClass } from './scale';
+import { byZoom, DETAIL_ZOOM, ofClass } from './scale';
 
 const roads = { source: 'merrow', 'source-layer': 'roads' } as const;
 
@@ -90,7 +90,7 @@ export function roadLayers(ink: Palette): LayerSpecification[] {
     type: 'line',
     ...roads,
     filter: ofClass(...classes),
-    minzoom,
+    minzoom: Math.max(minzoom, DETAIL_ZOOM),
     layout: round,
     paint: {
       'line-color': ink[casing],
@@ -106,7 +106,12 @@ export function roadLayers(ink: Palette): LayerSpecification[] {
     filter: ofClass(...classes),
     minzoom,
     layout: round,
-    paint: { 'line-color': ink[fill], 'line-width': byZoom(...widths) },
+    paint: {
+      // Without a casing the fill would hardly be seen.
+      'line-color':
+        minzoom < DETAIL_ZOOM ? ['step', ['zoom'], ink.farRoad, DETAIL_ZOOM, ink[fill]] : ink[fill],
+      'line-width': byZoom(...widths),
+    },
   }));
   return [...wayLayers(ink), ...casings, ...fills];
 }
@@ -142,6 +147,7 @@ function wayLayers(ink: Palette): LayerSpecification[] {
       type: 'line',
       ...roads,
       filter: ofClass('ferry'),
+      minzoom: DETAIL_ZOOM,
       paint: {
         'line-color': ink.ferry,
         'line-width': byZoom([12, 0.8], [16, 1.4]),

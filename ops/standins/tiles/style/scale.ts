@@ -28,3 +28,12 @@ export function byClass(values: Record<string, string>, otherwise: string): Expr
     otherwise,
   ] as unknown as ExpressionSpecification;
 }
+
+/**
+ * The zoom below which a whole network is seen, and the map is but its ground: without marks, dashes, casings and smoothed edges, each of
+ * which is one more program to compile, which takes a browser without a GPU some hundredth to tenths of a second.
+ */
+export const DETAIL_ZOOM = 11.5;
+
+/** Edges of areas are smoothed where details are drawn. */
+export const SMOOTH_EDGES: ExpressionSpecification = ['step', ['zoom'], false, DETAIL_ZOOM, true];
