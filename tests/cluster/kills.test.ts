@@ -1,6 +1,6 @@
 import { setTimeout as sleep } from 'node:timers/promises';
 import { afterAll, beforeAll, expect, test } from 'vitest';
-import { closeDb, db } from '#db/client';
+import { closeDb } from '#db/client';
 import { inTransaction } from '#db/queries/connection';
 import { insertStationToken } from '#db/queries/stationTokens';
 import { makeNetwork, makeStation } from '#ops/bench/support/station';
@@ -10,6 +10,7 @@ import { startDatabases, startPrograms } from '#ops/cluster/programs';
 import { useFreshSchema } from '../integration/support/freshSchema';
 import { testCluster } from './support/cluster';
 import { Posting } from './support/posting';
+import { expectAllThere } from './support/stored';
 
 const STATIONS = 8;
 const PROGRAMS = ['web1', 'web2', 'worker1', 'worker2'];
@@ -76,31 +77,5 @@ test('any one may die under load: nothing acknowledged is lost or doubled, and p
   console.log(`other answers: ${JSON.stringify([...posting.otherwise])}`);
   // Our own connections were cut off, too.
   await closeDb();
-  await untilComputed();
-  for (const [token, starts] of posting.acknowledged) {
-    const stationId = stationIds.get(token) ?? NaN;
-    const stored: number[] = await db()('interval_levels')
-      .where({ station_id: stationId })
-      .orderBy('starts_at')
-      .pluck('starts_at');
-    expect(new Set(stored).size, 'none is there twice').toBe(stored.length);
-    expect(
-      starts.filter((startSec) => !stored.includes(startSec)),
-      'acknowledged and lost',
-    ).toEqual([]);
-    const [sums] = (await db()('quarter_hours')
-      .where({ station_id: stationId })
-      .sum({ validSec: 'valid_sec' })) as [{ validSec: string }];
-    expect(Number(sums.validSec), 'what was stored was computed').toBe(60 * stored.length);
-  }
+  await expectAllThere(posting, stationIds);
 }, 600_000);
-
-/** Waits until no mark is left. */
-async function untilComputed(): Promise<void> {
-  for (let attempts = 0; attempts < 300; attempts += 1) {
-    const marked = await db()('dirty_marks').first('id');
-    if (marked === undefined) return;
-    await sleep(200);
-  }
-  throw new Error('Marks are left.');
-}

@@ -13,6 +13,7 @@ export class Posting {
   /** Answers other than “stored”, and how often each came. */
   readonly otherwise = new Map<string, number>();
   readonly #answeredMs: number[] = [];
+  readonly #answeredMsOf = new Map<string, number[]>();
   #isOver = false;
   readonly #senders: Promise<void>[];
 
@@ -30,8 +31,12 @@ export class Posting {
 
   /** The longest time without any answer “stored” since an instant of `performance.now()`. */
   longestGapMs(sinceMs: number): number {
-    const answered = [sinceMs, ...this.#answeredMs.filter((atMs) => atMs >= sinceMs), performance.now()];
-    return Math.max(...answered.slice(1).map((atMs, at) => atMs - (answered[at] ?? atMs)));
+    return longestGapMs(this.#answeredMs, sinceMs);
+  }
+
+  /** The same of each monitor by itself, and of these the longest. */
+  longestGapOfOneMs(sinceMs: number): number {
+    return Math.max(...[...this.#answeredMsOf.values()].map((answered) => longestGapMs(answered, sinceMs)));
   }
 
   /** Waits until so many more posts were acknowledged. @throws when it takes too long. */
@@ -48,12 +53,15 @@ export class Posting {
   async #post(token: string): Promise<void> {
     const acknowledged: number[] = [];
     this.acknowledged.set(token, acknowledged);
+    const answeredMs: number[] = [];
+    this.#answeredMsOf.set(token, answeredMs);
     for (let next = FIRST_SEC; !this.#isOver;) {
       const starts = Array.from({ length: A_POST }, (_, at) => next + 60 * at);
       const told = await this.#send(token, starts);
       if (told === null) {
         acknowledged.push(...starts);
         this.#answeredMs.push(performance.now());
+        answeredMs.push(performance.now());
         next += 60 * A_POST;
       } else this.otherwise.set(told, (this.otherwise.get(told) ?? 0) + 1);
       await sleep(PACE_MS);
@@ -83,4 +91,9 @@ export class Posting {
       return (error as Error).name;
     }
   }
+}
+
+function longestGapMs(answeredMs: readonly number[], sinceMs: number): number {
+  const marks = [sinceMs, ...answeredMs.filter((atMs) => atMs >= sinceMs), performance.now()];
+  return Math.max(...marks.slice(1).map((atMs, at) => atMs - (marks[at] ?? atMs)));
 }
