@@ -853,6 +853,11 @@ CREATE TABLE `limits` (
   KEY `limits_network` (`network_id`)
 ) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
 
+CREATE TABLE `link_gate` (
+  `id` tinyint(3) unsigned NOT NULL,
+  PRIMARY KEY (`id`)
+) ENGINE=InnoDB DEFAULT CHARSET=utf8mb4 COLLATE=utf8mb4_uca1400_ai_ci;
+
 CREATE TABLE `mast_assignments` (
   `id` int(10) unsigned NOT NULL AUTO_INCREMENT,
   `network_id` int(10) unsigned NOT NULL,

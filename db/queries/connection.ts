@@ -1,6 +1,7 @@
 import { AsyncLocalStorage } from 'node:async_hooks';
 import type { Knex } from 'knex';
 import { db } from '../client';
+import { enterGate } from '../sharding/linkGate';
 
 /** What every query runs on: the pool, or a transaction that the caller has opened. */
 export type Connection = Knex | Knex.Transaction;
@@ -69,7 +70,10 @@ export async function inTransaction<T>(
 ): Promise<T> {
   for (let attempt = 1; ; attempt += 1) {
     try {
-      return await db().transaction(work, settings);
+      return await db().transaction(async (transaction) => {
+        for (const statement of enterGate()) await transaction.raw(statement);
+        return work(transaction);
+      }, settings);
     } catch (error) {
       if (attempt === MOST_ATTEMPTS || !mayBeDoneAgain(error)) throw error;
       await pauseBefore(attempt);

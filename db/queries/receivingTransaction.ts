@@ -1,5 +1,6 @@
 import mysql from 'mysql2';
 import { receivingPool } from '../receiving';
+import { enterGate } from '../sharding/linkGate';
 import {
   insertionText,
   isDataServerGone,
@@ -44,9 +45,10 @@ async function attemptOnce<T>(
   const connection = await acquire();
   let decided: PromiseSettledResult<T>;
   try {
-    const rows = await run(connection, ['START TRANSACTION', ...reads]);
+    const begin = ['START TRANSACTION', ...enterGate()];
+    const rows = await run(connection, [...begin, ...reads]);
     const writes = new Collected();
-    [decided] = await Promise.allSettled([decide(rows.slice(1) as Cells[], writes)]);
+    [decided] = await Promise.allSettled([decide(rows.slice(begin.length) as Cells[], writes)]);
     await run(connection, decided.status === 'fulfilled' ? [...writes.statements, 'COMMIT'] : ['ROLLBACK']);
   } catch (error) {
     // Whatever state it is in, the server rolls back what a connection that ends has not committed.

@@ -3,6 +3,7 @@ import { db } from '#db/client';
 import { connectTo, dataServers, linkName, onEach, type DataServer } from '#db/sharding/dataServers';
 import { BUCKETS, bucketTable, KINDS } from '#db/sharding/kinds';
 import { linkServers } from '#db/sharding/linkServers';
+import { withGateClosed } from '#db/sharding/linkGate';
 import { dropOldLinks, makeLinks, useLinks, type ChangedKind } from '#db/sharding/relink';
 import { definitionOf } from '#db/sharding/shardTables';
 import { bucketTableText, serversOfLinkTable } from '#db/sharding/texts';
@@ -62,7 +63,8 @@ async function moveFrom(from: DataServer, bucket: number, to: DataServer): Promi
     const startedMs = performance.now();
     if (await isOutOfReach(source, bucket)) {
       await requireCopy(target, bucket, from, to);
-      await useLinks(db(), await prepareLinks(bucket, to));
+      const links = await prepareLinks(bucket, to);
+      await withGateClosed(() => useLinks(db(), links));
       const heldMs = performance.now() - startedMs;
       await dropLeft(source, bucket);
       return heldMs;
@@ -125,7 +127,7 @@ async function copyParts(
     if (await copyPart(source, target, bucket, part)) await partDone(source, bucket, part);
 }
 
-/** Holds the bucket, copies the rest, puts the old tables out of reach, leads the head to the new server, and drops them. */
+/** Lets nobody write, holds the bucket, copies the rest, puts the old tables out of reach, leads the head to the new server, and drops them. */
 async function switchOver(
   source: Connection,
   target: Connection,
@@ -134,6 +136,18 @@ async function switchOver(
 ): Promise<number> {
   const links = await prepareLinks(bucket, to);
   const startedMs = performance.now();
+  await withGateClosed(() => leadOver(source, target, bucket, links));
+  const heldMs = performance.now() - startedMs;
+  await dropLeft(source, bucket);
+  return heldMs;
+}
+
+async function leadOver(
+  source: Connection,
+  target: Connection,
+  bucket: number,
+  links: readonly ChangedKind[],
+): Promise<void> {
   await source.query(holdText(bucket));
   for (;;) {
     const parts = await nextParts(source, bucket, PARTS_AT_ONCE);
@@ -144,9 +158,6 @@ async function switchOver(
   await putOutOfReach(source, bucket);
   await source.query('UNLOCK TABLES');
   await useLinks(db(), links);
-  const heldMs = performance.now() - startedMs;
-  await dropLeft(source, bucket);
-  return heldMs;
 }
 
 async function dropLeft(source: Connection, bucket: number): Promise<void> {
