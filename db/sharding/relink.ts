@@ -3,6 +3,7 @@ import type { RowDataPacket } from 'mysql2/promise';
 import { config } from '#lib/config/index';
 import { dataServers, linkName, onEach } from './dataServers';
 import { bucketTable, KINDS, type Kind } from './kinds';
+import { withGateClosed } from './linkGate';
 import { linkTableText, serversOfLinkTable, tlsCaOfLinkTable } from './texts';
 
 /** Columns and keys of a definition, without what follows them. */
@@ -54,6 +55,6 @@ export async function relinkAltered(conn: Knex, links: ReadonlyMap<Kind, string>
   }
   if (changed.length === 0) return;
   await makeLinks(conn, changed);
-  await useLinks(conn, changed);
+  await withGateClosed(() => useLinks(conn, changed));
   await dropOldLinks(conn);
 }

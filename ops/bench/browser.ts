@@ -93,6 +93,9 @@ async function noteMoves(visitor: Visitor): Promise<void> {
       await page.waitForFunction(() => (window.seen?.completeMs ?? null) !== null, null, {
         timeout: VISIT_TIMEOUT_MS,
       });
+      // What is seen first is a picture; the strip itself follows.
+      await page.waitForSelector('[role="application"] canvas');
+      await page.waitForLoadState('networkidle');
       const cpuMs = await mainThread(page);
       for (const act of ['pan', 'zoom'] as const) {
         const beforeMs = await cpuMs();
