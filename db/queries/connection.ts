@@ -64,16 +64,30 @@ export const MOST_ATTEMPTS = 4;
  * Runs `work` in one transaction: all of it is durable when the promise resolves, none of it when it rejects.
  * A deadlock or a lock that is not granted in time starts the work again, so `work` must have no other effects.
  */
-export async function inTransaction<T>(
+export function inTransaction<T>(
   work: (transaction: Knex.Transaction) => Promise<T>,
   settings: Pick<Knex.TransactionConfig, 'isolationLevel'> = {},
 ): Promise<T> {
+  return repeatedly(() =>
+    db().transaction(async (transaction) => {
+      for (const statement of enterGate()) await transaction.raw(statement);
+      return work(transaction);
+    }, settings),
+  );
+}
+
+/**
+ * Runs `work`, which only reads, as of one moment; within `readingFrom` of what that reads from. What a conflict broke off begins again.
+ * On a cluster each data server's moment is that of its first answer.
+ */
+export function inSnapshot<T>(work: (snapshot: Knex.Transaction) => Promise<T>): Promise<T> {
+  return repeatedly(() => pool().transaction(work, { isolationLevel: 'repeatable read', readOnly: true }));
+}
+
+async function repeatedly<T>(once: () => Promise<T>): Promise<T> {
   for (let attempt = 1; ; attempt += 1) {
     try {
-      return await db().transaction(async (transaction) => {
-        for (const statement of enterGate()) await transaction.raw(statement);
-        return work(transaction);
-      }, settings);
+      return await once();
     } catch (error) {
       if (attempt === MOST_ATTEMPTS || !mayBeDoneAgain(error)) throw error;
       await pauseBefore(attempt);

@@ -1,8 +1,8 @@
 import { spawn } from 'node:child_process';
 import { once } from 'node:events';
 import mysql from 'mysql2/promise';
-import { closeDb } from '#db/client';
-import { pool } from '#db/queries/connection';
+import { closeDb, db } from '#db/client';
+import { inTransaction, pool } from '#db/queries/connection';
 import { listSettings } from '#db/queries/networks';
 import { connectTo, dataServers } from '#db/sharding/dataServers';
 import { dropShards } from '#db/sharding/dropShards';
@@ -19,7 +19,7 @@ import { invent, makeNetwork, makeStation } from './support/station';
 
 /**
  * What a cluster takes of packed intervals in a second, on 1, 2 and 4 data servers, through the head against straight into a bucket's table; and how long a
- * station's month of figures takes. All servers share this machine's processors: more of them tell what sharing out costs here, not what it gains.
+ * station's month of figures takes; and what small transactions cost that hold the gate of links (decision 0092) against ones that do not. All servers share this machine's processors: more of them tell what sharing out costs here, not what it gains.
  * `npx tsx ops/bench/cluster.ts` with the settings of a running cluster of four: `ops/cluster.sh up --data 4 --only-databases`.
  */
 const COUNTS = [1, 2, 4];
@@ -27,12 +27,16 @@ const SENDERS = 4;
 const STATEMENTS = 10;
 const ROWS = 600;
 const TURNS = 3;
+/** Transactions of one interval, of each sender. */
+const SMALL = 60;
 const HEADS = [
   'data servers',
   'intervals/s through the head',
   'intervals/s straight',
   'ratio',
   'month of figures ms',
+  'transactions/s with the gate',
+  'ratio',
 ];
 
 if (process.argv[2] === 'one') await one();
@@ -56,6 +60,7 @@ async function one(): Promise<void> {
       const networkId = await makeNetwork();
       const figuresMs = await monthOfFigures(networkId);
       const { ms, againstMs } = await ingest(networkId);
+      const gated = await gate(networkId);
       const perSec = (took: number[]) => (SENDERS * STATEMENTS * ROWS * 1000) / median(took);
       printTable(HEADS, [
         [
@@ -64,6 +69,8 @@ async function one(): Promise<void> {
           digits(perSec(againstMs)),
           digits(perSec(ms) / perSec(againstMs)),
           digits(figuresMs),
+          digits((SENDERS * SMALL * 1000) / median(gated.ms)),
+          digits(median(gated.againstMs) / median(gated.ms)),
         ],
       ]);
     } finally {
@@ -119,4 +126,28 @@ async function ingest(networkId: number) {
   } finally {
     for (const connection of [...connections, ...straight]) connection.destroy();
   }
+}
+
+/** Posts of one interval, as `inTransaction` stores them, against the same without the gate. */
+async function gate(networkId: number) {
+  const stations: StationRow[] = [];
+  for (let at = 0; at < SENDERS; at += 1) stations.push(await makeStation(networkId, `SMALL-${at}`, 60));
+  const bodies = await invent(FIRST_SEC, 2 * (TURNS + 1) * SMALL, 60);
+  const post = (first: number, store: (statement: string) => Promise<unknown>) =>
+    Promise.all(
+      stations.map(async ({ id }) => {
+        for (const body of bodies.slice(first, first + SMALL)) await store(insertStatement(id, [body]));
+      }),
+    );
+  return compare(
+    TURNS,
+    (turn) =>
+      post(2 * (turn + 1) * SMALL, (statement) =>
+        inTransaction((transaction) => transaction.raw(statement).then(() => undefined)),
+      ),
+    (turn) =>
+      post((2 * (turn + 1) + 1) * SMALL, (statement) =>
+        db().transaction((transaction) => transaction.raw(statement).then(() => undefined)),
+      ),
+  );
 }

@@ -16,10 +16,22 @@ export interface Layout {
   hasTls: boolean;
 }
 
-const PORTS = { head: 0, http: 9, node: 1, data: 11, group: 21, increments: 31, transfer: 41, web: 51 };
+const PORTS = {
+  head: 0,
+  reads: 8,
+  http: 9,
+  node: 1,
+  data: 11,
+  group: 21,
+  increments: 31,
+  transfer: 41,
+  web: 51,
+};
 
 /** The address of everybody's database: the proxy in front of the head's nodes. */
 export const headPort = ({ basePort }: Layout) => basePort + PORTS.head;
+/** The address of heavy reads: the proxy in front of the nodes that nobody writes to. */
+export const readPort = ({ basePort }: Layout) => basePort + PORTS.reads;
 /** The address of everybody's browser and monitor: the proxy in front of the webs. */
 export const httpPort = ({ basePort }: Layout) => basePort + PORTS.http;
 

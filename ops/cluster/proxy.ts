@@ -1,6 +1,6 @@
 import { mkdirSync, writeFileSync } from 'node:fs';
 import { join, resolve } from 'node:path';
-import { HEAD_NODES, headPort, httpPort, nodePorts, webPort, type Layout } from './layout';
+import { HEAD_NODES, headPort, httpPort, nodePorts, readPort, webPort, type Layout } from './layout';
 import { pidOf, startProcess } from './processes';
 
 export const WEBS = [1, 2] as const;
@@ -16,12 +16,16 @@ export function startProxy(layout: Layout): void {
 
 /**
  * The proxy's configuration. A node's check may take as long as its interval: a busy machine is not a dead one. All write to the same node while it lives, so that they meet each other's locks instead of conflicts at commit
- * (decision 0091); the next takes over, and what was connected to the first is cut off at once.
+ * (decision 0091); the next takes over, and what was connected to the first is cut off at once. Heavy reads go to the others.
  */
 function proxyText(layout: Layout): string {
   const nodes = HEAD_NODES.map(
     (number) =>
       `  server head${number} 127.0.0.1:${nodePorts(layout, number).sql} check inter 3s fastinter 2s downinter 2s fall 2 rise 2 on-marked-down shutdown-sessions${number === 1 ? '' : ' backup'}`,
+  );
+  const readNodes = HEAD_NODES.map(
+    (number) =>
+      `  server head${number} 127.0.0.1:${nodePorts(layout, number).sql} track head/head${number} on-marked-down shutdown-sessions${number === 1 ? ' backup' : ''}`,
   );
   const webs = WEBS.map(
     (number) => `  server web${number} 127.0.0.1:${webPort(layout, number)} check inter 1s fall 2 rise 1`,
@@ -45,6 +49,12 @@ listen head
   external-check path "/usr/bin:/bin"
   external-check command ${resolve('ops/cluster/checkNode.sh')}
 ${nodes.join('\n')}
+
+listen reads
+  mode tcp
+  bind 127.0.0.1:${readPort(layout)}
+  balance leastconn
+${readNodes.join('\n')}
 
 listen web
   mode http

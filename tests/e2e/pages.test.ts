@@ -8,128 +8,12 @@ import {
 } from '#ops/pictures/pagePatterns';
 import { faultsOf } from './support/axe';
 import { signIn, useBrowser } from './support/browser';
+import { ACCESS, APART, expectedStatus, ROLES, type Access } from './support/pageAccess';
 import { signedInFetch } from './support/signedInFetch';
 import { someSubjects } from './support/subjects';
 import { inTabs } from './support/tabs';
 
 const { open } = useBrowser();
-
-/**
- * Who may open which page; the page leads everybody else to the sign-in, says 403 to a member without the role, and is not
- * there (404) for anybody else. `members`: every role of the network.
- */
-type Access = 'public' | 'signed-in' | 'members' | 'operator' | 'liaison' | 'administrator';
-
-const ACCESS: Record<string, Access> = {
-  '/account': 'signed-in',
-  '/account/second-factor': 'signed-in',
-  '/admin': 'administrator',
-  '/admin/audit': 'administrator',
-  '/admin/networks': 'administrator',
-  '/admin/networks/[network]': 'administrator',
-  '/admin/networks/new': 'administrator',
-  '/admin/people': 'administrator',
-  '/admin/people/invite': 'administrator',
-  '/admin/people/new': 'administrator',
-  '/n/[network]/weather': 'members',
-  '/n/[network]/weather/[mast]': 'members',
-  '/n/[network]/weather/new': 'operator',
-  '/n/[network]/activities': 'members',
-  '/n/[network]/activities/[id]': 'members',
-  '/n/[network]/activities/compare': 'members',
-  '/n/[network]/activities/new': 'operator',
-  '/design': 'administrator',
-  '/n/[network]/alerts': 'members',
-  '/n/[network]/alerts/escalation': 'operator',
-  '/n/[network]/alerts/feed': 'members',
-  '/n/[network]/alerts/mails': 'operator',
-  '/n/[network]/alerts/webhooks': 'operator',
-  '/n/[network]/complaints': 'members',
-  '/n/[network]/complaints/[reference]': 'members',
-  '/n/[network]/complaints/[reference]/answer': 'liaison',
-  '/n/[network]/complaints/[reference]/person': 'liaison',
-  '/n/[network]/complaints/calendar': 'members',
-  '/n/[network]/complaints/form': 'liaison',
-  '/n/[network]/complaints/letters': 'liaison',
-  '/n/[network]/complaints/new': 'liaison',
-  '/n/[network]/complaints/numbers': 'members',
-  '/n/[network]/complaints/settings': 'liaison',
-  '/n/[network]/exceedances': 'members',
-  '/n/[network]/exceedances/[id]': 'members',
-  '/n/[network]/exclusions': 'members',
-  '/n/[network]/exclusions/new': 'operator',
-  '/n/[network]/health': 'members',
-  '/n/[network]/health/[code]': 'members',
-  '/n/[network]/health/settings': 'members',
-  '/n/[network]/imports': 'members',
-  '/n/[network]/imports/[id]': 'members',
-  '/n/[network]/imports/new': 'operator',
-  '/n/[network]/instruments': 'members',
-  '/n/[network]/instruments/[id]': 'members',
-  '/n/[network]/instruments/new': 'operator',
-  '/n/[network]/instruments/settings': 'members',
-  '/n/[network]/limits': 'members',
-  '/n/[network]/limits/[id]': 'members',
-  '/n/[network]/limits/[id]/edit': 'operator',
-  '/n/[network]/limits/groups': 'members',
-  '/n/[network]/limits/holidays': 'members',
-  '/n/[network]/limits/new': 'operator',
-  '/n/[network]/limits/trial': 'operator',
-  '/n/[network]/map': 'members',
-  '/n/[network]/plants': 'members',
-  '/n/[network]/plants/[id]': 'members',
-  '/n/[network]/plants/candidates': 'members',
-  '/n/[network]/plants/new': 'operator',
-  '/n/[network]/quarantine': 'members',
-  '/n/[network]/quarantine/[id]': 'members',
-  '/n/[network]/search': 'members',
-  '/n/[network]/settings': 'members',
-  '/n/[network]/spectra/search': 'members',
-  '/n/[network]/stations': 'members',
-  '/n/[network]/stations/[code]': 'members',
-  '/n/[network]/stations/[code]/clock': 'members',
-  '/n/[network]/stations/[code]/connect': 'operator',
-  '/n/[network]/stations/[code]/drift': 'members',
-  '/n/[network]/stations/[code]/edit': 'operator',
-  '/n/[network]/stations/[code]/figures': 'members',
-  '/n/[network]/stations/[code]/photos': 'members',
-  '/n/[network]/stations/new': 'operator',
-  '/n/[network]/summaries': 'members',
-  '/n/[network]/summaries/[month]': 'members',
-  '/n/[network]/summaries/[month]/review': 'operator',
-  '/n/[network]/summaries/compare': 'members',
-  '/n/[network]/summaries/settings': 'operator',
-  '/forgotten': 'public',
-  '/report/[network]': 'public',
-  '/report/[network]/[key]': 'public',
-  '/sign-in': 'public',
-  '/summaries': 'signed-in',
-  '/verify': 'public',
-};
-
-/** Not pages of their own: redirects, errors, what machines ask, what only a form reaches, and what only
- * an e-mail leads to (operator.test.ts and people.test.ts follow them), or a fitting password. */
-const APART = new Set([
-  '/',
-  '/404',
-  '/500',
-  '/account/new-password',
-  '/acknowledge/[token]',
-  '/admin/audit.csv',
-  '/admin/people/[id]',
-  '/healthz',
-  '/join/[token]',
-  '/metrics',
-  '/n/[network]',
-  '/n/[network]/summaries/mark',
-  '/n/[network]/summaries/preview.pdf',
-  '/readyz',
-  '/refused',
-  '/reset/[token]',
-  '/sign-in/code',
-  '/sign-out',
-  '/theme',
-]);
 
 /** Everybody's own: what to be sent, a calendar to subscribe to. */
 const OWN_FORMS = new Set([
@@ -144,7 +28,6 @@ const LOOKS = [
   { theme: 'light', width: 1280 },
 ] as const;
 const FORM = 'application/x-www-form-urlencoded';
-const ROLES = ['operator', 'liaison', 'regulator', 'admin'] as const;
 let subjects: Subjects;
 
 beforeAll(async () => {
@@ -155,12 +38,6 @@ function addressOf(pattern: string, network = 'merrow'): string {
   const named = addressWith(pattern, network, subjects);
   if (named === null) throw new Error(`What stands in ${pattern}?`);
   return named;
-}
-
-function expectedStatus(access: Access, role: (typeof ROLES)[number]): number {
-  if (access === 'administrator') return role === 'admin' ? 200 : 404;
-  const isOpen = ['public', 'signed-in', 'members', role].includes(access) || role === 'admin';
-  return isOpen ? 200 : 403;
 }
 
 describe('who may open which page', () => {

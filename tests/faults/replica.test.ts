@@ -7,10 +7,13 @@ import { afterAll, beforeAll, expect, test } from 'vitest';
 import { closeDb, db } from '#db/client';
 import { migrateUp } from '#db/migrateUp';
 import { SharingWorker } from '#ingest/sharing/sharingWorker';
+import { limitTrialSchema } from '#lib/contracts/limitTrial';
+import { runTrial } from '#lib/services/limitTrial/runTrial';
 import { readHeavy } from '#lib/services/reading/readHeavy';
+import { makeNetwork, makeStation } from '#ops/bench/support/station';
 import { freePorts } from '#ops/bench/support/soak/ports';
 import { startDatabase, type DatabasePlace, type DatabaseServer } from '#ops/database/server';
-import { pool } from '#db/queries/connection';
+import { inSnapshot, pool } from '#db/queries/connection';
 
 /** Heavy reads at a real replica: while it follows, while it lags behind, and while it is away. */
 const directory = mkdtempSync(join(tmpdir(), 'bittern-replica-'));
@@ -115,6 +118,35 @@ test('while it follows, heavy reads are the replica’s and say of when they are
     return mine?.id;
   });
   expect(inside.answer, 'transactions stay at the database').toBe(1);
+});
+
+test('a file of one moment is read there, too', async () => {
+  await until(2);
+  const { answer } = await readHeavy(() =>
+    inSnapshot(async (snapshot) => {
+      const [[row]] = (await snapshot.raw('SELECT @@server_id AS id')) as [{ id: number }[]];
+      return row?.id;
+    }),
+  );
+  expect(answer).toBe(2);
+});
+
+test.each([
+  ['within the process', '2026-01-15'],
+  ['in a thread of its own', '2026-03-15'],
+])('a trial of a limit %s says of when its data are', async (_, to) => {
+  const networkId = await makeNetwork(`trial-${to}`);
+  await makeStation(networkId, 'TR-1', 60);
+  const limit = { name: 'Night', metric: 'LAeq', threshold: 50, window: 'length', windowMinutes: 10 };
+  const query = limitTrialSchema.parse({ limit, from: '2026-01-01', to });
+  const task = { networkId, query, nowSec: Math.floor(Date.now() / 1000) };
+  // What it is about has to have arrived.
+  await worker.refresh();
+  await sleep(2_500);
+  const outcome = await runTrial(task);
+  const answer = outcome.kind === 'done' ? outcome.value : expect.fail(JSON.stringify(outcome));
+  const dataAsOf = new Date(answer.dataAsOf ?? expect.fail('It was read from the database itself.'));
+  expect(Math.abs(Date.now() - Number(dataAsOf))).toBeLessThan(MOST_AGE_SEC * 1000);
 });
 
 test('what it would write is read and written at the database itself', async () => {

@@ -48,6 +48,12 @@ export const reasonText = z
   .max(500, 'must have at most 500 characters');
 
 /** RFC 9457 problem details with Bittern's stable `code`. */
+/** Of when data of a long read are. */
+export const dataAsOfSchema = z
+  .string()
+  .nullable()
+  .describe('Read from a replica that has everything up to then; null: the data are of now');
+
 export const problemSchema = z.object({
   type: z.string(),
   status: z.number().int(),

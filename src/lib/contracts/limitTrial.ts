@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import { localDate } from './common';
+import { dataAsOfSchema, localDate } from './common';
 import { LIMIT_UNITS } from './limitMetrics';
 import { newLimitSchema } from './limits';
 import { registerRoute } from './registry';
@@ -77,6 +77,7 @@ const windowSchema = z.object({
 const limitTrialAnswerSchema = z.object({
   from: z.string(),
   to: z.string(),
+  dataAsOf: dataAsOfSchema,
   trial: trialSchema,
   windows: z
     .array(windowSchema.extend({ isCaughtToday: z.boolean().nullable() }))

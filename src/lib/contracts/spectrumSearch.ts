@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { dataAsOfSchema } from './common';
 
 /** Longest period whose mean spectrum is looked for, in days. */
 export const MOST_ASKED_DAYS = 31;
@@ -60,6 +61,7 @@ export const spectrumSearchSchema = z.object({
   }),
   since: z.string().describe('Beginning of what was searched'),
   until: z.string().describe('Its end, exclusive'),
+  dataAsOf: dataAsOfSchema,
   state: z
     .enum(['searched', 'octave-bands', 'too-few-bands', 'no-data'])
     .describe('Only spectra of at least 12 thirds can be looked for'),

@@ -25,9 +25,15 @@ export function noContent(headers: Record<string, string> = {}): Response {
 }
 
 /** A file to download. `fileName` holds letters, digits, dot, hyphen and underscore only. */
-export function download(body: BodyInit, contentType: string, fileName: string): Response {
+export function download(
+  body: BodyInit,
+  contentType: string,
+  fileName: string,
+  headers: Record<string, string> = {},
+): Response {
   return new Response(body, {
     headers: {
+      ...headers,
       'Content-Type': contentType,
       'Content-Disposition': `attachment; filename="${fileName.replace(/[^\w.-]/g, '_')}"`,
       'Cache-Control': 'no-store',
@@ -48,6 +54,6 @@ export function pdfToRead(bytes: Uint8Array, fileName: string): Response {
 }
 
 /** CSV text (RFC 4180, UTF-8) to download. */
-export function csv(text: string, fileName: string): Response {
-  return download(text, 'text/csv; charset=utf-8; header=present', fileName);
+export function csv(text: string, fileName: string, headers: Record<string, string> = {}): Response {
+  return download(text, 'text/csv; charset=utf-8; header=present', fileName, headers);
 }

@@ -1,5 +1,5 @@
 import { countBandSets } from '#db/queries/bandSets';
-import { inTransaction, type Connection } from '#db/queries/connection';
+import { inSnapshot, type Connection } from '#db/queries/connection';
 import { selectIntervals, type StoredInterval } from '#db/queries/intervals';
 import type { StationRow } from '#db/queries/stations';
 import { flagNames } from '#lib/acoustics/validity';
@@ -33,7 +33,7 @@ interface Period {
  * @throws {SealedError} for a period that reaches back to where single intervals are no longer kept: a file would not tell what it lacks.
  */
 export async function intervalsCsv(station: StationRow, period: Period): Promise<string> {
-  return inTransaction(async (snapshot) => {
+  return inSnapshot(async (snapshot) => {
     requireKept(period.fromSec, await keptFromSecOf(station.id, snapshot));
     const columns = await columnsOf(station, period, snapshot);
     const lines = [[...CSV_LEADING, ...columns.nominalHz, ...CSV_TRAILING].join(',')];

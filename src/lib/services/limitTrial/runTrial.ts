@@ -2,7 +2,7 @@ import { JobThread } from '../threads/jobThread';
 import { type JobListener } from '../threads/messages';
 import { isLong } from './size';
 import { type TrialOutcome, type TrialTask } from './trialTask';
-import { tryLimit } from './tryLimit';
+import { tryHeavily } from './tryHeavily';
 
 /** Long trials of this process follow each other in one thread. */
 const trials = new JobThread<TrialTask, TrialOutcome>('src/lib/services/limitTrial/trialThread.ts');
@@ -11,5 +11,5 @@ const trials = new JobThread<TrialTask, TrialOutcome>('src/lib/services/limitTri
 export function runTrial(task: TrialTask, listener: JobListener = {}): Promise<TrialOutcome> {
   if (isLong(task.query)) return trials.run(task, listener);
   const { onProgress = () => undefined, signal } = listener;
-  return tryLimit(task, { onProgress, isCancelled: () => signal?.aborted ?? false });
+  return tryHeavily(task, { onProgress, isCancelled: () => signal?.aborted ?? false });
 }

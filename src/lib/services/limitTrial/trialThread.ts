@@ -1,5 +1,5 @@
 import { serveJobs } from '../threads/serveJobs';
 import { type TrialOutcome, type TrialTask } from './trialTask';
-import { tryLimit } from './tryLimit';
+import { tryHeavily } from './tryHeavily';
 
-serveJobs<TrialTask, TrialOutcome>((task, watch) => tryLimit(task, watch));
+serveJobs<TrialTask, TrialOutcome>(tryHeavily);

@@ -67,6 +67,7 @@ export async function tryLimit(
   return done({
     from: formatInstantUtc(period.fromSec),
     to: formatInstantUtc(period.toSec),
+    dataAsOf: null,
     trial: own.summary,
     windows: ownWindows(own, other, codes),
     ...besides(own, other, codes),

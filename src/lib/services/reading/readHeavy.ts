@@ -1,4 +1,4 @@
-import { isConnectionLost } from '#db/queries/connection';
+import { isConnectionLost, isLockConflict } from '#db/queries/connection';
 import { isDatabaseAway } from '#db/queries/databaseAway';
 import { onReplica, replicaState, type ReplicaState } from '#db/queries/replica';
 import { config } from '#lib/config/index';
@@ -25,7 +25,7 @@ export async function readHeavy<T>(work: () => Promise<T>): Promise<HeavyRead<T>
     try {
       return { answer: await onReplica(work), dataAsOf: new Date(state.asOfSec * 1000) };
     } catch (error) {
-      if (!isDatabaseAway(error) && !isConnectionLost(error)) throw error;
+      if (!isDatabaseAway(error) && !isConnectionLost(error) && !isLockConflict(error)) throw error;
       log().warn({ err: error }, 'the replica failed; read from the database itself');
       asked = { at: performance.now(), state: Promise.resolve(null) };
     }

@@ -52,7 +52,8 @@ export async function searchSpectrum(
   const state = stateOf(station, statistics, levelsDb);
   const thirds = stations.filter(({ bandFraction }) => bandFraction === 3);
   const task = taskOf(search, { thirds, levelsDb, laeqDb: statistics.LAeq, timeline });
-  const result = state === 'searched' ? await searches.run(task, listener) : EMPTY_RESULT;
+  const { answer: result, dataAsOf } =
+    state === 'searched' ? await searches.run(task, listener) : { answer: EMPTY_RESULT, dataAsOf: null };
   return {
     asked: {
       station: station.code,
@@ -68,6 +69,7 @@ export async function searchSpectrum(
     },
     since: formatInstantUtc(searched.fromSec),
     until: formatInstantUtc(searched.toSec),
+    dataAsOf: dataAsOf && formatInstantUtc(dataAsOf.getTime() / 1000),
     state,
     octaveStations: stations.filter(({ bandFraction }) => bandFraction === 1).map(({ name }) => name),
     ...searchAnswer(result, {

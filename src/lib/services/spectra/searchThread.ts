@@ -1,5 +1,8 @@
+import { readHeavy, type HeavyRead } from '../reading/readHeavy';
 import { serveJobs } from '../threads/serveJobs';
 import { SearchRun } from './runSearch';
 import { type SearchResult, type SearchTask } from './searchTask';
 
-serveJobs<SearchTask, SearchResult>((task, watch) => new SearchRun(task, watch).result());
+serveJobs<SearchTask, HeavyRead<SearchResult>>((task, watch) =>
+  readHeavy(() => new SearchRun(task, watch).result()),
+);
