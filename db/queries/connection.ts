@@ -81,7 +81,8 @@ export function inTransaction<T>(
  * On a cluster each data server's moment is that of its first answer.
  */
 export function inSnapshot<T>(work: (snapshot: Knex.Transaction) => Promise<T>): Promise<T> {
-  return repeatedly(() => pool().transaction(work, { isolationLevel: 'repeatable read', readOnly: true }));
+  // “Repeatable read” is the server's default; Knex cannot ask for both in MariaDB's words.
+  return repeatedly(() => pool().transaction(work, { readOnly: true }));
 }
 
 async function repeatedly<T>(once: () => Promise<T>): Promise<T> {
