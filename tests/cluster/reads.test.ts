@@ -14,8 +14,13 @@ import { useFreshSchema } from '../integration/support/freshSchema';
 import { testCluster } from './support/cluster';
 
 /** Heavy reads on a cluster: at nodes of the head that nobody writes to. */
-useFreshSchema();
 const layout = testCluster();
+// Before the settings are read for the first time.
+Object.assign(process.env, {
+  BITTERN_DB_READ_HOST: '127.0.0.1',
+  BITTERN_DB_READ_PORT: String(readPort(layout)),
+});
+useFreshSchema();
 const worker = new SharingWorker();
 const FIRST_SEC = Date.parse('2025-06-01T00:00:00Z') / 1000;
 const INTERVALS = 60;
@@ -23,10 +28,6 @@ const [first, second, third] = [1, 2, 3].map((number) => nodePorts(layout, numbe
 let networkId: number;
 
 beforeAll(async () => {
-  Object.assign(process.env, {
-    BITTERN_DB_READ_HOST: '127.0.0.1',
-    BITTERN_DB_READ_PORT: String(readPort(layout)),
-  });
   networkId = await makeNetwork();
   await worker.join();
 });
@@ -66,5 +67,6 @@ test('a node that heavy reads come from dies: the next answers', async () => {
     expect([first, third]).toContain((await readHeavy(portRead)).answer);
     await sleep(500);
   }
+  await expect.poll(async () => (await readHeavy(portRead)).answer, { timeout: 30_000 }).toBe(third);
   await startDatabases(layout);
 });
