@@ -5,7 +5,7 @@ import mysql from 'mysql2/promise';
 import { freePorts } from '#ops/bench/support/soak/ports';
 import { startDatabase, type DatabasePlace, type DatabaseServer } from '#ops/database/server';
 
-export const OWN_DATABASE = 'faults';
+const OWN_DATABASE = 'faults';
 
 /** A MariaDB of one test file's own, which it may stop, fill and lock. */
 export class OwnServer {
