@@ -25,3 +25,17 @@ test('a thing made has no before; an act without details has no lines', () => {
   expect(detailLines({ before: { cause: 'people' }, after: null })).toEqual(['cause: people → nothing']);
   expect(detailLines({})).toEqual([]);
 });
+
+test('instants are told in UTC, lengths as they are', () => {
+  const detail = {
+    kind: 'hum',
+    from: 1_796_235_000,
+    after: { intervalSec: 60, effectiveFromSec: 1_796_236_800 },
+  };
+  expect(detailLines(detail)).toEqual([
+    'intervalSec: 60',
+    'effectiveFromSec: 2026-12-02T18:40:00Z',
+    'kind: hum',
+    'from: 2026-12-02T18:10:00Z',
+  ]);
+});

@@ -1,8 +1,13 @@
+import { formatInstantUtc } from '#lib/contracts/common';
+
 const MOST_DEPTH = 4;
+/** Members that hold an instant as epoch seconds; durations of such names are shorter than any of these. */
+const INSTANT_NAME = /(^|\.)(from|to)$|(At|Sec|From|To|Until)$/;
+const FIRST_INSTANT_SEC = 1e9;
 
 /**
  * What an act changed, a line each: `name: Quay → Quay Head` where there is a before and an after, `sessions: 2` else.
- * Members that stayed the same are left out.
+ * Members that stayed the same are left out. Instants are told in UTC.
  */
 export function detailLines({ before, after, ...others }: Record<string, unknown>): string[] {
   // Null: there was none, which has no members.
@@ -22,11 +27,15 @@ function lineOf(path: string, was: string | undefined, is: string | undefined): 
 function flat(value: unknown, path = '', depth = 0): Map<string, string> {
   if (value === undefined) return new Map();
   const isBranch = typeof value === 'object' && value !== null && !Array.isArray(value) && depth < MOST_DEPTH;
-  if (!isBranch) return new Map([[path, leafText(value)]]);
+  if (!isBranch) return new Map([[path, isInstant(path, value) ? formatInstantUtc(value) : leafText(value)]]);
   const entries = Object.entries(value).flatMap(([name, member]) => [
     ...flat(member, path === '' ? name : `${path}.${name}`, depth + 1),
   ]);
   return new Map(entries);
+}
+
+function isInstant(path: string, value: unknown): value is number {
+  return typeof value === 'number' && value >= FIRST_INSTANT_SEC && INSTANT_NAME.test(path);
 }
 
 function leafText(value: unknown): string {
