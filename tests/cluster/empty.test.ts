@@ -1,52 +1,34 @@
 import type { RowDataPacket } from 'mysql2/promise';
 import { afterAll, beforeAll, expect, test } from 'vitest';
 import { closeDb } from '#db/client';
-import { inTransaction } from '#db/queries/connection';
-import { insertStationToken } from '#db/queries/stationTokens';
 import { dataServers, onEach, type DataServer } from '#db/sharding/dataServers';
 import { bucketOf, BUCKETS, KINDS } from '#db/sharding/kinds';
-import { makeNetwork, makeStation } from '#ops/bench/support/station';
 import { httpPort } from '#ops/cluster/layout';
 import { emptyServer, placesOfBuckets } from '#ops/cluster/moveBucket';
-import { stopProcess } from '#ops/cluster/processes';
-import { startPrograms } from '#ops/cluster/programs';
-import { config } from '#lib/config/index';
 import { useFreshSchema } from '../integration/support/freshSchema';
+import { makePostingStations, RECEIVER, startBittern, stopBittern } from './support/bittern';
 import { testCluster } from './support/cluster';
 import { Posting } from './support/posting';
 import { expectAllThere } from './support/stored';
 
 const isWhole = process.env['CLUSTER'] === 'whole';
 const STATIONS = 6;
-const PROGRAMS = ['web1', 'web2', 'worker1', 'worker2'];
 const WITHIN_MS = 60_000;
 /** Of any monitor: one whose bucket is held waits, or is asked to come again. */
 const LONGEST_GAP_MS = 15_000;
 
 useFreshSchema();
 const layout = testCluster();
-const stationIds = new Map<string, number>();
+let stationIds: Map<string, number>;
 
 beforeAll(async () => {
   if (!isWhole) return;
-  const networkId = await makeNetwork();
-  for (let at = 0; at < STATIONS; at += 1) {
-    const { id } = await makeStation(networkId, `EMPTY-${at}`, 60);
-    stationIds.set(await inTransaction((transaction) => insertStationToken(id, null, transaction)), id);
-  }
-  await startPrograms(
-    layout,
-    {
-      BITTERN_DB_NAME: config().database.name,
-      BITTERN_PERSONAL_DATA_KEY: process.env['BITTERN_PERSONAL_DATA_KEY'] ?? '',
-      BITTERN_LOG_LEVEL: 'warn',
-    },
-    'ops/bench/support/soak/receiver.ts',
-  );
+  stationIds = await makePostingStations('EMPTY', STATIONS);
+  await startBittern(RECEIVER);
 }, 120_000);
 
 afterAll(async () => {
-  for (const name of PROGRAMS) await stopProcess(layout, name);
+  await stopBittern();
   await closeDb();
 }, 60_000);
 

@@ -1,19 +1,16 @@
 import { setTimeout as sleep } from 'node:timers/promises';
 import { afterAll, beforeAll, expect, test } from 'vitest';
 import { closeDb } from '#db/client';
-import { inTransaction } from '#db/queries/connection';
-import { insertStationToken } from '#db/queries/stationTokens';
-import { makeNetwork, makeStation } from '#ops/bench/support/station';
 import { httpPort } from '#ops/cluster/layout';
-import { killProcess, stopProcess } from '#ops/cluster/processes';
-import { startDatabases, startPrograms } from '#ops/cluster/programs';
+import { killProcess } from '#ops/cluster/processes';
+import { startDatabases } from '#ops/cluster/programs';
 import { useFreshSchema } from '../integration/support/freshSchema';
+import { makePostingStations, RECEIVER, startBittern, stopBittern } from './support/bittern';
 import { testCluster } from './support/cluster';
 import { Posting } from './support/posting';
 import { expectAllThere } from './support/stored';
 
 const STATIONS = 8;
-const PROGRAMS = ['web1', 'web2', 'worker1', 'worker2'];
 /** `CLUSTER=whole` kills each of each kind, and the others after it is back. */
 const VICTIMS =
   process.env['CLUSTER'] === 'whole'
@@ -21,35 +18,18 @@ const VICTIMS =
     : ['head1', 'data1', 'web1', 'worker1'];
 const DOWN_MS = 2_000;
 const RESUMED_WITHIN_MS = 60_000;
-const RECEIVER = 'ops/bench/support/soak/receiver.ts';
 
 useFreshSchema();
 const layout = testCluster();
-const stationIds = new Map<string, number>();
-
-async function startBittern(): Promise<void> {
-  await startPrograms(
-    layout,
-    {
-      BITTERN_DB_NAME: process.env['BITTERN_DB_NAME'] ?? '',
-      BITTERN_PERSONAL_DATA_KEY: process.env['BITTERN_PERSONAL_DATA_KEY'] ?? '',
-      BITTERN_LOG_LEVEL: 'warn',
-    },
-    RECEIVER,
-  );
-}
+let stationIds: Map<string, number>;
 
 beforeAll(async () => {
-  const networkId = await makeNetwork();
-  for (let at = 0; at < STATIONS; at += 1) {
-    const { id } = await makeStation(networkId, `KILL-${at}`, 60);
-    stationIds.set(await inTransaction((transaction) => insertStationToken(id, null, transaction)), id);
-  }
-  await startBittern();
+  stationIds = await makePostingStations('KILL', STATIONS);
+  await startBittern(RECEIVER);
 }, 120_000);
 
 afterAll(async () => {
-  for (const name of PROGRAMS) await stopProcess(layout, name);
+  await stopBittern();
   await closeDb();
 }, 60_000);
 
@@ -67,7 +47,7 @@ test('any one may die under load: nothing acknowledged is lost or doubled, and p
       await posting.untilMore(3 * STATIONS, RESUMED_WITHIN_MS);
       told.push(`${victim} ${(posting.longestGapMs(killedMs) / 1000).toFixed(1)} s`);
       await startDatabases(layout);
-      await startBittern();
+      await startBittern(RECEIVER);
       await posting.untilMore(STATIONS, RESUMED_WITHIN_MS);
     }
   } finally {

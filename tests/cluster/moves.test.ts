@@ -1,46 +1,29 @@
 import { afterAll, beforeAll, expect, test } from 'vitest';
 import { closeDb, db } from '#db/client';
-import { inTransaction } from '#db/queries/connection';
-import { insertStationToken } from '#db/queries/stationTokens';
 import { onEach, type DataServer } from '#db/sharding/dataServers';
 import { bucketOf, bucketTable, KINDS } from '#db/sharding/kinds';
-import { makeNetwork, makeStation } from '#ops/bench/support/station';
 import { httpPort } from '#ops/cluster/layout';
 import { moveBucket, placesOfBuckets } from '#ops/cluster/moveBucket';
-import { stopProcess } from '#ops/cluster/processes';
-import { startPrograms } from '#ops/cluster/programs';
 import { config } from '#lib/config/index';
 import { useFreshSchema } from '../integration/support/freshSchema';
+import { makePostingStations, RECEIVER, startBittern, stopBittern } from './support/bittern';
 import { testCluster } from './support/cluster';
 import { Posting } from './support/posting';
 
 const STATIONS = 3;
-const PROGRAMS = ['web1', 'web2', 'worker1', 'worker2'];
 const MOST_HELD_MS = 15_000;
 
 useFreshSchema();
 const layout = testCluster();
-const stationIds = new Map<string, number>();
+let stationIds: Map<string, number>;
 
 beforeAll(async () => {
-  const networkId = await makeNetwork();
-  for (let at = 0; at < STATIONS; at += 1) {
-    const { id } = await makeStation(networkId, `MOVE-${at}`, 60);
-    stationIds.set(await inTransaction((transaction) => insertStationToken(id, null, transaction)), id);
-  }
-  await startPrograms(
-    layout,
-    {
-      BITTERN_DB_NAME: config().database.name,
-      BITTERN_PERSONAL_DATA_KEY: process.env['BITTERN_PERSONAL_DATA_KEY'] ?? '',
-      BITTERN_LOG_LEVEL: 'warn',
-    },
-    'ops/bench/support/soak/receiver.ts',
-  );
+  stationIds = await makePostingStations('MOVE', STATIONS);
+  await startBittern(RECEIVER);
 }, 120_000);
 
 afterAll(async () => {
-  for (const name of PROGRAMS) await stopProcess(layout, name);
+  await stopBittern();
   await closeDb();
 }, 60_000);
 

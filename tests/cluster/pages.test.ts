@@ -5,8 +5,7 @@ import { afterAll, beforeAll, expect, inject, test } from 'vitest';
 import { closeDb } from '#db/client';
 import { config } from '#lib/config/index';
 import { httpPort, webPort } from '#ops/cluster/layout';
-import { killProcess, stopProcess } from '#ops/cluster/processes';
-import { startPrograms } from '#ops/cluster/programs';
+import { killProcess } from '#ops/cluster/processes';
 import { seedPlants } from '#ops/demo/plants';
 import { seedDemo } from '#ops/demo/seed';
 import { addressOf, type Subjects } from '#ops/pictures/pagePatterns';
@@ -18,11 +17,11 @@ import { minutes, post } from '../e2e/support/posts';
 import { signedInFetch } from '../e2e/support/signedInFetch';
 import { someSubjects } from '../e2e/support/subjects';
 import { useFreshSchema } from '../integration/support/freshSchema';
+import { startBittern, stopBittern } from './support/bittern';
 import { testCluster } from './support/cluster';
 
 const isWhole = process.env['CLUSTER'] === 'whole';
 const DEMO_DAYS = 9;
-const PROGRAMS = ['web1', 'web2', 'worker1', 'worker2'];
 const MARKED_BACK_MS = 3_000;
 const SLOW = { timeout: 60_000 };
 
@@ -32,12 +31,8 @@ const layout = testCluster();
 let subjects: Subjects;
 
 /** Starts what does not run of webs and workers, and waits until each web answers and the proxy knows. */
-async function startBittern(): Promise<void> {
-  await startPrograms(layout, {
-    BITTERN_DB_NAME: config().database.name,
-    BITTERN_PERSONAL_DATA_KEY: process.env['BITTERN_PERSONAL_DATA_KEY'] ?? '',
-    BITTERN_LOG_LEVEL: 'warn',
-  });
+async function startBoth(): Promise<void> {
+  await startBittern();
   for (const number of [1, 2])
     await untilAnswers(`http://127.0.0.1:${webPort(layout, number)}/healthz`, 60_000);
   await sleep(MARKED_BACK_MS);
@@ -49,12 +44,12 @@ beforeAll(async () => {
   const demo = { days: DEMO_DAYS, password: inject('demoPassword') };
   await seedDemo({ ...config(), demo: { ...config().demo, ...demo } }, () => undefined);
   await seedPlants(DEMO_DAYS);
-  await startBittern();
+  await startBoth();
   subjects = await someSubjects();
 }, 900_000);
 
 afterAll(async () => {
-  for (const name of PROGRAMS) await stopProcess(layout, name);
+  await stopBittern();
   await closeDb();
 }, 60_000);
 
@@ -118,13 +113,13 @@ test.skipIf(!isWhole)(
     await rename(operator.page, 'Silo Lane, east');
     await expectLive(watcher.page, monitor, 82.5);
 
-    await startBittern();
+    await startBoth();
     expect(killProcess(layout, 'web2'), 'web2 ran').toBe(true);
     for (const desk of [operator, liaison, regulator]) await openAll(desk, READ);
     await openAll(liaison, ['/n/merrow/stations']);
     await liaison.page.getByText('Silo Lane, east').first().waitFor(SLOW);
     await expectLive(watcher.page, monitor, 83.6);
-    await startBittern();
+    await startBoth();
 
     for (const { context, wrong } of [operator, liaison, regulator, watcher]) {
       expect(wrong).toEqual([]);
