@@ -19,7 +19,8 @@ import { invent, makeNetwork, makeStation } from './support/station';
 
 /**
  * What a cluster takes of packed intervals in a second, on 1, 2 and 4 data servers, through the head against straight into a bucket's table; and how long a
- * station's month of figures takes; and what small transactions cost that hold the gate of links (decision 0092) against ones that do not. All servers share this machine's processors: more of them tell what sharing out costs here, not what it gains.
+ * station's month of figures takes; and what small transactions cost that hold the gate of links (decision 0092) against ones that do not. All servers share
+ * this machine's processors: more of them tell what sharing out costs here, not what it gains.
  * `npx tsx ops/bench/cluster.ts` with the settings of a running cluster of four: `ops/cluster.sh up --data 4 --only-databases`.
  */
 const COUNTS = [1, 2, 4];

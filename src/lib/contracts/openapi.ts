@@ -10,7 +10,7 @@ export function openApiDocument(origin: string) {
       version: '1',
       description:
         'Levels in dB re 20 µPa as numbers, times RFC 3339, frequencies by nominal Hz, periods half-open (from <= t < to). ' +
-        'Where no interval contributes a level is null. Figures, days and spectrograms may come from a replica: the header Data-As-Of says up to when it has everything.',
+        'Where no interval contributes a level is null. Figures, days, spectrograms and intervals may come from a replica: the header Data-As-Of says up to when it has everything.',
     },
     servers: [{ url: origin }],
   });
