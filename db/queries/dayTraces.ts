@@ -1,5 +1,5 @@
 import { pool, type Connection } from './connection';
-import { onlyBuckets, type Buckets } from './onlyBuckets';
+import { inBuckets, type Buckets } from './onlyBuckets';
 
 /** A station's day of UTC as bytes of its trace. */
 export interface PackedTrace {
@@ -48,10 +48,9 @@ export async function listWaitingDays(
   { exceptStationIds = [], buckets = null }: { exceptStationIds?: readonly number[]; buckets?: Buckets } = {},
   conn: Connection = pool(),
 ): Promise<{ stationId: number; dayStartSec: number }[]> {
-  return conn('station_day_traces')
+  return inBuckets('station_day_traces', buckets, conn)
     .where({ is_waiting: 1 })
     .whereNotIn('station_id', [...exceptStationIds])
-    .modify(onlyBuckets, buckets)
     .where('starts_at', '<=', endedBeforeSec - 86_400)
     .orderBy('starts_at', 'desc')
     .limit(limit)

@@ -1,5 +1,5 @@
 import { insertRows, pool, type Connection, type Writes } from './connection';
-import { onlyBuckets, type Buckets } from './onlyBuckets';
+import { inBuckets, type Buckets } from './onlyBuckets';
 import { deleteRuns, runsOf } from './runs';
 
 /** One quarter-hour of a station that must be recomputed; several marks may name the same one. */
@@ -31,9 +31,8 @@ export async function readDirtyMarks(
   { exceptStationIds = [], buckets = null }: { exceptStationIds?: readonly number[]; buckets?: Buckets } = {},
   conn: Connection = pool(),
 ): Promise<DirtyMark[]> {
-  return conn('dirty_marks')
+  return inBuckets('dirty_marks', buckets, conn)
     .whereNotIn('station_id', [...exceptStationIds])
-    .modify(onlyBuckets, buckets)
     .orderBy('id')
     .limit(limit)
     .select({ id: 'id', stationId: 'station_id', quarterStartSec: 'quarter_starts_at' });

@@ -18,6 +18,11 @@ export function localTableText(created: string, kind: Kind): string {
   return created.replace(COUNTED, '').replace(/^CREATE TABLE `\w+`/, `CREATE TABLE \`${kind}\``);
 }
 
+/** What a bucket's part of a link table is called. */
+export function linkPartition(bucket: number): string {
+  return `b${String(bucket).padStart(2, '0')}`;
+}
+
 /**
  * The statement that makes the table of the head which leads to all buckets of a kind.
  * @param serverOf the name, as the head knows it, of the server that a bucket stands on.
@@ -33,7 +38,7 @@ export function linkTableText(
   const partitions = Array.from(
     { length: BUCKETS },
     (_, bucket) =>
-      `PARTITION b${String(bucket).padStart(2, '0')} VALUES IN (${bucket})
+      `PARTITION ${linkPartition(bucket)} VALUES IN (${bucket})
        COMMENT = 'srv "${serverOf(bucket)}", tbl "${bucketTable(kind, bucket)}"' ENGINE = SPIDER`,
   );
   // Ids are counted by each bucket's table.

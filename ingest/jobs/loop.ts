@@ -1,6 +1,7 @@
 import { setTimeout as sleep } from 'node:timers/promises';
 import type { Buckets } from '#db/queries/onlyBuckets';
 import { log } from '#lib/config/log';
+import { bucketsByServer } from '../sharing/bucketsByServer';
 import type { SharingWorker } from '../sharing/sharingWorker';
 
 /**
@@ -49,8 +50,21 @@ export async function runLoop(
 
 async function round({ name, work, by = 'one' }: LoopSettings, worker: SharingWorker): Promise<number> {
   if (by === 'one' && !worker.leases.holds(name) && !(await worker.leases.take(name))) return 0;
-  if (by === 'stations' && worker.buckets.length === 0) return 0;
-  const done = await work(new Date(), by === 'stations' ? worker.buckets : null);
+  const done = await (by === 'stations' ? serverByServer(work, worker.buckets) : work(new Date(), null));
   if (done > 0) log().debug({ job: name, done }, 'job did');
+  return done;
+}
+
+/** Does work for buckets, those of each data server by themselves: one that is away stops none of the others. @throws its failure, when the others are done. */
+async function serverByServer(work: Work, buckets: readonly number[]): Promise<number> {
+  if (buckets.length === 0) return 0;
+  const failures: unknown[] = [];
+  let done = 0;
+  for (const ofServer of await bucketsByServer(buckets))
+    await work(new Date(), ofServer).then(
+      (more) => (done += more),
+      (error: unknown) => failures.push(error),
+    );
+  if (failures.length > 0) throw failures[0];
   return done;
 }
