@@ -1,8 +1,9 @@
 import { existsSync, readFileSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
-import { closeDb } from '#db/client';
+import { closeDb, db } from '#db/client';
 import { dataServers, type DataServer } from '#db/sharding/dataServers';
 import { BUCKETS } from '#db/sharding/kinds';
+import { linkServers } from '#db/sharding/linkServers';
 import { migrateUp } from '#db/migrateUp';
 import { ensureDatabase } from '#ops/start/ownDatabase';
 import { config } from '#lib/config/index';
@@ -20,9 +21,12 @@ const USAGE = `ops/cluster.sh COMMAND
   kill NAME                          ends one without warning: head1 … head3, data1 …, web1, web2, worker1, worker2, proxy
   move BUCKET SERVER                 moves a bucket (0 … 63) to another data server while all goes on; to its own: takes a broken move back
   empty SERVER                       moves all of a data server's buckets to the others
+  link                               tells the head where the data servers are: before a dump of the head is brought back
   down                               stops everything; the data stay
-All of it stands in BITTERN_CLUSTER_DIR (.bittern-cluster); its ports begin at BITTERN_CLUSTER_PORT (4600).`;
+All of it stands in BITTERN_CLUSTER_DIR (.bittern-cluster); its ports begin at BITTERN_CLUSTER_PORT (4600).
+Where BITTERN_DATA_SERVERS is set, move, empty and link are for the cluster of the settings, on whatever hosts it is.`;
 
+const OF_SETTINGS = ['move', 'empty', 'link'];
 const directory = process.env['BITTERN_CLUSTER_DIR'] || '.bittern-cluster';
 const [command = '', ...given] = process.argv.slice(2);
 
@@ -35,8 +39,20 @@ try {
   await closeDb();
 }
 
-async function run(): Promise<number> {
-  const layout = readLayout();
+function run(): Promise<number> {
+  return OF_SETTINGS.includes(command) ? runOnSettings() : runHere(readLayout());
+}
+
+async function runOnSettings(): Promise<number> {
+  if (!process.env['BITTERN_DATA_SERVERS']) useSettings(readLayout());
+  const [first = '', second = ''] = given;
+  if (command === 'move') return move(first, second);
+  if (command === 'empty') await emptyServer(serverNamed(first), console.log);
+  if (command === 'link') await linkServers(db(), dataServers());
+  return 0;
+}
+
+async function runHere(layout: Layout): Promise<number> {
   switch (command) {
     case 'up':
     case 'heal':
@@ -55,13 +71,6 @@ async function run(): Promise<number> {
       if (killProcess(layout, given[0] ?? '')) return 0;
       console.error(`${given[0] ?? 'Nothing'} does not run.`);
       return 1;
-    case 'move':
-      useSettings(layout);
-      return move(given[0] ?? '', given[1] ?? '');
-    case 'empty':
-      useSettings(layout);
-      await emptyServer(serverNamed(given[0] ?? ''), console.log);
-      return 0;
     case 'down':
       await stopAll(layout);
       return 0;
