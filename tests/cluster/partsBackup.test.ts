@@ -6,7 +6,7 @@ import { afterAll, beforeAll, expect, test } from 'vitest';
 import { closeDb } from '#db/client';
 import { dataServers, onEach } from '#db/sharding/dataServers';
 import { dropShards } from '#db/sharding/dropShards';
-import { bucketOf, KINDS } from '#db/sharding/kinds';
+import { bucketOf, BUCKETS, KINDS } from '#db/sharding/kinds';
 import { config } from '#lib/config/index';
 import { certificateOf, dataPort, headPort, nodePorts } from '#ops/cluster/layout';
 import { moveBucket, placesOfBuckets } from '#ops/cluster/moveBucket';
@@ -94,7 +94,7 @@ test.skipIf(process.env['CLUSTER'] !== 'whole')(
       const [rows] = await connection.query('SHOW TABLES');
       return (rows as unknown[]).length;
     });
-    expect(tables.reduce((sum, count) => sum + count, 0)).toBe(64 * KINDS.length);
+    expect(tables.reduce((sum, count) => sum + count, 0)).toBe(BUCKETS * KINDS.length);
   },
   240_000,
 );
